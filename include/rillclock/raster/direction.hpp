@@ -1,0 +1,36 @@
+#pragma once
+
+#include <array>
+#include <cstdint>
+
+#include "rillclock/raster/grid.hpp"
+
+namespace rillclock {
+
+/// One of the eight ways out of a cell, clockwise from grid north; the number times 45 is the azimuth in degrees.
+/// This order is also the fixed order in which neighbours are asked wherever the first of equals wins.
+enum class Direction : std::uint8_t { north, north_east, east, south_east, south, south_west, west, north_west };
+
+inline constexpr std::array<Direction, 8> all_directions = {
+    Direction::north, Direction::north_east, Direction::east, Direction::south_east,
+    Direction::south, Direction::south_west, Direction::west, Direction::north_west};
+
+[[nodiscard]] constexpr int row_step(Direction d) {
+    constexpr std::array<int, 8> steps = {-1, -1, 0, 1, 1, 1, 0, -1};
+    return steps[static_cast<std::size_t>(d)];
+}
+[[nodiscard]] constexpr int column_step(Direction d) {
+    constexpr std::array<int, 8> steps = {0, 1, 1, 1, 0, -1, -1, -1};
+    return steps[static_cast<std::size_t>(d)];
+}
+[[nodiscard]] constexpr Direction opposite(Direction d) {
+    return static_cast<Direction>((static_cast<unsigned>(d) + 4U) % 8U);
+}
+[[nodiscard]] constexpr bool is_diagonal(Direction d) { return static_cast<unsigned>(d) % 2U == 1U; }
+[[nodiscard]] constexpr int azimuth_degrees(Direction d) { return 45 * static_cast<int>(d); }
+
+[[nodiscard]] constexpr RowColumn neighbour(RowColumn at, Direction d) {
+    return {at.row + row_step(d), at.column + column_step(d)};
+}
+
+}  // namespace rillclock

@@ -1,0 +1,50 @@
+#pragma once
+
+#include <cstdint>
+#include <vector>
+
+#include "rillclock/core/fixed_point.hpp"
+#include "rillclock/core/quantity.hpp"
+#include "rillclock/raster/direction.hpp"
+
+namespace rillclock {
+
+/// Ground lengths of the three kinds of step that start in one row, and the ground area of its cells.
+struct GroundRow {
+    FixedLength east_west = 0;  ///< between neighbours in the row
+    FixedLength south = 0;      ///< to the cell below, in the next row; of the last row: as for the row before
+    FixedLength diagonal = 0;   ///< to the cell below and beside, in the next row
+    FixedArea area = 0;         ///< of one cell
+    bool operator==(const GroundRow&) const = default;
+};
+
+/// How far apart neighbouring cell centres are on the ground, and how large cells are.
+///
+/// On a projected grid all rows are alike and are stored once; on a geographic grid every row has its own geodesic lengths.
+/// Whatever the reference system, the answer depends on the row alone, so it is one small table.
+class Ground {
+public:
+    /// A grid of rectangular cells on a plane: the diagonal is the hypotenuse.
+    [[nodiscard]] static Ground planar(Length cell_width, Length cell_height);
+    /// A table with one entry a row (at least one).
+    [[nodiscard]] static Ground by_row(std::vector<GroundRow> rows);
+
+    /// Length of the step out of a cell of `row` in direction `d`. Steps north are the steps south of the row before.
+    [[nodiscard]] FixedLength length(std::int64_t row, Direction d) const {
+        if (d == Direction::east || d == Direction::west) return at(row).east_west;
+        const GroundRow& upper = at(row_step(d) < 0 ? row - 1 : row);
+        return is_diagonal(d) ? upper.diagonal : upper.south;
+    }
+    [[nodiscard]] FixedArea cell_area(std::int64_t row) const { return at(row).area; }
+    /// The shorter side of the middle row's cells: what "one cell" means where a study speaks of cells.
+    [[nodiscard]] Length cell_side() const;
+
+private:
+    explicit Ground(std::vector<GroundRow> rows) : rows_(std::move(rows)) {}
+    [[nodiscard]] const GroundRow& at(std::int64_t row) const {
+        return rows_[rows_.size() == 1 ? 0U : static_cast<std::size_t>(row < 0 ? 0 : row)];
+    }
+    std::vector<GroundRow> rows_;
+};
+
+}  // namespace rillclock
