@@ -1,0 +1,120 @@
+#pragma once
+
+#include <cstdint>
+#include <optional>
+#include <string>
+
+#include "rillclock/core/quantity.hpp"
+#include "rillclock/core/quantity_text.hpp"
+
+namespace rillclock {
+
+/// The units in which results are reported; the computation is in SI either way.
+enum class ReportUnits { us, si };
+/// What ends sheet flow: the stated length or the index of McCuen and Spiess, whichever comes first; or the stated length.
+enum class SheetLimitRule { length_or_index, stated };
+/// How shallow concentrated flow is told apart.
+enum class ShallowRule { by_cover, paved_and_unpaved };
+
+/// A study as stated: what a study file or the command line says, with the defaults that do not depend on the data.
+/// What is absent here and depends on the data is settled by `resolve`.
+struct TerrainStudy {
+    std::string elevation;                     ///< raster; relative to the study's folder
+    int band = 1;                              ///< from 1
+    std::optional<Length> elevation_unit = {};  ///< the length of one unit of elevation, where the study states it
+    std::optional<Length> slope_window = {};
+    std::optional<Length> vertical_step = {};
+    std::optional<Length> pond_depth = {};
+    Speed pond_speed = metres_per_second(2);   ///< infinite for "unlimited"
+};
+
+struct SurfaceStudy {
+    std::string cover;  ///< raster; relative to the study's folder
+    int band = 1;       ///< from 1
+    std::string book;   ///< a built-in book's name, or a CSV file relative to the study's folder
+    std::optional<int> fallback_class = {};  ///< for codes the book does not know and cells without cover
+};
+
+struct PointStudy {
+    std::optional<std::string> file = {};   ///< relative to the study's folder; without it points stand where flow leaves the data
+    std::optional<std::string> name = {};   ///< field that names the points
+    std::optional<std::string> layer = {};  ///< the file's first layer where absent
+    std::optional<double> auto_area = {};   ///< share of the data's area from which a way out counts as a point, 0 to 1
+    std::optional<Length> move_within = {};
+};
+
+struct RainStudy {
+    std::optional<Length> two_year_24_hour = {};
+};
+
+/// The section of channels: a stated hydraulic radius, or top width and mean depth by contributing area.
+/// With neither, the sizes of the whole United States (`channel_sizes`).
+struct ChannelStudy {
+    double n = 0.045;
+    std::optional<Length> hydraulic_radius = {};
+    std::optional<PowerLaw> width = {};
+    std::optional<PowerLaw> depth = {};
+};
+
+struct TimingStudy {
+    std::string sheet = "nrcs";
+    Length sheet_limit = feet(100);
+    SheetLimitRule sheet_limit_rule = SheetLimitRule::length_or_index;
+    ShallowRule shallow = ShallowRule::by_cover;
+    double slope_floor_overland = 0.001;  ///< rise over run; 0 is off
+    double slope_floor_channel = 0.0001;  ///< rise over run; 0 is off
+    std::optional<Area> channel_from = hectares(5);  ///< absent: only where channels are mapped
+    ChannelStudy channel;
+    double ignore_tail = 0.0;  ///< share of a point's area, the slowest, that is left out; 0 to below 1
+    std::optional<Length> shortest_segment = {};
+};
+
+struct OutputStudy {
+    std::string folder = "result";  ///< relative to the study's folder
+};
+
+struct Study {
+    std::string file;  ///< the study file as named by the user; empty where the command line is the study
+    std::string title;
+    ReportUnits report_units = ReportUnits::us;
+    TerrainStudy terrain;
+    SurfaceStudy surface;
+    PointStudy points;
+    RainStudy rain;
+    TimingStudy timing;
+    OutputStudy output;
+};
+
+/// A name from the study as a path that can be opened: relative ones are taken from the study file's folder; absolute
+/// ones and names of GDAL's virtual files ("/vsi…", "NETCDF:…", "https://…") stay as they are.
+[[nodiscard]] std::string located(const Study& study, const std::string& name);
+
+/// Throws an input error for what a study lacks (elevation, cover, book, rain) and for statements that exclude one another.
+void check_study(const Study& study);
+
+/// What is true of the data and settles defaults.
+struct DataFacts {
+    Length cell_side;         ///< shorter side of a cell on the ground
+    Length vertical_quantum;  ///< least difference of two elevations where they are whole numbers; else 0
+};
+
+/// The figures a run works with: those stated, else the defaults for these data.
+struct ResolvedStudy {
+    Length slope_window;      ///< default the larger of 20 m and 3 cells
+    Length vertical_step;     ///< default the largest of 0.2 m, the quantum and a tenth of a cell
+    Length pond_depth;        ///< default the larger of 0.3 m and the vertical step
+    Length move_within;       ///< default the larger of 5 m and one cell
+    Length shortest_segment;  ///< default the larger of 50 m and 5 cells
+    double auto_area = 0.01;  ///< default 1 % of the data's area
+    double channel_n = 0.0;
+    std::optional<Length> hydraulic_radius = {};  ///< where stated; else the two below count
+    PowerLaw channel_width;
+    PowerLaw channel_depth;
+};
+
+[[nodiscard]] ResolvedStudy resolve(const Study& study, const DataFacts& facts);
+
+/// Hydraulic radius of a channel that drains this area: the stated one, or W·D/(W + 2D) of the two power laws.
+[[nodiscard]] Length channel_radius(const ResolvedStudy& resolved, Area contributing);
+
+}  // namespace rillclock

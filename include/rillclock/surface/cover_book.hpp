@@ -1,0 +1,72 @@
+#pragma once
+
+#include <cstddef>
+#include <optional>
+#include <span>
+#include <string>
+#include <string_view>
+#include <unordered_map>
+#include <vector>
+
+#include "rillclock/core/quantity.hpp"
+
+namespace rillclock {
+
+/// How water runs over one class of land cover.
+struct CoverClass {
+    int code = 0;  ///< the value in the cover raster
+    std::string name;
+    double n_low = 0.0;  ///< sheet-flow n; 0 < low ≤ typical ≤ high, all 0 for open water
+    double n_typical = 0.0;
+    double n_high = 0.0;
+    Speed shallow_k;           ///< velocity of shallow concentrated flow at slope 1; 0 for open water
+    std::string shallow_type;  ///< short name of one of `shallow_types()`; "stated" where the book gives k itself
+    bool paved = false;        ///< counts as paved where only paved and unpaved are told apart
+    std::optional<Length> water_depth = {};  ///< mean depth; present for open water alone
+    std::string source;                      ///< where the values are from
+    bool from_memory = false;                ///< a default to check before use
+
+    [[nodiscard]] bool is_open_water() const { return water_depth.has_value(); }
+};
+
+/// The classes of one legend, in ascending order of their codes.
+class CoverBook {
+public:
+    /// Throws an input error where two classes have one code or there is no class.
+    CoverBook(std::string name, std::vector<CoverClass> classes);
+
+    [[nodiscard]] const std::string& name() const { return name_; }
+    [[nodiscard]] std::span<const CoverClass> classes() const { return classes_; }
+    /// The class of that code; null where the book has none.
+    [[nodiscard]] const CoverClass* find(int code) const;
+
+private:
+    std::string name_;
+    std::vector<CoverClass> classes_;
+    std::unordered_map<int, std::size_t> place_of_code_;
+};
+
+/// Reads a cover book from CSV text with a header. Columns, in any order, units in their names:
+///
+/// - `code` (whole number), `name`;
+/// - `n_typical`, and `n_low`, `n_high` (each may be absent or empty: then n_typical);
+/// - `shallow_type` (a short name of `shallow_types()`), or `shallow_k_m_s` or `shallow_k_ft_s` (velocity at slope 1);
+/// - `paved` (yes or no; may be absent: then yes for the type "pavement" alone);
+/// - `water_depth_m` or `water_depth_ft`: a mean depth makes the class open water, whose n and shallow fields stay empty;
+/// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
+///
+/// `file` names the text in errors. Throws an input error with line and column for a column that is missing or unknown,
+/// a field that is missing, negative, zero or not a number, codes given twice, and n out of order.
+[[nodiscard]] CoverBook parse_cover_book(std::string_view text, std::string_view file);
+
+/// The names of the built-in books.
+[[nodiscard]] std::span<const std::string_view> built_in_book_names();
+/// Whether a study's word for its book is the name of a built-in one, and so not of a file.
+[[nodiscard]] bool is_built_in_book(std::string_view name);
+/// A built-in book as CSV text, in the form `parse_cover_book` reads: what a user may copy and change.
+/// Throws an input error for a name that is not built in.
+[[nodiscard]] std::string_view built_in_book_text(std::string_view name);
+/// A built-in book: "nlcd", the legend of the National Land Cover Database from 2001 on with Alaska's classes.
+[[nodiscard]] CoverBook built_in_book(std::string_view name);
+
+}  // namespace rillclock
