@@ -1,0 +1,53 @@
+#pragma once
+
+#include <filesystem>
+#include <memory>
+#include <optional>
+#include <string>
+#include <utility>
+#include <vector>
+
+#include "rillclock/io/reference_system.hpp"
+#include "rillclock/io/stored_type.hpp"
+#include "rillclock/raster/blocks.hpp"
+#include "rillclock/raster/raster.hpp"
+
+namespace rillclock {
+
+/// How coarser copies are made: `nearest` for classes, numbers and directions, `average` for amounts.
+enum class OverviewKind { nearest, average };
+
+/// What a raster file says about itself.
+struct RasterDescription {
+    StoredType stored = StoredType::float32;
+    std::string description = {};
+    std::string unit = {};
+    std::optional<double> nodata = {};
+    double scale = 1.0;
+    double offset = 0.0;
+    /// Names of classes by number, 0 to 65535; kept in a second file beside the raster (its name and ".aux.xml").
+    std::vector<std::pair<int, std::string>> categories = {};
+    std::vector<std::pair<std::string, std::string>> metadata = {};
+    OverviewKind overviews = OverviewKind::average;
+};
+
+/// Begins a tiled, compressed GeoTIFF. Instances for double, float, uint8_t, uint16_t, uint32_t and int32_t.
+///
+/// Windows may come in any order and never twice; rows of blocks (512 rows) are held until they are whole and leave in order, so
+/// that the same values give the same bytes whatever the windows, the threads and GDAL's cache. Whole-width strips from the
+/// top down need the least memory. NaN is written as `nodata`; any other value must be representable in the stored type.
+/// `close` adds overviews and statistics, closes, opens the file again and checks it. What fails is an Error (machine) and leaves
+/// no file, as does a sink destroyed without `close`. A symbolic link at `path` is refused.
+template <class T>
+[[nodiscard]] std::unique_ptr<BlockSink<T>> create_raster(const std::filesystem::path& path, const Grid& grid,
+                                                          const ReferenceSystem& system,
+                                                          const RasterDescription& description);
+
+/// Writes a raster that is wholly in memory, and closes the sink.
+template <class T>
+void write_raster(BlockSink<T>& sink, const Raster<T>& raster) {
+    sink.write(Window{.rows = raster.rows(), .columns = raster.columns()}, raster.values());
+    sink.close();
+}
+
+}  // namespace rillclock
