@@ -13,7 +13,7 @@ namespace rillclock {
 [[nodiscard]] std::size_t edit_distance(std::string_view a, std::string_view b);
 
 /// The candidate that is nearest to the word, for "did you mean"; none where even the nearest differs in more than a
-/// third of the word's letters (at least two letters may differ). The first of equals.
+/// third of the word's letters (two may always differ) or in all of them. The first of equals.
 [[nodiscard]] std::optional<std::string_view> nearest_word(std::string_view word,
                                                            std::span<const std::string_view> candidates);
 

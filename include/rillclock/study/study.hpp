@@ -19,7 +19,7 @@ enum class ShallowRule { by_cover, paved_and_unpaved };
 /// A study as stated: what a study file or the command line says, with the defaults that do not depend on the data.
 /// What is absent here and depends on the data is settled by `resolve`.
 struct TerrainStudy {
-    std::string elevation;                     ///< raster; relative to the study's folder
+    std::string elevation = {};                     ///< raster; relative to the study's folder
     int band = 1;                              ///< from 1
     std::optional<Length> elevation_unit = {};  ///< the length of one unit of elevation, where the study states it
     std::optional<Length> slope_window = {};
@@ -29,9 +29,9 @@ struct TerrainStudy {
 };
 
 struct SurfaceStudy {
-    std::string cover;  ///< raster; relative to the study's folder
+    std::string cover = {};  ///< raster; relative to the study's folder
     int band = 1;       ///< from 1
-    std::string book;   ///< a built-in book's name, or a CSV file relative to the study's folder
+    std::string book = {};   ///< a built-in book's name, or a CSV file relative to the study's folder
     std::optional<int> fallback_class = {};  ///< for codes the book does not know and cells without cover
 };
 
@@ -64,7 +64,7 @@ struct TimingStudy {
     double slope_floor_overland = 0.001;  ///< rise over run; 0 is off
     double slope_floor_channel = 0.0001;  ///< rise over run; 0 is off
     std::optional<Area> channel_from = hectares(5);  ///< absent: only where channels are mapped
-    ChannelStudy channel;
+    ChannelStudy channel = {};
     double ignore_tail = 0.0;  ///< share of a point's area, the slowest, that is left out; 0 to below 1
     std::optional<Length> shortest_segment = {};
 };
@@ -74,15 +74,15 @@ struct OutputStudy {
 };
 
 struct Study {
-    std::string file;  ///< the study file as named by the user; empty where the command line is the study
-    std::string title;
+    std::string file = {};  ///< the study file as named by the user; empty where the command line is the study
+    std::string title = {};
     ReportUnits report_units = ReportUnits::us;
-    TerrainStudy terrain;
-    SurfaceStudy surface;
-    PointStudy points;
-    RainStudy rain;
-    TimingStudy timing;
-    OutputStudy output;
+    TerrainStudy terrain = {};
+    SurfaceStudy surface = {};
+    PointStudy points = {};
+    RainStudy rain = {};
+    TimingStudy timing = {};
+    OutputStudy output = {};
 };
 
 /// A name from the study as a path that can be opened: relative ones are taken from the study file's folder; absolute
@@ -94,22 +94,22 @@ void check_study(const Study& study);
 
 /// What is true of the data and settles defaults.
 struct DataFacts {
-    Length cell_side;         ///< shorter side of a cell on the ground
-    Length vertical_quantum;  ///< least difference of two elevations where they are whole numbers; else 0
+    Length cell_side = {};         ///< shorter side of a cell on the ground
+    Length vertical_quantum = {};  ///< least difference of two elevations where they are whole numbers; else 0
 };
 
 /// The figures a run works with: those stated, else the defaults for these data.
 struct ResolvedStudy {
-    Length slope_window;      ///< default the larger of 20 m and 3 cells
-    Length vertical_step;     ///< default the largest of 0.2 m, the quantum and a tenth of a cell
-    Length pond_depth;        ///< default the larger of 0.3 m and the vertical step
-    Length move_within;       ///< default the larger of 5 m and one cell
-    Length shortest_segment;  ///< default the larger of 50 m and 5 cells
+    Length slope_window = {};      ///< default the larger of 20 m and 3 cells
+    Length vertical_step = {};     ///< default the largest of 0.2 m, the quantum and a tenth of a cell
+    Length pond_depth = {};        ///< default the larger of 0.3 m and the vertical step
+    Length move_within = {};       ///< default the larger of 5 m and one cell
+    Length shortest_segment = {};  ///< default the larger of 50 m and 5 cells
     double auto_area = 0.01;  ///< default 1 % of the data's area
     double channel_n = 0.0;
     std::optional<Length> hydraulic_radius = {};  ///< where stated; else the two below count
-    PowerLaw channel_width;
-    PowerLaw channel_depth;
+    PowerLaw channel_width = {};
+    PowerLaw channel_depth = {};
 };
 
 [[nodiscard]] ResolvedStudy resolve(const Study& study, const DataFacts& facts);

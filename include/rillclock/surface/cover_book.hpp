@@ -15,15 +15,15 @@ namespace rillclock {
 /// How water runs over one class of land cover.
 struct CoverClass {
     int code = 0;  ///< the value in the cover raster
-    std::string name;
+    std::string name = {};
     double n_low = 0.0;  ///< sheet-flow n; 0 < low ≤ typical ≤ high, all 0 for open water
     double n_typical = 0.0;
     double n_high = 0.0;
-    Speed shallow_k;           ///< velocity of shallow concentrated flow at slope 1; 0 for open water
-    std::string shallow_type;  ///< short name of one of `shallow_types()`; "stated" where the book gives k itself
+    Speed shallow_k = {};           ///< velocity of shallow concentrated flow at slope 1; 0 for open water
+    std::string shallow_type = {};  ///< short name of one of `shallow_types()`; "stated" where the book gives k itself
     bool paved = false;        ///< counts as paved where only paved and unpaved are told apart
     std::optional<Length> water_depth = {};  ///< mean depth; present for open water alone
-    std::string source;                      ///< where the values are from
+    std::string source = {};                 ///< where the values are from
     bool from_memory = false;                ///< a default to check before use
 
     [[nodiscard]] bool is_open_water() const { return water_depth.has_value(); }

@@ -1,0 +1,157 @@
+#include "rillclock/hydraulics/methods.hpp"
+
+#include <algorithm>
+
+namespace rillclock {
+namespace {
+
+std::vector<Method> sheet_methods() {
+    return {
+        {.id = "sheet-nrcs",
+         .name = "Sheet flow, NRCS simplified kinematic",
+         .formula = "T = 0.007 (n L)^0.8 / (P2^0.5 S^0.4), that is c u^0.8 / P2^0.5 with u = n L / sqrt(S)",
+         .inputs = {{"n", "roughness for sheet flow", "-"},
+                    {"L", "length", "ft"},
+                    {"P2", "2-year 24-hour rainfall depth", "in"},
+                    {"S", "slope", "ft/ft"},
+                    {"T", "time", "h"}},
+         .range =
+             "shallow uniform flow over planes, at most 100 ft (300 ft before 2010); P2 whatever the return period",
+         .source = "USDA SCS, Urban Hydrology for Small Watersheds, TR-55, 2nd ed., 1986, equation 3-3; NEH Part 630 "
+                   "chapter 15, 2010, equation 15-8",
+         .trust = Trust::seen_in_source},
+        {.id = "sheet-limit",
+         .name = "End of sheet flow, McCuen and Spiess",
+         .formula = "L = 100 sqrt(S) / n, that is u = 100 ft",
+         .inputs = {{"S", "slope", "ft/ft"}, {"n", "roughness for sheet flow", "-"}, {"L", "greatest length", "ft"}},
+         .range = "an upper limit from 59 watersheds; together with a stated length, whichever comes first",
+         .source =
+             "McCuen and Spiess, Assessment of kinematic wave time of concentration, J. Hydraul. Eng. 121(3), 1995; "
+             "NEH Part 630 chapter 15, 2010, equation 15-9",
+         .trust = Trust::seen_in_source},
+    };
+}
+
+std::vector<Method> shallow_methods() {
+    return {
+        {.id = "shallow-by-cover",
+         .name = "Shallow concentrated flow by land cover",
+         .formula =
+             "V = k sqrt(S), k = 20.328, 16.135, 9.965, 8.762, 6.962, 5.032 or 2.516 ft/s for seven types of ground",
+         .inputs = {{"k", "velocity at slope 1, of the type of ground", "ft/s"},
+                    {"S", "slope", "ft/ft"},
+                    {"V", "velocity", "ft/s"}},
+         .range = "depths of 0.2 to 0.4 ft; which land cover counts as which type is our own match",
+         .source = "USDA NRCS, National Engineering Handbook, Part 630 chapter 15, 2010, table 15-3",
+         .trust = Trust::from_memory},
+        {.id = "shallow-paved-unpaved",
+         .name = "Shallow concentrated flow, paved and unpaved",
+         .formula = "V = 20.3282 sqrt(S) paved, 16.1345 sqrt(S) unpaved",
+         .inputs = {{"S", "slope", "ft/ft"}, {"V", "velocity", "ft/s"}},
+         .range = "depths of 0.2 ft paved and 0.4 ft unpaved",
+         .source = "USDA SCS, Urban Hydrology for Small Watersheds, TR-55, 2nd ed., 1986, figure 3-1 and appendix F",
+         .trust = Trust::from_memory},
+    };
+}
+
+std::vector<Method> channel_methods() {
+    return {
+        {.id = "channel-manning",
+         .name = "Open channel, Manning",
+         .formula = "V = R^(2/3) sqrt(S) / n",
+         .inputs = {{"n", "Manning's n of the channel", "-"},
+                    {"R", "hydraulic radius, stated or from the channel's size", "m"},
+                    {"S", "slope", "m/m"},
+                    {"V", "velocity", "m/s"}},
+         .range = "uniform turbulent flow, here bankfull; n of natural streams 0.03 to 0.15",
+         .source = "Manning, On the flow of water in open channels and pipes, 1891; FHWA HEC-22, 3rd ed., 2009, "
+                   "equation 3-5",
+         .trust = Trust::from_memory},
+        {.id = "channel-size-by-area",
+         .name = "Channel size by contributing area",
+         .formula = "W = 2.70 A^0.352, D = 0.30 A^0.213, R = W D / (W + 2 D)",
+         .inputs = {{"A", "contributing area", "km2"},
+                    {"W", "top width", "m"},
+                    {"D", "mean depth", "m"},
+                    {"R", "hydraulic radius", "m"}},
+         .range =
+             "natural perennial streams at bankfull in the United States; not drains, gutters or swales; area alone is "
+             "a weak guide",
+         .source = "Bieger, Rathjens, Allen and Arnold, Development and evaluation of bankfull hydraulic geometry "
+                   "relationships, J. Am. Water Resour. Assoc. 51(3), 2015; the rectangle of W and D is our reading",
+         .trust = Trust::from_memory},
+        {.id = "open-water",
+         .name = "Open water, wave celerity",
+         .formula = "V = sqrt(g D)",
+         .inputs = {{"D", "mean depth, from the cover book", "m"},
+                    {"g", "9.80665 m/s2", "m/s2"},
+                    {"V", "velocity", "m/s"}},
+         .range = "lakes and ponds whose surface is level; storage is not modelled",
+         .source = "USDA NRCS, National Engineering Handbook, Part 630 chapter 15, 2010, equation 15-11",
+         .trust = Trust::from_memory},
+    };
+}
+
+std::vector<Method> own_rules() {
+    return {
+        {.id = "ponded",
+         .name = "Ponded cells",
+         .formula = "V = the greater of the cell's own velocity and min(sqrt(g h), pond_speed)",
+         .inputs = {{"h", "spill elevation above the ground, more than pond_depth", "m"},
+                    {"pond_speed", "cap", "m/s"},
+                    {"V", "velocity", "m/s"}},
+         .range =
+             "depressions, real or artefacts, taken as full; storage is not modelled; the ponded share of a path is "
+             "reported",
+         .source = "rillclock; celerity as for open water",
+         .trust = Trust::own_rule},
+        {.id = "slope-ahead",
+         .name = "Slope ahead",
+         .formula = "S = fall of the spill elevation over the next slope_window, if at least vertical_step; else "
+                    "vertical_step "
+                    "over the distance in which the path falls by it; never under slope_floor",
+         .inputs = {{"slope_window", "length of path looked at", "m"},
+                    {"vertical_step", "least fall the elevations can be trusted with", "m"},
+                    {"slope_floor", "least slope, overland and in channels", "m/m"},
+                    {"S", "slope", "m/m"}},
+         .range =
+             "any terrain; how much of a path runs on the floor is reported. Floor 0.001 overland after KC et al., "
+             "J. Hydrol. Eng., 2014",
+         .source = "rillclock",
+         .trust = Trust::own_rule},
+    };
+}
+
+std::vector<Method> all_methods() {
+    std::vector<Method> all;
+    for (const auto& part : {sheet_methods(), shallow_methods(), channel_methods(), own_rules()})
+        all.insert(all.end(), part.begin(), part.end());
+    return all;
+}
+
+}  // namespace
+
+std::string_view words(Trust trust) {
+    switch (trust) {
+        case Trust::seen_in_source:
+            return "read in its source";
+        case Trust::from_memory:
+            return "value from memory";
+        case Trust::own_rule:
+            return "rule of this program";
+    }
+    return "";
+}
+
+std::span<const Method> methods() {
+    static const std::vector<Method> all = all_methods();
+    return all;
+}
+
+const Method* find_method(std::string_view id) {
+    const auto all = methods();
+    const auto found = std::find_if(all.begin(), all.end(), [&](const Method& m) { return m.id == id; });
+    return found == all.end() ? nullptr : &*found;
+}
+
+}  // namespace rillclock

@@ -1,0 +1,106 @@
+#include "rillclock/study/study.hpp"
+
+#include <algorithm>
+#include <filesystem>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/hydraulics/channel_size.hpp"
+#include "rillclock/hydraulics/manning.hpp"
+#include "rillclock/rainfall/design_rain.hpp"
+
+namespace rillclock {
+namespace {
+
+std::string name_of(const Study& study) {
+    return study.file.empty() ? "the study" : study.file;
+}
+
+void require(const Study& study, const std::string& value, const std::string& what_to_add) {
+    if (value.empty()) throw input_error(name_of(study) + " gives no " + what_to_add);
+}
+
+void require_inputs(const Study& study) {
+    require(study, study.terrain.elevation,
+            "elevation; state the raster, under [terrain] as elevation = \"dem.tif\" or as --elevation dem.tif");
+    require(study, study.surface.cover,
+            "land cover; state the raster, under [surface] as cover = \"cover.tif\" or as --cover cover.tif");
+    require(
+        study, study.surface.book,
+        "cover book; state what the codes of the cover raster mean, under [surface] as book = \"nlcd\" or the name of "
+        "a CSV file, or as --book nlcd");
+    if (!study.rain.two_year_24_hour) throw input_error(rain_is_missing(name_of(study)));
+}
+
+void refuse_contradictory_channel(const Study& study) {
+    const ChannelStudy& channel = study.timing.channel;
+    if (channel.hydraulic_radius && (channel.width || channel.depth))
+        throw input_error(
+            name_of(study) +
+            " gives timing.channel both a hydraulic_radius and a width or depth; keep the hydraulic_radius, or "
+            "width and depth together");
+    if (channel.width.has_value() != channel.depth.has_value())
+        throw input_error(name_of(study) +
+                          " gives timing.channel only one of width and depth; state both, such as width = "
+                          "\"2.70 m * km2^0.352\", depth = \"0.30 m * km2^0.213\"");
+}
+
+void refuse_contradictory_points(const Study& study) {
+    const PointStudy& points = study.points;
+    if (points.file && points.auto_area)
+        throw input_error(name_of(study) +
+                          " gives points both a file and an auto_area; keep the file for points of your own, "
+                          "or auto_area for points where flow leaves the data");
+    if (!points.file && (points.name || points.layer || points.move_within))
+        throw input_error(name_of(study) +
+                          " says how to read or move points but gives no file of them; add file = "
+                          "\"points.gpkg\" under [points], or leave out name, layer and move_within");
+}
+
+/// "NETCDF:…", "GPKG:…": a driver's name before a colon, in capitals.
+bool has_driver_prefix(const std::string& name) {
+    const auto colon = name.find(':');
+    if (colon == std::string::npos || colon < 2) return false;
+    return std::all_of(name.begin(), name.begin() + static_cast<std::ptrdiff_t>(colon), [](char letter) {
+        return (letter >= 'A' && letter <= 'Z') || (letter >= '0' && letter <= '9') || letter == '_';
+    });
+}
+
+}  // namespace
+
+std::string located(const Study& study, const std::string& name) {
+    const std::filesystem::path path(name);
+    if (name.empty() || path.is_absolute() || has_driver_prefix(name) || name.find("://") != std::string::npos)
+        return name;
+    return (std::filesystem::path(study.file).parent_path() / path).string();
+}
+
+void check_study(const Study& study) {
+    require_inputs(study);
+    refuse_contradictory_points(study);
+    refuse_contradictory_channel(study);
+}
+
+ResolvedStudy resolve(const Study& study, const DataFacts& facts) {
+    const Length cell = facts.cell_side;
+    const TerrainStudy& terrain = study.terrain;
+    const ChannelStudy& channel = study.timing.channel;
+    const ChannelSize& standard = channel_sizes().front();
+    const Length step = terrain.vertical_step.value_or(std::max({metres(0.2), facts.vertical_quantum, cell / 10.0}));
+    return {.slope_window = terrain.slope_window.value_or(std::max(metres(20), 3.0 * cell)),
+            .vertical_step = step,
+            .pond_depth = terrain.pond_depth.value_or(std::max(metres(0.3), step)),
+            .move_within = study.points.move_within.value_or(std::max(metres(5), cell)),
+            .shortest_segment = study.timing.shortest_segment.value_or(std::max(metres(50), 5.0 * cell)),
+            .auto_area = study.points.auto_area.value_or(0.01),
+            .channel_n = channel.n,
+            .hydraulic_radius = channel.hydraulic_radius,
+            .channel_width = channel.width.value_or(standard.width),
+            .channel_depth = channel.depth.value_or(standard.depth)};
+}
+
+Length channel_radius(const ResolvedStudy& resolved, Area contributing) {
+    if (resolved.hydraulic_radius) return *resolved.hydraulic_radius;
+    return hydraulic_radius_of(resolved.channel_width(contributing), resolved.channel_depth(contributing));
+}
+
+}  // namespace rillclock

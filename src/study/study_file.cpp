@@ -1,0 +1,103 @@
+#include "rillclock/study/study_file.hpp"
+
+#include <toml++/toml.h>
+
+#include <optional>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/study/study_keys.hpp"
+
+namespace rillclock {
+namespace {
+
+std::string place(const std::string& file, const toml::source_position& position) {
+    return file + ", line " + std::to_string(position.line) + ", column " + std::to_string(position.column);
+}
+
+toml::table parsed(std::string_view text, const std::string& file) {
+    try {
+        return toml::parse(text, std::string_view(file));
+    } catch (const toml::parse_error& error) {
+        throw input_error(place(file, error.source().begin) + ": the study cannot be read as TOML (" +
+                          std::string(error.description()) + "); write key = value under [section], and each key once");
+    }
+}
+
+std::string joined(const std::string& section, std::string_view key) {
+    return section.empty() ? std::string(key) : section + "." + std::string(key);
+}
+
+/// Walks the tables of a study file and sets what each value stands for.
+class StudyReader {
+public:
+    StudyReader(Study& study, const std::string& file) : study_(study), file_(file) {}
+
+    void read(const toml::table& table, const std::string& section) {
+        for (const auto& [name, node] : table) {
+            const std::string key = joined(section, name.str());
+            const std::string where = place(file_, name.source().begin);
+            if (is_study_section(key)) {
+                read_section(node, key, where);
+            } else if (is_study_key(key)) {
+                set_study_value(study_, key,
+                                {.value = scalar(node, key), .subject = key + " (" + value_place(node) + ")"});
+            } else {
+                refuse_study_key(first_key_of(node, key), where);
+            }
+        }
+    }
+
+private:
+    void read_section(const toml::node& node, const std::string& key, const std::string& where) {
+        const toml::table* inner = node.as_table();
+        if (inner == nullptr)
+            throw input_error(where + ": " + key + " holds keys of its own; write them under [" + key + "] or as " +
+                              key + " = { key = value }");
+        read(*inner, key);
+    }
+
+    /// An unknown section is told of by its first key, which says more about what was meant.
+    [[nodiscard]] static std::string first_key_of(const toml::node& node, const std::string& key) {
+        const toml::table* table = node.as_table();
+        if (table == nullptr || table->empty()) return key;
+        return joined(key, table->begin()->first.str());
+    }
+
+    [[nodiscard]] std::string value_place(const toml::node& node) const { return place(file_, node.source().begin); }
+
+    [[nodiscard]] std::variant<std::string, std::int64_t, double, bool> scalar(const toml::node& node,
+                                                                               const std::string& key) const {
+        if (const auto* text = node.as_string()) return text->get();
+        if (const auto* whole = node.as_integer()) return whole->get();
+        if (const auto* real = node.as_floating_point()) return real->get();
+        if (const auto* truth = node.as_boolean()) return truth->get();
+        throw input_error(key + " (" + value_place(node) + ") is a list, a table or a date; write one value, such as " +
+                          form_of(key));
+    }
+
+    [[nodiscard]] static std::string form_of(const std::string& key) {
+        for (const StudyKey& known : study_keys())
+            if (known.key == key) return std::string(known.form);
+        return {};
+    }
+
+    Study& study_;
+    const std::string& file_;
+};
+
+}  // namespace
+
+Study read_study(std::string_view text, const std::string& file) {
+    Study study{.file = file};
+    const toml::table table = parsed(text, file);
+    StudyReader(study, file).read(table, {});
+    return study;
+}
+
+Study parse_study(std::string_view text, const std::string& file) {
+    Study study = read_study(text, file);
+    check_study(study);
+    return study;
+}
+
+}  // namespace rillclock

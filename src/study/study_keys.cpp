@@ -1,0 +1,134 @@
+#include "rillclock/study/study_keys.hpp"
+
+#include <algorithm>
+#include <array>
+#include <vector>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/core/nearest_word.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr std::array keys{
+    StudyKey{"title", R"("Lower town, as it stands")", "none", "heads the report"},
+    StudyKey{"report_units", R"("us")", "us",
+             "us or si: the units of what is reported; the computation is in SI either way"},
+    StudyKey{"terrain.elevation", R"("dem.tif")", "asked for", "elevation raster"},
+    StudyKey{"terrain.band", "1", "1", "its band"},
+    StudyKey{"terrain.elevation_unit", R"("m")", "what the file says",
+             "m, ft or us survey ft, where the file does not say"},
+    StudyKey{"terrain.slope_window", R"("20 m")", "the larger of 20 m and 3 cells",
+             "length of path over which slope is taken"},
+    StudyKey{"terrain.vertical_step", R"("0.2 m")", "the largest of 0.2 m, the data's quantum and a tenth of the cell",
+             "the least fall the elevations can be trusted with"},
+    StudyKey{"terrain.pond_depth", R"("0.3 m")", "the larger of 0.3 m and vertical_step",
+             "deeper below its spill elevation a cell is ponded"},
+    StudyKey{"terrain.pond_speed", R"("2 m/s")", "2 m/s", "greatest speed across ponded cells, or \"unlimited\""},
+    StudyKey{"surface.cover", R"("cover.tif")", "asked for", "land-cover raster"},
+    StudyKey{"surface.band", "1", "1", "its band"},
+    StudyKey{"surface.book", R"("nlcd")", "asked for", "what its codes mean: nlcd, or a CSV file"},
+    StudyKey{"surface.fallback_class", "71", "none: unknown codes are an error",
+             "code that stands in for codes the book does not know and for cells without cover"},
+    StudyKey{"surface.path_length", R"("grid")", "grid", "grid: the length of a path is that of its steps"},
+    StudyKey{"points.file", R"("points.gpkg")", "none: points where flow leaves the data", "design points"},
+    StudyKey{"points.name", R"("label")", "none: points are numbered", "field that names them"},
+    StudyKey{"points.layer", R"("inlets")", "the first layer", "layer of the file"},
+    StudyKey{"points.auto_area", R"("1 %")", "1 % of the data",
+             "without a file: least area of a way out that becomes a point"},
+    StudyKey{"points.move_within", R"("5 m")", "the larger of 5 m and one cell",
+             "points move this far at most, to the cell of largest contributing area"},
+    StudyKey{"rain.two_year_24_hour", R"("3.6 in")", "asked for", "2-year 24-hour rainfall depth"},
+    StudyKey{"timing.sheet", R"("nrcs")", "nrcs", "formula of sheet flow"},
+    StudyKey{"timing.sheet_limit", R"("100 ft")", "100 ft", "distance from the divide at which sheet flow ends"},
+    StudyKey{"timing.sheet_limit_rule", R"("whichever first")", "whichever first",
+             "whichever first: sheet_limit or 100 ft sqrt(S)/n; stated: sheet_limit alone"},
+    StudyKey{"timing.shallow", R"("by cover")", "by cover",
+             "by cover or paved and unpaved: types of shallow concentrated flow"},
+    StudyKey{"timing.slope_floor.overland", "0.001", "0.001", "least slope of sheet and shallow flow; 0 is off"},
+    StudyKey{"timing.slope_floor.channel", "0.0001", "0.0001", "least slope of channels; 0 is off"},
+    StudyKey{"timing.channel_from", R"("5 ha")", "5 ha, never under 20 cells",
+             "contributing area where a channel begins, or \"mapped only\""},
+    StudyKey{"timing.channel.n", "0.045", "0.045", "Manning's n of channels"},
+    StudyKey{"timing.channel.hydraulic_radius", R"("0.4 m")", "from width and depth",
+             "one hydraulic radius for all channels"},
+    StudyKey{"timing.channel.width", R"("2.70 m * km2^0.352")", "2.70 m * km2^0.352", "top width by contributing area"},
+    StudyKey{"timing.channel.depth", R"("0.30 m * km2^0.213")", "0.30 m * km2^0.213",
+             "mean depth by contributing area"},
+    StudyKey{"timing.ignore_tail", R"("0 %")", "0 %", "share of a point's area, the slowest, that is left out"},
+    StudyKey{"timing.shortest_segment", R"("50 m")", "the larger of 50 m and 5 cells",
+             "a shorter run of one slope joins its neighbour"},
+    StudyKey{"output.folder", R"("result")", "result", "result folder"},
+    StudyKey{"output.rasters", R"("geotiff")", "geotiff", "format of the rasters"},
+};
+
+/// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
+constexpr std::array<std::string_view, 19> not_served{"terrain.channels",    "terrain.crossings",
+                                                      "terrain.barriers",    "terrain.keep_water",
+                                                      "surface.soil_group",  "points.area",
+                                                      "points.pipes",        "rain.file",
+                                                      "rain.table",          "rain.formula",
+                                                      "rain.return_periods", "timing.storm",
+                                                      "timing.channel.flow", "timing.raster_return_period",
+                                                      "timing.overrides",    "peaks",
+                                                      "uncertainty",         "scenario",
+                                                      "output.isochrones"};
+
+bool is_or_is_under(std::string_view key, std::string_view stem) {
+    return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));
+}
+
+std::string_view last_word(std::string_view key) {
+    const auto dot = key.rfind('.');
+    return dot == std::string_view::npos ? key : key.substr(dot + 1);
+}
+
+std::vector<std::string_view> key_names() {
+    std::vector<std::string_view> names;
+    for (const StudyKey& key : keys) names.push_back(key.key);
+    return names;
+}
+
+/// A key is often right but in the wrong section, so its last word is looked for before the nearest whole key.
+std::string suggestion(std::string_view key) {
+    const auto names = key_names();
+    const auto moved =
+        std::find_if(names.begin(), names.end(), [&](auto name) { return last_word(name) == last_word(key); });
+    if (moved != names.end()) return "; did you mean " + std::string(*moved) + "?";
+    const std::string whole = did_you_mean(key, names);
+    if (!whole.empty()) return whole;
+    std::vector<std::string_view> words;
+    for (const auto name : names) words.push_back(last_word(name));
+    const auto word = nearest_word(last_word(key), words);
+    if (!word) return "; remove it, or see the list of keys in the README";
+    return "; did you mean " +
+           std::string(names[static_cast<std::size_t>(std::find(words.begin(), words.end(), *word) - words.begin())]) +
+           "?";
+}
+
+}  // namespace
+
+std::span<const StudyKey> study_keys() {
+    return keys;
+}
+
+bool is_study_key(std::string_view key) {
+    return std::any_of(keys.begin(), keys.end(), [&](const StudyKey& known) { return known.key == key; });
+}
+
+bool is_study_section(std::string_view name) {
+    return std::any_of(keys.begin(), keys.end(),
+                       [&](const StudyKey& known) { return known.key != name && is_or_is_under(known.key, name); });
+}
+
+void refuse_study_key(std::string_view key, std::string_view where) {
+    const std::string begin = std::string(where) + ": ";
+    for (const std::string_view stem : not_served)
+        if (is_or_is_under(key, stem))
+            throw input_error(
+                begin + std::string(key) +
+                " is not known to this version of rillclock, which would compute without it; remove it to go on");
+    throw input_error(begin + std::string(key) + " is not a key of a study" + suggestion(key));
+}
+
+}  // namespace rillclock

@@ -1,0 +1,206 @@
+#include <array>
+#include <limits>
+#include <vector>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/core/nearest_word.hpp"
+#include "rillclock/core/number_text.hpp"
+#include "rillclock/rainfall/design_rain.hpp"
+#include "rillclock/study/study_keys.hpp"
+#include "rillclock/surface/cover_book.hpp"
+
+namespace rillclock {
+namespace {
+
+/// The form of a key, taken from its description, as an example in errors.
+std::string form_of(std::string_view key) {
+    for (const StudyKey& known : study_keys())
+        if (known.key == key) return std::string(known.form);
+    throw bug("no study key " + std::string(key));
+}
+
+std::string without_quotes(std::string form) {
+    std::erase(form, '"');
+    return form;
+}
+
+/// A value under its key: read as one kind of thing or another, or refused with the right form.
+class Stated {
+public:
+    Stated(std::string_view key, const StudyValue& value) : form_(form_of(key)), value_(value) {}
+
+    [[nodiscard]] Error fault(const std::string& what) const { return input_error(value_.subject + " " + what); }
+
+    [[nodiscard]] const std::string& text() const {
+        const auto* text = std::get_if<std::string>(&value_.value);
+        if (text == nullptr) throw fault("is " + shown() + "; write a text in quotes, such as " + form_);
+        if (text->empty()) throw fault("is empty; write for example " + form_ + ", or leave it out");
+        return *text;
+    }
+
+    [[nodiscard]] QuantityAsked asked(Sign sign = Sign::positive) const {
+        return {.subject = value_.subject, .example = without_quotes(form_), .sign = sign};
+    }
+
+    [[nodiscard]] Length length() const { return length_from_text(text(), asked()); }
+    [[nodiscard]] Speed speed() const { return speed_from_text(text(), asked()); }
+    [[nodiscard]] Area area() const { return area_from_text(text(), asked()); }
+    [[nodiscard]] PowerLaw power_law() const { return power_law_from_text(text(), asked()); }
+
+    [[nodiscard]] double fraction(Sign sign) const {
+        const double share = fraction_from_text(text(), asked(sign));
+        if (!(share < 1)) throw fault("is \"" + text() + "\"; it must lie under 100 %, such as " + form_);
+        return share;
+    }
+
+    /// A bare number in [least, greatest].
+    [[nodiscard]] double number(double least, double greatest) const {
+        double number = std::numeric_limits<double>::quiet_NaN();
+        if (const auto* real = std::get_if<double>(&value_.value)) number = *real;
+        if (const auto* whole = std::get_if<std::int64_t>(&value_.value)) number = static_cast<double>(*whole);
+        if (!(number >= least && number <= greatest))
+            throw fault("is " + shown() + "; write a number from " + significant(least) + " to " +
+                        significant(greatest) + " without quotes, such as " + form_);
+        return number;
+    }
+
+    [[nodiscard]] int whole_number(int least) const {
+        const auto* whole = std::get_if<std::int64_t>(&value_.value);
+        if (whole == nullptr || *whole < least || *whole > std::numeric_limits<int>::max())
+            throw fault("is " + shown() + "; write a whole number, " + std::to_string(least) +
+                        " or more, without quotes, such as " + form_);
+        return static_cast<int>(*whole);
+    }
+
+    /// The place of the text among the words that are served; `later` are words of the study file that are not.
+    [[nodiscard]] std::size_t choice(const std::vector<std::string_view>& served,
+                                     const std::vector<std::string_view>& later = {}) const {
+        for (std::size_t place = 0; place < served.size(); ++place)
+            if (text() == served[place]) return place;
+        std::string list;
+        for (const auto word : served) list += (list.empty() ? "" : " or ") + ("\"" + std::string(word) + "\"");
+        for (const auto word : later)
+            if (text() == word)
+                throw fault("is \"" + text() + "\", which this version of rillclock does not know; write " + list);
+        throw fault("is \"" + text() + "\"; write " + list + did_you_mean(text(), served));
+    }
+
+    [[nodiscard]] const std::string& subject() const { return value_.subject; }
+
+private:
+    [[nodiscard]] std::string shown() const {
+        struct Show {
+            std::string operator()(const std::string& text) const { return "\"" + text + "\""; }
+            std::string operator()(std::int64_t whole) const { return std::to_string(whole); }
+            std::string operator()(double real) const { return significant(real); }
+            std::string operator()(bool truth) const { return truth ? "true" : "false"; }
+        };
+        return std::visit(Show{}, value_.value);
+    }
+
+    std::string form_;
+    const StudyValue& value_;
+};
+
+Speed pond_speed(const Stated& stated) {
+    if (stated.text() == "unlimited") return metres_per_second(std::numeric_limits<double>::infinity());
+    return stated.speed();
+}
+
+std::string book(const Stated& stated) {
+    if (stated.text() == "worldcover")
+        throw stated.fault(
+            "is \"worldcover\", which this version of rillclock does not have; write \"nlcd\" or the name of a CSV "
+            "file of your own");
+    return stated.text();
+}
+
+std::optional<Area> channel_from(const Stated& stated) {
+    if (stated.text() == "mapped only") return std::nullopt;
+    return stated.area();
+}
+
+Length elevation_unit(const Stated& stated) {
+    constexpr std::array units{metres(1), feet(1), us_survey_feet(1)};
+    return units[stated.choice({"m", "ft", "us survey ft"})];
+}
+
+struct Setter {
+    std::string_view key;
+    void (*set)(Study&, const Stated&);
+};
+
+constexpr double least_n = 0.005;  // smoother than glass
+constexpr double greatest_n = 1.0;
+
+constexpr std::array setters{
+    Setter{"title", [](Study& s, const Stated& v) { s.title = v.text(); }},
+    Setter{"report_units",
+           [](Study& s, const Stated& v) {
+               s.report_units = v.choice({"us", "si"}) == 0 ? ReportUnits::us : ReportUnits::si;
+           }},
+    Setter{"terrain.elevation", [](Study& s, const Stated& v) { s.terrain.elevation = v.text(); }},
+    Setter{"terrain.band", [](Study& s, const Stated& v) { s.terrain.band = v.whole_number(1); }},
+    Setter{"terrain.elevation_unit", [](Study& s, const Stated& v) { s.terrain.elevation_unit = elevation_unit(v); }},
+    Setter{"terrain.slope_window", [](Study& s, const Stated& v) { s.terrain.slope_window = v.length(); }},
+    Setter{"terrain.vertical_step", [](Study& s, const Stated& v) { s.terrain.vertical_step = v.length(); }},
+    Setter{"terrain.pond_depth", [](Study& s, const Stated& v) { s.terrain.pond_depth = v.length(); }},
+    Setter{"terrain.pond_speed", [](Study& s, const Stated& v) { s.terrain.pond_speed = pond_speed(v); }},
+    Setter{"surface.cover", [](Study& s, const Stated& v) { s.surface.cover = v.text(); }},
+    Setter{"surface.band", [](Study& s, const Stated& v) { s.surface.band = v.whole_number(1); }},
+    Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = book(v); }},
+    Setter{"surface.fallback_class", [](Study& s, const Stated& v) { s.surface.fallback_class = v.whole_number(0); }},
+    Setter{"surface.path_length", [](Study&, const Stated& v) { (void)v.choice({"grid"}, {"unbiased"}); }},
+    Setter{"points.file", [](Study& s, const Stated& v) { s.points.file = v.text(); }},
+    Setter{"points.name", [](Study& s, const Stated& v) { s.points.name = v.text(); }},
+    Setter{"points.layer", [](Study& s, const Stated& v) { s.points.layer = v.text(); }},
+    Setter{"points.auto_area", [](Study& s, const Stated& v) { s.points.auto_area = v.fraction(Sign::positive); }},
+    Setter{"points.move_within",
+           [](Study& s, const Stated& v) {
+               s.points.move_within = length_from_text(v.text(), v.asked(Sign::not_negative));
+           }},
+    Setter{
+        "rain.two_year_24_hour",
+        [](Study& s, const Stated& v) { s.rain.two_year_24_hour = two_year_24_hour_from_text(v.text(), v.subject()); }},
+    Setter{"timing.sheet",
+           [](Study& s, const Stated& v) {
+               (void)v.choice({"nrcs"}, {"kinematic"});
+               s.timing.sheet = v.text();
+           }},
+    Setter{"timing.sheet_limit", [](Study& s, const Stated& v) { s.timing.sheet_limit = v.length(); }},
+    Setter{"timing.sheet_limit_rule",
+           [](Study& s, const Stated& v) {
+               const bool first = v.choice({"whichever first", "stated"}) == 0;
+               s.timing.sheet_limit_rule = first ? SheetLimitRule::length_or_index : SheetLimitRule::stated;
+           }},
+    Setter{"timing.shallow",
+           [](Study& s, const Stated& v) {
+               const bool by_cover = v.choice({"by cover", "paved and unpaved"}) == 0;
+               s.timing.shallow = by_cover ? ShallowRule::by_cover : ShallowRule::paved_and_unpaved;
+           }},
+    Setter{"timing.slope_floor.overland",
+           [](Study& s, const Stated& v) { s.timing.slope_floor_overland = v.number(0, 1); }},
+    Setter{"timing.slope_floor.channel",
+           [](Study& s, const Stated& v) { s.timing.slope_floor_channel = v.number(0, 1); }},
+    Setter{"timing.channel_from", [](Study& s, const Stated& v) { s.timing.channel_from = channel_from(v); }},
+    Setter{"timing.channel.n", [](Study& s, const Stated& v) { s.timing.channel.n = v.number(least_n, greatest_n); }},
+    Setter{"timing.channel.hydraulic_radius",
+           [](Study& s, const Stated& v) { s.timing.channel.hydraulic_radius = v.length(); }},
+    Setter{"timing.channel.width", [](Study& s, const Stated& v) { s.timing.channel.width = v.power_law(); }},
+    Setter{"timing.channel.depth", [](Study& s, const Stated& v) { s.timing.channel.depth = v.power_law(); }},
+    Setter{"timing.ignore_tail",
+           [](Study& s, const Stated& v) { s.timing.ignore_tail = v.fraction(Sign::not_negative); }},
+    Setter{"timing.shortest_segment", [](Study& s, const Stated& v) { s.timing.shortest_segment = v.length(); }},
+    Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
+    Setter{"output.rasters", [](Study&, const Stated& v) { (void)v.choice({"geotiff"}, {"cog"}); }},
+};
+
+}  // namespace
+
+void set_study_value(Study& study, std::string_view key, const StudyValue& value) {
+    for (const Setter& setter : setters)
+        if (setter.key == key) return setter.set(study, Stated(key, value));
+    throw bug("no study key " + std::string(key));
+}
+
+}  // namespace rillclock

@@ -1,0 +1,205 @@
+#include <algorithm>
+#include <array>
+#include <charconv>
+#include <map>
+
+#include "rillclock/core/csv_text.hpp"
+#include "rillclock/core/error.hpp"
+#include "rillclock/core/nearest_word.hpp"
+#include "rillclock/core/number_text.hpp"
+#include "rillclock/core/quantity_text.hpp"
+#include "rillclock/hydraulics/shallow_flow.hpp"
+#include "rillclock/surface/cover_book.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr std::array<std::string_view, 13> known_columns{
+    "code",           "name",  "n_low",         "n_typical",      "n_high", "shallow_type", "shallow_k_m_s",
+    "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source", "from_memory"};
+constexpr std::array<std::string_view, 4> needed_columns{"code", "name", "n_typical", "source"};
+
+/// One row of a book, asked for by column name; knows where it stands for the sake of errors.
+class BookRow {
+public:
+    BookRow(const CsvTable& table, const CsvRow& row, std::string_view file) : table_(table), row_(row), file_(file) {}
+
+    /// The field's text; empty where the book lacks the column.
+    [[nodiscard]] std::string text(std::string_view column) const {
+        const auto place = table_.column(column);
+        return place ? row_.fields[*place] : std::string();
+    }
+
+    [[nodiscard]] std::string needed_text(std::string_view column) const {
+        std::string field = text(column);
+        if (field.empty()) throw fault(column, "is empty; every class needs one");
+        return field;
+    }
+
+    [[nodiscard]] std::optional<double> number(std::string_view column) const {
+        const std::string field = text(column);
+        if (field.empty()) return std::nullopt;
+        return number_from_text(field, {.subject = place(column), .example = "0.15"});
+    }
+
+    [[nodiscard]] int code() const {
+        const std::string field = needed_text("code");
+        int code = 0;
+        const auto [end, error] = std::from_chars(field.data(), field.data() + field.size(), code);
+        if (error != std::errc() || end != field.data() + field.size())
+            throw fault("code", "is \"" + field + "\"; write the whole number the cover raster holds, such as 42");
+        return code;
+    }
+
+    [[nodiscard]] bool yes(std::string_view column, bool otherwise) const {
+        const std::string field = text(column);
+        if (field.empty()) return otherwise;
+        if (field != "yes" && field != "no") throw fault(column, "is \"" + field + "\"; write yes or no");
+        return field == "yes";
+    }
+
+    void require_empty(std::string_view column, const std::string& because) const {
+        if (!text(column).empty()) throw fault(column, "is given, but " + because + "; leave it empty");
+    }
+
+    [[nodiscard]] Error fault(std::string_view column, const std::string& what) const {
+        return input_error(place(column) + " " + what);
+    }
+
+private:
+    /// "town.csv, line 4, column 3 (n_low)".
+    [[nodiscard]] std::string place(std::string_view column) const {
+        const auto index = table_.column(column);
+        const std::string number = index ? ", column " + std::to_string(*index + 1) : std::string();
+        return std::string(file_) + ", line " + std::to_string(row_.line) + number + " (" + std::string(column) + ")";
+    }
+
+    const CsvTable& table_;
+    const CsvRow& row_;
+    std::string_view file_;
+};
+
+std::optional<Length> water_depth(const BookRow& row) {
+    const auto in_metres_column = row.number("water_depth_m");
+    if (in_metres_column) row.require_empty("water_depth_ft", "water_depth_m is given too");
+    if (in_metres_column) return metres(*in_metres_column);
+    const auto in_feet_column = row.number("water_depth_ft");
+    if (in_feet_column) return feet(*in_feet_column);
+    return std::nullopt;
+}
+
+void read_roughness(const BookRow& row, CoverClass& cover) {
+    const auto typical = row.number("n_typical");
+    if (!typical)
+        throw row.fault("n_typical",
+                        "is empty; every class but open water needs a roughness for sheet flow, such as 0.15");
+    if (!(*typical <= 2))
+        throw row.fault("n_typical", "is " + significant(*typical) + "; a roughness lies between 0 and 2");
+    cover.n_typical = *typical;
+    cover.n_low = row.number("n_low").value_or(*typical);
+    cover.n_high = row.number("n_high").value_or(*typical);
+    if (!(cover.n_low <= cover.n_typical))
+        throw row.fault("n_low", "is " + significant(cover.n_low) + ", above n_typical " +
+                                     significant(cover.n_typical) + "; write low, typical, high in ascending order");
+    if (!(cover.n_high >= cover.n_typical))
+        throw row.fault("n_high", "is " + significant(cover.n_high) + ", below n_typical " +
+                                      significant(cover.n_typical) + "; write low, typical, high in ascending order");
+}
+
+std::optional<Speed> stated_k(const BookRow& row) {
+    const auto si = row.number("shallow_k_m_s");
+    if (si) row.require_empty("shallow_k_ft_s", "shallow_k_m_s is given too");
+    if (si) return metres_per_second(*si);
+    const auto us = row.number("shallow_k_ft_s");
+    if (us) return feet_per_second(*us);
+    return std::nullopt;
+}
+
+Error unknown_type(const BookRow& row, const std::string& name) {
+    std::vector<std::string_view> names;
+    std::string list;
+    for (const ShallowType& type : shallow_types()) {
+        names.push_back(type.name);
+        list += (list.empty() ? "" : ", ") + std::string(type.name);
+    }
+    return row.fault("shallow_type", "is \"" + name + "\"; write one of: " + list + did_you_mean(name, names));
+}
+
+void read_shallow(const BookRow& row, CoverClass& cover) {
+    const std::string name = row.text("shallow_type");
+    const auto k = stated_k(row);
+    if (k) {
+        row.require_empty("shallow_type", "the velocity at slope 1 is given too");
+        cover.shallow_k = *k;
+        cover.shallow_type = "stated";
+        return;
+    }
+    if (name.empty())
+        throw row.fault("shallow_type",
+                        "is empty; every class but open water needs a type, such as short-grass pasture, or a "
+                        "velocity at slope 1 in shallow_k_m_s or shallow_k_ft_s");
+    const ShallowType* type = find_shallow_type(name);
+    if (type == nullptr) throw unknown_type(row, name);
+    cover.shallow_k = type->k();
+    cover.shallow_type = name;
+}
+
+void require_no_ground(const BookRow& row) {
+    for (const auto column : {"n_low", "n_typical", "n_high", "shallow_type", "shallow_k_m_s", "shallow_k_ft_s"})
+        row.require_empty(column, "a water depth makes the class open water");
+}
+
+CoverClass cover_class(const BookRow& row) {
+    CoverClass cover{.code = row.code(), .name = row.needed_text("name")};
+    cover.water_depth = water_depth(row);
+    cover.source = row.needed_text("source");
+    cover.from_memory = row.yes("from_memory", false);
+    if (cover.is_open_water()) {
+        require_no_ground(row);
+    } else {
+        read_roughness(row, cover);
+        read_shallow(row, cover);
+    }
+    cover.paved = row.yes("paved", cover.shallow_type == "pavement");
+    return cover;
+}
+
+void require_known_columns(const CsvTable& table, std::string_view file) {
+    for (std::size_t i = 0; i < table.header.size(); ++i) {
+        const std::string& column = table.header[i];
+        const std::string where =
+            std::string(file) + ", header, column " + std::to_string(i + 1) + ": \"" + column + "\" ";
+        if (std::find(known_columns.begin(), known_columns.end(), column) == known_columns.end())
+            throw input_error(where + "is not a column of a cover book" + did_you_mean(column, known_columns));
+        if (table.column(column) != i) throw input_error(where + "is there twice; keep one");
+    }
+}
+
+void require_needed_columns(const CsvTable& table, std::string_view file) {
+    for (const std::string_view column : needed_columns)
+        if (!table.column(column))
+            throw input_error(std::string(file) + " has no column " + std::string(column) +
+                              "; a cover book begins with a header such as "
+                              "code,name,n_low,n_typical,n_high,shallow_type,water_depth_m,source");
+}
+
+}  // namespace
+
+CoverBook parse_cover_book(std::string_view text, std::string_view file) {
+    const CsvTable table = parse_csv(text, file);
+    require_known_columns(table, file);
+    require_needed_columns(table, file);
+    std::vector<CoverClass> classes;
+    std::map<int, int> line_of_code;
+    for (const CsvRow& csv : table.rows) {
+        const BookRow row(table, csv, file);
+        classes.push_back(cover_class(row));
+        const auto [first, is_new] = line_of_code.emplace(classes.back().code, csv.line);
+        if (!is_new)
+            throw row.fault("code", "is " + std::to_string(first->first) + ", which line " +
+                                        std::to_string(first->second) + " has already; give each code one row");
+    }
+    return {std::string(file), std::move(classes)};
+}
+
+}  // namespace rillclock
