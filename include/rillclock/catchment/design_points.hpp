@@ -1,0 +1,51 @@
+#pragma once
+
+#include <span>
+#include <string>
+#include <vector>
+
+#include "rillclock/core/notice.hpp"
+#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/raster/ground.hpp"
+
+namespace rillclock {
+
+/// A point as the user stated it, in the DEM's coordinates.
+struct StatedPoint {
+    std::string name;
+    Place place;
+};
+
+/// A point settled on its cell.
+struct DesignPoint {
+    std::string name;
+    Cell cell = no_cell;
+    Place stated = {};              ///< where the user put it; the cell's centre where it was found
+    Length moved;                   ///< from there to the cell's centre
+    bool found = false;             ///< by contributing area, not stated
+};
+
+struct PlacedPoints {
+    std::vector<DesignPoint> points;   ///< numbered from 1 in this order, which is that of the file
+    Notices notices;
+};
+
+struct PointGround {
+    const FlowForest& forest;
+    const Ground& ground;
+    const Grid& grid;
+    const Raster<FixedArea>& contributing_area;
+};
+
+/// Moves each point to the cell of largest contributing area among its own and those whose centres lie within `move_within` of it;
+/// of equal ones to the nearest, then to the smaller index.
+///
+/// Points off the data, on void ground, or landing on the cell of an earlier point are left out, each with a notice; so are told
+/// moves, and moves that change the area tenfold. Throws an input error where no point is left.
+[[nodiscard]] PlacedPoints place_points(std::span<const StatedPoint> stated, const PointGround& on, Length move_within);
+
+/// Points where water leaves the data with at least `least_share` of the data's area upstream, the largest first; the
+/// single largest where none has as much.
+[[nodiscard]] PlacedPoints find_points(const PointGround& on, double least_share);
+
+}  // namespace rillclock

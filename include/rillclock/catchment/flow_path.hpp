@@ -1,0 +1,44 @@
+#pragma once
+
+#include <span>
+#include <vector>
+
+#include "rillclock/travel/travel_field.hpp"
+
+namespace rillclock {
+
+/// The cells from `head` down to `end`, both included. `head` must drain through `end`.
+[[nodiscard]] std::vector<Cell> flow_path(const FlowForest& forest, Cell head, Cell end);
+
+/// One homogeneous piece of a flow path: a part of the step out of one of its cells.
+struct PathPiece {
+    StepPart part;
+    std::size_t position = 0;     ///< of the cell in the path
+    double share_from = 0.0;      ///< of the step, where the piece begins and ends
+    double share_to = 1.0;
+    std::uint8_t surface = 0;     ///< position of the surface class
+    FixedArea area = 0;           ///< contributing area at the cell
+};
+
+/// The pieces of a path, in order; the last cell has no step and gives none.
+[[nodiscard]] std::vector<PathPiece> path_pieces(const TravelInputs& inputs, const TravelField& field,
+                                                 const TravelRules& rules, std::span<const Cell> path);
+
+/// What stands for a whole path beside its segments.
+struct PathSummary {
+    FixedLength length = 0;
+    StepTime time;
+    double fall_m = 0.0;               ///< of spill elevation, head to end
+    double slope_length_m = 0.0;       ///< Σ S·d: the fall that the slopes used would make
+    double ponded_length_m = 0.0;
+    double floor_length_m = 0.0;       ///< where the slope is the floor
+
+    /// Σ S·d over the real fall; 1 on a plane. NaN where there is no fall.
+    [[nodiscard]] double fall_ratio() const;
+    [[nodiscard]] double share_of_length(double part_m) const;
+};
+
+[[nodiscard]] PathSummary summary_of(const TravelInputs& inputs, const TravelField& field, const TravelRules& rules,
+                                     std::span<const Cell> path);
+
+}  // namespace rillclock

@@ -1,0 +1,50 @@
+#pragma once
+
+#include <array>
+#include <vector>
+
+#include "rillclock/catchment/arrivals.hpp"
+#include "rillclock/catchment/segments.hpp"
+
+namespace rillclock {
+
+/// A flow path to a point, with what stands for it.
+struct PointPath {
+    std::vector<Cell> cells;         ///< from the head to the point's cell
+    std::vector<PathPiece> pieces;
+    std::vector<Segment> segments;
+    PathSummary summary;
+    double seconds = 0.0;            ///< under the point's storm
+    double end_to_end_s = 0.0;       ///< the sum of what end-to-end slopes would give
+};
+
+/// Shares of the area whose time of arrival every point tells.
+inline constexpr std::array<double, 4> told_shares = {0.50, 0.85, 0.95, 0.99};
+
+/// All that is known of one design point.
+struct Outlet {
+    PointNumber number = 0;
+    DesignPoint point;
+    PointNumber next = 0;                          ///< the next point below; 0 none
+    FixedArea area = 0;                            ///< of the whole catchment
+    FixedArea own_area = 0;                        ///< of the point's own subarea
+    std::int64_t border_cells = 0;                 ///< catchment cells beside the edge or a void, apart from those at the point
+    std::array<double, told_shares.size()> arrival_s{};   ///< when `told_shares` of the area have arrived
+    double greatest_s = 0.0;                       ///< when all of it has
+    PointPath governing;                           ///< its time is the time of concentration
+    PointPath longest;
+
+    [[nodiscard]] double time_of_concentration_s() const { return governing.seconds; }
+    [[nodiscard]] bool touches_edge() const { return border_cells > 0; }
+};
+
+struct OutletRules {
+    double ignore_tail = 0.0;      ///< share of the area, last to arrive, that is left out
+    SegmentRules segments;
+};
+
+/// Works out every point, in the order of their numbers. Cost: one pass over the cells, and the lengths of the paths.
+[[nodiscard]] std::vector<Outlet> outlets_of(const ArrivalInputs& inputs, const TravelRules& rules,
+                                             std::span<const DesignPoint> points, const OutletRules& outlet_rules);
+
+}  // namespace rillclock

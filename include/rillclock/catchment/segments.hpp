@@ -1,0 +1,63 @@
+#pragma once
+
+#include <cstdint>
+#include <optional>
+#include <span>
+#include <vector>
+
+#include "rillclock/catchment/flow_path.hpp"
+
+namespace rillclock {
+
+/// A row of the calculation sheet: a stretch of a flow path that one formula times.
+///
+/// Ponded cells do not cut a path. Their length and time stand apart (`pond_…`), and what the formula needs (`length_m`, slopes,
+/// radii, indices) is of the rest, so that time = formula + pond to the last unit:
+///   sheet    s · (A(u₁) − A(u₀)), with S_e = (n·L/(u₁−u₀))²
+///   shallow  L / (k·√S_e), with S_e^-½ = Σ d·S^-½ / L                          (Taylor & Schwarz 1952)
+///   channel  n·L / (R_e^⅔·√S_e), with R_e^-⅔ = Σ d·R^-⅔ / L and S_e^-½ = Σ d·R^-⅔·S^-½ / Σ d·R^-⅔
+///   water    L / √(g·depth)
+/// S_e lies between the least and the greatest slope of its cells.
+struct Segment {
+    Regime regime = Regime::none;
+    std::optional<std::uint8_t> surface;   ///< position of the surface class; none in channels
+    std::size_t first_piece = 0;           ///< among the path's pieces
+    std::size_t last_piece = 0;
+    double length_m = 0.0;                 ///< without ponded cells
+    double pond_length_m = 0.0;
+    StepTime time;                         ///< pond included
+    StepTime pond_time;
+    double slope_equivalent = 0.0;         ///< 0 where all is ponded, and on water
+    double slope_least = 0.0;
+    double slope_greatest = 0.0;
+    double index_from_m = 0.0;             ///< sheet: u₀ and u₁
+    double index_to_m = 0.0;
+    double radius_equivalent_m = 0.0;      ///< channel
+    double radius_from_m = 0.0;
+    double radius_to_m = 0.0;
+    FixedArea area_from = 0;               ///< contributing area at both ends
+    FixedArea area_to = 0;
+    double fall_m = 0.0;                   ///< of spill elevation, end to end
+    double end_to_end_s = 0.0;             ///< time that the end-to-end slope alone would give
+
+    [[nodiscard]] double whole_length_m() const { return length_m + pond_length_m; }
+    [[nodiscard]] double end_to_end_slope() const { return whole_length_m() > 0 ? fall_m / whole_length_m() : 0.0; }
+};
+
+struct SegmentRules {
+    Length shortest = metres(50);      ///< a run of one slope class shorter than this joins its neighbour
+    double shortest_share = 0.0;       ///< of the path's length, where that is more
+    double storm_factor = 1.0;
+};
+
+/// Cuts a path where the regime changes, the surface class (not in channels), where u jumps in sheet flow, where a channel's area has
+/// grown 1.5 ×, and where the slope class changes for longer than the shortest segment. Sheet flow is not cut by slope: its
+/// formula is a function of u alone, and exact over any mixture of slopes.
+[[nodiscard]] std::vector<Segment> segments_of(const TravelInputs& inputs, const TravelField& field,
+                                               const TravelRules& rules, std::span<const Cell> path,
+                                               const SegmentRules& segment_rules);
+
+/// The slope classes' upper bounds, rise over run.
+[[nodiscard]] std::span<const double> slope_class_bounds();
+
+}  // namespace rillclock

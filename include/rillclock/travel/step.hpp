@@ -1,0 +1,74 @@
+#pragma once
+
+#include <cstdint>
+
+#include "rillclock/core/fixed_point.hpp"
+#include "rillclock/travel/regime.hpp"
+#include "rillclock/travel/slope_ahead.hpp"
+#include "rillclock/travel/surface_table.hpp"
+
+namespace rillclock {
+
+/// The time of a step as {fixed part, storm coefficient}: its time under a storm factor s is storm · s + fixed.
+struct StepTime {
+    FixedTime fixed = 0;
+    FixedTime storm = 0;
+
+    StepTime& operator+=(const StepTime& other) {
+        fixed += other.fixed;
+        storm += other.storm;
+        return *this;
+    }
+    bool operator==(const StepTime&) const = default;
+    [[nodiscard]] Duration under(double storm_factor) const {
+        return seconds((static_cast<double>(storm) * storm_factor + static_cast<double>(fixed)) / fixed_units_per_one);
+    }
+};
+[[nodiscard]] inline StepTime operator+(StepTime a, const StepTime& b) { return a += b; }
+[[nodiscard]] inline StepTime operator-(const StepTime& a, const StepTime& b) {
+    return {a.fixed - b.fixed, a.storm - b.storm};
+}
+
+/// A cell's own view of the step out of it: all that the hydraulics may know.
+struct StepView {
+    FixedLength length = 0;                       ///< of the step; 0 at a root
+    double slope = 0.0;                           ///< slope ahead
+    const SurfaceHydraulics* surface = nullptr;
+    GroundKind kind = GroundKind::overland;       ///< `water` only where it is not a river
+    double ponded_m = 0.0;                        ///< depth of spill elevation above the ground
+    FixedArea area = 0;                           ///< contributing area
+    FixedLength from_divide = 0;                  ///< distance from the divide at the cell
+    FixedLength sheet_index = 0;                  ///< sheet index u at the cell
+};
+
+/// One homogeneous part of a step. A step has one, or two where sheet flow ends within it.
+struct StepPart {
+    Regime regime = Regime::none;
+    bool ponded = false;              ///< carried by wave celerity, whatever the regime
+    double length_m = 0.0;
+    double slope = 0.0;
+    double index_from_m = 0.0;        ///< sheet index at both ends; sheet only
+    double index_to_m = 0.0;
+    double radius_m = 0.0;            ///< hydraulic radius; channel only
+    double speed_m_per_s = 0.0;       ///< of all but unponded sheet flow
+    StepTime time;
+};
+
+struct StepParts {
+    StepPart first;
+    StepPart second;   ///< regime none where there is no second part
+    [[nodiscard]] StepTime time() const { return first.time + second.time; }
+};
+
+/// What the step adds to the sheet index: n·d/√S, in fixed point of metres; 0 on open water.
+[[nodiscard]] FixedLength sheet_index_step(const StepView& step);
+
+/// Cuts a step by regime and gives each part its time. Precedence: channel and water by `kind`, then sheet flow as far as both limits
+/// reach, then shallow flow. A sheet part takes T(u₁) − T(u₀), so that steps add up to the handbook's number. Ponded ground carries
+/// water at √(g·depth), at most at the stated speed, where that is faster than its regime.
+[[nodiscard]] StepParts step_parts(const StepView& step, const TravelRules& rules);
+
+/// The regime of a cell as the raster shows it: that of the larger part of its step.
+[[nodiscard]] Regime main_regime(const StepView& step, const TravelRules& rules);
+
+}  // namespace rillclock

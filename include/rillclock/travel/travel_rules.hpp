@@ -1,0 +1,58 @@
+#pragma once
+
+#include <optional>
+
+#include "rillclock/core/quantity.hpp"
+#include "rillclock/hydraulics/channel_size.hpp"
+#include "rillclock/hydraulics/manning.hpp"
+#include "rillclock/hydraulics/sheet_flow.hpp"
+
+namespace rillclock {
+
+/// The least slope any rule works with: where a study turns a floor off, so that no time is infinite.
+inline constexpr double least_slope = 1e-6;
+
+/// Where the slope of a step is read, and from what fall on it is believed. See slope_ahead.hpp.
+struct SlopeRules {
+    Length window = metres(20);
+    Length vertical_step = metres(0.2);
+    double overland_floor = 0.001;  ///< after KC et al. 2014
+    double channel_floor = 0.0001;
+};
+
+/// How sheet flow is timed and where it ends.
+struct SheetRules {
+    SheetFormula formula = nrcs_sheet_formula();
+    double storm_factor = 1.0;                     ///< s of the study's own storm
+    Length limit = feet(100);                      ///< of the distance from the divide
+    Length index_limit = mccuen_spiess_index;      ///< of u; infinite where only `limit` counts
+};
+
+/// Manning channels: one stated hydraulic radius, or R = W·D/(W+2D) from top width and mean depth by area.
+struct ChannelRules {
+    double n = 0.045;
+    std::optional<Length> hydraulic_radius;
+    PowerLaw width = channel_sizes().front().width;
+    PowerLaw depth = channel_sizes().front().depth;
+    /// Area from which a cell is a channel; none where only mapped lines are.
+    std::optional<Area> from_area = hectares(5);
+
+    [[nodiscard]] Length radius_at(Area area) const {
+        return hydraulic_radius ? *hydraulic_radius : hydraulic_radius_of(width(area), depth(area));
+    }
+};
+
+/// Ponded cells carry water at the wave celerity of the depth above the ground.
+struct PondRules {
+    Length depth = metres(0.3);              ///< from which a cell counts as ponded
+    Speed speed = metres_per_second(2.0);    ///< the most it may be; infinite for no cap
+};
+
+struct TravelRules {
+    SlopeRules slope;
+    SheetRules sheet;
+    ChannelRules channel;
+    PondRules pond;
+};
+
+}  // namespace rillclock

@@ -1,0 +1,76 @@
+#include "rillclock/catchment/flow_path.hpp"
+
+#include <algorithm>
+#include <limits>
+
+#include "rillclock/core/error.hpp"
+
+namespace rillclock {
+namespace {
+
+bool is_on_floor(const PathPiece& piece, const SlopeRules& rules) {
+    const bool overland = piece.part.regime == Regime::sheet || piece.part.regime == Regime::shallow;
+    const double floor = std::max(overland ? rules.overland_floor : rules.channel_floor, least_slope);
+    // Slopes are kept in single precision; so is the floor where it is one.
+    return piece.part.slope <= static_cast<double>(static_cast<float>(floor));
+}
+
+PathPiece piece_of(const StepPart& part, std::size_t position, const StepView& step, std::uint8_t surface) {
+    PathPiece piece;
+    piece.part = part;
+    piece.position = position;
+    piece.surface = surface;
+    piece.area = step.area;
+    return piece;
+}
+
+}  // namespace
+
+std::vector<Cell> flow_path(const FlowForest& forest, Cell head, Cell end) {
+    std::vector<Cell> path{head};
+    while (path.back() != end) {
+        const Cell down = forest.downstream(path.back());
+        if (down == no_cell) throw bug("a flow path misses the point it was asked for");
+        path.push_back(down);
+    }
+    return path;
+}
+
+std::vector<PathPiece> path_pieces(const TravelInputs& in, const TravelField& field, const TravelRules& rules,
+                                   std::span<const Cell> path) {
+    std::vector<PathPiece> pieces;
+    for (std::size_t position = 0; position + 1 < path.size(); ++position) {
+        const StepView step = step_view(in, field, path[position]);
+        const StepParts parts = step_parts(step, rules);
+        const std::uint8_t surface = in.surface.index[path[position]];
+        pieces.push_back(piece_of(parts.first, position, step, surface));
+        if (parts.second.regime == Regime::none) continue;
+        const double share = parts.first.length_m / from_fixed(step.length);
+        pieces.back().share_to = share;
+        pieces.push_back(piece_of(parts.second, position, step, surface));
+        pieces.back().share_from = share;
+    }
+    return pieces;
+}
+
+double PathSummary::fall_ratio() const {
+    return fall_m > 0 ? slope_length_m / fall_m : std::numeric_limits<double>::quiet_NaN();
+}
+
+double PathSummary::share_of_length(double part_m) const { return length > 0 ? part_m / from_fixed(length) : 0.0; }
+
+PathSummary summary_of(const TravelInputs& in, const TravelField& field, const TravelRules& rules,
+                       std::span<const Cell> path) {
+    PathSummary summary;
+    summary.length = field.flow_distance[path.front()] - field.flow_distance[path.back()];
+    summary.time = field.time_to_root(path.front()) - field.time_to_root(path.back());
+    summary.fall_m = (field.spill[path.front()] - field.spill[path.back()]) * in.metres_per_elevation_unit;
+    for (const PathPiece& piece : path_pieces(in, field, rules, path)) {
+        summary.slope_length_m += piece.part.slope * piece.part.length_m;
+        if (piece.part.ponded) summary.ponded_length_m += piece.part.length_m;
+        if (is_on_floor(piece, rules.slope)) summary.floor_length_m += piece.part.length_m;
+    }
+    return summary;
+}
+
+}  // namespace rillclock

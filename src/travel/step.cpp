@@ -1,0 +1,118 @@
+#include "rillclock/travel/step.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+#include "rillclock/hydraulics/open_water.hpp"
+#include "rillclock/hydraulics/shallow_flow.hpp"
+
+namespace rillclock {
+namespace {
+
+/// Share of the step, from its upper end, over which sheet flow still runs.
+double sheet_share(const StepView& step, const SheetRules& sheet) {
+    if (step.kind != GroundKind::overland) return 0.0;
+    const double length_left = in_metres(sheet.limit) - from_fixed(step.from_divide);
+    const double index_left = in_metres(sheet.index_limit) - from_fixed(step.sheet_index);
+    if (!(length_left > 0 && index_left > 0)) return 0.0;
+    const double length = from_fixed(step.length);
+    const double index = from_fixed(sheet_index_step(step));
+    const double by_length = length > length_left ? length_left / length : 1.0;
+    const double by_index = index > index_left ? index_left / index : 1.0;
+    return std::min(by_length, by_index);
+}
+
+FixedTime storm_time(const SheetRules& sheet, double index_m) {
+    return to_fixed(in_seconds(sheet.formula.at_unit_storm(metres(index_m))));
+}
+
+StepPart sheet_part(const StepView& step, const SheetRules& sheet, double share) {
+    const auto index_step = static_cast<double>(sheet_index_step(step));
+    const FixedLength index_to = step.sheet_index + std::llround(share * index_step);
+    StepPart part;
+    part.regime = Regime::sheet;
+    part.length_m = share * from_fixed(step.length);
+    part.slope = step.slope;
+    part.index_from_m = from_fixed(step.sheet_index);
+    part.index_to_m = from_fixed(index_to);
+    // Both ends are rounded alike in the cell before and after, so that times telescope along a path.
+    part.time.storm = storm_time(sheet, part.index_to_m) - storm_time(sheet, part.index_from_m);
+    return part;
+}
+
+StepPart moving_part(const StepView& step, Regime regime, double length_m, Speed speed) {
+    StepPart part;
+    part.regime = regime;
+    part.length_m = length_m;
+    part.slope = step.slope;
+    part.speed_m_per_s = in_metres_per_second(speed);
+    part.time.fixed = to_fixed(length_m / part.speed_m_per_s);
+    return part;
+}
+
+StepPart shallow_part(const StepView& step, double length_m) {
+    return moving_part(step, Regime::shallow, length_m, shallow_velocity(step.surface->shallow_k, step.slope));
+}
+
+StepPart channel_part(const StepView& step, const ChannelRules& channel) {
+    const Length radius = channel.radius_at(square_metres(from_fixed_area(step.area)));
+    const Speed speed = manning_velocity({.n = channel.n, .hydraulic_radius = radius, .slope = step.slope});
+    StepPart part = moving_part(step, Regime::channel, from_fixed(step.length), speed);
+    part.radius_m = in_metres(radius);
+    return part;
+}
+
+StepPart water_part(const StepView& step) {
+    return moving_part(step, Regime::water, from_fixed(step.length), wave_celerity(step.surface->water_depth.value()));
+}
+
+/// Gives a part on ponded ground the wave's time where that is the shorter one.
+void hasten_over_pond(const StepView& step, const TravelRules& rules, StepPart& part) {
+    if (!(step.ponded_m > in_metres(rules.pond.depth)) || part.regime == Regime::none) return;
+    const Speed speed = std::min(wave_celerity(metres(step.ponded_m)), rules.pond.speed);
+    const double wave_s = part.length_m / in_metres_per_second(speed);
+    if (!(wave_s < in_seconds(part.time.under(rules.sheet.storm_factor)))) return;
+    part.ponded = true;
+    part.speed_m_per_s = in_metres_per_second(speed);
+    part.time = {.fixed = to_fixed(wave_s), .storm = 0};
+}
+
+StepParts overland_parts(const StepView& step, const TravelRules& rules) {
+    const double share = sheet_share(step, rules.sheet);
+    if (share <= 0.0) return {.first = shallow_part(step, from_fixed(step.length)), .second = {}};
+    StepParts parts{.first = sheet_part(step, rules.sheet, share), .second = {}};
+    if (share < 1.0) parts.second = shallow_part(step, (1.0 - share) * from_fixed(step.length));
+    return parts;
+}
+
+StepParts parts_by_regime(const StepView& step, const TravelRules& rules) {
+    switch (step.kind) {
+        case GroundKind::overland: return overland_parts(step, rules);
+        case GroundKind::channel: return {.first = channel_part(step, rules.channel), .second = {}};
+        case GroundKind::water: return {.first = water_part(step), .second = {}};
+    }
+    return {};
+}
+
+}  // namespace
+
+FixedLength sheet_index_step(const StepView& step) {
+    if (step.length == 0 || step.surface->water_depth) return 0;
+    return to_fixed(step.surface->sheet_n * from_fixed(step.length) / std::sqrt(step.slope));
+}
+
+StepParts step_parts(const StepView& step, const TravelRules& rules) {
+    if (step.length == 0) return {};
+    StepParts parts = parts_by_regime(step, rules);
+    hasten_over_pond(step, rules, parts.first);
+    hasten_over_pond(step, rules, parts.second);
+    return parts;
+}
+
+Regime main_regime(const StepView& step, const TravelRules& rules) {
+    if (step.kind == GroundKind::channel) return Regime::channel;
+    if (step.kind == GroundKind::water) return Regime::water;
+    return sheet_share(step, rules.sheet) >= 0.5 ? Regime::sheet : Regime::shallow;
+}
+
+}  // namespace rillclock
