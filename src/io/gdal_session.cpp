@@ -34,9 +34,8 @@ struct MessageLog {
 };
 
 using Setting = std::pair<const char*, const char*>;
-constexpr std::array<Setting, 3> settings = {{{"GDAL_VRT_ENABLE_PYTHON", "NO"},
-                                              {"CPL_VSIL_CURL_ALLOWED_FILENAME", "/nonexistent"},
-                                              {"OGR_GEOJSON_MAX_OBJ_SIZE", "200"}}};
+constexpr std::array<Setting, 2> settings = {{{"GDAL_VRT_ENABLE_PYTHON", "NO"},
+                                              {"CPL_VSIL_CURL_ALLOWED_FILENAME", "/nonexistent"}}};
 
 /// What all sessions of the process share.
 struct Shared {

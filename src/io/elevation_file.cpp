@@ -1,0 +1,224 @@
+#include "rillclock/io/elevation_file.hpp"
+
+#include <algorithm>
+#include <array>
+#include <cmath>
+#include <cstdio>
+#include <fstream>
+#include <iterator>
+#include <limits>
+#include <utility>
+
+#include "raster_file.hpp"
+#include "rillclock/core/error.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr double farthest_from_sea_level_m = 1e5;
+
+std::string number(double value) {
+    std::array<char, 40> text{};
+    std::snprintf(text.data(), text.size(), "%.10g", value);
+    return text.data();
+}
+
+class ElevationSource : public NotedSource<double> {
+public:
+    ElevationSource(RasterFile file, ElevationFormat format) : file_(std::move(file)), format_(std::move(format)) {}
+
+    [[nodiscard]] const Grid& grid() const override { return file_.grid(); }
+
+    void read(const Window& window, std::span<double> values) override {
+        not_finite_ += file_.read(window, values);
+        for (double& value : values) value = checked(value);
+    }
+
+    [[nodiscard]] Notices notices() const override {
+        Notices notices;
+        if (not_finite_ > 0)
+            notices.push_back({.code = "elevation-not-finite",
+                               .text = std::to_string(not_finite_) + " cells of the " + file_.called() +
+                                       " are no finite numbers and are taken as void.",
+                               .value = static_cast<double>(not_finite_)});
+        if (impossible_ > 0)
+            notices.push_back({.code = "elevation-impossible",
+                               .text = std::to_string(impossible_) + " cells of the " + file_.called() +
+                                       " lie more than 100 km above or below zero and are taken as void; look at the "
+                                       "unit, the scale and the nodata value.",
+                               .value = static_cast<double>(impossible_),
+                               .threshold = farthest_from_sea_level_m});
+        return notices;
+    }
+
+private:
+    [[nodiscard]] double checked(double stored) {
+        if (std::isnan(stored)) return stored;
+        if (std::isinf(stored)) {
+            ++not_finite_;
+            return std::numeric_limits<double>::quiet_NaN();
+        }
+        const double elevation_m = (stored * format_.scale + format_.offset) * format_.unit.metres_per_unit;
+        if (std::abs(elevation_m) <= farthest_from_sea_level_m) return stored + 0.0;  // -0.0 becomes 0.0
+        ++impossible_;
+        return std::numeric_limits<double>::quiet_NaN();
+    }
+
+    RasterFile file_;
+    ElevationFormat format_;
+    std::int64_t not_finite_ = 0;
+    std::int64_t impossible_ = 0;
+};
+
+void check_kind(const RasterFile& file) {
+    GDALRasterBand& band = file.band();
+    if (band.GetColorTable() == nullptr && band.GetColorInterpretation() != GCI_PaletteIndex) return;
+    throw input_error("The " + file.called() +
+                      " is a picture with a palette, whose numbers are colours and not elevations; get the elevations "
+                      "themselves from whoever made it.");
+}
+
+void set_scale(const RasterFile& file, ElevationFormat& format, Notices& notices) {
+    format.scale = file.band().GetScale();
+    format.offset = file.band().GetOffset();
+    if (!(format.scale > 0.0) || !std::isfinite(format.scale) || !std::isfinite(format.offset))
+        throw input_error("The " + file.called() + " has scale " + number(format.scale) + " and offset " +
+                          number(format.offset) + ", but a scale must be above 0; set it with gdal_edit.py -scale 1 -offset 0.");
+    if (format.scale == 1.0 && format.offset == 0.0) return;
+    notices.push_back({.code = "elevation-scaled",
+                       .text = "Elevations are the values of the " + file.called() + " times " + number(format.scale) +
+                               " plus " + number(format.offset) + ", as the file says."});
+}
+
+std::string line_to_add(const char* unit) { return std::string("elevation_unit = \"") + unit + "\""; }
+
+/// A unit and who says so.
+struct Statement {
+    std::string by;
+    LengthUnit unit;
+};
+
+std::optional<Statement> stated_by_study(const std::optional<std::string>& text) {
+    if (!text) return std::nullopt;
+    const std::optional<LengthUnit> unit = length_unit_named(*text);
+    if (!unit)
+        throw input_error("elevation_unit = \"" + *text + "\" is no unit of length; write \"m\", \"ft\" or \"us survey ft\".");
+    return Statement{"the study", *unit};
+}
+
+std::optional<Statement> stated_by_band(const RasterFile& file, bool study_states_it) {
+    const std::string text = file.band().GetUnitType();
+    if (text.empty() || text == "unknown") return std::nullopt;
+    const std::optional<LengthUnit> unit = length_unit_named(text);
+    if (!unit && !study_states_it)
+        throw input_error("The " + file.called() + " gives its elevations in \"" + text +
+                          "\", which is no unit of length that is known; state it in the study: " + line_to_add("m") + " or " +
+                          line_to_add("ft") + ".");
+    return unit ? std::optional(Statement{"the file's band", *unit}) : std::nullopt;
+}
+
+std::optional<Statement> stated_by_system(const ReferenceSystem& system) {
+    if (!system.vertical_unit()) return std::nullopt;
+    return Statement{"the vertical part of its reference system", *system.vertical_unit()};
+}
+
+/// The first that is known; throws where two contradict each other.
+std::optional<Statement> agreed(const RasterFile& file, const std::array<std::optional<Statement>, 3>& statements) {
+    std::optional<Statement> first;
+    for (const std::optional<Statement>& next : statements) {
+        if (!next) continue;
+        if (!first) first = next;
+        if (first->unit.contradicts(next->unit))
+            throw input_error("The vertical unit of the " + file.called() + " is contradictory: " + first->by + " says " +
+                              first->unit.name + ", " + next->by + " says " + next->unit.name +
+                              "; correct whichever is wrong (gdal_edit.py -units, gdal_edit.py -a_srs, or the study's "
+                              "elevation_unit).");
+    }
+    return first;
+}
+
+LengthUnit vertical_unit(const RasterFile& file, const ElevationOptions& options, Notices& notices) {
+    const std::optional<Statement> found =
+        agreed(file, {stated_by_study(options.unit), stated_by_system(file.system()),
+                      stated_by_band(file, options.unit.has_value())});
+    if (found) return found->unit;
+    if (file.system().is_projected() && !file.system().linear_unit().is_metre())
+        throw input_error("The " + file.called() + " does not say in what unit its elevations are, and its grid is in " +
+                          file.system().linear_unit().name + "; add the line " + line_to_add("ft") + " (or \"m\", \"us survey ft\") "
+                          "to the study.");
+    notices.push_back({.code = "elevation-unit-assumed",
+                       .text = "The " + file.called() + " does not say in what unit its elevations are; they are taken as "
+                               "metres. If they are feet, add the line " + line_to_add("ft") + " to the study."});
+    return {};
+}
+
+bool holds(StoredType type, double value) {
+    const auto within = [value](double least, double greatest) {
+        return value >= least && value <= greatest && value == std::floor(value);
+    };
+    switch (type) {
+        case StoredType::int8: return within(-128, 127);
+        case StoredType::uint8: return within(0, 255);
+        case StoredType::int16: return within(-32768, 32767);
+        case StoredType::uint16: return within(0, 65535);
+        case StoredType::int32: return within(-2147483648.0, 2147483647.0);
+        case StoredType::uint32: return within(0, 4294967295.0);
+        case StoredType::float32:
+        case StoredType::float64: return true;
+    }
+    return true;
+}
+
+void notice_nodata(const RasterFile& file, const ElevationFormat& format, Notices& notices) {
+    if (!format.nodata || std::isnan(*format.nodata)) return;
+    if (!holds(format.stored, *format.nodata))
+        notices.push_back({.code = "nodata-outside-type",
+                           .text = "The nodata value " + number(*format.nodata) + " of the " + file.called() +
+                                   " cannot be held by its type, so no cell has it; correct it with gdal_edit.py -a_nodata "
+                                   "where the file has void cells."});
+    const double as_elevation_m = (*format.nodata * format.scale + format.offset) * format.unit.metres_per_unit;
+    if (as_elevation_m > -450.0 && as_elevation_m < 8900.0)
+        notices.push_back({.code = "nodata-is-elevation",
+                           .text = "The nodata value " + number(*format.nodata) + " of the " + file.called() +
+                                   " could be a true elevation; cells that have it are void. If they are ground, remove it "
+                                   "with gdal_edit.py -unsetnodata."});
+}
+
+/// A file beside the raster can change what it says without anyone noticing.
+void notice_sidecar(const std::filesystem::path& path, const RasterFile& file, Notices& notices) {
+    std::ifstream sidecar(path.string() + ".aux.xml", std::ios::binary);
+    const std::string text((std::istreambuf_iterator<char>(sidecar)), std::istreambuf_iterator<char>());
+    for (const char* tag : {"<NoDataValue", "<Scale>", "<Offset>", "<UnitType>", "<SRS", "<GeoTransform>"}) {
+        if (text.find(tag) == std::string::npos) continue;
+        notices.push_back({.code = "sidecar-used",
+                           .text = "The file " + path.string() + ".aux.xml adds to what the " + file.called() +
+                                   " says (nodata, scale, unit or place); remove it if that is not meant."});
+        return;
+    }
+}
+
+void notice_warnings(const RasterFile& file, Notices& notices) {
+    for (const std::string& warning : file.session().warnings_since(file.opened_at()))
+        notices.push_back({.code = "raster-warning", .text = "On opening the " + file.called() + ": " + warning});
+}
+
+}  // namespace
+
+ElevationFile open_elevation(const std::filesystem::path& path, const ElevationOptions& options) {
+    RasterFile file({.path = path, .role = "elevation", .band = options.band, .resampling = "bilinear"});
+    check_kind(file);
+    Notices notices;
+    ElevationFormat format{.stored = file.stored(), .nodata = file.nodata()};
+    set_scale(file, format, notices);
+    format.unit = vertical_unit(file, options, notices);
+    notice_nodata(file, format, notices);
+    notice_sidecar(path, file, notices);
+    notice_warnings(file, notices);
+    ReferenceSystem system = file.system();
+    return {.source = std::make_unique<ElevationSource>(std::move(file), format),
+            .system = std::move(system),
+            .format = format,
+            .notices = std::move(notices)};
+}
+
+}  // namespace rillclock

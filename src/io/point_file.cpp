@@ -1,0 +1,186 @@
+#include "rillclock/io/point_file.hpp"
+
+#include <ogrsf_frmts.h>
+
+#include <algorithm>
+#include <array>
+#include <cmath>
+#include <map>
+#include <memory>
+#include <utility>
+
+#include "local_file.hpp"
+#include "rillclock/core/error.hpp"
+#include "rillclock/io/gdal_session.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr std::array<const char*, 14> vector_drivers = {"GPKG", "GeoJSON", "GeoJSONSeq",  "ESRI Shapefile", "FlatGeobuf",
+                                                        "CSV",  "KML",     "LIBKML",      "GML",            "GPX",
+                                                        "MapInfo File", "DXF", "SQLite", nullptr};
+constexpr std::array<const char*, 4> csv_columns = {"X_POSSIBLE_NAMES=x,easting,lon,longitude",
+                                                    "Y_POSSIBLE_NAMES=y,northing,lat,latitude",
+                                                    "AUTODETECT_TYPE=YES", nullptr};
+
+class PointReader {
+public:
+    PointReader(const std::filesystem::path& path, const PointOptions& options, const ReferenceSystem& target)
+        : path_(path), options_(options), target_(target) {}
+
+    PointFile read() {
+        const GdalMark before = session_.mark();
+        check_local_file(path_, called());
+        open(before);
+        choose_layer();
+        choose_field();
+        Transformation to_target(system(), target_);
+        while (const OGRFeatureUniquePtr feature{layer_->GetNextFeature()}) add(*feature, to_target);
+        session_.throw_if_failed(before, Fault::inputs,
+                                 "The " + called() + " cannot be read to its end; copy or make it again");
+        check_result();
+        return std::move(result_);
+    }
+
+private:
+    [[nodiscard]] std::string called() const { return "point file " + path_.string(); }
+
+    void open(const GdalMark& before) {
+        const std::string path = std::filesystem::absolute(path_).string();
+        const bool is_csv = path_.extension() == ".csv" || path_.extension() == ".CSV";
+        dataset_.reset(GDALDataset::Open(path.c_str(), GDAL_OF_VECTOR | GDAL_OF_READONLY, vector_drivers.data(),
+                                         is_csv ? csv_columns.data() : nullptr));
+        if (dataset_ && dataset_->GetLayerCount() > 0) return;
+        const std::string reason = session_.failure_since(before);
+        throw input_error("The " + called() + " cannot be read as points; " + seeming_kind(path_) +
+                          (reason.empty() ? "." : " (" + reason + ")."));
+    }
+
+    [[nodiscard]] std::string layer_list() const {
+        std::string list;
+        for (int i = 0; i < dataset_->GetLayerCount(); ++i)
+            list += (i == 0 ? "" : ", ") + std::string(dataset_->GetLayer(i)->GetName());
+        return list;
+    }
+
+    void choose_layer() {
+        if (options_.layer) {
+            layer_ = dataset_->GetLayerByName(options_.layer->c_str());
+            if (!layer_)
+                throw input_error("The " + called() + " has no layer \"" + *options_.layer + "\"; it has " + layer_list() + ".");
+            return;
+        }
+        if (dataset_->GetLayerCount() > 1)
+            throw input_error("The " + called() + " has several layers: " + layer_list() +
+                              "; say which holds the points, for example layer = \"" + dataset_->GetLayer(0)->GetName() +
+                              "\".");
+        layer_ = dataset_->GetLayer(0);
+    }
+
+    [[nodiscard]] std::string field_list() const {
+        std::string list;
+        const OGRFeatureDefn& definition = *layer_->GetLayerDefn();
+        for (int i = 0; i < definition.GetFieldCount(); ++i)
+            list += (i == 0 ? "" : ", ") + std::string(definition.GetFieldDefn(i)->GetNameRef());
+        return list.empty() ? "none" : list;
+    }
+
+    void choose_field() {
+        const OGRFeatureDefn& definition = *layer_->GetLayerDefn();
+        if (options_.name_field) {
+            field_ = definition.GetFieldIndex(options_.name_field->c_str());
+            if (field_ >= 0) return;
+            throw input_error("The " + called() + " has no field \"" + *options_.name_field + "\"; its fields are " +
+                              field_list() + ".");
+        }
+        for (const char* usual : {"name", "label", "id"})
+            if (field_ < 0) field_ = definition.GetFieldIndex(usual);
+    }
+
+    [[nodiscard]] ReferenceSystem system() const {
+        const OGRSpatialReference* system = layer_->GetSpatialRef();
+        char* text = nullptr;
+        if (system && !system->IsEmpty()) system->exportToWkt(&text);
+        const std::string wkt = text ? text : "";
+        CPLFree(text);
+        if (!wkt.empty()) return ReferenceSystem::from_text(wkt);
+        throw input_error("The " + called() + " has no reference system; state the one its coordinates are in: ogr2ogr "
+                          "-a_srs EPSG:nnnnn " + path_.stem().string() + "-placed.gpkg " + path_.string() + ".");
+    }
+
+    void leave_out(const std::string& why) {
+        result_.notices.push_back({.code = "point-left-out",
+                                   .text = "Feature " + std::to_string(number_) + " of the " + called() + " " + why +
+                                           ", and is left out."});
+    }
+
+    /// The one point of a feature, or none after a notice.
+    [[nodiscard]] std::optional<Place> place_of(const OGRFeature& feature) {
+        const OGRGeometry* geometry = feature.GetGeometryRef();
+        if (!geometry || geometry->IsEmpty()) return leave_out("has no place"), std::nullopt;
+        if (wkbFlatten(geometry->getGeometryType()) == wkbMultiPoint && geometry->toMultiPoint()->getNumGeometries() == 1)
+            geometry = geometry->toMultiPoint()->getGeometryRef(0);
+        if (wkbFlatten(geometry->getGeometryType()) != wkbPoint)
+            return leave_out(std::string("is a ") + geometry->getGeometryName() + " and not a point"), std::nullopt;
+        const OGRPoint& point = *geometry->toPoint();
+        if (!std::isfinite(point.getX()) || !std::isfinite(point.getY()))
+            return leave_out("has coordinates that are not finite"), std::nullopt;
+        return Place{point.getX(), point.getY()};
+    }
+
+    void add(OGRFeature& feature, Transformation& to_target) {
+        ++number_;
+        const std::optional<Place> given = place_of(feature);
+        if (!given) return;
+        const std::optional<Place> place = to_target(*given);
+        if (!place) return leave_out("lies where " + target_.name() + " has no coordinates");
+        result_.points.push_back({.name = name_of(feature), .place = *place, .feature = number_});
+    }
+
+    [[nodiscard]] std::string name_of(OGRFeature& feature) const {
+        const std::string given = field_ >= 0 && feature.IsFieldSetAndNotNull(field_) ? feature.GetFieldAsString(field_) : "";
+        const std::size_t begin = given.find_first_not_of(" \t\r\n");
+        if (begin == std::string::npos) return "point " + std::to_string(number_);
+        return given.substr(begin, given.find_last_not_of(" \t\r\n") - begin + 1);
+    }
+
+    void check_result() const {
+        if (number_ == 0)
+            throw input_error("The " + called() + " holds no features in layer " + layer_->GetName() +
+                              "; draw the design points there, or leave the file out to have points set where water leaves "
+                              "the data.");
+        if (result_.points.empty())
+            throw input_error("The " + called() + " holds no point that can be used: " + result_.notices.front().text);
+        check_names();
+    }
+
+    void check_names() const {
+        std::map<std::string, int> counts;
+        for (const NamedPlace& point : result_.points) ++counts[point.name];
+        std::string twice;
+        for (const auto& [name, count] : counts)
+            if (count > 1) twice += (twice.empty() ? "\"" : ", \"") + name + "\" (" + std::to_string(count) + " times)";
+        if (!twice.empty())
+            throw input_error("Points of the " + called() + " have the same name: " + twice +
+                              "; give each its own, or name another field with name = \"...\" (its fields are " + field_list() +
+                              ").");
+    }
+
+    GdalSession session_;
+    std::filesystem::path path_;
+    PointOptions options_;
+    ReferenceSystem target_;
+    GDALDatasetUniquePtr dataset_;
+    OGRLayer* layer_ = nullptr;
+    int field_ = -1;
+    std::int64_t number_ = 0;
+    PointFile result_;
+};
+
+}  // namespace
+
+PointFile read_points(const std::filesystem::path& path, const PointOptions& options, const ReferenceSystem& target) {
+    return PointReader(path, options, target).read();
+}
+
+}  // namespace rillclock
