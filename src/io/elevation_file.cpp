@@ -152,30 +152,41 @@ LengthUnit vertical_unit(const RasterFile& file, const ElevationOptions& options
     return {};
 }
 
-bool holds(StoredType type, double value) {
-    const auto within = [value](double least, double greatest) {
-        return value >= least && value <= greatest && value == std::floor(value);
-    };
+struct Range {
+    double least;
+    double greatest;
+};
+
+/// None for floating point.
+std::optional<Range> range_of(StoredType type) {
     switch (type) {
-        case StoredType::int8: return within(-128, 127);
-        case StoredType::uint8: return within(0, 255);
-        case StoredType::int16: return within(-32768, 32767);
-        case StoredType::uint16: return within(0, 65535);
-        case StoredType::int32: return within(-2147483648.0, 2147483647.0);
-        case StoredType::uint32: return within(0, 4294967295.0);
+        case StoredType::int8: return Range{-128, 127};
+        case StoredType::uint8: return Range{0, 255};
+        case StoredType::int16: return Range{-32768, 32767};
+        case StoredType::uint16: return Range{0, 65535};
+        case StoredType::int32: return Range{-2147483648.0, 2147483647.0};
+        case StoredType::uint32: return Range{0, 4294967295.0};
         case StoredType::float32:
-        case StoredType::float64: return true;
+        case StoredType::float64: return std::nullopt;
     }
-    return true;
+    return std::nullopt;
 }
 
-void notice_nodata(const RasterFile& file, const ElevationFormat& format, Notices& notices) {
-    if (!format.nodata || std::isnan(*format.nodata)) return;
-    if (!holds(format.stored, *format.nodata))
+bool holds(StoredType type, double value) {
+    const std::optional<Range> range = range_of(type);
+    return !range || (value >= range->least && value <= range->greatest && value == std::floor(value));
+}
+
+void check_nodata(const RasterFile& file, ElevationFormat& format, Notices& notices) {
+    if (!format.nodata) return;
+    if (!holds(format.stored, *format.nodata)) {
         notices.push_back({.code = "nodata-outside-type",
                            .text = "The nodata value " + number(*format.nodata) + " of the " + file.called() +
                                    " cannot be held by its type, so no cell has it; correct it with gdal_edit.py -a_nodata "
                                    "where the file has void cells."});
+        format.nodata.reset();
+        return;
+    }
     const double as_elevation_m = (*format.nodata * format.scale + format.offset) * format.unit.metres_per_unit;
     if (as_elevation_m > -450.0 && as_elevation_m < 8900.0)
         notices.push_back({.code = "nodata-is-elevation",
@@ -204,6 +215,13 @@ void notice_warnings(const RasterFile& file, Notices& notices) {
 
 }  // namespace
 
+double ElevationFormat::void_value() const {
+    const std::optional<Range> range = range_of(stored);
+    if (nodata) return *nodata;
+    if (!range) return -9999.0;
+    return range->least < 0 ? range->least : range->greatest;
+}
+
 ElevationFile open_elevation(const std::filesystem::path& path, const ElevationOptions& options) {
     RasterFile file({.path = path, .role = "elevation", .band = options.band, .resampling = "bilinear"});
     check_kind(file);
@@ -211,7 +229,7 @@ ElevationFile open_elevation(const std::filesystem::path& path, const ElevationO
     ElevationFormat format{.stored = file.stored(), .nodata = file.nodata()};
     set_scale(file, format, notices);
     format.unit = vertical_unit(file, options, notices);
-    notice_nodata(file, format, notices);
+    check_nodata(file, format, notices);
     notice_sidecar(path, file, notices);
     notice_warnings(file, notices);
     ReferenceSystem system = file.system();

@@ -9,6 +9,7 @@
 #include <vector>
 
 #include "local_file.hpp"
+#include "nearest_float.hpp"
 #include "quiet_gdal.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/io/vrt_check.hpp"
@@ -235,7 +236,7 @@ void RasterFile::hide_nodata(std::span<double> values) const {
     if (!nodata_) return;
     // A float file holds floats: the tag, a double, is compared as the float nearest to it.
     const bool is_float = stored_ == StoredType::float32;
-    const double nodata = is_float ? static_cast<double>(static_cast<float>(*nodata_)) : *nodata_;
+    const double nodata = is_float ? static_cast<double>(nearest_float(*nodata_)) : *nodata_;
     std::replace(values.begin(), values.end(), nodata, nan);
 }
 

@@ -15,7 +15,7 @@ namespace rillclock {
 /// How a file keeps its elevations, enough to write others the same way.
 struct ElevationFormat {
     StoredType stored = StoredType::float32;
-    std::optional<double> nodata = {};
+    std::optional<double> nodata = {};  ///< none also where the file's own cannot be held by its type
     double scale = 1.0;   ///< elevation in `unit` = stored value × scale + offset
     double offset = 0.0;
     LengthUnit unit = {};
@@ -24,6 +24,9 @@ struct ElevationFormat {
     [[nodiscard]] double metres_per_stored_unit() const { return scale * unit.metres_per_unit; }
     /// The least difference the file can hold, in metres; 0 for floating point.
     [[nodiscard]] double quantum_m() const { return is_integer(stored) ? metres_per_stored_unit() : 0.0; }
+    /// What to write for void cells: the file's own nodata value, else -9999 for floating point and the value of an integer type
+    /// that is farthest from zero (of two, the negative one).
+    [[nodiscard]] double void_value() const;
 };
 
 struct ElevationOptions {

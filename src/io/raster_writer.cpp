@@ -1,0 +1,239 @@
+#include "raster_writer.hpp"
+
+#include <ogr_spatialref.h>
+
+#include <array>
+#include <charconv>
+#include <cstring>
+#include <numeric>
+#include <string>
+#include <vector>
+
+#include "rillclock/core/error.hpp"
+
+namespace rillclock {
+namespace {
+
+namespace fs = std::filesystem;
+
+GDALDataType gdal_type(StoredType type) {
+    switch (type) {
+        case StoredType::int8:
+        case StoredType::uint8: return GDT_Byte;
+        case StoredType::int16: return GDT_Int16;
+        case StoredType::uint16: return GDT_UInt16;
+        case StoredType::int32: return GDT_Int32;
+        case StoredType::uint32: return GDT_UInt32;
+        case StoredType::float32: return GDT_Float32;
+        case StoredType::float64: return GDT_Float64;
+    }
+    return GDT_Unknown;
+}
+
+/// Sides of blocks: 512, or for smaller rasters the multiple of 16 (which TIFF asks for) that holds them.
+std::int64_t block_side(std::int64_t cells) { return std::min<std::int64_t>(512, (cells + 15) / 16 * 16); }
+
+/// The shortest text that reads back as the same number, whatever the locale.
+std::string shortest(double value) {
+    std::array<char, 40> text{};
+    const auto end = std::to_chars(text.data(), text.data() + text.size(), value).ptr;
+    return {text.data(), end};
+}
+
+CPLStringList creation_options(StoredType stored, std::int64_t block_columns, std::int64_t block_rows) {
+    CPLStringList options;
+    options.SetNameValue("TILED", "YES");
+    options.SetNameValue("BLOCKXSIZE", std::to_string(block_columns).c_str());
+    options.SetNameValue("BLOCKYSIZE", std::to_string(block_rows).c_str());
+    options.SetNameValue("COMPRESS", "ZSTD");
+    options.SetNameValue("ZSTD_LEVEL", "1");
+    options.SetNameValue("PREDICTOR", is_integer(stored) ? "2" : "3");
+    options.SetNameValue("BIGTIFF", "IF_SAFER");
+    options.SetNameValue("NUM_THREADS", CPLGetConfigOption("GDAL_NUM_THREADS", "ALL_CPUS"));
+    if (stored == StoredType::int8) options.SetNameValue("PIXELTYPE", "SIGNEDBYTE");
+    return options;
+}
+
+/// Sets a configuration option of GDAL for this thread, for as long as it lives.
+class ThreadOption {
+public:
+    ThreadOption(const char* key, const char* value) : key_(key) {
+        const char* former = CPLGetThreadLocalConfigOption(key, nullptr);
+        if (former) former_ = former;
+        had_former_ = former != nullptr;
+        CPLSetThreadLocalConfigOption(key, value);
+    }
+    ThreadOption(const ThreadOption&) = delete;
+    ThreadOption& operator=(const ThreadOption&) = delete;
+    ~ThreadOption() { CPLSetThreadLocalConfigOption(key_, had_former_ ? former_.c_str() : nullptr); }
+
+private:
+    const char* key_;
+    std::string former_;
+    bool had_former_ = false;
+};
+
+void refuse_occupied(const fs::path& path) {
+    std::error_code problem;
+    const fs::file_status status = fs::symlink_status(path, problem);
+    if (fs::is_symlink(status))
+        throw input_error("The raster " + path.string() + " would be written through a symbolic link; remove the link.");
+    if (fs::exists(status) && !fs::is_regular_file(status))
+        throw input_error("The raster " + path.string() + " cannot be written, since a folder or device has its name.");
+}
+
+}  // namespace
+
+RasterStatistics statistics_of(std::span<const double> values) {
+    if (values.empty()) return {};
+    RasterStatistics result;
+    result.count = static_cast<double>(values.size());
+    result.least = *std::min_element(values.begin(), values.end());
+    result.greatest = *std::max_element(values.begin(), values.end());
+    result.mean = std::accumulate(values.begin(), values.end(), 0.0) / result.count;
+    for (const double value : values) result.squares += (value - result.mean) * (value - result.mean);
+    return result;
+}
+
+RasterWriter::RasterWriter(const fs::path& path, const Grid& grid, const ReferenceSystem& system,
+                           const RasterDescription& description)
+    : begun_at_(session_.mark()),
+      path_(path),
+      grid_(grid),
+      description_(description),
+      block_rows_(block_side(grid.rows)),
+      block_columns_(block_side(grid.columns)) {
+    refuse_occupied(path_);
+    try {
+        create(system);
+    } catch (...) {
+        dataset_.reset();
+        remove();
+        throw;
+    }
+}
+
+RasterWriter::~RasterWriter() {
+    if (is_closed_) return;
+    dataset_.reset();
+    remove();
+}
+
+void RasterWriter::remove() const {
+    std::error_code ignored;
+    fs::remove(path_, ignored);
+    fs::remove(path_.string() + ".aux.xml", ignored);
+}
+
+void RasterWriter::throw_if_failed(bool worked) const {
+    const std::string what = "The raster " + path_.string() +
+                             " cannot be written; look at the free space and the permissions of its folder";
+    session_.throw_if_failed(begun_at_, Fault::machine, what);
+    if (!worked) throw machine_error(what + ".");
+}
+
+void RasterWriter::create(const ReferenceSystem& system) {
+    remove();
+    const CPLStringList options = creation_options(description_.stored, block_columns_, block_rows_);
+    GDALDriver* driver = GetGDALDriverManager()->GetDriverByName("GTiff");
+    if (!driver) throw machine_error("GDAL has no GeoTIFF driver here; install the whole of GDAL.");
+    dataset_.reset(driver->Create(path_.c_str(), static_cast<int>(grid_.columns), static_cast<int>(grid_.rows), 1,
+                                  gdal_type(description_.stored), options.List()));
+    throw_if_failed(dataset_ != nullptr);
+    describe(system);
+    throw_if_failed(true);
+}
+
+void RasterWriter::describe(const ReferenceSystem& system) {
+    std::array<double, 6> transform = {grid_.left, grid_.cell_width, 0.0, grid_.top, 0.0, -grid_.cell_height};
+    dataset_->SetGeoTransform(transform.data());
+    OGRSpatialReference reference;
+    reference.SetFromUserInput(system.wkt().c_str(), OGRSpatialReference::SET_FROM_USER_INPUT_LIMITATIONS);
+    reference.SetAxisMappingStrategy(OAMS_TRADITIONAL_GIS_ORDER);
+    dataset_->SetSpatialRef(&reference);
+    for (const auto& [key, value] : description_.metadata) dataset_->SetMetadataItem(key.c_str(), value.c_str());
+    GDALRasterBand& band = *dataset_->GetRasterBand(1);
+    if (!description_.description.empty()) band.SetDescription(description_.description.c_str());
+    if (!description_.unit.empty()) band.SetUnitType(description_.unit.c_str());
+    if (description_.nodata) band.SetNoDataValue(*description_.nodata);
+    if (description_.scale != 1.0) band.SetScale(description_.scale);
+    if (description_.offset != 0.0) band.SetOffset(description_.offset);
+    name_categories();
+}
+
+void RasterWriter::name_categories() {
+    int greatest = -1;
+    for (const auto& [number, name] : description_.categories) {
+        if (number < 0 || number > 65535) throw bug("A class name of " + path_.string() + " has a number outside 0 to 65535");
+        greatest = std::max(greatest, number);
+    }
+    if (greatest < 0) return;
+    std::vector<std::string> names(static_cast<std::size_t>(greatest) + 1);
+    for (const auto& [number, name] : description_.categories) names[static_cast<std::size_t>(number)] = name;
+    CPLStringList list;
+    for (const std::string& name : names) list.AddString(name.c_str());
+    dataset_->GetRasterBand(1)->SetCategoryNames(list.List());
+}
+
+void RasterWriter::write_blocks(std::int64_t block_row, std::span<const std::byte> rows) {
+    const auto cell = static_cast<std::size_t>(GDALGetDataTypeSizeBytes(gdal_type(description_.stored)));
+    const auto columns = static_cast<std::size_t>(grid_.columns);
+    const auto width = static_cast<std::size_t>(block_columns_);
+    std::vector<std::byte> block(width * static_cast<std::size_t>(block_rows_) * cell);
+    for (std::size_t left = 0; left < columns; left += width) {
+        std::fill(block.begin(), block.end(), std::byte{0});  // what lies beyond the raster
+        const std::size_t count = std::min(width, columns - left);
+        for (std::size_t row = 0; row * columns * cell < rows.size(); ++row)
+            std::memcpy(&block[row * width * cell], &rows[(row * columns + left) * cell], count * cell);
+        const CPLErr result = dataset_->GetRasterBand(1)->WriteBlock(static_cast<int>(left / width),
+                                                                     static_cast<int>(block_row), block.data());
+        throw_if_failed(result == CE_None);
+    }
+}
+
+void RasterWriter::store_statistics() {
+    if (!(statistics_.count > 0)) return;
+    GDALRasterBand& band = *dataset_->GetRasterBand(1);
+    band.SetMetadataItem("STATISTICS_MINIMUM", shortest(statistics_.least).c_str());
+    band.SetMetadataItem("STATISTICS_MAXIMUM", shortest(statistics_.greatest).c_str());
+    band.SetMetadataItem("STATISTICS_MEAN", shortest(statistics_.mean).c_str());
+    band.SetMetadataItem("STATISTICS_STDDEV", shortest(statistics_.standard_deviation()).c_str());
+}
+
+void RasterWriter::build_overviews() {
+    std::vector<int> levels;
+    for (int level = 2; std::max(grid_.rows, grid_.columns) * 2 / level > 512; level *= 2) levels.push_back(level);
+    if (levels.empty()) return;
+    const ThreadOption zstd("ZSTD_LEVEL_OVERVIEW", "1");
+    const ThreadOption block("GDAL_TIFF_OVR_BLOCKSIZE", "512");
+    const char* resampling = description_.overviews == OverviewKind::nearest ? "NEAREST" : "AVERAGE";
+    const CPLErr result = dataset_->BuildOverviews(resampling, static_cast<int>(levels.size()), levels.data(), 0, nullptr,
+                                                   nullptr, nullptr);
+    throw_if_failed(result == CE_None);
+}
+
+void RasterWriter::close() {
+    store_statistics();
+    const CPLErr flushed = dataset_->GetRasterBand(1)->FlushCache(false);
+    throw_if_failed(flushed == CE_None);
+    build_overviews();
+    dataset_.reset();
+    throw_if_failed(true);
+    verify();
+    is_closed_ = true;
+}
+
+/// Opens the file anew and reads its last row, which a file cut short does not have.
+void RasterWriter::verify() const {
+    const char* const drivers[] = {"GTiff", nullptr};
+    const GDALDatasetUniquePtr written(GDALDataset::Open(path_.c_str(), GDAL_OF_RASTER, drivers));
+    throw_if_failed(written != nullptr);
+    throw_if_failed(written->GetRasterXSize() == grid_.columns && written->GetRasterYSize() == grid_.rows);
+    std::vector<double> row(static_cast<std::size_t>(grid_.columns));
+    const CPLErr result = written->GetRasterBand(1)->RasterIO(GF_Read, 0, static_cast<int>(grid_.rows - 1),
+                                                              static_cast<int>(grid_.columns), 1, row.data(),
+                                                              static_cast<int>(grid_.columns), 1, GDT_Float64, 0, 0, nullptr);
+    throw_if_failed(result == CE_None);
+}
+
+}  // namespace rillclock
