@@ -36,7 +36,7 @@ constexpr std::array units{
     Unit{"mm", Dimension::length, 1.0, 1000.0},
     Unit{"ft", Dimension::length, metres_per_foot},
     Unit{"in", Dimension::length, metres_per_inch},
-    Unit{"yd", Dimension::length, 3.0 * metres_per_foot},
+    Unit{"yd", Dimension::length, 0.9144},
     Unit{"mi", Dimension::length, metres_per_mile},
     Unit{"us survey ft", Dimension::length, metres_per_us_survey_foot},
     Unit{"m2", Dimension::area, 1.0},

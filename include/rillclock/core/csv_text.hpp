@@ -27,7 +27,8 @@ struct CsvTable {
 /// Reads comma-separated text after RFC 4180: quoted fields may hold commas, line ends and doubled quotes. A byte order
 /// mark is skipped, lines end with LF or CRLF, blank lines are skipped, blanks around unquoted fields are dropped.
 /// `file` names the text in errors. Throws an input error, with the line, for a text without header, a row whose number
-/// of fields is not the header's, a quote that does not close or is followed by more text, and fields separated by semicolons or tabs.
+/// of fields is not the header's, a quote that does not close or is followed by more text, and fields separated by
+/// semicolons or tabs.
 [[nodiscard]] CsvTable parse_csv(std::string_view text, std::string_view file);
 
 /// One record, ended by LF; fields are quoted only where they hold a comma, a quote, a line end or blanks at an end.

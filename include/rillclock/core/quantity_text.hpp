@@ -12,8 +12,8 @@ enum class Sign { positive, not_negative, any };
 
 /// What is asked for, so that an error can say where the text stood and what its right form is.
 struct QuantityAsked {
-    std::string subject;            ///< begins the sentence: "slope_window (study.toml, line 3, column 16)"
-    std::string example = {};       ///< a right form, "20 m"; a usual one of the dimension where empty
+    std::string subject;       ///< begins the sentence: "slope_window (study.toml, line 3, column 16)"
+    std::string example = {};  ///< a right form, "20 m"; a usual one of the dimension where empty
     Sign sign = Sign::positive;
 };
 
@@ -35,9 +35,9 @@ struct QuantityAsked {
 
 /// A length that grows with an area: coefficient · (area / unit)^exponent.
 struct PowerLaw {
-    Length coefficient;      ///< the length at one unit of area
-    Area unit;               ///< what the area is counted in
-    double exponent = 0.0;   ///< 0 to 2; 0 is a constant length
+    Length coefficient;     ///< the length at one unit of area
+    Area unit;              ///< what the area is counted in
+    double exponent = 0.0;  ///< 0 to 2; 0 is a constant length
 
     [[nodiscard]] Length operator()(Area area) const;
     bool operator==(const PowerLaw&) const = default;

@@ -9,8 +9,8 @@ namespace rillclock {
 /// How far a method's numbers can be trusted.
 enum class Trust {
     seen_in_source,  ///< read in the text of the source
-    from_memory,     ///< known, and reproduced by arithmetic where that is possible, but not read there: check before use
-    own_rule,        ///< a rule of this program, published nowhere else
+    from_memory,  ///< known, and reproduced by arithmetic where that is possible, but not read there: check before use
+    own_rule,     ///< a rule of this program, published nowhere else
 };
 
 /// "read in its source", "value from memory", "rule of this program".

@@ -17,8 +17,8 @@ struct SheetStretch {
 
 /// A published sheet-flow formula as a function of the sheet index u alone: T(u) = s · coefficient · u^exponent.
 ///
-/// The storm factor s belongs to the storm and the formula (`nrcs_storm_factor`, `kinematic_storm_factor`); it multiplies
-/// a time that no storm changes, which is what `at_unit_storm` gives.
+/// The storm factor s belongs to the storm and the formula (`nrcs_storm_factor`, `kinematic_storm_factor`); it
+/// multiplies a time that no storm changes, which is what `at_unit_storm` gives.
 struct SheetFormula {
     double coefficient = 0.0;  ///< seconds at u = 1 m and s = 1
     double exponent = 0.0;
@@ -43,10 +43,11 @@ inline constexpr double nrcs_sheet_constant = 0.007;
 /// The NRCS formula as the handbook prints it, in feet, inches and hours.
 [[nodiscard]] Duration nrcs_sheet_time(const SheetStretch& stretch, Length two_year_24_hour);
 
-/// Printed constants of the kinematic-wave formula T[min] = constant · (n·L/√S)^0.6 / i^0.4 for feet and inches per hour.
-/// They are roundings of one theory and differ by less than 1 %.
-inline constexpr double kinematic_constant_hec22 = 0.933;           ///< FHWA, HEC-22, 3rd ed., 2009, equation 3-3
-inline constexpr double kinematic_constant_morgali_linsley = 0.94;  ///< Morgali and Linsley, 1965; Aron and Erborge, 1973
+/// Printed constants of the kinematic-wave formula T[min] = constant · (n·L/√S)^0.6 / i^0.4 for feet and inches per
+/// hour. They are roundings of one theory and differ by less than 1 %.
+inline constexpr double kinematic_constant_hec22 = 0.933;  ///< FHWA, HEC-22, 3rd ed., 2009, equation 3-3
+inline constexpr double kinematic_constant_morgali_linsley =
+    0.94;  ///< Morgali and Linsley, 1965; Aron and Erborge, 1973
 
 /// The kinematic-wave formula in SI, with one of the printed constants; u has the exponent 0.6.
 [[nodiscard]] SheetFormula kinematic_sheet_formula(double printed_constant);

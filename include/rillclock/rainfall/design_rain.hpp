@@ -11,8 +11,8 @@ namespace rillclock {
 inline constexpr Length least_two_year_24_hour = inches(0.5);
 inline constexpr Length greatest_two_year_24_hour = inches(30);
 
-/// The depth itself, where it is plausible. Otherwise throws an input error; `subject` begins its sentence and says what
-/// was read where: "two_year_24_hour (study.toml, line 9, column 20)".
+/// The depth itself, where it is plausible. Otherwise throws an input error; `subject` begins its sentence and says
+/// what was read where: "two_year_24_hour (study.toml, line 9, column 20)".
 [[nodiscard]] Length checked_two_year_24_hour(Length depth, std::string_view subject);
 
 /// The depth from a text such as "3.6 in" or "91 mm", checked in the same way.

@@ -11,7 +11,8 @@ namespace rillclock {
 
 /// The units in which results are reported; the computation is in SI either way.
 enum class ReportUnits { us, si };
-/// What ends sheet flow: the stated length or the index of McCuen and Spiess, whichever comes first; or the stated length.
+/// What ends sheet flow: the stated length or the index of McCuen and Spiess, whichever comes first; or the stated
+/// length.
 enum class SheetLimitRule { length_or_index, stated };
 /// How shallow concentrated flow is told apart.
 enum class ShallowRule { by_cover, paved_and_unpaved };
@@ -19,24 +20,25 @@ enum class ShallowRule { by_cover, paved_and_unpaved };
 /// A study as stated: what a study file or the command line says, with the defaults that do not depend on the data.
 /// What is absent here and depends on the data is settled by `resolve`.
 struct TerrainStudy {
-    std::string elevation = {};                     ///< raster; relative to the study's folder
-    int band = 1;                              ///< from 1
+    std::string elevation = {};                 ///< raster; relative to the study's folder
+    int band = 1;                               ///< from 1
     std::optional<Length> elevation_unit = {};  ///< the length of one unit of elevation, where the study states it
     std::optional<Length> slope_window = {};
     std::optional<Length> vertical_step = {};
     std::optional<Length> pond_depth = {};
-    Speed pond_speed = metres_per_second(2);   ///< infinite for "unlimited"
+    Speed pond_speed = metres_per_second(2);  ///< infinite for "unlimited"
 };
 
 struct SurfaceStudy {
-    std::string cover = {};  ///< raster; relative to the study's folder
-    int band = 1;       ///< from 1
-    std::string book = {};   ///< a built-in book's name, or a CSV file relative to the study's folder
+    std::string cover = {};                  ///< raster; relative to the study's folder
+    int band = 1;                            ///< from 1
+    std::string book = {};                   ///< a built-in book's name, or a CSV file relative to the study's folder
     std::optional<int> fallback_class = {};  ///< for codes the book does not know and cells without cover
 };
 
 struct PointStudy {
-    std::optional<std::string> file = {};   ///< relative to the study's folder; without it points stand where flow leaves the data
+    std::optional<std::string> file =
+        {};  ///< relative to the study's folder; without it points stand where flow leaves the data
     std::optional<std::string> name = {};   ///< field that names the points
     std::optional<std::string> layer = {};  ///< the file's first layer where absent
     std::optional<double> auto_area = {};   ///< share of the data's area from which a way out counts as a point, 0 to 1
@@ -61,8 +63,8 @@ struct TimingStudy {
     Length sheet_limit = feet(100);
     SheetLimitRule sheet_limit_rule = SheetLimitRule::length_or_index;
     ShallowRule shallow = ShallowRule::by_cover;
-    double slope_floor_overland = 0.001;  ///< rise over run; 0 is off
-    double slope_floor_channel = 0.0001;  ///< rise over run; 0 is off
+    double slope_floor_overland = 0.001;             ///< rise over run; 0 is off
+    double slope_floor_channel = 0.0001;             ///< rise over run; 0 is off
     std::optional<Area> channel_from = hectares(5);  ///< absent: only where channels are mapped
     ChannelStudy channel = {};
     double ignore_tail = 0.0;  ///< share of a point's area, the slowest, that is left out; 0 to below 1
@@ -89,7 +91,8 @@ struct Study {
 /// ones and names of GDAL's virtual files ("/vsi…", "NETCDF:…", "https://…") stay as they are.
 [[nodiscard]] std::string located(const Study& study, const std::string& name);
 
-/// Throws an input error for what a study lacks (elevation, cover, book, rain) and for statements that exclude one another.
+/// Throws an input error for what a study lacks (elevation, cover, book, rain) and for statements that exclude one
+/// another.
 void check_study(const Study& study);
 
 /// What is true of the data and settles defaults.
@@ -105,7 +108,7 @@ struct ResolvedStudy {
     Length pond_depth = {};        ///< default the larger of 0.3 m and the vertical step
     Length move_within = {};       ///< default the larger of 5 m and one cell
     Length shortest_segment = {};  ///< default the larger of 50 m and 5 cells
-    double auto_area = 0.01;  ///< default 1 % of the data's area
+    double auto_area = 0.01;       ///< default 1 % of the data's area
     double channel_n = 0.0;
     std::optional<Length> hydraulic_radius = {};  ///< where stated; else the two below count
     PowerLaw channel_width = {};

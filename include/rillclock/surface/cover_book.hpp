@@ -21,7 +21,7 @@ struct CoverClass {
     double n_high = 0.0;
     Speed shallow_k = {};           ///< velocity of shallow concentrated flow at slope 1; 0 for open water
     std::string shallow_type = {};  ///< short name of one of `shallow_types()`; "stated" where the book gives k itself
-    bool paved = false;        ///< counts as paved where only paved and unpaved are told apart
+    bool paved = false;             ///< counts as paved where only paved and unpaved are told apart
     std::optional<Length> water_depth = {};  ///< mean depth; present for open water alone
     std::string source = {};                 ///< where the values are from
     bool from_memory = false;                ///< a default to check before use
@@ -52,7 +52,8 @@ private:
 /// - `n_typical`, and `n_low`, `n_high` (each may be absent or empty: then n_typical);
 /// - `shallow_type` (a short name of `shallow_types()`), or `shallow_k_m_s` or `shallow_k_ft_s` (velocity at slope 1);
 /// - `paved` (yes or no; may be absent: then yes for the type "pavement" alone);
-/// - `water_depth_m` or `water_depth_ft`: a mean depth makes the class open water, whose n and shallow fields stay empty;
+/// - `water_depth_m` or `water_depth_ft`: a mean depth makes the class open water, whose n and shallow fields stay
+/// empty;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
 ///
 /// `file` names the text in errors. Throws an input error with line and column for a column that is missing or unknown,

@@ -1,0 +1,227 @@
+#include "rillclock/study/study_file.hpp"
+
+#include <catch2/catch.hpp>
+
+#include <cmath>
+
+#include "rillclock/core/error.hpp"
+
+namespace rillclock {
+namespace {
+
+using Catch::Contains;
+
+const std::string smallest = R"([terrain]
+elevation = "dem.tif"
+[surface]
+cover = "cover.tif"
+book = "nlcd"
+[rain]
+two_year_24_hour = "3.6 in"
+)";
+
+Study read(const std::string& text) {
+    return read_study(text, "studies/town.toml");
+}
+
+TEST_CASE("the smallest study is elevation, cover, book and rain") {
+    const Study study = parse_study(smallest, "town.toml");
+    CHECK(study.terrain.elevation == "dem.tif");
+    CHECK(study.surface.cover == "cover.tif");
+    CHECK(study.surface.book == "nlcd");
+    CHECK(study.rain.two_year_24_hour == inches(3.6));
+    CHECK(study.timing.sheet_limit == feet(100));
+    CHECK(study.timing.channel_from == hectares(5));
+    CHECK(study.output.folder == "result");
+}
+
+TEST_CASE("every key sets what it names") {
+    const Study study = read(R"(
+title = "Lower town"
+report_units = "si"
+[terrain]
+elevation = "dem.tif"
+band = 2
+elevation_unit = "us survey ft"
+slope_window = "30 m"
+vertical_step = "1 mm"
+pond_depth = "1 ft"
+pond_speed = "1 m/s"
+[surface]
+cover = "cover.tif"
+band = 3
+book = "town.csv"
+fallback_class = 71
+path_length = "grid"
+[points]
+file = "points.gpkg"
+name = "label"
+layer = "inlets"
+move_within = "0 m"
+[timing]
+sheet = "nrcs"
+sheet_limit = "30 m"
+sheet_limit_rule = "stated"
+shallow = "paved and unpaved"
+slope_floor = { overland = 0.002, channel = 0 }
+channel_from = "mapped only"
+channel = { n = 0.05, width = "3 m * km2^0.4", depth = "0.5 m" }
+ignore_tail = "0.5 %"
+shortest_segment = "20 m"
+[output]
+folder = "answer"
+rasters = "geotiff"
+)");
+    CHECK(study.title == "Lower town");
+    CHECK(study.report_units == ReportUnits::si);
+    CHECK(study.terrain.band == 2);
+    CHECK(study.terrain.elevation_unit == us_survey_feet(1));
+    CHECK(study.terrain.slope_window == metres(30));
+    CHECK(study.terrain.vertical_step == millimetres(1));
+    CHECK(study.terrain.pond_depth == feet(1));
+    CHECK(study.terrain.pond_speed == metres_per_second(1));
+    CHECK(study.surface.band == 3);
+    CHECK(study.surface.book == "town.csv");
+    CHECK(study.surface.fallback_class == 71);
+    CHECK(study.points.file == "points.gpkg");
+    CHECK(study.points.name == "label");
+    CHECK(study.points.layer == "inlets");
+    CHECK(study.points.move_within == metres(0));
+    CHECK(study.timing.sheet_limit == metres(30));
+    CHECK(study.timing.sheet_limit_rule == SheetLimitRule::stated);
+    CHECK(study.timing.shallow == ShallowRule::paved_and_unpaved);
+    CHECK(study.timing.slope_floor_overland == 0.002);
+    CHECK(study.timing.slope_floor_channel == 0.0);
+    CHECK_FALSE(study.timing.channel_from);
+    CHECK(study.timing.channel.n == 0.05);
+    CHECK(study.timing.channel.width->exponent == 0.4);
+    CHECK(study.timing.channel.depth->coefficient == metres(0.5));
+    CHECK(study.timing.ignore_tail == 0.005);
+    CHECK(study.timing.shortest_segment == metres(20));
+    CHECK(study.output.folder == "answer");
+}
+
+TEST_CASE("points may be found by area, and ponded speed have no cap") {
+    CHECK(read("[points]\nauto_area = \"2 %\"\n").points.auto_area == 0.02);
+    CHECK(std::isinf(read("[terrain]\npond_speed = \"unlimited\"\n").terrain.pond_speed.si()));
+}
+
+TEST_CASE("dotted keys and inline tables say the same as sections") {
+    CHECK(read("timing.channel.hydraulic_radius = \"0.4 m\"\n").timing.channel.hydraulic_radius == metres(0.4));
+    CHECK(read("[timing.channel]\nhydraulic_radius = \"0.4 m\"\n").timing.channel.hydraulic_radius == metres(0.4));
+}
+
+TEST_CASE("an unknown key is refused with file, line, column and the nearest right key") {
+    CHECK_THROWS_WITH(read("[terrain]\nelevation = \"d.tif\"\n  slope_widnow = \"20 m\"\n"),
+                      "studies/town.toml, line 3, column 3: terrain.slope_widnow is not a key of a study; did you mean "
+                      "terrain.slope_window?");
+}
+
+TEST_CASE("a right key in the wrong section is shown its place") {
+    CHECK_THROWS_WITH(read("[timing]\nslope_window = \"20 m\"\n"), Contains("did you mean terrain.slope_window?"));
+    CHECK_THROWS_WITH(read("elevation = \"d.tif\"\n"), Contains("did you mean terrain.elevation?"));
+}
+
+TEST_CASE("an unknown section is refused, empty or not") {
+    CHECK_THROWS_WITH(read("[terain]\nelevation = \"d.tif\"\n"),
+                      Contains("line 1") && Contains("did you mean terrain.elevation?"));
+    CHECK_THROWS_WITH(read("[weather]\n"), Contains("weather is not a key of a study"));
+    CHECK_THROWS_WITH(read("[[terrain]]\n"), Contains("terrain holds keys of its own"));
+    CHECK_THROWS_WITH(read("terrain = 3\n"), Contains("terrain holds keys of its own"));
+}
+
+TEST_CASE("what this version does not compute is refused and not passed over") {
+    for (const auto* text :
+         {"[terrain]\nchannels = \"b.gpkg\"", "[terrain]\ncrossings = \"c\"", "[terrain]\nbarriers = \"c\"",
+          "[terrain]\nkeep_water = \"c\"", "[surface]\nsoil_group = \"B\"", "[points]\npipes = \"p\"",
+          "[points]\narea = \"a\"", "[rain]\nfile = \"r.csv\"", "[rain]\nreturn_periods = [2, 10]",
+          "[timing]\nstorm = \"whole path\"", "[timing]\noverrides = \"o.csv\"", "[timing]\nraster_return_period = 10",
+          "[timing]\nchannel = { flow = \"design storm\" }", "[peaks]\nleast_time = \"5 min\"",
+          "[uncertainty]\ndraws = 500", "[scenario.after]\nsurface.cover = \"p.tif\"",
+          "[output]\nisochrones = \"5 min\"", "[peaks]"}) {
+        INFO(text);
+        CHECK_THROWS_WITH(read(text), Contains("not known to this version of rillclock") && Contains("line "));
+    }
+}
+
+TEST_CASE("words of a key that this version does not compute are refused") {
+    for (const auto* text : {"[timing]\nsheet = \"kinematic\"", "[surface]\npath_length = \"unbiased\"",
+                             "[surface]\nbook = \"worldcover\"", "[output]\nrasters = \"cog\""}) {
+        INFO(text);
+        CHECK_THROWS_WITH(read(text), Contains("this version of rillclock does not") && Contains("line 2, column "));
+    }
+}
+
+TEST_CASE("a word that is not among a key's words is refused with them") {
+    CHECK_THROWS_WITH(read("report_units = \"uss\"\n"), Contains("write \"us\" or \"si\"; did you mean us?"));
+    CHECK_THROWS_WITH(read("[terrain]\nelevation_unit = \"feet\"\n"),
+                      Contains("write \"m\" or \"ft\" or \"us survey ft\""));
+}
+
+TEST_CASE("a wrong unit is refused with line, column and the right form") {
+    CHECK_THROWS_WITH(read("[terrain]\nslope_window = \"20 s\"\n"),
+                      Contains("terrain.slope_window (studies/town.toml, line 2, column 16) is \"20 s\"") &&
+                          Contains("such as \"20 m\""));
+    CHECK_THROWS_WITH(read("[terrain]\nslope_window = 20\n"),
+                      Contains("is 20; write a text in quotes, such as \"20 m\""));
+    CHECK_THROWS_WITH(read("[rain]\ntwo_year_24_hour = \"3.6\"\n"), Contains("has no unit") && Contains("\"3.6 in\""));
+    CHECK_THROWS_WITH(read("[rain]\ntwo_year_24_hour = \"360 in\"\n"), Contains("lies between 0.5 in and 30 in"));
+}
+
+TEST_CASE("every length, area, speed and share refuses zero, negative numbers and what is no number") {
+    for (const auto* form :
+         {"terrain.slope_window = \"{} m\"", "terrain.vertical_step = \"{} m\"", "terrain.pond_depth = \"{} m\"",
+          "terrain.pond_speed = \"{} m/s\"", "points.auto_area = \"{} %\"", "rain.two_year_24_hour = \"{} in\"",
+          "timing.sheet_limit = \"{} ft\"", "timing.channel_from = \"{} ha\"", "timing.channel.width = \"{} m\"",
+          "timing.channel.depth = \"{} m * km2^0.2\"", "timing.channel.hydraulic_radius = \"{} m\"",
+          "timing.shortest_segment = \"{} m\"", "timing.channel.n = {}"})
+        for (const auto* number : {"0", "-1", "nan", "inf", "-inf"}) {
+            std::string text = form;
+            text.replace(text.find("{}"), 2, number);
+            INFO(text);
+            CHECK_THROWS_AS(read(text), Error);
+        }
+}
+
+TEST_CASE("what may be zero refuses negative numbers and what is no number") {
+    for (const auto* form :
+         {"points.move_within = \"{} m\"", "timing.ignore_tail = \"{} %\"", "timing.slope_floor.overland = {}",
+          "timing.slope_floor.channel = {}", "surface.fallback_class = {}"}) {
+        const auto with = [&](const char* number) {
+            return std::string(form).replace(std::string(form).find("{}"), 2, number);
+        };
+        CHECK_NOTHROW(read(with("0")));
+        for (const auto* number : {"-1", "nan", "inf"}) CHECK_THROWS_AS(read(with(number)), Error);
+    }
+}
+
+TEST_CASE("a share of all or more is refused") {
+    CHECK_THROWS_WITH(read("[timing]\nignore_tail = \"100 %\"\n"), Contains("under 100 %"));
+}
+
+TEST_CASE("a whole number is asked for where only that has a meaning") {
+    CHECK_THROWS_WITH(read("[terrain]\nband = 0\n"), Contains("is 0; write a whole number, 1 or more"));
+    CHECK_THROWS_WITH(read("[terrain]\nband = 1.5\n"), Contains("is 1.5; write a whole number"));
+    CHECK_THROWS_WITH(read("[terrain]\nband = \"1\"\n"), Contains("is \"1\"; write a whole number"));
+    CHECK_THROWS_WITH(read("[terrain]\nband = true\n"), Contains("is true; write a whole number"));
+}
+
+TEST_CASE("a list, a date or an empty text is no value of a key") {
+    CHECK_THROWS_WITH(read("title = [1, 2]\n"), Contains("is a list, a table or a date"));
+    CHECK_THROWS_WITH(read("title = 2020-01-01\n"), Contains("is a list, a table or a date"));
+    CHECK_THROWS_WITH(read("[terrain]\nelevation = \"\"\n"), Contains("is empty"));
+}
+
+TEST_CASE("a key given twice is refused with its line") {
+    CHECK_THROWS_WITH(read("[terrain]\nband = 1\nband = 2\n"),
+                      Contains("studies/town.toml, line 3") && Contains("each key once"));
+}
+
+TEST_CASE("text that is no TOML is refused with its line") {
+    CHECK_THROWS_WITH(read("[terrain\nband = 1\n"),
+                      Contains("studies/town.toml, line 1") && Contains("cannot be read as TOML"));
+    CHECK_THROWS_WITH(read("title = \"\xff\"\n"), Contains("cannot be read as TOML"));
+}
+
+}  // namespace
+}  // namespace rillclock

@@ -1,0 +1,170 @@
+#include "rillclock/surface/cover_book.hpp"
+
+#include <catch2/catch.hpp>
+
+#include "rillclock/hydraulics/shallow_flow.hpp"
+
+namespace rillclock {
+namespace {
+
+using Catch::Contains;
+
+const std::string header = "code,name,n_low,n_typical,n_high,shallow_type,water_depth_m,source\n";
+
+CoverBook book(const std::string& rows) {
+    return parse_cover_book(header + rows, "town.csv");
+}
+
+TEST_CASE("a class has the numbers of its row") {
+    const CoverBook town = book("7,Lawn,0.15,0.24,0.41,short-grass pasture,,TR-55 table 3-1\n");
+    const CoverClass* lawn = town.find(7);
+    REQUIRE(lawn != nullptr);
+    CHECK(lawn->name == "Lawn");
+    CHECK(lawn->n_low == 0.15);
+    CHECK(lawn->n_typical == 0.24);
+    CHECK(lawn->n_high == 0.41);
+    CHECK(lawn->shallow_k == feet_per_second(6.962));
+    CHECK(lawn->shallow_type == "short-grass pasture");
+    CHECK_FALSE(lawn->paved);
+    CHECK_FALSE(lawn->is_open_water());
+    CHECK(lawn->source == "TR-55 table 3-1");
+    CHECK_FALSE(lawn->from_memory);
+}
+
+TEST_CASE("a code the book does not have finds no class") {
+    CHECK(book("7,Lawn,,0.24,,short-grass pasture,,own\n").find(8) == nullptr);
+}
+
+TEST_CASE("low and high roughness are the typical one where they are not given") {
+    const CoverBook town = book("7,Lawn,,0.24,,short-grass pasture,,own\n");
+    CHECK(town.find(7)->n_low == 0.24);
+    CHECK(town.find(7)->n_high == 0.24);
+}
+
+TEST_CASE("a water depth makes a class open water") {
+    const CoverBook town = book("1,Pond,,,,,1.5,own\n");
+    CHECK(town.find(1)->is_open_water());
+    CHECK(town.find(1)->water_depth == metres(1.5));
+    const CoverBook in_feet =
+        parse_cover_book("code,name,n_typical,water_depth_ft,source\n1,Pond,,5,own\n", "town.csv");
+    CHECK(in_feet.find(1)->water_depth == feet(5));
+}
+
+TEST_CASE("pavement is paved, and a row may say otherwise") {
+    CHECK(book("2,Street,,0.011,,pavement,,own\n").find(2)->paved);
+    const std::string with_paved = "code,name,n_typical,shallow_type,paved,source\n";
+    CHECK_FALSE(parse_cover_book(with_paved + "2,Gully,0.05,pavement,no,own\n", "town.csv").find(2)->paved);
+    CHECK_THROWS_WITH(parse_cover_book(with_paved + "2,Gully,0.05,pavement,maybe,own\n", "town.csv"),
+                      Contains("town.csv, line 2, column 5 (paved) is \"maybe\"; write yes or no"));
+}
+
+TEST_CASE("a velocity at slope one may stand in place of a type, in either unit") {
+    const CoverBook si =
+        parse_cover_book("code,name,n_typical,shallow_k_m_s,source\n3,Gravel,0.02,4.5,own\n", "town.csv");
+    CHECK(si.find(3)->shallow_k == metres_per_second(4.5));
+    CHECK(si.find(3)->shallow_type == "stated");
+    const CoverBook us =
+        parse_cover_book("code,name,n_typical,shallow_k_ft_s,source\n3,Gravel,0.02,15,own\n", "town.csv");
+    CHECK(us.find(3)->shallow_k == feet_per_second(15));
+}
+
+TEST_CASE("classes come in the order of their codes") {
+    const CoverBook town = book("9,B,,0.1,,pavement,,own\n2,A,,0.1,,pavement,,own\n");
+    CHECK(town.classes()[0].code == 2);
+    CHECK(town.classes()[1].code == 9);
+}
+
+TEST_CASE("a roughness that is not above zero is refused with line and column") {
+    for (const auto* wrong : {"-0.1", "0", "nan", "inf", "rough", "1e400"})
+        CHECK_THROWS_WITH(book("\n7,Lawn,," + std::string(wrong) + ",,pavement,,own\n"),
+                          Contains("town.csv, line 3, column 4 (n_typical) is \"" + std::string(wrong) + "\""));
+    CHECK_THROWS_WITH(book("7,Lawn,,,,pavement,,own\n"), Contains("line 2, column 4 (n_typical) is empty"));
+    CHECK_THROWS_WITH(book("7,Lawn,,24,,pavement,,own\n"), Contains("between 0 and 2"));
+}
+
+TEST_CASE("low, typical and high roughness must ascend") {
+    CHECK_THROWS_WITH(book("7,Lawn,0.3,0.24,0.41,pavement,,own\n"),
+                      Contains("column 3 (n_low) is 0.3, above n_typical 0.24"));
+    CHECK_THROWS_WITH(book("7,Lawn,0.2,0.24,0.21,pavement,,own\n"),
+                      Contains("column 5 (n_high) is 0.21, below n_typical 0.24"));
+}
+
+TEST_CASE("a depth of water that is not above zero is refused") {
+    for (const auto* wrong : {"-1", "0", "nan"})
+        CHECK_THROWS_WITH(book("1,Pond,,,,," + std::string(wrong) + ",own\n"), Contains("column 7 (water_depth_m)"));
+}
+
+TEST_CASE("open water with a roughness is a contradiction") {
+    CHECK_THROWS_WITH(book("1,Pond,,0.03,,,2,own\n"),
+                      Contains("column 4 (n_typical) is given, but a water depth makes the class open water"));
+}
+
+TEST_CASE("two velocities for one class are a contradiction") {
+    CHECK_THROWS_WITH(
+        parse_cover_book("code,name,n_typical,shallow_type,shallow_k_m_s,source\n3,G,0.02,pavement,4.5,own\n",
+                         "town.csv"),
+        Contains("(shallow_type) is given, but the velocity"));
+    CHECK_THROWS_WITH(
+        parse_cover_book("code,name,n_typical,shallow_k_m_s,shallow_k_ft_s,source\n3,G,0.02,4,13,own\n", "town.csv"),
+        Contains("(shallow_k_ft_s) is given, but shallow_k_m_s is given too"));
+}
+
+TEST_CASE("a code given twice is refused with both lines") {
+    CHECK_THROWS_WITH(book("7,A,,0.1,,pavement,,own\n7,B,,0.1,,pavement,,own\n"),
+                      Contains("line 3, column 1 (code) is 7, which line 2 has"));
+}
+
+TEST_CASE("a code that is no whole number is refused") {
+    for (const auto* wrong : {"7.5", "seven", "9999999999", ""})
+        CHECK_THROWS_WITH(book(std::string(wrong) + ",A,,0.1,,pavement,,own\n"), Contains("column 1 (code)"));
+}
+
+TEST_CASE("an unknown type of ground is refused with the nearest") {
+    CHECK_THROWS_WITH(book("7,A,,0.1,,pavemnet,,own\n"),
+                      Contains("(shallow_type) is \"pavemnet\"") && Contains("did you mean pavement?"));
+    CHECK_THROWS_WITH(book("7,A,,0.1,,,,own\n"), Contains("(shallow_type) is empty"));
+}
+
+TEST_CASE("a book must have its columns, each once, and no others") {
+    CHECK_THROWS_WITH(parse_cover_book("code,name,n_typical\n", "town.csv"), Contains("has no column source"));
+    CHECK_THROWS_WITH(parse_cover_book("code,name,n_typicl,source\n", "town.csv"),
+                      Contains("column 3") && Contains("did you mean n_typical?"));
+    CHECK_THROWS_WITH(parse_cover_book("code,code,name,n_typical,source\n", "town.csv"), Contains("is there twice"));
+    CHECK_THROWS_WITH(book(""), Contains("has no class"));
+}
+
+TEST_CASE("every class needs a name and a source") {
+    CHECK_THROWS_WITH(book("7,,,0.1,,pavement,,own\n"), Contains("column 2 (name) is empty"));
+    CHECK_THROWS_WITH(book("7,A,,0.1,,pavement,,\n"), Contains("column 8 (source) is empty"));
+}
+
+TEST_CASE("nlcd has the twenty classes of its legend, each with a source and marked as to check") {
+    const CoverBook nlcd = built_in_book("nlcd");
+    CHECK(nlcd.name() == "nlcd");
+    CHECK(nlcd.classes().size() == 20);
+    for (const int code : {11, 12, 21, 22, 23, 24, 31, 41, 42, 43, 51, 52, 71, 72, 73, 74, 81, 82, 90, 95})
+        CHECK(nlcd.find(code) != nullptr);
+    for (const CoverClass& cover : nlcd.classes()) {
+        CHECK_FALSE(cover.source.empty());
+        CHECK(cover.from_memory);
+    }
+}
+
+TEST_CASE("nlcd takes published values where there are any") {
+    const CoverBook nlcd = built_in_book("nlcd");
+    CHECK(nlcd.find(41)->n_typical == 0.36);
+    CHECK(nlcd.find(82)->n_typical == 0.06);
+    CHECK(nlcd.find(82)->n_high == 0.17);
+    CHECK(nlcd.find(24)->paved);
+    CHECK_FALSE(nlcd.find(21)->paved);
+    CHECK(nlcd.find(11)->water_depth == metres(2));
+}
+
+TEST_CASE("a book that is not built in is refused, and its name is taken for a file") {
+    CHECK(is_built_in_book("nlcd"));
+    CHECK_FALSE(is_built_in_book("nlcd.csv"));
+    CHECK_THROWS_WITH(built_in_book("nlcb"), Contains("did you mean nlcd?"));
+}
+
+}  // namespace
+}  // namespace rillclock
