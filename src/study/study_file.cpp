@@ -19,7 +19,8 @@ toml::table parsed(std::string_view text, const std::string& file) {
         return toml::parse(text, std::string_view(file));
     } catch (const toml::parse_error& error) {
         throw input_error(place(file, error.source().begin) + ": the study cannot be read as TOML (" +
-                          std::string(error.description()) + "); write key = value under [section], texts in quotes, and each key once");
+                          std::string(error.description()) +
+                          "); write key = value under [section], texts in quotes, and each key once");
     }
 }
 
