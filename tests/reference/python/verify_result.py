@@ -115,8 +115,7 @@ class Ground:
         earth = pyproj.Geod(a=a, rf=inverse)
         latitude = raster.top - (np.arange(rows + 1) + 0.5) * raster.height
         zero, step = np.zeros(rows), np.full(rows, raster.width)
-        here, below = latitude[:-1], latitude[1:]
-        below = np.where(below < -90, 2 * here - latitude[:-1] + raster.height, below)
+        here, below = latitude[:-1], np.maximum(latitude[1:], -90)
         self.east = earth.inv(zero, here, step, here)[2]
         self.south = earth.inv(zero, here, zero, below)[2]
         self.diagonal = earth.inv(zero, here, step, below)[2]
