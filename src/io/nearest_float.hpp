@@ -6,10 +6,11 @@
 
 namespace rillclock {
 
-/// The float nearest to a double; numbers beyond the range of floats (many files tag -1.8e308 as nodata) become its ends.
+/// The finite float nearest to a double, or NaN; many files of floats tag -1.8e308 or an infinity as nodata and hold the end of
+/// the floats' range.
 [[nodiscard]] inline float nearest_float(double value) {
     constexpr double greatest = std::numeric_limits<float>::max();
-    return static_cast<float>(std::isfinite(value) ? std::clamp(value, -greatest, greatest) : value);
+    return static_cast<float>(std::isnan(value) ? value : std::clamp(value, -greatest, greatest));
 }
 
 }  // namespace rillclock

@@ -135,7 +135,9 @@ void RasterFile::set_stored_type() {
     }
     int has_nodata = 0;
     const double nodata = band_->GetNoDataValue(&has_nodata);
-    if (has_nodata != 0) nodata_ = nodata;
+    // A float file holds floats: the tag, a double, means the float nearest to it.
+    if (has_nodata != 0)
+        nodata_ = stored_ == StoredType::float32 ? static_cast<double>(nearest_float(nodata)) : nodata;
 }
 
 void RasterFile::set_grid() {
@@ -233,11 +235,7 @@ void RasterFile::hide_masked(const Window& window, std::span<double> values) con
 }
 
 void RasterFile::hide_nodata(std::span<double> values) const {
-    if (!nodata_) return;
-    // A float file holds floats: the tag, a double, is compared as the float nearest to it.
-    const bool is_float = stored_ == StoredType::float32;
-    const double nodata = is_float ? static_cast<double>(nearest_float(*nodata_)) : *nodata_;
-    std::replace(values.begin(), values.end(), nodata, nan);
+    if (nodata_) std::replace(values.begin(), values.end(), *nodata_, nan);
 }
 
 std::int64_t RasterFile::read(const Window& window, std::span<double> values) const {
