@@ -15,8 +15,8 @@
 namespace rillclock {
 namespace {
 
-/// Columns between places that are always transformed exactly; fixed by the target grid, so that the answer does not depend on
-/// the window.
+/// Columns between places that are always transformed exactly; fixed by the target grid, so that the answer does not
+/// depend on the window.
 constexpr std::int64_t anchor_spacing = 64;
 constexpr std::int64_t largest_read = std::int64_t{1} << 22U;  // cells, 32 MB of doubles
 constexpr std::int64_t largest_sampled = std::int64_t{1} << 20U;
@@ -51,8 +51,8 @@ private:
         if (transformation_) transformation_->transform(x, y);
     }
 
-    /// Cells `from` on, all within the anchors at `begin` and one spacing further: interpolated where the middle is then right to
-    /// a two-hundredth of a cell (the error of a chord is greatest there), else exact.
+    /// Cells `from` on, all within the anchors at `begin` and one spacing further: interpolated where the middle is
+    /// then right to a two-hundredth of a cell (the error of a chord is greatest there), else exact.
     void stretch(std::int64_t row, std::int64_t begin, std::int64_t from, std::span<double> x, std::span<double> y) {
         const std::int64_t end = std::min(begin + anchor_spacing, target_.columns - 1);
         const std::int64_t middle = (begin + end) / 2;
@@ -170,10 +170,11 @@ private:
         if (std::isnan(value)) return no_class;
         if (value > -2147483648.0 && value <= 2147483647.0 && value == std::floor(value))
             return static_cast<std::int32_t>(value);
-        throw input_error("The " + file_.called() + " holds " + number(value) + " in row " + std::to_string(at.row) +
-                          ", column " + std::to_string(at.column) +
-                          ", but classes must be whole numbers; give a raster of classes (gdal_translate -ot Int32 where "
-                          "these are meant to be).");
+        throw input_error(
+            "The " + file_.called() + " holds " + number(value) + " in row " + std::to_string(at.row) + ", column " +
+            std::to_string(at.column) +
+            ", but classes must be whole numbers; give a raster of classes (gdal_translate -ot Int32 where "
+            "these are meant to be).");
     }
 
     RasterFile file_;
@@ -188,8 +189,9 @@ std::optional<std::array<Place, 2>> bounds_of(const Grid& target, std::optional<
     constexpr int steps = 20;
     for (int i = 0; i <= steps; ++i)
         for (int j = 0; j <= steps; ++j) {
-            std::optional<Place> at = Place{target.left + target.cell_width * static_cast<double>(target.columns) * j / steps,
-                                            target.top - target.cell_height * static_cast<double>(target.rows) * i / steps};
+            std::optional<Place> at =
+                Place{target.left + target.cell_width * static_cast<double>(target.columns) * j / steps,
+                      target.top - target.cell_height * static_cast<double>(target.rows) * i / steps};
             if (transformation) at = (*transformation)(*at);
             if (!at) continue;
             bounds[0] = {std::min(bounds[0].x, at->x), std::min(bounds[0].y, at->y)};
@@ -214,7 +216,8 @@ void check_overlap(const RasterFile& file, const Grid& target, const ReferenceSy
                       "system (gdalinfo).");
 }
 
-void notice_systems(const RasterFile& file, const ReferenceSystem& target_system, bool is_transformed, Notices& notices) {
+void notice_systems(const RasterFile& file, const ReferenceSystem& target_system, bool is_transformed,
+                    Notices& notices) {
     if (is_transformed)
         notices.push_back({.code = "cover-transformed",
                            .text = "The " + file.called() + " is in " + file.system().name() +
@@ -227,9 +230,12 @@ void notice_systems(const RasterFile& file, const ReferenceSystem& target_system
                                    "; both give the same coordinates here, so nothing is transformed."});
 }
 
-bool is_half(double cells_apart) { return std::abs(std::abs(cells_apart - std::round(cells_apart)) - 0.5) < 0.05; }
+bool is_half(double cells_apart) {
+    return std::abs(std::abs(cells_apart - std::round(cells_apart)) - 0.5) < 0.05;
+}
 
-/// Two grids of one cell size that lie half a cell apart both ways: usually one file means cell centres where it says corners.
+/// Two grids of one cell size that lie half a cell apart both ways: usually one file means cell centres where it says
+/// corners.
 void notice_half_cell(const RasterFile& file, const Grid& target, Notices& notices) {
     const Grid& cover = file.grid();
     if (std::abs(cover.cell_width / target.cell_width - 1.0) > 1e-6) return;
@@ -237,7 +243,8 @@ void notice_half_cell(const RasterFile& file, const Grid& target, Notices& notic
     if (!is_half((cover.left - target.left) / target.cell_width)) return;
     if (!is_half((cover.top - target.top) / target.cell_height)) return;
     notices.push_back({.code = "cover-half-cell",
-                       .text = "The " + file.called() + " has the elevations' cell size but lies half a cell beside them; "
+                       .text = "The " + file.called() +
+                               " has the elevations' cell size but lies half a cell beside them; "
                                "perhaps one of the two files gives cell centres where corners are meant."});
 }
 
@@ -263,7 +270,8 @@ CoverFile open_cover(const std::filesystem::path& path, const CoverOptions& opti
     Notices notices;
     notice_systems(file, target_system, transformation.has_value(), notices);
     if (!transformation) notice_half_cell(file, target, notices);
-    CoverFile result{.source = nullptr, .system = file.system(), .file_grid = file.grid(), .notices = std::move(notices)};
+    CoverFile result{
+        .source = nullptr, .system = file.system(), .file_grid = file.grid(), .notices = std::move(notices)};
     CoverPlaces places(target, file.grid(), std::move(transformation));
     result.source = std::make_unique<CoverSource>(std::move(file), target, std::move(places));
     return result;

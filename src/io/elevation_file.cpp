@@ -83,14 +83,17 @@ void set_scale(const RasterFile& file, ElevationFormat& format, Notices& notices
     format.offset = file.band().GetOffset();
     if (!(format.scale > 0.0) || !std::isfinite(format.scale) || !std::isfinite(format.offset))
         throw input_error("The " + file.called() + " has scale " + number(format.scale) + " and offset " +
-                          number(format.offset) + ", but a scale must be above 0; set it with gdal_edit.py -scale 1 -offset 0.");
+                          number(format.offset) +
+                          ", but a scale must be above 0; set it with gdal_edit.py -scale 1 -offset 0.");
     if (format.scale == 1.0 && format.offset == 0.0) return;
     notices.push_back({.code = "elevation-scaled",
                        .text = "Elevations are the values of the " + file.called() + " times " + number(format.scale) +
                                " plus " + number(format.offset) + ", as the file says."});
 }
 
-std::string line_to_add(const char* unit) { return std::string("elevation_unit = \"") + unit + "\""; }
+std::string line_to_add(const char* unit) {
+    return std::string("elevation_unit = \"") + unit + "\"";
+}
 
 /// A unit and who says so.
 struct Statement {
@@ -102,7 +105,8 @@ std::optional<Statement> stated_by_study(const std::optional<std::string>& text)
     if (!text) return std::nullopt;
     const std::optional<LengthUnit> unit = length_unit_named(*text);
     if (!unit)
-        throw input_error("elevation_unit = \"" + *text + "\" is no unit of length; write \"m\", \"ft\" or \"us survey ft\".");
+        throw input_error("elevation_unit = \"" + *text +
+                          "\" is no unit of length; write \"m\", \"ft\" or \"us survey ft\".");
     return Statement{"the study", *unit};
 }
 
@@ -112,8 +116,8 @@ std::optional<Statement> stated_by_band(const RasterFile& file, bool study_state
     const std::optional<LengthUnit> unit = length_unit_named(text);
     if (!unit && !study_states_it)
         throw input_error("The " + file.called() + " gives its elevations in \"" + text +
-                          "\", which is no unit of length that is known; state it in the study: " + line_to_add("m") + " or " +
-                          line_to_add("ft") + ".");
+                          "\", which is no unit of length that is known; state it in the study: " + line_to_add("m") +
+                          " or " + line_to_add("ft") + ".");
     return unit ? std::optional(Statement{"the file's band", *unit}) : std::nullopt;
 }
 
@@ -129,8 +133,8 @@ std::optional<Statement> agreed(const RasterFile& file, const std::array<std::op
         if (!next) continue;
         if (!first) first = next;
         if (first->unit.contradicts(next->unit))
-            throw input_error("The vertical unit of the " + file.called() + " is contradictory: " + first->by + " says " +
-                              first->unit.name + ", " + next->by + " says " + next->unit.name +
+            throw input_error("The vertical unit of the " + file.called() + " is contradictory: " + first->by +
+                              " says " + first->unit.name + ", " + next->by + " says " + next->unit.name +
                               "; correct whichever is wrong (gdal_edit.py -units, gdal_edit.py -a_srs, or the study's "
                               "elevation_unit).");
     }
@@ -138,17 +142,20 @@ std::optional<Statement> agreed(const RasterFile& file, const std::array<std::op
 }
 
 LengthUnit vertical_unit(const RasterFile& file, const ElevationOptions& options, Notices& notices) {
-    const std::optional<Statement> found =
-        agreed(file, {stated_by_study(options.unit), stated_by_system(file.system()),
-                      stated_by_band(file, options.unit.has_value())});
+    const std::optional<Statement> found = agreed(file, {stated_by_study(options.unit), stated_by_system(file.system()),
+                                                         stated_by_band(file, options.unit.has_value())});
     if (found) return found->unit;
     if (file.system().is_projected() && !file.system().linear_unit().is_metre())
-        throw input_error("The " + file.called() + " does not say in what unit its elevations are, and its grid is in " +
-                          file.system().linear_unit().name + "; add the line " + line_to_add("ft") + " (or \"m\", \"us survey ft\") "
+        throw input_error("The " + file.called() +
+                          " does not say in what unit its elevations are, and its grid is in " +
+                          file.system().linear_unit().name + "; add the line " + line_to_add("ft") +
+                          " (or \"m\", \"us survey ft\") "
                           "to the study.");
     notices.push_back({.code = "elevation-unit-assumed",
-                       .text = "The " + file.called() + " does not say in what unit its elevations are; they are taken as "
-                               "metres. If they are feet, add the line " + line_to_add("ft") + " to the study."});
+                       .text = "The " + file.called() +
+                               " does not say in what unit its elevations are; they are taken as "
+                               "metres. If they are feet, add the line " +
+                               line_to_add("ft") + " to the study."});
     return {};
 }
 
@@ -160,14 +167,21 @@ struct Range {
 /// None for floating point.
 std::optional<Range> range_of(StoredType type) {
     switch (type) {
-        case StoredType::int8: return Range{-128, 127};
-        case StoredType::uint8: return Range{0, 255};
-        case StoredType::int16: return Range{-32768, 32767};
-        case StoredType::uint16: return Range{0, 65535};
-        case StoredType::int32: return Range{-2147483648.0, 2147483647.0};
-        case StoredType::uint32: return Range{0, 4294967295.0};
+        case StoredType::int8:
+            return Range{-128, 127};
+        case StoredType::uint8:
+            return Range{0, 255};
+        case StoredType::int16:
+            return Range{-32768, 32767};
+        case StoredType::uint16:
+            return Range{0, 65535};
+        case StoredType::int32:
+            return Range{-2147483648.0, 2147483647.0};
+        case StoredType::uint32:
+            return Range{0, 4294967295.0};
         case StoredType::float32:
-        case StoredType::float64: return std::nullopt;
+        case StoredType::float64:
+            return std::nullopt;
     }
     return std::nullopt;
 }
@@ -180,19 +194,21 @@ bool holds(StoredType type, double value) {
 void check_nodata(const RasterFile& file, ElevationFormat& format, Notices& notices) {
     if (!format.nodata) return;
     if (!holds(format.stored, *format.nodata)) {
-        notices.push_back({.code = "nodata-outside-type",
-                           .text = "The nodata value " + number(*format.nodata) + " of the " + file.called() +
-                                   " cannot be held by its type, so no cell has it; correct it with gdal_edit.py -a_nodata "
-                                   "where the file has void cells."});
+        notices.push_back(
+            {.code = "nodata-outside-type",
+             .text = "The nodata value " + number(*format.nodata) + " of the " + file.called() +
+                     " cannot be held by its type, so no cell has it; correct it with gdal_edit.py -a_nodata "
+                     "where the file has void cells."});
         format.nodata.reset();
         return;
     }
     const double as_elevation_m = (*format.nodata * format.scale + format.offset) * format.unit.metres_per_unit;
     if (as_elevation_m > -450.0 && as_elevation_m < 8900.0)
-        notices.push_back({.code = "nodata-is-elevation",
-                           .text = "The nodata value " + number(*format.nodata) + " of the " + file.called() +
-                                   " could be a true elevation; cells that have it are void. If they are ground, remove it "
-                                   "with gdal_edit.py -unsetnodata."});
+        notices.push_back(
+            {.code = "nodata-is-elevation",
+             .text = "The nodata value " + number(*format.nodata) + " of the " + file.called() +
+                     " could be a true elevation; cells that have it are void. If they are ground, remove it "
+                     "with gdal_edit.py -unsetnodata."});
 }
 
 /// A file beside the raster can change what it says without anyone noticing.

@@ -34,8 +34,8 @@ struct MessageLog {
 };
 
 using Setting = std::pair<const char*, const char*>;
-constexpr std::array<Setting, 2> settings = {{{"GDAL_VRT_ENABLE_PYTHON", "NO"},
-                                              {"CPL_VSIL_CURL_ALLOWED_FILENAME", "/nonexistent"}}};
+constexpr std::array<Setting, 2> settings = {
+    {{"GDAL_VRT_ENABLE_PYTHON", "NO"}, {"CPL_VSIL_CURL_ALLOWED_FILENAME", "/nonexistent"}}};
 
 /// What all sessions of the process share.
 struct Shared {
@@ -117,11 +117,14 @@ GdalSession::GdalSession() {
     if (proj_database_opens()) return;
     leave();
     throw machine_error(
-        "PROJ's database (proj.db) cannot be opened, so no reference system is known; install the package proj-data, or "
+        "PROJ's database (proj.db) cannot be opened, so no reference system is known; install the package proj-data, "
+        "or "
         "let the environment variable PROJ_LIB name the folder that holds it.");
 }
 
-GdalSession::~GdalSession() { leave(); }
+GdalSession::~GdalSession() {
+    leave();
+}
 
 GdalMark GdalSession::mark() const {
     const std::scoped_lock lock(shared().mutex);

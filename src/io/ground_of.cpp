@@ -36,8 +36,8 @@ private:
         return metres;
     }
 
-    /// Area between the equator and a parallel, for one radian of longitude: (b²/2)·(s/(1−e²s²) + atanh(e·s)/e), s = sin φ.
-    /// J. P. Snyder, Map Projections: A Working Manual, 1987, eq. 3-12, times a²/2.
+    /// Area between the equator and a parallel, for one radian of longitude: (b²/2)·(s/(1−e²s²) + atanh(e·s)/e), s =
+    /// sin φ. J. P. Snyder, Map Projections: A Working Manual, 1987, eq. 3-12, times a²/2.
     [[nodiscard]] double area_to_parallel(double latitude_degrees) const {
         const double s = std::sin(latitude_degrees * std::numbers::pi / 180.0);
         const double f = ellipsoid_.flattening;
@@ -60,14 +60,16 @@ private:
 
 void check_degrees(const Grid& grid, const ReferenceSystem& system) {
     if (system.degrees_per_unit() != 1.0)
-        throw input_error("The grid's reference system " + system.name() +
-                          " measures angles in another unit than degrees; reproject it with gdalwarp -t_srs to a projected "
-                          "system or to EPSG:4326.");
+        throw input_error(
+            "The grid's reference system " + system.name() +
+            " measures angles in another unit than degrees; reproject it with gdalwarp -t_srs to a projected "
+            "system or to EPSG:4326.");
     const double bottom = grid.top - grid.cell_height * static_cast<double>(grid.rows);
     if (!(grid.top <= 90.0 + 1e-9 && bottom >= -90.0 - 1e-9))
-        throw input_error("The grid in " + system.name() +
-                          " reaches beyond a pole (latitude 90); cut it with gdalwarp -te, or reproject it with gdalwarp "
-                          "-t_srs to a polar system such as EPSG:3413 or EPSG:3031.");
+        throw input_error(
+            "The grid in " + system.name() +
+            " reaches beyond a pole (latitude 90); cut it with gdalwarp -te, or reproject it with gdalwarp "
+            "-t_srs to a polar system such as EPSG:3413 or EPSG:3031.");
     const double right = grid.left + grid.cell_width * static_cast<double>(grid.columns);
     if (!(grid.left >= -180.0 - grid.cell_width && right <= 180.0 + grid.cell_width))
         throw input_error("The grid in " + system.name() +
@@ -88,9 +90,10 @@ Ground geographic(const Grid& grid, const ReferenceSystem& system) {
 Ground ground_of(const Grid& grid, const ReferenceSystem& system) {
     if (system.is_geographic()) return geographic(grid, system);
     if (!system.is_projected())
-        throw input_error("The grid's reference system " + system.name() +
-                          " is neither projected nor geographic, so lengths on the ground are unknown; name the true one "
-                          "with gdal_edit.py -a_srs, or reproject with gdalwarp -t_srs.");
+        throw input_error(
+            "The grid's reference system " + system.name() +
+            " is neither projected nor geographic, so lengths on the ground are unknown; name the true one "
+            "with gdal_edit.py -a_srs, or reproject with gdalwarp -t_srs.");
     const double metres_per_unit = system.linear_unit().metres_per_unit;
     return Ground::planar(metres(grid.cell_width * metres_per_unit), metres(grid.cell_height * metres_per_unit));
 }

@@ -29,15 +29,43 @@ struct Spelling {
     std::size_t unit;
 };
 
-constexpr std::array<Spelling, 37> spellings = {
-    {{"m", 0},          {"metre", 0},      {"metres", 0},        {"meter", 0},         {"meters", 0},
-     {"mtr", 0},        {"ft", 1},         {"foot", 1},          {"feet", 1},          {"internationalfoot", 1},
-     {"internationalfeet", 1}, {"footinternational", 1}, {"ftint", 1}, {"intft", 1}, {"usft", 2},
-     {"ftus", 2},       {"footus", 2},     {"feetus", 2},        {"usfoot", 2},        {"ussurveyft", 2},
-     {"ussurveyfoot", 2}, {"ussurveyfeet", 2}, {"surveyfoot", 2}, {"surveyfeet", 2},   {"footussurvey", 2},
-     {"dm", 3},         {"decimetre", 3},  {"decimetres", 3},    {"decimeters", 3},    {"cm", 4},
-     {"centimetre", 4}, {"centimetres", 4}, {"centimeters", 4},  {"mm", 5},            {"millimetres", 5},
-     {"millimeters", 5}, {"km", 6}}};
+constexpr std::array<Spelling, 37> spellings = {{{"m", 0},
+                                                 {"metre", 0},
+                                                 {"metres", 0},
+                                                 {"meter", 0},
+                                                 {"meters", 0},
+                                                 {"mtr", 0},
+                                                 {"ft", 1},
+                                                 {"foot", 1},
+                                                 {"feet", 1},
+                                                 {"internationalfoot", 1},
+                                                 {"internationalfeet", 1},
+                                                 {"footinternational", 1},
+                                                 {"ftint", 1},
+                                                 {"intft", 1},
+                                                 {"usft", 2},
+                                                 {"ftus", 2},
+                                                 {"footus", 2},
+                                                 {"feetus", 2},
+                                                 {"usfoot", 2},
+                                                 {"ussurveyft", 2},
+                                                 {"ussurveyfoot", 2},
+                                                 {"ussurveyfeet", 2},
+                                                 {"surveyfoot", 2},
+                                                 {"surveyfeet", 2},
+                                                 {"footussurvey", 2},
+                                                 {"dm", 3},
+                                                 {"decimetre", 3},
+                                                 {"decimetres", 3},
+                                                 {"decimeters", 3},
+                                                 {"cm", 4},
+                                                 {"centimetre", 4},
+                                                 {"centimetres", 4},
+                                                 {"centimeters", 4},
+                                                 {"mm", 5},
+                                                 {"millimetres", 5},
+                                                 {"millimeters", 5},
+                                                 {"km", 6}}};
 
 std::string letters_of(std::string_view text) {
     std::string letters;

@@ -5,8 +5,12 @@
 
 namespace rillclock {
 
-std::string gdal_version() { return GDALVersionInfo("RELEASE_NAME"); }
+std::string gdal_version() {
+    return GDALVersionInfo("RELEASE_NAME");
+}
 
-std::string proj_version() { return proj_info().version; }
+std::string proj_version() {
+    return proj_info().version;
+}
 
 }  // namespace rillclock

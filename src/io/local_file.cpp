@@ -18,11 +18,14 @@ void check_local_file(const fs::path& path, const std::string& called) {
         throw input_error("The " + called + " is an address and not a local file; download or unpack it first.");
     const fs::file_status status = fs::status(path, problem);
     if (status.type() == fs::file_type::not_found)
-        throw input_error("The " + called + " does not exist; look at the path, which counts from the study file's folder.");
+        throw input_error("The " + called +
+                          " does not exist; look at the path, which counts from the study file's folder.");
     if (problem) throw machine_error("The " + called + " cannot be looked at: " + problem.message() + ".");
     if (fs::is_directory(status)) throw input_error("The " + called + " is a folder; name the file in it.");
-    if (!fs::is_regular_file(status)) throw input_error("The " + called + " is no plain file; name a file on the disk.");
-    if (fs::file_size(path) == 0) throw input_error("The " + called + " is empty (0 bytes); copy or download it again.");
+    if (!fs::is_regular_file(status))
+        throw input_error("The " + called + " is no plain file; name a file on the disk.");
+    if (fs::file_size(path) == 0)
+        throw input_error("The " + called + " is empty (0 bytes); copy or download it again.");
     if (!std::ifstream(path, std::ios::binary))
         throw machine_error("The " + called + " cannot be opened for reading; look at its permissions.");
 }

@@ -5,7 +5,8 @@
 
 namespace rillclock {
 
-/// Throws Error (inputs) where a path is no plain local file with something in it; `called` is the file's name in the sentence.
+/// Throws Error (inputs) where a path is no plain local file with something in it; `called` is the file's name in the
+/// sentence.
 void check_local_file(const std::filesystem::path& path, const std::string& called);
 
 /// What a file that no driver opens seems to be: "it looks like a web page", "it is a text" and so on, for messages.

@@ -16,12 +16,12 @@
 namespace rillclock {
 namespace {
 
-constexpr std::array<const char*, 14> vector_drivers = {"GPKG", "GeoJSON", "GeoJSONSeq",  "ESRI Shapefile", "FlatGeobuf",
-                                                        "CSV",  "KML",     "LIBKML",      "GML",            "GPX",
-                                                        "MapInfo File", "DXF", "SQLite", nullptr};
+constexpr std::array<const char*, 14> vector_drivers = {
+    "GPKG",   "GeoJSON", "GeoJSONSeq", "ESRI Shapefile", "FlatGeobuf", "CSV",    "KML",
+    "LIBKML", "GML",     "GPX",        "MapInfo File",   "DXF",        "SQLite", nullptr};
 constexpr std::array<const char*, 4> csv_columns = {"X_POSSIBLE_NAMES=x,easting,lon,longitude",
-                                                    "Y_POSSIBLE_NAMES=y,northing,lat,latitude",
-                                                    "AUTODETECT_TYPE=YES", nullptr};
+                                                    "Y_POSSIBLE_NAMES=y,northing,lat,latitude", "AUTODETECT_TYPE=YES",
+                                                    nullptr};
 
 class PointReader {
 public:
@@ -67,13 +67,14 @@ private:
         if (options_.layer) {
             layer_ = dataset_->GetLayerByName(options_.layer->c_str());
             if (!layer_)
-                throw input_error("The " + called() + " has no layer \"" + *options_.layer + "\"; it has " + layer_list() + ".");
+                throw input_error("The " + called() + " has no layer \"" + *options_.layer + "\"; it has " +
+                                  layer_list() + ".");
             return;
         }
         if (dataset_->GetLayerCount() > 1)
             throw input_error("The " + called() + " has several layers: " + layer_list() +
-                              "; say which holds the points, for example layer = \"" + dataset_->GetLayer(0)->GetName() +
-                              "\".");
+                              "; say which holds the points, for example layer = \"" +
+                              dataset_->GetLayer(0)->GetName() + "\".");
         layer_ = dataset_->GetLayer(0);
     }
 
@@ -104,21 +105,24 @@ private:
         const std::string wkt = text ? text : "";
         CPLFree(text);
         if (!wkt.empty()) return ReferenceSystem::from_text(wkt);
-        throw input_error("The " + called() + " has no reference system; state the one its coordinates are in: ogr2ogr "
-                          "-a_srs EPSG:nnnnn " + path_.stem().string() + "-placed.gpkg " + path_.string() + ".");
+        throw input_error("The " + called() +
+                          " has no reference system; state the one its coordinates are in: ogr2ogr "
+                          "-a_srs EPSG:nnnnn " +
+                          path_.stem().string() + "-placed.gpkg " + path_.string() + ".");
     }
 
     void leave_out(const std::string& why) {
-        result_.notices.push_back({.code = "point-left-out",
-                                   .text = "Feature " + std::to_string(number_) + " of the " + called() + " " + why +
-                                           ", and is left out."});
+        result_.notices.push_back(
+            {.code = "point-left-out",
+             .text = "Feature " + std::to_string(number_) + " of the " + called() + " " + why + ", and is left out."});
     }
 
     /// The one point of a feature, or none after a notice.
     [[nodiscard]] std::optional<Place> place_of(const OGRFeature& feature) {
         const OGRGeometry* geometry = feature.GetGeometryRef();
         if (!geometry || geometry->IsEmpty()) return leave_out("has no place"), std::nullopt;
-        if (wkbFlatten(geometry->getGeometryType()) == wkbMultiPoint && geometry->toMultiPoint()->getNumGeometries() == 1)
+        if (wkbFlatten(geometry->getGeometryType()) == wkbMultiPoint &&
+            geometry->toMultiPoint()->getNumGeometries() == 1)
             geometry = geometry->toMultiPoint()->getGeometryRef(0);
         if (wkbFlatten(geometry->getGeometryType()) != wkbPoint)
             return leave_out(std::string("is a ") + geometry->getGeometryName() + " and not a point"), std::nullopt;
@@ -138,7 +142,8 @@ private:
     }
 
     [[nodiscard]] std::string name_of(OGRFeature& feature) const {
-        const std::string given = field_ >= 0 && feature.IsFieldSetAndNotNull(field_) ? feature.GetFieldAsString(field_) : "";
+        const std::string given =
+            field_ >= 0 && feature.IsFieldSetAndNotNull(field_) ? feature.GetFieldAsString(field_) : "";
         const std::size_t begin = given.find_first_not_of(" \t\r\n");
         if (begin == std::string::npos) return "point " + std::to_string(number_);
         return given.substr(begin, given.find_last_not_of(" \t\r\n") - begin + 1);
@@ -146,9 +151,10 @@ private:
 
     void check_result() const {
         if (number_ == 0)
-            throw input_error("The " + called() + " holds no features in layer " + layer_->GetName() +
-                              "; draw the design points there, or leave the file out to have points set where water leaves "
-                              "the data.");
+            throw input_error(
+                "The " + called() + " holds no features in layer " + layer_->GetName() +
+                "; draw the design points there, or leave the file out to have points set where water leaves "
+                "the data.");
         if (result_.points.empty())
             throw input_error("The " + called() + " holds no point that can be used: " + result_.notices.front().text);
         check_names();
@@ -162,8 +168,8 @@ private:
             if (count > 1) twice += (twice.empty() ? "\"" : ", \"") + name + "\" (" + std::to_string(count) + " times)";
         if (!twice.empty())
             throw input_error("Points of the " + called() + " have the same name: " + twice +
-                              "; give each its own, or name another field with name = \"...\" (its fields are " + field_list() +
-                              ").");
+                              "; give each its own, or name another field with name = \"...\" (its fields are " +
+                              field_list() + ").");
     }
 
     GdalSession session_;

@@ -19,9 +19,9 @@ namespace {
 
 /// File formats only: nothing here fetches, runs or describes data elsewhere but VRT, which is checked before.
 constexpr std::array<const char*, 27> raster_drivers = {
-    "GTiff", "VRT",     "AAIGrid", "DTED",   "SRTMHGT", "USGSDEM", "HFA",  "EHdr", "ENVI",
-    "AIG",   "GRASSASCIIGrid", "SDTS",  "RST",  "GSAG",    "GSBG",    "GS7BG", "BT",  "SAGA",
-    "XYZ",   "ERS",     "ILWIS",   "netCDF", "GPKG",    "PNG",     "JPEG", "LCP",  nullptr};
+    "GTiff",          "VRT",    "AAIGrid", "DTED", "SRTMHGT", "USGSDEM", "HFA",  "EHdr", "ENVI", "AIG",
+    "GRASSASCIIGrid", "SDTS",   "RST",     "GSAG", "GSBG",    "GS7BG",   "BT",   "SAGA", "XYZ",  "ERS",
+    "ILWIS",          "netCDF", "GPKG",    "PNG",  "JPEG",    "LCP",     nullptr};
 
 constexpr double nan = std::numeric_limits<double>::quiet_NaN();
 
@@ -31,7 +31,9 @@ std::string whole(double value) {
     return text.data();
 }
 
-bool is_alpha(GDALRasterBand& band) { return band.GetColorInterpretation() == GCI_AlphaBand; }
+bool is_alpha(GDALRasterBand& band) {
+    return band.GetColorInterpretation() == GCI_AlphaBand;
+}
 
 std::string band_list(GDALDataset& dataset) {
     std::ostringstream list;
@@ -76,15 +78,17 @@ RasterFile::RasterFile(RasterRequest request) : request_(std::move(request)), op
     check_local_file(request_.path, called());
     if (is_virtual_raster(request_.path)) check_virtual_raster(request_.path);
     open();
-    check_size();
     choose_band();
+    check_content();
+    check_size();
     set_stored_type();
     set_grid();
     set_system();
-    check_content();
 }
 
-std::string RasterFile::called() const { return request_.role + " file " + request_.path.string(); }
+std::string RasterFile::called() const {
+    return request_.role + " file " + request_.path.string();
+}
 
 std::string RasterFile::command(const std::string& program_and_options, const std::string& suffix) const {
     std::filesystem::path to = request_.path;
@@ -120,24 +124,36 @@ void RasterFile::set_stored_type() {
     const char* pixel_type = band_->GetMetadataItem("PIXELTYPE", "IMAGE_STRUCTURE");
     const bool is_signed = pixel_type && std::string(pixel_type) == "SIGNEDBYTE";
     switch (band_->GetRasterDataType()) {
-        case GDT_Byte: stored_ = is_signed ? StoredType::int8 : StoredType::uint8; break;
-        case GDT_Int16: stored_ = StoredType::int16; break;
-        case GDT_UInt16: stored_ = StoredType::uint16; break;
-        case GDT_Int32: stored_ = StoredType::int32; break;
-        case GDT_UInt32: stored_ = StoredType::uint32; break;
-        case GDT_Float32: stored_ = StoredType::float32; break;
-        case GDT_Float64: stored_ = StoredType::float64; break;
+        case GDT_Byte:
+            stored_ = is_signed ? StoredType::int8 : StoredType::uint8;
+            break;
+        case GDT_Int16:
+            stored_ = StoredType::int16;
+            break;
+        case GDT_UInt16:
+            stored_ = StoredType::uint16;
+            break;
+        case GDT_Int32:
+            stored_ = StoredType::int32;
+            break;
+        case GDT_UInt32:
+            stored_ = StoredType::uint32;
+            break;
+        case GDT_Float32:
+            stored_ = StoredType::float32;
+            break;
+        case GDT_Float64:
+            stored_ = StoredType::float64;
+            break;
         default:
-            throw input_error("The " + called() + " holds values of type " +
-                              GDALGetDataTypeName(band_->GetRasterDataType()) +
-                              ", which are not read; convert them: " + command("gdal_translate -ot Float64", "float64") +
-                              ".");
+            throw input_error(
+                "The " + called() + " holds values of type " + GDALGetDataTypeName(band_->GetRasterDataType()) +
+                ", which are not read; convert them: " + command("gdal_translate -ot Float64", "float64") + ".");
     }
     int has_nodata = 0;
     const double nodata = band_->GetNoDataValue(&has_nodata);
     // A float file holds floats: the tag, a double, means the float nearest to it.
-    if (has_nodata != 0)
-        nodata_ = stored_ == StoredType::float32 ? static_cast<double>(nearest_float(nodata)) : nodata;
+    if (has_nodata != 0) nodata_ = stored_ == StoredType::float32 ? static_cast<double>(nearest_float(nodata)) : nodata;
 }
 
 void RasterFile::set_grid() {
@@ -146,8 +162,10 @@ void RasterFile::set_grid() {
         throw input_error("The " + called() + " does not say where its cells lie; set its corners: " +
                           command("gdal_translate -a_ullr LEFT TOP RIGHT BOTTOM -a_srs EPSG:nnnnn", "placed") + ".");
     for (const double number : t)
-        if (!std::isfinite(number)) throw input_error("The " + called() + " gives the place of its cells by numbers that are "
-                                                      "not finite; set its corners with gdal_edit.py -a_ullr.");
+        if (!std::isfinite(number))
+            throw input_error("The " + called() +
+                              " gives the place of its cells by numbers that are "
+                              "not finite; set its corners with gdal_edit.py -a_ullr.");
     if (t[2] != 0.0 || t[4] != 0.0 || t[1] < 0.0)
         throw input_error("The " + called() + " is rotated against the axes of its reference system; turn it: " +
                           command("gdalwarp -r " + request_.resampling, "north-up") + ".");
@@ -199,23 +217,24 @@ void RasterFile::check_size() const {
 
 void RasterFile::check_content() const {
     if (is_virtual_raster(request_.path)) return;  // its cells are in its tiles
-    const double claimed = static_cast<double>(grid_.size()) * GDALGetDataTypeSizeBytes(band_->GetRasterDataType());
+    const double cells = static_cast<double>(dataset_->GetRasterXSize()) * dataset_->GetRasterYSize();
+    const double claimed = cells * GDALGetDataTypeSizeBytes(band_->GetRasterDataType());
     const double held = bytes_on_disk(*dataset_);
     const double present = share_present(*band_);
     constexpr double least_doubted = 16.0 * 1024 * 1024;  // small files may well be all one value
     if (claimed < least_doubted || (present > 0.0 && claimed * present <= 1000.0 * held)) return;
-    throw input_error("The " + called() + " claims " + std::to_string(grid_.columns) + " x " + std::to_string(grid_.rows) +
-                      " cells, " + whole(claimed) + " bytes, but holds " + whole(held) +
-                      " bytes; copy or download it again.");
+    throw input_error("The " + called() + " claims " + std::to_string(dataset_->GetRasterXSize()) + " x " +
+                      std::to_string(dataset_->GetRasterYSize()) + " cells, " + whole(claimed) + " bytes, but holds " +
+                      whole(held) + " bytes; copy or download it again.");
 }
 
 void RasterFile::read_raw(GDALRasterBand& band, const Window& window, std::span<double> values) const {
     const std::int64_t first = is_south_up_ ? grid_.rows - window.row - window.rows : window.row;
     const GdalMark before = session_.mark();
     const CPLErr result =
-        band.RasterIO(GF_Read, static_cast<int>(window.column), static_cast<int>(first), static_cast<int>(window.columns),
-                      static_cast<int>(window.rows), values.data(), static_cast<int>(window.columns),
-                      static_cast<int>(window.rows), GDT_Float64, 0, 0, nullptr);
+        band.RasterIO(GF_Read, static_cast<int>(window.column), static_cast<int>(first),
+                      static_cast<int>(window.columns), static_cast<int>(window.rows), values.data(),
+                      static_cast<int>(window.columns), static_cast<int>(window.rows), GDT_Float64, 0, 0, nullptr);
     const std::string what = "Rows " + std::to_string(first) + " to " + std::to_string(first + window.rows - 1) +
                              " of the " + called() +
                              " cannot be read, so it is damaged or cut short; copy or download it again";

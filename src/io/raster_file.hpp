@@ -40,8 +40,8 @@ public:
     /// A command with the file's name in it: "gdalwarp -r bilinear dem.tif dem-SUFFIX.tif".
     [[nodiscard]] std::string command(const std::string& program_and_options, const std::string& suffix) const;
 
-    /// Stored values of a window of the north-up grid, exact; NaN where they are nodata or masked. Returns how many cells hold
-    /// NaN themselves without its being the file's nodata.
+    /// Stored values of a window of the north-up grid, exact; NaN where they are nodata or masked. Returns how many
+    /// cells hold NaN themselves without its being the file's nodata.
     std::int64_t read(const Window& window, std::span<double> values) const;
 
 private:

@@ -28,14 +28,22 @@ struct Strip {
 template <class Action>
 void with_type(StoredType type, const Action& action) {
     switch (type) {
-        case StoredType::int8: return action(std::int8_t{});
-        case StoredType::uint8: return action(std::uint8_t{});
-        case StoredType::int16: return action(std::int16_t{});
-        case StoredType::uint16: return action(std::uint16_t{});
-        case StoredType::int32: return action(std::int32_t{});
-        case StoredType::uint32: return action(std::uint32_t{});
-        case StoredType::float32: return action(float{});
-        case StoredType::float64: return action(double{});
+        case StoredType::int8:
+            return action(std::int8_t{});
+        case StoredType::uint8:
+            return action(std::uint8_t{});
+        case StoredType::int16:
+            return action(std::int16_t{});
+        case StoredType::uint16:
+            return action(std::uint16_t{});
+        case StoredType::int32:
+            return action(std::int32_t{});
+        case StoredType::uint32:
+            return action(std::uint32_t{});
+        case StoredType::float32:
+            return action(float{});
+        case StoredType::float64:
+            return action(double{});
     }
 }
 
@@ -76,11 +84,11 @@ public:
             const std::int64_t row = window.row + r;
             Strip<T>& strip = strip_at(row / height);
             const auto from = values.begin() + r * window.columns;
-            std::copy(from, from + window.columns,
-                      strip.values.begin() + row % height * grid_.columns + window.column);
+            std::copy(from, from + window.columns, strip.values.begin() + row % height * grid_.columns + window.column);
             strip.missing -= window.columns;
         }
-        while (!strips_.empty() && strips_.begin()->first == next_ && strips_.begin()->second.missing <= 0) flush_first();
+        while (!strips_.empty() && strips_.begin()->first == next_ && strips_.begin()->second.missing <= 0)
+            flush_first();
     }
 
     void close() override {
@@ -94,7 +102,8 @@ private:
         const bool is_inside = window.row >= 0 && window.column >= 0 && window.row + window.rows <= grid_.rows &&
                                window.column + window.columns <= grid_.columns;
         if (!is_inside || static_cast<std::size_t>(window.size()) != count)
-            throw bug("A window written to " + writer_.path().string() + " lies outside it or has another number of values");
+            throw bug("A window written to " + writer_.path().string() +
+                      " lies outside it or has another number of values");
         if (window.row < next_ * writer_.block_rows())
             throw bug("A window was written to " + writer_.path().string() + " twice");
     }

@@ -19,19 +19,28 @@ namespace fs = std::filesystem;
 GDALDataType gdal_type(StoredType type) {
     switch (type) {
         case StoredType::int8:
-        case StoredType::uint8: return GDT_Byte;
-        case StoredType::int16: return GDT_Int16;
-        case StoredType::uint16: return GDT_UInt16;
-        case StoredType::int32: return GDT_Int32;
-        case StoredType::uint32: return GDT_UInt32;
-        case StoredType::float32: return GDT_Float32;
-        case StoredType::float64: return GDT_Float64;
+        case StoredType::uint8:
+            return GDT_Byte;
+        case StoredType::int16:
+            return GDT_Int16;
+        case StoredType::uint16:
+            return GDT_UInt16;
+        case StoredType::int32:
+            return GDT_Int32;
+        case StoredType::uint32:
+            return GDT_UInt32;
+        case StoredType::float32:
+            return GDT_Float32;
+        case StoredType::float64:
+            return GDT_Float64;
     }
     return GDT_Unknown;
 }
 
 /// Sides of blocks: 512, or for smaller rasters the multiple of 16 (which TIFF asks for) that holds them.
-std::int64_t block_side(std::int64_t cells) { return std::min<std::int64_t>(512, (cells + 15) / 16 * 16); }
+std::int64_t block_side(std::int64_t cells) {
+    return std::min<std::int64_t>(512, (cells + 15) / 16 * 16);
+}
 
 /// The shortest text that reads back as the same number, whatever the locale.
 std::string shortest(double value) {
@@ -77,7 +86,8 @@ void refuse_occupied(const fs::path& path) {
     std::error_code problem;
     const fs::file_status status = fs::symlink_status(path, problem);
     if (fs::is_symlink(status))
-        throw input_error("The raster " + path.string() + " would be written through a symbolic link; remove the link.");
+        throw input_error("The raster " + path.string() +
+                          " would be written through a symbolic link; remove the link.");
     if (fs::exists(status) && !fs::is_regular_file(status))
         throw input_error("The raster " + path.string() + " cannot be written, since a folder or device has its name.");
 }
@@ -126,8 +136,8 @@ void RasterWriter::remove() const {
 }
 
 void RasterWriter::throw_if_failed(bool worked) const {
-    const std::string what = "The raster " + path_.string() +
-                             " cannot be written; look at the free space and the permissions of its folder";
+    const std::string what =
+        "The raster " + path_.string() + " cannot be written; look at the free space and the permissions of its folder";
     session_.throw_if_failed(begun_at_, Fault::machine, what);
     if (!worked) throw machine_error(what + ".");
 }
@@ -164,7 +174,8 @@ void RasterWriter::describe(const ReferenceSystem& system) {
 void RasterWriter::name_categories() {
     int greatest = -1;
     for (const auto& [number, name] : description_.categories) {
-        if (number < 0 || number > 65535) throw bug("A class name of " + path_.string() + " has a number outside 0 to 65535");
+        if (number < 0 || number > 65535)
+            throw bug("A class name of " + path_.string() + " has a number outside 0 to 65535");
         greatest = std::max(greatest, number);
     }
     if (greatest < 0) return;
@@ -207,8 +218,8 @@ void RasterWriter::build_overviews() {
     const ThreadOption zstd("ZSTD_LEVEL_OVERVIEW", "1");
     const ThreadOption block("GDAL_TIFF_OVR_BLOCKSIZE", "512");
     const char* resampling = description_.overviews == OverviewKind::nearest ? "NEAREST" : "AVERAGE";
-    const CPLErr result = dataset_->BuildOverviews(resampling, static_cast<int>(levels.size()), levels.data(), 0, nullptr,
-                                                   nullptr, nullptr);
+    const CPLErr result = dataset_->BuildOverviews(resampling, static_cast<int>(levels.size()), levels.data(), 0,
+                                                   nullptr, nullptr, nullptr);
     throw_if_failed(result == CE_None);
 }
 
@@ -230,9 +241,9 @@ void RasterWriter::verify() const {
     throw_if_failed(written != nullptr);
     throw_if_failed(written->GetRasterXSize() == grid_.columns && written->GetRasterYSize() == grid_.rows);
     std::vector<double> row(static_cast<std::size_t>(grid_.columns));
-    const CPLErr result = written->GetRasterBand(1)->RasterIO(GF_Read, 0, static_cast<int>(grid_.rows - 1),
-                                                              static_cast<int>(grid_.columns), 1, row.data(),
-                                                              static_cast<int>(grid_.columns), 1, GDT_Float64, 0, 0, nullptr);
+    const CPLErr result = written->GetRasterBand(1)->RasterIO(
+        GF_Read, 0, static_cast<int>(grid_.rows - 1), static_cast<int>(grid_.columns), 1, row.data(),
+        static_cast<int>(grid_.columns), 1, GDT_Float64, 0, 0, nullptr);
     throw_if_failed(result == CE_None);
 }
 

@@ -22,7 +22,8 @@ struct RasterStatistics {
     double mean = 0;
     double squares = 0;  ///< sum of squared distances from the mean
 
-    /// T. F. Chan, G. H. Golub, R. J. LeVeque, Updating formulae and a pairwise algorithm for computing sample variances, 1979.
+    /// T. F. Chan, G. H. Golub, R. J. LeVeque, Updating formulae and a pairwise algorithm for computing sample
+    /// variances, 1979.
     void join(const RasterStatistics& other) {
         if (!(other.count > 0)) return;
         const double both = count + other.count;

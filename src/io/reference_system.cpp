@@ -63,8 +63,7 @@ std::string horizontal_wkt_of(const OGRSpatialReference& system) {
 OGRSpatialReference parsed(const std::string& text) {
     OGRSpatialReference system;
     const QuietGdal quiet;
-    if (system.SetFromUserInput(text.c_str(), OGRSpatialReference::SET_FROM_USER_INPUT_LIMITATIONS) !=
-        OGRERR_NONE)
+    if (system.SetFromUserInput(text.c_str(), OGRSpatialReference::SET_FROM_USER_INPUT_LIMITATIONS) != OGRERR_NONE)
         throw input_error("\"" + text.substr(0, 80) +
                           "\" is no reference system that is known here; write one as \"EPSG:\" and its number, or as "
                           "WKT.");
@@ -96,7 +95,9 @@ ReferenceSystem ReferenceSystem::from_text(const std::string& text) {
     return result;
 }
 
-ReferenceSystem ReferenceSystem::wgs84() { return from_text("EPSG:4326"); }
+ReferenceSystem ReferenceSystem::wgs84() {
+    return from_text("EPSG:4326");
+}
 
 Transformation::Transformation(const ReferenceSystem& from, const ReferenceSystem& to) {
     const GdalSession session;
@@ -114,7 +115,9 @@ Transformation::Transformation(Transformation&&) noexcept = default;
 Transformation& Transformation::operator=(Transformation&&) noexcept = default;
 Transformation::~Transformation() = default;
 
-Transformation Transformation::to_wgs84(const ReferenceSystem& from) { return {from, ReferenceSystem::wgs84()}; }
+Transformation Transformation::to_wgs84(const ReferenceSystem& from) {
+    return {from, ReferenceSystem::wgs84()};
+}
 
 std::optional<Place> Transformation::operator()(Place place) {
     transform(std::span(&place.x, 1), std::span(&place.y, 1));

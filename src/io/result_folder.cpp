@@ -144,15 +144,17 @@ void ResultFolder::recover() const {
     const fs::path aside = beside("aside");
     if (fs::exists(fs::symlink_status(aside)) && !fs::exists(fs::symlink_status(target_)))
         fs::rename(aside, target_, problem);
-    if (problem) throw machine_error("The former result " + aside.string() + " cannot be put back: " + problem.message() + ".");
+    if (problem)
+        throw machine_error("The former result " + aside.string() + " cannot be put back: " + problem.message() + ".");
     std::vector<fs::path> leavings;
     const std::string made = beside("making-").filename().string();
     for (const fs::directory_entry& entry : fs::directory_iterator(target_.parent_path(), problem))
         if (entry.path().filename().string().starts_with(made)) leavings.push_back(entry.path());
     leavings.push_back(aside);
     for (const fs::path& path : leavings) fs::remove_all(path, problem);
-    if (problem) throw machine_error("Leavings of a former run beside " + target_.string() + " cannot be removed: " +
-                                     problem.message() + ".");
+    if (problem)
+        throw machine_error("Leavings of a former run beside " + target_.string() +
+                            " cannot be removed: " + problem.message() + ".");
 }
 
 void ResultFolder::check_target(Existing existing) const {
@@ -175,7 +177,8 @@ fs::path ResultFolder::path(const fs::path& relative) {
     std::error_code problem;
     fs::create_directories(full.parent_path(), problem);
     if (problem)
-        throw machine_error("The folder " + full.parent_path().string() + " cannot be made: " + problem.message() + ".");
+        throw machine_error("The folder " + full.parent_path().string() + " cannot be made: " + problem.message() +
+                            ".");
     return full;
 }
 

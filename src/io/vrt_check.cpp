@@ -36,7 +36,8 @@ public:
     void check(const fs::path& path) {
         const fs::path real = fs::canonical(path);
         if (std::find(chain_.begin(), chain_.end(), real) != chain_.end())
-            throw input_error("The virtual raster " + path.string() + " names itself among its tiles; build it anew with "
+            throw input_error("The virtual raster " + path.string() +
+                              " names itself among its tiles; build it anew with "
                               "gdalbuildvrt.");
         if (chain_.size() >= 8)
             throw input_error("The virtual raster " + chain_.front().string() +
@@ -44,8 +45,10 @@ public:
                               "gdalbuildvrt.");
         chain_.push_back(real);
         const XmlTree tree(CPLParseXMLFile(path.c_str()), &CPLDestroyXMLNode);
-        if (!tree) throw input_error("The virtual raster " + path.string() + " is not well-formed XML; build it anew with "
-                                     "gdalbuildvrt.");
+        if (!tree)
+            throw input_error("The virtual raster " + path.string() +
+                              " is not well-formed XML; build it anew with "
+                              "gdalbuildvrt.");
         check_nodes(tree.get(), path);
         chain_.pop_back();
     }
@@ -64,9 +67,10 @@ private:
     static void check_band(const CPLXMLNode* node, const fs::path& vrt) {
         const std::string_view kind = CPLGetXMLValue(node, "subClass", "");
         if (kind == "VRTRawRasterBand")
-            throw input_error("The virtual raster " + vrt.string() +
-                              " reads raw bytes of other files (VRTRawRasterBand), which is refused; make a GeoTIFF of it "
-                              "with gdal_translate.");
+            throw input_error(
+                "The virtual raster " + vrt.string() +
+                " reads raw bytes of other files (VRTRawRasterBand), which is refused; make a GeoTIFF of it "
+                "with gdal_translate.");
         if (kind == "VRTDerivedRasterBand" || CPLGetXMLNode(node, "PixelFunctionType"))
             throw input_error("The virtual raster " + vrt.string() +
                               " computes its cells by a pixel function, which is refused; make a GeoTIFF of it with "
@@ -79,9 +83,10 @@ private:
         const fs::path tile = is_relative ? vrt.parent_path() / name : fs::path(name);
         if (name.starts_with("/vsi") || tile.string().starts_with("/vsi") || name.find("://") != std::string::npos ||
             name.find('<') != std::string::npos)
-            throw input_error("The virtual raster " + vrt.string() + " names \"" + name.substr(0, 120) +
-                              "\" as a tile; only plain local files are read: download or unpack it and build the virtual "
-                              "raster anew with gdalbuildvrt.");
+            throw input_error(
+                "The virtual raster " + vrt.string() + " names \"" + name.substr(0, 120) +
+                "\" as a tile; only plain local files are read: download or unpack it and build the virtual "
+                "raster anew with gdalbuildvrt.");
         std::error_code ignored;
         if (!fs::is_regular_file(tile, ignored))
             throw input_error("The virtual raster " + vrt.string() + " names the tile " + tile.string() +
@@ -101,7 +106,9 @@ private:
 
 }  // namespace
 
-bool is_virtual_raster(const fs::path& path) { return beginning_of(path).find("<VRTDataset") != std::string::npos; }
+bool is_virtual_raster(const fs::path& path) {
+    return beginning_of(path).find("<VRTDataset") != std::string::npos;
+}
 
 void check_virtual_raster(const fs::path& path) {
     const GdalSession session;

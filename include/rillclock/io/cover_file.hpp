@@ -26,12 +26,13 @@ struct CoverFile {
 
 /// Opens a land-cover raster on any grid and in any reference system, to be sampled onto `target` while it is read.
 ///
-/// The class of a target cell is that of the cover cell that holds its centre. Where the two systems give the target's places
-/// the same coordinates (`same_coordinates`), nothing is transformed; otherwise centres are, exactly or with an error under a
-/// hundredth of a cover cell. The answer does not depend on the windows asked for. Memory: 64 MB above what is asked for.
+/// The class of a target cell is that of the cover cell that holds its centre. Where the two systems give the target's
+/// places the same coordinates (`same_coordinates`), nothing is transformed; otherwise centres are, exactly or with an
+/// error under a hundredth of a cover cell. The answer does not depend on the windows asked for. Memory: 64 MB above
+/// what is asked for.
 ///
-/// Throws Error (inputs) as `open_elevation` does for files that cannot be used, where the two do not overlap at all, and while
-/// reading where a class is not a whole number of 32 bits.
+/// Throws Error (inputs) as `open_elevation` does for files that cannot be used, where the two do not overlap at all,
+/// and while reading where a class is not a whole number of 32 bits.
 [[nodiscard]] CoverFile open_cover(const std::filesystem::path& path, const CoverOptions& options, const Grid& target,
                                    const ReferenceSystem& target_system);
 

@@ -28,12 +28,12 @@ struct PointFile {
     Notices notices;                 ///< features left out, one notice each
 };
 
-/// Reads points of any vector format and reference system. A point without a name is called "point N", N being its number in
-/// the file.
+/// Reads points of any vector format and reference system. A point without a name is called "point N", N being its
+/// number in the file.
 ///
-/// Features that are no single point, are empty, are not finite or have no image in `target` are left out with a notice.
-/// Throws Error (inputs) where the file, layer or field is not there, no feature is left, the reference system is missing, or
-/// two points have one name.
+/// Features that are no single point, are empty, are not finite or have no image in `target` are left out with a
+/// notice. Throws Error (inputs) where the file, layer or field is not there, no feature is left, the reference system
+/// is missing, or two points have one name.
 [[nodiscard]] PointFile read_points(const std::filesystem::path& path, const PointOptions& options,
                                     const ReferenceSystem& target);
 

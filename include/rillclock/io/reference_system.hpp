@@ -21,7 +21,8 @@ struct Ellipsoid {
 
 /// What the coordinates of a file mean. A value: what is asked of it is looked up once, when it is made.
 ///
-/// Coordinates are always in the order x (easting, longitude), y (northing, latitude), whatever order the system declares.
+/// Coordinates are always in the order x (easting, longitude), y (northing, latitude), whatever order the system
+/// declares.
 class ReferenceSystem {
 public:
     /// From WKT of any dialect, "EPSG:26912" or a PROJ text. Throws Error (inputs) where it is none of these.
@@ -37,7 +38,8 @@ public:
     [[nodiscard]] const std::string& horizontal_wkt() const { return horizontal_wkt_; }
     [[nodiscard]] bool is_geographic() const { return is_geographic_; }
     [[nodiscard]] bool is_projected() const { return is_projected_; }
-    /// Whether it is the spherical Mercator of web maps under any of its names. Its lengths are wrong by 1/cos(latitude).
+    /// Whether it is the spherical Mercator of web maps under any of its names. Its lengths are wrong by
+    /// 1/cos(latitude).
     [[nodiscard]] bool is_web_mercator() const { return is_web_mercator_; }
     /// Unit of x and y of a projected system.
     [[nodiscard]] const LengthUnit& linear_unit() const { return linear_unit_; }
@@ -82,8 +84,8 @@ private:
     std::unique_ptr<OGRCoordinateTransformation> transformation_;
 };
 
-/// Whether two systems give every place of a grid the same coordinates, whatever they are called: no place of a lattice of
-/// 9 × 9 over the grid (in coordinates of `a`) moves by more than a hundredth of a cell.
+/// Whether two systems give every place of a grid the same coordinates, whatever they are called: no place of a lattice
+/// of 9 × 9 over the grid (in coordinates of `a`) moves by more than a hundredth of a cell.
 [[nodiscard]] bool same_coordinates(const ReferenceSystem& a, const ReferenceSystem& b, const Grid& grid);
 
 }  // namespace rillclock

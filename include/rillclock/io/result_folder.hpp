@@ -10,13 +10,14 @@ enum class Existing { refuse, replace };
 
 /// A result folder in the making: it appears whole or not at all.
 ///
-/// Files are made in a hidden folder beside the target; `commit` puts it in the target's place in one step. Until then the
-/// target is untouched. One run at a time has a target: a locked file beside it holds the number of the process. Leavings of runs
-/// that died are cleared away by the next, and a result they had set aside is put back. Symbolic links are never followed.
+/// Files are made in a hidden folder beside the target; `commit` puts it in the target's place in one step. Until then
+/// the target is untouched. One run at a time has a target: a locked file beside it holds the number of the process.
+/// Leavings of runs that died are cleared away by the next, and a result they had set aside is put back. Symbolic links
+/// are never followed.
 class ResultFolder {
 public:
-    /// Throws Error: inputs, where the target is there and may not be replaced, is not a result of ours (holds no `result.json`),
-    /// or another run has it; machine, where the place cannot be written.
+    /// Throws Error: inputs, where the target is there and may not be replaced, is not a result of ours (holds no
+    /// `result.json`), or another run has it; machine, where the place cannot be written.
     ResultFolder(const std::filesystem::path& target, Existing existing);
     ResultFolder(const ResultFolder&) = delete;
     ResultFolder& operator=(const ResultFolder&) = delete;

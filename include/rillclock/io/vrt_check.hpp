@@ -9,8 +9,9 @@ namespace rillclock {
 
 /// Refuses virtual rasters that do more than put local raster files together, before anything of them is opened.
 ///
-/// Throws Error (inputs), naming the tile, where a tile is missing, is not a plain local file (an address, an archive, a text),
-/// is read as raw bytes or through a pixel function, or where virtual rasters name each other in a circle or more than 8 deep.
+/// Throws Error (inputs), naming the tile, where a tile is missing, is not a plain local file (an address, an archive,
+/// a text), is read as raw bytes or through a pixel function, or where virtual rasters name each other in a circle or
+/// more than 8 deep.
 void check_virtual_raster(const std::filesystem::path& path);
 
 }  // namespace rillclock

@@ -22,7 +22,10 @@ struct Folder {
 
 /// 60 × 70 classes that differ from cell to cell, on WGS 84.
 TestRaster chequered() {
-    TestRaster raster{.columns = 60, .rows = 70, .values = {}, .transform = {-111.01, 0.0003, 0, 36.15, 0, -0.0004},
+    TestRaster raster{.columns = 60,
+                      .rows = 70,
+                      .values = {},
+                      .transform = {-111.01, 0.0003, 0, 36.15, 0, -0.0004},
                       .system = "EPSG:4326"};
     for (int r = 0; r < raster.rows; ++r)
         for (int c = 0; c < raster.columns; ++c) raster.values.push_back((r * 7 + c * 3) % 250 + 1);
@@ -66,13 +69,14 @@ TEST_CASE_METHOD(Folder, "a twin under another name is not transformed and said 
 
 TEST_CASE_METHOD(Folder, "a cover in another system gives the class under each transformed centre") {
     const TestRaster raster = chequered();
-    const Grid target = {.rows = 150, .columns = 300, .left = 499600, .top = 4000500, .cell_width = 5, .cell_height = 5};
+    const Grid target = {
+        .rows = 150, .columns = 300, .left = 499600, .top = 4000500, .cell_width = 5, .cell_height = 5};
     const CoverFile file = open_cover(cover(raster), {}, target, utm);
     CHECK(has_notice(file.notices, "cover-transformed"));
     const std::vector<std::int32_t> values = all_of(*file.source);
 
-    // Independently: every centre by itself, through GDAL's own objects. Centres within a hundredth of a cell of an edge may fall
-    // either way.
+    // Independently: every centre by itself, through GDAL's own objects. Centres within a hundredth of a cell of an
+    // edge may fall either way.
     OGRSpatialReference from, to;
     from.importFromEPSG(26912);
     to.importFromEPSG(4326);

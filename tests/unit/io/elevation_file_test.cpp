@@ -27,7 +27,8 @@ struct Folder {
 TEST_CASE_METHOD(Folder, "cells come row by row from the north-west corner") {
     const ElevationFile file = open_elevation(dem({.columns = 3, .rows = 2, .values = {1, 2, 3, 4, 5, 6}}));
     CHECK(all_of(*file.source) == std::vector<double>{1, 2, 3, 4, 5, 6});
-    CHECK(file.grid() == Grid{.rows = 2, .columns = 3, .left = 500000, .top = 4000000, .cell_width = 30, .cell_height = 30});
+    CHECK(file.grid() ==
+          Grid{.rows = 2, .columns = 3, .left = 500000, .top = 4000000, .cell_width = 30, .cell_height = 30});
 }
 
 TEST_CASE_METHOD(Folder, "a grid stored south-up is turned") {
@@ -39,8 +40,8 @@ TEST_CASE_METHOD(Folder, "a grid stored south-up is turned") {
 }
 
 TEST_CASE_METHOD(Folder, "a window of a south-up grid is that of the turned grid") {
-    const ElevationFile file =
-        open_elevation(dem({.columns = 2, .rows = 3, .values = {1, 2, 3, 4, 5, 6}, .transform = {0, 10, 0, 100, 0, 20}}));
+    const ElevationFile file = open_elevation(
+        dem({.columns = 2, .rows = 3, .values = {1, 2, 3, 4, 5, 6}, .transform = {0, 10, 0, 100, 0, 20}}));
     std::vector<double> values(2);
     file.source->read(Window{.row = 0, .column = 1, .rows = 2, .columns = 1}, values);
     CHECK(values == std::vector<double>{6, 4});
@@ -54,8 +55,8 @@ TEST_CASE_METHOD(Folder, "nodata of a float file is compared as a float") {
 }
 
 TEST_CASE_METHOD(Folder, "a nodata tag beyond the range of floats means its end") {
-    const ElevationFile file =
-        open_elevation(dem({.values = {-std::numeric_limits<float>::max(), 2, 3, 4}, .nodata = -1.7976931348623157e308}));
+    const ElevationFile file = open_elevation(
+        dem({.values = {-std::numeric_limits<float>::max(), 2, 3, 4}, .nodata = -1.7976931348623157e308}));
     CHECK(std::isnan(all_of(*file.source)[0]));
     CHECK(file.source->notices().empty());
 }
@@ -88,8 +89,8 @@ TEST_CASE_METHOD(Folder, "minus zero comes as zero") {
 }
 
 TEST_CASE_METHOD(Folder, "scale and offset are told, values stay as stored") {
-    const ElevationFile file =
-        open_elevation(dem({.values = {100, 200, 300, 400}, .type = GDT_UInt16, .scale = 0.1, .offset = 50.0, .unit = "m"}));
+    const ElevationFile file = open_elevation(
+        dem({.values = {100, 200, 300, 400}, .type = GDT_UInt16, .scale = 0.1, .offset = 50.0, .unit = "m"}));
     CHECK(all_of(*file.source)[1] == 200);
     CHECK(file.format.metres_per_stored_unit() == Approx(0.1).epsilon(1e-15));
     CHECK(file.format.quantum_m() == Approx(0.1).epsilon(1e-15));
@@ -163,8 +164,8 @@ TEST_CASE_METHOD(Folder, "cells masked out are void") {
         const GDALDatasetUniquePtr dataset(GDALDataset::Open(path.c_str(), GDAL_OF_UPDATE));
         REQUIRE(dataset->CreateMaskBand(GMF_PER_DATASET) == CE_None);
         std::vector<GByte> mask = {255, 0, 255, 255};
-        REQUIRE(dataset->GetRasterBand(1)->GetMaskBand()->RasterIO(GF_Write, 0, 0, 2, 2, mask.data(), 2, 2, GDT_Byte, 0, 0,
-                                                                   nullptr) == CE_None);
+        REQUIRE(dataset->GetRasterBand(1)->GetMaskBand()->RasterIO(GF_Write, 0, 0, 2, 2, mask.data(), 2, 2, GDT_Byte, 0,
+                                                                   0, nullptr) == CE_None);
     }
     const std::vector<double> values = all_of(*open_elevation(path).source);
     CHECK(std::isnan(values[1]));
@@ -172,15 +173,18 @@ TEST_CASE_METHOD(Folder, "cells masked out are void") {
 }
 
 TEST_CASE_METHOD(Folder, "a rotated grid is refused with the command that turns it") {
-    CHECK_THAT(refusal(dem({.transform = {0, 10, 1, 0, 1, -10}})), Contains("rotated") && Contains("gdalwarp -r bilinear "));
+    CHECK_THAT(refusal(dem({.transform = {0, 10, 1, 0, 1, -10}})),
+               Contains("rotated") && Contains("gdalwarp -r bilinear "));
 }
 
 TEST_CASE_METHOD(Folder, "a missing reference system is refused with the command that states it") {
-    CHECK_THAT(refusal(dem({.system = ""})), Contains("gdal_edit.py -a_srs EPSG:nnnnn " + (folder / "dem.tif").string()));
+    CHECK_THAT(refusal(dem({.system = ""})),
+               Contains("gdal_edit.py -a_srs EPSG:nnnnn " + (folder / "dem.tif").string()));
 }
 
 TEST_CASE_METHOD(Folder, "web Mercator is refused with the command to the UTM zone") {
-    const std::string sentence = refusal(dem({.transform = {-12580000, 30, 0, 4490000, 0, -30}, .system = "EPSG:3857"}));
+    const std::string sentence =
+        refusal(dem({.transform = {-12580000, 30, 0, 4490000, 0, -30}, .system = "EPSG:3857"}));
     CHECK_THAT(sentence, Contains("web Mercator") && Contains("gdalwarp -r bilinear -t_srs EPSG:32612"));
 }
 
@@ -240,7 +244,8 @@ TEST_CASE_METHOD(Folder, "rows that a truncated file lacks are named") {
     fs::resize_file(path, 20000);
     const ElevationFile file = open_elevation(path);
     std::vector<double> values(1000);
-    const std::string sentence = sentence_of([&] { file.source->read({.row = 90, .rows = 10, .columns = 100}, values); });
+    const std::string sentence =
+        sentence_of([&] { file.source->read({.row = 90, .rows = 10, .columns = 100}, values); });
     CHECK_THAT(sentence, Contains("Rows 90 to 99") && Contains("cut short"));
 }
 
@@ -251,21 +256,23 @@ TEST_CASE_METHOD(Folder, "a header that claims far more than the file holds is r
         CPLStringList options;
         options.SetNameValue("SPARSE_OK", "TRUE");
         options.SetNameValue("TILED", "YES");
-        const GDALDatasetUniquePtr dataset(
-            GetGDALDriverManager()->GetDriverByName("GTiff")->Create(path.c_str(), 30000, 30000, 1, GDT_Float32, options));
+        const GDALDatasetUniquePtr dataset(GetGDALDriverManager()->GetDriverByName("GTiff")->Create(
+            path.c_str(), 30000, 30000, 1, GDT_Float32, options));
         std::array<double, 6> transform = {0, 1, 0, 0, 0, -1};
         dataset->SetGeoTransform(transform.data());
         OGRSpatialReference system;
         system.importFromEPSG(26912);
         dataset->SetSpatialRef(&system);
     }
-    CHECK_THAT(refusal(path), Contains("3600000000 bytes, but holds " + std::to_string(fs::file_size(path)) + " bytes"));
+    CHECK_THAT(refusal(path),
+               Contains("3600000000 bytes, but holds " + std::to_string(fs::file_size(path)) + " bytes"));
 }
 
 TEST_CASE_METHOD(Folder, "more cells than can be numbered are refused") {
-    const fs::path path = write_file(folder / "a.vrt",
-                                     "<VRTDataset rasterXSize=\"100000\" rasterYSize=\"100000\"><SRS>EPSG:26912</SRS>"
-                                     "<GeoTransform>0,1,0,0,0,-1</GeoTransform><VRTRasterBand dataType=\"Byte\" band=\"1\"/>"
-                                     "</VRTDataset>");
+    const fs::path path =
+        write_file(folder / "a.vrt",
+                   "<VRTDataset rasterXSize=\"100000\" rasterYSize=\"100000\"><SRS>EPSG:26912</SRS>"
+                   "<GeoTransform>0,1,0,0,0,-1</GeoTransform><VRTRasterBand dataType=\"Byte\" band=\"1\"/>"
+                   "</VRTDataset>");
     CHECK_THAT(refusal(path), Contains("100000 x 100000 cells"));
 }

@@ -28,7 +28,8 @@ double distance_by_command(double latitude_1, double longitude_1, double latitud
     return std::stod(text.substr(last + 1));
 }
 
-const Grid thousandths = {.rows = 3, .columns = 4, .left = -113.0, .top = 37.5, .cell_width = 0.001, .cell_height = 0.002};
+const Grid thousandths = {
+    .rows = 3, .columns = 4, .left = -113.0, .top = 37.5, .cell_width = 0.001, .cell_height = 0.002};
 
 }  // namespace
 
@@ -78,7 +79,8 @@ TEST_CASE("a grid beyond a pole is refused") {
 
 TEST_CASE("a grid across the 180th meridian is refused with advice") {
     const Grid grid = {.rows = 2, .columns = 20, .left = 170, .top = 10, .cell_width = 1, .cell_height = 1};
-    CHECK_THAT(sentence_of([&] { (void)ground_of(grid, ReferenceSystem::wgs84()); }), Contains("180th") && Contains("gdalwarp"));
+    CHECK_THAT(sentence_of([&] { (void)ground_of(grid, ReferenceSystem::wgs84()); }),
+               Contains("180th") && Contains("gdalwarp"));
 }
 
 TEST_CASE("angles in grads are refused") {
@@ -88,5 +90,6 @@ TEST_CASE("angles in grads are refused") {
 
 TEST_CASE("a local system is refused") {
     const ReferenceSystem system = ReferenceSystem::from_text("LOCAL_CS[\"site\",UNIT[\"metre\",1]]");
-    CHECK_THAT(sentence_of([&] { (void)ground_of(thousandths, system); }), Contains("neither projected nor geographic"));
+    CHECK_THAT(sentence_of([&] { (void)ground_of(thousandths, system); }),
+               Contains("neither projected nor geographic"));
 }

@@ -45,18 +45,17 @@ TEST_CASE_METHOD(Folder, "the name field may be chosen") {
 }
 
 TEST_CASE_METHOD(Folder, "a point without a name is called by its number") {
-    const PointFile read =
-        read_points(file(feature(R"("name":"a")", point(-111, 1)) + "," + feature(R"("name":null)", point(-111, 2))), {}, utm);
+    const PointFile read = read_points(
+        file(feature(R"("name":"a")", point(-111, 1)) + "," + feature(R"("name":null)", point(-111, 2))), {}, utm);
     CHECK(read.points[1].name == "point 2");
     CHECK(read.points[1].feature == 2);
 }
 
 TEST_CASE_METHOD(Folder, "features that are no point are left out one by one") {
-    const PointFile read = read_points(
-        file(feature("", point(-111, 1)) + "," + feature("", "null") + "," +
-             feature("", R"({"type":"LineString","coordinates":[[0,0],[1,1]]})") + "," +
-             feature("", R"({"type":"Point","coordinates":[1e999,2]})")),
-        {}, utm);
+    const PointFile read = read_points(file(feature("", point(-111, 1)) + "," + feature("", "null") + "," +
+                                            feature("", R"({"type":"LineString","coordinates":[[0,0],[1,1]]})") + "," +
+                                            feature("", R"({"type":"Point","coordinates":[1e999,2]})")),
+                                       {}, utm);
     CHECK(read.points.size() == 1);
     REQUIRE(read.notices.size() == 3);
     CHECK_THAT(read.notices[0].text, Contains("Feature 2") && Contains("has no place"));
@@ -65,8 +64,7 @@ TEST_CASE_METHOD(Folder, "features that are no point are left out one by one") {
 }
 
 TEST_CASE_METHOD(Folder, "a multipoint of one is a point") {
-    const PointFile read =
-        read_points(file(feature("", R"({"type":"MultiPoint","coordinates":[[-111,0]]})")), {}, utm);
+    const PointFile read = read_points(file(feature("", R"({"type":"MultiPoint","coordinates":[[-111,0]]})")), {}, utm);
     CHECK(read.points.size() == 1);
 }
 

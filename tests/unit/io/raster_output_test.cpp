@@ -57,8 +57,8 @@ TEST_CASE("what is written is read back bit for bit") {
 }
 
 TEST_CASE("every stored type keeps its whole numbers and its nodata") {
-    const auto type = GENERATE(StoredType::int8, StoredType::uint8, StoredType::int16, StoredType::uint16, StoredType::int32,
-                               StoredType::uint32, StoredType::float32, StoredType::float64);
+    const auto type = GENERATE(StoredType::int8, StoredType::uint8, StoredType::int16, StoredType::uint16,
+                               StoredType::int32, StoredType::uint32, StoredType::float32, StoredType::float64);
     const TemporaryFolder folder;
     Raster<double> raster(2, 2);
     raster(0, 0) = 5;
@@ -102,7 +102,8 @@ TEST_CASE("statistics leave nodata out") {
     raster(0, 3) = 8;
     write(folder / "a.tif", raster, {.nodata = -9999.0});
     double least = 0, greatest = 0, mean = 0, deviation = 0;
-    REQUIRE(opened(folder / "a.tif")->GetRasterBand(1)->GetStatistics(0, 0, &least, &greatest, &mean, &deviation) == CE_None);
+    REQUIRE(opened(folder / "a.tif")->GetRasterBand(1)->GetStatistics(0, 0, &least, &greatest, &mean, &deviation) ==
+            CE_None);
     CHECK(least == 1);
     CHECK(greatest == 8);
     CHECK(mean == 4);
@@ -112,7 +113,9 @@ TEST_CASE("statistics leave nodata out") {
 TEST_CASE("names of classes are in the file beside the raster") {
     const TemporaryFolder folder;
     write(folder / "a.tif", Raster<double>(2, 2, 1.0),
-          {.stored = StoredType::uint8, .categories = {{1, "sheet"}, {3, "channel"}}, .overviews = OverviewKind::nearest});
+          {.stored = StoredType::uint8,
+           .categories = {{1, "sheet"}, {3, "channel"}},
+           .overviews = OverviewKind::nearest});
     CHECK(fs::exists(folder / "a.tif.aux.xml"));
     const GDALDatasetUniquePtr dataset = opened(folder / "a.tif");
     (void)dataset->GetRasterBand(1)->GetMetadata();

@@ -54,7 +54,8 @@ TEST_CASE("a bound twin of the same zone has the same coordinates") {
 }
 
 TEST_CASE("another zone has other coordinates") {
-    CHECK_FALSE(same_coordinates(ReferenceSystem::from_text("EPSG:26912"), ReferenceSystem::from_text("EPSG:26911"), utah));
+    CHECK_FALSE(
+        same_coordinates(ReferenceSystem::from_text("EPSG:26912"), ReferenceSystem::from_text("EPSG:26911"), utah));
 }
 
 TEST_CASE("feet and metres of one zone are other coordinates") {

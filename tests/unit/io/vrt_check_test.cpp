@@ -35,7 +35,8 @@ TEST_CASE_METHOD(Folder, "a mosaic of local tiles is read") {
 }
 
 TEST_CASE_METHOD(Folder, "a missing tile is named") {
-    CHECK_THAT(refusal(vrt(virtual_raster("", tile("gone.tif")))), Contains((folder / "gone.tif").string() + ", which is not there"));
+    CHECK_THAT(refusal(vrt(virtual_raster("", tile("gone.tif")))),
+               Contains((folder / "gone.tif").string() + ", which is not there"));
 }
 
 TEST_CASE_METHOD(Folder, "raw bytes of another file are refused") {
@@ -44,14 +45,17 @@ TEST_CASE_METHOD(Folder, "raw bytes of another file are refused") {
 }
 
 TEST_CASE_METHOD(Folder, "a pixel function is refused") {
-    CHECK_THAT(refusal(vrt(virtual_raster("subClass=\"VRTDerivedRasterBand\"", "<PixelFunctionType>sum</PixelFunctionType>"))),
-               Contains("pixel function"));
+    CHECK_THAT(
+        refusal(vrt(virtual_raster("subClass=\"VRTDerivedRasterBand\"", "<PixelFunctionType>sum</PixelFunctionType>"))),
+        Contains("pixel function"));
 }
 
 TEST_CASE_METHOD(Folder, "a tile elsewhere is refused") {
-    const std::string name = GENERATE("/vsicurl/http://127.0.0.1/a.tif", "http://127.0.0.1/a.tif", "/vsizip/a.zip/a.tif");
-    CHECK_THAT(refusal(vrt(virtual_raster("", "<SimpleSource><SourceFilename>" + name + "</SourceFilename></SimpleSource>"))),
-               Contains("only plain local files"));
+    const std::string name =
+        GENERATE("/vsicurl/http://127.0.0.1/a.tif", "http://127.0.0.1/a.tif", "/vsizip/a.zip/a.tif");
+    CHECK_THAT(
+        refusal(vrt(virtual_raster("", "<SimpleSource><SourceFilename>" + name + "</SourceFilename></SimpleSource>"))),
+        Contains("only plain local files"));
 }
 
 TEST_CASE_METHOD(Folder, "a tile that describes data elsewhere is refused") {
