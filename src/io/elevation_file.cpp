@@ -8,6 +8,7 @@
 #include <iterator>
 #include <limits>
 #include <utility>
+#include <vector>
 
 #include "raster_file.hpp"
 #include "rillclock/core/error.hpp"
@@ -224,9 +225,13 @@ void notice_sidecar(const std::filesystem::path& path, const RasterFile& file, N
     }
 }
 
+/// What the file was opened in spite of.
 void notice_warnings(const RasterFile& file, Notices& notices) {
-    for (const std::string& warning : file.session().warnings_since(file.opened_at()))
-        notices.push_back({.code = "raster-warning", .text = "On opening the " + file.called() + ": " + warning});
+    std::vector<std::string> texts = file.session().warnings_since(file.opened_at());
+    const std::string failure = file.session().failure_since(file.opened_at());
+    if (!failure.empty()) texts.push_back(failure);
+    for (const std::string& text : texts)
+        notices.push_back({.code = "raster-warning", .text = "On opening the " + file.called() + ": " + text});
 }
 
 }  // namespace

@@ -224,9 +224,9 @@ void RasterWriter::build_overviews() {
 }
 
 void RasterWriter::close() {
+    dataset_->FlushCache(false);  // all blocks are in the file before its directory is, however many threads pack them
+    throw_if_failed(true);
     store_statistics();
-    const CPLErr flushed = dataset_->GetRasterBand(1)->FlushCache(false);
-    throw_if_failed(flushed == CE_None);
     build_overviews();
     dataset_.reset();
     throw_if_failed(true);

@@ -25,7 +25,10 @@ std::string wkt_of(const OGRSpatialReference& system) {
 }
 
 std::string name_of(const OGRSpatialReference& system) {
-    std::string name = system.GetName() ? system.GetName() : "unnamed system";
+    std::string name = system.GetName() ? system.GetName() : "unnamed";
+    const char* geographic = system.GetAttrValue("GEOGCS");
+    if (name == "unnamed" || name == "unknown")
+        name = std::string("an unnamed system") + (geographic ? std::string(" on ") + geographic : "");
     const char* authority = system.GetAuthorityName(nullptr);
     const char* code = system.GetAuthorityCode(nullptr);
     if (authority && code) name += std::string(" (") + authority + ":" + code + ")";

@@ -139,13 +139,14 @@ TEST_CASE("overviews of classes hold classes only") {
     CHECK(std::all_of(values.begin(), values.end(), [](double v) { return v == 10.0 || v == 20.0; }));
 }
 
-TEST_CASE("the same values give the same bytes whatever the windows and GDAL's cache") {
+TEST_CASE("the same values give the same bytes whatever the windows, the threads and GDAL's cache") {
     const TemporaryFolder folder;
     const Raster<double> raster = rough(1300, 1100);
     const RasterDescription description{.stored = StoredType::float32, .description = "x", .nodata = -9999.0};
     write(folder / "whole.tif", raster, description);
     const GIntBig cache = GDALGetCacheMax64();
     GDALSetCacheMax64(2 << 20);
+    CPLSetConfigOption("GDAL_NUM_THREADS", "1");
     {
         const auto sink = create_raster<double>(folder / "parts.tif", grid_of(1300, 1100), utm, description);
         for (std::int64_t row = 0; row < 1300; row += 100)
@@ -158,6 +159,7 @@ TEST_CASE("the same values give the same bytes whatever the windows and GDAL's c
         sink->close();
     }
     GDALSetCacheMax64(cache);
+    CPLSetConfigOption("GDAL_NUM_THREADS", nullptr);
     CHECK(bytes_of(folder / "whole.tif") == bytes_of(folder / "parts.tif"));
 }
 

@@ -17,6 +17,16 @@ TEST_CASE("a system is named with its code") {
     CHECK(ReferenceSystem::from_text("EPSG:26912").name() == "NAD83 / UTM zone 12N (EPSG:26912)");
 }
 
+TEST_CASE("a system without a name is called by its datum") {
+    CHECK(ReferenceSystem::from_text("PROJCS[\"unnamed\",GEOGCS[\"NAD27\",DATUM[\"North_American_Datum_1927\","
+                                     "SPHEROID[\"Clarke 1866\",6378206.4,294.978698213898]],PRIMEM[\"Greenwich\",0],"
+                                     "UNIT[\"degree\",0.0174532925199433]],PROJECTION[\"Transverse_Mercator\"],"
+                                     "PARAMETER[\"latitude_of_origin\",0],PARAMETER[\"central_meridian\",-123],"
+                                     "PARAMETER[\"scale_factor\",0.9996],PARAMETER[\"false_easting\",500000],"
+                                     "PARAMETER[\"false_northing\",0],UNIT[\"metre\",1]]")
+              .name() == "an unnamed system on NAD27");
+}
+
 TEST_CASE("a system made again from its WKT is the same") {
     const ReferenceSystem first = ReferenceSystem::from_text("EPSG:26912+6360");
     CHECK(ReferenceSystem::from_text(first.wkt()).wkt() == first.wkt());
