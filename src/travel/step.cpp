@@ -109,10 +109,10 @@ StepParts step_parts(const StepView& step, const TravelRules& rules) {
     return parts;
 }
 
-Regime main_regime(const StepView& step, const TravelRules& rules) {
+Regime first_regime(const StepView& step, const TravelRules& rules) {
     if (step.kind == GroundKind::channel) return Regime::channel;
     if (step.kind == GroundKind::water) return Regime::water;
-    return sheet_share(step, rules.sheet) >= 0.5 ? Regime::sheet : Regime::shallow;
+    return sheet_share(step, rules.sheet) > 0.0 ? Regime::sheet : Regime::shallow;
 }
 
 }  // namespace rillclock

@@ -56,7 +56,7 @@ void sweep_times(const TravelInputs& in, const TravelRules& rules, TravelField& 
     field.storm_part = std::move(storm);
     field.fixed_part = std::move(fixed);
     field.regime = Raster<Regime>(in.forest.rows(), in.forest.columns(), Regime::none);
-    for (const Cell cell : in.forest.order()) field.regime[cell] = main_regime(step_view(in, field, cell), rules);
+    for (const Cell cell : in.forest.order()) field.regime[cell] = first_regime(step_view(in, field, cell), rules);
 }
 
 }  // namespace

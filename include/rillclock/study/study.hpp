@@ -21,7 +21,7 @@ enum class ShallowRule { by_cover, paved_and_unpaved };
 /// What is absent here and depends on the data is settled by `resolve`.
 struct TerrainStudy {
     std::string elevation = {};                 ///< raster; relative to the study's folder
-    int band = 1;                               ///< from 1
+    std::optional<int> band = {};               ///< from 1; needed only where the file has several
     std::optional<Length> elevation_unit = {};  ///< the length of one unit of elevation, where the study states it
     std::optional<Length> slope_window = {};
     std::optional<Length> vertical_step = {};
@@ -31,7 +31,7 @@ struct TerrainStudy {
 
 struct SurfaceStudy {
     std::string cover = {};                  ///< raster; relative to the study's folder
-    int band = 1;                            ///< from 1
+    std::optional<int> band = {};            ///< from 1; needed only where the file has several
     std::string book = {};                   ///< a built-in book's name, or a CSV file relative to the study's folder
     std::optional<int> fallback_class = {};  ///< for codes the book does not know and cells without cover
 };
@@ -107,7 +107,7 @@ struct ResolvedStudy {
     Length vertical_step = {};     ///< default the largest of 0.2 m, the quantum and a tenth of a cell
     Length pond_depth = {};        ///< default the larger of 0.3 m and the vertical step
     Length move_within = {};       ///< default the larger of 5 m and one cell
-    Length shortest_segment = {};  ///< default the larger of 50 m and 5 cells
+    Length shortest_segment = {};  ///< default the larger of 50 m and 5 cells (and then of a fiftieth of the path)
     double auto_area = 0.01;       ///< default 1 % of the data's area
     double channel_n = 0.0;
     std::optional<Length> hydraulic_radius = {};  ///< where stated; else the two below count

@@ -68,7 +68,7 @@ struct StepParts {
 /// water at √(g·depth), at most at the stated speed, where that is faster than its regime.
 [[nodiscard]] StepParts step_parts(const StepView& step, const TravelRules& rules);
 
-/// The regime of a cell as the raster shows it: that of the larger part of its step.
-[[nodiscard]] Regime main_regime(const StepView& step, const TravelRules& rules);
+/// The regime of a cell as the raster shows it: that in which its step begins.
+[[nodiscard]] Regime first_regime(const StepView& step, const TravelRules& rules);
 
 }  // namespace rillclock

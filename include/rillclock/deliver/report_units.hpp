@@ -1,0 +1,29 @@
+#pragma once
+
+#include <string>
+
+#include "rillclock/core/quantity.hpp"
+#include "rillclock/study/study.hpp"
+
+namespace rillclock {
+
+/// The units results are reported in, and the endings that column names carry.
+class ReportScale {
+public:
+    explicit ReportScale(ReportUnits units) : us_(units == ReportUnits::us) {}
+
+    [[nodiscard]] std::string length_unit() const { return us_ ? "ft" : "m"; }
+    [[nodiscard]] std::string area_unit() const { return us_ ? "ac" : "ha"; }
+    [[nodiscard]] std::string speed_unit() const { return us_ ? "ft_per_s" : "m_per_s"; }
+    [[nodiscard]] std::string rain_unit() const { return us_ ? "in" : "mm"; }
+
+    [[nodiscard]] double length(double m) const { return us_ ? in_feet(metres(m)) : m; }
+    [[nodiscard]] double area(double m2) const { return us_ ? in_acres(square_metres(m2)) : m2 / 1e4; }
+    [[nodiscard]] double speed(double m_per_s) const { return us_ ? in_feet(metres(m_per_s)) : m_per_s; }
+    [[nodiscard]] double rain(Length depth) const { return us_ ? in_inches(depth) : in_millimetres(depth); }
+
+private:
+    bool us_;
+};
+
+}  // namespace rillclock

@@ -1,0 +1,58 @@
+#pragma once
+
+#include <string>
+#include <vector>
+
+#include "rillclock/catchment/outlet.hpp"
+#include "rillclock/core/notice.hpp"
+#include "rillclock/io/elevation_file.hpp"
+#include "rillclock/io/reference_system.hpp"
+#include "rillclock/study/study.hpp"
+#include "rillclock/surface/cover_book.hpp"
+
+namespace rillclock {
+
+/// A file the answer came from.
+struct InputFile {
+    std::string role;      ///< "elevation"
+    std::string name;      ///< as the study names it
+    std::string sha256;
+};
+
+/// How many cells of the data have a surface class.
+struct ClassCount {
+    int code = 0;
+    std::int64_t cells = 0;
+};
+
+/// What is known of the data as a whole.
+struct DataSummary {
+    std::int64_t cells = 0;        ///< of the grid
+    std::int64_t void_cells = 0;
+    std::vector<ClassCount> classes;
+};
+
+/// Everything a finished study has to say; what the writers of this room write, and they compute nothing.
+struct StudyResult {
+    const Study& study;
+    const ResolvedStudy& resolved;
+    const TravelRules& rules;
+    const Grid& grid;
+    const ReferenceSystem& system;
+    const ElevationFormat& format;
+    const CoverBook& book;
+    const TravelInputs& terrain;
+    const TravelField& field;
+    const PointTree& tree;
+    const std::vector<Outlet>& outlets;
+    const Notices& notices;            ///< by effect on the time, the greatest first
+    const std::vector<InputFile>& inputs;
+    const DataSummary& data;
+};
+
+/// The cover class of a segment; null in channels, where the cover does not matter.
+[[nodiscard]] inline const CoverClass* cover_of(const StudyResult& result, const Segment& segment) {
+    return segment.surface ? &result.book.classes()[*segment.surface] : nullptr;
+}
+
+}  // namespace rillclock

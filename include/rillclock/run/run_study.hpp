@@ -1,0 +1,33 @@
+#pragma once
+
+#include <filesystem>
+#include <string>
+#include <vector>
+
+#include "rillclock/core/notice.hpp"
+#include "rillclock/core/progress.hpp"
+#include "rillclock/study/study.hpp"
+
+namespace rillclock {
+
+struct RunOptions {
+    bool replace = false;   ///< whether a result that is already there may be replaced
+};
+
+/// What a finished run tells its caller; all of it, and more, is in the result folder.
+struct RunOutcome {
+    std::filesystem::path folder;
+    std::vector<std::string> headlines;   ///< three sentences
+    std::string overview;                 ///< a short table of the points
+    Notices notices;                      ///< by effect on the time, the greatest first
+    std::string json;                     ///< `result.json`
+};
+
+/// The whole of a study: reads the rasters, settles the flow, times it, works out every design point, and writes the result
+/// folder, which appears whole or not at all.
+///
+/// Throws Error where the inputs or the machine do not allow it, Cancelled where the caller's `progress` asks to stop; the folder is
+/// then as it was.
+RunOutcome run(const Study& study, const RunOptions& options, const Progress& progress = {});
+
+}  // namespace rillclock

@@ -1,0 +1,126 @@
+#include <spdlog/sinks/stdout_sinks.h>
+#include <spdlog/spdlog.h>
+
+#include <exception>
+#include <iostream>
+#include <memory>
+#include <new>
+#include <string>
+
+#include "options.hpp"
+#include "rillclock/core/error.hpp"
+#include "rillclock/run/check.hpp"
+#include "rillclock/run/demo.hpp"
+#include "rillclock/run/reference_text.hpp"
+#include "rillclock/run/run_study.hpp"
+#include "stage_log.hpp"
+#include "stop_signal.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr int status_inputs = 1;
+constexpr int status_command_line = 2;
+constexpr int status_machine = 3;
+constexpr int status_signal = 128;
+constexpr std::size_t most_notices_shown = 8;
+
+int status_of(Fault fault) {
+    switch (fault) {
+        case Fault::inputs: return status_inputs;
+        case Fault::command_line: return status_command_line;
+        case Fault::machine:
+        case Fault::bug: return status_machine;
+    }
+    return status_machine;
+}
+
+void show_notices(const Notices& notices, const std::string& rest) {
+    for (std::size_t i = 0; i < std::min(most_notices_shown, notices.size()); ++i) {
+        spdlog::warn("notice: {}", notices[i].text);
+    }
+    if (notices.size() > most_notices_shown) spdlog::warn("and {} more notices{}", notices.size() - most_notices_shown, rest);
+}
+
+void show_outcome(const RunOutcome& outcome) {
+    std::cout << '\n' << outcome.overview << '\n';
+    for (const std::string& headline : outcome.headlines) std::cout << "  * " << headline << '\n';
+    std::cout << "\nThe result is in " << outcome.folder.string() << ": start with tables/outlets.csv and tables/segments.csv; "
+              << "tables/review.csv lists what needs a person's eye.\n\n";
+    for (const std::string& caution : caution_lines()) std::cout << caution << '\n';
+}
+
+int run_command(const CommandLine& line) {
+    StageLog log(line.quiet);
+    const Progress progress([&](const StageProgress& report) { return log.report(report); });
+    const RunOutcome outcome = run(study_of(line), {.replace = line.replace}, progress);
+    if (!line.quiet) show_notices(outcome.notices, " in tables/review.csv");
+    if (line.json) {
+        std::cout << outcome.json;
+    } else if (line.quiet) {
+        std::cout << outcome.folder.string() << '\n';
+    } else {
+        show_outcome(outcome);
+    }
+    return 0;
+}
+
+int check_command(const CommandLine& line) {
+    if (line.keys) {
+        std::cout << keys_text();
+        return 0;
+    }
+    const CheckReport report = check(study_of(line));
+    for (const std::string& fact : report.facts) std::cout << fact << '\n';
+    show_notices(report.notices, "");
+    for (const std::string& problem : report.problems) spdlog::error("would stop the run: {}", problem);
+    if (report.problems.empty()) std::cout << "Nothing was found that would stop the run.\n";
+    return report.problems.empty() ? 0 : status_inputs;
+}
+
+int demo_command(const CommandLine& line) {
+    const std::vector<std::string> names = write_demo(line.demo_folder);
+    std::cout << "The demo study is in " << line.demo_folder << " (";
+    for (std::size_t i = 0; i < names.size(); ++i) std::cout << (i == 0 ? "" : ", ") << names[i];
+    std::cout << "). Next: rillclock run " << line.demo_folder << "/study.toml\n";
+    return 0;
+}
+
+int do_command(const CommandLine& line) {
+    switch (line.command) {
+        case CommandLine::Command::run: return run_command(line);
+        case CommandLine::Command::check: return check_command(line);
+        case CommandLine::Command::demo: return demo_command(line);
+        case CommandLine::Command::methods: std::cout << methods_text(); return 0;
+    }
+    return 0;
+}
+
+int guarded_main(int count, const char* const* words) {
+    try {
+        const ParsedWords parsed = parse_words(count, words);
+        return parsed.finished ? 0 : do_command(parsed.line);
+    } catch (const Error& error) {
+        spdlog::error("rillclock: {}", error.what());
+        return status_of(error.fault());
+    } catch (const Cancelled&) {
+        spdlog::error("rillclock: stopped on request; nothing was written");
+        return status_signal + stop_signal();
+    } catch (const std::bad_alloc&) {
+        spdlog::error("rillclock: out of memory; rillclock check says how much a study needs");
+        return status_machine;
+    } catch (const std::exception& unforeseen) {
+        spdlog::error("rillclock: {} (this is a fault of rillclock itself; please report it)", unforeseen.what());
+        return status_machine;
+    }
+}
+
+}  // namespace
+}  // namespace rillclock
+
+int main(int count, char** words) {
+    spdlog::set_default_logger(std::make_shared<spdlog::logger>("", std::make_shared<spdlog::sinks::stderr_sink_mt>()));
+    spdlog::set_pattern("%v");
+    rillclock::listen_for_signals();
+    return rillclock::guarded_main(count, words);
+}

@@ -1,0 +1,119 @@
+#include "options.hpp"
+
+#include <CLI/CLI.hpp>
+#include <array>
+#include <iostream>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/run/reference_text.hpp"
+#include "rillclock/run/study_source.hpp"
+
+namespace rillclock {
+namespace {
+
+/// An option that stands for a key of the study file.
+struct KeyOption {
+    const char* option;
+    const char* key;
+    const char* form;
+    const char* help;
+};
+
+constexpr std::array key_options = {
+    KeyOption{"--elevation", "terrain.elevation", "FILE", "elevation raster (DEM)"},
+    KeyOption{"--cover", "surface.cover", "FILE", "land-cover raster"},
+    KeyOption{"--book", "surface.book", "NAME|FILE", "what the cover codes mean: nlcd, or a CSV file"},
+    KeyOption{"--points", "points.file", "FILE", "design points; without it they stand where water leaves the data"},
+    KeyOption{"--rain", "rain.two_year_24_hour", "DEPTH", "2-year 24-hour rainfall depth, \"3.6 in\" or \"91 mm\""},
+    KeyOption{"--out", "output.folder", "FOLDER", "result folder (default: result)"},
+};
+
+constexpr const char* about =
+    "Travel time of water over terrain: when it arrives at each design point, from where, along which path.\n"
+    "Planning-level estimates; not for life-safety or flood-warning decisions; local criteria govern.";
+
+void add_study_words(CLI::App& command, CommandLine& line, std::array<std::string, key_options.size()>& values) {
+    command.add_option("STUDY", line.study_file, "study file (TOML); the options below may stand in for it");
+    for (std::size_t i = 0; i < key_options.size(); ++i) {
+        command.add_option(key_options[i].option, values[i], key_options[i].help)->type_name(key_options[i].form);
+    }
+}
+
+void gather_stated(const CLI::App& command, const std::array<std::string, key_options.size()>& values, CommandLine& line) {
+    for (std::size_t i = 0; i < key_options.size(); ++i) {
+        if (command.count(key_options[i].option) == 0) continue;
+        line.stated.push_back({key_options[i].option, key_options[i].key, values[i]});
+    }
+}
+
+/// The three sub-commands' words, kept where CLI11 can fill them in.
+class Words {
+public:
+    Words() : app_(about, "rillclock") {
+        app_.set_version_flag("--version", [] { return version_line(); }, "print the versions and stop");
+        app_.require_subcommand(1);
+        run_ = app_.add_subcommand("run", "work out a study and write its result folder");
+        add_study_words(*run_, line_, run_values_);
+        run_->add_flag("--replace", line_.replace, "replace a result folder that is already there");
+        run_->add_flag("-q,--quiet", line_.quiet, "say nothing but errors, and where the result is");
+        run_->add_flag("--json", line_.json, "print result.json on standard output, and nothing else there");
+        check_ = app_.add_subcommand("check", "read headers, tables and points; say what would be wrong and what it will cost");
+        add_study_words(*check_, line_, check_values_);
+        check_->add_flag("--keys", line_.keys, "list every key of the study file and stop");
+        methods_ = app_.add_subcommand("methods", "list every formula with its source, range and inputs");
+        demo_ = app_.add_subcommand("demo", "write the demo study, an invented town, ready to run");
+        demo_->add_option("FOLDER", line_.demo_folder, "a new or empty folder")->required();
+    }
+
+    ParsedWords parse(int count, const char* const* words) {
+        try {
+            app_.parse(count, words);
+        } catch (const CLI::ParseError& stop) {
+            if (stop.get_exit_code() != 0) throw Error(Fault::command_line, sentence_of(stop));
+            app_.exit(stop, std::cout, std::cerr);
+            return {.line = {}, .finished = true};
+        }
+        if (run_->parsed()) gather_stated(*run_, run_values_, line_);
+        if (check_->parsed()) gather_stated(*check_, check_values_, line_);
+        line_.command = check_->parsed()     ? CommandLine::Command::check
+                        : methods_->parsed() ? CommandLine::Command::methods
+                        : demo_->parsed()    ? CommandLine::Command::demo
+                                             : CommandLine::Command::run;
+        return {.line = line_, .finished = false};
+    }
+
+private:
+    static std::string sentence_of(const CLI::ParseError& stop) {
+        return std::string(stop.what()) + "; see rillclock --help, or rillclock COMMAND --help";
+    }
+
+    CLI::App app_;
+    CLI::App* run_ = nullptr;
+    CLI::App* check_ = nullptr;
+    CLI::App* methods_ = nullptr;
+    CLI::App* demo_ = nullptr;
+    CommandLine line_;
+    std::array<std::string, key_options.size()> run_values_;
+    std::array<std::string, key_options.size()> check_values_;
+};
+
+}  // namespace
+
+ParsedWords parse_words(int count, const char* const* words) {
+    Words reader;
+    return reader.parse(count, words);
+}
+
+Study study_of(const CommandLine& line) {
+    if (line.study_file.empty() && line.stated.empty()) {
+        throw Error(Fault::command_line, "no study was named; write rillclock run STUDY.toml, or rillclock run --elevation DEM "
+                                         "--cover COVER --book nlcd --rain \"3.6 in\"");
+    }
+    Study study = line.study_file.empty() ? Study{} : read_study_file(line.study_file);
+    for (const CommandLine::Stated& stated : line.stated) {
+        state_in_study(study, stated.key, stated.value, stated.option);
+    }
+    return study;
+}
+
+}  // namespace rillclock

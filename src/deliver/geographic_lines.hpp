@@ -1,0 +1,33 @@
+#pragma once
+
+#include <nlohmann/json.hpp>
+#include <vector>
+
+#include "rillclock/core/notice.hpp"
+#include "rillclock/io/reference_system.hpp"
+
+namespace rillclock {
+
+/// The places at which a line turns, its ends included: those on a straight line between their neighbours are left out. Exact for
+/// lines that step from cell centre to cell centre.
+[[nodiscard]] std::vector<Place> without_collinear(const std::vector<Place>& line);
+
+/// Makes GeoJSON geometries of lines in one reference system, and keeps the box around all of them.
+class GeographicLines {
+public:
+    explicit GeographicLines(const ReferenceSystem& system) : to_wgs84_(Transformation::to_wgs84(system)) {}
+
+    /// A LineString, or a MultiLineString where the line crosses the 180th meridian.
+    [[nodiscard]] nlohmann::ordered_json geometry(const std::vector<Place>& line);
+    /// [west, south, east, north] of all lines so far.
+    [[nodiscard]] nlohmann::ordered_json bbox() const;
+
+private:
+    [[nodiscard]] std::vector<Place> geographic(const std::vector<Place>& line);
+
+    Transformation to_wgs84_;
+    Place low_{180.0, 90.0};
+    Place high_{-180.0, -90.0};
+};
+
+}  // namespace rillclock

@@ -1,0 +1,110 @@
+#include "rillclock/deliver/headlines.hpp"
+
+#include <algorithm>
+#include <array>
+#include <numeric>
+
+#include "rillclock/core/number_text.hpp"
+#include "rillclock/deliver/report_units.hpp"
+
+namespace rillclock {
+namespace {
+
+std::string minutes_text(double s) {
+    const double m = s / 60.0;
+    return m < 120.0 ? significant(m, 3) + " min" : significant(m / 60.0, 3) + " h";
+}
+
+/// Positions of the outlets by area, the largest first; of equal ones the earlier number.
+std::vector<std::size_t> by_area(const StudyResult& result) {
+    std::vector<std::size_t> order(result.outlets.size());
+    std::iota(order.begin(), order.end(), std::size_t{0});
+    std::stable_sort(order.begin(), order.end(), [&](std::size_t a, std::size_t b) {
+        return result.outlets[a].area > result.outlets[b].area;
+    });
+    return order;
+}
+
+std::string length_text(const StudyResult& result, double m) {
+    const ReportScale scale(result.study.report_units);
+    return significant(scale.length(m), 4) + " " + scale.length_unit();
+}
+
+std::string area_text(const StudyResult& result, FixedArea area) {
+    const ReportScale scale(result.study.report_units);
+    return significant(scale.area(from_fixed_area(area)), 4) + " " + scale.area_unit();
+}
+
+std::string governing_sentence(const StudyResult& result, const Outlet& main) {
+    const bool same = main.longest.cells.front() == main.governing.cells.front();
+    std::string text = "Water takes " + minutes_text(main.time_of_concentration_s()) + " to '" + main.point.name +
+                       "' from the farthest of " + area_text(result, main.area) + " in time, along " +
+                       length_text(result, from_fixed(main.governing.summary.length)) + " of path";
+    if (same) return text + "; that is the longest path too.";
+    return text + "; the longest path (" + length_text(result, from_fixed(main.longest.summary.length)) + ") takes only " +
+           minutes_text(main.longest.seconds) + ".";
+}
+
+std::string makeup_sentence(const StudyResult& result, const Outlet& main) {
+    std::array<StepTime, 5> by_regime{};
+    for (const Segment& s : main.governing.segments) by_regime[static_cast<std::size_t>(s.regime)] += s.time;
+    std::string text;
+    for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
+        const double s = in_seconds(by_regime[static_cast<std::size_t>(regime)].under(result.rules.sheet.storm_factor));
+        if (!(s > 0)) continue;
+        text += (text.empty() ? "" : ", ") + minutes_text(s) + " as " + std::string(name_of(regime));
+    }
+    return "Of that time it spends " + text + "; half of the area has arrived after " + minutes_text(main.arrival_s[0]) + ".";
+}
+
+std::string concern_sentence(const StudyResult& result) {
+    if (result.notices.empty()) return "Nothing was found that needs a person's eye more than usual.";
+    return "Look first at this: " + result.notices.front().text + ".";
+}
+
+std::string padded(std::string text, std::size_t width, bool right) {
+    // Names may hold bytes beyond ASCII: count code points, not bytes.
+    const auto letters = static_cast<std::size_t>(std::count_if(text.begin(), text.end(), [](char c) {
+        return (static_cast<unsigned char>(c) & 0xC0U) != 0x80U;
+    }));
+    const std::string blanks(letters < width ? width - letters : 0, ' ');
+    return right ? blanks + text : text + blanks;
+}
+
+using OverviewRow = std::array<std::string, 5>;
+
+OverviewRow overview_row(const StudyResult& result, const Outlet& outlet) {
+    const ReportScale scale(result.study.report_units);
+    return {outlet.point.name, significant(scale.area(from_fixed_area(outlet.area)), 4),
+            fixed_decimals(outlet.time_of_concentration_s() / 60.0, 1), fixed_decimals(outlet.arrival_s[0] / 60.0, 1),
+            significant(scale.length(from_fixed(outlet.governing.summary.length)), 4)};
+}
+
+}  // namespace
+
+std::vector<std::string> headlines(const StudyResult& result) {
+    const Outlet& main = result.outlets[by_area(result).front()];
+    return {governing_sentence(result, main), makeup_sentence(result, main), concern_sentence(result)};
+}
+
+std::string outlets_overview(const StudyResult& result, std::size_t most) {
+    const ReportScale scale(result.study.report_units);
+    std::vector<OverviewRow> rows{{"point", "area " + scale.area_unit(), "time min", "half min", "path " + scale.length_unit()}};
+    const std::vector<std::size_t> order = by_area(result);
+    for (std::size_t i = 0; i < std::min(most, order.size()); ++i) {
+        rows.push_back(overview_row(result, result.outlets[order[i]]));
+    }
+    std::array<std::size_t, 5> widths{};
+    for (const OverviewRow& row : rows) {
+        for (std::size_t i = 0; i < row.size(); ++i) widths[i] = std::max(widths[i], row[i].size());
+    }
+    std::string text;
+    for (const OverviewRow& row : rows) {
+        for (std::size_t i = 0; i < row.size(); ++i) text += (i == 0 ? "" : "  ") + padded(row[i], widths[i], i > 0);
+        text += '\n';
+    }
+    if (order.size() > most) text += "… and " + std::to_string(order.size() - most) + " more in tables/outlets.csv\n";
+    return text;
+}
+
+}  // namespace rillclock

@@ -1,0 +1,77 @@
+#include "rillclock/deliver/report_units.hpp"
+#include "rillclock/deliver/tables.hpp"
+#include "table_writer.hpp"
+
+namespace rillclock {
+namespace {
+
+std::string in_minutes_text(double s) { return fixed_decimals(s / 60.0, 3); }
+
+double regime_seconds(const Outlet& outlet, Regime regime, double storm_factor) {
+    StepTime time;
+    for (const Segment& segment : outlet.governing.segments) {
+        if (segment.regime == regime) time += segment.time;
+    }
+    return in_seconds(time.under(storm_factor));
+}
+
+void add_place_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
+    table.column("number", [](const Outlet& o) { return std::to_string(o.number); })
+        .column("name", [](const Outlet& o) { return o.point.name; })
+        .column("x", [&](const Outlet& o) { return coordinate(result.grid.centre(o.point.cell).x); })
+        .column("y", [&](const Outlet& o) { return coordinate(result.grid.centre(o.point.cell).y); })
+        .column("moved_" + scale.length_unit(), [=](const Outlet& o) { return five_digits(scale.length(in_metres(o.point.moved))); })
+        .column("next_point", [&](const Outlet& o) { return o.next == 0 ? "" : result.outlets[o.next - 1].point.name; });
+}
+
+void add_time_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
+    table.column("area_" + scale.area_unit(), [=](const Outlet& o) { return five_digits(scale.area(from_fixed_area(o.area))); })
+        .column("own_area_" + scale.area_unit(), [=](const Outlet& o) { return five_digits(scale.area(from_fixed_area(o.own_area))); })
+        .column("time_of_concentration_min", [](const Outlet& o) { return in_minutes_text(o.time_of_concentration_s()); })
+        .column("greatest_time_min", [](const Outlet& o) { return in_minutes_text(o.greatest_s); });
+    for (std::size_t i = 0; i < told_shares.size(); ++i) {
+        table.column("time_" + significant(100.0 * told_shares[i], 3) + "_percent_of_area_min",
+                     [i](const Outlet& o) { return in_minutes_text(o.arrival_s[i]); });
+    }
+    for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
+        table.column(std::string(name_of(regime)) + "_min", [&result, regime](const Outlet& o) {
+            return in_minutes_text(regime_seconds(o, regime, result.rules.sheet.storm_factor));
+        });
+    }
+}
+
+void add_path_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
+    const std::string m = scale.length_unit();
+    table.column("governing_length_" + m, [=](const Outlet& o) { return five_digits(scale.length(from_fixed(o.governing.summary.length))); })
+        .column("governing_fall_" + m, [=](const Outlet& o) { return five_digits(scale.length(o.governing.summary.fall_m)); })
+        .column("governing_head_x", [&](const Outlet& o) { return coordinate(result.grid.centre(o.governing.cells.front()).x); })
+        .column("governing_head_y", [&](const Outlet& o) { return coordinate(result.grid.centre(o.governing.cells.front()).y); })
+        .column("longest_length_" + m, [=](const Outlet& o) { return five_digits(scale.length(from_fixed(o.longest.summary.length))); })
+        .column("longest_time_min", [](const Outlet& o) { return in_minutes_text(o.longest.seconds); });
+}
+
+void add_trust_columns(TableWriter<Outlet>& table) {
+    table.column("ponded_percent", [](const Outlet& o) {
+            return five_digits(100.0 * o.governing.summary.share_of_length(o.governing.summary.ponded_length_m)); })
+        .column("slope_floor_percent", [](const Outlet& o) {
+            return five_digits(100.0 * o.governing.summary.share_of_length(o.governing.summary.floor_length_m)); })
+        .column("fall_ratio", [](const Outlet& o) { return five_digits(o.governing.summary.fall_ratio()); })
+        .column("end_to_end_time_min", [](const Outlet& o) { return in_minutes_text(o.governing.end_to_end_s); })
+        .column("touches_edge", [](const Outlet& o) { return yes_or_no(o.touches_edge()); });
+}
+
+}  // namespace
+
+std::string outlets_table(const StudyResult& result) {
+    const ReportScale scale(result.study.report_units);
+    TableWriter<Outlet> table;
+    add_place_columns(result, scale, table);
+    add_time_columns(result, scale, table);
+    add_path_columns(result, scale, table);
+    add_trust_columns(table);
+    std::string text = table.header();
+    for (const Outlet& outlet : result.outlets) text += table.line(outlet);
+    return text;
+}
+
+}  // namespace rillclock

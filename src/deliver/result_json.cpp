@@ -1,0 +1,199 @@
+#include "rillclock/deliver/result_json.hpp"
+
+#include <cmath>
+#include <nlohmann/json.hpp>
+
+#include "rillclock/core/number_text.hpp"
+#include "rillclock/deliver/cautions.hpp"
+#include "rillclock/deliver/headlines.hpp"
+#include "rillclock/deliver/version.hpp"
+#include "rillclock/io/library_versions.hpp"
+#include "segment_rows.hpp"
+
+namespace rillclock {
+namespace {
+
+using Json = nlohmann::ordered_json;
+
+/// Rounded to decimals, so that the file is legible; null where there is no number.
+Json number(double value, int decimals) {
+    return std::isfinite(value) ? Json(std::stod(fixed_decimals(value, decimals))) : Json(nullptr);
+}
+/// Rounded to significant digits.
+Json digits(double value, int count = 6) {
+    return std::isfinite(value) ? Json(std::stod(significant(value, count))) : Json(nullptr);
+}
+Json minutes_json(double s) { return number(s / 60.0, 6); }
+Json place_json(const Place& place) { return Json::array({number(place.x, 7), number(place.y, 7)}); }
+
+Json versions() {
+    return {{"rillclock", version_text}, {"gdal", gdal_version()}, {"proj", proj_version()}};
+}
+
+Json inputs_json(const StudyResult& result) {
+    Json files = Json::array();
+    for (const InputFile& file : result.inputs) {
+        files.push_back({{"role", file.role}, {"file", file.name}, {"sha256", file.sha256}});
+    }
+    return files;
+}
+
+Json data_json(const StudyResult& result) {
+    Json classes = Json::array();
+    for (const ClassCount& count : result.data.classes) {
+        const CoverClass* known = result.book.find(count.code);
+        classes.push_back({{"code", count.code}, {"name", known == nullptr ? "" : known->name}, {"cells", count.cells}});
+    }
+    return {{"reference_system", result.system.name()},
+            {"rows", result.grid.rows},
+            {"columns", result.grid.columns},
+            {"cell_width", result.grid.cell_width},
+            {"cell_height", result.grid.cell_height},
+            {"cells", result.data.cells},
+            {"void_cells", result.data.void_cells},
+            {"elevation_unit", result.format.unit.name},
+            {"metres_per_stored_elevation_unit", result.format.metres_per_stored_unit()},
+            {"cover_classes", classes}};
+}
+
+Json terrain_parameters(const TravelRules& rules) {
+    return {{"slope_window_m", in_metres(rules.slope.window)},
+            {"vertical_step_m", in_metres(rules.slope.vertical_step)},
+            {"slope_floor_overland", rules.slope.overland_floor},
+            {"slope_floor_channel", rules.slope.channel_floor},
+            {"pond_depth_m", in_metres(rules.pond.depth)},
+            {"pond_speed_m_per_s", number(in_metres_per_second(rules.pond.speed), 6)}};
+}
+
+Json sheet_parameters(const StudyResult& result) {
+    const SheetRules& sheet = result.rules.sheet;
+    return {{"method", result.study.timing.sheet},
+            {"coefficient", sheet.formula.coefficient},
+            {"exponent", sheet.formula.exponent},
+            {"storm_factor", sheet.storm_factor},
+            {"rain_2_year_24_hour_mm", digits(in_millimetres(*result.study.rain.two_year_24_hour))},
+            {"limit_m", in_metres(sheet.limit)},
+            {"index_limit_m", number(in_metres(sheet.index_limit), 6)}};
+}
+
+Json power_law(const PowerLaw& law) {
+    return {{"coefficient_m", in_metres(law.coefficient)}, {"per_m2", in_square_metres(law.unit)}, {"exponent", law.exponent}};
+}
+
+Json channel_parameters(const ChannelRules& channel) {
+    Json json = {{"n", channel.n}};
+    json["from_area_m2"] = channel.from_area ? Json(in_square_metres(*channel.from_area)) : Json(nullptr);
+    if (channel.hydraulic_radius) {
+        json["hydraulic_radius_m"] = in_metres(*channel.hydraulic_radius);
+    } else {
+        json["width"] = power_law(channel.width);
+        json["depth"] = power_law(channel.depth);
+    }
+    return json;
+}
+
+Json parameters_json(const StudyResult& result) {
+    return {{"terrain", terrain_parameters(result.rules)},
+            {"sheet", sheet_parameters(result)},
+            {"shallow", result.study.timing.shallow == ShallowRule::by_cover ? "by cover" : "paved and unpaved"},
+            {"channel", channel_parameters(result.rules.channel)},
+            {"book", result.book.name()},
+            {"ignore_tail", result.study.timing.ignore_tail},
+            {"move_within_m", in_metres(result.resolved.move_within)},
+            {"shortest_segment_m", in_metres(result.resolved.shortest_segment)}};
+}
+
+Json segment_json(const StudyResult& result, const SegmentRow& row) {
+    const Segment& s = *row.segment;
+    const CoverClass* cover = cover_of(result, s);
+    Json json = {{"regime", name_of(s.regime)},
+                 {"cover", cover == nullptr ? Json(nullptr) : Json(cover->name)},
+                 {"length_m", digits(s.length_m)},
+                 {"ponded_length_m", digits(s.pond_length_m)},
+                 {"slope_equivalent", digits(s.slope_equivalent)},
+                 {"fall_m", digits(s.fall_m)},
+                 {"time_s", number(row.time_s, 6)},
+                 {"ponded_time_s", number(row.pond_time_s, 6)}};
+    if (s.regime == Regime::sheet) json["sheet_index_m"] = {number(s.index_from_m, 6), number(s.index_to_m, 6)};
+    if (s.regime == Regime::channel) json["hydraulic_radius_m"] = digits(s.radius_equivalent_m);
+    return json;
+}
+
+Json path_json(const StudyResult& result, const Outlet& outlet, const PointPath& path) {
+    Json segments = Json::array();
+    for (const SegmentRow& row : segment_rows(result, outlet, path, "")) segments.push_back(segment_json(result, row));
+    const PathSummary& summary = path.summary;
+    return {{"head", place_json(result.grid.centre(path.cells.front()))},
+            {"time_s", number(path.seconds, 6)},
+            {"time_min", minutes_json(path.seconds)},
+            {"length_m", number(from_fixed(summary.length), 3)},
+            {"fall_m", digits(summary.fall_m)},
+            {"fall_ratio", digits(summary.fall_ratio(), 4)},
+            {"ponded_share", digits(summary.share_of_length(summary.ponded_length_m), 4)},
+            {"slope_floor_share", digits(summary.share_of_length(summary.floor_length_m), 4)},
+            {"end_to_end_time_min", minutes_json(path.end_to_end_s)},
+            {"segments", segments}};
+}
+
+Json arrivals_json(const Outlet& outlet) {
+    Json json = Json::array();
+    for (std::size_t i = 0; i < told_shares.size(); ++i) {
+        json.push_back({{"share_of_area", told_shares[i]}, {"time_min", minutes_json(outlet.arrival_s[i])}});
+    }
+    return json;
+}
+
+Json outlet_json(const StudyResult& result, const Outlet& outlet) {
+    return {{"number", outlet.number},
+            {"name", outlet.point.name},
+            {"place", place_json(result.grid.centre(outlet.point.cell))},
+            {"moved_m", digits(in_metres(outlet.point.moved))},
+            {"next_point", outlet.next == 0 ? Json(nullptr) : Json(result.outlets[outlet.next - 1].point.name)},
+            {"area_m2", number(from_fixed_area(outlet.area), 4)},
+            {"own_area_m2", number(from_fixed_area(outlet.own_area), 4)},
+            {"touches_edge", outlet.touches_edge()},
+            {"time_of_concentration_s", number(outlet.time_of_concentration_s(), 6)},
+            {"time_of_concentration_min", minutes_json(outlet.time_of_concentration_s())},
+            {"greatest_time_min", minutes_json(outlet.greatest_s)},
+            {"arrivals", arrivals_json(outlet)},
+            {"governing_path", path_json(result, outlet, outlet.governing)},
+            {"longest_path", path_json(result, outlet, outlet.longest)}};
+}
+
+template <class T>
+Json or_null(const std::optional<T>& value) {
+    return value ? digits(*value) : Json(nullptr);
+}
+
+Json notices_json(const StudyResult& result) {
+    Json json = Json::array();
+    for (const Notice& notice : result.notices) {
+        json.push_back({{"point", notice.point.empty() ? Json(nullptr) : Json(notice.point)},
+                        {"notice", notice.code},
+                        {"text", notice.text},
+                        {"value", or_null(notice.value)},
+                        {"threshold", or_null(notice.threshold)},
+                        {"place", notice.place ? place_json(*notice.place) : Json(nullptr)},
+                        {"effect_min", minutes_json(notice.effect_s)}});
+    }
+    return json;
+}
+
+}  // namespace
+
+std::string result_json(const StudyResult& result) {
+    Json outlets = Json::array();
+    for (const Outlet& outlet : result.outlets) outlets.push_back(outlet_json(result, outlet));
+    const Json json = {{"title", result.study.title},
+                       {"versions", versions()},
+                       {"headlines", headlines(result)},
+                       {"cautions", cautions},
+                       {"inputs", inputs_json(result)},
+                       {"data", data_json(result)},
+                       {"parameters", parameters_json(result)},
+                       {"outlets", outlets},
+                       {"notices", notices_json(result)}};
+    return json.dump(1, ' ', false, Json::error_handler_t::replace) + "\n";
+}
+
+}  // namespace rillclock

@@ -1,0 +1,48 @@
+#include "segment_rows.hpp"
+
+namespace rillclock {
+namespace {
+
+/// The place at a share of the step out of a cell of the path.
+Place place_on_step(const Grid& grid, const PointPath& path, std::size_t position, double share) {
+    const Place from = grid.centre(path.cells[position]);
+    const Place to = grid.centre(path.cells[position + 1]);
+    return {from.x + share * (to.x - from.x), from.y + share * (to.y - from.y)};
+}
+
+}  // namespace
+
+std::vector<SegmentRow> segment_rows(const StudyResult& result, const Outlet& outlet, const PointPath& path,
+                                     std::string_view path_name) {
+    std::vector<SegmentRow> rows;
+    StepTime running;
+    for (const Segment& segment : path.segments) {
+        running += segment.time;
+        const double s = result.rules.sheet.storm_factor;
+        rows.push_back({.outlet = &outlet, .path = &path, .segment = &segment, .path_name = path_name,
+                        .number = rows.size() + 1, .time_s = in_seconds(segment.time.under(s)),
+                        .pond_time_s = in_seconds(segment.pond_time.under(s)), .running_s = in_seconds(running.under(s))});
+    }
+    return rows;
+}
+
+std::vector<SegmentRow> segment_rows(const StudyResult& result, const Outlet& outlet) {
+    std::vector<SegmentRow> rows = segment_rows(result, outlet, outlet.governing, "governing");
+    if (outlet.longest.cells.front() == outlet.governing.cells.front()) return rows;
+    const std::vector<SegmentRow> longest = segment_rows(result, outlet, outlet.longest, "longest");
+    rows.insert(rows.end(), longest.begin(), longest.end());
+    return rows;
+}
+
+std::vector<Place> segment_places(const StudyResult& result, const SegmentRow& row) {
+    const PathPiece& first = row.path->pieces[row.segment->first_piece];
+    const PathPiece& last = row.path->pieces[row.segment->last_piece];
+    std::vector<Place> places{place_on_step(result.grid, *row.path, first.position, first.share_from)};
+    for (std::size_t position = first.position + 1; position <= last.position; ++position) {
+        places.push_back(result.grid.centre(row.path->cells[position]));
+    }
+    if (last.share_to > 0.0) places.push_back(place_on_step(result.grid, *row.path, last.position, last.share_to));
+    return places;
+}
+
+}  // namespace rillclock

@@ -1,0 +1,135 @@
+#include "rillclock/run/check.hpp"
+
+#include <filesystem>
+#include <memory>
+#include <optional>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/core/number_text.hpp"
+#include "rillclock/io/cover_file.hpp"
+#include "rillclock/io/gdal_session.hpp"
+#include "rillclock/io/ground_of.hpp"
+#include "study_data.hpp"
+
+namespace rillclock {
+namespace {
+
+/// Bytes a cell of the six rasters before compression, overviews included.
+constexpr double disk_bytes_per_cell = 31.0;
+
+std::string size_text(double bytes) {
+    return bytes < 1e9 ? significant(bytes / 1e6, 3) + " MB" : significant(bytes / 1e9, 3) + " GB";
+}
+
+class Checking {
+public:
+    explicit Checking(const Study& study) : study_(study) {}
+
+    CheckReport report() {
+        attempt([&] { check_study(study_); });
+        attempt([&] { elevations(); });
+        attempt([&] { book(); });
+        if (terrain_) {
+            attempt([&] { cover(); });
+            attempt([&] { points(); });
+            costs();
+        }
+        output();
+        return std::move(report_);
+    }
+
+private:
+    /// Input faults are what a check is for; others go on to the caller.
+    template <class Work>
+    void attempt(Work work) {
+        try {
+            work();
+        } catch (const Error& error) {
+            if (error.fault() != Fault::inputs) throw;
+            report_.problems.emplace_back(error.what());
+        }
+    }
+
+    void note(const Notices& notices) { report_.notices.insert(report_.notices.end(), notices.begin(), notices.end()); }
+
+    void elevations() {
+        if (study_.terrain.elevation.empty()) return;
+        terrain_ = std::make_unique<ElevationFile>(open_elevation_of(study_));
+        const Grid& grid = terrain_->grid();
+        const Ground ground = ground_of(grid, terrain_->system);
+        note(terrain_->notices);
+        report_.facts.push_back("elevations: " + std::to_string(grid.rows) + " rows × " + std::to_string(grid.columns) +
+                                " columns in " + terrain_->system.name() + ", heights in " + terrain_->format.unit.name +
+                                ", cells of " + significant(in_metres(ground.cell_side()), 4) + " m on the ground");
+        const ResolvedStudy resolved = resolve(study_, facts_of(terrain_->format, ground));
+        report_.facts.push_back("slopes: read over " + significant(in_metres(resolved.slope_window), 4) +
+                                " m of path, believed from a fall of " + significant(in_metres(resolved.vertical_step), 4) + " m on");
+    }
+
+    void book() {
+        if (study_.surface.book.empty()) return;
+        const CoverBook book = read_book(study_);
+        report_.facts.push_back("cover book: " + book.name() + ", " + std::to_string(book.classes().size()) + " classes");
+    }
+
+    void cover() {
+        if (study_.surface.cover.empty()) return;
+        CoverOptions options;
+        options.band = study_.surface.band;
+        const CoverFile file = open_cover(located(study_, study_.surface.cover), options, terrain_->grid(), terrain_->system);
+        note(file.notices);
+        report_.facts.push_back("land cover: " + std::to_string(file.file_grid.rows) + " rows × " +
+                                std::to_string(file.file_grid.columns) + " columns in " + file.system.name());
+    }
+
+    void points() {
+        if (!study_.points.file) {
+            report_.facts.emplace_back("points: none stated, so they will stand where water leaves the data");
+            return;
+        }
+        const StatedPoints stated = read_stated_points(study_, terrain_->system);
+        note(stated.notices);
+        std::size_t inside = 0;
+        for (const StatedPoint& point : stated.points) {
+            if (terrain_->grid().at(point.place)) {
+                ++inside;
+            } else {
+                report_.notices.push_back({.code = "point-off-data",
+                                           .text = "the point '" + point.name + "' lies off the elevation data and will be left out",
+                                           .point = point.name, .place = point.place});
+            }
+        }
+        report_.facts.push_back("points: " + std::to_string(stated.points.size()) + ", " + std::to_string(inside) +
+                                " of them within the elevations");
+        if (inside == 0) report_.problems.push_back("none of the points in '" + *study_.points.file +
+                                                    "' lies within the elevations; check their reference system");
+    }
+
+    void costs() {
+        const auto cells = static_cast<double>(terrain_->grid().size());
+        report_.facts.push_back("cost: about " + size_text(cells * memory_bytes_per_cell) + " of memory, and at most " +
+                                size_text(cells * disk_bytes_per_cell) + " of disk for the result");
+    }
+
+    void output() {
+        const std::string folder = located(study_, study_.output.folder);
+        if (std::filesystem::exists(folder)) {
+            report_.facts.push_back("result: the folder '" + folder + "' is there already; run with --replace to replace it");
+        } else {
+            report_.facts.push_back("result: will be written to '" + folder + "'");
+        }
+    }
+
+    const Study& study_;
+    std::unique_ptr<ElevationFile> terrain_;
+    CheckReport report_;
+};
+
+}  // namespace
+
+CheckReport check(const Study& study) {
+    const GdalSession session;
+    return Checking(study).report();
+}
+
+}  // namespace rillclock

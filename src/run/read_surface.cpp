@@ -1,0 +1,150 @@
+#include <algorithm>
+#include <cmath>
+#include <map>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/hydraulics/shallow_flow.hpp"
+#include "rillclock/io/cover_file.hpp"
+#include "rillclock/io/text_file.hpp"
+#include "study_data.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr std::int64_t strip_rows = 512;
+constexpr std::size_t most_classes = 255;
+
+SurfaceHydraulics hydraulics_of(const CoverClass& cover, ShallowRule rule) {
+    const Speed by_paving = cover.paved ? tr55_paved_k : tr55_unpaved_k;
+    return {.sheet_n = cover.n_typical,
+            .shallow_k = rule == ShallowRule::by_cover ? cover.shallow_k : by_paving,
+            .water_depth = cover.water_depth};
+}
+
+/// The position of a class in the book.
+std::optional<std::uint8_t> position_of(const CoverBook& book, std::int32_t code) {
+    const CoverClass* found = book.find(code);
+    if (found == nullptr) return std::nullopt;
+    return static_cast<std::uint8_t>(found - book.classes().data());
+}
+
+/// Turns class codes into positions in the book while counting them; what the book does not know goes to the fallback class.
+class Reading {
+public:
+    Reading(const Study& study, const CoverBook& book, const Elevations& elevations)
+        : book_(book), elevations_(elevations) {
+        for (const CoverClass& known : book.classes()) positions_[known.code] = *position_of(book, known.code);
+        if (!study.surface.fallback_class) return;
+        fallback_ = position_of(book, *study.surface.fallback_class);
+        if (!fallback_) {
+            throw input_error("fallback_class = " + std::to_string(*study.surface.fallback_class) +
+                              " is not in the cover book '" + book.name() + "'; name one of its classes");
+        }
+    }
+
+    std::uint8_t position(Cell cell, std::int32_t code) {
+        if (std::isnan(elevations_[cell])) return 0;
+        // Cover comes in patches: most cells have the class of the cell before.
+        if (code != last_code_ || last_count_ == nullptr) {
+            last_code_ = code;
+            last_count_ = &counts_[code];
+            const auto known = positions_.find(code);
+            last_position_ = known != positions_.end() ? known->second : fallback_.value_or(0);
+        }
+        ++*last_count_;
+        return last_position_;
+    }
+
+    /// What the book does not know, in words, "250 (3 cells), none (12 cells)"; empty where it knows all.
+    [[nodiscard]] std::string unknown() const {
+        std::string list;
+        for (const auto& [code, cells] : counts_) {
+            if (positions_.contains(code)) continue;
+            const std::string name = code == no_class ? "no cover at all" : "class " + std::to_string(code);
+            list += (list.empty() ? "" : ", ") + name + " (" + std::to_string(cells) + " cells)";
+        }
+        return list;
+    }
+
+    [[nodiscard]] std::vector<ClassCount> known_classes() const {
+        std::vector<ClassCount> classes;
+        for (const auto& [code, cells] : counts_) {
+            if (positions_.contains(code)) classes.push_back({code, cells});
+        }
+        return classes;
+    }
+
+    [[nodiscard]] bool has_fallback() const { return fallback_.has_value(); }
+
+private:
+    const CoverBook& book_;
+    const Elevations& elevations_;
+    std::map<std::int32_t, std::uint8_t> positions_;
+    std::map<std::int32_t, std::int64_t> counts_;
+    std::optional<std::uint8_t> fallback_;
+    std::int32_t last_code_ = 0;
+    std::int64_t* last_count_ = nullptr;
+    std::uint8_t last_position_ = 0;
+};
+
+Raster<std::uint8_t> read_positions(BlockSource<std::int32_t>& source, Reading& reading, const Progress& progress) {
+    const Grid& grid = source.grid();
+    Raster<std::uint8_t> positions(grid.rows, grid.columns);
+    std::vector<std::int32_t> codes;
+    for (std::int64_t row = 0; row < grid.rows; row += strip_rows) {
+        const Window window{.row = row, .rows = std::min(strip_rows, grid.rows - row), .columns = grid.columns};
+        codes.resize(static_cast<std::size_t>(window.size()));
+        source.read(window, codes);
+        const auto first = static_cast<Cell>(row * grid.columns);
+        for (std::size_t i = 0; i < codes.size(); ++i) {
+            const Cell cell = first + static_cast<Cell>(i);
+            positions[cell] = reading.position(cell, codes[i]);
+        }
+        progress.tell({.stage = "reading land cover", .done = row * grid.columns, .total = grid.size()});
+    }
+    progress.tell({.stage = "reading land cover", .done = grid.size(), .total = grid.size(), .finished = true});
+    return positions;
+}
+
+/// Unknown classes are an error unless the study has named what to take for them; then they are told.
+Notices unknown_notices(const Study& study, const Reading& reading) {
+    const std::string unknown = reading.unknown();
+    if (unknown.empty()) return {};
+    if (!reading.has_fallback()) {
+        throw input_error("the land cover '" + study.surface.cover + "' has what the book '" + study.surface.book +
+                          "' does not know: " + unknown + "; add the classes to the book, or name a class for them: " +
+                          "fallback_class = CODE under [surface]");
+    }
+    return {{.code = "cover-unknown", .text = "the fallback class " + std::to_string(*study.surface.fallback_class) +
+                                              " was taken for what the book does not know: " + unknown}};
+}
+
+}  // namespace
+
+CoverBook read_book(const Study& study) {
+    if (is_built_in_book(study.surface.book)) return built_in_book(study.surface.book);
+    const std::string file = located(study, study.surface.book);
+    return parse_cover_book(read_text(file), study.surface.book);
+}
+
+SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress) {
+    CoverBook book = read_book(study);
+    if (book.classes().size() > most_classes) {
+        throw input_error("the cover book '" + book.name() + "' has " + std::to_string(book.classes().size()) +
+                          " classes, more than the 255 that are served; leave out those the raster does not use");
+    }
+    CoverOptions options;
+    options.band = study.surface.band;
+    CoverFile file = open_cover(located(study, study.surface.cover), options, terrain.grid, terrain.system);
+    Reading reading(study, book, terrain.elevations);
+
+    SurfaceData data{.book = book, .table = {}, .classes = {}, .notices = file.notices};
+    data.table.index = read_positions(*file.source, reading, progress);
+    for (const CoverClass& cover : book.classes()) data.table.classes.push_back(hydraulics_of(cover, study.timing.shallow));
+    data.classes = reading.known_classes();
+    const Notices unknown = unknown_notices(study, reading);
+    data.notices.insert(data.notices.end(), unknown.begin(), unknown.end());
+    return data;
+}
+
+}  // namespace rillclock

@@ -1,0 +1,70 @@
+#include <algorithm>
+#include <cmath>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/core/number_text.hpp"
+#include "rillclock/io/ground_of.hpp"
+#include "rillclock/terrain/relief.hpp"
+#include "study_data.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr std::int64_t strip_rows = 512;
+/// No ground is as steep between neighbouring cells.
+constexpr double impossible_slope = 20.0;
+
+Elevations read_all(BlockSource<double>& source, const Progress& progress) {
+    const Grid& grid = source.grid();
+    Elevations z(grid.rows, grid.columns);
+    for (std::int64_t row = 0; row < grid.rows; row += strip_rows) {
+        const Window window{.row = row, .rows = std::min(strip_rows, grid.rows - row), .columns = grid.columns};
+        source.read(window, z.values().subspan(static_cast<std::size_t>(row * grid.columns), static_cast<std::size_t>(window.size())));
+        progress.tell({.stage = "reading elevations", .done = row * grid.columns, .total = grid.size()});
+    }
+    progress.tell({.stage = "reading elevations", .done = grid.size(), .total = grid.size(), .finished = true});
+    return z;
+}
+
+Notices relief_notices(const TerrainData& terrain) {
+    const SteepestPair pair = steepest_pair(terrain.elevations, terrain.ground, terrain.format.metres_per_stored_unit());
+    if (!(pair.slope > impossible_slope)) return {};
+    const RowColumn at = terrain.grid.row_column(pair.cell);
+    return {{.code = "relief-cannot-be",
+             .text = "the ground falls " + significant(pair.slope, 3) + " times as far as it runs at row " + std::to_string(at.row) +
+                     ", column " + std::to_string(at.column) + "; check the vertical unit first (elevations are taken to be in " +
+                     terrain.format.unit.name + "), then look for spikes in the data",
+             .value = pair.slope, .threshold = impossible_slope, .place = terrain.grid.centre(pair.cell)}};
+}
+
+}  // namespace
+
+ElevationFile open_elevation_of(const Study& study) {
+    ElevationOptions options;
+    options.band = study.terrain.band;
+    if (study.terrain.elevation_unit) options.unit = length_unit_of(in_metres(*study.terrain.elevation_unit), "").name;
+    return open_elevation(located(study, study.terrain.elevation), options);
+}
+
+TerrainData read_terrain(const Study& study, const Progress& progress) {
+    ElevationFile file = open_elevation_of(study);
+    TerrainData data{.grid = file.grid(), .system = file.system, .format = file.format,
+                     .ground = ground_of(file.grid(), file.system), .elevations = {}, .notices = file.notices};
+    data.elevations = read_all(*file.source, progress);
+    const auto values = data.elevations.values();
+    data.void_cells = std::count_if(values.begin(), values.end(), [](double z) { return std::isnan(z); });
+    if (data.void_cells == data.grid.size()) {
+        throw input_error("the elevations in '" + study.terrain.elevation + "' hold no data: every cell is void; check the file's " +
+                          "nodata value, for instance with gdalinfo -stats");
+    }
+    for (Notices more : {file.source->notices(), relief_notices(data)}) {
+        data.notices.insert(data.notices.end(), more.begin(), more.end());
+    }
+    return data;
+}
+
+DataFacts facts_of(const ElevationFormat& format, const Ground& ground) {
+    return {.cell_side = ground.cell_side(), .vertical_quantum = metres(format.quantum_m())};
+}
+
+}  // namespace rillclock

@@ -1,0 +1,52 @@
+#include "rillclock/run/reference_text.hpp"
+
+#include "rillclock/deliver/cautions.hpp"
+#include "rillclock/deliver/version.hpp"
+#include "rillclock/hydraulics/methods.hpp"
+#include "rillclock/io/library_versions.hpp"
+#include "rillclock/study/study_keys.hpp"
+
+namespace rillclock {
+namespace {
+
+std::string method_text(const Method& method) {
+    std::string text = std::string(method.id) + ": " + std::string(method.name) + "\n";
+    text += "    formula  " + std::string(method.formula) + "\n";
+    for (const MethodInput& input : method.inputs) {
+        text += "    input    " + std::string(input.symbol) + ": " + std::string(input.meaning);
+        text += input.unit.empty() ? "\n" : " [" + std::string(input.unit) + "]\n";
+    }
+    text += "    range    " + std::string(method.range) + "\n";
+    return text + "    source   " + std::string(method.source) + " (" + std::string(words(method.trust)) + ")\n";
+}
+
+}  // namespace
+
+std::string version_line() {
+    return "rillclock " + std::string(version_text) + ", GDAL " + gdal_version() + ", PROJ " + proj_version();
+}
+
+std::string methods_text() {
+    std::string text;
+    for (const Method& method : methods()) text += (text.empty() ? "" : "\n") + method_text(method);
+    return text;
+}
+
+std::string keys_text() {
+    std::string text;
+    std::string section;
+    for (const StudyKey& key : study_keys()) {
+        const std::size_t dot = key.key.find('.');
+        const std::string own = dot == std::string_view::npos ? "" : std::string(key.key.substr(0, dot));
+        if (own != section) text += "\n[" + own + "]\n";
+        section = own;
+        const auto name = dot == std::string_view::npos ? key.key : key.key.substr(dot + 1);
+        text += "# " + std::string(key.help) + " (default: " + std::string(key.standard) + ")\n";
+        text += std::string(name) + " = " + std::string(key.form) + "\n";
+    }
+    return text;
+}
+
+std::vector<std::string> caution_lines() { return {cautions.begin(), cautions.end()}; }
+
+}  // namespace rillclock

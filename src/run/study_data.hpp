@@ -1,0 +1,64 @@
+#pragma once
+
+#include <string_view>
+
+#include "rillclock/catchment/design_points.hpp"
+#include "rillclock/catchment/outlet.hpp"
+#include "rillclock/core/progress.hpp"
+#include "rillclock/deliver/study_result.hpp"
+#include "rillclock/io/elevation_file.hpp"
+#include "rillclock/raster/ground.hpp"
+#include "rillclock/study/study.hpp"
+#include "rillclock/surface/cover_book.hpp"
+#include "rillclock/travel/surface_table.hpp"
+#include "rillclock/travel/travel_rules.hpp"
+
+namespace rillclock {
+
+/// The elevations of a study, read.
+struct TerrainData {
+    Grid grid;
+    ReferenceSystem system;
+    ElevationFormat format;
+    Ground ground;
+    Elevations elevations;
+    std::int64_t void_cells = 0;
+    Notices notices;
+};
+
+/// The land cover of a study, on the grid of its elevations.
+struct SurfaceData {
+    CoverBook book;
+    SurfaceTable table;
+    std::vector<ClassCount> classes;
+    Notices notices;
+};
+
+/// Opens what a study says of its elevations; nothing is read but the header.
+[[nodiscard]] ElevationFile open_elevation_of(const Study& study);
+[[nodiscard]] TerrainData read_terrain(const Study& study, const Progress& progress);
+[[nodiscard]] CoverBook read_book(const Study& study);
+[[nodiscard]] SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress);
+/// Points of the study's file in the DEM's coordinates, and what was left out of it.
+struct StatedPoints {
+    std::vector<StatedPoint> points;
+    Notices notices;
+};
+[[nodiscard]] StatedPoints read_stated_points(const Study& study, const ReferenceSystem& system);
+[[nodiscard]] PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const PointGround& on,
+                                         const ReferenceSystem& system);
+[[nodiscard]] DataFacts facts_of(const ElevationFormat& format, const Ground& ground);
+[[nodiscard]] TravelRules rules_of(const Study& study, const ResolvedStudy& resolved);
+[[nodiscard]] OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved);
+[[nodiscard]] std::vector<InputFile> input_files(const Study& study);
+
+/// Tells the caller that a stage begins, does it, tells that it is over, and hands its result on.
+template <class Work>
+auto stage(const Progress& progress, std::string_view name, std::int64_t cells, Work work) {
+    progress.tell({.stage = name, .total = cells});
+    auto result = work();
+    progress.tell({.stage = name, .done = cells, .total = cells, .finished = true});
+    return result;
+}
+
+}  // namespace rillclock

@@ -1,0 +1,74 @@
+#include <algorithm>
+#include <filesystem>
+#include <limits>
+
+#include "rillclock/io/point_file.hpp"
+#include "rillclock/io/text_file.hpp"
+#include "study_data.hpp"
+
+namespace rillclock {
+
+StatedPoints read_stated_points(const Study& study, const ReferenceSystem& system) {
+    PointOptions options;
+    options.layer = study.points.layer;
+    options.name_field = study.points.name;
+    const PointFile file = read_points(located(study, *study.points.file), options, system);
+    StatedPoints stated{.points = {}, .notices = file.notices};
+    for (const NamedPlace& point : file.points) stated.points.push_back({point.name, point.place});
+    return stated;
+}
+
+PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const PointGround& on,
+                           const ReferenceSystem& system) {
+    if (!study.points.file) return find_points(on, resolved.auto_area);
+    const StatedPoints stated = read_stated_points(study, system);
+    PlacedPoints placed = place_points(stated.points, on, resolved.move_within);
+    placed.notices.insert(placed.notices.begin(), stated.notices.begin(), stated.notices.end());
+    return placed;
+}
+
+TravelRules rules_of(const Study& study, const ResolvedStudy& resolved) {
+    TravelRules rules;
+    rules.slope = {.window = resolved.slope_window,
+                   .vertical_step = resolved.vertical_step,
+                   .overland_floor = study.timing.slope_floor_overland,
+                   .channel_floor = study.timing.slope_floor_channel};
+    rules.sheet.formula = nrcs_sheet_formula();
+    rules.sheet.storm_factor = nrcs_storm_factor(*study.rain.two_year_24_hour);
+    rules.sheet.limit = study.timing.sheet_limit;
+    if (study.timing.sheet_limit_rule == SheetLimitRule::stated) {
+        rules.sheet.index_limit = metres(std::numeric_limits<double>::infinity());
+    }
+    rules.channel = {.n = resolved.channel_n,
+                     .hydraulic_radius = resolved.hydraulic_radius,
+                     .width = resolved.channel_width,
+                     .depth = resolved.channel_depth,
+                     .from_area = study.timing.channel_from};
+    rules.pond = {.depth = resolved.pond_depth, .speed = study.terrain.pond_speed};
+    return rules;
+}
+
+OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved) {
+    // Unless the study says otherwise a segment is no shorter than a fiftieth of its path, so that a sheet has tens of rows.
+    const double share = study.timing.shortest_segment ? 0.0 : 0.02;
+    return {.ignore_tail = study.timing.ignore_tail,
+            .segments = {.shortest = resolved.shortest_segment, .shortest_share = share,
+                         .storm_factor = nrcs_storm_factor(*study.rain.two_year_24_hour)}};
+}
+
+std::vector<InputFile> input_files(const Study& study) {
+    std::vector<InputFile> files;
+    const auto add = [&](const char* role, const std::string& name) {
+        const std::string path = located(study, name);
+        // What is no plain file (an archive's member, a sub-dataset) has no checksum of its own.
+        const bool plain = std::filesystem::is_regular_file(path);
+        files.push_back({role, name, plain ? file_checksum(path) : std::string()});
+    };
+    add("elevation", study.terrain.elevation);
+    add("cover", study.surface.cover);
+    if (!is_built_in_book(study.surface.book)) add("book", study.surface.book);
+    if (study.points.file) add("points", *study.points.file);
+    return files;
+}
+
+}  // namespace rillclock
