@@ -71,7 +71,33 @@ private:
             x[i] = ax[0] + t * (ax[2] - ax[0]);
             y[i] = ay[0] + t * (ay[2] - ay[0]);
         }
+        settle_at_edges(row, from, x, y);
     }
+
+    /// Places so near an edge between cover cells that the interpolation may have put them on the wrong side are transformed exactly:
+    /// the class of every cell is then the exact one.
+    void settle_at_edges(std::int64_t row, std::int64_t from, std::span<double> x, std::span<double> y) {
+        std::vector<std::size_t> doubtful;
+        std::vector<double> px;
+        std::vector<double> py;
+        for (std::size_t i = 0; i < x.size(); ++i) {
+            if (!is_near_edge((x[i] - cover_.left) / cover_.cell_width) &&
+                !is_near_edge((cover_.top - y[i]) / cover_.cell_height))
+                continue;
+            const Place centre = target_.centre(RowColumn{row, from + static_cast<std::int64_t>(i)});
+            doubtful.push_back(i);
+            px.push_back(centre.x);
+            py.push_back(centre.y);
+        }
+        if (doubtful.empty()) return;
+        transformation_->transform(px, py);
+        for (std::size_t j = 0; j < doubtful.size(); ++j) {
+            x[doubtful[j]] = px[j];
+            y[doubtful[j]] = py[j];
+        }
+    }
+
+    static bool is_near_edge(double position) { return std::abs(position - std::round(position)) < 0.02; }
 
     Grid target_;
     Grid cover_;

@@ -66,6 +66,7 @@ class Raster:
         self.file = gdal.Open(str(path))
         source = self.file.GetRasterBand(band)
         self.values = source.ReadAsArray()
+        source.GetMetadata()  # GDAL looks for names beside the file only once it was asked for this
         self.categories = source.GetCategoryNames() or []
         self.unit = source.GetUnitType()
         self.is_whole = np.issubdtype(self.values.dtype, np.integer)
