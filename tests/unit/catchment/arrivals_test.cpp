@@ -1,0 +1,138 @@
+#include "rillclock/catchment/arrivals.hpp"
+
+#include <catch2/catch.hpp>
+
+#include <algorithm>
+#include <random>
+
+#include "rillclock/core/error.hpp"
+
+namespace rillclock {
+namespace {
+
+Head head(Cell cell, double fixed_s, double storm_s = 0.0) {
+    return {.cell = cell, .time = {.fixed = to_fixed(fixed_s), .storm = to_fixed(storm_s)}};
+}
+
+std::vector<Cell> cells_of(const Front& front) {
+    std::vector<Cell> cells;
+    for (const Head& kept : front.heads()) cells.push_back(kept.cell);
+    std::sort(cells.begin(), cells.end());
+    return cells;
+}
+
+TEST_CASE("of two cells that arrive together the smaller index counts as the later") {
+    CHECK(arrives_later(head(3, 10), head(7, 10), 1.0));
+    CHECK_FALSE(arrives_later(head(7, 10), head(3, 10), 1.0));
+    CHECK(arrives_later(head(7, 11), head(3, 10), 1.0));
+}
+
+TEST_CASE("which of two cells arrives later can depend on the storm") {
+    const Head overland = head(1, 0, 10);
+    const Head channel = head(2, 8, 0);
+    CHECK(arrives_later(overland, channel, 1.0));
+    CHECK(arrives_later(channel, overland, 0.5));
+}
+
+TEST_CASE("the front drops what another cell exceeds in both parts, in whichever order they come") {
+    Front front;
+    for (const Head& h : {head(1, 5, 5), head(2, 4, 5), head(3, 6, 5), head(4, 1, 9), head(5, 0, 9)}) front.add(h);
+    CHECK(cells_of(front) == std::vector<Cell>{3, 4});
+}
+
+TEST_CASE("of cells with one time the front keeps the smallest index") {
+    Front front;
+    for (const Cell cell : {9U, 4U, 6U}) front.add(head(cell, 5, 5));
+    CHECK(cells_of(front) == std::vector<Cell>{4});
+}
+
+TEST_CASE("fronts put together are the front of all") {
+    Front a;
+    a.add(head(1, 9, 1));
+    a.add(head(2, 1, 9));
+    Front b;
+    b.add(head(3, 5, 5));
+    b.add(head(4, 1, 10));
+    a.add(b);
+    CHECK(cells_of(a) == std::vector<Cell>{1, 3, 4});
+}
+
+TEST_CASE("under any storm the front's last arrival is that of all cells") {
+    for (unsigned seed = 0; seed < 40; ++seed) {
+        std::mt19937 random(seed);
+        std::uniform_real_distribution<double> part(0, 1000);
+        std::vector<Head> all;
+        Front front;
+        for (Cell cell = 0; cell < 300; ++cell) {
+            all.push_back(head(cell, part(random), part(random)));
+            front.add(all.back());
+        }
+        INFO("seed " << seed);
+        REQUIRE(front.heads().size() < 60);
+        for (int storm = 0; storm < 50; ++storm) {
+            const double s = 10.0 * part(random) / 1000.0;
+            const Head last = *std::max_element(all.begin(), all.end(),
+                                                [&](const Head& a, const Head& b) { return arrives_later(b, a, s); });
+            REQUIRE(front.last_to_arrive(s).cell == last.cell);
+        }
+    }
+}
+
+TEST_CASE("a front without cells has no last arrival") {
+    CHECK_THROWS_AS(Front().last_to_arrive(1.0), Error);
+}
+
+/// Four cells of 1 m² that arrive at 0.2, 0.7, 1.5 and 2.5 s.
+ArrivalBins four_cells() {
+    ArrivalBins bins;
+    bins.add(head(1, 0.7), to_fixed_area(1), 1.0);
+    bins.add(head(2, 0.2), to_fixed_area(1), 1.0);
+    bins.add(head(3, 2.5), to_fixed_area(1), 1.0);
+    bins.add(head(4, 1.5), to_fixed_area(1), 1.0);
+    return bins;
+}
+
+TEST_CASE("a share of the area has arrived with the last cell of the second in which it is reached") {
+    const ArrivalBins bins = four_cells();
+    CHECK(bins.by_share(0.25).cell == 1);  // at 0.7 s: the first second holds two cells
+    CHECK(bins.by_share(0.5).cell == 1);
+    CHECK(bins.by_share(0.51).cell == 4);
+    CHECK(bins.by_share(0.75).cell == 4);
+    CHECK(bins.by_share(1.0).cell == 3);
+}
+
+TEST_CASE("a tail that may be left out is left out whole or not at all") {
+    const ArrivalBins bins = four_cells();
+    CHECK(bins.last_without(0.0).cell == 3);
+    CHECK(bins.last_without(0.24).cell == 3);
+    CHECK(bins.last_without(0.25).cell == 4);
+    CHECK(bins.last_without(0.5).cell == 1);
+}
+
+TEST_CASE("leaving everything out still leaves the earliest second") {
+    CHECK(four_cells().last_without(1.0).cell == 1);
+}
+
+TEST_CASE("bins put together are the bins of all cells, whichever takes the other") {
+    for (const bool small_takes_large : {true, false}) {
+        ArrivalBins large = four_cells();
+        ArrivalBins small;
+        small.add(head(5, 2.9), to_fixed_area(4), 1.0);
+        ArrivalBins& into = small_takes_large ? small : large;
+        into.take(std::move(small_takes_large ? large : small), 1.0);
+        CHECK(into.area() == to_fixed_area(8));
+        CHECK(into.by_share(0.5).cell == 5);
+        CHECK(into.by_share(0.375).cell == 4);
+    }
+}
+
+TEST_CASE("cells are put in bins by their time under the storm") {
+    ArrivalBins bins;
+    bins.add(head(1, 0, 10), to_fixed_area(1), 0.5);
+    bins.add(head(2, 6, 0), to_fixed_area(1), 0.5);
+    CHECK(bins.by_share(0.5).cell == 1);
+    CHECK(bins.by_share(1.0).cell == 2);
+}
+
+}  // namespace
+}  // namespace rillclock
