@@ -89,8 +89,7 @@ private:
         made.last_piece = end - 1;
         made.area_from = pieces_[first].area;
         made.area_to = pieces_[end - 1].area;
-        made.fall_m = level_m(pieces_[first].position, pieces_[first].share_from) -
-                      level_m(pieces_[end - 1].position, pieces_[end - 1].share_to);
+        made.fall_m = fall_m(pieces_[first], pieces_[end - 1]);
         Sums sums;
         for (std::size_t i = first; i < end; ++i) count(pieces_[i], sums, made);
         set_equivalents(sums, surface(made).sheet_n, made);
@@ -102,11 +101,16 @@ private:
         return in_.surface.classes[pieces_[made.first_piece].surface];
     }
 
-    /// Spill elevation at a share of the step out of a cell of the path.
-    [[nodiscard]] double level_m(std::size_t position, double share) const {
-        const double here = field_.spill[path_[position]];
-        const double below = field_.spill[path_[position + 1]];
-        return (here + share * (below - here)) * in_.metres_per_elevation_unit;
+    /// Of spill elevation, from the beginning of one piece to the end of another. Made of differences alone, so that a constant
+    /// added to the elevations changes no bit of it.
+    [[nodiscard]] double fall_m(const PathPiece& from, const PathPiece& to) const {
+        const double between_cells = field_.spill[path_[from.position]] - field_.spill[path_[to.position]];
+        const double fall = between_cells - from.share_from * step_fall(from.position) + to.share_to * step_fall(to.position);
+        return fall * in_.metres_per_elevation_unit;
+    }
+
+    [[nodiscard]] double step_fall(std::size_t position) const {
+        return field_.spill[path_[position]] - field_.spill[path_[position + 1]];
     }
 
     [[nodiscard]] double end_to_end_seconds(const Segment& made, double storm_factor) const {

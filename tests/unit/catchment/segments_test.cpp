@@ -253,5 +253,20 @@ TEST_CASE("a path of one cell has no segments") {
     CHECK(Worked(row_of(runs({{4, 0.4}}), shallow_rules())).segments({4}).empty());
 }
 
+TEST_CASE("an added constant changes no bit of the fall of a segment") {
+    // Sheet flow ends within a step, where a level between two cells has to be found.
+    TravelRules rules = shallow_rules();
+    rules.sheet.limit = metres(3.1);
+    std::vector<double> levels = runs({{8, 0.375}});
+    const auto low = whole_row(Worked(row_of(levels, rules)));
+    for (double& level : levels) level += 4096;
+    const auto high = whole_row(Worked(row_of(levels, rules)));
+    REQUIRE(low.size() == high.size());
+    for (std::size_t i = 0; i < low.size(); ++i) {
+        CHECK(low[i].fall_m == high[i].fall_m);
+        CHECK(low[i].end_to_end_s == high[i].end_to_end_s);
+    }
+}
+
 }  // namespace
 }  // namespace rillclock
