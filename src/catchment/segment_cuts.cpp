@@ -56,10 +56,11 @@ struct Run {
     double length_m;
 };
 
-/// Stretches of one slope class among the pieces [first, last).
+/// Stretches of one slope class among the pieces [first, last). Ponded pieces belong to the stretch they lie in: no slope times them.
 std::vector<Run> slope_runs(std::span<const PathPiece> pieces, std::size_t first, std::size_t last) {
     std::vector<Run> runs;
     for (std::size_t i = first; i < last; ++i) {
+        if (pieces[i].part.ponded) continue;
         if (runs.empty() || slope_class(pieces[i]) != runs.back().slope_class) {
             runs.push_back({i, slope_class(pieces[i]), 0.0});
         }

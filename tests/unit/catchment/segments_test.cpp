@@ -183,6 +183,21 @@ std::vector<double> hollow(int cells) {
     return levels;
 }
 
+TEST_CASE("ponded cells do not cut a path: their length and time stand apart") {
+    TravelRules rules = shallow_rules();
+    rules.pond.depth = metres(0.3);
+    for (const int cells : {3, 20}) {
+        const Worked w(row_of(hollow(cells), rules));
+        const auto segments = whole_row(w);
+        INFO(cells << " ponded cells");
+        REQUIRE(segments.size() == 1);
+        CHECK(segments[0].pond_length_m == 10.0 * cells);
+        // √(g·3) is 5.4 m/s, and the cap 2 m/s.
+        CHECK(from_fixed(segments[0].pond_time.fixed) == rounded(10.0 * cells / 2.0));
+        CHECK(segments[0].length_m == 10.0 * static_cast<double>(w.grid.columns - 1 - cells));
+    }
+}
+
 TEST_CASE("the slopes of a segment are those of the ground that is not ponded") {
     TravelRules rules = shallow_rules();
     rules.pond.depth = metres(0.3);
