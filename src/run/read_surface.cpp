@@ -92,6 +92,7 @@ Raster<std::uint8_t> read_positions(BlockSource<std::int32_t>& source, Reading& 
     Raster<std::uint8_t> positions(grid.rows, grid.columns);
     std::vector<std::int32_t> codes;
     for (std::int64_t row = 0; row < grid.rows; row += strip_rows) {
+        progress.tell({.stage = "reading land cover", .done = row * grid.columns, .total = grid.size()});
         const Window window{.row = row, .rows = std::min(strip_rows, grid.rows - row), .columns = grid.columns};
         codes.resize(static_cast<std::size_t>(window.size()));
         source.read(window, codes);
@@ -100,7 +101,6 @@ Raster<std::uint8_t> read_positions(BlockSource<std::int32_t>& source, Reading& 
             const Cell cell = first + static_cast<Cell>(i);
             positions[cell] = reading.position(cell, codes[i]);
         }
-        progress.tell({.stage = "reading land cover", .done = row * grid.columns, .total = grid.size()});
     }
     progress.tell({.stage = "reading land cover", .done = grid.size(), .total = grid.size(), .finished = true});
     return positions;
@@ -113,7 +113,7 @@ Notices unknown_notices(const Study& study, const Reading& reading) {
     if (!reading.has_fallback()) {
         throw input_error("the land cover '" + study.surface.cover + "' has what the book '" + study.surface.book +
                           "' does not know: " + unknown + "; add the classes to the book, or name a class for them: " +
-                          "fallback_class = CODE under [surface]");
+                          "fallback_class = CODE under [surface], or --fallback-class CODE");
     }
     return {{.code = "cover-unknown", .text = "the fallback class " + std::to_string(*study.surface.fallback_class) +
                                               " was taken for what the book does not know: " + unknown}};

@@ -18,9 +18,9 @@ Elevations read_all(BlockSource<double>& source, const Progress& progress) {
     const Grid& grid = source.grid();
     Elevations z(grid.rows, grid.columns);
     for (std::int64_t row = 0; row < grid.rows; row += strip_rows) {
+        progress.tell({.stage = "reading elevations", .done = row * grid.columns, .total = grid.size()});
         const Window window{.row = row, .rows = std::min(strip_rows, grid.rows - row), .columns = grid.columns};
         source.read(window, z.values().subspan(static_cast<std::size_t>(row * grid.columns), static_cast<std::size_t>(window.size())));
-        progress.tell({.stage = "reading elevations", .done = row * grid.columns, .total = grid.size()});
     }
     progress.tell({.stage = "reading elevations", .done = grid.size(), .total = grid.size(), .finished = true});
     return z;

@@ -2,6 +2,8 @@
 
 #include <algorithm>
 #include <array>
+#include <charconv>
+#include <cstdint>
 #include <filesystem>
 #include <string_view>
 
@@ -25,13 +27,22 @@ std::string as_study_path(const Study& study, const std::string& value) {
     return std::filesystem::absolute(value).lexically_proximate(folder).string();
 }
 
+/// Words on a command line are texts; a key that is a number in a study file is made one where it can be.
+StudyValue typed(const std::string& key, const std::string& text, const std::string& option) {
+    std::int64_t number = 0;
+    const auto [end, failed] = std::from_chars(text.data(), text.data() + text.size(), number);
+    const bool is_number = key == "surface.fallback_class" && failed == std::errc{} && end == text.data() + text.size();
+    if (is_number) return {.value = number, .subject = option};
+    return {.value = text, .subject = option};
+}
+
 }  // namespace
 
 Study read_study_file(const std::string& path) { return read_study(read_text(path), path); }
 
 void state_in_study(Study& study, const std::string& key, const std::string& value, const std::string& option) {
     const bool moved = !study.file.empty() && names_a_file(key, value) && located(Study{}, value) == value && !value.empty();
-    set_study_value(study, key, {.value = moved ? as_study_path(study, value) : value, .subject = option});
+    set_study_value(study, key, typed(key, moved ? as_study_path(study, value) : value, option));
 }
 
 }  // namespace rillclock
