@@ -1,0 +1,103 @@
+#include "rillclock/tiles/executor.hpp"
+
+#include <oneapi/tbb/parallel_for.h>
+#include <oneapi/tbb/task_arena.h>
+#include <sched.h>
+
+#include <algorithm>
+#include <atomic>
+#include <cmath>
+#include <exception>
+#include <fstream>
+#include <limits>
+#include <mutex>
+#include <string>
+#include <thread>
+#include <vector>
+
+namespace rillclock {
+namespace {
+
+/// Keeps the exception of the smallest item that threw.
+class FirstFailure {
+public:
+    template <class Work>
+    void guard(std::size_t item, const Work& work) {
+        if (failed_.load(std::memory_order_relaxed)) return;
+        try {
+            work(item);
+        } catch (...) {
+            const std::lock_guard lock(mutex_);
+            if (item < item_) {
+                item_ = item;
+                what_ = std::current_exception();
+            }
+            failed_.store(true, std::memory_order_relaxed);
+        }
+    }
+    void throw_on() const {
+        if (what_) std::rethrow_exception(what_);
+    }
+
+private:
+    std::mutex mutex_;
+    std::atomic<bool> failed_ = false;
+    std::size_t item_ = std::numeric_limits<std::size_t>::max();
+    std::exception_ptr what_;
+};
+
+/// Quota of the container in processors, by the second version of control groups; infinite where there is none.
+double container_quota() {
+    std::ifstream file("/sys/fs/cgroup/cpu.max");
+    std::string quota;
+    double period = 0.0;
+    if (!(file >> quota >> period) || quota == "max" || !(period > 0)) return std::numeric_limits<double>::infinity();
+    return std::stod(quota) / period;
+}
+
+unsigned allowed_processors() {
+    cpu_set_t allowed;
+    CPU_ZERO(&allowed);
+    if (sched_getaffinity(0, sizeof allowed, &allowed) != 0) return std::max(1U, std::thread::hardware_concurrency());
+    return std::max(1U, static_cast<unsigned>(CPU_COUNT(&allowed)));
+}
+
+}  // namespace
+
+struct Executor::Arena {
+    explicit Arena(unsigned threads) : tasks(static_cast<int>(threads)) {}
+    oneapi::tbb::task_arena tasks;
+};
+
+Executor::Executor(unsigned threads, Kind kind)
+    : threads_(threads == 0 ? usable_threads() : threads),
+      arena_(kind == Kind::task_arena && threads_ > 1 ? std::make_unique<Arena>(threads_) : nullptr) {}
+Executor::~Executor() = default;
+Executor::Executor(Executor&&) noexcept = default;
+Executor& Executor::operator=(Executor&&) noexcept = default;
+
+void Executor::for_each(std::size_t count, const std::function<void(std::size_t)>& work) const {
+    FirstFailure failure;
+    if (arena_) {
+        arena_->tasks.execute([&] {
+            oneapi::tbb::parallel_for(std::size_t{0}, count, [&](std::size_t item) { failure.guard(item, work); });
+        });
+    } else {
+        std::atomic<std::size_t> next = 0;
+        const auto take_items = [&] {
+            for (std::size_t item = next++; item < count; item = next++) failure.guard(item, work);
+        };
+        std::vector<std::jthread> others;
+        for (std::size_t i = 1; i < std::min<std::size_t>(threads_, count); ++i) others.emplace_back(take_items);
+        take_items();
+    }
+    failure.throw_on();
+}
+
+unsigned usable_threads() {
+    const double quota = container_quota();
+    const unsigned processors = allowed_processors();
+    return quota < processors ? std::max(1U, static_cast<unsigned>(std::ceil(quota))) : processors;
+}
+
+}  // namespace rillclock
