@@ -8,7 +8,9 @@
 namespace rillclock {
 namespace {
 
+/// Waves over open water and ponded ground have a speed without any slope.
 bool is_on_floor(const PathPiece& piece, const SlopeRules& rules) {
+    if (piece.part.ponded || piece.part.regime == Regime::water) return false;
     const bool overland = piece.part.regime == Regime::sheet || piece.part.regime == Regime::shallow;
     const double floor = std::max(overland ? rules.overland_floor : rules.channel_floor, least_slope);
     // Slopes are kept in single precision; so is the floor where it is one.

@@ -31,7 +31,7 @@ struct PathSummary {
     double fall_m = 0.0;               ///< of spill elevation, head to end
     double slope_length_m = 0.0;       ///< Σ S·d: the fall that the slopes used would make
     double ponded_length_m = 0.0;
-    double floor_length_m = 0.0;       ///< where the slope is the floor
+    double floor_length_m = 0.0;       ///< where the time hangs on the slope floor: not on open water, nor where ponded
 
     /// Σ S·d over the real fall; 1 on a plane. NaN where there is no fall.
     [[nodiscard]] double fall_ratio() const;

@@ -90,6 +90,26 @@ TEST_CASE("the share of a path on the slope floor is by length") {
     CHECK(summary.share_of_length(summary.floor_length_m) == Approx(0.25));
 }
 
+TEST_CASE("where ponded ground or open water carries the water no part of a path hangs on the slope floor") {
+    // 30 cells level behind a pass, then 0.5 m a cell; the level cells are under the floor of 0.01 but for the last.
+    std::vector<double> levels(30, 6.0);
+    for (int i = 0; i <= 20; ++i) levels.push_back(10.0 - 0.5 * i);
+    TravelRules rules;
+    rules.sheet.limit = metres(0);
+    rules.channel.from_area.reset();
+    rules.slope.overland_floor = rules.slope.channel_floor = 0.01;
+    const auto floor_m = [&](const worked::Given& given) {
+        return Worked(given).summary(cells_from_to(0, 50)).floor_length_m;
+    };
+    worked::Given given = row_of(worked::strip(levels), rules);
+    CHECK(floor_m(given) == 0.0);  // ponded 4 m deep
+    given.rules.pond.depth = metres(5);
+    CHECK(floor_m(given) == 290.0);
+    for (std::int64_t column = 0; column < 30; ++column) given.surface.index(0, column) = 1;
+    given.surface.classes.push_back({.sheet_n = 0.1, .shallow_k = metres_per_second(5), .water_depth = metres(2)});
+    CHECK(floor_m(given) == 0.0);
+}
+
 TEST_CASE("the share of a path that is ponded is by length") {
     // Cells 2 and 3 lie 4 m under the pass at cell 4.
     TravelRules rules;
