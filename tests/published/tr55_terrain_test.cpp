@@ -118,9 +118,10 @@ TEST_CASE("example 3-1 of TR-55 as terrain holds to the formulas at the lengths 
 }
 
 // Within 20 m of the channel the swale falls less than the default step of 0.2 m; the search for that fall goes on into
-// the channel, which is half as steep, so the end of the swale is taken for gentler than it is: 8 s more. Nothing else
+// the channel, which is half as steep, so the end of the swale is taken for gentler than it is. Nothing else
 // changes.
-TEST_CASE("by the default vertical step of 0.2 m the swale of example 3-1 takes 8 s longer, and no other part does") {
+TEST_CASE(
+    "by the default vertical step of 0.2 m the swale of example 3-1 takes 7 to 9 s longer, and no other part does") {
     struct Observed {
         double cell_m;
         double shallow_h;
