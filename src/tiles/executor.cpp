@@ -1,5 +1,6 @@
 #include "rillclock/tiles/executor.hpp"
 
+#include <oneapi/tbb/global_control.h>
 #include <oneapi/tbb/parallel_for.h>
 #include <oneapi/tbb/task_arena.h>
 #include <sched.h>
@@ -65,7 +66,9 @@ unsigned allowed_processors() {
 }  // namespace
 
 struct Executor::Arena {
-    explicit Arena(unsigned threads) : tasks(static_cast<int>(threads)) {}
+    explicit Arena(unsigned threads)
+        : limit(oneapi::tbb::global_control::max_allowed_parallelism, threads), tasks(static_cast<int>(threads)) {}
+    oneapi::tbb::global_control limit;  // more threads than processors only where they were asked for
     oneapi::tbb::task_arena tasks;
 };
 
