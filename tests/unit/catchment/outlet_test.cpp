@@ -2,6 +2,8 @@
 
 #include <catch2/catch.hpp>
 
+#include <cstdlib>
+
 #include "reference/worked_outlets.hpp"
 
 namespace rillclock {
@@ -77,6 +79,20 @@ TEST_CASE("the governing path and the longest path may have different heads") {
     CHECK(w.outlets.at(0).governing.cells.front() == 0);
     CHECK(w.outlets.at(0).longest.cells.front() == 50);
     CHECK(w.outlets.at(0).longest.seconds < w.outlets.at(0).governing.seconds);
+}
+
+TEST_CASE("of heads as far and as late as one another the smaller index is taken") {
+    Elevations z(1, 5);
+    Raster<FlowCode> codes(1, 5, flow_code(Direction::east));
+    for (std::int64_t i = 0; i < 5; ++i) z(0, i) = static_cast<double>(std::abs(i - 2));
+    codes(0, 3) = codes(0, 4) = flow_code(Direction::west);
+    codes(0, 2) = flow_root;
+    worked::Given given = even_row(5);
+    given.elevations = z;
+    given.codes = codes;
+    const Worked w(std::move(given));
+    CHECK(w.outlets.at(0).governing.cells == std::vector<Cell>{0, 1, 2});
+    CHECK(w.outlets.at(0).longest.cells == std::vector<Cell>{0, 1, 2});
 }
 
 /// A bowl that drains to its south: a border cell of the catchment is one on the edge of the grid.

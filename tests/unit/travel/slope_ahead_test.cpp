@@ -95,7 +95,8 @@ TEST_CASE("the step is reached between two cells where it is") {
 }
 
 TEST_CASE("a fall just as large as the step is believed") {
-    CHECK(slopes({{8, 4, 4, 0}}, seeing(10, 4))[0] == exactly(0.4));
+    // The fall of 4 is reached after 10 m; believed over the window, it is spread over its 15 m.
+    CHECK(slopes({{8, 4, 4, 0}}, seeing(15, 4))[0] == exactly(4.0 / 15.0));
 }
 
 TEST_CASE("the window ends at the root") {

@@ -227,6 +227,9 @@ TEST_CASE("each part of a split step on ponded ground is hastened on its own") {
     const StepParts parts = step_parts(step, rules);
     CHECK(parts.first.ponded);
     CHECK_FALSE(parts.second.ponded);
+    rules.pond.speed = metres_per_second(3);
+    CHECK(step_parts(step, rules).second.ponded);
+    CHECK(fixed_s(step_parts(step, rules).second) == rounded(6 / 3.0));
 }
 
 TEST_CASE("raising the cap on ponded speed raises no step's time") {

@@ -66,6 +66,19 @@ TEST_CASE("where only mapped channels count, no area makes one") {
     CHECK(w.field.kind(0, 59) == GroundKind::overland);
 }
 
+TEST_CASE("open water stays water where its area would make a channel") {
+    TravelRules rules = bare_rules();
+    rules.channel.from_area = square_metres(1);
+    worked::Given given = slope_of(25, rules);
+    given.rules.slope.vertical_step = metres(100);  // no fall makes a river of it
+    given.surface.classes.push_back({.sheet_n = 0.1, .shallow_k = metres_per_second(5), .water_depth = metres(2)});
+    given.surface.index(0, 22) = 1;
+    const Land w(given);
+    CHECK(w.field.regime(0, 21) == Regime::channel);
+    CHECK(w.field.regime(0, 22) == Regime::water);
+    CHECK(w.field.regime(0, 23) == Regime::channel);
+}
+
 TEST_CASE("where branches meet the greater sheet index and distance go on") {
     // A head beside the junction, and a branch of three steps and a diagonal that comes in from below.
     constexpr double nothing = std::numeric_limits<double>::quiet_NaN();
