@@ -1,0 +1,62 @@
+#pragma once
+
+#include <cstdint>
+#include <span>
+#include <vector>
+
+#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/tiles/tile_grid.hpp"
+
+namespace rillclock {
+
+/// Position of a cell within its tile, row by row.
+using Local = std::uint32_t;
+inline constexpr Local leaves_tile = UINT32_MAX;       ///< the cell drains into another tile
+inline constexpr Local ends_here = UINT32_MAX - 1;     ///< the cell is a root, or void
+
+/// Where water comes into a tile: from a cell of another tile to one of its own.
+struct TileEntry {
+    Cell from = no_cell;
+    Local to = 0;
+};
+
+/// The flow within one tile: which cell each drains to, an order from divides to ends, and where water leaves and comes in.
+///
+/// An object is used for one tile after another and keeps its memory. Reads the tile's codes and the ring around it, no more.
+/// Cost: linear in the cells of the tile.
+class TileFlow {
+public:
+    void read(const Raster<FlowCode>& codes, const Window& window);
+
+    [[nodiscard]] Local size() const { return static_cast<Local>(down_.size()); }
+    [[nodiscard]] const Window& window() const { return window_; }
+    /// The cell of the whole raster.
+    [[nodiscard]] Cell cell(Local local) const {
+        const std::int64_t row = local / window_.columns;
+        return static_cast<Cell>((window_.row + row) * raster_columns_ + window_.column + (local - row * window_.columns));
+    }
+    [[nodiscard]] std::int64_t row(Local local) const { return window_.row + local / window_.columns; }
+    [[nodiscard]] Local down(Local local) const { return down_[local]; }
+    [[nodiscard]] FlowCode code(Local local) const { return code_[local]; }
+    /// All cells but voids, each before the one it drains to.
+    [[nodiscard]] std::span<const Local> order() const { return order_; }
+    /// Cells that drain into other tiles, by increasing position.
+    [[nodiscard]] std::span<const Local> exits() const { return exits_; }
+    [[nodiscard]] std::span<const TileEntry> entries() const { return entries_; }
+
+private:
+    void read_steps(const Raster<FlowCode>& codes);
+    void read_entries(const Raster<FlowCode>& codes);
+    void find_order();
+
+    Window window_;
+    std::int64_t raster_columns_ = 0;
+    std::vector<Local> down_;
+    std::vector<FlowCode> code_;
+    std::vector<std::uint8_t> waiting_;
+    std::vector<Local> order_;
+    std::vector<Local> exits_;
+    std::vector<TileEntry> entries_;
+};
+
+}  // namespace rillclock

@@ -1,0 +1,77 @@
+#include "rillclock/forest/tile_sweep.hpp"
+
+#include <catch2/catch.hpp>
+
+#include "reference/drawings.hpp"
+#include "rillclock/terrain/flow_directions.hpp"
+
+namespace rillclock {
+namespace {
+
+struct Desk {
+    TileFlow flow;
+    std::vector<std::int64_t> whole;
+    std::vector<double> real;
+    std::vector<std::uint32_t> label;
+};
+
+/// Weights that differ from cell to cell, the same for the plain sweeps and the tiled ones.
+std::int64_t weight(Cell cell) { return 1 + static_cast<std::int64_t>(cell) * 2654435761 % 97; }
+double level(Cell cell) { return static_cast<double>(weight(cell)); }
+std::uint32_t label(Cell cell) { return weight(cell) > 80 ? cell + 1 : 0; }
+
+/// A tiled sweep with one channel made for each tile by `make(flow)`, gathered into a raster.
+template <class Borders, class Value, class Make>
+Raster<Value> tiled(const TiledForest& forest, const Executor& executor, Make make) {
+    using Channel = decltype(make(std::declval<const TileFlow&>()));
+    Workspaces<Desk> desks;
+    Borders borders(forest);
+    std::vector<std::vector<Value>> room(forest.tiles().count());
+    for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+        borders.collect(tile, desk.flow, make(desk.flow), room[tile]);
+    });
+    borders.template solve<Channel>();
+    Raster<Value> gathered(forest.codes().rows(), forest.codes().columns());
+    for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+        borders.fill(tile, desk.flow, make(desk.flow), room[tile]);
+        for (Local local = 0; local < desk.flow.size(); ++local) gathered[desk.flow.cell(local)] = room[tile][local];
+    });
+    return gathered;
+}
+
+TEST_CASE("tiled sweeps give every cell what the plain sweeps give it, whatever the tiles and threads") {
+    for (unsigned seed = 0; seed < 300; ++seed) {
+        std::mt19937 random(seed);
+        const Elevations z = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, seed % 3 == 0 ? 0.1 : 0.0);
+        const FlowForest plain = flow_forest_of(z, Ground::planar(metres(1), metres(1)));
+        const auto side = std::uniform_int_distribution<std::int64_t>(1, 16)(random);
+        const Executor executor(1 + seed % 2, Executor::Kind::plain_threads);
+        const TiledForest forest(plain.codes(), TileGrid(z.rows(), z.columns(), side), executor);
+        INFO("seed " << seed << ", tiles of " << side);
+
+        const auto [sum, greatest, least] = sweep_down(plain, down::Sum{weight}, down::Max{weight}, down::Min{level});
+        REQUIRE(tiled<DownBorders<std::int64_t>, std::int64_t>(forest, executor, [](const TileFlow& flow) {
+            return down::Sum{[&](Local cell) { return weight(flow.cell(cell)); }};
+        }) == sum);
+        REQUIRE(tiled<DownBorders<std::int64_t>, std::int64_t>(forest, executor, [](const TileFlow& flow) {
+            return down::Max{[&](Local cell) { return weight(flow.cell(cell)); }};
+        }) == greatest.value);
+        REQUIRE(tiled<DownBorders<double>, double>(forest, executor, [](const TileFlow& flow) {
+            return down::Min{[&](Local cell) { return level(flow.cell(cell)); }};
+        }) == least);
+
+        const auto [way, highest, first] = sweep_up(plain, up::Add{weight}, up::Max{level}, up::First{label});
+        REQUIRE(tiled<UpBorders<std::int64_t>, std::int64_t>(forest, executor, [](const TileFlow& flow) {
+            return up::Add{[&](Local cell) { return weight(flow.cell(cell)); }};
+        }) == way);
+        REQUIRE(tiled<UpBorders<double>, double>(forest, executor, [](const TileFlow& flow) {
+            return up::Max{[&](Local cell) { return level(flow.cell(cell)); }};
+        }) == highest);
+        REQUIRE(tiled<UpBorders<std::uint32_t>, std::uint32_t>(forest, executor, [](const TileFlow& flow) {
+            return up::First{[&](Local cell) { return label(flow.cell(cell)); }};
+        }) == first);
+    }
+}
+
+}  // namespace
+}  // namespace rillclock
