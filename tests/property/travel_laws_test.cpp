@@ -195,6 +195,55 @@ TEST_CASE("mirrored, transposed and turned terrain gives the turned answer to th
     }
 }
 
+/// Rows that are each a little wider and taller than the one above, as on a geographic grid towards the equator.
+std::vector<GroundRow> widening_rows(std::int64_t count) {
+    std::vector<GroundRow> rows;
+    for (std::int64_t i = 0; i < count; ++i) {
+        const double wide = 3.0 + 0.02 * static_cast<double>(i);
+        const double tall = 5.0 + 0.003 * static_cast<double>(i);
+        rows.push_back({.east_west = to_fixed(wide),
+                        .south = to_fixed(tall),
+                        .diagonal = to_fixed(std::hypot(wide, tall)),
+                        .area = to_fixed_area(wide * tall)});
+    }
+    return rows;
+}
+
+/// The same ground seen from the other hemisphere: a step south out of a row was the step north into it.
+std::vector<GroundRow> mirrored(const std::vector<GroundRow>& rows) {
+    std::vector<GroundRow> result(rows.rbegin(), rows.rend());
+    for (std::size_t i = 0; i + 1 < rows.size(); ++i) {
+        const GroundRow& above = rows[rows.size() - 2 - i];
+        result[i].south = above.south;
+        result[i].diagonal = above.diagonal;
+    }
+    result.back().south = result[result.size() - 2].south;
+    result.back().diagonal = result[result.size() - 2].diagonal;
+    return result;
+}
+
+TEST_CASE("ground with lengths row by row, mirrored east to west or north to south, gives the mirrored answer") {
+    for (unsigned seed = 0; seed < 12; ++seed) {
+        std::mt19937 random(seed);
+        const std::vector<GroundRow> rows = widening_rows(25);
+        Given given{.elevations = worked::uneven_terrain(random, 25, 19, 9.0), .ground = Ground::by_row(rows)};
+        given.surface = worked::random_surface(random, given.elevations, true);
+        const Land base(given);
+        for (const unsigned way : {1U, 2U}) {
+            INFO("seed " << seed << ", way " << way);
+            Given moved = given;
+            moved.elevations = turned(given.elevations, way);
+            moved.surface.index = turned(given.surface.index, way);
+            if (way == 1U) moved.ground = Ground::by_row(mirrored(rows));
+            const Land land(moved);
+            REQUIRE(land.field.contributing_area == turned(base.field.contributing_area, way));
+            REQUIRE(land.field.flow_distance == turned(base.field.flow_distance, way));
+            REQUIRE(land.field.storm_part == turned(base.field.storm_part, way));
+            REQUIRE(land.field.fixed_part == turned(base.field.fixed_part, way));
+        }
+    }
+}
+
 TEST_CASE("the slope ahead is that of walking down the path cell by cell") {
     for (unsigned seed = 0; seed < 60; ++seed) {
         std::mt19937 random(seed);
