@@ -37,12 +37,23 @@ std::string area_text(const StudyResult& result, FixedArea area) {
 
 std::string governing_sentence(const StudyResult& result, const Outlet& main) {
     const bool same = main.longest.cells.front() == main.governing.cells.front();
-    std::string text = "Water takes " + minutes_text(main.time_of_concentration_s()) + " to '" + main.point.name +
-                       "' from the farthest of " + area_text(result, main.area) + " in time, along " +
+    std::string text = "'" + main.point.name + "' drains " + area_text(result, main.area) + ". Its slowest water arrives after " +
+                       minutes_text(main.time_of_concentration_s()) + ", along " +
                        length_text(result, from_fixed(main.governing.summary.length)) + " of path";
     if (same) return text + "; that is the longest path too.";
     return text + "; the longest path (" + length_text(result, from_fixed(main.longest.summary.length)) + ") takes only " +
            minutes_text(main.longest.seconds) + ".";
+}
+
+std::string_view in_words(Regime regime) {
+    switch (regime) {
+        case Regime::none: return "standing still";
+        case Regime::sheet: return "sheet flow";
+        case Regime::shallow: return "shallow concentrated flow";
+        case Regime::channel: return "channel flow";
+        case Regime::water: return "crossing of open water";
+    }
+    return "";
 }
 
 std::string makeup_sentence(const StudyResult& result, const Outlet& main) {
@@ -52,14 +63,15 @@ std::string makeup_sentence(const StudyResult& result, const Outlet& main) {
     for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
         const double s = in_seconds(by_regime[static_cast<std::size_t>(regime)].under(result.rules.sheet.storm_factor));
         if (!(s > 0)) continue;
-        text += (text.empty() ? "" : ", ") + minutes_text(s) + " as " + std::string(name_of(regime));
+        text += (text.empty() ? "" : ", ") + minutes_text(s) + " " + std::string(in_words(regime));
     }
-    return "Of that time it spends " + text + "; half of the area has arrived after " + minutes_text(main.arrival_s[0]) + ".";
+    const std::string half = "alf of the area has arrived after " + minutes_text(main.arrival_s[0]) + ".";
+    return text.empty() ? "H" + half : "That time is made up of " + text + "; h" + half;
 }
 
 std::string concern_sentence(const StudyResult& result) {
     if (result.notices.empty()) return "Nothing was found that needs a person's eye more than usual.";
-    return "Look first at this: " + result.notices.front().text + ".";
+    return "Check this first. " + result.notices.front().text;
 }
 
 std::string padded(std::string text, std::size_t width, bool right) {
@@ -89,7 +101,7 @@ std::vector<std::string> headlines(const StudyResult& result) {
 
 std::string outlets_overview(const StudyResult& result, std::size_t most) {
     const ReportScale scale(result.study.report_units);
-    std::vector<OverviewRow> rows{{"point", "area " + scale.area_unit(), "time min", "half min", "path " + scale.length_unit()}};
+    std::vector<OverviewRow> rows{{"point", "area " + scale.area_unit(), "time min", "half arrived min", "path " + scale.length_unit()}};
     const std::vector<std::size_t> order = by_area(result);
     for (std::size_t i = 0; i < std::min(most, order.size()); ++i) {
         rows.push_back(overview_row(result, result.outlets[order[i]]));

@@ -3,12 +3,14 @@
 #include <filesystem>
 #include <memory>
 #include <optional>
+#include <utility>
 
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/io/cover_file.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/io/ground_of.hpp"
+#include "sentences.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
@@ -35,6 +37,7 @@ public:
             costs();
         }
         output();
+        report_.notices = in_sentences(std::move(report_.notices));
         return std::move(report_);
     }
 

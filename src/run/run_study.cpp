@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <tuple>
+#include <utility>
 
 #include "rillclock/catchment/outlet_notices.hpp"
 #include "rillclock/deliver/headlines.hpp"
@@ -11,10 +12,14 @@
 #include "rillclock/deliver/tables.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/terrain/flow_directions.hpp"
+#include "sentences.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
 namespace {
+
+/// What puts every figure in doubt comes before what has its own effect.
+bool doubts_all(const Notice& notice) { return notice.code == "relief-cannot-be"; }
 
 /// Everything that was noticed on the way, by effect on the time, the greatest first.
 Notices all_notices(const TerrainData& terrain, const SurfaceData& surface, const PlacedPoints& points,
@@ -28,7 +33,8 @@ Notices all_notices(const TerrainData& terrain, const SurfaceData& surface, cons
     std::stable_sort(all.begin(), all.end(), [](const Notice& a, const Notice& b) {
         return std::tie(b.effect_s, a.code, a.point) < std::tie(a.effect_s, b.code, b.point);
     });
-    return all;
+    std::stable_partition(all.begin(), all.end(), doubts_all);
+    return in_sentences(std::move(all));
 }
 
 void write_result(const StudyResult& result, ResultFolder& folder, const Progress& progress) {
