@@ -1,5 +1,7 @@
+#include <poll.h>
 #include <spdlog/sinks/stdout_sinks.h>
 #include <spdlog/spdlog.h>
+#include <unistd.h>
 
 #include <exception>
 #include <iostream>
@@ -96,10 +98,21 @@ int do_command(const CommandLine& line) {
     return 0;
 }
 
+/// What was printed has to arrive, unless the reader has gone away (as `head` does), which is no fault.
+void finish_printing() {
+    if (std::cout.flush()) return;
+    pollfd out{.fd = STDOUT_FILENO, .events = POLLOUT, .revents = 0};
+    const bool reader_is_gone = poll(&out, 1, 0) == 1 && (out.revents & POLLERR) != 0;
+    if (reader_is_gone) return;
+    throw machine_error("standard output cannot be written; look at the space on the disk it goes to");
+}
+
 int guarded_main(int count, const char* const* words) {
     try {
         const ParsedWords parsed = parse_words(count, words);
-        return parsed.finished ? 0 : do_command(parsed.line);
+        const int status = parsed.finished ? 0 : do_command(parsed.line);
+        finish_printing();
+        return status;
     } catch (const Error& error) {
         spdlog::error("rillclock: {}", error.what());
         return status_of(error.fault());

@@ -1,10 +1,14 @@
 #include "options.hpp"
 
 #include <CLI/CLI.hpp>
+#include <algorithm>
 #include <array>
 #include <iostream>
+#include <string_view>
+#include <vector>
 
 #include "rillclock/core/error.hpp"
+#include "rillclock/core/nearest_word.hpp"
 #include "rillclock/run/reference_text.hpp"
 #include "rillclock/run/study_source.hpp"
 
@@ -67,8 +71,12 @@ public:
     }
 
     ParsedWords parse(int count, const char* const* words) {
+        if (count < 2) throw Error(Fault::command_line, no_command);
+        refuse_unknown_command(words[1]);
         try {
             app_.parse(count, words);
+        } catch (const CLI::ExtrasError&) {
+            throw Error(Fault::command_line, unexpected_word());
         } catch (const CLI::ParseError& stop) {
             if (stop.get_exit_code() != 0) throw Error(Fault::command_line, sentence_of(stop));
             app_.exit(stop, std::cout, std::cerr);
@@ -84,8 +92,30 @@ public:
     }
 
 private:
-    static std::string sentence_of(const CLI::ParseError& stop) {
-        return std::string(stop.what()) + "; see rillclock --help, or rillclock COMMAND --help";
+    static constexpr const char* no_command = "no command was given; begin with rillclock demo FOLDER, or rillclock --help";
+    static constexpr const char* see_help = "; see rillclock --help, or rillclock COMMAND --help";
+
+    static std::string sentence_of(const CLI::ParseError& stop) { return std::string(stop.what()) + see_help; }
+
+    void refuse_unknown_command(const std::string& word) const {
+        std::vector<std::string> names;
+        for (const CLI::App* command : app_.get_subcommands(nullptr)) names.push_back(command->get_name());
+        if (word.starts_with('-') || std::find(names.begin(), names.end(), word) != names.end()) return;
+        throw Error(Fault::command_line, "there is no command '" + word + "'" +
+                                             did_you_mean(word, std::vector<std::string_view>(names.begin(), names.end())) + see_help);
+    }
+
+    /// What to say of a word that belongs nowhere.
+    [[nodiscard]] std::string unexpected_word() const {
+        const std::string word = app_.remaining(true).front();
+        const auto parsed = app_.get_subcommands();
+        const CLI::App& command = parsed.empty() ? app_ : *parsed.front();
+        const std::string name = parsed.empty() ? "rillclock" : "rillclock " + command.get_name();
+        if (!word.starts_with('-')) return "'" + word + "' is one word too many for " + name + see_help;
+        std::vector<std::string> options;
+        for (const CLI::Option* option : command.get_options()) options.push_back(option->get_name());
+        return name + " has no option " + word +
+               did_you_mean(word, std::vector<std::string_view>(options.begin(), options.end())) + see_help;
     }
 
     CLI::App app_;

@@ -1,0 +1,116 @@
+#!/usr/bin/python3
+"""The words of the command line, and that README and program say the same of them."""
+import re
+import subprocess
+import unittest
+
+from support import COMMAND, CommandTest, SOURCE
+
+README = (SOURCE / "README.md").read_text(encoding="utf-8")
+COMMANDS = ("run", "check", "methods", "demo")
+
+
+def help_of(*words):
+    return subprocess.run([COMMAND, *words, "--help"], capture_output=True, text=True, check=True).stdout
+
+
+def options_in(text):
+    """Every --word and -x of a text, apart from rows of dashes in tables."""
+    return set(re.findall(r"(?<![\w-])(--[a-z][a-z-]*|-[a-z])(?![\w-])", text))
+
+
+def section(title):
+    """A section of the README, from its heading to the next of the same or a higher level."""
+    found = re.search(rf"(?ms)^(#+) {re.escape(title)}\n(.*?)(?=^#{{1,2}} |\Z)", README)
+    return found.group(2)
+
+
+class CommandLine(CommandTest):
+    def test_help_and_version_are_no_faults(self):
+        for words in (["--help"], ["-h"], ["--version"]) + tuple([command, "--help"] for command in COMMANDS):
+            run = self.rillclock(*words)
+            self.assertEqual((run.returncode, run.stderr), (0, ""), words)
+            self.assertTrue(run.stdout)
+
+    def test_a_version_names_the_libraries_too(self):
+        self.assertRegex(self.done("--version"), r"^rillclock \d+\.\d+\.\d+, GDAL \d\S+, PROJ \d\S+\n$")
+
+    def test_words_that_are_wrong_are_told_with_the_right_ones(self):
+        for words, parts in (([], ("no command was given", "rillclock demo")),
+                             (["rum", "x.toml"], ("'rum'", "did you mean run?")),
+                             (["run", "x.toml", "--rane", "90 mm"], ("--rane", "did you mean --rain?")),
+                             (["run", "x.toml", "y.toml"], ("y.toml",)),
+                             (["run", "x.toml", "--out"], ("--out",)),
+                             (["demo"], ("FOLDER",)),
+                             (["run"], ("no study was named", "--elevation")),
+                             (["methods", "all"], ("all",))):
+            self.refused(2, *words, says=parts)
+
+    def test_check_lists_every_method_and_key_without_a_study(self):
+        self.assertIn("sheet-nrcs", self.done("methods"))
+        self.assertIn("two_year_24_hour", self.done("check", "--keys"))
+
+
+class Readme(unittest.TestCase):
+    def test_every_option_of_every_command_stands_in_its_table(self):
+        described = section("Every command and option")
+        offered = options_in(help_of())
+        for command in COMMANDS:
+            offered |= options_in(help_of(command))
+        self.assertEqual(offered, options_in(described))
+
+    def test_no_command_is_left_out(self):
+        listed = re.findall(r"(?m)^  (\w+)  ", help_of().split("Subcommands:")[1])
+        self.assertEqual(sorted(listed), sorted(COMMANDS))
+        for command in COMMANDS:
+            self.assertRegex(section("Every command and option"), rf"(?m)^### rillclock {command}\b")
+
+    def test_options_named_anywhere_in_it_exist(self):
+        offered = options_in(help_of()) | set.union(*(options_in(help_of(command)) for command in COMMANDS))
+        for line in README.splitlines():
+            if "rillclock" in line and "gdal" not in line:
+                self.assertLessEqual(options_in(line), offered, line)
+
+    def test_every_key_of_a_study_stands_in_its_table_with_its_default(self):
+        text = subprocess.run([COMMAND, "check", "--keys"], capture_output=True, text=True, check=True).stdout
+        known, name_of_section = {}, ""
+        for comment, key, header in re.findall(r"(?m)^# (.*)\n([\w.]+) = |^\[(\w+)\]$", text):
+            name_of_section = header or name_of_section
+            if key:
+                known[f"{name_of_section}.{key}".lstrip(".")] = re.search(r"\(default: (.*)\)$", comment).group(1)
+        listed = dict(re.findall(r"(?m)^\| `([\w.]+)` \|.*\| ([^|]*) \|$", section("The study file")))
+        self.assertEqual(listed, known)
+
+    def test_every_method_is_named_with_its_formula(self):
+        text = subprocess.run([COMMAND, "methods"], capture_output=True, text=True, check=True).stdout
+        named = section("Formulas and where they come from")
+        methods = re.findall(r"(?m)^([a-z-]+): (.*)\n    formula  (.*)$", text)
+        self.assertGreaterEqual(len(methods), 9)
+        for method, name, formula in methods:
+            self.assertIn(f"`{method}`", named)
+            self.assertIn(name, named)
+            self.assertIn(formula.split(",")[0], named, method)
+        self.assertEqual({method for method, _, _ in methods}, set(re.findall(r"(?m)^\| `([a-z-]+)` \|", named)))
+
+    def test_every_file_of_a_result_is_explained(self):
+        explained = section("What you get")
+        for name in ("result.json", "governing_paths.geojson", "longest_paths.geojson", "tables/outlets.csv", "tables/segments.csv",
+                     "tables/review.csv", "rasters/travel_time.tif", "rasters/flow_azimuth.tif", "rasters/contributing_area.tif",
+                     "rasters/catchment.tif", "rasters/regime.tif", "rasters/spill_elevation.tif"):
+            self.assertIn(f"`{name}`", explained)
+
+    def test_the_cautions_stand_there_word_for_word(self):
+        source = (SOURCE / "include/rillclock/deliver/cautions.hpp").read_text(encoding="utf-8")
+        cautions = re.findall(r'^    "(.*)",$', source, re.MULTILINE)
+        self.assertEqual(len(cautions), 5)
+        for caution in cautions:
+            self.assertIn(caution, " ".join(section("Cautions").split()))
+
+    def test_exit_statuses_are_listed(self):
+        listed = section("Exit status")
+        for status in ("0", "1", "2", "3", "130", "143"):
+            self.assertRegex(listed, rf"(?m)^\| {status} \|")
+
+
+if __name__ == "__main__":
+    unittest.main()
