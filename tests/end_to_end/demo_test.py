@@ -28,13 +28,19 @@ def files_under(folder):
 
 
 class Demo(CommandTest):
+    """The demo, run once; each test has a copy of it in its own folder."""
+
+    @classmethod
+    def setUpClass(cls):
+        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-demo-"))
+        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
+        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
+        cls.said = subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True, text=True)
+
     def setUp(self):
         super().setUp()
-        self.done("demo", "town")
-        self.said = self.rillclock("run", "town/study.toml")
-        self.assertEqual(self.said.returncode, 0, self.said.stderr)
+        shutil.copytree(self.kept / "town", self.folder / "town")
         self.result_folder = self.folder / "town/result"
-
         self.opened = []
 
     def raster(self, name):
