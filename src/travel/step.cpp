@@ -13,7 +13,7 @@ namespace {
 double sheet_share(const StepView& step, const SheetRules& sheet) {
     if (step.kind != GroundKind::overland) return 0.0;
     const double length_left = in_metres(sheet.limit) - from_fixed(step.from_divide);
-    const double index_left = in_metres(sheet.index_limit) - from_fixed(step.sheet_index);
+    const double index_left = in_metres(std::min(sheet.index_limit, sheet_is_over)) - from_fixed(step.sheet_index);
     if (!(length_left > 0 && index_left > 0)) return 0.0;
     const double length = from_fixed(step.length);
     const double index = from_fixed(sheet_index_step(step));
@@ -97,7 +97,8 @@ StepParts parts_by_regime(const StepView& step, const TravelRules& rules) {
 }  // namespace
 
 FixedLength sheet_index_step(const StepView& step) {
-    if (step.length == 0 || step.surface->water_depth) return 0;
+    if (step.length == 0) return 0;
+    if (step.kind != GroundKind::overland) return to_fixed(in_metres(sheet_is_over));
     return to_fixed(step.surface->sheet_n * from_fixed(step.length) / std::sqrt(step.slope));
 }
 

@@ -1,22 +1,10 @@
 #include "rillclock/travel/travel_field.hpp"
 
-#include <algorithm>
-
+#include "ground_kind.hpp"
 #include "rillclock/terrain/flow_directions.hpp"
 
 namespace rillclock {
 namespace {
-
-/// A channel is never made by fewer cells than this, however small the stated area.
-constexpr FixedArea least_channel_cells = 20;
-
-GroundKind kind_of(const TravelInputs& in, const TravelField& field, const ChannelRules& rules, Cell cell) {
-    if (in.surface.at(cell).water_depth) return GroundKind::water;
-    if (!rules.from_area) return GroundKind::overland;
-    const FixedArea from = std::max(to_fixed_area(in_square_metres(*rules.from_area)),
-                                    least_channel_cells * in.ground.cell_area(in.forest.row(cell)));
-    return field.contributing_area[cell] >= from ? GroundKind::channel : GroundKind::overland;
-}
 
 void sweep_areas_and_distances(const TravelInputs& in, TravelField& field) {
     const auto length = [&](Cell cell) { return step_length(in.forest, in.ground, cell); };
@@ -32,7 +20,10 @@ void sweep_areas_and_distances(const TravelInputs& in, TravelField& field) {
 /// Open water that falls on its way is a river and flows as a channel.
 void find_kinds_and_slopes(const TravelInputs& in, const TravelRules& rules, TravelField& field) {
     field.kind = Raster<GroundKind>(in.forest.rows(), in.forest.columns());
-    for (const Cell cell : in.forest.order()) field.kind[cell] = kind_of(in, field, rules.channel, cell);
+    for (const Cell cell : in.forest.order()) {
+        field.kind[cell] = kind_of(in.surface.at(cell), rules.channel, field.contributing_area[cell],
+                                   in.ground.cell_area(in.forest.row(cell)));
+    }
     SlopeAhead ahead = slope_ahead({.forest = in.forest, .flow_distance = field.flow_distance, .spill = field.spill,
                                     .metres_per_elevation_unit = in.metres_per_elevation_unit, .kind = field.kind},
                                    rules.slope);

@@ -60,7 +60,10 @@ struct StepParts {
     [[nodiscard]] StepTime time() const { return first.time + second.time; }
 };
 
-/// What the step adds to the sheet index: n·d/√S, in fixed point of metres; 0 on open water.
+/// A sheet index that no sheet flow reaches: what a step through channel or water adds, so that sheet flow never comes back below it.
+inline constexpr Length sheet_is_over = metres(1e6);
+
+/// What the step adds to the sheet index: n·d/√S overland, in fixed point of metres; `sheet_is_over` in channels and water.
 [[nodiscard]] FixedLength sheet_index_step(const StepView& step);
 
 /// Cuts a step by regime and gives each part its time. Precedence: channel and water by `kind`, then sheet flow as far as both limits

@@ -21,8 +21,8 @@ Choices where the rules can be read in more than one way
     of the cell.
  8. A step takes everything (class, slope, regime, hydraulic radius) from the cell it starts in. The hydraulic radius
     goes by the contributing area of that cell, own area included.
- 9. The sheet index and the distance from the divide grow through cells of every regime; open water has n = 0 and adds nothing
-    to the index. A channel cell adds with its cover's n and its channel slope.
+ 9. The distance from the divide grows through cells of every regime. Channel and open water end sheet flow for good: what
+    leaves them has an index beyond every limit.
 10. A step in which sheet flow ends is split by length at the earlier of the two limits; the rest is shallow
     concentrated flow at the slope of the same cell.
 11. A ponded cell takes the smaller of its regime's step time and length / min(√(g·depth), pond_speed), depth being spill elevation
@@ -400,7 +400,7 @@ class Travel:
     def find_step_times(self, surface, z_m, area_m2):
         study, forest, slope = self.study, self.forest, self.slope
         length = forest.length
-        weight = np.where(self.is_water, 0.0, surface.n * length / np.sqrt(slope))
+        weight = np.where(self.is_water | self.is_channel, 1e6, surface.n * length / np.sqrt(slope))
         self.index = forest.largest_arriving(weight)
         self.distance = forest.largest_arriving(length)
 

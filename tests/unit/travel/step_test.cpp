@@ -71,11 +71,18 @@ TEST_CASE("a step within both limits is sheet flow and takes T(u1) - T(u0), all 
     CHECK(parts.second.regime == Regime::none);
 }
 
-TEST_CASE("a step takes n·d/√S of sheet index, and open water none") {
-    StepView step = ten_metres();
-    CHECK(from_fixed(sheet_index_step(step)) == 5.0);
-    step.surface = &lake;
-    CHECK(sheet_index_step(step) == 0);
+TEST_CASE("a step overland takes n·d/√S of sheet index") {
+    CHECK(from_fixed(sheet_index_step(ten_metres())) == 5.0);
+}
+
+TEST_CASE("sheet flow does not come back below channel or open water, even where only its length is limited") {
+    for (const GroundKind kind : {GroundKind::channel, GroundKind::water}) {
+        StepView above = ten_metres();
+        above.kind = kind;
+        StepView below = ten_metres();
+        below.sheet_index = sheet_index_step(above);
+        CHECK(step_parts(below, limited_to(100, none)).first.regime == Regime::shallow);
+    }
 }
 
 TEST_CASE("the step in which the stated length runs out is split there") {

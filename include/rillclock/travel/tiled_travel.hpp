@@ -1,0 +1,150 @@
+#pragma once
+
+#include <cstdint>
+#include <vector>
+
+#include "rillclock/forest/tile_sweep.hpp"
+#include "rillclock/raster/ground.hpp"
+#include "rillclock/terrain/elevation_store.hpp"
+#include "rillclock/travel/step.hpp"
+
+namespace rillclock {
+
+/// The ground that travel times are made on, cut into tiles.
+struct TiledGround {
+    const TiledForest& forest;
+    const Ground& ground;
+    const ElevationStore& elevations;
+    double metres_per_elevation_unit = 1.0;
+    const SurfaceTable& surface;
+};
+
+/// A label on a cell: a design point's number.
+struct CellLabel {
+    Cell cell = no_cell;
+    std::uint32_t number = 0;
+};
+
+/// A root and all that drains to it.
+struct RootArea {
+    Cell cell = no_cell;
+    FixedArea area = 0;
+};
+
+/// Everything about the cells of one tile, by `Local`; room that is used for tile after tile.
+struct TileDesk {
+    TileFlow flow;
+    std::vector<double> elevation;              ///< elevation units; NaN where void
+    std::vector<double> spill;
+    std::vector<FixedArea> area;
+    std::vector<FixedLength> from_divide;
+    std::vector<FixedLength> sheet_index;
+    std::vector<FixedLength> flow_distance;     ///< to the root
+    std::vector<StepTime> step;                 ///< time of the step out of the cell
+    std::vector<FixedTime> storm;               ///< A to the root
+    std::vector<FixedTime> fixed;               ///< B to the root
+    std::vector<std::uint32_t> label;           ///< labels of the tile's own cells
+    std::vector<std::uint32_t> owner;           ///< first label on the way down
+    std::vector<std::int64_t> room;             ///< for sums on their way
+
+    [[nodiscard]] StepTime time_to_root(Local cell) const { return {fixed[cell], storm[cell]}; }
+};
+
+/// Travel times over tiles: all that travel_field.hpp computes cell by cell in the plain way, in passes over tiles, bit for bit.
+///
+/// pass               local work                                            kept a cell
+/// 1 areas            down: area, distance from the divide; up: distance    –
+///                    to the root, spill elevation
+/// 2 kinds            spill elevation, kind of ground                       spill 4 (8), kind 1
+/// 3 slopes           slope ahead; down: sheet index                        slope 4
+/// 4 times            step times; up: A, B                                  –
+/// Between two passes stands one sweep over the exits of all tiles. What is not kept is made again from the border values by
+/// `read_tile`, for the last pass over the raster and for the few tiles that flow paths cross.
+class TiledTravel {
+public:
+    /// Runs the four passes.
+    TiledTravel(const TiledGround& ground, const TravelRules& rules, const Executor& executor);
+
+    /// The roots with what drains to them, by cell.
+    [[nodiscard]] const std::vector<RootArea>& roots() const { return roots_; }
+    [[nodiscard]] const TiledGround& ground() const { return in_; }
+    [[nodiscard]] const TravelRules& rules() const { return rules_; }
+    [[nodiscard]] const Executor& executor() const { return executor_; }
+    [[nodiscard]] float slope(Cell cell) const { return slope_[cell]; }
+    [[nodiscard]] GroundKind kind(Cell cell) const { return kind_[cell]; }
+
+    /// Reads the areas of a tile's cells alone, for placing points.
+    void read_areas(Tile tile, TileDesk& desk) const;
+    /// Makes everything about a tile's cells but labels and owners.
+    void read_tile(Tile tile, TileDesk& desk) const;
+    /// The step out of a cell of a tile that was read.
+    [[nodiscard]] StepView step_view(const TileDesk& desk, Local local) const;
+
+private:
+    void find_areas();
+    void find_kinds();
+    void find_slopes();
+    void find_times();
+
+    [[nodiscard]] FixedLength step_length(const TileFlow& flow, Local local) const {
+        return is_direction(flow.code(local)) ? in_.ground.length(flow.row(local), static_cast<Direction>(flow.code(local))) : 0;
+    }
+    [[nodiscard]] auto area_channel(const TileFlow& flow) const {
+        return down::Sum{[this, &flow](Local cell) { return in_.ground.cell_area(flow.row(cell)); }};
+    }
+    [[nodiscard]] auto divide_channel(const TileFlow& flow) const {
+        return down::Max{[this, &flow](Local cell) { return step_length(flow, cell); }};
+    }
+    [[nodiscard]] auto distance_channel(const TileFlow& flow) const {
+        return up::Add{[this, &flow](Local cell) { return step_length(flow, cell); }};
+    }
+    [[nodiscard]] static auto spill_channel(const TileDesk& desk) {
+        return up::Max{[&desk](Local cell) { return desk.elevation[cell]; }};
+    }
+    [[nodiscard]] auto index_channel(const TileDesk& desk) const {
+        return down::Max{[this, &desk](Local cell) { return sheet_index_step(step_view(desk, cell)); }};
+    }
+    [[nodiscard]] static auto storm_channel(const TileDesk& desk) {
+        return up::Add{[&desk](Local cell) { return desk.step[cell].storm; }};
+    }
+    [[nodiscard]] static auto fixed_channel(const TileDesk& desk) {
+        return up::Add{[&desk](Local cell) { return desk.step[cell].fixed; }};
+    }
+    void read_steps(Tile tile, TileDesk& desk) const;
+    void read_elevations(TileDesk& desk) const;
+
+    TiledGround in_;
+    TravelRules rules_;
+    const Executor& executor_;
+    mutable Workspaces<TileDesk> desks_;
+    DownBorders<std::int64_t> area_;
+    DownBorders<std::int64_t> from_divide_;
+    DownBorders<std::int64_t> sheet_index_;
+    UpBorders<std::int64_t> flow_distance_;
+    UpBorders<double> spill_border_;
+    UpBorders<std::int64_t> storm_;
+    UpBorders<std::int64_t> fixed_;
+    ElevationStore spill_;
+    Raster<GroundKind> kind_;
+    Raster<float> slope_;
+    std::vector<RootArea> roots_;
+};
+
+/// The first label on the way down of every cell, over tiles.
+class TiledOwners {
+public:
+    TiledOwners(const TiledForest& forest, std::vector<CellLabel> labels, const Executor& executor);
+
+    /// Labels and owners of a tile whose flow was read into the desk.
+    void read_tile(Tile tile, TileDesk& desk) const;
+
+private:
+    void put_labels(Tile tile, TileDesk& desk) const;
+
+    const TiledForest& forest_;
+    std::vector<CellLabel> labels_;              ///< by tile, then by cell
+    std::vector<std::size_t> first_of_tile_;
+    UpBorders<std::uint32_t> owner_;
+};
+
+}  // namespace rillclock

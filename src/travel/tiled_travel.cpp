@@ -1,0 +1,168 @@
+#include "rillclock/travel/tiled_travel.hpp"
+
+#include <algorithm>
+#include <mutex>
+
+#include "ground_kind.hpp"
+#include "tile_slopes.hpp"
+
+namespace rillclock {
+
+TiledTravel::TiledTravel(const TiledGround& ground, const TravelRules& rules, const Executor& executor)
+    : in_(ground), rules_(rules), executor_(executor), area_(ground.forest), from_divide_(ground.forest),
+      sheet_index_(ground.forest), flow_distance_(ground.forest), spill_border_(ground.forest), storm_(ground.forest),
+      fixed_(ground.forest), spill_(ground.elevations.rows(), ground.elevations.columns(), ground.elevations.width()),
+      kind_(ground.elevations.rows(), ground.elevations.columns(), GroundKind::overland),
+      slope_(ground.elevations.rows(), ground.elevations.columns()) {
+    find_areas();
+    find_kinds();
+    find_slopes();
+    find_times();
+}
+
+void TiledTravel::find_areas() {
+    for_each_tile(in_.forest, executor_, desks_, [this](Tile tile, TileDesk& desk) {
+        read_elevations(desk);
+        area_.collect(tile, desk.flow, area_channel(desk.flow), desk.room);
+        from_divide_.collect(tile, desk.flow, divide_channel(desk.flow), desk.room);
+        flow_distance_.collect(tile, desk.flow, distance_channel(desk.flow), desk.room);
+        spill_border_.collect(tile, desk.flow, spill_channel(desk), desk.spill);
+    });
+    area_.solve<decltype(area_channel(std::declval<TileFlow&>()))>();
+    from_divide_.solve<decltype(divide_channel(std::declval<TileFlow&>()))>();
+    flow_distance_.solve<decltype(distance_channel(std::declval<TileFlow&>()))>();
+    spill_border_.solve<decltype(spill_channel(std::declval<TileDesk&>()))>();
+}
+
+void TiledTravel::find_kinds() {
+    std::mutex roots_mutex;
+    for_each_tile(in_.forest, executor_, desks_, [&](Tile tile, TileDesk& desk) {
+        read_elevations(desk);
+        spill_border_.fill(tile, desk.flow, spill_channel(desk), desk.spill);
+        for (Local local = 0; local < desk.flow.size(); ++local) {
+            if (desk.flow.code(local) == flow_void) desk.spill[local] = desk.elevation[local];
+        }
+        spill_.write(desk.flow.window(), desk.spill);
+
+        area_.fill(tile, desk.flow, area_channel(desk.flow), desk.area);
+        std::vector<RootArea> roots;
+        for (const Local local : desk.flow.order()) {
+            const Cell cell = desk.flow.cell(local);
+            kind_[cell] = kind_of(in_.surface.at(cell), rules_.channel, desk.area[local],
+                                  in_.ground.cell_area(desk.flow.row(local)));
+            if (desk.flow.code(local) == flow_root) roots.push_back({cell, desk.area[local]});
+        }
+        const std::lock_guard lock(roots_mutex);
+        roots_.insert(roots_.end(), roots.begin(), roots.end());
+    });
+    std::sort(roots_.begin(), roots_.end(), [](const RootArea& a, const RootArea& b) { return a.cell < b.cell; });
+}
+
+void TiledTravel::find_slopes() {
+    const SlopeGround ground{.in = in_, .spill = spill_, .rules = rules_.slope};
+    for_each_tile(in_.forest, executor_, desks_, [&](Tile tile, TileDesk& desk) {
+        flow_distance_.fill(tile, desk.flow, distance_channel(desk.flow), desk.flow_distance);
+        find_tile_slopes(ground, desk, kind_, slope_);
+        // What a step adds to the sheet index needs its slope, length and surface alone.
+        desk.area.assign(desk.flow.size(), 0);
+        desk.from_divide.assign(desk.flow.size(), 0);
+        desk.sheet_index.assign(desk.flow.size(), 0);
+        desk.spill.assign(desk.flow.size(), 0.0);
+        desk.elevation.assign(desk.flow.size(), 0.0);
+        sheet_index_.collect(tile, desk.flow, index_channel(desk), desk.room);
+    });
+    sheet_index_.solve<decltype(index_channel(std::declval<TileDesk&>()))>();
+}
+
+void TiledTravel::find_times() {
+    for_each_tile(in_.forest, executor_, desks_, [this](Tile tile, TileDesk& desk) {
+        read_steps(tile, desk);
+        storm_.collect(tile, desk.flow, storm_channel(desk), desk.room);
+        fixed_.collect(tile, desk.flow, fixed_channel(desk), desk.room);
+    });
+    storm_.solve<decltype(storm_channel(std::declval<TileDesk&>()))>();
+    fixed_.solve<decltype(fixed_channel(std::declval<TileDesk&>()))>();
+}
+
+void TiledTravel::read_elevations(TileDesk& desk) const {
+    desk.elevation.resize(desk.flow.size());
+    in_.elevations.read(desk.flow.window(), desk.elevation);
+}
+
+void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
+    read_elevations(desk);
+    desk.spill.resize(desk.flow.size());
+    spill_.read(desk.flow.window(), desk.spill);
+    area_.fill(tile, desk.flow, area_channel(desk.flow), desk.area);
+    from_divide_.fill(tile, desk.flow, divide_channel(desk.flow), desk.from_divide);
+    desk.sheet_index.assign(desk.flow.size(), 0);
+    std::swap(desk.room, desk.sheet_index);
+    desk.sheet_index.assign(desk.flow.size(), 0);
+    sheet_index_.fill(tile, desk.flow, index_channel(desk), desk.room);
+    std::swap(desk.room, desk.sheet_index);
+    desk.step.assign(desk.flow.size(), StepTime{});
+    for (const Local local : desk.flow.order()) desk.step[local] = step_parts(step_view(desk, local), rules_).time();
+}
+
+void TiledTravel::read_areas(Tile tile, TileDesk& desk) const {
+    desk.flow.read(in_.forest.codes(), in_.forest.tiles().window(tile));
+    area_.fill(tile, desk.flow, area_channel(desk.flow), desk.area);
+}
+
+void TiledTravel::read_tile(Tile tile, TileDesk& desk) const {
+    desk.flow.read(in_.forest.codes(), in_.forest.tiles().window(tile));
+    read_steps(tile, desk);
+    flow_distance_.fill(tile, desk.flow, distance_channel(desk.flow), desk.flow_distance);
+    storm_.fill(tile, desk.flow, storm_channel(desk), desk.storm);
+    fixed_.fill(tile, desk.flow, fixed_channel(desk), desk.fixed);
+}
+
+StepView TiledTravel::step_view(const TileDesk& desk, Local local) const {
+    const Cell cell = desk.flow.cell(local);
+    return {.length = step_length(desk.flow, local),
+            .slope = static_cast<double>(slope_[cell]),
+            .surface = &in_.surface.at(cell),
+            .kind = kind_[cell],
+            .ponded_m = (desk.spill[local] - desk.elevation[local]) * in_.metres_per_elevation_unit,
+            .area = desk.area[local],
+            .from_divide = desk.from_divide[local],
+            .sheet_index = desk.sheet_index[local]};
+}
+
+TiledOwners::TiledOwners(const TiledForest& forest, std::vector<CellLabel> labels, const Executor& executor)
+    : forest_(forest), labels_(std::move(labels)), owner_(forest) {
+    const auto tile_of = [&](const CellLabel& label) {
+        return forest.tiles().tile_of({label.cell / forest.codes().columns(), label.cell % forest.codes().columns()});
+    };
+    std::sort(labels_.begin(), labels_.end(), [&](const CellLabel& a, const CellLabel& b) {
+        return std::pair(tile_of(a), a.cell) < std::pair(tile_of(b), b.cell);
+    });
+    first_of_tile_.assign(forest.tiles().count() + 1U, 0);
+    for (const CellLabel& label : labels_) ++first_of_tile_[tile_of(label) + 1U];
+    for (std::size_t tile = 1; tile < first_of_tile_.size(); ++tile) first_of_tile_[tile] += first_of_tile_[tile - 1];
+
+    Workspaces<TileDesk> desks;
+    const auto channel = [](const TileDesk& desk) { return up::First{[&desk](Local cell) { return desk.label[cell]; }}; };
+    for_each_tile(forest, executor, desks, [&](Tile tile, TileDesk& desk) {
+        put_labels(tile, desk);
+        owner_.collect(tile, desk.flow, channel(desk), desk.owner);
+    });
+    owner_.solve<decltype(channel(std::declval<TileDesk&>()))>();
+}
+
+void TiledOwners::put_labels(Tile tile, TileDesk& desk) const {
+    desk.label.assign(desk.flow.size(), 0);
+    const Window& window = desk.flow.window();
+    for (std::size_t i = first_of_tile_[tile]; i < first_of_tile_[tile + 1U]; ++i) {
+        const std::int64_t row = labels_[i].cell / forest_.codes().columns() - window.row;
+        const std::int64_t column = labels_[i].cell % forest_.codes().columns() - window.column;
+        desk.label[static_cast<std::size_t>(row * window.columns + column)] = labels_[i].number;
+    }
+}
+
+void TiledOwners::read_tile(Tile tile, TileDesk& desk) const {
+    put_labels(tile, desk);
+    owner_.fill(tile, desk.flow, up::First{[&desk](Local cell) { return desk.label[cell]; }}, desk.owner);
+}
+
+}  // namespace rillclock
