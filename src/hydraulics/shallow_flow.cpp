@@ -4,6 +4,8 @@
 #include <array>
 #include <cmath>
 
+#include "rillclock/hydraulics/manning.hpp"
+
 namespace rillclock {
 namespace {
 
@@ -27,6 +29,10 @@ std::span<const ShallowType> shallow_types() {
 const ShallowType* find_shallow_type(std::string_view name) {
     const auto found = std::find_if(types.begin(), types.end(), [&](const ShallowType& t) { return t.name == name; });
     return found == types.end() ? nullptr : &*found;
+}
+
+Speed shallow_conveyance(double n, Length hydraulic_radius, double printed_factor) {
+    return manning_velocity_us({.n = n, .hydraulic_radius = hydraulic_radius, .slope = 1.0}, printed_factor);
 }
 
 Speed shallow_velocity(Speed k, double slope) {

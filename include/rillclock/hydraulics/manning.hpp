@@ -26,6 +26,11 @@ struct ManningReach {
 /// Time to run a length at Manning's velocity; infinite on no slope.
 [[nodiscard]] Duration manning_time(Length length, const ManningReach& reach);
 
+/// Manning's formula the other way round: the slope that gives a velocity, and the n that does. The reach's own slope
+/// or n is not looked at. Not finite for a radius or velocity of 0.
+[[nodiscard]] double manning_slope_of(Speed velocity, const ManningReach& reach);
+[[nodiscard]] double manning_n_of(Speed velocity, const ManningReach& reach);
+
 /// Flow area over wetted perimeter.
 [[nodiscard]] constexpr Length hydraulic_radius(Area flow_area, Length wetted_perimeter) {
     return metres(flow_area.si() / wetted_perimeter.si());

@@ -31,6 +31,10 @@ struct ShallowType {
 inline constexpr Speed tr55_paved_k = feet_per_second(20.3282);
 inline constexpr Speed tr55_unpaved_k = feet_per_second(16.1345);
 
+/// The conveyance form of k: (factor/n)·R^(2/3) in feet and seconds, with one of Manning's printed factors; R is the
+/// depth of the flow where it is wide. Source: TR-55, 1986, appendix F; NEH 630, table 15-3 (with the factor 1.486).
+[[nodiscard]] Speed shallow_conveyance(double n, Length hydraulic_radius, double printed_factor);
+
 /// k·√S, for a slope (rise over run) of 0 or more; NaN below.
 [[nodiscard]] Speed shallow_velocity(Speed k, double slope);
 

@@ -49,6 +49,21 @@ TEST_CASE("a smooth channel one metre in radius on a slope of one per cent runs 
           rounding(20));
 }
 
+TEST_CASE("the conveyance form of shallow flow is k, by either printed factor") {
+    CHECK(in_feet_per_second(shallow_conveyance(0.05, feet(0.4), manning_factor_us_neh)) ==
+          Approx(16.1345).margin(0.00005));
+    CHECK(shallow_conveyance(0.05, feet(0.4), 1.49) / shallow_conveyance(0.05, feet(0.4), 1.486) ==
+          rounding(1.49 / 1.486));
+    CHECK_FALSE(std::isfinite(shallow_conveyance(0, feet(0.4), 1.49).si()));
+}
+
+TEST_CASE("Manning the other way round gives the slope and the n of a velocity") {
+    CHECK(manning_slope_of(manning_velocity(brook), brook) == rounding(brook.slope));
+    CHECK(manning_n_of(manning_velocity(brook), brook) == rounding(brook.n));
+    CHECK_FALSE(std::isfinite(manning_n_of(metres_per_second(0), brook)));
+    CHECK_FALSE(std::isfinite(manning_slope_of(metres_per_second(1), {.n = 0.03, .hydraulic_radius = metres(0)})));
+}
+
 TEST_CASE("a channel on no slope takes for ever") {
     CHECK(std::isinf(in_seconds(manning_time(metres(1), {.n = 0.02, .hydraulic_radius = metres(1), .slope = 0}))));
 }
