@@ -38,13 +38,11 @@ private:
         double reach = std::min(in_metres(rules_.window), path.length());
         if (kind == GroundKind::overland) reach = std::min(reach, path.distance_to_concentrated(reach));
         const double fall = path.fall_within(reach);
-        if (fall > 0 && fall >= step_) return fall / reach;
-        if (step_ > 0) {
-            // Beyond this the answer would lie under the floor; a little more, so that rounding decides nothing.
-            const double limit = 1.000001 * step_ * metres_per_unit_ / floor(kind);
-            const auto distance = path.distance_to_fall(step_, limit);
-            if (distance) return step_ / *distance;
-        }
+        if (fall >= step_) return fall / reach;
+        // Beyond this the answer would lie under the floor; a little more, so that rounding decides nothing.
+        const double limit = 1.000001 * step_ * metres_per_unit_ / floor(kind);
+        const auto distance = path.distance_to_fall(step_, limit);
+        if (distance) return step_ / *distance;
         const auto to_root = path.fall_to_root();
         return to_root ? *to_root / path.length() : 0.0;
     }
