@@ -2,6 +2,7 @@
 """The words of the command line, and that README and program say the same of them."""
 import re
 import subprocess
+import sys
 import unittest
 
 from support import COMMAND, CommandTest, SOURCE
@@ -106,6 +107,24 @@ class Readme(unittest.TestCase):
         listed = section("Exit status")
         for status in ("0", "1", "2", "3", "130", "143"):
             self.assertRegex(listed, rf"(?m)^\| {status} \|")
+
+
+class Developers(unittest.TestCase):
+    TEXT = (SOURCE / "DEVELOPERS.md").read_text(encoding="utf-8")
+
+    def test_every_file_it_names_is_there(self):
+        named = re.findall(r"`((?:src|include|tests|scripts)/[\w./-]+)`", self.TEXT)
+        self.assertGreater(len(named), 30)
+        for name in named:
+            self.assertTrue((SOURCE / name).exists(), name)
+
+    def test_its_table_of_rooms_is_the_one_that_is_checked(self):
+        sys.path.insert(0, str(SOURCE / "tests/layering"))
+        import check_layering
+        table = self.TEXT.split("## Rooms")[1].split("\n## ")[0]
+        rooms = {room: sorted(set(may.split()) - {"nothing"})
+                 for room, may in re.findall(r"(?m)^\| (\w+) \| .* \| ([a-z ]+) \|$", table) if room != "room"}
+        self.assertEqual(rooms, {room: sorted(others) for room, others in check_layering.ROOMS.items()})
 
 
 if __name__ == "__main__":
