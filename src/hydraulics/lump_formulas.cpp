@@ -87,8 +87,12 @@ Duration california_culvert_practice(Length path, Length fall) {
     return hours(std::pow(11.9 * std::pow(in_miles(path), 3.0) / in_feet(fall), 0.385));
 }
 
-Duration kerby(Length overland, double retardance, double slope, double constant) {
-    return minutes(constant * std::pow(in_feet(overland) * retardance, 0.467) * std::pow(slope, -0.235));
+Duration kerby(Length overland, double retardance, double slope) {
+    return minutes(0.828 * std::pow(in_feet(overland) * retardance, 0.467) * std::pow(slope, -0.235));
+}
+
+Duration kerby_by_root(Length overland, double retardance, double slope) {
+    return minutes(0.83 * std::pow(retardance * in_feet(overland) / std::sqrt(slope), 0.467));
 }
 
 Duration kerby_with_two_thirds(Length overland, double retardance, double slope) {

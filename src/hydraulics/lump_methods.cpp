@@ -137,7 +137,8 @@ Method kerby_kirpich_about() {
                        time_min},
             .range = "0.25 to 150 square miles, main channel 1 to 50 miles, slope 0.002 to 0.02, overland 1200 ft",
             .source =
-                "Roussel, Thompson, Fang, Cleveland and Garcia-Martinez, Time-parameter estimation for applicable Texas watersheds, 2005; "
+                "Roussel, Thompson, Fang, Cleveland and Garcia-Martinez, Time-parameter estimation for applicable "
+                "Texas watersheds, 2005; "
                 "Texas Hydraulic Design Manual",
             .trust = Trust::seen_in_source};
 }

@@ -45,12 +45,12 @@ inline constexpr double california_sharifi_hosseini = 1.715;
 /// tc[h] = (11.9 L³/H)^0.385, L mi, H ft. Source: California Culverts Practice, 1942.
 [[nodiscard]] Duration california_culvert_practice(Length path, Length fall);
 
-/// Constants of Kerby's formula for feet.
-inline constexpr double kerby_constant = 0.828;         ///< Texas Department of Transportation, Hydraulic Design Manual
-inline constexpr double kerby_constant_rounded = 0.83;  ///< in lecture notes
-/// Kerby: t[min] = 0.828 (L N)^0.467 S^-0.235, L ft. Source: Kerby, Civil Engineering 29(3), 1959.
-[[nodiscard]] Duration kerby(Length overland, double retardance, double slope, double constant = kerby_constant);
-/// The same as it is printed elsewhere: t[min] = (0.67 N L / √S)^0.467.
+/// Kerby: t[min] = 0.828 (L N)^0.467 S^-0.235, L ft. Source: Kerby, Civil Engineering 29(3), 1959, with the constant and
+/// the powers of the Texas Department of Transportation, Hydraulic Design Manual.
+[[nodiscard]] Duration kerby(Length overland, double retardance, double slope);
+/// The same as printed elsewhere: t[min] = 0.83 (L N / √S)^0.467, and t[min] = (0.67 L N / √S)^0.467. The three agree
+/// within 1 % for slopes from 0.001 to 1.
+[[nodiscard]] Duration kerby_by_root(Length overland, double retardance, double slope);
 [[nodiscard]] Duration kerby_with_two_thirds(Length overland, double retardance, double slope);
 
 /// A surface and a coefficient of it.

@@ -44,8 +44,12 @@ TEST_CASE("the metric constant of Kerby agrees with that for feet") {
     CHECK(in_minutes(kerby(metres(1), 1, 1)) == Approx(1.44).margin(0.005));
 }
 
-TEST_CASE("Kerby's two printed forms agree within half of a per cent") {
-    CHECK(kerby(feet(500), 0.4, 0.02) / kerby_with_two_thirds(feet(500), 0.4, 0.02) == Approx(1).margin(0.005));
+TEST_CASE("Kerby's three printed forms agree within one per cent from slopes of 0.001 to 1") {
+    for (const double slope : {0.001, 0.02, 1.0}) {
+        CHECK(kerby(feet(500), 0.4, slope) / kerby_by_root(feet(500), 0.4, slope) == Approx(1).margin(0.01));
+        CHECK(kerby_with_two_thirds(feet(500), 0.4, slope) / kerby_by_root(feet(500), 0.4, slope) ==
+              Approx(1).margin(0.001));
+    }
 }
 
 TEST_CASE("low slopes are raised by 0.0005, which fades from 0.002 to 0.003 without a step") {
