@@ -1,0 +1,98 @@
+#include "level_distances.hpp"
+
+#include <algorithm>
+
+namespace rillclock {
+namespace {
+
+/// The tile's own cells in the order of their distance, as far as arrivals and queue allow: each is looked at anew when its distance
+/// is lowered again, so the order matters for speed alone.
+template <class Z>
+class Spread {
+public:
+    explicit Spread(Desk<Z>& desk) : desk_(desk), shape_(desk.z.shape()) { desk_.queue.clear(); }
+
+    void run(std::span<const Arrival> arrivals) {
+        std::size_t arrived = 0;
+        for (std::size_t next = 0; next < desk_.queue.size() || arrived < arrivals.size();) {
+            const bool arrival_is_nearer =
+                arrived < arrivals.size() &&
+                (next == desk_.queue.size() || arrivals[arrived].distance <= desk_.numbers[desk_.queue[next]]);
+            if (arrival_is_nearer) {
+                lower(shape_.position(arrivals[arrived].cell), arrivals[arrived].distance);
+                ++arrived;
+            } else {
+                look_around(desk_.queue[next++]);
+            }
+        }
+    }
+
+private:
+    void lower(Position p, std::uint32_t distance) {
+        if (distance >= desk_.numbers[p]) return;
+        desk_.numbers[p] = distance;
+        desk_.queue.push_back(p);
+    }
+    /// The halo holds distance 0, which nothing lowers, so the spread stays within the tile.
+    void look_around(Position p) {
+        const std::uint32_t distance = desk_.numbers[p] + 1;
+        for (const Position step : shape_.steps()) {
+            const Position beside = p + step;
+            if (is_flat(desk_.codes[beside]) && desk_.z[beside] == desk_.z[p]) lower(beside, distance);
+        }
+    }
+
+    Desk<Z>& desk_;
+    PatchShape shape_;
+};
+
+/// The best that the changed cells of the rim can offer to each cell of the halo.
+template <class Z>
+std::vector<Arrival> offers(Desk<Z>& desk, std::span<const std::uint32_t> before) {
+    const PatchShape& shape = desk.z.shape();
+    shape.for_each_halo([&](Position p) { desk.numbers[p] = unreached; });
+    std::vector<Position> offered;
+    std::size_t place = 0;
+    shape.for_each_rim([&](Position p) {
+        const std::uint32_t known = before[place++];
+        if (!is_flat(desk.codes[p]) || desk.numbers[p] >= known) return;
+        for (const Position step : shape.steps()) {
+            const Position beside = p + step;
+            if (!is_flat(desk.codes[beside]) || desk.z[beside] != desk.z[p] || shape.is_in_tile(beside)) continue;
+            if (desk.numbers[beside] == unreached) offered.push_back(beside);
+            desk.numbers[beside] = std::min(desk.numbers[beside], desk.numbers[p] + 1);
+        }
+    });
+    std::vector<Arrival> letters;
+    letters.reserve(offered.size());
+    for (const Position p : offered) letters.push_back({shape.cell(p), desk.numbers[p]});
+    return letters;
+}
+
+}  // namespace
+
+template <class Z>
+std::vector<Arrival> spread(Desk<Z>& desk, std::vector<Arrival> arrivals, std::span<const std::uint32_t> before) {
+    std::sort(arrivals.begin(), arrivals.end(), [](const Arrival& a, const Arrival& b) { return a.distance < b.distance; });
+    Spread<Z>(desk).run(arrivals);
+    return offers(desk, before);
+}
+
+std::vector<std::uint32_t> rim_distances(const Patch<std::uint32_t>& distances) {
+    std::vector<std::uint32_t> rim;
+    distances.shape().for_each_rim([&](Position p) { rim.push_back(distances[p]); });
+    return rim;
+}
+
+template <class Z>
+void forget_distances(Desk<Z>& desk) {
+    desk.numbers.resize(desk.z.shape(), 0);
+    for_each_flat(desk.codes, [&](Position p) { desk.numbers[p] = unreached; });
+}
+
+template std::vector<Arrival> spread(Desk<float>&, std::vector<Arrival>, std::span<const std::uint32_t>);
+template std::vector<Arrival> spread(Desk<double>&, std::vector<Arrival>, std::span<const std::uint32_t>);
+template void forget_distances(Desk<float>&);
+template void forget_distances(Desk<double>&);
+
+}  // namespace rillclock
