@@ -18,8 +18,8 @@ double regime_seconds(const Outlet& outlet, Regime regime, double storm_factor) 
 void add_place_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
     table.column("number", [](const Outlet& o) { return std::to_string(o.number); })
         .column("name", [](const Outlet& o) { return o.point.name; })
-        .column("x", [&](const Outlet& o) { return coordinate(result.grid.centre(o.point.cell).x); })
-        .column("y", [&](const Outlet& o) { return coordinate(result.grid.centre(o.point.cell).y); })
+        .column("x", [&](const Outlet& o) { return coordinate(result.system, result.grid.centre(o.point.cell).x); })
+        .column("y", [&](const Outlet& o) { return coordinate(result.system, result.grid.centre(o.point.cell).y); })
         .column("moved_" + scale.length_unit(), [=](const Outlet& o) { return five_digits(scale.length(in_metres(o.point.moved))); })
         .column("next_point", [&](const Outlet& o) { return o.next == 0 ? "" : result.outlets[o.next - 1].point.name; });
 }
@@ -44,8 +44,8 @@ void add_path_columns(const StudyResult& result, const ReportScale& scale, Table
     const std::string m = scale.length_unit();
     table.column("governing_length_" + m, [=](const Outlet& o) { return five_digits(scale.length(from_fixed(o.governing.summary.length))); })
         .column("governing_fall_" + m, [=](const Outlet& o) { return five_digits(scale.length(o.governing.summary.fall_m)); })
-        .column("governing_head_x", [&](const Outlet& o) { return coordinate(result.grid.centre(o.governing.cells.front()).x); })
-        .column("governing_head_y", [&](const Outlet& o) { return coordinate(result.grid.centre(o.governing.cells.front()).y); })
+        .column("governing_head_x", [&](const Outlet& o) { return coordinate(result.system, result.grid.centre(o.governing.cells.front()).x); })
+        .column("governing_head_y", [&](const Outlet& o) { return coordinate(result.system, result.grid.centre(o.governing.cells.front()).y); })
         .column("longest_length_" + m, [=](const Outlet& o) { return five_digits(scale.length(from_fixed(o.longest.summary.length))); })
         .column("longest_time_min", [](const Outlet& o) { return in_minutes_text(o.longest.seconds); });
 }

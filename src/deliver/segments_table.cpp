@@ -46,7 +46,7 @@ void add_formula_columns(const StudyResult& result, const ReportScale& scale, Ta
             return r.segment->regime == Regime::channel ? five_digits(result.rules.channel.n) : std::string();
         })
         .column("k_" + scale.speed_unit(), only_in(Regime::shallow, [&result, scale](const SegmentRow& r) {
-            return scale.speed(in_metres_per_second(result.terrain.surface.classes[*r.segment->surface].shallow_k));
+            return scale.speed(in_metres_per_second(result.surface_classes[*r.segment->surface].shallow_k));
         }))
         .column("slope_equivalent", [](const SegmentRow& r) {
             return r.segment->slope_equivalent > 0 ? five_digits(r.segment->slope_equivalent) : std::string();
@@ -95,10 +95,10 @@ void add_side_columns(const ReportScale& scale, Table& table) {
 }
 
 void add_place_columns(const StudyResult& result, Table& table) {
-    table.column("x_from", [&](const SegmentRow& r) { return coordinate(segment_places(result, r).front().x); })
-        .column("y_from", [&](const SegmentRow& r) { return coordinate(segment_places(result, r).front().y); })
-        .column("x_to", [&](const SegmentRow& r) { return coordinate(segment_places(result, r).back().x); })
-        .column("y_to", [&](const SegmentRow& r) { return coordinate(segment_places(result, r).back().y); });
+    table.column("x_from", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).front().x); })
+        .column("y_from", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).front().y); })
+        .column("x_to", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).back().x); })
+        .column("y_to", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).back().y); });
 }
 
 }  // namespace

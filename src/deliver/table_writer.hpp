@@ -8,6 +8,7 @@
 
 #include "rillclock/core/csv_text.hpp"
 #include "rillclock/core/number_text.hpp"
+#include "rillclock/io/reference_system.hpp"
 
 namespace rillclock {
 
@@ -38,7 +39,8 @@ private:
 
 /// Five significant digits; nothing where there is no number.
 inline std::string five_digits(double value) { return std::isfinite(value) ? significant(value, 5) : std::string(); }
-inline std::string coordinate(double value) { return fixed_decimals(value, 7); }
+/// To a hundredth of a metre in degrees, to a millimetre in lengths.
+inline std::string coordinate(const ReferenceSystem& system, double value) { return fixed_decimals(value, system.is_geographic() ? 7 : 3); }
 inline std::string yes_or_no(bool value) { return value ? "yes" : "no"; }
 
 }  // namespace rillclock

@@ -62,7 +62,7 @@ private:
         const Ground ground = ground_of(grid, terrain_->system);
         note(terrain_->notices);
         report_.facts.push_back("elevations: " + std::to_string(grid.rows) + " rows × " + std::to_string(grid.columns) +
-                                " columns in " + terrain_->system.name() + ", heights in " + terrain_->format.unit.name +
+                                " columns in " + terrain_->system.name() + ", vertical unit " + terrain_->format.unit.name +
                                 ", cells of " + significant(in_metres(ground.cell_side()), 4) + " m on the ground");
         const ResolvedStudy resolved = resolve(study_, facts_of(terrain_->format, ground));
         report_.facts.push_back("slopes: read over " + significant(in_metres(resolved.slope_window), 4) +

@@ -298,6 +298,14 @@ class Answer(Demo):
         effects = [notice["effect_min"] for notice in notices]
         self.assertEqual(effects, sorted(effects, reverse=True))
 
+    def test_places_are_printed_to_the_millimetre(self):
+        for name, columns in (("outlets", ("x", "y", "governing_head_x")), ("segments", ("x_from", "y_to")), ("review", ("x", "y"))):
+            rows = [row for row in table(self.result_folder / f"tables/{name}.csv") if row[columns[0]]]
+            self.assertTrue(rows)
+            for row in rows:
+                for column in columns:
+                    self.assertRegex(row[column], r"^\d+\.\d{3}$", name)
+
     def test_every_notice_is_a_sentence(self):
         for notice in self.result("town/result")["notices"]:
             self.assertRegex(notice["text"], r"^['A-Z].*[^.]\.$")

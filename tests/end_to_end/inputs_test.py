@@ -123,7 +123,7 @@ class Cover(CommandTest):
         codes = np.ones((40, 50), np.uint8)
         codes[:3, :4], codes[10, 10], codes[30:, 40:] = 77, 250, 0
         self.cover(values=codes, nodata=0)
-        sentence = self.refused_cover("cover.tif", "class 77 (12 cells)", "class 250 (1 cells)", "no cover at all (100 cells)",
+        sentence = self.refused_cover("cover.tif", "class 77 (12 cells)", "class 250 (1 cell)", "no cover at all (100 cells)",
                                       "--fallback-class")
         self.assertIn("fallback_class = ", sentence)
         self.done("run", "--elevation", "dem.tif", *WORDS, "--fallback-class", "2")
