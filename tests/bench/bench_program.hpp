@@ -17,8 +17,7 @@ namespace rillclock::bench {
 /// What the programs of this folder share: words of the command line in, lines "name TAB number" out.
 class Words {
 public:
-    Words(int count, char** words, const char* usage)
-        : words_(words, static_cast<std::size_t>(count)), usage_(usage) {}
+    Words(int count, char** words, const char* usage) : words_(words, static_cast<std::size_t>(count)), usage_(usage) {}
 
     [[nodiscard]] std::size_t count() const { return words_.size() - 1; }
     [[nodiscard]] std::string text(std::size_t position) const {

@@ -17,8 +17,10 @@ namespace rillclock::bench {
     return Ground::planar(metres(1), metres(1));
 }
 
-/// Directions complete, by the fastest way the library has: over tiles; in a library without it, over the whole raster on one thread.
-[[nodiscard]] inline Raster<FlowCode> engine_directions(const Raster<float>& elevations, const Ground& ground, const Executor& executor) {
+/// Directions complete, by the fastest way the library has: over tiles; in a library without it, over the whole raster
+/// on one thread.
+[[nodiscard]] inline Raster<FlowCode> engine_directions(const Raster<float>& elevations, const Ground& ground,
+                                                        const Executor& executor) {
 #if __has_include("rillclock/terrain/tiled_directions.hpp")
     return flow_codes(elevations, ground, TileGrid(elevations.rows(), elevations.columns()), executor);
 #else

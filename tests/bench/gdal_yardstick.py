@@ -3,7 +3,8 @@
     gdal_yardstick.py DEM COVER FOLDER-OF-RESULT-RASTERS SCRATCH-FOLDER
 
 Reads the inputs into memory, and writes each raster anew with the command's options, statistics and overviews, from an uncompressed
-copy that is made before the clock starts. Writes lines "name TAB seconds": read_seconds, translate_seconds, statistics_seconds, overviews_seconds.
+copy that is made before the clock starts. Writes lines "name TAB seconds": read_seconds, translate_seconds, statistics_seconds,
+overviews_seconds.
 """
 import os
 import pathlib

@@ -40,7 +40,9 @@ RasterDescription elevation_description(TerrainKind kind) {
 }
 
 RasterDescription cover_description() {
-    return {.stored = StoredType::uint8, .description = "land cover, invented", .nodata = 0.0,
+    return {.stored = StoredType::uint8,
+            .description = "land cover, invented",
+            .nodata = 0.0,
             .overviews = OverviewKind::nearest};
 }
 
@@ -57,7 +59,8 @@ void generate(const Words& words) {
                                     executor);
          }));
     tell("cover_seconds", seconds_of([&] {
-             write_generated<std::uint8_t>(folder / "cover.tif", grid, cover_description(), CoverGenerator(seed), executor);
+             write_generated<std::uint8_t>(folder / "cover.tif", grid, cover_description(), CoverGenerator(seed),
+                                           executor);
          }));
 }
 
@@ -66,5 +69,7 @@ void generate(const Words& words) {
 
 int main(int count, char** words) {
     using namespace rillclock::bench;
-    return guarded([&] { generate(Words(count, words, "generate_terrain fractal|quantised|integers ROWS COLUMNS FOLDER [SEED]")); });
+    return guarded([&] {
+        generate(Words(count, words, "generate_terrain fractal|quantised|integers ROWS COLUMNS FOLDER [SEED]"));
+    });
 }

@@ -10,7 +10,8 @@
 namespace rillclock::bench {
 namespace {
 
-/// Elevation and cell in one number that sorts by elevation, then by cell: half the memory of a pair, and one comparison.
+/// Elevation and cell in one number that sorts by elevation, then by cell: half the memory of a pair, and one
+/// comparison.
 using Entry = std::uint64_t;
 
 Entry entry_of(float z, Cell cell) {
@@ -21,7 +22,8 @@ Entry entry_of(float z, Cell cell) {
 
 class Flood {
 public:
-    /// The raster gets a margin of one cell that counts as flooded, so that no neighbour need be asked whether it is there.
+    /// The raster gets a margin of one cell that counts as flooded, so that no neighbour need be asked whether it is
+    /// there.
     explicit Flood(const Raster<float>& elevations)
         : rows_(elevations.rows()),
           columns_(elevations.columns()),
@@ -64,7 +66,8 @@ private:
     }
 
     void enter_neighbours(Cell cell) {
-        const std::array<std::int64_t, 8> steps = {-width_ - 1, -width_, -width_ + 1, -1, 1, width_ - 1, width_, width_ + 1};
+        const std::array<std::int64_t, 8> steps = {-width_ - 1, -width_,    -width_ + 1, -1,
+                                                   1,           width_ - 1, width_,      width_ + 1};
         const float water = level_[cell];
         for (const std::int64_t step : steps) {
             const auto beside = static_cast<Cell>(cell + step);

@@ -13,7 +13,8 @@ void measure(const Words& words) {
     Raster<float> filled;
     tell("seconds", least_seconds_of(words.number(2, 1), [&] { filled = heap_flooded(elevations); }));
     std::int64_t raised = 0;
-    for (std::size_t i = 0; i < filled.values().size(); ++i) raised += filled.values()[i] > elevations.values()[i] ? 1 : 0;
+    for (std::size_t i = 0; i < filled.values().size(); ++i)
+        raised += filled.values()[i] > elevations.values()[i] ? 1 : 0;
     tell("share_raised", static_cast<double>(raised) / static_cast<double>(filled.size()));
 }
 

@@ -1,6 +1,6 @@
-// The time that a run's reading and writing of rasters takes at all: reads the inputs and writes the rasters of a finished result
-// anew, from memory, with the options of the command, its statistics and its overviews; computes nothing. Straight to GDAL, so that
-// what the program's own reading and writing adds is seen as well.
+// The time that a run's reading and writing of rasters takes at all: reads the inputs and writes the rasters of a
+// finished result anew, from memory, with the options of the command, its statistics and its overviews; computes
+// nothing. Straight to GDAL, so that what the program's own reading and writing adds is seen as well.
 
 #include <fcntl.h>
 #include <gdal_priv.h>
@@ -47,7 +47,8 @@ Content content_of(const fs::path& path, bool keep) {
     for (int row = 0; row < content.rows; row += block_side) {
         const int rows = std::min(block_side, content.rows - row);
         std::byte* const to = content.bytes.data() + (keep ? content.row_bytes() * static_cast<std::size_t>(row) : 0U);
-        if (band.RasterIO(GF_Read, 0, row, content.columns, rows, to, content.columns, rows, content.type, 0, 0, nullptr) != CE_None) {
+        if (band.RasterIO(GF_Read, 0, row, content.columns, rows, to, content.columns, rows, content.type, 0, 0,
+                          nullptr) != CE_None) {
             throw std::runtime_error("cannot read " + path.string());
         }
     }
@@ -85,28 +86,38 @@ struct Statistics {
     void store_in(GDALRasterBand& band) const {
         const double n = std::max(1.0, total(count));
         const double mean = total(sum) / n;
-        band.SetStatistics(*std::min_element(least.begin(), least.end()), *std::max_element(greatest.begin(), greatest.end()), mean,
+        band.SetStatistics(*std::min_element(least.begin(), least.end()),
+                           *std::max_element(greatest.begin(), greatest.end()), mean,
                            std::sqrt(std::max(0.0, total(squares) / n - mean * mean)));
     }
 };
 
 void add_block(Statistics& statistics, GDALDataType type, const void* values, std::size_t size, double nodata) {
     switch (type) {
-        case GDT_Byte: return statistics.add(static_cast<const std::uint8_t*>(values), size, nodata);
-        case GDT_UInt16: return statistics.add(static_cast<const std::uint16_t*>(values), size, nodata);
-        case GDT_Int16: return statistics.add(static_cast<const std::int16_t*>(values), size, nodata);
-        case GDT_UInt32: return statistics.add(static_cast<const std::uint32_t*>(values), size, nodata);
-        case GDT_Int32: return statistics.add(static_cast<const std::int32_t*>(values), size, nodata);
-        case GDT_Float32: return statistics.add(static_cast<const float*>(values), size, nodata);
-        case GDT_Float64: return statistics.add(static_cast<const double*>(values), size, nodata);
-        default: throw std::runtime_error("a result raster has a type that results do not have");
+        case GDT_Byte:
+            return statistics.add(static_cast<const std::uint8_t*>(values), size, nodata);
+        case GDT_UInt16:
+            return statistics.add(static_cast<const std::uint16_t*>(values), size, nodata);
+        case GDT_Int16:
+            return statistics.add(static_cast<const std::int16_t*>(values), size, nodata);
+        case GDT_UInt32:
+            return statistics.add(static_cast<const std::uint32_t*>(values), size, nodata);
+        case GDT_Int32:
+            return statistics.add(static_cast<const std::int32_t*>(values), size, nodata);
+        case GDT_Float32:
+            return statistics.add(static_cast<const float*>(values), size, nodata);
+        case GDT_Float64:
+            return statistics.add(static_cast<const double*>(values), size, nodata);
+        default:
+            throw std::runtime_error("a result raster has a type that results do not have");
     }
 }
 
 /// One raster of the result, to be written again.
 class Rewriting {
 public:
-    explicit Rewriting(const fs::path& path) : name_(path.filename()), content_(content_of(path, true)), model_(opened(path)) {}
+    explicit Rewriting(const fs::path& path)
+        : name_(path.filename()), content_(content_of(path, true)), model_(opened(path)) {}
 
     struct Seconds {
         double blocks = 0.0;
@@ -167,7 +178,8 @@ private:
                     add_block(statistics, content_.type, &block[static_cast<std::size_t>(row) * block_row],
                               static_cast<std::size_t>(columns), nodata);
                 }
-                if (band.WriteBlock(left / block_side, top / block_side, block.data()) != CE_None) throw std::runtime_error("cannot write");
+                if (band.WriteBlock(left / block_side, top / block_side, block.data()) != CE_None)
+                    throw std::runtime_error("cannot write");
             }
         }
         statistics.store_in(band);
@@ -177,8 +189,8 @@ private:
         for (int row = 0; row < rows; ++row) {
             const std::size_t from = static_cast<std::size_t>(top + row) * content_.row_bytes() +
                                      static_cast<std::size_t>(left) * content_.cell_bytes();
-            std::memcpy(&block[static_cast<std::size_t>(row) * content_.cell_bytes() * block_side], &content_.bytes[from],
-                        static_cast<std::size_t>(columns) * content_.cell_bytes());
+            std::memcpy(&block[static_cast<std::size_t>(row) * content_.cell_bytes() * block_side],
+                        &content_.bytes[from], static_cast<std::size_t>(columns) * content_.cell_bytes());
         }
     }
 
@@ -186,9 +198,10 @@ private:
         std::vector<int> levels;
         for (int i = 0; i < model_->GetRasterBand(1)->GetOverviewCount(); ++i) levels.push_back(2 << i);
         if (levels.empty()) return;
-        const bool is_amount = content_.type == GDT_Float32 || content_.type == GDT_Float64 || name_ == "spill_elevation.tif";
-        const CPLErr built = dataset.BuildOverviews(is_amount ? "AVERAGE" : "NEAREST", static_cast<int>(levels.size()), levels.data(), 0,
-                                                    nullptr, nullptr, nullptr);
+        const bool is_amount =
+            content_.type == GDT_Float32 || content_.type == GDT_Float64 || name_ == "spill_elevation.tif";
+        const CPLErr built = dataset.BuildOverviews(is_amount ? "AVERAGE" : "NEAREST", static_cast<int>(levels.size()),
+                                                    levels.data(), 0, nullptr, nullptr, nullptr);
         if (built != CE_None) throw std::runtime_error("cannot build overviews");
     }
 
@@ -245,5 +258,6 @@ void measure(const Words& words) {
 
 int main(int count, char** words) {
     using namespace rillclock::bench;
-    return guarded([&] { measure(Words(count, words, "io_floor DEM COVER FOLDER-OF-RESULT-RASTERS FOLDER-TO-WRITE-TO")); });
+    return guarded(
+        [&] { measure(Words(count, words, "io_floor DEM COVER FOLDER-OF-RESULT-RASTERS FOLDER-TO-WRITE-TO")); });
 }

@@ -1,5 +1,5 @@
-// How much a second thread gains where nothing but arithmetic is done: no memory, no branches, no waiting. What the machine cannot
-// give here, no program can.
+// How much a second thread gains where nothing but arithmetic is done: no memory, no branches, no waiting. What the
+// machine cannot give here, no program can.
 
 #include "bench/bench_program.hpp"
 

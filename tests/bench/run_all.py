@@ -2,6 +2,7 @@
 
     run_all.py BUILD-FOLDER DATA-FOLDER small|64|256
 """
+import importlib.metadata
 import os
 import pathlib
 import platform
@@ -138,13 +139,12 @@ def processor_name():
 
 
 def describe_machine(table, build):
-    import skimage
     memory = os.sysconf("SC_PAGE_SIZE") * os.sysconf("SC_PHYS_PAGES") / 2**30
     table.heading("Machine and versions")
     table.fact("processor", f"{processor_name()}, {len(os.sched_getaffinity(0))} threads, {memory:.0f} GiB")
     table.fact("system", f"{platform.system()} {platform.release()}; load when the run began {os.getloadavg()[0]:.1f}")
     table.fact("compiler", first_line("c++", "--version"))
-    table.fact("GDAL, scikit-image", f"{first_line('gdalinfo', '--version').split(',')[0]}, {skimage.__version__}")
+    table.fact("GDAL, scikit-image", f"{first_line('gdalinfo', '--version').split(',')[0]}, {importlib.metadata.version('scikit-image')}")
     table.fact("project", f"{first_line(build / 'rillclock', '--version')}, commit {first_line('git', 'describe', '--always', '--dirty')}")
 
 

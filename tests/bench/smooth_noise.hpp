@@ -6,8 +6,8 @@
 
 namespace rillclock::bench {
 
-/// A number without pattern for each place of an endless plane: the same arguments give the same number on every machine.
-/// The finaliser of MurmurHash3 (A. Appleby, 2011), fed with the coordinates one after the other.
+/// A number without pattern for each place of an endless plane: the same arguments give the same number on every
+/// machine. The finaliser of MurmurHash3 (A. Appleby, 2011), fed with the coordinates one after the other.
 [[nodiscard]] constexpr std::uint32_t scrambled(std::uint32_t salt, std::uint32_t row, std::uint32_t column) {
     std::uint32_t h = salt + row * 0x9e3779b1U;
     h = (h ^ (h >> 16U)) * 0x85ebca6bU + column * 0xc2b2ae3dU;
@@ -40,10 +40,10 @@ private:
 class FractalNoise {
 public:
     struct Shape {
-        unsigned finest = 2;       ///< log₂ of the spacing of the finest octave's knots
-        unsigned coarsest = 12;    ///< and of the coarsest
-        float relief = 1.0F;       ///< amplitude of the coarsest
-        float roughness = 0.5F;    ///< amplitude of an octave over that of the next coarser one
+        unsigned finest = 2;     ///< log₂ of the spacing of the finest octave's knots
+        unsigned coarsest = 12;  ///< and of the coarsest
+        float relief = 1.0F;     ///< amplitude of the coarsest
+        float roughness = 0.5F;  ///< amplitude of an octave over that of the next coarser one
     };
     FractalNoise(std::uint32_t seed, const Shape& shape);
 

@@ -1,5 +1,5 @@
-// Times the sweeps over tiles, on two threads, against plain walks over the whole raster that give the same numbers: one channel by
-// itself each way, and four in one pass, since channels share most of the work.
+// Times the sweeps over tiles, on two threads, against plain walks over the whole raster that give the same numbers:
+// one channel by itself each way, and four in one pass, since channels share most of the work.
 
 #include "bench/bench_program.hpp"
 #include "bench/engine_under_test.hpp"
@@ -79,14 +79,15 @@ void measure(const Words& words) {
     const std::int64_t side = words.number(1);
     const std::int64_t repeats = words.number(2, 1);
     const Executor executor(2);
-    const Raster<FlowCode> codes =
-        engine_directions(terrain_raster(TerrainGenerator(words.kind(0)), side, side, executor), bench_ground(), executor);
+    const Raster<FlowCode> codes = engine_directions(
+        terrain_raster(TerrainGenerator(words.kind(0)), side, side, executor), bench_ground(), executor);
     const Lengths lengths{bench_ground().length(0, Direction::east), bench_ground().length(0, Direction::south_east)};
 
     Values areas;
     Values distances;
     tell("plain_down_seconds", least_seconds_of(repeats, [&] { areas = plain_accumulation(codes); }));
-    tell("plain_up_seconds", least_seconds_of(repeats, [&] { distances = plain_distance(codes, lengths.straight, lengths.diagonal); }));
+    tell("plain_up_seconds",
+         least_seconds_of(repeats, [&] { distances = plain_distance(codes, lengths.straight, lengths.diagonal); }));
 
     const TileGrid tiles(side, side);
     tell("forest_seconds", least_seconds_of(repeats, [&] { (void)TiledForest(codes, tiles, executor); }));
@@ -97,13 +98,13 @@ void measure(const Words& words) {
              run_together(forest, executor, desks, sweep_down_into(a, forest, one_a_cell));
          }));
     expect_equal(a, areas, "contributing areas");
-    tell("sweep_up_seconds", least_seconds_of(repeats, [&] {
-             run_together(forest, executor, desks, sweep_up_into(b, forest, lengths));
-         }));
+    tell("sweep_up_seconds",
+         least_seconds_of(repeats, [&] { run_together(forest, executor, desks, sweep_up_into(b, forest, lengths)); }));
     expect_equal(b, distances, "distances");
     tell("sweep_four_seconds", least_seconds_of(repeats, [&] {
-             run_together(forest, executor, desks, sweep_down_into(a, forest, one_a_cell), sweep_up_into(b, forest, lengths),
-                          sweep_down_into(c, forest, one_a_cell), sweep_up_into(d, forest, lengths));
+             run_together(forest, executor, desks, sweep_down_into(a, forest, one_a_cell),
+                          sweep_up_into(b, forest, lengths), sweep_down_into(c, forest, one_a_cell),
+                          sweep_up_into(d, forest, lengths));
          }));
     expect_equal(c, areas, "contributing areas");
     expect_equal(d, distances, "distances");

@@ -12,9 +12,12 @@ constexpr float base_m = 500.0F;
 
 FractalNoise::Shape shape_of(TerrainKind kind) {
     switch (kind) {
-        case TerrainKind::fractal: return {.finest = 2, .coarsest = 12, .relief = 250.0F, .roughness = 0.48F};
-        case TerrainKind::quantised: return {.finest = 3, .coarsest = 12, .relief = 300.0F, .roughness = 0.48F};
-        case TerrainKind::integers: return {.finest = 3, .coarsest = 12, .relief = 350.0F, .roughness = 0.5F};
+        case TerrainKind::fractal:
+            return {.finest = 2, .coarsest = 12, .relief = 250.0F, .roughness = 0.48F};
+        case TerrainKind::quantised:
+            return {.finest = 3, .coarsest = 12, .relief = 300.0F, .roughness = 0.48F};
+        case TerrainKind::integers:
+            return {.finest = 3, .coarsest = 12, .relief = 350.0F, .roughness = 0.5F};
     }
     return {};
 }
@@ -57,15 +60,19 @@ void for_each_row(const Window& window, std::span<T> values, const Row& row) {
 
 std::string_view name_of(TerrainKind kind) {
     switch (kind) {
-        case TerrainKind::fractal: return "fractal";
-        case TerrainKind::quantised: return "quantised";
-        case TerrainKind::integers: return "integers";
+        case TerrainKind::fractal:
+            return "fractal";
+        case TerrainKind::quantised:
+            return "quantised";
+        case TerrainKind::integers:
+            return "integers";
     }
     return "";
 }
 
 std::optional<TerrainKind> terrain_kind(std::string_view name) {
-    const auto found = std::find_if(kinds.begin(), kinds.end(), [&](TerrainKind kind) { return name_of(kind) == name; });
+    const auto found =
+        std::find_if(kinds.begin(), kinds.end(), [&](TerrainKind kind) { return name_of(kind) == name; });
     return found == kinds.end() ? std::nullopt : std::optional(*found);
 }
 

@@ -22,8 +22,8 @@ enum class TerrainKind {
 
 /// An endless invented terrain of 1 m cells, elevations in metres between 100 and 1000.
 ///
-/// Promise: a cell's elevation follows from kind, seed, row and column alone, bit for bit on every machine; so rasters of any size
-/// can be made strip by strip, on any number of threads, and a small raster is the corner of a larger one.
+/// Promise: a cell's elevation follows from kind, seed, row and column alone, bit for bit on every machine; so rasters
+/// of any size can be made strip by strip, on any number of threads, and a small raster is the corner of a larger one.
 class TerrainGenerator {
 public:
     explicit TerrainGenerator(TerrainKind kind, std::uint32_t seed = 1);
@@ -57,7 +57,9 @@ template <class Generator, class T>
 void fill_on_threads(const Generator& generator, const Window& window, std::span<T> values, const Executor& executor) {
     const auto columns = static_cast<std::size_t>(window.columns);
     executor.for_each(static_cast<std::size_t>(window.rows), [&](std::size_t r) {
-        const Window row{.row = window.row + static_cast<std::int64_t>(r), .column = window.column, .rows = 1,
+        const Window row{.row = window.row + static_cast<std::int64_t>(r),
+                         .column = window.column,
+                         .rows = 1,
                          .columns = window.columns};
         generator.fill(row, values.subspan(r * columns, columns));
     });
