@@ -22,9 +22,12 @@ class SameGround(CommandTest):
         self.ground(**({"values": GROUND} | options))
         codes = np.ones(GROUND.shape, np.uint8)
         codes[10:20, 5:30], codes[25:, 20:] = 2, 3
-        self.cover(values=codes)
+        grid = {key: options[key] for key in ("cell", "corner", "epsg") if key in options}
+        self.cover(**({"values": codes} | grid))
         self.book()
-        write_points(self.folder / "points.geojson", [("upper", (500_041, 5_399_961)), ("lower", (500_047, 5_399_925))])
+        unit = grid.get("cell", 2.0) / 2.0
+        write_points(self.folder / "points.geojson", [(name, (x * unit, y * unit)) for name, x, y in
+                     (("upper", 500_041, 5_399_961), ("lower", 500_047, 5_399_925))], grid.get("epsg", 25832))
         (self.folder / "study.toml").write_text(SETTINGS + terrain + REST)
         self.done("run", "study.toml", "--out", folder)
         rasters = {}
@@ -59,6 +62,17 @@ class SameGround(CommandTest):
         np.testing.assert_allclose(metres[0]["travel_time"], feet[0]["travel_time"], rtol=1e-6)
         for one, other in zip(metres[1], feet[1]):
             self.assertAlmostEqual(one["time_of_concentration_s"] / other["time_of_concentration_s"], 1, delta=1e-9)
+
+    def test_a_grid_in_feet_and_one_in_metres_differ_by_rounding_only(self):
+        system = "+proj=tmerc +lat_0=0 +lon_0=9 +k=0.9996 +x_0=500000 +y_0=0 +ellps=GRS80 +units={unit} +type=crs"
+        for unit, metres_per_unit in (("ft", FOOT), ("us-ft", 1200 / 3937)):
+            metres = self.answer(f"metres-{unit}", epsg=system.format(unit="m"))
+            feet = self.answer(unit, epsg=system.format(unit=unit), cell=2 / metres_per_unit,
+                               corner=(500_000 / metres_per_unit, 5_400_000 / metres_per_unit))
+            for name in ("flow_azimuth", "catchment", "regime"):
+                np.testing.assert_array_equal(metres[0][name], feet[0][name], name)
+            for name in ("contributing_area", "travel_time"):
+                np.testing.assert_allclose(metres[0][name], feet[0][name], rtol=1e-6)
 
     def test_a_unit_in_the_study_stands_in_for_one_in_the_file(self):
         self.assert_same(self.answer("file", values=GROUND / FOOT, unit="ft"),

@@ -28,8 +28,9 @@ BOOK = """code,name,n_typical,shallow_type,water_depth_m,source
 
 
 def system_of(code):
+    """A reference system by its EPSG number or by a text that defines it."""
     system = osr.SpatialReference()
-    system.ImportFromEPSG(code)
+    system.SetFromUserInput(f"EPSG:{code}" if isinstance(code, int) else code)
     system.SetAxisMappingStrategy(osr.OAMS_TRADITIONAL_GIS_ORDER)
     return system
 
