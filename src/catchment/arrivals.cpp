@@ -11,15 +11,6 @@ namespace {
 
 bool exceeds_in_both(const StepTime& a, const StepTime& b) { return a.fixed >= b.fixed && a.storm >= b.storm; }
 
-/// The one to keep as the cell of greatest flow distance.
-Cell farther_of(const TravelField& field, Cell a, Cell b) {
-    if (a == no_cell || b == no_cell) return a == no_cell ? b : a;
-    const FixedLength da = field.flow_distance[a];
-    const FixedLength db = field.flow_distance[b];
-    if (da != db) return da > db ? a : b;
-    return std::min(a, b);
-}
-
 }  // namespace
 
 bool arrives_later(const Head& a, const Head& b, double storm_factor) {
@@ -51,22 +42,25 @@ Head Front::last_to_arrive(double storm_factor) const {
     });
 }
 
-void ArrivalBins::put(std::int64_t key, const Bin& bin, double storm_factor) {
-    const auto [at, is_new] = bins_.try_emplace(key, bin);
+void ArrivalBins::add(std::int64_t second, const Bin& bin, double storm_factor) {
+    const auto [at, is_new] = bins_.try_emplace(second, bin);
     if (is_new) return;
     at->second.area += bin.area;
     if (arrives_later(bin.last, at->second.last, storm_factor)) at->second.last = bin.last;
 }
 
+std::int64_t ArrivalBins::second_of(const StepTime& time, double storm_factor) {
+    return static_cast<std::int64_t>(std::floor(in_seconds(time.under(storm_factor))));
+}
+
 void ArrivalBins::add(const Head& head, FixedArea area, double storm_factor) {
-    const auto key = static_cast<std::int64_t>(std::floor(in_seconds(head.time.under(storm_factor))));
-    put(key, {area, head}, storm_factor);
+    add(second_of(head.time, storm_factor), {area, head}, storm_factor);
 }
 
 void ArrivalBins::take(ArrivalBins&& other, double storm_factor) {
     // The larger map stays where it is, so that a long chain of points costs little.
     if (other.bins_.size() > bins_.size()) std::swap(bins_, other.bins_);
-    for (const auto& [key, bin] : other.bins_) put(key, bin, storm_factor);
+    for (const auto& [second, bin] : other.bins_) add(second, bin, storm_factor);
 }
 
 FixedArea ArrivalBins::area() const {
@@ -95,30 +89,32 @@ Head ArrivalBins::last_without(double share) const {
     return bins_.begin()->second.last;
 }
 
-std::vector<Arrivals> arrivals_by_subarea(const ArrivalInputs& in) {
-    std::vector<Arrivals> subareas(in.tree.next.size());
-    const FlowForest& forest = in.travel.forest;
-    for (const Cell cell : forest.order()) {
-        const PointNumber owner = in.tree.owner[cell];
-        if (owner == 0) continue;
-        Arrivals& subarea = subareas[owner - 1];
-        const FixedArea area = in.travel.ground.cell_area(forest.row(cell));
-        const Head head{cell, in.field.time_to_root(cell)};
-        subarea.area += area;
-        subarea.border_cells += is_border(in.travel.elevations, {forest.row(cell), cell % forest.columns()}) ? 1 : 0;
-        subarea.farthest = farther_of(in.field, subarea.farthest, cell);
-        subarea.front.add(head);
-        subarea.bins.add(head, area, in.storm_factor);
-    }
-    return subareas;
+void Arrivals::add_farthest(Cell cell, FixedLength distance) {
+    const bool is_first = farthest == no_cell;
+    if (!is_first && (distance < farthest_distance || (distance == farthest_distance && cell > farthest))) return;
+    farthest = cell;
+    farthest_distance = distance;
 }
 
-void merge(Arrivals& into, Arrivals&& from, const ArrivalInputs& in) {
-    into.area += from.area;
-    into.border_cells += from.border_cells;
-    into.farthest = farther_of(in.field, into.farthest, from.farthest);
-    into.front.add(from.front);
-    into.bins.take(std::move(from.bins), in.storm_factor);
+void Arrivals::add_unbinned(const ArrivingCell& cell) {
+    area += cell.area;
+    border_cells += cell.is_border ? 1 : 0;
+    add_farthest(cell.head.cell, cell.flow_distance);
+    front.add(cell.head);
+}
+
+void Arrivals::add(const ArrivingCell& cell, double storm_factor) {
+    add_unbinned(cell);
+    bins.add(cell.head, cell.area, storm_factor);
+}
+
+void Arrivals::add(Arrivals&& other, double storm_factor) {
+    if (other.farthest == no_cell) return;
+    area += other.area;
+    border_cells += other.border_cells;
+    add_farthest(other.farthest, other.farthest_distance);
+    front.add(other.front);
+    bins.take(std::move(other.bins), storm_factor);
 }
 
 }  // namespace rillclock

@@ -17,54 +17,48 @@ std::string in_words(Place place) { return fixed_decimals(place.x, 3) + ", " + f
 std::string in_ha(FixedArea area) { return significant(from_fixed_area(area) / 1e4, 4) + " ha"; }
 
 /// Ground distance from a place to a cell's centre, with the lengths of the cell's row.
-double distance_m(const PointGround& on, Place place, RowColumn at) {
-    const Place centre = on.grid.centre(at);
-    const double columns = (place.x - centre.x) / on.grid.cell_width;
-    const double rows = (place.y - centre.y) / on.grid.cell_height;
-    return std::hypot(columns * from_fixed(on.ground.length(at.row, Direction::east)),
-                      rows * from_fixed(on.ground.length(at.row, Direction::south)));
+double distance_m(const Grid& grid, const Ground& ground, Place place, RowColumn at) {
+    const Place centre = grid.centre(at);
+    const double columns = (place.x - centre.x) / grid.cell_width;
+    const double rows = (place.y - centre.y) / grid.cell_height;
+    return std::hypot(columns * from_fixed(ground.length(at.row, Direction::east)),
+                      rows * from_fixed(ground.length(at.row, Direction::south)));
 }
 
 /// How many rows and columns around a cell can hold centres within a distance.
-RowColumn reach_of(const PointGround& on, std::int64_t row, double within_m) {
+RowColumn reach_of(const Ground& ground, std::int64_t row, double within_m) {
     const auto cells = [&](Direction d) {
-        return static_cast<std::int64_t>(std::ceil(within_m / from_fixed(on.ground.length(row, d)))) + 1;
+        return static_cast<std::int64_t>(std::ceil(within_m / from_fixed(ground.length(row, d)))) + 1;
     };
     return {cells(Direction::south), cells(Direction::east)};
 }
 
 struct Landing {
     Cell cell;
+    FixedArea area;
     double moved_m;
 };
 
 /// None where neither the point's own cell nor one within reach has data.
-std::optional<Landing> landing_of(const PointGround& on, Place place, double within_m) {
-    const RowColumn own = on.grid.at(place).value();
-    const RowColumn reach = reach_of(on, own.row, within_m);
+std::optional<Landing> landing_of(const PointGround& on, Place place, Length move_within) {
     std::optional<Landing> best;
-    for (std::int64_t row = own.row - reach.row; row <= own.row + reach.row; ++row) {
-        for (std::int64_t column = own.column - reach.column; column <= own.column + reach.column; ++column) {
-            if (!on.grid.contains({row, column})) continue;
-            const Cell cell = on.grid.cell({row, column});
-            const double distance = distance_m(on, place, {row, column});
-            const bool within = distance <= within_m || RowColumn{row, column} == own;
-            if (!within || on.forest.is_void(cell)) continue;
-            const FixedArea area = on.contributing_area[cell];
-            if (best && std::tuple(-area, distance) >= std::tuple(-on.contributing_area[best->cell], best->moved_m)) continue;
-            best = Landing{cell, distance};
-        }
+    for (const Cell cell : cells_near(place, on.grid, on.ground, move_within)) {
+        const auto area = on.area(cell);
+        if (!area) continue;
+        const double distance = distance_m(on.grid, on.ground, place, on.grid.row_column(cell));
+        if (best && std::tuple(-*area, distance) >= std::tuple(-best->area, best->moved_m)) continue;
+        best = Landing{cell, *area, distance};
     }
     return best;
 }
 
 class Placing {
 public:
-    Placing(const PointGround& on, Length move_within) : on_(on), within_m_(in_metres(move_within)) {}
+    Placing(const PointGround& on, Length move_within) : on_(on), move_within_(move_within) {}
 
     void place(const StatedPoint& stated) {
         if (!on_.grid.at(stated.place)) return leave_out(stated, "point-off-data", "lies off the elevation data");
-        const auto landing = landing_of(on_, stated.place, within_m_);
+        const auto landing = landing_of(on_, stated.place, move_within_);
         const Cell own = on_.grid.cell(*on_.grid.at(stated.place));
         if (!landing) return leave_out(stated, "point-on-void", "lies on ground without elevation data");
         const auto [taken, is_new] = taken_.try_emplace(landing->cell, stated.name);
@@ -89,29 +83,42 @@ private:
         result_.notices.push_back({.code = "point-moved",
                                    .text = "the point '" + stated.name + "' was moved " +
                                            significant(landing.moved_m, 3) + " m to the cell of largest contributing area " +
-                                           "within " + significant(within_m_, 3) + " m",
-                                   .point = stated.name, .value = landing.moved_m, .threshold = within_m_,
+                                           "within " + significant(in_metres(move_within_), 3) + " m",
+                                   .point = stated.name, .value = landing.moved_m, .threshold = in_metres(move_within_),
                                    .place = stated.place});
-        if (on_.forest.is_void(own)) return;
-        const FixedArea before = on_.contributing_area[own];
-        const FixedArea after = on_.contributing_area[landing.cell];
-        if (after < 10 * before) return;
+        const auto before = on_.area(own);
+        if (!before || landing.area < 10 * *before) return;
         result_.notices.push_back({.code = "point-moved-to-larger-stream",
-                                   .text = "moving the point '" + stated.name + "' changed its area from " + in_ha(before) +
-                                           " to " + in_ha(after) + "; check that it is meant to lie on the larger stream, " +
+                                   .text = "moving the point '" + stated.name + "' changed its area from " + in_ha(*before) +
+                                           " to " + in_ha(landing.area) + "; check that it is meant to lie on the larger stream, " +
                                            "or lower move_within",
                                    .point = stated.name,
-                                   .value = static_cast<double>(after) / static_cast<double>(before), .threshold = 10.0,
+                                   .value = static_cast<double>(landing.area) / static_cast<double>(*before), .threshold = 10.0,
                                    .place = stated.place});
     }
 
     const PointGround& on_;
-    double within_m_;
+    Length move_within_;
     std::unordered_map<Cell, std::string> taken_;
     PlacedPoints result_;
 };
 
 }  // namespace
+
+std::vector<Cell> cells_near(Place stated, const Grid& grid, const Ground& ground, Length move_within) {
+    std::vector<Cell> cells;
+    const auto own = grid.at(stated);
+    if (!own) return cells;
+    const RowColumn reach = reach_of(ground, own->row, in_metres(move_within));
+    for (std::int64_t row = own->row - reach.row; row <= own->row + reach.row; ++row) {
+        for (std::int64_t column = own->column - reach.column; column <= own->column + reach.column; ++column) {
+            if (!grid.contains({row, column})) continue;
+            const bool within = distance_m(grid, ground, stated, {row, column}) <= in_metres(move_within);
+            if (within || RowColumn{row, column} == *own) cells.push_back(grid.cell({row, column}));
+        }
+    }
+    return cells;
+}
 
 PlacedPoints place_points(std::span<const StatedPoint> stated, const PointGround& on, Length move_within) {
     Placing placing(on, move_within);
@@ -124,23 +131,18 @@ PlacedPoints place_points(std::span<const StatedPoint> stated, const PointGround
     return placed;
 }
 
-PlacedPoints find_points(const PointGround& on, double least_share) {
-    std::vector<Cell> roots;
+PlacedPoints find_points(std::vector<WayOut> ways_out, const Grid& grid, double least_share) {
     FixedArea whole = 0;
-    for (const Cell cell : on.forest.order()) {
-        if (!on.forest.is_root(cell)) continue;
-        roots.push_back(cell);
-        whole += on.contributing_area[cell];
-    }
-    std::sort(roots.begin(), roots.end(), [&](Cell a, Cell b) {
-        return std::tuple(-on.contributing_area[a], a) < std::tuple(-on.contributing_area[b], b);
+    for (const WayOut& way : ways_out) whole += way.area;
+    std::sort(ways_out.begin(), ways_out.end(), [](const WayOut& a, const WayOut& b) {
+        return std::tuple(-a.area, a.cell) < std::tuple(-b.area, b.cell);
     });
     PlacedPoints found;
-    for (const Cell root : roots) {
-        const bool large = static_cast<double>(on.contributing_area[root]) >= least_share * static_cast<double>(whole);
+    for (const WayOut& way : ways_out) {
+        const bool large = static_cast<double>(way.area) >= least_share * static_cast<double>(whole);
         if (!large && !found.points.empty()) break;
-        found.points.push_back({.name = "outlet " + std::to_string(found.points.size() + 1), .cell = root,
-                                .stated = on.grid.centre(root), .moved = metres(0), .found = true});
+        found.points.push_back({.name = "outlet " + std::to_string(found.points.size() + 1), .cell = way.cell,
+                                .stated = grid.centre(way.cell), .moved = metres(0), .found = true});
     }
     return found;
 }

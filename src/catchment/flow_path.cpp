@@ -28,23 +28,23 @@ PathPiece piece_of(const StepPart& part, std::size_t position, const StepView& s
 
 }  // namespace
 
-std::vector<Cell> flow_path(const FlowForest& forest, Cell head, Cell end) {
+std::vector<Cell> flow_path(const Raster<FlowCode>& codes, Cell head, Cell end) {
     std::vector<Cell> path{head};
     while (path.back() != end) {
-        const Cell down = forest.downstream(path.back());
-        if (down == no_cell) throw bug("a flow path misses the point it was asked for");
-        path.push_back(down);
+        const FlowCode code = codes[path.back()];
+        if (!is_direction(code)) throw bug("a flow path misses the point it was asked for");
+        const auto d = static_cast<Direction>(code);
+        path.push_back(static_cast<Cell>(static_cast<std::int64_t>(path.back()) + row_step(d) * codes.columns() + column_step(d)));
     }
     return path;
 }
 
-std::vector<PathPiece> path_pieces(const TravelInputs& in, const TravelField& field, const TravelRules& rules,
-                                   std::span<const Cell> path) {
+std::vector<PathPiece> path_pieces(const PathGround& ground, std::span<const PathCell> path) {
     std::vector<PathPiece> pieces;
     for (std::size_t position = 0; position + 1 < path.size(); ++position) {
-        const StepView step = step_view(in, field, path[position]);
-        const StepParts parts = step_parts(step, rules);
-        const std::uint8_t surface = in.surface.index[path[position]];
+        const StepView& step = path[position].step;
+        const StepParts parts = step_parts(step, ground.rules);
+        const std::uint8_t surface = path[position].surface;
         pieces.push_back(piece_of(parts.first, position, step, surface));
         if (parts.second.regime == Regime::none) continue;
         const double share = parts.first.length_m / from_fixed(step.length);
@@ -61,16 +61,15 @@ double PathSummary::fall_ratio() const {
 
 double PathSummary::share_of_length(double part_m) const { return length > 0 ? part_m / from_fixed(length) : 0.0; }
 
-PathSummary summary_of(const TravelInputs& in, const TravelField& field, const TravelRules& rules,
-                       std::span<const Cell> path) {
+PathSummary summary_of(const PathGround& ground, std::span<const PathCell> path) {
     PathSummary summary;
-    summary.length = field.flow_distance[path.front()] - field.flow_distance[path.back()];
-    summary.time = field.time_to_root(path.front()) - field.time_to_root(path.back());
-    summary.fall_m = (field.spill[path.front()] - field.spill[path.back()]) * in.metres_per_elevation_unit;
-    for (const PathPiece& piece : path_pieces(in, field, rules, path)) {
+    summary.length = path.front().flow_distance - path.back().flow_distance;
+    summary.time = path.front().time_to_root - path.back().time_to_root;
+    summary.fall_m = (path.front().spill - path.back().spill) * ground.metres_per_elevation_unit;
+    for (const PathPiece& piece : path_pieces(ground, path)) {
         summary.slope_length_m += piece.part.slope * piece.part.length_m;
         if (piece.part.ponded) summary.ponded_length_m += piece.part.length_m;
-        if (is_on_floor(piece, rules.slope)) summary.floor_length_m += piece.part.length_m;
+        if (is_on_floor(piece, ground.rules.slope)) summary.floor_length_m += piece.part.length_m;
     }
     return summary;
 }

@@ -5,80 +5,62 @@
 namespace rillclock {
 namespace {
 
-class Workshop {
-public:
-    Workshop(const ArrivalInputs& in, const TravelRules& rules, std::span<const DesignPoint> points, const OutletRules& by)
-        : in_(in), rules_(rules), points_(points), by_(by) {}
+PointHeads heads_at(const Arrivals& catchment, FixedArea own_area, double storm_factor, double ignore_tail) {
+    PointHeads heads;
+    heads.area = catchment.area;
+    heads.own_area = own_area;
+    heads.border_cells = catchment.border_cells;
+    for (std::size_t i = 0; i < told_shares.size(); ++i) heads.by_share[i] = catchment.bins.by_share(told_shares[i]);
+    heads.last = catchment.front.last_to_arrive(storm_factor);
+    heads.governing = ignore_tail > 0 ? catchment.bins.last_without(ignore_tail) : heads.last;
+    heads.farthest = catchment.farthest;
+    return heads;
+}
 
-    [[nodiscard]] Outlet outlet(PointNumber number, const Arrivals& catchment, FixedArea own_area) const {
-        Outlet made;
-        made.number = number;
-        made.point = points_[number - 1];
-        made.next = in_.tree.next_of(number);
-        made.area = catchment.area;
-        made.own_area = own_area;
-        made.border_cells = catchment.border_cells - border_cells_at(made.point.cell);
-        for (std::size_t i = 0; i < told_shares.size(); ++i) {
-            made.arrival_s[i] = seconds_to(made.point.cell, catchment.bins.by_share(told_shares[i]));
-        }
-        const Head last = catchment.front.last_to_arrive(in_.storm_factor);
-        made.greatest_s = seconds_to(made.point.cell, last);
-        const Head governing = by_.ignore_tail > 0 ? catchment.bins.last_without(by_.ignore_tail) : last;
-        made.governing = path(governing.cell, made.point.cell);
-        made.longest = path(catchment.farthest, made.point.cell);
-        return made;
-    }
-
-private:
-    [[nodiscard]] double seconds_to(Cell point, const Head& head) const {
-        return in_seconds((head.time - in_.field.time_to_root(point)).under(in_.storm_factor));
-    }
-
-    [[nodiscard]] PointPath path(Cell head, Cell end) const {
-        PointPath made;
-        made.cells = flow_path(in_.travel.forest, head, end);
-        made.pieces = path_pieces(in_.travel, in_.field, rules_, made.cells);
-        made.segments = segments_of(in_.travel, in_.field, rules_, made.cells, by_.segments);
-        made.summary = summary_of(in_.travel, in_.field, rules_, made.cells);
-        made.seconds = in_seconds(made.summary.time.under(in_.storm_factor));
-        for (const Segment& segment : made.segments) made.end_to_end_s += segment.end_to_end_s;
-        return made;
-    }
-
-    /// Border cells that are the point's own or drain straight into it: an outlet at the edge has some for certain.
-    [[nodiscard]] std::int64_t border_cells_at(Cell point) const {
-        const FlowForest& forest = in_.travel.forest;
-        const auto is_beside_edge = [&](Cell cell) {
-            return is_border(in_.travel.elevations, {forest.row(cell), cell % forest.columns()}) ? 1 : 0;
-        };
-        std::int64_t count = is_beside_edge(point);
-        forest.for_each_upstream(point, [&](Cell cell) { count += is_beside_edge(cell); });
-        return count;
-    }
-
-    const ArrivalInputs& in_;
-    const TravelRules& rules_;
-    std::span<const DesignPoint> points_;
-    const OutletRules& by_;
-};
+PointPath path_of(const PathCells& cells, const PathGround& ground, const SegmentRules& rules) {
+    PointPath path;
+    for (const PathCell& cell : cells) path.cells.push_back(cell.cell);
+    path.pieces = path_pieces(ground, cells);
+    path.segments = segments_of(ground, cells, rules);
+    path.summary = summary_of(ground, cells);
+    path.seconds = in_seconds(path.summary.time.under(rules.storm_factor));
+    for (const Segment& segment : path.segments) path.end_to_end_s += segment.end_to_end_s;
+    return path;
+}
 
 }  // namespace
 
-std::vector<Outlet> outlets_of(const ArrivalInputs& inputs, const TravelRules& rules, std::span<const DesignPoint> points,
-                               const OutletRules& outlet_rules) {
-    const Workshop workshop(inputs, rules, points, outlet_rules);
-    std::vector<Arrivals> arrivals = arrivals_by_subarea(inputs);
+std::vector<PointHeads> heads_of(std::vector<Arrivals> subareas, const PointTree& tree, double storm_factor,
+                                 double ignore_tail) {
     std::vector<FixedArea> own_areas;
-    for (const Arrivals& subarea : arrivals) own_areas.push_back(subarea.area);
-
-    std::vector<Outlet> outlets(points.size());
-    for (const PointNumber number : inputs.tree.upstream_first) {
-        Arrivals& catchment = arrivals[number - 1];  // by now with all that joins from above
-        outlets[number - 1] = workshop.outlet(number, catchment, own_areas[number - 1]);
-        const PointNumber next = inputs.tree.next_of(number);
-        if (next != 0) merge(arrivals[next - 1], std::move(catchment), inputs);
+    for (const Arrivals& subarea : subareas) own_areas.push_back(subarea.area);
+    std::vector<PointHeads> heads(subareas.size());
+    for (const PointNumber number : tree.upstream_first) {
+        Arrivals& catchment = subareas[number - 1];  // by now with all that joins from above
+        heads[number - 1] = heads_at(catchment, own_areas[number - 1], storm_factor, ignore_tail);
+        const PointNumber next = tree.next_of(number);
+        if (next != 0) subareas[next - 1].add(std::move(catchment), storm_factor);
     }
-    return outlets;
+    return heads;
+}
+
+Outlet outlet_of(const OutletParts& parts, const PathGround& ground, const OutletRules& rules) {
+    const StepTime at_point = parts.governing.back().time_to_root;
+    const auto seconds_of = [&](const Head& head) {
+        return in_seconds((head.time - at_point).under(rules.segments.storm_factor));
+    };
+    Outlet made;
+    made.number = parts.number;
+    made.point = parts.point;
+    made.next = parts.next;
+    made.area = parts.heads.area;
+    made.own_area = parts.heads.own_area;
+    made.border_cells = parts.heads.border_cells - parts.border_cells_at_point;
+    for (std::size_t i = 0; i < told_shares.size(); ++i) made.arrival_s[i] = seconds_of(parts.heads.by_share[i]);
+    made.greatest_s = seconds_of(parts.heads.last);
+    made.governing = path_of(parts.governing, ground, rules.segments);
+    made.longest = path_of(parts.longest, ground, rules.segments);
+    return made;
 }
 
 }  // namespace rillclock

@@ -1,20 +1,8 @@
 #include "rillclock/catchment/point_tree.hpp"
 
-#include "rillclock/forest/sweep.hpp"
+#include "rillclock/core/error.hpp"
 
 namespace rillclock {
-namespace {
-
-/// Numbers such that each stands before its next: as the forest's own order has their cells.
-std::vector<PointNumber> by_forest_order(const FlowForest& forest, const Raster<PointNumber>& label) {
-    std::vector<PointNumber> numbers;
-    for (const Cell cell : forest.order()) {
-        if (label[cell] != 0) numbers.push_back(label[cell]);
-    }
-    return numbers;
-}
-
-}  // namespace
 
 std::vector<PointNumber> PointTree::last_points() const {
     std::vector<PointNumber> last(next.size() + 1, 0);
@@ -24,18 +12,18 @@ std::vector<PointNumber> PointTree::last_points() const {
     return last;
 }
 
-PointTree point_tree(const FlowForest& forest, std::span<const DesignPoint> points) {
-    Raster<PointNumber> label(forest.rows(), forest.columns());
-    for (std::size_t i = 0; i < points.size(); ++i) label[points[i].cell] = static_cast<PointNumber>(i + 1);
-
-    PointTree tree;
-    auto [owner] = sweep_up(forest, up::First{[&](Cell cell) { return label[cell]; }});
-    tree.owner = std::move(owner);
-    for (const DesignPoint& point : points) {
-        const Cell below = forest.downstream(point.cell);
-        tree.next.push_back(below == no_cell ? 0 : tree.owner[below]);
+PointTree point_tree(std::vector<PointNumber> next) {
+    PointTree tree{.next = std::move(next), .upstream_first = {}};
+    std::vector<std::uint32_t> waiting(tree.next.size() + 1, 0);
+    for (const PointNumber below : tree.next) ++waiting[below];
+    for (PointNumber number = 1; number <= tree.next.size(); ++number) {
+        if (waiting[number] == 0) tree.upstream_first.push_back(number);
     }
-    tree.upstream_first = by_forest_order(forest, label);
+    for (std::size_t i = 0; i < tree.upstream_first.size(); ++i) {
+        const PointNumber below = tree.next_of(tree.upstream_first[i]);
+        if (below != 0 && --waiting[below] == 0) tree.upstream_first.push_back(below);
+    }
+    if (tree.upstream_first.size() != tree.next.size()) throw bug("the design points follow one another in a circle");
     return tree;
 }
 

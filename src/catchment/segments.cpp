@@ -68,11 +68,11 @@ void set_equivalents(const Sums& sums, double sheet_n, Segment& segment) {
 
 class Cutting {
 public:
-    Cutting(const TravelInputs& in, const TravelField& field, const TravelRules& rules, std::span<const Cell> path)
-        : in_(in), field_(field), rules_(rules), path_(path), pieces_(path_pieces(in, field, rules, path)) {}
+    Cutting(const PathGround& ground, std::span<const PathCell> path)
+        : ground_(ground), rules_(ground.rules), path_(path), pieces_(path_pieces(ground, path)) {}
 
     [[nodiscard]] std::vector<Segment> segments(const SegmentRules& by) const {
-        const double length = from_fixed(field_.flow_distance[path_.front()] - field_.flow_distance[path_.back()]);
+        const double length = from_fixed(path_.front().flow_distance - path_.back().flow_distance);
         std::vector<std::size_t> starts = segment_starts(pieces_, std::max(in_metres(by.shortest), by.shortest_share * length));
         starts.push_back(pieces_.size());
         std::vector<Segment> segments;
@@ -98,19 +98,19 @@ private:
     }
 
     [[nodiscard]] const SurfaceHydraulics& surface(const Segment& made) const {
-        return in_.surface.classes[pieces_[made.first_piece].surface];
+        return ground_.classes[pieces_[made.first_piece].surface];
     }
 
     /// Of spill elevation, from the beginning of one piece to the end of another. Made of differences alone, so that a constant
     /// added to the elevations changes no bit of it.
     [[nodiscard]] double fall_m(const PathPiece& from, const PathPiece& to) const {
-        const double between_cells = field_.spill[path_[from.position]] - field_.spill[path_[to.position]];
+        const double between_cells = path_[from.position].spill - path_[to.position].spill;
         const double fall = between_cells - from.share_from * step_fall(from.position) + to.share_to * step_fall(to.position);
-        return fall * in_.metres_per_elevation_unit;
+        return fall * ground_.metres_per_elevation_unit;
     }
 
     [[nodiscard]] double step_fall(std::size_t position) const {
-        return field_.spill[path_[position]] - field_.spill[path_[position + 1]];
+        return path_[position].spill - path_[position + 1].spill;
     }
 
     [[nodiscard]] double end_to_end_seconds(const Segment& made, double storm_factor) const {
@@ -140,18 +140,17 @@ private:
         return in_seconds(manning_time(metres(length), reach));
     }
 
-    const TravelInputs& in_;
-    const TravelField& field_;
+    const PathGround& ground_;
     const TravelRules& rules_;
-    std::span<const Cell> path_;
+    std::span<const PathCell> path_;
     std::vector<PathPiece> pieces_;
 };
 
 }  // namespace
 
-std::vector<Segment> segments_of(const TravelInputs& inputs, const TravelField& field, const TravelRules& rules,
-                                 std::span<const Cell> path, const SegmentRules& segment_rules) {
-    return Cutting(inputs, field, rules, path).segments(segment_rules);
+std::vector<Segment> segments_of(const PathGround& ground, std::span<const PathCell> path,
+                                 const SegmentRules& segment_rules) {
+    return Cutting(ground, path).segments(segment_rules);
 }
 
 }  // namespace rillclock

@@ -46,7 +46,7 @@ void add_formula_columns(const StudyResult& result, const ReportScale& scale, Ta
             return r.segment->regime == Regime::channel ? five_digits(result.rules.channel.n) : std::string();
         })
         .column("k_" + scale.speed_unit(), only_in(Regime::shallow, [&result, scale](const SegmentRow& r) {
-            return scale.speed(in_metres_per_second(result.terrain.surface.classes[*r.segment->surface].shallow_k));
+            return scale.speed(in_metres_per_second(result.surface_classes[*r.segment->surface].shallow_k));
         }))
         .column("slope_equivalent", [](const SegmentRow& r) {
             return r.segment->slope_equivalent > 0 ? five_digits(r.segment->slope_equivalent) : std::string();

@@ -31,7 +31,7 @@ std::optional<std::uint8_t> position_of(const CoverBook& book, std::int32_t code
 /// Turns class codes into positions in the book while counting them; what the book does not know goes to the fallback class.
 class Reading {
 public:
-    Reading(const Study& study, const CoverBook& book, const Elevations& elevations)
+    Reading(const Study& study, const CoverBook& book, const ElevationStore& elevations)
         : book_(book), elevations_(elevations) {
         for (const CoverClass& known : book.classes()) positions_[known.code] = *position_of(book, known.code);
         if (!study.surface.fallback_class) return;
@@ -78,7 +78,7 @@ public:
 
 private:
     const CoverBook& book_;
-    const Elevations& elevations_;
+    const ElevationStore& elevations_;
     std::map<std::int32_t, std::uint8_t> positions_;
     std::map<std::int32_t, std::int64_t> counts_;
     std::optional<std::uint8_t> fallback_;

@@ -14,16 +14,27 @@ constexpr std::int64_t strip_rows = 512;
 /// No ground is as steep between neighbouring cells.
 constexpr double impossible_slope = 20.0;
 
-Elevations read_all(BlockSource<double>& source, const Progress& progress) {
+/// Four bytes a cell hold every value of these types exactly.
+ElevationStore::Width width_of(StoredType type) {
+    const bool wide = type == StoredType::int32 || type == StoredType::uint32 || type == StoredType::float64;
+    return wide ? ElevationStore::Width::eight_bytes : ElevationStore::Width::four_bytes;
+}
+
+/// Reads all strips into the store; returns how many cells are void.
+std::int64_t read_all(BlockSource<double>& source, ElevationStore& store, const Progress& progress) {
     const Grid& grid = source.grid();
-    Elevations z(grid.rows, grid.columns);
+    std::vector<double> strip;
+    std::int64_t voids = 0;
     for (std::int64_t row = 0; row < grid.rows; row += strip_rows) {
         progress.tell({.stage = "reading elevations", .done = row * grid.columns, .total = grid.size()});
         const Window window{.row = row, .rows = std::min(strip_rows, grid.rows - row), .columns = grid.columns};
-        source.read(window, z.values().subspan(static_cast<std::size_t>(row * grid.columns), static_cast<std::size_t>(window.size())));
+        strip.resize(static_cast<std::size_t>(window.size()));
+        source.read(window, strip);
+        voids += std::count_if(strip.begin(), strip.end(), [](double z) { return std::isnan(z); });
+        store.write(window, strip);
     }
     progress.tell({.stage = "reading elevations", .done = grid.size(), .total = grid.size(), .finished = true});
-    return z;
+    return voids;
 }
 
 Notices relief_notices(const TerrainData& terrain) {
@@ -49,10 +60,10 @@ ElevationFile open_elevation_of(const Study& study) {
 TerrainData read_terrain(const Study& study, const Progress& progress) {
     ElevationFile file = open_elevation_of(study);
     TerrainData data{.grid = file.grid(), .system = file.system, .format = file.format,
-                     .ground = ground_of(file.grid(), file.system), .elevations = {}, .notices = file.notices};
-    data.elevations = read_all(*file.source, progress);
-    const auto values = data.elevations.values();
-    data.void_cells = std::count_if(values.begin(), values.end(), [](double z) { return std::isnan(z); });
+                     .ground = ground_of(file.grid(), file.system), 
+                     .elevations = ElevationStore(file.grid().rows, file.grid().columns, width_of(file.format.stored)),
+                     .notices = file.notices};
+    data.void_cells = read_all(*file.source, data.elevations, progress);
     if (data.void_cells == data.grid.size()) {
         throw input_error("the elevations in '" + study.terrain.elevation + "' hold no data: every cell is void; check the file's " +
                           "nodata value, for instance with gdalinfo -stats");

@@ -8,9 +8,11 @@
 #include "rillclock/deliver/study_result.hpp"
 #include "rillclock/io/elevation_file.hpp"
 #include "rillclock/raster/ground.hpp"
+#include "rillclock/terrain/elevation_store.hpp"
 #include "rillclock/study/study.hpp"
 #include "rillclock/surface/cover_book.hpp"
 #include "rillclock/travel/surface_table.hpp"
+#include "rillclock/travel/tiled_travel.hpp"
 #include "rillclock/travel/travel_rules.hpp"
 
 namespace rillclock {
@@ -21,7 +23,7 @@ struct TerrainData {
     ReferenceSystem system;
     ElevationFormat format;
     Ground ground;
-    Elevations elevations;
+    ElevationStore elevations;
     std::int64_t void_cells = 0;
     Notices notices;
 };
@@ -45,8 +47,8 @@ struct StatedPoints {
     Notices notices;
 };
 [[nodiscard]] StatedPoints read_stated_points(const Study& study, const ReferenceSystem& system);
-[[nodiscard]] PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const PointGround& on,
-                                         const ReferenceSystem& system);
+[[nodiscard]] PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const TiledTravel& travel,
+                                         const TerrainData& terrain);
 [[nodiscard]] DataFacts facts_of(const ElevationFormat& format, const Ground& ground);
 [[nodiscard]] TravelRules rules_of(const Study& study, const ResolvedStudy& resolved);
 [[nodiscard]] OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved);

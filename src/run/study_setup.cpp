@@ -2,6 +2,7 @@
 #include <filesystem>
 #include <limits>
 
+#include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/io/point_file.hpp"
 #include "rillclock/io/text_file.hpp"
 #include "study_data.hpp"
@@ -18,11 +19,25 @@ StatedPoints read_stated_points(const Study& study, const ReferenceSystem& syste
     return stated;
 }
 
-PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const PointGround& on,
-                           const ReferenceSystem& system) {
-    if (!study.points.file) return find_points(on, resolved.auto_area);
-    const StatedPoints stated = read_stated_points(study, system);
-    PlacedPoints placed = place_points(stated.points, on, resolved.move_within);
+PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const TiledTravel& travel,
+                           const TerrainData& terrain) {
+    if (!study.points.file) {
+        std::vector<WayOut> ways_out;
+        for (const RootArea& root : travel.roots()) ways_out.push_back({root.cell, root.area});
+        return find_points(std::move(ways_out), terrain.grid, resolved.auto_area);
+    }
+    const StatedPoints stated = read_stated_points(study, terrain.system);
+    std::vector<Cell> cells;
+    for (const StatedPoint& point : stated.points) {
+        const std::vector<Cell> near = cells_near(point.place, terrain.grid, terrain.ground, resolved.move_within);
+        cells.insert(cells.end(), near.begin(), near.end());
+    }
+    const auto areas = areas_at(travel, std::move(cells));
+    const auto area = [&](Cell cell) {
+        const auto found = areas.find(cell);
+        return found == areas.end() ? std::nullopt : std::optional(found->second);
+    };
+    PlacedPoints placed = place_points(stated.points, {.grid = terrain.grid, .ground = terrain.ground, .area = area}, resolved.move_within);
     placed.notices.insert(placed.notices.begin(), stated.notices.begin(), stated.notices.end());
     return placed;
 }

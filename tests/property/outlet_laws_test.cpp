@@ -72,7 +72,7 @@ TEST_CASE("times are finite and never fall on the way up, and roots share out th
             }
             REQUIRE(time.fixed >= w.land.field.fixed_part[below]);
             REQUIRE(time.storm >= w.land.field.storm_part[below]);
-            REQUIRE(std::isfinite(in_seconds(time.under(w.arrivals.storm_factor))));
+            REQUIRE(std::isfinite(in_seconds(time.under(w.storm_factor))));
         }
         CHECK(at_roots == static_cast<FixedArea>(w.land.forest.order().size()) * to_fixed_area(12));
     }
@@ -95,7 +95,7 @@ TEST_CASE("the front's last arrival is the greatest time over all cells, under a
     for (unsigned seed = 0; seed < 200; ++seed) {
         std::mt19937 random(seed);
         const Worked w(random_given(random, seed));
-        const std::vector<Arrivals> subareas = arrivals_by_subarea(w.arrivals);
+        const std::vector<Arrivals> subareas = reference::arrivals_by_subarea(w.land.inputs, w.land.field, w.tree, w.storm_factor);
         std::uniform_real_distribution<double> storm(0.0, 30.0);
         INFO("seed " << seed);
         for (int i = 0; i < 50; ++i) {
@@ -120,7 +120,7 @@ std::vector<double> arrival_times(const Worked& w, const Outlet& outlet) {
     for (const Cell cell : w.land.forest.order()) {
         if (through[cell] == 0.0) continue;
         const StepTime time = w.land.field.time_to_root(cell) - w.land.field.time_to_root(outlet.point.cell);
-        times.push_back(in_seconds(time.under(w.arrivals.storm_factor)));
+        times.push_back(in_seconds(time.under(w.storm_factor)));
     }
     std::sort(times.begin(), times.end());
     return times;
@@ -204,7 +204,7 @@ void require_sound(const Worked& w, const PointPath& path) {
         length_m += row.whole_length_m();
         fall_m += row.fall_m;
         if (!(row.length_m > 0)) continue;
-        const double formula_s = in_seconds((row.time - row.pond_time).under(w.arrivals.storm_factor));
+        const double formula_s = in_seconds((row.time - row.pond_time).under(w.storm_factor));
         // A row's pieces are each rounded to 2⁻²⁰ s: 1 ms for all of them, under a storm factor up to 5.
         REQUIRE(recomputed_s(w, row) == Approx(formula_s).epsilon(1e-4).margin(1e-3));
         if (row.regime == Regime::water) continue;

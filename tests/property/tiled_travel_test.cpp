@@ -76,7 +76,7 @@ TEST_CASE("the roots of a tiled forest are those of the plain one, with all that
     const TiledTravel tiled({.forest = forest, .ground = land.given.ground, .elevations = store, .surface = land.given.surface},
                             land.given.rules, executor);
     std::size_t roots = 0;
-    for (const Cell cell : land.forest.order()) roots += land.forest.is_root(cell) ? 1 : 0;
+    for (const Cell cell : land.forest.order()) roots += land.forest.is_root(cell) ? 1U : 0U;
     REQUIRE(tiled.roots().size() == roots);
     for (const RootArea& root : tiled.roots()) {
         CHECK(land.forest.is_root(root.cell));

@@ -4,6 +4,7 @@
 #include <utility>
 #include <vector>
 
+#include "reference/plain_catchment.hpp"
 #include "reference/worked_terrain.hpp"
 #include "rillclock/catchment/outlet.hpp"
 
@@ -26,39 +27,43 @@ public:
                .columns = land.forest.columns(),
                .top = static_cast<double>(land.forest.rows())},
           points(points_of(*this)),
-          tree(point_tree(land.forest, points)),
-          arrivals{.travel = land.inputs,
-                   .field = land.field,
-                   .tree = tree,
-                   .storm_factor = land.given.rules.sheet.storm_factor},
-          outlets(outlets_of(arrivals, land.given.rules, points, asked.rules)) {}
+          tree(reference::owned_tree(land.forest, points)),
+          storm_factor(land.given.rules.sheet.storm_factor),
+          outlets(reference::outlets_of(land.inputs, land.field, land.given.rules, points, asked.rules)) {}
     Worked(const Worked&) = delete;
     Worked& operator=(const Worked&) = delete;
     ~Worked() = default;
 
     [[nodiscard]] std::vector<PathPiece> pieces(const std::vector<Cell>& path) const {
-        return path_pieces(land.inputs, land.field, land.given.rules, path);
+        return path_pieces(ground(), cells(path));
     }
     [[nodiscard]] std::vector<Segment> segments(const std::vector<Cell>& path) const {
-        return segments_of(land.inputs, land.field, land.given.rules, path, asked.rules.segments);
+        return segments_of(ground(), cells(path), asked.rules.segments);
     }
     [[nodiscard]] PathSummary summary(const std::vector<Cell>& path) const {
-        return summary_of(land.inputs, land.field, land.given.rules, path);
+        return summary_of(ground(), cells(path));
     }
 
     const Land land;
     const Asked asked;
     const Grid grid;
     const std::vector<DesignPoint> points;
-    const PointTree tree;
-    const ArrivalInputs arrivals;
+    const reference::OwnedTree tree;
+    const double storm_factor;
     const std::vector<Outlet> outlets;
 
 private:
+    [[nodiscard]] PathGround ground() const {
+        return {.classes = land.given.surface.classes,
+                .metres_per_elevation_unit = land.given.metres_per_elevation_unit,
+                .rules = land.given.rules};
+    }
+    [[nodiscard]] PathCells cells(const std::vector<Cell>& path) const {
+        return reference::path_cells(land.inputs, land.field, path);
+    }
     static std::vector<DesignPoint> points_of(const Worked& w) {
         if (w.asked.points.empty()) {
-            const PointGround on{w.land.forest, w.land.given.ground, w.grid, w.land.field.contributing_area};
-            return find_points(on, 0.0).points;
+            return find_points(reference::ways_out(w.land.forest, w.land.field.contributing_area), w.grid, 0.0).points;
         }
         std::vector<DesignPoint> points;
         for (const Cell cell : w.asked.points) {

@@ -5,7 +5,7 @@
 #include <vector>
 
 #include "rillclock/catchment/point_tree.hpp"
-#include "rillclock/travel/travel_field.hpp"
+#include "rillclock/travel/step.hpp"
 
 namespace rillclock {
 
@@ -39,6 +39,8 @@ public:
         Head last;
     };
     void add(const Head& head, FixedArea area, double storm_factor);
+    /// Adds cells that were gathered elsewhere: all of one second of time to the root, `second`.
+    void add(std::int64_t second, const Bin& bin, double storm_factor);
     void take(ArrivalBins&& other, double storm_factor);
     [[nodiscard]] FixedArea area() const;
     /// The last cell of the least set of bins, earliest first, that holds at least `share` of the area: no later than a second
@@ -47,31 +49,38 @@ public:
     /// The last cell once the latest bins are left out that together hold no more than `share` of the area.
     [[nodiscard]] Head last_without(double share) const;
 
+    /// The bin of a time to the root.
+    [[nodiscard]] static std::int64_t second_of(const StepTime& time, double storm_factor);
+
 private:
-    void put(std::int64_t key, const Bin& bin, double storm_factor);
     std::map<std::int64_t, Bin> bins_;
 };
 
-/// What is known of a set of cells that drain through one point: its subarea, or its whole catchment.
+/// A cell as it counts among the arrivals of its subarea.
+struct ArrivingCell {
+    Head head;
+    FixedArea area = 0;               ///< of the cell alone
+    FixedLength flow_distance = 0;    ///< to the root
+    bool is_border = false;           ///< beside the edge of the data or a void
+};
+
+/// What is known of a set of cells that drain through one point: its subarea, or its whole catchment. What it comes to does not depend
+/// on the order in which cells and sets are added.
 struct Arrivals {
     FixedArea area = 0;
-    std::int64_t border_cells = 0;    ///< cells beside the edge of the data or a void
-    Cell farthest = no_cell;          ///< greatest flow distance
+    std::int64_t border_cells = 0;
+    Cell farthest = no_cell;                  ///< greatest flow distance; of equal ones the smaller cell
+    FixedLength farthest_distance = 0;        ///< to the root
     Front front;
     ArrivalBins bins;
+
+    void add(const ArrivingCell& cell, double storm_factor);
+    /// All but the bins of a cell.
+    void add_unbinned(const ArrivingCell& cell);
+    void add(Arrivals&& other, double storm_factor);
+
+private:
+    void add_farthest(Cell cell, FixedLength distance);
 };
-
-struct ArrivalInputs {
-    const TravelInputs& travel;
-    const TravelField& field;
-    const PointTree& tree;
-    double storm_factor = 1.0;
-};
-
-/// Gathers the arrivals of every subarea, by number − 1, in one pass over the cells.
-[[nodiscard]] std::vector<Arrivals> arrivals_by_subarea(const ArrivalInputs& inputs);
-
-/// Adds the arrivals of a subcatchment to those of the catchment below it.
-void merge(Arrivals& into, Arrivals&& from, const ArrivalInputs& inputs);
 
 }  // namespace rillclock

@@ -1,11 +1,12 @@
 #pragma once
 
+#include <functional>
+#include <optional>
 #include <span>
 #include <string>
 #include <vector>
 
 #include "rillclock/core/notice.hpp"
-#include "rillclock/forest/flow_forest.hpp"
 #include "rillclock/raster/ground.hpp"
 
 namespace rillclock {
@@ -30,12 +31,22 @@ struct PlacedPoints {
     Notices notices;
 };
 
+/// The ground that points are placed on.
 struct PointGround {
-    const FlowForest& forest;
-    const Ground& ground;
     const Grid& grid;
-    const Raster<FixedArea>& contributing_area;
+    const Ground& ground;
+    /// Contributing area of a cell; nothing where it is void. Asked only of cells that `cells_near` lists.
+    std::function<std::optional<FixedArea>(Cell)> area;
 };
+
+/// A way out of the data and all that drains to it.
+struct WayOut {
+    Cell cell = no_cell;
+    FixedArea area = 0;
+};
+
+/// The cells that a point may be moved to, its own included, by increasing index; none where it lies off the grid.
+[[nodiscard]] std::vector<Cell> cells_near(Place stated, const Grid& grid, const Ground& ground, Length move_within);
 
 /// Moves each point to the cell of largest contributing area among its own and those whose centres lie within `move_within` of it;
 /// of equal ones to the nearest, then to the smaller index.
@@ -45,7 +56,7 @@ struct PointGround {
 [[nodiscard]] PlacedPoints place_points(std::span<const StatedPoint> stated, const PointGround& on, Length move_within);
 
 /// Points where water leaves the data with at least `least_share` of the data's area upstream, the largest first; the
-/// single largest where none has as much.
-[[nodiscard]] PlacedPoints find_points(const PointGround& on, double least_share);
+/// single largest where none has as much. `ways_out` are all of the data's.
+[[nodiscard]] PlacedPoints find_points(std::vector<WayOut> ways_out, const Grid& grid, double least_share);
 
 }  // namespace rillclock

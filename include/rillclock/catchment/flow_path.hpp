@@ -3,12 +3,12 @@
 #include <span>
 #include <vector>
 
-#include "rillclock/travel/travel_field.hpp"
+#include "rillclock/catchment/path_cell.hpp"
 
 namespace rillclock {
 
 /// The cells from `head` down to `end`, both included. `head` must drain through `end`.
-[[nodiscard]] std::vector<Cell> flow_path(const FlowForest& forest, Cell head, Cell end);
+[[nodiscard]] std::vector<Cell> flow_path(const Raster<FlowCode>& codes, Cell head, Cell end);
 
 /// One homogeneous piece of a flow path: a part of the step out of one of its cells.
 struct PathPiece {
@@ -21,8 +21,7 @@ struct PathPiece {
 };
 
 /// The pieces of a path, in order; the last cell has no step and gives none.
-[[nodiscard]] std::vector<PathPiece> path_pieces(const TravelInputs& inputs, const TravelField& field,
-                                                 const TravelRules& rules, std::span<const Cell> path);
+[[nodiscard]] std::vector<PathPiece> path_pieces(const PathGround& ground, std::span<const PathCell> path);
 
 /// What stands for a whole path beside its segments.
 struct PathSummary {
@@ -38,7 +37,6 @@ struct PathSummary {
     [[nodiscard]] double share_of_length(double part_m) const;
 };
 
-[[nodiscard]] PathSummary summary_of(const TravelInputs& inputs, const TravelField& field, const TravelRules& rules,
-                                     std::span<const Cell> path);
+[[nodiscard]] PathSummary summary_of(const PathGround& ground, std::span<const PathCell> path);
 
 }  // namespace rillclock

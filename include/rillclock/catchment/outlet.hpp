@@ -43,8 +43,33 @@ struct OutletRules {
     SegmentRules segments;
 };
 
-/// Works out every point, in the order of their numbers. Cost: one pass over the cells, and the lengths of the paths.
-[[nodiscard]] std::vector<Outlet> outlets_of(const ArrivalInputs& inputs, const TravelRules& rules,
-                                             std::span<const DesignPoint> points, const OutletRules& outlet_rules);
+/// Of each point, what decides its times and paths, before any path is walked.
+struct PointHeads {
+    FixedArea area = 0;                                   ///< of the whole catchment
+    FixedArea own_area = 0;
+    std::int64_t border_cells = 0;                        ///< those at the point itself included
+    std::array<Head, told_shares.size()> by_share{};
+    Head last;                                            ///< to arrive
+    Head governing;                                       ///< the last once the tail is left out
+    Cell farthest = no_cell;
+};
+
+/// Joins the arrivals of subareas (by number − 1) down the tree of points.
+[[nodiscard]] std::vector<PointHeads> heads_of(std::vector<Arrivals> subareas, const PointTree& tree, double storm_factor,
+                                               double ignore_tail);
+
+/// What one point is worked out from.
+struct OutletParts {
+    PointNumber number = 0;
+    const DesignPoint& point;
+    PointNumber next = 0;
+    const PointHeads& heads;
+    std::int64_t border_cells_at_point = 0;   ///< border cells that are the point's own or drain straight into it
+    const PathCells& governing;               ///< from the governing head to the point's cell
+    const PathCells& longest;
+};
+
+/// Works out a point. Cost: the length of its paths.
+[[nodiscard]] Outlet outlet_of(const OutletParts& parts, const PathGround& ground, const OutletRules& rules);
 
 }  // namespace rillclock

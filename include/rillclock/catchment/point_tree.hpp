@@ -1,7 +1,6 @@
 #pragma once
 
 #include <cstdint>
-#include <span>
 #include <vector>
 
 #include "rillclock/catchment/design_points.hpp"
@@ -11,10 +10,9 @@ namespace rillclock {
 /// Number of a design point, from 1; 0 is none.
 using PointNumber = std::uint32_t;
 
-/// Which point's subarea each cell belongs to, and how the points follow one another downstream. Points are labels on the flow
-/// forest: one more changes nothing about the cells below it.
+/// How the design points follow one another downstream. Points are labels on the flow forest: one more changes nothing about the cells
+/// below it.
 struct PointTree {
-    Raster<PointNumber> owner;               ///< the nearest point on the way down, the cell's own included; 0 none
     std::vector<PointNumber> next;           ///< by number − 1: the next point below; 0 none
     std::vector<PointNumber> upstream_first; ///< all numbers, each before its next
 
@@ -23,6 +21,7 @@ struct PointTree {
     [[nodiscard]] std::vector<PointNumber> last_points() const;
 };
 
-[[nodiscard]] PointTree point_tree(const FlowForest& forest, std::span<const DesignPoint> points);
+/// The tree that the points' next ones make. Of points that may come in any order the smaller number comes first.
+[[nodiscard]] PointTree point_tree(std::vector<PointNumber> next);
 
 }  // namespace rillclock

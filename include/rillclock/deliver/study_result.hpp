@@ -1,5 +1,6 @@
 #pragma once
 
+#include <span>
 #include <string>
 #include <vector>
 
@@ -41,9 +42,7 @@ struct StudyResult {
     const ReferenceSystem& system;
     const ElevationFormat& format;
     const CoverBook& book;
-    const TravelInputs& terrain;
-    const TravelField& field;
-    const PointTree& tree;
+    std::span<const SurfaceHydraulics> surface_classes;
     const std::vector<Outlet>& outlets;
     const Notices& notices;            ///< by effect on the time, the greatest first
     const std::vector<InputFile>& inputs;

@@ -1,5 +1,6 @@
 #pragma once
 
+#include <cstdint>
 #include <filesystem>
 #include <string>
 #include <vector>
@@ -11,7 +12,9 @@
 namespace rillclock {
 
 struct RunOptions {
-    bool replace = false;   ///< whether a result that is already there may be replaced
+    bool replace = false;          ///< whether a result that is already there may be replaced
+    unsigned threads = 0;          ///< 0 for as many as may be used
+    std::int64_t tile_side = 256;  ///< in cells; no figure depends on it
 };
 
 /// What a finished run tells its caller; all of it, and more, is in the result folder.

@@ -1,7 +1,7 @@
 #pragma once
 
 #include "rillclock/raster/ground.hpp"
-#include "rillclock/terrain/descent.hpp"
+#include "rillclock/terrain/elevation_store.hpp"
 
 namespace rillclock {
 
@@ -13,6 +13,6 @@ struct SteepestPair {
 
 /// Finds the steepest drop between neighbouring cells: slopes that no ground has point at a wrong vertical unit, or at spikes.
 /// `metres_per_unit` belongs to the elevations.
-[[nodiscard]] SteepestPair steepest_pair(const Elevations& elevations, const Ground& ground, double metres_per_unit);
+[[nodiscard]] SteepestPair steepest_pair(const ElevationStore& elevations, const Ground& ground, double metres_per_unit);
 
 }  // namespace rillclock

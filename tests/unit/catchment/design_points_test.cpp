@@ -2,6 +2,7 @@
 
 #include <catch2/catch.hpp>
 
+#include "reference/plain_catchment.hpp"
 #include "rillclock/core/error.hpp"
 
 namespace rillclock {
@@ -19,12 +20,14 @@ struct Board {
         area[grid.cell(at)] = to_fixed_area(square_metres_upstream);
     }
     [[nodiscard]] PlacedPoints place(const std::vector<StatedPoint>& stated, double move_within_m) const {
-        const FlowForest forest(codes);
-        return place_points(stated, {forest, ground, grid, area}, metres(move_within_m));
+        const auto area_at = [this](Cell cell) {
+            return codes[cell] == flow_void ? std::nullopt : std::optional(area[cell]);
+        };
+        return place_points(stated, {.grid = grid, .ground = ground, .area = area_at}, metres(move_within_m));
     }
     [[nodiscard]] PlacedPoints find(double least_share) const {
         const FlowForest forest(codes);
-        return find_points({forest, ground, grid, area}, least_share);
+        return find_points(reference::ways_out(forest, area), grid, least_share);
     }
 };
 

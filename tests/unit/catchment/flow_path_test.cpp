@@ -24,12 +24,12 @@ worked::Given row_of(const Elevations& z, const TravelRules& rules) {
 
 TEST_CASE("a flow path holds its head and its end") {
     const FlowForest forest(worked::eastward(6));
-    CHECK(flow_path(forest, 1, 4) == std::vector<Cell>{1, 2, 3, 4});
-    CHECK(flow_path(forest, 4, 4) == std::vector<Cell>{4});
+    CHECK(flow_path(forest.codes(), 1, 4) == std::vector<Cell>{1, 2, 3, 4});
+    CHECK(flow_path(forest.codes(), 4, 4) == std::vector<Cell>{4});
 }
 
 TEST_CASE("a path asked for from a cell that does not drain through its end is a fault of ours") {
-    CHECK_THROWS_AS(flow_path(FlowForest(worked::eastward(6)), 3, 1), Error);
+    CHECK_THROWS_AS(flow_path(worked::eastward(6), 3, 1), Error);
 }
 
 TEST_CASE("a step in which sheet flow ends gives two pieces that share it") {

@@ -1,0 +1,26 @@
+#pragma once
+
+#include <optional>
+#include <span>
+#include <unordered_map>
+#include <vector>
+
+#include "rillclock/catchment/path_cell.hpp"
+#include "rillclock/catchment/point_tree.hpp"
+#include "rillclock/travel/tiled_travel.hpp"
+
+namespace rillclock {
+
+/// Single cells looked up in tiles that are made again for them, each tile once. Cost: a pass over the tiles that hold any of the cells.
+
+/// Contributing areas of cells; voids are left out. `cells` may repeat.
+[[nodiscard]] std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vector<Cell> cells);
+
+/// All about cells that paths run through. `cells` may repeat.
+[[nodiscard]] std::unordered_map<Cell, PathCell> path_cells_at(const TiledTravel& travel, std::vector<Cell> cells);
+
+/// The next point below each point (by number − 1).
+[[nodiscard]] std::vector<PointNumber> next_points(const TiledForest& forest, const TiledOwners& owners,
+                                                   std::span<const DesignPoint> points, const Executor& executor);
+
+}  // namespace rillclock

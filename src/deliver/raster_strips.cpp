@@ -1,0 +1,114 @@
+#include "rillclock/deliver/raster_strips.hpp"
+
+#include <future>
+
+#include "raster_descriptions.hpp"
+#include "rillclock/io/raster_output.hpp"
+
+namespace rillclock {
+
+/// The cells of some rows, one array a raster.
+struct RasterStrips::Strip {
+    std::vector<float> travel_time;
+    std::vector<std::uint16_t> flow_azimuth;
+    std::vector<double> contributing_area;
+    std::vector<std::uint32_t> catchment;
+    std::vector<std::uint8_t> regime;
+    std::vector<double> spill;
+
+    void resize(std::size_t size) {
+        travel_time.resize(size);
+        flow_azimuth.resize(size);
+        contributing_area.resize(size);
+        catchment.resize(size);
+        regime.resize(size);
+        spill.resize(size);
+    }
+};
+
+class RasterStrips::Files {
+public:
+    Files(const RasterStory& story, ResultFolder& folder)
+        : travel_time_(make<float>(story, folder, "travel_time.tif", travel_time_description(story))),
+          flow_azimuth_(make<std::uint16_t>(story, folder, "flow_azimuth.tif", flow_azimuth_description())),
+          contributing_area_(make<double>(story, folder, "contributing_area.tif", contributing_area_description())),
+          catchment_(make<std::uint32_t>(story, folder, "catchment.tif", catchment_description(story))),
+          regime_(make<std::uint8_t>(story, folder, "regime.tif", regime_description())),
+          spill_(make<double>(story, folder, "spill_elevation.tif", spill_elevation_description(story))) {}
+
+    void write_later(const Window& window, Strip& strip) {
+        wait();
+        strip_on_its_way_ = std::async(std::launch::async, [this, window, &strip] { write(window, strip); });
+    }
+    void wait() {
+        if (strip_on_its_way_.valid()) strip_on_its_way_.get();
+    }
+    void close() {
+        wait();
+        travel_time_->close();
+        flow_azimuth_->close();
+        contributing_area_->close();
+        catchment_->close();
+        regime_->close();
+        spill_->close();
+    }
+
+private:
+    template <class T>
+    static std::unique_ptr<BlockSink<T>> make(const RasterStory& story, ResultFolder& folder, const char* name,
+                                              const RasterDescription& description) {
+        return create_raster<T>(folder.path(std::string("rasters/") + name), story.grid, story.system, description);
+    }
+
+    void write(const Window& window, const Strip& strip) {
+        const auto size = static_cast<std::size_t>(window.size());
+        travel_time_->write(window, std::span(strip.travel_time).first(size));
+        flow_azimuth_->write(window, std::span(strip.flow_azimuth).first(size));
+        contributing_area_->write(window, std::span(strip.contributing_area).first(size));
+        catchment_->write(window, std::span(strip.catchment).first(size));
+        regime_->write(window, std::span(strip.regime).first(size));
+        spill_->write(window, std::span(strip.spill).first(size));
+    }
+
+    std::unique_ptr<BlockSink<float>> travel_time_;
+    std::unique_ptr<BlockSink<std::uint16_t>> flow_azimuth_;
+    std::unique_ptr<BlockSink<double>> contributing_area_;
+    std::unique_ptr<BlockSink<std::uint32_t>> catchment_;
+    std::unique_ptr<BlockSink<std::uint8_t>> regime_;
+    std::unique_ptr<BlockSink<double>> spill_;
+    std::future<void> strip_on_its_way_;
+};
+
+RasterStrips::RasterStrips(RasterStory story, const TiledTravel& travel, ResultFolder& folder)
+    : story_(std::move(story)), travel_(travel), files_(std::make_unique<Files>(story_, folder)),
+      filling_(std::make_unique<Strip>()), leaving_(std::make_unique<Strip>()) {
+    const auto size = static_cast<std::size_t>(travel.ground().forest.tiles().side() * story_.grid.columns);
+    filling_->resize(size);
+    leaving_->resize(size);
+}
+RasterStrips::~RasterStrips() = default;
+
+void RasterStrips::fill(const TileDesk& desk) {
+    const Window& window = desk.flow.window();
+    for (Local local = 0; local < desk.flow.size(); ++local) {
+        const auto at = static_cast<std::size_t>(local / window.columns * story_.grid.columns + window.column + local % window.columns);
+        const FlowCode code = desk.flow.code(local);
+        const bool is_void = code == flow_void;
+        filling_->flow_azimuth[at] = azimuth_value(code);
+        filling_->spill[at] = desk.spill[local];
+        filling_->contributing_area[at] = is_void ? no_value : from_fixed_area(desk.area[local]);
+        filling_->catchment[at] = is_void ? no_number : desk.owner[local];
+        filling_->regime[at] = is_void ? 0 : static_cast<std::uint8_t>(first_regime(travel_.step_view(desk, local), travel_.rules()));
+        const StepTime to_point = desk.time_to_root(local) - story_.last_point_times[desk.owner[local]];
+        filling_->travel_time[at] = static_cast<float>(is_void ? no_value : in_minutes(to_point.under(story_.storm_factor)));
+    }
+}
+
+void RasterStrips::write(std::int64_t row, std::int64_t rows) {
+    files_->write_later({.row = row, .rows = rows, .columns = story_.grid.columns}, *filling_);
+    std::swap(filling_, leaving_);
+}
+
+void RasterStrips::close() { files_->close(); }
+
+}  // namespace rillclock
