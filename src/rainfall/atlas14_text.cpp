@@ -89,7 +89,8 @@ public:
         const bool annual = is_annual();
         read_block(printed, block, annual);
         IntensityTable table = checked_table(printed);
-        return {.echo = echo_of(printed, table, block, annual), .law = std::move(table)};
+        RainEcho echo = echo_of(printed, table, block, annual);
+        return {.echo = std::move(echo), .law = std::move(table)};
     }
 
 private:

@@ -42,6 +42,7 @@ TEST_CASE("outside its ranges the gutter's flow is no number") {
 
 TEST_CASE("the average spread lies between both and is the spread where they are equal") {
     CHECK(average_gutter_spread(metres(2), metres(2)) == metres(2));
+    CHECK(average_gutter_spread(metres(0), metres(2)) == metres(1.3));
     for (const double upstream : {0.0, 0.5, 1.0, 1.9}) {
         const Length average = average_gutter_spread(metres(upstream), metres(2));
         CHECK(average > metres(upstream));

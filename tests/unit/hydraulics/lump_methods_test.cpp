@@ -119,6 +119,14 @@ TEST_CASE("low slopes are raised by the adjusted method alone") {
     CHECK_THAT(time_of("lump-kerby-kirpich-low-slope", valley()).why_not, Contains("above 0.003"));
 }
 
+TEST_CASE("the adjusted method raises the slope of the overland part too") {
+    CatchmentMeasures flat = valley();
+    flat.fall = feet(3 * 5280 * 0.001);
+    flat.overland_slope = 0.0015;
+    const double expected = (kerby(feet(200), 0.4, 0.002) + kirpich(miles(3) - feet(200), 0.0015)).si();
+    CHECK(time_of("lump-kerby-kirpich-low-slope", flat).time->si() == Approx(expected).epsilon(1e-12));
+}
+
 TEST_CASE("Giandotti is for great basins") {
     CatchmentMeasures basin;
     basin.area = square_kilometres(400);

@@ -28,6 +28,7 @@ TEST_CASE("formulas in any order give each period its own, and those between by 
     CHECK(at_ten_minutes(2) == Approx(60 * shape).epsilon(1e-14));
     CHECK(at_ten_minutes(10) == Approx(90 * shape).epsilon(1e-14));
     CHECK(at_ten_minutes(std::sqrt(20.0)) == Approx(75 * shape).epsilon(1e-12));
+    CHECK(at_ten_minutes(2 * std::pow(5.0, 0.25)) == Approx((60 + 0.25 * 30) * shape).epsilon(1e-12));
     CHECK_THROWS_WITH(rain.curve(25, seconds(0)), Contains("2, 10 years"));
 }
 

@@ -43,6 +43,12 @@ TEST_CASE("between return periods the intensity is straight in the logarithm of 
     CHECK(in_inches_per_hour(curve(table, middle).at(hours(1))) == Approx((1.5 + 2.3) / 2).epsilon(1e-12));
 }
 
+TEST_CASE("nearer to one return period the intensity is nearer to that one's") {
+    // A quarter of the way from 2 to 10 years in logarithms.
+    const double quarter = 2 * std::pow(5.0, 0.25);
+    CHECK(in_inches_per_hour(curve(table, quarter).at(hours(1))) == Approx(1.5 + 0.25 * (2.3 - 1.5)).epsilon(1e-12));
+}
+
 TEST_CASE("shorter than the first duration the first is read, and the least time is never undercut") {
     CHECK(curve(table, 2).at(seconds(0)) == inches_per_hour(4.8));
     const RainCurve with_least = rain_from_table(table, "rain.csv").curve(2, hours(1));
@@ -77,6 +83,8 @@ TEST_CASE("the 2-year 24-hour depth is taken where the table reaches it") {
     CHECK(in_inches(*rain_from_table(table, "rain.csv").two_year_24_hour()) == Approx(3.6).epsilon(1e-12));
     const std::string short_table = "duration_min,intensity_2yr_in_h\n5,4.8\n60,1.5\n";
     CHECK_FALSE(rain_from_table(short_table, "rain.csv").two_year_24_hour());
+    const std::string long_table = "duration_h,intensity_2yr_in_h\n48,0.1\n96,0.06\n";
+    CHECK_FALSE(rain_from_table(long_table, "rain.csv").two_year_24_hour());
     const std::string rare_table = "duration_h,intensity_10yr_in_h\n1,4.8\n24,1.5\n";
     CHECK_FALSE(rain_from_table(rare_table, "rain.csv").two_year_24_hour());
 }
@@ -136,6 +144,11 @@ TEST_CASE("a depth that falls with duration is refused, but not by what three di
                       Contains("rain.csv, line 4") && Contains("falls below that of 60 min"));
     const std::string rounded = "duration_h,intensity_2yr_in_h\n1,1.005\n2,0.50\n";
     CHECK(rain_from_table(rounded, "rain.csv").curve(2, seconds(0)).at(hours(2)) == inches_per_hour(0.5));
+}
+
+TEST_CASE("depths have no such excuse") {
+    CHECK_THROWS_WITH(rain_from_table("duration_h,depth_2yr_in\n1,1.005\n2,1.00\n", "rain.csv"),
+                      Contains("rain.csv, line 3") && Contains("falls below that of 1 h"));
 }
 
 }  // namespace
