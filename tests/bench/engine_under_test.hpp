@@ -3,12 +3,7 @@
 #include "bench/terrain_generator.hpp"
 #include "rillclock/forest/flow_forest.hpp"
 #include "rillclock/raster/ground.hpp"
-
-#if __has_include("rillclock/terrain/tiled_directions.hpp")
 #include "rillclock/terrain/tiled_directions.hpp"
-#else
-#include "rillclock/terrain/flow_directions.hpp"
-#endif
 
 namespace rillclock::bench {
 
@@ -17,18 +12,10 @@ namespace rillclock::bench {
     return Ground::planar(metres(1), metres(1));
 }
 
-/// Directions complete, by the fastest way the library has: over tiles; in a library without it, over the whole raster
-/// on one thread.
+/// Directions complete, as a run of the command finds them: over tiles of the usual side.
 [[nodiscard]] inline Raster<FlowCode> engine_directions(const Raster<float>& elevations, const Ground& ground,
                                                         const Executor& executor) {
-#if __has_include("rillclock/terrain/tiled_directions.hpp")
     return flow_codes(elevations, ground, TileGrid(elevations.rows(), elevations.columns()), executor);
-#else
-    (void)executor;
-    Elevations wide(elevations.rows(), elevations.columns());
-    std::copy(elevations.values().begin(), elevations.values().end(), wide.values().begin());
-    return flow_forest_of(wide, ground).codes();
-#endif
 }
 
 }  // namespace rillclock::bench
