@@ -23,7 +23,7 @@ PointPath path_of(const PathCells& cells, const PathGround& ground, const Segmen
     path.pieces = path_pieces(ground, cells);
     path.segments = segments_of(ground, cells, rules);
     path.summary = summary_of(ground, cells);
-    path.seconds = in_seconds(path.summary.time.under(rules.storm_factor));
+    path.seconds = in_seconds(path.summary.time.under(ground.storm_factor));
     for (const Segment& segment : path.segments) path.end_to_end_s += segment.end_to_end_s;
     return path;
 }
@@ -47,7 +47,7 @@ std::vector<PointHeads> heads_of(std::vector<Arrivals> subareas, const PointTree
 Outlet outlet_of(const OutletParts& parts, const PathGround& ground, const OutletRules& rules) {
     const StepTime at_point = parts.governing.back().time_to_root;
     const auto seconds_of = [&](const Head& head) {
-        return in_seconds((head.time - at_point).under(rules.segments.storm_factor));
+        return in_seconds((head.time - at_point).under(ground.storm_factor));
     };
     Outlet made;
     made.number = parts.number;

@@ -76,12 +76,12 @@ public:
         std::vector<std::size_t> starts = segment_starts(pieces_, std::max(in_metres(by.shortest), by.shortest_share * length));
         starts.push_back(pieces_.size());
         std::vector<Segment> segments;
-        for (std::size_t i = 0; i + 1 < starts.size(); ++i) segments.push_back(segment(starts[i], starts[i + 1], by));
+        for (std::size_t i = 0; i + 1 < starts.size(); ++i) segments.push_back(segment(starts[i], starts[i + 1]));
         return segments;
     }
 
 private:
-    [[nodiscard]] Segment segment(std::size_t first, std::size_t end, const SegmentRules& by) const {
+    [[nodiscard]] Segment segment(std::size_t first, std::size_t end) const {
         Segment made;
         made.regime = pieces_[first].part.regime;
         if (made.regime != Regime::channel) made.surface = pieces_[first].surface;
@@ -93,7 +93,7 @@ private:
         Sums sums;
         for (std::size_t i = first; i < end; ++i) count(pieces_[i], sums, made);
         set_equivalents(sums, surface(made).sheet_n, made);
-        made.end_to_end_s = end_to_end_seconds(made, by.storm_factor);
+        made.end_to_end_s = end_to_end_seconds(made);
         return made;
     }
 
@@ -113,7 +113,7 @@ private:
         return path_[position].spill - path_[position + 1].spill;
     }
 
-    [[nodiscard]] double end_to_end_seconds(const Segment& made, double storm_factor) const {
+    [[nodiscard]] double end_to_end_seconds(const Segment& made) const {
         const bool overland = made.regime == Regime::sheet || made.regime == Regime::shallow;
         const double floor = std::max(overland ? rules_.slope.overland_floor : rules_.slope.channel_floor, least_slope);
         const double slope = std::max(made.end_to_end_slope(), floor);
@@ -121,7 +121,7 @@ private:
         switch (made.regime) {
             case Regime::sheet: {
                 const double index_to = made.index_from_m + surface(made).sheet_n * length / std::sqrt(slope);
-                return storm_factor *
+                return ground_.storm_factor *
                        in_seconds(rules_.sheet.formula.at_unit_storm(metres(made.index_from_m), metres(index_to)));
             }
             case Regime::shallow:

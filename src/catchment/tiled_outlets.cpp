@@ -45,7 +45,8 @@ std::vector<Outlet> outlets_of(const TiledTravel& travel, std::span<const Design
     const Raster<FlowCode>& codes = travel.ground().forest.codes();
     const PathGround ground{.classes = travel.ground().surface.classes,
                             .metres_per_elevation_unit = travel.ground().metres_per_elevation_unit,
-                            .rules = travel.rules()};
+                            .rules = travel.rules(),
+                            .storm_factor = travel.rules().sheet.storm_factor};
     const Found found = path_cells_at(travel, cells_of_all_paths(codes, points, heads));
     std::vector<Outlet> outlets(points.size());
     travel.executor().for_each(points.size(), [&](std::size_t i) {

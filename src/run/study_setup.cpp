@@ -67,8 +67,7 @@ OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved) {
     // Unless the study says otherwise a segment is no shorter than a fiftieth of its path, so that a sheet has tens of rows.
     const double share = study.timing.shortest_segment ? 0.0 : 0.02;
     return {.ignore_tail = study.timing.ignore_tail,
-            .segments = {.shortest = resolved.shortest_segment, .shortest_share = share,
-                         .storm_factor = nrcs_storm_factor(*study.rain.two_year_24_hour)}};
+            .segments = {.shortest = resolved.shortest_segment, .shortest_share = share}};
 }
 
 std::vector<InputFile> input_files(const Study& study) {

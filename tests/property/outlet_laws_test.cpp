@@ -221,7 +221,7 @@ TEST_CASE("rows add up to the point's time to the last unit, and each can be rec
         std::mt19937 random(seed);
         const Given given = random_given(random, seed);
         worked::Asked asked{.points = random_points(random, given, 5)};
-        asked.rules.segments = {.shortest = metres(20), .storm_factor = given.rules.sheet.storm_factor};
+        asked.rules.segments = {.shortest = metres(20)};
         const Worked w(given, asked);
         INFO("seed " << seed);
         for (const Outlet& outlet : w.outlets) {

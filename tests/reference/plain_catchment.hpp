@@ -61,7 +61,8 @@ inline std::vector<Outlet> outlets_of(const TravelInputs& in, const TravelField&
     const OwnedTree tree = owned_tree(in.forest, points);
     const double s = rules.sheet.storm_factor;
     const auto heads = heads_of(arrivals_by_subarea(in, field, tree, s), tree, s, outlet_rules.ignore_tail);
-    const PathGround ground{.classes = in.surface.classes, .metres_per_elevation_unit = in.metres_per_elevation_unit, .rules = rules};
+    const PathGround ground{.classes = in.surface.classes, .metres_per_elevation_unit = in.metres_per_elevation_unit,
+                            .rules = rules, .storm_factor = s};
     std::vector<Outlet> outlets;
     for (std::size_t i = 0; i < points.size(); ++i) {
         const Cell end = points[i].cell;

@@ -56,7 +56,8 @@ private:
     [[nodiscard]] PathGround ground() const {
         return {.classes = land.given.surface.classes,
                 .metres_per_elevation_unit = land.given.metres_per_elevation_unit,
-                .rules = land.given.rules};
+                .rules = land.given.rules,
+                .storm_factor = storm_factor};
     }
     [[nodiscard]] PathCells cells(const std::vector<Cell>& path) const {
         return reference::path_cells(land.inputs, land.field, path);

@@ -26,6 +26,7 @@ struct PathGround {
     std::span<const SurfaceHydraulics> classes;
     double metres_per_elevation_unit = 1.0;
     const TravelRules& rules;
+    double storm_factor = 1.0;   ///< of the storm that paths are timed under
 };
 
 }  // namespace rillclock

@@ -47,7 +47,6 @@ struct Segment {
 struct SegmentRules {
     Length shortest = metres(50);      ///< a run of one slope class shorter than this joins its neighbour
     double shortest_share = 0.0;       ///< of the path's length, where that is more
-    double storm_factor = 1.0;
 };
 
 /// Cuts a path where the regime changes, the surface class (not in channels), where u jumps in sheet flow, where a channel's area has
