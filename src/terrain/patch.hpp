@@ -52,6 +52,9 @@ public:
         const RowColumn at = row_column(p);
         return at.row >= 0 && at.row < rows() && at.column >= 0 && at.column < columns();
     }
+    [[nodiscard]] bool is_in_patch(RowColumn at) const {
+        return at.row >= -1 && at.row <= rows() && at.column >= -1 && at.column <= columns();
+    }
     /// What to add to a position for one step.
     [[nodiscard]] Position step(Direction d) const { return steps_[static_cast<std::size_t>(d)]; }
     [[nodiscard]] const std::array<Position, 8>& steps() const { return steps_; }

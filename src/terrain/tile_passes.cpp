@@ -2,7 +2,7 @@
 
 #include <algorithm>
 #include <bit>
-#include <cstdlib>
+#include <cstring>
 
 #include "tile_descent.hpp"
 #include "vectorised.hpp"
@@ -13,24 +13,14 @@ namespace {
 /// The four directions from a cell to neighbours with a greater index.
 constexpr std::array<Direction, 4> onward = {Direction::east, Direction::south_east, Direction::south, Direction::south_west};
 
-/// Whether a step in one direction and a step in another lead to neighbouring cells.
-constexpr bool touch(Direction a, Direction b) {
-    const int rows = row_step(a) - row_step(b);
-    const int columns = column_step(a) - column_step(b);
-    return rows >= -1 && rows <= 1 && columns >= -1 && columns <= 1;
+/// Whether the cell that lies in the way of `code` touches the neighbour in direction `d`; false for what is no direction.
+/// On the circle of directions these are the next but one about a straight neighbour, and the next about a diagonal one.
+template <Direction d>
+[[gnu::always_inline]] inline std::uint8_t touches(FlowCode code) {
+    constexpr auto reach = static_cast<std::uint8_t>(is_diagonal(d) ? 1 : 2);
+    const auto turned = static_cast<std::uint8_t>(static_cast<std::uint8_t>(code + 8 + reach - flow_code(d)) & 7);
+    return static_cast<std::uint8_t>(static_cast<std::uint8_t>(turned <= 2 * reach) & static_cast<std::uint8_t>(code < 8));
 }
-
-/// For each direction as a bit which others touch it.
-constexpr std::array<std::uint8_t, 8> touching = [] {
-    std::array<std::uint8_t, 8> masks{};
-    for (const Direction a : all_directions) {
-        for (const Direction b : all_directions) {
-            const unsigned bit = touch(a, b) ? 1U << static_cast<unsigned>(b) : 0U;
-            masks[static_cast<std::size_t>(a)] = static_cast<std::uint8_t>(masks[static_cast<std::size_t>(a)] | bit);
-        }
-    }
-    return masks;
-}();
 
 template <class Z>
 struct PassKey {
@@ -62,6 +52,9 @@ private:
     const Patch<Z>* z_;
 };
 
+/// What to add to a position for each code; nothing for what is no direction.
+using Steps = std::array<Position, 16>;
+
 /// A bit for each of the `onward` neighbours that is of another node.
 RILLCLOCK_VECTORISED
 void compare_row(const Node* here, const Node* below, std::uint8_t* __restrict differences, Position columns) {
@@ -70,6 +63,20 @@ void compare_row(const Node* here, const Node* below, std::uint8_t* __restrict d
         const Node bits = Node{here[i + 1] != own} | Node{below[i + 1] != own} << 1U | Node{below[i] != own} << 2U |
                           Node{(below - 1)[i] != own} << 3U;
         differences[i] = static_cast<std::uint8_t>(bits);
+    }
+}
+
+/// Leaves a bit only where the pass may be the lowest between its basins. `here` and `below` are the codes of cells that fall.
+RILLCLOCK_VECTORISED
+void drop_higher_passes(const FlowCode* here, const FlowCode* below, std::uint8_t* __restrict differences, Position columns) {
+    for (Position i = 0; i < columns; ++i) {
+        const FlowCode own = here[i];
+        const int east = touches<Direction::east>(own) | touches<Direction::west>(here[i + 1]);
+        const int south_east = touches<Direction::south_east>(own) | touches<Direction::north_west>(below[i + 1]);
+        const int south = touches<Direction::south>(own) | touches<Direction::north>(below[i]);
+        const int south_west = touches<Direction::south_west>(own) | touches<Direction::north_east>((below - 1)[i]);
+        const int higher = east | south_east << 1 | south << 2 | south_west << 3;
+        differences[i] = static_cast<std::uint8_t>(differences[i] & ~higher);
     }
 }
 
@@ -123,20 +130,60 @@ private:
     std::size_t count_ = 0;
 };
 
+/// Keeps the codes of cells whose next is lower, the others become undecided: `next` is what to add to a position for each code.
+template <class Z>
+[[gnu::always_inline]] inline void keep_falling(const Z* z, const FlowCode* codes, const Steps& next,
+                                                FlowCode* __restrict falling, Position first, Position last) {
+    for (Position p = first; p < last; ++p) {
+        falling[p] = z[p + next[codes[p] & 15U]] < z[p] ? codes[p] : flow_undecided;
+    }
+}
+RILLCLOCK_VECTORISED
+void keep_falling_codes(const float* z, const FlowCode* codes, const Steps& next, FlowCode* __restrict falling, Position first,
+                        Position last) {
+    keep_falling(z, codes, next, falling, first, last);
+}
+RILLCLOCK_VECTORISED
+void keep_falling_codes(const double* z, const FlowCode* codes, const Steps& next, FlowCode* __restrict falling, Position first,
+                        Position last) {
+    keep_falling(z, codes, next, falling, first, last);
+}
+
+/// Writes `desk.falling`. The halo may be level where the tile is not; of it only ways into the patch count, since others touch no
+/// cell of the tile.
+template <class Z>
+void find_falling(Desk<Z>& desk, bool level) {
+    desk.falling = desk.codes;
+    const PatchShape& shape = desk.z.shape();
+    Steps next{};
+    std::copy(shape.steps().begin(), shape.steps().end(), next.begin());
+    if (level) {
+        keep_falling_codes(desk.z.data(), desk.codes.data(), next, desk.falling.data(), shape.position(0, 0),
+                           shape.position(shape.rows() - 1, shape.columns()));
+    }
+    shape.for_each_halo([&](Position p) {
+        const FlowCode code = desk.codes[p];
+        const bool stays = is_direction(code) && shape.is_in_patch(neighbour(shape.row_column(p), static_cast<Direction>(code)));
+        const bool falls = stays && desk.z[p + next[code]] < desk.z[p];
+        desk.falling[p] = falls ? code : flow_undecided;
+    });
+}
+
 template <class Z>
 class CrossingFinder {
 public:
     using Edge = KeyedEdge<PassKey<Z>>;
 
-    CrossingFinder(const Desk<Z>& desk, std::vector<Edge>& edges) : desk_(desk), shape_(desk.z.shape()), edges_(edges) {}
+    CrossingFinder(const Desk<Z>& desk, std::vector<Edge>& edges) : desk_(desk), shape_(desk.z.shape()), less_(desk.z), edges_(edges) {}
 
     void find() {
         edges_.clear();
         const std::vector<bool> voids = rows_with_voids(desk_.z);
-        std::vector<std::uint8_t> differences(static_cast<std::size_t>(shape_.columns()));
+        const auto columns = static_cast<Position>(shape_.columns());
+        std::vector<std::uint8_t> differences(columns + 8U);
         for (std::int64_t row = 0; row < shape_.rows(); ++row) {
-            compare_row(desk_.numbers.at(row, 0), desk_.numbers.at(row + 1, 0), differences.data(),
-                        static_cast<Position>(shape_.columns()));
+            compare_row(desk_.numbers.at(row, 0), desk_.numbers.at(row + 1, 0), differences.data(), columns);
+            drop_higher_passes(desk_.falling.at(row, 0), desk_.falling.at(row + 1, 0), differences.data(), columns);
             cross_from_row(shape_.position(row, 0), differences);
             const auto r = static_cast<std::size_t>(row);
             if (voids[r] || voids[r + 1] || voids[r + 2]) leave_from_row(shape_.position(row, 0));
@@ -144,10 +191,15 @@ public:
     }
 
 private:
+    /// Most cells have no pass; eight at a time are passed over.
     void cross_from_row(Position first, const std::vector<std::uint8_t>& differences) {
-        for (std::size_t i = 0; i < differences.size(); ++i) {
-            for (unsigned bits = differences[i]; bits != 0; bits &= bits - 1) {
-                cross(first + static_cast<Position>(i), onward[static_cast<std::size_t>(std::countr_zero(bits))]);
+        for (std::size_t i = 0; i + 8 <= differences.size(); i += 8) {
+            std::uint64_t eight = 0;
+            std::memcpy(&eight, &differences[i], sizeof eight);
+            for (; eight != 0; eight &= eight - 1) {
+                const auto place = static_cast<unsigned>(std::countr_zero(eight));
+                const unsigned byte = std::endian::native == std::endian::little ? place / 8 : 7 - place / 8;
+                cross(first + static_cast<Position>(i) + byte, onward[place % 8]);
             }
         }
     }
@@ -155,14 +207,20 @@ private:
         const Position beside = p + shape_.step(d);
         const Z own = desk_.z[p];
         const Z other = desk_.z[beside];
-        if (own != own || other != other || has_lower_pass(p, d) || has_lower_pass(beside, opposite(d))) return;
-        edges_.push_back({desk_.numbers[p], desk_.numbers[beside], {std::max(own, other), {p, flow_code(d)}}});
+        if (own != own || other != other) return;
+        keep({desk_.numbers[p], desk_.numbers[beside], {std::max(own, other), {p, flow_code(d)}}});
     }
-    /// Whether the cell below `p` is lower and touches the cell in direction `d`.
-    [[nodiscard]] bool has_lower_pass(Position p, Direction d) const {
-        const FlowCode code = desk_.codes[p];
-        if (!is_direction(code) || (unsigned{touching[static_cast<std::size_t>(d)]} >> code & 1U) == 0) return false;
-        return desk_.z[p + shape_.step(static_cast<Direction>(code))] < desk_.z[p];
+    /// Of passes between the same two nodes the lowest is enough. Which were met lately is remembered; one that was forgotten is
+    /// kept once more, which costs time alone.
+    void keep(const Edge& edge) {
+        std::uint32_t& met = lately_[((edge.a ^ edge.b) * 0x9E3779B1U + edge.a + edge.b) % lately_.size()];
+        const bool again = met < edges_.size() && std::minmax(edge.a, edge.b) == std::minmax(edges_[met].a, edges_[met].b);
+        if (!again) {
+            met = static_cast<std::uint32_t>(edges_.size());
+            edges_.push_back(edge);
+        } else if (less_(edge.key, edges_[met].key)) {
+            edges_[met] = edge;
+        }
     }
     /// Passes out of the data.
     void leave_from_row(Position first) {
@@ -170,13 +228,15 @@ private:
         for (Position p = first; p < last; ++p) {
             const Node own = desk_.numbers[p];
             const Z level = desk_.z[p];
-            if (own != 0 && level == level && !is_surrounded(desk_.z, p)) edges_.push_back({own, 0, {level, {p, flow_root}}});
+            if (own != 0 && level == level && !is_surrounded(desk_.z, p)) keep({own, 0, {level, {p, flow_root}}});
         }
     }
 
     const Desk<Z>& desk_;
     PatchShape shape_;
+    LiesLower<Z> less_;
     std::vector<Edge>& edges_;
+    std::array<std::uint32_t, 2048> lately_{};
 };
 
 /// Keeps the passes that the forest names, in a form that no longer needs the patch.
@@ -218,8 +278,9 @@ private:
 }  // namespace
 
 template <class Z>
-TilePasses find_tile_passes(Desk<Z>& desk, const TileBasins& basins, const std::vector<Node>& open,
+TilePasses find_tile_passes(Desk<Z>& desk, bool level, const TileBasins& basins, const std::vector<Node>& open,
                             const std::vector<Node>& around) {
+    find_falling(desk, level);
     const TileNodes<Z> nodes(desk, basins, open, around);
     std::vector<KeyedEdge<PassKey<Z>>> edges;
     CrossingFinder<Z>(desk, edges).find();
@@ -228,7 +289,7 @@ TilePasses find_tile_passes(Desk<Z>& desk, const TileBasins& basins, const std::
     return PassKeeper<Z>(desk, nodes, edges).keep(solver.solve());
 }
 
-template TilePasses find_tile_passes(Desk<float>&, const TileBasins&, const std::vector<Node>&, const std::vector<Node>&);
-template TilePasses find_tile_passes(Desk<double>&, const TileBasins&, const std::vector<Node>&, const std::vector<Node>&);
+template TilePasses find_tile_passes(Desk<float>&, bool, const TileBasins&, const std::vector<Node>&, const std::vector<Node>&);
+template TilePasses find_tile_passes(Desk<double>&, bool, const TileBasins&, const std::vector<Node>&, const std::vector<Node>&);
 
 }  // namespace rillclock

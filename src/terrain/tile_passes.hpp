@@ -28,13 +28,13 @@ struct TilePasses {
 
 /// Finds the passes of a tile and solves their spanning forest as far as that can be done here. Takes elevations and codes with their
 /// halo, and the ends of ways in `desk.numbers`; `open` are the basins of the rim ends, `around` those of the halo's cells in the
-/// order of `for_each_halo`, 0 where there is none.
+/// order of `for_each_halo`, 0 where there is none. Where not `level`, every direction in the tile falls.
 ///
 /// Passes and their order are those of passes.hpp. A pass between x and y is left out where the cell below x is lower than x and
 /// touches y, or the other way round: that cell and y are a lower pass between the same two basins.
 /// Cost: linear in the cells; O(p log b) in the pairs of cells across borders of basins.
 template <class Z>
-[[nodiscard]] TilePasses find_tile_passes(Desk<Z>& desk, const TileBasins& basins, const std::vector<Node>& open,
-                                          const std::vector<Node>& around);
+[[nodiscard]] TilePasses find_tile_passes(Desk<Z>& desk, bool level, const TileBasins& basins,
+                                          const std::vector<Node>& open, const std::vector<Node>& around);
 
 }  // namespace rillclock

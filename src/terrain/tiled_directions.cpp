@@ -45,7 +45,8 @@ std::vector<TileBasins> find_basins(TiledTerrain<Z>& terrain, const std::vector<
 
 /// Finds the passes of every tile, and which of them are certain.
 template <class Z>
-std::vector<TilePasses> find_passes(TiledTerrain<Z>& terrain, const std::vector<TileBasins>& basins, const RimBasins& joined) {
+std::vector<TilePasses> find_passes(TiledTerrain<Z>& terrain, const std::vector<char>& is_level,
+                                    const std::vector<TileBasins>& basins, const RimBasins& joined) {
     return terrain.template for_all_tiles<TilePasses>([&](Tile tile, Desk<Z>& desk) {
         terrain.load_elevations(desk, tile);
         terrain.load_codes(desk, tile);
@@ -57,7 +58,7 @@ std::vector<TilePasses> find_passes(TiledTerrain<Z>& terrain, const std::vector<
         shape.for_each_halo([&](Position p) {
             around.push_back(desk.codes[p] == flow_void ? 0 : basin_of(terrain.tiles, basins, joined, shape.cell(p)));
         });
-        return find_tile_passes(desk, basins[tile], open, around);
+        return find_tile_passes(desk, is_level[tile] != 0, basins[tile], open, around);
     });
 }
 
@@ -72,7 +73,7 @@ Raster<FlowCode> flow_codes(const Raster<Z>& elevations, const Ground& ground, c
 
     std::vector<TileBasins> basins = find_basins(terrain, is_level);
     const RimBasins joined = join_basins(tiles, basins);
-    std::vector<TilePasses> passes = find_passes(terrain, basins, joined);
+    std::vector<TilePasses> passes = find_passes(terrain, is_level, basins, joined);
     basins.clear();
 
     const auto leaving = solve_pass_tree(passes, joined.count);

@@ -39,12 +39,13 @@ private:
     std::unique_ptr<std::uint32_t[], Free> values_;
 };
 
-/// What one thread works a tile with: about 9 bytes a cell of the tile, meant to stay in the processor's own cache.
+/// What one thread works a tile with: about 15 bytes a cell of the tile, meant to stay in the processor's own cache.
 template <class Z>
 struct Desk {
     Patch<Z> z;
     Patch<FlowCode> codes;
     Patch<FlowCode> settled;  ///< codes as they will be, while those they follow from are still looked at
+    Patch<FlowCode> falling;  ///< codes of the cells whose next is lower
     Patch<std::uint32_t> numbers;
     std::vector<std::uint32_t> nodes_of_ends;
     std::vector<Position> queue;

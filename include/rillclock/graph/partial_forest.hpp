@@ -55,10 +55,10 @@ template <class Key, class Less>
 class PartialForestSolver {
 public:
     PartialForestSolver(std::span<const KeyedEdge<Key>> edges, std::size_t nodes, Node open_nodes, Less less)
-        : edges_(edges), open_nodes_(open_nodes), less_(less), sets_(nodes), lowest_(nodes, no_part_edge) {
+        : edges_(edges), open_nodes_(open_nodes), less_(less), sets_(nodes), lowest_(nodes) {
         forest_.towards_open.assign(nodes, no_part_edge);
         live_.reserve(edges.size());
-        for (PartEdge e = 0; e < edges.size(); ++e) live_.push_back({edges[e].a, edges[e].b, e});
+        for (PartEdge e = 0; e < edges.size(); ++e) live_.push_back({edges[e].a, edges[e].b, e, edges[e].key});
     }
 
     [[nodiscard]] PartialForest solve() {
@@ -75,6 +75,11 @@ private:
         Node a;  ///< the trees it joins at present
         Node b;
         PartEdge edge;
+        Key key;
+    };
+    struct Lowest {
+        LiveEdge edge = no_part_edge;
+        Key key{};
     };
 
     /// Every tree from `first_tree` on takes its lowest edge; true where there was one. A tree is named by its smallest node, so
@@ -84,7 +89,7 @@ private:
         find_lowest_edges(first_tree);
         bool any = false;
         for (Node tree = first_tree; tree < lowest_.size(); ++tree) {
-            const LiveEdge taken = std::exchange(lowest_[tree], no_part_edge);
+            const LiveEdge taken = std::exchange(lowest_[tree].edge, no_part_edge);
             if (taken == no_part_edge) continue;
             any = true;
             if (sets_.join(live_[taken].a, live_[taken].b)) take(tree, live_[taken]);
@@ -99,8 +104,9 @@ private:
             if (live_[i].b >= first_tree) lower(lowest_[live_[i].b], i);
         }
     }
-    void lower(LiveEdge& lowest, LiveEdge other) const {
-        if (lowest == no_part_edge || less_(edges_[live_[other].edge].key, edges_[live_[lowest].edge].key)) lowest = other;
+    void lower(Lowest& lowest, LiveEdge edge) const {
+        const Key& key = live_[edge].key;
+        if (lowest.edge == no_part_edge || less_(key, lowest.key)) lowest = {edge, key};
     }
 
     void drop_edges_within_trees() {
@@ -108,7 +114,7 @@ private:
         for (const Live& live : live_) {
             const Node a = sets_.find(live.a);
             const Node b = sets_.find(live.b);
-            if (a != b) live_[kept++] = {a, b, live.edge};
+            if (a != b) live_[kept++] = {a, b, live.edge, live.key};
         }
         live_.resize(kept);
     }
@@ -123,8 +129,8 @@ private:
     Node open_nodes_;
     Less less_;
     DisjointSets sets_;
-    std::vector<LiveEdge> lowest_;  ///< of each tree
-    std::vector<Live> live_;        ///< edges between different trees
+    std::vector<Lowest> lowest_;  ///< of each tree
+    std::vector<Live> live_;      ///< edges between different trees
     PartialForest forest_;
 };
 
