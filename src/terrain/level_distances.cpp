@@ -10,7 +10,8 @@ namespace {
 template <class Z>
 class Spread {
 public:
-    explicit Spread(Desk<Z>& desk) : desk_(desk), shape_(desk.z.shape()) { desk_.queue.clear(); }
+    /// Begins with the cells in the desk's queue.
+    explicit Spread(Desk<Z>& desk) : desk_(desk), shape_(desk.z.shape()) {}
 
     void run(std::span<const Arrival> arrivals) {
         std::size_t arrived = 0;
@@ -33,12 +34,12 @@ private:
         desk_.numbers[p] = distance;
         desk_.queue.push_back(p);
     }
-    /// The halo holds distance 0, which nothing lowers, so the spread stays within the tile.
+    /// The halo and what is not flat hold distance 0, which nothing lowers.
     void look_around(Position p) {
         const std::uint32_t distance = desk_.numbers[p] + 1;
         for (const Position step : shape_.steps()) {
             const Position beside = p + step;
-            if (is_flat(desk_.codes[beside]) && desk_.z[beside] == desk_.z[p]) lower(beside, distance);
+            if (desk_.numbers[beside] > distance && desk_.z[beside] == desk_.z[p]) lower(beside, distance);
         }
     }
 
@@ -55,7 +56,7 @@ std::vector<Arrival> offers(Desk<Z>& desk, std::span<const std::uint32_t> before
     std::size_t place = 0;
     shape.for_each_rim([&](Position p) {
         const std::uint32_t known = before[place++];
-        if (!is_flat(desk.codes[p]) || desk.numbers[p] >= known) return;
+        if (desk.numbers[p] >= known) return;
         for (const Position step : shape.steps()) {
             const Position beside = p + step;
             if (!is_flat(desk.codes[beside]) || desk.z[beside] != desk.z[p] || shape.is_in_tile(beside)) continue;
@@ -69,30 +70,46 @@ std::vector<Arrival> offers(Desk<Z>& desk, std::span<const std::uint32_t> before
     return letters;
 }
 
-}  // namespace
-
-template <class Z>
-std::vector<Arrival> spread(Desk<Z>& desk, std::vector<Arrival> arrivals, std::span<const std::uint32_t> before) {
-    std::sort(arrivals.begin(), arrivals.end(), [](const Arrival& a, const Arrival& b) { return a.distance < b.distance; });
-    Spread<Z>(desk).run(arrivals);
-    return offers(desk, before);
-}
-
-std::vector<std::uint32_t> rim_distances(const Patch<std::uint32_t>& distances) {
+std::vector<std::uint32_t> rim_of(const Patch<std::uint32_t>& distances) {
     std::vector<std::uint32_t> rim;
     distances.shape().for_each_rim([&](Position p) { rim.push_back(distances[p]); });
     return rim;
 }
 
-template <class Z>
-void forget_distances(Desk<Z>& desk) {
-    desk.numbers.resize(desk.z.shape(), 0);
-    for_each_flat(desk.codes, [&](Position p) { desk.numbers[p] = unreached; });
+void queue_ones(const Patch<std::uint32_t>& distances, std::vector<Position>& queue) {
+    const PatchShape& shape = distances.shape();
+    queue.clear();
+    for (std::int64_t row = 0; row < shape.rows(); ++row) {
+        const Position last = shape.position(row, shape.columns());
+        for (Position p = shape.position(row, 0); p < last; ++p) {
+            if (distances[p] == 1) queue.push_back(p);
+        }
+    }
 }
 
-template std::vector<Arrival> spread(Desk<float>&, std::vector<Arrival>, std::span<const std::uint32_t>);
-template std::vector<Arrival> spread(Desk<double>&, std::vector<Arrival>, std::span<const std::uint32_t>);
-template void forget_distances(Desk<float>&);
-template void forget_distances(Desk<double>&);
+}  // namespace
+
+template <class Z>
+std::vector<Arrival> spread_from_ones(Desk<Z>& desk) {
+    std::vector<std::uint32_t> before = rim_of(desk.numbers);
+    for (std::uint32_t& distance : before) distance = distance == 0 ? 0 : unreached;
+    queue_ones(desk.numbers, desk.queue);
+    Spread<Z>(desk).run({});
+    return offers(desk, before);
+}
+
+template <class Z>
+std::vector<Arrival> spread(Desk<Z>& desk, std::vector<Arrival> arrivals) {
+    const std::vector<std::uint32_t> before = rim_of(desk.numbers);
+    std::sort(arrivals.begin(), arrivals.end(), [](const Arrival& a, const Arrival& b) { return a.distance < b.distance; });
+    desk.queue.clear();
+    Spread<Z>(desk).run(arrivals);
+    return offers(desk, before);
+}
+
+template std::vector<Arrival> spread_from_ones(Desk<float>&);
+template std::vector<Arrival> spread_from_ones(Desk<double>&);
+template std::vector<Arrival> spread(Desk<float>&, std::vector<Arrival>);
+template std::vector<Arrival> spread(Desk<double>&, std::vector<Arrival>);
 
 }  // namespace rillclock

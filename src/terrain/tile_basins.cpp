@@ -2,7 +2,7 @@
 
 #include <algorithm>
 
-#include "level_distances.hpp"
+#include "level_ground.hpp"
 #include "rillclock/graph/disjoint_sets.hpp"
 #include "vectorised.hpp"
 
@@ -66,12 +66,16 @@ void gather_flat(Desk<Z>& desk, Position first) {
 
 template <class Z>
 std::vector<Position> gather_lowest(Desk<Z>& desk, bool level) {
+    const PatchShape& shape = desk.codes.shape();
     std::vector<Position> lowest;
-    for_each_flat(desk.codes, [&](Position p) {
-        if (desk.numbers[p] != p) return;
-        lowest.push_back(p);
-        if (level) gather_flat(desk, p);
-    });
+    for (std::int64_t row = 0; row < shape.rows(); ++row) {
+        const Position last = shape.position(row, shape.columns());
+        for (Position p = shape.position(row, 0); p < last; ++p) {
+            if (desk.codes[p] != flow_undecided || desk.numbers[p] != p) continue;
+            lowest.push_back(p);
+            if (level) gather_flat(desk, p);
+        }
+    }
     return lowest;
 }
 

@@ -3,28 +3,14 @@
 namespace rillclock {
 namespace {
 
-/// Starts a field in a tile: cells that `is_seed(cell, beside)` picks by one of their neighbours have distance 1.
-template <class Z, class IsSeed>
-std::vector<Arrival> start_from(Desk<Z>& desk, const IsSeed& is_seed) {
-    const PatchShape& shape = desk.z.shape();
-    forget_distances(desk);
-    const std::vector<std::uint32_t> before = rim_distances(desk.numbers);
-    std::vector<Arrival> seeds;
-    for_each_flat(desk.codes, [&](Position p) {
-        bool seed = false;
-        for (const Position step : shape.steps()) seed = seed || is_seed(p, p + step);
-        if (seed) seeds.push_back({shape.cell(p), 1});
-    });
-    return spread(desk, std::move(seeds), before);
-}
-
-/// Makes a field of distances over the flat cells of some tiles.
-template <class Z, class IsSeedOf>
-void measure_distances(TiledTerrain<Z>& terrain, std::span<const Tile> level, const IsSeedOf& is_seed_of) {
+/// Makes a field of distances over the flat cells of some tiles; `begin(tile, desk)` spreads it within one and returns what that
+/// means for others.
+template <class Z, class Begin>
+void measure_distances(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Begin& begin) {
     auto sent = terrain.template for_tiles<std::vector<Arrival>>(level, [&](Tile tile, Desk<Z>& desk) {
         terrain.load_elevations(desk, tile);
         terrain.load_codes(desk, tile);
-        auto letters = start_from(desk, is_seed_of(desk));
+        auto letters = begin(tile, desk);
         desk.numbers.store(terrain.numbers);
         return letters;
     });
@@ -33,15 +19,27 @@ void measure_distances(TiledTerrain<Z>& terrain, std::span<const Tile> level, co
 
 template <class Z>
 void measure_distance_to_exit(TiledTerrain<Z>& terrain, std::span<const Tile> level) {
-    measure_distances(terrain, level, [](const Desk<Z>& desk) {
-        return [&](Position p, Position beside) { return desk.z[beside] == desk.z[p] && !is_flat(desk.codes[beside]); };
+    measure_distances(terrain, level, [](Tile, Desk<Z>& desk) {
+        begin_distance_to_exit(desk);
+        return spread_from_ones(desk);
     });
 }
 
 template <class Z>
 void measure_distance_from_higher(TiledTerrain<Z>& terrain, std::span<const Tile> level) {
-    measure_distances(terrain, level, [](const Desk<Z>& desk) {
-        return [&](Position p, Position beside) { return desk.z[beside] > desk.z[p]; };
+    measure_distances(terrain, level, [](Tile, Desk<Z>& desk) {
+        begin_distance_from_higher(desk);
+        return spread_from_ones(desk);
+    });
+}
+
+template <class Z>
+void measure_distance_to_entry(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Mail<WayOut>& entries) {
+    measure_distances(terrain, level, [&](Tile tile, Desk<Z>& desk) {
+        begin_distance_to_entry(desk);
+        std::vector<Arrival> arrivals;
+        for (const WayOut& entry : entries[tile]) arrivals.push_back({entry.cell, 0});
+        return spread(desk, std::move(arrivals));
     });
 }
 
@@ -49,38 +47,12 @@ void measure_distance_from_higher(TiledTerrain<Z>& terrain, std::span<const Tile
 template <class Z>
 void mark_awaited(TiledTerrain<Z>& terrain, std::span<const Tile> level) {
     terrain.template for_tiles<char>(level, [&](Tile tile, Desk<Z>& desk) {
-        const PatchShape shape = terrain.shape(tile);
-        desk.codes.load_tile(terrain.codes, shape, flow_void);
-        desk.numbers.load_tile(terrain.numbers, shape, 0);
-        for_each_flat(desk.codes, [&](Position p) {
-            const std::uint32_t distance = desk.numbers[p];
-            if (distance != unreached) desk.codes[p] = static_cast<FlowCode>(flow_awaited | (distance & 3U));
-        });
+        desk.codes.load_tile(terrain.codes, terrain.shape(tile), flow_void);
+        desk.numbers.load_tile(terrain.numbers, terrain.shape(tile), 0);
+        mark_awaited(desk);
         desk.codes.store(terrain.codes);
         return char{};
     });
-}
-
-/// Whether the second of two level neighbours is one step nearer to the exit. An exit has distance 0 and is decided.
-bool is_nearer(FlowCode own, FlowCode beside) {
-    const FlowCode nearer = (own - 1U) & 3U;
-    return is_flat(beside) ? (beside & 3U) == nearer : nearer == 0;
-}
-
-/// The first level neighbour that is nearer to the exit; among these the one farthest from higher ground.
-template <class Z>
-FlowCode way_to_exit(const Desk<Z>& desk, Position p) {
-    FlowCode code = flow_undecided;
-    std::uint32_t farthest = 0;
-    for (const Direction d : all_directions) {
-        const Position beside = p + desk.z.shape().step(d);
-        if (desk.z[beside] != desk.z[p] || !is_nearer(desk.codes[p], desk.codes[beside])) continue;
-        const std::uint32_t from_higher = is_flat(desk.codes[beside]) ? desk.numbers[beside] : 0;
-        if (code != flow_undecided && from_higher <= farthest) continue;
-        farthest = from_higher;
-        code = flow_code(d);
-    }
-    return code;
 }
 
 /// The first level neighbour of a closed flat that is one step nearer to its entry.
@@ -94,7 +66,7 @@ FlowCode way_to_entry(const Desk<Z>& desk, Position p) {
     return flow_undecided;
 }
 
-/// Decides cells of some tiles, `decide(tile, desk)` writing to `desk.settled`. Tiles look at one another's rims, so rims change only
+/// Decides cells of some tiles, `decide(desk)` writing to `desk.settled`. Tiles look at one another's rims, so rims change only
 /// when all have looked.
 template <class Z, class Decide>
 void decide_in_tiles(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Decide& decide) {
@@ -103,19 +75,21 @@ void decide_in_tiles(TiledTerrain<Z>& terrain, std::span<const Tile> level, cons
         terrain.load_codes(desk, tile);
         desk.numbers.load(terrain.numbers, terrain.shape(tile), 0);
         desk.settled = desk.codes;
-        decide(tile, desk);
+        decide(desk);
         return terrain.store_inner_codes(desk.settled);
     });
     for (std::size_t i = 0; i < level.size(); ++i) terrain.store_rim_codes(level[i], rims[i]);
 }
 
 template <class Z>
-std::vector<Arrival> start_from_entries(Desk<Z>& desk, std::span<const WayOut> entries) {
-    forget_distances(desk);
-    const std::vector<std::uint32_t> before = rim_distances(desk.numbers);
-    std::vector<Arrival> seeds;
-    for (const WayOut& entry : entries) seeds.push_back({entry.cell, 0});
-    return spread(desk, std::move(seeds), before);
+void decide_closed(Desk<Z>& desk) {
+    const PatchShape& shape = desk.codes.shape();
+    for (std::int64_t row = 0; row < shape.rows(); ++row) {
+        const Position last = shape.position(row, shape.columns());
+        for (Position p = shape.position(row, 0); p < last; ++p) {
+            if (is_flat(desk.codes[p]) && desk.numbers[p] != 0) desk.settled[p] = way_to_entry(desk, p);
+        }
+    }
 }
 
 }  // namespace
@@ -125,30 +99,15 @@ void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const Tile> level) {
     measure_distance_to_exit(terrain, level);
     mark_awaited(terrain, level);
     measure_distance_from_higher(terrain, level);
-    decide_in_tiles(terrain, level, [](Tile, Desk<Z>& desk) {
-        for_each_flat(desk.codes, [&](Position p) {
-            if (desk.codes[p] != flow_undecided) desk.settled[p] = way_to_exit(desk, p);
-        });
-    });
+    decide_in_tiles(terrain, level, [](Desk<Z>& desk) { decide_awaited(desk); });
 }
 
 template <class Z>
 void settle_closed_flats(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Mail<WayOut>& entries) {
-    auto sent = terrain.template for_tiles<std::vector<Arrival>>(level, [&](Tile tile, Desk<Z>& desk) {
-        terrain.load_elevations(desk, tile);
-        terrain.load_codes(desk, tile);
-        auto letters = start_from_entries(desk, entries[tile]);
-        desk.numbers.store(terrain.numbers);
-        return letters;
-    });
-    spread_between_tiles(terrain, std::move(sent));
-    decide_in_tiles(terrain, level, [&](Tile, Desk<Z>& desk) {
-        for_each_flat(desk.codes, [&](Position p) {
-            if (desk.numbers[p] != 0) desk.settled[p] = way_to_entry(desk, p);
-        });
-    });
-    for (const auto& letters : entries) {
-        for (const WayOut& entry : letters) terrain.codes[entry.cell] = entry.code;
+    measure_distance_to_entry(terrain, level, entries);
+    decide_in_tiles(terrain, level, [](Desk<Z>& desk) { decide_closed(desk); });
+    for (const auto& of_tile : entries) {
+        for (const WayOut& entry : of_tile) terrain.codes[entry.cell] = entry.code;
     }
 }
 
