@@ -1,6 +1,7 @@
 #include "level_distances.hpp"
 
 #include <algorithm>
+#include <iterator>
 
 namespace rillclock {
 namespace {
@@ -88,6 +89,14 @@ void queue_ones(const Patch<std::uint32_t>& distances, std::vector<Position>& qu
 }
 
 }  // namespace
+
+std::vector<Arrival> nearer_arrivals(const CellNumbers& distances, std::span<const Arrival> letters) {
+    std::vector<Arrival> nearer;
+    std::copy_if(letters.begin(), letters.end(), std::back_inserter(nearer), [&](const Arrival& letter) {
+        return letter.distance < distances[letter.cell];
+    });
+    return nearer;
+}
 
 template <class Z>
 std::vector<Arrival> spread_from_ones(Desk<Z>& desk) {

@@ -27,14 +27,19 @@ template <class Z>
 template <class Z>
 [[nodiscard]] std::vector<Arrival> spread(Desk<Z>& desk, std::vector<Arrival> arrivals);
 
+/// The letters that tell a tile something new.
+[[nodiscard]] std::vector<Arrival> nearer_arrivals(const CellNumbers& distances, std::span<const Arrival> letters);
+
 /// Ends a field of distances: tiles send arrivals to one another until no distance changes.
 template <class Z>
 void spread_between_tiles(TiledTerrain<Z>& terrain, Mail<Arrival> sent) {
     exchange_until_quiet(terrain, std::move(sent), [&](Tile tile, std::span<const Arrival> letters, Desk<Z>& desk) {
+        std::vector<Arrival> nearer = nearer_arrivals(terrain.numbers, letters);
+        if (nearer.empty()) return nearer;
         terrain.load_elevations(desk, tile);
         terrain.load_codes(desk, tile);
         desk.numbers.load_tile(terrain.numbers, terrain.shape(tile), 0);
-        auto further = spread(desk, {letters.begin(), letters.end()});
+        auto further = spread(desk, std::move(nearer));
         desk.numbers.store(terrain.numbers);
         return further;
     });

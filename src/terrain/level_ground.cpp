@@ -59,6 +59,14 @@ void begin_row_at_higher(const LevelRow<double>& row, std::uint32_t* __restrict 
     begin_row_from_higher(row, numbers);
 }
 
+/// Whether a row has a cell whose code is at least `lowest`: most rows have none, and are not asked further.
+RILLCLOCK_VECTORISED
+bool has_code_from(FlowCode lowest, const FlowCode* codes, std::int64_t columns) {
+    FlowCode highest = 0;
+    for (std::int64_t i = 0; i < columns; ++i) highest = highest < codes[i] ? codes[i] : highest;
+    return highest >= lowest;
+}
+
 RILLCLOCK_VECTORISED
 void mark_row(FlowCode* __restrict codes, const std::uint32_t* __restrict numbers, std::int64_t columns) {
     for (std::int64_t i = 0; i < columns; ++i) {
@@ -109,20 +117,31 @@ void decide_row_awaited(const LevelRow<double>& row, const std::uint32_t* __rest
     decide_row(row, numbers, settled);
 }
 
+/// Lets `begin(row, numbers)` write the numbers of the rows that have a code from `lowest` on; 0 in the others.
+template <class Z, class Begin>
+void for_each_row(Desk<Z>& desk, FlowCode lowest, const Begin& begin) {
+    desk.numbers.resize(desk.z.shape(), 0);
+    for (std::int64_t row = 0; row < desk.z.shape().rows(); ++row) {
+        const LevelRow<Z> level = level_row(desk, row);
+        std::uint32_t* numbers = desk.numbers.at(row, 0);
+        if (has_code_from(lowest, level.codes, level.columns)) {
+            begin(level, numbers);
+        } else {
+            std::fill_n(numbers, level.columns, 0U);
+        }
+    }
+}
+
 }  // namespace
 
 template <class Z>
 void begin_distance_to_exit(Desk<Z>& desk) {
-    desk.numbers.resize(desk.z.shape(), 0);
-    for (std::int64_t row = 0; row < desk.z.shape().rows(); ++row) begin_row_at_exit(level_row(desk, row), desk.numbers.at(row, 0));
+    for_each_row(desk, flow_undecided, [&](const LevelRow<Z>& row, std::uint32_t* numbers) { begin_row_at_exit(row, numbers); });
 }
 
 template <class Z>
 void begin_distance_from_higher(Desk<Z>& desk) {
-    desk.numbers.resize(desk.z.shape(), 0);
-    for (std::int64_t row = 0; row < desk.z.shape().rows(); ++row) {
-        begin_row_at_higher(level_row(desk, row), desk.numbers.at(row, 0));
-    }
+    for_each_row(desk, flow_awaited, [&](const LevelRow<Z>& row, std::uint32_t* numbers) { begin_row_at_higher(row, numbers); });
 }
 
 template <class Z>
@@ -145,7 +164,9 @@ void mark_awaited(Desk<Z>& desk) {
 template <class Z>
 void decide_awaited(Desk<Z>& desk) {
     for (std::int64_t row = 0; row < desk.z.shape().rows(); ++row) {
-        decide_row_awaited(level_row(desk, row), desk.numbers.at(row, 0), desk.settled.at(row, 0));
+        const LevelRow<Z> level = level_row(desk, row);
+        if (!has_code_from(flow_awaited, level.codes, level.columns)) continue;
+        decide_row_awaited(level, desk.numbers.at(row, 0), desk.settled.at(row, 0));
     }
 }
 

@@ -134,8 +134,12 @@ private:
 template <class Z>
 [[gnu::always_inline]] inline void keep_falling(const Z* z, const FlowCode* codes, const Steps& next,
                                                 FlowCode* __restrict falling, Position first, Position last) {
+    const Position* steps = next.data();
     for (Position p = first; p < last; ++p) {
-        falling[p] = z[p + next[codes[p] & 15U]] < z[p] ? codes[p] : flow_undecided;
+        const Position code = codes[p];
+        const Position below = p + steps[code & 15U];
+        const Position kept = z[below] < z[p] ? code : Position{flow_undecided};
+        falling[p] = static_cast<FlowCode>(kept);
     }
 }
 RILLCLOCK_VECTORISED

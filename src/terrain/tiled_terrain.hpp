@@ -24,6 +24,7 @@ public:
     }
     [[nodiscard]] std::int64_t rows() const { return rows_; }
     [[nodiscard]] std::int64_t columns() const { return columns_; }
+    [[nodiscard]] std::uint32_t operator[](Cell cell) const { return values_[cell]; }
     [[nodiscard]] std::span<std::uint32_t> row(std::int64_t r) { return {values_.get() + r * columns_, width()}; }
     [[nodiscard]] std::span<const std::uint32_t> row(std::int64_t r) const { return {values_.get() + r * columns_, width()}; }
 
