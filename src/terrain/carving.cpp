@@ -8,8 +8,8 @@ namespace {
 /// Of a cell that belongs to another tile.
 constexpr FlowCode flow_elsewhere = 255;
 
-/// Settles the tree of passes within a tile: it was rooted at the open basins; where one of these leaves over a pass of a closed
-/// basin of the same tree, the way between them is turned round.
+/// Settles the tree of passes within a tile: it was rooted at the open basins; where one of these leaves over a pass of
+/// a closed basin of the same tree, the way between them is turned round.
 void root_ways(TilePasses& tile, const std::vector<Leaving>& leaving) {
     const std::span<const KeyedEdge<Crossing>> passes = tile.passes;
     for (const Leaving& by : leaving) {
@@ -38,7 +38,7 @@ std::vector<WayOut> ways_out(const TilePasses& tile, const PatchShape& shape) {
 /// Carves in one tile; keeps what is to be done elsewhere or later.
 class Carver {
 public:
-    Carver(Patch<FlowCode>& codes, bool is_level) : codes_(codes), shape_(codes.shape()), is_level_(is_level) {}
+    Carver(Patch<FlowCode>& codes, bool is_closed) : codes_(codes), shape_(codes.shape()), is_closed_(is_closed) {}
 
     void carve_from(const WayOut& way) {
         Position p = shape_.position(way.cell);
@@ -50,7 +50,7 @@ public:
         }
         if (codes_[p] == flow_elsewhere) {
             letters.push_back({shape_.cell(p), code});
-        } else if (is_level_) {
+        } else if (is_closed_) {
             entries.push_back({shape_.cell(p), code});
         } else {
             codes_[p] = code;
@@ -63,18 +63,18 @@ public:
 private:
     Patch<FlowCode>& codes_;
     PatchShape shape_;
-    bool is_level_;
+    bool is_closed_;
 };
 
 }  // namespace
 
 template <class Z>
 Mail<WayOut> carve(TiledTerrain<Z>& terrain, std::vector<TilePasses>& passes,
-                   const std::vector<std::vector<Leaving>>& leaving, const std::vector<char>& is_level) {
+                   const std::vector<std::vector<Leaving>>& leaving, const std::vector<char>& is_closed) {
     Mail<WayOut> entries(terrain.tiles.count());
     const auto carve_tile = [&](Tile tile, std::span<const WayOut> ways, Desk<Z>& desk) {
         desk.codes.load_tile(terrain.codes, terrain.shape(tile), flow_elsewhere);
-        Carver carver(desk.codes, is_level[tile] != 0);
+        Carver carver(desk.codes, is_closed[tile] != 0);
         for (const WayOut& way : ways) carver.carve_from(way);
         desk.codes.store(terrain.codes);
         entries[tile].insert(entries[tile].end(), carver.entries.begin(), carver.entries.end());

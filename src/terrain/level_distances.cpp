@@ -6,8 +6,8 @@
 namespace rillclock {
 namespace {
 
-/// The tile's own cells in the order of their distance, as far as arrivals and queue allow: each is looked at anew when its distance
-/// is lowered again, so the order matters for speed alone.
+/// The tile's own cells in the order of their distance, as far as arrivals and queue allow: each is looked at anew when
+/// its distance is lowered again, so the order matters for speed alone.
 template <class Z>
 class Spread {
 public:
@@ -92,9 +92,8 @@ void queue_ones(const Patch<std::uint32_t>& distances, std::vector<Position>& qu
 
 std::vector<Arrival> nearer_arrivals(const CellNumbers& distances, std::span<const Arrival> letters) {
     std::vector<Arrival> nearer;
-    std::copy_if(letters.begin(), letters.end(), std::back_inserter(nearer), [&](const Arrival& letter) {
-        return letter.distance < distances[letter.cell];
-    });
+    std::copy_if(letters.begin(), letters.end(), std::back_inserter(nearer),
+                 [&](const Arrival& letter) { return letter.distance < distances[letter.cell]; });
     return nearer;
 }
 
@@ -110,7 +109,8 @@ std::vector<Arrival> spread_from_ones(Desk<Z>& desk) {
 template <class Z>
 std::vector<Arrival> spread(Desk<Z>& desk, std::vector<Arrival> arrivals) {
     const std::vector<std::uint32_t> before = rim_of(desk.numbers);
-    std::sort(arrivals.begin(), arrivals.end(), [](const Arrival& a, const Arrival& b) { return a.distance < b.distance; });
+    std::sort(arrivals.begin(), arrivals.end(),
+              [](const Arrival& a, const Arrival& b) { return a.distance < b.distance; });
     desk.queue.clear();
     Spread<Z>(desk).run(arrivals);
     return offers(desk, before);

@@ -13,17 +13,17 @@ struct Arrival {
     std::uint32_t distance = 0;
 };
 
-/// Starts a field of distances in a tile: spreads from the cells that have distance 1 as it was begun, and returns what that means
-/// for cells of the tiles around. Takes elevations and codes with their halo.
+/// Starts a field of distances in a tile: spreads from the cells that have distance 1 as it was begun, and returns what
+/// that means for cells of the tiles around. Takes elevations and codes with their halo.
 template <class Z>
 [[nodiscard]] std::vector<Arrival> spread_from_ones(Desk<Z>& desk);
 
-/// Lowers the distances of a tile, in `desk.numbers`, by breadth-first spread over level flat cells from `arrivals`, and returns what
-/// that means for cells of the tiles around. Cells that are not flat have distance 0.
+/// Lowers the distances of a tile, in `desk.numbers`, by breadth-first spread over level flat cells from `arrivals`,
+/// and returns what that means for cells of the tiles around. Cells that are not flat have distance 0.
 ///
-/// Promise: tiles that spread in any order and pass on what they are told end with the exact distances, since a distance is only ever
-/// lowered to the length of a real way and the last to be lowered has told its neighbours.
-/// Cost: the cells whose distance changes, and the rim.
+/// Promise: tiles that spread in any order and pass on what they are told end with the exact distances, since a
+/// distance is only ever lowered to the length of a real way and the last to be lowered has told its neighbours. Cost:
+/// the cells whose distance changes, and the rim.
 template <class Z>
 [[nodiscard]] std::vector<Arrival> spread(Desk<Z>& desk, std::vector<Arrival> arrivals);
 

@@ -19,16 +19,16 @@ LevelRow<Z> level_row(const Desk<Z>& desk, std::int64_t row) {
     return {desk.z.at(row, 0), desk.codes.at(row, 0), desk.z.shape().columns() + 2, desk.z.shape().columns()};
 }
 
-
-/// 1 where `is_seed(i, neighbour)` holds for one of the neighbours, unreached elsewhere; 0 where the code is below `lowest`.
+/// 1 where `is_seed(i, neighbour)` holds for one of the neighbours, unreached elsewhere; 0 where the code is below
+/// `lowest`.
 template <class Z, class IsSeed>
 [[gnu::always_inline]] inline void begin_row(const LevelRow<Z>& row, FlowCode lowest, std::uint32_t* __restrict numbers,
                                              const IsSeed& is_seed) {
     const std::int64_t stride = row.stride;
     for (std::int64_t i = 0; i < row.columns; ++i) {
         const auto ask = [&](std::int64_t step) { return static_cast<std::uint32_t>(is_seed(i, i + step)); };
-        const std::uint32_t seed = ask(-stride) | ask(-stride + 1) | ask(1) | ask(stride + 1) | ask(stride) | ask(stride - 1) |
-                                   ask(-1) | ask(-stride - 1);
+        const std::uint32_t seed = ask(-stride) | ask(-stride + 1) | ask(1) | ask(stride + 1) | ask(stride) |
+                                   ask(stride - 1) | ask(-1) | ask(-stride - 1);
         const std::uint32_t distance = seed != 0 ? 1U : unreached;
         numbers[i] = row.codes[i] >= lowest ? distance : 0U;
     }
@@ -43,9 +43,13 @@ template <class Z>
     });
 }
 RILLCLOCK_VECTORISED
-void begin_row_at_exit(const LevelRow<float>& row, std::uint32_t* __restrict numbers) { begin_row_to_exit(row, numbers); }
+void begin_row_at_exit(const LevelRow<float>& row, std::uint32_t* __restrict numbers) {
+    begin_row_to_exit(row, numbers);
+}
 RILLCLOCK_VECTORISED
-void begin_row_at_exit(const LevelRow<double>& row, std::uint32_t* __restrict numbers) { begin_row_to_exit(row, numbers); }
+void begin_row_at_exit(const LevelRow<double>& row, std::uint32_t* __restrict numbers) {
+    begin_row_to_exit(row, numbers);
+}
 
 template <class Z>
 [[gnu::always_inline]] inline void begin_row_from_higher(const LevelRow<Z>& row, std::uint32_t* __restrict numbers) {
@@ -53,7 +57,9 @@ template <class Z>
     begin_row(row, flow_awaited, numbers, [z](std::int64_t i, std::int64_t beside) { return z[beside] > z[i]; });
 }
 RILLCLOCK_VECTORISED
-void begin_row_at_higher(const LevelRow<float>& row, std::uint32_t* __restrict numbers) { begin_row_from_higher(row, numbers); }
+void begin_row_at_higher(const LevelRow<float>& row, std::uint32_t* __restrict numbers) {
+    begin_row_from_higher(row, numbers);
+}
 RILLCLOCK_VECTORISED
 void begin_row_at_higher(const LevelRow<double>& row, std::uint32_t* __restrict numbers) {
     begin_row_from_higher(row, numbers);
@@ -109,11 +115,13 @@ template <class Z>
     }
 }
 RILLCLOCK_VECTORISED
-void decide_row_awaited(const LevelRow<float>& row, const std::uint32_t* __restrict numbers, FlowCode* __restrict settled) {
+void decide_row_awaited(const LevelRow<float>& row, const std::uint32_t* __restrict numbers,
+                        FlowCode* __restrict settled) {
     decide_row(row, numbers, settled);
 }
 RILLCLOCK_VECTORISED
-void decide_row_awaited(const LevelRow<double>& row, const std::uint32_t* __restrict numbers, FlowCode* __restrict settled) {
+void decide_row_awaited(const LevelRow<double>& row, const std::uint32_t* __restrict numbers,
+                        FlowCode* __restrict settled) {
     decide_row(row, numbers, settled);
 }
 
@@ -136,12 +144,14 @@ void for_each_row(Desk<Z>& desk, FlowCode lowest, const Begin& begin) {
 
 template <class Z>
 void begin_distance_to_exit(Desk<Z>& desk) {
-    for_each_row(desk, flow_undecided, [&](const LevelRow<Z>& row, std::uint32_t* numbers) { begin_row_at_exit(row, numbers); });
+    for_each_row(desk, flow_undecided,
+                 [&](const LevelRow<Z>& row, std::uint32_t* numbers) { begin_row_at_exit(row, numbers); });
 }
 
 template <class Z>
 void begin_distance_from_higher(Desk<Z>& desk) {
-    for_each_row(desk, flow_awaited, [&](const LevelRow<Z>& row, std::uint32_t* numbers) { begin_row_at_higher(row, numbers); });
+    for_each_row(desk, flow_awaited,
+                 [&](const LevelRow<Z>& row, std::uint32_t* numbers) { begin_row_at_higher(row, numbers); });
 }
 
 template <class Z>
@@ -158,7 +168,8 @@ void begin_distance_to_entry(Desk<Z>& desk) {
 template <class Z>
 void mark_awaited(Desk<Z>& desk) {
     const PatchShape& shape = desk.codes.shape();
-    for (std::int64_t row = 0; row < shape.rows(); ++row) mark_row(desk.codes.at(row, 0), desk.numbers.at(row, 0), shape.columns());
+    for (std::int64_t row = 0; row < shape.rows(); ++row)
+        mark_row(desk.codes.at(row, 0), desk.numbers.at(row, 0), shape.columns());
 }
 
 template <class Z>

@@ -21,9 +21,8 @@ std::vector<Origin> lowest_first(const std::vector<TilePasses>& tiles) {
     for (Tile tile = 0; tile < tiles.size(); ++tile) {
         for (std::uint32_t i = 0; i < tiles[tile].doubtful.size(); ++i) origins.push_back({tile, i});
     }
-    std::sort(origins.begin(), origins.end(), [&](const Origin& a, const Origin& b) {
-        return lies_lower(pass_at(tiles, a), pass_at(tiles, b));
-    });
+    std::sort(origins.begin(), origins.end(),
+              [&](const Origin& a, const Origin& b) { return lies_lower(pass_at(tiles, a), pass_at(tiles, b)); });
     return origins;
 }
 
@@ -33,7 +32,8 @@ std::vector<std::vector<Leaving>> solve_pass_tree(const std::vector<TilePasses>&
     const std::vector<Origin> origins = lowest_first(tiles);
     std::vector<Edge> edges;
     edges.reserve(origins.size());
-    for (const Origin& origin : origins) edges.push_back({pass_at(tiles, origin).basin, pass_at(tiles, origin).other_basin});
+    for (const Origin& origin : origins)
+        edges.push_back({pass_at(tiles, origin).basin, pass_at(tiles, origin).other_basin});
 
     const std::vector<std::size_t> chosen = minimum_spanning_forest(basins, edges);
     std::vector<Edge> tree;

@@ -11,12 +11,12 @@
 
 namespace rillclock {
 
-/// Where a value stands in a patch. Positions within the tile are in the order of its cells, so the smaller position is the
-/// smaller cell. Steps are added modulo 2³².
+/// Where a value stands in a patch. Positions within the tile are in the order of its cells, so the smaller position is
+/// the smaller cell. Steps are added modulo 2³².
 using Position = std::uint32_t;
 
-/// A tile with a halo one cell wide, as local work sees it: rows and columns are counted from the tile's north-west cell, the halo
-/// has row or column −1 or one beyond the last. It does not know where the tile's values are kept.
+/// A tile with a halo one cell wide, as local work sees it: rows and columns are counted from the tile's north-west
+/// cell, the halo has row or column −1 or one beyond the last. It does not know where the tile's values are kept.
 class PatchShape {
 public:
     PatchShape() = default;
@@ -24,7 +24,8 @@ public:
         : window_(window), raster_columns_(raster_columns), stride_(static_cast<Position>(window.columns + 2)) {
         if ((window.rows + 2) * (window.columns + 2) >= std::int64_t{UINT32_MAX}) throw bug("a tile is too large");
         for (const Direction d : all_directions) {
-            steps_[static_cast<std::size_t>(d)] = static_cast<Position>(row_step(d)) * stride_ + static_cast<Position>(column_step(d));
+            steps_[static_cast<std::size_t>(d)] =
+                static_cast<Position>(row_step(d)) * stride_ + static_cast<Position>(column_step(d));
         }
     }
 
@@ -78,7 +79,8 @@ private:
         for (std::int64_t row = frame.row; row <= last_row; ++row) {
             const bool whole = row == frame.row || row == last_row;
             const std::int64_t stride = whole ? 1 : std::max<std::int64_t>(1, frame.columns - 1);
-            for (std::int64_t column = frame.column; column <= last_column; column += stride) visit(position(row, column));
+            for (std::int64_t column = frame.column; column <= last_column; column += stride)
+                visit(position(row, column));
         }
     }
 
@@ -102,7 +104,8 @@ public:
         for (std::int64_t row = -1; row <= w.rows; ++row) {
             if (w.row + row < 0 || w.row + row >= source.rows()) continue;
             const auto values = source.row(w.row + row);
-            std::copy_n(values.begin() + (w.column - before), w.columns + before + after, &values_[shape.position(row, -before)]);
+            std::copy_n(values.begin() + (w.column - before), w.columns + before + after,
+                        &values_[shape.position(row, -before)]);
         }
     }
     /// Takes the tile's values alone.
@@ -133,7 +136,9 @@ public:
     [[nodiscard]] T& operator[](Position p) { return values_[p]; }
     [[nodiscard]] const T& operator[](Position p) const { return values_[p]; }
     [[nodiscard]] T* at(std::int64_t row, std::int64_t column) { return &values_[shape_.position(row, column)]; }
-    [[nodiscard]] const T* at(std::int64_t row, std::int64_t column) const { return &values_[shape_.position(row, column)]; }
+    [[nodiscard]] const T* at(std::int64_t row, std::int64_t column) const {
+        return &values_[shape_.position(row, column)];
+    }
     [[nodiscard]] T* data() { return values_.data(); }
     [[nodiscard]] const T* data() const { return values_.data(); }
 

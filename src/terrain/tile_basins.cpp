@@ -22,7 +22,8 @@ void point_row(const FlowCode* codes, const Steps& steps, Position first, Positi
     }
 }
 
-/// One turn; whether anything changed. An end may be read before or after it was lowered in the same turn: both lie on the way.
+/// One turn; whether anything changed. An end may be read before or after it was lowered in the same turn: both lie on
+/// the way.
 RILLCLOCK_VECTORISED
 bool jump(Position* ends, std::size_t first, std::size_t last) {
     Position changes = 0;
@@ -49,41 +50,42 @@ void point_to_next(const Patch<FlowCode>& codes, Patch<Position>& ends) {
     }
 }
 
-/// Gathers the part of a closed flat that lies in the tile under its first cell.
+/// Gathers the part of a closed flat that lies in the tile under its first cell; whether there are others.
 template <class Z>
-void gather_flat(Desk<Z>& desk, Position first) {
+bool gather_flat(Desk<Z>& desk, Position first) {
     desk.queue.assign(1, first);
     for (std::size_t next = 0; next < desk.queue.size(); ++next) {
         for (const Position step : desk.z.shape().steps()) {
             const Position beside = desk.queue[next] + step;
-            const bool same = desk.codes[beside] == flow_undecided && desk.z[beside] == desk.z[first] && beside != first;
+            const bool same =
+                desk.codes[beside] == flow_undecided && desk.z[beside] == desk.z[first] && beside != first;
             if (!same || desk.numbers[beside] != beside || !desk.z.shape().is_in_tile(beside)) continue;
             desk.numbers[beside] = first;
             desk.queue.push_back(beside);
         }
     }
+    return desk.queue.size() > 1;
 }
 
 template <class Z>
-std::vector<Position> gather_lowest(Desk<Z>& desk, bool level) {
+void gather_lowest(Desk<Z>& desk, bool level, TileBasins& basins) {
     const PatchShape& shape = desk.codes.shape();
-    std::vector<Position> lowest;
     for (std::int64_t row = 0; row < shape.rows(); ++row) {
         const Position last = shape.position(row, shape.columns());
         for (Position p = shape.position(row, 0); p < last; ++p) {
             if (desk.codes[p] != flow_undecided || desk.numbers[p] != p) continue;
-            lowest.push_back(p);
-            if (level) gather_flat(desk, p);
+            basins.lowest.push_back(p);
+            if (level && gather_flat(desk, p)) basins.has_closed_flat = true;
         }
     }
-    return lowest;
 }
 
 void follow_ways(Patch<Position>& ends) {
     const PatchShape& shape = ends.shape();
     const std::size_t first = shape.position(0, 0);
     const std::size_t last = std::size_t{shape.position(shape.rows() - 1, shape.columns() - 1)} + 1;
-    while (jump(ends.data(), first, last)) {}
+    while (jump(ends.data(), first, last)) {
+    }
 }
 
 void collect_rim(const Patch<Position>& ends, TileBasins& basins) {
@@ -109,14 +111,17 @@ void collect_level_joins(const Desk<Z>& desk, TileBasins& basins) {
         if (desk.codes[p] != flow_undecided) return;
         for (const Position step : shape.steps()) {
             const Position beside = p + step;
-            if (desk.codes[beside] != flow_undecided || desk.z[beside] != desk.z[p] || shape.is_in_tile(beside)) continue;
+            if (desk.codes[beside] != flow_undecided || desk.z[beside] != desk.z[p] || shape.is_in_tile(beside))
+                continue;
+            basins.has_closed_flat = true;
             basins.level_joins.emplace_back(basins.rim[rim_place(shape, shape.row_column(p))], shape.cell(beside));
         }
     });
 }
 
 /// Place among all rim ends of the end of a rim cell's way.
-Node rim_end_of(const TileGrid& tiles, const std::vector<TileBasins>& basins, const std::vector<Node>& first, Cell cell) {
+Node rim_end_of(const TileGrid& tiles, const std::vector<TileBasins>& basins, const std::vector<Node>& first,
+                Cell cell) {
     const RowColumn at{cell / tiles.columns(), cell % tiles.columns()};
     const Tile tile = tiles.tile_of(at);
     const PatchShape shape(tiles.window(tile), tiles.columns());
@@ -140,7 +145,7 @@ template <class Z>
 TileBasins find_ends(Desk<Z>& desk, bool level) {
     TileBasins basins;
     point_to_next(desk.codes, desk.numbers);
-    basins.lowest = gather_lowest(desk, level);
+    gather_lowest(desk, level, basins);
     follow_ways(desk.numbers);
     collect_rim(desk.numbers, basins);
     if (level) collect_level_joins(desk, basins);

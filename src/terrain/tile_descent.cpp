@@ -17,11 +17,12 @@ InverseLengths inverse_lengths(const Ground& ground, std::int64_t row) {
     return inverse;
 }
 
-/// The codes of a row: the first of the steepest falls, `flow_undecided` where there is none. `here` points to the row's first cell,
-/// `above` and `below` to those north and south of it.
+/// The codes of a row: the first of the steepest falls, `flow_undecided` where there is none. `here` points to the
+/// row's first cell, `above` and `below` to those north and south of it.
 template <class Z>
 [[gnu::always_inline]] inline void steepest_in_row(const Z* above, const Z* here, const Z* below,
-                                                   const InverseLengths& lengths, FlowCode* codes, std::int64_t columns) {
+                                                   const InverseLengths& lengths, FlowCode* codes,
+                                                   std::int64_t columns) {
     const InverseLengths inverse = lengths;
     for (std::int64_t i = 0; i < columns; ++i) {
         const double own = here[i];
@@ -65,9 +66,13 @@ template <class Z>
 }
 
 RILLCLOCK_VECTORISED
-bool has_void(const float* values, std::int64_t count) { return is_missing_in(values, count); }
+bool has_void(const float* values, std::int64_t count) {
+    return is_missing_in(values, count);
+}
 RILLCLOCK_VECTORISED
-bool has_void(const double* values, std::int64_t count) { return is_missing_in(values, count); }
+bool has_void(const double* values, std::int64_t count) {
+    return is_missing_in(values, count);
+}
 
 template <class Z>
 bool has_level_neighbour(const Patch<Z>& z, Position p) {
@@ -76,8 +81,8 @@ bool has_level_neighbour(const Patch<Z>& z, Position p) {
     return level;
 }
 
-/// Decides what the steepest fall could not: voids, and cells where water leaves the data. Returns whether a cell lies level with a
-/// neighbour and is undecided still.
+/// Decides what the steepest fall could not: voids, and cells where water leaves the data. Returns whether a cell lies
+/// level with a neighbour and is undecided still.
 template <class Z>
 bool look_again(const Patch<Z>& z, Position first, Position last, bool voids_near, Patch<FlowCode>& codes) {
     bool level = false;
@@ -115,8 +120,8 @@ bool descend_in_tile(const Patch<Z>& z, const Ground& ground, Patch<FlowCode>& c
     codes.resize(shape, flow_void);
     bool level = false;
     for (std::int64_t row = 0; row < shape.rows(); ++row) {
-        steepest_of_row(z.at(row - 1, 0), z.at(row, 0), z.at(row + 1, 0), inverse_lengths(ground, shape.window().row + row),
-                        codes.at(row, 0), shape.columns());
+        steepest_of_row(z.at(row - 1, 0), z.at(row, 0), z.at(row + 1, 0),
+                        inverse_lengths(ground, shape.window().row + row), codes.at(row, 0), shape.columns());
         const auto r = static_cast<std::size_t>(row);
         const bool voids_near = voids[r] || voids[r + 1] || voids[r + 2];
         level |= look_again(z, shape.position(row, 0), shape.position(row, shape.columns()), voids_near, codes);

@@ -6,7 +6,8 @@
 
 namespace rillclock {
 
-/// Whether every neighbour of a cell has data; the patch holds NaN beyond the raster too, so this is "not a border cell".
+/// Whether every neighbour of a cell has data; the patch holds NaN beyond the raster too, so this is "not a border
+/// cell".
 template <class Z>
 [[nodiscard]] bool is_surrounded(const Patch<Z>& z, Position p) {
     bool surrounded = true;
@@ -18,8 +19,9 @@ template <class Z>
 template <class Z>
 [[nodiscard]] std::vector<bool> rows_with_voids(const Patch<Z>& z);
 
-/// Writes the code of each cell of a tile: the direction of steepest descent, else `flow_root` at border cells, `flow_void` at voids
-/// and `flow_undecided`. Returns whether the tile has level ground: an undecided cell with a level neighbour.
+/// Writes the code of each cell of a tile: the direction of steepest descent, else `flow_root` at border cells,
+/// `flow_void` at voids and `flow_undecided`. Returns whether the tile has level ground: an undecided cell with a level
+/// neighbour.
 ///
 /// Promise: the codes of `steepest_descent`. Falls are compared in double precision whatever elevations are stored in.
 /// Cost: linear, in vector registers; voids and undecided cells are looked at again one by one.

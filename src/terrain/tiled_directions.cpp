@@ -1,5 +1,6 @@
 #include "rillclock/terrain/tiled_directions.hpp"
 
+#include <algorithm>
 #include <utility>
 
 #include "carving.hpp"
@@ -21,6 +22,14 @@ std::vector<char> descend(TiledTerrain<Z>& terrain, const Ground& ground) {
         desk.codes.store(terrain.codes);
         return static_cast<char>(level);
     });
+}
+
+/// Which tiles have a closed flat.
+std::vector<char> mark_closed_flats(const std::vector<TileBasins>& basins) {
+    std::vector<char> marks(basins.size());
+    std::transform(basins.begin(), basins.end(), marks.begin(),
+                   [](const TileBasins& of_tile) { return static_cast<char>(of_tile.has_closed_flat); });
+    return marks;
 }
 
 std::vector<Tile> marked_tiles(const std::vector<char>& marks) {
@@ -65,20 +74,20 @@ std::vector<TilePasses> find_passes(TiledTerrain<Z>& terrain, const std::vector<
 }  // namespace
 
 template <class Z>
-Raster<FlowCode> flow_codes(const Raster<Z>& elevations, const Ground& ground, const TileGrid& tiles, const Executor& executor) {
+Raster<FlowCode> flow_codes(const Raster<Z>& elevations, const Ground& ground, const TileGrid& tiles,
+                            const Executor& executor) {
     TiledTerrain<Z> terrain(elevations, tiles, executor);
     const std::vector<char> is_level = descend(terrain, ground);
-    const std::vector<Tile> level = marked_tiles(is_level);
-    settle_open_flats(terrain, level);
+    settle_open_flats(terrain, marked_tiles(is_level));
 
-    std::vector<TileBasins> basins = find_basins(terrain, is_level);
+    const std::vector<TileBasins> basins = find_basins(terrain, is_level);
+    const std::vector<char> is_closed = mark_closed_flats(basins);
     const RimBasins joined = join_basins(tiles, basins);
-    std::vector<TilePasses> passes = find_passes(terrain, is_level, basins, joined);
-    basins.clear();
 
+    std::vector<TilePasses> passes = find_passes(terrain, is_level, basins, joined);
     const auto leaving = solve_pass_tree(passes, joined.count);
-    const Mail<WayOut> entries = carve(terrain, passes, leaving, is_level);
-    settle_closed_flats(terrain, level, entries);
+    const Mail<WayOut> entries = carve(terrain, passes, leaving, is_closed);
+    settle_closed_flats(terrain, marked_tiles(is_closed), entries);
     return std::move(terrain.codes);
 }
 

@@ -3,8 +3,8 @@
 namespace rillclock {
 namespace {
 
-/// Makes a field of distances over the flat cells of some tiles; `begin(tile, desk)` spreads it within one and returns what that
-/// means for others.
+/// Makes a field of distances over the flat cells of some tiles; `begin(tile, desk)` spreads it within one and returns
+/// what that means for others.
 template <class Z, class Begin>
 void measure_distances(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Begin& begin) {
     auto sent = terrain.template for_tiles<std::vector<Arrival>>(level, [&](Tile tile, Desk<Z>& desk) {
@@ -66,8 +66,8 @@ FlowCode way_to_entry(const Desk<Z>& desk, Position p) {
     return flow_undecided;
 }
 
-/// Decides cells of some tiles, `decide(desk)` writing to `desk.settled`. Tiles look at one another's rims, so rims change only
-/// when all have looked.
+/// Decides cells of some tiles, `decide(desk)` writing to `desk.settled`. Tiles look at one another's rims, so rims
+/// change only when all have looked.
 template <class Z, class Decide>
 void decide_in_tiles(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Decide& decide) {
     const auto rims = terrain.template for_tiles<std::vector<FlowCode>>(level, [&](Tile tile, Desk<Z>& desk) {

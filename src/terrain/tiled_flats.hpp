@@ -7,17 +7,18 @@
 
 namespace rillclock {
 
-/// Gives a way out to the undecided cells of open flats, as `settle_open_flats` does in a whole raster; `level` are the tiles with
-/// level ground.
+/// Gives a way out to the undecided cells of open flats, as `settle_open_flats` does in a whole raster; `level` are the
+/// tiles with level ground.
 ///
-/// Two exact fields one after the other in the same memory, distance to the exit and distance from higher ground. Of the first only
-/// its remainder by 4 is kept, in the code: neighbours on level ground differ by at most 1, so it tells which of them is nearer.
-/// Cost: the tiles with level ground, five times, and once more for each border that a way along level ground crosses.
+/// Two exact fields one after the other in the same memory, distance to the exit and distance from higher ground. Of
+/// the first only its remainder by 4 is kept, in the code: neighbours on level ground differ by at most 1, so it tells
+/// which of them is nearer. Cost: the tiles with level ground, five times, and once more for each border that a way
+/// along level ground crosses.
 template <class Z>
 void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const Tile> level);
 
-/// Directs the closed flats towards their entries, and the entries themselves; `entries` by tile, `level` the tiles with closed
-/// flats. As `settle_closed_flats` in a whole raster.
+/// Directs the closed flats towards their entries, and the entries themselves; `entries` by tile, `level` the tiles
+/// with closed flats. As `settle_closed_flats` in a whole raster.
 template <class Z>
 void settle_closed_flats(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Mail<WayOut>& entries);
 

@@ -14,19 +14,23 @@
 
 namespace rillclock {
 
-/// One number a cell, with a meaning that changes from stage to stage. Memory is taken from the system tile by tile, as it is
-/// first written.
+/// One number a cell, with a meaning that changes from stage to stage. Memory is taken from the system tile by tile, as
+/// it is first written.
 class CellNumbers {
 public:
     CellNumbers(std::int64_t rows, std::int64_t columns)
-        : rows_(rows), columns_(columns), values_(static_cast<std::uint32_t*>(std::calloc(size(), sizeof(std::uint32_t)))) {
+        : rows_(rows),
+          columns_(columns),
+          values_(static_cast<std::uint32_t*>(std::calloc(size(), sizeof(std::uint32_t)))) {
         if (!values_) throw std::bad_alloc();
     }
     [[nodiscard]] std::int64_t rows() const { return rows_; }
     [[nodiscard]] std::int64_t columns() const { return columns_; }
     [[nodiscard]] std::uint32_t operator[](Cell cell) const { return values_[cell]; }
     [[nodiscard]] std::span<std::uint32_t> row(std::int64_t r) { return {values_.get() + r * columns_, width()}; }
-    [[nodiscard]] std::span<const std::uint32_t> row(std::int64_t r) const { return {values_.get() + r * columns_, width()}; }
+    [[nodiscard]] std::span<const std::uint32_t> row(std::int64_t r) const {
+        return {values_.get() + r * columns_, width()};
+    }
 
 private:
     struct Free {
@@ -87,7 +91,8 @@ private:
 
 /// A terrain in tiles while its flow is being found: where local work gets its patches from and brings its results to.
 ///
-/// All that is known of a cell is its elevation, its code and one number. A stage never reads what another tile writes in it.
+/// All that is known of a cell is its elevation, its code and one number. A stage never reads what another tile writes
+/// in it.
 template <class Z>
 class TiledTerrain {
 public:
@@ -111,7 +116,8 @@ public:
         const PatchShape& shape = patch.shape();
         for (std::int64_t row = 1; row < shape.rows() - 1; ++row) {
             const std::int64_t columns = std::max<std::int64_t>(0, shape.columns() - 2);
-            std::copy_n(patch.at(row, 1), columns, codes.row(shape.window().row + row).begin() + shape.window().column + 1);
+            std::copy_n(patch.at(row, 1), columns,
+                        codes.row(shape.window().row + row).begin() + shape.window().column + 1);
         }
         std::vector<FlowCode> rim;
         shape.for_each_rim([&](Position p) { rim.push_back(patch[p]); });
@@ -164,16 +170,16 @@ std::vector<Tile> deliver(const TileGrid& tiles, const Mail<Letter>& sent, Mail<
     return receivers;
 }
 
-/// Lets tiles answer their letters, by `work(tile, letters, desk)`, which returns the letters they send, until none is under way.
+/// Lets tiles answer their letters, by `work(tile, letters, desk)`, which returns the letters they send, until none is
+/// under way.
 template <class Z, class Letter, class Work>
 void exchange_until_quiet(TiledTerrain<Z>& terrain, Mail<Letter> sent, const Work& work) {
     Mail<Letter> mail(terrain.tiles.count());
     for (;;) {
         const std::vector<Tile> receivers = deliver(terrain.tiles, sent, mail);
         if (receivers.empty()) return;
-        sent = terrain.template for_tiles<std::vector<Letter>>(receivers, [&](Tile tile, Desk<Z>& desk) {
-            return work(tile, std::span<const Letter>(mail[tile]), desk);
-        });
+        sent = terrain.template for_tiles<std::vector<Letter>>(
+            receivers, [&](Tile tile, Desk<Z>& desk) { return work(tile, std::span<const Letter>(mail[tile]), desk); });
         for (const Tile tile : receivers) mail[tile].clear();
     }
 }

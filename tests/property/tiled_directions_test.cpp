@@ -43,7 +43,9 @@ Ground narrowing_ground(std::int64_t rows) {
     std::vector<GroundRow> table;
     for (std::int64_t row = 0; row < rows; ++row) {
         const double width = 1.0 + 0.02 * static_cast<double>(row);
-        table.push_back({.east_west = to_fixed(width), .south = to_fixed(1.5), .diagonal = to_fixed(std::hypot(width, 1.5)),
+        table.push_back({.east_west = to_fixed(width),
+                         .south = to_fixed(1.5),
+                         .diagonal = to_fixed(std::hypot(width, 1.5)),
                          .area = to_fixed_area(width * 1.5)});
     }
     return Ground::by_row(std::move(table));
@@ -114,7 +116,8 @@ TEST_CASE("one flat over many tiles drains the same way as in one piece") {
     CHECK(same_for_all_tiles(Elevations(63, 70, 1.0), {1, 7, 16, 64, 100}));
 }
 
-/// A one-cell-wide way that winds inwards between walls, level all along; the middle is its only lower cell where `with_pit`.
+/// A one-cell-wide way that winds inwards between walls, level all along; the middle is its only lower cell where
+/// `with_pit`.
 Elevations spiral(std::int64_t size, bool with_pit) {
     Elevations z(size, size, 9.0);
     RowColumn at{1, 0};

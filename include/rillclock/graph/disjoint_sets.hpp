@@ -8,8 +8,8 @@
 
 namespace rillclock {
 
-/// Nodes gathered into sets that only grow together. The smallest node of a set stands for it, so the answer does not depend on
-/// the order in which sets were joined.
+/// Nodes gathered into sets that only grow together. The smallest node of a set stands for it, so the answer does not
+/// depend on the order in which sets were joined.
 ///
 /// Cost: near to constant for a call. Source: Galler & Fischer 1964, with paths halved as in Tarjan & van Leeuwen 1984.
 class DisjointSets {

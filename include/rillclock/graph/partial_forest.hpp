@@ -23,16 +23,18 @@ inline constexpr PartEdge no_part_edge = UINT32_MAX;
 
 /// What a part of a graph can say of the minimum spanning forest of the whole.
 struct PartialForest {
-    /// The edge, certain to belong to the forest, by which a closed node reaches the open node of its tree; none for open nodes.
+    /// The edge, certain to belong to the forest, by which a closed node reaches the open node of its tree; none for
+    /// open nodes.
     std::vector<PartEdge> towards_open;
     /// The node that stands for a node's tree: its open node.
     std::vector<Node> tree;
-    /// Edges between different trees of which only the whole can tell; the others certainly do not belong to the forest.
+    /// Edges between different trees of which only the whole can tell; the others certainly do not belong to the
+    /// forest.
     std::vector<PartEdge> doubtful;
 };
 
-/// Makes `node` the root of its tree, which leaves from there by `edge`: the way from it to what was the root is turned round.
-/// Cost: the length of that way.
+/// Makes `node` the root of its tree, which leaves from there by `edge`: the way from it to what was the root is turned
+/// round. Cost: the length of that way.
 template <class Key>
 void turn_tree(std::span<const KeyedEdge<Key>> edges, std::vector<PartEdge>& towards, Node node, PartEdge edge) {
     for (;;) {
@@ -44,13 +46,13 @@ void turn_tree(std::span<const KeyedEdge<Key>> edges, std::vector<PartEdge>& tow
 
 /// Solves as much of a minimum spanning forest as can be solved in a part of the graph by itself.
 ///
-/// Nodes below `open_nodes` may have edges outside the part; all edges of the others, the closed ones, are at hand. `less` compares
-/// edges by a strict total order.
+/// Nodes below `open_nodes` may have edges outside the part; all edges of the others, the closed ones, are at hand.
+/// `less` compares edges by a strict total order.
 ///
-/// Method, Borůvka's (1926), in two turns. First each tree without an open node takes its lowest edge: a cut that lies wholly within
-/// the part, so that edge is certain; this goes on until every tree holds exactly one open node. Then all trees take their lowest
-/// edges in turn: an edge that is left over is the highest of a cycle, and certain not to belong.
-/// Cost: O(E log V); what is left to the whole is less than one edge for each open node.
+/// Method, Borůvka's (1926), in two turns. First each tree without an open node takes its lowest edge: a cut that lies
+/// wholly within the part, so that edge is certain; this goes on until every tree holds exactly one open node. Then all
+/// trees take their lowest edges in turn: an edge that is left over is the highest of a cycle, and certain not to
+/// belong. Cost: O(E log V); what is left to the whole is less than one edge for each open node.
 template <class Key, class Less>
 class PartialForestSolver {
 public:
@@ -62,10 +64,12 @@ public:
     }
 
     [[nodiscard]] PartialForest solve() {
-        while (take_lowest_edges(open_nodes_, [&](Node tree, const Live& taken) { hang(tree, taken); })) {}
+        while (take_lowest_edges(open_nodes_, [&](Node tree, const Live& taken) { hang(tree, taken); })) {
+        }
         forest_.tree.resize(lowest_.size());
         for (Node node = 0; node < lowest_.size(); ++node) forest_.tree[node] = sets_.find(node);
-        while (take_lowest_edges(0, [&](Node, const Live& taken) { forest_.doubtful.push_back(taken.edge); })) {}
+        while (take_lowest_edges(0, [&](Node, const Live& taken) { forest_.doubtful.push_back(taken.edge); })) {
+        }
         return std::move(forest_);
     }
 
@@ -82,8 +86,8 @@ private:
         Key key{};
     };
 
-    /// Every tree from `first_tree` on takes its lowest edge; true where there was one. A tree is named by its smallest node, so
-    /// trees with an open node have names below `open_nodes`. Two trees that take the same edge take it once.
+    /// Every tree from `first_tree` on takes its lowest edge; true where there was one. A tree is named by its smallest
+    /// node, so trees with an open node have names below `open_nodes`. Two trees that take the same edge take it once.
     template <class Take>
     bool take_lowest_edges(Node first_tree, Take take) {
         find_lowest_edges(first_tree);
