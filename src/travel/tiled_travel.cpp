@@ -1,7 +1,9 @@
 #include "rillclock/travel/tiled_travel.hpp"
 
 #include <algorithm>
+#include <array>
 #include <mutex>
+#include <utility>
 
 #include "ground_kind.hpp"
 #include "tile_slopes.hpp"
@@ -23,14 +25,15 @@ TiledTravel::TiledTravel(const TiledGround& ground, const TravelRules& rules, co
 void TiledTravel::find_areas() {
     for_each_tile(in_.forest, executor_, desks_, [this](Tile tile, TileDesk& desk) {
         read_elevations(desk);
+        read_lengths(desk);
         area_.collect(tile, desk.flow, area_channel(desk.flow), desk.room);
-        from_divide_.collect(tile, desk.flow, divide_channel(desk.flow), desk.room);
-        flow_distance_.collect(tile, desk.flow, distance_channel(desk.flow), desk.room);
+        from_divide_.collect(tile, desk.flow, divide_channel(desk), desk.room);
+        flow_distance_.collect(tile, desk.flow, distance_channel(desk), desk.room);
         spill_border_.collect(tile, desk.flow, spill_channel(desk), desk.spill);
     });
     area_.solve<decltype(area_channel(std::declval<TileFlow&>()))>();
-    from_divide_.solve<decltype(divide_channel(std::declval<TileFlow&>()))>();
-    flow_distance_.solve<decltype(distance_channel(std::declval<TileFlow&>()))>();
+    from_divide_.solve<decltype(divide_channel(std::declval<TileDesk&>()))>();
+    flow_distance_.solve<decltype(distance_channel(std::declval<TileDesk&>()))>();
     spill_border_.solve<decltype(spill_channel(std::declval<TileDesk&>()))>();
 }
 
@@ -61,14 +64,10 @@ void TiledTravel::find_kinds() {
 void TiledTravel::find_slopes() {
     const SlopeGround ground{.in = in_, .spill = spill_, .rules = rules_.slope};
     for_each_tile(in_.forest, executor_, desks_, [&](Tile tile, TileDesk& desk) {
-        flow_distance_.fill(tile, desk.flow, distance_channel(desk.flow), desk.flow_distance);
+        read_lengths(desk);
+        flow_distance_.fill(tile, desk.flow, distance_channel(desk), desk.flow_distance);
         find_tile_slopes(ground, desk, kind_, slope_);
-        // What a step adds to the sheet index needs its slope, length and surface alone.
-        desk.area.assign(desk.flow.size(), 0);
-        desk.from_divide.assign(desk.flow.size(), 0);
-        desk.sheet_index.assign(desk.flow.size(), 0);
-        desk.spill.assign(desk.flow.size(), 0.0);
-        desk.elevation.assign(desk.flow.size(), 0.0);
+        read_index_steps(desk);
         sheet_index_.collect(tile, desk.flow, index_channel(desk), desk.room);
     });
     sheet_index_.solve<decltype(index_channel(std::declval<TileDesk&>()))>();
@@ -89,17 +88,35 @@ void TiledTravel::read_elevations(TileDesk& desk) const {
     in_.elevations.read(desk.flow.window(), desk.elevation);
 }
 
+void TiledTravel::read_lengths(TileDesk& desk) const {
+    desk.length.resize(desk.flow.size());
+    const Window& window = desk.flow.window();
+    Local local = 0;
+    for (std::int64_t r = 0; r < window.rows; ++r) {
+        std::array<FixedLength, 256> by_code{};  // 0 for roots and voids
+        for (const Direction d : all_directions) by_code[flow_code(d)] = in_.ground.length(window.row + r, d);
+        for (std::int64_t c = 0; c < window.columns; ++c, ++local) desk.length[local] = by_code[desk.flow.code(local)];
+    }
+}
+
+void TiledTravel::read_index_steps(TileDesk& desk) const {
+    desk.index_step.assign(desk.flow.size(), 0);
+    for (const Local local : desk.flow.order()) {
+        const Cell cell = desk.flow.cell(local);
+        desk.index_step[local] = sheet_index_step({.length = desk.length[local], .slope = static_cast<double>(slope_[cell]),
+                                                   .surface = &in_.surface.at(cell), .kind = kind_[cell]});
+    }
+}
+
 void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
     read_elevations(desk);
+    read_lengths(desk);
+    read_index_steps(desk);
     desk.spill.resize(desk.flow.size());
     spill_.read(desk.flow.window(), desk.spill);
     area_.fill(tile, desk.flow, area_channel(desk.flow), desk.area);
-    from_divide_.fill(tile, desk.flow, divide_channel(desk.flow), desk.from_divide);
-    desk.sheet_index.assign(desk.flow.size(), 0);
-    std::swap(desk.room, desk.sheet_index);
-    desk.sheet_index.assign(desk.flow.size(), 0);
-    sheet_index_.fill(tile, desk.flow, index_channel(desk), desk.room);
-    std::swap(desk.room, desk.sheet_index);
+    from_divide_.fill(tile, desk.flow, divide_channel(desk), desk.from_divide);
+    sheet_index_.fill(tile, desk.flow, index_channel(desk), desk.sheet_index);
     desk.step.assign(desk.flow.size(), StepTime{});
     for (const Local local : desk.flow.order()) desk.step[local] = step_parts(step_view(desk, local), rules_).time();
 }
@@ -112,14 +129,14 @@ void TiledTravel::read_areas(Tile tile, TileDesk& desk) const {
 void TiledTravel::read_tile(Tile tile, TileDesk& desk) const {
     desk.flow.read(in_.forest.codes(), in_.forest.tiles().window(tile));
     read_steps(tile, desk);
-    flow_distance_.fill(tile, desk.flow, distance_channel(desk.flow), desk.flow_distance);
+    flow_distance_.fill(tile, desk.flow, distance_channel(desk), desk.flow_distance);
     storm_.fill(tile, desk.flow, storm_channel(desk), desk.storm);
     fixed_.fill(tile, desk.flow, fixed_channel(desk), desk.fixed);
 }
 
 StepView TiledTravel::step_view(const TileDesk& desk, Local local) const {
     const Cell cell = desk.flow.cell(local);
-    return {.length = step_length(desk.flow, local),
+    return {.length = desk.length[local],
             .slope = static_cast<double>(slope_[cell]),
             .surface = &in_.surface.at(cell),
             .kind = kind_[cell],

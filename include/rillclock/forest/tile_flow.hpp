@@ -32,10 +32,12 @@ public:
     [[nodiscard]] const Window& window() const { return window_; }
     /// The cell of the whole raster.
     [[nodiscard]] Cell cell(Local local) const {
-        const std::int64_t row = local / window_.columns;
-        return static_cast<Cell>((window_.row + row) * raster_columns_ + window_.column + (local - row * window_.columns));
+        // 32 bits divide faster, and the cells of a tile are counted in them.
+        const auto columns = static_cast<Local>(window_.columns);
+        const Local row = local / columns;
+        return static_cast<Cell>((window_.row + row) * raster_columns_ + window_.column + (local - row * columns));
     }
-    [[nodiscard]] std::int64_t row(Local local) const { return window_.row + local / window_.columns; }
+    [[nodiscard]] std::int64_t row(Local local) const { return window_.row + local / static_cast<Local>(window_.columns); }
     [[nodiscard]] Local down(Local local) const { return down_[local]; }
     [[nodiscard]] FlowCode code(Local local) const { return code_[local]; }
     /// All cells but voids, each before the one it drains to.

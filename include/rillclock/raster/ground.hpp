@@ -36,6 +36,8 @@ public:
         return is_diagonal(d) ? upper.diagonal : upper.south;
     }
     [[nodiscard]] FixedArea cell_area(std::int64_t row) const { return at(row).area; }
+    /// Whether all rows are alike.
+    [[nodiscard]] bool is_uniform() const { return rows_.size() == 1; }
     /// The shorter side of the middle row's cells: what "one cell" means where a study speaks of cells.
     [[nodiscard]] Length cell_side() const;
 

@@ -34,6 +34,8 @@ struct RootArea {
 /// Everything about the cells of one tile, by `Local`; room that is used for tile after tile.
 struct TileDesk {
     TileFlow flow;
+    std::vector<FixedLength> length;            ///< of the step out of the cell
+    std::vector<FixedLength> index_step;        ///< what the step adds to the sheet index
     std::vector<double> elevation;              ///< elevation units; NaN where void
     std::vector<double> spill;
     std::vector<FixedArea> area;
@@ -86,23 +88,23 @@ private:
     void find_slopes();
     void find_times();
 
-    [[nodiscard]] FixedLength step_length(const TileFlow& flow, Local local) const {
-        return is_direction(flow.code(local)) ? in_.ground.length(flow.row(local), static_cast<Direction>(flow.code(local))) : 0;
-    }
     [[nodiscard]] auto area_channel(const TileFlow& flow) const {
-        return down::Sum{[this, &flow](Local cell) { return in_.ground.cell_area(flow.row(cell)); }};
+        const FixedArea everywhere = in_.ground.is_uniform() ? in_.ground.cell_area(0) : 0;
+        return down::Sum{[this, &flow, everywhere](Local cell) {
+            return everywhere != 0 ? everywhere : in_.ground.cell_area(flow.row(cell));
+        }};
     }
-    [[nodiscard]] auto divide_channel(const TileFlow& flow) const {
-        return down::Max{[this, &flow](Local cell) { return step_length(flow, cell); }};
+    [[nodiscard]] static auto divide_channel(const TileDesk& desk) {
+        return down::Max{[&desk](Local cell) { return desk.length[cell]; }};
     }
-    [[nodiscard]] auto distance_channel(const TileFlow& flow) const {
-        return up::Add{[this, &flow](Local cell) { return step_length(flow, cell); }};
+    [[nodiscard]] static auto distance_channel(const TileDesk& desk) {
+        return up::Add{[&desk](Local cell) { return desk.length[cell]; }};
     }
     [[nodiscard]] static auto spill_channel(const TileDesk& desk) {
         return up::Max{[&desk](Local cell) { return desk.elevation[cell]; }};
     }
-    [[nodiscard]] auto index_channel(const TileDesk& desk) const {
-        return down::Max{[this, &desk](Local cell) { return sheet_index_step(step_view(desk, cell)); }};
+    [[nodiscard]] static auto index_channel(const TileDesk& desk) {
+        return down::Max{[&desk](Local cell) { return desk.index_step[cell]; }};
     }
     [[nodiscard]] static auto storm_channel(const TileDesk& desk) {
         return up::Add{[&desk](Local cell) { return desk.step[cell].storm; }};
@@ -112,6 +114,8 @@ private:
     }
     void read_steps(Tile tile, TileDesk& desk) const;
     void read_elevations(TileDesk& desk) const;
+    void read_lengths(TileDesk& desk) const;
+    void read_index_steps(TileDesk& desk) const;
 
     TiledGround in_;
     TravelRules rules_;
