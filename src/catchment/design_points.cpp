@@ -131,14 +131,14 @@ PlacedPoints place_points(std::span<const StatedPoint> stated, const PointGround
     return placed;
 }
 
-PlacedPoints find_points(std::vector<WayOut> ways_out, const Grid& grid, double least_share) {
+PlacedPoints find_points(std::vector<RootArea> ways_out, const Grid& grid, double least_share) {
     FixedArea whole = 0;
-    for (const WayOut& way : ways_out) whole += way.area;
-    std::sort(ways_out.begin(), ways_out.end(), [](const WayOut& a, const WayOut& b) {
+    for (const RootArea& way : ways_out) whole += way.area;
+    std::sort(ways_out.begin(), ways_out.end(), [](const RootArea& a, const RootArea& b) {
         return std::tuple(-a.area, a.cell) < std::tuple(-b.area, b.cell);
     });
     PlacedPoints found;
-    for (const WayOut& way : ways_out) {
+    for (const RootArea& way : ways_out) {
         const bool large = static_cast<double>(way.area) >= least_share * static_cast<double>(whole);
         if (!large && !found.points.empty()) break;
         found.points.push_back({.name = "outlet " + std::to_string(found.points.size() + 1), .cell = way.cell,

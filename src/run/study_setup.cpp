@@ -8,6 +8,21 @@
 #include "study_data.hpp"
 
 namespace rillclock {
+namespace {
+
+/// Where each point has a storm of its own, steps are cut under the raster's return period at this duration: it decides whether water on
+/// ponded ground moves as sheet flow or as a wave (by far the faster in any storm), and times the cells that drain to no point.
+constexpr Duration reference_duration = minutes(5);
+
+SheetRules sheet_rules_of(const Study& study, const StudyRain& rain) {
+    if (!study.timing.is_kinematic()) {
+        return {.formula = nrcs_sheet_formula(), .storm_factor = nrcs_storm_factor(*rain.two_year_24_hour)};
+    }
+    return {.formula = kinematic_sheet_formula(study.timing.sheet_constant.value_or(kinematic_constant_hec22)),
+            .storm_factor = kinematic_storm_factor(rain.raster_storm().rain.at(reference_duration))};
+}
+
+}  // namespace
 
 StatedPoints read_stated_points(const Study& study, const ReferenceSystem& system) {
     PointOptions options;
@@ -22,9 +37,7 @@ StatedPoints read_stated_points(const Study& study, const ReferenceSystem& syste
 PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const TiledTravel& travel,
                            const TerrainData& terrain) {
     if (!study.points.file) {
-        std::vector<WayOut> ways_out;
-        for (const RootArea& root : travel.roots()) ways_out.push_back({root.cell, root.area});
-        return find_points(std::move(ways_out), terrain.grid, resolved.auto_area);
+        return find_points(travel.roots(), terrain.grid, resolved.auto_area);
     }
     const StatedPoints stated = read_stated_points(study, terrain.system);
     std::vector<Cell> cells;
@@ -42,14 +55,18 @@ PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, co
     return placed;
 }
 
-TravelRules rules_of(const Study& study, const ResolvedStudy& resolved) {
+StudyRain read_rain(const Study& study) {
+    const std::string text = study.rain.file ? read_text(located(study, *study.rain.file)) : std::string();
+    return study_rain(study, text);
+}
+
+TravelRules rules_of(const Study& study, const ResolvedStudy& resolved, const StudyRain& rain) {
     TravelRules rules;
     rules.slope = {.window = resolved.slope_window,
                    .vertical_step = resolved.vertical_step,
                    .overland_floor = study.timing.slope_floor_overland,
                    .channel_floor = study.timing.slope_floor_channel};
-    rules.sheet.formula = nrcs_sheet_formula();
-    rules.sheet.storm_factor = nrcs_storm_factor(*study.rain.two_year_24_hour);
+    rules.sheet = sheet_rules_of(study, rain);
     rules.sheet.limit = study.timing.sheet_limit;
     if (study.timing.sheet_limit_rule == SheetLimitRule::stated) {
         rules.sheet.index_limit = metres(std::numeric_limits<double>::infinity());
@@ -82,6 +99,7 @@ std::vector<InputFile> input_files(const Study& study) {
     add("cover", study.surface.cover);
     if (!is_built_in_book(study.surface.book)) add("book", study.surface.book);
     if (study.points.file) add("points", *study.points.file);
+    if (study.rain.file) add("rain", *study.rain.file);
     return files;
 }
 

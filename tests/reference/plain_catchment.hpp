@@ -77,8 +77,8 @@ inline std::vector<Outlet> outlets_of(const TravelInputs& in, const TravelField&
     return outlets;
 }
 
-inline std::vector<WayOut> ways_out(const FlowForest& forest, const Raster<FixedArea>& area) {
-    std::vector<WayOut> ways;
+inline std::vector<RootArea> ways_out(const FlowForest& forest, const Raster<FixedArea>& area) {
+    std::vector<RootArea> ways;
     for (const Cell cell : forest.order()) {
         if (forest.is_root(cell)) ways.push_back({cell, area[cell]});
     }

@@ -8,6 +8,7 @@
 
 #include "rillclock/core/notice.hpp"
 #include "rillclock/raster/ground.hpp"
+#include "rillclock/travel/root_area.hpp"
 
 namespace rillclock {
 
@@ -39,12 +40,6 @@ struct PointGround {
     std::function<std::optional<FixedArea>(Cell)> area;
 };
 
-/// A way out of the data and all that drains to it.
-struct WayOut {
-    Cell cell = no_cell;
-    FixedArea area = 0;
-};
-
 /// The cells that a point may be moved to, its own included, by increasing index; none where it lies off the grid.
 [[nodiscard]] std::vector<Cell> cells_near(Place stated, const Grid& grid, const Ground& ground, Length move_within);
 
@@ -57,6 +52,6 @@ struct WayOut {
 
 /// Points where water leaves the data with at least `least_share` of the data's area upstream, the largest first; the
 /// single largest where none has as much. `ways_out` are all of the data's.
-[[nodiscard]] PlacedPoints find_points(std::vector<WayOut> ways_out, const Grid& grid, double least_share);
+[[nodiscard]] PlacedPoints find_points(std::vector<RootArea> ways_out, const Grid& grid, double least_share);
 
 }  // namespace rillclock

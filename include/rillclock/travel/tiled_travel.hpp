@@ -6,6 +6,7 @@
 #include "rillclock/forest/tile_sweep.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
+#include "rillclock/travel/root_area.hpp"
 #include "rillclock/travel/step.hpp"
 
 namespace rillclock {
@@ -23,12 +24,6 @@ struct TiledGround {
 struct CellLabel {
     Cell cell = no_cell;
     std::uint32_t number = 0;
-};
-
-/// A root and all that drains to it.
-struct RootArea {
-    Cell cell = no_cell;
-    FixedArea area = 0;
 };
 
 /// Everything about the cells of one tile, by `Local`; room that is used for tile after tile.
