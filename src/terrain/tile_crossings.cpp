@@ -1,6 +1,7 @@
 #include "tile_crossings.hpp"
 
 #include <bit>
+#include <cmath>
 #include <cstring>
 
 #include "tile_descent.hpp"
@@ -137,7 +138,7 @@ private:
         const Position beside = p + shape_.step(d);
         const Z own = desk_.z[p];
         const Z other = desk_.z[beside];
-        if (own != own || other != other) return;
+        if (std::isnan(own) || std::isnan(other)) return;
         keep({desk_.numbers[p], desk_.numbers[beside], {std::max(own, other), {p, flow_code(d)}}});
     }
     /// Of passes between the same two nodes the lowest is enough. Which were met lately is remembered; one that was
@@ -159,7 +160,7 @@ private:
         for (Position p = first; p < last; ++p) {
             const Node own = desk_.numbers[p];
             const Z level = desk_.z[p];
-            if (own != 0 && level == level && !is_surrounded(desk_.z, p)) keep({own, 0, {level, {p, flow_root}}});
+            if (own != 0 && !std::isnan(level) && !is_surrounded(desk_.z, p)) keep({own, 0, {level, {p, flow_root}}});
         }
     }
 

@@ -1,5 +1,6 @@
 #include "tile_descent.hpp"
 
+#include <cmath>
 #include <cstring>
 
 #include "vectorised.hpp"
@@ -61,7 +62,7 @@ void steepest_of_row(const double* above, const double* here, const double* belo
 template <class Z>
 [[gnu::always_inline]] inline bool is_missing_in(const Z* values, std::int64_t count) {
     std::int32_t missing = 0;
-    for (std::int64_t i = 0; i < count; ++i) missing |= static_cast<std::int32_t>(!(values[i] == values[i]));
+    for (std::int64_t i = 0; i < count; ++i) missing |= static_cast<std::int32_t>(std::isnan(values[i]));
     return missing != 0;
 }
 
@@ -81,8 +82,8 @@ bool has_level_neighbour(const Patch<Z>& z, Position p) {
     return level;
 }
 
-/// Decides what the steepest fall could not: voids, and cells where water leaves the data. Returns whether a cell lies
-/// level with a neighbour and is undecided still.
+/// Decides what the steepest fall could not: voids, and cells where water leaves the data or is swallowed. Returns
+/// whether a cell lies level with a neighbour and is undecided still.
 template <class Z>
 bool look_again(const Patch<Z>& z, Position first, Position last, bool voids_near, Patch<FlowCode>& codes) {
     bool level = false;
@@ -90,9 +91,9 @@ bool look_again(const Patch<Z>& z, Position first, Position last, bool voids_nea
         const void* found = std::memchr(&codes[p], flow_undecided, last - p);
         if (found == nullptr) break;
         p += static_cast<Position>(static_cast<const FlowCode*>(found) - &codes[p]);
-        if (voids_near && z[p] != z[p]) {
+        if (voids_near && std::isnan(z[p])) {
             codes[p] = flow_void;
-        } else if (voids_near && !is_surrounded(z, p)) {
+        } else if (static_cast<double>(z[p]) == swallowing_level || (voids_near && !is_surrounded(z, p))) {
             codes[p] = flow_root;
         } else {
             level = level || has_level_neighbour(z, p);

@@ -1,5 +1,7 @@
 #pragma once
 
+#include <cmath>
+
 #include "patch.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/descent.hpp"
@@ -11,7 +13,7 @@ namespace rillclock {
 template <class Z>
 [[nodiscard]] bool is_surrounded(const Patch<Z>& z, Position p) {
     bool surrounded = true;
-    for (const Position step : z.shape().steps()) surrounded = surrounded && z[p + step] == z[p + step];
+    for (const Position step : z.shape().steps()) surrounded = surrounded && !std::isnan(z[p + step]);
     return surrounded;
 }
 
