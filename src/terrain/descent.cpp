@@ -48,7 +48,8 @@ Raster<FlowCode> steepest_descent(const Elevations& z, const Ground& ground) {
         for (std::int64_t column = 0; column < z.columns(); ++column) {
             if (std::isnan(z(row, column))) continue;
             FlowCode code = steepest_way(z, static_cast<Cell>(row * z.columns() + column), inverse);
-            if (code == flow_undecided && is_border(z, {row, column})) code = flow_root;
+            const bool swallows = z(row, column) == swallowing_level;
+            if (code == flow_undecided && (swallows || is_border(z, {row, column}))) code = flow_root;
             codes(row, column) = code;
         }
     }

@@ -21,6 +21,11 @@ ElevationStore::ElevationStore(std::int64_t rows, std::int64_t columns, Width wi
     else values_ = Raster<float>(rows, columns);
 }
 
+void ElevationStore::put(Cell cell, double value) {
+    if (auto* single = std::get_if<Raster<float>>(&values_)) (*single)[cell] = static_cast<float>(value);
+    else std::get<Raster<double>>(values_)[cell] = value;
+}
+
 void ElevationStore::read(const Window& window, std::span<double> values) const {
     std::visit([&](const auto& raster) {
         for_each_stretch(raster, window, [&](auto stretch, std::size_t offset) {

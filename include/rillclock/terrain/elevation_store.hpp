@@ -24,6 +24,8 @@ public:
         const auto* single = std::get_if<Raster<float>>(&values_);
         return single != nullptr ? static_cast<double>((*single)[cell]) : std::get<Raster<double>>(values_)[cell];
     }
+    /// Sets one cell, to a value that the width holds exactly.
+    void put(Cell cell, double value);
     void read(const Window& window, std::span<double> values) const;
     /// Every value must be one that the width holds exactly.
     void write(const Window& window, std::span<const double> values);

@@ -1,0 +1,201 @@
+#include "rillclock/terrain/terrain_edits.hpp"
+
+#include <catch2/catch.hpp>
+
+#include <algorithm>
+#include <set>
+
+#include "reference/drawings.hpp"
+#include "rillclock/terrain/flow_directions.hpp"
+#include "rillclock/terrain/tiled_directions.hpp"
+
+namespace rillclock {
+namespace {
+
+const Ground square = Ground::planar(metres(1), metres(1));
+
+ElevationStore stored(const Elevations& z, ElevationStore::Width width = ElevationStore::Width::eight_bytes) {
+    ElevationStore store(z.rows(), z.columns(), width);
+    for (Cell cell = 0; cell < static_cast<Cell>(z.size()); ++cell) store.put(cell, z[cell]);
+    return store;
+}
+
+Raster<FlowCode> plain_codes(const ElevationStore& store) {
+    Elevations z(store.rows(), store.columns());
+    for (Cell cell = 0; cell < static_cast<Cell>(z.size()); ++cell) z[cell] = store[cell];
+    return flow_forest_of(z, square).codes();
+}
+
+FindCodes tiled_codes(std::int64_t side, const Executor& executor) {
+    return [side, &executor](const ElevationStore& store) {
+        const TileGrid tiles(store.rows(), store.columns(), side);
+        return store.visit([&](const auto& z) { return flow_codes(z, square, tiles, executor); });
+    };
+}
+
+Grid grid_of(const Elevations& z) {
+    return {.rows = z.rows(), .columns = z.columns(), .left = 0.0, .top = static_cast<double>(z.rows())};
+}
+
+/// A terrain of few levels, and shapes at random over it and a little beyond.
+struct AnyEdits {
+    explicit AnyEdits(unsigned seed) : random(seed), z(drawings::random_terrain(random, 3, seed % 3 == 0 ? 0.1 : 0.0)) {
+        const auto some = [&](unsigned most) { return std::uniform_int_distribution<unsigned>(0, most)(random); };
+        for (unsigned n = some(4); n > 0; --n) shapes.channels.push_back(line());
+        for (unsigned n = some(2); n > 0; --n) shapes.crossings.push_back(line());
+        for (unsigned n = some(2); n > 0; --n) shapes.barriers.push_back(seed % 4 == 0 ? ring() : line());
+        for (unsigned n = some(2); n > 0; --n) shapes.kept_places.push_back(place());
+        if (seed % 5 == 0) shapes.kept_areas.push_back({{line()}});
+    }
+
+    Place place() {
+        std::uniform_real_distribution<double> x(-2.0, static_cast<double>(z.columns()) + 2.0);
+        std::uniform_real_distribution<double> y(-2.0, static_cast<double>(z.rows()) + 2.0);
+        return {x(random), y(random)};
+    }
+    Line line() {
+        Line line(std::uniform_int_distribution<std::size_t>(1, 6)(random));
+        for (Place& corner : line) corner = place();
+        return line;
+    }
+    Line ring() {
+        const Place a = place();
+        const Place b = place();
+        return {a, {a.x, b.y}, b, {b.x, a.y}, a};
+    }
+
+    std::mt19937 random;
+    Elevations z;
+    EditShapes shapes;
+};
+
+struct Edited {
+    explicit Edited(const AnyEdits& any)
+        : z(stored(any.z)), edits(place_edits(any.shapes, grid_of(any.z), z, 0.5)), flow(edited_flow(z, edits, plain_codes)),
+          forest(flow.codes) {}   // throws where there is a circle
+
+    [[nodiscard]] bool is_barrier(Cell cell) const { return std::binary_search(edits.barrier.begin(), edits.barrier.end(), cell); }
+
+    ElevationStore z;
+    TerrainEdits edits;
+    EditedFlow flow;
+    FlowForest forest;
+};
+
+constexpr unsigned most_seeds = 3000;
+
+template <class Law>
+void for_all_edits(Law law) {
+    for (unsigned seed = 0; seed < most_seeds; ++seed) {
+        const AnyEdits any(seed);
+        INFO("seed " << seed << ", " << any.z.rows() << " x " << any.z.columns());
+        law(Edited(any), any);
+    }
+}
+
+TEST_CASE("an edited terrain flows the same way whatever the tiles, the threads and the width of elevations") {
+    const std::array<Executor, 2> executors = {Executor(1), Executor(2)};
+    for (unsigned seed = 0; seed < most_seeds; ++seed) {
+        const AnyEdits any(seed);
+        const Edited plain(any);
+        ElevationStore z = stored(any.z, seed % 2 == 0 ? ElevationStore::Width::four_bytes : ElevationStore::Width::eight_bytes);
+        const auto side = static_cast<std::int64_t>(1 + seed % 16);
+        const EditedFlow tiled = edited_flow(z, plain.edits, tiled_codes(side, executors[seed % 2]));
+        INFO("seed " << seed << ", " << any.z.rows() << " x " << any.z.columns() << ", tiles of " << side);
+        REQUIRE(drawings::arrows(tiled.codes) == drawings::arrows(plain.flow.codes));
+    }
+}
+
+TEST_CASE("every cell of a line drains to the next cell of its line") {
+    std::size_t links = 0;
+    for_all_edits([&](const Edited& edited, const AnyEdits&) {
+        for (const Cell cell : edited.edits.lines.cells()) {
+            const Cell next = edited.edits.lines.next(cell);
+            if (next == no_cell) continue;
+            REQUIRE(edited.forest.downstream(cell) == next);
+            ++links;
+        }
+    });
+    CHECK(links > 10 * most_seeds);
+}
+
+/// A channel alone on the ground is followed from its first cell to its last, cell by cell.
+TEST_CASE("one channel is followed along the whole of its way") {
+    for (unsigned seed = 0; seed < most_seeds; ++seed) {
+        AnyEdits any(seed);
+        any.shapes = {.channels = {any.line()}, .crossings = {}, .barriers = {}, .kept_places = {}, .kept_areas = {}};
+        const bool has_voids = std::any_of(any.z.values().begin(), any.z.values().end(), [](double z) { return std::isnan(z); });
+        const auto ways = cells_crossed(any.shapes.channels[0], grid_of(any.z));
+        if (has_voids || ways.size() != 1) continue;
+        const Edited edited(any);
+        Way way = shortened(ways[0], any.z.columns());
+        if (edited.edits.channels.turned > 0) {
+            Way back = ways[0];
+            std::reverse(back.begin(), back.end());
+            way = shortened(back, any.z.columns());
+        }
+        INFO("seed " << seed);
+        for (std::size_t i = 1; i < way.size(); ++i) REQUIRE(edited.forest.downstream(way[i - 1]) == way[i]);
+    }
+}
+
+TEST_CASE("no water enters a barrier") {
+    std::size_t barriers = 0;
+    for_all_edits([&](const Edited& edited, const AnyEdits&) {
+        for (const Cell cell : edited.forest.order()) {
+            const Cell below = edited.forest.downstream(cell);
+            if (below == no_cell || !edited.is_barrier(below)) continue;
+            REQUIRE(edited.is_barrier(cell));   // rain on the barrier itself may run along it
+        }
+        barriers += edited.edits.barrier.size();
+    });
+    CHECK(barriers > most_seeds);
+}
+
+TEST_CASE("kept water stays, and water stays or leaves nowhere else but where it is told") {
+    std::size_t kept = 0;
+    for_all_edits([&](const Edited& edited, const AnyEdits& any) {
+        std::set<Cell> roots(edited.edits.kept.begin(), edited.edits.kept.end());
+        for (const Cell cell : roots) REQUIRE(edited.forest.is_root(cell));
+        kept += roots.size();
+        roots.insert(edited.flow.ends_without_way.begin(), edited.flow.ends_without_way.end());
+        roots.insert(edited.flow.enclosed.begin(), edited.flow.enclosed.end());
+        for (const Cell cell : edited.forest.order()) {
+            if (!edited.forest.is_root(cell)) continue;
+            const bool told = roots.contains(cell) || is_border(any.z, {cell / any.z.columns(), cell % any.z.columns()});
+            REQUIRE(told);
+        }
+    });
+    CHECK(kept > most_seeds);
+}
+
+TEST_CASE("elevations are as they were once the flow is found") {
+    for_all_edits([](const Edited& edited, const AnyEdits& any) {
+        for (Cell cell = 0; cell < static_cast<Cell>(any.z.size()); ++cell) {
+            REQUIRE((edited.z[cell] == any.z[cell] || std::isnan(any.z[cell])));
+        }
+    });
+}
+
+TEST_CASE("beds never rise along a line, never lie above the ground") {
+    for_all_edits([](Edited edited, const AnyEdits& any) {
+        (void)lower_to_beds(edited.z, edited.edits.lines);
+        for (const Cell cell : edited.edits.lines.cells()) {
+            REQUIRE(edited.z[cell] <= any.z[cell]);
+            const Cell next = edited.edits.lines.next(cell);
+            if (!edited.edits.lines.contains(next)) continue;
+            REQUIRE(edited.z[next] <= edited.z[cell]);
+        }
+    });
+}
+
+TEST_CASE("without edits the flow is that of the ground") {
+    for (unsigned seed = 0; seed < 200; ++seed) {
+        const AnyEdits any(seed);
+        ElevationStore z = stored(any.z);
+        CHECK(edited_flow(z, TerrainEdits{}, plain_codes).codes == flow_forest_of(any.z, square).codes());
+    }
+}
+
+}  // namespace
+}  // namespace rillclock
