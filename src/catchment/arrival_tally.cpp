@@ -24,7 +24,7 @@ bool touches_edge(const Raster<FlowCode>& codes, const Window& window) {
 /// only where they change.
 class TileTally {
 public:
-    explicit TileTally(double storm_factor) : storm_factor_(storm_factor) {}
+    TileTally(double storm_factor, Storms storms) : storm_factor_(storm_factor), storms_(storms) {}
 
     void add(std::uint32_t owner, const ArrivingCell& cell) {
         if (owner != owner_ || arrivals_ == nullptr) {
@@ -32,6 +32,7 @@ public:
             arrivals_ = &by_owner_[owner];
         }
         arrivals_->add_unbinned(cell);
+        if (storms_ == Storms::by_point) return arrivals_->storm_bins.add(cell.head, cell.area, storm_factor_);
         const std::int64_t second = ArrivalBins::second_of(cell.head.time, storm_factor_);
         ArrivalBins::Bin& bin = bins_[{owner, second}];
         const bool is_first = bin.area == 0;
@@ -57,6 +58,7 @@ private:
     };
 
     double storm_factor_;
+    Storms storms_;
     std::uint32_t owner_ = 0;
     Arrivals* arrivals_ = nullptr;
     std::unordered_map<std::uint32_t, Arrivals> by_owner_;
@@ -77,7 +79,7 @@ bool is_beside_edge(const Raster<FlowCode>& codes, Cell cell) {
 void ArrivalTally::add(const TileDesk& desk) {
     const TiledGround& ground = travel_.ground();
     const bool at_edge = touches_edge(ground.forest.codes(), desk.flow.window());
-    TileTally tally(storm_factor_);
+    TileTally tally(storm_factor_, storms_);
     for (Local local = 0; local < desk.flow.size(); ++local) {
         if (desk.owner[local] == 0) continue;
         const Cell cell = desk.flow.cell(local);

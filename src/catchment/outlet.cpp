@@ -2,20 +2,10 @@
 
 #include <utility>
 
+#include "heads_at.hpp"
+
 namespace rillclock {
 namespace {
-
-PointHeads heads_at(const Arrivals& catchment, FixedArea own_area, double storm_factor, double ignore_tail) {
-    PointHeads heads;
-    heads.area = catchment.area;
-    heads.own_area = own_area;
-    heads.border_cells = catchment.border_cells;
-    for (std::size_t i = 0; i < told_shares.size(); ++i) heads.by_share[i] = catchment.bins.by_share(told_shares[i]);
-    heads.last = catchment.front.last_to_arrive(storm_factor);
-    heads.governing = ignore_tail > 0 ? catchment.bins.last_without(ignore_tail) : heads.last;
-    heads.farthest = catchment.farthest;
-    return heads;
-}
 
 PointPath path_of(const PathCells& cells, const PathGround& ground, const SegmentRules& rules) {
     PointPath path;
@@ -32,16 +22,9 @@ PointPath path_of(const PathCells& cells, const PathGround& ground, const Segmen
 
 std::vector<PointHeads> heads_of(std::vector<Arrivals> subareas, const PointTree& tree, double storm_factor,
                                  double ignore_tail) {
-    std::vector<FixedArea> own_areas;
-    for (const Arrivals& subarea : subareas) own_areas.push_back(subarea.area);
-    std::vector<PointHeads> heads(subareas.size());
-    for (const PointNumber number : tree.upstream_first) {
-        Arrivals& catchment = subareas[number - 1];  // by now with all that joins from above
-        heads[number - 1] = heads_at(catchment, own_areas[number - 1], storm_factor, ignore_tail);
-        const PointNumber next = tree.next_of(number);
-        if (next != 0) subareas[next - 1].add(std::move(catchment), storm_factor);
-    }
-    return heads;
+    return join_down(std::move(subareas), tree, storm_factor, [&](const Arrivals& catchment, PointNumber) {
+        return heads_at(catchment, catchment.bins, storm_factor, ignore_tail);
+    });
 }
 
 Outlet outlet_of(const OutletParts& parts, const PathGround& ground, const OutletRules& rules) {
@@ -60,6 +43,8 @@ Outlet outlet_of(const OutletParts& parts, const PathGround& ground, const Outle
     made.greatest_s = seconds_of(parts.heads.last);
     made.governing = path_of(parts.governing, ground, rules.segments);
     made.longest = path_of(parts.longest, ground, rules.segments);
+    made.storm_factor = ground.storm_factor;
+    made.storms = parts.heads.storms;
     return made;
 }
 

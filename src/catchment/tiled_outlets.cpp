@@ -15,6 +15,7 @@ std::vector<Cell> cells_of_all_paths(const Raster<FlowCode>& codes, std::span<co
             const std::vector<Cell> path = flow_path(codes, head, points[i].cell);
             cells.insert(cells.end(), path.begin(), path.end());
         }
+        for (const PointStorm& storm : heads[i].storms) cells.push_back(storm.governing.cell);
     }
     return cells;
 }
@@ -43,19 +44,22 @@ std::int64_t border_cells_at(const Raster<FlowCode>& codes, Cell point) {
 std::vector<Outlet> outlets_of(const TiledTravel& travel, std::span<const DesignPoint> points, const PointTree& tree,
                                const std::vector<PointHeads>& heads, const OutletRules& rules) {
     const Raster<FlowCode>& codes = travel.ground().forest.codes();
-    const PathGround ground{.classes = travel.ground().surface.classes,
-                            .metres_per_elevation_unit = travel.ground().metres_per_elevation_unit,
-                            .rules = travel.rules(),
-                            .storm_factor = travel.rules().sheet.storm_factor};
     const Found found = path_cells_at(travel, cells_of_all_paths(codes, points, heads));
     std::vector<Outlet> outlets(points.size());
     travel.executor().for_each(points.size(), [&](std::size_t i) {
         const Cell end = points[i].cell;
+        const PathGround ground{.classes = travel.ground().surface.classes,
+                                .metres_per_elevation_unit = travel.ground().metres_per_elevation_unit,
+                                .rules = travel.rules(),
+                                .storm_factor = heads[i].storm_factor};
         outlets[i] = outlet_of({.number = static_cast<PointNumber>(i + 1), .point = points[i], .next = tree.next[i], .heads = heads[i],
                                 .border_cells_at_point = border_cells_at(codes, end),
                                 .governing = path_of(codes, found, heads[i].governing.cell, end),
                                 .longest = path_of(codes, found, heads[i].farthest, end)},
                                ground, rules);
+        for (PointStorm& storm : outlets[i].storms) {
+            storm.length = found.at(storm.governing.cell).flow_distance - found.at(end).flow_distance;
+        }
     });
     return outlets;
 }

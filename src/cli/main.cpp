@@ -44,6 +44,10 @@ void show_notices(const Notices& notices, const std::string& rest) {
     if (notices.size() > most_notices_shown) spdlog::warn("and {} more notices{}", notices.size() - most_notices_shown, rest);
 }
 
+void show_facts(const std::vector<std::string>& facts) {
+    for (const std::string& fact : facts) spdlog::info("{}", fact);
+}
+
 void show_outcome(const RunOutcome& outcome) {
     std::cout << '\n' << outcome.overview << '\n';
     for (const std::string& headline : outcome.headlines) std::cout << "  * " << headline << '\n';
@@ -56,6 +60,7 @@ int run_command(const CommandLine& line) {
     StageLog log(line.quiet);
     const Progress progress([&](const StageProgress& report) { return log.report(report); });
     const RunOutcome outcome = run(study_of(line), {.replace = line.replace}, progress);
+    if (!line.quiet) show_facts(outcome.facts);
     if (!line.quiet) show_notices(outcome.notices, " in tables/review.csv");
     if (line.json) {
         std::cout << outcome.json;

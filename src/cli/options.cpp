@@ -30,6 +30,7 @@ constexpr std::array key_options = {
     KeyOption{"--fallback-class", "surface.fallback_class", "CODE", "class for cells without cover and codes the book does not know"},
     KeyOption{"--points", "points.file", "FILE", "design points; without it they stand where water leaves the data"},
     KeyOption{"--rain", "rain.two_year_24_hour", "DEPTH", "2-year 24-hour rainfall depth, \"3.6 in\" or \"91 mm\""},
+    KeyOption{"--rain-file", "rain.file", "FILE", "rain by duration and return period: an Atlas 14 point file or a table"},
     KeyOption{"--out", "output.folder", "FOLDER", "result folder (default: result)"},
 };
 

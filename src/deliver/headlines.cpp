@@ -56,12 +56,12 @@ std::string_view in_words(Regime regime) {
     return "";
 }
 
-std::string makeup_sentence(const StudyResult& result, const Outlet& main) {
+std::string makeup_sentence(const Outlet& main) {
     std::array<StepTime, 5> by_regime{};
     for (const Segment& s : main.governing.segments) by_regime[static_cast<std::size_t>(s.regime)] += s.time;
     std::string text;
     for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
-        const double s = in_seconds(by_regime[static_cast<std::size_t>(regime)].under(result.rules.sheet.storm_factor));
+        const double s = in_seconds(by_regime[static_cast<std::size_t>(regime)].under(main.storm_factor));
         if (!(s > 0)) continue;
         text += (text.empty() ? "" : ", ") + minutes_text(s) + " " + std::string(in_words(regime));
     }
@@ -96,7 +96,7 @@ OverviewRow overview_row(const StudyResult& result, const Outlet& outlet) {
 
 std::vector<std::string> headlines(const StudyResult& result) {
     const Outlet& main = result.outlets[by_area(result).front()];
-    return {governing_sentence(result, main), makeup_sentence(result, main), concern_sentence(result)};
+    return {governing_sentence(result, main), makeup_sentence(main), concern_sentence(result)};
 }
 
 std::string outlets_overview(const StudyResult& result, std::size_t most) {

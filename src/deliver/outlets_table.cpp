@@ -7,12 +7,12 @@ namespace {
 
 std::string in_minutes_text(double s) { return fixed_decimals(s / 60.0, 3); }
 
-double regime_seconds(const Outlet& outlet, Regime regime, double storm_factor) {
+double regime_seconds(const Outlet& outlet, Regime regime) {
     StepTime time;
     for (const Segment& segment : outlet.governing.segments) {
         if (segment.regime == regime) time += segment.time;
     }
-    return in_seconds(time.under(storm_factor));
+    return in_seconds(time.under(outlet.storm_factor));
 }
 
 void add_place_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
@@ -24,7 +24,7 @@ void add_place_columns(const StudyResult& result, const ReportScale& scale, Tabl
         .column("next_point", [&](const Outlet& o) { return o.next == 0 ? "" : result.outlets[o.next - 1].point.name; });
 }
 
-void add_time_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
+void add_time_columns(const ReportScale& scale, TableWriter<Outlet>& table) {
     table.column("area_" + scale.area_unit(), [=](const Outlet& o) { return five_digits(scale.area(from_fixed_area(o.area))); })
         .column("own_area_" + scale.area_unit(), [=](const Outlet& o) { return five_digits(scale.area(from_fixed_area(o.own_area))); })
         .column("time_of_concentration_min", [](const Outlet& o) { return in_minutes_text(o.time_of_concentration_s()); })
@@ -34,9 +34,7 @@ void add_time_columns(const StudyResult& result, const ReportScale& scale, Table
                      [i](const Outlet& o) { return in_minutes_text(o.arrival_s[i]); });
     }
     for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
-        table.column(std::string(name_of(regime)) + "_min", [&result, regime](const Outlet& o) {
-            return in_minutes_text(regime_seconds(o, regime, result.rules.sheet.storm_factor));
-        });
+        table.column(std::string(name_of(regime)) + "_min", [regime](const Outlet& o) { return in_minutes_text(regime_seconds(o, regime)); });
     }
 }
 
@@ -66,7 +64,7 @@ std::string outlets_table(const StudyResult& result) {
     const ReportScale scale(result.study.report_units);
     TableWriter<Outlet> table;
     add_place_columns(result, scale, table);
-    add_time_columns(result, scale, table);
+    add_time_columns(scale, table);
     add_path_columns(result, scale, table);
     add_trust_columns(table);
     std::string text = table.header();

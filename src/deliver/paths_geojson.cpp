@@ -45,7 +45,7 @@ Json line_or_nothing(GeographicLines& lines, const std::vector<Place>& places) {
 }
 
 void add_segments(const StudyResult& result, const Outlet& outlet, GeographicLines& lines, Json& features) {
-    for (const SegmentRow& row : segment_rows(result, outlet, outlet.governing, "governing")) {
+    for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) {
         features.push_back(feature(line_or_nothing(lines, segment_places(result, row)), segment_properties(result, row)));
     }
 }

@@ -1,7 +1,5 @@
 #include "raster_descriptions.hpp"
 
-#include "rillclock/core/number_text.hpp"
-
 namespace rillclock {
 
 RasterDescription travel_time_description(const RasterStory& story) {
@@ -9,8 +7,7 @@ RasterDescription travel_time_description(const RasterStory& story) {
             .description = "travel time to the last design point on the way down, or to where water leaves the data",
             .unit = "min",
             .nodata = no_value,
-            .metadata = {{"STORM", "2-year 24-hour depth " + significant(in_millimetres(story.two_year_24_hour)) + " mm"},
-                         {"SHEET_FLOW", "NRCS"}}};
+            .metadata = {{"STORM", story.storm}, {"SHEET_FLOW", story.sheet_flow}}};
 }
 
 RasterDescription flow_azimuth_description() {

@@ -100,7 +100,7 @@ void RasterStrips::fill(const TileDesk& desk) {
         filling_->catchment[at] = is_void ? no_number : desk.owner[local];
         filling_->regime[at] = is_void ? 0 : static_cast<std::uint8_t>(first_regime(travel_.step_view(desk, local), travel_.rules()));
         const StepTime to_point = desk.time_to_root(local) - story_.last_point_times[desk.owner[local]];
-        filling_->travel_time[at] = static_cast<float>(is_void ? no_value : in_minutes(to_point.under(story_.storm_factor)));
+        filling_->travel_time[at] = static_cast<float>(is_void ? no_value : in_minutes(to_point.under(story_.last_point_factors[desk.owner[local]])));
     }
 }
 

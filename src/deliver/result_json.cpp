@@ -24,6 +24,7 @@ Json digits(double value, int count = 6) {
     return std::isfinite(value) ? Json(std::stod(significant(value, count))) : Json(nullptr);
 }
 Json minutes_json(double s) { return number(s / 60.0, 6); }
+Json text_or_null(const std::string& text) { return text.empty() ? Json(nullptr) : Json(text); }
 Json place_json(const Place& place) { return Json::array({number(place.x, 7), number(place.y, 7)}); }
 
 Json versions() {
@@ -67,13 +68,20 @@ Json terrain_parameters(const TravelRules& rules) {
 
 Json sheet_parameters(const StudyResult& result) {
     const SheetRules& sheet = result.rules.sheet;
-    return {{"method", result.study.timing.sheet},
-            {"coefficient", sheet.formula.coefficient},
-            {"exponent", sheet.formula.exponent},
-            {"storm_factor", sheet.storm_factor},
-            {"rain_2_year_24_hour_mm", digits(in_millimetres(*result.study.rain.two_year_24_hour))},
-            {"limit_m", in_metres(sheet.limit)},
-            {"index_limit_m", number(in_metres(sheet.index_limit), 6)}};
+    const TimingStudy& timing = result.study.timing;
+    Json json = {{"method", timing.sheet}, {"coefficient", sheet.formula.coefficient}, {"exponent", sheet.formula.exponent}};
+    if (timing.is_kinematic()) {
+        json["constant"] = timing.sheet_constant.value_or(kinematic_constant_hec22);
+        json["storm"] = words(timing.storm.value_or(StormDuration::whole_path));
+        json["reference_storm_factor"] = sheet.storm_factor;
+        json["tolerance_s"] = in_seconds(StormSearch{}.tolerance);
+    } else {
+        json["storm_factor"] = sheet.storm_factor;
+        json["rain_2_year_24_hour_mm"] = digits(in_millimetres(*result.rain.two_year_24_hour));
+    }
+    json["limit_m"] = in_metres(sheet.limit);
+    json["index_limit_m"] = number(in_metres(sheet.index_limit), 6);
+    return json;
 }
 
 Json power_law(const PowerLaw& law) {
@@ -92,8 +100,27 @@ Json channel_parameters(const ChannelRules& channel) {
     return json;
 }
 
+Json rain_json(const StudyResult& result) {
+    const RainEcho& echo = result.rain.source->echo;
+    Json periods = Json::array();
+    for (const StudyStorm& storm : result.rain.storms) periods.push_back(storm.return_period);
+    return {{"source", echo.source},
+            {"kind", echo.kind},
+            {"block", text_or_null(echo.block)},
+            {"quantity", echo.quantity},
+            {"unit", echo.unit},
+            {"series", text_or_null(echo.series)},
+            {"place", text_or_null(echo.place)},
+            {"source_return_periods", echo.return_periods},
+            {"first_duration_min", in_minutes(echo.range.first)},
+            {"last_duration_min", echo.range.last ? Json(in_minutes(*echo.range.last)) : Json(nullptr)},
+            {"least_time_min", in_minutes(result.study.peaks.least_time.value_or(standard_least_time))},
+            {"return_periods", periods},
+            {"raster_return_period", result.rain.raster_storm().return_period}};
+}
+
 Json parameters_json(const StudyResult& result) {
-    return {{"terrain", terrain_parameters(result.rules)},
+    Json json = {{"terrain", terrain_parameters(result.rules)},
             {"sheet", sheet_parameters(result)},
             {"shallow", result.study.timing.shallow == ShallowRule::by_cover ? "by cover" : "paved and unpaved"},
             {"channel", channel_parameters(result.rules.channel)},
@@ -101,6 +128,8 @@ Json parameters_json(const StudyResult& result) {
             {"ignore_tail", result.study.timing.ignore_tail},
             {"move_within_m", in_metres(result.resolved.move_within)},
             {"shortest_segment_m", in_metres(result.resolved.shortest_segment)}};
+    if (result.rain.source) json["rain"] = rain_json(result);
+    return json;
 }
 
 Json segment_json(const StudyResult& result, const SegmentRow& row) {
@@ -121,7 +150,7 @@ Json segment_json(const StudyResult& result, const SegmentRow& row) {
 
 Json path_json(const StudyResult& result, const Outlet& outlet, const PointPath& path) {
     Json segments = Json::array();
-    for (const SegmentRow& row : segment_rows(result, outlet, path, "")) segments.push_back(segment_json(result, row));
+    for (const SegmentRow& row : segment_rows(outlet, path, "")) segments.push_back(segment_json(result, row));
     const PathSummary& summary = path.summary;
     return {{"head", place_json(result.grid.centre(path.cells.front()))},
             {"time_s", number(path.seconds, 6)},
@@ -143,8 +172,35 @@ Json arrivals_json(const Outlet& outlet) {
     return json;
 }
 
+Json iteration_json(const StormTime& iteration) {
+    Json rows = Json::array();
+    for (const StormIteration& row : iteration.rows) {
+        rows.push_back({{"assumed_min", minutes_json(in_seconds(row.assumed))},
+                        {"intensity_mm_per_h", digits(in_millimetres_per_hour(row.intensity), 8)},
+                        {"computed_min", minutes_json(in_seconds(row.computed))}});
+    }
+    return rows;
+}
+
+Json storms_json(const StudyResult& result, const Outlet& outlet) {
+    Json storms = Json::array();
+    for (std::size_t i = 0; i < outlet.storms.size(); ++i) {
+        const PointStorm& storm = outlet.storms[i];
+        const bool is_read = !storm.iteration.rows.empty();
+        Json json = {{"return_period", result.rain.storms[i].return_period},
+                     {"intensity_mm_per_h", is_read ? digits(in_millimetres_per_hour(storm.iteration.intensity()), 8) : Json(nullptr)},
+                     {"time_s", number(storm.seconds(), 6)},
+                     {"sheet_time_s", number(storm.sheet_seconds(), 6)},
+                     {"governing_head", place_json(result.grid.centre(storm.governing.cell))},
+                     {"path_length_m", number(from_fixed(storm.length), 3)}};
+        if (result.study.timing.is_kinematic()) json["iteration"] = iteration_json(storm.iteration);
+        storms.push_back(json);
+    }
+    return storms;
+}
+
 Json outlet_json(const StudyResult& result, const Outlet& outlet) {
-    return {{"number", outlet.number},
+    Json json = {{"number", outlet.number},
             {"name", outlet.point.name},
             {"place", place_json(result.grid.centre(outlet.point.cell))},
             {"moved_m", digits(in_metres(outlet.point.moved))},
@@ -158,6 +214,8 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
             {"arrivals", arrivals_json(outlet)},
             {"governing_path", path_json(result, outlet, outlet.governing)},
             {"longest_path", path_json(result, outlet, outlet.longest)}};
+    if (!outlet.storms.empty()) json["storms"] = storms_json(result, outlet);
+    return json;
 }
 
 template <class T>

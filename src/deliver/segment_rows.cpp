@@ -12,13 +12,12 @@ Place place_on_step(const Grid& grid, const PointPath& path, std::size_t positio
 
 }  // namespace
 
-std::vector<SegmentRow> segment_rows(const StudyResult& result, const Outlet& outlet, const PointPath& path,
-                                     std::string_view path_name) {
+std::vector<SegmentRow> segment_rows(const Outlet& outlet, const PointPath& path, std::string_view path_name) {
     std::vector<SegmentRow> rows;
     StepTime running;
     for (const Segment& segment : path.segments) {
         running += segment.time;
-        const double s = result.rules.sheet.storm_factor;
+        const double s = outlet.storm_factor;
         rows.push_back({.outlet = &outlet, .path = &path, .segment = &segment, .path_name = path_name,
                         .number = rows.size() + 1, .time_s = in_seconds(segment.time.under(s)),
                         .pond_time_s = in_seconds(segment.pond_time.under(s)), .running_s = in_seconds(running.under(s))});
@@ -26,10 +25,10 @@ std::vector<SegmentRow> segment_rows(const StudyResult& result, const Outlet& ou
     return rows;
 }
 
-std::vector<SegmentRow> segment_rows(const StudyResult& result, const Outlet& outlet) {
-    std::vector<SegmentRow> rows = segment_rows(result, outlet, outlet.governing, "governing");
+std::vector<SegmentRow> segment_rows(const Outlet& outlet) {
+    std::vector<SegmentRow> rows = segment_rows(outlet, outlet.governing, "governing");
     if (outlet.longest.cells.front() == outlet.governing.cells.front()) return rows;
-    const std::vector<SegmentRow> longest = segment_rows(result, outlet, outlet.longest, "longest");
+    const std::vector<SegmentRow> longest = segment_rows(outlet, outlet.longest, "longest");
     rows.insert(rows.end(), longest.begin(), longest.end());
     return rows;
 }

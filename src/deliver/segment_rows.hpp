@@ -22,11 +22,10 @@ struct SegmentRow {
 };
 
 /// The rows of one path, in order.
-[[nodiscard]] std::vector<SegmentRow> segment_rows(const StudyResult& result, const Outlet& outlet, const PointPath& path,
-                                                   std::string_view path_name);
+[[nodiscard]] std::vector<SegmentRow> segment_rows(const Outlet& outlet, const PointPath& path, std::string_view path_name);
 
 /// The rows of a point's governing path, and of its longest path where that begins elsewhere.
-[[nodiscard]] std::vector<SegmentRow> segment_rows(const StudyResult& result, const Outlet& outlet);
+[[nodiscard]] std::vector<SegmentRow> segment_rows(const Outlet& outlet);
 
 /// Where a segment runs: from its first to its last place, in the DEM's coordinates, every cell centre between.
 [[nodiscard]] std::vector<Place> segment_places(const StudyResult& result, const SegmentRow& row);

@@ -38,6 +38,12 @@ void add_name_columns(const StudyResult& result, Table& table) {
         });
 }
 
+/// The rain that the sheet-flow formula asks for.
+std::string rain_column(const StudyResult& result, const ReportScale& scale) {
+    if (result.study.timing.is_kinematic()) return "rain_intensity_" + scale.intensity_unit();
+    return "rain_2_year_24_hour_" + scale.rain_unit();
+}
+
 void add_formula_columns(const StudyResult& result, const ReportScale& scale, Table& table) {
     const std::string m = scale.length_unit();
     table.column("length_" + m, [=](const SegmentRow& r) { return five_digits(scale.length(r.segment->length_m)); })
@@ -57,8 +63,9 @@ void add_formula_columns(const StudyResult& result, const ReportScale& scale, Ta
         .column("index_to_" + m, [=](const SegmentRow& r) {
             return r.segment->regime == Regime::sheet ? index_text(scale, *r.segment, r.segment->index_to_m) : "";
         })
-        .column("rain_2_year_24_hour_" + scale.rain_unit(), only_in(Regime::sheet, [&result, scale](const SegmentRow&) {
-            return scale.rain(*result.study.rain.two_year_24_hour);
+        .column(rain_column(result, scale), only_in(Regime::sheet, [&result, scale](const SegmentRow& r) {
+            const std::optional<Intensity> intensity = sheet_intensity(result, *r.outlet);
+            return intensity ? scale.intensity(*intensity) : scale.rain(*result.rain.two_year_24_hour);
         }))
         .column("hydraulic_radius_" + m, only_in(Regime::channel, [=](const SegmentRow& r) {
             return scale.length(r.segment->radius_equivalent_m);
@@ -113,7 +120,7 @@ std::string segments_table(const StudyResult& result) {
     add_place_columns(result, table);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) {
-        for (const SegmentRow& row : segment_rows(result, outlet)) text += table.line(row);
+        for (const SegmentRow& row : segment_rows(outlet)) text += table.line(row);
     }
     return text;
 }

@@ -23,6 +23,28 @@ void require_search(const StormSearch& search) {
 
 }  // namespace
 
+std::string_view words(StormDuration duration) {
+    switch (duration) {
+        case StormDuration::whole_path:
+            return "whole path";
+        case StormDuration::sheet_part:
+            return "sheet part";
+    }
+    return "";
+}
+
+std::string_view words(StormEnd end) {
+    switch (end) {
+        case StormEnd::settled:
+            return "settled";
+        case StormEnd::beyond_the_rain:
+            return "beyond the rain";
+        case StormEnd::not_settling:
+            return "not settling";
+    }
+    return "";
+}
+
 Duration StormTime::time() const {
     return rows.empty() ? seconds(std::nan("")) : rows.back().computed;
 }

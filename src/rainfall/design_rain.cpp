@@ -24,7 +24,8 @@ std::string rain_is_missing(std::string_view where) {
     return std::string(where) +
            " gives no rain, and there is no default for it; state the 2-year 24-hour depth of the place, under [rain] "
            "as "
-           "two_year_24_hour = \"3.6 in\" or on the command line as --rain \"3.6 in\"";
+           "two_year_24_hour = \"3.6 in\" or on the command line as --rain \"3.6 in\", or rain by duration as "
+           "file = \"atlas14.csv\" or --rain-file atlas14.csv";
 }
 
 }  // namespace rillclock

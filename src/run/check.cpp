@@ -10,6 +10,7 @@
 #include "rillclock/io/cover_file.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/io/ground_of.hpp"
+#include "mapped_flow.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
 
@@ -31,8 +32,10 @@ public:
         attempt([&] { check_study(study_); });
         attempt([&] { elevations(); });
         attempt([&] { book(); });
+        attempt([&] { rain(); });
         if (terrain_) {
             attempt([&] { cover(); });
+            attempt([&] { mapped_shapes(); });
             attempt([&] { points(); });
             costs();
         }
@@ -75,6 +78,18 @@ private:
         report_.facts.push_back("cover book: " + book.name() + ", " + std::to_string(book.classes().size()) + " classes");
     }
 
+    void rain() {
+        // What is missing altogether has been said already.
+        if (!study_.rain.two_year_24_hour && !study_.rain.is_by_duration()) return;
+        const StudyRain rain = read_rain(study_);
+        note(rain.notices);
+        if (rain.source) report_.facts.push_back("rain: " + sentence(rain.source->echo));
+        if (rain.two_year_24_hour) {
+            report_.facts.push_back("rain: 2-year 24-hour depth " + significant(in_inches(*rain.two_year_24_hour), 4) + " in (" +
+                                    significant(in_millimetres(*rain.two_year_24_hour), 4) + " mm)");
+        }
+    }
+
     void cover() {
         if (study_.surface.cover.empty()) return;
         CoverOptions options;
@@ -83,6 +98,12 @@ private:
         note(file.notices);
         report_.facts.push_back("land cover: " + std::to_string(file.file_grid.rows) + " rows × " +
                                 std::to_string(file.file_grid.columns) + " columns in " + file.system.name());
+    }
+
+    void mapped_shapes() {
+        const MappedShapes mapped = read_mapped_shapes(study_, terrain_->grid(), terrain_->system);
+        report_.facts.insert(report_.facts.end(), mapped.facts.begin(), mapped.facts.end());
+        note(mapped.notices);
     }
 
     void points() {

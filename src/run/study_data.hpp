@@ -10,6 +10,7 @@
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
 #include "rillclock/study/study.hpp"
+#include "rillclock/study/study_rain.hpp"
 #include "rillclock/surface/cover_book.hpp"
 #include "rillclock/travel/surface_table.hpp"
 #include "rillclock/travel/tiled_travel.hpp"
@@ -50,7 +51,9 @@ struct StatedPoints {
 [[nodiscard]] PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const TiledTravel& travel,
                                          const TerrainData& terrain);
 [[nodiscard]] DataFacts facts_of(const ElevationFormat& format, const Ground& ground);
-[[nodiscard]] TravelRules rules_of(const Study& study, const ResolvedStudy& resolved);
+/// Reads the rain of a study, from its file if it names one.
+[[nodiscard]] StudyRain read_rain(const Study& study);
+[[nodiscard]] TravelRules rules_of(const Study& study, const ResolvedStudy& resolved, const StudyRain& rain);
 [[nodiscard]] OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved);
 [[nodiscard]] std::vector<InputFile> input_files(const Study& study);
 

@@ -5,21 +5,20 @@
 #include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/io/point_file.hpp"
 #include "rillclock/io/text_file.hpp"
+#include "mapped_flow.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
 namespace {
 
-/// Where each point has a storm of its own, steps are cut under the raster's return period at this duration: it decides whether water on
-/// ponded ground moves as sheet flow or as a wave (by far the faster in any storm), and times the cells that drain to no point.
-constexpr Duration reference_duration = minutes(5);
-
+/// Where each point has a storm of its own, steps are cut under a reference storm, the raster's return period at 5 min: it decides whether
+/// water on ponded ground moves as sheet flow or as a wave (by far the faster in any storm), and times the cells that drain to no point.
 SheetRules sheet_rules_of(const Study& study, const StudyRain& rain) {
     if (!study.timing.is_kinematic()) {
         return {.formula = nrcs_sheet_formula(), .storm_factor = nrcs_storm_factor(*rain.two_year_24_hour)};
     }
     return {.formula = kinematic_sheet_formula(study.timing.sheet_constant.value_or(kinematic_constant_hec22)),
-            .storm_factor = kinematic_storm_factor(rain.raster_storm().rain.at(reference_duration))};
+            .storm_factor = kinematic_storm_factor(rain.raster_storm().rain.at(rain.first_assumed()))};
 }
 
 }  // namespace
@@ -99,6 +98,9 @@ std::vector<InputFile> input_files(const Study& study) {
     add("cover", study.surface.cover);
     if (!is_built_in_book(study.surface.book)) add("book", study.surface.book);
     if (study.points.file) add("points", *study.points.file);
+    for (const MappedFile& file : mapped_files(study)) {
+        if (file.name) add(file.role, *file.name);
+    }
     if (study.rain.file) add("rain", *study.rain.file);
     return files;
 }

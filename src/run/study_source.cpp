@@ -16,7 +16,7 @@ namespace rillclock {
 namespace {
 
 bool names_a_file(std::string_view key, const std::string& value) {
-    constexpr std::array<std::string_view, 4> files = {"terrain.elevation", "surface.cover", "points.file", "output.folder"};
+    constexpr std::array<std::string_view, 5> files = {"terrain.elevation", "surface.cover", "points.file", "rain.file", "output.folder"};
     if (key == "surface.book") return !is_built_in_book(value);
     return std::find(files.begin(), files.end(), key) != files.end();
 }

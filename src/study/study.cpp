@@ -28,7 +28,8 @@ void require_inputs(const Study& study) {
         study, study.surface.book,
         "cover book; state what the codes of the cover raster mean, under [surface] as book = \"nlcd\" or the name of "
         "a CSV file, or as --book nlcd");
-    if (!study.rain.two_year_24_hour) throw input_error(rain_is_missing(name_of(study)));
+    const bool has_rain = study.rain.two_year_24_hour || study.rain.is_by_duration();
+    if (!has_rain) throw input_error(rain_is_missing(name_of(study)));
 }
 
 void refuse_contradictory_channel(const Study& study) {
@@ -56,6 +57,33 @@ void refuse_contradictory_points(const Study& study) {
                           "\"points.gpkg\" under [points], or leave out name, layer and move_within");
 }
 
+void refuse_contradictory_rain(const Study& study) {
+    const RainStudy& rain = study.rain;
+    if (rain.file && !rain.formulas.empty())
+        throw input_error(name_of(study) + " gives rain both as a file and as a formula; keep one of them");
+    if (rain.formulas.empty() && (rain.formula_from || rain.formula_to))
+        throw input_error(name_of(study) +
+                          " says between which durations its formula of rain holds but gives none; add formula under "
+                          "[rain], or leave out formula_from and formula_to");
+    const bool asks = !rain.return_periods.empty() || study.timing.raster_return_period || study.peaks.least_time;
+    if (asks && !rain.is_by_duration())
+        throw input_error(name_of(study) +
+                          " states return_periods, raster_return_period or least_time, which act on rain by duration "
+                          "only, but gives none; add file or formula under [rain], or leave them out");
+}
+
+void refuse_contradictory_sheet(const Study& study) {
+    const TimingStudy& timing = study.timing;
+    if (timing.is_kinematic() && !study.rain.is_by_duration())
+        throw input_error(name_of(study) +
+                          " times sheet flow by the kinematic wave, which needs rain by duration; add file = "
+                          "\"atlas14.csv\" or formula under [rain], or --rain-file FILE");
+    if (!timing.is_kinematic() && (timing.sheet_constant || timing.storm))
+        throw input_error(name_of(study) +
+                          " states sheet_constant or storm, which act on kinematic sheet flow only; add sheet = "
+                          "\"kinematic\" under [timing], or leave them out");
+}
+
 /// "NETCDF:…", "GPKG:…": a driver's name before a colon, in capitals.
 bool has_driver_prefix(const std::string& name) {
     const auto colon = name.find(':');
@@ -78,6 +106,8 @@ void check_study(const Study& study) {
     require_inputs(study);
     refuse_contradictory_points(study);
     refuse_contradictory_channel(study);
+    refuse_contradictory_rain(study);
+    refuse_contradictory_sheet(study);
 }
 
 ResolvedStudy resolve(const Study& study, const DataFacts& facts) {

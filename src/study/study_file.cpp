@@ -2,6 +2,7 @@
 
 #include <toml++/toml.h>
 
+#include <limits>
 #include <optional>
 
 #include "rillclock/core/error.hpp"
@@ -39,6 +40,8 @@ public:
             const std::string where = place(file_, name.source().begin);
             if (is_study_section(key)) {
                 read_section(node, key, where);
+            } else if (takes_entries(key) && node.is_table()) {
+                read_entries(*node.as_table(), key);
             } else if (is_study_key(key)) {
                 set_study_value(study_, key,
                                 {.value = scalar(node, key), .subject = key + " (" + value_place(node) + ")"});
@@ -57,6 +60,15 @@ private:
         read(*inner, key);
     }
 
+    /// A table whose names are the user's own.
+    void read_entries(const toml::table& table, const std::string& key) {
+        for (const auto& [name, node] : table) {
+            const std::string entry(name.str());
+            const std::string subject = key + "." + entry + " (" + value_place(node) + ")";
+            set_study_value(study_, key, {.value = scalar(node, key), .subject = subject, .entry = entry});
+        }
+    }
+
     /// An unknown section is told of by its first key, which says more about what was meant.
     [[nodiscard]] static std::string first_key_of(const toml::node& node, const std::string& key) {
         const toml::table* table = node.as_table();
@@ -66,13 +78,21 @@ private:
 
     [[nodiscard]] std::string value_place(const toml::node& node) const { return place(file_, node.source().begin); }
 
-    [[nodiscard]] std::variant<std::string, std::int64_t, double, bool> scalar(const toml::node& node,
-                                                                               const std::string& key) const {
+    /// The numbers of a list; NaN for what is none, which whoever takes the list refuses.
+    [[nodiscard]] static std::vector<double> numbers(const toml::array& list) {
+        std::vector<double> numbers;
+        for (const toml::node& node : list)
+            numbers.push_back(node.value<double>().value_or(std::numeric_limits<double>::quiet_NaN()));
+        return numbers;
+    }
+
+    [[nodiscard]] decltype(StudyValue::value) scalar(const toml::node& node, const std::string& key) const {
+        if (const auto* list = node.as_array()) return numbers(*list);
         if (const auto* text = node.as_string()) return text->get();
         if (const auto* whole = node.as_integer()) return whole->get();
         if (const auto* real = node.as_floating_point()) return real->get();
         if (const auto* truth = node.as_boolean()) return truth->get();
-        throw input_error(key + " (" + value_place(node) + ") is a list, a table or a date; write one value, such as " +
+        throw input_error(key + " (" + value_place(node) + ") is a table or a date; write one value, such as " +
                           form_of(key));
     }
 

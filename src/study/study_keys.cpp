@@ -18,6 +18,12 @@ constexpr std::array keys{
     StudyKey{"terrain.band", "1", "the only one", "its band; asked for where the file has several"},
     StudyKey{"terrain.elevation_unit", R"("m")", "what the file says",
              "m, ft or us survey ft, where the file does not say"},
+    StudyKey{"terrain.channels", R"("brook.gpkg")", "none",
+             "lines that the flow follows, drawn downstream; channel flow along them"},
+    StudyKey{"terrain.crossings", R"("culverts.geojson")", "none",
+             "lines that carry flow through an embankment, from the higher to the lower end"},
+    StudyKey{"terrain.barriers", R"("walls.geojson")", "none", "lines that flow does not cross"},
+    StudyKey{"terrain.keep_water", R"("ponds.geojson")", "none", "points and polygons where water stays"},
     StudyKey{"terrain.slope_window", R"("20 m")", "the larger of 20 m and 3 cells",
              "length of path over which slope is taken"},
     StudyKey{"terrain.vertical_step", R"("0.2 m")", "the largest of 0.2 m, the data's quantum and a tenth of the cell",
@@ -38,8 +44,24 @@ constexpr std::array keys{
              "without a file: least area of a way out that becomes a point"},
     StudyKey{"points.move_within", R"("5 m")", "the larger of 5 m and one cell",
              "points move this far at most, to the cell of largest contributing area"},
-    StudyKey{"rain.two_year_24_hour", R"("3.6 in")", "asked for", "2-year 24-hour rainfall depth"},
-    StudyKey{"timing.sheet", R"("nrcs")", "nrcs", "formula of sheet flow"},
+    StudyKey{"rain.two_year_24_hour", R"("3.6 in")", "asked for, unless rain.file holds it or sheet is kinematic",
+             "2-year 24-hour rainfall depth"},
+    StudyKey{"rain.file", R"("atlas14.csv")", "none",
+             "intensity by duration and return period: a NOAA Atlas 14 point file or a plain table"},
+    StudyKey{"rain.formula", R"("i[in/h] = 45 T^0.2 / (t[min] + 10)^0.8")", "none",
+             "the same as a formula with T, or one formula a return period under [rain.formula]"},
+    StudyKey{"rain.formula_from", R"("5 min")", "0 min", "shortest duration for which the formulas hold"},
+    StudyKey{"rain.formula_to", R"("24 h")", "none", "longest duration for which the formulas hold"},
+    StudyKey{"rain.return_periods", "[2, 10, 100]", "10, or raster_return_period",
+             "return periods in years for which intensities are read"},
+    StudyKey{"timing.sheet", R"("nrcs")", "nrcs",
+             "formula of sheet flow: nrcs, or kinematic, which needs rain by duration"},
+    StudyKey{"timing.sheet_constant", "0.933", "0.933",
+             "constant of the kinematic formula: 0.933 (HEC-22) or 0.94 (Morgali and Linsley)"},
+    StudyKey{"timing.storm", R"("whole path")", "whole path",
+             "whole path or sheet part: whose time is the duration of the storm that drives kinematic sheet flow"},
+    StudyKey{"timing.raster_return_period", "10", "10 where it is listed, else the first that is",
+             "return period in years of the storm that the rasters, paths and segments are for"},
     StudyKey{"timing.sheet_limit", R"("100 ft")", "100 ft", "distance from the divide at which sheet flow ends"},
     StudyKey{"timing.sheet_limit_rule", R"("whichever first")", "whichever first",
              "whichever first: sheet_limit or 100 ft sqrt(S)/n; stated: sheet_limit alone"},
@@ -58,21 +80,17 @@ constexpr std::array keys{
     StudyKey{"timing.ignore_tail", R"("0 %")", "0 %", "share of a point's area, the slowest, that is left out"},
     StudyKey{"timing.shortest_segment", R"("50 m")", "the larger of 50 m and 5 cells",
              "a shorter run of one slope joins its neighbour"},
+    StudyKey{"peaks.least_time", R"("5 min")", "5 min", "no intensity is read below this duration; 0 min is off"},
     StudyKey{"output.folder", R"("result")", "result", "result folder"},
     StudyKey{"output.rasters", R"("geotiff")", "geotiff", "format of the rasters"},
 };
 
 /// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
-constexpr std::array<std::string_view, 19> not_served{"terrain.channels",    "terrain.crossings",
-                                                      "terrain.barriers",    "terrain.keep_water",
-                                                      "surface.soil_group",  "points.area",
-                                                      "points.pipes",        "rain.file",
-                                                      "rain.table",          "rain.formula",
-                                                      "rain.return_periods", "timing.storm",
-                                                      "timing.channel.flow", "timing.raster_return_period",
-                                                      "timing.overrides",    "peaks",
-                                                      "uncertainty",         "scenario",
-                                                      "output.isochrones"};
+constexpr std::array<std::string_view, 10> not_served{"surface.soil_group", "points.area",
+                                                      "points.pipes", "rain.table",
+                                                      "timing.channel.flow", "timing.overrides",
+                                                      "peaks", "uncertainty",
+                                                      "scenario", "output.isochrones"};
 
 bool is_or_is_under(std::string_view key, std::string_view stem) {
     return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));
@@ -114,6 +132,10 @@ std::span<const StudyKey> study_keys() {
 
 bool is_study_key(std::string_view key) {
     return std::any_of(keys.begin(), keys.end(), [&](const StudyKey& known) { return known.key == key; });
+}
+
+bool takes_entries(std::string_view key) {
+    return key == "rain.formula";
 }
 
 bool is_study_section(std::string_view name) {

@@ -5,6 +5,7 @@
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/nearest_word.hpp"
 #include "rillclock/core/number_text.hpp"
+#include "rillclock/hydraulics/sheet_flow.hpp"
 #include "rillclock/rainfall/design_rain.hpp"
 #include "rillclock/study/study_keys.hpp"
 #include "rillclock/surface/cover_book.hpp"
@@ -23,6 +24,8 @@ std::string without_quotes(std::string form) {
     std::erase(form, '"');
     return form;
 }
+
+constexpr double greatest_return_period = 1e6;  // years
 
 /// A value under its key: read as one kind of thing or another, or refused with the right form.
 class Stated {
@@ -85,6 +88,31 @@ public:
         throw fault("is \"" + text() + "\"; write " + list + did_you_mean(text(), served));
     }
 
+    /// Years, at least 1 each, rising. One number alone is a list of one.
+    [[nodiscard]] std::vector<double> return_periods() const {
+        const auto* list = std::get_if<std::vector<double>>(&value_.value);
+        const std::vector<double> years = list != nullptr ? *list : std::vector{number(1, greatest_return_period)};
+        double last = 0.0;
+        for (const double period : years) {
+            if (!(period >= 1 && period <= greatest_return_period && period > last))
+                throw fault("is not a list of return periods; write years from 1 on, rising, such as " + form_);
+            last = period;
+        }
+        if (years.empty()) throw fault("is empty; write return periods in years, such as " + form_);
+        return years;
+    }
+
+    [[nodiscard]] Duration duration(Sign sign) const { return duration_from_text(text(), asked(sign)); }
+
+    /// The return period that the value's place in a table of the user's names stands for; none outside of such.
+    [[nodiscard]] std::optional<double> entry_period() const {
+        if (value_.entry.empty()) return std::nullopt;
+        const double years = number_from_text(value_.entry, {.subject = value_.subject, .example = "10"});
+        if (!(years >= 1 && years <= greatest_return_period))
+            throw fault("stands under " + value_.entry + "; name it by its return period in years, from 1 on");
+        return years;
+    }
+
     [[nodiscard]] const std::string& subject() const { return value_.subject; }
 
 private:
@@ -94,6 +122,7 @@ private:
             std::string operator()(std::int64_t whole) const { return std::to_string(whole); }
             std::string operator()(double real) const { return significant(real); }
             std::string operator()(bool truth) const { return truth ? "true" : "false"; }
+            std::string operator()(const std::vector<double>&) const { return "a list"; }
         };
         return std::visit(Show{}, value_.value);
     }
@@ -125,6 +154,19 @@ Length elevation_unit(const Stated& stated) {
     return units[stated.choice({"m", "ft", "us survey ft"})];
 }
 
+double sheet_constant(const Stated& stated) {
+    const double constant = stated.number(0, 10);
+    if (constant != kinematic_constant_hec22 && constant != kinematic_constant_morgali_linsley)
+        throw stated.fault("is " + significant(constant) + "; write 0.933 (HEC-22) or 0.94 (Morgali and Linsley)");
+    return constant;
+}
+
+void add_formula(Study& study, const Stated& stated) {
+    PeriodFormula formula{.return_period = stated.entry_period(),
+                          .formula = intensity_formula_from_text(stated.text(), stated.subject())};
+    study.rain.formulas.push_back({.formula = formula, .subject = stated.subject()});
+}
+
 struct Setter {
     std::string_view key;
     void (*set)(Study&, const Stated&);
@@ -142,6 +184,10 @@ constexpr std::array setters{
     Setter{"terrain.elevation", [](Study& s, const Stated& v) { s.terrain.elevation = v.text(); }},
     Setter{"terrain.band", [](Study& s, const Stated& v) { s.terrain.band = v.whole_number(1); }},
     Setter{"terrain.elevation_unit", [](Study& s, const Stated& v) { s.terrain.elevation_unit = elevation_unit(v); }},
+    Setter{"terrain.channels", [](Study& s, const Stated& v) { s.terrain.channels = v.text(); }},
+    Setter{"terrain.crossings", [](Study& s, const Stated& v) { s.terrain.crossings = v.text(); }},
+    Setter{"terrain.barriers", [](Study& s, const Stated& v) { s.terrain.barriers = v.text(); }},
+    Setter{"terrain.keep_water", [](Study& s, const Stated& v) { s.terrain.keep_water = v.text(); }},
     Setter{"terrain.slope_window", [](Study& s, const Stated& v) { s.terrain.slope_window = v.length(); }},
     Setter{"terrain.vertical_step", [](Study& s, const Stated& v) { s.terrain.vertical_step = v.length(); }},
     Setter{"terrain.pond_depth", [](Study& s, const Stated& v) { s.terrain.pond_depth = v.length(); }},
@@ -162,11 +208,24 @@ constexpr std::array setters{
     Setter{
         "rain.two_year_24_hour",
         [](Study& s, const Stated& v) { s.rain.two_year_24_hour = two_year_24_hour_from_text(v.text(), v.subject()); }},
+    Setter{"rain.file", [](Study& s, const Stated& v) { s.rain.file = v.text(); }},
+    Setter{"rain.formula", add_formula},
+    Setter{"rain.formula_from", [](Study& s, const Stated& v) { s.rain.formula_from = v.duration(Sign::not_negative); }},
+    Setter{"rain.formula_to", [](Study& s, const Stated& v) { s.rain.formula_to = v.duration(Sign::positive); }},
+    Setter{"rain.return_periods", [](Study& s, const Stated& v) { s.rain.return_periods = v.return_periods(); }},
     Setter{"timing.sheet",
            [](Study& s, const Stated& v) {
-               (void)v.choice({"nrcs"}, {"kinematic"});
+               (void)v.choice({"nrcs", "kinematic"});
                s.timing.sheet = v.text();
            }},
+    Setter{"timing.sheet_constant", [](Study& s, const Stated& v) { s.timing.sheet_constant = sheet_constant(v); }},
+    Setter{"timing.storm",
+           [](Study& s, const Stated& v) {
+               const bool whole = v.choice({"whole path", "sheet part"}) == 0;
+               s.timing.storm = whole ? StormDuration::whole_path : StormDuration::sheet_part;
+           }},
+    Setter{"timing.raster_return_period",
+           [](Study& s, const Stated& v) { s.timing.raster_return_period = v.number(1, greatest_return_period); }},
     Setter{"timing.sheet_limit", [](Study& s, const Stated& v) { s.timing.sheet_limit = v.length(); }},
     Setter{"timing.sheet_limit_rule",
            [](Study& s, const Stated& v) {
@@ -191,6 +250,7 @@ constexpr std::array setters{
     Setter{"timing.ignore_tail",
            [](Study& s, const Stated& v) { s.timing.ignore_tail = v.fraction(Sign::not_negative); }},
     Setter{"timing.shortest_segment", [](Study& s, const Stated& v) { s.timing.shortest_segment = v.length(); }},
+    Setter{"peaks.least_time", [](Study& s, const Stated& v) { s.peaks.least_time = v.duration(Sign::not_negative); }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
     Setter{"output.rasters", [](Study&, const Stated& v) { (void)v.choice({"geotiff"}, {"cog"}); }},
 };

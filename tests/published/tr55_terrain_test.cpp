@@ -75,7 +75,7 @@ Answer answer_of(const Example& example) {
     REQUIRE(outlet.governing.cells.front() == 0);
     std::map<Regime, double> by_regime;
     for (const Segment& row : outlet.governing.segments) {
-        by_regime[row.regime] += in_hours(row.time.under(w.arrivals.storm_factor));
+        by_regime[row.regime] += in_hours(row.time.under(w.storm_factor));
     }
     REQUIRE(by_regime.size() == 3);
     return {by_regime[Regime::sheet], by_regime[Regime::shallow], by_regime[Regime::channel],

@@ -8,11 +8,15 @@
 
 namespace rillclock {
 
+/// Whether one storm times all points, or each has its own.
+enum class Storms { one, by_point };
+
 /// Gathers the arrivals of every subarea while tiles are worked on threads. What it comes to does not depend on their order.
 class ArrivalTally {
 public:
-    ArrivalTally(const TiledTravel& travel, std::size_t points, double storm_factor)
-        : travel_(travel), storm_factor_(storm_factor), subareas_(points) {}
+    /// `storm_factor` is that of the one storm, or of the reference storm where each point has its own.
+    ArrivalTally(const TiledTravel& travel, std::size_t points, double storm_factor, Storms storms = Storms::one)
+        : travel_(travel), storm_factor_(storm_factor), storms_(storms), subareas_(points) {}
 
     /// Adds the cells of a tile whose times and owners are on the desk. Safe to call from several threads.
     void add(const TileDesk& desk);
@@ -22,6 +26,7 @@ public:
 private:
     const TiledTravel& travel_;
     double storm_factor_;
+    Storms storms_;
     std::mutex mutex_;
     std::vector<Arrivals> subareas_;
 };

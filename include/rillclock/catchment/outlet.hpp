@@ -5,6 +5,7 @@
 
 #include "rillclock/catchment/arrivals.hpp"
 #include "rillclock/catchment/segments.hpp"
+#include "rillclock/hydraulics/storm_time.hpp"
 
 namespace rillclock {
 
@@ -21,6 +22,19 @@ struct PointPath {
 /// Shares of the area whose time of arrival every point tells.
 inline constexpr std::array<double, 4> told_shares = {0.50, 0.85, 0.95, 0.99};
 
+/// A point under the storm of one return period.
+struct PointStorm {
+    StormTime iteration = {};      ///< of the storm's duration, as a reviewer would do it by hand
+    double storm_factor = 1.0;
+    Head governing = {};           ///< the cell that decides the time
+    StepTime time = {};            ///< from it to the point
+    FixedLength length = 0;        ///< of the path between; set once paths are walked
+
+    [[nodiscard]] double seconds() const { return in_seconds(time.under(storm_factor)); }
+    /// Of sheet flow alone.
+    [[nodiscard]] double sheet_seconds() const { return in_seconds(StepTime{.storm = time.storm}.under(storm_factor)); }
+};
+
 /// All that is known of one design point.
 struct Outlet {
     PointNumber number = 0;
@@ -33,6 +47,8 @@ struct Outlet {
     double greatest_s = 0.0;                       ///< when all of it has
     PointPath governing;                           ///< its time is the time of concentration
     PointPath longest;
+    double storm_factor = 1.0;                     ///< of the storm that all this is under
+    std::vector<PointStorm> storms;                ///< by return period; none where the study has no rain by duration
 
     [[nodiscard]] double time_of_concentration_s() const { return governing.seconds; }
     [[nodiscard]] bool touches_edge() const { return border_cells > 0; }
@@ -52,6 +68,8 @@ struct PointHeads {
     Head last;                                            ///< to arrive
     Head governing;                                       ///< the last once the tail is left out
     Cell farthest = no_cell;
+    double storm_factor = 1.0;                            ///< of the storm that all these are under
+    std::vector<PointStorm> storms;                       ///< by return period
 };
 
 /// Joins the arrivals of subareas (by number − 1) down the tree of points.

@@ -20,12 +20,14 @@ struct RasterStory {
     const Grid& grid;
     const ReferenceSystem& system;
     const ElevationFormat& format;
-    Length two_year_24_hour;
-    double storm_factor = 1.0;
+    std::string storm;                            ///< that travel_time.tif is under, in words
+    std::string sheet_flow;                       ///< the formula, in words
     bool has_voids = false;
     std::span<const DesignPoint> points;
     /// By point number, from 0: time to the root of the last point on the way down; entry 0 is nothing.
     std::vector<StepTime> last_point_times;
+    /// By point number, from 0: storm factor of the last point on the way down; entry 0 that of cells without a point.
+    std::vector<double> last_point_factors;
 };
 
 /// Writes the six rasters of a result strip by strip while tiles are worked: travel time, flow azimuth, contributing area, catchment,

@@ -1,5 +1,6 @@
 #pragma once
 
+#include <optional>
 #include <span>
 #include <string>
 #include <vector>
@@ -9,6 +10,7 @@
 #include "rillclock/io/elevation_file.hpp"
 #include "rillclock/io/reference_system.hpp"
 #include "rillclock/study/study.hpp"
+#include "rillclock/study/study_rain.hpp"
 #include "rillclock/surface/cover_book.hpp"
 
 namespace rillclock {
@@ -38,6 +40,7 @@ struct StudyResult {
     const Study& study;
     const ResolvedStudy& resolved;
     const TravelRules& rules;
+    const StudyRain& rain;
     const Grid& grid;
     const ReferenceSystem& system;
     const ElevationFormat& format;
@@ -48,6 +51,12 @@ struct StudyResult {
     const std::vector<InputFile>& inputs;
     const DataSummary& data;
 };
+
+/// The intensity of the storm that a point's paths and segments are for; none where sheet flow does not depend on it.
+[[nodiscard]] inline std::optional<Intensity> sheet_intensity(const StudyResult& result, const Outlet& outlet) {
+    if (!result.study.timing.is_kinematic()) return std::nullopt;
+    return outlet.storms[result.rain.raster].iteration.intensity();
+}
 
 /// The cover class of a segment; null in channels, where the cover does not matter.
 [[nodiscard]] inline const CoverClass* cover_of(const StudyResult& result, const Segment& segment) {

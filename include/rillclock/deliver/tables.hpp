@@ -15,6 +15,13 @@ namespace rillclock {
 /// decimals, so that the rows of a path add up to its time to a millisecond.
 [[nodiscard]] std::string segments_table(const StudyResult& result);
 
+/// `tables/storms.csv`: one row a point and return period, where the study has rain by duration: time, intensity, governing head, path
+/// length and time of sheet flow under the point's own storm. The intensity is empty where the rain does not reach the time.
+[[nodiscard]] std::string storms_table(const StudyResult& result);
+
+/// `tables/iterations.csv`: one row a round of the iteration for the storm of a point and return period, where sheet flow depends on it.
+[[nodiscard]] std::string iterations_table(const StudyResult& result);
+
 /// `tables/review.csv`: one row a notice, those with the greatest effect on the time first; the last column is a person's.
 [[nodiscard]] std::string review_table(const StudyResult& result);
 

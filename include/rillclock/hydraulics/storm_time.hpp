@@ -2,6 +2,7 @@
 
 #include <functional>
 #include <optional>
+#include <string_view>
 #include <vector>
 
 #include "rillclock/core/quantity.hpp"
@@ -12,6 +13,15 @@ namespace rillclock {
 using IntensityOfDuration = std::function<std::optional<Intensity>(Duration)>;
 /// Time of travel under rain of some intensity; falls as the intensity grows.
 using TimeOfIntensity = std::function<Duration(Intensity)>;
+
+/// Whose time is the duration of the storm that drives sheet flow: two readings are in use.
+enum class StormDuration {
+    whole_path,  ///< from the head to the point
+    sheet_part,  ///< of sheet flow alone
+};
+
+/// "whole path", "sheet part".
+[[nodiscard]] std::string_view words(StormDuration duration);
 
 /// One line of the iteration, as a reviewer writes it by hand.
 struct StormIteration {
@@ -26,6 +36,9 @@ enum class StormEnd {
     beyond_the_rain,  ///< the source of rain does not reach the last computed time
     not_settling,     ///< the most rows were made without settling, or a time is no number
 };
+
+/// "settled", "beyond the rain", "not settling".
+[[nodiscard]] std::string_view words(StormEnd end);
 
 /// The time under the storm that lasts as long as that time.
 struct StormTime {

@@ -20,6 +20,7 @@ struct RunOptions {
 /// What a finished run tells its caller; all of it, and more, is in the result folder.
 struct RunOutcome {
     std::filesystem::path folder;
+    std::vector<std::string> facts;       ///< what was read and could be read wrongly: source, block, unit of the rain
     std::vector<std::string> headlines;   ///< three sentences
     std::string overview;                 ///< a short table of the points
     Notices notices;                      ///< by effect on the time, the greatest first

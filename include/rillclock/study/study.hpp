@@ -3,9 +3,12 @@
 #include <cstdint>
 #include <optional>
 #include <string>
+#include <vector>
 
 #include "rillclock/core/quantity.hpp"
 #include "rillclock/core/quantity_text.hpp"
+#include "rillclock/hydraulics/storm_time.hpp"
+#include "rillclock/rainfall/rain_source.hpp"
 
 namespace rillclock {
 
@@ -23,6 +26,10 @@ struct TerrainStudy {
     std::string elevation = {};                 ///< raster; relative to the study's folder
     std::optional<int> band = {};               ///< from 1; needed only where the file has several
     std::optional<Length> elevation_unit = {};  ///< the length of one unit of elevation, where the study states it
+    std::optional<std::string> channels = {};   ///< vector files, relative to the study's folder
+    std::optional<std::string> crossings = {};
+    std::optional<std::string> barriers = {};
+    std::optional<std::string> keep_water = {};
     std::optional<Length> slope_window = {};
     std::optional<Length> vertical_step = {};
     std::optional<Length> pond_depth = {};
@@ -45,8 +52,21 @@ struct PointStudy {
     std::optional<Length> move_within = {};
 };
 
+/// A formula of rain as stated, for one return period or for all.
+struct StatedRainFormula {
+    PeriodFormula formula = {};
+    std::string subject = {};  ///< where it stands: "rain.formula (study.toml, line 9, column 11)"
+};
+
 struct RainStudy {
     std::optional<Length> two_year_24_hour = {};
+    std::optional<std::string> file = {};           ///< relative to the study's folder
+    std::vector<StatedRainFormula> formulas = {};   ///< in place of a file
+    std::optional<Duration> formula_from = {};      ///< between which durations the formulas hold
+    std::optional<Duration> formula_to = {};
+    std::vector<double> return_periods = {};        ///< years, as listed; the default where empty
+
+    [[nodiscard]] bool is_by_duration() const { return file.has_value() || !formulas.empty(); }
 };
 
 /// The section of channels: a stated hydraulic radius, or top width and mean depth by contributing area.
@@ -59,7 +79,10 @@ struct ChannelStudy {
 };
 
 struct TimingStudy {
-    std::string sheet = "nrcs";
+    std::string sheet = "nrcs";  ///< or "kinematic"
+    std::optional<double> sheet_constant = {};          ///< printed constant of the kinematic formula; 0.933 where absent
+    std::optional<StormDuration> storm = {};            ///< the whole path where absent
+    std::optional<double> raster_return_period = {};    ///< years
     Length sheet_limit = feet(100);
     SheetLimitRule sheet_limit_rule = SheetLimitRule::length_or_index;
     ShallowRule shallow = ShallowRule::by_cover;
@@ -69,6 +92,12 @@ struct TimingStudy {
     ChannelStudy channel = {};
     double ignore_tail = 0.0;  ///< share of a point's area, the slowest, that is left out; 0 to below 1
     std::optional<Length> shortest_segment = {};
+
+    [[nodiscard]] bool is_kinematic() const { return sheet == "kinematic"; }
+};
+
+struct PeakStudy {
+    std::optional<Duration> least_time = {};  ///< no intensity is read below it; 5 min where absent
 };
 
 struct OutputStudy {
@@ -84,6 +113,7 @@ struct Study {
     PointStudy points = {};
     RainStudy rain = {};
     TimingStudy timing = {};
+    PeakStudy peaks = {};
     OutputStudy output = {};
 };
 

@@ -5,6 +5,7 @@
 #include <string>
 #include <string_view>
 #include <variant>
+#include <vector>
 
 #include "rillclock/study/study.hpp"
 
@@ -23,8 +24,9 @@ struct StudyKey {
 
 /// A value as stated, and where: what begins an error's sentence, "slope_window (study.toml, line 3, column 16)".
 struct StudyValue {
-    std::variant<std::string, std::int64_t, double, bool> value;
+    std::variant<std::string, std::int64_t, double, bool, std::vector<double>> value;
     std::string subject;
+    std::string entry = {};  ///< where the key holds a table whose names are the user's: the name, such as "10"
 };
 
 /// Sets what the key (with its section) stands for, from a study file or from the command line. Throws an input error
@@ -38,6 +40,8 @@ void set_study_value(Study& study, std::string_view key, const StudyValue& value
 
 /// Whether a key is listed in `study_keys`.
 [[nodiscard]] bool is_study_key(std::string_view key);
+/// Whether a key may hold a table whose names are the user's: rain.formula, by return period.
+[[nodiscard]] bool takes_entries(std::string_view key);
 /// Whether a name is a section of the file, or a key that holds a table: "terrain", "timing.channel".
 [[nodiscard]] bool is_study_section(std::string_view name);
 

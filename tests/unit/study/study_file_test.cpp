@@ -101,6 +101,59 @@ rasters = "geotiff"
     CHECK(study.output.folder == "answer");
 }
 
+TEST_CASE("rain by duration is read from its keys") {
+    const Study study = read(R"([rain]
+file = "atlas14.csv"
+return_periods = [2, 10, 2.5e1]
+[timing]
+sheet = "kinematic"
+sheet_constant = 0.94
+storm = "sheet part"
+raster_return_period = 25
+[peaks]
+least_time = "10 min"
+)");
+    CHECK(study.rain.file == "atlas14.csv");
+    CHECK(study.rain.return_periods == std::vector<double>{2, 10, 25});
+    CHECK(study.timing.is_kinematic());
+    CHECK(study.timing.sheet_constant == 0.94);
+    CHECK(study.timing.storm == StormDuration::sheet_part);
+    CHECK(study.timing.raster_return_period == 25);
+    CHECK(study.peaks.least_time == minutes(10));
+}
+
+TEST_CASE("a formula of rain stands alone or once a return period") {
+    const Study one = read("[rain]\nformula = \"i[in/h] = 40 T^0.2 / (t[min] + 10)^0.8\"\nformula_from = \"5 min\"\n");
+    REQUIRE(one.rain.formulas.size() == 1);
+    CHECK_FALSE(one.rain.formulas.front().formula.return_period);
+    CHECK(one.rain.formula_from == minutes(5));
+    const Study two = read("[rain.formula]\n10 = \"i[in/h] = 50 / (t[min] + 10)\"\n\"2.5\" = \"i[in/h] = 40 / (t[min] + 10)\"\n");
+    REQUIRE(two.rain.formulas.size() == 2);
+    CHECK(two.rain.formulas[0].formula.return_period == 10);
+    CHECK(two.rain.formulas[1].formula.return_period == 2.5);
+    CHECK(two.rain.formulas[1].subject == "rain.formula.2.5 (studies/town.toml, line 3, column 9)");
+}
+
+TEST_CASE("a wrong formula or its return period is refused with file, line and the right form") {
+    CHECK_THROWS_WITH(read("[rain]\nformula = \"i = 5\"\n"), Contains("rain.formula (studies/town.toml, line 2, column 11)"));
+    CHECK_THROWS_WITH(read("[rain.formula]\nten = \"i[in/h] = 50 / (t[min] + 10)\"\n"), Contains("rain.formula.ten (studies/town.toml, line 2"));
+    CHECK_THROWS_WITH(read("[rain.formula]\n0 = \"i[in/h] = 50 / (t[min] + 10)\"\n"), Contains("rain.formula.0 (studies/town.toml, line 2"));
+    CHECK_THROWS_WITH(read("[rain.formula]\n10 = 3\n"), Contains("rain.formula.10") && Contains("write a text in quotes"));
+}
+
+TEST_CASE("return periods are years from 1 on, rising") {
+    for (const auto* list : {"[]", "[10, 2]", "[2, 2]", "[0.5]", "[nan]", "[inf]", "[\"2\"]", "[[2]]", "\"10\"", "0.5"}) {
+        INFO(list);
+        CHECK_THROWS_WITH(read(std::string("[rain]\nreturn_periods = ") + list + "\n"),
+                          Contains("rain.return_periods (studies/town.toml, line 2") && Contains("[2, 10, 100]"));
+    }
+    CHECK(read("[rain]\nreturn_periods = 10\n").rain.return_periods == std::vector<double>{10});
+}
+
+TEST_CASE("the constant of the kinematic formula is one of the two that are printed") {
+    CHECK_THROWS_WITH(read("[timing]\nsheet_constant = 0.935\n"), Contains("line 2") && Contains("write 0.933 (HEC-22) or 0.94"));
+}
+
 TEST_CASE("points may be found by area, and ponded speed have no cap") {
     CHECK(read("[points]\nauto_area = \"2 %\"\n").points.auto_area == 0.02);
     CHECK(std::isinf(read("[terrain]\npond_speed = \"unlimited\"\n").terrain.pond_speed.si()));
@@ -134,18 +187,17 @@ TEST_CASE("what this version does not compute is refused and not passed over") {
     for (const auto* text :
          {"[terrain]\nchannels = \"b.gpkg\"", "[terrain]\ncrossings = \"c\"", "[terrain]\nbarriers = \"c\"",
           "[terrain]\nkeep_water = \"c\"", "[surface]\nsoil_group = \"B\"", "[points]\npipes = \"p\"",
-          "[points]\narea = \"a\"", "[rain]\nfile = \"r.csv\"", "[rain]\nreturn_periods = [2, 10]",
-          "[timing]\nstorm = \"whole path\"", "[timing]\noverrides = \"o.csv\"", "[timing]\nraster_return_period = 10",
-          "[timing]\nchannel = { flow = \"design storm\" }", "[peaks]\nleast_time = \"5 min\"",
+          "[points]\narea = \"a\"", "[rain]\ntable = \"r.csv\"", "[timing]\noverrides = \"o.csv\"",
+          "[timing]\nchannel = { flow = \"design storm\" }", "[peaks]\ncoefficient = \"book\"",
           "[uncertainty]\ndraws = 500", "[scenario.after]\nsurface.cover = \"p.tif\"",
-          "[output]\nisochrones = \"5 min\"", "[peaks]"}) {
+          "[output]\nisochrones = \"5 min\""}) {
         INFO(text);
         CHECK_THROWS_WITH(read(text), Contains("not known to this version of rillclock") && Contains("line "));
     }
 }
 
 TEST_CASE("words of a key that this version does not compute are refused") {
-    for (const auto* text : {"[timing]\nsheet = \"kinematic\"", "[surface]\npath_length = \"unbiased\"",
+    for (const auto* text : {"[surface]\npath_length = \"unbiased\"",
                              "[surface]\nbook = \"worldcover\"", "[output]\nrasters = \"cog\""}) {
         INFO(text);
         CHECK_THROWS_WITH(read(text), Contains("this version of rillclock does not") && Contains("line 2, column "));
@@ -174,7 +226,9 @@ TEST_CASE("every length, area, speed and share refuses zero, negative numbers an
           "terrain.pond_speed = \"{} m/s\"", "points.auto_area = \"{} %\"", "rain.two_year_24_hour = \"{} in\"",
           "timing.sheet_limit = \"{} ft\"", "timing.channel_from = \"{} ha\"", "timing.channel.width = \"{} m\"",
           "timing.channel.depth = \"{} m * km2^0.2\"", "timing.channel.hydraulic_radius = \"{} m\"",
-          "timing.shortest_segment = \"{} m\"", "timing.channel.n = {}"})
+          "timing.shortest_segment = \"{} m\"", "timing.channel.n = {}", "rain.formula_to = \"{} min\"",
+          "rain.return_periods = [{}]", "rain.return_periods = {}", "timing.raster_return_period = {}",
+          "timing.sheet_constant = {}"})
         for (const auto* number : {"0", "-1", "nan", "inf", "-inf"}) {
             std::string text = form;
             text.replace(text.find("{}"), 2, number);
@@ -186,7 +240,8 @@ TEST_CASE("every length, area, speed and share refuses zero, negative numbers an
 TEST_CASE("what may be zero refuses negative numbers and what is no number") {
     for (const auto* form :
          {"points.move_within = \"{} m\"", "timing.ignore_tail = \"{} %\"", "timing.slope_floor.overland = {}",
-          "timing.slope_floor.channel = {}", "surface.fallback_class = {}"}) {
+          "timing.slope_floor.channel = {}", "surface.fallback_class = {}", "peaks.least_time = \"{} min\"",
+          "rain.formula_from = \"{} min\""}) {
         const auto with = [&](const char* number) {
             return std::string(form).replace(std::string(form).find("{}"), 2, number);
         };
@@ -207,8 +262,8 @@ TEST_CASE("a whole number is asked for where only that has a meaning") {
 }
 
 TEST_CASE("a list, a date or an empty text is no value of a key") {
-    CHECK_THROWS_WITH(read("title = [1, 2]\n"), Contains("is a list, a table or a date"));
-    CHECK_THROWS_WITH(read("title = 2020-01-01\n"), Contains("is a list, a table or a date"));
+    CHECK_THROWS_WITH(read("title = [1, 2]\n"), Contains("is a list; write a text in quotes"));
+    CHECK_THROWS_WITH(read("title = 2020-01-01\n"), Contains("is a table or a date"));
     CHECK_THROWS_WITH(read("[terrain]\nelevation = \"\"\n"), Contains("is empty"));
 }
 

@@ -20,8 +20,9 @@ TEST_CASE("the form that is shown for a key is one that can be read") {
     }
 }
 
-TEST_CASE("no key takes a list") {
+TEST_CASE("no key but the return periods takes a list") {
     for (const StudyKey& key : study_keys())
+        if (key.key != "rain.return_periods")
         CHECK_THROWS_WITH(read_study(std::string(key.key) + " = [1]\n", "town.toml"), Contains(std::string(key.form)));
 }
 

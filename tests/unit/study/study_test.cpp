@@ -50,6 +50,30 @@ TEST_CASE("statements that exclude one another are refused") {
     CHECK_THROWS_WITH(check_study(study), Contains("gives no file of them"));
 }
 
+TEST_CASE("statements about rain that act on nothing or contradict one another are refused") {
+    Study study = complete();
+    study.timing.sheet = "kinematic";
+    CHECK_THROWS_WITH(check_study(study), Contains("kinematic wave, which needs rain by duration") && Contains("--rain-file"));
+    study.rain.file = "rain.csv";
+    CHECK_NOTHROW(check_study(study));
+    study.rain.two_year_24_hour.reset();
+    CHECK_NOTHROW(check_study(study));
+    study.rain.formulas.resize(1);
+    CHECK_THROWS_WITH(check_study(study), Contains("both as a file and as a formula"));
+    study = complete();
+    study.timing.storm = StormDuration::sheet_part;
+    CHECK_THROWS_WITH(check_study(study), Contains("act on kinematic sheet flow only"));
+    study = complete();
+    study.rain.return_periods = {2};
+    CHECK_THROWS_WITH(check_study(study), Contains("act on rain by duration only"));
+    study = complete();
+    study.peaks.least_time = minutes(10);
+    CHECK_THROWS_WITH(check_study(study), Contains("act on rain by duration only"));
+    study = complete();
+    study.rain.formula_to = hours(1);
+    CHECK_THROWS_WITH(check_study(study), Contains("between which durations"));
+}
+
 TEST_CASE("defaults follow the cell where it is large") {
     const ResolvedStudy fine = resolve(complete(), {.cell_side = metres(1)});
     CHECK(fine.slope_window == metres(20));

@@ -1,0 +1,45 @@
+#pragma once
+
+#include <cstdint>
+#include <map>
+
+#include "rillclock/raster/raster.hpp"
+#include "rillclock/travel/step.hpp"
+
+namespace rillclock {
+
+/// A cell whose water may be the last to arrive, with its time to the root.
+struct Head {
+    Cell cell = no_cell;
+    StepTime time;
+};
+
+/// Whether `a` arrives later than `b` under a storm factor; of equal ones the cell with the smaller index counts as the later.
+[[nodiscard]] bool arrives_later(const Head& a, const Head& b, double storm_factor);
+
+/// Area by time of arrival, in bins of one second of time to the root; each bin knows its last cell.
+class ArrivalBins {
+public:
+    struct Bin {
+        FixedArea area = 0;
+        Head last;
+    };
+    void add(const Head& head, FixedArea area, double storm_factor);
+    /// Adds cells that were gathered elsewhere: all of one second of time to the root, `second`.
+    void add(std::int64_t second, const Bin& bin, double storm_factor);
+    void take(ArrivalBins&& other, double storm_factor);
+    [[nodiscard]] FixedArea area() const;
+    /// The last cell of the least set of bins, earliest first, that holds at least `share` of the area: no later than a second
+    /// after the exact answer, and itself the time of a cell.
+    [[nodiscard]] Head by_share(double share) const;
+    /// The last cell once the latest bins are left out that together hold no more than `share` of the area.
+    [[nodiscard]] Head last_without(double share) const;
+
+    /// The bin of a time to the root.
+    [[nodiscard]] static std::int64_t second_of(const StepTime& time, double storm_factor);
+
+private:
+    std::map<std::int64_t, Bin> bins_;
+};
+
+}  // namespace rillclock

@@ -1,0 +1,39 @@
+#pragma once
+
+#include <utility>
+#include <vector>
+
+#include "rillclock/catchment/outlet.hpp"
+
+namespace rillclock {
+
+/// What decides a catchment's times and paths under one storm; own area apart.
+[[nodiscard]] inline PointHeads heads_at(const Arrivals& catchment, const ArrivalBins& bins, double storm_factor, double ignore_tail) {
+    PointHeads heads;
+    heads.area = catchment.area;
+    heads.border_cells = catchment.border_cells;
+    heads.storm_factor = storm_factor;
+    for (std::size_t i = 0; i < told_shares.size(); ++i) heads.by_share[i] = bins.by_share(told_shares[i]);
+    heads.last = catchment.front.last_to_arrive(storm_factor);
+    heads.governing = ignore_tail > 0 ? bins.last_without(ignore_tail) : heads.last;
+    heads.farthest = catchment.farthest;
+    return heads;
+}
+
+/// Joins subareas (by number − 1) down the tree and asks `look(catchment, number)` for the heads of each whole catchment.
+template <class Look>
+[[nodiscard]] std::vector<PointHeads> join_down(std::vector<Arrivals> subareas, const PointTree& tree, double storm_factor, Look look) {
+    std::vector<FixedArea> own_areas;
+    for (const Arrivals& subarea : subareas) own_areas.push_back(subarea.area);
+    std::vector<PointHeads> heads(subareas.size());
+    for (const PointNumber number : tree.upstream_first) {
+        Arrivals& catchment = subareas[number - 1];  // by now with all that joins from above
+        heads[number - 1] = look(std::as_const(catchment), number);
+        heads[number - 1].own_area = own_areas[number - 1];
+        const PointNumber next = tree.next_of(number);
+        if (next != 0) subareas[next - 1].add(std::move(catchment), storm_factor);
+    }
+    return heads;
+}
+
+}  // namespace rillclock

@@ -1,0 +1,93 @@
+#include "last_pass.hpp"
+
+#include "rillclock/catchment/arrival_tally.hpp"
+#include "rillclock/catchment/tiled_cells.hpp"
+#include "rillclock/deliver/raster_strips.hpp"
+#include "study_storms.hpp"
+
+namespace rillclock {
+namespace {
+
+std::vector<StepTime> times_of_points(const LastPass& pass) {
+    std::vector<Cell> cells;
+    for (const DesignPoint& point : pass.points) cells.push_back(point.cell);
+    const auto found = path_cells_at(pass.travel, cells);
+    std::vector<StepTime> times;
+    for (const Cell cell : cells) times.push_back(found.at(cell).time_to_root);
+    return times;
+}
+
+/// `factors`: storm factor of each point by number − 1; empty where one storm times all.
+RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, const std::vector<double>& factors) {
+    RasterStory story{.grid = pass.terrain.grid, .system = pass.terrain.system, .format = pass.terrain.format,
+                      .storm = storm_words(pass.study, pass.rain), .sheet_flow = sheet_words(pass.study),
+                      .has_voids = pass.terrain.void_cells > 0, .points = pass.points, .last_point_times = {},
+                      .last_point_factors = {}};
+    for (const PointNumber last : pass.tree.last_points()) {
+        const bool own = last != 0 && !factors.empty();
+        story.last_point_times.push_back(last == 0 ? StepTime{} : times[last - 1]);
+        story.last_point_factors.push_back(own ? factors[last - 1] : pass.travel.rules().sheet.storm_factor);
+    }
+    return story;
+}
+
+/// Makes all tiles, a row of them at a time: `look(desk)` at each, `after(first row, rows)` after each row.
+template <class Look, class After>
+void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, After after) {
+    const TileGrid& tiles = pass.travel.ground().forest.tiles();
+    const auto across = static_cast<std::size_t>(tiles.tiles_across());
+    const std::int64_t cells = tiles.rows() * tiles.columns();
+    Workspaces<TileDesk> desks;
+    for (std::int64_t down = 0; down < tiles.tiles_down(); ++down) {
+        const auto first = static_cast<Tile>(static_cast<std::size_t>(down) * across);
+        pass.progress.tell({.stage = stage, .done = tiles.window(first).row * tiles.columns(), .total = cells});
+        pass.travel.executor().for_each(across, [&](std::size_t column) {
+            const auto desk = desks.lease();
+            const Tile tile = first + static_cast<Tile>(column);
+            pass.travel.read_tile(tile, *desk);
+            pass.owners.read_tile(tile, *desk);
+            look(*desk);
+        });
+        after(tiles.window(first).row, tiles.window(first).rows);
+    }
+    pass.progress.tell({.stage = stage, .done = cells, .total = cells, .finished = true});
+}
+
+std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<StepTime>& times) {
+    const double factor = pass.travel.rules().sheet.storm_factor;
+    ArrivalTally tally(pass.travel, pass.points.size(), factor);
+    RasterStrips rasters(story_of(pass, times, {}), pass.travel, pass.folder);
+    const auto look = [&](const TileDesk& desk) {
+        tally.add(desk);
+        rasters.fill(desk);
+    };
+    work_all_tiles(pass, "writing rasters", look, [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
+    rasters.close();
+    std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
+    add_storms(heads, times, intensities_of(pass.rain));
+    return heads;
+}
+
+std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector<StepTime>& times, const OwnStorms& storms) {
+    ArrivalTally tally(pass.travel, pass.points.size(), storms.reference_factor, Storms::by_point);
+    work_all_tiles(pass, "storms", [&](const TileDesk& desk) { tally.add(desk); }, [](std::int64_t, std::int64_t) {});
+    std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, times, storms);
+    require_settled(heads, pass.points, pass.rain);
+    std::vector<double> factors;
+    for (const PointHeads& point : heads) factors.push_back(point.storm_factor);
+    RasterStrips rasters(story_of(pass, times, factors), pass.travel, pass.folder);
+    work_all_tiles(pass, "writing rasters", [&](const TileDesk& desk) { rasters.fill(desk); },
+                   [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
+    rasters.close();
+    return heads;
+}
+
+}  // namespace
+
+std::vector<PointHeads> heads_and_rasters(const LastPass& pass) {
+    const std::vector<StepTime> times = times_of_points(pass);
+    const std::optional<OwnStorms> own = own_storms_of(pass.study, pass.travel.rules(), pass.rain);
+    return own ? under_own_storms(pass, times, *own) : under_one_storm(pass, times);
+}
+
+}  // namespace rillclock

@@ -1,0 +1,29 @@
+#pragma once
+
+#include <vector>
+
+#include "rillclock/io/result_folder.hpp"
+#include "study_data.hpp"
+
+namespace rillclock {
+
+/// What the last pass over the raster works on.
+struct LastPass {
+    const Study& study;
+    const StudyRain& rain;
+    const TerrainData& terrain;
+    const TiledTravel& travel;
+    const TiledOwners& owners;
+    const std::vector<DesignPoint>& points;
+    const PointTree& tree;
+    ResultFolder& folder;
+    const Progress& progress;
+};
+
+/// Makes everything about each tile once more: writes the rasters and gathers the arrivals, from which each point's heads are found.
+///
+/// Where each point has a storm of its own the raster is passed twice, since times in travel_time.tif depend on storms that are solved from
+/// the arrivals. Throws an input error where a storm does not settle.
+[[nodiscard]] std::vector<PointHeads> heads_and_rasters(const LastPass& pass);
+
+}  // namespace rillclock
