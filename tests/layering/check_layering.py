@@ -53,6 +53,7 @@ NOT_KEPT = {"build"}
 LONGEST_FILE = 450
 
 INCLUDE = re.compile(r'^\s*#\s*include\s*([<"])([^>"]+)[>"]')
+TYPE = re.compile(r"(?:struct|class) (\w+)(?: final)?(?: :[^:].*)? *\{")  # a definition at the level of a namespace, not A::B
 
 
 def room_of(path):
@@ -84,6 +85,7 @@ class Check:
         self.faults = []
         self.files = sources(root)
         self.includes = {}     # file → [(line, file of ours)]
+        self.types = {}        # name of a type → (file, line) of its definition
 
     def fault(self, path, line, sentence):
         self.faults.append(f"{path}:{line}: {sentence}")
@@ -120,6 +122,23 @@ class Check:
             found = INCLUDE.match(line)
             if found:
                 self.one_include(path, number, found[1] == '"', found[2])
+
+        self.types_of(path, lines)
+
+    def types_of(self, path, lines):
+        """Types of one name in two files are one type to the linker: whichever it keeps, the other's users break."""
+        hidden = False
+        for number, line in enumerate(lines, 1):
+            if line.startswith("namespace {"):
+                hidden = True
+            elif line == "}  // namespace":
+                hidden = False
+            found = TYPE.match(line)
+            if hidden or not found:
+                continue
+            first = self.types.setdefault(found[1], (path, number))
+            if first[0] != path:
+                self.fault(path, number, f"{found[1]} is also the name of a type in {first[0]}; give one of them another name.")
 
     def one_include(self, path, line, quoted, header):
         if header.startswith("rillclock/") and not quoted:

@@ -73,6 +73,15 @@ class CheckLayering(unittest.TestCase):
                          "include/rillclock/core/error.hpp → include/rillclock/core/notice.hpp → "
                          "include/rillclock/core/error.hpp.")
 
+    def test_two_types_of_one_name_are_found(self):
+        self.assert_said({"src/core/error.cpp": "struct Way {\n};\n", "src/raster/grid.cpp": "struct Way {\n};\n"},
+                         "src/raster/grid.cpp:1: Way is also the name of a type in src/core/error.cpp; "
+                         "give one of them another name.")
+
+    def test_types_hidden_in_their_files_may_share_a_name(self):
+        hidden = "namespace {\nstruct Way {\n};\n}  // namespace\n"
+        self.assert_said({"src/core/error.cpp": hidden, "src/raster/grid.cpp": hidden})
+
     def test_a_header_that_is_not_there_is_found(self):
         self.assert_said({"src/core/error.cpp": '#include "gdal.h"\n'},
                          'src/core/error.cpp:1: "gdal.h" is no header of ours; others are included in angle brackets.')
