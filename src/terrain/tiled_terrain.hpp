@@ -21,6 +21,8 @@ public:
     CellNumbers(std::int64_t rows, std::int64_t columns)
         : rows_(rows),
           columns_(columns),
+          // A vector would write its zeros at once and on one thread; those of calloc come with the pages.
+          // NOLINTNEXTLINE(cppcoreguidelines-no-malloc)
           values_(static_cast<std::uint32_t*>(std::calloc(size(), sizeof(std::uint32_t)))) {
         if (!values_) throw std::bad_alloc();
     }
@@ -34,7 +36,7 @@ public:
 
 private:
     struct Free {
-        void operator()(std::uint32_t* values) const { std::free(values); }
+        void operator()(std::uint32_t* values) const { std::free(values); }  // NOLINT(cppcoreguidelines-no-malloc)
     };
     [[nodiscard]] std::size_t width() const { return static_cast<std::size_t>(columns_); }
     [[nodiscard]] std::size_t size() const { return static_cast<std::size_t>(rows_) * width(); }
