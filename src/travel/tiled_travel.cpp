@@ -58,6 +58,7 @@ void TiledTravel::find_kinds() {
         const std::lock_guard lock(roots_mutex);
         roots_.insert(roots_.end(), roots.begin(), roots.end());
     });
+    for (const Cell cell : in_.mapped_channels) kind_[cell] = GroundKind::channel;
     std::sort(roots_.begin(), roots_.end(), [](const RootArea& a, const RootArea& b) { return a.cell < b.cell; });
 }
 

@@ -1,6 +1,7 @@
 #pragma once
 
 #include <cstdint>
+#include <span>
 #include <vector>
 
 #include "rillclock/forest/tile_sweep.hpp"
@@ -18,6 +19,7 @@ struct TiledGround {
     const ElevationStore& elevations;
     double metres_per_elevation_unit = 1.0;
     const SurfaceTable& surface;
+    std::span<const Cell> mapped_channels = {};   ///< channels whatever drains to them and whatever covers them
 };
 
 /// A label on a cell: a design point's number.

@@ -1,0 +1,34 @@
+#pragma once
+
+#include <filesystem>
+#include <string>
+#include <vector>
+
+#include "rillclock/core/notice.hpp"
+#include "rillclock/io/reference_system.hpp"
+#include "rillclock/raster/grid_shapes.hpp"
+
+namespace rillclock {
+
+/// What a file of shapes may hold; the others in it are left out with a notice.
+enum class ShapeKinds { lines, points_and_polygons };
+
+/// Shapes of a file in the target's coordinates, in the order of the file. A feature of several parts gives a shape a part.
+struct ShapeFile {
+    std::vector<Line> lines;
+    std::vector<Place> points;
+    std::vector<Polygon> polygons;
+    std::size_t features = 0;   ///< of which at least one shape was taken
+    Notices notices;
+};
+
+/// Reads the lines, or the points and polygons, of any vector format and reference system. Curves are made of short straight lines,
+/// heights and measures are dropped. `role` names the file in messages: "channels".
+///
+/// Features of another type, without a shape, with corners that are not finite or that have no image in `target` are left out, one
+/// notice each. Throws Error (inputs) where the file cannot be read or has several layers, its reference system is missing, or it holds
+/// no shape that can be used.
+[[nodiscard]] ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds,
+                                    const ReferenceSystem& target);
+
+}  // namespace rillclock

@@ -1,0 +1,152 @@
+#include "rillclock/io/shape_file.hpp"
+
+#include <ogrsf_frmts.h>
+
+#include <array>
+#include <cmath>
+#include <memory>
+#include <utility>
+
+#include "local_file.hpp"
+#include "rillclock/core/error.hpp"
+#include "rillclock/io/gdal_session.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr std::array<const char*, 13> vector_drivers = {"GPKG", "GeoJSON", "GeoJSONSeq", "ESRI Shapefile", "FlatGeobuf",
+                                                        "KML",  "LIBKML",  "GML",        "GPX",            "MapInfo File",
+                                                        "DXF",  "SQLite",  nullptr};
+
+/// The shapes of one feature, taken together or not at all.
+struct Taken {
+    std::vector<Line> lines;
+    std::vector<Place> points;
+    std::vector<Polygon> polygons;
+    std::string fault;   ///< why it is left out; empty where it is not
+};
+
+class ShapeReader {
+public:
+    ShapeReader(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target)
+        : path_(path), called_("file of " + role + " " + path.string()), kinds_(kinds), target_(target) {}
+
+    ShapeFile read() {
+        const GdalMark before = session_.mark();
+        check_local_file(path_, called_);
+        open(before);
+        Transformation to_target(system(), target_);
+        while (const OGRFeatureUniquePtr feature{layer_->GetNextFeature()}) add(*feature, to_target);
+        session_.throw_if_failed(before, Fault::inputs, "The " + called_ + " cannot be read to its end; copy or make it again");
+        check_result();
+        return std::move(result_);
+    }
+
+private:
+    void open(const GdalMark& before) {
+        const std::string path = std::filesystem::absolute(path_).string();
+        dataset_.reset(GDALDataset::Open(path.c_str(), GDAL_OF_VECTOR | GDAL_OF_READONLY, vector_drivers.data()));
+        if (!dataset_ || dataset_->GetLayerCount() == 0) {
+            const std::string reason = session_.failure_since(before);
+            throw input_error("The " + called_ + " cannot be read as " + wanted() + "; " + seeming_kind(path_) +
+                              (reason.empty() ? "." : " (" + reason + ")."));
+        }
+        layer_ = dataset_->GetLayer(0);
+        if (dataset_->GetLayerCount() == 1) return;
+        throw input_error("The " + called_ + " has several layers; copy the one that is meant to a file of its own: ogr2ogr " +
+                          path_.stem().string() + "-one.gpkg " + path_.string() + " " + layer_->GetName() + ".");
+    }
+
+    [[nodiscard]] std::string wanted() const { return kinds_ == ShapeKinds::lines ? "lines" : "points and polygons"; }
+
+    [[nodiscard]] ReferenceSystem system() const {
+        const OGRSpatialReference* system = layer_->GetSpatialRef();
+        char* text = nullptr;
+        if (system && !system->IsEmpty()) system->exportToWkt(&text);
+        const std::string wkt = text ? text : "";
+        CPLFree(text);
+        if (!wkt.empty()) return ReferenceSystem::from_text(wkt);
+        throw input_error("The " + called_ + " has no reference system; state the one its coordinates are in: ogr2ogr -a_srs " +
+                          "EPSG:nnnnn " + path_.stem().string() + "-placed.gpkg " + path_.string() + ".");
+    }
+
+    void add(const OGRFeature& feature, Transformation& to_target) {
+        ++number_;
+        Taken taken;
+        const OGRGeometry* geometry = feature.GetGeometryRef();
+        if (!geometry || geometry->IsEmpty()) {
+            taken.fault = "has no shape";
+        } else {
+            const std::unique_ptr<OGRGeometry> straight(geometry->getLinearGeometry());
+            take(*straight, to_target, taken);
+        }
+        if (!taken.fault.empty()) return leave_out(taken.fault);
+        ++result_.features;
+        std::move(taken.lines.begin(), taken.lines.end(), std::back_inserter(result_.lines));
+        std::move(taken.points.begin(), taken.points.end(), std::back_inserter(result_.points));
+        std::move(taken.polygons.begin(), taken.polygons.end(), std::back_inserter(result_.polygons));
+    }
+
+    void take(const OGRGeometry& geometry, Transformation& to_target, Taken& taken) const {
+        const OGRwkbGeometryType type = wkbFlatten(geometry.getGeometryType());
+        const bool lines = kinds_ == ShapeKinds::lines;
+        if (OGR_GT_IsSubClassOf(type, wkbGeometryCollection)) {
+            for (const OGRGeometry* part : *geometry.toGeometryCollection()) take(*part, to_target, taken);
+        } else if (lines && type == wkbLineString) {
+            taken.lines.push_back(line_of(*geometry.toLineString(), to_target, taken));
+        } else if (!lines && type == wkbPoint) {
+            OGRLineString alone;
+            alone.addPoint(geometry.toPoint());
+            taken.points.push_back(line_of(alone, to_target, taken).front());
+        } else if (!lines && type == wkbPolygon) {
+            Polygon polygon;
+            for (const OGRLinearRing* ring : *geometry.toPolygon()) polygon.rings.push_back(line_of(*ring, to_target, taken));
+            taken.polygons.push_back(std::move(polygon));
+        } else {
+            taken.fault = std::string("is a ") + geometry.getGeometryName() + ", and only " + wanted() + " have a meaning here";
+        }
+    }
+
+    Line line_of(const OGRSimpleCurve& curve, Transformation& to_target, Taken& taken) const {
+        Line line;
+        for (int i = 0; i < curve.getNumPoints(); ++i) {
+            const Place given{curve.getX(i), curve.getY(i)};
+            const bool finite = std::isfinite(given.x) && std::isfinite(given.y);
+            if (!finite) taken.fault = "has corners that are not finite";
+            const std::optional<Place> place = finite ? to_target(given) : std::nullopt;
+            if (finite && !place) taken.fault = "has corners where " + target_.name() + " has no coordinates";
+            line.push_back(place.value_or(Place{}));
+        }
+        return line;
+    }
+
+    void leave_out(const std::string& why) {
+        result_.notices.push_back({.code = "shape-left-out",
+                                   .text = "Feature " + std::to_string(number_) + " of the " + called_ + " " + why + "; it is left out."});
+    }
+
+    void check_result() const {
+        if (number_ == 0) throw input_error("The " + called_ + " holds no features; draw them, or leave the file out of the study.");
+        if (result_.features == 0) {
+            throw input_error("The " + called_ + " holds nothing that can be used: " + result_.notices.front().text);
+        }
+    }
+
+    GdalSession session_;
+    std::filesystem::path path_;
+    std::string called_;
+    ShapeKinds kinds_;
+    const ReferenceSystem& target_;
+    GDALDatasetUniquePtr dataset_;
+    OGRLayer* layer_ = nullptr;
+    std::int64_t number_ = 0;
+    ShapeFile result_;
+};
+
+}  // namespace
+
+ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target) {
+    return ShapeReader(path, role, kinds, target).read();
+}
+
+}  // namespace rillclock

@@ -1,0 +1,121 @@
+#include "mapped_flow.hpp"
+
+#include <algorithm>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/core/number_text.hpp"
+#include "rillclock/io/shape_file.hpp"
+
+namespace rillclock {
+namespace {
+
+/// What a file of shapes came to, in words.
+class Reading {
+public:
+    Reading(const Study& study, const Grid& grid, const ReferenceSystem& system) : study_(study), grid_(grid), system_(system) {}
+
+    MappedShapes read() {
+        const TerrainStudy& terrain = study_.terrain;
+        if (terrain.channels) read_lines("channels", *terrain.channels, mapped_.shapes.channels);
+        if (terrain.crossings) read_lines("crossings", *terrain.crossings, mapped_.shapes.crossings);
+        if (terrain.barriers) read_lines("barriers", *terrain.barriers, mapped_.shapes.barriers);
+        if (terrain.keep_water) read_waters(*terrain.keep_water);
+        return std::move(mapped_);
+    }
+
+private:
+    void read_lines(const std::string& role, const std::string& name, std::vector<Line>& lines) {
+        ShapeFile file = read_shapes(located(study_, name), role, ShapeKinds::lines, system_);
+        const auto inside = std::count_if(file.lines.begin(), file.lines.end(), [&](const Line& line) {
+            return !cells_crossed(line, grid_).empty();
+        });
+        say(role, name, file, std::to_string(inside) + " of " + std::to_string(file.lines.size()) + " lines", inside > 0);
+        lines = std::move(file.lines);
+    }
+
+    void read_waters(const std::string& name) {
+        ShapeFile file = read_shapes(located(study_, name), "kept water", ShapeKinds::points_and_polygons, system_);
+        const auto points = std::count_if(file.points.begin(), file.points.end(), [&](const Place& place) { return grid_.at(place).has_value(); });
+        const auto areas = std::count_if(file.polygons.begin(), file.polygons.end(), [&](const Polygon& polygon) {
+            return !cells_within(polygon, grid_).empty();
+        });
+        say("kept water", name, file,
+            std::to_string(points) + " of " + std::to_string(file.points.size()) + " points and " + std::to_string(areas) + " of " +
+                std::to_string(file.polygons.size()) + " polygons", points + areas > 0);
+        mapped_.shapes.kept_places = std::move(file.points);
+        mapped_.shapes.kept_areas = std::move(file.polygons);
+    }
+
+    void say(const std::string& role, const std::string& name, const ShapeFile& file, const std::string& inside, bool any) {
+        mapped_.notices.insert(mapped_.notices.end(), file.notices.begin(), file.notices.end());
+        mapped_.facts.push_back(role + ": " + std::to_string(file.features) + (file.features == 1 ? " feature, " : " features, ") + inside +
+                                " within the elevations");
+        if (!any) throw input_error("nothing of the " + role + " in '" + name + "' lies within the elevations; check its reference system");
+    }
+
+    const Study& study_;
+    const Grid& grid_;
+    const ReferenceSystem& system_;
+    MappedShapes mapped_;
+};
+
+std::string counted(std::size_t count, const std::string& one, const std::string& many) {
+    return std::to_string(count) + " " + (count == 1 ? one : many);
+}
+
+/// What a kind of edit came to.
+void tell(const char* kind, const std::string& verb, const EditCount& count, Notices& notices) {
+    if (count.used + count.unused == 0) return;
+    std::string text = std::string(kind) + ": " + counted(count.used, "shape", "shapes") + verb + counted(count.cells, "cell", "cells");
+    if (count.unused > 0) text += "; " + std::to_string(count.unused) + " had no effect, being off the data or within one cell";
+    if (count.turned > 0) text += "; " + std::to_string(count.turned) + " drawn against the ground were followed the other way";
+    notices.push_back({.code = "terrain-edited", .text = text, .value = static_cast<double>(count.cells)});
+}
+
+void tell_roots(const std::vector<Cell>& cells, const char* code, const std::string& text, const Grid& grid, Notices& notices) {
+    for (const Cell cell : cells) notices.push_back({.code = code, .text = text, .place = grid.centre(cell)});
+}
+
+void tell_all(const TerrainEdits& edits, const EditedFlow& flow, double cut_m, TerrainData& terrain) {
+    Notices& notices = terrain.notices;
+    tell("channels", " lead the flow through ", edits.channels, notices);
+    tell("crossings", " lead the flow through ", edits.crossings, notices);
+    tell("barriers", " stop the flow at ", edits.barriers, notices);
+    tell("kept water", " hold the water of ", edits.kept_waters, notices);
+    if (cut_m > 0) {
+        notices.push_back({.code = "bed-below-ground",
+                           .text = "along channels and crossings the water runs up to " + significant(cut_m, 3) +
+                                   " m below the ground of the elevations, on the lowest ground that the line has met",
+                           .value = cut_m});
+    }
+    tell_roots(flow.ends_without_way, "line-ends-in-basin",
+               "a channel or crossing ends where the ground leads nowhere but back over it, and its water stays there; draw it on to where it leaves",
+               terrain.grid, notices);
+    tell_roots(flow.enclosed, "barrier-shuts-in",
+               "barriers leave the water here no way out, and it stays; leave a gap in them, or draw a channel or crossing through",
+               terrain.grid, notices);
+}
+
+}  // namespace
+
+std::vector<MappedFile> mapped_files(const Study& study) {
+    return {{"channels", study.terrain.channels}, {"crossings", study.terrain.crossings},
+            {"barriers", study.terrain.barriers}, {"keep_water", study.terrain.keep_water}};
+}
+
+MappedShapes read_mapped_shapes(const Study& study, const Grid& grid, const ReferenceSystem& system) {
+    return Reading(study, grid, system).read();
+}
+
+MappedFlow mapped_flow(const Study& study, const ResolvedStudy& resolved, TerrainData& terrain, const FindCodes& find_codes) {
+    const double metres_per_unit = terrain.format.metres_per_stored_unit();
+    const MappedShapes mapped = read_mapped_shapes(study, terrain.grid, terrain.system);
+    const TerrainEdits edits = place_edits(mapped.shapes, terrain.grid, terrain.elevations, in_metres(resolved.vertical_step) / metres_per_unit);
+    EditedFlow flow = edited_flow(terrain.elevations, edits, find_codes);
+    const double cut = lower_to_beds(terrain.elevations, edits.lines);
+    terrain.notices.insert(terrain.notices.end(), mapped.notices.begin(), mapped.notices.end());
+    tell_all(edits, flow, cut * metres_per_unit, terrain);
+    return {.codes = std::move(flow.codes), .line_cells = edits.lines.cells()};
+}
+
+}  // namespace rillclock

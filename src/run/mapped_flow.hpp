@@ -1,0 +1,34 @@
+#pragma once
+
+#include "rillclock/terrain/terrain_edits.hpp"
+#include "study_data.hpp"
+
+namespace rillclock {
+
+/// The files of mapped shapes that a study names, read.
+struct MappedShapes {
+    EditShapes shapes;
+    std::vector<std::string> facts;   ///< "channels: 12 features, 11 of 12 lines within the elevations"
+    Notices notices;
+};
+
+/// A file of mapped shapes that a study may name.
+struct MappedFile {
+    const char* role;   ///< as messages and result.json call it
+    const std::optional<std::string>& name;
+};
+[[nodiscard]] std::vector<MappedFile> mapped_files(const Study& study);
+
+/// Throws an input error where a file cannot be read or nothing of it lies within the grid.
+[[nodiscard]] MappedShapes read_mapped_shapes(const Study& study, const Grid& grid, const ReferenceSystem& system);
+
+/// Flow over the ground with all that is mapped beside it.
+struct MappedFlow {
+    Raster<FlowCode> codes;
+    std::vector<Cell> line_cells;   ///< of channels and crossings: channel flow, whatever drains to them
+};
+
+/// Finds the flow. Afterwards the elevations of lines are their beds, and the terrain's notices say what the edits came to.
+[[nodiscard]] MappedFlow mapped_flow(const Study& study, const ResolvedStudy& resolved, TerrainData& terrain, const FindCodes& find_codes);
+
+}  // namespace rillclock

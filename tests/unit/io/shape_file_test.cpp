@@ -1,0 +1,83 @@
+#include "rillclock/io/shape_file.hpp"
+
+#include <ogrsf_frmts.h>
+
+#include "io_files.hpp"
+
+using namespace rillclock;
+using namespace rillclock::testing;
+using Catch::Matchers::Contains;
+
+namespace {
+
+const ReferenceSystem utm = ReferenceSystem::from_text("EPSG:32612");
+const ReferenceSystem degrees = ReferenceSystem::wgs84();
+
+std::string feature(const std::string& type, const std::string& coordinates) {
+    return R"({"type":"Feature","properties":{},"geometry":{"type":")" + type + R"(","coordinates":)" + coordinates + "}}";
+}
+
+struct ShapeFolder {
+    TemporaryFolder folder;
+    fs::path file(const std::string& features) const {
+        return write_file(folder / "shapes.geojson", R"({"type":"FeatureCollection","features":[)" + features + "]}");
+    }
+    ShapeFile lines(const std::string& features, const ReferenceSystem& target = degrees) const {
+        return read_shapes(file(features), "channels", ShapeKinds::lines, target);
+    }
+    ShapeFile waters(const std::string& features) const {
+        return read_shapes(file(features), "kept water", ShapeKinds::points_and_polygons, degrees);
+    }
+};
+
+}  // namespace
+
+TEST_CASE_METHOD(ShapeFolder, "lines keep the order of their corners and are transformed") {
+    const ShapeFile read = lines(feature("LineString", "[[-111,0],[-111,1]]"), utm);
+    REQUIRE(read.lines.size() == 1);
+    REQUIRE(read.lines[0].size() == 2);
+    CHECK(read.lines[0][0].x == Approx(500000.0).epsilon(1e-12));
+    CHECK(read.lines[0][0].y == Approx(0.0).margin(1e-6));
+    CHECK(read.lines[0][1].y == Approx(110579.6).margin(1.0));
+}
+
+TEST_CASE_METHOD(ShapeFolder, "each part of a feature of several parts is a line of its own") {
+    const ShapeFile read = lines(feature("MultiLineString", "[[[1,2],[3,4]],[[5,6],[7,8]]]") + "," +
+                                 feature("LineString", "[[9,10,99],[11,12,98]]"));
+    CHECK(read.lines.size() == 3);
+    CHECK(read.lines[2][1].x == 11.0);
+    CHECK(read.features == 2);
+    CHECK(read.notices.empty());
+}
+
+TEST_CASE_METHOD(ShapeFolder, "kept water is points and polygons with holes") {
+    const ShapeFile read = waters(feature("Point", "[1,2]") + "," +
+                                  feature("Polygon", "[[[0,0],[4,0],[4,4],[0,0]],[[1,1],[2,1],[2,2],[1,1]]]") + "," +
+                                  feature("MultiPoint", "[[3,4],[5,6]]"));
+    CHECK(read.points.size() == 3);
+    REQUIRE(read.polygons.size() == 1);
+    CHECK(read.polygons[0].rings.size() == 2);
+}
+
+TEST_CASE_METHOD(ShapeFolder, "features of the wrong type or without a shape are left out one by one") {
+    const ShapeFile read = lines(feature("LineString", "[[1,2],[3,4]]") + "," + feature("Point", "[1,2]") +
+                                 R"(,{"type":"Feature","properties":{},"geometry":null})");
+    CHECK(read.lines.size() == 1);
+    REQUIRE(read.notices.size() == 2);
+    CHECK_THAT(read.notices[0].text, Contains("Feature 2") && Contains("POINT") && Contains("only lines"));
+    CHECK_THAT(read.notices[1].text, Contains("Feature 3") && Contains("no shape"));
+}
+
+TEST_CASE_METHOD(ShapeFolder, "a line with a corner that has no image is left out whole") {
+    const ShapeFile read = lines(feature("LineString", "[[-111,0],[-111,1]]") + "," + feature("LineString", "[[-111,0],[-111,1e300]]"), utm);
+    CHECK(read.lines.size() == 1);
+    REQUIRE(read.notices.size() == 1);
+    CHECK_THAT(read.notices[0].text, Contains("Feature 2"));
+}
+
+TEST_CASE_METHOD(ShapeFolder, "a file without a usable shape is refused with its reason") {
+    CHECK_THAT(sentence_of([&] { (void)lines(feature("Point", "[1,2]")); }), Contains("nothing that can be used") && Contains("POINT"));
+    CHECK_THAT(sentence_of([&] { (void)lines(""); }), Contains("no features"));
+    CHECK_THAT(sentence_of([&] { (void)read_shapes(folder / "none.gpkg", "barriers", ShapeKinds::lines, utm); }),
+               Contains("file of barriers") && Contains("none.gpkg"));
+}
