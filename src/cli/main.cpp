@@ -3,6 +3,7 @@
 #include <spdlog/spdlog.h>
 #include <unistd.h>
 
+#include <cstdlib>
 #include <exception>
 #include <iostream>
 #include <memory>
@@ -140,5 +141,7 @@ int main(int count, char** words) {
     spdlog::set_default_logger(std::make_shared<spdlog::logger>("", std::make_shared<spdlog::sinks::stderr_sink_mt>()));
     spdlog::set_pattern("%v");
     rillclock::listen_for_signals();
+    // GDAL would keep a twentieth of the machine's memory of blocks that this program reads and writes once. Whoever wants it may say so.
+    setenv("GDAL_CACHEMAX", "64", 0);
     return rillclock::guarded_main(count, words);
 }

@@ -131,7 +131,7 @@ private:
 
     void costs() {
         const auto cells = static_cast<double>(terrain_->grid().size());
-        report_.facts.push_back("cost: about " + size_text(cells * memory_bytes_per_cell) + " of memory, and at most " +
+        report_.facts.push_back("cost: about " + size_text(memory_need(cells, width_of(terrain_->format.stored) == ElevationStore::Width::eight_bytes)) + " of memory, and at most " +
                                 size_text(cells * disk_bytes_per_cell) + " of disk for the result");
     }
 

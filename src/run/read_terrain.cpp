@@ -14,12 +14,6 @@ constexpr std::int64_t strip_rows = 512;
 /// No ground is as steep between neighbouring cells.
 constexpr double impossible_slope = 20.0;
 
-/// Four bytes a cell hold every value of these types exactly.
-ElevationStore::Width width_of(StoredType type) {
-    const bool wide = type == StoredType::int32 || type == StoredType::uint32 || type == StoredType::float64;
-    return wide ? ElevationStore::Width::eight_bytes : ElevationStore::Width::four_bytes;
-}
-
 /// Reads all strips into the store; returns how many cells are void.
 std::int64_t read_all(BlockSource<double>& source, ElevationStore& store, const Progress& progress) {
     const Grid& grid = source.grid();
@@ -49,6 +43,11 @@ Notices relief_notices(const TerrainData& terrain) {
 }
 
 }  // namespace
+
+ElevationStore::Width width_of(StoredType type) {
+    const bool wide = type == StoredType::int32 || type == StoredType::uint32 || type == StoredType::float64;
+    return wide ? ElevationStore::Width::eight_bytes : ElevationStore::Width::four_bytes;
+}
 
 ElevationFile open_elevation_of(const Study& study) {
     ElevationOptions options;

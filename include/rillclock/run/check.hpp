@@ -19,7 +19,8 @@ struct CheckReport {
 /// after a problem, so that one check finds them all.
 [[nodiscard]] CheckReport check(const Study& study);
 
-/// Bytes of memory that a run needs a cell, as measured, with room to spare.
-inline constexpr double memory_bytes_per_cell = 130.0;
+/// Memory that a run needs, in bytes, with room to spare: what is kept for every cell, and what tiles, strips of the rasters being
+/// written and the libraries need whatever the size. `wide` where elevations take eight bytes a cell (see ElevationStore).
+[[nodiscard]] constexpr double memory_need(double cells, bool wide) { return cells * (wide ? 30.0 : 20.0) + 350e6; }
 
 }  // namespace rillclock
