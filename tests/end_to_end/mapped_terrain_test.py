@@ -1,0 +1,122 @@
+"""Channels, crossings, barriers and kept water that a study maps beside its elevations."""
+import unittest
+
+import numpy as np
+from osgeo import gdal, ogr
+
+from support import CommandTest, system_of, table
+
+LEFT, TOP, CELL = 500_000.0, 5_400_000.0, 2.0
+NOWHERE = 65534
+
+
+def at(row, column):
+    """The centre of a cell."""
+    return LEFT + (column + 0.5) * CELL, TOP - (row + 0.5) * CELL
+
+
+def dammed_valley():
+    """Ground that falls to the east along a valley in row 20, closed in the west, with an embankment of 6 m at columns 24 to 26."""
+    rows, columns = np.mgrid[0:40, 0:50]
+    ground = 100 + 0.2 * np.abs(rows - 20) - 0.05 * columns
+    ground[:, 24:27] += 6
+    ground[:, 0] += 20
+    return np.round(ground, 3)
+
+
+class MappedTerrain(CommandTest):
+    def setUp(self):
+        super().setUp()
+        self.ground(values=dammed_valley())
+        self.cover()
+        self.book()
+
+    def shapes(self, name, *wkts, epsg=25832):
+        """A GeoPackage of shapes given as WKT in the ground's system, written in another."""
+        driver = ogr.GetDriverByName("GPKG" if name.endswith("gpkg") else "GeoJSON")
+        file = driver.CreateDataSource(str(self.folder / name))
+        layer = file.CreateLayer("shapes", system_of(epsg), ogr.wkbUnknown)
+        for wkt in wkts:
+            geometry = ogr.CreateGeometryFromWkt(wkt)
+            geometry.AssignSpatialReference(system_of(25832))
+            geometry.TransformTo(system_of(epsg))
+            feature = ogr.Feature(layer.GetLayerDefn())
+            feature.SetGeometry(geometry)
+            layer.CreateFeature(feature)
+        del file
+
+    @staticmethod
+    def line(*cells):
+        return "LINESTRING(" + ",".join("%.3f %.3f" % at(*cell) for cell in cells) + ")"
+
+    def study(self, terrain="", timing=""):
+        (self.folder / "study.toml").write_text(
+            f'[terrain]\nelevation = "dem.tif"\n{terrain}\n[surface]\ncover = "cover.tif"\nbook = "book.csv"\n'
+            f'[rain]\ntwo_year_24_hour = "90 mm"\n[timing]\n{timing}\n')
+
+    def run_study(self):
+        self.done("run", "study.toml", "--replace")
+
+    def raster(self, name):
+        return gdal.Open(str(self.folder / "result/rasters" / name)).ReadAsArray()
+
+    def notices(self):
+        return {row["notice"]: row for row in table(self.folder / "result/tables/review.csv")}
+
+    def test_a_crossing_takes_the_flow_through_an_embankment_and_its_pond_away(self):
+        self.study()
+        self.run_study()
+        spill_before = self.raster("spill_elevation.tif")
+        self.shapes("culverts.gpkg", self.line((20, 28), (20, 22)), epsg=4326)
+        self.study('crossings = "culverts.gpkg"')
+        self.run_study()
+        self.assertEqual(set(self.raster("flow_azimuth.tif")[20, 22:28]), {90})
+        spill = self.raster("spill_elevation.tif")
+        self.assertGreater(spill_before[20, 20], spill[20, 20] + 3)
+        self.assertAlmostEqual(spill[20, 20], dammed_valley()[20, 20], 3)
+        self.assertEqual(set(self.raster("regime.tif")[20, 22:29]), {3})
+        self.assertEqual(float(self.notices()["terrain-edited"]["value"]), 7)
+        self.assertAlmostEqual(float(self.notices()["bed-below-ground"]["value"]), 5.95, 2)
+        self.assertIn("culverts.gpkg", [file["file"] for file in self.result()["inputs"]])
+
+    def test_mapped_channels_are_the_only_ones_where_the_study_says_so(self):
+        self.shapes("brook.geojson", self.line((20, 2), (10, 12), (10, 14), (20, 24), (20, 49)), epsg=4326)
+        self.study('channels = "brook.geojson"', 'channel_from = "mapped only"')
+        self.run_study()
+        azimuth, regime = self.raster("flow_azimuth.tif"), self.raster("regime.tif")
+        self.assertEqual([azimuth[20 - i, 2 + i] for i in range(10)], [45] * 10)
+        self.assertEqual([azimuth[10 + i, 14 + i] for i in range(10)], [135] * 10)
+        self.assertEqual(azimuth[20, 49], NOWHERE)
+        self.assertEqual(np.count_nonzero(regime == 3), 48)
+        rows = table(self.folder / "result/tables/segments.csv")
+        self.assertIn("channel", {row["regime"] for row in rows})
+
+    def test_a_barrier_turns_the_flow_aside_and_kept_water_ends_it(self):
+        self.shapes("walls.gpkg", self.line((14, 10), (26, 10)))
+        pond = "POLYGON((%f %f,%f %f,%f %f,%f %f))" % (*at(19, 18), *at(19, 21), *at(22, 21), *at(22, 18))
+        self.shapes("ponds.gpkg", "POINT(%f %f)" % at(3, 40), pond)
+        self.study('barriers = "walls.gpkg"\nkeep_water = "ponds.gpkg"')
+        self.run_study()
+        azimuth = self.raster("flow_azimuth.tif")
+        self.assertTrue(all(azimuth[row, 9] not in (45, 90, 135) for row in range(15, 26)))
+        self.assertEqual(azimuth[3, 40], NOWHERE)
+        self.assertTrue(np.all(azimuth[20:22, 19:21] == NOWHERE))
+
+    def test_check_counts_features_and_names_what_is_wrong(self):
+        self.shapes("brook.gpkg", self.line((20, 2), (20, 22)), "LINESTRING(1 1,2 2)", "POINT(500010 5399990)")
+        self.study('channels = "brook.gpkg"')
+        run = self.rillclock("check", "study.toml")
+        self.assertEqual(run.returncode, 0, run.stderr)
+        said = run.stdout + run.stderr
+        self.assertIn("channels: 2 features, 1 of 2 lines within the elevations", said)
+        self.assertIn("Feature 3", said)
+        self.shapes("far.gpkg", "LINESTRING(1 1,2 2)")
+        self.study('barriers = "far.gpkg"')
+        run = self.rillclock("check", "study.toml")
+        self.assertEqual(run.returncode, 1)
+        self.assertIn("far.gpkg", run.stdout + run.stderr)
+        self.refused(1, "run", "study.toml", says=["barriers", "far.gpkg", "reference system"])
+
+
+if __name__ == "__main__":
+    unittest.main()
