@@ -20,18 +20,33 @@ bool touches_edge(const Raster<FlowCode>& codes, const Window& window) {
     return false;
 }
 
+/// What the ground of a cell is, for formulas that take a catchment as one lump.
+struct GroundOfCell {
+    std::uint8_t surface = 0;
+    double slope = 0.0;
+    double elevation_m = 0.0;
+};
+
+GroundOfCell ground_of_cell(const TiledGround& in, const TileDesk& desk, Local local) {
+    const Cell cell = desk.flow.cell(local);
+    return {.surface = in.surface.index[cell],
+            .slope = land_slope(in.elevations, in.metres_per_elevation_unit, in.ground, cell),
+            .elevation_m = desk.elevation[local] * in.metres_per_elevation_unit};
+}
+
 /// Arrivals of the subareas that meet in one tile. Cells of a subarea lie together, and so do those of one second: both are looked up
 /// only where they change.
 class TileTally {
 public:
     TileTally(double storm_factor, Storms storms) : storm_factor_(storm_factor), storms_(storms) {}
 
-    void add(std::uint32_t owner, const ArrivingCell& cell) {
+    void add(std::uint32_t owner, const ArrivingCell& cell, const GroundOfCell& ground) {
         if (owner != owner_ || arrivals_ == nullptr) {
             owner_ = owner;
             arrivals_ = &by_owner_[owner];
         }
         arrivals_->add_unbinned(cell);
+        arrivals_->ground.add(ground.surface, cell.area, ground.slope, ground.elevation_m);
         if (storms_ == Storms::by_point) return arrivals_->storm_bins.add(cell.head, cell.area, storm_factor_);
         const std::int64_t second = ArrivalBins::second_of(cell.head.time, storm_factor_);
         ArrivalBins::Bin& bin = bins_[{owner, second}];
@@ -86,7 +101,8 @@ void ArrivalTally::add(const TileDesk& desk) {
         tally.add(desk.owner[local], {.head = {cell, desk.time_to_root(local)},
                                       .area = ground.ground.cell_area(desk.flow.row(local)),
                                       .flow_distance = desk.flow_distance[local],
-                                      .is_border = at_edge && is_beside_edge(ground.forest.codes(), cell)});
+                                      .is_border = at_edge && is_beside_edge(ground.forest.codes(), cell)},
+                  ground_of_cell(ground, desk, local));
     }
     const std::lock_guard lock(mutex_);
     tally.hand_over(subareas_);

@@ -60,6 +60,7 @@ void Arrivals::add(Arrivals&& other, double storm_factor) {
     border_cells += other.border_cells;
     add_farthest(other.farthest, other.farthest_distance);
     front.add(other.front);
+    ground.add(other.ground);
     bins.take(std::move(other.bins), storm_factor);
     storm_bins.take(std::move(other.storm_bins), storm_factor);
 }

@@ -59,13 +59,32 @@ double PathSummary::fall_ratio() const {
     return fall_m > 0 ? slope_length_m / fall_m : std::numeric_limits<double>::quiet_NaN();
 }
 
+double PathSummary::equal_area_slope() const {
+    const double length_m = from_fixed(length);
+    return length > 0 ? 2.0 * profile_area_m2 / (length_m * length_m) : 0.0;
+}
+
 double PathSummary::share_of_length(double part_m) const { return length > 0 ? part_m / from_fixed(length) : 0.0; }
+
+namespace {
+
+double profile_area_m2(const PathGround& ground, std::span<const PathCell> path) {
+    double area = 0.0;
+    for (std::size_t i = 0; i + 1 < path.size(); ++i) {
+        const double heights = path[i].spill + path[i + 1].spill - 2.0 * path.back().spill;
+        area += 0.5 * heights * from_fixed(path[i].flow_distance - path[i + 1].flow_distance);
+    }
+    return area * ground.metres_per_elevation_unit;
+}
+
+}  // namespace
 
 PathSummary summary_of(const PathGround& ground, std::span<const PathCell> path) {
     PathSummary summary;
     summary.length = path.front().flow_distance - path.back().flow_distance;
     summary.time = path.front().time_to_root - path.back().time_to_root;
     summary.fall_m = (path.front().spill - path.back().spill) * ground.metres_per_elevation_unit;
+    summary.profile_area_m2 = profile_area_m2(ground, path);
     for (const PathPiece& piece : path_pieces(ground, path)) {
         summary.slope_length_m += piece.part.slope * piece.part.length_m;
         if (piece.part.ponded) summary.ponded_length_m += piece.part.length_m;

@@ -17,6 +17,7 @@ namespace rillclock {
     heads.last = catchment.front.last_to_arrive(storm_factor);
     heads.governing = ignore_tail > 0 ? bins.last_without(ignore_tail) : heads.last;
     heads.farthest = catchment.farthest;
+    heads.ground = catchment.ground;
     return heads;
 }
 

@@ -58,6 +58,26 @@ void add_trust_columns(TableWriter<Outlet>& table) {
         .column("touches_edge", [](const Outlet& o) { return yes_or_no(o.touches_edge()); });
 }
 
+const std::optional<MethodSpread>& spread_of(const StudyResult& result, const Outlet& outlet) {
+    return result.methods[outlet.number - 1].spread;
+}
+
+void add_method_columns(const StudyResult& result, TableWriter<Outlet>& table) {
+    const auto time = [&result](Duration MethodSpread::*which) {
+        return [&result, which](const Outlet& o) {
+            const std::optional<MethodSpread>& spread = spread_of(result, o);
+            return spread ? in_minutes_text(in_seconds((*spread).*which)) : std::string();
+        };
+    };
+    table.column("methods_applicable", [&result](const Outlet& o) {
+            const std::optional<MethodSpread>& spread = spread_of(result, o);
+            return std::to_string(spread ? spread->methods : 0);
+        })
+        .column("methods_lowest_min", time(&MethodSpread::lowest))
+        .column("methods_median_min", time(&MethodSpread::median))
+        .column("methods_highest_min", time(&MethodSpread::highest));
+}
+
 }  // namespace
 
 std::string outlets_table(const StudyResult& result) {
@@ -67,6 +87,7 @@ std::string outlets_table(const StudyResult& result) {
     add_time_columns(scale, table);
     add_path_columns(result, scale, table);
     add_trust_columns(table);
+    add_method_columns(result, table);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) text += table.line(outlet);
     return text;

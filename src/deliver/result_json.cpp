@@ -25,6 +25,10 @@ Json digits(double value, int count = 6) {
 }
 Json minutes_json(double s) { return number(s / 60.0, 6); }
 Json text_or_null(const std::string& text) { return text.empty() ? Json(nullptr) : Json(text); }
+template <class T>
+Json or_null(const std::optional<T>& value) {
+    return value ? digits(*value) : Json(nullptr);
+}
 Json place_json(const Place& place) { return Json::array({number(place.x, 7), number(place.y, 7)}); }
 
 Json versions() {
@@ -172,9 +176,9 @@ Json arrivals_json(const Outlet& outlet) {
     return json;
 }
 
-Json iteration_json(const StormTime& iteration) {
+Json iteration_json(const std::vector<StormIteration>& rounds) {
     Json rows = Json::array();
-    for (const StormIteration& row : iteration.rows) {
+    for (const StormIteration& row : rounds) {
         rows.push_back({{"assumed_min", minutes_json(in_seconds(row.assumed))},
                         {"intensity_mm_per_h", digits(in_millimetres_per_hour(row.intensity), 8)},
                         {"computed_min", minutes_json(in_seconds(row.computed))}});
@@ -193,10 +197,46 @@ Json storms_json(const StudyResult& result, const Outlet& outlet) {
                      {"sheet_time_s", number(storm.sheet_seconds(), 6)},
                      {"governing_head", place_json(result.grid.centre(storm.governing.cell))},
                      {"path_length_m", number(from_fixed(storm.length), 3)}};
-        if (result.study.timing.is_kinematic()) json["iteration"] = iteration_json(storm.iteration);
+        if (result.study.timing.is_kinematic()) json["iteration"] = iteration_json(storm.iteration.rows);
         storms.push_back(json);
     }
     return storms;
+}
+
+Json measures_json(const CatchmentMeasures& measures) {
+    const auto in_m = [](const std::optional<Length>& length) { return length ? digits(in_metres(*length)) : Json(nullptr); };
+    return {{"area_m2", digits(in_square_metres(*measures.area))},
+            {"longest_path_m", in_m(measures.longest_path)},
+            {"fall_m", in_m(measures.fall)},
+            {"path_slope", or_null(measures.path_slope())},
+            {"equal_area_slope", or_null(measures.equal_area_slope)},
+            {"land_slope", or_null(measures.land_slope)},
+            {"mean_height_m", in_m(measures.mean_height)},
+            {"curve_number", or_null(measures.curve_number)},
+            {"runoff_coefficient", or_null(measures.runoff_coefficient)},
+            {"overland_n", or_null(measures.overland_n)},
+            {"overland_length_m", in_m(measures.overland_length)},
+            {"overland_slope", or_null(measures.overland_slope)}};
+}
+
+Json methods_json(const PointMethods& methods) {
+    Json times = Json::array();
+    for (const MethodTime& time : methods.times) {
+        times.push_back({{"method", time.method->about.id},
+                         {"applicable", time.answer.is_applicable()},
+                         {"why_not", text_or_null(time.answer.why_not)},
+                         {"time_min", time.answer.time ? minutes_json(in_seconds(*time.answer.time)) : Json(nullptr)},
+                         {"ratio_to_segments", or_null(time.ratio)}});
+        if (!time.answer.iterations.empty()) times.back()["iteration"] = iteration_json(time.answer.iterations);
+    }
+    Json spread = nullptr;
+    if (methods.spread) {
+        spread = {{"applicable", methods.spread->methods},
+                  {"lowest_min", minutes_json(in_seconds(methods.spread->lowest))},
+                  {"median_min", minutes_json(in_seconds(methods.spread->median))},
+                  {"highest_min", minutes_json(in_seconds(methods.spread->highest))}};
+    }
+    return {{"measures", measures_json(methods.measures)}, {"spread", spread}, {"times", times}};
 }
 
 Json outlet_json(const StudyResult& result, const Outlet& outlet) {
@@ -214,13 +254,9 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
             {"arrivals", arrivals_json(outlet)},
             {"governing_path", path_json(result, outlet, outlet.governing)},
             {"longest_path", path_json(result, outlet, outlet.longest)}};
+    json["methods"] = methods_json(result.methods[outlet.number - 1]);
     if (!outlet.storms.empty()) json["storms"] = storms_json(result, outlet);
     return json;
-}
-
-template <class T>
-Json or_null(const std::optional<T>& value) {
-    return value ? digits(*value) : Json(nullptr);
 }
 
 Json notices_json(const StudyResult& result) {

@@ -16,8 +16,8 @@ constexpr double no_limit = std::numeric_limits<double>::infinity();
 /// range that is left only says so.
 class Needs {
 public:
-    double number(std::optional<double> value, std::string_view what, double greatest = no_limit) {
-        if (!value) return lacking(std::string(what) + " is not known");
+    double number(std::optional<double> value, std::string_view what, double greatest = no_limit, const std::string& reason = {}) {
+        if (!value) return unknown(what, reason);
         if (!(*value > 0 && *value <= greatest && std::isfinite(*value)))
             return lacking(std::string(what) + " is " + significant(*value) + ", not above zero" +
                            (greatest < no_limit ? " and at most " + significant(greatest) : std::string()));
@@ -33,8 +33,8 @@ public:
     }
 
     /// A share or coefficient, which may be 0.
-    double share(std::optional<double> value, std::string_view what) {
-        if (!value) return lacking(std::string(what) + " is not known");
+    double share(std::optional<double> value, std::string_view what, const std::string& reason = {}) {
+        if (!value) return unknown(what, reason);
         if (!(*value >= 0 && *value <= 1))
             return lacking(std::string(what) + " is " + significant(*value) + ", not 0 to 1");
         return *value;
@@ -61,6 +61,10 @@ public:
     }
 
 private:
+    double unknown(std::string_view what, const std::string& reason) {
+        return lacking(std::string(what) + " is not known" + (reason.empty() ? "" : ": " + reason));
+    }
+
     double lacking(const std::string& why) {
         met_ = false;
         outside(why);
@@ -108,7 +112,7 @@ double slope_of(Needs& needs, const CatchmentMeasures& catchment) {
 }
 
 double coefficient_of(Needs& needs, const CatchmentMeasures& catchment) {
-    return needs.share(catchment.runoff_coefficient, "the runoff coefficient");
+    return needs.share(catchment.runoff_coefficient, "the runoff coefficient", catchment.no_runoff_coefficient);
 }
 
 constexpr double in_square_miles(Area v) {
@@ -138,7 +142,7 @@ LumpTime bransby_williams_with(const CatchmentMeasures& catchment, double slope,
 LumpTime nrcs_lag_time(const CatchmentMeasures& catchment, const IntensityOfDuration&) {
     Needs needs;
     const Length path = path_of(needs, catchment);
-    const double curve_number = needs.number(catchment.curve_number, "the curve number", 100);
+    const double curve_number = needs.number(catchment.curve_number, "the curve number", 100, catchment.no_curve_number);
     const double land_slope = needs.number(catchment.land_slope, "the slope of the land");
     needs.range(curve_number, 50, 95, "the curve number");
     needs.range(in_square_miles(needs.area(catchment.area)), 0.002, 19, "the area in square miles");

@@ -2,6 +2,7 @@
 
 #include "rillclock/deliver/cautions.hpp"
 #include "rillclock/deliver/version.hpp"
+#include "rillclock/hydraulics/lump_methods.hpp"
 #include "rillclock/hydraulics/methods.hpp"
 #include "rillclock/io/library_versions.hpp"
 #include "rillclock/study/study_keys.hpp"
@@ -29,6 +30,7 @@ std::string version_line() {
 std::string methods_text() {
     std::string text;
     for (const Method& method : methods()) text += (text.empty() ? "" : "\n") + method_text(method);
+    for (const LumpMethod& method : lump_methods()) text += "\n" + method_text(method.about);
     return text;
 }
 

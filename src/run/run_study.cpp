@@ -17,6 +17,7 @@
 #include "mapped_flow.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
+#include "study_storms.hpp"
 
 namespace rillclock {
 namespace {
@@ -46,6 +47,7 @@ void write_texts(const StudyResult& result, ResultFolder& folder) {
     folder.write_text("longest_paths.geojson", paths_geojson(result, PathKind::longest));
     folder.write_text("tables/outlets.csv", outlets_table(result));
     folder.write_text("tables/segments.csv", segments_table(result));
+    folder.write_text("tables/methods.csv", methods_table(result));
     folder.write_text("tables/review.csv", review_table(result));
     if (result.rain.source) folder.write_text("tables/storms.csv", storms_table(result));
     if (result.study.timing.is_kinematic()) folder.write_text("tables/iterations.csv", iterations_table(result));
@@ -56,6 +58,17 @@ std::vector<CellLabel> labels_of(const std::vector<DesignPoint>& points) {
     std::vector<CellLabel> labels;
     for (const DesignPoint& point : points) labels.push_back({point.cell, static_cast<std::uint32_t>(labels.size() + 1)});
     return labels;
+}
+
+std::vector<PointMethods> methods_of(const Study& study, const CoverBook& book, const StudyRain& rain,
+                                     const std::vector<Outlet>& outlets) {
+    const MethodGround ground{.book = book, .soil_group = study.surface.soil_group};
+    const std::vector<IntensityOfDuration> intensities = intensities_of(rain);
+    std::vector<PointMethods> methods;
+    for (const Outlet& outlet : outlets) {
+        methods.push_back(point_methods(outlet, ground, rain.source ? intensities[rain.raster] : IntensityOfDuration{}));
+    }
+    return methods;
 }
 
 /// What was read, for those who watch the run.
@@ -105,12 +118,13 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const std::vector<Outlet> outlets = stage(progress, "design points", cells, [&] {
         return outlets_of(travel, points.points, tree, heads, outlet_rules_of(study, resolved));
     });
+    const std::vector<PointMethods> methods = methods_of(study, surface.book, rain, outlets);
     const Notices notices = all_notices(terrain, surface, rain, points, outlets);
     const std::vector<InputFile> inputs = input_files(study);
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes};
     const StudyResult result{.study = study, .resolved = resolved, .rules = rules, .rain = rain, .grid = terrain.grid,
                              .system = terrain.system, .format = terrain.format, .book = surface.book,
-                             .surface_classes = surface.table.classes, .outlets = outlets, .notices = notices,
+                             .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .notices = notices,
                              .inputs = inputs, .data = data};
     write_texts(result, folder);
     folder.commit();

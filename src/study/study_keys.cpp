@@ -36,6 +36,8 @@ constexpr std::array keys{
     StudyKey{"surface.book", R"("nlcd")", "asked for", "what its codes mean: nlcd, or a CSV file"},
     StudyKey{"surface.fallback_class", "71", "none: unknown codes are an error",
              "code that stands in for codes the book does not know and for cells without cover"},
+    StudyKey{"surface.soil_group", R"("B")", "none: no curve numbers",
+             "hydrologic soil group, A to D, of the whole study: which curve numbers of the book count"},
     StudyKey{"surface.path_length", R"("grid")", "grid", "grid: the length of a path is that of its steps"},
     StudyKey{"points.file", R"("points.gpkg")", "none: points where flow leaves the data", "design points"},
     StudyKey{"points.name", R"("label")", "none: points are numbered", "field that names them"},
@@ -86,11 +88,9 @@ constexpr std::array keys{
 };
 
 /// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
-constexpr std::array<std::string_view, 10> not_served{"surface.soil_group", "points.area",
-                                                      "points.pipes", "rain.table",
-                                                      "timing.channel.flow", "timing.overrides",
-                                                      "peaks", "uncertainty",
-                                                      "scenario", "output.isochrones"};
+constexpr std::array<std::string_view, 9> not_served{"points.area",         "points.pipes",     "rain.table",
+                                                     "timing.channel.flow", "timing.overrides", "peaks",
+                                                     "uncertainty",         "scenario",         "output.isochrones"};
 
 bool is_or_is_under(std::string_view key, std::string_view stem) {
     return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));

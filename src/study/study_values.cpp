@@ -196,6 +196,8 @@ constexpr std::array setters{
     Setter{"surface.band", [](Study& s, const Stated& v) { s.surface.band = v.whole_number(1); }},
     Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = book(v); }},
     Setter{"surface.fallback_class", [](Study& s, const Stated& v) { s.surface.fallback_class = v.whole_number(0); }},
+    Setter{"surface.soil_group",
+           [](Study& s, const Stated& v) { s.surface.soil_group = static_cast<SoilGroup>(v.choice({"A", "B", "C", "D"})); }},
     Setter{"surface.path_length", [](Study&, const Stated& v) { (void)v.choice({"grid"}, {"unbiased"}); }},
     Setter{"points.file", [](Study& s, const Stated& v) { s.points.file = v.text(); }},
     Setter{"points.name", [](Study& s, const Stated& v) { s.points.name = v.text(); }},

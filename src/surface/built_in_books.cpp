@@ -11,29 +11,31 @@ namespace {
 // Codes and names: the NLCD legend from 2001 on. Typical n: overland values of Kalyanapu, Burian and McPherson, 2009
 // ("Effect of land use-based surface roughness on hydrologic model output", J. Spatial Hydrology 9(2)), and where that
 // has none, NEH Part 630 chapter 15, 2010, table 15-1. Both from memory. Low and high n, the match of a class with a
-// type of table 15-3 and the depth of water are our own.
+// type of table 15-3 and the depth of water are our own. Curve numbers: TR-55, 1986, table 2-2, from memory: open space in good
+// condition 21; residential, quarter and eighth of an acre 22, 23; commercial 24; newly graded 31; woods, good 41 to 43; brush, fair 52;
+// pasture, good 71, 81; row crops, straight, good 82. That match is our own; classes without one have none.
 constexpr std::string_view nlcd_text =
-    R"(code,name,n_low,n_typical,n_high,shallow_type,paved,water_depth_m,source,from_memory
-11,Open Water,,,,,,2,"mean depth ours: state your own",yes
-12,Perennial Ice/Snow,0.010,0.013,0.050,nearly bare,no,,"n and shallow type ours",yes
-21,"Developed, Open Space",0.030,0.0404,0.240,short-grass pasture,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 dense grasses; low and shallow type ours",yes
-22,"Developed, Low Intensity",0.040,0.0678,0.150,pavement,yes,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 short-grass prairie; low and shallow type ours",yes
-23,"Developed, Medium Intensity",0.030,0.0678,0.120,pavement,yes,,"n Kalyanapu et al. 2009; range and shallow type ours",yes
-24,"Developed, High Intensity",0.011,0.0404,0.070,pavement,yes,,"n Kalyanapu et al. 2009; low NEH 630 table 15-1 smooth surfaces; high and shallow type ours",yes
-31,Barren Land,0.011,0.0113,0.050,nearly bare,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 smooth surfaces to fallow; shallow type ours",yes
-41,Deciduous Forest,0.200,0.360,0.800,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with dense underbrush; low and shallow type ours",yes
-42,Evergreen Forest,0.200,0.320,0.800,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with dense underbrush; low and shallow type ours",yes
-43,Mixed Forest,0.200,0.400,0.800,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with dense underbrush; low and shallow type ours",yes
-51,Dwarf Scrub,0.100,0.130,0.400,contour crops or woodland,no,,"n NEH 630 table 15-1 range; high woods with light underbrush; low, match and shallow type ours",yes
-52,Shrub/Scrub,0.130,0.400,0.800,contour crops or woodland,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 range to dense underbrush; shallow type ours",yes
-71,Grassland/Herbaceous,0.130,0.368,0.410,short-grass pasture,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 range to bermudagrass; shallow type ours",yes
-72,Sedge/Herbaceous,0.150,0.240,0.410,forest litter or hay meadow,no,,"n NEH 630 table 15-1 dense grasses; range short-grass prairie to bermudagrass; match and shallow type ours",yes
-73,Lichens,0.011,0.050,0.150,nearly bare,no,,"n NEH 630 table 15-1 fallow; range smooth surfaces to short-grass prairie; match and shallow type ours",yes
-74,Moss,0.050,0.150,0.240,short-grass pasture,no,,"n NEH 630 table 15-1 short-grass prairie; range fallow to dense grasses; match and shallow type ours",yes
-81,Pasture/Hay,0.150,0.325,0.410,short-grass pasture,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 short-grass prairie to bermudagrass; shallow type ours",yes
-82,Cultivated Crops,0.050,0.060,0.170,straight row crops,no,,"n NEH 630 table 15-1 residue cover to 20 %; range fallow to residue cover above 20 %; shallow type NEH 630 table 15-3",yes
-90,Woody Wetlands,0.050,0.086,0.400,contour crops or woodland,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with light underbrush; low and shallow type ours",yes
-95,Emergent Herbaceous Wetlands,0.100,0.1825,0.410,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 bermudagrass; low and shallow type ours",yes
+    R"(code,name,n_low,n_typical,n_high,shallow_type,paved,water_depth_m,source,from_memory,cn_a,cn_b,cn_c,cn_d
+11,Open Water,,,,,,2,"mean depth ours: state your own",yes,,,,
+12,Perennial Ice/Snow,0.010,0.013,0.050,nearly bare,no,,"n and shallow type ours",yes,,,,
+21,"Developed, Open Space",0.030,0.0404,0.240,short-grass pasture,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 dense grasses; low and shallow type ours",yes,39,61,74,80
+22,"Developed, Low Intensity",0.040,0.0678,0.150,pavement,yes,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 short-grass prairie; low and shallow type ours",yes,61,75,83,87
+23,"Developed, Medium Intensity",0.030,0.0678,0.120,pavement,yes,,"n Kalyanapu et al. 2009; range and shallow type ours",yes,77,85,90,92
+24,"Developed, High Intensity",0.011,0.0404,0.070,pavement,yes,,"n Kalyanapu et al. 2009; low NEH 630 table 15-1 smooth surfaces; high and shallow type ours",yes,89,92,94,95
+31,Barren Land,0.011,0.0113,0.050,nearly bare,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 smooth surfaces to fallow; shallow type ours",yes,77,86,91,94
+41,Deciduous Forest,0.200,0.360,0.800,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with dense underbrush; low and shallow type ours",yes,30,55,70,77
+42,Evergreen Forest,0.200,0.320,0.800,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with dense underbrush; low and shallow type ours",yes,30,55,70,77
+43,Mixed Forest,0.200,0.400,0.800,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with dense underbrush; low and shallow type ours",yes,30,55,70,77
+51,Dwarf Scrub,0.100,0.130,0.400,contour crops or woodland,no,,"n NEH 630 table 15-1 range; high woods with light underbrush; low, match and shallow type ours",yes,,,,
+52,Shrub/Scrub,0.130,0.400,0.800,contour crops or woodland,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 range to dense underbrush; shallow type ours",yes,35,56,70,77
+71,Grassland/Herbaceous,0.130,0.368,0.410,short-grass pasture,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 range to bermudagrass; shallow type ours",yes,39,61,74,80
+72,Sedge/Herbaceous,0.150,0.240,0.410,forest litter or hay meadow,no,,"n NEH 630 table 15-1 dense grasses; range short-grass prairie to bermudagrass; match and shallow type ours",yes,,,,
+73,Lichens,0.011,0.050,0.150,nearly bare,no,,"n NEH 630 table 15-1 fallow; range smooth surfaces to short-grass prairie; match and shallow type ours",yes,,,,
+74,Moss,0.050,0.150,0.240,short-grass pasture,no,,"n NEH 630 table 15-1 short-grass prairie; range fallow to dense grasses; match and shallow type ours",yes,,,,
+81,Pasture/Hay,0.150,0.325,0.410,short-grass pasture,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 short-grass prairie to bermudagrass; shallow type ours",yes,39,61,74,80
+82,Cultivated Crops,0.050,0.060,0.170,straight row crops,no,,"n NEH 630 table 15-1 residue cover to 20 %; range fallow to residue cover above 20 %; shallow type NEH 630 table 15-3",yes,67,78,85,89
+90,Woody Wetlands,0.050,0.086,0.400,contour crops or woodland,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with light underbrush; low and shallow type ours",yes,,,,
+95,Emergent Herbaceous Wetlands,0.100,0.1825,0.410,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 bermudagrass; low and shallow type ours",yes,,,,
 )";
 
 constexpr std::array<std::string_view, 1> names{"nlcd"};

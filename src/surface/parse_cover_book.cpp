@@ -14,9 +14,11 @@
 namespace rillclock {
 namespace {
 
-constexpr std::array<std::string_view, 13> known_columns{
+constexpr std::array<std::string_view, 18> known_columns{
     "code",           "name",  "n_low",         "n_typical",      "n_high", "shallow_type", "shallow_k_m_s",
-    "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source", "from_memory"};
+    "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source", "from_memory",  "cn_a",
+    "cn_b",           "cn_c",  "cn_d",          "c"};
+constexpr std::array<std::string_view, 4> curve_number_columns{"cn_a", "cn_b", "cn_c", "cn_d"};
 constexpr std::array<std::string_view, 4> needed_columns{"code", "name", "n_typical", "source"};
 
 /// One row of a book, asked for by column name; knows where it stands for the sake of errors.
@@ -36,10 +38,10 @@ public:
         return field;
     }
 
-    [[nodiscard]] std::optional<double> number(std::string_view column) const {
+    [[nodiscard]] std::optional<double> number(std::string_view column, Sign sign = Sign::positive) const {
         const std::string field = text(column);
         if (field.empty()) return std::nullopt;
-        return number_from_text(field, {.subject = place(column), .example = "0.15"});
+        return number_from_text(field, {.subject = place(column), .example = "0.15", .sign = sign});
     }
 
     [[nodiscard]] int code() const {
@@ -144,6 +146,26 @@ void read_shallow(const BookRow& row, CoverClass& cover) {
     cover.shallow_type = name;
 }
 
+void read_curve_numbers(const BookRow& row, CoverClass& cover) {
+    double last = 0.0;
+    for (std::size_t group = 0; group < curve_number_columns.size(); ++group) {
+        const std::string_view column = curve_number_columns[group];
+        const auto number = row.number(column);
+        if (!number) continue;
+        if (!(*number <= 100)) throw row.fault(column, "is " + significant(*number) + "; a curve number is at most 100");
+        if (*number < last)
+            throw row.fault(column, "is " + significant(*number) + ", below that of a soil group before it, " +
+                                        significant(last) + "; curve numbers rise from A to D");
+        cover.curve_numbers[group] = last = *number;
+    }
+}
+
+void read_runoff_coefficient(const BookRow& row, CoverClass& cover) {
+    cover.runoff_coefficient = row.number("c", Sign::not_negative);
+    if (cover.runoff_coefficient && !(*cover.runoff_coefficient <= 1))
+        throw row.fault("c", "is " + significant(*cover.runoff_coefficient) + "; a runoff coefficient lies between 0 and 1");
+}
+
 void require_no_ground(const BookRow& row) {
     for (const auto column : {"n_low", "n_typical", "n_high", "shallow_type", "shallow_k_m_s", "shallow_k_ft_s"})
         row.require_empty(column, "a water depth makes the class open water");
@@ -160,6 +182,8 @@ CoverClass cover_class(const BookRow& row) {
         read_roughness(row, cover);
         read_shallow(row, cover);
     }
+    read_curve_numbers(row, cover);
+    read_runoff_coefficient(row, cover);
     cover.paved = row.yes("paved", cover.shallow_type == "pavement");
     return cover;
 }

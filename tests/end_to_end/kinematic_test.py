@@ -225,6 +225,8 @@ class Town(CommandTest):
         self.done("run", "town/study.toml")
         self.done("run", "town/study.toml", "--rain-file", "rain.csv", "--out", "with-rain")
         plain, more = self.result("town/result")["outlets"], self.result("with-rain")["outlets"]
+        for outlet in plain + more:
+            outlet.pop("methods")  # some of them need rain by duration
         for outlet in more:
             storm = outlet.pop("storms")[0]
             self.assertEqual(storm["time_s"], outlet["time_of_concentration_s"])

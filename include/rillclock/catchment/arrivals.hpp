@@ -3,6 +3,7 @@
 #include <vector>
 
 #include "rillclock/catchment/arrival_bins.hpp"
+#include "rillclock/catchment/catchment_ground.hpp"
 #include "rillclock/catchment/point_tree.hpp"
 #include "rillclock/catchment/storm_bins.hpp"
 
@@ -39,6 +40,7 @@ struct Arrivals {
     Front front;
     ArrivalBins bins;           ///< where one storm times all points
     StormBins storm_bins;       ///< where each point has its own
+    CatchmentGround ground;     ///< where it was looked at
 
     void add(const ArrivingCell& cell, double storm_factor);
     /// All but the bins of a cell.

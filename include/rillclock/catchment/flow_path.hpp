@@ -28,12 +28,15 @@ struct PathSummary {
     FixedLength length = 0;
     StepTime time;
     double fall_m = 0.0;               ///< of spill elevation, head to end
+    double profile_area_m2 = 0.0;      ///< between the profile of spill elevation and the level of the end
     double slope_length_m = 0.0;       ///< Σ S·d: the fall that the slopes used would make
     double ponded_length_m = 0.0;
     double floor_length_m = 0.0;       ///< where the time hangs on the slope floor: not on open water, nor where ponded
 
     /// Σ S·d over the real fall; 1 on a plane. NaN where there is no fall.
     [[nodiscard]] double fall_ratio() const;
+    /// Of the straight line from the end that has the same area under it as the profile; 0 where the path has no length.
+    [[nodiscard]] double equal_area_slope() const;
     [[nodiscard]] double share_of_length(double part_m) const;
 };
 

@@ -10,6 +10,7 @@
 #include "rillclock/io/elevation_file.hpp"
 #include "rillclock/io/reference_system.hpp"
 #include "rillclock/study/study.hpp"
+#include "rillclock/study/point_methods.hpp"
 #include "rillclock/study/study_rain.hpp"
 #include "rillclock/surface/cover_book.hpp"
 
@@ -47,6 +48,7 @@ struct StudyResult {
     const CoverBook& book;
     std::span<const SurfaceHydraulics> surface_classes;
     const std::vector<Outlet>& outlets;
+    const std::vector<PointMethods>& methods;   ///< of each outlet
     const Notices& notices;            ///< by effect on the time, the greatest first
     const std::vector<InputFile>& inputs;
     const DataSummary& data;

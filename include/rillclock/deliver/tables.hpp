@@ -22,6 +22,10 @@ namespace rillclock {
 /// `tables/iterations.csv`: one row a round of the iteration for the storm of a point and return period, where sheet flow depends on it.
 [[nodiscard]] std::string iterations_table(const StudyResult& result);
 
+/// `tables/methods.csv`: one row a point and method that takes its catchment as one lump: whether it is applicable or why not, its time,
+/// and the ratio to the time along the governing path.
+[[nodiscard]] std::string methods_table(const StudyResult& result);
+
 /// `tables/review.csv`: one row a notice, those with the greatest effect on the time first; the last column is a person's.
 [[nodiscard]] std::string review_table(const StudyResult& result);
 

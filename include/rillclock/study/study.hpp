@@ -9,6 +9,7 @@
 #include "rillclock/core/quantity_text.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 #include "rillclock/rainfall/rain_source.hpp"
+#include "rillclock/surface/cover_book.hpp"
 
 namespace rillclock {
 
@@ -40,6 +41,7 @@ struct SurfaceStudy {
     std::string cover = {};                  ///< raster; relative to the study's folder
     std::optional<int> band = {};            ///< from 1; needed only where the file has several
     std::string book = {};                   ///< a built-in book's name, or a CSV file relative to the study's folder
+    std::optional<SoilGroup> soil_group = {};  ///< of the whole study, for curve numbers
     std::optional<int> fallback_class = {};  ///< for codes the book does not know and cells without cover
 };
 

@@ -1,5 +1,6 @@
 #pragma once
 
+#include <array>
 #include <cstddef>
 #include <optional>
 #include <span>
@@ -12,6 +13,9 @@
 
 namespace rillclock {
 
+/// Hydrologic soil groups: A lets the most water in, D the least.
+enum class SoilGroup { a, b, c, d };
+
 /// How water runs over one class of land cover.
 struct CoverClass {
     int code = 0;  ///< the value in the cover raster
@@ -23,9 +27,14 @@ struct CoverClass {
     std::string shallow_type = {};  ///< short name of one of `shallow_types()`; "stated" where the book gives k itself
     bool paved = false;             ///< counts as paved where only paved and unpaved are told apart
     std::optional<Length> water_depth = {};  ///< mean depth; present for open water alone
+    std::array<std::optional<double>, 4> curve_numbers = {};  ///< by soil group, above 0 to 100; where the book has them
+    std::optional<double> runoff_coefficient = {};            ///< 0 to 1; where the book has it
     std::string source = {};                 ///< where the values are from
     bool from_memory = false;                ///< a default to check before use
 
+    [[nodiscard]] std::optional<double> curve_number(SoilGroup group) const {
+        return curve_numbers[static_cast<std::size_t>(group)];
+    }
     [[nodiscard]] bool is_open_water() const { return water_depth.has_value(); }
 };
 
@@ -54,6 +63,8 @@ private:
 /// - `paved` (yes or no; may be absent: then yes for the type "pavement" alone);
 /// - `water_depth_m` or `water_depth_ft`: a mean depth makes the class open water, whose n and shallow fields stay
 /// empty;
+/// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group, each may be absent or empty) and `c` (runoff coefficient, the same),
+///   for methods that time a catchment as one lump;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
 ///
 /// `file` names the text in errors. Throws an input error with line and column for a column that is missing or unknown,

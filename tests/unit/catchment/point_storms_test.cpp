@@ -125,7 +125,7 @@ TEST_CASE("rain that ends before the time, or makes it swing, leaves the storm u
     const IntensityOfDuration ends = [](Duration t) {
         return t > minutes(30) ? std::nullopt : std::optional(millimetres_per_hour(40));
     };
-    const IntensityOfDuration swings = [](Duration t) { return std::optional(millimetres_per_hour(t > minutes(65) ? 100 : 1)); };
+    const IntensityOfDuration swings = [](Duration t) { return std::optional(millimetres_per_hour(t > minutes(110) ? 100 : 1)); };
     const OwnStorms storms{.rain = {ends, swings}, .reference_factor = reference_factor};
     const PointHeads last = heads_of(land.arrivals(), land.tree, land.points, storms).back();
     CHECK(last.storms[0].iteration.end == StormEnd::beyond_the_rain);

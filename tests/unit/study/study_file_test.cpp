@@ -185,7 +185,7 @@ TEST_CASE("an unknown section is refused, empty or not") {
 
 TEST_CASE("what this version does not compute is refused and not passed over") {
     for (const auto* text :
-         {"[surface]\nsoil_group = \"B\"", "[points]\npipes = \"p\"",
+         {"[points]\npipes = \"p\"",
           "[points]\narea = \"a\"", "[rain]\ntable = \"r.csv\"", "[timing]\noverrides = \"o.csv\"",
           "[timing]\nchannel = { flow = \"design storm\" }", "[peaks]\ncoefficient = \"book\"",
           "[uncertainty]\ndraws = 500", "[scenario.after]\nsurface.cover = \"p.tif\"",

@@ -160,6 +160,38 @@ TEST_CASE("nlcd takes published values where there are any") {
     CHECK(nlcd.find(11)->water_depth == metres(2));
 }
 
+TEST_CASE("curve numbers by soil group and a runoff coefficient may stand in a book, for open water too") {
+    const CoverBook town = parse_cover_book(
+        "code,name,n_typical,shallow_type,water_depth_m,cn_a,cn_b,cn_c,cn_d,c,source\n"
+        "1,Lawn,0.24,short-grass pasture,,39,61,,80,0.15,own\n2,Pond,,,1,,100,100,100,0,own\n",
+        "town.csv");
+    CHECK(town.find(1)->curve_number(SoilGroup::b) == 61);
+    CHECK_FALSE(town.find(1)->curve_number(SoilGroup::c));
+    CHECK(town.find(1)->runoff_coefficient == 0.15);
+    CHECK(town.find(2)->curve_number(SoilGroup::d) == 100);
+    CHECK(town.find(2)->runoff_coefficient == 0);
+}
+
+TEST_CASE("curve numbers and runoff coefficients out of their range or order are refused with line and column") {
+    const auto with = [](const std::string& numbers) {
+        return parse_cover_book("code,name,n_typical,shallow_type,cn_a,cn_b,c,source\n1,Lawn,0.24,short-grass pasture," + numbers + ",own\n",
+                                "town.csv");
+    };
+    for (const auto* wrong : {"0", "-5", "nan", "101"})
+        CHECK_THROWS_WITH(with(std::string(wrong) + ",,"), Contains("town.csv, line 2, column 5 (cn_a) is"));
+    CHECK_THROWS_WITH(with("61,39,"), Contains("column 6 (cn_b) is 39, below that of a soil group before it, 61"));
+    for (const auto* wrong : {"-0.1", "nan", "1.1"})
+        CHECK_THROWS_WITH(with(",," + std::string(wrong)), Contains("town.csv, line 2, column 7 (c) is"));
+}
+
+TEST_CASE("nlcd has curve numbers where TR-55 has a cover that matches") {
+    const CoverBook nlcd = built_in_book("nlcd");
+    CHECK(nlcd.find(41)->curve_numbers == std::array<std::optional<double>, 4>{30, 55, 70, 77});
+    CHECK(nlcd.find(24)->curve_number(SoilGroup::a) == 89);
+    CHECK_FALSE(nlcd.find(95)->curve_number(SoilGroup::a));
+    CHECK_FALSE(nlcd.find(41)->runoff_coefficient);
+}
+
 TEST_CASE("a book that is not built in is refused, and its name is taken for a file") {
     CHECK(is_built_in_book("nlcd"));
     CHECK_FALSE(is_built_in_book("nlcd.csv"));

@@ -1,0 +1,38 @@
+#pragma once
+
+#include <cstdint>
+#include <vector>
+
+#include "rillclock/core/quantity.hpp"
+#include "rillclock/raster/ground.hpp"
+#include "rillclock/terrain/elevation_store.hpp"
+
+namespace rillclock {
+
+/// What the formulas that time a catchment as one lump ask of its ground. Sums are integers, so the order of cells does not matter; means
+/// are over cells.
+class CatchmentGround {
+public:
+    /// `slope` as of `land_slope`, `elevation_m` within ±8·10⁶ m.
+    void add(std::uint8_t surface, FixedArea area, double slope, double elevation_m);
+    void add(const CatchmentGround& other);
+
+    /// Area of each surface class, by its position; classes beyond the last one met are left out.
+    [[nodiscard]] const std::vector<FixedArea>& area_by_class() const { return area_by_class_; }
+    [[nodiscard]] std::int64_t cells() const { return cells_; }
+    /// Average slope of the ground, not of any path. NaN without cells.
+    [[nodiscard]] double land_slope() const;
+    [[nodiscard]] double mean_elevation_m() const;
+
+private:
+    std::vector<FixedArea> area_by_class_;
+    std::int64_t cells_ = 0;
+    std::int64_t slope_sum_ = 0;      ///< in 2⁻²⁰
+    std::int64_t elevation_sum_ = 0;  ///< in 2⁻¹⁰ m
+};
+
+/// Slope of the ground at a cell from its four neighbours: differences across the cell, or from the cell itself where one neighbour is void
+/// or outside; 0 in a direction without either.
+[[nodiscard]] double land_slope(const ElevationStore& elevations, double metres_per_unit, const Ground& ground, Cell cell);
+
+}  // namespace rillclock

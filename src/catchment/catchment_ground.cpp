@@ -1,0 +1,65 @@
+#include "rillclock/catchment/catchment_ground.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <functional>
+
+#include "rillclock/raster/direction.hpp"
+
+namespace rillclock {
+namespace {
+
+constexpr double elevation_units_per_m = 1024.0;
+
+/// The ground towards one side of a cell.
+struct Side {
+    double rise = 0.0;  ///< elevation units
+    double run_m = 0.0;
+};
+
+Side side_of(const ElevationStore& elevations, const Ground& ground, Cell cell, Direction d) {
+    const RowColumn at{cell / elevations.columns(), cell % elevations.columns()};
+    const RowColumn beside = neighbour(at, d);
+    if (beside.row < 0 || beside.column < 0 || beside.row >= elevations.rows() || beside.column >= elevations.columns()) return {};
+    const double rise = elevations[static_cast<Cell>(beside.row * elevations.columns() + beside.column)] - elevations[cell];
+    if (std::isnan(rise)) return {};
+    return {rise, from_fixed(ground.length(at.row, d))};
+}
+
+double slope_across(const Side& a, const Side& b) {
+    const double run = a.run_m + b.run_m;
+    return run > 0 ? (a.rise - b.rise) / run : 0.0;
+}
+
+}  // namespace
+
+void CatchmentGround::add(std::uint8_t surface, FixedArea area, double slope, double elevation_m) {
+    if (surface >= area_by_class_.size()) area_by_class_.resize(surface + 1U);
+    area_by_class_[surface] += area;
+    ++cells_;
+    slope_sum_ += to_fixed(slope);
+    elevation_sum_ += std::llround(elevation_m * elevation_units_per_m);
+}
+
+void CatchmentGround::add(const CatchmentGround& other) {
+    if (other.area_by_class_.size() > area_by_class_.size()) area_by_class_.resize(other.area_by_class_.size());
+    std::transform(other.area_by_class_.begin(), other.area_by_class_.end(), area_by_class_.begin(), area_by_class_.begin(),
+                   std::plus<>());
+    cells_ += other.cells_;
+    slope_sum_ += other.slope_sum_;
+    elevation_sum_ += other.elevation_sum_;
+}
+
+double CatchmentGround::land_slope() const { return from_fixed(slope_sum_) / static_cast<double>(cells_); }
+
+double CatchmentGround::mean_elevation_m() const {
+    return static_cast<double>(elevation_sum_) / elevation_units_per_m / static_cast<double>(cells_);
+}
+
+double land_slope(const ElevationStore& elevations, double metres_per_unit, const Ground& ground, Cell cell) {
+    const auto side = [&](Direction d) { return side_of(elevations, ground, cell, d); };
+    return metres_per_unit * std::hypot(slope_across(side(Direction::east), side(Direction::west)),
+                                        slope_across(side(Direction::south), side(Direction::north)));
+}
+
+}  // namespace rillclock

@@ -1,0 +1,50 @@
+#include "rillclock/catchment/catchment_ground.hpp"
+
+#include <catch2/catch.hpp>
+
+#include <cmath>
+#include <limits>
+#include <vector>
+
+namespace rillclock {
+namespace {
+
+constexpr double nan = std::numeric_limits<double>::quiet_NaN();
+
+ElevationStore store_of(std::int64_t rows, std::int64_t columns, const std::vector<double>& z) {
+    ElevationStore store(rows, columns, ElevationStore::Width::eight_bytes);
+    store.write({.rows = rows, .columns = columns}, z);
+    return store;
+}
+
+TEST_CASE("the slope of a plane is its own at every cell, edges included") {
+    std::vector<double> z;
+    for (int row = 0; row < 3; ++row)
+        for (int column = 0; column < 4; ++column) z.push_back(0.3 * 2 * column - 0.4 * 5 * row);
+    const ElevationStore plane = store_of(3, 4, z);
+    const Ground ground = Ground::planar(metres(2), metres(5));
+    for (Cell cell = 0; cell < 12; ++cell) CHECK(land_slope(plane, 1.0, ground, cell) == Approx(0.5).epsilon(1e-6));
+    CHECK(land_slope(plane, 0.3048, ground, 5) == Approx(0.5 * 0.3048).epsilon(1e-6));
+}
+
+TEST_CASE("beside a void the slope is taken from the other side, and a cell alone is level") {
+    const Ground ground = Ground::planar(metres(1), metres(1));
+    CHECK(land_slope(store_of(1, 3, {nan, 5, 7}), 1.0, ground, 1) == Approx(2));
+    CHECK(land_slope(store_of(1, 3, {nan, 5, nan}), 1.0, ground, 1) == 0.0);
+}
+
+TEST_CASE("grounds put together are the ground of all their cells") {
+    CatchmentGround a;
+    a.add(3, 100, 0.1, 50);
+    CatchmentGround b;
+    b.add(0, 50, 0.3, 70);
+    b.add(3, 10, 0.2, 60);
+    a.add(b);
+    CHECK(a.cells() == 3);
+    CHECK(a.land_slope() == Approx(0.2).epsilon(1e-6));
+    CHECK(a.mean_elevation_m() == Approx(60));
+    CHECK(a.area_by_class() == std::vector<FixedArea>{50, 0, 0, 110});
+}
+
+}  // namespace
+}  // namespace rillclock
