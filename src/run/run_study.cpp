@@ -7,6 +7,7 @@
 
 #include "rillclock/catchment/outlet_notices.hpp"
 #include "rillclock/catchment/tiled_outlets.hpp"
+#include "rillclock/deliver/depressions_table.hpp"
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
 #include "rillclock/deliver/result_json.hpp"
@@ -14,6 +15,7 @@
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
 #include "last_pass.hpp"
+#include "depressions.hpp"
 #include "mapped_flow.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
@@ -119,6 +121,9 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
         return outlets_of(travel, points.points, tree, heads, outlet_rules_of(study, resolved));
     });
     const std::vector<PointMethods> methods = methods_of(study, surface.book, rain, outlets);
+    const Depressions depressions = stage(progress, "depressions", cells, [&] { return depressions_of(travel, outlets); });
+    const Notices left_out = notices_of(depressions, ground.metres_per_elevation_unit);
+    terrain.notices.insert(terrain.notices.end(), left_out.begin(), left_out.end());
     const Notices notices = all_notices(terrain, surface, rain, points, outlets);
     const std::vector<InputFile> inputs = input_files(study);
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes};
@@ -127,6 +132,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
                              .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .notices = notices,
                              .inputs = inputs, .data = data};
     write_texts(result, folder);
+    folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
     folder.commit();
     return {.folder = folder.target(), .facts = facts_of(rain), .headlines = headlines(result),
             .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = result_json(result)};

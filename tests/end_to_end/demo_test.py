@@ -18,7 +18,7 @@ from support import COMMAND, CommandTest, VERIFY, system_of, table
 
 RESULT_FILES = {
     "governing_paths.geojson", "longest_paths.geojson", "result.json", "tables/outlets.csv", "tables/segments.csv",
-    "tables/methods.csv", "tables/review.csv", "rasters/travel_time.tif", "rasters/flow_azimuth.tif", "rasters/contributing_area.tif",
+    "tables/methods.csv", "tables/review.csv", "tables/depressions.csv", "rasters/travel_time.tif", "rasters/flow_azimuth.tif", "rasters/contributing_area.tif",
     "rasters/catchment.tif", "rasters/catchment.tif.aux.xml", "rasters/regime.tif", "rasters/regime.tif.aux.xml",
     "rasters/spill_elevation.tif"}
 

@@ -67,6 +67,9 @@ class MappedTerrain(CommandTest):
         self.study()
         self.run_study()
         spill_before = self.raster("spill_elevation.tif")
+        deepest = table(self.folder / "result/tables/depressions.csv")[0]
+        self.assertGreater(float(deepest["depth_ft"]) * 0.3048, 3)
+        self.assertEqual(deepest["on_governing_path"], "yes")
         self.shapes("culverts.gpkg", self.line((20, 28), (20, 22)), epsg=4326)
         self.study('crossings = "culverts.gpkg"')
         self.run_study()
@@ -75,6 +78,7 @@ class MappedTerrain(CommandTest):
         self.assertGreater(spill_before[20, 20], spill[20, 20] + 3)
         self.assertAlmostEqual(spill[20, 20], dammed_valley()[20, 20], 3)
         self.assertEqual(set(self.raster("regime.tif")[20, 22:29]), {3})
+        self.assertEqual(table(self.folder / "result/tables/depressions.csv"), [])
         self.assertEqual(float(self.notices()["terrain-edited"]["value"]), 7)
         self.assertAlmostEqual(float(self.notices()["bed-below-ground"]["value"]), 5.95, 2)
         self.assertIn("culverts.gpkg", [file["file"] for file in self.result()["inputs"]])

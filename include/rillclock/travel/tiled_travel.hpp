@@ -69,6 +69,7 @@ public:
     [[nodiscard]] const TiledGround& ground() const { return in_; }
     [[nodiscard]] const TravelRules& rules() const { return rules_; }
     [[nodiscard]] const Executor& executor() const { return executor_; }
+    [[nodiscard]] const ElevationStore& spill() const { return spill_; }
     [[nodiscard]] float slope(Cell cell) const { return slope_[cell]; }
     [[nodiscard]] GroundKind kind(Cell cell) const { return kind_[cell]; }
 

@@ -1,0 +1,104 @@
+#include "rillclock/terrain/depressions.hpp"
+
+#include <algorithm>
+#include <tuple>
+
+namespace rillclock {
+namespace {
+
+bool lies_deeper(const Depression& a, const Depression& b) {
+    return std::tie(b.depth, a.deepest) < std::tie(a.depth, b.deepest);
+}
+
+class Search {
+public:
+    Search(const DepressionGround& in, const std::vector<Cell>& paths, std::size_t most)
+        : in_(in), most_(most), seen_(static_cast<std::size_t>(in.codes.size())), on_path_(seen_.size()) {
+        for (const Cell cell : paths) on_path_[cell] = true;
+    }
+
+    Depressions find() {
+        for (std::size_t i = 0; i < seen_.size(); ++i) {
+            const auto cell = static_cast<Cell>(i);
+            if (seen_[i] || !is_below_spill(cell)) continue;
+            found_.push_back(depression_around(cell));
+            ++count_;
+            if (found_.size() >= 2 * most_ + 1000) keep_deepest();
+        }
+        keep_deepest();
+        std::sort(found_.begin(), found_.end(), lies_deeper);
+        const std::size_t left_out = count_ - found_.size();
+        return {.deepest_first = std::move(found_), .left_out = left_out};
+    }
+
+private:
+    /// A void has NaN for both, and no comparison with it holds.
+    [[nodiscard]] bool is_below_spill(Cell cell) const { return in_.spill[cell] > in_.elevations[cell]; }
+
+    Depression depression_around(Cell first) {
+        const double level = in_.spill[first];
+        Depression depression;
+        queue_.assign(1, first);
+        seen_[first] = true;
+        for (std::size_t next = 0; next < queue_.size(); ++next) {
+            add(queue_[next], level, depression);
+            push_beside(queue_[next], level);
+        }
+        depression.pass = pass_of(depression.deepest, level);
+        return depression;
+    }
+
+    void add(Cell cell, double level, Depression& depression) const {
+        const double depth = level - in_.elevations[cell];
+        const FixedArea area = in_.ground.cell_area(cell / in_.codes.columns());
+        const bool deeper = depth > depression.depth || (depth >= depression.depth && cell < depression.deepest);
+        if (deeper) depression.deepest = cell;
+        depression.depth = std::max(depression.depth, depth);
+        depression.volume += depth * from_fixed_area(area);
+        depression.area += area;
+        ++depression.cells;
+        depression.on_path = depression.on_path || on_path_[cell];
+    }
+
+    void push_beside(Cell cell, double level) {
+        const Raster<FlowCode>& codes = in_.codes;
+        for (const Direction d : all_directions) {
+            const RowColumn at = neighbour({cell / codes.columns(), cell % codes.columns()}, d);
+            if (at.row < 0 || at.row >= codes.rows() || at.column < 0 || at.column >= codes.columns()) continue;
+            const auto beside = static_cast<Cell>(at.row * codes.columns() + at.column);
+            if (seen_[beside] || !is_below_spill(beside) || in_.spill[beside] < level || in_.spill[beside] > level) continue;
+            seen_[beside] = true;
+            queue_.push_back(beside);
+        }
+    }
+
+    [[nodiscard]] Cell pass_of(Cell cell, double level) const {
+        while (is_below_spill(cell) && !(in_.spill[cell] < level)) {
+            const auto d = static_cast<Direction>(in_.codes[cell]);
+            cell = static_cast<Cell>(static_cast<std::int64_t>(cell) + row_step(d) * in_.codes.columns() + column_step(d));
+        }
+        return cell;
+    }
+
+    void keep_deepest() {
+        if (found_.size() <= most_) return;
+        std::nth_element(found_.begin(), found_.begin() + static_cast<std::ptrdiff_t>(most_), found_.end(), lies_deeper);
+        found_.resize(most_);
+    }
+
+    const DepressionGround& in_;
+    std::size_t most_;
+    std::vector<bool> seen_;
+    std::vector<bool> on_path_;
+    std::vector<Cell> queue_;
+    std::vector<Depression> found_;
+    std::size_t count_ = 0;
+};
+
+}  // namespace
+
+Depressions find_depressions(const DepressionGround& ground, const std::vector<Cell>& paths, std::size_t most) {
+    return Search(ground, paths, most).find();
+}
+
+}  // namespace rillclock
