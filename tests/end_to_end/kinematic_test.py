@@ -2,12 +2,14 @@
 """Sheet flow by the kinematic wave through the whole program: rain by duration, a storm for each point and return period, the iteration."""
 import csv
 import math
+import subprocess
+import sys
 import unittest
 
 import numpy as np
 from osgeo import gdal
 
-from support import CommandTest, FOOT, table, write_points
+from support import CommandTest, FOOT, VERIFY, table, write_points
 
 RAIN = """duration_min,intensity_2yr_in_h,intensity_10yr_in_h,intensity_100yr_in_h
 5,4.8,6.9,9.9
@@ -15,6 +17,28 @@ RAIN = """duration_min,intensity_2yr_in_h,intensity_10yr_in_h,intensity_100yr_in
 60,1.5,2.3,3.4
 360,0.4,0.6,0.9
 1440,0.13,0.2,0.3
+"""
+# Invented numbers in the layout of the server's files.
+ATLAS14 = """Point precipitation frequency estimates (inches)
+NOAA Atlas 14 Volume 99 Version 1
+Data type: Precipitation depth
+Time series type: Partial duration
+Project area: Nowhere States
+Location name (ESRI Maps): None
+Station Name: None
+Latitude: 12.5 Degree
+Longitude: -34.5 Degree
+Elevation (USGS): None None
+
+
+PRECIPITATION FREQUENCY ESTIMATES
+by duration for ARI (years):, 1,2,10
+5-min:, 0.30,0.40,0.60
+60-min:, 1.00,1.50,2.40
+24-hr:, 2.00,3.00,5.00
+
+Date/time (GMT):  Mon Jan  1 00:00:00 2024
+pyRunTime:  0.01
 """
 BOOK = """code,name,n_typical,shallow_type,source
 1,Even ground,{n},pavement,test
@@ -73,6 +97,12 @@ class Plane(CommandTest):
         once, _ = self.run_plane(n=0.1, slope=0.01, rain=self.CONSTANT, least="5 min")
         four, _ = self.run_plane(n=0.1, slope=0.04, rain=self.CONSTANT, least="5 min")
         self.assertAlmostEqual(once["time_of_concentration_s"] / four["time_of_concentration_s"], 4 ** 0.3, places=4)
+
+    def test_on_a_plane_every_slope_of_the_catchment_is_that_of_the_plane(self):
+        outlet, _ = self.run_plane(slope=0.02)
+        measures = outlet["methods"]["measures"]
+        for name in ("path_slope", "equal_area_slope", "land_slope", "overland_slope"):
+            self.assertAlmostEqual(measures[name], 0.02, places=5, msg=name)
 
     def test_the_iteration_over_asphalt_is_the_one_done_by_hand(self):
         """n 0.011, 300 ft at 0.02 with the ten-year rain of Chicago, begun at 5 min: 2.802, 2.656, 2.646, 2.645 min at 8.33 in/h. The
@@ -204,6 +234,13 @@ class Town(CommandTest):
             self.assertAlmostEqual(storm["iteration"][-1]["computed_min"] * 60, storm["sheet_time_s"], places=3)
             self.assertLess(outlet["time_of_concentration_s"], whole[outlet["name"]]["time_of_concentration_s"])
 
+    def test_the_independent_verification_finds_the_same_times_under_each_points_storm(self):
+        self.town()
+        done = subprocess.run([sys.executable, "-B", VERIFY, self.folder / "town/kinematic", self.folder / "town/dem.tif", "--study",
+                               self.folder / "town/kinematic.toml"], capture_output=True, text=True, check=False)
+        self.assertEqual(done.returncode, 0, done.stdout + done.stderr)
+        self.assertIn("travel time to Weir", done.stdout)
+
     def test_what_was_read_is_told(self):
         self.town()
         echo = "rain: rain.csv: table, intensity in in/h, 5 min to 24 h, 2, 10, 100 years"
@@ -233,6 +270,17 @@ class Town(CommandTest):
         self.assertEqual(plain, more)
         self.assertFalse((self.folder / "with-rain/tables/iterations.csv").exists())
         self.assertTrue((self.folder / "with-rain/tables/storms.csv").exists())
+
+    def test_an_atlas_14_file_gives_rain_and_depth_and_its_echo_names_block_and_series(self):
+        words = self.small_study()
+        (self.folder / "atlas14.csv").write_text(ATLAS14)
+        self.done("run", *words[:-2], "--rain-file", "atlas14.csv")
+        parameters = self.result()["parameters"]
+        self.assertEqual(parameters["sheet"]["rain_2_year_24_hour_mm"], 76.2)
+        rain = parameters["rain"]
+        self.assertEqual((rain["block"], rain["quantity"], rain["unit"], rain["series"]), ("estimate", "depth", "inches", "partial duration"))
+        self.assertEqual((rain["source_return_periods"], rain["return_periods"]), ([1, 2, 10], [10]))
+        self.assertIn("NOAA Atlas 14 point file", self.done("check", *words[:-2], "--rain-file", "atlas14.csv"))
 
     def test_the_2_year_24_hour_depth_comes_from_the_rain_file(self):
         words = self.small_study()

@@ -19,7 +19,7 @@ VERIFY = pathlib.Path(__file__).with_name("verify_result.py")
 def strip(heights, cell, n=0.24, k=2.0, **changes):
     """Travel along a single row of cells that drain to the east; the last cell is a root."""
     count = len(heights)
-    rules = {"window": 20.0, "vertical_step": 0.2, "pond_depth": 0.3, "pond_speed": 2.0, "rain": 4 * INCH,
+    rules = {"window": 20.0, "vertical_step": 0.2, "pond_depth": 0.3, "pond_speed": 2.0, "rain": 4 * INCH, "is_kinematic": False,
              "sheet_limit": 100 * FOOT, "index_limit": 100 * FOOT, "floor_overland": 0.001, "floor_channel": 0.0001,
              "channel_from": math.inf, "channel_n": 0.05, "radius": lambda km2: np.full_like(km2, 0.5)}
     ground = types.SimpleNamespace(east=[cell], south=[cell], diagonal=[cell * math.sqrt(2)])
