@@ -20,8 +20,10 @@ struct Side {
 Side side_of(const ElevationStore& elevations, const Ground& ground, Cell cell, Direction d) {
     const RowColumn at{cell / elevations.columns(), cell % elevations.columns()};
     const RowColumn beside = neighbour(at, d);
-    if (beside.row < 0 || beside.column < 0 || beside.row >= elevations.rows() || beside.column >= elevations.columns()) return {};
-    const double rise = elevations[static_cast<Cell>(beside.row * elevations.columns() + beside.column)] - elevations[cell];
+    if (beside.row < 0 || beside.column < 0 || beside.row >= elevations.rows() || beside.column >= elevations.columns())
+        return {};
+    const double rise =
+        elevations[static_cast<Cell>(beside.row * elevations.columns() + beside.column)] - elevations[cell];
     if (std::isnan(rise)) return {};
     return {rise, from_fixed(ground.length(at.row, d))};
 }
@@ -43,14 +45,16 @@ void CatchmentGround::add(std::uint8_t surface, FixedArea area, double slope, do
 
 void CatchmentGround::add(const CatchmentGround& other) {
     if (other.area_by_class_.size() > area_by_class_.size()) area_by_class_.resize(other.area_by_class_.size());
-    std::transform(other.area_by_class_.begin(), other.area_by_class_.end(), area_by_class_.begin(), area_by_class_.begin(),
-                   std::plus<>());
+    std::transform(other.area_by_class_.begin(), other.area_by_class_.end(), area_by_class_.begin(),
+                   area_by_class_.begin(), std::plus<>());
     cells_ += other.cells_;
     slope_sum_ += other.slope_sum_;
     elevation_sum_ += other.elevation_sum_;
 }
 
-double CatchmentGround::land_slope() const { return from_fixed(slope_sum_) / static_cast<double>(cells_); }
+double CatchmentGround::land_slope() const {
+    return from_fixed(slope_sum_) / static_cast<double>(cells_);
+}
 
 double CatchmentGround::mean_elevation_m() const {
     return static_cast<double>(elevation_sum_) / elevation_units_per_m / static_cast<double>(cells_);

@@ -8,7 +8,8 @@
 namespace rillclock {
 
 /// What decides a catchment's times and paths under one storm; own area apart.
-[[nodiscard]] inline PointHeads heads_at(const Arrivals& catchment, const ArrivalBins& bins, double storm_factor, double ignore_tail) {
+[[nodiscard]] inline PointHeads heads_at(const Arrivals& catchment, const ArrivalBins& bins, double storm_factor,
+                                         double ignore_tail) {
     PointHeads heads;
     heads.area = catchment.area;
     heads.border_cells = catchment.border_cells;
@@ -21,9 +22,11 @@ namespace rillclock {
     return heads;
 }
 
-/// Joins subareas (by number − 1) down the tree and asks `look(catchment, number)` for the heads of each whole catchment.
+/// Joins subareas (by number − 1) down the tree and asks `look(catchment, number)` for the heads of each whole
+/// catchment.
 template <class Look>
-[[nodiscard]] std::vector<PointHeads> join_down(std::vector<Arrivals> subareas, const PointTree& tree, double storm_factor, Look look) {
+[[nodiscard]] std::vector<PointHeads> join_down(std::vector<Arrivals> subareas, const PointTree& tree,
+                                                double storm_factor, Look look) {
     std::vector<FixedArea> own_areas;
     for (const Arrivals& subarea : subareas) own_areas.push_back(subarea.area);
     std::vector<PointHeads> heads(subareas.size());

@@ -16,7 +16,8 @@ public:
 
     [[nodiscard]] PointStorm storm(const IntensityOfDuration& rain) const {
         PointStorm found;
-        found.iteration = solve_storm_time([this](Intensity i) { return duration(kinematic_storm_factor(i)); }, rain, storms_.search);
+        found.iteration =
+            solve_storm_time([this](Intensity i) { return duration(kinematic_storm_factor(i)); }, rain, storms_.search);
         if (found.iteration.end != StormEnd::settled) return found;
         found.storm_factor = kinematic_storm_factor(found.iteration.intensity());
         found.governing = governing(found.storm_factor);
@@ -43,22 +44,25 @@ private:
 
 }  // namespace
 
-std::vector<PointHeads> heads_of(std::vector<Arrivals> subareas, const PointTree& tree, std::span<const StepTime> times_of_points,
-                                 const OwnStorms& storms) {
-    return join_down(std::move(subareas), tree, storms.reference_factor, [&](const Arrivals& catchment, PointNumber number) {
-        const PointSolver solver(catchment, times_of_points[number - 1], storms);
-        std::vector<PointStorm> found;
-        for (const IntensityOfDuration& rain : storms.rain) found.push_back(solver.storm(rain));
-        const double factor = found[storms.raster].storm_factor;
-        PointHeads heads = heads_at(catchment, catchment.storm_bins.under(factor), factor, storms.ignore_tail);
-        heads.storms = std::move(found);
-        return heads;
-    });
+std::vector<PointHeads> heads_of(std::vector<Arrivals> subareas, const PointTree& tree,
+                                 std::span<const StepTime> times_of_points, const OwnStorms& storms) {
+    return join_down(
+        std::move(subareas), tree, storms.reference_factor, [&](const Arrivals& catchment, PointNumber number) {
+            const PointSolver solver(catchment, times_of_points[number - 1], storms);
+            std::vector<PointStorm> found;
+            for (const IntensityOfDuration& rain : storms.rain) found.push_back(solver.storm(rain));
+            const double factor = found[storms.raster].storm_factor;
+            PointHeads heads = heads_at(catchment, catchment.storm_bins.under(factor), factor, storms.ignore_tail);
+            heads.storms = std::move(found);
+            return heads;
+        });
 }
 
-void add_storms(std::vector<PointHeads>& heads, std::span<const StepTime> times_of_points, std::span<const IntensityOfDuration> rain) {
+void add_storms(std::vector<PointHeads>& heads, std::span<const StepTime> times_of_points,
+                std::span<const IntensityOfDuration> rain) {
     for (std::size_t i = 0; i < heads.size(); ++i) {
-        PointStorm storm{.storm_factor = heads[i].storm_factor, .governing = heads[i].governing,
+        PointStorm storm{.storm_factor = heads[i].storm_factor,
+                         .governing = heads[i].governing,
                          .time = heads[i].governing.time - times_of_points[i]};
         const Duration time = storm.time.under(storm.storm_factor);
         for (const IntensityOfDuration& read : rain) {

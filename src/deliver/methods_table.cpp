@@ -16,10 +16,12 @@ TableWriter<MethodRow> columns() {
         .column("name", [](const MethodRow& r) { return std::string(r.time->method->about.name); })
         .column("applicable", [](const MethodRow& r) { return yes_or_no(r.time->answer.is_applicable()); })
         .column("why_not", [](const MethodRow& r) { return r.time->answer.why_not; })
-        .column("time_min", [](const MethodRow& r) {
-            return r.time->answer.time ? fixed_decimals(in_minutes(*r.time->answer.time), 3) : std::string();
-        })
-        .column("ratio_to_segments", [](const MethodRow& r) { return r.time->ratio ? five_digits(*r.time->ratio) : std::string(); });
+        .column("time_min",
+                [](const MethodRow& r) {
+                    return r.time->answer.time ? fixed_decimals(in_minutes(*r.time->answer.time), 3) : std::string();
+                })
+        .column("ratio_to_segments",
+                [](const MethodRow& r) { return r.time->ratio ? five_digits(*r.time->ratio) : std::string(); });
     return table;
 }
 

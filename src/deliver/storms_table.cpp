@@ -36,10 +36,14 @@ std::vector<IterationRow> iteration_rows(const StudyResult& result) {
     return rows;
 }
 
-std::string minutes_text(double s) { return fixed_decimals(s / 60.0, 4); }
+std::string minutes_text(double s) {
+    return fixed_decimals(s / 60.0, 4);
+}
 
 /// Seven digits, so that a time recomputed from it holds far below the tolerance of the iteration.
-std::string intensity_text(const ReportScale& scale, Intensity intensity) { return significant(scale.intensity(intensity), 7); }
+std::string intensity_text(const ReportScale& scale, Intensity intensity) {
+    return significant(scale.intensity(intensity), 7);
+}
 
 template <class Row>
 std::string text_of(const TableWriter<Row>& table, const std::vector<Row>& rows) {
@@ -57,13 +61,20 @@ std::string storms_table(const StudyResult& result) {
     table.column("point", [](const StormRow& r) { return r.outlet->point.name; })
         .column("return_period_years", [](const StormRow& r) { return significant(r.return_period, 6); })
         .column("time_of_concentration_min", [](const StormRow& r) { return minutes_text(r.storm->seconds()); })
-        .column("intensity_" + scale.intensity_unit(), [=](const StormRow& r) {
-            return r.storm->iteration.rows.empty() ? std::string() : intensity_text(scale, r.storm->iteration.intensity());
-        })
+        .column("intensity_" + scale.intensity_unit(),
+                [=](const StormRow& r) {
+                    return r.storm->iteration.rows.empty() ? std::string()
+                                                           : intensity_text(scale, r.storm->iteration.intensity());
+                })
         .column("sheet_time_min", [](const StormRow& r) { return minutes_text(r.storm->sheet_seconds()); })
-        .column("governing_head_x", [&](const StormRow& r) { return coordinate(result.system, result.grid.centre(r.storm->governing.cell).x); })
-        .column("governing_head_y", [&](const StormRow& r) { return coordinate(result.system, result.grid.centre(r.storm->governing.cell).y); })
-        .column("governing_length_" + m, [=](const StormRow& r) { return five_digits(scale.length(from_fixed(r.storm->length))); })
+        .column(
+            "governing_head_x",
+            [&](const StormRow& r) { return coordinate(result.system, result.grid.centre(r.storm->governing.cell).x); })
+        .column(
+            "governing_head_y",
+            [&](const StormRow& r) { return coordinate(result.system, result.grid.centre(r.storm->governing.cell).y); })
+        .column("governing_length_" + m,
+                [=](const StormRow& r) { return five_digits(scale.length(from_fixed(r.storm->length))); })
         .column("rounds", [](const StormRow& r) { return std::to_string(r.storm->iteration.rows.size()); })
         .column("ended", [](const StormRow& r) { return std::string(words(r.storm->iteration.end)); });
     return text_of(table, storm_rows(result));
@@ -76,7 +87,8 @@ std::string iterations_table(const StudyResult& result) {
         .column("return_period_years", [](const IterationRow& r) { return significant(r.storm.return_period, 6); })
         .column("round", [](const IterationRow& r) { return std::to_string(r.number); })
         .column("assumed_min", [](const IterationRow& r) { return minutes_text(in_seconds(r.round->assumed)); })
-        .column("intensity_" + scale.intensity_unit(), [=](const IterationRow& r) { return intensity_text(scale, r.round->intensity); })
+        .column("intensity_" + scale.intensity_unit(),
+                [=](const IterationRow& r) { return intensity_text(scale, r.round->intensity); })
         .column("computed_min", [](const IterationRow& r) { return minutes_text(in_seconds(r.round->computed)); });
     return text_of(table, iteration_rows(result));
 }

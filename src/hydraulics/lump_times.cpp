@@ -16,7 +16,8 @@ constexpr double no_limit = std::numeric_limits<double>::infinity();
 /// range that is left only says so.
 class Needs {
 public:
-    double number(std::optional<double> value, std::string_view what, double greatest = no_limit, const std::string& reason = {}) {
+    double number(std::optional<double> value, std::string_view what, double greatest = no_limit,
+                  const std::string& reason = {}) {
         if (!value) return unknown(what, reason);
         if (!(*value > 0 && *value <= greatest && std::isfinite(*value)))
             return lacking(std::string(what) + " is " + significant(*value) + ", not above zero" +
@@ -142,7 +143,8 @@ LumpTime bransby_williams_with(const CatchmentMeasures& catchment, double slope,
 LumpTime nrcs_lag_time(const CatchmentMeasures& catchment, const IntensityOfDuration&) {
     Needs needs;
     const Length path = path_of(needs, catchment);
-    const double curve_number = needs.number(catchment.curve_number, "the curve number", 100, catchment.no_curve_number);
+    const double curve_number =
+        needs.number(catchment.curve_number, "the curve number", 100, catchment.no_curve_number);
     const double land_slope = needs.number(catchment.land_slope, "the slope of the land");
     needs.range(curve_number, 50, 95, "the curve number");
     needs.range(in_square_miles(needs.area(catchment.area)), 0.002, 19, "the area in square miles");

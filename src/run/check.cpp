@@ -10,6 +10,7 @@
 #include "rillclock/io/cover_file.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/io/ground_of.hpp"
+#include "rillclock/rainfall/return_periods.hpp"
 #include "mapped_flow.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
@@ -22,6 +23,13 @@ constexpr double disk_bytes_per_cell = 31.0;
 
 std::string size_text(double bytes) {
     return bytes < 1e9 ? significant(bytes / 1e6, 3) + " MB" : significant(bytes / 1e9, 3) + " GB";
+}
+
+/// "2, 10, 100 years; rasters, paths and segments are for 10".
+std::string storms_text(const StudyRain& rain) {
+    std::vector<double> periods;
+    for (const StudyStorm& storm : rain.storms) periods.push_back(storm.return_period);
+    return list_of_years(periods) + " years; rasters, paths and segments are for " + significant(rain.raster_storm().return_period, 6);
 }
 
 class Checking {
@@ -84,6 +92,7 @@ private:
         const StudyRain rain = read_rain(study_);
         note(rain.notices);
         if (rain.source) report_.facts.push_back("rain: " + sentence(rain.source->echo));
+        if (rain.source) report_.facts.push_back("storms: " + storms_text(rain));
         if (rain.two_year_24_hour) {
             report_.facts.push_back("rain: 2-year 24-hour depth " + significant(in_inches(*rain.two_year_24_hour), 4) + " in (" +
                                     significant(in_millimetres(*rain.two_year_24_hour), 4) + " mm)");

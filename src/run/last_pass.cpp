@@ -19,9 +19,14 @@ std::vector<StepTime> times_of_points(const LastPass& pass) {
 
 /// `factors`: storm factor of each point by number − 1; empty where one storm times all.
 RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, const std::vector<double>& factors) {
-    RasterStory story{.grid = pass.terrain.grid, .system = pass.terrain.system, .format = pass.terrain.format,
-                      .storm = storm_words(pass.study, pass.rain), .sheet_flow = sheet_words(pass.study),
-                      .has_voids = pass.terrain.void_cells > 0, .points = pass.points, .last_point_times = {},
+    RasterStory story{.grid = pass.terrain.grid,
+                      .system = pass.terrain.system,
+                      .format = pass.terrain.format,
+                      .storm = storm_words(pass.study, pass.rain),
+                      .sheet_flow = sheet_words(pass.study),
+                      .has_voids = pass.terrain.void_cells > 0,
+                      .points = pass.points,
+                      .last_point_times = {},
                       .last_point_factors = {}};
     for (const PointNumber last : pass.tree.last_points()) {
         const bool own = last != 0 && !factors.empty();
@@ -61,23 +66,27 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<
         tally.add(desk);
         rasters.fill(desk);
     };
-    work_all_tiles(pass, "writing rasters", look, [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
+    work_all_tiles(pass, "writing rasters", look,
+                   [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
     rasters.close();
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
     add_storms(heads, times, intensities_of(pass.rain));
     return heads;
 }
 
-std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector<StepTime>& times, const OwnStorms& storms) {
+std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector<StepTime>& times,
+                                         const OwnStorms& storms) {
     ArrivalTally tally(pass.travel, pass.points.size(), storms.reference_factor, Storms::by_point);
-    work_all_tiles(pass, "storms", [&](const TileDesk& desk) { tally.add(desk); }, [](std::int64_t, std::int64_t) {});
+    work_all_tiles(
+        pass, "storms", [&](const TileDesk& desk) { tally.add(desk); }, [](std::int64_t, std::int64_t) {});
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, times, storms);
     require_settled(heads, pass.points, pass.rain);
     std::vector<double> factors;
     for (const PointHeads& point : heads) factors.push_back(point.storm_factor);
     RasterStrips rasters(story_of(pass, times, factors), pass.travel, pass.folder);
-    work_all_tiles(pass, "writing rasters", [&](const TileDesk& desk) { rasters.fill(desk); },
-                   [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
+    work_all_tiles(
+        pass, "writing rasters", [&](const TileDesk& desk) { rasters.fill(desk); },
+        [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
     rasters.close();
     return heads;
 }

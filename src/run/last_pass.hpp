@@ -20,10 +20,11 @@ struct LastPass {
     const Progress& progress;
 };
 
-/// Makes everything about each tile once more: writes the rasters and gathers the arrivals, from which each point's heads are found.
+/// Makes everything about each tile once more: writes the rasters and gathers the arrivals, from which each point's
+/// heads are found.
 ///
-/// Where each point has a storm of its own the raster is passed twice, since times in travel_time.tif depend on storms that are solved from
-/// the arrivals. Throws an input error where a storm does not settle.
+/// Where each point has a storm of its own the raster is passed twice, since times in travel_time.tif depend on storms
+/// that are solved from the arrivals. Throws an input error where a storm does not settle.
 [[nodiscard]] std::vector<PointHeads> heads_and_rasters(const LastPass& pass);
 
 }  // namespace rillclock

@@ -24,7 +24,8 @@ std::string why_beyond(const StormTime& iteration, const RainCurve& rain) {
 }
 
 [[noreturn]] void refuse(const StormTime& iteration, const DesignPoint& point, const StudyStorm& storm) {
-    const std::string subject = "the storm of " + significant(storm.return_period, 6) + " years at the point '" + point.name + "' ";
+    const std::string subject =
+        "the storm of " + significant(storm.return_period, 6) + " years at the point '" + point.name + "' ";
     if (iteration.end == StormEnd::beyond_the_rain) {
         throw input_error(subject + "outlasts the rain: " + why_beyond(iteration, storm.rain));
     }
@@ -52,7 +53,8 @@ std::optional<OwnStorms> own_storms_of(const Study& study, const TravelRules& ru
                      .search = {.start = rain.first_assumed()}};
 }
 
-void require_settled(const std::vector<PointHeads>& heads, const std::vector<DesignPoint>& points, const StudyRain& rain) {
+void require_settled(const std::vector<PointHeads>& heads, const std::vector<DesignPoint>& points,
+                     const StudyRain& rain) {
     for (std::size_t i = 0; i < heads.size(); ++i) {
         for (std::size_t period = 0; period < heads[i].storms.size(); ++period) {
             const StormTime& iteration = heads[i].storms[period].iteration;
@@ -62,7 +64,8 @@ void require_settled(const std::vector<PointHeads>& heads, const std::vector<Des
 }
 
 std::string storm_words(const Study& study, const StudyRain& rain) {
-    if (!study.timing.is_kinematic()) return "2-year 24-hour depth " + significant(in_millimetres(*rain.two_year_24_hour)) + " mm";
+    if (!study.timing.is_kinematic())
+        return "2-year 24-hour depth " + significant(in_millimetres(*rain.two_year_24_hour)) + " mm";
     return "of " + significant(rain.raster_storm().return_period, 6) + " years, as long as the " +
            std::string(words(study.timing.storm.value_or(StormDuration::whole_path))) +
            " of each last point; of 5 min where there is no point";

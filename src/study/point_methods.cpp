@@ -16,7 +16,8 @@ struct Average {
 using ValueOfClass = std::function<std::optional<double>(const CoverClass&)>;
 using CountsClass = std::function<bool(const CoverClass&)>;
 
-Average average_by_area(const Outlet& outlet, const CoverBook& book, const ValueOfClass& value, const CountsClass& counts) {
+Average average_by_area(const Outlet& outlet, const CoverBook& book, const ValueOfClass& value,
+                        const CountsClass& counts) {
     const std::vector<FixedArea>& areas = outlet.ground.area_by_class();
     double sum = 0.0;
     double whole = 0.0;
@@ -32,16 +33,24 @@ Average average_by_area(const Outlet& outlet, const CoverBook& book, const Value
     return {.value = sum / whole};
 }
 
-bool any_class(const CoverClass&) { return true; }
-bool not_water(const CoverClass& cover) { return !cover.is_open_water(); }
+bool any_class(const CoverClass&) {
+    return true;
+}
+bool not_water(const CoverClass& cover) {
+    return !cover.is_open_water();
+}
 
 std::string lacking_text(const Average& average, const std::string& column) {
     return average.lacking == nullptr ? "" : "the cover book has no " + column + " for " + average.lacking->name;
 }
 
 void measure_cover(const Outlet& outlet, const MethodGround& ground, CatchmentMeasures& measures) {
-    measures.overland_n = average_by_area(outlet, ground.book, [](const CoverClass& c) { return std::optional(c.n_typical); }, not_water).value;
-    const Average runoff = average_by_area(outlet, ground.book, [](const CoverClass& c) { return c.runoff_coefficient; }, any_class);
+    measures.overland_n =
+        average_by_area(
+            outlet, ground.book, [](const CoverClass& c) { return std::optional(c.n_typical); }, not_water)
+            .value;
+    const Average runoff = average_by_area(
+        outlet, ground.book, [](const CoverClass& c) { return c.runoff_coefficient; }, any_class);
     measures.runoff_coefficient = runoff.value;
     measures.no_runoff_coefficient = lacking_text(runoff, "c");
     if (!ground.soil_group) {
@@ -49,7 +58,8 @@ void measure_cover(const Outlet& outlet, const MethodGround& ground, CatchmentMe
         return;
     }
     const SoilGroup group = *ground.soil_group;
-    const Average curve = average_by_area(outlet, ground.book, [group](const CoverClass& c) { return c.curve_number(group); }, any_class);
+    const Average curve = average_by_area(
+        outlet, ground.book, [group](const CoverClass& c) { return c.curve_number(group); }, any_class);
     measures.curve_number = curve.value;
     measures.no_curve_number = lacking_text(curve, std::string("cn_") + "abcd"[static_cast<std::size_t>(group)]);
 }

@@ -46,7 +46,8 @@ void read_storms(const Study& study, StudyRain& rain) {
     const std::vector<double> periods = periods_of(study);
     rain.raster = raster_place(study, periods);
     for (const double period : periods)
-        rain.storms.push_back({period, rain.source->curve(period, study.peaks.least_time.value_or(standard_least_time))});
+        rain.storms.push_back(
+            {period, rain.source->curve(period, study.peaks.least_time.value_or(standard_least_time))});
 }
 
 std::string depth_text(Length depth) {
@@ -57,8 +58,9 @@ void tell_difference(Length stated, Length read, StudyRain& rain) {
     const double difference = std::abs(read / stated - 1.0);
     if (!(difference > told_difference)) return;
     rain.notices.push_back({.code = "rain-depths-differ",
-                            .text = "two_year_24_hour is stated as " + depth_text(stated) + ", while " + rain.source->echo.source +
-                                    " gives " + depth_text(read) + "; the stated depth was taken",
+                            .text = "two_year_24_hour is stated as " + depth_text(stated) + ", while " +
+                                    rain.source->echo.source + " gives " + depth_text(read) +
+                                    "; the stated depth was taken",
                             .value = difference,
                             .threshold = told_difference});
 }
@@ -70,9 +72,10 @@ void settle_depth(const Study& study, StudyRain& rain) {
     if (read && !rain.two_year_24_hour) rain.two_year_24_hour = read;
     if (rain.two_year_24_hour || study.timing.is_kinematic()) return;
     if (!rain.source) throw input_error(rain_is_missing(name_of(study)));
-    throw input_error(sentence(rain.source->echo) +
-                      ", so the 2-year 24-hour depth that NRCS sheet flow needs cannot be read from it; state it under [rain] as "
-                      "two_year_24_hour = \"3.6 in\" or as --rain \"3.6 in\"");
+    throw input_error(
+        sentence(rain.source->echo) +
+        ", so the 2-year 24-hour depth that NRCS sheet flow needs cannot be read from it; state it under [rain] as "
+        "two_year_24_hour = \"3.6 in\" or as --rain \"3.6 in\"");
 }
 
 }  // namespace

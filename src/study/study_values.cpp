@@ -197,7 +197,9 @@ constexpr std::array setters{
     Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = book(v); }},
     Setter{"surface.fallback_class", [](Study& s, const Stated& v) { s.surface.fallback_class = v.whole_number(0); }},
     Setter{"surface.soil_group",
-           [](Study& s, const Stated& v) { s.surface.soil_group = static_cast<SoilGroup>(v.choice({"A", "B", "C", "D"})); }},
+           [](Study& s, const Stated& v) {
+               s.surface.soil_group = static_cast<SoilGroup>(v.choice({"A", "B", "C", "D"}));
+           }},
     Setter{"surface.path_length", [](Study&, const Stated& v) { (void)v.choice({"grid"}, {"unbiased"}); }},
     Setter{"points.file", [](Study& s, const Stated& v) { s.points.file = v.text(); }},
     Setter{"points.name", [](Study& s, const Stated& v) { s.points.name = v.text(); }},
@@ -212,7 +214,8 @@ constexpr std::array setters{
         [](Study& s, const Stated& v) { s.rain.two_year_24_hour = two_year_24_hour_from_text(v.text(), v.subject()); }},
     Setter{"rain.file", [](Study& s, const Stated& v) { s.rain.file = v.text(); }},
     Setter{"rain.formula", add_formula},
-    Setter{"rain.formula_from", [](Study& s, const Stated& v) { s.rain.formula_from = v.duration(Sign::not_negative); }},
+    Setter{"rain.formula_from",
+           [](Study& s, const Stated& v) { s.rain.formula_from = v.duration(Sign::not_negative); }},
     Setter{"rain.formula_to", [](Study& s, const Stated& v) { s.rain.formula_to = v.duration(Sign::positive); }},
     Setter{"rain.return_periods", [](Study& s, const Stated& v) { s.rain.return_periods = v.return_periods(); }},
     Setter{"timing.sheet",

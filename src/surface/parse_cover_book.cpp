@@ -15,9 +15,9 @@ namespace rillclock {
 namespace {
 
 constexpr std::array<std::string_view, 18> known_columns{
-    "code",           "name",  "n_low",         "n_typical",      "n_high", "shallow_type", "shallow_k_m_s",
-    "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source", "from_memory",  "cn_a",
-    "cn_b",           "cn_c",  "cn_d",          "c"};
+    "code",          "name",           "n_low", "n_typical",     "n_high",         "shallow_type",
+    "shallow_k_m_s", "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source",
+    "from_memory",   "cn_a",           "cn_b",  "cn_c",          "cn_d",           "c"};
 constexpr std::array<std::string_view, 4> curve_number_columns{"cn_a", "cn_b", "cn_c", "cn_d"};
 constexpr std::array<std::string_view, 4> needed_columns{"code", "name", "n_typical", "source"};
 
@@ -152,7 +152,8 @@ void read_curve_numbers(const BookRow& row, CoverClass& cover) {
         const std::string_view column = curve_number_columns[group];
         const auto number = row.number(column);
         if (!number) continue;
-        if (!(*number <= 100)) throw row.fault(column, "is " + significant(*number) + "; a curve number is at most 100");
+        if (!(*number <= 100))
+            throw row.fault(column, "is " + significant(*number) + "; a curve number is at most 100");
         if (*number < last)
             throw row.fault(column, "is " + significant(*number) + ", below that of a soil group before it, " +
                                         significant(last) + "; curve numbers rise from A to D");
@@ -163,7 +164,8 @@ void read_curve_numbers(const BookRow& row, CoverClass& cover) {
 void read_runoff_coefficient(const BookRow& row, CoverClass& cover) {
     cover.runoff_coefficient = row.number("c", Sign::not_negative);
     if (cover.runoff_coefficient && !(*cover.runoff_coefficient <= 1))
-        throw row.fault("c", "is " + significant(*cover.runoff_coefficient) + "; a runoff coefficient lies between 0 and 1");
+        throw row.fault("c",
+                        "is " + significant(*cover.runoff_coefficient) + "; a runoff coefficient lies between 0 and 1");
 }
 
 void require_no_ground(const BookRow& row) {

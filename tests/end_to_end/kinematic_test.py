@@ -245,7 +245,9 @@ class Town(CommandTest):
         self.town()
         echo = "rain: rain.csv: table, intensity in in/h, 5 min to 24 h, 2, 10, 100 years"
         self.assertIn(echo, self.said)
-        self.assertIn(echo, self.done("check", "town/kinematic.toml"))
+        checked = self.done("check", "town/kinematic.toml")
+        self.assertIn(echo, checked)
+        self.assertIn("storms: 2, 10, 100 years; rasters, paths and segments are for 10", checked)
         rain = self.result("town/kinematic")["parameters"]["rain"]
         self.assertEqual((rain["kind"], rain["unit"], rain["first_duration_min"], rain["last_duration_min"]), ("table", "in/h", 5, 1440))
         self.assertIn("rain", {file["role"] for file in self.result("town/kinematic")["inputs"]})

@@ -9,8 +9,8 @@
 
 namespace rillclock {
 
-/// What the formulas that time a catchment as one lump ask of its ground. Sums are integers, so the order of cells does not matter; means
-/// are over cells.
+/// What the formulas that time a catchment as one lump ask of its ground. Sums are integers, so the order of cells does
+/// not matter; means are over cells.
 class CatchmentGround {
 public:
     /// `slope` as of `land_slope`, `elevation_m` within ±8·10⁶ m.
@@ -31,8 +31,9 @@ private:
     std::int64_t elevation_sum_ = 0;  ///< in 2⁻¹⁰ m
 };
 
-/// Slope of the ground at a cell from its four neighbours: differences across the cell, or from the cell itself where one neighbour is void
-/// or outside; 0 in a direction without either.
-[[nodiscard]] double land_slope(const ElevationStore& elevations, double metres_per_unit, const Ground& ground, Cell cell);
+/// Slope of the ground at a cell from its four neighbours: differences across the cell, or from the cell itself where
+/// one neighbour is void or outside; 0 in a direction without either.
+[[nodiscard]] double land_slope(const ElevationStore& elevations, double metres_per_unit, const Ground& ground,
+                                Cell cell);
 
 }  // namespace rillclock

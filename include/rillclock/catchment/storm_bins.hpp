@@ -7,12 +7,13 @@
 
 namespace rillclock {
 
-/// Area by both parts of the time to the root, for catchments whose storm is not known yet, or that are part of several catchments with a
-/// storm each.
+/// Area by both parts of the time to the root, for catchments whose storm is not known yet, or that are part of several
+/// catchments with a storm each.
 ///
-/// A bin holds cells that agree to one second in each part, the storm part taken under a reference storm; one cell stands for all of them,
-/// the last to arrive under the reference. So under a storm factor s no cell is taken to arrive more than 1 + s/s_ref seconds off, and
-/// every time told is that of a cell. Bins are at most as many as cells; those of cells past sheet flow share their storm part.
+/// A bin holds cells that agree to one second in each part, the storm part taken under a reference storm; one cell
+/// stands for all of them, the last to arrive under the reference. So under a storm factor s no cell is taken to arrive
+/// more than 1 + s/s_ref seconds off, and every time told is that of a cell. Bins are at most as many as cells; those
+/// of cells past sheet flow share their storm part.
 class StormBins {
 public:
     void add(const Head& head, FixedArea area, double reference_factor);
@@ -28,7 +29,8 @@ private:
     };
     struct KeyHash {
         std::size_t operator()(const Key& key) const {
-            return (static_cast<std::size_t>(key.fixed_second) * 0x9E3779B97F4A7C15ULL) ^ static_cast<std::size_t>(key.storm_second);
+            return (static_cast<std::size_t>(key.fixed_second) * 0x9E3779B97F4A7C15ULL) ^
+                   static_cast<std::size_t>(key.storm_second);
         }
     };
     void add(const Key& key, const ArrivalBins::Bin& bin, double reference_factor);

@@ -24,10 +24,10 @@ struct CatchmentMeasures {
     std::optional<Length> mean_height = {};       ///< mean elevation less that of the outlet
     std::optional<double> curve_number = {};      ///< composite, 0 to 100
     std::optional<double> runoff_coefficient = {};  ///< composite, 0 to 1
-    std::string no_curve_number = {};        ///< why it is not known, where there is more to say than that
+    std::string no_curve_number = {};               ///< why it is not known, where there is more to say than that
     std::string no_runoff_coefficient = {};
-    std::optional<double> overland_n = {};          ///< Manning's n of overland flow
-    std::optional<Length> overland_length = {};     ///< of the part before the channel, for Kerby and Kirpich together
+    std::optional<double> overland_n = {};       ///< Manning's n of overland flow
+    std::optional<Length> overland_length = {};  ///< of the part before the channel, for Kerby and Kirpich together
     std::optional<double> overland_slope = {};
     std::optional<double> kerby_retardance = {};         ///< one of `kerby_retardances()`
     std::optional<double> izzard_retardance = {};        ///< one of `izzard_retardances()`

@@ -13,15 +13,15 @@ namespace rillclock {
 /// A point's time by one of the methods that take its catchment as one lump.
 struct MethodTime {
     const LumpMethod* method = nullptr;
-    LumpTime answer;                       ///< with why it is not applicable, where it is not
-    std::optional<double> ratio = {};      ///< to the time along the governing path; none where either is missing
+    LumpTime answer;                   ///< with why it is not applicable, where it is not
+    std::optional<double> ratio = {};  ///< to the time along the governing path; none where either is missing
 };
 
 /// How far apart the applicable methods lie.
 struct MethodSpread {
     std::size_t methods = 0;
     Duration lowest = {};
-    Duration median = {};   ///< of an even number the mean of the middle two
+    Duration median = {};  ///< of an even number the mean of the middle two
     Duration highest = {};
 };
 
@@ -29,7 +29,7 @@ struct MethodSpread {
 struct PointMethods {
     CatchmentMeasures measures;
     std::vector<MethodTime> times;
-    std::optional<MethodSpread> spread;    ///< none where no method is applicable
+    std::optional<MethodSpread> spread;  ///< none where no method is applicable
 };
 
 /// What a catchment is classed by, beside its ground.
@@ -38,12 +38,15 @@ struct MethodGround {
     std::optional<SoilGroup> soil_group = {};
 };
 
-/// What was measured of a point's catchment: area; length, fall and equal-area slope of the longest path, its part before the first
-/// channel or water; average slope of the land; mean elevation above the point; curve number, runoff coefficient and overland n averaged
-/// by area from the cover book (n without open water). What the book or study lacks is left out, with the reason.
+/// What was measured of a point's catchment: area; length, fall and equal-area slope of the longest path, its part
+/// before the first channel or water; average slope of the land; mean elevation above the point; curve number, runoff
+/// coefficient and overland n averaged by area from the cover book (n without open water). What the book or study lacks
+/// is left out, with the reason.
 [[nodiscard]] CatchmentMeasures measures_of(const Outlet& outlet, const MethodGround& ground);
 
-/// Times a point by every lump method. `rain` is the storm that the point's paths are for; empty where the study has none.
-[[nodiscard]] PointMethods point_methods(const Outlet& outlet, const MethodGround& ground, const IntensityOfDuration& rain);
+/// Times a point by every lump method. `rain` is the storm that the point's paths are for; empty where the study has
+/// none.
+[[nodiscard]] PointMethods point_methods(const Outlet& outlet, const MethodGround& ground,
+                                         const IntensityOfDuration& rain);
 
 }  // namespace rillclock

@@ -38,11 +38,11 @@ struct TerrainStudy {
 };
 
 struct SurfaceStudy {
-    std::string cover = {};                  ///< raster; relative to the study's folder
-    std::optional<int> band = {};            ///< from 1; needed only where the file has several
-    std::string book = {};                   ///< a built-in book's name, or a CSV file relative to the study's folder
+    std::string cover = {};                    ///< raster; relative to the study's folder
+    std::optional<int> band = {};              ///< from 1; needed only where the file has several
+    std::string book = {};                     ///< a built-in book's name, or a CSV file relative to the study's folder
     std::optional<SoilGroup> soil_group = {};  ///< of the whole study, for curve numbers
-    std::optional<int> fallback_class = {};  ///< for codes the book does not know and cells without cover
+    std::optional<int> fallback_class = {};    ///< for codes the book does not know and cells without cover
 };
 
 struct PointStudy {
@@ -62,11 +62,11 @@ struct StatedRainFormula {
 
 struct RainStudy {
     std::optional<Length> two_year_24_hour = {};
-    std::optional<std::string> file = {};           ///< relative to the study's folder
-    std::vector<StatedRainFormula> formulas = {};   ///< in place of a file
-    std::optional<Duration> formula_from = {};      ///< between which durations the formulas hold
+    std::optional<std::string> file = {};          ///< relative to the study's folder
+    std::vector<StatedRainFormula> formulas = {};  ///< in place of a file
+    std::optional<Duration> formula_from = {};     ///< between which durations the formulas hold
     std::optional<Duration> formula_to = {};
-    std::vector<double> return_periods = {};        ///< years, as listed; the default where empty
+    std::vector<double> return_periods = {};  ///< years, as listed; the default where empty
 
     [[nodiscard]] bool is_by_duration() const { return file.has_value() || !formulas.empty(); }
 };
@@ -81,10 +81,10 @@ struct ChannelStudy {
 };
 
 struct TimingStudy {
-    std::string sheet = "nrcs";  ///< or "kinematic"
-    std::optional<double> sheet_constant = {};          ///< printed constant of the kinematic formula; 0.933 where absent
-    std::optional<StormDuration> storm = {};            ///< the whole path where absent
-    std::optional<double> raster_return_period = {};    ///< years
+    std::string sheet = "nrcs";                       ///< or "kinematic"
+    std::optional<double> sheet_constant = {};        ///< printed constant of the kinematic formula; 0.933 where absent
+    std::optional<StormDuration> storm = {};          ///< the whole path where absent
+    std::optional<double> raster_return_period = {};  ///< years
     Length sheet_limit = feet(100);
     SheetLimitRule sheet_limit_rule = SheetLimitRule::length_or_index;
     ShallowRule shallow = ShallowRule::by_cover;

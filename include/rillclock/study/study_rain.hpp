@@ -18,14 +18,15 @@ struct StudyStorm {
 
 /// The rain of a study, read.
 struct StudyRain {
-    std::optional<RainSource> source = {};         ///< where rain by duration was given
-    std::optional<Length> two_year_24_hour = {};   ///< as stated, else what the source holds
-    std::vector<StudyStorm> storms = {};           ///< by return period; none without a source
-    std::size_t raster = 0;                        ///< among the storms: the one that rasters, paths and segments are for
+    std::optional<RainSource> source = {};        ///< where rain by duration was given
+    std::optional<Length> two_year_24_hour = {};  ///< as stated, else what the source holds
+    std::vector<StudyStorm> storms = {};          ///< by return period; none without a source
+    std::size_t raster = 0;  ///< among the storms: the one that rasters, paths and segments are for
     Notices notices = {};
 
     [[nodiscard]] const StudyStorm& raster_storm() const { return storms[raster]; }
-    /// The duration at which iterations begin and the reference storm is read: 5 min, or the rain's last where that is shorter.
+    /// The duration at which iterations begin and the reference storm is read: 5 min, or the rain's last where that is
+    /// shorter.
     [[nodiscard]] Duration first_assumed() const;
 };
 
@@ -34,10 +35,11 @@ inline constexpr Duration standard_least_time = minutes(5);
 /// Return period where the study lists none, in years.
 inline constexpr double standard_return_period = 10.0;
 
-/// Reads the rain of a study: from `file_text`, the text of its rain file, or from its formulas. Throws an input error for a text that
-/// is no rain (`rain_from_text`), for formulas that contradict one another, for return periods outside the source, for a
-/// raster_return_period that is not listed, and where sheet flow needs a 2-year 24-hour depth and neither study nor source has it.
-/// A stated depth counts before the source's; a notice says where the two differ by more than 1 %.
+/// Reads the rain of a study: from `file_text`, the text of its rain file, or from its formulas. Throws an input error
+/// for a text that is no rain (`rain_from_text`), for formulas that contradict one another, for return periods outside
+/// the source, for a raster_return_period that is not listed, and where sheet flow needs a 2-year 24-hour depth and
+/// neither study nor source has it. A stated depth counts before the source's; a notice says where the two differ by
+/// more than 1 %.
 [[nodiscard]] StudyRain study_rain(const Study& study, std::string_view file_text);
 
 }  // namespace rillclock

@@ -27,10 +27,11 @@ struct CoverClass {
     std::string shallow_type = {};  ///< short name of one of `shallow_types()`; "stated" where the book gives k itself
     bool paved = false;             ///< counts as paved where only paved and unpaved are told apart
     std::optional<Length> water_depth = {};  ///< mean depth; present for open water alone
-    std::array<std::optional<double>, 4> curve_numbers = {};  ///< by soil group, above 0 to 100; where the book has them
-    std::optional<double> runoff_coefficient = {};            ///< 0 to 1; where the book has it
-    std::string source = {};                 ///< where the values are from
-    bool from_memory = false;                ///< a default to check before use
+    std::array<std::optional<double>, 4> curve_numbers =
+        {};                                         ///< by soil group, above 0 to 100; where the book has them
+    std::optional<double> runoff_coefficient = {};  ///< 0 to 1; where the book has it
+    std::string source = {};                        ///< where the values are from
+    bool from_memory = false;                       ///< a default to check before use
 
     [[nodiscard]] std::optional<double> curve_number(SoilGroup group) const {
         return curve_numbers[static_cast<std::size_t>(group)];
@@ -63,7 +64,8 @@ private:
 /// - `paved` (yes or no; may be absent: then yes for the type "pavement" alone);
 /// - `water_depth_m` or `water_depth_ft`: a mean depth makes the class open water, whose n and shallow fields stay
 /// empty;
-/// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group, each may be absent or empty) and `c` (runoff coefficient, the same),
+/// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group, each may be absent or empty) and `c` (runoff
+/// coefficient, the same),
 ///   for methods that time a catchment as one lump;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
 ///

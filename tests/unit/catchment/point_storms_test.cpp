@@ -15,12 +15,14 @@ constexpr double reference_factor = 75.0;  // about 30 mm/h
 
 /// Rain of 900/(t + 10)^0.8 mm/h, t in minutes, times a factor.
 IntensityOfDuration rain_times(double factor) {
-    return [factor](Duration t) { return std::optional(millimetres_per_hour(factor * 900 / std::pow(in_minutes(t) + 10, 0.8))); };
+    return [factor](Duration t) {
+        return std::optional(millimetres_per_hour(factor * 900 / std::pow(in_minutes(t) + 10, 0.8)));
+    };
 }
 
 /// Cells of three nested points: 3 is the last one down, 1 and 2 drain into it.
 struct Nested {
-    std::vector<std::vector<Head>> cells;   ///< by subarea
+    std::vector<std::vector<Head>> cells;  ///< by subarea
     std::vector<StepTime> points;
     PointTree tree = point_tree({3, 3, 0});
 
@@ -53,7 +55,8 @@ struct Nested {
         std::vector<double> times;
         for (std::size_t subarea = 0; subarea < 3; ++subarea) {
             if (subarea != point && point != 2) continue;
-            for (const Head& cell : cells[subarea]) times.push_back(in_seconds((cell.time - points[point]).under(factor)));
+            for (const Head& cell : cells[subarea])
+                times.push_back(in_seconds((cell.time - points[point]).under(factor)));
         }
         std::sort(times.begin(), times.end());
         return times;
@@ -63,7 +66,8 @@ struct Nested {
 TEST_CASE("each point's time is the greatest of all its cells under the storm that lasts as long") {
     for (unsigned seed = 0; seed < 20; ++seed) {
         const Nested land(seed);
-        const OwnStorms storms{.rain = {rain_times(1), rain_times(2.5)}, .raster = 1, .reference_factor = reference_factor};
+        const OwnStorms storms{
+            .rain = {rain_times(1), rain_times(2.5)}, .raster = 1, .reference_factor = reference_factor};
         const std::vector<PointHeads> heads = heads_of(land.arrivals(), land.tree, land.points, storms);
         for (std::size_t point = 0; point < 3; ++point) {
             for (std::size_t period = 0; period < 2; ++period) {
@@ -81,7 +85,8 @@ TEST_CASE("each point's time is the greatest of all its cells under the storm th
     }
 }
 
-TEST_CASE("the times by which shares of the area arrive are those under the point's own storm, within the width of a bin") {
+TEST_CASE(
+    "the times by which shares of the area arrive are those under the point's own storm, within the width of a bin") {
     const Nested land(7);
     const OwnStorms storms{.rain = {rain_times(1)}, .reference_factor = reference_factor};
     const std::vector<PointHeads> heads = heads_of(land.arrivals(), land.tree, land.points, storms);
@@ -89,7 +94,8 @@ TEST_CASE("the times by which shares of the area arrive are those under the poin
         const double factor = heads[point].storm_factor;
         const std::vector<double> times = land.seconds_of(point, factor);
         for (std::size_t i = 0; i < told_shares.size(); ++i) {
-            const auto rank = static_cast<std::size_t>(std::ceil(told_shares[i] * static_cast<double>(times.size()))) - 1;
+            const auto rank =
+                static_cast<std::size_t>(std::ceil(told_shares[i] * static_cast<double>(times.size()))) - 1;
             const double told = in_seconds((heads[point].by_share[i].time - land.points[point]).under(factor));
             CHECK(told == Approx(times[rank]).margin(2 + 2 * factor / reference_factor));
         }
@@ -98,7 +104,8 @@ TEST_CASE("the times by which shares of the area arrive are those under the poin
 
 TEST_CASE("the storm may last as long as the sheet part alone") {
     const Nested land(3);
-    const OwnStorms storms{.rain = {rain_times(1)}, .duration = StormDuration::sheet_part, .reference_factor = reference_factor};
+    const OwnStorms storms{
+        .rain = {rain_times(1)}, .duration = StormDuration::sheet_part, .reference_factor = reference_factor};
     for (const PointHeads& heads : heads_of(land.arrivals(), land.tree, land.points, storms)) {
         const PointStorm& storm = heads.storms.front();
         REQUIRE(storm.iteration.end == StormEnd::settled);
@@ -125,7 +132,9 @@ TEST_CASE("rain that ends before the time, or makes it swing, leaves the storm u
     const IntensityOfDuration ends = [](Duration t) {
         return t > minutes(30) ? std::nullopt : std::optional(millimetres_per_hour(40));
     };
-    const IntensityOfDuration swings = [](Duration t) { return std::optional(millimetres_per_hour(t > minutes(110) ? 100 : 1)); };
+    const IntensityOfDuration swings = [](Duration t) {
+        return std::optional(millimetres_per_hour(t > minutes(110) ? 100 : 1));
+    };
     const OwnStorms storms{.rain = {ends, swings}, .reference_factor = reference_factor};
     const PointHeads last = heads_of(land.arrivals(), land.tree, land.points, storms).back();
     CHECK(last.storms[0].iteration.end == StormEnd::beyond_the_rain);
@@ -148,11 +157,13 @@ TEST_CASE("bins under a storm do not depend on the order in which cells came") {
     StormBins back;
     for (const Head& cell : land.cells[0]) there.add(cell, 10000, reference_factor);
     StormBins half;
-    for (std::size_t i = land.cells[0].size(); i-- > 0;) (i % 2 == 0 ? back : half).add(land.cells[0][i], 10000, reference_factor);
+    for (std::size_t i = land.cells[0].size(); i-- > 0;)
+        (i % 2 == 0 ? back : half).add(land.cells[0][i], 10000, reference_factor);
     back.take(std::move(half), reference_factor);
     for (const double factor : {20.0, 75.0, 200.0}) {
         CHECK(there.under(factor).area() == back.under(factor).area());
-        for (const double share : told_shares) CHECK(there.under(factor).by_share(share).cell == back.under(factor).by_share(share).cell);
+        for (const double share : told_shares)
+            CHECK(there.under(factor).by_share(share).cell == back.under(factor).by_share(share).cell);
     }
 }
 

@@ -38,13 +38,15 @@ Outlet outlet() {
     made.longest.summary.length = to_fixed(300);
     made.longest.summary.fall_m = 15;
     made.longest.summary.profile_area_m2 = 0.5 * 300 * 300 * 0.04;
-    made.longest.segments = {segment(Regime::sheet, 30, 3), segment(Regime::shallow, 70, 5), segment(Regime::channel, 200, 7)};
+    made.longest.segments = {segment(Regime::sheet, 30, 3), segment(Regime::shallow, 70, 5),
+                             segment(Regime::channel, 200, 7)};
     made.governing.seconds = 600;
     return made;
 }
 
 const MethodTime& by(const PointMethods& methods, std::string_view id) {
-    return *std::find_if(methods.times.begin(), methods.times.end(), [&](const MethodTime& t) { return t.method->about.id == id; });
+    return *std::find_if(methods.times.begin(), methods.times.end(),
+                         [&](const MethodTime& t) { return t.method->about.id == id; });
 }
 
 TEST_CASE("a catchment is measured for the lump formulas, each slope by its own definition") {

@@ -127,7 +127,8 @@ TEST_CASE("a formula of rain stands alone or once a return period") {
     REQUIRE(one.rain.formulas.size() == 1);
     CHECK_FALSE(one.rain.formulas.front().formula.return_period);
     CHECK(one.rain.formula_from == minutes(5));
-    const Study two = read("[rain.formula]\n10 = \"i[in/h] = 50 / (t[min] + 10)\"\n\"2.5\" = \"i[in/h] = 40 / (t[min] + 10)\"\n");
+    const Study two =
+        read("[rain.formula]\n10 = \"i[in/h] = 50 / (t[min] + 10)\"\n\"2.5\" = \"i[in/h] = 40 / (t[min] + 10)\"\n");
     REQUIRE(two.rain.formulas.size() == 2);
     CHECK(two.rain.formulas[0].formula.return_period == 10);
     CHECK(two.rain.formulas[1].formula.return_period == 2.5);
@@ -135,14 +136,19 @@ TEST_CASE("a formula of rain stands alone or once a return period") {
 }
 
 TEST_CASE("a wrong formula or its return period is refused with file, line and the right form") {
-    CHECK_THROWS_WITH(read("[rain]\nformula = \"i = 5\"\n"), Contains("rain.formula (studies/town.toml, line 2, column 11)"));
-    CHECK_THROWS_WITH(read("[rain.formula]\nten = \"i[in/h] = 50 / (t[min] + 10)\"\n"), Contains("rain.formula.ten (studies/town.toml, line 2"));
-    CHECK_THROWS_WITH(read("[rain.formula]\n0 = \"i[in/h] = 50 / (t[min] + 10)\"\n"), Contains("rain.formula.0 (studies/town.toml, line 2"));
-    CHECK_THROWS_WITH(read("[rain.formula]\n10 = 3\n"), Contains("rain.formula.10") && Contains("write a text in quotes"));
+    CHECK_THROWS_WITH(read("[rain]\nformula = \"i = 5\"\n"),
+                      Contains("rain.formula (studies/town.toml, line 2, column 11)"));
+    CHECK_THROWS_WITH(read("[rain.formula]\nten = \"i[in/h] = 50 / (t[min] + 10)\"\n"),
+                      Contains("rain.formula.ten (studies/town.toml, line 2"));
+    CHECK_THROWS_WITH(read("[rain.formula]\n0 = \"i[in/h] = 50 / (t[min] + 10)\"\n"),
+                      Contains("rain.formula.0 (studies/town.toml, line 2"));
+    CHECK_THROWS_WITH(read("[rain.formula]\n10 = 3\n"),
+                      Contains("rain.formula.10") && Contains("write a text in quotes"));
 }
 
 TEST_CASE("return periods are years from 1 on, rising") {
-    for (const auto* list : {"[]", "[10, 2]", "[2, 2]", "[0.5]", "[nan]", "[inf]", "[\"2\"]", "[[2]]", "\"10\"", "0.5"}) {
+    for (const auto* list :
+         {"[]", "[10, 2]", "[2, 2]", "[0.5]", "[nan]", "[inf]", "[\"2\"]", "[[2]]", "\"10\"", "0.5"}) {
         INFO(list);
         CHECK_THROWS_WITH(read(std::string("[rain]\nreturn_periods = ") + list + "\n"),
                           Contains("rain.return_periods (studies/town.toml, line 2") && Contains("[2, 10, 100]"));
@@ -151,7 +157,8 @@ TEST_CASE("return periods are years from 1 on, rising") {
 }
 
 TEST_CASE("the constant of the kinematic formula is one of the two that are printed") {
-    CHECK_THROWS_WITH(read("[timing]\nsheet_constant = 0.935\n"), Contains("line 2") && Contains("write 0.933 (HEC-22) or 0.94"));
+    CHECK_THROWS_WITH(read("[timing]\nsheet_constant = 0.935\n"),
+                      Contains("line 2") && Contains("write 0.933 (HEC-22) or 0.94"));
 }
 
 TEST_CASE("points may be found by area, and ponded speed have no cap") {
@@ -184,20 +191,18 @@ TEST_CASE("an unknown section is refused, empty or not") {
 }
 
 TEST_CASE("what this version does not compute is refused and not passed over") {
-    for (const auto* text :
-         {"[points]\npipes = \"p\"",
-          "[points]\narea = \"a\"", "[rain]\ntable = \"r.csv\"", "[timing]\noverrides = \"o.csv\"",
-          "[timing]\nchannel = { flow = \"design storm\" }", "[peaks]\ncoefficient = \"book\"",
-          "[uncertainty]\ndraws = 500", "[scenario.after]\nsurface.cover = \"p.tif\"",
-          "[output]\nisochrones = \"5 min\""}) {
+    for (const auto* text : {"[points]\npipes = \"p\"", "[points]\narea = \"a\"", "[rain]\ntable = \"r.csv\"",
+                             "[timing]\noverrides = \"o.csv\"", "[timing]\nchannel = { flow = \"design storm\" }",
+                             "[peaks]\ncoefficient = \"book\"", "[uncertainty]\ndraws = 500",
+                             "[scenario.after]\nsurface.cover = \"p.tif\"", "[output]\nisochrones = \"5 min\""}) {
         INFO(text);
         CHECK_THROWS_WITH(read(text), Contains("not known to this version of rillclock") && Contains("line "));
     }
 }
 
 TEST_CASE("words of a key that this version does not compute are refused") {
-    for (const auto* text : {"[surface]\npath_length = \"unbiased\"",
-                             "[surface]\nbook = \"worldcover\"", "[output]\nrasters = \"cog\""}) {
+    for (const auto* text :
+         {"[surface]\npath_length = \"unbiased\"", "[surface]\nbook = \"worldcover\"", "[output]\nrasters = \"cog\""}) {
         INFO(text);
         CHECK_THROWS_WITH(read(text), Contains("this version of rillclock does not") && Contains("line 2, column "));
     }

@@ -50,7 +50,9 @@ TEST_CASE("the raster's return period is 10 where it is listed, else the first, 
 TEST_CASE("no intensity is read below the least time") {
     Study study = with_file();
     study.timing.sheet = "kinematic";
-    const auto at_one_minute = [&] { return in_inches_per_hour(study_rain(study, table).raster_storm().rain.at(minutes(1))); };
+    const auto at_one_minute = [&] {
+        return in_inches_per_hour(study_rain(study, table).raster_storm().rain.at(minutes(1)));
+    };
     CHECK(at_one_minute() == Approx(6.9).epsilon(1e-12));
     study.peaks.least_time = minutes(60);
     CHECK(at_one_minute() == Approx(2.3).epsilon(1e-12));
@@ -68,16 +70,19 @@ TEST_CASE("a return period outside the file, and a depth that is nowhere, are re
 }
 
 TEST_CASE("a fault in the rain file is told with its line") {
-    CHECK_THROWS_WITH(study_rain(with_file(), "duration_min,intensity_2yr_in_h\n5,4.8\n60,-1\n"), Contains("rain.csv, line 3"));
+    CHECK_THROWS_WITH(study_rain(with_file(), "duration_min,intensity_2yr_in_h\n5,4.8\n60,-1\n"),
+                      Contains("rain.csv, line 3"));
 }
 
 TEST_CASE("formulas are read with the durations they hold for") {
     Study study;
-    study.rain.formulas = {{.formula = {.formula = intensity_formula_from_text("i[in/h] = 40 T^0.2 / (t[min] + 10)^0.8", "f")},
-                            .subject = "rain.formula"}};
+    study.rain.formulas = {
+        {.formula = {.formula = intensity_formula_from_text("i[in/h] = 40 T^0.2 / (t[min] + 10)^0.8", "f")},
+         .subject = "rain.formula"}};
     study.rain.formula_to = hours(24);
     const StudyRain rain = study_rain(study, {});
-    CHECK(in_inches_per_hour(rain.raster_storm().rain.at(minutes(20))) == Approx(40 * 1.584893 / 15.194870).epsilon(1e-6));
+    CHECK(in_inches_per_hour(rain.raster_storm().rain.at(minutes(20))) ==
+          Approx(40 * 1.584893 / 15.194870).epsilon(1e-6));
     CHECK_FALSE(rain.raster_storm().rain.within(hours(25)));
     CHECK(rain.two_year_24_hour);
 }

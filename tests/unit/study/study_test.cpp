@@ -53,7 +53,8 @@ TEST_CASE("statements that exclude one another are refused") {
 TEST_CASE("statements about rain that act on nothing or contradict one another are refused") {
     Study study = complete();
     study.timing.sheet = "kinematic";
-    CHECK_THROWS_WITH(check_study(study), Contains("kinematic wave, which needs rain by duration") && Contains("--rain-file"));
+    CHECK_THROWS_WITH(check_study(study),
+                      Contains("kinematic wave, which needs rain by duration") && Contains("--rain-file"));
     study.rain.file = "rain.csv";
     CHECK_NOTHROW(check_study(study));
     study.rain.two_year_24_hour.reset();

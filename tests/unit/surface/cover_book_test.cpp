@@ -174,8 +174,10 @@ TEST_CASE("curve numbers by soil group and a runoff coefficient may stand in a b
 
 TEST_CASE("curve numbers and runoff coefficients out of their range or order are refused with line and column") {
     const auto with = [](const std::string& numbers) {
-        return parse_cover_book("code,name,n_typical,shallow_type,cn_a,cn_b,c,source\n1,Lawn,0.24,short-grass pasture," + numbers + ",own\n",
-                                "town.csv");
+        return parse_cover_book(
+            "code,name,n_typical,shallow_type,cn_a,cn_b,c,source\n1,Lawn,0.24,short-grass pasture," + numbers +
+                ",own\n",
+            "town.csv");
     };
     for (const auto* wrong : {"0", "-5", "nan", "101"})
         CHECK_THROWS_WITH(with(std::string(wrong) + ",,"), Contains("town.csv, line 2, column 5 (cn_a) is"));
