@@ -60,7 +60,7 @@ void show_outcome(const RunOutcome& outcome) {
 int run_command(const CommandLine& line) {
     StageLog log(line.quiet);
     const Progress progress([&](const StageProgress& report) { return log.report(report); });
-    const RunOutcome outcome = run(study_of(line), {.replace = line.replace}, progress);
+    const RunOutcome outcome = run(study_of(line), {.replace = line.replace, .threads = line.threads}, progress);
     if (!line.quiet) show_facts(outcome.facts);
     if (!line.quiet) show_notices(outcome.notices, " in tables/review.csv");
     if (line.json) {

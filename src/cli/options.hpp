@@ -21,6 +21,7 @@ struct CommandLine {
     std::vector<Stated> stated;
     std::string demo_folder;
     bool replace = false;
+    unsigned threads = 0;   ///< 0 for as many as may be used
     bool quiet = false;
     bool json = false;
     bool keys = false;

@@ -80,7 +80,7 @@ private:
 };
 
 RasterStrips::RasterStrips(RasterStory story, const TiledTravel& travel, ResultFolder& folder)
-    : story_(std::move(story)), travel_(travel), files_(std::make_unique<Files>(story_, folder)),
+    : story_(std::move(story)), files_(std::make_unique<Files>(story_, folder)),
       filling_(std::make_unique<Strip>()), leaving_(std::make_unique<Strip>()) {
     const auto size = static_cast<std::size_t>(travel.ground().forest.tiles().side() * story_.grid.columns);
     filling_->resize(size);
@@ -98,7 +98,7 @@ void RasterStrips::fill(const TileDesk& desk) {
         filling_->spill[at] = desk.spill[local];
         filling_->contributing_area[at] = is_void ? no_value : from_fixed_area(desk.area[local]);
         filling_->catchment[at] = is_void ? no_number : desk.owner[local];
-        filling_->regime[at] = is_void ? 0 : static_cast<std::uint8_t>(first_regime(travel_.step_view(desk, local), travel_.rules()));
+        filling_->regime[at] = static_cast<std::uint8_t>(desk.regime[local]);
         const StepTime to_point = desk.time_to_root(local) - story_.last_point_times[desk.owner[local]];
         filling_->travel_time[at] = static_cast<float>(is_void ? no_value : in_minutes(to_point.under(story_.last_point_factors[desk.owner[local]])));
     }

@@ -119,7 +119,13 @@ void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
     from_divide_.fill(tile, desk.flow, divide_channel(desk), desk.from_divide);
     sheet_index_.fill(tile, desk.flow, index_channel(desk), desk.sheet_index);
     desk.step.assign(desk.flow.size(), StepTime{});
-    for (const Local local : desk.flow.order()) desk.step[local] = step_parts(step_view(desk, local), rules_).time();
+    desk.regime.assign(desk.flow.size(), Regime::none);
+    for (const Local local : desk.flow.order()) {
+        const StepView step = step_view(desk, local);
+        const StepParts parts = step_parts(step, rules_);
+        desk.step[local] = parts.time();
+        desk.regime[local] = parts.first.regime == Regime::none ? first_regime(step, rules_) : parts.first.regime;
+    }
 }
 
 void TiledTravel::read_areas(Tile tile, TileDesk& desk) const {

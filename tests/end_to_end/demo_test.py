@@ -74,6 +74,12 @@ class Folder(Demo):
         self.assertEqual((differ, odd), ([], []))
         self.assertEqual(len(same), len(RESULT_FILES))
 
+    def test_one_thread_gives_the_same_bytes_as_many(self):
+        self.done("run", "town/study.toml", "--out", "alone", "--threads", "1")
+        same, differ, odd = filecmp.cmpfiles(self.result_folder, self.folder / "alone", sorted(RESULT_FILES), shallow=False)
+        self.assertEqual((differ, odd), ([], []))
+        self.assertEqual(len(same), len(RESULT_FILES))
+
     def test_the_independent_verification_finds_the_same_answer(self):
         done = subprocess.run([sys.executable, "-B", VERIFY, self.result_folder, self.folder / "town/dem.tif", "--study",
                                self.folder / "town/study.toml"], capture_output=True, text=True, check=False)

@@ -50,7 +50,6 @@ private:
     class Files;
     struct Strip;
     RasterStory story_;
-    const TiledTravel& travel_;
     std::unique_ptr<Files> files_;
     std::unique_ptr<Strip> filling_;
     std::unique_ptr<Strip> leaving_;

@@ -40,6 +40,7 @@ struct TileDesk {
     std::vector<FixedLength> sheet_index;
     std::vector<FixedLength> flow_distance;     ///< to the root
     std::vector<StepTime> step;                 ///< time of the step out of the cell
+    std::vector<Regime> regime;                 ///< in which the step begins
     std::vector<FixedTime> storm;               ///< A to the root
     std::vector<FixedTime> fixed;               ///< B to the root
     std::vector<std::uint32_t> label;           ///< labels of the tile's own cells
