@@ -76,7 +76,9 @@ class Machine(CommandTest):
         self.words = self.small_study()
 
     def test_a_place_that_cannot_be_written_to(self):
-        self.refused(3, "run", *self.words, "--out", "/sys/rillclock-result", says=("/sys",))
+        if not os.path.ismount("/proc"):
+            self.skipTest("no folder is known here that not even root may write to")
+        self.refused(3, "run", *self.words, "--out", "/proc/rillclock-result", says=("/proc",))
 
     def test_a_place_that_is_not_there(self):
         self.refused(1, "run", *self.words, "--out", "missing/result", says=("missing", "does not exist"))
