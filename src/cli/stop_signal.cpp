@@ -1,16 +1,27 @@
 #include "stop_signal.hpp"
 
 #include <csignal>
+#include <ctime>
 
 namespace rillclock {
 namespace {
 
+/// A signal so soon after the first is the same wish: some programs send it to a process and to its group.
+constexpr std::time_t same_wish_s = 2;
+
 volatile std::sig_atomic_t received = 0;
+volatile std::time_t received_at = 0;
 
 void receive(int signal) {
-    // The second time the default applies: the user does not want to wait.
-    std::signal(signal, SIG_DFL);
-    received = signal;
+    const std::time_t now = std::time(nullptr);
+    if (received == 0) {
+        received = signal;
+        received_at = now;
+    } else if (now - received_at >= same_wish_s) {
+        // The user does not want to wait: what the signal does by default happens once this function has returned.
+        std::signal(signal, SIG_DFL);
+        std::raise(signal);
+    }
 }
 
 }  // namespace

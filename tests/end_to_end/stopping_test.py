@@ -25,14 +25,15 @@ class Stopping(CommandTest):
     def files(self):
         return {path: path.read_bytes() for path in (self.folder / "result").rglob("*") if path.is_file()}
 
-    def stopped_after(self, stage, with_signal):
+    def stopped_after(self, stage, with_signal, times=1):
         """Starts a larger run, and sends it a signal once it has told of a stage; gives its exit status and last line."""
         run = subprocess.Popen([COMMAND, "run", *self.words], cwd=self.folder, stderr=subprocess.PIPE, stdout=subprocess.PIPE, text=True)
         told = ""
         for line in run.stderr:
             told += line
             if line.startswith(stage):
-                run.send_signal(with_signal)
+                for _ in range(times):
+                    run.send_signal(with_signal)
                 break
         else:
             self.fail("the stage was never told: " + told)
@@ -48,6 +49,11 @@ class Stopping(CommandTest):
                 self.assertIn("stopped on request; nothing was written", errors)
                 self.assert_nothing_left()
                 self.assertEqual(self.files(), self.before)
+
+    def test_the_same_signal_twice_at_once_is_one_wish(self):
+        returned, _ = self.stopped_after("flow directions", signal.SIGINT, times=2)
+        self.assertEqual(returned, 130)
+        self.assert_nothing_left()
 
     def test_after_a_kill_the_old_result_stands_and_the_next_run_clears_up(self):
         returned, _ = self.stopped_after("travel times", signal.SIGKILL)
