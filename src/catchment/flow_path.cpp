@@ -34,7 +34,7 @@ std::vector<Cell> flow_path(const Raster<FlowCode>& codes, Cell head, Cell end) 
         const FlowCode code = codes[path.back()];
         if (!is_direction(code)) throw bug("a flow path misses the point it was asked for");
         const auto d = static_cast<Direction>(code);
-        path.push_back(static_cast<Cell>(static_cast<std::int64_t>(path.back()) + row_step(d) * codes.columns() + column_step(d)));
+        path.push_back(neighbour(path.back(), d, codes.columns()));
     }
     return path;
 }

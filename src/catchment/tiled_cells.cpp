@@ -94,7 +94,7 @@ std::vector<PointNumber> next_points(const TiledForest& forest, const TiledOwner
     const auto below = [&](Cell cell) {
         if (!is_direction(codes[cell])) return no_cell;
         const auto d = static_cast<Direction>(codes[cell]);
-        return static_cast<Cell>(static_cast<std::int64_t>(cell) + row_step(d) * codes.columns() + column_step(d));
+        return neighbour(cell, d, codes.columns());
     };
     std::vector<Cell> cells;
     for (const DesignPoint& point : points) {

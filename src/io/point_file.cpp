@@ -10,6 +10,7 @@
 #include <utility>
 
 #include "local_file.hpp"
+#include "layer_system.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/io/gdal_session.hpp"
 
@@ -99,16 +100,7 @@ private:
     }
 
     [[nodiscard]] ReferenceSystem system() const {
-        const OGRSpatialReference* system = layer_->GetSpatialRef();
-        char* text = nullptr;
-        if (system && !system->IsEmpty()) system->exportToWkt(&text);
-        const std::string wkt = text ? text : "";
-        CPLFree(text);
-        if (!wkt.empty()) return ReferenceSystem::from_text(wkt);
-        throw input_error("The " + called() +
-                          " has no reference system; state the one its coordinates are in: ogr2ogr "
-                          "-a_srs EPSG:nnnnn " +
-                          path_.stem().string() + "-placed.gpkg " + path_.string() + ".");
+        return system_of_layer(*layer_, called(), path_);
     }
 
     void leave_out(const std::string& why) {

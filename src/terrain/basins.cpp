@@ -10,7 +10,7 @@ constexpr std::uint32_t unlabelled = std::numeric_limits<std::uint32_t>::max();
 
 Cell step(const Raster<FlowCode>& codes, Cell cell) {
     const auto d = static_cast<Direction>(codes[cell]);
-    return static_cast<Cell>(static_cast<std::int64_t>(cell) + row_step(d) * codes.columns() + column_step(d));
+    return neighbour(cell, d, codes.columns());
 }
 
 /// Labels the level undecided cells around `pit`, itself included.

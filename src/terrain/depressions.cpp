@@ -75,7 +75,7 @@ private:
     [[nodiscard]] Cell pass_of(Cell cell, double level) const {
         while (is_below_spill(cell) && !(in_.spill[cell] < level)) {
             const auto d = static_cast<Direction>(in_.codes[cell]);
-            cell = static_cast<Cell>(static_cast<std::int64_t>(cell) + row_step(d) * in_.codes.columns() + column_step(d));
+            cell = neighbour(cell, d, in_.codes.columns());
         }
         return cell;
     }

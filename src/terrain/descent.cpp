@@ -1,20 +1,11 @@
 #include "rillclock/terrain/descent.hpp"
 
-#include <array>
 #include <cmath>
+
+#include "inverse_lengths.hpp"
 
 namespace rillclock {
 namespace {
-
-using InverseLengths = std::array<double, 8>;
-
-InverseLengths inverse_lengths(const Ground& ground, std::int64_t row) {
-    InverseLengths inverse{};
-    for (const Direction d : all_directions) {
-        inverse[static_cast<std::size_t>(d)] = 1.0 / from_fixed(ground.length(row, d));
-    }
-    return inverse;
-}
 
 FlowCode steepest_way(const Elevations& z, Cell cell, const InverseLengths& inverse) {
     double steepest = 0.0;

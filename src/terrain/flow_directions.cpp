@@ -11,7 +11,7 @@ namespace rillclock {
 namespace {
 
 Cell step(const Raster<FlowCode>& codes, Cell cell, Direction d) {
-    return static_cast<Cell>(static_cast<std::int64_t>(cell) + row_step(d) * codes.columns() + column_step(d));
+    return neighbour(cell, d, codes.columns());
 }
 
 struct WayOut {

@@ -38,7 +38,7 @@ public:
     [[nodiscard]] Cell end_of_line(Cell cell) const { return ends_.at(cell); }
     [[nodiscard]] Cell downstream(Cell cell) const {
         const auto d = static_cast<Direction>(codes[cell]);
-        return static_cast<Cell>(static_cast<std::int64_t>(cell) + row_step(d) * codes.columns() + column_step(d));
+        return neighbour(cell, d, codes.columns());
     }
 
     const ElevationStore& z;

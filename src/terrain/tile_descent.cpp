@@ -3,20 +3,11 @@
 #include <cmath>
 #include <cstring>
 
+#include "inverse_lengths.hpp"
 #include "vectorised.hpp"
 
 namespace rillclock {
 namespace {
-
-using InverseLengths = std::array<double, 8>;
-
-InverseLengths inverse_lengths(const Ground& ground, std::int64_t row) {
-    InverseLengths inverse{};
-    for (const Direction d : all_directions) {
-        inverse[static_cast<std::size_t>(d)] = 1.0 / from_fixed(ground.length(row, d));
-    }
-    return inverse;
-}
 
 /// The codes of a row: the first of the steepest falls, `flow_undecided` where there is none. `here` points to the
 /// row's first cell, `above` and `below` to those north and south of it.

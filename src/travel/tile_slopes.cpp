@@ -50,7 +50,7 @@ private:
         if (!is_direction(code)) return std::nullopt;
         const auto d = static_cast<Direction>(code);
         distance -= ground_.in.ground.length(at / codes_.columns(), d);
-        at = static_cast<Cell>(static_cast<std::int64_t>(at) + row_step(d) * codes_.columns() + column_step(d));
+        at = neighbour(at, d, codes_.columns());
         return place(at, distance);
     }
 

@@ -60,7 +60,7 @@ public:
 
 private:
     [[nodiscard]] Cell step(Cell cell, Direction d) const {
-        return static_cast<Cell>(static_cast<std::int64_t>(cell) + row_step(d) * columns() + column_step(d));
+        return neighbour(cell, d, columns());
     }
     [[nodiscard]] Raster<std::uint8_t> count_upstream() const;
 

@@ -33,4 +33,9 @@ inline constexpr std::array<Direction, 8> all_directions = {
     return {at.row + row_step(d), at.column + column_step(d)};
 }
 
+/// The same for a cell's index, on a grid of so many columns; the neighbour must lie on the grid.
+[[nodiscard]] constexpr Cell neighbour(Cell cell, Direction d, std::int64_t columns) {
+    return static_cast<Cell>(static_cast<std::int64_t>(cell) + row_step(d) * columns + column_step(d));
+}
+
 }  // namespace rillclock
