@@ -14,6 +14,7 @@
 #include "rillclock/core/error.hpp"
 #include "rillclock/run/check.hpp"
 #include "rillclock/run/demo.hpp"
+#include "rillclock/run/explain.hpp"
 #include "rillclock/run/reference_text.hpp"
 #include "rillclock/run/run_study.hpp"
 #include "stage_log.hpp"
@@ -99,6 +100,7 @@ int do_command(const CommandLine& line) {
         case CommandLine::Command::run: return run_command(line);
         case CommandLine::Command::check: return check_command(line);
         case CommandLine::Command::demo: return demo_command(line);
+        case CommandLine::Command::explain: std::cout << explanation(line.result_folder, line.point); return 0;
         case CommandLine::Command::methods: std::cout << methods_text(); return 0;
     }
     return 0;

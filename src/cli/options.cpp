@@ -69,6 +69,9 @@ public:
         check_ = app_.add_subcommand("check", "read headers, tables and points; say what would be wrong and what it will cost");
         add_study_words(*check_, line_, check_values_);
         check_->add_flag("--keys", line_.keys, "list every key of the study file and stop");
+        explain_ = app_.add_subcommand("explain", "print the calculation sheet of one point of a result");
+        explain_->add_option("RESULT", line_.result_folder, "result folder")->required();
+        explain_->add_option("POINT", line_.point, "name of the point, as in tables/outlets.csv")->required();
         methods_ = app_.add_subcommand("methods", "list every formula with its source, range and inputs");
         demo_ = app_.add_subcommand("demo", "write the demo study, an invented town, ready to run");
         demo_->add_option("FOLDER", line_.demo_folder, "a new or empty folder")->required();
@@ -89,6 +92,7 @@ public:
         if (run_->parsed()) gather_stated(*run_, run_values_, line_);
         if (check_->parsed()) gather_stated(*check_, check_values_, line_);
         line_.command = check_->parsed()     ? CommandLine::Command::check
+                        : explain_->parsed() ? CommandLine::Command::explain
                         : methods_->parsed() ? CommandLine::Command::methods
                         : demo_->parsed()    ? CommandLine::Command::demo
                                              : CommandLine::Command::run;
@@ -125,6 +129,7 @@ private:
     CLI::App app_;
     CLI::App* run_ = nullptr;
     CLI::App* check_ = nullptr;
+    CLI::App* explain_ = nullptr;
     CLI::App* methods_ = nullptr;
     CLI::App* demo_ = nullptr;
     CommandLine line_;

@@ -9,7 +9,7 @@ namespace rillclock {
 
 /// What the words after the command's name ask for.
 struct CommandLine {
-    enum class Command { run, check, methods, demo };
+    enum class Command { run, check, explain, methods, demo };
     Command command = Command::run;
     std::string study_file;
     /// Keys of the study with their values as texts, from options such as --elevation.
@@ -20,6 +20,8 @@ struct CommandLine {
     };
     std::vector<Stated> stated;
     std::string demo_folder;
+    std::string result_folder;
+    std::string point;
     bool replace = false;
     unsigned threads = 0;   ///< 0 for as many as may be used
     bool quiet = false;

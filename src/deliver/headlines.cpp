@@ -15,16 +15,6 @@ std::string minutes_text(double s) {
     return m < 120.0 ? significant(m, 3) + " min" : significant(m / 60.0, 3) + " h";
 }
 
-/// Positions of the outlets by area, the largest first; of equal ones the earlier number.
-std::vector<std::size_t> by_area(const StudyResult& result) {
-    std::vector<std::size_t> order(result.outlets.size());
-    std::iota(order.begin(), order.end(), std::size_t{0});
-    std::stable_sort(order.begin(), order.end(), [&](std::size_t a, std::size_t b) {
-        return result.outlets[a].area > result.outlets[b].area;
-    });
-    return order;
-}
-
 std::string length_text(const StudyResult& result, double m) {
     const ReportScale scale(result.study.report_units);
     return significant(scale.length(m), 4) + " " + scale.length_unit();
@@ -93,6 +83,15 @@ OverviewRow overview_row(const StudyResult& result, const Outlet& outlet) {
 }
 
 }  // namespace
+
+std::vector<std::size_t> by_area(const StudyResult& result) {
+    std::vector<std::size_t> order(result.outlets.size());
+    std::iota(order.begin(), order.end(), std::size_t{0});
+    std::stable_sort(order.begin(), order.end(), [&](std::size_t a, std::size_t b) {
+        return result.outlets[a].area > result.outlets[b].area;
+    });
+    return order;
+}
 
 std::vector<std::string> headlines(const StudyResult& result) {
     const Outlet& main = result.outlets[by_area(result).front()];

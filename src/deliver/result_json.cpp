@@ -47,7 +47,11 @@ Json data_json(const StudyResult& result) {
     Json classes = Json::array();
     for (const ClassCount& count : result.data.classes) {
         const CoverClass* known = result.book.find(count.code);
-        classes.push_back({{"code", count.code}, {"name", known == nullptr ? "" : known->name}, {"cells", count.cells}});
+        classes.push_back({{"code", count.code},
+                           {"name", known == nullptr ? "" : known->name},
+                           {"cells", count.cells},
+                           {"source", known == nullptr ? "" : known->source},
+                           {"from_memory", known != nullptr && known->from_memory}});
     }
     return {{"reference_system", result.system.name()},
             {"rows", result.grid.rows},
@@ -104,6 +108,40 @@ Json channel_parameters(const ChannelRules& channel) {
     return json;
 }
 
+Json points_json(const TabulatedRain& table) {
+    Json points = Json::array();
+    for (const RainPoint& point : table.points) {
+        points.push_back({digits(in_minutes(point.duration), 8), digits(in_millimetres_per_hour(point.intensity), 8)});
+    }
+    return points;
+}
+
+/// Parts of i = Σ factor / (t^e + b)^c, each in its own units; the factor has the weight and the return period in it.
+Json formula_parts_json(const FormulatedRain& formulas) {
+    Json parts = Json::array();
+    for (const FormulatedRain::Part& part : formulas.parts) {
+        const IntensityFormula& formula = part.formula;
+        parts.push_back({{"weighted_factor", digits(part.weight * formula.factor * std::pow(part.return_period, formula.period_exponent), 10)},
+                         {"time_exponent", formula.time_exponent},
+                         {"added", formula.added},
+                         {"outer_exponent", formula.outer_exponent},
+                         {"intensity_unit_mm_per_h", digits(in_millimetres_per_hour(formula.intensity_unit), 8)},
+                         {"time_unit_min", digits(in_minutes(formula.time_unit), 8)}});
+    }
+    return parts;
+}
+
+Json curves_json(const StudyRain& rain) {
+    Json curves = Json::array();
+    for (const StudyStorm& storm : rain.storms) {
+        Json curve = {{"return_period", storm.return_period}};
+        if (const auto* table = std::get_if<TabulatedRain>(&storm.rain.law())) curve["points"] = points_json(*table);
+        if (const auto* formulas = std::get_if<FormulatedRain>(&storm.rain.law())) curve["formula_parts"] = formula_parts_json(*formulas);
+        curves.push_back(curve);
+    }
+    return curves;
+}
+
 Json rain_json(const StudyResult& result) {
     const RainEcho& echo = result.rain.source->echo;
     Json periods = Json::array();
@@ -120,7 +158,8 @@ Json rain_json(const StudyResult& result) {
             {"last_duration_min", echo.range.last ? Json(in_minutes(*echo.range.last)) : Json(nullptr)},
             {"least_time_min", in_minutes(result.study.peaks.least_time.value_or(standard_least_time))},
             {"return_periods", periods},
-            {"raster_return_period", result.rain.raster_storm().return_period}};
+            {"raster_return_period", result.rain.raster_storm().return_period},
+            {"curves", curves_json(result.rain)}};
 }
 
 Json parameters_json(const StudyResult& result) {
@@ -136,6 +175,20 @@ Json parameters_json(const StudyResult& result) {
     return json;
 }
 
+/// What the formula of the segment's regime needs beside its length and slope.
+void add_formula_numbers(const StudyResult& result, const Segment& s, Json& json) {
+    switch (s.regime) {
+        case Regime::none: return;
+        case Regime::sheet: json["n"] = digits(cover_of(result, s)->n_typical); return;
+        case Regime::shallow: json["k_m_per_s"] = digits(in_metres_per_second(result.surface_classes[*s.surface].shallow_k)); return;
+        case Regime::channel:
+            json["n"] = digits(result.rules.channel.n);
+            json["hydraulic_radius_m"] = digits(s.radius_equivalent_m);
+            return;
+        case Regime::water: json["water_depth_m"] = digits(in_metres(*cover_of(result, s)->water_depth)); return;
+    }
+}
+
 Json segment_json(const StudyResult& result, const SegmentRow& row) {
     const Segment& s = *row.segment;
     const CoverClass* cover = cover_of(result, s);
@@ -148,7 +201,7 @@ Json segment_json(const StudyResult& result, const SegmentRow& row) {
                  {"time_s", number(row.time_s, 6)},
                  {"ponded_time_s", number(row.pond_time_s, 6)}};
     if (s.regime == Regime::sheet) json["sheet_index_m"] = {number(s.index_from_m, 6), number(s.index_to_m, 6)};
-    if (s.regime == Regime::channel) json["hydraulic_radius_m"] = digits(s.radius_equivalent_m);
+    add_formula_numbers(result, s, json);
     return json;
 }
 
@@ -279,6 +332,7 @@ std::string result_json(const StudyResult& result) {
     Json outlets = Json::array();
     for (const Outlet& outlet : result.outlets) outlets.push_back(outlet_json(result, outlet));
     const Json json = {{"title", result.study.title},
+                       {"report_units", result.study.report_units == ReportUnits::us ? "us" : "si"},
                        {"versions", versions()},
                        {"headlines", headlines(result)},
                        {"cautions", cautions},

@@ -7,6 +7,7 @@
 
 #include "rillclock/catchment/outlet_notices.hpp"
 #include "rillclock/catchment/tiled_outlets.hpp"
+#include "rillclock/deliver/calculation_sheet.hpp"
 #include "rillclock/deliver/depressions_table.hpp"
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
@@ -44,7 +45,17 @@ Notices all_notices(const TerrainData& terrain, const SurfaceData& surface, cons
     return in_sentences(std::move(all));
 }
 
-void write_texts(const StudyResult& result, ResultFolder& folder) {
+/// The sheets of the points with the largest catchments, if there are too many for all.
+void write_sheets(const StudyResult& result, const std::string& json, ResultFolder& folder) {
+    const SheetBook book(json, "result.json");
+    std::vector<std::size_t> order = by_area(result);
+    order.resize(std::min(order.size(), most_sheets));
+    for (const std::size_t i : order) {
+        folder.write_text("tables/sheets/" + sheet_file_name(i + 1, result.outlets[i].point.name), sheet_markdown(book.sheet(i)));
+    }
+}
+
+void write_texts(const StudyResult& result, const std::string& json, ResultFolder& folder) {
     folder.write_text("governing_paths.geojson", paths_geojson(result, PathKind::governing));
     folder.write_text("longest_paths.geojson", paths_geojson(result, PathKind::longest));
     folder.write_text("tables/outlets.csv", outlets_table(result));
@@ -53,7 +64,8 @@ void write_texts(const StudyResult& result, ResultFolder& folder) {
     folder.write_text("tables/review.csv", review_table(result));
     if (result.rain.source) folder.write_text("tables/storms.csv", storms_table(result));
     if (result.study.timing.is_kinematic()) folder.write_text("tables/iterations.csv", iterations_table(result));
-    folder.write_text("result.json", result_json(result));
+    write_sheets(result, json, folder);
+    folder.write_text("result.json", json);
 }
 
 std::vector<CellLabel> labels_of(const std::vector<DesignPoint>& points) {
@@ -131,11 +143,12 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
                              .system = terrain.system, .format = terrain.format, .book = surface.book,
                              .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .notices = notices,
                              .inputs = inputs, .data = data};
-    write_texts(result, folder);
+    const std::string json = result_json(result);
+    write_texts(result, json, folder);
     folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
     folder.commit();
     return {.folder = folder.target(), .facts = facts_of(rain), .headlines = headlines(result),
-            .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = result_json(result)};
+            .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = json};
 }
 
 }  // namespace rillclock

@@ -11,6 +11,9 @@ namespace rillclock {
 /// and what most needs a person's eye.
 [[nodiscard]] std::vector<std::string> headlines(const StudyResult& result);
 
+/// Positions of the points by area, the largest first; of equal ones the earlier number.
+[[nodiscard]] std::vector<std::size_t> by_area(const StudyResult& result);
+
 /// A short table of the points, for a terminal: name, area, time, path; at most `most` rows, the largest catchments first.
 [[nodiscard]] std::string outlets_overview(const StudyResult& result, std::size_t most);
 

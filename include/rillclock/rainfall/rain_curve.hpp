@@ -63,6 +63,8 @@ public:
     [[nodiscard]] std::optional<Intensity> within(Duration duration) const;
     /// The intensity; throws an input error where there is none.
     [[nodiscard]] Intensity at(Duration duration) const;
+    /// The table or formulas it is read from.
+    [[nodiscard]] const Law& law() const { return law_; }
 
 private:
     Law law_;
