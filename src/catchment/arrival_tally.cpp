@@ -22,14 +22,16 @@ bool touches_edge(const Raster<FlowCode>& codes, const Window& window) {
 
 /// What the ground of a cell is, for formulas that take a catchment as one lump.
 struct GroundOfCell {
-    std::uint8_t surface = 0;
+    std::uint8_t cover = 0;
+    CellSoil soil = CellSoil::unknown;
     double slope = 0.0;
     double elevation_m = 0.0;
 };
 
 GroundOfCell ground_of_cell(const TiledGround& in, const TileDesk& desk, Local local) {
     const Cell cell = desk.flow.cell(local);
-    return {.surface = in.surface.index[cell],
+    return {.cover = in.surface.index[cell],
+            .soil = in.surface.soil_at(cell),
             .slope = land_slope(in.elevations, in.metres_per_elevation_unit, in.ground, cell),
             .elevation_m = desk.elevation[local] * in.metres_per_elevation_unit};
 }
@@ -46,7 +48,7 @@ public:
             arrivals_ = &by_owner_[owner];
         }
         arrivals_->add_unbinned(cell);
-        arrivals_->ground.add(ground.surface, cell.area, ground.slope, ground.elevation_m);
+        arrivals_->ground.add(ground.cover, ground.soil, cell.area, ground.slope, ground.elevation_m);
         if (storms_ == Storms::by_point) return arrivals_->storm_bins.add(cell.head, cell.area, storm_factor_);
         const std::int64_t second = ArrivalBins::second_of(cell.head.time, storm_factor_);
         ArrivalBins::Bin& bin = bins_[{owner, second}];

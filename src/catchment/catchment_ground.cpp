@@ -1,8 +1,6 @@
 #include "rillclock/catchment/catchment_ground.hpp"
 
-#include <algorithm>
 #include <cmath>
-#include <functional>
 
 #include "rillclock/raster/direction.hpp"
 
@@ -35,18 +33,15 @@ double slope_across(const Side& a, const Side& b) {
 
 }  // namespace
 
-void CatchmentGround::add(std::uint8_t surface, FixedArea area, double slope, double elevation_m) {
-    if (surface >= area_by_class_.size()) area_by_class_.resize(surface + 1U);
-    area_by_class_[surface] += area;
+void CatchmentGround::add(std::uint8_t cover, CellSoil soil, FixedArea area, double slope, double elevation_m) {
+    land_.add({.cover = cover, .soil = soil, .slope = slope_band(slope)}, area);
     ++cells_;
     slope_sum_ += to_fixed(slope);
     elevation_sum_ += std::llround(elevation_m * elevation_units_per_m);
 }
 
 void CatchmentGround::add(const CatchmentGround& other) {
-    if (other.area_by_class_.size() > area_by_class_.size()) area_by_class_.resize(other.area_by_class_.size());
-    std::transform(other.area_by_class_.begin(), other.area_by_class_.end(), area_by_class_.begin(),
-                   area_by_class_.begin(), std::plus<>());
+    land_.add(other.land_);
     cells_ += other.cells_;
     slope_sum_ += other.slope_sum_;
     elevation_sum_ += other.elevation_sum_;

@@ -53,6 +53,10 @@ Json data_json(const StudyResult& result) {
                            {"source", known == nullptr ? "" : known->source},
                            {"from_memory", known != nullptr && known->from_memory}});
     }
+    Json soils = Json::array();
+    for (const SoilCount& count : result.data.soils) {
+        soils.push_back({{"group", text_or_null(letter_of(count.soil))}, {"cells", count.cells}});
+    }
     return {{"reference_system", result.system.name()},
             {"rows", result.grid.rows},
             {"columns", result.grid.columns},
@@ -62,7 +66,8 @@ Json data_json(const StudyResult& result) {
             {"void_cells", result.data.void_cells},
             {"elevation_unit", result.format.unit.name},
             {"metres_per_stored_elevation_unit", result.format.metres_per_stored_unit()},
-            {"cover_classes", classes}};
+            {"cover_classes", classes},
+            {"soil_groups", soils}};
 }
 
 Json terrain_parameters(const TravelRules& rules) {
@@ -162,12 +167,18 @@ Json rain_json(const StudyResult& result) {
             {"curves", curves_json(result.rain)}};
 }
 
+Json soil_parameters(const SurfaceStudy& surface) {
+    if (surface.soil_group) return letter_of(cell_soil(*surface.soil_group));
+    return surface.soil.file ? Json("raster") : Json(nullptr);
+}
+
 Json parameters_json(const StudyResult& result) {
     Json json = {{"terrain", terrain_parameters(result.rules)},
             {"sheet", sheet_parameters(result)},
             {"shallow", result.study.timing.shallow == ShallowRule::by_cover ? "by cover" : "paved and unpaved"},
             {"channel", channel_parameters(result.rules.channel)},
             {"book", result.book.name()},
+            {"soil_group", soil_parameters(result.study.surface)},
             {"ignore_tail", result.study.timing.ignore_tail},
             {"move_within_m", in_metres(result.resolved.move_within)},
             {"shortest_segment_m", in_metres(result.resolved.shortest_segment)}};
@@ -272,6 +283,18 @@ Json measures_json(const CatchmentMeasures& measures) {
             {"overland_slope", or_null(measures.overland_slope)}};
 }
 
+Json land_json(const StudyResult& result, const Outlet& outlet) {
+    Json land = Json::array();
+    for (const LandShare& share : outlet.ground.land().shares()) {
+        land.push_back({{"cover", result.book.classes()[share.kind.cover].code},
+                        {"soil_group", text_or_null(letter_of(share.kind.soil))},
+                        {"land_slope", words(share.kind.slope)},
+                        {"cells", share.cells},
+                        {"area_m2", number(from_fixed_area(share.area), 4)}});
+    }
+    return land;
+}
+
 Json methods_json(const PointMethods& methods) {
     Json times = Json::array();
     for (const MethodTime& time : methods.times) {
@@ -307,6 +330,7 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
             {"arrivals", arrivals_json(outlet)},
             {"governing_path", path_json(result, outlet, outlet.governing)},
             {"longest_path", path_json(result, outlet, outlet.longest)}};
+    json["land"] = land_json(result, outlet);
     json["methods"] = methods_json(result.methods[outlet.number - 1]);
     if (!outlet.storms.empty()) json["storms"] = storms_json(result, outlet);
     return json;

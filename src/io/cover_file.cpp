@@ -245,12 +245,12 @@ void check_overlap(const RasterFile& file, const Grid& target, const ReferenceSy
 void notice_systems(const RasterFile& file, const ReferenceSystem& target_system, bool is_transformed,
                     Notices& notices) {
     if (is_transformed)
-        notices.push_back({.code = "cover-transformed",
+        notices.push_back({.code = file.role() + "-transformed",
                            .text = "The " + file.called() + " is in " + file.system().name() +
                                    "; it is sampled at the places of the elevations' cells, which are in " +
                                    target_system.name() + "."});
     else if (file.system().name() != target_system.name())
-        notices.push_back({.code = "cover-system-named-otherwise",
+        notices.push_back({.code = file.role() + "-system-named-otherwise",
                            .text = "The " + file.called() + " calls its reference system " + file.system().name() +
                                    ", the elevations theirs " + target_system.name() +
                                    "; both give the same coordinates here, so nothing is transformed."});
@@ -268,7 +268,7 @@ void notice_half_cell(const RasterFile& file, const Grid& target, Notices& notic
     if (std::abs(cover.cell_height / target.cell_height - 1.0) > 1e-6) return;
     if (!is_half((cover.left - target.left) / target.cell_width)) return;
     if (!is_half((cover.top - target.top) / target.cell_height)) return;
-    notices.push_back({.code = "cover-half-cell",
+    notices.push_back({.code = file.role() + "-half-cell",
                        .text = "The " + file.called() +
                                " has the elevations' cell size but lies half a cell beside them; "
                                "perhaps one of the two files gives cell centres where corners are meant."});
@@ -278,7 +278,11 @@ void notice_half_cell(const RasterFile& file, const Grid& target, Notices& notic
 
 CoverFile open_cover(const std::filesystem::path& path, const CoverOptions& options, const Grid& target,
                      const ReferenceSystem& target_system) {
-    RasterFile file({.path = path, .role = "cover", .band = options.band, .resampling = "near"});
+    RasterFile file({.path = path,
+                     .role = options.role,
+                     .band = options.band,
+                     .resampling = "near",
+                     .band_key = options.band_key});
     std::optional<Transformation> transformation;
     // The finer of the two grids says how much "a hundredth of a cell" is.
     Grid finer = target;

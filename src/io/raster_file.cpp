@@ -114,7 +114,7 @@ void RasterFile::choose_band() {
                           band_list(*dataset_) + ".");
     if (!request_.band && values > 1)
         throw input_error("The " + called() + " has several bands: " + band_list(*dataset_) + "; say which holds the " +
-                          request_.role + ", for example band = 1.");
+                          request_.role + ", for example " + request_.band_key + " = 1.");
     band_ = dataset_->GetRasterBand(request_.band.value_or(1));
     const int mask = band_->GetMaskFlags();
     has_mask_ = (mask & (GMF_ALL_VALID | GMF_NODATA)) == 0;

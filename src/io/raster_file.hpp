@@ -17,9 +17,10 @@ namespace rillclock {
 
 struct RasterRequest {
     std::filesystem::path path;
-    std::string role;  ///< "elevation" or "cover", for messages
+    std::string role;  ///< "elevation", "cover" or "soil", for messages
     std::optional<int> band = {};
-    std::string resampling;  ///< what gdalwarp should use in advice: "bilinear" or "near"
+    std::string resampling;         ///< what gdalwarp should use in advice: "bilinear" or "near"
+    std::string band_key = "band";  ///< what states the band, in advice
 };
 
 /// One band of a raster file on the disk: what elevations and land cover have in common.
@@ -35,6 +36,7 @@ public:
     [[nodiscard]] std::optional<double> nodata() const { return nodata_; }
     [[nodiscard]] const GdalSession& session() const { return session_; }
     [[nodiscard]] const GdalMark& opened_at() const { return opened_at_; }
+    [[nodiscard]] const std::string& role() const { return request_.role; }
     /// "elevation file dem.tif"
     [[nodiscard]] std::string called() const;
     /// A command with the file's name in it: "gdalwarp -r bilinear dem.tif dem-SUFFIX.tif".

@@ -12,6 +12,7 @@
 #include "rillclock/io/ground_of.hpp"
 #include "rillclock/rainfall/return_periods.hpp"
 #include "mapped_flow.hpp"
+#include "read_soil.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
 
@@ -43,6 +44,7 @@ public:
         attempt([&] { rain(); });
         if (terrain_) {
             attempt([&] { cover(); });
+            attempt([&] { soil(); });
             attempt([&] { mapped_shapes(); });
             attempt([&] { points(); });
             costs();
@@ -109,6 +111,15 @@ private:
                                 std::to_string(file.file_grid.columns) + " columns in " + file.system.name());
     }
 
+    void soil() {
+        if (study_.surface.soil_group) report_.facts.push_back("soil group: " + letter_of(cell_soil(*study_.surface.soil_group)) + " everywhere");
+        if (!study_.surface.soil.file) return;
+        const CoverFile file = open_soil(study_, terrain_->grid(), terrain_->system);
+        note(file.notices);
+        report_.facts.push_back("soil groups: " + std::to_string(file.file_grid.rows) + " rows × " +
+                                std::to_string(file.file_grid.columns) + " columns in " + file.system.name() + ", a byte a cell of memory");
+    }
+
     void mapped_shapes() {
         const MappedShapes mapped = read_mapped_shapes(study_, terrain_->grid(), terrain_->system);
         report_.facts.insert(report_.facts.end(), mapped.facts.begin(), mapped.facts.end());
@@ -140,8 +151,13 @@ private:
 
     void costs() {
         const auto cells = static_cast<double>(terrain_->grid().size());
-        report_.facts.push_back("cost: about " + size_text(memory_need(cells, width_of(terrain_->format.stored) == ElevationStore::Width::eight_bytes)) + " of memory, and at most " +
+        report_.facts.push_back("cost: about " + size_text(memory_of(cells)) + " of memory, and at most " +
                                 size_text(cells * disk_bytes_per_cell) + " of disk for the result");
+    }
+
+    [[nodiscard]] double memory_of(double cells) const {
+        const bool wide = width_of(terrain_->format.stored) == ElevationStore::Width::eight_bytes;
+        return memory_need(cells, wide, study_.surface.soil.file.has_value());
     }
 
     void output() {

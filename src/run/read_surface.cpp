@@ -1,4 +1,3 @@
-#include <algorithm>
 #include <cmath>
 #include <map>
 
@@ -6,12 +5,13 @@
 #include "rillclock/hydraulics/shallow_flow.hpp"
 #include "rillclock/io/cover_file.hpp"
 #include "rillclock/io/text_file.hpp"
+#include "read_classes.hpp"
+#include "read_soil.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
 namespace {
 
-constexpr std::int64_t strip_rows = 512;
 constexpr std::size_t most_classes = 255;
 
 SurfaceHydraulics hydraulics_of(const CoverClass& cover, ShallowRule rule) {
@@ -88,21 +88,9 @@ private:
 };
 
 Raster<std::uint8_t> read_positions(BlockSource<std::int32_t>& source, Reading& reading, const Progress& progress) {
-    const Grid& grid = source.grid();
-    Raster<std::uint8_t> positions(grid.rows, grid.columns);
-    std::vector<std::int32_t> codes;
-    for (std::int64_t row = 0; row < grid.rows; row += strip_rows) {
-        progress.tell({.stage = "reading land cover", .done = row * grid.columns, .total = grid.size()});
-        const Window window{.row = row, .rows = std::min(strip_rows, grid.rows - row), .columns = grid.columns};
-        codes.resize(static_cast<std::size_t>(window.size()));
-        source.read(window, codes);
-        const auto first = static_cast<Cell>(row * grid.columns);
-        for (std::size_t i = 0; i < codes.size(); ++i) {
-            const Cell cell = first + static_cast<Cell>(i);
-            positions[cell] = reading.position(cell, codes[i]);
-        }
-    }
-    progress.tell({.stage = "reading land cover", .done = grid.size(), .total = grid.size(), .finished = true});
+    Raster<std::uint8_t> positions(source.grid().rows, source.grid().columns);
+    for_each_class(source, progress, "reading land cover",
+                   [&](Cell cell, std::int32_t code) { positions[cell] = reading.position(cell, code); });
     return positions;
 }
 
@@ -138,12 +126,13 @@ SurfaceData read_surface(const Study& study, const TerrainData& terrain, const P
     CoverFile file = open_cover(located(study, study.surface.cover), options, terrain.grid, terrain.system);
     Reading reading(study, book, terrain.elevations);
 
-    SurfaceData data{.book = book, .table = {}, .classes = {}, .notices = file.notices};
+    SurfaceData data{.book = book, .table = {}, .classes = {}, .soils = {}, .notices = file.notices};
     data.table.index = read_positions(*file.source, reading, progress);
     for (const CoverClass& cover : book.classes()) data.table.classes.push_back(hydraulics_of(cover, study.timing.shallow));
     data.classes = reading.known_classes();
     const Notices unknown = unknown_notices(study, reading);
     data.notices.insert(data.notices.end(), unknown.begin(), unknown.end());
+    read_soil(study, terrain, data, progress);
     return data;
 }
 

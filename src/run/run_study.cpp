@@ -61,6 +61,7 @@ void write_texts(const StudyResult& result, const std::string& json, ResultFolde
     folder.write_text("tables/outlets.csv", outlets_table(result));
     folder.write_text("tables/segments.csv", segments_table(result));
     folder.write_text("tables/methods.csv", methods_table(result));
+    folder.write_text("tables/land.csv", land_table(result));
     folder.write_text("tables/review.csv", review_table(result));
     if (result.rain.source) folder.write_text("tables/storms.csv", storms_table(result));
     if (result.study.timing.is_kinematic()) folder.write_text("tables/iterations.csv", iterations_table(result));
@@ -76,7 +77,7 @@ std::vector<CellLabel> labels_of(const std::vector<DesignPoint>& points) {
 
 std::vector<PointMethods> methods_of(const Study& study, const CoverBook& book, const StudyRain& rain,
                                      const std::vector<Outlet>& outlets) {
-    const MethodGround ground{.book = book, .soil_group = study.surface.soil_group};
+    const MethodGround ground{.book = book, .has_soil = study.surface.soil_group || study.surface.soil.file};
     const std::vector<IntensityOfDuration> intensities = intensities_of(rain);
     std::vector<PointMethods> methods;
     for (const Outlet& outlet : outlets) {
@@ -138,7 +139,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     terrain.notices.insert(terrain.notices.end(), left_out.begin(), left_out.end());
     const Notices notices = all_notices(terrain, surface, rain, points, outlets);
     const std::vector<InputFile> inputs = input_files(study);
-    const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes};
+    const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
     const StudyResult result{.study = study, .resolved = resolved, .rules = rules, .rain = rain, .grid = terrain.grid,
                              .system = terrain.system, .format = terrain.format, .book = surface.book,
                              .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .notices = notices,

@@ -34,6 +34,7 @@ struct SurfaceData {
     CoverBook book;
     SurfaceTable table;
     std::vector<ClassCount> classes;
+    std::vector<SoilCount> soils;   ///< where the study has a raster of them
     Notices notices;
 };
 

@@ -97,6 +97,7 @@ std::vector<InputFile> input_files(const Study& study) {
     add("elevation", study.terrain.elevation);
     add("cover", study.surface.cover);
     if (!is_built_in_book(study.surface.book)) add("book", study.surface.book);
+    if (study.surface.soil.file) add("soil", *study.surface.soil.file);
     if (study.points.file) add("points", *study.points.file);
     for (const MappedFile& file : mapped_files(study)) {
         if (file.name) add(file.role, *file.name);

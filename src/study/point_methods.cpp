@@ -1,67 +1,25 @@
 #include "rillclock/study/point_methods.hpp"
 
 #include <algorithm>
-#include <functional>
-#include <string>
+
+#include "rillclock/surface/composite.hpp"
 
 namespace rillclock {
 namespace {
 
-/// An average over the classes of a catchment, by area; or the first class that has no value.
-struct Average {
-    std::optional<double> value = {};
-    const CoverClass* lacking = nullptr;
-};
-
-using ValueOfClass = std::function<std::optional<double>(const CoverClass&)>;
-using CountsClass = std::function<bool(const CoverClass&)>;
-
-Average average_by_area(const Outlet& outlet, const CoverBook& book, const ValueOfClass& value,
-                        const CountsClass& counts) {
-    const std::vector<FixedArea>& areas = outlet.ground.area_by_class();
-    double sum = 0.0;
-    double whole = 0.0;
-    for (std::size_t place = 0; place < areas.size(); ++place) {
-        const CoverClass& cover = book.classes()[place];
-        if (areas[place] == 0 || !counts(cover)) continue;
-        const std::optional<double> of_class = value(cover);
-        if (!of_class) return {.lacking = &cover};
-        sum += from_fixed_area(areas[place]) * *of_class;
-        whole += from_fixed_area(areas[place]);
-    }
-    if (!(whole > 0)) return {};
-    return {.value = sum / whole};
-}
-
-bool any_class(const CoverClass&) {
-    return true;
-}
-bool not_water(const CoverClass& cover) {
-    return !cover.is_open_water();
-}
-
-std::string lacking_text(const Average& average, const std::string& column) {
-    return average.lacking == nullptr ? "" : "the cover book has no " + column + " for " + average.lacking->name;
-}
-
 void measure_cover(const Outlet& outlet, const MethodGround& ground, CatchmentMeasures& measures) {
-    measures.overland_n =
-        average_by_area(
-            outlet, ground.book, [](const CoverClass& c) { return std::optional(c.n_typical); }, not_water)
-            .value;
-    const Average runoff = average_by_area(
-        outlet, ground.book, [](const CoverClass& c) { return c.runoff_coefficient; }, any_class);
+    const std::vector<LandShare> land = outlet.ground.land().shares();
+    measures.overland_n = composite_overland_n(land, ground.book).value;
+    const Composite runoff = composite_runoff_coefficient(land, ground.book);
     measures.runoff_coefficient = runoff.value;
-    measures.no_runoff_coefficient = lacking_text(runoff, "c");
-    if (!ground.soil_group) {
+    measures.no_runoff_coefficient = runoff.lacking;
+    if (!ground.has_soil) {
         measures.no_curve_number = "the study states no soil_group";
         return;
     }
-    const SoilGroup group = *ground.soil_group;
-    const Average curve = average_by_area(
-        outlet, ground.book, [group](const CoverClass& c) { return c.curve_number(group); }, any_class);
+    const Composite curve = composite_curve_number(land, ground.book);
     measures.curve_number = curve.value;
-    measures.no_curve_number = lacking_text(curve, std::string("cn_") + "abcd"[static_cast<std::size_t>(group)]);
+    measures.no_curve_number = curve.lacking;
 }
 
 /// The part of the longest path before its first channel or open water.

@@ -84,6 +84,14 @@ void refuse_contradictory_sheet(const Study& study) {
                           "\"kinematic\" under [timing], or leave them out");
 }
 
+void refuse_contradictory_soil(const Study& study) {
+    const SoilStudy& soil = study.surface.soil;
+    if (!soil.file && (soil.band || !soil.classes.empty() || soil.fallback_group))
+        throw input_error(name_of(study) +
+                          " says how to read a raster of soil groups but gives none; add soil_group = \"soils.tif\" "
+                          "under [surface], or leave out soil_band, soil_classes and fallback_soil_group");
+}
+
 /// "NETCDF:…", "GPKG:…": a driver's name before a colon, in capitals.
 bool has_driver_prefix(const std::string& name) {
     const auto colon = name.find(':');
@@ -104,6 +112,7 @@ std::string located(const Study& study, const std::string& name) {
 
 void check_study(const Study& study) {
     require_inputs(study);
+    refuse_contradictory_soil(study);
     refuse_contradictory_points(study);
     refuse_contradictory_channel(study);
     refuse_contradictory_rain(study);

@@ -37,7 +37,12 @@ constexpr std::array keys{
     StudyKey{"surface.fallback_class", "71", "none: unknown codes are an error",
              "code that stands in for codes the book does not know and for cells without cover"},
     StudyKey{"surface.soil_group", R"("B")", "none: no curve numbers",
-             "hydrologic soil group, A to D, of the whole study: which curve numbers of the book count"},
+             "hydrologic soil group, A to D, of the whole study, or a raster of them, such as \"soils.tif\""},
+    StudyKey{"surface.soil_band", "1", "the only one", "band of that raster; asked for where the file has several"},
+    StudyKey{"surface.soil_classes", R"({ 1 = "A", 2 = "B", 3 = "C", 4 = "D" })", "1 to 4 are A to D",
+             "what the values of that raster mean"},
+    StudyKey{"surface.fallback_soil_group", R"("D")", "none: cells without a group have no curve number",
+             "soil group where that raster gives none"},
     StudyKey{"surface.path_length", R"("grid")", "grid", "grid: the length of a path is that of its steps"},
     StudyKey{"points.file", R"("points.gpkg")", "none: points where flow leaves the data", "design points"},
     StudyKey{"points.name", R"("label")", "none: points are numbered", "field that names them"},
@@ -135,7 +140,7 @@ bool is_study_key(std::string_view key) {
 }
 
 bool takes_entries(std::string_view key) {
-    return key == "rain.formula";
+    return key == "rain.formula" || key == "surface.soil_classes";
 }
 
 bool is_study_section(std::string_view name) {

@@ -1,4 +1,5 @@
 #include <array>
+#include <charconv>
 #include <limits>
 #include <vector>
 
@@ -113,6 +114,18 @@ public:
         return years;
     }
 
+    /// The class value that the value's place in a table of the user's names stands for.
+    [[nodiscard]] int entry_class() const {
+        int value = 0;
+        const char* end = value_.entry.data() + value_.entry.size();
+        const auto [last, error] = std::from_chars(value_.entry.data(), end, value);
+        if (value_.entry.empty()) throw fault("is " + shown() + "; write a table, such as " + form_);
+        if (error != std::errc() || last != end)
+            throw fault("stands under " + value_.entry +
+                        "; name it by the whole number the raster holds, such as " + form_);
+        return value;
+    }
+
     [[nodiscard]] const std::string& subject() const { return value_.subject; }
 
 private:
@@ -161,6 +174,28 @@ double sheet_constant(const Stated& stated) {
     return constant;
 }
 
+SoilGroup soil_letter(const Stated& stated) {
+    return static_cast<SoilGroup>(stated.choice({"A", "B", "C", "D"}));
+}
+
+void set_soil(SurfaceStudy& surface, const Stated& stated) {
+    if (stated.text().find_first_of("./:") != std::string::npos) {
+        surface.soil.file = stated.text();
+        return;
+    }
+    constexpr std::string_view letters = "ABCD";
+    if (stated.text().size() != 1 || letters.find(stated.text()) == std::string_view::npos)
+        throw stated.fault("is \"" + stated.text() +
+                           "\"; write \"A\" or \"B\" or \"C\" or \"D\", or the name of a raster, such as \"soils.tif\"");
+    surface.soil_group = soil_letter(stated);
+}
+
+void add_soil_class(SurfaceStudy& surface, const Stated& stated) {
+    const int value = stated.entry_class();
+    if (!surface.soil.classes.emplace(value, soil_letter(stated)).second)
+        throw stated.fault("gives the value " + std::to_string(value) + " a second time; keep one");
+}
+
 void add_formula(Study& study, const Stated& stated) {
     PeriodFormula formula{.return_period = stated.entry_period(),
                           .formula = intensity_formula_from_text(stated.text(), stated.subject())};
@@ -196,10 +231,11 @@ constexpr std::array setters{
     Setter{"surface.band", [](Study& s, const Stated& v) { s.surface.band = v.whole_number(1); }},
     Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = book(v); }},
     Setter{"surface.fallback_class", [](Study& s, const Stated& v) { s.surface.fallback_class = v.whole_number(0); }},
-    Setter{"surface.soil_group",
-           [](Study& s, const Stated& v) {
-               s.surface.soil_group = static_cast<SoilGroup>(v.choice({"A", "B", "C", "D"}));
-           }},
+    Setter{"surface.soil_group", [](Study& s, const Stated& v) { set_soil(s.surface, v); }},
+    Setter{"surface.soil_band", [](Study& s, const Stated& v) { s.surface.soil.band = v.whole_number(1); }},
+    Setter{"surface.soil_classes", [](Study& s, const Stated& v) { add_soil_class(s.surface, v); }},
+    Setter{"surface.fallback_soil_group",
+           [](Study& s, const Stated& v) { s.surface.soil.fallback_group = soil_letter(v); }},
     Setter{"surface.path_length", [](Study&, const Stated& v) { (void)v.choice({"grid"}, {"unbiased"}); }},
     Setter{"points.file", [](Study& s, const Stated& v) { s.points.file = v.text(); }},
     Setter{"points.name", [](Study& s, const Stated& v) { s.points.name = v.text(); }},

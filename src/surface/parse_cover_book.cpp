@@ -14,11 +14,13 @@
 namespace rillclock {
 namespace {
 
-constexpr std::array<std::string_view, 18> known_columns{
+constexpr std::array<std::string_view, 22> known_columns{
     "code",          "name",           "n_low", "n_typical",     "n_high",         "shallow_type",
     "shallow_k_m_s", "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source",
-    "from_memory",   "cn_a",           "cn_b",  "cn_c",          "cn_d",           "c"};
+    "from_memory",   "cn_a",           "cn_b",  "cn_c",          "cn_d",           "c",
+    "c_a",           "c_b",            "c_c",   "c_d"};
 constexpr std::array<std::string_view, 4> curve_number_columns{"cn_a", "cn_b", "cn_c", "cn_d"};
+constexpr std::array<std::string_view, 4> coefficient_columns{"c_a", "c_b", "c_c", "c_d"};
 constexpr std::array<std::string_view, 4> needed_columns{"code", "name", "n_typical", "source"};
 
 /// One row of a book, asked for by column name; knows where it stands for the sake of errors.
@@ -161,11 +163,25 @@ void read_curve_numbers(const BookRow& row, CoverClass& cover) {
     }
 }
 
-void read_runoff_coefficient(const BookRow& row, CoverClass& cover) {
-    cover.runoff_coefficient = row.number("c", Sign::not_negative);
-    if (cover.runoff_coefficient && !(*cover.runoff_coefficient <= 1))
-        throw row.fault("c",
-                        "is " + significant(*cover.runoff_coefficient) + "; a runoff coefficient lies between 0 and 1");
+std::optional<double> runoff_coefficient(const BookRow& row, std::string_view column) {
+    const auto number = row.number(column, Sign::not_negative);
+    if (number && !(*number <= 1))
+        throw row.fault(column, "is " + significant(*number) + "; a runoff coefficient lies between 0 and 1");
+    return number;
+}
+
+void read_runoff_coefficients(const BookRow& row, CoverClass& cover) {
+    cover.runoff_coefficient = runoff_coefficient(row, "c");
+    double last = 0.0;
+    for (std::size_t group = 0; group < coefficient_columns.size(); ++group) {
+        const std::string_view column = coefficient_columns[group];
+        const auto number = runoff_coefficient(row, column);
+        if (!number) continue;
+        if (*number < last)
+            throw row.fault(column, "is " + significant(*number) + ", below that of a soil group before it, " +
+                                        significant(last) + "; runoff coefficients rise from A to D");
+        cover.runoff_coefficients[group] = last = *number;
+    }
 }
 
 void require_no_ground(const BookRow& row) {
@@ -185,7 +201,7 @@ CoverClass cover_class(const BookRow& row) {
         read_shallow(row, cover);
     }
     read_curve_numbers(row, cover);
-    read_runoff_coefficient(row, cover);
+    read_runoff_coefficients(row, cover);
     cover.paved = row.yes("paved", cover.shallow_type == "pavement");
     return cover;
 }

@@ -1,10 +1,10 @@
 #pragma once
 
 #include <cstdint>
-#include <vector>
 
 #include "rillclock/core/quantity.hpp"
 #include "rillclock/raster/ground.hpp"
+#include "rillclock/surface/land.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
 
 namespace rillclock {
@@ -13,19 +13,19 @@ namespace rillclock {
 /// not matter; means are over cells.
 class CatchmentGround {
 public:
-    /// `slope` as of `land_slope`, `elevation_m` within ±8·10⁶ m.
-    void add(std::uint8_t surface, FixedArea area, double slope, double elevation_m);
+    /// `cover` is the class's position in the book, `slope` as of `land_slope`, `elevation_m` within ±8·10⁶ m.
+    void add(std::uint8_t cover, CellSoil soil, FixedArea area, double slope, double elevation_m);
     void add(const CatchmentGround& other);
 
-    /// Area of each surface class, by its position; classes beyond the last one met are left out.
-    [[nodiscard]] const std::vector<FixedArea>& area_by_class() const { return area_by_class_; }
+    /// Cells and area by cover class, soil group and slope of the land.
+    [[nodiscard]] const LandTally& land() const { return land_; }
     [[nodiscard]] std::int64_t cells() const { return cells_; }
     /// Average slope of the ground, not of any path. NaN without cells.
     [[nodiscard]] double land_slope() const;
     [[nodiscard]] double mean_elevation_m() const;
 
 private:
-    std::vector<FixedArea> area_by_class_;
+    LandTally land_;
     std::int64_t cells_ = 0;
     std::int64_t slope_sum_ = 0;      ///< in 2⁻²⁰
     std::int64_t elevation_sum_ = 0;  ///< in 2⁻¹⁰ m

@@ -48,6 +48,7 @@ struct Outlet {
     PointPath governing;                           ///< its time is the time of concentration
     PointPath longest;
     CatchmentGround ground;                        ///< of the whole catchment
+    LandTally own_land;                            ///< of the point's own subarea
     double elevation_m = 0.0;                      ///< level at which water gets out of the point's cell
     double storm_factor = 1.0;                     ///< of the storm that all this is under
     std::vector<PointStorm> storms;                ///< by return period; none where the study has no rain by duration
@@ -71,6 +72,7 @@ struct PointHeads {
     Head governing;                                       ///< the last once the tail is left out
     Cell farthest = no_cell;
     CatchmentGround ground;                               ///< of the whole catchment
+    LandTally own_land;                                   ///< of the point's own subarea
     double storm_factor = 1.0;                            ///< of the storm that all these are under
     std::vector<PointStorm> storms;                       ///< by return period
 };

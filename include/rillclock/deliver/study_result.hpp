@@ -29,11 +29,18 @@ struct ClassCount {
     std::int64_t cells = 0;
 };
 
+/// How many cells of the data have a soil group, or none.
+struct SoilCount {
+    CellSoil soil = CellSoil::unknown;
+    std::int64_t cells = 0;
+};
+
 /// What is known of the data as a whole.
 struct DataSummary {
     std::int64_t cells = 0;        ///< of the grid
     std::int64_t void_cells = 0;
     std::vector<ClassCount> classes;
+    std::vector<SoilCount> soils = {};    ///< where the study has a raster of them
 };
 
 /// Everything a finished study has to say; what the writers of this room write, and they compute nothing.

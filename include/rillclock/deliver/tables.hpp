@@ -26,6 +26,10 @@ namespace rillclock {
 /// and the ratio to the time along the governing path.
 [[nodiscard]] std::string methods_table(const StudyResult& result);
 
+/// `tables/land.csv`: one row a point and kind of land (cover class, soil group, slope of the land) in its catchment: cells and area in
+/// the whole of it and in the point's own subarea, curve number and runoff coefficient where the book has them.
+[[nodiscard]] std::string land_table(const StudyResult& result);
+
 /// `tables/review.csv`: one row a notice, those with the greatest effect on the time first; the last column is a person's.
 [[nodiscard]] std::string review_table(const StudyResult& result);
 

@@ -4,6 +4,7 @@
 #include <filesystem>
 #include <memory>
 #include <optional>
+#include <string>
 
 #include "rillclock/core/notice.hpp"
 #include "rillclock/io/reference_system.hpp"
@@ -12,10 +13,12 @@
 namespace rillclock {
 
 struct CoverOptions {
-    std::optional<int> band = {};  ///< from 1; needed only where the file has several
+    std::optional<int> band = {};   ///< from 1; needed only where the file has several
+    std::string role = "cover";     ///< "cover" or "soil", for messages and the codes of notices
+    std::string band_key = "band";  ///< what states the band, for messages
 };
 
-/// A land-cover raster, seen through another grid.
+/// A raster of classes, of land cover or soil, seen through another grid.
 struct CoverFile {
     /// Class of each cell of the target grid; `no_class` outside the file and where it has nodata.
     std::unique_ptr<BlockSource<std::int32_t>> source;
@@ -24,7 +27,7 @@ struct CoverFile {
     Notices notices;
 };
 
-/// Opens a land-cover raster on any grid and in any reference system, to be sampled onto `target` while it is read.
+/// Opens a raster of classes on any grid and in any reference system, to be sampled onto `target` while it is read.
 ///
 /// The class of a target cell is that of the cover cell that holds its centre. Where the two systems give the target's
 /// places the same coordinates (`same_coordinates`), nothing is transformed; otherwise centres are, exactly or with an

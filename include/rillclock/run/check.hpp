@@ -20,7 +20,10 @@ struct CheckReport {
 [[nodiscard]] CheckReport check(const Study& study);
 
 /// Memory that a run needs, in bytes, with room to spare: what is kept for every cell, and what tiles, strips of the rasters being
-/// written and the libraries need whatever the size. `wide` where elevations take eight bytes a cell (see ElevationStore).
-[[nodiscard]] constexpr double memory_need(double cells, bool wide) { return cells * (wide ? 30.0 : 20.0) + 350e6; }
+/// written and the libraries need whatever the size. `wide` where elevations take eight bytes a cell (see ElevationStore), `soil` where
+/// there is a raster of soil groups.
+[[nodiscard]] constexpr double memory_need(double cells, bool wide, bool soil = false) {
+    return cells * ((wide ? 30.0 : 20.0) + (soil ? 1.0 : 0.0)) + 350e6;
+}
 
 }  // namespace rillclock

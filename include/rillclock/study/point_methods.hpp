@@ -35,7 +35,7 @@ struct PointMethods {
 /// What a catchment is classed by, beside its ground.
 struct MethodGround {
     const CoverBook& book;
-    std::optional<SoilGroup> soil_group = {};
+    bool has_soil = false;  ///< whether the study says anything of soil groups
 };
 
 /// What was measured of a point's catchment: area; length, fall and equal-area slope of the longest path, its part

@@ -1,6 +1,7 @@
 #pragma once
 
 #include <cstdint>
+#include <map>
 #include <optional>
 #include <string>
 #include <vector>
@@ -37,11 +38,20 @@ struct TerrainStudy {
     Speed pond_speed = metres_per_second(2);  ///< infinite for "unlimited"
 };
 
+/// A raster of soil groups, and what its values mean.
+struct SoilStudy {
+    std::optional<std::string> file = {};         ///< relative to the study's folder
+    std::optional<int> band = {};                 ///< from 1; needed only where the file has several
+    std::map<int, SoilGroup> classes = {};        ///< by value; 1 to 4 are A to D where empty
+    std::optional<SoilGroup> fallback_group = {}; ///< for cells without one
+};
+
 struct SurfaceStudy {
     std::string cover = {};                    ///< raster; relative to the study's folder
     std::optional<int> band = {};              ///< from 1; needed only where the file has several
     std::string book = {};                     ///< a built-in book's name, or a CSV file relative to the study's folder
-    std::optional<SoilGroup> soil_group = {};  ///< of the whole study, for curve numbers
+    std::optional<SoilGroup> soil_group = {};  ///< of the whole study, for curve numbers and runoff coefficients
+    SoilStudy soil = {};                       ///< or a raster of soil groups
     std::optional<int> fallback_class = {};    ///< for codes the book does not know and cells without cover
 };
 

@@ -29,12 +29,19 @@ struct CoverClass {
     std::optional<Length> water_depth = {};  ///< mean depth; present for open water alone
     std::array<std::optional<double>, 4> curve_numbers =
         {};                                         ///< by soil group, above 0 to 100; where the book has them
-    std::optional<double> runoff_coefficient = {};  ///< 0 to 1; where the book has it
+    std::optional<double> runoff_coefficient = {};  ///< of any soil, 0 to 1; where the book has it
+    std::array<std::optional<double>, 4> runoff_coefficients =
+        {};                     ///< by soil group, 0 to 1, none below that before; where the book has them
     std::string source = {};                        ///< where the values are from
     bool from_memory = false;                       ///< a default to check before use
 
     [[nodiscard]] std::optional<double> curve_number(SoilGroup group) const {
         return curve_numbers[static_cast<std::size_t>(group)];
+    }
+    /// That of the soil group where it is known and the book has one, else that of any soil.
+    [[nodiscard]] std::optional<double> coefficient(std::optional<SoilGroup> group) const {
+        const auto own = group ? runoff_coefficients[static_cast<std::size_t>(*group)] : std::nullopt;
+        return own ? own : runoff_coefficient;
     }
     [[nodiscard]] bool is_open_water() const { return water_depth.has_value(); }
 };
@@ -64,9 +71,8 @@ private:
 /// - `paved` (yes or no; may be absent: then yes for the type "pavement" alone);
 /// - `water_depth_m` or `water_depth_ft`: a mean depth makes the class open water, whose n and shallow fields stay
 /// empty;
-/// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group, each may be absent or empty) and `c` (runoff
-/// coefficient, the same),
-///   for methods that time a catchment as one lump;
+/// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group), `c` (runoff coefficient of any soil) and `c_a` to `c_d`
+///   (of each soil group; each may be absent or empty), for methods that time a catchment as one lump;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
 ///
 /// `file` names the text in errors. Throws an input error with line and column for a column that is missing or unknown,

@@ -6,6 +6,7 @@
 
 #include "rillclock/core/quantity.hpp"
 #include "rillclock/raster/raster.hpp"
+#include "rillclock/surface/land.hpp"
 
 namespace rillclock {
 
@@ -16,12 +17,15 @@ struct SurfaceHydraulics {
     std::optional<Length> water_depth = {};        ///< mean depth, where the class is open water
 };
 
-/// The surface of each cell: a position in `classes`.
+/// The surface of each cell: a position in `classes`, and its soil where that differs from cell to cell.
 struct SurfaceTable {
     std::vector<SurfaceHydraulics> classes;
     Raster<std::uint8_t> index;
+    Raster<CellSoil> soil = {};                        ///< without cells where one soil is everywhere
+    CellSoil soil_everywhere = CellSoil::unknown;      ///< where `soil` has no cells
 
     [[nodiscard]] const SurfaceHydraulics& at(Cell cell) const { return classes[index[cell]]; }
+    [[nodiscard]] CellSoil soil_at(Cell cell) const { return soil.size() > 0 ? soil[cell] : soil_everywhere; }
 };
 
 }  // namespace rillclock

@@ -35,15 +35,19 @@ TEST_CASE("beside a void the slope is taken from the other side, and a cell alon
 
 TEST_CASE("grounds put together are the ground of all their cells") {
     CatchmentGround a;
-    a.add(3, 100, 0.1, 50);
+    a.add(3, CellSoil::b, 100, 0.1, 50);
     CatchmentGround b;
-    b.add(0, 50, 0.3, 70);
-    b.add(3, 10, 0.2, 60);
+    b.add(0, CellSoil::b, 50, 0.3, 70);
+    b.add(3, CellSoil::b, 10, 0.2, 60);
     a.add(b);
     CHECK(a.cells() == 3);
     CHECK(a.land_slope() == Approx(0.2).epsilon(1e-6));
     CHECK(a.mean_elevation_m() == Approx(60));
-    CHECK(a.area_by_class() == std::vector<FixedArea>{50, 0, 0, 110});
+    const std::vector<LandShare> land = a.land().shares();
+    REQUIRE(land.size() == 2);
+    CHECK(land[0].kind == LandKind{.cover = 0, .soil = CellSoil::b, .slope = SlopeBand::steep});
+    CHECK(land[1].cells == 2);
+    CHECK(land[1].area == 110);
 }
 
 }  // namespace

@@ -29,11 +29,11 @@ Segment segment(Regime regime, double length_m, double fall_m) {
 }
 
 /// A catchment of 20 000 m², three quarters grass and a quarter street, 300 m long with a fall of 15 m.
-Outlet outlet() {
+Outlet outlet(CellSoil soil = CellSoil::unknown) {
     Outlet made;
     made.area = to_fixed_area(20000);
-    for (int i = 0; i < 3; ++i) made.ground.add(0, to_fixed_area(5000), 0.06, 120);
-    made.ground.add(1, to_fixed_area(5000), 0.02, 110);
+    for (int i = 0; i < 3; ++i) made.ground.add(0, soil, to_fixed_area(5000), 0.06, 120);
+    made.ground.add(1, soil, to_fixed_area(5000), 0.02, 110);
     made.elevation_m = 100;
     made.longest.summary.length = to_fixed(300);
     made.longest.summary.fall_m = 15;
@@ -51,7 +51,7 @@ const MethodTime& by(const PointMethods& methods, std::string_view id) {
 
 TEST_CASE("a catchment is measured for the lump formulas, each slope by its own definition") {
     const CoverBook known = book();
-    const CatchmentMeasures m = measures_of(outlet(), {.book = known, .soil_group = SoilGroup::b});
+    const CatchmentMeasures m = measures_of(outlet(CellSoil::b), {.book = known, .has_soil = true});
     CHECK(in_square_metres(*m.area) == 20000);
     CHECK(in_metres(*m.longest_path) == 300);
     CHECK(*m.path_slope() == Approx(0.05));
@@ -67,7 +67,7 @@ TEST_CASE("a catchment is measured for the lump formulas, each slope by its own 
 
 TEST_CASE("every lump method has its row, with its time or what it lacks") {
     const CoverBook known = book();
-    const PointMethods methods = point_methods(outlet(), {.book = known, .soil_group = SoilGroup::b}, {});
+    const PointMethods methods = point_methods(outlet(CellSoil::b), {.book = known, .has_soil = true}, {});
     REQUIRE(methods.times.size() == lump_methods().size());
     CHECK(by(methods, "lump-nrcs-lag").answer.is_applicable());
     CHECK(*by(methods, "lump-nrcs-lag").ratio == Approx(in_seconds(*by(methods, "lump-nrcs-lag").answer.time) / 600));
@@ -79,13 +79,15 @@ TEST_CASE("every lump method has its row, with its time or what it lacks") {
 
 TEST_CASE("a method says which number the study or the book does not give") {
     const CoverBook known = book();
-    const auto why = [&](std::optional<SoilGroup> group) {
-        return by(point_methods(outlet(), {.book = known, .soil_group = group}, {}), "lump-nrcs-lag").answer.why_not;
+    const auto why = [&](bool has_soil, CellSoil soil) {
+        const MethodGround ground{.book = known, .has_soil = has_soil};
+        return by(point_methods(outlet(soil), ground, {}), "lump-nrcs-lag").answer.why_not;
     };
-    CHECK_THAT(why(std::nullopt), Contains("the curve number is not known: the study states no soil_group"));
-    CHECK_THAT(why(SoilGroup::d), Contains("the curve number is not known: the cover book has no cn_d for Grass"));
+    CHECK_THAT(why(false, CellSoil::unknown), Contains("the curve number is not known: the study states no soil_group"));
+    CHECK_THAT(why(true, CellSoil::d), Contains("the curve number is not known: the cover book has no cn_d for Grass"));
+    CHECK_THAT(why(true, CellSoil::unknown), Contains("4 cells of the catchment have no soil group"));
     Outlet with_pond = outlet();
-    with_pond.ground.add(2, to_fixed_area(100), 0, 100);
+    with_pond.ground.add(2, CellSoil::unknown, to_fixed_area(100), 0, 100);
     CHECK_THAT(by(point_methods(with_pond, {.book = known}, {}), "lump-faa").answer.why_not,
                Contains("the cover book has no c for Pond"));
     CHECK(*measures_of(with_pond, {.book = known}).overland_n == Approx(0.1525));
@@ -93,7 +95,7 @@ TEST_CASE("a method says which number the study or the book does not give") {
 
 TEST_CASE("the spread is that of the applicable methods alone") {
     const CoverBook known = book();
-    const PointMethods methods = point_methods(outlet(), {.book = known, .soil_group = SoilGroup::b}, {});
+    const PointMethods methods = point_methods(outlet(CellSoil::b), {.book = known, .has_soil = true}, {});
     std::vector<double> times;
     for (const MethodTime& time : methods.times)
         if (time.answer.is_applicable()) times.push_back(in_seconds(*time.answer.time));

@@ -282,5 +282,28 @@ TEST_CASE("text that is no TOML is refused with its line") {
     CHECK_THROWS_WITH(read("title = \"\xff\"\n"), Contains("cannot be read as TOML"));
 }
 
+TEST_CASE("a soil group is one letter for the whole study, or a raster of them") {
+    CHECK(read("surface.soil_group = \"C\"").surface.soil_group == SoilGroup::c);
+    const Study study = read("surface.soil_group = \"soils.tif\"\nsurface.soil_band = 2\n"
+                             "surface.fallback_soil_group = \"D\"\n[surface.soil_classes]\n1 = \"A\"\n13 = \"D\"");
+    CHECK_FALSE(study.surface.soil_group);
+    CHECK(study.surface.soil.file == "soils.tif");
+    CHECK(study.surface.soil.band == 2);
+    CHECK(study.surface.soil.fallback_group == SoilGroup::d);
+    CHECK(study.surface.soil.classes == std::map<int, SoilGroup>{{1, SoilGroup::a}, {13, SoilGroup::d}});
+}
+
+TEST_CASE("what is said of a soil raster is refused with the right form, and where there is none") {
+    const auto says = [](const std::string& text, const std::string& part) {
+        CHECK_THROWS_WITH(parse_study(smallest + "[surface.soil_classes]\n" + text, "town.toml"), Contains(part));
+    };
+    says("x = \"A\"", "surface.soil_classes.x (town.toml, line 9, column 5) stands under x; name it by the whole number");
+    says("1 = \"E\"", "write \"A\" or \"B\" or \"C\" or \"D\"");
+    says("1 = \"A\"\n01 = \"B\"", "gives the value 1 a second time");
+    says("1 = \"A\"", "add soil_group = \"soils.tif\"");
+    CHECK_THROWS_WITH(read("surface.soil_classes = \"A\""), Contains("write a table, such as { 1 = \"A\""));
+    CHECK_THROWS_WITH(read("surface.soil_group = \"b\""), Contains("or the name of a raster, such as \"soils.tif\""));
+}
+
 }  // namespace
 }  // namespace rillclock

@@ -200,5 +200,17 @@ TEST_CASE("a book that is not built in is refused, and its name is taken for a f
     CHECK_THROWS_WITH(built_in_book("nlcb"), Contains("did you mean nlcd?"));
 }
 
+TEST_CASE("runoff coefficients by soil group rise from A to D and lie between 0 and 1") {
+    const std::string begin = "code,name,n_typical,shallow_type,source,c,c_a,c_b,c_c,c_d\n1,Lawn,0.2,pavement,here,";
+    const CoverBook town = parse_cover_book(begin + "0.25,0.1,,0.2,0.3", "town.csv");
+    const CoverClass& lawn = *town.find(1);
+    CHECK(lawn.coefficient(SoilGroup::a) == 0.1);
+    CHECK(lawn.coefficient(SoilGroup::b) == 0.25);
+    CHECK(lawn.coefficient(std::nullopt) == 0.25);
+    CHECK_THROWS_WITH(parse_cover_book(begin + ",0.3,0.2,,", "town.csv"),
+                      Contains("town.csv, line 2, column 8 (c_b) is 0.2, below that of a soil group before it, 0.3"));
+    CHECK_THROWS_WITH(parse_cover_book(begin + ",,,,1.1", "town.csv"), Contains("(c_d) is 1.1; a runoff coefficient"));
+}
+
 }  // namespace
 }  // namespace rillclock
