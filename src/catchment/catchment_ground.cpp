@@ -57,7 +57,7 @@ double CatchmentGround::mean_elevation_m() const {
 
 double land_slope(const ElevationStore& elevations, double metres_per_unit, const Ground& ground, Cell cell) {
     const auto side = [&](Direction d) { return side_of(elevations, ground, cell, d); };
-    return metres_per_unit * std::hypot(slope_across(side(Direction::east), side(Direction::west)),
+    return metres_per_unit * ground.step_weight() * std::hypot(slope_across(side(Direction::east), side(Direction::west)),
                                         slope_across(side(Direction::south), side(Direction::north)));
 }
 

@@ -23,6 +23,7 @@ PathPiece piece_of(const StepPart& part, std::size_t position, const StepView& s
     piece.position = position;
     piece.surface = surface;
     piece.area = step.area;
+    if (part.regime == Regime::channel) piece.reach = step.reach;
     return piece;
 }
 

@@ -13,6 +13,7 @@ PointPath path_of(const PathCells& cells, const PathGround& ground, const Segmen
     path.pieces = path_pieces(ground, cells);
     path.segments = segments_of(ground, cells, rules);
     path.summary = summary_of(ground, cells);
+    path.doubts = doubts_of(ground, path.pieces);
     path.seconds = in_seconds(path.summary.time.under(ground.storm_factor));
     for (const Segment& segment : path.segments) path.end_to_end_s += segment.end_to_end_s;
     return path;

@@ -14,6 +14,7 @@ constexpr double least_fall_ratio = 0.8;
 constexpr double most_fall_ratio = 1.25;
 constexpr double most_tail = 1.25;
 constexpr double most_end_to_end = 1.5;
+constexpr double most_head_time = 0.25;
 
 std::string percent(double share) { return significant(100.0 * share, 3) + " %"; }
 std::string in_min(double s) { return significant(s / 60.0, 4) + " min"; }
@@ -29,6 +30,10 @@ public:
         fall();
         tail();
         end_to_end();
+        shallow();
+        channel();
+        channel_size();
+        head();
         return std::move(found_);
     }
 
@@ -94,6 +99,63 @@ private:
             "end-to-end slopes, as read from a map, would give " + in_min(path.end_to_end_s) + " where the steps add up to " +
                 in_min(path.seconds) + "; the path is uneven, so compare both with what is known of it",
             ratio, most_end_to_end, std::abs(path.end_to_end_s - path.seconds));
+    }
+
+    /// Of a part of the governing path, in percent.
+    [[nodiscard]] std::string share(const Beyond& beyond) const {
+        return percent(outlet_.governing.summary.share_of_length(beyond.length_m));
+    }
+
+    void shallow() {
+        const PathDoubts& doubts = outlet_.governing.doubts;
+        if (doubts.shallow_length.length_m > 0) {
+            say("shallow-flow-long",
+                "shallow flow runs " + significant(doubts.shallow_length.greatest, 4) +
+                    " m without a break, more than 1 000 ft (304.8 m), where it has usually found a channel; see channel_from, or map the channel",
+                doubts.shallow_length.greatest, in_metres(longest_shallow_flow), doubts.shallow_length.effect_s);
+        }
+        if (doubts.shallow_speed.length_m > 0) {
+            say("shallow-flow-fast",
+                "shallow flow is faster than 3 m/s along " + share(doubts.shallow_speed) + " of the governing path, at most " +
+                    significant(doubts.shallow_speed.greatest, 3) + " m/s; its formula was not made for ground so steep or smooth",
+                doubts.shallow_speed.greatest, in_metres_per_second(fastest_shallow_flow), doubts.shallow_speed.effect_s);
+        }
+    }
+
+    void channel() {
+        const PathDoubts& doubts = outlet_.governing.doubts;
+        if (doubts.channel_speed.length_m > 0) {
+            say("channel-fast",
+                "channel flow is faster than 5 m/s along " + share(doubts.channel_speed) + " of the governing path, at most " +
+                    significant(doubts.channel_speed.greatest, 3) + " m/s; few beds bear that, so look at n and the section",
+                doubts.channel_speed.greatest, in_metres_per_second(fastest_channel_flow), doubts.channel_speed.effect_s);
+        }
+        if (doubts.supercritical.length_m > 0) {
+            say("channel-supercritical",
+                "channel flow is supercritical along " + share(doubts.supercritical) + " of the governing path, Froude number at most " +
+                    significant(doubts.supercritical.greatest, 3) +
+                    "; natural channels seldom keep that up, so n is likely too low or the section too large there",
+                doubts.supercritical.greatest, 1.0, doubts.supercritical.effect_s);
+        }
+    }
+
+    void channel_size() {
+        const Beyond& small = outlet_.governing.doubts.small_channels;
+        if (!(small.length_m > 0)) return;
+        say("channel-smaller-than-its-law",
+            share(small) + " of the governing path is channel that drains less than the smallest channels its width and depth were made " +
+                "from, down to one part in " + significant(small.greatest, 3) + "; state a section there, or a hydraulic_radius",
+            small.greatest, 1.0, small.effect_s);
+    }
+
+    void head() {
+        const double time = outlet_.time_of_concentration_s();
+        const double head_s = outlet_.governing.doubts.head_s;
+        if (!(head_s > most_head_time * time)) return;
+        say("slow-head",
+            "the uppermost 5 % of the governing path takes " + percent(head_s / time) + " of its time (" + in_min(head_s) +
+                "); look at what grows there and at sheet_limit",
+            head_s / time, most_head_time, head_s - most_head_time * time);
     }
 
     const Outlet& outlet_;

@@ -19,12 +19,16 @@ std::ptrdiff_t slope_class(const PathPiece& piece) {
 /// Follows a path piece by piece and says where one formula's inputs end.
 class FormulaCuts {
 public:
+    explicit FormulaCuts(std::span<const SurfaceHydraulics> classes) : classes_(classes) {}
+
     /// Whether a segment must begin with this piece.
     bool begins(const PathPiece& piece) {
-        const bool cut = !start_ || piece.part.regime != start_->part.regime || changes_surface(piece) || jumps(piece) ||
-                         outgrows(piece);
+        const bool cut = !begun_ || piece.part.regime != start_.part.regime || changes_surface(piece) || jumps(piece) ||
+                         outgrows(piece) || changes_section(piece) || passes_chart_point(piece);
         if (cut) {
+            begun_ = true;
             start_ = piece;
+            interval_ = chart_interval(piece);
             index_m_ = unknown;
         }
         if (piece.part.regime == Regime::sheet && !piece.part.ponded) index_m_ = piece.part.index_to_m;
@@ -33,19 +37,42 @@ public:
 
 private:
     [[nodiscard]] bool changes_surface(const PathPiece& piece) const {
-        return piece.part.regime != Regime::channel && piece.surface != start_->surface;
+        return piece.part.regime != Regime::channel && piece.surface != start_.surface;
     }
     /// Ponded ground lets u jump like a joining branch does: its growth of u is not the formula's.
     [[nodiscard]] bool jumps(const PathPiece& piece) const {
         return piece.part.regime == Regime::sheet && !piece.part.ponded && index_m_ != unknown &&
                piece.part.index_from_m != index_m_;
     }
+    [[nodiscard]] bool changes_section(const PathPiece& piece) const {
+        return piece.part.regime == Regime::channel && section_of(piece) != section_of(start_);
+    }
+    static std::uint32_t section_of(const PathPiece& piece) { return piece.reach ? piece.reach->section : no_section; }
+
     [[nodiscard]] bool outgrows(const PathPiece& piece) const {
         return piece.part.regime == Regime::channel &&
-               static_cast<double>(piece.area) > area_growth * static_cast<double>(start_->area);
+               static_cast<double>(piece.area) > area_growth * static_cast<double>(start_.area);
     }
 
-    std::optional<PathPiece> start_;
+    /// Between which points of a chart the piece's slope lies.
+    [[nodiscard]] std::size_t chart_interval(const PathPiece& piece) const {
+        if (piece.part.regime != Regime::shallow || piece.part.ponded) return no_interval;
+        const auto& line = classes_[piece.surface].shallow_line;
+        return line ? line->law_at(piece.part.slope).interval : no_interval;
+    }
+    /// A stretch that begins ponded takes the interval of its first piece that is not.
+    bool passes_chart_point(const PathPiece& piece) {
+        const std::size_t interval = chart_interval(piece);
+        if (interval == no_interval) return false;
+        if (interval_ == no_interval) interval_ = interval;
+        return !classes_[piece.surface].shallow_line->holds(interval_, piece.part.slope);
+    }
+
+    std::span<const SurfaceHydraulics> classes_;
+    static constexpr std::size_t no_interval = static_cast<std::size_t>(-1);   ///< where no chart times a piece
+    std::size_t interval_ = no_interval;
+    PathPiece start_;
+    bool begun_ = false;
     static constexpr double unknown = -1.0;
     double index_m_ = unknown;  ///< u where the last unponded piece ended
 };
@@ -87,9 +114,10 @@ void add_slope_cuts(std::span<const PathPiece> pieces, std::size_t first, std::s
 
 std::span<const double> slope_class_bounds() { return slope_bounds; }
 
-std::vector<std::size_t> segment_starts(std::span<const PathPiece> pieces, double shortest_m) {
+std::vector<std::size_t> segment_starts(std::span<const PathPiece> pieces, std::span<const SurfaceHydraulics> classes,
+                                        double shortest_m) {
     std::vector<std::size_t> formula_starts;
-    FormulaCuts cuts;
+    FormulaCuts cuts(classes);
     for (std::size_t i = 0; i < pieces.size(); ++i) {
         if (cuts.begins(pieces[i])) formula_starts.push_back(i);
     }

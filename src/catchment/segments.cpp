@@ -5,7 +5,6 @@
 
 #include "rillclock/hydraulics/manning.hpp"
 #include "rillclock/hydraulics/open_water.hpp"
-#include "rillclock/hydraulics/shallow_flow.hpp"
 #include "segment_cuts.hpp"
 
 namespace rillclock {
@@ -16,11 +15,17 @@ double inverse_conveyance(double radius_m) { return 1.0 / std::cbrt(radius_m * r
 
 /// The sums over the unponded pieces of one segment from which its equivalent slope and radius are made.
 struct Sums {
-    double by_slope = 0.0;             ///< Σ d·S^-½
+    double by_slope = 0.0;             ///< Σ d·S^-½, or Σ d·S^-b by a chart
+    FixedTime sheet = 0;               ///< storm part of the time
     double by_radius = 0.0;            ///< Σ d·R^-⅔
     double by_radius_and_slope = 0.0;  ///< Σ d·R^-⅔·S^-½
     std::size_t pieces = 0;
 };
+
+/// S^-b; the root is kept apart for its bits.
+double inverse_power(double slope, double exponent) {
+    return exponent == 0.5 ? 1.0 / std::sqrt(slope) : std::pow(slope, -exponent);
+}
 
 void count_unponded(const StepPart& part, Sums& sums, Segment& segment) {
     const bool first = sums.pieces++ == 0;
@@ -29,7 +34,8 @@ void count_unponded(const StepPart& part, Sums& sums, Segment& segment) {
     segment.slope_greatest = std::max(segment.slope_greatest, part.slope);
     if (first) segment.index_from_m = part.index_from_m;
     segment.index_to_m = part.index_to_m;
-    sums.by_slope += part.length_m / std::sqrt(part.slope);
+    sums.by_slope += part.length_m * inverse_power(part.slope, segment.shallow_exponent);
+    sums.sheet += part.time.storm;
     if (part.regime != Regime::channel) return;
     if (first) segment.radius_from_m = part.radius_m;
     segment.radius_to_m = part.radius_m;
@@ -46,13 +52,27 @@ void count(const PathPiece& piece, Sums& sums, Segment& segment) {
 
 double square(double x) { return x * x; }
 
-void set_equivalents(const Sums& sums, double sheet_n, Segment& segment) {
+double sheet_slope(const Sums& sums, const SurfaceHydraulics& surface, const SheetRules& sheet, const Segment& segment) {
+    switch (sheet.basis) {
+        case SheetBasis::index:
+            return square(surface.sheet_n * segment.length_m / (segment.index_to_m - segment.index_from_m));
+        case SheetBasis::characteristic:
+            return sheet.formula.characteristic_slope(surface.sheet_n, metres(segment.index_from_m), metres(segment.index_to_m),
+                                                      seconds(from_fixed(sums.sheet) / surface.sheet_factor));
+    }
+    return 0.0;
+}
+
+double shallow_slope(const Sums& sums, const Segment& segment) {
+    const double power = segment.length_m / sums.by_slope;
+    return segment.shallow_exponent == 0.5 ? square(power) : std::pow(power, 1.0 / segment.shallow_exponent);
+}
+
+void set_equivalents(const Sums& sums, const SurfaceHydraulics& surface, const SheetRules& sheet, Segment& segment) {
     if (!(segment.length_m > 0)) return;
     switch (segment.regime) {
-        case Regime::sheet:
-            segment.slope_equivalent = square(sheet_n * segment.length_m / (segment.index_to_m - segment.index_from_m));
-            break;
-        case Regime::shallow: segment.slope_equivalent = square(segment.length_m / sums.by_slope); break;
+        case Regime::sheet: segment.slope_equivalent = sheet_slope(sums, surface, sheet, segment); break;
+        case Regime::shallow: segment.slope_equivalent = shallow_slope(sums, segment); break;
         case Regime::channel:
             segment.slope_equivalent = square(sums.by_radius / sums.by_radius_and_slope);
             segment.radius_equivalent_m = std::pow(segment.length_m / sums.by_radius, 1.5);
@@ -73,7 +93,7 @@ public:
 
     [[nodiscard]] std::vector<Segment> segments(const SegmentRules& by) const {
         const double length = from_fixed(path_.front().flow_distance - path_.back().flow_distance);
-        std::vector<std::size_t> starts = segment_starts(pieces_, std::max(in_metres(by.shortest), by.shortest_share * length));
+        std::vector<std::size_t> starts = segment_starts(pieces_, ground_.classes, std::max(in_metres(by.shortest), by.shortest_share * length));
         starts.push_back(pieces_.size());
         std::vector<Segment> segments;
         for (std::size_t i = 0; i + 1 < starts.size(); ++i) segments.push_back(segment(starts[i], starts[i + 1]));
@@ -85,16 +105,36 @@ private:
         Segment made;
         made.regime = pieces_[first].part.regime;
         if (made.regime != Regime::channel) made.surface = pieces_[first].surface;
+        if (made.regime == Regime::channel) set_reach(pieces_[first], pieces_[end - 1], made);
         made.first_piece = first;
         made.last_piece = end - 1;
         made.area_from = pieces_[first].area;
         made.area_to = pieces_[end - 1].area;
         made.fall_m = fall_m(pieces_[first], pieces_[end - 1]);
+        set_shallow_law(first, end, made);
         Sums sums;
         for (std::size_t i = first; i < end; ++i) count(pieces_[i], sums, made);
-        set_equivalents(sums, surface(made).sheet_n, made);
+        set_equivalents(sums, surface(made), rules_.sheet, made);
         made.end_to_end_s = end_to_end_seconds(made);
         return made;
+    }
+
+    /// Between two points of a chart one power of the slope times all that is not ponded.
+    void set_shallow_law(std::size_t first, std::size_t end, Segment& made) const {
+        if (made.regime != Regime::shallow) return;
+        made.shallow_k_m_per_s = in_metres_per_second(surface(made).shallow_k);
+        const auto& line = surface(made).shallow_line;
+        if (!line) return;
+        while (first + 1 < end && pieces_[first].part.ponded) ++first;
+        const VelocityLaw law = line->law_at(pieces_[first].part.slope);
+        made.shallow_k_m_per_s = in_metres_per_second(law.at_slope_1);
+        made.shallow_exponent = law.exponent;
+    }
+
+    void set_reach(const PathPiece& first, const PathPiece& last, Segment& made) const {
+        made.channel_n = first.reach ? first.reach->n : rules_.channel.n;
+        made.reach_from = first.reach;
+        made.reach_to = last.reach;
     }
 
     [[nodiscard]] const SurfaceHydraulics& surface(const Segment& made) const {
@@ -119,13 +159,8 @@ private:
         const double slope = std::max(made.end_to_end_slope(), floor);
         const double length = made.whole_length_m();
         switch (made.regime) {
-            case Regime::sheet: {
-                const double index_to = made.index_from_m + surface(made).sheet_n * length / std::sqrt(slope);
-                return ground_.storm_factor *
-                       in_seconds(rules_.sheet.formula.at_unit_storm(metres(made.index_from_m), metres(index_to)));
-            }
-            case Regime::shallow:
-                return length / in_metres_per_second(shallow_velocity(surface(made).shallow_k, slope));
+            case Regime::sheet: return ground_.storm_factor * unit_sheet_seconds(made, length, slope);
+            case Regime::shallow: return length / in_metres_per_second(shallow_speed(surface(made), slope));
             case Regime::channel: return channel_seconds(made, length, slope);
             case Regime::water: return length / in_metres_per_second(wave_celerity(*surface(made).water_depth));
             case Regime::none: break;
@@ -133,10 +168,21 @@ private:
         return 0.0;
     }
 
+    [[nodiscard]] double unit_sheet_seconds(const Segment& made, double length, double slope) const {
+        const Length from = metres(made.index_from_m);
+        const SheetStretch stretch{.n = surface(made).sheet_n, .length = metres(length), .slope = slope};
+        switch (rules_.sheet.basis) {
+            case SheetBasis::index: return in_seconds(rules_.sheet.formula.at_unit_storm(from, from + sheet_index(stretch)));
+            case SheetBasis::characteristic:
+                return surface(made).sheet_factor * in_seconds(rules_.sheet.formula.along_characteristic(stretch, from));
+        }
+        return 0.0;
+    }
+
     [[nodiscard]] double channel_seconds(const Segment& made, double length, double slope) const {
-        const Length at_end = rules_.channel.radius_at(square_metres(from_fixed_area(made.area_to)));
+        const Length at_end = channel_radius({.area = made.area_to, .reach = made.reach_to}, rules_.channel);
         const Length radius = made.radius_equivalent_m > 0 ? metres(made.radius_equivalent_m) : at_end;
-        const ManningReach reach{.n = rules_.channel.n, .hydraulic_radius = radius, .slope = slope};
+        const ManningReach reach{.n = made.channel_n, .hydraulic_radius = radius, .slope = slope};
         return in_seconds(manning_time(metres(length), reach));
     }
 

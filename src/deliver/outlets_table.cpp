@@ -40,11 +40,17 @@ void add_time_columns(const ReportScale& scale, TableWriter<Outlet>& table) {
 
 void add_path_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
     const std::string m = scale.length_unit();
+    const double weight = step_weight(result);
+    const auto grid = [=](const PointPath& path) { return scale.length(from_fixed(path.summary.length)) / weight; };
     table.column("governing_length_" + m, [=](const Outlet& o) { return five_digits(scale.length(from_fixed(o.governing.summary.length))); })
+        .column("governing_grid_length_" + m, [=](const Outlet& o) { return five_digits(grid(o.governing)); })
+        .column("governing_unbiased_length_" + m, [=](const Outlet& o) { return five_digits(unbiased_step_weight * grid(o.governing)); })
         .column("governing_fall_" + m, [=](const Outlet& o) { return five_digits(scale.length(o.governing.summary.fall_m)); })
         .column("governing_head_x", [&](const Outlet& o) { return coordinate(result.system, result.grid.centre(o.governing.cells.front()).x); })
         .column("governing_head_y", [&](const Outlet& o) { return coordinate(result.system, result.grid.centre(o.governing.cells.front()).y); })
         .column("longest_length_" + m, [=](const Outlet& o) { return five_digits(scale.length(from_fixed(o.longest.summary.length))); })
+        .column("longest_grid_length_" + m, [=](const Outlet& o) { return five_digits(grid(o.longest)); })
+        .column("longest_unbiased_length_" + m, [=](const Outlet& o) { return five_digits(unbiased_step_weight * grid(o.longest)); })
         .column("longest_time_min", [](const Outlet& o) { return in_minutes_text(o.longest.seconds); });
 }
 

@@ -85,6 +85,7 @@ Json sheet_parameters(const StudyResult& result) {
     Json json = {{"method", timing.sheet}, {"coefficient", sheet.formula.coefficient}, {"exponent", sheet.formula.exponent}};
     if (timing.is_kinematic()) {
         json["constant"] = timing.sheet_constant.value_or(kinematic_constant_hec22);
+        json["rain"] = timing.sheet_takes_runoff ? "runoff" : "rainfall";
         json["storm"] = words(timing.storm.value_or(StormDuration::whole_path));
         json["reference_storm_factor"] = sheet.storm_factor;
         json["tolerance_s"] = in_seconds(StormSearch{}.tolerance);
@@ -101,15 +102,30 @@ Json power_law(const PowerLaw& law) {
     return {{"coefficient_m", in_metres(law.coefficient)}, {"per_m2", in_square_metres(law.unit)}, {"exponent", law.exponent}};
 }
 
-Json channel_parameters(const ChannelRules& channel) {
+const char* shallow_words(ShallowRule rule) {
+    switch (rule) {
+        case ShallowRule::by_cover: return "by cover";
+        case ShallowRule::paved_and_unpaved: return "paved and unpaved";
+        case ShallowRule::chart: return "chart";
+    }
+    return "";
+}
+
+Json channel_parameters(const StudyResult& result) {
+    const ChannelRules& channel = result.rules.channel;
+    const ChannelSize* published = result.study.timing.channel.published_size();
     Json json = {{"n", channel.n}};
     json["from_area_m2"] = channel.from_area ? Json(in_square_metres(*channel.from_area)) : Json(nullptr);
     if (channel.hydraulic_radius) {
         json["hydraulic_radius_m"] = in_metres(*channel.hydraulic_radius);
     } else {
+        json["region"] = published == nullptr ? Json(nullptr) : Json(published->region);
         json["width"] = power_law(channel.width);
         json["depth"] = power_law(channel.depth);
     }
+    json["flow"] = result.study.timing.channel.design_storm ? "design storm" : "bankfull";
+    if (result.study.timing.channel.design_storm) json["side_slope"] = result.study.timing.channel.side_slope.value_or(0.0);
+    if (!result.sections.empty()) json["mapped_sections"] = result.sections.size();
     return json;
 }
 
@@ -175,8 +191,9 @@ Json soil_parameters(const SurfaceStudy& surface) {
 Json parameters_json(const StudyResult& result) {
     Json json = {{"terrain", terrain_parameters(result.rules)},
             {"sheet", sheet_parameters(result)},
-            {"shallow", result.study.timing.shallow == ShallowRule::by_cover ? "by cover" : "paved and unpaved"},
-            {"channel", channel_parameters(result.rules.channel)},
+            {"shallow", shallow_words(result.study.timing.shallow)},
+            {"channel", channel_parameters(result)},
+            {"path_length", {{"rule", result.study.surface.unbiased_lengths ? "unbiased" : "grid"}, {"step_weight", step_weight(result)}}},
             {"book", result.book.name()},
             {"soil_group", soil_parameters(result.study.surface)},
             {"ignore_tail", result.study.timing.ignore_tail},
@@ -186,15 +203,46 @@ Json parameters_json(const StudyResult& result) {
     return json;
 }
 
+/// Where a channel's hydraulic radius comes from.
+std::string section_words(const StudyResult& result, const Segment& segment) {
+    const MappedSection* mapped = section_of(result, segment);
+    const SectionShape shape = mapped == nullptr ? SectionShape::by_area : mapped->shape;
+    switch (shape) {
+        case SectionShape::trapezoid: return "trapezoid";
+        case SectionShape::gutter: return "gutter";
+        case SectionShape::by_area: break;
+    }
+    return result.rules.channel.hydraulic_radius ? "stated" : "by area";
+}
+
+Json flow_json(const DesignFlow& flow) {
+    return {{"arrival_min", minutes_json(flow.arrival_s)},
+            {"intensity_mm_per_h", digits(in_millimetres_per_hour(flow.intensity), 8)},
+            {"runoff_area_m2", digits(flow.runoff_area_m2)},
+            {"flow_m3_per_s", digits(flow.m3_per_s)},
+            {"slope", digits(flow.slope)},
+            {"bottom_width_m", digits(flow.bottom_width_m)},
+            {"side_slope", digits(flow.side_slope)},
+            {"depth_m", digits(flow.depth_m)}};
+}
+
 /// What the formula of the segment's regime needs beside its length and slope.
 void add_formula_numbers(const StudyResult& result, const Segment& s, Json& json) {
     switch (s.regime) {
         case Regime::none: return;
-        case Regime::sheet: json["n"] = digits(cover_of(result, s)->n_typical); return;
-        case Regime::shallow: json["k_m_per_s"] = digits(in_metres_per_second(result.surface_classes[*s.surface].shallow_k)); return;
+        case Regime::sheet:
+            json["n"] = digits(cover_of(result, s)->n_typical);
+            if (result.study.timing.sheet_takes_runoff) json["runoff_coefficient"] = digits(*cover_of(result, s)->coefficient(result.study.surface.soil_group));
+            return;
+        case Regime::shallow:
+            json["k_m_per_s"] = digits(s.shallow_k_m_per_s);
+            json["slope_exponent"] = digits(s.shallow_exponent);
+            return;
         case Regime::channel:
-            json["n"] = digits(result.rules.channel.n);
+            json["n"] = digits(s.channel_n);
             json["hydraulic_radius_m"] = digits(s.radius_equivalent_m);
+            json["section"] = section_words(result, s);
+            if (s.reach_to != nullptr && s.reach_to->flow.m3_per_s > 0) json["flow_at_end"] = flow_json(s.reach_to->flow);
             return;
         case Regime::water: json["water_depth_m"] = digits(in_metres(*cover_of(result, s)->water_depth)); return;
     }
@@ -211,7 +259,10 @@ Json segment_json(const StudyResult& result, const SegmentRow& row) {
                  {"fall_m", digits(s.fall_m)},
                  {"time_s", number(row.time_s, 6)},
                  {"ponded_time_s", number(row.pond_time_s, 6)}};
-    if (s.regime == Regime::sheet) json["sheet_index_m"] = {number(s.index_from_m, 6), number(s.index_to_m, 6)};
+    if (s.regime == Regime::sheet) {
+        const char* place = result.study.timing.is_kinematic() ? "sheet_distance_m" : "sheet_index_m";
+        json[place] = {number(s.index_from_m, 6), number(s.index_to_m, 6)};
+    }
     add_formula_numbers(result, s, json);
     return json;
 }

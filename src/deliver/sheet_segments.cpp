@@ -17,7 +17,7 @@ struct PathWriter {
     const SheetMatter& matter;
     SheetWriter& sheet;
     double running_s = 0.0;
-    double index_m = 0.0;  ///< at the end of the segment before
+    double index_m = 0.0;  ///< or distance from the divide, at the end of the segment before
 
     [[nodiscard]] std::string metres_text(double m) const { return printed(matter.scale.length(m)); }
     [[nodiscard]] std::string unit() const { return " " + matter.scale.length_unit(); }
@@ -53,7 +53,28 @@ std::string sheet_rain(const SheetMatter& matter) {
     return printed(matter.scale.rain(millimetres(number_of(matter.result.at("parameters").at("sheet"), "rain_2_year_24_hour_mm"))));
 }
 
+/// Kinematic sheet flow from one distance below the divide to another.
+void write_kinematic(const SheetJson& segment, PathWriter& to) {
+    const double from_m = segment.at("sheet_distance_m").at(0).get<double>();
+    const double to_m = segment.at("sheet_distance_m").at(1).get<double>();
+    const ReportScale& scale = to.matter.scale;
+    const std::string x0 = index_text(scale.length(from_m), scale.length(to_m - from_m));
+    const std::string x1 = index_text(scale.length(to_m), scale.length(to_m - from_m));
+    if (from_m - to.index_m > 1e-3 * std::max(1.0, from_m)) {
+        to.sheet.words("A longer branch joins here: x goes on at " + x0 + to.unit() + ".");
+    }
+    to.index_m = to_m;
+    to.sheet.calculation("x", x0 + " + " + to.metres_text(length_of(segment)), x1 + to.unit());
+    const std::string rain = sheet_rain(to.matter);
+    const bool runoff = is_number(segment, "runoff_coefficient");
+    const std::string under = runoff ? "(" + printed(number_of(segment, "runoff_coefficient")) + " x " + rain + ")" : rain;
+    to.sheet.calculation("T", sheet_constant(to.matter) + " x (" + printed(number_of(segment, "n")) + " / sqrt(" +
+                                  printed(number_of(segment, "slope_equivalent")) + "))^0.6 x (" + x1 + "^0.6 - " + x0 + "^0.6) / " + under + "^0.4",
+                         printed_minutes(formula_seconds(segment)));
+}
+
 void write_sheet_flow(const SheetJson& segment, PathWriter& to) {
+    if (to.matter.is_kinematic()) return write_kinematic(segment, to);
     const double from_m = segment.at("sheet_index_m").at(0).get<double>();
     const double to_m = segment.at("sheet_index_m").at(1).get<double>();
     const ReportScale& scale = to.matter.scale;
@@ -66,9 +87,7 @@ void write_sheet_flow(const SheetJson& segment, PathWriter& to) {
     to.index_m = to_m;
     to.sheet.calculation("u", u0 + " + " + printed(number_of(segment, "n")) + " x " + to.metres_text(length_of(segment)) + " / sqrt(" +
                                   printed(number_of(segment, "slope_equivalent")) + ")", u1 + to.unit());
-    const std::string power = to.matter.is_kinematic() ? "^0.6" : "^0.8";
-    const std::string rain = sheet_rain(to.matter) + (to.matter.is_kinematic() ? "^0.4" : "^0.5");
-    to.sheet.calculation("T", sheet_constant(to.matter) + " x (" + u1 + power + " - " + u0 + power + ") / " + rain,
+    to.sheet.calculation("T", sheet_constant(to.matter) + " x (" + u1 + "^0.8 - " + u0 + "^0.8) / " + sheet_rain(to.matter) + "^0.5",
                          printed_minutes(formula_seconds(segment)));
 }
 
@@ -80,8 +99,10 @@ void write_velocity(const SheetJson& segment, const std::string& expression, Pat
 }
 
 void write_shallow(const SheetJson& segment, PathWriter& to) {
-    write_velocity(segment, printed(to.matter.scale.speed(number_of(segment, "k_m_per_s"))) + " x sqrt(" +
-                                printed(number_of(segment, "slope_equivalent")) + ")", to);
+    const std::string slope = printed(number_of(segment, "slope_equivalent"));
+    const double exponent = number_of(segment, "slope_exponent");
+    const std::string power = exponent == 0.5 ? "sqrt(" + slope + ")" : slope + "^" + printed(exponent);
+    write_velocity(segment, printed(to.matter.scale.speed(number_of(segment, "k_m_per_s"))) + " x " + power, to);
 }
 
 void write_channel(const SheetJson& segment, PathWriter& to) {
@@ -89,6 +110,18 @@ void write_channel(const SheetJson& segment, PathWriter& to) {
     write_velocity(segment, factor + " / " + printed(number_of(segment, "n")) + " x " +
                                 to.metres_text(number_of(segment, "hydraulic_radius_m")) + "^(2/3) x sqrt(" +
                                 printed(number_of(segment, "slope_equivalent")) + ")", to);
+}
+
+/// How the last cell of a channel carries the design storm.
+void write_design_flow(const SheetJson& flow, PathWriter& to) {
+    const ReportScale& scale = to.matter.scale;
+    const bool us = scale.length_unit() == "ft";
+    to.sheet.words("At its end the water arrives after " + printed(number_of(flow, "arrival_min")) + " min; the bottom is " +
+                   to.metres_text(number_of(flow, "bottom_width_m")) + to.unit() + " wide, the sides " + printed(number_of(flow, "side_slope")) +
+                   " to 1, the slope " + printed(number_of(flow, "slope")) + " and the normal depth " + to.metres_text(number_of(flow, "depth_m")) + to.unit() + ".");
+    to.sheet.calculation("Q", printed(scale.intensity(millimetres_per_hour(number_of(flow, "intensity_mm_per_h")))) + " x " +
+                                  printed(scale.area(number_of(flow, "runoff_area_m2"))) + (us ? " x 1.0083" : " / 360"),
+                         printed(scale.flow(number_of(flow, "flow_m3_per_s"))) + (us ? " ft3/s" : " m3/s"));
 }
 
 void write_water(const SheetJson& segment, PathWriter& to) {
@@ -135,6 +168,7 @@ void write_segment(const SheetJson& segment, std::size_t number, PathWriter& to)
         if (regime == "sheet") write_sheet_flow(segment, to);
         if (regime == "shallow") write_shallow(segment, to);
         if (regime == "channel") write_channel(segment, to);
+        if (segment.contains("flow_at_end")) write_design_flow(segment.at("flow_at_end"), to);
         if (regime == "water") write_water(segment, to);
     }
     if (number_of(segment, "ponded_time_s") > 0) write_pond(segment, to);
@@ -158,12 +192,24 @@ std::set<std::string> regimes_of(const SheetMatter& matter) {
     return regimes;
 }
 
+/// Where the hydraulic radii of its channels come from.
+std::set<std::string> sections_of(const SheetMatter& matter) {
+    std::set<std::string> sections;
+    for (const char* path : {"governing_path", "longest_path"}) {
+        for (const SheetJson& segment : matter.outlet.at(path).at("segments")) {
+            if (words_of(segment, "regime") == "channel") sections.insert(words_of(segment, "section"));
+        }
+    }
+    return sections;
+}
+
 std::string sheet_words(const SheetMatter& matter) {
     const std::string m = matter.scale.length_unit();
     const std::string rain = m == "ft" ? " in" : " mm";
     if (matter.is_kinematic()) {
-        return "T = " + sheet_constant(matter) + " x (u1^0.6 - u0^0.6) / i^0.4 in min, with u = sum of n L / sqrt(S) in " + m + " and i = " +
-               sheet_rain(matter) + rain + "/h";
+        const bool runoff = words_of(matter.result.at("parameters").at("sheet"), "rain") == "runoff";
+        return "T = " + sheet_constant(matter) + " x (n / sqrt(S))^0.6 x (x1^0.6 - x0^0.6) / " + (runoff ? "(C x i)" : "i") +
+               "^0.4 in min, with x = distance from the divide in " + m + " and i = " + sheet_rain(matter) + rain + "/h";
     }
     return "T = " + sheet_constant(matter) + " x (u1^0.8 - u0^0.8) / P2^0.5 in min, with u = sum of n L / sqrt(S) in " + m + " and P2 = " +
            sheet_rain(matter) + rain;
@@ -202,13 +248,18 @@ void write_formulas(const SheetMatter& matter, SheetWriter& sheet) {
         write_source(matter.is_kinematic() ? "sheet-kinematic" : "sheet-nrcs", sheet);
     }
     if (regimes.contains("shallow")) {
-        sheet.fact("shallow", "V = k x sqrt(S), T = L / (60 V) in min");
-        write_source(words_of(matter.result.at("parameters"), "shallow") == "by cover" ? "shallow-by-cover" : "shallow-paved-unpaved", sheet);
+        const std::string rule = words_of(matter.result.at("parameters"), "shallow");
+        sheet.fact("shallow", rule == "chart" ? "V = k x S^b between two points of the chart, T = L / (60 V) in min" : "V = k x sqrt(S), T = L / (60 V) in min");
+        write_source(rule == "by cover" ? "shallow-by-cover" : rule == "chart" ? "shallow-chart" : "shallow-paved-unpaved", sheet);
     }
     if (regimes.contains("channel")) {
         sheet.fact("channel", "V = " + factor + " / n x R^(2/3) x sqrt(S), T = L / (60 V) in min");
         write_source("channel-manning", sheet);
-        if (!matter.result.at("parameters").at("channel").contains("hydraulic_radius_m")) write_source("channel-size-by-area", sheet);
+        const std::set<std::string> sections = sections_of(matter);
+        if (sections.contains("by area")) write_source("channel-size-by-area", sheet);
+        if (sections.contains("trapezoid")) write_source("channel-section", sheet);
+        if (sections.contains("gutter")) write_source("gutter", sheet);
+        if (words_of(matter.result.at("parameters").at("channel"), "flow") == "design storm") write_source("channel-design-storm", sheet);
     }
     if (regimes.contains("water")) {
         sheet.fact("water", "V = sqrt(g D), T = L / (60 V) in min");

@@ -36,6 +36,9 @@ std::vector<IterationRow> iteration_rows(const StudyResult& result) {
     return rows;
 }
 
+/// What the intensity is to kinematic sheet flow.
+std::string rain_of_sheet(const StudyResult& result) { return result.study.timing.sheet_takes_runoff ? "C i" : "i"; }
+
 std::string minutes_text(double s) {
     return fixed_decimals(s / 60.0, 4);
 }
@@ -66,6 +69,7 @@ std::string storms_table(const StudyResult& result) {
                     return r.storm->iteration.rows.empty() ? std::string()
                                                            : intensity_text(scale, r.storm->iteration.intensity());
                 })
+        .column("sheet_flow_under", [&](const StormRow&) { return result.study.timing.is_kinematic() ? rain_of_sheet(result) : std::string(); })
         .column("sheet_time_min", [](const StormRow& r) { return minutes_text(r.storm->sheet_seconds()); })
         .column(
             "governing_head_x",
@@ -89,6 +93,7 @@ std::string iterations_table(const StudyResult& result) {
         .column("assumed_min", [](const IterationRow& r) { return minutes_text(in_seconds(r.round->assumed)); })
         .column("intensity_" + scale.intensity_unit(),
                 [=](const IterationRow& r) { return intensity_text(scale, r.round->intensity); })
+        .column("sheet_flow_under", [&](const IterationRow&) { return rain_of_sheet(result); })
         .column("computed_min", [](const IterationRow& r) { return minutes_text(in_seconds(r.round->computed)); });
     return text_of(table, iteration_rows(result));
 }

@@ -22,6 +22,17 @@ Duration SheetFormula::at_unit_storm(Length u0, Length u1) const {
     return at_unit_storm(u1) - at_unit_storm(u0);
 }
 
+Duration SheetFormula::along_characteristic(const SheetStretch& stretch, Length x0) const {
+    const double grown = std::pow((x0 + stretch.length).si(), exponent) - std::pow(x0.si(), exponent);
+    return seconds(coefficient * std::pow(stretch.n / std::sqrt(stretch.slope), exponent) * grown);
+}
+
+double SheetFormula::characteristic_slope(double n, Length x0, Length x1, Duration time) const {
+    const double grown = std::pow(x1.si(), exponent) - std::pow(x0.si(), exponent);
+    const double root_of_slope = n / std::pow(in_seconds(time) / (coefficient * grown), 1.0 / exponent);
+    return root_of_slope * root_of_slope;
+}
+
 SheetFormula nrcs_sheet_formula() {
     // Feet and inches in the printed formula become metres: n·L counts with the power 0.8, P2 with −0.5.
     static const double coefficient =
@@ -47,6 +58,10 @@ SheetFormula kinematic_sheet_formula(double printed_constant) {
 
 double kinematic_storm_factor(Intensity intensity) {
     return std::pow(intensity.si(), -0.4);
+}
+
+double kinematic_runoff_factor(double runoff_coefficient) {
+    return std::pow(runoff_coefficient, -0.4);
 }
 
 Length mccuen_spiess_length(double n, double slope) {

@@ -79,14 +79,41 @@ VelocityLine line_of(const CsvTable& csv, std::size_t column, const std::vector<
 
 }  // namespace
 
+namespace {
+
+/// The upper of the two points between which a slope lies.
+auto upper_point(const std::vector<VelocityPoint>& points, double slope) {
+    return std::partition_point(points.begin() + 1, points.end() - 1,
+                                [&](const VelocityPoint& p) { return p.slope < slope; });
+}
+
+double exponent_between(const VelocityPoint& below, const VelocityPoint& above) {
+    return std::log(above.velocity / below.velocity) / std::log(above.slope / below.slope);
+}
+
+}  // namespace
+
 Speed VelocityLine::at(double slope) const {
-    const auto upper = std::partition_point(points.begin() + 1, points.end() - 1,
-                                            [&](const VelocityPoint& p) { return p.slope < slope; });
-    const VelocityPoint& above = *upper;
+    const auto upper = upper_point(points, slope);
     const VelocityPoint& below = *(upper - 1);
-    if (slope == above.slope) return above.velocity;
-    const double exponent = std::log(above.velocity / below.velocity) / std::log(above.slope / below.slope);
-    return below.velocity * std::pow(slope / below.slope, exponent);
+    if (slope == upper->slope) return upper->velocity;
+    return below.velocity * std::pow(slope / below.slope, exponent_between(below, *upper));
+}
+
+VelocityLaw VelocityLine::law_at(double slope) const {
+    const auto upper = upper_point(points, slope);
+    const VelocityPoint& below = *(upper - 1);
+    const double exponent = exponent_between(below, *upper);
+    return {.interval = static_cast<std::size_t>(upper - points.begin()) - 1,
+            .at_slope_1 = below.velocity * std::pow(below.slope, -exponent),
+            .exponent = exponent};
+}
+
+bool VelocityLine::holds(std::size_t interval, double slope) const {
+    constexpr double leeway = 1e-4;
+    const bool above_lower = interval == 0 || slope >= points[interval].slope * (1 - leeway);
+    const bool below_upper = interval + 2 >= points.size() || slope <= points[interval + 1].slope * (1 + leeway);
+    return above_lower && below_upper;
 }
 
 bool VelocityLine::covers(double slope) const {

@@ -29,13 +29,15 @@ struct Taken {
 
 class ShapeReader {
 public:
-    ShapeReader(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target)
-        : path_(path), called_("file of " + role + " " + path.string()), kinds_(kinds), target_(target) {}
+    ShapeReader(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target,
+                std::span<const std::string> fields)
+        : path_(path), called_("file of " + role + " " + path.string()), kinds_(kinds), target_(target), fields_(fields) {}
 
     ShapeFile read() {
         const GdalMark before = session_.mark();
         check_local_file(path_, called_);
         open(before);
+        check_fields();
         Transformation to_target(system(), target_);
         while (const OGRFeatureUniquePtr feature{layer_->GetNextFeature()}) add(*feature, to_target);
         session_.throw_if_failed(before, Fault::inputs, "The " + called_ + " cannot be read to its end; copy or make it again");
@@ -76,9 +78,32 @@ private:
         }
         if (!taken.fault.empty()) return leave_out(taken.fault);
         ++result_.features;
+        result_.feature_of_line.insert(result_.feature_of_line.end(), taken.lines.size(), static_cast<std::size_t>(number_));
+        result_.numbers.insert(result_.numbers.end(), taken.lines.size(), numbers_of(feature));
         std::move(taken.lines.begin(), taken.lines.end(), std::back_inserter(result_.lines));
         std::move(taken.points.begin(), taken.points.end(), std::back_inserter(result_.points));
         std::move(taken.polygons.begin(), taken.polygons.end(), std::back_inserter(result_.polygons));
+    }
+
+    void check_fields() const {
+        const OGRFeatureDefn& definition = *layer_->GetLayerDefn();
+        for (const std::string& field : fields_) {
+            const int place = definition.GetFieldIndex(field.c_str());
+            if (place < 0) continue;
+            const OGRFieldType type = definition.GetFieldDefn(place)->GetType();
+            if (type == OFTInteger || type == OFTInteger64 || type == OFTReal) continue;
+            throw input_error("The field " + field + " of the " + called_ + " holds no numbers; make it a field of numbers, or give it another name.");
+        }
+    }
+
+    [[nodiscard]] std::vector<std::optional<double>> numbers_of(const OGRFeature& feature) const {
+        std::vector<std::optional<double>> numbers;
+        for (const std::string& field : fields_) {
+            const int place = feature.GetFieldIndex(field.c_str());
+            const bool is_there = place >= 0 && feature.IsFieldSetAndNotNull(place);
+            numbers.push_back(is_there ? std::optional(feature.GetFieldAsDouble(place)) : std::nullopt);
+        }
+        return numbers;
     }
 
     void take(const OGRGeometry& geometry, Transformation& to_target, Taken& taken) const {
@@ -131,6 +156,7 @@ private:
     std::string called_;
     ShapeKinds kinds_;
     const ReferenceSystem& target_;
+    std::span<const std::string> fields_;
     GDALDatasetUniquePtr dataset_;
     OGRLayer* layer_ = nullptr;
     std::int64_t number_ = 0;
@@ -139,8 +165,9 @@ private:
 
 }  // namespace
 
-ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target) {
-    return ShapeReader(path, role, kinds, target).read();
+ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target,
+                      std::span<const std::string> fields) {
+    return ShapeReader(path, role, kinds, target, fields).read();
 }
 
 }  // namespace rillclock

@@ -22,6 +22,18 @@ Ground Ground::by_row(std::vector<GroundRow> rows) {
     return Ground(std::move(rows));
 }
 
+Ground Ground::with_steps_weighted(double weight) const {
+    Ground weighted = *this;
+    const auto scale = [weight](FixedLength& length) { length = to_fixed(weight * from_fixed(length)); };
+    for (GroundRow& row : weighted.rows_) {
+        scale(row.east_west);
+        scale(row.south);
+        scale(row.diagonal);
+    }
+    weighted.step_weight_ = weight * step_weight_;
+    return weighted;
+}
+
 Length Ground::cell_side() const {
     const GroundRow& middle = rows_[rows_.size() / 2];
     return metres(from_fixed(std::min(middle.east_west, middle.south)));

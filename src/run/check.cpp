@@ -9,7 +9,9 @@
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/io/cover_file.hpp"
 #include "rillclock/io/gdal_session.hpp"
+#include "rillclock/hydraulics/velocity_table.hpp"
 #include "rillclock/io/ground_of.hpp"
+#include "rillclock/io/text_file.hpp"
 #include "rillclock/rainfall/return_periods.hpp"
 #include "mapped_flow.hpp"
 #include "read_soil.hpp"
@@ -84,6 +86,10 @@ private:
 
     void book() {
         if (study_.surface.book.empty()) return;
+        if (study_.timing.velocity_chart) {
+            const VelocityTable chart = parse_velocity_table(read_text(located(study_, *study_.timing.velocity_chart)), *study_.timing.velocity_chart);
+            report_.facts.push_back("velocity chart: " + *study_.timing.velocity_chart + ", " + std::to_string(chart.lines.size()) + " lines");
+        }
         const CoverBook book = read_book(study_);
         report_.facts.push_back("cover book: " + book.name() + ", " + std::to_string(book.classes().size()) + " classes");
     }

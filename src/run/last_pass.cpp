@@ -58,6 +58,20 @@ void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, Aft
     pass.progress.tell({.stage = stage, .done = cells, .total = cells, .finished = true});
 }
 
+void tally_all(const LastPass& pass, ArrivalTally& tally) {
+    work_all_tiles(
+        pass, "storms", [&](const TileDesk& desk) { tally.add(desk); }, [](std::int64_t, std::int64_t) {});
+}
+
+std::vector<PointHeads> under_one_storm_alone(const LastPass& pass, const std::vector<StepTime>& times) {
+    const double factor = pass.travel.rules().sheet.storm_factor;
+    ArrivalTally tally(pass.travel, pass.points.size(), factor);
+    tally_all(pass, tally);
+    std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
+    add_storms(heads, times, intensities_of(pass.rain));
+    return heads;
+}
+
 std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<StepTime>& times) {
     const double factor = pass.travel.rules().sheet.storm_factor;
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
@@ -74,13 +88,18 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<
     return heads;
 }
 
-std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector<StepTime>& times,
-                                         const OwnStorms& storms) {
+std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, const std::vector<StepTime>& times,
+                                               const OwnStorms& storms) {
     ArrivalTally tally(pass.travel, pass.points.size(), storms.reference_factor, Storms::by_point);
-    work_all_tiles(
-        pass, "storms", [&](const TileDesk& desk) { tally.add(desk); }, [](std::int64_t, std::int64_t) {});
+    tally_all(pass, tally);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, times, storms);
     require_settled(heads, pass.points, pass.rain);
+    return heads;
+}
+
+std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector<StepTime>& times,
+                                         const OwnStorms& storms) {
+    std::vector<PointHeads> heads = under_own_storms_alone(pass, times, storms);
     std::vector<double> factors;
     for (const PointHeads& point : heads) factors.push_back(point.storm_factor);
     RasterStrips rasters(story_of(pass, times, factors), pass.travel, pass.folder);
@@ -92,6 +111,12 @@ std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector
 }
 
 }  // namespace
+
+std::vector<PointHeads> heads_alone(const LastPass& pass) {
+    const std::vector<StepTime> times = times_of_points(pass);
+    const std::optional<OwnStorms> own = own_storms_of(pass.study, pass.travel.rules(), pass.rain);
+    return own ? under_own_storms_alone(pass, times, *own) : under_one_storm_alone(pass, times);
+}
 
 std::vector<PointHeads> heads_and_rasters(const LastPass& pass) {
     const std::vector<StepTime> times = times_of_points(pass);

@@ -27,4 +27,7 @@ struct LastPass {
 /// that are solved from the arrivals. Throws an input error where a storm does not settle.
 [[nodiscard]] std::vector<PointHeads> heads_and_rasters(const LastPass& pass);
 
+/// The same without the rasters.
+[[nodiscard]] std::vector<PointHeads> heads_alone(const LastPass& pass);
+
 }  // namespace rillclock

@@ -2,6 +2,7 @@
 
 #include <algorithm>
 
+#include "channel_fields.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/io/shape_file.hpp"
@@ -16,7 +17,7 @@ public:
 
     MappedShapes read() {
         const TerrainStudy& terrain = study_.terrain;
-        if (terrain.channels) read_lines("channels", *terrain.channels, mapped_.shapes.channels);
+        if (terrain.channels) read_channels(*terrain.channels);
         if (terrain.crossings) read_lines("crossings", *terrain.crossings, mapped_.shapes.crossings);
         if (terrain.barriers) read_lines("barriers", *terrain.barriers, mapped_.shapes.barriers);
         if (terrain.keep_water) read_waters(*terrain.keep_water);
@@ -24,13 +25,25 @@ public:
     }
 
 private:
-    void read_lines(const std::string& role, const std::string& name, std::vector<Line>& lines) {
-        ShapeFile file = read_shapes(located(study_, name), role, ShapeKinds::lines, system_);
+    void read_channels(const std::string& name) {
+        const ShapeFile file = read_lines("channels", name, mapped_.shapes.channels, channel_fields());
+        std::size_t stated = 0;
+        for (std::size_t i = 0; i < file.numbers.size(); ++i) {
+            const std::string subject = "feature " + std::to_string(file.feature_of_line[i]) + " of the channels '" + name + "'";
+            mapped_.sections.push_back(section_of(file.numbers[i], study_.timing.channel.n, subject));
+            if (mapped_.sections.back()) ++stated;
+        }
+        if (stated > 0) mapped_.facts.push_back("channels: " + std::to_string(stated) + " of " + std::to_string(file.numbers.size()) + " lines state n or a section");
+    }
+
+    ShapeFile read_lines(const std::string& role, const std::string& name, std::vector<Line>& lines, std::span<const std::string> fields = {}) {
+        ShapeFile file = read_shapes(located(study_, name), role, ShapeKinds::lines, system_, fields);
         const auto inside = std::count_if(file.lines.begin(), file.lines.end(), [&](const Line& line) {
             return !cells_crossed(line, grid_).empty();
         });
         say(role, name, file, std::to_string(inside) + " of " + std::to_string(file.lines.size()) + " lines", inside > 0);
         lines = std::move(file.lines);
+        return file;
     }
 
     void read_waters(const std::string& name) {
@@ -107,6 +120,33 @@ MappedShapes read_mapped_shapes(const Study& study, const Grid& grid, const Refe
     return Reading(study, grid, system).read();
 }
 
+namespace {
+
+/// Gives the reach of a line to the cells from which the flow follows it, in either direction, and to its end where nothing follows.
+void place_section(const Way& way, const FlowLines& lines, const ChannelReach& reach, ChannelReaches& reaches) {
+    const auto leads = [&](Cell from, Cell to) { return lines.contains(from) && lines.next(from) == to; };
+    for (std::size_t i = 0; i + 1 < way.size(); ++i) {
+        if (leads(way[i], way[i + 1])) reaches.emplace(way[i], reach);
+        if (leads(way[i + 1], way[i])) reaches.emplace(way[i + 1], reach);
+    }
+    for (const Cell end : {way.front(), way.back()}) {
+        if (leads(end, no_cell)) reaches.emplace(end, reach);
+    }
+}
+
+void place_sections(const MappedShapes& mapped, const FlowLines& lines, const Grid& grid, MappedFlow& flow) {
+    for (std::size_t i = 0; i < mapped.sections.size(); ++i) {
+        if (!mapped.sections[i]) continue;
+        const ChannelReach reach = reach_of(*mapped.sections[i], static_cast<std::uint32_t>(flow.sections.size()));
+        flow.sections.push_back(*mapped.sections[i]);
+        for (const Way& crossed : cells_crossed(mapped.shapes.channels[i], grid)) {
+            place_section(shortened(crossed, grid.columns), lines, reach, flow.reaches);
+        }
+    }
+}
+
+}  // namespace
+
 MappedFlow mapped_flow(const Study& study, const ResolvedStudy& resolved, TerrainData& terrain, const FindCodes& find_codes) {
     const double metres_per_unit = terrain.format.metres_per_stored_unit();
     const MappedShapes mapped = read_mapped_shapes(study, terrain.grid, terrain.system);
@@ -115,7 +155,9 @@ MappedFlow mapped_flow(const Study& study, const ResolvedStudy& resolved, Terrai
     const double cut = lower_to_beds(terrain.elevations, edits.lines);
     terrain.notices.insert(terrain.notices.end(), mapped.notices.begin(), mapped.notices.end());
     tell_all(edits, flow, cut * metres_per_unit, terrain);
-    return {.codes = std::move(flow.codes), .line_cells = edits.lines.cells()};
+    MappedFlow mapped_flow{.codes = std::move(flow.codes), .line_cells = edits.lines.cells(), .sections = {}, .reaches = {}};
+    place_sections(mapped, edits.lines, terrain.grid, mapped_flow);
+    return mapped_flow;
 }
 
 }  // namespace rillclock

@@ -1,6 +1,7 @@
 #pragma once
 
 #include "rillclock/terrain/terrain_edits.hpp"
+#include "rillclock/travel/channel_reach.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
@@ -8,6 +9,7 @@ namespace rillclock {
 /// The files of mapped shapes that a study names, read.
 struct MappedShapes {
     EditShapes shapes;
+    std::vector<std::optional<MappedSection>> sections;   ///< of each channel
     std::vector<std::string> facts;   ///< "channels: 12 features, 11 of 12 lines within the elevations"
     Notices notices;
 };
@@ -26,6 +28,8 @@ struct MappedFile {
 struct MappedFlow {
     Raster<FlowCode> codes;
     std::vector<Cell> line_cells;   ///< of channels and crossings: channel flow, whatever drains to them
+    std::vector<MappedSection> sections;   ///< that channels state
+    ChannelReaches reaches;         ///< of the cells of those channels; where several pass a cell, of the one that the flow follows from there
 };
 
 /// Finds the flow. Afterwards the elevations of lines are their beds, and the terrain's notices say what the edits came to.

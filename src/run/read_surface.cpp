@@ -1,8 +1,11 @@
+#include <array>
 #include <cmath>
 #include <map>
+#include <memory>
 
 #include "rillclock/core/error.hpp"
 #include "rillclock/hydraulics/shallow_flow.hpp"
+#include "rillclock/hydraulics/sheet_flow.hpp"
 #include "rillclock/io/cover_file.hpp"
 #include "rillclock/io/text_file.hpp"
 #include "read_classes.hpp"
@@ -14,12 +17,71 @@ namespace {
 
 constexpr std::size_t most_classes = 255;
 
-SurfaceHydraulics hydraulics_of(const CoverClass& cover, ShallowRule rule) {
-    const Speed by_paving = cover.paved ? tr55_paved_k : tr55_unpaved_k;
-    return {.sheet_n = cover.n_typical,
-            .shallow_k = rule == ShallowRule::by_cover ? cover.shallow_k : by_paving,
-            .water_depth = cover.water_depth};
+/// Velocity at slope 1; a chart, where it times the class, counts before it.
+Speed shallow_k(const CoverClass& cover, ShallowRule rule) {
+    switch (rule) {
+        case ShallowRule::by_cover:
+        case ShallowRule::chart: return cover.shallow_k;
+        case ShallowRule::paved_and_unpaved: return cover.paved ? tr55_paved_k : tr55_unpaved_k;
+    }
+    return {};
 }
+
+/// The hydraulics of the book's classes under a study; what a class lacks is an error only where the raster has that class.
+class Hydraulics {
+public:
+    explicit Hydraulics(const Study& study) : study_(study) {
+        if (study.timing.velocity_chart) chart_ = parse_velocity_table(read_text(located(study, *study.timing.velocity_chart)), *study.timing.velocity_chart);
+    }
+
+    [[nodiscard]] SurfaceHydraulics of(const CoverClass& cover, bool occurs) const {
+        SurfaceHydraulics made{.sheet_n = cover.n_typical,
+                               .shallow_k = shallow_k(cover, study_.timing.shallow),
+                               .water_depth = cover.water_depth};
+        if (!occurs || cover.is_open_water()) return made;
+        if (study_.timing.sheet_takes_runoff) made.sheet_factor = kinematic_runoff_factor(sheet_runoff(cover));
+        if (chart_) made.shallow_line = std::make_shared<const VelocityLine>(line(cover));
+        return made;
+    }
+
+    /// The shares of the rain that run off a class, by soil (`CellSoil`), for the soils that occur; all of it from open water for which
+    /// the book says nothing.
+    [[nodiscard]] std::array<double, cell_soils> runoff_of(const CoverClass& cover, const std::vector<CellSoil>& soils) const {
+        std::array<double, cell_soils> shares{};
+        for (const CellSoil soil : soils) {
+            const std::optional<SoilGroup> group = group_of(soil);
+            const bool all_runs_off = cover.is_open_water() && !cover.coefficient(group);
+            shares[static_cast<std::size_t>(soil)] = all_runs_off ? 1.0 : coefficient(cover, group, "channel flow by the design storm");
+        }
+        return shares;
+    }
+
+private:
+    [[nodiscard]] double sheet_runoff(const CoverClass& cover) const {
+        const double c = coefficient(cover, study_.surface.soil_group, "sheet_rain = \"runoff\"");
+        if (c > 0) return c;
+        throw input_error("sheet_rain = \"runoff\" needs a runoff coefficient above 0 of every class, and the cover book '" + study_.surface.book +
+                          "' has 0 for class " + std::to_string(cover.code) + " (" + cover.name + "); give it a small one");
+    }
+
+    [[nodiscard]] double coefficient(const CoverClass& cover, const std::optional<SoilGroup>& group, const std::string& asked_by) const {
+        if (const std::optional<double> c = cover.coefficient(group)) return *c;
+        throw input_error(asked_by + " needs a runoff coefficient of every class, and the cover book '" + study_.surface.book + "' has none for class " +
+                          std::to_string(cover.code) + " (" + cover.name + "); give it in the column c, or c_a to c_d where soil groups are known");
+    }
+
+    [[nodiscard]] const VelocityLine& line(const CoverClass& cover) const {
+        if (const VelocityLine* found = chart_->find(cover.chart_line)) return *found;
+        std::string lines;
+        for (const VelocityLine& known : chart_->lines) lines += (lines.empty() ? "" : ", ") + known.surface;
+        throw input_error("the chart '" + *study_.timing.velocity_chart + "' has no line \"" + cover.chart_line + "\" for class " +
+                          std::to_string(cover.code) + " (" + cover.name + "); its lines are " + lines +
+                          "; name one of them in the cover book's column chart_line");
+    }
+
+    const Study& study_;
+    std::optional<VelocityTable> chart_;
+};
 
 /// The position of a class in the book.
 std::optional<std::uint8_t> position_of(const CoverBook& book, std::int32_t code) {
@@ -74,6 +136,11 @@ public:
         return classes;
     }
 
+    /// Whether the class is of any cell, in its own name or as the fallback.
+    [[nodiscard]] bool has_met(int code) const {
+        return counts_.contains(code) || (fallback_ == positions_.at(code) && !unknown().empty());
+    }
+
     [[nodiscard]] bool has_fallback() const { return fallback_.has_value(); }
 
 private:
@@ -107,6 +174,14 @@ Notices unknown_notices(const Study& study, const Reading& reading) {
                                               " was taken for what the book does not know: " + unknown}};
 }
 
+/// The soils of all cells.
+std::vector<CellSoil> soils_of(const SurfaceData& data) {
+    std::vector<CellSoil> soils;
+    for (const SoilCount& count : data.soils) soils.push_back(count.soil);
+    if (soils.empty()) soils.push_back(data.table.soil_everywhere);
+    return soils;
+}
+
 }  // namespace
 
 CoverBook read_book(const Study& study) {
@@ -124,15 +199,23 @@ SurfaceData read_surface(const Study& study, const TerrainData& terrain, const P
     CoverOptions options;
     options.band = study.surface.band;
     CoverFile file = open_cover(located(study, study.surface.cover), options, terrain.grid, terrain.system);
+    const Hydraulics hydraulics(study);
     Reading reading(study, book, terrain.elevations);
 
-    SurfaceData data{.book = book, .table = {}, .classes = {}, .soils = {}, .notices = file.notices};
+    SurfaceData data{.book = book, .table = {}, .classes = {}, .soils = {}, .runoff = {}, .notices = file.notices};
     data.table.index = read_positions(*file.source, reading, progress);
-    for (const CoverClass& cover : book.classes()) data.table.classes.push_back(hydraulics_of(cover, study.timing.shallow));
     data.classes = reading.known_classes();
     const Notices unknown = unknown_notices(study, reading);
     data.notices.insert(data.notices.end(), unknown.begin(), unknown.end());
     read_soil(study, terrain, data, progress);
+    const std::vector<CellSoil> soils = soils_of(data);
+    for (const CoverClass& cover : book.classes()) {
+        const bool occurs = reading.has_met(cover.code);
+        data.table.classes.push_back(hydraulics.of(cover, occurs));
+        if (!study.timing.channel.design_storm) continue;
+        const auto runoff = hydraulics.runoff_of(cover, occurs ? soils : std::vector<CellSoil>{});
+        data.runoff.insert(data.runoff.end(), runoff.begin(), runoff.end());
+    }
     return data;
 }
 

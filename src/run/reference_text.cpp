@@ -3,7 +3,9 @@
 #include "rillclock/deliver/cautions.hpp"
 #include "rillclock/deliver/version.hpp"
 #include "rillclock/hydraulics/lump_methods.hpp"
+#include "rillclock/core/number_text.hpp"
 #include "rillclock/hydraulics/methods.hpp"
+#include "rillclock/hydraulics/roughness.hpp"
 #include "rillclock/io/library_versions.hpp"
 #include "rillclock/study/study_keys.hpp"
 
@@ -21,6 +23,17 @@ std::string method_text(const Method& method) {
     return text + "    source   " + std::string(method.source) + " (" + std::string(words(method.trust)) + ")\n";
 }
 
+std::string roughness_text(const RoughnessTable& table) {
+    std::string text = "Manning's n of " + std::string(table.of) + "\n";
+    for (const RoughnessEntry& row : table.entries) {
+        const bool is_range = row.least < row.greatest;
+        text += "    " + significant(row.typical, 4) + "  " + std::string(row.surface) +
+                (is_range ? " (" + significant(row.least, 4) + " to " + significant(row.greatest, 4) + ")\n" : "\n");
+    }
+    if (!table.remark.empty()) text += "    remark   " + std::string(table.remark) + "\n";
+    return text + "    source   " + std::string(table.source) + " (" + std::string(words(table.trust)) + ")\n";
+}
+
 }  // namespace
 
 std::string version_line() {
@@ -31,6 +44,7 @@ std::string methods_text() {
     std::string text;
     for (const Method& method : methods()) text += (text.empty() ? "" : "\n") + method_text(method);
     for (const LumpMethod& method : lump_methods()) text += "\n" + method_text(method.about);
+    for (const RoughnessTable& table : roughness_tables()) text += "\n" + roughness_text(table);
     return text;
 }
 

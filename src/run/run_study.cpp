@@ -15,6 +15,7 @@
 #include "rillclock/deliver/tables.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
+#include "design_channels.hpp"
 #include "last_pass.hpp"
 #include "depressions.hpp"
 #include "mapped_flow.hpp"
@@ -116,9 +117,12 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
         });
     });
     const TiledForest forest(flow.codes, tiles, executor);
-    const TiledGround ground{.forest = forest, .ground = terrain.ground, .elevations = terrain.elevations,
+    const Ground steps = study.surface.unbiased_lengths ? terrain.ground.with_steps_weighted(unbiased_step_weight) : terrain.ground;
+    const TiledGround ground{.forest = forest, .ground = steps, .elevations = terrain.elevations,
                              .metres_per_elevation_unit = terrain.format.metres_per_stored_unit(), .surface = surface.table,
-                             .mapped_channels = flow.line_cells};
+                             .mapped_channels = flow.line_cells,
+                             .reaches = flow.reaches.empty() ? nullptr : &flow.reaches};
+    ChannelReaches reaches;  // by the design storm; times refer to them
     const auto travelled = stage(progress, "travel times", cells, [&] {
         return std::make_unique<TiledTravel>(ground, rules, executor);
     });
@@ -127,9 +131,12 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const PlacedPoints points = settle_points(study, resolved, travel, terrain);
     const TiledOwners owners(forest, labels_of(points.points), executor);
     const PointTree tree = point_tree(next_points(forest, owners, points.points, executor));
-    const std::vector<PointHeads> heads = heads_and_rasters({.study = study, .rain = rain, .terrain = terrain, .travel = travel,
-                                                             .owners = owners, .points = points.points, .tree = tree,
-                                                             .folder = folder, .progress = progress});
+    const LastPass last{.study = study, .rain = rain, .terrain = terrain, .travel = travel, .owners = owners,
+                        .points = points.points, .tree = tree, .folder = folder, .progress = progress};
+    const std::vector<PointHeads> heads =
+        study.timing.channel.design_storm
+            ? heads_under_design_flow(last, {.sections = flow.sections, .runoff = surface.runoff, .travel = *travelled, .reaches = reaches})
+            : heads_and_rasters(last);
     const std::vector<Outlet> outlets = stage(progress, "design points", cells, [&] {
         return outlets_of(travel, points.points, tree, heads, outlet_rules_of(study, resolved));
     });
@@ -141,7 +148,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const std::vector<InputFile> inputs = input_files(study);
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
     const StudyResult result{.study = study, .resolved = resolved, .rules = rules, .rain = rain, .grid = terrain.grid,
-                             .system = terrain.system, .format = terrain.format, .book = surface.book,
+                             .system = terrain.system, .format = terrain.format, .book = surface.book, .sections = flow.sections,
                              .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .notices = notices,
                              .inputs = inputs, .data = data};
     const std::string json = result_json(result);

@@ -35,6 +35,7 @@ struct SurfaceData {
     SurfaceTable table;
     std::vector<ClassCount> classes;
     std::vector<SoilCount> soils;   ///< where the study has a raster of them
+    std::vector<double> runoff;     ///< coefficient of each class of the book and soil; only for channel flow by the design storm
     Notices notices;
 };
 

@@ -18,6 +18,7 @@ SheetRules sheet_rules_of(const Study& study, const StudyRain& rain) {
         return {.formula = nrcs_sheet_formula(), .storm_factor = nrcs_storm_factor(*rain.two_year_24_hour)};
     }
     return {.formula = kinematic_sheet_formula(study.timing.sheet_constant.value_or(kinematic_constant_hec22)),
+            .basis = SheetBasis::characteristic,
             .storm_factor = kinematic_storm_factor(rain.raster_storm().rain.at(rain.first_assumed()))};
 }
 
@@ -74,7 +75,9 @@ TravelRules rules_of(const Study& study, const ResolvedStudy& resolved, const St
                      .hydraulic_radius = resolved.hydraulic_radius,
                      .width = resolved.channel_width,
                      .depth = resolved.channel_depth,
+                     .sizes_from = std::nullopt,
                      .from_area = study.timing.channel_from};
+    if (const ChannelSize* published = study.timing.channel.published_size()) rules.channel.sizes_from = published->from;
     rules.pond = {.depth = resolved.pond_depth, .speed = study.terrain.pond_speed};
     return rules;
 }
@@ -103,6 +106,7 @@ std::vector<InputFile> input_files(const Study& study) {
         if (file.name) add(file.role, *file.name);
     }
     if (study.rain.file) add("rain", *study.rain.file);
+    if (study.timing.velocity_chart) add("velocity_chart", *study.timing.velocity_chart);
     return files;
 }
 

@@ -64,6 +64,9 @@ void require_settled(const std::vector<PointHeads>& heads, const std::vector<Des
 }
 
 std::string storm_words(const Study& study, const StudyRain& rain) {
+    if (!study.timing.is_kinematic() && study.timing.channel.design_storm)
+        return "2-year 24-hour depth " + significant(in_millimetres(*rain.two_year_24_hour)) + " mm; in channels of " +
+               significant(rain.raster_storm().return_period, 6) + " years, as long as the arrival at each";
     if (!study.timing.is_kinematic())
         return "2-year 24-hour depth " + significant(in_millimetres(*rain.two_year_24_hour)) + " mm";
     return "of " + significant(rain.raster_storm().return_period, 6) + " years, as long as the " +
@@ -73,7 +76,8 @@ std::string storm_words(const Study& study, const StudyRain& rain) {
 
 std::string sheet_words(const Study& study) {
     if (!study.timing.is_kinematic()) return "NRCS";
-    return "kinematic wave, constant " + significant(study.timing.sheet_constant.value_or(kinematic_constant_hec22));
+    return "kinematic wave, constant " + significant(study.timing.sheet_constant.value_or(kinematic_constant_hec22)) +
+           (study.timing.sheet_takes_runoff ? ", C i in place of i" : "");
 }
 
 }  // namespace rillclock

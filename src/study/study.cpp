@@ -34,6 +34,20 @@ void require_inputs(const Study& study) {
 
 void refuse_contradictory_channel(const Study& study) {
     const ChannelStudy& channel = study.timing.channel;
+    if (channel.region && (channel.hydraulic_radius || channel.width || channel.depth))
+        throw input_error(name_of(study) +
+                          " gives timing.channel both a region and a size of its own; keep the region, or hydraulic_radius, or width "
+                          "and depth together");
+    if (channel.design_storm && channel.hydraulic_radius)
+        throw input_error(name_of(study) +
+                          " asks for channel flow by the design storm and states one hydraulic_radius; leave one of them out");
+    if (channel.design_storm && !study.rain.is_by_duration())
+        throw input_error(name_of(study) +
+                          " asks for channel flow by the design storm, which needs rain by duration; add file = \"atlas14.csv\" or "
+                          "formula under [rain], or --rain-file FILE");
+    if (channel.side_slope && !channel.design_storm)
+        throw input_error(name_of(study) +
+                          " states a side_slope, which acts on flow = \"design storm\" only; add that under timing.channel, or leave it out");
     if (channel.hydraulic_radius && (channel.width || channel.depth))
         throw input_error(
             name_of(study) +
@@ -78,9 +92,9 @@ void refuse_contradictory_sheet(const Study& study) {
         throw input_error(name_of(study) +
                           " times sheet flow by the kinematic wave, which needs rain by duration; add file = "
                           "\"atlas14.csv\" or formula under [rain], or --rain-file FILE");
-    if (!timing.is_kinematic() && (timing.sheet_constant || timing.storm))
+    if (!timing.is_kinematic() && (timing.sheet_constant || timing.storm || timing.sheet_takes_runoff))
         throw input_error(name_of(study) +
-                          " states sheet_constant or storm, which act on kinematic sheet flow only; add sheet = "
+                          " states sheet_constant, sheet_rain or storm, which act on kinematic sheet flow only; add sheet = "
                           "\"kinematic\" under [timing], or leave them out");
 }
 
@@ -90,6 +104,21 @@ void refuse_contradictory_soil(const Study& study) {
         throw input_error(name_of(study) +
                           " says how to read a raster of soil groups but gives none; add soil_group = \"soils.tif\" "
                           "under [surface], or leave out soil_band, soil_classes and fallback_soil_group");
+    if (soil.file && study.timing.sheet_takes_runoff)
+        throw input_error(name_of(study) +
+                          " asks for sheet_rain = \"runoff\" with a raster of soil groups, and sheet flow takes one coefficient of each "
+                          "class; state one soil_group, such as \"B\", or sheet_rain = \"rainfall\"");
+}
+
+void refuse_contradictory_shallow(const Study& study) {
+    const TimingStudy& timing = study.timing;
+    const bool by_chart = timing.shallow == ShallowRule::chart;
+    if (by_chart && !timing.velocity_chart)
+        throw input_error(name_of(study) +
+                          " times shallow flow by a chart but names none; add velocity_chart = \"chart.csv\" under [timing]");
+    if (!by_chart && timing.velocity_chart)
+        throw input_error(name_of(study) +
+                          " names a velocity_chart, which acts on shallow = \"chart\" only; add that under [timing], or leave it out");
 }
 
 /// "NETCDF:…", "GPKG:…": a driver's name before a colon, in capitals.
@@ -110,6 +139,11 @@ std::string located(const Study& study, const std::string& name) {
     return (std::filesystem::path(study.file).parent_path() / path).string();
 }
 
+const ChannelSize* ChannelStudy::published_size() const {
+    if (hydraulic_radius || width) return nullptr;
+    return region ? find_channel_size(*region) : &channel_sizes().front();
+}
+
 void check_study(const Study& study) {
     require_inputs(study);
     refuse_contradictory_soil(study);
@@ -117,13 +151,15 @@ void check_study(const Study& study) {
     refuse_contradictory_channel(study);
     refuse_contradictory_rain(study);
     refuse_contradictory_sheet(study);
+    refuse_contradictory_shallow(study);
 }
 
 ResolvedStudy resolve(const Study& study, const DataFacts& facts) {
     const Length cell = facts.cell_side;
     const TerrainStudy& terrain = study.terrain;
     const ChannelStudy& channel = study.timing.channel;
-    const ChannelSize& standard = channel_sizes().front();
+    const ChannelSize* published = channel.published_size();
+    const ChannelSize& standard = published != nullptr ? *published : channel_sizes().front();
     const Length step = terrain.vertical_step.value_or(std::max({metres(0.2), facts.vertical_quantum, cell / 10.0}));
     return {.slope_window = terrain.slope_window.value_or(std::max(metres(20), 3.0 * cell)),
             .vertical_step = step,

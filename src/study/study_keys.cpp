@@ -43,7 +43,8 @@ constexpr std::array keys{
              "what the values of that raster mean"},
     StudyKey{"surface.fallback_soil_group", R"("D")", "none: cells without a group have no curve number",
              "soil group where that raster gives none"},
-    StudyKey{"surface.path_length", R"("grid")", "grid", "grid: the length of a path is that of its steps"},
+    StudyKey{"surface.path_length", R"("grid")", "grid",
+             "grid: the length of a path is that of its steps; unbiased: 0.96194 of it, the weight of least error over all directions"},
     StudyKey{"points.file", R"("points.gpkg")", "none: points where flow leaves the data", "design points"},
     StudyKey{"points.name", R"("label")", "none: points are numbered", "field that names them"},
     StudyKey{"points.layer", R"("inlets")", "the first layer", "layer of the file"},
@@ -65,6 +66,8 @@ constexpr std::array keys{
              "formula of sheet flow: nrcs, or kinematic, which needs rain by duration"},
     StudyKey{"timing.sheet_constant", "0.933", "0.933",
              "constant of the kinematic formula: 0.933 (HEC-22) or 0.94 (Morgali and Linsley)"},
+    StudyKey{"timing.sheet_rain", R"("rainfall")", "rainfall",
+             "rainfall or runoff: whether kinematic sheet flow takes i, or C i with C of the cover book"},
     StudyKey{"timing.storm", R"("whole path")", "whole path",
              "whole path or sheet part: whose time is the duration of the storm that drives kinematic sheet flow"},
     StudyKey{"timing.raster_return_period", "10", "10 where it is listed, else the first that is",
@@ -73,17 +76,25 @@ constexpr std::array keys{
     StudyKey{"timing.sheet_limit_rule", R"("whichever first")", "whichever first",
              "whichever first: sheet_limit or 100 ft sqrt(S)/n; stated: sheet_limit alone"},
     StudyKey{"timing.shallow", R"("by cover")", "by cover",
-             "by cover or paved and unpaved: types of shallow concentrated flow"},
+             "by cover or paved and unpaved: types of shallow concentrated flow; chart: velocity_chart"},
+    StudyKey{"timing.velocity_chart", R"("chart.csv")", "none",
+             "velocity of shallow flow by slope and surface, as points read from a chart"},
     StudyKey{"timing.slope_floor.overland", "0.001", "0.001", "least slope of sheet and shallow flow; 0 is off"},
     StudyKey{"timing.slope_floor.channel", "0.0001", "0.0001", "least slope of channels; 0 is off"},
     StudyKey{"timing.channel_from", R"("5 ha")", "5 ha, never under 20 cells",
              "contributing area where a channel begins, or \"mapped only\""},
     StudyKey{"timing.channel.n", "0.045", "0.045", "Manning's n of channels"},
+    StudyKey{"timing.channel.region", R"("Interior Plains")", "United States",
+             "published set of width and depth by contributing area"},
     StudyKey{"timing.channel.hydraulic_radius", R"("0.4 m")", "from width and depth",
              "one hydraulic radius for all channels"},
     StudyKey{"timing.channel.width", R"("2.70 m * km2^0.352")", "2.70 m * km2^0.352", "top width by contributing area"},
     StudyKey{"timing.channel.depth", R"("0.30 m * km2^0.213")", "0.30 m * km2^0.213",
              "mean depth by contributing area"},
+    StudyKey{"timing.channel.flow", R"("bankfull")", "bankfull",
+             "bankfull: velocity by the size of the channel; design storm: by the depth of the flow C i A in it, for each return period"},
+    StudyKey{"timing.channel.side_slope", "0", "0",
+             "run over rise of the sides of channels under the design storm; their bottom width is width"},
     StudyKey{"timing.ignore_tail", R"("0 %")", "0 %", "share of a point's area, the slowest, that is left out"},
     StudyKey{"timing.shortest_segment", R"("50 m")", "the larger of 50 m and 5 cells",
              "a shorter run of one slope joins its neighbour"},
@@ -93,9 +104,8 @@ constexpr std::array keys{
 };
 
 /// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
-constexpr std::array<std::string_view, 9> not_served{"points.area",         "points.pipes",     "rain.table",
-                                                     "timing.channel.flow", "timing.overrides", "peaks",
-                                                     "uncertainty",         "scenario",         "output.isochrones"};
+constexpr std::array<std::string_view, 8> not_served{
+    "points.area", "points.pipes", "rain.table", "timing.overrides", "peaks", "uncertainty", "scenario", "output.isochrones"};
 
 bool is_or_is_under(std::string_view key, std::string_view stem) {
     return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));

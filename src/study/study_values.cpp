@@ -157,6 +157,12 @@ std::string book(const Stated& stated) {
     return stated.text();
 }
 
+std::string region(const Stated& stated) {
+    std::vector<std::string_view> regions;
+    for (const ChannelSize& size : channel_sizes()) regions.push_back(size.region);
+    return std::string(regions[stated.choice(regions)]);
+}
+
 std::optional<Area> channel_from(const Stated& stated) {
     if (stated.text() == "mapped only") return std::nullopt;
     return stated.area();
@@ -209,6 +215,7 @@ struct Setter {
 
 constexpr double least_n = 0.005;  // smoother than glass
 constexpr double greatest_n = 1.0;
+constexpr double greatest_side_slope = 100.0;
 
 constexpr std::array setters{
     Setter{"title", [](Study& s, const Stated& v) { s.title = v.text(); }},
@@ -236,7 +243,8 @@ constexpr std::array setters{
     Setter{"surface.soil_classes", [](Study& s, const Stated& v) { add_soil_class(s.surface, v); }},
     Setter{"surface.fallback_soil_group",
            [](Study& s, const Stated& v) { s.surface.soil.fallback_group = soil_letter(v); }},
-    Setter{"surface.path_length", [](Study&, const Stated& v) { (void)v.choice({"grid"}, {"unbiased"}); }},
+    Setter{"surface.path_length",
+           [](Study& s, const Stated& v) { s.surface.unbiased_lengths = v.choice({"grid", "unbiased"}) == 1; }},
     Setter{"points.file", [](Study& s, const Stated& v) { s.points.file = v.text(); }},
     Setter{"points.name", [](Study& s, const Stated& v) { s.points.name = v.text(); }},
     Setter{"points.layer", [](Study& s, const Stated& v) { s.points.layer = v.text(); }},
@@ -260,6 +268,8 @@ constexpr std::array setters{
                s.timing.sheet = v.text();
            }},
     Setter{"timing.sheet_constant", [](Study& s, const Stated& v) { s.timing.sheet_constant = sheet_constant(v); }},
+    Setter{"timing.sheet_rain",
+           [](Study& s, const Stated& v) { s.timing.sheet_takes_runoff = v.choice({"rainfall", "runoff"}) == 1; }},
     Setter{"timing.storm",
            [](Study& s, const Stated& v) {
                const bool whole = v.choice({"whole path", "sheet part"}) == 0;
@@ -275,19 +285,25 @@ constexpr std::array setters{
            }},
     Setter{"timing.shallow",
            [](Study& s, const Stated& v) {
-               const bool by_cover = v.choice({"by cover", "paved and unpaved"}) == 0;
-               s.timing.shallow = by_cover ? ShallowRule::by_cover : ShallowRule::paved_and_unpaved;
+               constexpr std::array rules{ShallowRule::by_cover, ShallowRule::paved_and_unpaved, ShallowRule::chart};
+               s.timing.shallow = rules[v.choice({"by cover", "paved and unpaved", "chart"})];
            }},
+    Setter{"timing.velocity_chart", [](Study& s, const Stated& v) { s.timing.velocity_chart = v.text(); }},
     Setter{"timing.slope_floor.overland",
            [](Study& s, const Stated& v) { s.timing.slope_floor_overland = v.number(0, 1); }},
     Setter{"timing.slope_floor.channel",
            [](Study& s, const Stated& v) { s.timing.slope_floor_channel = v.number(0, 1); }},
     Setter{"timing.channel_from", [](Study& s, const Stated& v) { s.timing.channel_from = channel_from(v); }},
     Setter{"timing.channel.n", [](Study& s, const Stated& v) { s.timing.channel.n = v.number(least_n, greatest_n); }},
+    Setter{"timing.channel.region", [](Study& s, const Stated& v) { s.timing.channel.region = region(v); }},
     Setter{"timing.channel.hydraulic_radius",
            [](Study& s, const Stated& v) { s.timing.channel.hydraulic_radius = v.length(); }},
     Setter{"timing.channel.width", [](Study& s, const Stated& v) { s.timing.channel.width = v.power_law(); }},
     Setter{"timing.channel.depth", [](Study& s, const Stated& v) { s.timing.channel.depth = v.power_law(); }},
+    Setter{"timing.channel.flow",
+           [](Study& s, const Stated& v) { s.timing.channel.design_storm = v.choice({"bankfull", "design storm"}) == 1; }},
+    Setter{"timing.channel.side_slope",
+           [](Study& s, const Stated& v) { s.timing.channel.side_slope = v.number(0, greatest_side_slope); }},
     Setter{"timing.ignore_tail",
            [](Study& s, const Stated& v) { s.timing.ignore_tail = v.fraction(Sign::not_negative); }},
     Setter{"timing.shortest_segment", [](Study& s, const Stated& v) { s.timing.shortest_segment = v.length(); }},

@@ -8,17 +8,19 @@
 #include "rillclock/core/nearest_word.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/core/quantity_text.hpp"
+#include "rillclock/hydraulics/manning.hpp"
 #include "rillclock/hydraulics/shallow_flow.hpp"
 #include "rillclock/surface/cover_book.hpp"
 
 namespace rillclock {
 namespace {
 
-constexpr std::array<std::string_view, 22> known_columns{
+constexpr std::array<std::string_view, 26> known_columns{
     "code",          "name",           "n_low", "n_typical",     "n_high",         "shallow_type",
     "shallow_k_m_s", "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source",
     "from_memory",   "cn_a",           "cn_b",  "cn_c",          "cn_d",           "c",
-    "c_a",           "c_b",            "c_c",   "c_d"};
+    "c_a",           "c_b",            "c_c",   "c_d",           "shallow_n",      "shallow_radius_m",
+    "shallow_radius_ft", "chart_line"};
 constexpr std::array<std::string_view, 4> curve_number_columns{"cn_a", "cn_b", "cn_c", "cn_d"};
 constexpr std::array<std::string_view, 4> coefficient_columns{"c_a", "c_b", "c_c", "c_d"};
 constexpr std::array<std::string_view, 4> needed_columns{"code", "name", "n_typical", "source"};
@@ -129,7 +131,36 @@ Error unknown_type(const BookRow& row, const std::string& name) {
     return row.fault("shallow_type", "is \"" + name + "\"; write one of: " + list + did_you_mean(name, names));
 }
 
+std::optional<Length> shallow_radius(const BookRow& row) {
+    const auto si = row.number("shallow_radius_m");
+    if (si) row.require_empty("shallow_radius_ft", "shallow_radius_m is given too");
+    if (si) return metres(*si);
+    const auto us = row.number("shallow_radius_ft");
+    if (us) return feet(*us);
+    return std::nullopt;
+}
+
+/// n and R together, and neither a type nor k beside them.
+std::optional<ShallowConveyance> conveyance(const BookRow& row) {
+    const auto n = row.number("shallow_n");
+    const auto radius = shallow_radius(row);
+    if (!n && !radius) return std::nullopt;
+    if (!n) throw row.fault("shallow_n", "is empty, but a radius is given; conveyance needs n and radius");
+    if (!radius) throw row.fault("shallow_n", "is given without shallow_radius_m or shallow_radius_ft; conveyance needs n and radius");
+    if (!(*n <= 2)) throw row.fault("shallow_n", "is " + significant(*n) + "; a roughness lies between 0 and 2");
+    for (const auto column : {"shallow_type", "shallow_k_m_s", "shallow_k_ft_s"})
+        row.require_empty(column, "n and radius of shallow flow are given too");
+    return ShallowConveyance{.n = *n, .hydraulic_radius = *radius};
+}
+
 void read_shallow(const BookRow& row, CoverClass& cover) {
+    cover.chart_line = row.text("chart_line").empty() ? cover.name : row.text("chart_line");
+    cover.conveyance = conveyance(row);
+    if (cover.conveyance) {
+        cover.shallow_k = shallow_conveyance(cover.conveyance->n, cover.conveyance->hydraulic_radius, manning_factor_us_rounded);
+        cover.shallow_type = "conveyance";
+        return;
+    }
     const std::string name = row.text("shallow_type");
     const auto k = stated_k(row);
     if (k) {
@@ -141,7 +172,7 @@ void read_shallow(const BookRow& row, CoverClass& cover) {
     if (name.empty())
         throw row.fault("shallow_type",
                         "is empty; every class but open water needs a type, such as short-grass pasture, or a "
-                        "velocity at slope 1 in shallow_k_m_s or shallow_k_ft_s");
+                        "velocity at slope 1 in shallow_k_m_s or shallow_k_ft_s, or shallow_n and a radius");
     const ShallowType* type = find_shallow_type(name);
     if (type == nullptr) throw unknown_type(row, name);
     cover.shallow_k = type->k();
@@ -185,7 +216,8 @@ void read_runoff_coefficients(const BookRow& row, CoverClass& cover) {
 }
 
 void require_no_ground(const BookRow& row) {
-    for (const auto column : {"n_low", "n_typical", "n_high", "shallow_type", "shallow_k_m_s", "shallow_k_ft_s"})
+    for (const auto column : {"n_low", "n_typical", "n_high", "shallow_type", "shallow_k_m_s", "shallow_k_ft_s", "shallow_n",
+                              "shallow_radius_m", "shallow_radius_ft", "chart_line"})
         row.require_empty(column, "a water depth makes the class open water");
 }
 

@@ -26,7 +26,20 @@ FixedTime storm_time(const SheetRules& sheet, double index_m) {
     return to_fixed(in_seconds(sheet.formula.at_unit_storm(metres(index_m))));
 }
 
-StepPart sheet_part(const StepView& step, const SheetRules& sheet, double share) {
+StepPart characteristic_part(const StepView& step, const SheetRules& sheet, double share) {
+    StepPart part;
+    part.regime = Regime::sheet;
+    part.length_m = share * from_fixed(step.length);
+    part.slope = step.slope;
+    part.index_from_m = from_fixed(step.from_divide);
+    part.index_to_m = part.index_from_m + part.length_m;
+    const SheetStretch stretch{.n = step.surface->sheet_n, .length = metres(part.length_m), .slope = step.slope};
+    const Duration time = sheet.formula.along_characteristic(stretch, metres(part.index_from_m));
+    part.time.storm = to_fixed(step.surface->sheet_factor * in_seconds(time));
+    return part;
+}
+
+StepPart index_part(const StepView& step, const SheetRules& sheet, double share) {
     const auto index_step = static_cast<double>(sheet_index_step(step));
     const FixedLength index_to = step.sheet_index + std::llround(share * index_step);
     StepPart part;
@@ -40,6 +53,14 @@ StepPart sheet_part(const StepView& step, const SheetRules& sheet, double share)
     return part;
 }
 
+StepPart sheet_part(const StepView& step, const SheetRules& sheet, double share) {
+    switch (sheet.basis) {
+        case SheetBasis::index: return index_part(step, sheet, share);
+        case SheetBasis::characteristic: return characteristic_part(step, sheet, share);
+    }
+    return {};
+}
+
 StepPart moving_part(const StepView& step, Regime regime, double length_m, Speed speed) {
     StepPart part;
     part.regime = regime;
@@ -51,12 +72,12 @@ StepPart moving_part(const StepView& step, Regime regime, double length_m, Speed
 }
 
 StepPart shallow_part(const StepView& step, double length_m) {
-    return moving_part(step, Regime::shallow, length_m, shallow_velocity(step.surface->shallow_k, step.slope));
+    return moving_part(step, Regime::shallow, length_m, shallow_speed(*step.surface, step.slope));
 }
 
 StepPart channel_part(const StepView& step, const ChannelRules& channel) {
-    const Length radius = channel.radius_at(square_metres(from_fixed_area(step.area)));
-    const Speed speed = manning_velocity({.n = channel.n, .hydraulic_radius = radius, .slope = step.slope});
+    const Length radius = channel_radius(step, channel);
+    const Speed speed = manning_velocity({.n = channel_n(step, channel), .hydraulic_radius = radius, .slope = step.slope});
     StepPart part = moving_part(step, Regime::channel, from_fixed(step.length), speed);
     part.radius_m = in_metres(radius);
     return part;
@@ -95,6 +116,17 @@ StepParts parts_by_regime(const StepView& step, const TravelRules& rules) {
 }
 
 }  // namespace
+
+double channel_n(const StepView& step, const ChannelRules& rules) { return step.reach ? step.reach->n : rules.n; }
+
+Length channel_radius(const StepView& step, const ChannelRules& rules) {
+    if (step.reach && step.reach->radius_m > 0) return metres(step.reach->radius_m);
+    return rules.radius_at(square_metres(from_fixed_area(step.area)));
+}
+
+Speed shallow_speed(const SurfaceHydraulics& surface, double slope) {
+    return surface.shallow_line ? surface.shallow_line->at(slope) : shallow_velocity(surface.shallow_k, slope);
+}
 
 FixedLength sheet_index_step(const StepView& step) {
     if (step.length == 0) return 0;

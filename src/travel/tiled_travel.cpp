@@ -84,6 +84,11 @@ void TiledTravel::find_times() {
     fixed_.solve<decltype(fixed_channel(std::declval<TileDesk&>()))>();
 }
 
+void TiledTravel::time_again(const ChannelReaches& reaches) {
+    in_.reaches = &reaches;
+    find_times();
+}
+
 void TiledTravel::read_elevations(TileDesk& desk) const {
     desk.elevation.resize(desk.flow.size());
     in_.elevations.read(desk.flow.window(), desk.elevation);
@@ -150,7 +155,8 @@ StepView TiledTravel::step_view(const TileDesk& desk, Local local) const {
             .ponded_m = (desk.spill[local] - desk.elevation[local]) * in_.metres_per_elevation_unit,
             .area = desk.area[local],
             .from_divide = desk.from_divide[local],
-            .sheet_index = desk.sheet_index[local]};
+            .sheet_index = desk.sheet_index[local],
+            .reach = in_.reaches ? reach_at(*in_.reaches, cell) : nullptr};
 }
 
 TiledOwners::TiledOwners(const TiledForest& forest, std::vector<CellLabel> labels, const Executor& executor)

@@ -190,8 +190,11 @@ class Town(CommandTest):
         rows = [row for row in table(self.folder / f"town/{units}/tables/segments.csv") if row["regime"] == "sheet"]
         self.assertGreater(len(rows), 10)
         for row in rows:
-            growth = float(row[f"index_to_{unit}"]) ** 0.6 - float(row[f"index_from_{unit}"]) ** 0.6
-            expected = KINEMATIC_S[unit] * growth / float(row[f"rain_intensity_{rain_unit}_per_h"]) ** 0.4
+            growth = float(row[f"distance_to_{unit}"]) ** 0.6 - float(row[f"distance_from_{unit}"]) ** 0.6
+            if growth == 0:
+                continue
+            surface = (float(row["n"]) / math.sqrt(float(row["slope_equivalent"]))) ** 0.6
+            expected = KINEMATIC_S[unit] * surface * growth / float(row[f"rain_intensity_{rain_unit}_per_h"]) ** 0.4
             if float(row[f"length_{unit}"]) > 0:
                 self.assertAlmostEqual(float(row["formula_time_s"]) / expected, 1, delta=1e-3, msg=row)
 

@@ -36,7 +36,7 @@ class Row:
         if regime == "sheet":
             return SHEET_S[self.unit] * (n("index_to") ** 0.8 - n("index_from") ** 0.8) / n("rain_2_year_24_hour") ** 0.5
         if regime == "shallow":
-            return n("length") / (n("k") * math.sqrt(n("slope_equivalent")))
+            return n("length") / (n("k") * n("slope_equivalent") ** n("slope_exponent"))
         if regime == "channel":
             velocity = MANNING[self.unit] / n("n") * n("hydraulic_radius") ** (2 / 3) * math.sqrt(n("slope_equivalent"))
             return n("length") / velocity

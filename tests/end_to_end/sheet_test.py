@@ -101,7 +101,7 @@ class Sheets(CommandTest):
             self.assertLess(abs(got - float(result)), TOLERANCE * abs(float(result)) + 5.1e-5 * (label == "sum"),
                             f"{where}: {label} = {expression} = {result} {unit}, but it is {got}")
         # Nothing looks like a calculation and escapes the check.
-        likely = [line for line in whole_lines(text) if re.match(r"^ {4}(T|T ponded|V|u|i|sum) = ", line)]
+        likely = [line for line in whole_lines(text) if re.match(r"^ {4}(T|T ponded|V|Q|u|x|i|sum) = ", line)]
         self.assertEqual(len(likely), len(lines), where)
         self.assertLessEqual(max(map(len, text.splitlines())), 100, where)
         return lines
@@ -115,12 +115,13 @@ class Sheets(CommandTest):
             if length == 0:
                 continue
             if regime == "sheet":
-                expression, end = lines["u"]
+                surface = number_after("n", item) / math.sqrt(number_after("S", item))
+                expression, end = lines["u" if kinematic_rain is None else "x"]
                 begin = float(expression.split(" + ")[0])
-                self.assertAlmostEqual(begin + number_after("n", item) * length / math.sqrt(number_after("S", item)), end, delta=1e-3 * end)
+                self.assertAlmostEqual(begin + (surface if kinematic_rain is None else 1) * length, end, delta=1e-3 * end)
                 u0, u1 = (begin, end) if us else (begin / FOOT, end / FOOT)
                 minutes = (60 * 0.007 * (u1 ** 0.8 - u0 ** 0.8) / (0.062 / INCH) ** 0.5 if kinematic_rain is None else
-                           0.933 * (u1 ** 0.6 - u0 ** 0.6) / (kinematic_rain if us else kinematic_rain / 25.4) ** 0.4)
+                           0.933 * surface ** 0.6 * (u1 ** 0.6 - u0 ** 0.6) / (kinematic_rain if us else kinematic_rain / 25.4) ** 0.4)
             elif regime == "shallow":
                 minutes = length / number_after("k", item) / math.sqrt(number_after("S", item)) / 60
             elif regime == "channel":

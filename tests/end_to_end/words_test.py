@@ -82,6 +82,15 @@ class Readme(unittest.TestCase):
         listed = dict(re.findall(r"(?m)^\| `([\w.]+)` \|.*\| ([^|]*) \|$", section("The study file")))
         self.assertEqual(listed, known)
 
+    def test_every_table_of_roughness_is_named(self):
+        text = subprocess.run([COMMAND, "methods"], capture_output=True, text=True, check=True).stdout
+        tables = re.findall(r"(?m)^Manning's n of ([a-z ]+)", text)
+        self.assertEqual(len(tables), 5)
+        for name in tables:
+            self.assertIn(name.split(" and ")[0].split(" less ")[0], README)
+        self.assertIn("    0.016  asphalt pavement, rough\n", text)
+        self.assertIn("    0.04  mountain: gravels, cobbles, few boulders (0.03 to 0.05)\n", text)
+
     def test_every_method_is_named_with_its_formula_and_source(self):
         text = subprocess.run([COMMAND, "methods"], capture_output=True, text=True, check=True).stdout
         listed = re.findall(r"(?m)^\| `([a-z-]+)` \| (.*) \| `(.*)` \| (.*) \|$", section("Formulas and where they come from"))

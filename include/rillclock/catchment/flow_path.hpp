@@ -18,6 +18,7 @@ struct PathPiece {
     double share_to = 1.0;
     std::uint8_t surface = 0;     ///< position of the surface class
     FixedArea area = 0;           ///< contributing area at the cell
+    const ChannelReach* reach = nullptr;   ///< of a channel that has one of its own
 };
 
 /// The pieces of a path, in order; the last cell has no step and gives none.

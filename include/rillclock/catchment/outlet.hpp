@@ -4,6 +4,7 @@
 #include <vector>
 
 #include "rillclock/catchment/arrivals.hpp"
+#include "rillclock/catchment/path_doubts.hpp"
 #include "rillclock/catchment/segments.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 
@@ -15,6 +16,7 @@ struct PointPath {
     std::vector<PathPiece> pieces;
     std::vector<Segment> segments;
     PathSummary summary;
+    PathDoubts doubts;
     double seconds = 0.0;            ///< under the point's storm
     double end_to_end_s = 0.0;       ///< the sum of what end-to-end slopes would give
 };

@@ -53,6 +53,7 @@ struct StudyResult {
     const ReferenceSystem& system;
     const ElevationFormat& format;
     const CoverBook& book;
+    std::span<const MappedSection> sections;   ///< that mapped channels state
     std::span<const SurfaceHydraulics> surface_classes;
     const std::vector<Outlet>& outlets;
     const std::vector<PointMethods>& methods;   ///< of each outlet
@@ -65,6 +66,17 @@ struct StudyResult {
 [[nodiscard]] inline std::optional<Intensity> sheet_intensity(const StudyResult& result, const Outlet& outlet) {
     if (!result.study.timing.is_kinematic()) return std::nullopt;
     return outlet.storms[result.rain.raster].iteration.intensity();
+}
+
+/// The section that the mapped channel of a segment states; null elsewhere.
+[[nodiscard]] inline const MappedSection* section_of(const StudyResult& result, const Segment& segment) {
+    const bool is_stated = segment.reach_from != nullptr && segment.reach_from->section != no_section;
+    return is_stated ? &result.sections[segment.reach_from->section] : nullptr;
+}
+
+/// What lengths along the grid were multiplied with.
+[[nodiscard]] inline double step_weight(const StudyResult& result) {
+    return result.study.surface.unbiased_lengths ? unbiased_step_weight : 1.0;
 }
 
 /// The cover class of a segment; null in channels, where the cover does not matter.

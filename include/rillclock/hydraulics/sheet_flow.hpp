@@ -27,6 +27,17 @@ struct SheetFormula {
     [[nodiscard]] Duration at_unit_storm(Length u) const;
     /// Time from index u0 to u1 ≥ u0, at s = 1: T(u1) − T(u0).
     [[nodiscard]] Duration at_unit_storm(Length u0, Length u1) const;
+
+    /// Time of the kinematic characteristic over a stretch of one surface and slope that lies from x0 to x1 ≥ x0 below the divide, at
+    /// s = 1: coefficient · (n/√S)^e · (x1^e − x0^e).
+    ///
+    /// From the divide on one plane that is T(u). Below a change of n or S it is not: the flow in a strip grows with the ground above
+    /// it, q = i·x (continuity), whatever that ground is, so the depth jumps where n or S does and is not i·t. With q = h^(5/3)·√S/n
+    /// and a wave speed of (5/3)·q/h, dx over that speed is 0.6·(n/√S)^0.6·(i·x)^-0.4·dx, which is integrated here.
+    /// Source: Lighthill and Whitham, 1955; Eagleson, Dynamic Hydrology, 1970, for cascades of planes (from memory; derived here).
+    [[nodiscard]] Duration along_characteristic(const SheetStretch& stretch, Length x0) const;
+    /// The one slope that gives a stretch of that n and length from x0 the time it was found to take, at s = 1.
+    [[nodiscard]] double characteristic_slope(double n, Length x0, Length x1, Duration time) const;
 };
 
 /// Constant of the NRCS sheet-flow formula, for hours, feet and inches.
@@ -54,6 +65,10 @@ inline constexpr double kinematic_constant_morgali_linsley =
 
 /// s of the kinematic-wave formula: i^-0.4 with the intensity in metres per second.
 [[nodiscard]] double kinematic_storm_factor(Intensity intensity);
+
+/// By what the storm factor grows where the kinematic wave takes rainfall excess C·i in place of i: C^-0.4, with the runoff
+/// coefficient above 0. Source: Chin, Water-Resources Engineering (from memory).
+[[nodiscard]] double kinematic_runoff_factor(double runoff_coefficient);
 
 /// The sheet index at which sheet flow ends: 100 ft.
 /// Source: McCuen and Spiess, "Assessment of kinematic wave time of concentration", J. Hydraul. Eng. 121(3), 1995.

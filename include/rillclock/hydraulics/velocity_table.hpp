@@ -1,5 +1,6 @@
 #pragma once
 
+#include <cstddef>
 #include <string>
 #include <string_view>
 #include <vector>
@@ -14,6 +15,13 @@ struct VelocityPoint {
     Speed velocity;
 };
 
+/// The power of the slope between two neighbouring points of a chart: V = at_slope_1 · S^exponent.
+struct VelocityLaw {
+    std::size_t interval = 0;  ///< between which points: from 0
+    Speed at_slope_1;
+    double exponent = 0.5;
+};
+
 /// The line of one surface on a chart of velocity by slope, as points read from it.
 ///
 /// Between two points the velocity is a power of the slope (straight on log-log paper); at a point it is that point's
@@ -25,6 +33,11 @@ struct VelocityLine {
 
     [[nodiscard]] Speed at(double slope) const;  ///< for a slope above 0; no number below
     [[nodiscard]] bool covers(double slope) const;
+    /// The power that holds at a slope; at a point, that below it.
+    [[nodiscard]] VelocityLaw law_at(double slope) const;
+    /// Whether the power of an interval holds at a slope, to within 1e-4 of the slopes at its ends (so that slopes which lie at a point
+    /// but for rounding do not change the power); the first and the last interval are open.
+    [[nodiscard]] bool holds(std::size_t interval, double slope) const;
 };
 
 /// The lines of one chart.

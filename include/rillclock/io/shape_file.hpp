@@ -1,6 +1,8 @@
 #pragma once
 
 #include <filesystem>
+#include <optional>
+#include <span>
 #include <string>
 #include <vector>
 
@@ -18,6 +20,8 @@ struct ShapeFile {
     std::vector<Line> lines;
     std::vector<Place> points;
     std::vector<Polygon> polygons;
+    std::vector<std::size_t> feature_of_line;   ///< number of each line's feature in the file, from 1
+    std::vector<std::vector<std::optional<double>>> numbers;   ///< of each line: the asked fields; none where absent or empty
     std::size_t features = 0;   ///< of which at least one shape was taken
     Notices notices;
 };
@@ -28,7 +32,9 @@ struct ShapeFile {
 /// Features of another type, without a shape, with corners that are not finite or that have no image in `target` are left out, one
 /// notice each. Throws Error (inputs) where the file cannot be read or has several layers, its reference system is missing, or it holds
 /// no shape that can be used.
+///
+/// `fields` are fields whose numbers are wanted of each line; a file may lack them. Throws Error (inputs) where one holds no numbers.
 [[nodiscard]] ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds,
-                                    const ReferenceSystem& target);
+                                    const ReferenceSystem& target, std::span<const std::string> fields = {});
 
 }  // namespace rillclock

@@ -41,12 +41,26 @@ public:
     /// The shorter side of the middle row's cells: what "one cell" means where a study speaks of cells.
     [[nodiscard]] Length cell_side() const;
 
+    /// The same ground with every step counted at `weight` times its length; areas stay. For `unbiased_step_weight`.
+    [[nodiscard]] Ground with_steps_weighted(double weight) const;
+    /// What `length` gives over the distance of the two centres; 1 but for weighted steps.
+    [[nodiscard]] double step_weight() const { return step_weight_; }
+
 private:
     explicit Ground(std::vector<GroundRow> rows) : rows_(std::move(rows)) {}
     [[nodiscard]] const GroundRow& at(std::int64_t row) const {
         return rows_[rows_.size() == 1 ? 0U : static_cast<std::size_t>(row < 0 ? 0 : row)];
     }
     std::vector<GroundRow> rows_;
+    double step_weight_ = 1.0;
 };
+
+/// Weight of steps to a neighbour by which the greatest error of a path along the grid, over all directions of a straight line, is least:
+/// 0.96194 orthogonal and 1.36039 diagonal, which is 0.96194 √2; so it weighs both alike, and cells of any shape.
+///
+/// Without, a path is cos θ + (√2 − 1) sin θ times as long as the line, θ from 0° to 45°: 1.0824 at 22.5°, 1.0548 on average. With, from
+/// 0.962 to 1.041, 1.015 on average. Source: Butt and Maragos, Optimum design of chamfer distance transforms, IEEE Trans. Image
+/// Process. 7(10), 1998 (values from memory; the errors follow by arithmetic).
+inline constexpr double unbiased_step_weight = 0.96194;
 
 }  // namespace rillclock

@@ -8,6 +8,7 @@
 
 #include "rillclock/core/quantity.hpp"
 #include "rillclock/core/quantity_text.hpp"
+#include "rillclock/hydraulics/channel_size.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 #include "rillclock/rainfall/rain_source.hpp"
 #include "rillclock/surface/cover_book.hpp"
@@ -20,7 +21,7 @@ enum class ReportUnits { us, si };
 /// length.
 enum class SheetLimitRule { length_or_index, stated };
 /// How shallow concentrated flow is told apart.
-enum class ShallowRule { by_cover, paved_and_unpaved };
+enum class ShallowRule { by_cover, paved_and_unpaved, chart };
 
 /// A study as stated: what a study file or the command line says, with the defaults that do not depend on the data.
 /// What is absent here and depends on the data is settled by `resolve`.
@@ -53,6 +54,7 @@ struct SurfaceStudy {
     std::optional<SoilGroup> soil_group = {};  ///< of the whole study, for curve numbers and runoff coefficients
     SoilStudy soil = {};                       ///< or a raster of soil groups
     std::optional<int> fallback_class = {};    ///< for codes the book does not know and cells without cover
+    bool unbiased_lengths = false;             ///< steps along the grid count with `unbiased_step_weight`
 };
 
 struct PointStudy {
@@ -81,23 +83,31 @@ struct RainStudy {
     [[nodiscard]] bool is_by_duration() const { return file.has_value() || !formulas.empty(); }
 };
 
-/// The section of channels: a stated hydraulic radius, or top width and mean depth by contributing area.
-/// With neither, the sizes of the whole United States (`channel_sizes`).
+/// The section of channels: a stated hydraulic radius, or top width and mean depth by contributing area, of the study's own or of a
+/// region. With neither, the sizes of the whole United States (`channel_sizes`).
 struct ChannelStudy {
     double n = 0.045;
+    std::optional<std::string> region = {};  ///< one of `channel_sizes()`
     std::optional<Length> hydraulic_radius = {};
     std::optional<PowerLaw> width = {};
     std::optional<PowerLaw> depth = {};
+    bool design_storm = false;               ///< velocities by the flow of the design storm in place of a bankfull size
+    std::optional<double> side_slope = {};   ///< run over rise, of channels under the design storm; 0 where absent
+
+    /// The published set whose width and depth count; null where the study states its own size.
+    [[nodiscard]] const ChannelSize* published_size() const;
 };
 
 struct TimingStudy {
     std::string sheet = "nrcs";                       ///< or "kinematic"
     std::optional<double> sheet_constant = {};        ///< printed constant of the kinematic formula; 0.933 where absent
+    bool sheet_takes_runoff = false;                  ///< kinematic sheet flow under C·i in place of i
     std::optional<StormDuration> storm = {};          ///< the whole path where absent
     std::optional<double> raster_return_period = {};  ///< years
     Length sheet_limit = feet(100);
     SheetLimitRule sheet_limit_rule = SheetLimitRule::length_or_index;
     ShallowRule shallow = ShallowRule::by_cover;
+    std::optional<std::string> velocity_chart = {};  ///< CSV file relative to the study's folder, for ShallowRule::chart
     double slope_floor_overland = 0.001;             ///< rise over run; 0 is off
     double slope_floor_channel = 0.0001;             ///< rise over run; 0 is off
     std::optional<Area> channel_from = hectares(5);  ///< absent: only where channels are mapped

@@ -16,6 +16,12 @@ namespace rillclock {
 /// Hydrologic soil groups: A lets the most water in, D the least.
 enum class SoilGroup { a, b, c, d };
 
+/// Shallow flow by conveyance: V = K·√S with K = (1.49/n)·R^(2/3), feet and seconds (`shallow_conveyance`).
+struct ShallowConveyance {
+    double n = 0.0;
+    Length hydraulic_radius = {};
+};
+
 /// How water runs over one class of land cover.
 struct CoverClass {
     int code = 0;  ///< the value in the cover raster
@@ -25,6 +31,8 @@ struct CoverClass {
     double n_high = 0.0;
     Speed shallow_k = {};           ///< velocity of shallow concentrated flow at slope 1; 0 for open water
     std::string shallow_type = {};  ///< short name of one of `shallow_types()`; "stated" where the book gives k itself
+    std::optional<ShallowConveyance> conveyance = {};  ///< what k was made from, where the book gives that
+    std::string chart_line = {};                       ///< name of the class's line on a chart of velocity by slope
     bool paved = false;             ///< counts as paved where only paved and unpaved are told apart
     std::optional<Length> water_depth = {};  ///< mean depth; present for open water alone
     std::array<std::optional<double>, 4> curve_numbers =
@@ -67,12 +75,14 @@ private:
 ///
 /// - `code` (whole number), `name`;
 /// - `n_typical`, and `n_low`, `n_high` (each may be absent or empty: then n_typical);
-/// - `shallow_type` (a short name of `shallow_types()`), or `shallow_k_m_s` or `shallow_k_ft_s` (velocity at slope 1);
+/// - `shallow_type` (a short name of `shallow_types()`), or `shallow_k_m_s` or `shallow_k_ft_s` (velocity at slope 1), or
+///   `shallow_n` with `shallow_radius_m` or `shallow_radius_ft` (conveyance: k = (1.49/n)·R^(2/3) in feet and seconds);
+/// - `chart_line` (name of the line on a chart of velocity by slope; may be absent or empty: then the class's name);
 /// - `paved` (yes or no; may be absent: then yes for the type "pavement" alone);
 /// - `water_depth_m` or `water_depth_ft`: a mean depth makes the class open water, whose n and shallow fields stay
 /// empty;
 /// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group), `c` (runoff coefficient of any soil) and `c_a` to `c_d`
-///   (of each soil group; each may be absent or empty), for methods that time a catchment as one lump;
+///   (of each soil group; each may be absent or empty), for runoff and for methods that time a catchment as one lump;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
 ///
 /// `file` names the text in errors. Throws an input error with line and column for a column that is missing or unknown,

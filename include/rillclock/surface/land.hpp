@@ -2,6 +2,7 @@
 
 #include <array>
 #include <compare>
+#include <cstddef>
 #include <cstdint>
 #include <optional>
 #include <vector>
@@ -13,6 +14,8 @@ namespace rillclock {
 
 /// The hydrologic soil group of a cell, or that none is known.
 enum class CellSoil : std::uint8_t { unknown, a, b, c, d };
+
+inline constexpr std::size_t cell_soils = 5;   ///< how many there are
 
 [[nodiscard]] CellSoil cell_soil(SoilGroup group);
 /// None where the soil is not known.

@@ -3,6 +3,7 @@
 #include <cstdint>
 
 #include "rillclock/core/fixed_point.hpp"
+#include "rillclock/travel/channel_reach.hpp"
 #include "rillclock/travel/regime.hpp"
 #include "rillclock/travel/slope_ahead.hpp"
 #include "rillclock/travel/surface_table.hpp"
@@ -39,6 +40,7 @@ struct StepView {
     FixedArea area = 0;                           ///< contributing area
     FixedLength from_divide = 0;                  ///< distance from the divide at the cell
     FixedLength sheet_index = 0;                  ///< sheet index u at the cell
+    const ChannelReach* reach = nullptr;          ///< of a channel that has one of its own
 };
 
 /// One homogeneous part of a step. A step has one, or two where sheet flow ends within it.
@@ -47,7 +49,7 @@ struct StepPart {
     bool ponded = false;              ///< carried by wave celerity, whatever the regime
     double length_m = 0.0;
     double slope = 0.0;
-    double index_from_m = 0.0;        ///< sheet index at both ends; sheet only
+    double index_from_m = 0.0;        ///< sheet only: sheet index at both ends, or distance from the divide, by SheetBasis
     double index_to_m = 0.0;
     double radius_m = 0.0;            ///< hydraulic radius; channel only
     double speed_m_per_s = 0.0;       ///< of all but unponded sheet flow
@@ -63,11 +65,19 @@ struct StepParts {
 /// A sheet index that no sheet flow reaches: what a step through channel or water adds, so that sheet flow never comes back below it.
 inline constexpr Length sheet_is_over = metres(1e6);
 
+/// Manning's n and hydraulic radius of a channel step: those of its reach where there is one, else by area.
+[[nodiscard]] double channel_n(const StepView& step, const ChannelRules& rules);
+[[nodiscard]] Length channel_radius(const StepView& step, const ChannelRules& rules);
+
+/// Velocity of shallow flow on a slope: of the chart where there is one, else k·√S.
+[[nodiscard]] Speed shallow_speed(const SurfaceHydraulics& surface, double slope);
+
 /// What the step adds to the sheet index: n·d/√S overland, in fixed point of metres; `sheet_is_over` in channels and water.
 [[nodiscard]] FixedLength sheet_index_step(const StepView& step);
 
 /// Cuts a step by regime and gives each part its time. Precedence: channel and water by `kind`, then sheet flow as far as both limits
-/// reach, then shallow flow. A sheet part takes T(u₁) − T(u₀), so that steps add up to the handbook's number. Ponded ground carries
+/// reach, then shallow flow. A sheet part takes T(u₁) − T(u₀), so that steps add up to the handbook's number, or the time of the
+/// characteristic, by SheetBasis. Ponded ground carries
 /// water at √(g·depth), at most at the stated speed, where that is faster than its regime.
 [[nodiscard]] StepParts step_parts(const StepView& step, const TravelRules& rules);
 

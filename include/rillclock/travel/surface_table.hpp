@@ -1,10 +1,12 @@
 #pragma once
 
 #include <cstdint>
+#include <memory>
 #include <optional>
 #include <vector>
 
 #include "rillclock/core/quantity.hpp"
+#include "rillclock/hydraulics/velocity_table.hpp"
 #include "rillclock/raster/raster.hpp"
 #include "rillclock/surface/land.hpp"
 
@@ -15,6 +17,8 @@ struct SurfaceHydraulics {
     double sheet_n = 0.0;                          ///< roughness of sheet flow
     Speed shallow_k = {};                          ///< velocity of shallow flow at a slope of 1: V = k·√S
     std::optional<Length> water_depth = {};        ///< mean depth, where the class is open water
+    double sheet_factor = 1.0;                     ///< of kinematic sheet flow's time: C^-0.4 where it takes C·i
+    std::shared_ptr<const VelocityLine> shallow_line = {};  ///< velocity by slope where a chart gives it, in place of shallow_k
 };
 
 /// The surface of each cell: a position in `classes`, and its soil where that differs from cell to cell.

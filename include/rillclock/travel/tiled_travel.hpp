@@ -20,6 +20,7 @@ struct TiledGround {
     double metres_per_elevation_unit = 1.0;
     const SurfaceTable& surface;
     std::span<const Cell> mapped_channels = {};   ///< channels whatever drains to them and whatever covers them
+    const ChannelReaches* reaches = nullptr;      ///< of channel cells that have one of their own; null where none has
 };
 
 /// A label on a cell: a design point's number.
@@ -78,6 +79,8 @@ public:
     void read_areas(Tile tile, TileDesk& desk) const;
     /// Makes everything about a tile's cells but labels and owners.
     void read_tile(Tile tile, TileDesk& desk) const;
+    /// Makes the times once more, with other reaches of channels; all else stays. `reaches` must outlive the times.
+    void time_again(const ChannelReaches& reaches);
     /// The step out of a cell of a tile that was read.
     [[nodiscard]] StepView step_view(const TileDesk& desk, Local local) const;
 

@@ -20,9 +20,16 @@ struct SlopeRules {
     double channel_floor = 0.0001;
 };
 
+/// What sheet flow is a function of.
+enum class SheetBasis {
+    index,           ///< the sheet index u alone: T(u1) − T(u0)
+    characteristic,  ///< each stretch and its distance from the divide, as SheetFormula::along_characteristic
+};
+
 /// How sheet flow is timed and where it ends.
 struct SheetRules {
     SheetFormula formula = nrcs_sheet_formula();
+    SheetBasis basis = SheetBasis::index;
     double storm_factor = 1.0;                     ///< s of the study's own storm
     Length limit = feet(100);                      ///< of the distance from the divide
     Length index_limit = mccuen_spiess_index;      ///< of u; infinite where only `limit` counts
@@ -34,12 +41,16 @@ struct ChannelRules {
     std::optional<Length> hydraulic_radius;
     PowerLaw width = channel_sizes().front().width;
     PowerLaw depth = channel_sizes().front().depth;
+    /// Smallest area of the channels that width and depth were made from; none where they are the study's own.
+    std::optional<Area> sizes_from;
     /// Area from which a cell is a channel; none where only mapped lines are.
     std::optional<Area> from_area = hectares(5);
 
     [[nodiscard]] Length radius_at(Area area) const {
         return hydraulic_radius ? *hydraulic_radius : hydraulic_radius_of(width(area), depth(area));
     }
+    /// Flow area over top width. Where a hydraulic radius is stated and no section, that radius, which is never more.
+    [[nodiscard]] Length mean_depth_at(Area area) const { return hydraulic_radius ? *hydraulic_radius : depth(area); }
 };
 
 /// Ponded cells carry water at the wave celerity of the depth above the ground.

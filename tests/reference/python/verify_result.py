@@ -32,7 +32,11 @@ Choices where the rules can be read in more than one way
 13. A cell with the fallback class (unknown or no cover) is treated as one of that class.
 14. A cell beside a void is one that touches it by side or corner.
 15. Regime of a cell in the raster: the regime in which its step starts.
-16. With kinematic sheet flow the time of a cell is under the intensity that result.json states for the last point on its way down, and a
+16. Kinematic sheet flow goes by the distance x from the divide: a step that begins at x0 and ends, or leaves sheet flow, at x1 takes
+    K (n/√S)^0.6 (x1^0.6 − x0^0.6) / i^0.4, with n and S of its cell; C i in place of i takes C of the cell's class.
+17. With unbiased path length every step is 0.96194 times as long, for all purposes; areas and what "3 cells" means stay.
+18. A chart of velocity by slope is read on log-log paper; beyond its ends the line of the last two points goes on.
+19. With kinematic sheet flow the time of a cell is under the intensity that result.json states for the last point on its way down, and a
     cell without a point is not looked at. A ponded cell takes the smaller time under that storm.
 """
 import argparse
@@ -112,6 +116,10 @@ class Ground:
         self.area = np.round(self.area * 1e4) / 1e4
         middle = rows // 2
         self.cell_side = min(self.east[middle], self.south[middle])
+
+    def weigh_steps(self, weight):
+        for lengths in (self.east, self.south, self.diagonal):
+            lengths *= weight
 
     def geographic(self, raster, rows):
         import pyproj
@@ -220,6 +228,15 @@ def spill_elevation(z, void):
 
 # ---------------------------------------------------------------- the study
 
+# Bieger et al. 2015, width and depth; the Piedmont (Harman et al. 1999) is printed in feet by square miles.
+REGIONS = {"United States": ("2.70 m * km2^0.352", "0.30 m * km2^0.213"), "Laurentian Upland": ("4.15 m * km2^0.308", "0.31 m * km2^0.202"),
+           "Atlantic Plain": ("2.22 m * km2^0.363", "0.24 m * km2^0.323"),
+           "Appalachian Highlands": ("3.12 m * km2^0.415", "0.26 m * km2^0.287"),
+           "Interior Plains": ("2.56 m * km2^0.351", "0.38 m * km2^0.191"),
+           "Interior Highlands": ("23.23 m * km2^0.121", "0.27 m * km2^0.267"),
+           "Rocky Mountain System": ("1.24 m * km2^0.435", "0.23 m * km2^0.225"),
+           "Intermontane Plateaus": ("1.11 m * km2^0.415", "0.07 m * km2^0.329"),
+           "Pacific Mountain System": ("2.76 m * km2^0.399", "0.23 m * km2^0.294")}
 METRES = {"m": 1.0, "km": 1000.0, "cm": 0.01, "mm": 0.001, "ft": FOOT, "in": INCH}
 SQUARE_METRES = {"m2": 1.0, "ha": 1e4, "km2": 1e6, "ac": 4046.8564224, "ft2": FOOT ** 2}
 SPEEDS = {"m/s": 1.0, "ft/s": FOOT}
@@ -230,6 +247,26 @@ def quantity(text, units):
         return math.inf
     number, unit = re.fullmatch(r"\s*([-+0-9.eE]+)\s*(\S+)\s*", text).groups()
     return float(number) * units[unit]
+
+
+def read_chart(path):
+    """Of each surface the slopes and the velocities in m/s of its points."""
+    with open(path, newline="", encoding="utf-8") as file:
+        header, *rows = list(csv.reader(file))
+    lines = {}
+    for column, name in enumerate(header[1:], 1):
+        surface, unit = re.fullmatch(r"(.*)_(ft|m)_s", name).groups()
+        points = [(float(row[0]) * (0.01 if header[0] == "slope_percent" else 1.0), float(row[column])) for row in rows if row[column]]
+        slope, velocity = np.array(points).T
+        lines[surface] = (slope, velocity * (FOOT if unit == "ft" else 1.0))
+    return lines
+
+
+def on_chart(line, slope):
+    """Log-log between the points, and on beyond both ends."""
+    x, y = np.log(line[0]), np.log(line[1])
+    place = np.clip(np.searchsorted(x, np.log(slope)), 1, len(x) - 1)
+    return np.exp(y[place - 1] + (np.log(slope) - x[place - 1]) * (y[place] - y[place - 1]) / (x[place] - x[place - 1]))
 
 
 def power_law(text):
@@ -259,19 +296,23 @@ class Study:
         self.pond_speed = quantity(terrain.get("pond_speed", "2 m/s"), SPEEDS)
         self.is_kinematic = timing.get("sheet") == "kinematic"
         self.constant = timing.get("sheet_constant", 0.933)
+        self.takes_runoff = timing.get("sheet_rain") == "runoff"
+        self.soil_group = surface.get("soil_group")
+        self.chart = read_chart(folder / timing["velocity_chart"]) if timing.get("shallow") == "chart" else None
         self.intensity = None  # m/s, of the storm that is looked at
         self.rain = None if self.is_kinematic else quantity(stated["rain"]["two_year_24_hour"], METRES)
         self.sheet_limit = length(timing, "sheet_limit", 100 * FOOT)
         self.index_limit = math.inf if timing.get("sheet_limit_rule") == "stated" else 100 * FOOT
-        self.by_cover = timing.get("shallow", "by cover") == "by cover"
+        self.by_cover = timing.get("shallow", "by cover") != "paved and unpaved"
         floors = timing.get("slope_floor", {})
         self.floor_overland, self.floor_channel = floors.get("overland", 0.001), floors.get("channel", 0.0001)
         begins = timing.get("channel_from", "5 ha")
         self.channel_from = math.inf if begins == "mapped only" else quantity(begins, SQUARE_METRES)
         channel = timing.get("channel", {})
         self.channel_n = channel.get("n", 0.045)
-        width = power_law(channel.get("width", "2.70 m * km2^0.352"))
-        depth = power_law(channel.get("depth", "0.30 m * km2^0.213"))
+        set_of_region = REGIONS[channel.get("region", "United States")]
+        width = power_law(channel.get("width", set_of_region[0]))
+        depth = power_law(channel.get("depth", set_of_region[1]))
         if "hydraulic_radius" in channel:
             radius = quantity(channel["hydraulic_radius"], METRES)
             self.radius = lambda km2: np.full_like(km2, radius)
@@ -300,9 +341,19 @@ class Surface:
             code[~known] = study.fallback
         self.is_known = np.isin(code, list(book)) | dem.void.ravel()
         self.n, self.k, self.depth = np.zeros(code.size), np.zeros(code.size), np.zeros(code.size)
-        for number, (n, k, depth) in book.items():
+        self.runoff, self.lines = np.ones(code.size), []
+        for number, (n, k, depth, runoff, line) in book.items():
             here = code == number
             self.n[here], self.k[here], self.depth[here] = n, k, depth
+            self.runoff[here] = runoff
+            if study.chart and here.any() and not depth:
+                self.lines.append((np.flatnonzero(here), study.chart[line]))
+
+    def shallow_speed(self, slope):
+        speed = self.k * np.sqrt(slope)
+        for cells, line in self.lines:
+            speed[cells] = on_chart(line, slope[cells])
+        return speed
 
     @staticmethod
     def read_book(study):
@@ -311,17 +362,23 @@ class Surface:
             for row in csv.DictReader(file):
                 if row.get("water_depth_m") or row.get("water_depth_ft"):
                     depth = float(row.get("water_depth_m") or float(row["water_depth_ft"]) * FOOT)
-                    book[int(row["code"])] = (0.0, 0.0, depth)
+                    book[int(row["code"])] = (0.0, 0.0, depth, 1.0, None)
                     continue
+                runoff = 1.0
+                if study.takes_runoff:
+                    runoff = float(row.get(f"c_{(study.soil_group or '-').lower()}") or row["c"])
                 kind = row.get("shallow_type")
                 paved = row["paved"] == "yes" if row.get("paved") else kind == "pavement"
                 if not study.by_cover:
                     k = (20.3282 if paved else 16.1345) * FOOT
+                elif row.get("shallow_n"):
+                    radius_ft = float(row.get("shallow_radius_ft") or float(row["shallow_radius_m"]) / FOOT)
+                    k = 1.49 / float(row["shallow_n"]) * radius_ft ** (2 / 3) * FOOT
                 elif kind:
                     k = SHALLOW_FT_PER_S[kind] * FOOT
                 else:
                     k = float(row.get("shallow_k_m_s") or float(row["shallow_k_ft_s"]) * FOOT)
-                book[int(row["code"])] = (float(row["n_typical"]), k, 0.0)
+                book[int(row["code"])] = (float(row["n_typical"]), k, 0.0, runoff, row.get("chart_line") or row["name"])
         return book
 
 
@@ -421,10 +478,9 @@ class Travel:
         with np.errstate(divide="ignore", invalid="ignore"):
             share = np.minimum((study.index_limit - self.index) / weight, (study.sheet_limit - self.distance) / length)
         share = np.clip(np.nan_to_num(share, nan=0.0), 0, 1)
-        shallow_speed = surface.k * np.sqrt(slope)
+        shallow_speed = surface.shallow_speed(slope)
         with np.errstate(divide="ignore", invalid="ignore"):
-            overland = self.sheet_time(self.index + share * weight) - self.sheet_time(self.index) \
-                + np.where(share < 1, (1 - share) * length / shallow_speed, 0.0)
+            overland = self.sheet_part(share, weight) + np.where(share < 1, (1 - share) * length / shallow_speed, 0.0)
             radius = study.radius(area_m2 / 1e6)
             channel = length * study.channel_n / (radius ** (2 / 3) * np.sqrt(slope))
             water = length / np.sqrt(GRAVITY * surface.depth)
@@ -438,10 +494,16 @@ class Travel:
         in_sheet = (self.index < study.index_limit) & (self.distance < study.sheet_limit)
         self.regime = np.select([forest.is_void, self.is_water, self.is_channel, in_sheet], [NONE, WATER, CHANNEL, SHEET], SHALLOW)
 
+    def sheet_part(self, share, weight):
+        """Time of the share of each step that is sheet flow."""
+        if not self.study.is_kinematic:
+            return self.sheet_time(self.index + share * weight) - self.sheet_time(self.index)
+        grown = ((self.distance + share * self.forest.length) / FOOT) ** 0.6 - (self.distance / FOOT) ** 0.6
+        rain = self.surface.runoff * self.study.intensity * 3600 / INCH
+        return 60 * self.study.constant * (self.surface.n / np.sqrt(self.slope)) ** 0.6 * grown / rain ** 0.4
+
     def sheet_time(self, index_m):
-        """NRCS: 0.007 u^0.8 / P^0.5 hours, u in feet, P in inches. Kinematic: K u^0.6 / i^0.4 minutes, i in inches per hour."""
-        if self.study.is_kinematic:
-            return 60 * self.study.constant * (index_m / FOOT) ** 0.6 / (self.study.intensity * 3600 / INCH) ** 0.4
+        """NRCS: 0.007 u^0.8 / P^0.5 hours, u in feet, P in inches."""
         return 3600 * 0.007 * (index_m / FOOT) ** 0.8 / math.sqrt(self.study.rain / INCH)
 
 
@@ -576,6 +638,9 @@ def main():
 
     dem = Raster(options.dem, options.band)
     ground, factor = Ground(dem), vertical_factor(dem, options.elevation_unit_m)
+    if options.study:
+        stated = tomllib.loads(pathlib.Path(options.study).read_text(encoding="utf-8"))
+        ground.weigh_steps(0.96194 if stated["surface"].get("path_length") == "unbiased" else 1.0)
     names = ["flow_azimuth", "spill_elevation", "contributing_area", "catchment"]
     names += ["travel_time", "regime"] if options.study else []
     rasters = {name: Raster(options.result / "rasters" / f"{name}.tif") for name in names}

@@ -111,6 +111,33 @@ TEST_CASE("end-to-end slopes may give one and a half times the time either way, 
     }
 }
 
+TEST_CASE("flow beyond what its formulas were made for is told, each kind by its own notice") {
+    const Beyond beyond{.length_m = 250, .greatest = 7, .effect_s = 12};
+    const auto told = [&](Beyond PathDoubts::*kind, const std::string& code, double threshold) {
+        Outlet outlet = unremarkable();
+        outlet.governing.doubts.*kind = beyond;
+        const Notice notice = only(outlet, code);
+        CHECK(notice.value == 7.0);
+        CHECK(notice.effect_s == 12.0);
+        CHECK(notice.threshold == Approx(threshold));
+    };
+    told(&PathDoubts::shallow_length, "shallow-flow-long", 304.8);
+    told(&PathDoubts::shallow_speed, "shallow-flow-fast", 3.0);
+    told(&PathDoubts::channel_speed, "channel-fast", 5.0);
+    told(&PathDoubts::supercritical, "channel-supercritical", 1.0);
+    told(&PathDoubts::small_channels, "channel-smaller-than-its-law", 1.0);
+}
+
+TEST_CASE("the uppermost twentieth of a path may take a quarter of its time, and no more") {
+    Outlet outlet = unremarkable();
+    outlet.governing.doubts.head_s = 250;
+    silent(outlet);
+    outlet.governing.doubts.head_s = 251;
+    const Notice notice = only(outlet, "slow-head");
+    CHECK(notice.value == Approx(0.251));
+    CHECK(notice.effect_s == Approx(1.0));
+}
+
 TEST_CASE("a point without a path has nothing to compare") {
     Outlet outlet;
     outlet.point.cell = 0;

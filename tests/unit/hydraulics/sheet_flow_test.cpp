@@ -70,5 +70,42 @@ TEST_CASE("without a slope there is no finite index") {
     CHECK_FALSE(std::isfinite(sheet_index({.n = 0.2, .length = metres(1), .slope = -0.1}).si()));
 }
 
+TEST_CASE("from the divide on one plane the characteristic takes the time of the index") {
+    const SheetFormula formula = kinematic_sheet_formula(kinematic_constant_hec22);
+    CHECK(in_seconds(formula.along_characteristic(grass, metres(0))) == rounding(in_seconds(formula.at_unit_storm(sheet_index(grass)))));
+}
+
+TEST_CASE("one plane takes the same time cut into stretches") {
+    const SheetFormula formula = kinematic_sheet_formula(kinematic_constant_hec22);
+    const SheetStretch half{.n = 0.2, .length = metres(10), .slope = 0.02};
+    const SheetStretch whole{.n = 0.2, .length = metres(20), .slope = 0.02};
+    CHECK(in_seconds(formula.along_characteristic(half, metres(0)) + formula.along_characteristic(half, metres(10))) ==
+          rounding(in_seconds(formula.along_characteristic(whole, metres(0)))));
+}
+
+TEST_CASE("grass below a street is passed faster than by the index of both, and a street below grass slower") {
+    // Ten metres each; n 0.02 and 0.2 on one slope, so that n/√S is a and 10a: 1 + 10^0.6 (2^0.6 − 1) = 3.053 and 10^0.6 + 2^0.6 − 1 =
+    // 4.497 by the characteristic, 11^0.6 = 4.216 by the index, each times (10 a)^0.6.
+    const SheetFormula formula{.coefficient = 1.0, .exponent = 0.6};
+    const SheetStretch street{.n = 0.02, .length = metres(10), .slope = 0.04};
+    const SheetStretch meadow{.n = 0.2, .length = metres(10), .slope = 0.04};
+    const auto down = [&](const SheetStretch& upper, const SheetStretch& lower) {
+        return in_seconds(formula.along_characteristic(upper, metres(0)) + formula.along_characteristic(lower, metres(10)));
+    };
+    CHECK(down(street, meadow) == Approx(3.053).epsilon(2e-4));
+    CHECK(down(meadow, street) == Approx(4.497).epsilon(2e-4));
+}
+
+TEST_CASE("the slope of a characteristic's time is the slope it was made with") {
+    const SheetFormula formula = kinematic_sheet_formula(kinematic_constant_hec22);
+    const Duration time = formula.along_characteristic({.n = 0.3, .length = metres(12), .slope = 0.05}, metres(7));
+    CHECK(formula.characteristic_slope(0.3, metres(7), metres(19), time) == rounding(0.05));
+}
+
+TEST_CASE("under half the rain as runoff the time is 2^0.4 of that under the rain") {
+    CHECK(kinematic_runoff_factor(0.5) == rounding(std::pow(2.0, 0.4)));
+    CHECK(kinematic_runoff_factor(1.0) == 1.0);
+}
+
 }  // namespace
 }  // namespace rillclock

@@ -97,5 +97,27 @@ TEST_CASE("a line of one reading is refused") {
                       Contains("\"paved\"") && Contains("fewer than two points"));
 }
 
+TEST_CASE("the power between two points gives the line's velocity there and tells which points") {
+    const VelocityTable table = parse_velocity_table(chart, "chart.csv");
+    const VelocityLine& grass = *table.find("short grass");
+    for (const double slope : {0.001, 0.005, 0.012, 0.02, 0.05, 0.3}) {
+        const VelocityLaw law = grass.law_at(slope);
+        CHECK(law.at_slope_1.si() * std::pow(slope, law.exponent) == Approx(grass.at(slope).si()).epsilon(1e-12));
+        CHECK(law.interval == (slope <= 0.02 ? 0U : 1U));
+    }
+    CHECK(grass.law_at(0.012).exponent == Approx(0.5));  // from 0.5 % to 2 % the velocity doubles
+}
+
+TEST_CASE("a power holds to the ends of its interval, a little beyond, and without end at the ends of the chart") {
+    const VelocityTable table = parse_velocity_table(chart, "chart.csv");
+    const VelocityLine& grass = *table.find("short grass");
+    CHECK(grass.holds(0, 0.0001));
+    CHECK(grass.holds(0, 0.02 * 1.00005));
+    CHECK_FALSE(grass.holds(0, 0.021));
+    CHECK(grass.holds(1, 0.02 * 0.99995));
+    CHECK_FALSE(grass.holds(1, 0.019));
+    CHECK(grass.holds(1, 5.0));
+}
+
 }  // namespace
 }  // namespace rillclock

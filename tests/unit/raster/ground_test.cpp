@@ -2,6 +2,8 @@
 
 #include <catch2/catch.hpp>
 
+#include <cmath>
+
 namespace rillclock {
 namespace {
 
@@ -29,6 +31,21 @@ TEST_CASE("the ground between two cells is the same both ways") {
         const std::int64_t from = row_step(d) < 0 ? 1 : 0;
         CHECK(ground.length(from, d) == ground.length(from + row_step(d), opposite(d)));
     }
+}
+
+TEST_CASE("weighted steps are shorter alike in every direction, and areas and cells stay") {
+    const Ground ground = Ground::planar(metres(3), metres(4)).with_steps_weighted(0.5);
+    CHECK(from_fixed(ground.length(0, Direction::east)) == 1.5);
+    CHECK(from_fixed(ground.length(0, Direction::south)) == 2.0);
+    CHECK(from_fixed(ground.length(0, Direction::south_east)) == 2.5);
+    CHECK(from_fixed_area(ground.cell_area(0)) == 12.0);
+    CHECK(ground.step_weight() == 0.5);
+    CHECK(Ground::planar(metres(3), metres(4)).step_weight() == 1.0);
+}
+
+TEST_CASE("the unbiased weight is the published pair of steps on square cells") {
+    CHECK(unbiased_step_weight == 0.96194);
+    CHECK(unbiased_step_weight * std::sqrt(2.0) == Approx(1.36039).epsilon(1e-5));  // Butt and Maragos 1998, from memory
 }
 
 }  // namespace

@@ -192,7 +192,7 @@ TEST_CASE("an unknown section is refused, empty or not") {
 
 TEST_CASE("what this version does not compute is refused and not passed over") {
     for (const auto* text : {"[points]\npipes = \"p\"", "[points]\narea = \"a\"", "[rain]\ntable = \"r.csv\"",
-                             "[timing]\noverrides = \"o.csv\"", "[timing]\nchannel = { flow = \"design storm\" }",
+                             "[timing]\noverrides = \"o.csv\"",
                              "[peaks]\ncoefficient = \"book\"", "[uncertainty]\ndraws = 500",
                              "[scenario.after]\nsurface.cover = \"p.tif\"", "[output]\nisochrones = \"5 min\""}) {
         INFO(text);
@@ -202,7 +202,7 @@ TEST_CASE("what this version does not compute is refused and not passed over") {
 
 TEST_CASE("words of a key that this version does not compute are refused") {
     for (const auto* text :
-         {"[surface]\npath_length = \"unbiased\"", "[surface]\nbook = \"worldcover\"", "[output]\nrasters = \"cog\""}) {
+         {"[surface]\nbook = \"worldcover\"", "[output]\nrasters = \"cog\""}) {
         INFO(text);
         CHECK_THROWS_WITH(read(text), Contains("this version of rillclock does not") && Contains("line 2, column "));
     }
@@ -244,7 +244,7 @@ TEST_CASE("every length, area, speed and share refuses zero, negative numbers an
 TEST_CASE("what may be zero refuses negative numbers and what is no number") {
     for (const auto* form :
          {"points.move_within = \"{} m\"", "timing.ignore_tail = \"{} %\"", "timing.slope_floor.overland = {}",
-          "timing.slope_floor.channel = {}", "surface.fallback_class = {}", "peaks.least_time = \"{} min\"",
+          "timing.slope_floor.channel = {}", "timing.channel.side_slope = {}", "surface.fallback_class = {}", "peaks.least_time = \"{} min\"",
           "rain.formula_from = \"{} min\""}) {
         const auto with = [&](const char* number) {
             return std::string(form).replace(std::string(form).find("{}"), 2, number);
@@ -252,6 +252,19 @@ TEST_CASE("what may be zero refuses negative numbers and what is no number") {
         CHECK_NOTHROW(read(with("0")));
         for (const auto* number : {"-1", "nan", "inf"}) CHECK_THROWS_AS(read(with(number)), Error);
     }
+}
+
+TEST_CASE("choices of how steps are timed are read") {
+    const Study study = read(
+        "[surface]\npath_length = \"unbiased\"\n[timing]\nsheet = \"kinematic\"\nsheet_rain = \"runoff\"\nshallow = \"chart\"\nvelocity_chart = "
+        "\"chart.csv\"\nchannel = { region = \"Interior Plains\", flow = \"design storm\", side_slope = 1.5 }\n");
+    CHECK(study.surface.unbiased_lengths);
+    CHECK(study.timing.sheet_takes_runoff);
+    CHECK(study.timing.shallow == ShallowRule::chart);
+    CHECK(study.timing.velocity_chart == "chart.csv");
+    CHECK(study.timing.channel.published_size()->width(square_kilometres(1)) == metres(2.56));
+    CHECK(study.timing.channel.design_storm);
+    CHECK(study.timing.channel.side_slope == 1.5);
 }
 
 TEST_CASE("a share of all or more is refused") {

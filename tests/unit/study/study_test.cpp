@@ -119,6 +119,33 @@ TEST_CASE("a channel is as large as its area says unless its radius is stated") 
     CHECK(channel_radius(stated, square_kilometres(100)) == feet(0.957));
 }
 
+TEST_CASE("a channel's published size is that of its region, of the whole country where none is named, and none where its own is stated") {
+    ChannelStudy channel;
+    CHECK(channel.published_size()->region == "United States");
+    channel.region = "Atlantic Plain";
+    CHECK(channel.published_size()->region == "Atlantic Plain");
+    channel.hydraulic_radius = metres(1);
+    CHECK(channel.published_size() == nullptr);
+    channel.hydraulic_radius.reset();
+    channel.width = PowerLaw{.coefficient = metres(1), .unit = square_metres(1), .exponent = 0.5};
+    CHECK(channel.published_size() == nullptr);
+}
+
+TEST_CASE("choices of how steps are timed that exclude one another are told") {
+    const auto told = [](auto change, const std::string& says) {
+        Study study = complete();
+        change(study.timing);
+        CHECK_THROWS_WITH(check_study(study), Contains(says));
+    };
+    told([](TimingStudy& t) { t.sheet_takes_runoff = true; }, "act on kinematic sheet flow only");
+    told([](TimingStudy& t) { t.shallow = ShallowRule::chart; }, "names none");
+    told([](TimingStudy& t) { t.velocity_chart = "c.csv"; }, "acts on shallow = \"chart\" only");
+    told([](TimingStudy& t) { t.channel.side_slope = 1.0; }, "acts on flow = \"design storm\" only");
+    told([](TimingStudy& t) { t.channel.design_storm = true; }, "needs rain by duration");
+    told([](TimingStudy& t) { t.channel.region = "Interior Plains"; t.channel.hydraulic_radius = metres(1); }, "both a region and a size");
+    told([](TimingStudy& t) { t.channel.design_storm = true; t.channel.hydraulic_radius = metres(1); }, "states one hydraulic_radius");
+}
+
 TEST_CASE("paths are relative to the study file, and other names stay as they are") {
     Study study;
     study.file = "studies/town.toml";

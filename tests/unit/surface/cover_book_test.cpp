@@ -2,6 +2,8 @@
 
 #include <catch2/catch.hpp>
 
+#include <cmath>
+
 #include "rillclock/hydraulics/shallow_flow.hpp"
 
 namespace rillclock {
@@ -66,6 +68,26 @@ TEST_CASE("a velocity at slope one may stand in place of a type, in either unit"
     const CoverBook us =
         parse_cover_book("code,name,n_typical,shallow_k_ft_s,source\n3,Gravel,0.02,15,own\n", "town.csv");
     CHECK(us.find(3)->shallow_k == feet_per_second(15));
+}
+
+TEST_CASE("n and radius of shallow flow may stand in place of a type, in either unit") {
+    const std::string columns = "code,name,n_typical,shallow_n,shallow_radius_ft,shallow_radius_m,shallow_type,source\n";
+    const CoverBook town = parse_cover_book(columns + "3,Swale,0.2,0.05,0.4,,,own\n", "town.csv");
+    CHECK(in_feet(metres(town.find(3)->shallow_k.si())) == Approx(1.49 / 0.05 * std::pow(0.4, 2.0 / 3)));
+    CHECK(town.find(3)->shallow_type == "conveyance");
+    CHECK(parse_cover_book(columns + "3,Swale,0.2,0.05,,0.12192,,own\n", "town.csv").find(3)->shallow_k.si() ==
+          Approx(town.find(3)->shallow_k.si()));
+    for (const auto& [row, says] : {std::pair("3,S,0.2,0.05,,,,own", "without shallow_radius"), std::pair("3,S,0.2,,0.4,,,own", "a radius is given"),
+                                    std::pair("3,S,0.2,0.05,0.4,0.1,,own", "shallow_radius_m is given too"),
+                                    std::pair("3,S,0.2,0.05,0.4,,pavement,own", "n and radius of shallow flow are given too"),
+                                    std::pair("3,S,0.2,5,0.4,,,own", "between 0 and 2"), std::pair("3,S,0.2,0,0.4,,,own", "(shallow_n)")})
+        CHECK_THROWS_WITH(parse_cover_book(columns + row + "\n", "town.csv"), Contains("town.csv, line 2") && Contains(says));
+}
+
+TEST_CASE("a class's line on a chart has its name unless the book gives another") {
+    const CoverBook town = parse_cover_book("code,name,n_typical,shallow_type,chart_line,source\n3,Lawn,0.2,pavement,turf,own\n4,Yard,0.2,pavement,,own\n", "town.csv");
+    CHECK(town.find(3)->chart_line == "turf");
+    CHECK(town.find(4)->chart_line == "Yard");
 }
 
 TEST_CASE("classes come in the order of their codes") {

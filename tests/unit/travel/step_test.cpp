@@ -4,6 +4,7 @@
 
 #include <cmath>
 #include <limits>
+#include <memory>
 
 #include "rillclock/hydraulics/open_water.hpp"
 
@@ -287,6 +288,29 @@ TEST_CASE("a cell shows the regime in which its step begins") {
 
 TEST_CASE("a time under a storm is storm · s + fixed") {
     CHECK(in_seconds(StepTime{.fixed = to_fixed(3), .storm = to_fixed(8)}.under(0.25)) == 5.0);
+}
+
+TEST_CASE("kinematic sheet flow goes by the distance from the divide and the step's own ground") {
+    // n/√S = 0.5; from 5 m to 15 m below the divide.
+    TravelRules rules = plain_rules();
+    rules.sheet.formula = {.coefficient = 2.0, .exponent = 0.6};
+    rules.sheet.basis = SheetBasis::characteristic;
+    StepView step = ten_metres();
+    step.from_divide = to_fixed(5);
+    step.sheet_index = to_fixed(99);  // of other ground above: without effect
+    const StepPart part = step_parts(step, rules).first;
+    CHECK(storm_s(part) == rounded(2.0 * std::pow(0.5, 0.6) * (std::pow(15.0, 0.6) - std::pow(5.0, 0.6))));
+    CHECK(part.index_from_m == 5.0);
+    CHECK(part.index_to_m == 15.0);
+}
+
+TEST_CASE("a chart times shallow flow in place of k") {
+    TravelRules rules = limited_to(0, none);
+    const VelocityLine line{.surface = "grass", .points = {{0.01, metres_per_second(0.2)}, {0.04, metres_per_second(0.8)}}};
+    const SurfaceHydraulics charted{.sheet_n = 0.1, .shallow_k = metres_per_second(5), .shallow_line = std::make_shared<const VelocityLine>(line)};
+    StepView step = ten_metres();
+    step.surface = &charted;
+    CHECK(fixed_s(step_parts(step, rules).first) == rounded(10 / 0.8));
 }
 
 }  // namespace
