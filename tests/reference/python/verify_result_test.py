@@ -11,7 +11,7 @@ import unittest
 import numpy as np
 from osgeo import gdal, osr
 
-from verify_result import FOOT, Forest, INCH, LEAVES, Travel, spill_elevation
+from verify_result import FOOT, Forest, INCH, LEAVES, Travel, on_chart, spill_elevation
 
 VERIFY = pathlib.Path(__file__).with_name("verify_result.py")
 
@@ -26,6 +26,7 @@ def strip(heights, cell, n=0.24, k=2.0, **changes):
     forest = Forest(np.array([[90] * (count - 1) + [LEAVES]]), types.SimpleNamespace(
         east=np.array(ground.east), south=np.array(ground.south), diagonal=np.array(ground.diagonal)))
     surface = types.SimpleNamespace(n=np.full(count, n), k=np.full(count, k), depth=changes.pop("water", np.zeros(count)))
+    surface.runoff, surface.shallow_speed = np.ones(count), lambda slope: surface.k * np.sqrt(slope)
     own = np.full(count, cell * cell)
     h = np.array(heights, float)
     z = h - changes.pop("pond", np.zeros(count))
@@ -35,6 +36,13 @@ def strip(heights, cell, n=0.24, k=2.0, **changes):
 
 def plane(count, cell, slope):
     return [slope * cell * (count - 1 - i) for i in range(count)]
+
+
+class Charts(unittest.TestCase):
+    def test_a_chart_is_straight_on_log_log_paper_between_its_points_and_beyond(self):
+        line = (np.array([0.01, 0.04, 0.16]), np.array([1.0, 2.0, 2.0 * 4 ** 0.25]))
+        for slope, expected in ((0.01, 1.0), (0.0225, 1.5), (0.04, 2.0), (0.0025, 0.5), (0.64, 2.0 * 16 ** 0.25)):
+            self.assertAlmostEqual(float(on_chart(line, np.array([slope]))[0]), expected)
 
 
 class SlopeAhead(unittest.TestCase):
