@@ -10,6 +10,7 @@
 #include <type_traits>
 #include <vector>
 
+#include "coarser_rows.hpp"
 #include "nearest_float.hpp"
 #include "raster_writer.hpp"
 #include "rillclock/core/error.hpp"
@@ -18,9 +19,9 @@ namespace rillclock {
 namespace {
 
 /// Rows of the raster that belong to one row of blocks, until all their cells have come.
-template <class T>
+template <class S>
 struct Strip {
-    std::vector<T> values;
+    std::vector<S> values;
     std::int64_t missing = 0;
 };
 
@@ -49,7 +50,7 @@ void with_type(StoredType type, const Action& action) {
 
 template <class S, class T>
 bool fits(T value) {
-    if constexpr (std::is_floating_point_v<S>) return true;
+    if constexpr (std::is_floating_point_v<S> || std::is_same_v<S, T>) return true;
     const auto wide = static_cast<double>(value);
     return wide >= static_cast<double>(std::numeric_limits<S>::min()) &&
            wide <= static_cast<double>(std::numeric_limits<S>::max()) && wide == std::floor(wide);
@@ -62,33 +63,32 @@ S nodata_as(double nodata) {
     return static_cast<S>(nodata);
 }
 
+/// The nodata value that a description states, in the type that the file stores.
 template <class S>
-void check_nodata(const RasterDescription& description, const std::filesystem::path& path) {
-    if (description.nodata && !fits<S>(*description.nodata))
+std::optional<S> stored_nodata(const RasterDescription& description, const std::filesystem::path& path) {
+    if (!description.nodata) return std::nullopt;
+    if (!fits<S>(*description.nodata))
         throw bug("The nodata value of the raster " + path.string() + " does not fit its type");
+    return nodata_as<S>(*description.nodata);
 }
 
-template <class T>
+/// Takes values as T, stores them as S.
+template <class T, class S>
 class RasterSink : public BlockSink<T> {
 public:
     RasterSink(const std::filesystem::path& path, const Grid& grid, const ReferenceSystem& system,
                const RasterDescription& description)
-        : writer_(path, grid, system, description), grid_(grid), description_(description) {
-        with_type(description.stored, [&](auto zero) { check_nodata<decltype(zero)>(description, path); });
-    }
+        : nodata_(stored_nodata<S>(description, path)), writer_(path, grid, system, description), grid_(grid),
+          levels_(writer_, description.overviews, nodata_) {}
 
     void write(const Window& window, std::span<const T> values) override {
         check(window, values.size());
-        const std::int64_t height = writer_.block_rows();
-        for (std::int64_t r = 0; r < window.rows; ++r) {
-            const std::int64_t row = window.row + r;
-            Strip<T>& strip = strip_at(row / height);
-            const auto from = values.begin() + r * window.columns;
-            std::copy(from, from + window.columns, strip.values.begin() + row % height * grid_.columns + window.column);
-            strip.missing -= window.columns;
+        if (is_next_row_of_blocks(window)) leave(values);
+        else gather(window, values);
+        while (!strips_.empty() && strips_.begin()->first == next_ && strips_.begin()->second.missing <= 0) {
+            leave_stored(strips_.begin()->second.values);
+            strips_.erase(strips_.begin());
         }
-        while (!strips_.empty() && strips_.begin()->first == next_ && strips_.begin()->second.missing <= 0)
-            flush_first();
     }
 
     void close() override {
@@ -108,61 +108,67 @@ private:
             throw bug("A window was written to " + writer_.path().string() + " twice");
     }
 
-    Strip<T>& strip_at(std::int64_t number) {
-        Strip<T>& strip = strips_[number];
+    [[nodiscard]] std::int64_t rows_of(std::int64_t strip) const {
+        return std::min(writer_.block_rows(), grid_.rows - strip * writer_.block_rows());
+    }
+    [[nodiscard]] bool is_next_row_of_blocks(const Window& window) const {
+        return strips_.empty() && window.columns == grid_.columns && window.row == next_ * writer_.block_rows() &&
+               window.rows == rows_of(next_);
+    }
+
+    /// Hands a whole row of blocks on, as it came where it is stored as it came.
+    void leave(std::span<const T> values) {
+        if constexpr (std::is_same_v<T, S> && !std::is_floating_point_v<T>) {
+            leave_stored(values);
+        } else {
+            room_.resize(values.size());
+            std::transform(values.begin(), values.end(), room_.begin(), [this](T value) { return stored_value(value); });
+            leave_stored(room_);
+        }
+    }
+
+    void leave_stored(std::span<const S> values) {
+        writer_.add_statistics(statistics_of(values, nodata_));
+        levels_.add(values);
+        ++next_;
+    }
+
+    void gather(const Window& window, std::span<const T> values) {
+        const std::int64_t height = writer_.block_rows();
+        for (std::int64_t r = 0; r < window.rows; ++r) {
+            const std::int64_t row = window.row + r;
+            Strip<S>& strip = strip_at(row / height);
+            const auto from = values.begin() + r * window.columns;
+            std::transform(from, from + window.columns, strip.values.begin() + row % height * grid_.columns + window.column,
+                           [this](T value) { return stored_value(value); });
+            strip.missing -= window.columns;
+        }
+    }
+
+    Strip<S>& strip_at(std::int64_t number) {
+        Strip<S>& strip = strips_[number];
         if (strip.values.empty()) {
-            const std::int64_t height = writer_.block_rows();
-            strip.missing = std::min(height, grid_.rows - number * height) * grid_.columns;
+            strip.missing = rows_of(number) * grid_.columns;
             strip.values.resize(static_cast<std::size_t>(strip.missing));
         }
         return strip;
     }
 
-    void flush_first() {
-        const auto strip = strips_.begin();
-        with_type(description_.stored, [&](auto zero) { write_as<decltype(zero)>(strip->second); });
-        strips_.erase(strip);
-        ++next_;
-    }
-
-    template <class S>
-    void write_as(const Strip<T>& strip) {
-        std::vector<S> stored(strip.values.size());
-        std::transform(strip.values.begin(), strip.values.end(), stored.begin(),
-                       [this](T value) { return this->template stored_value<S>(value); });
-        count_statistics(std::span<const S>(stored));
-        writer_.write_blocks(next_, std::as_bytes(std::span(stored)));
-    }
-
-    template <class S>
     [[nodiscard]] S stored_value(T value) const {
         if constexpr (std::is_floating_point_v<T>)
-            if (std::isnan(value) && description_.nodata) return nodata_as<S>(*description_.nodata);
+            if (std::isnan(value) && nodata_) return *nodata_;
         if (!fits<S>(value))
             throw bug("The value " + std::to_string(value) + " does not fit the type of the raster " +
                       writer_.path().string());
         return static_cast<S>(value);
     }
 
-    template <class S>
-    void count_statistics(std::span<const S> values) {
-        std::vector<double> counted;
-        counted.reserve(values.size());
-        for (const S value : values)
-            if (!is_nodata(value) && std::isfinite(static_cast<double>(value)))
-                counted.push_back(static_cast<double>(value));
-        writer_.add_statistics(statistics_of(counted));
-    }
-
-    template <class S>
-    [[nodiscard]] bool is_nodata(S value) const {
-        return description_.nodata && value == nodata_as<S>(*description_.nodata);
-    }
-
+    std::optional<S> nodata_;
     RasterWriter writer_;
     Grid grid_;
-    RasterDescription description_;
-    std::map<std::int64_t, Strip<T>> strips_;
+    CoarserRows<S> levels_;
+    std::vector<S> room_;
+    std::map<std::int64_t, Strip<S>> strips_;
     std::int64_t next_ = 0;
 };
 
@@ -171,7 +177,11 @@ private:
 template <class T>
 std::unique_ptr<BlockSink<T>> create_raster(const std::filesystem::path& path, const Grid& grid,
                                             const ReferenceSystem& system, const RasterDescription& description) {
-    return std::make_unique<RasterSink<T>>(path, grid, system, description);
+    std::unique_ptr<BlockSink<T>> sink;
+    with_type(description.stored, [&](auto zero) {
+        sink = std::make_unique<RasterSink<T, decltype(zero)>>(path, grid, system, description);
+    });
+    return sink;
 }
 
 #define RILLCLOCK_INSTANCE(T)                                                                          \

@@ -5,7 +5,6 @@
 #include <array>
 #include <charconv>
 #include <cstring>
-#include <numeric>
 #include <string>
 #include <vector>
 
@@ -37,9 +36,14 @@ GDALDataType gdal_type(StoredType type) {
     return GDT_Unknown;
 }
 
-/// Sides of blocks: 512, or for smaller rasters the multiple of 16 (which TIFF asks for) that holds them.
+/// Side of blocks. A row of tiles of the engine is then a row of blocks, which nothing has to gather.
+constexpr std::int64_t full_side = 256;
+/// The least side of a raster that gets a coarser copy.
+constexpr std::int64_t seen_at_once = 512;
+
+/// Sides of blocks; for smaller rasters the multiple of 16 (which TIFF asks for) that holds them.
 std::int64_t block_side(std::int64_t cells) {
-    return std::min<std::int64_t>(512, (cells + 15) / 16 * 16);
+    return std::min(full_side, (cells + 15) / 16 * 16);
 }
 
 /// The shortest text that reads back as the same number, whatever the locale.
@@ -94,25 +98,13 @@ void refuse_occupied(const fs::path& path) {
 
 }  // namespace
 
-RasterStatistics statistics_of(std::span<const double> values) {
-    if (values.empty()) return {};
-    RasterStatistics result;
-    result.count = static_cast<double>(values.size());
-    result.least = *std::min_element(values.begin(), values.end());
-    result.greatest = *std::max_element(values.begin(), values.end());
-    result.mean = std::accumulate(values.begin(), values.end(), 0.0) / result.count;
-    for (const double value : values) result.squares += (value - result.mean) * (value - result.mean);
-    return result;
-}
-
 RasterWriter::RasterWriter(const fs::path& path, const Grid& grid, const ReferenceSystem& system,
                            const RasterDescription& description)
     : begun_at_(session_.mark()),
       path_(path),
       grid_(grid),
-      description_(description),
-      block_rows_(block_side(grid.rows)),
-      block_columns_(block_side(grid.columns)) {
+      description_(description) {
+    plan_levels();
     refuse_occupied(path_);
     try {
         create(system);
@@ -127,6 +119,15 @@ RasterWriter::~RasterWriter() {
     if (is_closed_) return;
     dataset_.reset();
     remove();
+}
+
+void RasterWriter::plan_levels() {
+    levels_.push_back({.rows = grid_.rows, .columns = grid_.columns, .block_rows = block_side(grid_.rows),
+                       .block_columns = block_side(grid_.columns)});
+    while (std::max(levels_.back().rows, levels_.back().columns) > seen_at_once) {
+        levels_.push_back({.rows = (levels_.back().rows + 1) / 2, .columns = (levels_.back().columns + 1) / 2,
+                           .block_rows = full_side, .block_columns = full_side});
+    }
 }
 
 void RasterWriter::remove() const {
@@ -144,13 +145,14 @@ void RasterWriter::throw_if_failed(bool worked) const {
 
 void RasterWriter::create(const ReferenceSystem& system) {
     remove();
-    const CPLStringList options = creation_options(description_.stored, block_columns_, block_rows_);
+    const CPLStringList options = creation_options(description_.stored, levels_[0].block_columns, levels_[0].block_rows);
     GDALDriver* driver = GetGDALDriverManager()->GetDriverByName("GTiff");
     if (!driver) throw machine_error("GDAL has no GeoTIFF driver here; install the whole of GDAL.");
     dataset_.reset(driver->Create(path_.c_str(), static_cast<int>(grid_.columns), static_cast<int>(grid_.rows), 1,
                                   gdal_type(description_.stored), options.List()));
     throw_if_failed(dataset_ != nullptr);
     describe(system);
+    add_overviews();
     throw_if_failed(true);
 }
 
@@ -186,18 +188,21 @@ void RasterWriter::name_categories() {
     dataset_->GetRasterBand(1)->SetCategoryNames(list.List());
 }
 
-void RasterWriter::write_blocks(std::int64_t block_row, std::span<const std::byte> rows) {
+void RasterWriter::write_blocks(int level, std::int64_t block_row, std::span<const std::byte> rows) {
     const auto cell = static_cast<std::size_t>(GDALGetDataTypeSizeBytes(gdal_type(description_.stored)));
-    const auto columns = static_cast<std::size_t>(grid_.columns);
-    const auto width = static_cast<std::size_t>(block_columns_);
-    std::vector<std::byte> block(width * static_cast<std::size_t>(block_rows_) * cell);
+    const Level& shape = levels_[static_cast<std::size_t>(level)];
+    const auto columns = static_cast<std::size_t>(shape.columns);
+    const auto width = static_cast<std::size_t>(shape.block_columns);
+    block_.resize(width * static_cast<std::size_t>(shape.block_rows) * cell);
     for (std::size_t left = 0; left < columns; left += width) {
-        std::fill(block.begin(), block.end(), std::byte{0});  // what lies beyond the raster
         const std::size_t count = std::min(width, columns - left);
+        if (count * cell * static_cast<std::size_t>(shape.block_rows) < block_.size() || rows.size() < columns * cell * static_cast<std::size_t>(shape.block_rows)) {
+            std::fill(block_.begin(), block_.end(), std::byte{0});  // what lies beyond the raster
+        }
         for (std::size_t row = 0; row * columns * cell < rows.size(); ++row)
-            std::memcpy(&block[row * width * cell], &rows[(row * columns + left) * cell], count * cell);
-        const CPLErr result = dataset_->GetRasterBand(1)->WriteBlock(static_cast<int>(left / width),
-                                                                     static_cast<int>(block_row), block.data());
+            std::memcpy(&block_[row * width * cell], &rows[(row * columns + left) * cell], count * cell);
+        const CPLErr result = bands_[static_cast<std::size_t>(level)]->WriteBlock(static_cast<int>(left / width),
+                                                                                  static_cast<int>(block_row), block_.data());
         throw_if_failed(result == CE_None);
     }
 }
@@ -211,23 +216,27 @@ void RasterWriter::store_statistics() {
     band.SetMetadataItem("STATISTICS_STDDEV", shortest(statistics_.standard_deviation()).c_str());
 }
 
-void RasterWriter::build_overviews() {
-    std::vector<int> levels;
-    for (int level = 2; std::max(grid_.rows, grid_.columns) * 2 / level > 512; level *= 2) levels.push_back(level);
-    if (levels.empty()) return;
-    const ThreadOption zstd("ZSTD_LEVEL_OVERVIEW", "1");
-    const ThreadOption block("GDAL_TIFF_OVR_BLOCKSIZE", "512");
-    const char* resampling = description_.overviews == OverviewKind::nearest ? "NEAREST" : "AVERAGE";
-    const CPLErr result = dataset_->BuildOverviews(resampling, static_cast<int>(levels.size()), levels.data(), 0,
-                                                   nullptr, nullptr, nullptr);
-    throw_if_failed(result == CE_None);
+/// Makes the coarser copies, with nothing in them yet.
+void RasterWriter::add_overviews() {
+    std::vector<int> factors;
+    for (std::size_t i = 1; i < levels_.size(); ++i) factors.push_back(1 << i);
+    if (!factors.empty()) {
+        const ThreadOption zstd("ZSTD_LEVEL_OVERVIEW", "1");
+        const ThreadOption block("GDAL_TIFF_OVR_BLOCKSIZE", std::to_string(full_side).c_str());
+        const CPLErr result = dataset_->BuildOverviews("NONE", static_cast<int>(factors.size()), factors.data(), 0, nullptr,
+                                                       nullptr, nullptr);
+        throw_if_failed(result == CE_None);
+    }
+    GDALRasterBand& band = *dataset_->GetRasterBand(1);
+    bands_.assign(1, &band);
+    for (int i = 0; i < band.GetOverviewCount(); ++i) bands_.push_back(band.GetOverview(i));
+    if (bands_.size() != levels_.size()) throw bug("The raster " + path_.string() + " has not the overviews that were planned");
 }
 
 void RasterWriter::close() {
     dataset_->FlushCache(false);  // all blocks are in the file before its directory is, however many threads pack them
     throw_if_failed(true);
     store_statistics();
-    build_overviews();
     dataset_.reset();
     throw_if_failed(true);
     verify();

@@ -33,10 +33,10 @@ struct RasterDescription {
 
 /// Begins a tiled, compressed GeoTIFF. Instances for double, float, uint8_t, uint16_t, uint32_t and int32_t.
 ///
-/// Windows may come in any order and never twice; rows of blocks (512 rows) are held until they are whole and leave in
+/// Windows may come in any order and never twice; rows of blocks (256 rows) are held until they are whole and leave in
 /// order, so that the same values give the same bytes whatever the windows, the threads and GDAL's cache. Whole-width
-/// strips from the top down need the least memory. NaN is written as `nodata`; any other value must be representable in
-/// the stored type. `close` adds overviews and statistics, closes, opens the file again and checks it. What fails is an
+/// strips from the top down, a row of blocks each, need the least memory. Overviews are made on the way, each level from the one before. NaN is written as `nodata`; any other value must be representable in
+/// the stored type. `close` adds statistics, closes, opens the file again and checks it. What fails is an
 /// Error (machine) and leaves no file, as does a sink destroyed without `close`. A symbolic link at `path` is refused.
 template <class T>
 [[nodiscard]] std::unique_ptr<BlockSink<T>> create_raster(const std::filesystem::path& path, const Grid& grid,
