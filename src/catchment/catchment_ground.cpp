@@ -15,13 +15,12 @@ struct Side {
     double run_m = 0.0;
 };
 
-Side side_of(const ElevationStore& elevations, const Ground& ground, Cell cell, Direction d) {
-    const RowColumn at{cell / elevations.columns(), cell % elevations.columns()};
+template <class Z>
+Side side_of(const Raster<Z>& elevations, const Ground& ground, RowColumn at, Direction d) {
     const RowColumn beside = neighbour(at, d);
     if (beside.row < 0 || beside.column < 0 || beside.row >= elevations.rows() || beside.column >= elevations.columns())
         return {};
-    const double rise =
-        elevations[static_cast<Cell>(beside.row * elevations.columns() + beside.column)] - elevations[cell];
+    const double rise = static_cast<double>(elevations(beside.row, beside.column)) - static_cast<double>(elevations(at.row, at.column));
     if (std::isnan(rise)) return {};
     return {rise, from_fixed(ground.length(at.row, d))};
 }
@@ -56,9 +55,13 @@ double CatchmentGround::mean_elevation_m() const {
 }
 
 double land_slope(const ElevationStore& elevations, double metres_per_unit, const Ground& ground, Cell cell) {
-    const auto side = [&](Direction d) { return side_of(elevations, ground, cell, d); };
-    return metres_per_unit * ground.step_weight() * std::hypot(slope_across(side(Direction::east), side(Direction::west)),
-                                        slope_across(side(Direction::south), side(Direction::north)));
+    const RowColumn at{cell / elevations.columns(), cell % elevations.columns()};
+    return elevations.visit([&](const auto& z) {
+        const auto side = [&](Direction d) { return side_of(z, ground, at, d); };
+        const double east = slope_across(side(Direction::east), side(Direction::west));
+        const double south = slope_across(side(Direction::south), side(Direction::north));
+        return metres_per_unit * ground.step_weight() * std::sqrt(east * east + south * south);  // far from where a square overflows
+    });
 }
 
 }  // namespace rillclock

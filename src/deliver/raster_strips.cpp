@@ -9,12 +9,14 @@ namespace rillclock {
 
 /// The cells of some rows, one array a raster.
 struct RasterStrips::Strip {
-    std::vector<float> travel_time;
-    std::vector<std::uint16_t> flow_azimuth;
-    std::vector<double> contributing_area;
-    std::vector<std::uint32_t> catchment;
-    std::vector<std::uint8_t> regime;
-    std::vector<double> spill;
+    template <class T>
+    using Values = std::vector<T, LargeMemory<T>>;
+    Values<float> travel_time;
+    Values<std::uint16_t> flow_azimuth;
+    Values<double> contributing_area;
+    Values<std::uint32_t> catchment;
+    Values<std::uint8_t> regime;
+    Values<double> spill;
 
     void resize(std::size_t size) {
         travel_time.resize(size);
@@ -82,6 +84,7 @@ private:
 RasterStrips::RasterStrips(RasterStory story, const TiledTravel& travel, ResultFolder& folder)
     : story_(std::move(story)), files_(std::make_unique<Files>(story_, folder)),
       filling_(std::make_unique<Strip>()), leaving_(std::make_unique<Strip>()) {
+    for (std::size_t code = 0; code < azimuths_.size(); ++code) azimuths_[code] = azimuth_value(static_cast<FlowCode>(code));
     const auto size = static_cast<std::size_t>(travel.ground().forest.tiles().side() * story_.grid.columns);
     filling_->resize(size);
     leaving_->resize(size);
@@ -90,18 +93,24 @@ RasterStrips::~RasterStrips() = default;
 
 void RasterStrips::fill(const TileDesk& desk) {
     const Window& window = desk.flow.window();
-    for (Local local = 0; local < desk.flow.size(); ++local) {
-        const auto at = static_cast<std::size_t>(local / window.columns * story_.grid.columns + window.column + local % window.columns);
-        const FlowCode code = desk.flow.code(local);
-        const bool is_void = code == flow_void;
-        filling_->flow_azimuth[at] = azimuth_value(code);
-        filling_->spill[at] = desk.spill[local];
-        filling_->contributing_area[at] = is_void ? no_value : from_fixed_area(desk.area[local]);
-        filling_->catchment[at] = is_void ? no_number : desk.owner[local];
-        filling_->regime[at] = static_cast<std::uint8_t>(desk.regime[local]);
-        const StepTime to_point = desk.time_to_root(local) - story_.last_point_times[desk.owner[local]];
-        filling_->travel_time[at] = static_cast<float>(is_void ? no_value : in_minutes(to_point.under(story_.last_point_factors[desk.owner[local]])));
+    Local local = 0;
+    for (std::int64_t r = 0; r < window.rows; ++r) {
+        auto at = static_cast<std::size_t>(r * story_.grid.columns + window.column);
+        for (std::int64_t c = 0; c < window.columns; ++c, ++local, ++at) fill_cell(desk, local, at);
     }
+}
+
+void RasterStrips::fill_cell(const TileDesk& desk, Local local, std::size_t at) {
+    const FlowCode code = desk.flow.code(local);
+    const bool is_void = code == flow_void;
+    const std::uint32_t owner = desk.owner[local];
+    const StepTime to_point = desk.time_to_root(local) - story_.last_point_times[owner];
+    filling_->flow_azimuth[at] = azimuths_[code];
+    filling_->spill[at] = desk.spill[local];
+    filling_->contributing_area[at] = is_void ? no_value : from_fixed_area(desk.area[local]);
+    filling_->catchment[at] = is_void ? no_number : owner;
+    filling_->regime[at] = static_cast<std::uint8_t>(desk.regime[local]);
+    filling_->travel_time[at] = static_cast<float>(is_void ? no_value : in_minutes(to_point.under(story_.last_point_factors[owner])));
 }
 
 void RasterStrips::write(std::int64_t row, std::int64_t rows) {

@@ -96,10 +96,12 @@ void ChannelNetwork::look_at_tiles(const TiledTravel& travel, std::span<const do
     Borders borders(travel.ground().forest);
     for_all_tiles(travel, [&](Tile tile, TileDesk& desk) {
         const Weights weights{travel, is_in_, runoff, desk};
-        std::vector<std::int64_t> room;
-        borders.runoff_area.collect(tile, desk.flow, weights.runoff_channel(), room);
-        borders.arrival.collect(tile, desk.flow, weights.arrival_channel(1.0), room);
-        borders.arrival_more.collect(tile, desk.flow, weights.arrival_channel(tangent), room);
+        std::vector<std::int64_t> area;
+        std::vector<std::int64_t> arrival;
+        std::vector<std::int64_t> more;
+        collect_down(tile, desk.flow, borders.runoff_area.part(weights.runoff_channel(), area),
+                     borders.arrival.part(weights.arrival_channel(1.0), arrival),
+                     borders.arrival_more.part(weights.arrival_channel(tangent), more));
     });
     borders.runoff_area.solve<RunoffChannel>();
     borders.arrival.solve<ArrivalChannel>();
@@ -110,9 +112,9 @@ void ChannelNetwork::look_at_tiles(const TiledTravel& travel, std::span<const do
         std::vector<std::int64_t> area;
         std::vector<std::int64_t> arrival;
         std::vector<std::int64_t> more;
-        borders.runoff_area.fill(tile, desk.flow, weights.runoff_channel(), area);
-        borders.arrival.fill(tile, desk.flow, weights.arrival_channel(1.0), arrival);
-        borders.arrival_more.fill(tile, desk.flow, weights.arrival_channel(tangent), more);
+        fill_down(tile, desk.flow, borders.runoff_area.part(weights.runoff_channel(), area),
+                  borders.arrival.part(weights.arrival_channel(1.0), arrival),
+                  borders.arrival_more.part(weights.arrival_channel(tangent), more));
         const std::lock_guard lock(mutex);
         for (const Local local : desk.flow.order()) {
             if (!is_in_[desk.flow.cell(local)]) continue;

@@ -142,6 +142,12 @@ StepParts step_parts(const StepView& step, const TravelRules& rules) {
     return parts;
 }
 
+// Flattened, so that the compiler drops what nobody reads of the parts: they are most of the cost.
+[[gnu::flatten]] StepOutcome step_outcome(const StepView& step, const TravelRules& rules) {
+    const StepParts parts = step_parts(step, rules);
+    return {.time = parts.time(), .regime = parts.first.regime == Regime::none ? first_regime(step, rules) : parts.first.regime};
+}
+
 Regime first_regime(const StepView& step, const TravelRules& rules) {
     if (step.kind == GroundKind::channel) return Regime::channel;
     if (step.kind == GroundKind::water) return Regime::water;

@@ -10,6 +10,21 @@
 
 namespace rillclock {
 
+namespace {
+
+/// Calls `look(local, cell, row of the raster)` for all cells of a tile, voids too, row by row.
+template <class Look>
+void for_each_cell(const TileFlow& flow, Look look) {
+    const Window& window = flow.window();
+    Local local = 0;
+    for (std::int64_t r = 0; r < window.rows; ++r) {
+        Cell cell = flow.cell(local);
+        for (std::int64_t c = 0; c < window.columns; ++c) look(local++, cell++, window.row + r);
+    }
+}
+
+}  // namespace
+
 TiledTravel::TiledTravel(const TiledGround& ground, const TravelRules& rules, const Executor& executor)
     : in_(ground), rules_(rules), executor_(executor), area_(ground.forest), from_divide_(ground.forest),
       sheet_index_(ground.forest), flow_distance_(ground.forest), spill_border_(ground.forest), storm_(ground.forest),
@@ -26,10 +41,10 @@ void TiledTravel::find_areas() {
     for_each_tile(in_.forest, executor_, desks_, [this](Tile tile, TileDesk& desk) {
         read_elevations(desk);
         read_lengths(desk);
-        area_.collect(tile, desk.flow, area_channel(desk.flow), desk.room);
-        from_divide_.collect(tile, desk.flow, divide_channel(desk), desk.room);
-        flow_distance_.collect(tile, desk.flow, distance_channel(desk), desk.room);
-        spill_border_.collect(tile, desk.flow, spill_channel(desk), desk.spill);
+        collect_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area),
+                     from_divide_.part(divide_channel(desk), desk.from_divide));
+        collect_up(tile, desk.flow, flow_distance_.part(distance_channel(desk), desk.flow_distance),
+                   spill_border_.part(spill_channel(desk), desk.spill));
     });
     area_.solve<decltype(area_channel(std::declval<TileFlow&>()))>();
     from_divide_.solve<decltype(divide_channel(std::declval<TileDesk&>()))>();
@@ -41,20 +56,18 @@ void TiledTravel::find_kinds() {
     std::mutex roots_mutex;
     for_each_tile(in_.forest, executor_, desks_, [&](Tile tile, TileDesk& desk) {
         read_elevations(desk);
-        spill_border_.fill(tile, desk.flow, spill_channel(desk), desk.spill);
+        fill_up(tile, desk.flow, spill_border_.part(spill_channel(desk), desk.spill));
         for (Local local = 0; local < desk.flow.size(); ++local) {
             if (desk.flow.code(local) == flow_void) desk.spill[local] = desk.elevation[local];
         }
         spill_.write(desk.flow.window(), desk.spill);
 
-        area_.fill(tile, desk.flow, area_channel(desk.flow), desk.area);
+        fill_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area));
         std::vector<RootArea> roots;
-        for (const Local local : desk.flow.order()) {
-            const Cell cell = desk.flow.cell(local);
-            kind_[cell] = kind_of(in_.surface.at(cell), rules_.channel, desk.area[local],
-                                  in_.ground.cell_area(desk.flow.row(local)));
+        for_each_cell(desk.flow, [&](Local local, Cell cell, std::int64_t row) {
+            kind_[cell] = kind_of(in_.surface.at(cell), rules_.channel, desk.area[local], in_.ground.cell_area(row));
             if (desk.flow.code(local) == flow_root) roots.push_back({cell, desk.area[local]});
-        }
+        });
         const std::lock_guard lock(roots_mutex);
         roots_.insert(roots_.end(), roots.begin(), roots.end());
     });
@@ -66,10 +79,10 @@ void TiledTravel::find_slopes() {
     const SlopeGround ground{.in = in_, .spill = spill_, .rules = rules_.slope};
     for_each_tile(in_.forest, executor_, desks_, [&](Tile tile, TileDesk& desk) {
         read_lengths(desk);
-        flow_distance_.fill(tile, desk.flow, distance_channel(desk), desk.flow_distance);
+        fill_up(tile, desk.flow, flow_distance_.part(distance_channel(desk), desk.flow_distance));
         find_tile_slopes(ground, desk, kind_, slope_);
         read_index_steps(desk);
-        sheet_index_.collect(tile, desk.flow, index_channel(desk), desk.room);
+        collect_down(tile, desk.flow, sheet_index_.part(index_channel(desk), desk.sheet_index));
     });
     sheet_index_.solve<decltype(index_channel(std::declval<TileDesk&>()))>();
 }
@@ -77,8 +90,7 @@ void TiledTravel::find_slopes() {
 void TiledTravel::find_times() {
     for_each_tile(in_.forest, executor_, desks_, [this](Tile tile, TileDesk& desk) {
         read_steps(tile, desk);
-        storm_.collect(tile, desk.flow, storm_channel(desk), desk.room);
-        fixed_.collect(tile, desk.flow, fixed_channel(desk), desk.room);
+        collect_up(tile, desk.flow, storm_.part(storm_channel(desk), desk.storm), fixed_.part(fixed_channel(desk), desk.fixed));
     });
     storm_.solve<decltype(storm_channel(std::declval<TileDesk&>()))>();
     fixed_.solve<decltype(fixed_channel(std::declval<TileDesk&>()))>();
@@ -106,12 +118,11 @@ void TiledTravel::read_lengths(TileDesk& desk) const {
 }
 
 void TiledTravel::read_index_steps(TileDesk& desk) const {
-    desk.index_step.assign(desk.flow.size(), 0);
-    for (const Local local : desk.flow.order()) {
-        const Cell cell = desk.flow.cell(local);
+    desk.index_step.resize(desk.flow.size());
+    for_each_cell(desk.flow, [&](Local local, Cell cell, std::int64_t) {
         desk.index_step[local] = sheet_index_step({.length = desk.length[local], .slope = static_cast<double>(slope_[cell]),
                                                    .surface = &in_.surface.at(cell), .kind = kind_[cell]});
-    }
+    });
 }
 
 void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
@@ -120,34 +131,30 @@ void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
     read_index_steps(desk);
     desk.spill.resize(desk.flow.size());
     spill_.read(desk.flow.window(), desk.spill);
-    area_.fill(tile, desk.flow, area_channel(desk.flow), desk.area);
-    from_divide_.fill(tile, desk.flow, divide_channel(desk), desk.from_divide);
-    sheet_index_.fill(tile, desk.flow, index_channel(desk), desk.sheet_index);
-    desk.step.assign(desk.flow.size(), StepTime{});
-    desk.regime.assign(desk.flow.size(), Regime::none);
-    for (const Local local : desk.flow.order()) {
-        const StepView step = step_view(desk, local);
-        const StepParts parts = step_parts(step, rules_);
-        desk.step[local] = parts.time();
-        desk.regime[local] = parts.first.regime == Regime::none ? first_regime(step, rules_) : parts.first.regime;
-    }
+    fill_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area),
+              from_divide_.part(divide_channel(desk), desk.from_divide), sheet_index_.part(index_channel(desk), desk.sheet_index));
+    desk.step.resize(desk.flow.size());
+    desk.regime.resize(desk.flow.size());
+    for_each_cell(desk.flow, [&](Local local, Cell cell, std::int64_t) {
+        const StepOutcome outcome = desk.flow.code(local) == flow_void ? StepOutcome{} : step_outcome(step_view(desk, local, cell), rules_);
+        desk.step[local] = outcome.time;
+        desk.regime[local] = outcome.regime;
+    });
 }
 
 void TiledTravel::read_areas(Tile tile, TileDesk& desk) const {
     desk.flow.read(in_.forest.codes(), in_.forest.tiles().window(tile));
-    area_.fill(tile, desk.flow, area_channel(desk.flow), desk.area);
+    fill_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area));
 }
 
 void TiledTravel::read_tile(Tile tile, TileDesk& desk) const {
     desk.flow.read(in_.forest.codes(), in_.forest.tiles().window(tile));
     read_steps(tile, desk);
-    flow_distance_.fill(tile, desk.flow, distance_channel(desk), desk.flow_distance);
-    storm_.fill(tile, desk.flow, storm_channel(desk), desk.storm);
-    fixed_.fill(tile, desk.flow, fixed_channel(desk), desk.fixed);
+    fill_up(tile, desk.flow, flow_distance_.part(distance_channel(desk), desk.flow_distance),
+            storm_.part(storm_channel(desk), desk.storm), fixed_.part(fixed_channel(desk), desk.fixed));
 }
 
-StepView TiledTravel::step_view(const TileDesk& desk, Local local) const {
-    const Cell cell = desk.flow.cell(local);
+StepView TiledTravel::step_view(const TileDesk& desk, Local local, Cell cell) const {
     return {.length = desk.length[local],
             .slope = static_cast<double>(slope_[cell]),
             .surface = &in_.surface.at(cell),
@@ -173,9 +180,13 @@ TiledOwners::TiledOwners(const TiledForest& forest, std::vector<CellLabel> label
 
     Workspaces<TileDesk> desks;
     const auto channel = [](const TileDesk& desk) { return up::First{[&desk](Local cell) { return desk.label[cell]; }}; };
-    for_each_tile(forest, executor, desks, [&](Tile tile, TileDesk& desk) {
-        put_labels(tile, desk);
-        owner_.collect(tile, desk.flow, channel(desk), desk.owner);
+    executor.for_each(forest.tiles().count(), [&](std::size_t number) {
+        const auto tile = static_cast<Tile>(number);
+        if (first_of_tile_[tile] == first_of_tile_[tile + 1U]) return;   // no path finds a label here
+        const auto desk = desks.lease();
+        desk->flow.read(forest.codes(), forest.tiles().window(tile));
+        put_labels(tile, *desk);
+        collect_up(tile, desk->flow, owner_.part(channel(*desk), desk->owner));
     });
     owner_.solve<decltype(channel(std::declval<TileDesk&>()))>();
 }
@@ -192,7 +203,7 @@ void TiledOwners::put_labels(Tile tile, TileDesk& desk) const {
 
 void TiledOwners::read_tile(Tile tile, TileDesk& desk) const {
     put_labels(tile, desk);
-    owner_.fill(tile, desk.flow, up::First{[&desk](Local cell) { return desk.label[cell]; }}, desk.owner);
+    fill_up(tile, desk.flow, owner_.part(up::First{[&desk](Local cell) { return desk.label[cell]; }}, desk.owner));
 }
 
 }  // namespace rillclock

@@ -17,8 +17,8 @@ from osgeo import gdal
 gdal.UseExceptions()
 gdal.SetConfigOption("GDAL_NUM_THREADS", "ALL_CPUS")
 
-BLOCKS = ["-co", "TILED=YES", "-co", "BLOCKXSIZE=512", "-co", "BLOCKYSIZE=512", "-co", "BIGTIFF=IF_SAFER"]
-OVERVIEWS = ["--config", "ZSTD_LEVEL_OVERVIEW", "1", "--config", "GDAL_TIFF_OVR_BLOCKSIZE", "512"]
+BLOCKS = ["-co", "TILED=YES", "-co", "BLOCKXSIZE=256", "-co", "BLOCKYSIZE=256", "-co", "BIGTIFF=IF_SAFER"]
+OVERVIEWS = ["--config", "ZSTD_LEVEL_OVERVIEW", "1", "--config", "GDAL_TIFF_OVR_BLOCKSIZE", "256"]
 
 
 def seconds_of(*words):

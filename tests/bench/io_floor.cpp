@@ -19,7 +19,8 @@ namespace {
 
 namespace fs = std::filesystem;
 
-constexpr int block_side = 512;
+constexpr int block_side = 256;
+constexpr int strip_rows = 512;   // read at once
 
 GDALDatasetUniquePtr opened(const fs::path& path) {
     GDALDatasetUniquePtr dataset(GDALDataset::Open(path.c_str(), GDAL_OF_RASTER));
@@ -43,9 +44,9 @@ Content content_of(const fs::path& path, bool keep) {
     const GDALDatasetUniquePtr dataset = opened(path);
     GDALRasterBand& band = *dataset->GetRasterBand(1);
     Content content{.type = band.GetRasterDataType(), .rows = band.GetYSize(), .columns = band.GetXSize(), .bytes = {}};
-    content.bytes.resize(content.row_bytes() * static_cast<std::size_t>(keep ? content.rows : block_side));
-    for (int row = 0; row < content.rows; row += block_side) {
-        const int rows = std::min(block_side, content.rows - row);
+    content.bytes.resize(content.row_bytes() * static_cast<std::size_t>(keep ? content.rows : strip_rows));
+    for (int row = 0; row < content.rows; row += strip_rows) {
+        const int rows = std::min(strip_rows, content.rows - row);
         std::byte* const to = content.bytes.data() + (keep ? content.row_bytes() * static_cast<std::size_t>(row) : 0U);
         if (band.RasterIO(GF_Read, 0, row, content.columns, rows, to, content.columns, rows, content.type, 0, 0,
                           nullptr) != CE_None) {
@@ -231,7 +232,7 @@ void measure(const Words& words) {
     GDALAllRegister();
     CPLSetConfigOption("GDAL_NUM_THREADS", "ALL_CPUS");
     CPLSetConfigOption("ZSTD_LEVEL_OVERVIEW", "1");
-    CPLSetConfigOption("GDAL_TIFF_OVR_BLOCKSIZE", "512");
+    CPLSetConfigOption("GDAL_TIFF_OVR_BLOCKSIZE", "256");
     const fs::path out = words.text(3);
     fs::create_directories(out);
     tell("read_seconds", seconds_of([&] {

@@ -13,50 +13,74 @@ using Values = Raster<std::int64_t>;
 
 struct Desk {
     TileFlow flow;
-    std::vector<std::int64_t> field;
+    std::vector<std::int64_t> area;
+    std::vector<std::int64_t> distance;
+    std::vector<std::int64_t> second_area;
+    std::vector<std::int64_t> second_distance;
 };
 
-/// One channel's sweep, its result gathered into a raster. `ChannelOf` makes the channel for the flow of a tile.
-template <template <class> class Borders, class ChannelOf>
-class Sweep {
-public:
-    Sweep(const TiledForest& forest, ChannelOf channel_of, Values& result)
-        : forest_(&forest), channel_of_(channel_of), result_(&result), borders_(forest) {}
+void gather(const Desk& desk, const std::vector<std::int64_t>& field, Values& result) {
+    const Window& window = desk.flow.window();
+    auto from = field.begin();
+    for (std::int64_t row = window.row; row < window.row + window.rows; ++row, from += window.columns) {
+        std::copy_n(from, window.columns, result.row(row).begin() + window.column);
+    }
+}
 
-    void collect(Tile tile, Desk& desk) { borders_.collect(tile, desk.flow, channel_of_(desk.flow), desk.field); }
-    void solve() { borders_.template solve<decltype(channel_of_(std::declval<const TileFlow&>()))>(); }
-    void fill(Tile tile, Desk& desk) {
-        borders_.fill(tile, desk.flow, channel_of_(desk.flow), desk.field);
-        const Window window = forest_->tiles().window(tile);
-        auto from = desk.field.begin();
-        for (std::int64_t row = window.row; row < window.row + window.rows; ++row, from += window.columns) {
-            std::copy_n(from, window.columns, result_->row(row).begin() + window.column);
-        }
+struct Bench {
+    const TiledForest& forest;
+    const Executor& executor;
+    Workspaces<Desk> desks;
+
+    template <class ChannelOf>
+    void sweep_down_into(Values& result, ChannelOf channel_of) {
+        DownBorders<std::int64_t> borders(forest);
+        for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+            collect_down(tile, desk.flow, borders.part(channel_of(desk.flow), desk.area));
+        });
+        borders.template solve<decltype(channel_of(std::declval<const TileFlow&>()))>();
+        for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+            fill_down(tile, desk.flow, borders.part(channel_of(desk.flow), desk.area));
+            gather(desk, desk.area, result);
+        });
     }
 
-private:
-    const TiledForest* forest_;
-    ChannelOf channel_of_;
-    Values* result_;
-    Borders<std::int64_t> borders_;
+    template <class ChannelOf>
+    void sweep_up_into(Values& result, ChannelOf channel_of) {
+        UpBorders<std::int64_t> borders(forest);
+        for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+            collect_up(tile, desk.flow, borders.part(channel_of(desk.flow), desk.distance));
+        });
+        borders.template solve<decltype(channel_of(std::declval<const TileFlow&>()))>();
+        for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+            fill_up(tile, desk.flow, borders.part(channel_of(desk.flow), desk.distance));
+            gather(desk, desk.distance, result);
+        });
+    }
+
+    /// Two channels each way: every tile is read once before the exits are solved and once after.
+    template <class DownOf, class UpOf>
+    void four_sweeps_into(Values& a, Values& b, Values& c, Values& d, DownOf down_of, UpOf up_of) {
+        DownBorders<std::int64_t> down_a(forest), down_c(forest);
+        UpBorders<std::int64_t> up_b(forest), up_d(forest);
+        for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+            collect_down(tile, desk.flow, down_a.part(down_of(desk.flow), desk.area), down_c.part(down_of(desk.flow), desk.second_area));
+            collect_up(tile, desk.flow, up_b.part(up_of(desk.flow), desk.distance), up_d.part(up_of(desk.flow), desk.second_distance));
+        });
+        down_a.template solve<decltype(down_of(std::declval<const TileFlow&>()))>();
+        down_c.template solve<decltype(down_of(std::declval<const TileFlow&>()))>();
+        up_b.template solve<decltype(up_of(std::declval<const TileFlow&>()))>();
+        up_d.template solve<decltype(up_of(std::declval<const TileFlow&>()))>();
+        for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+            fill_down(tile, desk.flow, down_a.part(down_of(desk.flow), desk.area), down_c.part(down_of(desk.flow), desk.second_area));
+            fill_up(tile, desk.flow, up_b.part(up_of(desk.flow), desk.distance), up_d.part(up_of(desk.flow), desk.second_distance));
+            gather(desk, desk.area, a);
+            gather(desk, desk.distance, b);
+            gather(desk, desk.second_area, c);
+            gather(desk, desk.second_distance, d);
+        });
+    }
 };
-
-template <class ChannelOf>
-auto sweep_down_into(Values& result, const TiledForest& forest, ChannelOf channel_of) {
-    return Sweep<DownBorders, ChannelOf>(forest, channel_of, result);
-}
-template <class ChannelOf>
-auto sweep_up_into(Values& result, const TiledForest& forest, ChannelOf channel_of) {
-    return Sweep<UpBorders, ChannelOf>(forest, channel_of, result);
-}
-
-/// Runs sweeps together: every tile is read once before the exits are solved and once after.
-template <class... Sweeps>
-void run_together(const TiledForest& forest, const Executor& executor, Workspaces<Desk>& desks, Sweeps... sweeps) {
-    for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) { (sweeps.collect(tile, desk), ...); });
-    (sweeps.solve(), ...);
-    for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) { (sweeps.fill(tile, desk), ...); });
-}
 
 void expect_equal(const Values& swept, const Values& plain, const char* what) {
     if (swept != plain) throw std::runtime_error(std::string("the two ways give different ") + what);
@@ -92,20 +116,13 @@ void measure(const Words& words) {
     const TileGrid tiles(side, side);
     tell("forest_seconds", least_seconds_of(repeats, [&] { (void)TiledForest(codes, tiles, executor); }));
     const TiledForest forest(codes, tiles, executor);
-    Workspaces<Desk> desks;
+    Bench bench{.forest = forest, .executor = executor, .desks = {}};
     Values a(side, side), b(side, side), c(side, side), d(side, side);
-    tell("sweep_down_seconds", least_seconds_of(repeats, [&] {
-             run_together(forest, executor, desks, sweep_down_into(a, forest, one_a_cell));
-         }));
+    tell("sweep_down_seconds", least_seconds_of(repeats, [&] { bench.sweep_down_into(a, one_a_cell); }));
     expect_equal(a, areas, "contributing areas");
-    tell("sweep_up_seconds",
-         least_seconds_of(repeats, [&] { run_together(forest, executor, desks, sweep_up_into(b, forest, lengths)); }));
+    tell("sweep_up_seconds", least_seconds_of(repeats, [&] { bench.sweep_up_into(b, lengths); }));
     expect_equal(b, distances, "distances");
-    tell("sweep_four_seconds", least_seconds_of(repeats, [&] {
-             run_together(forest, executor, desks, sweep_down_into(a, forest, one_a_cell),
-                          sweep_up_into(b, forest, lengths), sweep_down_into(c, forest, one_a_cell),
-                          sweep_up_into(d, forest, lengths));
-         }));
+    tell("sweep_four_seconds", least_seconds_of(repeats, [&] { bench.four_sweeps_into(a, b, c, d, one_a_cell, lengths); }));
     expect_equal(c, areas, "contributing areas");
     expect_equal(d, distances, "distances");
 }

@@ -20,6 +20,17 @@ std::int64_t weight(Cell cell) { return 1 + static_cast<std::int64_t>(cell) * 26
 double level(Cell cell) { return static_cast<double>(weight(cell)); }
 std::uint32_t label(Cell cell) { return weight(cell) > 80 ? cell + 1 : 0; }
 
+template <class Part>
+void collect_tile(Tile tile, const TileFlow& flow, const Part& part) {
+    if constexpr (requires { part.keep_below(tile); }) collect_up(tile, flow, part);
+    else collect_down(tile, flow, part);
+}
+template <class Part>
+void fill_tile(Tile tile, const TileFlow& flow, const Part& part) {
+    if constexpr (requires { part.keep_below(tile); }) fill_up(tile, flow, part);
+    else fill_down(tile, flow, part);
+}
+
 /// A tiled sweep with one channel made for each tile by `make(flow)`, gathered into a raster.
 template <class Borders, class Value, class Make>
 Raster<Value> tiled(const TiledForest& forest, const Executor& executor, Make make) {
@@ -28,12 +39,12 @@ Raster<Value> tiled(const TiledForest& forest, const Executor& executor, Make ma
     Borders borders(forest);
     std::vector<std::vector<Value>> room(forest.tiles().count());
     for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
-        borders.collect(tile, desk.flow, make(desk.flow), room[tile]);
+        collect_tile(tile, desk.flow, borders.part(make(desk.flow), room[tile]));
     });
     borders.template solve<Channel>();
     Raster<Value> gathered(forest.codes().rows(), forest.codes().columns());
     for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
-        borders.fill(tile, desk.flow, make(desk.flow), room[tile]);
+        fill_tile(tile, desk.flow, std::as_const(borders).part(make(desk.flow), room[tile]));
         for (Local local = 0; local < desk.flow.size(); ++local) gathered[desk.flow.cell(local)] = room[tile][local];
     });
     return gathered;

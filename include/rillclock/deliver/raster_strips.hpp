@@ -1,5 +1,7 @@
 #pragma once
 
+#include <array>
+#include <cstdint>
 #include <memory>
 #include <span>
 #include <string>
@@ -49,7 +51,11 @@ public:
 private:
     class Files;
     struct Strip;
+
+    void fill_cell(const TileDesk& desk, Local local, std::size_t at);
+
     RasterStory story_;
+    std::array<std::uint16_t, 256> azimuths_{};   ///< by flow code
     std::unique_ptr<Files> files_;
     std::unique_ptr<Strip> filling_;
     std::unique_ptr<Strip> leaving_;

@@ -11,7 +11,8 @@
 
 namespace rillclock {
 
-/// The sweeps of sweep.hpp in three stages: each tile alone (`collect`), once over the exits (`solve`), each tile again (`fill`).
+/// The sweeps of sweep.hpp in three stages: each tile alone (`collect_down`, `collect_up`), once over the exits (`solve`), each tile again
+/// (`fill_down`, `fill_up`). Sweeps of one direction share their walk over a tile: that walk, not the arithmetic, is what they cost.
 ///
 /// Channels are those of the closed set, their weights functions of a tile's cells (`Local`). All that is kept between the stages is a
 /// value for each exit; a tile's whole field is made from it whenever it is wanted, and need not be kept. What comes out does not
@@ -74,23 +75,42 @@ struct Rule<up::First<L>> {
 template <class Channel>
 using SweptValue = typename tile_sweep_detail::Rule<Channel>::Value;
 
+namespace tile_sweep_detail {
+
+/// Sets every cell of a tile to its start, voids to 0.
+template <class Value, class Start>
+void start_field(const TileFlow& flow, std::vector<Value>& field, Start start) {
+    field.resize(flow.size());
+    if (flow.order().size() == flow.size()) {
+        for (Local cell = 0; cell < flow.size(); ++cell) field[cell] = start(cell);
+        return;
+    }
+    for (Local cell = 0; cell < flow.size(); ++cell) field[cell] = flow.code(cell) == flow_void ? Value{} : start(cell);
+}
+
+template <class Borders, class Channel>
+struct DownPart;
+template <class Borders, class Channel>
+struct UpPart;
+
+}  // namespace tile_sweep_detail
+
 /// What each exit sends on to the next tile in a sweep down.
-template <class Value>
+template <class Value_>
 class DownBorders {
 public:
+    using Value = Value_;
     explicit DownBorders(const TiledForest& forest)
         : forest_(&forest), sent_(forest.exit_count()), moved_(forest.exit_count(), 0) {}
 
-    /// First stage: what leaves a tile of the water that begins in it. `field` is room for a value a cell.
+    /// This channel's part in a sweep over one tile: `field` takes a value a cell.
     template <class Channel>
-    void collect(Tile tile, const TileFlow& flow, const Channel& channel, std::vector<Value>& field) {
-        using Rule = tile_sweep_detail::Rule<Channel>;
-        run(flow, channel, field, [](auto&) {});
-        for (std::size_t i = 0; i < flow.exits().size(); ++i) {
-            const Local exit = flow.exits()[i];
-            sent_[forest_->first_exit(tile) + i] = Rule::sent(channel, exit, field[exit]);
-        }
-        if constexpr (Rule::moves) collect_moves(tile, flow, channel, field);
+    [[nodiscard]] auto part(const Channel& channel, std::vector<Value>& field) {
+        return tile_sweep_detail::DownPart<DownBorders, Channel>{*this, channel, field};
+    }
+    template <class Channel>
+    [[nodiscard]] auto part(const Channel& channel, std::vector<Value>& field) const {
+        return tile_sweep_detail::DownPart<const DownBorders, Channel>{*this, channel, field};
     }
 
     /// Second stage: lets the water of all exits run on through the tiles below.
@@ -103,46 +123,13 @@ public:
         }
     }
 
-    /// Third stage: the field of a tile, void cells 0.
-    template <class Channel>
-    void fill(Tile tile, const TileFlow& flow, const Channel& channel, std::vector<Value>& field) const {
-        using Rule = tile_sweep_detail::Rule<Channel>;
-        run(flow, channel, field, [&](auto& values) {
-            for (const Inlet& inlet : forest_->inlets(tile)) {
-                values[inlet.to] = Rule::join(values[inlet.to], sent_[inlet.exit]);
-            }
-        });
-    }
-
 private:
+    template <class, class>
+    friend struct tile_sweep_detail::DownPart;
+
     [[nodiscard]] Value moved_value(Exit exit) const {
         if constexpr (std::is_same_v<Value, std::int64_t>) return moved_[exit];
         else return 0;
-    }
-
-    /// `let_in` adds what comes from other tiles, before anything flows.
-    template <class Channel, class LetIn>
-    static void run(const TileFlow& flow, const Channel& channel, std::vector<Value>& field, LetIn let_in) {
-        using Rule = tile_sweep_detail::Rule<Channel>;
-        field.assign(flow.size(), Value{});
-        for (const Local cell : flow.order()) field[cell] = Rule::start(channel, cell);
-        let_in(field);
-        for (const Local cell : flow.order()) {
-            const Local below = flow.down(cell);
-            if (below < ends_here) field[below] = Rule::join(field[below], Rule::sent(channel, cell, field[cell]));
-        }
-    }
-
-    /// How much a value grows on its way from where it comes in to where it leaves, the exit's own step included.
-    template <class Channel>
-    void collect_moves(Tile tile, const TileFlow& flow, const Channel& channel, std::vector<Value>& field) {
-        const auto order = flow.order();
-        for (std::size_t i = order.size(); i-- > 0;) {
-            const Local below = flow.down(order[i]);
-            if (below == ends_here) field[order[i]] = 0;
-            else field[order[i]] = channel.step(order[i]) + (below == leaves_tile ? 0 : field[below]);
-        }
-        for (const Inlet& inlet : forest_->inlets(tile)) moved_[inlet.exit] = field[inlet.to];
     }
 
     const TiledForest* forest_;
@@ -151,16 +138,20 @@ private:
 };
 
 /// What each exit finds below it, in the tiles that its water goes on to, in a sweep up.
-template <class Value>
+template <class Value_>
 class UpBorders {
 public:
+    using Value = Value_;
     explicit UpBorders(const TiledForest& forest) : forest_(&forest), below_(forest.exit_count()) {}
 
-    /// First stage: what lies along the tile's own part of the paths that come into it.
+    /// This channel's part in a sweep over one tile: `field` takes a value a cell.
     template <class Channel>
-    void collect(Tile tile, const TileFlow& flow, const Channel& channel, std::vector<Value>& field) {
-        run(tile, flow, channel, field, false);
-        for (const Inlet& inlet : forest_->inlets(tile)) below_[inlet.exit] = field[inlet.to];
+    [[nodiscard]] auto part(const Channel& channel, std::vector<Value>& field) {
+        return tile_sweep_detail::UpPart<UpBorders, Channel>{*this, channel, field};
+    }
+    template <class Channel>
+    [[nodiscard]] auto part(const Channel& channel, std::vector<Value>& field) const {
+        return tile_sweep_detail::UpPart<const UpBorders, Channel>{*this, channel, field};
     }
 
     /// Second stage: adds to each exit what lies beyond the tile below it.
@@ -174,36 +165,144 @@ public:
         }
     }
 
-    /// Third stage: the field of a tile, void cells 0.
-    template <class Channel>
-    void fill(Tile tile, const TileFlow& flow, const Channel& channel, std::vector<Value>& field) const {
-        run(tile, flow, channel, field, true);
-    }
-
     /// The value of the cell that an exit drains to.
     [[nodiscard]] const Value& below(Exit exit) const { return below_[exit]; }
 
 private:
-    template <class Channel>
-    void run(Tile tile, const TileFlow& flow, const Channel& channel, std::vector<Value>& field, bool with_below) const {
-        using Rule = tile_sweep_detail::Rule<Channel>;
-        field.assign(flow.size(), Value{});
-        if (with_below) {
-            for (std::size_t i = 0; i < flow.exits().size(); ++i) field[flow.exits()[i]] = below_[forest_->first_exit(tile) + i];
-        }
-        const auto order = flow.order();
-        for (std::size_t i = order.size(); i-- > 0;) {
-            const Local cell = order[i];
-            const Local below = flow.down(cell);
-            const Value own = Rule::own(channel, cell, below == ends_here);
-            const bool has_below = below < ends_here || (below == leaves_tile && with_below);
-            field[cell] = has_below ? Rule::combine(own, field[below < ends_here ? below : cell]) : own;
-        }
-    }
+    template <class, class>
+    friend struct tile_sweep_detail::UpPart;
 
     const TiledForest* forest_;
     std::vector<Value> below_;
 };
+
+namespace tile_sweep_detail {
+
+template <class Borders, class Channel>
+struct DownPart {
+    using Rule = tile_sweep_detail::Rule<Channel>;
+    using Value = typename Borders::Value;
+    static constexpr bool moves = Rule::moves;
+    Borders& borders;
+    Channel channel;
+    std::vector<Value>& field;
+
+    void start(const TileFlow& flow) const {
+        start_field(flow, field, [this](Local cell) { return Rule::start(channel, cell); });
+    }
+    /// Adds what comes from other tiles, before anything flows.
+    void let_in(Tile tile) const {
+        for (const Inlet& inlet : borders.forest_->inlets(tile)) field[inlet.to] = Rule::join(field[inlet.to], borders.sent_[inlet.exit]);
+    }
+    void send(Local cell, Local below) const { field[below] = Rule::join(field[below], Rule::sent(channel, cell, field[cell])); }
+    void keep_sent(Tile tile, const TileFlow& flow) const {
+        const Exit first = borders.forest_->first_exit(tile);
+        for (std::size_t i = 0; i < flow.exits().size(); ++i) {
+            const Local exit = flow.exits()[i];
+            borders.sent_[first + i] = Rule::sent(channel, exit, field[exit]);
+        }
+    }
+    /// How much a value grows on its way from a cell to where it leaves the tile, the exit's own step included.
+    void move(Local cell, Local below) const {
+        if constexpr (moves) {
+            if (below == ends_here) field[cell] = 0;
+            else field[cell] = channel.step(cell) + (below == leaves_tile ? 0 : field[below]);
+        }
+    }
+    void keep_moved(Tile tile) const {
+        if constexpr (moves) {
+            for (const Inlet& inlet : borders.forest_->inlets(tile)) borders.moved_[inlet.exit] = field[inlet.to];
+        }
+    }
+};
+
+template <class Borders, class Channel>
+struct UpPart {
+    using Rule = tile_sweep_detail::Rule<Channel>;
+    using Value = typename Borders::Value;
+    Borders& borders;
+    Channel channel;
+    std::vector<Value>& field;
+
+    void start(const TileFlow& flow) const {
+        if (flow.order().size() == flow.size()) field.resize(flow.size());   // every cell will be set
+        else field.assign(flow.size(), Value{});
+    }
+    void let_in(Tile tile, const TileFlow& flow) const {
+        const Exit first = borders.forest_->first_exit(tile);
+        for (std::size_t i = 0; i < flow.exits().size(); ++i) field[flow.exits()[i]] = borders.below_[first + i];
+    }
+    template <bool with_below>
+    void take(Local cell, Local below) const {
+        const Value own = Rule::own(channel, cell, below == ends_here);
+        if (below < ends_here) field[cell] = Rule::combine(own, field[below]);
+        else if (with_below && below == leaves_tile) field[cell] = Rule::combine(own, field[cell]);
+        else field[cell] = own;
+    }
+    void keep_below(Tile tile) const {
+        for (const Inlet& inlet : borders.forest_->inlets(tile)) borders.below_[inlet.exit] = field[inlet.to];
+    }
+};
+
+template <class... Parts>
+void send_all(const TileFlow& flow, const Parts&... parts) {
+    for (const Local cell : flow.order()) {
+        const Local below = flow.down(cell);
+        if (below < ends_here) (parts.send(cell, below), ...);
+    }
+}
+
+template <bool with_below, class... Parts>
+void take_all(const TileFlow& flow, const Parts&... parts) {
+    const auto order = flow.order();
+    for (std::size_t i = order.size(); i-- > 0;) {
+        const Local cell = order[i];
+        const Local below = flow.down(cell);
+        (parts.template take<with_below>(cell, below), ...);
+    }
+}
+
+}  // namespace tile_sweep_detail
+
+/// First stage of sweeps down, one walk over the tile for all of them: what leaves it of the water that begins in it.
+template <class... Parts>
+void collect_down(Tile tile, const TileFlow& flow, const Parts&... parts) {
+    (parts.start(flow), ...);
+    tile_sweep_detail::send_all(flow, parts...);
+    (parts.keep_sent(tile, flow), ...);
+    if constexpr ((Parts::moves || ...)) {
+        const auto order = flow.order();
+        for (std::size_t i = order.size(); i-- > 0;) {
+            const Local cell = order[i];
+            (parts.move(cell, flow.down(cell)), ...);
+        }
+        (parts.keep_moved(tile), ...);
+    }
+}
+
+/// Third stage of sweeps down: the fields of a tile, void cells 0.
+template <class... Parts>
+void fill_down(Tile tile, const TileFlow& flow, const Parts&... parts) {
+    (parts.start(flow), ...);
+    (parts.let_in(tile), ...);
+    tile_sweep_detail::send_all(flow, parts...);
+}
+
+/// First stage of sweeps up: what lies along the tile's own part of the paths that come into it.
+template <class... Parts>
+void collect_up(Tile tile, const TileFlow& flow, const Parts&... parts) {
+    (parts.start(flow), ...);
+    tile_sweep_detail::take_all<false>(flow, parts...);
+    (parts.keep_below(tile), ...);
+}
+
+/// Third stage of sweeps up: the fields of a tile, void cells 0.
+template <class... Parts>
+void fill_up(Tile tile, const TileFlow& flow, const Parts&... parts) {
+    (parts.start(flow), ...);
+    (parts.let_in(tile, flow), ...);
+    tile_sweep_detail::take_all<true>(flow, parts...);
+}
 
 /// Works on all tiles: `work(tile, desk)`, the desk's `flow` having been read. `Desk` holds a TileFlow and whatever room the work needs.
 template <class Desk, class Work>

@@ -5,6 +5,7 @@
 #include <vector>
 
 #include "rillclock/raster/grid.hpp"
+#include "rillclock/raster/large_memory.hpp"
 
 namespace rillclock {
 
@@ -45,7 +46,7 @@ public:
 private:
     std::int64_t rows_ = 0;
     std::int64_t columns_ = 0;
-    std::vector<T> values_;
+    std::vector<T, LargeMemory<T>> values_;
 };
 
 }  // namespace rillclock

@@ -81,6 +81,14 @@ inline constexpr Length sheet_is_over = metres(1e6);
 /// water at √(g·depth), at most at the stated speed, where that is faster than its regime.
 [[nodiscard]] StepParts step_parts(const StepView& step, const TravelRules& rules);
 
+/// What most of the work on a step wants of it.
+struct StepOutcome {
+    StepTime time;
+    Regime regime = Regime::none;   ///< that in which it begins; at a root that which its cell would have
+};
+/// The time and regime of step_parts, at a fraction of its cost.
+[[nodiscard]] StepOutcome step_outcome(const StepView& step, const TravelRules& rules);
+
 /// The regime of a cell as the raster shows it: that in which its step begins.
 [[nodiscard]] Regime first_regime(const StepView& step, const TravelRules& rules);
 

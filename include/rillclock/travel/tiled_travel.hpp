@@ -46,7 +46,6 @@ struct TileDesk {
     std::vector<FixedTime> fixed;               ///< B to the root
     std::vector<std::uint32_t> label;           ///< labels of the tile's own cells
     std::vector<std::uint32_t> owner;           ///< first label on the way down
-    std::vector<std::int64_t> room;             ///< for sums on their way
 
     [[nodiscard]] StepTime time_to_root(Local cell) const { return {fixed[cell], storm[cell]}; }
 };
@@ -82,9 +81,10 @@ public:
     /// Makes the times once more, with other reaches of channels; all else stays. `reaches` must outlive the times.
     void time_again(const ChannelReaches& reaches);
     /// The step out of a cell of a tile that was read.
-    [[nodiscard]] StepView step_view(const TileDesk& desk, Local local) const;
+    [[nodiscard]] StepView step_view(const TileDesk& desk, Local local) const { return step_view(desk, local, desk.flow.cell(local)); }
 
 private:
+    [[nodiscard]] StepView step_view(const TileDesk& desk, Local local, Cell cell) const;
     void find_areas();
     void find_kinds();
     void find_slopes();

@@ -1,0 +1,40 @@
+#pragma once
+
+#include <sys/mman.h>
+
+#include <cstddef>
+#include <new>
+
+namespace rillclock {
+
+/// Memory for arrays of a raster's size: asks the system for huge pages where there is much of it, since the first touch of a small
+/// page costs more than the work on its cells. Where the system has none, it is memory as any other.
+template <class T>
+class LargeMemory {
+public:
+    using value_type = T;
+
+    LargeMemory() = default;
+    template <class U>
+    explicit(false) LargeMemory(const LargeMemory<U>&) {}
+
+    [[nodiscard]] T* allocate(std::size_t count) {
+        if (count > static_cast<std::size_t>(-1) / sizeof(T)) throw std::bad_array_new_length();
+        const std::size_t bytes = count * sizeof(T);
+        if (bytes < huge_page) return static_cast<T*>(::operator new(bytes, std::align_val_t{alignof(std::max_align_t)}));
+        void* const memory = ::operator new(bytes, std::align_val_t{huge_page});
+        madvise(memory, bytes, MADV_HUGEPAGE);  // advice: a refusal changes nothing but speed
+        return static_cast<T*>(memory);
+    }
+    void deallocate(T* memory, std::size_t count) {
+        const std::size_t alignment = count * sizeof(T) < huge_page ? alignof(std::max_align_t) : huge_page;
+        ::operator delete(memory, std::align_val_t{alignment});
+    }
+
+    bool operator==(const LargeMemory&) const = default;
+
+private:
+    static constexpr std::size_t huge_page = std::size_t{1} << 21U;
+};
+
+}  // namespace rillclock
