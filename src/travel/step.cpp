@@ -98,21 +98,27 @@ void hasten_over_pond(const StepView& step, const TravelRules& rules, StepPart& 
     part.time = {.fixed = to_fixed(wave_s), .storm = 0};
 }
 
-StepParts overland_parts(const StepView& step, const TravelRules& rules) {
+template <class Take>
+void cut_overland(const StepView& step, const TravelRules& rules, Take take) {
     const double share = sheet_share(step, rules.sheet);
-    if (share <= 0.0) return {.first = shallow_part(step, from_fixed(step.length)), .second = {}};
-    StepParts parts{.first = sheet_part(step, rules.sheet, share), .second = {}};
-    if (share < 1.0) parts.second = shallow_part(step, (1.0 - share) * from_fixed(step.length));
-    return parts;
+    if (share <= 0.0) return take(shallow_part(step, from_fixed(step.length)));
+    take(sheet_part(step, rules.sheet, share));
+    if (share < 1.0) take(shallow_part(step, (1.0 - share) * from_fixed(step.length)));
 }
 
-StepParts parts_by_regime(const StepView& step, const TravelRules& rules) {
+/// Calls `take(part)` for each part of a step, from its upper end. What a caller does not read of a part is then never made.
+template <class Take>
+void cut_step(const StepView& step, const TravelRules& rules, Take take) {
+    if (step.length == 0) return;
+    const auto hasten_and_take = [&](StepPart part) {
+        hasten_over_pond(step, rules, part);
+        take(part);
+    };
     switch (step.kind) {
-        case GroundKind::overland: return overland_parts(step, rules);
-        case GroundKind::channel: return {.first = channel_part(step, rules.channel), .second = {}};
-        case GroundKind::water: return {.first = water_part(step), .second = {}};
+        case GroundKind::overland: return cut_overland(step, rules, hasten_and_take);
+        case GroundKind::channel: return hasten_and_take(channel_part(step, rules.channel));
+        case GroundKind::water: return hasten_and_take(water_part(step));
     }
-    return {};
 }
 
 }  // namespace
@@ -135,17 +141,22 @@ FixedLength sheet_index_step(const StepView& step) {
 }
 
 StepParts step_parts(const StepView& step, const TravelRules& rules) {
-    if (step.length == 0) return {};
-    StepParts parts = parts_by_regime(step, rules);
-    hasten_over_pond(step, rules, parts.first);
-    hasten_over_pond(step, rules, parts.second);
+    StepParts parts;
+    cut_step(step, rules, [&](const StepPart& part) {
+        (parts.first.regime == Regime::none ? parts.first : parts.second) = part;
+    });
     return parts;
 }
 
-// Flattened, so that the compiler drops what nobody reads of the parts: they are most of the cost.
+// Flattened, so that the compiler sees what of the parts nobody reads: copying them was most of the cost.
 [[gnu::flatten]] StepOutcome step_outcome(const StepView& step, const TravelRules& rules) {
-    const StepParts parts = step_parts(step, rules);
-    return {.time = parts.time(), .regime = parts.first.regime == Regime::none ? first_regime(step, rules) : parts.first.regime};
+    StepOutcome outcome;
+    cut_step(step, rules, [&](const StepPart& part) {
+        outcome.time += part.time;
+        if (outcome.regime == Regime::none) outcome.regime = part.regime;
+    });
+    if (outcome.regime == Regime::none) outcome.regime = first_regime(step, rules);
+    return outcome;
 }
 
 Regime first_regime(const StepView& step, const TravelRules& rules) {

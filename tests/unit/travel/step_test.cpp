@@ -5,6 +5,7 @@
 #include <cmath>
 #include <limits>
 #include <memory>
+#include <random>
 
 #include "rillclock/hydraulics/open_water.hpp"
 
@@ -311,6 +312,29 @@ TEST_CASE("a chart times shallow flow in place of k") {
     StepView step = ten_metres();
     step.surface = &charted;
     CHECK(fixed_s(step_parts(step, rules).first) == rounded(10 / 0.8));
+}
+
+TEST_CASE("the outcome of a step is the time and the first regime of its parts") {
+    std::mt19937 random(7);
+    const auto between = [&](double low, double high) { return std::uniform_real_distribution<double>(low, high)(random); };
+    const SurfaceHydraulics ground{.sheet_n = 0.24, .shallow_k = metres_per_second(2.1), .water_depth = metres(1)};
+    int split = 0;
+    for (int i = 0; i < 10000; ++i) {
+        const StepView step{.length = i % 50 == 0 ? 0 : to_fixed(between(0.5, 40)),
+                            .slope = between(0.001, 0.3),
+                            .surface = &ground,
+                            .kind = static_cast<GroundKind>(i % 3),
+                            .ponded_m = i % 5 == 0 ? between(0, 3) : 0.0,
+                            .area = to_fixed_area(between(1, 1e6)),
+                            .from_divide = to_fixed(between(0, 60)),
+                            .sheet_index = to_fixed(between(0, 60))};
+        const StepParts parts = step_parts(step, TravelRules{});
+        const StepOutcome outcome = step_outcome(step, TravelRules{});
+        split += parts.second.regime != Regime::none ? 1 : 0;
+        REQUIRE(outcome.time == parts.time());
+        REQUIRE(outcome.regime == (step.length == 0 ? first_regime(step, TravelRules{}) : parts.first.regime));
+    }
+    CHECK(split > 100);
 }
 
 }  // namespace
