@@ -19,7 +19,7 @@ struct TiledForest::Through {
 namespace {
 
 /// For each cell the position among the tile's exits of the one that its path leaves by.
-void label_ends(const TileFlow& flow, std::vector<Local>& end) {
+void label_ends(const TileFlow& flow, TileValues<Local>& end) {
     end.assign(flow.size(), ends_here);
     for (std::size_t i = 0; i < flow.exits().size(); ++i) end[flow.exits()[i]] = static_cast<Local>(i);
     const auto order = flow.order();
@@ -31,7 +31,7 @@ void label_ends(const TileFlow& flow, std::vector<Local>& end) {
 
 struct Desk {
     TileFlow flow;
-    std::vector<Local> end;
+    TileValues<Local> end;
 };
 
 }  // namespace

@@ -31,8 +31,9 @@ std::int64_t read_all(BlockSource<double>& source, ElevationStore& store, const 
     return voids;
 }
 
-Notices relief_notices(const TerrainData& terrain) {
-    const SteepestPair pair = steepest_pair(terrain.elevations, terrain.ground, terrain.format.metres_per_stored_unit());
+Notices relief_notices(const TerrainData& terrain, const Executor& executor) {
+    const SteepestPair pair =
+        steepest_pair(terrain.elevations, terrain.ground, terrain.format.metres_per_stored_unit(), executor);
     if (!(pair.slope > impossible_slope)) return {};
     const RowColumn at = terrain.grid.row_column(pair.cell);
     return {{.code = "relief-cannot-be",
@@ -56,7 +57,7 @@ ElevationFile open_elevation_of(const Study& study) {
     return open_elevation(located(study, study.terrain.elevation), options);
 }
 
-TerrainData read_terrain(const Study& study, const Progress& progress) {
+TerrainData read_terrain(const Study& study, const Executor& executor, const Progress& progress) {
     ElevationFile file = open_elevation_of(study);
     TerrainData data{.grid = file.grid(), .system = file.system, .format = file.format,
                      .ground = ground_of(file.grid(), file.system), 
@@ -67,7 +68,7 @@ TerrainData read_terrain(const Study& study, const Progress& progress) {
         throw input_error("the elevations in '" + study.terrain.elevation + "' hold no data: every cell is void; check the file's " +
                           "nodata value, for instance with gdalinfo -stats");
     }
-    for (Notices more : {file.source->notices(), relief_notices(data)}) {
+    for (Notices more : {file.source->notices(), relief_notices(data, executor)}) {
         data.notices.insert(data.notices.end(), more.begin(), more.end());
     }
     return data;

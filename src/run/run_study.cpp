@@ -1,6 +1,7 @@
 #include "rillclock/run/run_study.hpp"
 
 #include <algorithm>
+#include <future>
 #include <memory>
 #include <tuple>
 #include <utility>
@@ -102,9 +103,11 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const GdalSession session;
     ResultFolder folder(located(study, study.output.folder), options.replace ? Existing::replace : Existing::refuse);
     const Executor executor(options.threads);
+    // Checksums are made while the work goes on; nothing else is left to do on one processor alone.
+    std::future<std::vector<InputFile>> checksums = std::async(std::launch::async, [&study] { return input_files(study); });
     const StudyRain rain = read_rain(study);
 
-    TerrainData terrain = read_terrain(study, progress);
+    TerrainData terrain = read_terrain(study, executor, progress);
     const ResolvedStudy resolved = resolve(study, facts_of(terrain.format, terrain.ground));
     const TravelRules rules = rules_of(study, resolved, rain);
     const SurfaceData surface = read_surface(study, terrain, progress);
@@ -145,7 +148,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const Notices left_out = notices_of(depressions, ground.metres_per_elevation_unit);
     terrain.notices.insert(terrain.notices.end(), left_out.begin(), left_out.end());
     const Notices notices = all_notices(terrain, surface, rain, points, outlets);
-    const std::vector<InputFile> inputs = input_files(study);
+    const std::vector<InputFile> inputs = checksums.get();
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
     const StudyResult result{.study = study, .resolved = resolved, .rules = rules, .rain = rain, .grid = terrain.grid,
                              .system = terrain.system, .format = terrain.format, .book = surface.book, .sections = flow.sections,

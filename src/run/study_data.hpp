@@ -43,7 +43,7 @@ struct SurfaceData {
 [[nodiscard]] ElevationFile open_elevation_of(const Study& study);
 /// How elevations of a stored type are kept: four bytes a cell hold every value of most types exactly.
 [[nodiscard]] ElevationStore::Width width_of(StoredType type);
-[[nodiscard]] TerrainData read_terrain(const Study& study, const Progress& progress);
+[[nodiscard]] TerrainData read_terrain(const Study& study, const Executor& executor, const Progress& progress);
 [[nodiscard]] CoverBook read_book(const Study& study);
 [[nodiscard]] SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress);
 /// Points of the study's file in the DEM's coordinates, and what was left out of it.

@@ -8,6 +8,7 @@
 #include "rillclock/core/error.hpp"
 #include "rillclock/raster/direction.hpp"
 #include "rillclock/tiles/tile_grid.hpp"
+#include "rillclock/tiles/tile_memory.hpp"
 
 namespace rillclock {
 
@@ -144,7 +145,7 @@ public:
 
 private:
     PatchShape shape_;
-    std::vector<T> values_;
+    TileValues<T> values_;
 };
 
 }  // namespace rillclock

@@ -1,8 +1,10 @@
 #include "rillclock/terrain/relief.hpp"
 
+#include <algorithm>
 #include <array>
 #include <cmath>
 #include <span>
+#include <vector>
 
 namespace rillclock {
 namespace {
@@ -10,14 +12,17 @@ namespace {
 /// The ways to look so that every pair of neighbours is seen once.
 constexpr std::array forward = {Direction::east, Direction::south_east, Direction::south, Direction::south_west};
 
+/// Rows that one thread looks through at once.
+constexpr std::int64_t band = 256;
+
 template <class Z>
 class Search {
 public:
     Search(const Raster<Z>& z, const Ground& ground, double metres_per_unit)
         : z_(z), ground_(ground), metres_per_unit_(metres_per_unit) {}
 
-    SteepestPair steepest() {
-        for (std::int64_t row = 0; row < z_.rows(); ++row) {
+    SteepestPair steepest(std::int64_t first_row, std::int64_t end_row) {
+        for (std::int64_t row = first_row; row < end_row; ++row) {
             for (const Direction d : forward) look_along(row, d);
         }
         return found_;
@@ -54,8 +59,21 @@ private:
 
 }  // namespace
 
-SteepestPair steepest_pair(const ElevationStore& elevations, const Ground& ground, double metres_per_unit) {
-    return elevations.visit([&](const auto& z) { return Search(z, ground, metres_per_unit).steepest(); });
+SteepestPair steepest_pair(const ElevationStore& elevations, const Ground& ground, double metres_per_unit, const Executor& executor) {
+    const std::int64_t rows = elevations.rows();
+    std::vector<SteepestPair> found(static_cast<std::size_t>((rows + band - 1) / band));
+    executor.for_each(found.size(), [&](std::size_t i) {
+        const std::int64_t first = static_cast<std::int64_t>(i) * band;
+        found[i] = elevations.visit([&](const auto& z) {
+            return Search(z, ground, metres_per_unit).steepest(first, std::min(first + band, rows));
+        });
+    });
+    // Of equal ones the first: bands are in the order of their rows.
+    SteepestPair steepest;
+    for (const SteepestPair& pair : found) {
+        if (pair.slope > steepest.slope) steepest = pair;
+    }
+    return steepest;
 }
 
 }  // namespace rillclock

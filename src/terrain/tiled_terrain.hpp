@@ -11,6 +11,7 @@
 #include "patch.hpp"
 #include "rillclock/terrain/descent.hpp"
 #include "rillclock/tiles/executor.hpp"
+#include "rillclock/tiles/tile_memory.hpp"
 
 namespace rillclock {
 
@@ -25,6 +26,7 @@ public:
           // NOLINTNEXTLINE(cppcoreguidelines-no-malloc)
           values_(static_cast<std::uint32_t*>(std::calloc(size(), sizeof(std::uint32_t)))) {
         if (!values_) throw std::bad_alloc();
+        ask_for_huge_pages(values_.get(), size() * sizeof(std::uint32_t));
     }
     [[nodiscard]] std::int64_t rows() const { return rows_; }
     [[nodiscard]] std::int64_t columns() const { return columns_; }

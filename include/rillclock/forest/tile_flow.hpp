@@ -6,6 +6,7 @@
 
 #include "rillclock/forest/flow_forest.hpp"
 #include "rillclock/tiles/tile_grid.hpp"
+#include "rillclock/tiles/tile_memory.hpp"
 
 namespace rillclock {
 
@@ -53,10 +54,10 @@ private:
 
     Window window_;
     std::int64_t raster_columns_ = 0;
-    std::vector<Local> down_;
-    std::vector<FlowCode> code_;
-    std::vector<std::uint8_t> waiting_;
-    std::vector<Local> order_;
+    TileValues<Local> down_;
+    TileValues<FlowCode> code_;
+    TileValues<std::uint8_t> waiting_;
+    TileValues<Local> order_;
     std::vector<Local> exits_;
     std::vector<TileEntry> entries_;
 };

@@ -78,8 +78,9 @@ using SweptValue = typename tile_sweep_detail::Rule<Channel>::Value;
 namespace tile_sweep_detail {
 
 /// Sets every cell of a tile to its start, voids to 0.
-template <class Value, class Start>
-void start_field(const TileFlow& flow, std::vector<Value>& field, Start start) {
+template <class Field, class Start>
+void start_field(const TileFlow& flow, Field& field, Start start) {
+    using Value = typename Field::value_type;
     field.resize(flow.size());
     if (flow.order().size() == flow.size()) {
         for (Local cell = 0; cell < flow.size(); ++cell) field[cell] = start(cell);
@@ -88,9 +89,9 @@ void start_field(const TileFlow& flow, std::vector<Value>& field, Start start) {
     for (Local cell = 0; cell < flow.size(); ++cell) field[cell] = flow.code(cell) == flow_void ? Value{} : start(cell);
 }
 
-template <class Borders, class Channel>
+template <class Borders, class Channel, class Field>
 struct DownPart;
-template <class Borders, class Channel>
+template <class Borders, class Channel, class Field>
 struct UpPart;
 
 }  // namespace tile_sweep_detail
@@ -104,13 +105,13 @@ public:
         : forest_(&forest), sent_(forest.exit_count()), moved_(forest.exit_count(), 0) {}
 
     /// This channel's part in a sweep over one tile: `field` takes a value a cell.
-    template <class Channel>
-    [[nodiscard]] auto part(const Channel& channel, std::vector<Value>& field) {
-        return tile_sweep_detail::DownPart<DownBorders, Channel>{*this, channel, field};
+    template <class Channel, class Field>
+    [[nodiscard]] auto part(const Channel& channel, Field& field) {
+        return tile_sweep_detail::DownPart<DownBorders, Channel, Field>{*this, channel, field};
     }
-    template <class Channel>
-    [[nodiscard]] auto part(const Channel& channel, std::vector<Value>& field) const {
-        return tile_sweep_detail::DownPart<const DownBorders, Channel>{*this, channel, field};
+    template <class Channel, class Field>
+    [[nodiscard]] auto part(const Channel& channel, Field& field) const {
+        return tile_sweep_detail::DownPart<const DownBorders, Channel, Field>{*this, channel, field};
     }
 
     /// Second stage: lets the water of all exits run on through the tiles below.
@@ -124,7 +125,7 @@ public:
     }
 
 private:
-    template <class, class>
+    template <class, class, class>
     friend struct tile_sweep_detail::DownPart;
 
     [[nodiscard]] Value moved_value(Exit exit) const {
@@ -145,13 +146,13 @@ public:
     explicit UpBorders(const TiledForest& forest) : forest_(&forest), below_(forest.exit_count()) {}
 
     /// This channel's part in a sweep over one tile: `field` takes a value a cell.
-    template <class Channel>
-    [[nodiscard]] auto part(const Channel& channel, std::vector<Value>& field) {
-        return tile_sweep_detail::UpPart<UpBorders, Channel>{*this, channel, field};
+    template <class Channel, class Field>
+    [[nodiscard]] auto part(const Channel& channel, Field& field) {
+        return tile_sweep_detail::UpPart<UpBorders, Channel, Field>{*this, channel, field};
     }
-    template <class Channel>
-    [[nodiscard]] auto part(const Channel& channel, std::vector<Value>& field) const {
-        return tile_sweep_detail::UpPart<const UpBorders, Channel>{*this, channel, field};
+    template <class Channel, class Field>
+    [[nodiscard]] auto part(const Channel& channel, Field& field) const {
+        return tile_sweep_detail::UpPart<const UpBorders, Channel, Field>{*this, channel, field};
     }
 
     /// Second stage: adds to each exit what lies beyond the tile below it.
@@ -169,7 +170,7 @@ public:
     [[nodiscard]] const Value& below(Exit exit) const { return below_[exit]; }
 
 private:
-    template <class, class>
+    template <class, class, class>
     friend struct tile_sweep_detail::UpPart;
 
     const TiledForest* forest_;
@@ -178,14 +179,14 @@ private:
 
 namespace tile_sweep_detail {
 
-template <class Borders, class Channel>
+template <class Borders, class Channel, class Field>
 struct DownPart {
     using Rule = tile_sweep_detail::Rule<Channel>;
     using Value = typename Borders::Value;
     static constexpr bool moves = Rule::moves;
     Borders& borders;
     Channel channel;
-    std::vector<Value>& field;
+    Field& field;   ///< a vector of values
 
     void start(const TileFlow& flow) const {
         start_field(flow, field, [this](Local cell) { return Rule::start(channel, cell); });
@@ -216,13 +217,13 @@ struct DownPart {
     }
 };
 
-template <class Borders, class Channel>
+template <class Borders, class Channel, class Field>
 struct UpPart {
     using Rule = tile_sweep_detail::Rule<Channel>;
     using Value = typename Borders::Value;
     Borders& borders;
     Channel channel;
-    std::vector<Value>& field;
+    Field& field;   ///< a vector of values
 
     void start(const TileFlow& flow) const {
         if (flow.order().size() == flow.size()) field.resize(flow.size());   // every cell will be set

@@ -2,6 +2,7 @@
 
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
+#include "rillclock/tiles/executor.hpp"
 
 namespace rillclock {
 
@@ -13,6 +14,7 @@ struct SteepestPair {
 
 /// Finds the steepest drop between neighbouring cells: slopes that no ground has point at a wrong vertical unit, or at spikes.
 /// `metres_per_unit` belongs to the elevations.
-[[nodiscard]] SteepestPair steepest_pair(const ElevationStore& elevations, const Ground& ground, double metres_per_unit);
+[[nodiscard]] SteepestPair steepest_pair(const ElevationStore& elevations, const Ground& ground, double metres_per_unit,
+                                         const Executor& executor);
 
 }  // namespace rillclock

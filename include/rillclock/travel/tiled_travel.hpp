@@ -7,6 +7,7 @@
 #include "rillclock/forest/tile_sweep.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
+#include "rillclock/tiles/tile_memory.hpp"
 #include "rillclock/travel/root_area.hpp"
 #include "rillclock/travel/step.hpp"
 
@@ -32,20 +33,20 @@ struct CellLabel {
 /// Everything about the cells of one tile, by `Local`; room that is used for tile after tile.
 struct TileDesk {
     TileFlow flow;
-    std::vector<FixedLength> length;            ///< of the step out of the cell
-    std::vector<FixedLength> index_step;        ///< what the step adds to the sheet index
-    std::vector<double> elevation;              ///< elevation units; NaN where void
-    std::vector<double> spill;
-    std::vector<FixedArea> area;
-    std::vector<FixedLength> from_divide;
-    std::vector<FixedLength> sheet_index;
-    std::vector<FixedLength> flow_distance;     ///< to the root
-    std::vector<StepTime> step;                 ///< time of the step out of the cell
-    std::vector<Regime> regime;                 ///< in which the step begins
-    std::vector<FixedTime> storm;               ///< A to the root
-    std::vector<FixedTime> fixed;               ///< B to the root
-    std::vector<std::uint32_t> label;           ///< labels of the tile's own cells
-    std::vector<std::uint32_t> owner;           ///< first label on the way down
+    TileValues<FixedLength> length;            ///< of the step out of the cell
+    TileValues<FixedLength> index_step;        ///< what the step adds to the sheet index
+    TileValues<double> elevation;              ///< elevation units; NaN where void
+    TileValues<double> spill;
+    TileValues<FixedArea> area;
+    TileValues<FixedLength> from_divide;
+    TileValues<FixedLength> sheet_index;
+    TileValues<FixedLength> flow_distance;     ///< to the root
+    TileValues<StepTime> step;                 ///< time of the step out of the cell
+    TileValues<Regime> regime;                 ///< in which the step begins
+    TileValues<FixedTime> storm;               ///< A to the root
+    TileValues<FixedTime> fixed;               ///< B to the root
+    TileValues<std::uint32_t> label;           ///< labels of the tile's own cells
+    TileValues<std::uint32_t> owner;           ///< first label on the way down
 
     [[nodiscard]] StepTime time_to_root(Local cell) const { return {fixed[cell], storm[cell]}; }
 };
