@@ -5,6 +5,7 @@
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/io/ground_of.hpp"
 #include "rillclock/terrain/relief.hpp"
+#include "rillclock/tiles/read_ahead.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
@@ -17,16 +18,12 @@ constexpr double impossible_slope = 20.0;
 /// Reads all strips into the store; returns how many cells are void.
 std::int64_t read_all(BlockSource<double>& source, ElevationStore& store, const Progress& progress) {
     const Grid& grid = source.grid();
-    std::vector<double> strip;
     std::int64_t voids = 0;
-    for (std::int64_t row = 0; row < grid.rows; row += strip_rows) {
-        progress.tell({.stage = "reading elevations", .done = row * grid.columns, .total = grid.size()});
-        const Window window{.row = row, .rows = std::min(strip_rows, grid.rows - row), .columns = grid.columns};
-        strip.resize(static_cast<std::size_t>(window.size()));
-        source.read(window, strip);
+    read_ahead(source, strip_rows, [&](const Window& window, std::span<const double> strip) {
+        progress.tell({.stage = "reading elevations", .done = window.row * grid.columns, .total = grid.size()});
         voids += std::count_if(strip.begin(), strip.end(), [](double z) { return std::isnan(z); });
         store.write(window, strip);
-    }
+    });
     progress.tell({.stage = "reading elevations", .done = grid.size(), .total = grid.size(), .finished = true});
     return voids;
 }
