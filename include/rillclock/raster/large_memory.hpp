@@ -1,20 +1,12 @@
 #pragma once
 
-#include <sys/mman.h>
-
 #include <cstddef>
-#include <cstdint>
 #include <new>
 
 namespace rillclock {
 
 /// Asks the system for huge pages under memory that has not been written yet. It is advice: a refusal changes nothing but speed.
-inline void ask_for_huge_pages(void* memory, std::size_t bytes) {
-    constexpr std::size_t page = 4096;
-    const auto begin = (reinterpret_cast<std::uintptr_t>(memory) + page - 1) / page * page;
-    const auto end = (reinterpret_cast<std::uintptr_t>(memory) + bytes) / page * page;
-    if (end > begin) madvise(reinterpret_cast<void*>(begin), end - begin, MADV_HUGEPAGE);
-}
+void ask_for_huge_pages(void* memory, std::size_t bytes);
 
 /// Memory for arrays of a raster's size: asks the system for huge pages where there is much of it, since the first touch of a small
 /// page costs more than the work on its cells. Where the system has none, it is memory as any other.
