@@ -28,9 +28,11 @@ template <class Look>
 [[nodiscard]] std::vector<PointHeads> join_down(std::vector<Arrivals> subareas, const PointTree& tree,
                                                 double storm_factor, Look look) {
     std::vector<FixedArea> own_areas;
+    std::vector<Front> own_fronts;
     std::vector<LandTally> own_lands;
     for (const Arrivals& subarea : subareas) {
         own_areas.push_back(subarea.area);
+        own_fronts.push_back(subarea.front);
         own_lands.push_back(subarea.ground.land());
     }
     std::vector<PointHeads> heads(subareas.size());
@@ -38,6 +40,7 @@ template <class Look>
         Arrivals& catchment = subareas[number - 1];  // by now with all that joins from above
         heads[number - 1] = look(std::as_const(catchment), number);
         heads[number - 1].own_area = own_areas[number - 1];
+        heads[number - 1].own_front = std::move(own_fronts[number - 1]);
         heads[number - 1].own_land = std::move(own_lands[number - 1]);
         const PointNumber next = tree.next_of(number);
         if (next != 0) subareas[next - 1].add(std::move(catchment), storm_factor);

@@ -45,6 +45,9 @@ Outlet outlet_of(const OutletParts& parts, const PathGround& ground, const Outle
     made.governing = path_of(parts.governing, ground, rules.segments);
     made.longest = path_of(parts.longest, ground, rules.segments);
     made.ground = parts.heads.ground;
+    made.way = way_of(ground, parts.way);
+    made.time_to_root = at_point;
+    made.own_front = parts.heads.own_front;
     made.own_land = parts.heads.own_land;
     made.elevation_m = parts.longest.back().spill * ground.metres_per_elevation_unit;
     made.storm_factor = ground.storm_factor;

@@ -7,7 +7,12 @@ namespace {
 
 using Found = std::unordered_map<Cell, PathCell>;
 
-std::vector<Cell> cells_of_all_paths(const Raster<FlowCode>& codes, std::span<const DesignPoint> points,
+/// The cells from a point down to the next; none where there is no next.
+std::vector<Cell> way_cells(const Raster<FlowCode>& codes, std::span<const DesignPoint> points, PointNumber next, std::size_t i) {
+    return next == 0 ? std::vector<Cell>{} : flow_path(codes, points[i].cell, points[next - 1].cell);
+}
+
+std::vector<Cell> cells_of_all_paths(const Raster<FlowCode>& codes, std::span<const DesignPoint> points, const PointTree& tree,
                                      const std::vector<PointHeads>& heads) {
     std::vector<Cell> cells;
     for (std::size_t i = 0; i < points.size(); ++i) {
@@ -15,15 +20,21 @@ std::vector<Cell> cells_of_all_paths(const Raster<FlowCode>& codes, std::span<co
             const std::vector<Cell> path = flow_path(codes, head, points[i].cell);
             cells.insert(cells.end(), path.begin(), path.end());
         }
+        const std::vector<Cell> way = way_cells(codes, points, tree.next[i], i);
+        cells.insert(cells.end(), way.begin(), way.end());
         for (const PointStorm& storm : heads[i].storms) cells.push_back(storm.governing.cell);
     }
     return cells;
 }
 
-PathCells path_of(const Raster<FlowCode>& codes, const Found& found, Cell head, Cell end) {
+PathCells found_path(const Found& found, const std::vector<Cell>& cells) {
     PathCells path;
-    for (const Cell cell : flow_path(codes, head, end)) path.push_back(found.at(cell));
+    for (const Cell cell : cells) path.push_back(found.at(cell));
     return path;
+}
+
+PathCells path_of(const Raster<FlowCode>& codes, const Found& found, Cell head, Cell end) {
+    return found_path(found, flow_path(codes, head, end));
 }
 
 /// Border cells that are the point's own or drain straight into it: an outlet at the edge has some for certain.
@@ -44,7 +55,7 @@ std::int64_t border_cells_at(const Raster<FlowCode>& codes, Cell point) {
 std::vector<Outlet> outlets_of(const TiledTravel& travel, std::span<const DesignPoint> points, const PointTree& tree,
                                const std::vector<PointHeads>& heads, const OutletRules& rules) {
     const Raster<FlowCode>& codes = travel.ground().forest.codes();
-    const Found found = path_cells_at(travel, cells_of_all_paths(codes, points, heads));
+    const Found found = path_cells_at(travel, cells_of_all_paths(codes, points, tree, heads));
     std::vector<Outlet> outlets(points.size());
     travel.executor().for_each(points.size(), [&](std::size_t i) {
         const Cell end = points[i].cell;
@@ -55,7 +66,8 @@ std::vector<Outlet> outlets_of(const TiledTravel& travel, std::span<const Design
         outlets[i] = outlet_of({.number = static_cast<PointNumber>(i + 1), .point = points[i], .next = tree.next[i], .heads = heads[i],
                                 .border_cells_at_point = border_cells_at(codes, end),
                                 .governing = path_of(codes, found, heads[i].governing.cell, end),
-                                .longest = path_of(codes, found, heads[i].farthest, end)},
+                                .longest = path_of(codes, found, heads[i].farthest, end),
+                                .way = found_path(found, way_cells(codes, points, tree.next[i], i))},
                                ground, rules);
         for (PointStorm& storm : outlets[i].storms) {
             storm.length = found.at(storm.governing.cell).flow_distance - found.at(end).flow_distance;

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <array>
 #include <numeric>
+#include <optional>
 
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/report_units.hpp"
@@ -59,6 +60,23 @@ std::string makeup_sentence(const Outlet& main) {
     return text.empty() ? "H" + half : "That time is made up of " + text + "; h" + half;
 }
 
+std::string flow_text(const StudyResult& result, Discharge flow) {
+    const ReportScale scale(result.study.report_units);
+    return significant(scale.flow(flow), 3) + (result.study.report_units == ReportUnits::us ? " ft3/s" : " m3/s");
+}
+
+/// None where the study has no peak for the point.
+std::optional<std::string> peak_sentence(const StudyResult& result, const Outlet& main) {
+    if (!result.peaks.are_there()) return std::nullopt;
+    const PointPeak& peak = result.peaks.points[main.number - 1][result.rain.raster];
+    if (!peak.is_there()) return std::nullopt;
+    const std::string begin = "Its peak of " + significant(result.rain.raster_storm().return_period, 6) + " years is " +
+                              flow_text(result, peak.partial);
+    if (!(peak.partial > peak.whole)) return begin + ", that of the whole area.";
+    return begin + ", made by rain of " + minutes_text(in_seconds(peak.window.duration)) + " on " +
+           significant(100.0 * peak.window_share, 3) + " % of the area; the whole area gives " + flow_text(result, peak.whole) + ".";
+}
+
 std::string concern_sentence(const StudyResult& result) {
     if (result.notices.empty()) return "Nothing was found that needs a person's eye more than usual.";
     return "Check this first. " + result.notices.front().text;
@@ -95,7 +113,10 @@ std::vector<std::size_t> by_area(const StudyResult& result) {
 
 std::vector<std::string> headlines(const StudyResult& result) {
     const Outlet& main = result.outlets[by_area(result).front()];
-    return {governing_sentence(result, main), makeup_sentence(main), concern_sentence(result)};
+    std::vector<std::string> sentences{governing_sentence(result, main), makeup_sentence(main)};
+    if (const auto peak = peak_sentence(result, main)) sentences.push_back(*peak);
+    sentences.push_back(concern_sentence(result));
+    return sentences;
 }
 
 std::string outlets_overview(const StudyResult& result, std::size_t most) {

@@ -1,5 +1,6 @@
 #include "rillclock/deliver/report_units.hpp"
 #include "rillclock/deliver/tables.hpp"
+#include "network_words.hpp"
 #include "table_writer.hpp"
 
 namespace rillclock {
@@ -84,6 +85,48 @@ void add_method_columns(const StudyResult& result, TableWriter<Outlet>& table) {
         .column("methods_highest_min", time(&MethodSpread::highest));
 }
 
+void add_way_columns(const ReportScale& scale, TableWriter<Outlet>& table) {
+    const std::string m = scale.length_unit();
+    const auto where_any = [](auto print) {
+        return [print](const Outlet& o) { return o.next == 0 ? std::string() : print(o); };
+    };
+    table.column("way_length_" + m, where_any([=](const Outlet& o) { return five_digits(scale.length(from_fixed(o.way.length))); }))
+        .column("way_fall_" + m, where_any([=](const Outlet& o) { return five_digits(scale.length(o.way.fall_m)); }))
+        .column("way_min", where_any([](const Outlet& o) { return in_minutes_text(in_seconds(o.way.time.under(o.storm_factor))); }));
+    for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
+        table.column("way_" + std::string(name_of(regime)) + "_percent",
+                     where_any([regime](const Outlet& o) { return five_digits(100.0 * o.way.share(regime)); }));
+    }
+}
+
+void add_network_columns(const StudyResult& result, TableWriter<Outlet>& table) {
+    const auto storm_of = [&result](const Outlet& o) -> const NetworkStorm& { return result.network.points[o.number - 1].raster_storm(); };
+    table.column("network_next_point", [&result](const Outlet& o) {
+            const PointNumber next = result.network.points[o.number - 1].next;
+            return next == 0 ? "" : point_name(result, next);
+        })
+        .column("network_time_min", [=](const Outlet& o) { return in_minutes_text(from_fixed(storm_of(o).time)); })
+        .column("stated_above", [&result](const Outlet& o) { return stated_in_words(result, result.network.points[o.number - 1].stated_above); })
+        .column("subareas", [=](const Outlet& o) { return std::to_string(storm_of(o).subareas_above); })
+        .column("last_subarea", [=, &result](const Outlet& o) { return point_name(result, storm_of(o).last); })
+        .column("lead_min", [=](const Outlet& o) {
+            return storm_of(o).lead ? in_minutes_text(from_fixed(*storm_of(o).lead)) : std::string();
+        })
+        .column("critical_way", [=, &result](const Outlet& o) { return way_in_words(result, storm_of(o).critical_way); });
+}
+
+void add_peak_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
+    const auto where_any = [&result](auto print) {
+        return [&result, print](const Outlet& o) {
+            const PointPeak& peak = result.peaks.points[o.number - 1][result.rain.raster];
+            return peak.is_there() ? print(peak) : std::string();
+        };
+    };
+    table.column("whole_area_peak_" + scale.flow_unit(), where_any([=](const PointPeak& p) { return five_digits(scale.flow(p.whole)); }))
+        .column("peak_" + scale.flow_unit(), where_any([=](const PointPeak& p) { return five_digits(scale.flow(p.partial)); }))
+        .column("peak_subareas", where_any([&result](const PointPeak& p) { return makers_in_words(result, p); }));
+}
+
 }  // namespace
 
 std::string outlets_table(const StudyResult& result) {
@@ -94,6 +137,9 @@ std::string outlets_table(const StudyResult& result) {
     add_path_columns(result, scale, table);
     add_trust_columns(table);
     add_method_columns(result, table);
+    add_way_columns(scale, table);
+    add_network_columns(result, table);
+    if (result.peaks.are_there()) add_peak_columns(result, scale, table);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) text += table.line(outlet);
     return text;

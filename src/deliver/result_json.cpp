@@ -1,35 +1,17 @@
 #include "rillclock/deliver/result_json.hpp"
 
-#include <cmath>
-#include <nlohmann/json.hpp>
-
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/cautions.hpp"
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/version.hpp"
 #include "rillclock/io/library_versions.hpp"
+#include "json_values.hpp"
+#include "network_words.hpp"
+#include "peaks_json.hpp"
 #include "segment_rows.hpp"
 
 namespace rillclock {
 namespace {
-
-using Json = nlohmann::ordered_json;
-
-/// Rounded to decimals, so that the file is legible; null where there is no number.
-Json number(double value, int decimals) {
-    return std::isfinite(value) ? Json(std::stod(fixed_decimals(value, decimals))) : Json(nullptr);
-}
-/// Rounded to significant digits.
-Json digits(double value, int count = 6) {
-    return std::isfinite(value) ? Json(std::stod(significant(value, count))) : Json(nullptr);
-}
-Json minutes_json(double s) { return number(s / 60.0, 6); }
-Json text_or_null(const std::string& text) { return text.empty() ? Json(nullptr) : Json(text); }
-template <class T>
-Json or_null(const std::optional<T>& value) {
-    return value ? digits(*value) : Json(nullptr);
-}
-Json place_json(const Place& place) { return Json::array({number(place.x, 7), number(place.y, 7)}); }
 
 Json versions() {
     return {{"rillclock", version_text}, {"gdal", gdal_version()}, {"proj", proj_version()}};
@@ -200,6 +182,7 @@ Json parameters_json(const StudyResult& result) {
             {"move_within_m", in_metres(result.resolved.move_within)},
             {"shortest_segment_m", in_metres(result.resolved.shortest_segment)}};
     if (result.rain.source) json["rain"] = rain_json(result);
+    if (result.peaks.are_there()) json["peaks"] = peak_parameters_json(result.study);
     return json;
 }
 
@@ -366,6 +349,35 @@ Json methods_json(const PointMethods& methods) {
     return {{"measures", measures_json(methods.measures)}, {"spread", spread}, {"times", times}};
 }
 
+Json way_json(const Outlet& outlet) {
+    if (outlet.next == 0) return nullptr;
+    Json shares = Json::object();
+    for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
+        shares[std::string(name_of(regime))] = digits(outlet.way.share(regime), 4);
+    }
+    return {{"length_m", number(from_fixed(outlet.way.length), 3)},
+            {"fall_m", digits(outlet.way.fall_m)},
+            {"time_s", number(in_seconds(outlet.way.time.under(outlet.storm_factor)), 6)},
+            {"fixed_time_s", number(from_fixed(outlet.way.time.fixed), 6)},
+            {"storm_time_per_factor_s", number(from_fixed(outlet.way.time.storm), 6)},
+            {"share_of_length", shares}};
+}
+
+Json network_json(const StudyResult& result, const PointNetwork& network) {
+    Json storms = Json::array();
+    for (std::size_t i = 0; i < network.storms.size(); ++i) {
+        const NetworkStorm& storm = network.storms[i];
+        storms.push_back({{"return_period", result.rain.storms.empty() ? Json(nullptr) : Json(result.rain.storms[i].return_period)},
+                          {"time_s", number(from_fixed(storm.time), 6)},
+                          {"subareas", storm.subareas_above},
+                          {"storm_factor", digits(storm.storm_factor, 12)},
+                          {"last_subarea", point_name(result, storm.last)},
+                          {"lead_s", storm.lead ? number(from_fixed(*storm.lead), 6) : Json(nullptr)},
+                          {"critical_way", way_in_words(result, storm.critical_way)}});
+    }
+    return storms;
+}
+
 Json outlet_json(const StudyResult& result, const Outlet& outlet) {
     Json json = {{"number", outlet.number},
             {"name", outlet.point.name},
@@ -381,9 +393,14 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
             {"arrivals", arrivals_json(outlet)},
             {"governing_path", path_json(result, outlet, outlet.governing)},
             {"longest_path", path_json(result, outlet, outlet.longest)}};
+    json["way_to_next_point"] = way_json(outlet);
+    json["network"] = network_json(result, result.network.points[outlet.number - 1]);
+    json["stated"] = text_or_null(marks_of(result.network.edits[outlet.number - 1]));
+    json["stated_above"] = text_or_null(stated_in_words(result, result.network.points[outlet.number - 1].stated_above));
     json["land"] = land_json(result, outlet);
     json["methods"] = methods_json(result.methods[outlet.number - 1]);
     if (!outlet.storms.empty()) json["storms"] = storms_json(result, outlet);
+    if (result.peaks.are_there()) json["peaks"] = peaks_json(result, outlet);
     return json;
 }
 

@@ -197,9 +197,51 @@ std::vector<Method> own_rules() {
     };
 }
 
+std::vector<Method> peak_methods() {
+    return {
+        {.id = "peak-rational",
+         .name = "Peak flow, rational method",
+         .formula = "Q = Cf C i A, the smaller of 1 and Cf C of each class averaged by area",
+         .inputs = {{"Q", "peak flow", "ft3/s"},
+                    {"Cf", "frequency factor, where C does not depend on the return period", "-"},
+                    {"C", "runoff coefficient of a class of land", "-"},
+                    {"i", "intensity of rain as long as the time of concentration or the least time", "in/h"},
+                    {"A", "area", "ac"}},
+         .range = "up to 200 ac unless the study states another limit; factors of Wright-McLaughlin, 1969: 1 to 10 years, "
+                  "1.1, 1.2, 1.25 for 25, 50, 100, or of Australian Rainfall and Runoff, 1987",
+         .source = "Kuichling, 1889; conversion and assumptions by Cleveland, course text CE 3354, chapter 13; factors from memory",
+         .trust = Trust::seen_in_source},
+        {.id = "peak-partial-area",
+         .name = "Peak flow of a partial area",
+         .formula = "Q = the greatest over d of i(d) times the most CA that arrives within any stretch of length d, d from the least "
+                    "time to the time of concentration",
+         .inputs = {{"Q", "peak flow", "ft3/s"},
+                    {"i", "intensity of rain of duration d", "in/h"},
+                    {"CA", "runoff coefficient times area, by time of arrival", "ac"},
+                    {"d", "duration of rain", "min"}},
+         .range = "as for the rational method; never below the whole area's; beside it the two cases of HEC-22, section 7.2",
+         .source = "rillclock; theory by Campos et al., Water 12(10), 2730, 2020",
+         .trust = Trust::own_rule},
+        {.id = "runoff-land-use",
+         .name = "Runoff coefficient by land use",
+         .formula = "C by land use, soil group A to D, slope of the land and return period below or from 25 years",
+         .inputs = {{"C", "runoff coefficient", "-"}},
+         .range = "14 land uses, named in the column land_use of a cover book; slopes to 2 %, to 6 % and steeper",
+         .source = "Rawls, Wong and McCuen, 1981, as in McCuen, Hydrologic Analysis and Design, table 7-9",
+         .trust = Trust::from_memory},
+        {.id = "runoff-imperviousness",
+         .name = "Runoff coefficient from imperviousness",
+         .formula = "C = 0.858 I^3 - 0.78 I^2 + 0.774 I + 0.04, or C = 0.05 + 0.9 I",
+         .inputs = {{"C", "runoff coefficient", "-"}, {"I", "impervious share of the ground, 0 to 1", "-"}},
+         .range = "storms up to about 10 years; the second is a coefficient of volume",
+         .source = "Urbonas, Guo and Tucker, 1990, in WEF Manual of Practice 23, 1998; Schueler, Controlling urban runoff, 1987",
+         .trust = Trust::from_memory},
+    };
+}
+
 std::vector<Method> all_methods() {
     std::vector<Method> all;
-    for (const auto& part : {sheet_methods(), shallow_methods(), channel_methods(), own_rules()})
+    for (const auto& part : {sheet_methods(), shallow_methods(), channel_methods(), own_rules(), peak_methods()})
         all.insert(all.end(), part.begin(), part.end());
     return all;
 }

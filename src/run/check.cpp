@@ -44,6 +44,7 @@ public:
         attempt([&] { elevations(); });
         attempt([&] { book(); });
         attempt([&] { rain(); });
+        attempt([&] { network(); });
         if (terrain_) {
             attempt([&] { cover(); });
             attempt([&] { soil(); });
@@ -105,6 +106,12 @@ private:
             report_.facts.push_back("rain: 2-year 24-hour depth " + significant(in_inches(*rain.two_year_24_hour), 4) + " in (" +
                                     significant(in_millimetres(*rain.two_year_24_hour), 4) + " mm)");
         }
+    }
+
+    void network() {
+        const StatedEdits stated = read_edits(study_);
+        if (!stated.pipes.empty()) report_.facts.push_back("pipes: " + std::to_string(stated.pipes.size()));
+        if (!stated.overrides.empty()) report_.facts.push_back("overrides: of " + std::to_string(stated.overrides.size()) + " points");
     }
 
     void cover() {

@@ -59,8 +59,11 @@ void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, Aft
 }
 
 void tally_all(const LastPass& pass, ArrivalTally& tally) {
-    work_all_tiles(
-        pass, "storms", [&](const TileDesk& desk) { tally.add(desk); }, [](std::int64_t, std::int64_t) {});
+    const auto look = [&](const TileDesk& desk) {
+        tally.add(desk);
+        if (pass.histograms != nullptr) pass.histograms->add(desk);
+    };
+    work_all_tiles(pass, "storms", look, [](std::int64_t, std::int64_t) {});
 }
 
 std::vector<PointHeads> under_one_storm_alone(const LastPass& pass, const std::vector<StepTime>& times) {
@@ -78,6 +81,7 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<
     RasterStrips rasters(story_of(pass, times, {}), pass.travel, pass.folder);
     const auto look = [&](const TileDesk& desk) {
         tally.add(desk);
+        if (pass.histograms != nullptr) pass.histograms->add(desk);
         rasters.fill(desk);
     };
     work_all_tiles(pass, "writing rasters", look,
@@ -112,7 +116,9 @@ std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector
 
 }  // namespace
 
-std::vector<PointHeads> heads_alone(const LastPass& pass) {
+std::vector<PointHeads> heads_alone(const LastPass& whole) {
+    LastPass pass = whole;
+    pass.histograms = nullptr;  // those are of the times that the rasters show
     const std::vector<StepTime> times = times_of_points(pass);
     const std::optional<OwnStorms> own = own_storms_of(pass.study, pass.travel.rules(), pass.rain);
     return own ? under_own_storms_alone(pass, times, *own) : under_one_storm_alone(pass, times);

@@ -2,6 +2,7 @@
 
 #include <vector>
 
+#include "rillclock/catchment/arrival_histogram.hpp"
 #include "rillclock/io/result_folder.hpp"
 #include "study_data.hpp"
 
@@ -18,6 +19,7 @@ struct LastPass {
     const PointTree& tree;
     ResultFolder& folder;
     const Progress& progress;
+    HistogramTally* histograms = nullptr;   ///< filled where peaks are asked for
 };
 
 /// Makes everything about each tile once more: writes the rasters and gathers the arrivals, from which each point's

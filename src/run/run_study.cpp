@@ -32,13 +32,15 @@ bool doubts_all(const Notice& notice) { return notice.code == "relief-cannot-be"
 
 /// Everything that was noticed on the way, by effect on the time, the greatest first.
 Notices all_notices(const TerrainData& terrain, const SurfaceData& surface, const StudyRain& rain,
-                    const PlacedPoints& points, const std::vector<Outlet>& outlets) {
+                    const PlacedPoints& points, const StudyNetwork& network, const StudyPeaks& peaks, const std::vector<Outlet>& outlets) {
     Notices all;
     const auto add = [&](const Notices& more) { all.insert(all.end(), more.begin(), more.end()); };
     add(terrain.notices);
     add(surface.notices);
     add(rain.notices);
     add(points.notices);
+    add(network.notices);
+    add(peaks.notices);
     for (const Outlet& outlet : outlets) add(notices_of(outlet, terrain.grid));
     std::stable_sort(all.begin(), all.end(), [](const Notice& a, const Notice& b) {
         return std::tie(b.effect_s, a.code, a.point) < std::tie(a.effect_s, b.code, b.point);
@@ -63,9 +65,16 @@ void write_texts(const StudyResult& result, const std::string& json, ResultFolde
     folder.write_text("tables/outlets.csv", outlets_table(result));
     folder.write_text("tables/segments.csv", segments_table(result));
     folder.write_text("tables/methods.csv", methods_table(result));
+    folder.write_text("tables/subareas.csv", subareas_table(result));
     folder.write_text("tables/land.csv", land_table(result));
     folder.write_text("tables/review.csv", review_table(result));
     if (result.rain.source) folder.write_text("tables/storms.csv", storms_table(result));
+    if (result.peaks.are_there()) {
+        folder.write_text("tables/peaks.csv", peaks_table(result));
+        folder.write_text("tables/time_area.csv", time_area_table(result));
+    }
+    folder.write_text("tables/handover.csv", handover_table(result));
+    if (!result.network.pipes.empty()) folder.write_text("tables/pipes.csv", pipes_table(result));
     if (result.study.timing.is_kinematic()) folder.write_text("tables/iterations.csv", iterations_table(result));
     write_sheets(result, json, folder);
     folder.write_text("result.json", json);
@@ -106,6 +115,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     // Checksums are made while the work goes on; nothing else is left to do on one processor alone.
     std::future<std::vector<InputFile>> checksums = std::async(std::launch::async, [&study] { return input_files(study); });
     const StudyRain rain = read_rain(study);
+    StatedEdits stated = read_edits(study);
 
     TerrainData terrain = read_terrain(study, executor, progress);
     const ResolvedStudy resolved = resolve(study, facts_of(terrain.format, terrain.ground));
@@ -134,8 +144,11 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const PlacedPoints points = settle_points(study, resolved, travel, terrain);
     const TiledOwners owners(forest, labels_of(points.points), executor);
     const PointTree tree = point_tree(next_points(forest, owners, points.points, executor));
+    const HistogramRules binned = histogram_rules(study, surface.book, rules.sheet.storm_factor);
+    const auto histograms = gives_peaks(study, rain, surface.book)
+                                ? std::make_unique<HistogramTally>(travel, points.points.size(), binned) : nullptr;
     const LastPass last{.study = study, .rain = rain, .terrain = terrain, .travel = travel, .owners = owners,
-                        .points = points.points, .tree = tree, .folder = folder, .progress = progress};
+                        .points = points.points, .tree = tree, .folder = folder, .progress = progress, .histograms = histograms.get()};
     const std::vector<PointHeads> heads =
         study.timing.channel.design_storm
             ? heads_under_design_flow(last, {.sections = flow.sections, .runoff = surface.runoff, .travel = *travelled, .reaches = reaches})
@@ -144,15 +157,21 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
         return outlets_of(travel, points.points, tree, heads, outlet_rules_of(study, resolved));
     });
     const std::vector<PointMethods> methods = methods_of(study, surface.book, rain, outlets);
+    restate_own_times(stated, travel, outlets);
+    const StudyNetwork network = study_network({.study = study, .rain = rain, .book = surface.book, .outlets = outlets, .stated = stated});
+    const StudyPeaks peaks = histograms ? stage(progress, "peaks", cells, [&] {
+        return study_peaks({.study = study, .rain = rain, .book = surface.book, .outlets = outlets, .network = network, .binned = binned},
+                           histograms->take());
+    }) : no_peaks(study, rain);
     const Depressions depressions = stage(progress, "depressions", cells, [&] { return depressions_of(travel, outlets); });
     const Notices left_out = notices_of(depressions, ground.metres_per_elevation_unit);
     terrain.notices.insert(terrain.notices.end(), left_out.begin(), left_out.end());
-    const Notices notices = all_notices(terrain, surface, rain, points, outlets);
+    const Notices notices = all_notices(terrain, surface, rain, points, network, peaks, outlets);
     const std::vector<InputFile> inputs = checksums.get();
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
     const StudyResult result{.study = study, .resolved = resolved, .rules = rules, .rain = rain, .grid = terrain.grid,
                              .system = terrain.system, .format = terrain.format, .book = surface.book, .sections = flow.sections,
-                             .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .notices = notices,
+                             .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .network = network, .peaks = peaks, .notices = notices,
                              .inputs = inputs, .data = data};
     const std::string json = result_json(result);
     write_texts(result, json, folder);

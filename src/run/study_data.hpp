@@ -10,6 +10,7 @@
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
 #include "rillclock/study/study.hpp"
+#include "rillclock/study/study_network.hpp"
 #include "rillclock/study/study_rain.hpp"
 #include "rillclock/surface/cover_book.hpp"
 #include "rillclock/travel/surface_table.hpp"
@@ -57,6 +58,10 @@ struct StatedPoints {
 [[nodiscard]] DataFacts facts_of(const ElevationFormat& format, const Ground& ground);
 /// Reads the rain of a study, from its file if it names one.
 [[nodiscard]] StudyRain read_rain(const Study& study);
+/// Reads the pipes and overrides of a study, where it names any.
+[[nodiscard]] StatedEdits read_edits(const Study& study);
+/// Finds the own times that follow from stated sheet lengths and roughness.
+void restate_own_times(StatedEdits& stated, const TiledTravel& travel, const std::vector<Outlet>& outlets);
 [[nodiscard]] TravelRules rules_of(const Study& study, const ResolvedStudy& resolved, const StudyRain& rain);
 [[nodiscard]] OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved);
 [[nodiscard]] std::vector<InputFile> input_files(const Study& study);

@@ -3,6 +3,7 @@
 #include <limits>
 
 #include "rillclock/catchment/tiled_cells.hpp"
+#include "rillclock/catchment/tiled_own_paths.hpp"
 #include "rillclock/io/point_file.hpp"
 #include "rillclock/io/text_file.hpp"
 #include "mapped_flow.hpp"
@@ -60,6 +61,27 @@ StudyRain read_rain(const Study& study) {
     return study_rain(study, text);
 }
 
+StatedEdits read_edits(const Study& study) {
+    StatedEdits stated;
+    if (study.points.pipes) stated.pipes = parse_pipes(read_text(located(study, *study.points.pipes)), *study.points.pipes);
+    if (study.timing.overrides) stated.overrides = parse_overrides(read_text(located(study, *study.timing.overrides)), *study.timing.overrides);
+    return stated;
+}
+
+void restate_own_times(StatedEdits& stated, const TiledTravel& travel, const std::vector<Outlet>& outlets) {
+    const std::vector<PointEdit> edits = point_edits({}, stated.overrides, outlets);
+    std::vector<RestatedPoint> points;
+    for (std::size_t i = 0; i < edits.size(); ++i) {
+        const bool any = edits[i].stated != nullptr && edits[i].stated->overland.is_any();
+        if (any) points.push_back({.number = static_cast<PointNumber>(i + 1), .stated = edits[i].stated->overland});
+    }
+    const std::vector<StepTime> times = restated_own_times(travel, outlets, points);
+    for (std::size_t i = 0; i < points.size(); ++i) {
+        const PointOverride* at = edits[points[i].number - 1].stated;
+        stated.overrides[static_cast<std::size_t>(at - stated.overrides.data())].restated = times[i];
+    }
+}
+
 TravelRules rules_of(const Study& study, const ResolvedStudy& resolved, const StudyRain& rain) {
     TravelRules rules;
     rules.slope = {.window = resolved.slope_window,
@@ -107,6 +129,8 @@ std::vector<InputFile> input_files(const Study& study) {
     }
     if (study.rain.file) add("rain", *study.rain.file);
     if (study.timing.velocity_chart) add("velocity_chart", *study.timing.velocity_chart);
+    if (study.points.pipes) add("pipes", *study.points.pipes);
+    if (study.timing.overrides) add("overrides", *study.timing.overrides);
     return files;
 }
 

@@ -79,10 +79,10 @@ void refuse_contradictory_rain(const Study& study) {
         throw input_error(name_of(study) +
                           " says between which durations its formula of rain holds but gives none; add formula under "
                           "[rain], or leave out formula_from and formula_to");
-    const bool asks = !rain.return_periods.empty() || study.timing.raster_return_period || study.peaks.least_time;
+    const bool asks = !rain.return_periods.empty() || study.timing.raster_return_period || study.peaks.is_stated();
     if (asks && !rain.is_by_duration())
         throw input_error(name_of(study) +
-                          " states return_periods, raster_return_period or least_time, which act on rain by duration "
+                          " states return_periods, raster_return_period or something under [peaks], which act on rain by duration "
                           "only, but gives none; add file or formula under [rain], or leave them out");
 }
 
@@ -96,6 +96,25 @@ void refuse_contradictory_sheet(const Study& study) {
         throw input_error(name_of(study) +
                           " states sheet_constant, sheet_rain or storm, which act on kinematic sheet flow only; add sheet = "
                           "\"kinematic\" under [timing], or leave them out");
+}
+
+void refuse_contradictory_network(const Study& study) {
+    const TimingStudy& timing = study.timing;
+    if (timing.pipe_flow && !study.points.pipes)
+        throw input_error(name_of(study) + " states pipe_flow but no pipes; add pipes = \"pipes.csv\" under [points], or leave it out");
+    if (timing.pipe_flow == PipeFlow::design_flow && !study.rain.is_by_duration())
+        throw input_error(name_of(study) + " times pipes at the depth of the design flow, which needs rain by duration; add file = "
+                          "\"atlas14.csv\" or formula under [rain]");
+    const bool stated = study.points.pipes || timing.overrides;
+    if (stated && !study.points.file)
+        throw input_error(name_of(study) + " names pipes or overrides, which belong to points of your own, but no file of points; add file = "
+                          "\"points.gpkg\" under [points]");
+    if (stated && timing.ignore_tail > 0)
+        throw input_error(name_of(study) + " leaves out a tail and names pipes or overrides; times through a network count all water, so "
+                          "leave out ignore_tail");
+    if (stated && timing.storm == StormDuration::sheet_part)
+        throw input_error(name_of(study) + " names pipes or overrides, and storms as long as the sheet part; through a network a storm lasts as "
+                          "long as the whole path, so leave out storm");
 }
 
 void refuse_contradictory_soil(const Study& study) {
@@ -152,6 +171,7 @@ void check_study(const Study& study) {
     refuse_contradictory_rain(study);
     refuse_contradictory_sheet(study);
     refuse_contradictory_shallow(study);
+    refuse_contradictory_network(study);
 }
 
 ResolvedStudy resolve(const Study& study, const DataFacts& facts) {

@@ -52,6 +52,7 @@ constexpr std::array keys{
              "without a file: least area of a way out that becomes a point"},
     StudyKey{"points.move_within", R"("5 m")", "the larger of 5 m and one cell",
              "points move this far at most, to the cell of largest contributing area"},
+    StudyKey{"points.pipes", R"("pipes.csv")", "none", "table of pipes from one point to another, in place of the flow path"},
     StudyKey{"rain.two_year_24_hour", R"("3.6 in")", "asked for, unless rain.file holds it or sheet is kinematic",
              "2-year 24-hour rainfall depth"},
     StudyKey{"rain.file", R"("atlas14.csv")", "none",
@@ -98,14 +99,27 @@ constexpr std::array keys{
     StudyKey{"timing.ignore_tail", R"("0 %")", "0 %", "share of a point's area, the slowest, that is left out"},
     StudyKey{"timing.shortest_segment", R"("50 m")", "the larger of 50 m and 5 cells",
              "a shorter run of one slope joins its neighbour"},
+    StudyKey{"timing.overrides", R"("overrides.csv")", "none",
+             "table of what is stated of points in place of what is computed: time, way_time, sheet_length, n, c"},
+    StudyKey{"timing.pipe_flow", R"("full bore")", "full bore",
+             "full bore or design flow: the velocity in pipes is that of pipes just full, or at the depth of the point's peak"},
     StudyKey{"peaks.least_time", R"("5 min")", "5 min", "no intensity is read below this duration; 0 min is off"},
+    StudyKey{"peaks.coefficient", R"("book")", "book",
+             "book, imperviousness (after Urbonas) or imperviousness, schueler: where runoff coefficients come from"},
+    StudyKey{"peaks.conversion", R"("exact")", "exact",
+             "exact, or rounded: one acre under one inch an hour gives 1.00833 or 1 ft3/s"},
+    StudyKey{"peaks.frequency_factors", R"("wright-mclaughlin")", "wright-mclaughlin",
+             "wright-mclaughlin, australian 1987 or none: factors on coefficients that do not depend on the return period"},
+    StudyKey{"peaks.area_limit", R"("200 ac")", "200 ac", "larger catchments get a notice"},
+    StudyKey{"peaks.time_bin", R"("5 s")", "5 s", "width of the bins in which arrivals are kept"},
     StudyKey{"output.folder", R"("result")", "result", "result folder"},
     StudyKey{"output.rasters", R"("geotiff")", "geotiff", "format of the rasters"},
+    StudyKey{"output.subareas", R"("least slacks")", "least slacks",
+             "least slacks or all: which subareas of each point tables/subareas.csv lists"},
 };
 
 /// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
-constexpr std::array<std::string_view, 8> not_served{
-    "points.area", "points.pipes", "rain.table", "timing.overrides", "peaks", "uncertainty", "scenario", "output.isochrones"};
+constexpr std::array<std::string_view, 5> not_served{"points.area", "rain.table", "uncertainty", "scenario", "output.isochrones"};
 
 bool is_or_is_under(std::string_view key, std::string_view stem) {
     return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));

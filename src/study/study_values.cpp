@@ -208,6 +208,13 @@ void add_formula(Study& study, const Stated& stated) {
     study.rain.formulas.push_back({.formula = formula, .subject = stated.subject()});
 }
 
+/// No finer than a hundredth of a second, so that bins stay few, and no coarser than the table of rows.
+Duration time_bin(const Stated& stated) {
+    const Duration bin = stated.duration(Sign::positive);
+    if (!(bin >= seconds(0.01) && bin <= minutes(10))) throw stated.fault("is \"" + stated.text() + "\"; write 0.01 s to 10 min, such as \"5 s\"");
+    return bin;
+}
+
 struct Setter {
     std::string_view key;
     void (*set)(Study&, const Stated&);
@@ -306,10 +313,38 @@ constexpr std::array setters{
            [](Study& s, const Stated& v) { s.timing.channel.side_slope = v.number(0, greatest_side_slope); }},
     Setter{"timing.ignore_tail",
            [](Study& s, const Stated& v) { s.timing.ignore_tail = v.fraction(Sign::not_negative); }},
+    Setter{"points.pipes", [](Study& s, const Stated& v) { s.points.pipes = v.text(); }},
+    Setter{"timing.overrides", [](Study& s, const Stated& v) { s.timing.overrides = v.text(); }},
+    Setter{"timing.pipe_flow",
+           [](Study& s, const Stated& v) {
+               s.timing.pipe_flow = v.choice({"full bore", "design flow"}) == 0 ? PipeFlow::full_bore : PipeFlow::design_flow;
+           }},
     Setter{"timing.shortest_segment", [](Study& s, const Stated& v) { s.timing.shortest_segment = v.length(); }},
     Setter{"peaks.least_time", [](Study& s, const Stated& v) { s.peaks.least_time = v.duration(Sign::not_negative); }},
+    Setter{"peaks.coefficient",
+           [](Study& s, const Stated& v) {
+               constexpr std::array sources{CoefficientSource::book, CoefficientSource::urbonas, CoefficientSource::schueler};
+               s.peaks.coefficient = sources[v.choice({words(sources[0]), words(sources[1]), words(sources[2])})];
+           }},
+    Setter{"peaks.conversion",
+           [](Study& s, const Stated& v) {
+               const bool exact = v.choice({"exact", "rounded"}) == 0;
+               s.peaks.conversion = exact ? RationalConversion::exact : RationalConversion::rounded;
+           }},
+    Setter{"peaks.frequency_factors",
+           [](Study& s, const Stated& v) {
+               constexpr std::array factors{FrequencyFactors::wright_mclaughlin, FrequencyFactors::australian, FrequencyFactors::none};
+               s.peaks.frequency_factors = factors[v.choice({words(factors[0]), words(factors[1]), words(factors[2])})];
+           }},
+    Setter{"peaks.area_limit", [](Study& s, const Stated& v) { s.peaks.area_limit = v.area(); }},
+    Setter{"peaks.time_bin", [](Study& s, const Stated& v) { s.peaks.time_bin = time_bin(v); }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
     Setter{"output.rasters", [](Study&, const Stated& v) { (void)v.choice({"geotiff"}, {"cog"}); }},
+    Setter{"output.subareas",
+           [](Study& s, const Stated& v) {
+               const bool all = v.choice({"least slacks", "all"}) == 1;
+               s.output.subareas = all ? SubareasListed::all : SubareasListed::least_slacks;
+           }},
 };
 
 }  // namespace

@@ -11,16 +11,17 @@
 #include "rillclock/hydraulics/manning.hpp"
 #include "rillclock/hydraulics/shallow_flow.hpp"
 #include "rillclock/surface/cover_book.hpp"
+#include "rillclock/surface/runoff_coefficients.hpp"
 
 namespace rillclock {
 namespace {
 
-constexpr std::array<std::string_view, 26> known_columns{
+constexpr std::array<std::string_view, 28> known_columns{
     "code",          "name",           "n_low", "n_typical",     "n_high",         "shallow_type",
     "shallow_k_m_s", "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source",
     "from_memory",   "cn_a",           "cn_b",  "cn_c",          "cn_d",           "c",
     "c_a",           "c_b",            "c_c",   "c_d",           "shallow_n",      "shallow_radius_m",
-    "shallow_radius_ft", "chart_line"};
+    "shallow_radius_ft", "chart_line", "land_use", "impervious_percent"};
 constexpr std::array<std::string_view, 4> curve_number_columns{"cn_a", "cn_b", "cn_c", "cn_d"};
 constexpr std::array<std::string_view, 4> coefficient_columns{"c_a", "c_b", "c_c", "c_d"};
 constexpr std::array<std::string_view, 4> needed_columns{"code", "name", "n_typical", "source"};
@@ -215,6 +216,25 @@ void read_runoff_coefficients(const BookRow& row, CoverClass& cover) {
     }
 }
 
+void read_land_use(const BookRow& row, CoverClass& cover) {
+    cover.land_use = row.text("land_use");
+    if (cover.land_use.empty() || find_land_use(cover.land_use) != nullptr) return;
+    std::vector<std::string_view> names;
+    std::string list;
+    for (const LandUse& use : land_uses()) {
+        names.push_back(use.name);
+        list += (list.empty() ? "" : ", ") + std::string(use.name);
+    }
+    throw row.fault("land_use", "is \"" + cover.land_use + "\"; write one of: " + list + did_you_mean(cover.land_use, names));
+}
+
+void read_impervious(const BookRow& row, CoverClass& cover) {
+    const auto percent = row.number("impervious_percent", Sign::not_negative);
+    if (percent && !(*percent <= 100))
+        throw row.fault("impervious_percent", "is " + significant(*percent) + "; a share lies between 0 and 100 %");
+    if (percent) cover.impervious = *percent / 100.0;
+}
+
 void require_no_ground(const BookRow& row) {
     for (const auto column : {"n_low", "n_typical", "n_high", "shallow_type", "shallow_k_m_s", "shallow_k_ft_s", "shallow_n",
                               "shallow_radius_m", "shallow_radius_ft", "chart_line"})
@@ -234,6 +254,8 @@ CoverClass cover_class(const BookRow& row) {
     }
     read_curve_numbers(row, cover);
     read_runoff_coefficients(row, cover);
+    read_land_use(row, cover);
+    read_impervious(row, cover);
     cover.paved = row.yes("paved", cover.shallow_type == "pavement");
     return cover;
 }

@@ -5,6 +5,7 @@
 
 #include "rillclock/catchment/arrivals.hpp"
 #include "rillclock/catchment/path_doubts.hpp"
+#include "rillclock/catchment/point_way.hpp"
 #include "rillclock/catchment/segments.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 
@@ -50,6 +51,9 @@ struct Outlet {
     PointPath governing;                           ///< its time is the time of concentration
     PointPath longest;
     CatchmentGround ground;                        ///< of the whole catchment
+    PointWay way;                                  ///< to the next point; nothing where there is none
+    StepTime time_to_root;                         ///< from the point's cell
+    Front own_front;                               ///< of the own subarea, with times to the root
     LandTally own_land;                            ///< of the point's own subarea
     double elevation_m = 0.0;                      ///< level at which water gets out of the point's cell
     double storm_factor = 1.0;                     ///< of the storm that all this is under
@@ -74,6 +78,7 @@ struct PointHeads {
     Head governing;                                       ///< the last once the tail is left out
     Cell farthest = no_cell;
     CatchmentGround ground;                               ///< of the whole catchment
+    Front own_front;                                      ///< of the own subarea
     LandTally own_land;                                   ///< of the point's own subarea
     double storm_factor = 1.0;                            ///< of the storm that all these are under
     std::vector<PointStorm> storms;                       ///< by return period
@@ -92,6 +97,7 @@ struct OutletParts {
     std::int64_t border_cells_at_point = 0;   ///< border cells that are the point's own or drain straight into it
     const PathCells& governing;               ///< from the governing head to the point's cell
     const PathCells& longest;
+    std::span<const PathCell> way = {};       ///< from the point's cell to the next point's; nothing where there is none
 };
 
 /// Works out a point. Cost: the length of its paths.

@@ -6,9 +6,11 @@
 #include <vector>
 
 #include "rillclock/catchment/outlet.hpp"
+#include "rillclock/catchment/point_network.hpp"
 #include "rillclock/core/notice.hpp"
 #include "rillclock/io/elevation_file.hpp"
 #include "rillclock/io/reference_system.hpp"
+#include "rillclock/study/peaks.hpp"
 #include "rillclock/study/study.hpp"
 #include "rillclock/study/point_methods.hpp"
 #include "rillclock/study/study_rain.hpp"
@@ -57,6 +59,8 @@ struct StudyResult {
     std::span<const SurfaceHydraulics> surface_classes;
     const std::vector<Outlet>& outlets;
     const std::vector<PointMethods>& methods;   ///< of each outlet
+    const StudyNetwork& network;
+    const StudyPeaks& peaks;                    ///< nothing where the study has no rain by duration
     const Notices& notices;            ///< by effect on the time, the greatest first
     const std::vector<InputFile>& inputs;
     const DataSummary& data;
@@ -72,6 +76,11 @@ struct StudyResult {
 [[nodiscard]] inline const MappedSection* section_of(const StudyResult& result, const Segment& segment) {
     const bool is_stated = segment.reach_from != nullptr && segment.reach_from->section != no_section;
     return is_stated ? &result.sections[segment.reach_from->section] : nullptr;
+}
+
+/// The name of a design point.
+[[nodiscard]] inline const std::string& point_name(const StudyResult& result, PointNumber number) {
+    return result.outlets[number - 1].point.name;
 }
 
 /// What lengths along the grid were multiplied with.

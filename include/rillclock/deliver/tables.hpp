@@ -26,6 +26,24 @@ namespace rillclock {
 /// and the ratio to the time along the governing path.
 [[nodiscard]] std::string methods_table(const StudyResult& result);
 
+/// `tables/subareas.csv`: one row a point, return period and listed subarea above it: own time, time of the way, arrival, slack, share of
+/// the area; those with less slack first.
+[[nodiscard]] std::string subareas_table(const StudyResult& result);
+
+/// `tables/peaks.csv`: one row a point and return period: the coefficient, the whole area's peak and the partial area's, the window that makes it,
+/// and what the shortcut of handbooks gives.
+[[nodiscard]] std::string peaks_table(const StudyResult& result);
+
+/// `tables/time_area.csv`: one row a point, return period and duration: the search for the partial area, to be followed by hand.
+[[nodiscard]] std::string time_area_table(const StudyResult& result);
+
+/// `tables/pipes.csv`: one row a pipe: what is stated of it, its capacity, velocity and time, and its design flow where that was asked for.
+[[nodiscard]] std::string pipes_table(const StudyResult& result);
+
+/// `tables/handover.csv`: one row a subarea: area, coefficients, own time, next point and time of the way; enough to rebuild every peak of whole
+/// areas by hand.
+[[nodiscard]] std::string handover_table(const StudyResult& result);
+
 /// `tables/land.csv`: one row a point and kind of land (cover class, soil group, slope of the land) in its catchment: cells and area in
 /// the whole of it and in the point's own subarea, curve number and runoff coefficient where the book has them.
 [[nodiscard]] std::string land_table(const StudyResult& result);

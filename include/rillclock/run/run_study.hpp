@@ -21,7 +21,7 @@ struct RunOptions {
 struct RunOutcome {
     std::filesystem::path folder;
     std::vector<std::string> facts;       ///< what was read and could be read wrongly: source, block, unit of the rain
-    std::vector<std::string> headlines;   ///< three sentences
+    std::vector<std::string> headlines;   ///< three or four sentences
     std::string overview;                 ///< a short table of the points
     Notices notices;                      ///< by effect on the time, the greatest first
     std::string json;                     ///< `result.json`

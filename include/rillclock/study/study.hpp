@@ -6,12 +6,15 @@
 #include <string>
 #include <vector>
 
+#include "rillclock/catchment/point_network.hpp"
 #include "rillclock/core/quantity.hpp"
 #include "rillclock/core/quantity_text.hpp"
 #include "rillclock/hydraulics/channel_size.hpp"
+#include "rillclock/hydraulics/rational.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 #include "rillclock/rainfall/rain_source.hpp"
 #include "rillclock/surface/cover_book.hpp"
+#include "rillclock/surface/runoff_coefficients.hpp"
 
 namespace rillclock {
 
@@ -20,6 +23,8 @@ enum class ReportUnits { us, si };
 /// What ends sheet flow: the stated length or the index of McCuen and Spiess, whichever comes first; or the stated
 /// length.
 enum class SheetLimitRule { length_or_index, stated };
+/// Which flow the velocity in pipes is for: when they run just full, or at the depth of the design flow.
+enum class PipeFlow { full_bore, design_flow };
 /// How shallow concentrated flow is told apart.
 enum class ShallowRule { by_cover, paved_and_unpaved, chart };
 
@@ -64,6 +69,7 @@ struct PointStudy {
     std::optional<std::string> layer = {};  ///< the file's first layer where absent
     std::optional<double> auto_area = {};   ///< share of the data's area from which a way out counts as a point, 0 to 1
     std::optional<Length> move_within = {};
+    std::optional<std::string> pipes = {};  ///< CSV file, relative to the study's folder
 };
 
 /// A formula of rain as stated, for one return period or for all.
@@ -114,16 +120,31 @@ struct TimingStudy {
     ChannelStudy channel = {};
     double ignore_tail = 0.0;  ///< share of a point's area, the slowest, that is left out; 0 to below 1
     std::optional<Length> shortest_segment = {};
+    std::optional<std::string> overrides = {};  ///< CSV file, relative to the study's folder
+    std::optional<PipeFlow> pipe_flow = {};     ///< full-bore where absent
 
     [[nodiscard]] bool is_kinematic() const { return sheet == "kinematic"; }
 };
 
+/// How arrivals are binned where a study says nothing of it.
+inline constexpr Duration standard_time_bin = seconds(5);
+
 struct PeakStudy {
     std::optional<Duration> least_time = {};  ///< no intensity is read below it; 5 min where absent
+    std::optional<CoefficientSource> coefficient = {};       ///< the cover book where absent
+    std::optional<RationalConversion> conversion = {};       ///< exact where absent
+    std::optional<FrequencyFactors> frequency_factors = {};  ///< Wright-McLaughlin's where absent
+    std::optional<Area> area_limit = {};                     ///< beyond it a notice; 200 ac where absent
+    std::optional<Duration> time_bin = {};                   ///< by which arrivals are binned; 5 s where absent
+
+    [[nodiscard]] bool is_stated() const {
+        return least_time || coefficient || conversion || frequency_factors || area_limit || time_bin;
+    }
 };
 
 struct OutputStudy {
     std::string folder = "result";  ///< relative to the study's folder
+    SubareasListed subareas = SubareasListed::least_slacks;
 };
 
 struct Study {

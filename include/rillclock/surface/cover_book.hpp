@@ -40,6 +40,8 @@ struct CoverClass {
     std::optional<double> runoff_coefficient = {};  ///< of any soil, 0 to 1; where the book has it
     std::array<std::optional<double>, 4> runoff_coefficients =
         {};                     ///< by soil group, 0 to 1, none below that before; where the book has them
+    std::string land_use = {};           ///< name of one of `land_uses()` (runoff_coefficients.hpp); may be empty
+    std::optional<double> impervious = {};  ///< share of the ground that is, 0 to 1; where the book has it
     std::string source = {};                        ///< where the values are from
     bool from_memory = false;                       ///< a default to check before use
 
@@ -83,6 +85,8 @@ private:
 /// empty;
 /// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group), `c` (runoff coefficient of any soil) and `c_a` to `c_d`
 ///   (of each soil group; each may be absent or empty), for runoff and for methods that time a catchment as one lump;
+/// - `land_use` (a name of `land_uses()`, for runoff coefficients printed by soil group, slope and return period) and
+///   `impervious_percent` (0 to 100), each may be absent or empty;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
 ///
 /// `file` names the text in errors. Throws an input error with line and column for a column that is missing or unknown,

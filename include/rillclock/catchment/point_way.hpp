@@ -1,0 +1,25 @@
+#pragma once
+
+#include <array>
+#include <cstddef>
+#include <span>
+
+#include "rillclock/catchment/path_cell.hpp"
+
+namespace rillclock {
+
+/// The flow path from a design point to the next one below.
+struct PointWay {
+    FixedLength length = 0;
+    StepTime time;
+    double fall_m = 0.0;                        ///< of spill elevation
+    std::array<double, 5> regime_length_m = {};  ///< by the number of the regime
+
+    /// Share of the length that runs in a regime; 0 where the way has no length.
+    [[nodiscard]] double share(Regime regime) const;
+};
+
+/// `path`: the cells from one point to the next, both included; none makes a way of nothing.
+[[nodiscard]] PointWay way_of(const PathGround& ground, std::span<const PathCell> path);
+
+}  // namespace rillclock

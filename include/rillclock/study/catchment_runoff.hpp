@@ -1,0 +1,103 @@
+#pragma once
+
+#include <map>
+#include <optional>
+#include <span>
+#include <string>
+#include <utility>
+#include <vector>
+
+#include "rillclock/catchment/arrival_histogram.hpp"
+#include "rillclock/study/edited_network.hpp"
+#include "rillclock/study/partial_area.hpp"
+#include "rillclock/study/study.hpp"
+
+namespace rillclock {
+
+/// The coefficient of a catchment at one return period.
+struct CompositeCoefficient {
+    double frequency_factor = 1.0;   ///< 1 where it acts on none of the land
+    double value = 0.0;              ///< Σ min(1, Cf·C)·A / Σ A
+    double uncapped = 0.0;           ///< Σ Cf·C·A / Σ A
+    FixedArea runoff = 0;            ///< C·A, in cm²
+};
+
+/// Coefficients of every kind of land at every return period, each looked up once.
+class Coefficients {
+public:
+    /// `stated`: coefficients that overrides state, as `stated_coefficients` gives them.
+    Coefficients(const CoverBook& book, const PeakStudy& rules, std::vector<double> periods, std::vector<double> stated = {})
+        : book_(book),
+          source_(rules.coefficient.value_or(CoefficientSource::book)),
+          factors_(rules.frequency_factors.value_or(FrequencyFactors::wright_mclaughlin)),
+          periods_(std::move(periods)),
+          stated_(std::move(stated)) {}
+
+    /// C without any factor.
+    [[nodiscard]] const KindCoefficient& of(const LandKind& kind, std::size_t period);
+    /// Cf, where it acts on that kind.
+    [[nodiscard]] double factor(const LandKind& kind, std::size_t period);
+    /// The smaller of 1 and Cf·C. There must be a C.
+    [[nodiscard]] double capped(const LandKind& kind, std::size_t period);
+    [[nodiscard]] double frequency_factor(std::size_t period) const;
+
+private:
+    const CoverBook& book_;
+    CoefficientSource source_;
+    FrequencyFactors factors_;
+    std::vector<double> periods_;
+    std::vector<double> stated_;
+    std::map<std::pair<LandKind, std::size_t>, KindCoefficient> known_;
+};
+
+/// Areas by kind of land.
+using LandAreas = std::map<LandKind, FixedArea>;
+[[nodiscard]] LandAreas land_areas(const ArrivalHistogram& histogram);
+
+/// The different coefficients that overrides state, ascending. Land that has one is of a kind beyond the classes of the book. Throws an
+/// input error where kinds run out.
+[[nodiscard]] std::vector<double> stated_coefficients(std::span<const PointEdit> edits, const CoverBook& book);
+/// The land of a subarea, all of it with the coefficient that is stated of its point, where one is.
+[[nodiscard]] LandAreas with_stated_coefficient(LandAreas land, const PointEdit& edit, const CoverBook& book, std::span<const double> stated);
+
+/// What a histogram becomes by what is stated of its point: arrivals stretched evenly to a stated time, land of a stated coefficient.
+[[nodiscard]] ArrivalHistogram edited_histogram(const ArrivalHistogram& own, const PointEdit& edit, const Outlet& outlet,
+                                                const HistogramRules& rules, const CoverBook& book, std::span<const double> stated);
+
+/// Why the land has no coefficient; empty where it has.
+[[nodiscard]] std::string lacking_coefficient(const LandAreas& land, Coefficients& coefficients, std::size_t period);
+/// Every kind must have a coefficient. C·A is rounded to a square centimetre once.
+[[nodiscard]] CompositeCoefficient composite_of(const LandAreas& land, Coefficients& coefficients, std::size_t period);
+
+/// Puts entries of histograms into the bins of a point's own storm.
+class Placing {
+public:
+    Placing(const HistogramRules& rules, double storm_factor) : rules_(rules), storm_factor_(storm_factor) {}
+
+    /// The bin, counted from the root.
+    [[nodiscard]] std::int64_t bin(const HistogramEntry& entry) const;
+    /// How many widths after its bin's place a cell may arrive.
+    [[nodiscard]] std::int64_t spread(const ArrivalHistogram& histogram) const;
+    [[nodiscard]] FixedTime width() const { return rules_.bin; }
+
+private:
+    HistogramRules rules_;
+    double storm_factor_;
+};
+
+/// Land by bin and kind under one storm, from which C·A by bin follows for any return period.
+class BinnedLand {
+public:
+    BinnedLand(const ArrivalHistogram& histogram, const Placing& placing);
+    [[nodiscard]] ArrivalCurve curve(Coefficients& coefficients, std::size_t period) const;
+
+private:
+    std::int64_t first_ = 0;
+    std::size_t bins_ = 0;
+    Duration width_;
+    std::int64_t spread_ = 1;
+    std::vector<LandKind> kinds_;
+    std::vector<FixedArea> areas_;  ///< bins × kinds
+};
+
+}  // namespace rillclock

@@ -1,0 +1,104 @@
+#include <catch2/catch.hpp>
+
+#include <algorithm>
+#include <cmath>
+
+#include "reference/drawings.hpp"
+#include "reference/worked_outlets.hpp"
+#include "rillclock/catchment/point_network.hpp"
+
+namespace rillclock {
+namespace {
+
+using worked::Given;
+using worked::Worked;
+
+Given random_ground(std::mt19937& random, unsigned seed) {
+    Given given{.elevations = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 200, seed % 3 == 0 ? 0.05 : 0.0),
+                .ground = Ground::planar(metres(3), metres(4))};
+    given.surface = worked::random_surface(random, given.elevations, seed % 4 < 2);
+    given.rules.channel.from_area = square_metres(400);
+    given.rules.sheet.storm_factor = 0.5 + seed % 5;
+    return given;
+}
+
+std::vector<Cell> random_cells(std::mt19937& random, const Given& given, std::size_t most) {
+    std::vector<Cell> cells;
+    for (Cell cell = 0; cell < static_cast<Cell>(given.elevations.size()); ++cell) {
+        if (!std::isnan(given.elevations[cell])) cells.push_back(cell);
+    }
+    std::shuffle(cells.begin(), cells.end(), random);
+    cells.resize(std::min(most, cells.size()));
+    return cells;
+}
+
+TEST_CASE("on random ground the greatest of own time and way is the point's time, to the unit") {
+    for (unsigned seed = 0; seed < 150; ++seed) {
+        std::mt19937 random(seed);
+        const Given given = random_ground(random, seed);
+        const std::vector<Cell> cells = random_cells(random, given, 1 + seed % 12);
+        if (cells.empty()) continue;
+        const Worked w(given, {.points = cells});
+        const DrainageNetwork network = network_of(w.outlets);
+        INFO("seed " << seed);
+        for (const Outlet& outlet : w.outlets) {
+            const PointArrivals at = network.arrivals_at(outlet.number, w.storm_factor);
+            const Cell head = outlet.governing.cells.front();
+            const FixedTime time = fixed_under(w.land.field.time_to_root(head), w.storm_factor) -
+                                   fixed_under(outlet.time_to_root, w.storm_factor);
+            REQUIRE(at.time == time);
+            // The time on the sheet is the difference rounded once, not the difference of two rounded: a unit apart.
+            REQUIRE(from_fixed(at.time) == Approx(outlet.time_of_concentration_s()).margin(1.5 / fixed_units_per_one));
+            for (const SubareaArrival& subarea : at.subareas) {
+                REQUIRE(subarea.own >= 0);
+                REQUIRE(subarea.way >= 0);
+                REQUIRE(subarea.slack >= 0);
+            }
+        }
+    }
+}
+
+TEST_CASE("a new inner point changes no time, last or lead of the points below but by what it parts off") {
+    for (unsigned seed = 0; seed < 100; ++seed) {
+        std::mt19937 random(seed);
+        const Given given = random_ground(random, seed);
+        std::vector<Cell> cells = random_cells(random, given, 2 + seed % 6);
+        if (cells.size() < 2) continue;
+        const Worked all(given, {.points = cells});
+        const Worked one_less(given, {.points = {cells.begin(), cells.end() - 1}});
+        const DrainageNetwork with = network_of(all.outlets);
+        const DrainageNetwork without = network_of(one_less.outlets);
+        INFO("seed " << seed);
+        for (PointNumber number = 1; number < cells.size(); ++number) {
+            const PointArrivals before = without.arrivals_at(number, all.storm_factor);
+            const PointArrivals after = with.arrivals_at(number, all.storm_factor);
+            REQUIRE(after.time == before.time);
+            if (with.above(number).size() == without.above(number).size()) REQUIRE(after.last == before.last);
+        }
+    }
+}
+
+TEST_CASE("ways add up the regimes they run through to their length") {
+    for (unsigned seed = 0; seed < 60; ++seed) {
+        std::mt19937 random(seed);
+        const Given given = random_ground(random, seed);
+        const std::vector<Cell> cells = random_cells(random, given, 8);
+        if (cells.empty()) continue;
+        const Worked w(given, {.points = cells});
+        const DrainageNetwork network = network_of(w.outlets);
+        INFO("seed " << seed);
+        for (const Outlet& outlet : w.outlets) {
+            if (outlet.next == 0) {
+                REQUIRE(outlet.way.length == 0);
+                continue;
+            }
+            double length = 0.0;
+            for (const double part : outlet.way.regime_length_m) length += part;
+            REQUIRE(length == Approx(from_fixed(outlet.way.length)).margin(1e-6));
+            REQUIRE(network.way_time(outlet.number) == outlet.way.time);
+        }
+    }
+}
+
+}  // namespace
+}  // namespace rillclock

@@ -1,0 +1,84 @@
+#include "rillclock/surface/runoff_coefficients.hpp"
+
+#include <catch2/catch.hpp>
+
+namespace rillclock {
+namespace {
+
+using Catch::Contains;
+
+/// Grass with a land use alone, street with its own c, yard with both, wood with neither.
+CoverBook book() {
+    return parse_cover_book(
+        "code,name,n_typical,shallow_type,c,land_use,impervious_percent,source\n"
+        "1,Grass,0.24,short-grass pasture,,pasture,0,test\n"
+        "2,Street,0.011,pavement,0.9,,100,test\n"
+        "3,Yard,0.011,pavement,0.99,parking,,test\n"
+        "4,Wood,0.4,contour crops or woodland,,,,test\n",
+        "book.csv");
+}
+
+KindCoefficient of(std::uint8_t cover, CellSoil soil, SlopeBand slope, double years) {
+    return kind_coefficient(book(), {.cover = cover, .soil = soil, .slope = slope}, CoefficientSource::book, years);
+}
+
+TEST_CASE("a land use has a coefficient by soil group, slope and return period") {
+    // Rawls, Wong and McCuen, 1981, pasture (values from memory).
+    CHECK(of(0, CellSoil::a, SlopeBand::flat, 10).value == 0.12);
+    CHECK(of(0, CellSoil::b, SlopeBand::rolling, 10).value == 0.28);
+    CHECK(of(0, CellSoil::d, SlopeBand::steep, 24.9).value == 0.50);
+    CHECK(of(0, CellSoil::d, SlopeBand::steep, 25).value == 0.62);
+    CHECK(of(0, CellSoil::a, SlopeBand::flat, 100).varies_with_period);
+}
+
+TEST_CASE("a coefficient of the book's own counts before its land use, and does not vary") {
+    CHECK(of(2, CellSoil::a, SlopeBand::flat, 10).value == 0.99);
+    CHECK_FALSE(of(2, CellSoil::a, SlopeBand::flat, 10).varies_with_period);
+    CHECK(of(1, CellSoil::unknown, SlopeBand::flat, 10).value == 0.9);
+}
+
+TEST_CASE("what a coefficient lacks is said") {
+    CHECK(of(3, CellSoil::a, SlopeBand::flat, 10).lacking == "the cover book has no c or land_use for Wood");
+    CHECK_THAT(of(0, CellSoil::unknown, SlopeBand::flat, 10).lacking, Contains("Grass needs a soil group"));
+    CHECK(kind_coefficient(book(), {.cover = 3}, CoefficientSource::urbonas, 10).lacking ==
+          "the cover book has no impervious_percent for Wood");
+}
+
+TEST_CASE("from imperviousness a paved class has 0.892, a bare one 0.04") {
+    CHECK(*kind_coefficient(book(), {.cover = 1}, CoefficientSource::urbonas, 10).value == Approx(0.892));
+    CHECK(*kind_coefficient(book(), {.cover = 0}, CoefficientSource::urbonas, 10).value == Approx(0.04));
+}
+
+TEST_CASE("in every printed land use a rarer storm, a tighter soil and a steeper slope never have less") {
+    for (const LandUse& use : land_uses()) {
+        INFO(use.name);
+        for (std::size_t group = 0; group < 4; ++group) {
+            for (std::size_t slope = 0; slope < 3; ++slope) {
+                const double here = use.printed[0][group][slope];
+                CHECK(use.printed[1][group][slope] >= here);
+                if (group > 0) CHECK(here >= use.printed[0][group - 1][slope]);
+                if (slope > 0) CHECK(here >= use.printed[0][group][slope - 1]);
+                CHECK((here >= use.least() && here <= use.greatest()));
+            }
+        }
+    }
+}
+
+TEST_CASE("an unknown land use and a share beyond 100 % are refused with what is right") {
+    CHECK_THROWS_WITH(parse_cover_book("code,name,n_typical,shallow_type,land_use,source\n1,Grass,0.2,pavement,pastur,test\n", "b.csv"),
+                      Contains("b.csv, line 2, column 5 (land_use)") && Contains("did you mean pasture?"));
+    CHECK_THROWS_WITH(parse_cover_book("code,name,n_typical,shallow_type,impervious_percent,source\n1,Grass,0.2,pavement,120,test\n", "b.csv"),
+                      Contains("(impervious_percent) is 120") && Contains("0 and 100"));
+}
+
+TEST_CASE("the slope of the land matters where a class has a land use, and the book only where it has something to give") {
+    CHECK(uses_slope(book(), CoefficientSource::book));
+    CHECK_FALSE(uses_slope(book(), CoefficientSource::urbonas));
+    const CoverBook bare = parse_cover_book("code,name,n_typical,shallow_type,source\n1,Grass,0.2,pavement,test\n", "b.csv");
+    CHECK_FALSE(uses_slope(bare, CoefficientSource::book));
+    CHECK_FALSE(has_coefficients(bare, CoefficientSource::book));
+    CHECK(has_coefficients(book(), CoefficientSource::book));
+}
+
+}  // namespace
+}  // namespace rillclock
