@@ -100,6 +100,7 @@ constexpr std::size_t most_overview_rows = 20;
 RunOutcome run(const Study& study, const RunOptions& options, const Progress& progress) {
     check_study(study);
     const GdalSession session;
+    require_memory(study);
     ResultFolder folder(located(study, study.output.folder), options.replace ? Existing::replace : Existing::refuse);
     const Executor executor(options.threads);
     const StudyRain rain = read_rain(study);
