@@ -155,6 +155,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const std::string json = result_json(result);
     write_texts(result, json, folder);
     folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
+    folder.write_text("depressions.geojson", depressions_geojson(result, outlined(travel, terrain.grid, depressions.deepest_first)));
     folder.commit();
     return {.folder = folder.target(), .facts = facts_of(rain), .headlines = headlines(result),
             .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = json};

@@ -1,4 +1,5 @@
 """Channels, crossings, barriers and kept water that a study maps beside its elevations."""
+import json
 import unittest
 
 import numpy as np
@@ -105,6 +106,25 @@ class MappedTerrain(CommandTest):
         self.assertTrue(all(azimuth[row, 9] not in (45, 90, 135) for row in range(15, 26)))
         self.assertEqual(azimuth[3, 40], NOWHERE)
         self.assertTrue(np.all(azimuth[20:22, 19:21] == NOWHERE))
+
+    def features(self, name):
+        return json.loads((self.folder / "result" / name).read_text(encoding="utf-8"))["features"]
+
+    def test_depressions_are_outlined(self):
+        self.study()
+        self.run_study()
+        rows, features = table(self.folder / "result/tables/depressions.csv"), self.features("depressions.geojson")
+        self.assertEqual(len(features), len(rows))
+        deepest = features[0]
+        self.assertEqual(deepest["properties"]["depression"], 1)
+        self.assertTrue(deepest["properties"]["on_governing_path"])
+        shape = ogr.CreateGeometryFromJson(json.dumps(deepest["geometry"]))
+        shape.AssignSpatialReference(system_of(4326))
+        shape.TransformTo(system_of(25832))
+        self.assertTrue(shape.IsValid())
+        # Degrees are rounded to a centimetre; the area is that of whole cells of 4 m².
+        self.assertAlmostEqual(shape.Area(), deepest["properties"]["area_m2"], delta=0.002 * shape.Area())
+        self.assertEqual(deepest["properties"]["area_m2"], 4 * int(rows[0]["cells"]))
 
     def test_check_counts_features_and_names_what_is_wrong(self):
         self.shapes("brook.gpkg", self.line((20, 2), (20, 22)), "LINESTRING(1 1,2 2)", "POINT(500010 5399990)")

@@ -38,4 +38,17 @@ struct DepressionGround {
 /// two bits a cell, and the cells of the largest depression.
 [[nodiscard]] Depressions find_depressions(const DepressionGround& ground, const std::vector<Cell>& paths, std::size_t most);
 
+/// Finds the cells of depressions once more: they are too many to be kept while all depressions are found.
+class DepressionCells {
+public:
+    explicit DepressionCells(const DepressionGround& ground);
+    /// All cells of a depression that was found on the same ground, in no order of meaning. Cost: linear in them; a bit for each cell of the raster
+    /// while this lives.
+    [[nodiscard]] std::vector<Cell> of(const Depression& depression);
+
+private:
+    DepressionGround ground_;
+    std::vector<bool> seen_;
+};
+
 }  // namespace rillclock
