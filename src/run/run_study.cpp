@@ -10,6 +10,7 @@
 #include "rillclock/deliver/calculation_sheet.hpp"
 #include "rillclock/deliver/depressions_table.hpp"
 #include "rillclock/deliver/headlines.hpp"
+#include "rillclock/deliver/own_ways_geojson.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
 #include "rillclock/deliver/result_json.hpp"
 #include "rillclock/deliver/tables.hpp"
@@ -155,6 +156,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const std::string json = result_json(result);
     write_texts(result, json, folder);
     folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
+    if (!flow.line_cells.empty()) folder.write_text("own_paths.geojson", own_ways_geojson(result, flow.own_ways));
     folder.write_text("depressions.geojson", depressions_geojson(result, outlined(travel, terrain.grid, depressions.deepest_first)));
     folder.commit();
     return {.folder = folder.target(), .facts = facts_of(rain), .headlines = headlines(result),

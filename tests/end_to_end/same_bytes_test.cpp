@@ -237,6 +237,7 @@ TEST_CASE("whole results are the same bytes with channels, crossings, barriers a
     folder.write("kept.geojson", geojson(place, {{"e", "Polygon", "[" + ring + "]"}, {"f", "Point", at(place, 220, 90)}}));
     const Bytes result = same_in_all(folder.path() / "study.toml");
     CHECK(result.at("tables/review.csv").find("terrain-edited") != std::string::npos);
+    CHECK(result.at("own_paths.geojson").find("LineString") != std::string::npos);
 }
 
 TEST_CASE("whole results are the same bytes for the demo") {
