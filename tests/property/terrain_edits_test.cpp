@@ -6,7 +6,7 @@
 #include <set>
 
 #include "reference/random_edits.hpp"
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
 
 namespace rillclock {

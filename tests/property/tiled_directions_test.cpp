@@ -6,7 +6,7 @@
 #include "reference/kept_terrains.hpp"
 #include "reference/limit_terrains.hpp"
 #include "reference/shrinking.hpp"
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 namespace rillclock {
 namespace {

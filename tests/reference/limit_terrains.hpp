@@ -2,7 +2,7 @@
 
 #include <array>
 
-#include "rillclock/terrain/descent.hpp"
+#include "reference/plain/steepest_descent.hpp"
 
 /// Terrains at the limits of what may come.
 namespace rillclock::limits {

@@ -6,7 +6,7 @@
 #include <utility>
 #include <vector>
 
-#include "rillclock/terrain/descent.hpp"
+#include "reference/plain/steepest_descent.hpp"
 
 /// Makes a terrain that fails a law as small as it will go, and draws it, so that it can be understood and kept.
 namespace rillclock::shrinking {

@@ -6,8 +6,8 @@
 #include <utility>
 #include <vector>
 
-#include "rillclock/terrain/flow_directions.hpp"
-#include "rillclock/travel/travel_field.hpp"
+#include "reference/plain/flow_directions.hpp"
+#include "reference/plain/travel_field.hpp"
 
 /// Terrain worked through from elevations to travel times, for tests.
 namespace rillclock::worked {

@@ -3,7 +3,7 @@
 #include <vector>
 
 #include "rillclock/core/quantity.hpp"
-#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/forest/flow_code.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/flow_lines.hpp"
 

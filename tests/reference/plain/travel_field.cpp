@@ -1,7 +1,7 @@
-#include "rillclock/travel/travel_field.hpp"
+#include "reference/plain/travel_field.hpp"
 
 #include "ground_kind.hpp"
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 namespace rillclock {
 namespace {

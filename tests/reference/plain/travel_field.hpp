@@ -2,7 +2,7 @@
 
 #include <span>
 
-#include "rillclock/forest/sweep.hpp"
+#include "reference/plain/sweeps.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/travel/step.hpp"
 
