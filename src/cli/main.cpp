@@ -83,8 +83,11 @@ int check_command(const CommandLine& line) {
     for (const std::string& fact : report.facts) std::cout << fact << '\n';
     show_notices(report.notices, "");
     for (const std::string& problem : report.problems) spdlog::error("would stop the run: {}", problem);
-    if (report.problems.empty()) std::cout << "Nothing was found that would stop the run.\n";
-    return report.problems.empty() ? 0 : status_inputs;
+    for (const std::string& lack : report.lacking) spdlog::error("would stop the run here: {}", lack);
+    if (!report.problems.empty()) return status_inputs;
+    if (!report.lacking.empty()) return status_machine;
+    std::cout << "Nothing was found that would stop the run.\n";
+    return 0;
 }
 
 int demo_command(const CommandLine& line) {

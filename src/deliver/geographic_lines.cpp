@@ -78,6 +78,26 @@ Json GeographicLines::geometry(const std::vector<Place>& line) {
     return {{"type", "MultiLineString"}, {"coordinates", all}};
 }
 
+Json GeographicLines::area(const std::vector<Polygon>& polygons) {
+    Json all = Json::array();
+    for (const Polygon& polygon : polygons) {
+        Json rings = Json::array();
+        for (const std::vector<Place>& ring : polygon.rings) {
+            const Line places = geographic(ring);
+            if (cut_at_meridian(places).size() > 1) return nullptr;
+            rings.push_back(coordinates(places));
+        }
+        all.push_back(std::move(rings));
+    }
+    if (all.size() == 1) return {{"type", "Polygon"}, {"coordinates", all.front()}};
+    return {{"type", "MultiPolygon"}, {"coordinates", std::move(all)}};
+}
+
+Json GeographicLines::point(const Place& place) {
+    const Place degrees = geographic({place}).front();
+    return {{"type", "Point"}, {"coordinates", {degrees.x, degrees.y}}};
+}
+
 Json GeographicLines::bbox() const { return Json::array({low_.x, low_.y, high_.x, high_.y}); }
 
 }  // namespace rillclock

@@ -5,6 +5,7 @@
 
 #include "rillclock/core/notice.hpp"
 #include "rillclock/io/reference_system.hpp"
+#include "rillclock/raster/grid_shapes.hpp"
 
 namespace rillclock {
 
@@ -12,14 +13,17 @@ namespace rillclock {
 /// lines that step from cell centre to cell centre.
 [[nodiscard]] std::vector<Place> without_collinear(const std::vector<Place>& line);
 
-/// Makes GeoJSON geometries of lines in one reference system, and keeps the box around all of them.
+/// Makes GeoJSON geometries of lines and polygons in one reference system, and keeps the box around all of them.
 class GeographicLines {
 public:
     explicit GeographicLines(const ReferenceSystem& system) : to_wgs84_(Transformation::to_wgs84(system)) {}
 
     /// A LineString, or a MultiLineString where the line crosses the 180th meridian.
     [[nodiscard]] nlohmann::ordered_json geometry(const std::vector<Place>& line);
-    /// [west, south, east, north] of all lines so far.
+    /// A Polygon, or a MultiPolygon of several; null where a ring crosses the 180th meridian. Rings must be closed.
+    [[nodiscard]] nlohmann::ordered_json area(const std::vector<Polygon>& polygons);
+    [[nodiscard]] nlohmann::ordered_json point(const Place& place);
+    /// [west, south, east, north] of all shapes so far.
     [[nodiscard]] nlohmann::ordered_json bbox() const;
 
 private:

@@ -1,5 +1,6 @@
 #include "rillclock/deliver/paths_geojson.hpp"
 
+#include "feature_collection.hpp"
 #include "geographic_lines.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "segment_rows.hpp"
@@ -9,8 +10,6 @@ namespace {
 
 using Json = nlohmann::ordered_json;
 
-/// Rounded to so many significant digits, as a number.
-double rounded(double value, int digits = 6) { return std::stod(significant(value, digits)); }
 double to_decimals(double value, int decimals) { return std::stod(fixed_decimals(value, decimals)); }
 
 Json segment_properties(const StudyResult& result, const SegmentRow& row) {
@@ -33,10 +32,6 @@ Json path_properties(const Outlet& outlet, const PointPath& path) {
             {"length_m", rounded(from_fixed(path.summary.length))},
             {"fall_m", rounded(path.summary.fall_m)},
             {"time_min", to_decimals(path.seconds / 60.0, 4)}};
-}
-
-Json feature(Json geometry, Json properties) {
-    return {{"type", "Feature"}, {"properties", std::move(properties)}, {"geometry", std::move(geometry)}};
 }
 
 /// A place alone is no line: a path of one cell has a feature without geometry.
@@ -65,15 +60,7 @@ std::string paths_geojson(const StudyResult& result, PathKind kind) {
         if (kind == PathKind::governing) add_segments(result, outlet, lines, features);
         if (kind == PathKind::longest) add_path(result, outlet, lines, features);
     }
-    Json collection = {{"type", "FeatureCollection"}};
-    const bool has_lines = std::any_of(features.begin(), features.end(), [](const Json& f) { return !f["geometry"].is_null(); });
-    if (has_lines) collection["bbox"] = lines.bbox();
-    // One feature a line: legible, and small differences stay small in a comparison of two results.
-    std::string text = collection.dump();
-    text.pop_back();
-    text += ",\"features\":[\n";
-    for (std::size_t i = 0; i < features.size(); ++i) text += features[i].dump() + (i + 1 < features.size() ? ",\n" : "\n");
-    return text + "]}\n";
+    return collection_text(features, lines);
 }
 
 }  // namespace rillclock

@@ -52,13 +52,15 @@ Json data_json(const StudyResult& result) {
             {"soil_groups", soils}};
 }
 
-Json terrain_parameters(const TravelRules& rules) {
+Json terrain_parameters(const StudyResult& result) {
+    const TravelRules& rules = result.rules;
     return {{"slope_window_m", in_metres(rules.slope.window)},
             {"vertical_step_m", in_metres(rules.slope.vertical_step)},
             {"slope_floor_overland", rules.slope.overland_floor},
             {"slope_floor_channel", rules.slope.channel_floor},
             {"pond_depth_m", in_metres(rules.pond.depth)},
-            {"pond_speed_m_per_s", number(in_metres_per_second(rules.pond.speed), 6)}};
+            {"pond_speed_m_per_s", number(in_metres_per_second(rules.pond.speed), 6)},
+            {"departure_m", in_metres(result.resolved.departure)}};
 }
 
 Json sheet_parameters(const StudyResult& result) {
@@ -171,7 +173,7 @@ Json soil_parameters(const SurfaceStudy& surface) {
 }
 
 Json parameters_json(const StudyResult& result) {
-    Json json = {{"terrain", terrain_parameters(result.rules)},
+    Json json = {{"terrain", terrain_parameters(result)},
             {"sheet", sheet_parameters(result)},
             {"shallow", shallow_words(result.study.timing.shallow)},
             {"channel", channel_parameters(result)},

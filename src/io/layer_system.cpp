@@ -6,6 +6,19 @@
 
 namespace rillclock {
 
+OGRLayer* layer_of(GDALDataset& file, const std::optional<std::string>& asked, const std::string& called, const std::string& say) {
+    std::string names;
+    for (int i = 0; i < file.GetLayerCount(); ++i) names += (i == 0 ? "" : ", ") + std::string(file.GetLayer(i)->GetName());
+    if (asked) {
+        OGRLayer* layer = file.GetLayerByName(asked->c_str());
+        if (layer == nullptr) throw input_error("The " + called + " has no layer \"" + *asked + "\"; it has " + names + ".");
+        return layer;
+    }
+    if (file.GetLayerCount() == 1) return file.GetLayer(0);
+    throw input_error("The " + called + " has several layers: " + names + "; say which is meant, for example " + say + " = \"" +
+                      file.GetLayer(0)->GetName() + "\".");
+}
+
 ReferenceSystem system_of_layer(OGRLayer& layer, const std::string& called, const std::filesystem::path& path) {
     const OGRSpatialReference* system = layer.GetSpatialRef();
     char* text = nullptr;

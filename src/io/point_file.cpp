@@ -33,7 +33,7 @@ public:
         const GdalMark before = session_.mark();
         check_local_file(path_, called());
         open(before);
-        choose_layer();
+        layer_ = layer_of(*dataset_, options_.layer, called(), "layer");
         choose_field();
         Transformation to_target(system(), target_);
         while (const OGRFeatureUniquePtr feature{layer_->GetNextFeature()}) add(*feature, to_target);
@@ -55,28 +55,6 @@ private:
         const std::string reason = session_.failure_since(before);
         throw input_error("The " + called() + " cannot be read as points; " + seeming_kind(path_) +
                           (reason.empty() ? "." : " (" + reason + ")."));
-    }
-
-    [[nodiscard]] std::string layer_list() const {
-        std::string list;
-        for (int i = 0; i < dataset_->GetLayerCount(); ++i)
-            list += (i == 0 ? "" : ", ") + std::string(dataset_->GetLayer(i)->GetName());
-        return list;
-    }
-
-    void choose_layer() {
-        if (options_.layer) {
-            layer_ = dataset_->GetLayerByName(options_.layer->c_str());
-            if (!layer_)
-                throw input_error("The " + called() + " has no layer \"" + *options_.layer + "\"; it has " +
-                                  layer_list() + ".");
-            return;
-        }
-        if (dataset_->GetLayerCount() > 1)
-            throw input_error("The " + called() + " has several layers: " + layer_list() +
-                              "; say which holds the points, for example layer = \"" +
-                              dataset_->GetLayer(0)->GetName() + "\".");
-        layer_ = dataset_->GetLayer(0);
     }
 
     [[nodiscard]] std::string field_list() const {

@@ -29,9 +29,8 @@ struct Taken {
 
 class ShapeReader {
 public:
-    ShapeReader(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target,
-                std::span<const std::string> fields)
-        : path_(path), called_("file of " + role + " " + path.string()), kinds_(kinds), target_(target), fields_(fields) {}
+    ShapeReader(const std::filesystem::path& path, const ShapeWish& wish, const ReferenceSystem& target)
+        : path_(path), called_("file of " + wish.role + " " + path.string()), wish_(wish), target_(target) {}
 
     ShapeFile read() {
         const GdalMark before = session_.mark();
@@ -54,13 +53,10 @@ private:
             throw input_error("The " + called_ + " cannot be read as " + wanted() + "; " + seeming_kind(path_) +
                               (reason.empty() ? "." : " (" + reason + ")."));
         }
-        layer_ = dataset_->GetLayer(0);
-        if (dataset_->GetLayerCount() == 1) return;
-        throw input_error("The " + called_ + " has several layers; copy the one that is meant to a file of its own: ogr2ogr " +
-                          path_.stem().string() + "-one.gpkg " + path_.string() + " " + layer_->GetName() + ".");
+        layer_ = layer_of(*dataset_, wish_.layer, called_, wish_.layer_key);
     }
 
-    [[nodiscard]] std::string wanted() const { return kinds_ == ShapeKinds::lines ? "lines" : "points and polygons"; }
+    [[nodiscard]] std::string wanted() const { return wish_.kinds == ShapeKinds::lines ? "lines" : "points and polygons"; }
 
     [[nodiscard]] ReferenceSystem system() const {
         return system_of_layer(*layer_, called_, path_);
@@ -87,7 +83,7 @@ private:
 
     void check_fields() const {
         const OGRFeatureDefn& definition = *layer_->GetLayerDefn();
-        for (const std::string& field : fields_) {
+        for (const std::string& field : wish_.fields) {
             const int place = definition.GetFieldIndex(field.c_str());
             if (place < 0) continue;
             const OGRFieldType type = definition.GetFieldDefn(place)->GetType();
@@ -98,7 +94,7 @@ private:
 
     [[nodiscard]] std::vector<std::optional<double>> numbers_of(const OGRFeature& feature) const {
         std::vector<std::optional<double>> numbers;
-        for (const std::string& field : fields_) {
+        for (const std::string& field : wish_.fields) {
             const int place = feature.GetFieldIndex(field.c_str());
             const bool is_there = place >= 0 && feature.IsFieldSetAndNotNull(place);
             numbers.push_back(is_there ? std::optional(feature.GetFieldAsDouble(place)) : std::nullopt);
@@ -108,7 +104,7 @@ private:
 
     void take(const OGRGeometry& geometry, Transformation& to_target, Taken& taken) const {
         const OGRwkbGeometryType type = wkbFlatten(geometry.getGeometryType());
-        const bool lines = kinds_ == ShapeKinds::lines;
+        const bool lines = wish_.kinds == ShapeKinds::lines;
         if (OGR_GT_IsSubClassOf(type, wkbGeometryCollection)) {
             for (const OGRGeometry* part : *geometry.toGeometryCollection()) take(*part, to_target, taken);
         } else if (lines && type == wkbLineString) {
@@ -154,9 +150,8 @@ private:
     GdalSession session_;
     std::filesystem::path path_;
     std::string called_;
-    ShapeKinds kinds_;
+    const ShapeWish& wish_;
     const ReferenceSystem& target_;
-    std::span<const std::string> fields_;
     GDALDatasetUniquePtr dataset_;
     OGRLayer* layer_ = nullptr;
     std::int64_t number_ = 0;
@@ -165,9 +160,8 @@ private:
 
 }  // namespace
 
-ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target,
-                      std::span<const std::string> fields) {
-    return ShapeReader(path, role, kinds, target, fields).read();
+ShapeFile read_shapes(const std::filesystem::path& path, const ShapeWish& wish, const ReferenceSystem& target) {
+    return ShapeReader(path, wish, target).read();
 }
 
 }  // namespace rillclock

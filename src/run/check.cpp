@@ -24,10 +24,6 @@ namespace {
 /// Bytes a cell of the six rasters before compression, overviews included.
 constexpr double disk_bytes_per_cell = 31.0;
 
-std::string size_text(double bytes) {
-    return bytes < 1e9 ? significant(bytes / 1e6, 3) + " MB" : significant(bytes / 1e9, 3) + " GB";
-}
-
 /// "2, 10, 100 years; rasters, paths and segments are for 10".
 std::string storms_text(const StudyRain& rain) {
     std::vector<double> periods;
@@ -163,14 +159,12 @@ private:
     }
 
     void costs() {
-        const auto cells = static_cast<double>(terrain_->grid().size());
-        report_.facts.push_back("cost: about " + size_text(memory_of(cells)) + " of memory, and at most " +
-                                size_text(cells * disk_bytes_per_cell) + " of disk for the result");
-    }
-
-    [[nodiscard]] double memory_of(double cells) const {
-        const bool wide = width_of(terrain_->format.stored) == ElevationStore::Width::eight_bytes;
-        return memory_need(cells, wide, study_.surface.soil.file.has_value());
+        const MemoryTask task = memory_task(study_, *terrain_);
+        const MemoryLimit limit = usable_memory();
+        report_.facts.push_back("cost: about " + bytes_text(memory_need(task)) + " of memory (" + limit.set_by + " allows " +
+                                bytes_text(limit.bytes) + "), and at most " +
+                                bytes_text(static_cast<double>(task.cells) * disk_bytes_per_cell) + " of disk for the result");
+        if (const auto lack = lack_of_memory(task, limit)) report_.lacking.push_back(*lack);
     }
 
     void output() {

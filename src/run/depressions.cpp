@@ -1,20 +1,36 @@
 #include "depressions.hpp"
 
 #include "rillclock/core/number_text.hpp"
+#include "rillclock/raster/cell_outlines.hpp"
 
 namespace rillclock {
 namespace {
 
 constexpr std::size_t most_rows = 10'000;
+constexpr std::size_t most_outlines = 1'000;
+
+DepressionGround depression_ground(const TiledTravel& travel) {
+    const TiledGround& ground = travel.ground();
+    return {.elevations = ground.elevations, .spill = travel.spill(), .codes = ground.forest.codes(), .ground = ground.ground};
+}
 
 }  // namespace
 
 Depressions depressions_of(const TiledTravel& travel, const std::vector<Outlet>& outlets) {
     std::vector<Cell> paths;
     for (const Outlet& outlet : outlets) paths.insert(paths.end(), outlet.governing.cells.begin(), outlet.governing.cells.end());
-    const TiledGround& ground = travel.ground();
-    return find_depressions({.elevations = ground.elevations, .spill = travel.spill(), .codes = ground.forest.codes(), .ground = ground.ground},
-                            paths, most_rows);
+    return find_depressions(depression_ground(travel), paths, most_rows);
+}
+
+std::vector<OutlinedDepression> outlined(const TiledTravel& travel, const Grid& grid, const std::vector<Depression>& deepest_first) {
+    DepressionCells cells(depression_ground(travel));
+    std::vector<OutlinedDepression> found;
+    for (std::size_t i = 0; i < deepest_first.size(); ++i) {
+        const Depression& depression = deepest_first[i];
+        if (i >= most_outlines && !depression.on_path) continue;
+        found.push_back({.number = i + 1, .depression = depression, .outline = cell_outlines(cells.of(depression), grid)});
+    }
+    return found;
 }
 
 Notices notices_of(const Depressions& depressions, double metres_per_elevation_unit) {

@@ -17,27 +17,28 @@ public:
 
     MappedShapes read() {
         const TerrainStudy& terrain = study_.terrain;
-        if (terrain.channels) read_channels(*terrain.channels);
-        if (terrain.crossings) read_lines("crossings", *terrain.crossings, mapped_.shapes.crossings);
-        if (terrain.barriers) read_lines("barriers", *terrain.barriers, mapped_.shapes.barriers);
-        if (terrain.keep_water) read_waters(*terrain.keep_water);
+        if (terrain.channels.file) read_channels(terrain.channels);
+        if (terrain.crossings.file) read_lines("crossings", terrain.crossings, mapped_.shapes.crossings);
+        if (terrain.barriers.file) read_lines("barriers", terrain.barriers, mapped_.shapes.barriers);
+        if (terrain.keep_water.file) read_waters(terrain.keep_water);
         return std::move(mapped_);
     }
 
 private:
-    void read_channels(const std::string& name) {
-        const ShapeFile file = read_lines("channels", name, mapped_.shapes.channels, channel_fields());
+    void read_channels(const MappedLayer& from) {
+        const ShapeFile file = read_lines("channels", from, mapped_.shapes.channels, channel_fields());
         std::size_t stated = 0;
         for (std::size_t i = 0; i < file.numbers.size(); ++i) {
-            const std::string subject = "feature " + std::to_string(file.feature_of_line[i]) + " of the channels '" + name + "'";
+            const std::string subject = "feature " + std::to_string(file.feature_of_line[i]) + " of the channels '" + *from.file + "'";
             mapped_.sections.push_back(section_of(file.numbers[i], study_.timing.channel.n, subject));
             if (mapped_.sections.back()) ++stated;
         }
         if (stated > 0) mapped_.facts.push_back("channels: " + std::to_string(stated) + " of " + std::to_string(file.numbers.size()) + " lines state n or a section");
     }
 
-    ShapeFile read_lines(const std::string& role, const std::string& name, std::vector<Line>& lines, std::span<const std::string> fields = {}) {
-        ShapeFile file = read_shapes(located(study_, name), role, ShapeKinds::lines, system_, fields);
+    ShapeFile read_lines(const std::string& role, const MappedLayer& from, std::vector<Line>& lines, std::span<const std::string> fields = {}) {
+        const std::string& name = *from.file;
+        ShapeFile file = read_shapes(located(study_, name), {role, ShapeKinds::lines, from.layer, role + "_layer", fields}, system_);
         const auto inside = std::count_if(file.lines.begin(), file.lines.end(), [&](const Line& line) {
             return !cells_crossed(line, grid_).empty();
         });
@@ -46,8 +47,10 @@ private:
         return file;
     }
 
-    void read_waters(const std::string& name) {
-        ShapeFile file = read_shapes(located(study_, name), "kept water", ShapeKinds::points_and_polygons, system_);
+    void read_waters(const MappedLayer& from) {
+        const std::string& name = *from.file;
+        ShapeFile file = read_shapes(located(study_, name), {"kept water", ShapeKinds::points_and_polygons, from.layer, "keep_water_layer", {}},
+                                     system_);
         const auto points = std::count_if(file.points.begin(), file.points.end(), [&](const Place& place) { return grid_.at(place).has_value(); });
         const auto areas = std::count_if(file.polygons.begin(), file.polygons.end(), [&](const Polygon& polygon) {
             return !cells_within(polygon, grid_).empty();
@@ -109,11 +112,36 @@ void tell_all(const TerrainEdits& edits, const EditedFlow& flow, double cut_m, T
                terrain.grid, notices);
 }
 
+constexpr std::size_t most_own_ways = 1'000;
+constexpr std::size_t most_told = 20;
+
+/// The own ways of lines' water that depart far, the farthest first, each of the first twenty with a notice.
+std::vector<OwnWay> departing_ways(const FlowLines& lines, const BothFlows& flows, Length than, TerrainData& terrain) {
+    std::vector<OwnWay> ways = own_ways(lines, flows, than);
+    const std::size_t all = ways.size();
+    if (all > most_own_ways) ways.resize(most_own_ways);
+    const auto tell = [&](const std::string& text, Length value, std::optional<Place> place) {
+        terrain.notices.push_back({.code = "departs-from-ground", .text = text, .value = in_metres(value), .threshold = in_metres(than), .place = place});
+    };
+    for (std::size_t i = 0; i < std::min(ways.size(), most_told); ++i) {
+        tell("by the ground alone the water of the mapped line here would get " + significant(in_metres(ways[i].departure), 3) +
+                 " m away from the way that the line leads it" +
+                 (ways[i].comes_back ? "" : ", and not come back") + "; see own_paths.geojson",
+             ways[i].departure, terrain.grid.centre(ways[i].start));
+    }
+    if (all > most_told) {
+        tell(std::to_string(all - most_told) + " more stretches of mapped lines lead the water elsewhere than the ground would; own_paths.geojson holds the " +
+                 std::to_string(ways.size()) + " that depart farthest",
+             ways[most_told].departure, std::nullopt);
+    }
+    return ways;
+}
+
 }  // namespace
 
 std::vector<MappedFile> mapped_files(const Study& study) {
-    return {{"channels", study.terrain.channels}, {"crossings", study.terrain.crossings},
-            {"barriers", study.terrain.barriers}, {"keep_water", study.terrain.keep_water}};
+    return {{"channels", study.terrain.channels.file}, {"crossings", study.terrain.crossings.file},
+            {"barriers", study.terrain.barriers.file}, {"keep_water", study.terrain.keep_water.file}};
 }
 
 MappedShapes read_mapped_shapes(const Study& study, const Grid& grid, const ReferenceSystem& system) {
@@ -151,12 +179,16 @@ MappedFlow mapped_flow(const Study& study, const ResolvedStudy& resolved, Terrai
     const double metres_per_unit = terrain.format.metres_per_stored_unit();
     const MappedShapes mapped = read_mapped_shapes(study, terrain.grid, terrain.system);
     const TerrainEdits edits = place_edits(mapped.shapes, terrain.grid, terrain.elevations, in_metres(resolved.vertical_step) / metres_per_unit);
+    const Raster<FlowCode> own = edits.lines.size() > 0 ? find_codes(terrain.elevations) : Raster<FlowCode>();
     EditedFlow flow = edited_flow(terrain.elevations, edits, find_codes);
     const double cut = lower_to_beds(terrain.elevations, edits.lines);
     terrain.notices.insert(terrain.notices.end(), mapped.notices.begin(), mapped.notices.end());
     tell_all(edits, flow, cut * metres_per_unit, terrain);
-    MappedFlow mapped_flow{.codes = std::move(flow.codes), .line_cells = edits.lines.cells(), .sections = {}, .reaches = {}};
+    MappedFlow mapped_flow{.codes = std::move(flow.codes), .line_cells = edits.lines.cells(), .sections = {}, .reaches = {}, .own_ways = {}};
     place_sections(mapped, edits.lines, terrain.grid, mapped_flow);
+    if (edits.lines.size() > 0) {
+        mapped_flow.own_ways = departing_ways(edits.lines, {.led = mapped_flow.codes, .own = own, .ground = terrain.ground}, resolved.departure, terrain);
+    }
     return mapped_flow;
 }
 

@@ -1,5 +1,6 @@
 #pragma once
 
+#include "rillclock/terrain/own_ways.hpp"
 #include "rillclock/terrain/terrain_edits.hpp"
 #include "rillclock/travel/channel_reach.hpp"
 #include "study_data.hpp"
@@ -30,6 +31,7 @@ struct MappedFlow {
     std::vector<Cell> line_cells;   ///< of channels and crossings: channel flow, whatever drains to them
     std::vector<MappedSection> sections;   ///< that channels state
     ChannelReaches reaches;         ///< of the cells of those channels; where several pass a cell, of the one that the flow follows from there
+    std::vector<OwnWay> own_ways;   ///< where their water would go by the ground alone: the 1 000 that depart farthest, beyond the stated length
 };
 
 /// Finds the flow. Afterwards the elevations of lines are their beds, and the terrain's notices say what the edits came to.

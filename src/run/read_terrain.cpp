@@ -54,6 +54,18 @@ ElevationFile open_elevation_of(const Study& study) {
     return open_elevation(located(study, study.terrain.elevation), options);
 }
 
+MemoryTask memory_task(const Study& study, const ElevationFile& elevations) {
+    return {.cells = elevations.grid().size(),
+            .wide_elevations = width_of(elevations.format.stored) == ElevationStore::Width::eight_bytes,
+            .soil_raster = study.surface.soil.file.has_value(),
+            .own_storms = study.timing.is_kinematic()};
+}
+
+void require_memory(const Study& study) {
+    const auto lack = lack_of_memory(memory_task(study, open_elevation_of(study)), usable_memory());
+    if (lack) throw machine_error(*lack);
+}
+
 TerrainData read_terrain(const Study& study, const Executor& executor, const Progress& progress) {
     ElevationFile file = open_elevation_of(study);
     TerrainData data{.grid = file.grid(), .system = file.system, .format = file.format,

@@ -11,6 +11,7 @@
 #include "rillclock/deliver/calculation_sheet.hpp"
 #include "rillclock/deliver/depressions_table.hpp"
 #include "rillclock/deliver/headlines.hpp"
+#include "rillclock/deliver/own_ways_geojson.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
 #include "rillclock/deliver/result_json.hpp"
 #include "rillclock/deliver/tables.hpp"
@@ -110,6 +111,7 @@ constexpr std::size_t most_overview_rows = 20;
 RunOutcome run(const Study& study, const RunOptions& options, const Progress& progress) {
     check_study(study);
     const GdalSession session;
+    require_memory(study);
     ResultFolder folder(located(study, study.output.folder), options.replace ? Existing::replace : Existing::refuse);
     const Executor executor(options.threads);
     // Checksums are made while the work goes on; nothing else is left to do on one processor alone.
@@ -176,6 +178,8 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const std::string json = result_json(result);
     write_texts(result, json, folder);
     folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
+    if (!flow.line_cells.empty()) folder.write_text("own_paths.geojson", own_ways_geojson(result, flow.own_ways));
+    folder.write_text("depressions.geojson", depressions_geojson(result, outlined(travel, terrain.grid, depressions.deepest_first)));
     folder.commit();
     return {.folder = folder.target(), .facts = facts_of(rain), .headlines = headlines(result),
             .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = json};

@@ -8,6 +8,7 @@
 #include "rillclock/deliver/study_result.hpp"
 #include "rillclock/io/elevation_file.hpp"
 #include "rillclock/raster/ground.hpp"
+#include "rillclock/run/memory_need.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
 #include "rillclock/study/study.hpp"
 #include "rillclock/study/study_network.hpp"
@@ -44,6 +45,10 @@ struct SurfaceData {
 [[nodiscard]] ElevationFile open_elevation_of(const Study& study);
 /// How elevations of a stored type are kept: four bytes a cell hold every value of most types exactly.
 [[nodiscard]] ElevationStore::Width width_of(StoredType type);
+/// What the memory of the study's run depends on.
+[[nodiscard]] MemoryTask memory_task(const Study& study, const ElevationFile& elevations);
+/// Throws a machine error with numbers where there is less memory than the run needs; reads no more than the header of the elevations.
+void require_memory(const Study& study);
 [[nodiscard]] TerrainData read_terrain(const Study& study, const Executor& executor, const Progress& progress);
 [[nodiscard]] CoverBook read_book(const Study& study);
 [[nodiscard]] SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress);

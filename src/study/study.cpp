@@ -1,7 +1,9 @@
 #include "rillclock/study/study.hpp"
 
 #include <algorithm>
+#include <array>
 #include <filesystem>
+#include <utility>
 
 #include "rillclock/core/error.hpp"
 #include "rillclock/hydraulics/channel_size.hpp"
@@ -69,6 +71,17 @@ void refuse_contradictory_points(const Study& study) {
         throw input_error(name_of(study) +
                           " says how to read or move points but gives no file of them; add file = "
                           "\"points.gpkg\" under [points], or leave out name, layer and move_within");
+}
+
+void refuse_layers_without_file(const Study& study) {
+    const TerrainStudy& terrain = study.terrain;
+    const std::array mapped = {std::pair("channels", &terrain.channels), std::pair("crossings", &terrain.crossings),
+                               std::pair("barriers", &terrain.barriers), std::pair("keep_water", &terrain.keep_water)};
+    for (const auto& [name, layer] : mapped) {
+        if (layer->file || !layer->layer) continue;
+        throw input_error(name_of(study) + " names a layer of " + name + " but no file; add " + name +
+                          " = \"mapped.gpkg\" under [terrain], or leave out " + name + "_layer");
+    }
 }
 
 void refuse_contradictory_rain(const Study& study) {
@@ -166,6 +179,7 @@ const ChannelSize* ChannelStudy::published_size() const {
 void check_study(const Study& study) {
     require_inputs(study);
     refuse_contradictory_soil(study);
+    refuse_layers_without_file(study);
     refuse_contradictory_points(study);
     refuse_contradictory_channel(study);
     refuse_contradictory_rain(study);
@@ -184,6 +198,7 @@ ResolvedStudy resolve(const Study& study, const DataFacts& facts) {
     return {.slope_window = terrain.slope_window.value_or(std::max(metres(20), 3.0 * cell)),
             .vertical_step = step,
             .pond_depth = terrain.pond_depth.value_or(std::max(metres(0.3), step)),
+            .departure = terrain.departure.value_or(std::max(metres(20), 5.0 * cell)),
             .move_within = study.points.move_within.value_or(std::max(metres(5), cell)),
             .shortest_segment = study.timing.shortest_segment.value_or(std::max(metres(50), 5.0 * cell)),
             .auto_area = study.points.auto_area.value_or(0.01),

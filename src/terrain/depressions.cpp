@@ -10,6 +10,22 @@ bool lies_deeper(const Depression& a, const Depression& b) {
     return std::tie(b.depth, a.deepest) < std::tie(a.depth, b.deepest);
 }
 
+/// A void has NaN for both, and no comparison with it holds.
+bool is_below_spill(const DepressionGround& in, Cell cell) { return in.spill[cell] > in.elevations[cell]; }
+
+/// Puts the cells beside one that belong to a depression that spills at `level`, and were not seen, behind the others.
+void push_beside(const DepressionGround& in, Cell cell, double level, std::vector<bool>& seen, std::vector<Cell>& queue) {
+    const Raster<FlowCode>& codes = in.codes;
+    for (const Direction d : all_directions) {
+        const RowColumn at = neighbour({cell / codes.columns(), cell % codes.columns()}, d);
+        if (at.row < 0 || at.row >= codes.rows() || at.column < 0 || at.column >= codes.columns()) continue;
+        const auto beside = static_cast<Cell>(at.row * codes.columns() + at.column);
+        if (seen[beside] || !is_below_spill(in, beside) || in.spill[beside] < level || in.spill[beside] > level) continue;
+        seen[beside] = true;
+        queue.push_back(beside);
+    }
+}
+
 class Search {
 public:
     Search(const DepressionGround& in, const std::vector<Cell>& paths, std::size_t most)
@@ -20,7 +36,7 @@ public:
     Depressions find() {
         for (std::size_t i = 0; i < seen_.size(); ++i) {
             const auto cell = static_cast<Cell>(i);
-            if (seen_[i] || !is_below_spill(cell)) continue;
+            if (seen_[i] || !is_below_spill(in_, cell)) continue;
             found_.push_back(depression_around(cell));
             ++count_;
             if (found_.size() >= 2 * most_ + 1000) keep_deepest();
@@ -32,9 +48,6 @@ public:
     }
 
 private:
-    /// A void has NaN for both, and no comparison with it holds.
-    [[nodiscard]] bool is_below_spill(Cell cell) const { return in_.spill[cell] > in_.elevations[cell]; }
-
     Depression depression_around(Cell first) {
         const double level = in_.spill[first];
         Depression depression;
@@ -42,7 +55,7 @@ private:
         seen_[first] = true;
         for (std::size_t next = 0; next < queue_.size(); ++next) {
             add(queue_[next], level, depression);
-            push_beside(queue_[next], level);
+            push_beside(in_, queue_[next], level, seen_, queue_);
         }
         depression.pass = pass_of(depression.deepest, level);
         return depression;
@@ -60,20 +73,8 @@ private:
         depression.on_path = depression.on_path || on_path_[cell];
     }
 
-    void push_beside(Cell cell, double level) {
-        const Raster<FlowCode>& codes = in_.codes;
-        for (const Direction d : all_directions) {
-            const RowColumn at = neighbour({cell / codes.columns(), cell % codes.columns()}, d);
-            if (at.row < 0 || at.row >= codes.rows() || at.column < 0 || at.column >= codes.columns()) continue;
-            const auto beside = static_cast<Cell>(at.row * codes.columns() + at.column);
-            if (seen_[beside] || !is_below_spill(beside) || in_.spill[beside] < level || in_.spill[beside] > level) continue;
-            seen_[beside] = true;
-            queue_.push_back(beside);
-        }
-    }
-
     [[nodiscard]] Cell pass_of(Cell cell, double level) const {
-        while (is_below_spill(cell) && !(in_.spill[cell] < level)) {
+        while (is_below_spill(in_, cell) && !(in_.spill[cell] < level)) {
             const auto d = static_cast<Direction>(in_.codes[cell]);
             cell = neighbour(cell, d, in_.codes.columns());
         }
@@ -96,6 +97,18 @@ private:
 };
 
 }  // namespace
+
+DepressionCells::DepressionCells(const DepressionGround& ground)
+    : ground_(ground), seen_(static_cast<std::size_t>(ground.codes.size())) {}
+
+std::vector<Cell> DepressionCells::of(const Depression& depression) {
+    std::vector<Cell> cells{depression.deepest};
+    seen_[depression.deepest] = true;
+    const double level = ground_.spill[depression.deepest];
+    for (std::size_t next = 0; next < cells.size(); ++next) push_beside(ground_, cells[next], level, seen_, cells);
+    for (const Cell cell : cells) seen_[cell] = false;
+    return cells;
+}
 
 Depressions find_depressions(const DepressionGround& ground, const std::vector<Cell>& paths, std::size_t most) {
     return Search(ground, paths, most).find();

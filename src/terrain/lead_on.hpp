@@ -2,7 +2,7 @@
 
 #include <vector>
 
-#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/forest/flow_code.hpp"
 #include "rillclock/terrain/descent.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
 #include "rillclock/terrain/flow_lines.hpp"

@@ -1,7 +1,7 @@
 #pragma once
 
 #include "bench/terrain_generator.hpp"
-#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/forest/flow_code.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
 

@@ -2,7 +2,7 @@
 
 #include <cstdint>
 
-#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/forest/flow_code.hpp"
 
 namespace rillclock::bench {
 

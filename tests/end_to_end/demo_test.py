@@ -19,7 +19,7 @@ from support import COMMAND, CommandTest, VERIFY, system_of, table
 DEMO_POINTS = ["Spring_wood_ford", "Mill_pond_outlet", "Side_valley_mouth", "Market_footbridge", "Tramway_bank", "Mill_bridge", "Weir",
                "School_inlet", "Market_inlet", "Orchard_inlet", "Mill_Lane_inlet"]
 RESULT_FILES = {
-    "governing_paths.geojson", "longest_paths.geojson", "result.json", "tables/outlets.csv", "tables/segments.csv",
+    "governing_paths.geojson", "longest_paths.geojson", "depressions.geojson", "result.json", "tables/outlets.csv", "tables/segments.csv",
     "tables/methods.csv", "tables/review.csv", "tables/subareas.csv", "tables/handover.csv", "tables/depressions.csv", "tables/land.csv",
     "rasters/travel_time.tif", "rasters/flow_azimuth.tif", "rasters/contributing_area.tif",
     "rasters/catchment.tif", "rasters/catchment.tif.aux.xml", "rasters/regime.tif", "rasters/regime.tif.aux.xml",

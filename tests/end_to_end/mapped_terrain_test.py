@@ -1,4 +1,5 @@
 """Channels, crossings, barriers and kept water that a study maps beside its elevations."""
+import json
 import unittest
 
 import numpy as np
@@ -105,6 +106,63 @@ class MappedTerrain(CommandTest):
         self.assertTrue(all(azimuth[row, 9] not in (45, 90, 135) for row in range(15, 26)))
         self.assertEqual(azimuth[3, 40], NOWHERE)
         self.assertTrue(np.all(azimuth[20:22, 19:21] == NOWHERE))
+
+    def features(self, name):
+        return json.loads((self.folder / "result" / name).read_text(encoding="utf-8"))["features"]
+
+    def test_the_way_of_the_ground_alone_stands_beside_a_crossing_that_departs_from_it(self):
+        # Without the culvert the water goes round the embankment: over its top, 6 m up, there is no lower way.
+        ground = dammed_valley()
+        ground[36, 24:27] -= 6.5
+        self.ground(values=ground)
+        self.shapes("culverts.gpkg", self.line((20, 22), (20, 28)))
+        self.study('crossings = "culverts.gpkg"\ndeparture = "25 m"')
+        self.run_study()
+        (path,) = self.features("own_paths.geojson")
+        # The notch lies in row 36, sixteen rows of 2 m from the crossing in row 20.
+        self.assertAlmostEqual(path["properties"]["departure_m"], 32, delta=0.01)
+        self.assertTrue(path["properties"]["comes_back"])
+        self.assertEqual(path["geometry"]["type"], "LineString")
+        self.assertIn("32 m away", self.notices()["departs-from-ground"]["text"])
+        self.study('crossings = "culverts.gpkg"\ndeparture = "35 m"')
+        self.run_study()
+        self.assertEqual(self.features("own_paths.geojson"), [])
+        self.assertNotIn("departs-from-ground", self.notices())
+
+    def test_depressions_are_outlined(self):
+        self.study()
+        self.run_study()
+        rows, features = table(self.folder / "result/tables/depressions.csv"), self.features("depressions.geojson")
+        self.assertEqual(len(features), len(rows))
+        deepest = features[0]
+        self.assertEqual(deepest["properties"]["depression"], 1)
+        self.assertTrue(deepest["properties"]["on_governing_path"])
+        shape = ogr.CreateGeometryFromJson(json.dumps(deepest["geometry"]))
+        shape.AssignSpatialReference(system_of(4326))
+        shape.TransformTo(system_of(25832))
+        self.assertTrue(shape.IsValid())
+        # Degrees are rounded to a centimetre; the area is that of whole cells of 4 m².
+        self.assertAlmostEqual(shape.Area(), deepest["properties"]["area_m2"], delta=0.002 * shape.Area())
+        self.assertEqual(deepest["properties"]["area_m2"], 4 * int(rows[0]["cells"]))
+
+    def test_a_file_of_several_layers_needs_its_layer_named(self):
+        file = ogr.GetDriverByName("GPKG").CreateDataSource(str(self.folder / "town.gpkg"))
+        for name, cells in (("roads", ((1, 1), (1, 40))), ("brooks", ((20, 2), (20, 22)))):
+            layer = file.CreateLayer(name, system_of(25832), ogr.wkbLineString)
+            feature = ogr.Feature(layer.GetLayerDefn())
+            feature.SetGeometry(ogr.CreateGeometryFromWkt(self.line(*cells)))
+            layer.CreateFeature(feature)
+            del feature, layer
+        del file
+        self.study('channels = "town.gpkg"')
+        self.refused(1, "run", "study.toml", says=["town.gpkg", "several layers: roads, brooks", 'channels_layer = "roads"'])
+        self.study('channels = "town.gpkg"\nchannels_layer = "bridges"')
+        self.refused(1, "run", "study.toml", says=['no layer "bridges"', "roads, brooks"])
+        self.study('channels = "town.gpkg"\nchannels_layer = "brooks"')
+        self.run_study()
+        self.assertEqual(float(self.notices()["terrain-edited"]["value"]), 21)
+        self.study('channels_layer = "brooks"')
+        self.refused(1, "run", "study.toml", says=["channels_layer", 'channels = "mapped.gpkg"'])
 
     def test_check_counts_features_and_names_what_is_wrong(self):
         self.shapes("brook.gpkg", self.line((20, 2), (20, 22)), "LINESTRING(1 1,2 2)", "POINT(500010 5399990)")

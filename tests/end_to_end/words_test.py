@@ -101,7 +101,7 @@ class Readme(unittest.TestCase):
     def test_every_file_of_a_result_is_explained(self):
         explained = section("What you get")
         for name in ("result.json", "governing_paths.geojson", "longest_paths.geojson", "tables/outlets.csv", "tables/segments.csv",
-                     "tables/review.csv", "tables/depressions.csv", "tables/methods.csv", "tables/storms.csv", "tables/iterations.csv",
+                     "tables/review.csv", "tables/depressions.csv", "depressions.geojson", "own_paths.geojson", "tables/methods.csv", "tables/storms.csv", "tables/iterations.csv",
                      "tables/subareas.csv", "tables/handover.csv", "tables/peaks.csv", "tables/time_area.csv", "tables/pipes.csv", "rasters/travel_time.tif", "rasters/flow_azimuth.tif", "rasters/contributing_area.tif",
                      "rasters/catchment.tif", "rasters/regime.tif", "rasters/spill_elevation.tif"):
             self.assertIn(f"`{name}`", explained)

@@ -2,7 +2,7 @@
 
 #include "reference/drawings.hpp"
 #include "reference/heap_flood.hpp"
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 namespace rillclock {
 namespace {

@@ -3,7 +3,7 @@
 #include <catch2/catch.hpp>
 
 #include "reference/drawings.hpp"
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 namespace rillclock {
 namespace {

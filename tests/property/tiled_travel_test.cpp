@@ -2,18 +2,23 @@
 
 #include <catch2/catch.hpp>
 
+#include <optional>
 #include <string>
+#include <utility>
 
 #include "reference/drawings.hpp"
-#include "reference/worked_terrain.hpp"
+#include "reference/random_edits.hpp"
+#include "reference/tiled_travel_check.hpp"
+#include "rillclock/terrain/terrain_edits.hpp"
 
 namespace rillclock {
 namespace {
 
-worked::Given random_given(unsigned seed) {
+/// Rules and ground that differ from seed to seed; the terrain is that of the seed where none is stated.
+worked::Given random_given(unsigned seed, std::optional<Elevations> z = {}) {
     std::mt19937 random(seed);
     const double void_share = seed % 3 == 0 ? 0.06 : 0.0;
-    worked::Given given{.elevations = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, void_share)};
+    worked::Given given{.elevations = z ? *std::move(z) : drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, void_share)};
     given.ground = Ground::planar(metres(1 + seed % 5), metres(1 + seed % 7));
     given.surface = worked::random_surface(random, given.elevations, seed % 4 != 0);
     given.rules.channel.from_area = square_metres(seed % 8 == 0 ? 1e9 : 900);
@@ -24,53 +29,52 @@ worked::Given random_given(unsigned seed) {
     return given;
 }
 
-ElevationStore stored(const Elevations& z) {
-    ElevationStore store(z.rows(), z.columns(), ElevationStore::Width::four_bytes);
-    store.write({.rows = z.rows(), .columns = z.columns()}, z.values());
-    return store;
-}
-
-/// What differs between a tile's desk and the plain field; empty where nothing does.
-std::string difference(const TiledTravel& tiled, const TileDesk& desk, const worked::Land& land) {
-    for (const Local local : desk.flow.order()) {
-        const Cell cell = desk.flow.cell(local);
-        const std::string at = " at cell " + std::to_string(cell);
-        if (desk.spill[local] != land.field.spill[cell]) return "spill elevation" + at;
-        if (desk.area[local] != land.field.contributing_area[cell]) return "area" + at;
-        if (desk.from_divide[local] != land.field.from_divide[cell]) return "distance from the divide" + at;
-        if (desk.flow_distance[local] != land.field.flow_distance[cell]) return "flow distance" + at;
-        if (tiled.kind(cell) != land.field.kind[cell]) return "kind" + at;
-        if (tiled.slope(cell) != land.field.slope[cell]) return "slope" + at;
-        if (desk.sheet_index[local] != land.field.sheet_index[cell]) return "sheet index" + at;
-        if (!(desk.time_to_root(local) == land.field.time_to_root(cell))) return "time" + at;
-    }
-    return "";
-}
-
 TEST_CASE("travel over tiles gives every cell what the plain way gives it, whatever the tiles and threads") {
     for (unsigned seed = 0; seed < 600; ++seed) {
-        const worked::Land land(random_given(seed));
-        const Elevations& z = land.given.elevations;
-        const ElevationStore store = stored(z);
-        const Executor executor(1 + seed % 2, Executor::Kind::plain_threads);
-        const auto side = static_cast<std::int64_t>(1 + seed % 17);
-        const TiledForest forest(land.forest.codes(), TileGrid(z.rows(), z.columns(), side), executor);
-        const TiledTravel tiled({.forest = forest, .ground = land.given.ground, .elevations = store,
-                                 .metres_per_elevation_unit = land.given.metres_per_elevation_unit,
-                                 .surface = land.given.surface},
-                                land.given.rules, executor);
-        INFO("seed " << seed << ", tiles of " << side);
-        TileDesk desk;
-        for (Tile tile = 0; tile < forest.tiles().count(); ++tile) {
-            tiled.read_tile(tile, desk);
-            REQUIRE(difference(tiled, desk, land) == "");
-        }
+        const worked::TileManner manner{.side = 1 + seed % 17, .threads = 1 + seed % 2};
+        INFO("seed " << seed << ", tiles of " << manner.side);
+        REQUIRE(worked::tiled_difference(worked::Land(random_given(seed)), manner) == "");
     }
+}
+
+/// What is stated of a terrain with all that is mapped over it: its flow, its beds, its mapped channels.
+worked::Given edited_given(unsigned seed, const edits::Mapped& mapped) {
+    ElevationStore store = edits::stored(mapped.z);
+    const TerrainEdits placed = place_edits(mapped.shapes, edits::grid_of(mapped.z), store, 0.5);
+    worked::Given given = random_given(seed, mapped.z);
+    given.codes = edited_flow(store, placed, [&](const ElevationStore& z) {
+        Elevations plain(z.rows(), z.columns());
+        z.read({.rows = z.rows(), .columns = z.columns()}, plain.values());
+        return flow_forest_of(plain, given.ground).codes();
+    }).codes;
+    (void)lower_to_beds(store, placed.lines);
+    store.read({.rows = store.rows(), .columns = store.columns()}, given.elevations.values());
+    given.mapped_channels = placed.lines.cells();
+    return given;
+}
+
+TEST_CASE("travel with mapped channels, beds, barriers and kept water is the same over tiles as in the plain way") {
+    std::size_t channel_cells = 0;
+    for (unsigned seed = 0; seed < 600; ++seed) {
+        const edits::AnyEdits any(seed);
+        const worked::TileManner manner{.side = 1 + seed % 13, .threads = 1 + seed % 2};
+        const auto fails = [&](const edits::Mapped& mapped) {
+            return worked::tiled_difference(worked::Land(edited_given(seed, mapped)), manner) != "";
+        };
+        const worked::Land land(edited_given(seed, any));
+        const std::string difference = worked::tiled_difference(land, manner);
+        if (!difference.empty()) {
+            FAIL(difference << ", seed " << seed << ", tiles of " << manner.side << ", shrunk to\n" << edits::smallest_failing(any, fails));
+        }
+        for (const Cell cell : land.given.mapped_channels) REQUIRE(land.field.kind[cell] == GroundKind::channel);
+        channel_cells += land.given.mapped_channels.size();
+    }
+    CHECK(channel_cells > 10'000);
 }
 
 TEST_CASE("the roots of a tiled forest are those of the plain one, with all that drains to them") {
     const worked::Land land(random_given(7));
-    const ElevationStore store = stored(land.given.elevations);
+    const ElevationStore store = edits::stored(land.given.elevations);
     const Executor executor(2, Executor::Kind::plain_threads);
     const TiledForest forest(land.forest.codes(), TileGrid(store.rows(), store.columns(), 8), executor);
     const TiledTravel tiled({.forest = forest, .ground = land.given.ground, .elevations = store, .surface = land.given.surface},

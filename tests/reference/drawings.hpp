@@ -7,8 +7,8 @@
 #include <string_view>
 #include <vector>
 
-#include "rillclock/forest/flow_forest.hpp"
-#include "rillclock/terrain/descent.hpp"
+#include "reference/plain/flow_forest.hpp"
+#include "reference/plain/steepest_descent.hpp"
 
 /// Terrain drawn as text, flow drawn as arrows, and random terrains: what tests are written in.
 namespace rillclock::drawings {

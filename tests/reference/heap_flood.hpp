@@ -7,7 +7,7 @@
 #include <utility>
 #include <vector>
 
-#include "rillclock/terrain/descent.hpp"
+#include "reference/plain/steepest_descent.hpp"
 
 namespace rillclock::reference {
 

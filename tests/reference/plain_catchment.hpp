@@ -4,9 +4,9 @@
 #include <vector>
 
 #include "rillclock/catchment/outlet.hpp"
-#include "rillclock/forest/sweep.hpp"
-#include "rillclock/terrain/descent.hpp"
-#include "rillclock/travel/travel_field.hpp"
+#include "reference/plain/sweeps.hpp"
+#include "reference/plain/steepest_descent.hpp"
+#include "reference/plain/travel_field.hpp"
 
 /// Points, arrivals and outlets worked out from fields of the whole raster: the plain way, against which tiles are held.
 namespace rillclock::reference {

@@ -5,7 +5,7 @@
 #include <optional>
 #include <vector>
 
-#include "rillclock/travel/slope_ahead.hpp"
+#include "reference/plain/slope_ahead.hpp"
 
 namespace rillclock::reference {
 

@@ -6,8 +6,8 @@
 #include <utility>
 #include <vector>
 
-#include "rillclock/terrain/flow_directions.hpp"
-#include "rillclock/travel/travel_field.hpp"
+#include "reference/plain/flow_directions.hpp"
+#include "reference/plain/travel_field.hpp"
 
 /// Terrain worked through from elevations to travel times, for tests.
 namespace rillclock::worked {
@@ -21,6 +21,7 @@ struct Given {
     SurfaceTable surface = {};
     TravelRules rules = {};
     double metres_per_elevation_unit = 1.0;
+    std::vector<Cell> mapped_channels = {};
 };
 
 /// Terrain with its travel field, kept alive together: the parts refer to one another, so it stays where it was made.
@@ -33,7 +34,8 @@ public:
                  .ground = given.ground,
                  .elevations = given.elevations,
                  .metres_per_elevation_unit = given.metres_per_elevation_unit,
-                 .surface = given.surface},
+                 .surface = given.surface,
+                 .mapped_channels = given.mapped_channels},
           field(travel_field(inputs, given.rules)) {}
     Land(const Land&) = delete;
     Land& operator=(const Land&) = delete;

@@ -4,7 +4,7 @@
 #include <span>
 #include <vector>
 
-#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/forest/flow_code.hpp"
 #include "rillclock/tiles/tile_grid.hpp"
 #include "rillclock/tiles/tile_memory.hpp"
 

@@ -26,15 +26,22 @@ struct ShapeFile {
     Notices notices;
 };
 
+/// What is wanted of a file of shapes.
+struct ShapeWish {
+    std::string role;                         ///< names the file in messages: "channels"
+    ShapeKinds kinds = ShapeKinds::lines;
+    std::optional<std::string> layer = {};    ///< needed only where the file has several
+    std::string layer_key;                    ///< of the study file, which says the layer: "channels_layer"
+    /// Fields whose numbers are wanted of each line; a file may lack them.
+    std::span<const std::string> fields = {};
+};
+
 /// Reads the lines, or the points and polygons, of any vector format and reference system. Curves are made of short straight lines,
-/// heights and measures are dropped. `role` names the file in messages: "channels".
+/// heights and measures are dropped.
 ///
 /// Features of another type, without a shape, with corners that are not finite or that have no image in `target` are left out, one
-/// notice each. Throws Error (inputs) where the file cannot be read or has several layers, its reference system is missing, or it holds
-/// no shape that can be used.
-///
-/// `fields` are fields whose numbers are wanted of each line; a file may lack them. Throws Error (inputs) where one holds no numbers.
-[[nodiscard]] ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds,
-                                    const ReferenceSystem& target, std::span<const std::string> fields = {});
+/// notice each. Throws Error (inputs) where the file cannot be read, has several layers and none is asked for, or not that
+/// one, its reference system is missing, a field holds no numbers, or it holds no shape that can be used.
+[[nodiscard]] ShapeFile read_shapes(const std::filesystem::path& path, const ShapeWish& wish, const ReferenceSystem& target);
 
 }  // namespace rillclock

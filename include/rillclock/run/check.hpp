@@ -12,18 +12,12 @@ namespace rillclock {
 struct CheckReport {
     std::vector<std::string> facts;      ///< what was read, a sentence each
     std::vector<std::string> problems;   ///< what would stop the run, a sentence each
+    std::vector<std::string> lacking;    ///< what would stop it on this machine alone
     Notices notices;                     ///< what the run would tell
 };
 
 /// Reads headers, tables and points, no more, and says what would be wrong and what the run will cost in memory and disk. Goes on
 /// after a problem, so that one check finds them all.
 [[nodiscard]] CheckReport check(const Study& study);
-
-/// Memory that a run needs, in bytes, with room to spare: what is kept for every cell, and what tiles, strips of the rasters being
-/// written and the libraries need whatever the size. `wide` where elevations take eight bytes a cell (see ElevationStore), `soil` where
-/// there is a raster of soil groups.
-[[nodiscard]] constexpr double memory_need(double cells, bool wide, bool soil = false) {
-    return cells * ((wide ? 30.0 : 20.0) + (soil ? 1.0 : 0.0)) + 350e6;
-}
 
 }  // namespace rillclock

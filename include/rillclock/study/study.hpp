@@ -28,16 +28,23 @@ enum class PipeFlow { full_bore, design_flow };
 /// How shallow concentrated flow is told apart.
 enum class ShallowRule { by_cover, paved_and_unpaved, chart };
 
+/// A vector file of what is mapped beside the elevations.
+struct MappedLayer {
+    std::optional<std::string> file = {};    ///< relative to the study's folder
+    std::optional<std::string> layer = {};   ///< needed only where the file has several
+};
+
 /// A study as stated: what a study file or the command line says, with the defaults that do not depend on the data.
 /// What is absent here and depends on the data is settled by `resolve`.
 struct TerrainStudy {
     std::string elevation = {};                 ///< raster; relative to the study's folder
     std::optional<int> band = {};               ///< from 1; needed only where the file has several
     std::optional<Length> elevation_unit = {};  ///< the length of one unit of elevation, where the study states it
-    std::optional<std::string> channels = {};   ///< vector files, relative to the study's folder
-    std::optional<std::string> crossings = {};
-    std::optional<std::string> barriers = {};
-    std::optional<std::string> keep_water = {};
+    MappedLayer channels = {};
+    MappedLayer crossings = {};
+    MappedLayer barriers = {};
+    MappedLayer keep_water = {};
+    std::optional<Length> departure = {};
     std::optional<Length> slope_window = {};
     std::optional<Length> vertical_step = {};
     std::optional<Length> pond_depth = {};
@@ -179,6 +186,7 @@ struct ResolvedStudy {
     Length slope_window = {};      ///< default the larger of 20 m and 3 cells
     Length vertical_step = {};     ///< default the largest of 0.2 m, the quantum and a tenth of a cell
     Length pond_depth = {};        ///< default the larger of 0.3 m and the vertical step
+    Length departure = {};         ///< default the larger of 20 m and 5 cells
     Length move_within = {};       ///< default the larger of 5 m and one cell
     Length shortest_segment = {};  ///< default the larger of 50 m and 5 cells (and then of a fiftieth of the path)
     double auto_area = 0.01;       ///< default 1 % of the data's area

@@ -2,7 +2,7 @@
 
 #include <vector>
 
-#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/forest/flow_code.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
 
@@ -37,5 +37,18 @@ struct DepressionGround {
 /// A depression is a connected set (over all eight neighbours) of cells of one spill elevation that lie below it. Cost: linear;
 /// two bits a cell, and the cells of the largest depression.
 [[nodiscard]] Depressions find_depressions(const DepressionGround& ground, const std::vector<Cell>& paths, std::size_t most);
+
+/// Finds the cells of depressions once more: they are too many to be kept while all depressions are found.
+class DepressionCells {
+public:
+    explicit DepressionCells(const DepressionGround& ground);
+    /// All cells of a depression that was found on the same ground, in no order of meaning. Cost: linear in them; a bit for each cell of the raster
+    /// while this lives.
+    [[nodiscard]] std::vector<Cell> of(const Depression& depression);
+
+private:
+    DepressionGround ground_;
+    std::vector<bool> seen_;
+};
 
 }  // namespace rillclock

@@ -4,7 +4,8 @@
 #include <cstdint>
 #include <vector>
 
-#include "rillclock/terrain/basins.hpp"
+#include "rillclock/forest/flow_code.hpp"
+#include "rillclock/raster/grid.hpp"
 
 namespace rillclock {
 
@@ -23,14 +24,5 @@ struct Pass {
 };
 
 [[nodiscard]] bool lies_lower(const Pass& a, const Pass& b);
-
-/// The lowest pass between each two neighbouring basins, lowest first. Every border cell is also a possible pass to the outside, at
-/// its own elevation. Cost: O(p log p) in the neighbouring pairs of cells with different basins.
-[[nodiscard]] std::vector<Pass> find_passes(const Elevations& elevations, const Basins& basins);
-
-/// The pass over which each basin (by number; entry 0, the outside, is unused) sends its water on, so that every basin reaches the
-/// outside over passes that are as low as they can be: the minimum spanning tree, rooted at the outside.
-/// Source: Cordonnier, Bovy & Braun 2019.
-[[nodiscard]] std::vector<Pass> passes_to_outside(const Elevations& elevations, const Basins& basins);
 
 }  // namespace rillclock

@@ -3,7 +3,7 @@
 #include <functional>
 #include <vector>
 
-#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/forest/flow_code.hpp"
 #include "rillclock/raster/grid_shapes.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
 #include "rillclock/terrain/flow_lines.hpp"

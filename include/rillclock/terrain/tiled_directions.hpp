@@ -1,6 +1,6 @@
 #pragma once
 
-#include "rillclock/forest/flow_forest.hpp"
+#include "rillclock/forest/flow_code.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/tiles/executor.hpp"
 #include "rillclock/tiles/tile_grid.hpp"

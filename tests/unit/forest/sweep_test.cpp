@@ -1,4 +1,4 @@
-#include "rillclock/forest/sweep.hpp"
+#include "reference/plain/sweeps.hpp"
 
 #include <catch2/catch.hpp>
 

@@ -23,10 +23,10 @@ struct ShapeFolder {
         return write_file(folder / "shapes.geojson", R"({"type":"FeatureCollection","features":[)" + features + "]}");
     }
     ShapeFile lines(const std::string& features, const ReferenceSystem& target = degrees) const {
-        return read_shapes(file(features), "channels", ShapeKinds::lines, target);
+        return read_shapes(file(features), {.role = "channels", .layer_key = "channels_layer"}, target);
     }
     ShapeFile waters(const std::string& features) const {
-        return read_shapes(file(features), "kept water", ShapeKinds::points_and_polygons, degrees);
+        return read_shapes(file(features), {.role = "kept water", .kinds = ShapeKinds::points_and_polygons, .layer_key = "keep_water_layer"}, degrees);
     }
 };
 
@@ -78,6 +78,32 @@ TEST_CASE_METHOD(ShapeFolder, "a line with a corner that has no image is left ou
 TEST_CASE_METHOD(ShapeFolder, "a file without a usable shape is refused with its reason") {
     CHECK_THAT(sentence_of([&] { (void)lines(feature("Point", "[1,2]")); }), Contains("nothing that can be used") && Contains("POINT"));
     CHECK_THAT(sentence_of([&] { (void)lines(""); }), Contains("no features"));
-    CHECK_THAT(sentence_of([&] { (void)read_shapes(folder / "none.gpkg", "barriers", ShapeKinds::lines, utm); }),
+    CHECK_THAT(sentence_of([&] { (void)read_shapes(folder / "none.gpkg", {.role = "barriers", .layer_key = "barriers_layer"}, utm); }),
                Contains("file of barriers") && Contains("none.gpkg"));
+}
+
+TEST_CASE_METHOD(ShapeFolder, "of several layers one must be named, and the names of all are told") {
+    const fs::path path = folder / "town.gpkg";
+    {
+        const GdalSession session;
+        const GDALDatasetUniquePtr dataset(
+            GetGDALDriverManager()->GetDriverByName("GPKG")->Create(path.c_str(), 0, 0, 0, GDT_Unknown, nullptr));
+        OGRSpatialReference system;
+        system.importFromEPSG(32612);
+        for (const char* name : {"roads", "brooks"}) {
+            OGRLayer* layer = dataset->CreateLayer(name, &system, wkbLineString);
+            OGRFeature row(layer->GetLayerDefn());
+            OGRLineString line;
+            line.addPoint(500000, 10);
+            line.addPoint(500000 + (name[0] == 'b' ? 7 : 3), 10);
+            row.SetGeometry(&line);
+            REQUIRE(layer->CreateFeature(&row) == OGRERR_NONE);
+        }
+    }
+    const auto read = [&](std::optional<std::string> layer) {
+        return read_shapes(path, {.role = "channels", .layer = std::move(layer), .layer_key = "channels_layer"}, utm);
+    };
+    CHECK_THAT(sentence_of([&] { (void)read({}); }), Contains("several layers: roads, brooks") && Contains("channels_layer = \"roads\""));
+    CHECK_THAT(sentence_of([&] { (void)read("lanes"); }), Contains("no layer \"lanes\"") && Contains("roads, brooks"));
+    CHECK(read("brooks").lines[0][1].x == 500007);
 }

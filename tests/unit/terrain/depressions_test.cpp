@@ -1,10 +1,11 @@
 #include "rillclock/terrain/depressions.hpp"
 
+#include <algorithm>
 #include <catch2/catch.hpp>
 
 #include "reference/drawings.hpp"
 #include "reference/heap_flood.hpp"
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 namespace rillclock {
 namespace {
@@ -57,6 +58,20 @@ TEST_CASE("of more than are wanted the shallowest are left out and counted") {
     REQUIRE(found.deepest_first.size() == 1);
     CHECK(found.deepest_first[0].depth == 6);
     CHECK(found.left_out == 1);
+}
+
+TEST_CASE("the cells of a depression are found again, once more if they are asked for again") {
+    const Elevations z = drawings::terrain(two_pits);
+    const FlowForest forest = flow_forest_of(z, two_metres);
+    const ElevationStore elevations = stored(z);
+    const ElevationStore spill = stored(spill_elevations(forest, z));
+    DepressionCells cells({.elevations = elevations, .spill = spill, .codes = forest.codes(), .ground = two_metres});
+    const Depressions found = depressions_of(z);
+    for (int time = 0; time < 2; ++time) {
+        std::vector<Cell> west = cells.of(found.deepest_first[0]);
+        std::sort(west.begin(), west.end());
+        CHECK(west == std::vector<Cell>{9, 10, 17, 18});
+    }
 }
 
 TEST_CASE("all ground below the surface of a textbook flood is in one depression, once") {

@@ -1,4 +1,4 @@
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 #include <catch2/catch.hpp>
 

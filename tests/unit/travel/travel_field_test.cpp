@@ -1,4 +1,4 @@
-#include "rillclock/travel/travel_field.hpp"
+#include "reference/plain/travel_field.hpp"
 
 #include <catch2/catch.hpp>
 

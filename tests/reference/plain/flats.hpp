@@ -3,7 +3,7 @@
 #include <cstdint>
 #include <vector>
 
-#include "rillclock/terrain/descent.hpp"
+#include "reference/plain/steepest_descent.hpp"
 
 namespace rillclock {
 

@@ -5,18 +5,10 @@
 #include <span>
 #include <vector>
 
-#include "rillclock/raster/direction.hpp"
+#include "rillclock/forest/flow_code.hpp"
 #include "rillclock/raster/raster.hpp"
 
 namespace rillclock {
-
-/// What a cell does with its water: a number 0 to 7 is a Direction; the others are below.
-using FlowCode = std::uint8_t;
-inline constexpr FlowCode flow_root = 8;  ///< water leaves the data here, or stays
-inline constexpr FlowCode flow_void = 9;  ///< no data, no flow
-
-[[nodiscard]] constexpr FlowCode flow_code(Direction d) { return static_cast<FlowCode>(d); }
-[[nodiscard]] constexpr bool is_direction(FlowCode code) { return code < 8; }
 
 /// A flow forest: each cell of a grid names the one neighbour it drains to, or is a root, or void. Every cell reaches a root.
 ///

@@ -1,4 +1,4 @@
-#include "rillclock/travel/slope_ahead.hpp"
+#include "reference/plain/slope_ahead.hpp"
 
 #include <cstddef>
 #include <optional>

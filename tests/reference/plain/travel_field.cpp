@@ -1,7 +1,7 @@
-#include "rillclock/travel/travel_field.hpp"
+#include "reference/plain/travel_field.hpp"
 
 #include "ground_kind.hpp"
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 namespace rillclock {
 namespace {
@@ -24,6 +24,7 @@ void find_kinds_and_slopes(const TravelInputs& in, const TravelRules& rules, Tra
         field.kind[cell] = kind_of(in.surface.at(cell), rules.channel, field.contributing_area[cell],
                                    in.ground.cell_area(in.forest.row(cell)));
     }
+    for (const Cell cell : in.mapped_channels) field.kind[cell] = GroundKind::channel;
     SlopeAhead ahead = slope_ahead({.forest = in.forest, .flow_distance = field.flow_distance, .spill = field.spill,
                                     .metres_per_elevation_unit = in.metres_per_elevation_unit, .kind = field.kind},
                                    rules.slope);

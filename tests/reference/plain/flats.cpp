@@ -1,4 +1,4 @@
-#include "rillclock/terrain/flats.hpp"
+#include "reference/plain/flats.hpp"
 
 #include <limits>
 

@@ -2,7 +2,7 @@
 
 #include <cstdint>
 
-#include "rillclock/terrain/descent.hpp"
+#include "reference/plain/steepest_descent.hpp"
 
 namespace rillclock {
 

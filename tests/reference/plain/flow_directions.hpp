@@ -1,6 +1,6 @@
 #pragma once
 
-#include "rillclock/terrain/basins.hpp"
+#include "reference/plain/basins.hpp"
 
 namespace rillclock {
 

@@ -1,4 +1,4 @@
-#include "rillclock/terrain/descent.hpp"
+#include "reference/plain/steepest_descent.hpp"
 
 #include <cmath>
 

@@ -1,4 +1,4 @@
-#include "rillclock/forest/flow_forest.hpp"
+#include "reference/plain/flow_forest.hpp"
 
 #include <string>
 

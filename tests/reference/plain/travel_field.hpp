@@ -1,6 +1,8 @@
 #pragma once
 
-#include "rillclock/forest/sweep.hpp"
+#include <span>
+
+#include "reference/plain/sweeps.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/travel/step.hpp"
 
@@ -13,6 +15,7 @@ struct TravelInputs {
     const Elevations& elevations;
     double metres_per_elevation_unit = 1.0;  ///< of the elevations as stored
     const SurfaceTable& surface;
+    std::span<const Cell> mapped_channels = {};  ///< channels whatever drains to them and whatever covers them
 };
 
 /// All that is per cell. Times and lengths are to the *root*: those to a point below are differences.

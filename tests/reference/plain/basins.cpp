@@ -1,4 +1,4 @@
-#include "rillclock/terrain/basins.hpp"
+#include "reference/plain/basins.hpp"
 
 #include <limits>
 #include <vector>

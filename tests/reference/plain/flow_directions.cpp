@@ -1,11 +1,11 @@
-#include "rillclock/terrain/flow_directions.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 #include <cmath>
 #include <utility>
 
-#include "rillclock/forest/sweep.hpp"
-#include "rillclock/terrain/flats.hpp"
-#include "rillclock/terrain/passes.hpp"
+#include "reference/plain/sweeps.hpp"
+#include "reference/plain/flats.hpp"
+#include "reference/plain/passes.hpp"
 
 namespace rillclock {
 namespace {

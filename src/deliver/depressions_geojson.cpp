@@ -1,0 +1,36 @@
+#include "rillclock/deliver/depressions_geojson.hpp"
+
+#include <nlohmann/json.hpp>
+
+#include "feature_collection.hpp"
+#include "geographic_lines.hpp"
+
+namespace rillclock {
+namespace {
+
+using Json = nlohmann::ordered_json;
+
+Json properties(const StudyResult& result, const OutlinedDepression& outlined) {
+    const Depression& depression = outlined.depression;
+    const double metres_per_unit = result.format.metres_per_stored_unit();
+    return {{"depression", outlined.number},
+            {"depth_m", rounded(depression.depth * metres_per_unit)},
+            {"area_m2", rounded(from_fixed_area(depression.area))},
+            {"volume_m3", rounded(depression.volume * metres_per_unit)},
+            {"on_governing_path", depression.on_path}};
+}
+
+}  // namespace
+
+std::string depressions_geojson(const StudyResult& result, std::span<const OutlinedDepression> depressions) {
+    GeographicLines lines(result.system);
+    Json features = Json::array();
+    for (const OutlinedDepression& outlined : depressions) {
+        const Json area = lines.area(outlined.outline);
+        features.push_back(feature(area.is_null() ? lines.point(result.grid.centre(outlined.depression.deepest)) : area,
+                                   properties(result, outlined)));
+    }
+    return collection_text(features, lines);
+}
+
+}  // namespace rillclock

@@ -1,0 +1,250 @@
+// The whole of a run, files and all, is the same bytes whatever the tiles, the threads and GDAL's cache.
+
+#include <gdal.h>
+
+#include <array>
+#include <catch2/catch.hpp>
+#include <cmath>
+#include <cstdlib>
+#include <filesystem>
+#include <fstream>
+#include <limits>
+#include <map>
+#include <sstream>
+#include <string>
+#include <vector>
+
+#include "bench/terrain_generator.hpp"
+#include "rillclock/io/gdal_session.hpp"
+#include "rillclock/io/raster_output.hpp"
+#include "rillclock/run/demo.hpp"
+#include "rillclock/run/run_study.hpp"
+#include "rillclock/run/study_source.hpp"
+
+namespace rillclock {
+namespace {
+
+namespace fs = std::filesystem;
+using bench::TerrainKind;
+
+/// How a run is computed, which must not show in what it gives.
+struct Manner {
+    std::int64_t tile_side;
+    unsigned threads;
+    bool small_cache;   ///< 2 MB, less than what is read and written; else GDAL's own
+};
+
+constexpr std::int64_t whole = 1200;   // more than any side of the places below
+
+/// Every side with both numbers of threads, every number of threads with both caches.
+constexpr std::array manners = {Manner{64, 1, true},   Manner{100, 2, false}, Manner{256, 2, true}, Manner{1000, 2, true},
+                                Manner{whole, 2, true}, Manner{64, 2, false},  Manner{100, 1, true}, Manner{1000, 1, false},
+                                Manner{whole, 1, true}};
+
+/// A folder that is removed with what is in it.
+class Folder {
+public:
+    Folder() {
+        std::string name = (fs::temp_directory_path() / "rillclock-same-bytes-XXXXXX").string();
+        path_ = mkdtemp(name.data());
+    }
+    ~Folder() { fs::remove_all(path_); }
+    Folder(const Folder&) = delete;
+    Folder& operator=(const Folder&) = delete;
+    [[nodiscard]] const fs::path& path() const { return path_; }
+    void write(const std::string& name, const std::string& text) const { std::ofstream(path_ / name) << text; }
+
+private:
+    fs::path path_;
+};
+
+using Bytes = std::map<std::string, std::string>;
+
+Bytes bytes_of(const fs::path& folder) {
+    Bytes bytes;
+    for (const auto& entry : fs::recursive_directory_iterator(folder)) {
+        if (!entry.is_regular_file()) continue;
+        std::ostringstream content;
+        content << std::ifstream(entry.path(), std::ios::binary).rdbuf();
+        bytes[fs::relative(entry.path(), folder).string()] = content.str();
+    }
+    return bytes;
+}
+
+Bytes run_in_manner(const Study& study, const Manner& manner) {
+    const GIntBig cache = GDALGetCacheMax64();
+    if (manner.small_cache) GDALSetCacheMax64(2'000'000);
+    const RunOutcome outcome = run(study, {.replace = true, .threads = manner.threads, .tile_side = manner.tile_side});
+    GDALSetCacheMax64(cache);
+    return bytes_of(outcome.folder);
+}
+
+/// Names of files that differ.
+std::string differing(const Bytes& expected, const Bytes& found) {
+    std::string names;
+    for (const auto& [name, content] : expected) {
+        if (!found.contains(name) || found.at(name) != content) names += name + " ";
+    }
+    return found.size() == expected.size() ? names : names + "and the list of files";
+}
+
+/// Runs a study in all manners; returns what it gives in the first, 256 by one thread.
+Bytes same_in_all(const fs::path& study_file) {
+    const Study study = read_study_file(study_file.string());
+    const Bytes expected = run_in_manner(study, {256, 1, false});
+    for (const Manner& manner : manners) {
+        INFO("tiles of " << manner.tile_side << ", " << manner.threads << " threads, " << (manner.small_cache ? "2 MB" : "default") << " of cache");
+        CHECK(differing(expected, run_in_manner(study, manner)) == "");
+    }
+    return expected;
+}
+
+/// An invented place: a terrain with what a test wants of it, and a study of it.
+struct Invented {
+    TerrainKind kind = TerrainKind::fractal;
+    Grid grid = {.rows = 260, .columns = 330, .left = 450'000.0, .top = 5'400'000.0};
+    int system = 32633;
+    bool voids = false;
+    std::string terrain = "";   ///< further lines of [terrain]
+    std::string rest = "[rain]\ntwo_year_24_hour = \"3.4 in\"\n";
+};
+
+Raster<float> elevations_of(const Invented& place) {
+    Raster<float> z = terrain_raster(bench::TerrainGenerator(place.kind, 5), place.grid.rows, place.grid.columns, Executor(1));
+    if (!place.voids) return z;
+    // A lake of voids across tiles, and single ones.
+    for (std::int64_t row = 0; row < z.rows(); ++row) {
+        for (std::int64_t column = 0; column < z.columns(); ++column) {
+            const bool in_lake = std::hypot(static_cast<double>(row) - 110.0, static_cast<double>(column) - 130.0) < 40.0;
+            if (in_lake || (row * 977 + column * 131) % 1009 == 0) z(row, column) = std::numeric_limits<float>::quiet_NaN();
+        }
+    }
+    return z;
+}
+
+void write_inputs(const Invented& place, const Folder& folder) {
+    const GdalSession session;
+    const ReferenceSystem system = ReferenceSystem::from_text("EPSG:" + std::to_string(place.system));
+    const bool integers = place.kind == TerrainKind::integers;
+    write_raster(*create_raster<float>(folder.path() / "dem.tif", place.grid, system,
+                                       {.stored = integers ? StoredType::int16 : StoredType::float32, .unit = "metre", .nodata = -9999.0}),
+                 elevations_of(place));
+    Raster<std::uint8_t> codes(place.grid.rows, place.grid.columns);
+    bench::CoverGenerator(5).fill({.rows = codes.rows(), .columns = codes.columns()}, codes.values());
+    write_raster(*create_raster<std::uint8_t>(folder.path() / "cover.tif", place.grid, system,
+                                              {.stored = StoredType::uint8, .nodata = 0.0, .overviews = OverviewKind::nearest}),
+                 codes);
+    folder.write("study.toml", "[terrain]\nelevation = \"dem.tif\"\n" + place.terrain +
+                                   "[surface]\ncover = \"cover.tif\"\nbook = \"nlcd\"\nfallback_class = 71\n" + place.rest);
+}
+
+/// GeoJSON in the grid's own system of features given as {name, geometry type, coordinates}.
+struct Shape {
+    std::string name;
+    std::string type;
+    std::string coordinates;
+};
+
+std::string geojson(const Invented& place, const std::vector<Shape>& shapes) {
+    std::string text = R"({"type":"FeatureCollection","crs":{"type":"name","properties":{"name":"urn:ogc:def:crs:EPSG::)" +
+                       std::to_string(place.system) + R"("}},"features":[)";
+    for (std::size_t i = 0; i < shapes.size(); ++i) {
+        text += (i == 0 ? "" : ",") + std::string(R"({"type":"Feature","properties":{"name":")") + shapes[i].name +
+                R"("},"geometry":{"type":")" + shapes[i].type + R"(","coordinates":)" + shapes[i].coordinates + "}}";
+    }
+    return text + "]}";
+}
+
+/// "[x,y]" of a cell's centre.
+std::string at(const Invented& place, std::int64_t row, std::int64_t column) {
+    const Place centre = place.grid.centre(RowColumn{row, column});
+    std::ostringstream text;
+    text.precision(12);
+    text << '[' << centre.x << ',' << centre.y << ']';
+    return text.str();
+}
+
+std::string line(const Invented& place, const std::vector<RowColumn>& corners) {
+    std::string text;
+    for (const RowColumn& corner : corners) text += (text.empty() ? "[" : ",") + at(place, corner.row, corner.column);
+    return text + "]";
+}
+
+/// Points on a net over the whole place, which move to the streams beside them and so lie below one another.
+std::string many_points(const Invented& place) {
+    std::vector<Shape> shapes;
+    for (std::int64_t row = 15; row < place.grid.rows; row += 40) {
+        for (std::int64_t column = 15; column < place.grid.columns; column += 40) {
+            shapes.push_back({"P" + std::to_string(shapes.size() + 1), "Point", at(place, row, column)});
+        }
+    }
+    return geojson(place, shapes);
+}
+
+TEST_CASE("whole results are the same bytes on ground with noise") {
+    const Invented place{.grid = {.rows = 230, .columns = 1100, .left = 450'000.0, .top = 5'400'000.0}};
+    const Folder folder;
+    write_inputs(place, folder);
+    const Bytes result = same_in_all(folder.path() / "study.toml");
+    CHECK(result.size() >= 17);   // six rasters and two lists of classes, three GeoJSON, five tables and more, result.json
+}
+
+TEST_CASE("whole results are the same bytes on ground a quarter of which is flat") {
+    const Folder folder;
+    write_inputs({.kind = TerrainKind::quantised}, folder);
+    same_in_all(folder.path() / "study.toml");
+}
+
+TEST_CASE("whole results are the same bytes on ground in whole metres, mostly flat, with voids") {
+    const Folder folder;
+    write_inputs({.kind = TerrainKind::integers, .voids = true}, folder);
+    same_in_all(folder.path() / "study.toml");
+}
+
+TEST_CASE("whole results are the same bytes for nested points with storms of their own, on rectangular cells") {
+    Invented place{.grid = {.rows = 190, .columns = 260, .left = 450'000.0, .top = 5'400'000.0, .cell_width = 2.0, .cell_height = 3.0}};
+    place.rest = "[points]\nfile = \"points.geojson\"\nmove_within = \"25 m\"\n"
+                 "[rain]\nformula = \"i[in/h] = 45 T^0.2 / (t[min] + 10)^0.8\"\nreturn_periods = [2, 10]\n"
+                 "[timing]\nsheet = \"kinematic\"\n";
+    const Folder folder;
+    write_inputs(place, folder);
+    folder.write("points.geojson", many_points(place));
+    const Bytes result = same_in_all(folder.path() / "study.toml");
+    CHECK(result.contains("tables/iterations.csv"));
+    CHECK(result.at("tables/outlets.csv").find(",P1,") != std::string::npos);   // a point whose next one is another
+}
+
+TEST_CASE("whole results are the same bytes in degrees") {
+    const double step = 1.0 / 10'800.0;   // a third of a second
+    const Folder folder;
+    write_inputs({.grid = {.rows = 210, .columns = 270, .left = 11.0, .top = 61.0, .cell_width = step, .cell_height = step}, .system = 4326},
+                 folder);
+    same_in_all(folder.path() / "study.toml");
+}
+
+TEST_CASE("whole results are the same bytes with channels, crossings, barriers and kept water") {
+    const Invented place{.kind = TerrainKind::quantised,
+                         .voids = true,
+                         .terrain = "channels = \"channels.geojson\"\ncrossings = \"crossings.geojson\"\nbarriers = \"barriers.geojson\"\n"
+                                    "keep_water = \"kept.geojson\"\n"};
+    const Folder folder;
+    write_inputs(place, folder);
+    folder.write("channels.geojson", geojson(place, {{"a", "LineString", line(place, {{20, 30}, {90, 80}, {240, 300}})},
+                                                     {"b", "LineString", line(place, {{200, 20}, {180, 200}, {20, 310}})}}));
+    folder.write("crossings.geojson", geojson(place, {{"c", "LineString", line(place, {{60, 250}, {75, 262}})}}));
+    folder.write("barriers.geojson", geojson(place, {{"d", "LineString", line(place, {{10, 200}, {120, 210}, {240, 190}})}}));
+    const std::string ring = line(place, {{40, 40}, {40, 70}, {70, 70}, {70, 40}, {40, 40}});
+    folder.write("kept.geojson", geojson(place, {{"e", "Polygon", "[" + ring + "]"}, {"f", "Point", at(place, 220, 90)}}));
+    const Bytes result = same_in_all(folder.path() / "study.toml");
+    CHECK(result.at("tables/review.csv").find("terrain-edited") != std::string::npos);
+    CHECK(result.at("own_paths.geojson").find("LineString") != std::string::npos);
+}
+
+TEST_CASE("whole results are the same bytes for the demo") {
+    const Folder folder;
+    write_demo(folder.path() / "town");
+    same_in_all(folder.path() / "town/study.toml");
+}
+
+}  // namespace
+}  // namespace rillclock
