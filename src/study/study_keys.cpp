@@ -33,7 +33,7 @@ constexpr std::array keys{
     StudyKey{"terrain.pond_speed", R"("2 m/s")", "2 m/s", "greatest speed across ponded cells, or \"unlimited\""},
     StudyKey{"surface.cover", R"("cover.tif")", "asked for", "land-cover raster"},
     StudyKey{"surface.band", "1", "the only one", "its band; asked for where the file has several"},
-    StudyKey{"surface.book", R"("nlcd")", "asked for", "what its codes mean: nlcd, or a CSV file"},
+    StudyKey{"surface.book", R"("nlcd")", "asked for", "what its codes mean: nlcd, worldcover, or a CSV file"},
     StudyKey{"surface.fallback_class", "71", "none: unknown codes are an error",
              "code that stands in for codes the book does not know and for cells without cover"},
     StudyKey{"surface.soil_group", R"("B")", "none: no curve numbers",

@@ -149,14 +149,6 @@ Speed pond_speed(const Stated& stated) {
     return stated.speed();
 }
 
-std::string book(const Stated& stated) {
-    if (stated.text() == "worldcover")
-        throw stated.fault(
-            "is \"worldcover\", which this version of rillclock does not have; write \"nlcd\" or the name of a CSV "
-            "file of your own");
-    return stated.text();
-}
-
 std::string region(const Stated& stated) {
     std::vector<std::string_view> regions;
     for (const ChannelSize& size : channel_sizes()) regions.push_back(size.region);
@@ -236,7 +228,7 @@ constexpr std::array setters{
     Setter{"terrain.pond_speed", [](Study& s, const Stated& v) { s.terrain.pond_speed = pond_speed(v); }},
     Setter{"surface.cover", [](Study& s, const Stated& v) { s.surface.cover = v.text(); }},
     Setter{"surface.band", [](Study& s, const Stated& v) { s.surface.band = v.whole_number(1); }},
-    Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = book(v); }},
+    Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = v.text(); }},
     Setter{"surface.fallback_class", [](Study& s, const Stated& v) { s.surface.fallback_class = v.whole_number(0); }},
     Setter{"surface.soil_group", [](Study& s, const Stated& v) { set_soil(s.surface, v); }},
     Setter{"surface.soil_band", [](Study& s, const Stated& v) { s.surface.soil.band = v.whole_number(1); }},

@@ -202,7 +202,7 @@ TEST_CASE("what this version does not compute is refused and not passed over") {
 
 TEST_CASE("words of a key that this version does not compute are refused") {
     for (const auto* text :
-         {"[surface]\nbook = \"worldcover\"", "[output]\nrasters = \"cog\""}) {
+         {"[output]\nrasters = \"cog\""}) {
         INFO(text);
         CHECK_THROWS_WITH(read(text), Contains("this version of rillclock does not") && Contains("line 2, column "));
     }

@@ -234,5 +234,18 @@ TEST_CASE("runoff coefficients by soil group rise from A to D and lie between 0 
     CHECK_THROWS_WITH(parse_cover_book(begin + ",,,,1.1", "town.csv"), Contains("(c_d) is 1.1; a runoff coefficient"));
 }
 
+TEST_CASE("the book worldcover has the eleven classes of its legend, and says that its hydraulics are ours") {
+    const CoverBook book = built_in_book("worldcover");
+    std::vector<int> codes;
+    for (const CoverClass& cover : book.classes()) {
+        codes.push_back(cover.code);
+        CHECK_THAT(cover.source, Contains("ours"));
+        CHECK(cover.from_memory);
+    }
+    CHECK(codes == std::vector<int>{10, 20, 30, 40, 50, 60, 70, 80, 90, 95, 100});
+    CHECK(book.find(80)->is_open_water());
+    CHECK(book.find(100)->name == "Moss and lichen");
+}
+
 }  // namespace
 }  // namespace rillclock
