@@ -84,6 +84,12 @@ void add_method_columns(const StudyResult& result, TableWriter<Outlet>& table) {
         .column("methods_highest_min", time(&MethodSpread::highest));
 }
 
+void add_zone_columns(const StudyResult& result, TableWriter<Outlet>& table) {
+    if (result.rain.zones.empty()) return;
+    table.column("rain_zone", [&result](const Outlet& o) { return result.rain.zone_name(o.rain_zone.number); })
+        .column("rain_zone_percent", [](const Outlet& o) { return five_digits(100.0 * o.rain_zone.share); });
+}
+
 }  // namespace
 
 std::string outlets_table(const StudyResult& result) {
@@ -94,6 +100,7 @@ std::string outlets_table(const StudyResult& result) {
     add_path_columns(result, scale, table);
     add_trust_columns(table);
     add_method_columns(result, table);
+    add_zone_columns(result, table);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) text += table.line(outlet);
     return text;

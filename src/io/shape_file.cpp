@@ -30,14 +30,16 @@ struct Taken {
 class ShapeReader {
 public:
     ShapeReader(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target,
-                std::span<const std::string> fields)
-        : path_(path), called_("file of " + role + " " + path.string()), kinds_(kinds), target_(target), fields_(fields) {}
+                std::span<const std::string> fields, std::string text_field)
+        : path_(path), called_("file of " + role + " " + path.string()), kinds_(kinds), target_(target), fields_(fields),
+          field_name_(std::move(text_field)) {}
 
     ShapeFile read() {
         const GdalMark before = session_.mark();
         check_local_file(path_, called_);
         open(before);
         check_fields();
+        choose_field();
         Transformation to_target(system(), target_);
         while (const OGRFeatureUniquePtr feature{layer_->GetNextFeature()}) add(*feature, to_target);
         session_.throw_if_failed(before, Fault::inputs, "The " + called_ + " cannot be read to its end; copy or make it again");
@@ -60,13 +62,31 @@ private:
                           path_.stem().string() + "-one.gpkg " + path_.string() + " " + layer_->GetName() + ".");
     }
 
-    [[nodiscard]] std::string wanted() const { return kinds_ == ShapeKinds::lines ? "lines" : "points and polygons"; }
+    [[nodiscard]] std::string wanted() const {
+        if (kinds_ == ShapeKinds::lines) return "lines";
+        return kinds_ == ShapeKinds::polygons ? "polygons" : "points and polygons";
+    }
+
+    void choose_field() {
+        if (field_name_.empty()) return;
+        const OGRFeatureDefn& definition = *layer_->GetLayerDefn();
+        field_ = definition.GetFieldIndex(field_name_.c_str());
+        if (field_ >= 0) return;
+        std::string list;
+        for (int i = 0; i < definition.GetFieldCount(); ++i)
+            list += (i == 0 ? "" : ", ") + std::string(definition.GetFieldDefn(i)->GetNameRef());
+        throw input_error("The " + called_ + " has no field \"" + field_name_ + "\"; its fields are " + (list.empty() ? "none" : list) + ".");
+    }
+
+    [[nodiscard]] std::string text_of(OGRFeature& feature) const {
+        return field_ >= 0 && feature.IsFieldSetAndNotNull(field_) ? feature.GetFieldAsString(field_) : "";
+    }
 
     [[nodiscard]] ReferenceSystem system() const {
         return system_of_layer(*layer_, called_, path_);
     }
 
-    void add(const OGRFeature& feature, Transformation& to_target) {
+    void add(OGRFeature& feature, Transformation& to_target) {
         ++number_;
         Taken taken;
         const OGRGeometry* geometry = feature.GetGeometryRef();
@@ -80,6 +100,7 @@ private:
         ++result_.features;
         result_.feature_of_line.insert(result_.feature_of_line.end(), taken.lines.size(), static_cast<std::size_t>(number_));
         result_.numbers.insert(result_.numbers.end(), taken.lines.size(), numbers_of(feature));
+        result_.polygon_texts.insert(result_.polygon_texts.end(), taken.polygons.size(), text_of(feature));
         std::move(taken.lines.begin(), taken.lines.end(), std::back_inserter(result_.lines));
         std::move(taken.points.begin(), taken.points.end(), std::back_inserter(result_.points));
         std::move(taken.polygons.begin(), taken.polygons.end(), std::back_inserter(result_.polygons));
@@ -113,7 +134,7 @@ private:
             for (const OGRGeometry* part : *geometry.toGeometryCollection()) take(*part, to_target, taken);
         } else if (lines && type == wkbLineString) {
             taken.lines.push_back(line_of(*geometry.toLineString(), to_target, taken));
-        } else if (!lines && type == wkbPoint) {
+        } else if (kinds_ == ShapeKinds::points_and_polygons && type == wkbPoint) {
             OGRLineString alone;
             alone.addPoint(geometry.toPoint());
             taken.points.push_back(line_of(alone, to_target, taken).front());
@@ -157,6 +178,8 @@ private:
     ShapeKinds kinds_;
     const ReferenceSystem& target_;
     std::span<const std::string> fields_;
+    std::string field_name_;
+    int field_ = -1;
     GDALDatasetUniquePtr dataset_;
     OGRLayer* layer_ = nullptr;
     std::int64_t number_ = 0;
@@ -166,8 +189,8 @@ private:
 }  // namespace
 
 ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds, const ReferenceSystem& target,
-                      std::span<const std::string> fields) {
-    return ShapeReader(path, role, kinds, target, fields).read();
+                      std::span<const std::string> fields, const std::string& text_field) {
+    return ShapeReader(path, role, kinds, target, fields, text_field).read();
 }
 
 }  // namespace rillclock

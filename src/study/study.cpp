@@ -26,8 +26,8 @@ void require_inputs(const Study& study) {
             "land cover; state the raster, under [surface] as cover = \"cover.tif\" or as --cover cover.tif");
     require(
         study, study.surface.book,
-        "cover book; state what the codes of the cover raster mean, under [surface] as book = \"nlcd\" or the name of "
-        "a CSV file, or as --book nlcd");
+        "cover book; state what the codes of the cover raster mean, under [surface] as book = \"nlcd\", "
+        "\"worldcover\" or the name of a CSV file, or as --book nlcd");
     const bool has_rain = study.rain.two_year_24_hour || study.rain.is_by_duration();
     if (!has_rain) throw input_error(rain_is_missing(name_of(study)));
 }
@@ -69,6 +69,26 @@ void refuse_contradictory_points(const Study& study) {
         throw input_error(name_of(study) +
                           " says how to read or move points but gives no file of them; add file = "
                           "\"points.gpkg\" under [points], or leave out name, layer and move_within");
+}
+
+void refuse_contradictory_zones(const Study& study) {
+    const RainStudy& rain = study.rain;
+    if (!rain.zones.file && rain.zones.field != ZoneStudy{}.field)
+        throw input_error(name_of(study) +
+                          " states zone_field, which names a field of the polygons of rain zones, but gives none; add "
+                          "zones = \"zones.gpkg\" under [rain], or leave it out");
+    if (rain.block && !rain.file && !rain.zones.file)
+        throw input_error(name_of(study) +
+                          " states block, which chooses among the blocks of a NOAA Atlas 14 file, but gives none; add "
+                          "file = \"atlas14.csv\" under [rain], or leave it out");
+}
+
+void refuse_contradictory_methods(const Study& study) {
+    for (const LumpInput input : all_lump_inputs)
+        if (study.methods[input].field && !study.points.file)
+            throw input_error(name_of(study) + " takes methods." + std::string(name_of(input)) +
+                              " from a field of the points' file but gives no file; add file = \"points.gpkg\" under "
+                              "[points], or state a number");
 }
 
 void refuse_contradictory_rain(const Study& study) {
@@ -150,6 +170,8 @@ void check_study(const Study& study) {
     refuse_contradictory_points(study);
     refuse_contradictory_channel(study);
     refuse_contradictory_rain(study);
+    refuse_contradictory_zones(study);
+    refuse_contradictory_methods(study);
     refuse_contradictory_sheet(study);
     refuse_contradictory_shallow(study);
 }

@@ -42,6 +42,8 @@ public:
         return *text;
     }
 
+    [[nodiscard]] bool is_text() const { return std::holds_alternative<std::string>(value_.value); }
+
     [[nodiscard]] QuantityAsked asked(Sign sign = Sign::positive) const {
         return {.subject = value_.subject, .example = without_quotes(form_), .sign = sign};
     }
@@ -200,6 +202,18 @@ void add_formula(Study& study, const Stated& stated) {
     study.rain.formulas.push_back({.formula = formula, .subject = stated.subject()});
 }
 
+void set_lump_input(Study& study, LumpInput input, const Stated& stated) {
+    constexpr std::string_view by_field = "field ";
+    const LumpRange range = range_of(input);
+    LumpValue& value = study.methods[input];
+    if (!stated.is_text())
+        value.number = stated.number(range.least, range.greatest);
+    else if (stated.text().starts_with(by_field))
+        value.field = stated.text().substr(by_field.size());
+    else
+        value.number = lump_input_from_text(input, stated.text(), stated.subject());
+}
+
 struct Setter {
     std::string_view key;
     void (*set)(Study&, const Stated&);
@@ -249,6 +263,12 @@ constexpr std::array setters{
         "rain.two_year_24_hour",
         [](Study& s, const Stated& v) { s.rain.two_year_24_hour = two_year_24_hour_from_text(v.text(), v.subject()); }},
     Setter{"rain.file", [](Study& s, const Stated& v) { s.rain.file = v.text(); }},
+    Setter{"rain.block",
+           [](Study& s, const Stated& v) {
+               s.rain.block = static_cast<Atlas14Block>(v.choice({"estimate", "upper bound", "lower bound"}));
+           }},
+    Setter{"rain.zones", [](Study& s, const Stated& v) { s.rain.zones.file = v.text(); }},
+    Setter{"rain.zone_field", [](Study& s, const Stated& v) { s.rain.zones.field = v.text(); }},
     Setter{"rain.formula", add_formula},
     Setter{"rain.formula_from",
            [](Study& s, const Stated& v) { s.rain.formula_from = v.duration(Sign::not_negative); }},
@@ -300,6 +320,13 @@ constexpr std::array setters{
            [](Study& s, const Stated& v) { s.timing.ignore_tail = v.fraction(Sign::not_negative); }},
     Setter{"timing.shortest_segment", [](Study& s, const Stated& v) { s.timing.shortest_segment = v.length(); }},
     Setter{"peaks.least_time", [](Study& s, const Stated& v) { s.peaks.least_time = v.duration(Sign::not_negative); }},
+    Setter{"methods.kerby_n", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::kerby_n, v); }},
+    Setter{"methods.izzard_c", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::izzard_c, v); }},
+    Setter{"methods.impervious", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::impervious, v); }},
+    Setter{"methods.undeveloped_coefficient",
+           [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::undeveloped_coefficient, v); }},
+    Setter{"methods.county_k", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::county_k, v); }},
+    Setter{"methods.kirpich_factor", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::kirpich_factor, v); }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
     Setter{"output.rasters", [](Study&, const Stated& v) { (void)v.choice({"geotiff"}, {"cog"}); }},
 };

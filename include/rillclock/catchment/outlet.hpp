@@ -5,6 +5,7 @@
 
 #include "rillclock/catchment/arrivals.hpp"
 #include "rillclock/catchment/path_doubts.hpp"
+#include "rillclock/catchment/rain_zone.hpp"
 #include "rillclock/catchment/segments.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 
@@ -51,6 +52,7 @@ struct Outlet {
     PointPath longest;
     CatchmentGround ground;                        ///< of the whole catchment
     LandTally own_land;                            ///< of the point's own subarea
+    RainZone rain_zone;                            ///< whose rain it has
     double elevation_m = 0.0;                      ///< level at which water gets out of the point's cell
     double storm_factor = 1.0;                     ///< of the storm that all this is under
     std::vector<PointStorm> storms;                ///< by return period; none where the study has no rain by duration
@@ -75,6 +77,7 @@ struct PointHeads {
     Cell farthest = no_cell;
     CatchmentGround ground;                               ///< of the whole catchment
     LandTally own_land;                                   ///< of the point's own subarea
+    RainZone rain_zone;                                   ///< whose rain it has; of a share of 0 where it lies in none
     double storm_factor = 1.0;                            ///< of the storm that all these are under
     std::vector<PointStorm> storms;                       ///< by return period
 };

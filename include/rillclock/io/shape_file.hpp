@@ -13,7 +13,7 @@
 namespace rillclock {
 
 /// What a file of shapes may hold; the others in it are left out with a notice.
-enum class ShapeKinds { lines, points_and_polygons };
+enum class ShapeKinds { lines, points_and_polygons, polygons };
 
 /// Shapes of a file in the target's coordinates, in the order of the file. A feature of several parts gives a shape a part.
 struct ShapeFile {
@@ -22,6 +22,7 @@ struct ShapeFile {
     std::vector<Polygon> polygons;
     std::vector<std::size_t> feature_of_line;   ///< number of each line's feature in the file, from 1
     std::vector<std::vector<std::optional<double>>> numbers;   ///< of each line: the asked fields; none where absent or empty
+    std::vector<std::string> polygon_texts;   ///< of the field that was asked for, by polygon; empty where a feature has none
     std::size_t features = 0;   ///< of which at least one shape was taken
     Notices notices;
 };
@@ -34,7 +35,9 @@ struct ShapeFile {
 /// no shape that can be used.
 ///
 /// `fields` are fields whose numbers are wanted of each line; a file may lack them. Throws Error (inputs) where one holds no numbers.
+/// With a `text_field`, the text of that field is read for every polygon; it is an error where there is no such field.
 [[nodiscard]] ShapeFile read_shapes(const std::filesystem::path& path, const std::string& role, ShapeKinds kinds,
-                                    const ReferenceSystem& target, std::span<const std::string> fields = {});
+                                    const ReferenceSystem& target, std::span<const std::string> fields = {},
+                                    const std::string& text_field = {});
 
 }  // namespace rillclock
