@@ -68,7 +68,7 @@ std::vector<PointHeads> under_one_storm_alone(const LastPass& pass, const std::v
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
     tally_all(pass, tally);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
-    add_storms(heads, times, intensities_of(pass.rain));
+    add_storms(heads, times, intensities_of(pass.rain.storms));
     return heads;
 }
 

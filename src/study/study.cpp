@@ -77,6 +77,10 @@ void refuse_contradictory_zones(const Study& study) {
         throw input_error(name_of(study) +
                           " states zone_field, which names a field of the polygons of rain zones, but gives none; add "
                           "zones = \"zones.gpkg\" under [rain], or leave it out");
+    if (rain.zones.file && study.timing.channel.design_storm)
+        throw input_error(name_of(study) +
+                          " states zones of rain and channels by the design storm, which know of one rain alone; leave "
+                          "out zones under [rain], or flow under [timing.channel]");
     if (rain.block && !rain.file && !rain.zones.file)
         throw input_error(name_of(study) +
                           " states block, which chooses among the blocks of a NOAA Atlas 14 file, but gives none; add "
