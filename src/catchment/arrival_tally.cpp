@@ -1,6 +1,7 @@
 #include "rillclock/catchment/arrival_tally.hpp"
 
 #include <algorithm>
+#include <optional>
 #include <unordered_map>
 
 namespace rillclock {
@@ -24,6 +25,7 @@ bool touches_edge(const Raster<FlowCode>& codes, const Window& window) {
 struct GroundOfCell {
     std::uint8_t cover = 0;
     CellSoil soil = CellSoil::unknown;
+    std::optional<std::uint8_t> rain_zone = {};
     double slope = 0.0;
     double elevation_m = 0.0;
 };
@@ -32,6 +34,7 @@ GroundOfCell ground_of_cell(const TiledGround& in, const TileDesk& desk, Local l
     const Cell cell = desk.flow.cell(local);
     return {.cover = in.surface.index[cell],
             .soil = in.surface.soil_at(cell),
+            .rain_zone = in.rain_zones == nullptr ? std::nullopt : std::optional((*in.rain_zones)[cell]),
             .slope = land_slope(in.elevations, in.metres_per_elevation_unit, in.ground, cell),
             .elevation_m = desk.elevation[local] * in.metres_per_elevation_unit};
 }
@@ -49,6 +52,7 @@ public:
         }
         arrivals_->add_unbinned(cell);
         arrivals_->ground.add(ground.cover, ground.soil, cell.area, ground.slope, ground.elevation_m);
+        if (ground.rain_zone) arrivals_->ground.add_to_zone(*ground.rain_zone, cell.area);
         if (storms_ == Storms::by_point) return arrivals_->storm_bins.add(cell.head, cell.area, storm_factor_);
         const std::int64_t second = ArrivalBins::second_of(cell.head.time, storm_factor_);
         ArrivalBins::Bin& bin = bins_[{owner, second}];

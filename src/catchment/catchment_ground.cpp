@@ -1,6 +1,8 @@
 #include "rillclock/catchment/catchment_ground.hpp"
 
+#include <algorithm>
 #include <cmath>
+#include <functional>
 
 #include "rillclock/raster/direction.hpp"
 
@@ -39,7 +41,15 @@ void CatchmentGround::add(std::uint8_t cover, CellSoil soil, FixedArea area, dou
     elevation_sum_ += std::llround(elevation_m * elevation_units_per_m);
 }
 
+void CatchmentGround::add_to_zone(std::uint8_t zone, FixedArea area) {
+    if (zone >= area_by_zone_.size()) area_by_zone_.resize(zone + 1U);
+    area_by_zone_[zone] += area;
+}
+
 void CatchmentGround::add(const CatchmentGround& other) {
+    if (other.area_by_zone_.size() > area_by_zone_.size()) area_by_zone_.resize(other.area_by_zone_.size());
+    std::transform(other.area_by_zone_.begin(), other.area_by_zone_.end(), area_by_zone_.begin(), area_by_zone_.begin(),
+                   std::plus<>());
     land_.add(other.land_);
     cells_ += other.cells_;
     slope_sum_ += other.slope_sum_;

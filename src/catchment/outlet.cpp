@@ -49,6 +49,7 @@ Outlet outlet_of(const OutletParts& parts, const PathGround& ground, const Outle
     made.time_to_root = at_point;
     made.own_front = parts.heads.own_front;
     made.own_land = parts.heads.own_land;
+    made.rain_zone = parts.heads.rain_zone;
     made.elevation_m = parts.longest.back().spill * ground.metres_per_elevation_unit;
     made.storm_factor = ground.storm_factor;
     made.storms = parts.heads.storms;

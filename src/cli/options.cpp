@@ -26,7 +26,7 @@ struct KeyOption {
 constexpr std::array key_options = {
     KeyOption{"--elevation", "terrain.elevation", "FILE", "elevation raster (DEM)"},
     KeyOption{"--cover", "surface.cover", "FILE", "land-cover raster"},
-    KeyOption{"--book", "surface.book", "NAME|FILE", "what the cover codes mean: nlcd, or a CSV file"},
+    KeyOption{"--book", "surface.book", "NAME|FILE", "what the cover codes mean: nlcd, worldcover, or a CSV file"},
     KeyOption{"--fallback-class", "surface.fallback_class", "CODE", "class for cells without cover and codes the book does not know"},
     KeyOption{"--points", "points.file", "FILE", "design points; without it they stand where water leaves the data"},
     KeyOption{"--rain", "rain.two_year_24_hour", "DEPTH", "2-year 24-hour rainfall depth, \"3.6 in\" or \"91 mm\""},

@@ -125,6 +125,10 @@ void add_peak_columns(const StudyResult& result, const ReportScale& scale, Table
     table.column("whole_area_peak_" + scale.flow_unit(), where_any([=](const PointPeak& p) { return five_digits(scale.flow(p.whole)); }))
         .column("peak_" + scale.flow_unit(), where_any([=](const PointPeak& p) { return five_digits(scale.flow(p.partial)); }))
         .column("peak_subareas", where_any([&result](const PointPeak& p) { return makers_in_words(result, p); }));
+void add_zone_columns(const StudyResult& result, TableWriter<Outlet>& table) {
+    if (result.rain.zones.empty()) return;
+    table.column("rain_zone", [&result](const Outlet& o) { return result.rain.zone_name(o.rain_zone.number); })
+        .column("rain_zone_percent", [](const Outlet& o) { return five_digits(100.0 * o.rain_zone.share); });
 }
 
 }  // namespace
@@ -140,6 +144,7 @@ std::string outlets_table(const StudyResult& result) {
     add_way_columns(scale, table);
     add_network_columns(result, table);
     if (result.peaks.are_there()) add_peak_columns(result, scale, table);
+    add_zone_columns(result, table);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) text += table.line(outlet);
     return text;

@@ -136,9 +136,9 @@ Json formula_parts_json(const FormulatedRain& formulas) {
     return parts;
 }
 
-Json curves_json(const StudyRain& rain) {
+Json curves_json(const std::vector<StudyStorm>& storms) {
     Json curves = Json::array();
-    for (const StudyStorm& storm : rain.storms) {
+    for (const StudyStorm& storm : storms) {
         Json curve = {{"return_period", storm.return_period}};
         if (const auto* table = std::get_if<TabulatedRain>(&storm.rain.law())) curve["points"] = points_json(*table);
         if (const auto* formulas = std::get_if<FormulatedRain>(&storm.rain.law())) curve["formula_parts"] = formula_parts_json(*formulas);
@@ -147,10 +147,7 @@ Json curves_json(const StudyRain& rain) {
     return curves;
 }
 
-Json rain_json(const StudyResult& result) {
-    const RainEcho& echo = result.rain.source->echo;
-    Json periods = Json::array();
-    for (const StudyStorm& storm : result.rain.storms) periods.push_back(storm.return_period);
+Json echo_json(const RainEcho& echo) {
     return {{"source", echo.source},
             {"kind", echo.kind},
             {"block", text_or_null(echo.block)},
@@ -160,11 +157,32 @@ Json rain_json(const StudyResult& result) {
             {"place", text_or_null(echo.place)},
             {"source_return_periods", echo.return_periods},
             {"first_duration_min", in_minutes(echo.range.first)},
-            {"last_duration_min", echo.range.last ? Json(in_minutes(*echo.range.last)) : Json(nullptr)},
-            {"least_time_min", in_minutes(result.study.peaks.least_time.value_or(standard_least_time))},
-            {"return_periods", periods},
-            {"raster_return_period", result.rain.raster_storm().return_period},
-            {"curves", curves_json(result.rain)}};
+            {"last_duration_min", echo.range.last ? Json(in_minutes(*echo.range.last)) : Json(nullptr)}};
+}
+
+Json zones_json(const StudyRain& rain) {
+    Json zones = Json::array();
+    for (const ZoneRain& zone : rain.zones) {
+        Json json = echo_json(zone.source.echo);
+        json["rain_2_year_24_hour_mm"] =
+            zone.two_year_24_hour ? digits(in_millimetres(*zone.two_year_24_hour)) : Json(nullptr);
+        json["curves"] = curves_json(zone.storms);
+        zones.push_back(json);
+    }
+    return zones;
+}
+
+/// Without rain outside of the zones, what stands for it (that of the first zone) is no echo.
+Json rain_json(const StudyResult& result) {
+    Json periods = Json::array();
+    for (const StudyStorm& storm : result.rain.storms) periods.push_back(storm.return_period);
+    Json json = result.rain.is_everywhere ? echo_json(result.rain.source->echo) : Json::object();
+    json["least_time_min"] = in_minutes(result.study.peaks.least_time.value_or(standard_least_time));
+    json["return_periods"] = periods;
+    json["raster_return_period"] = result.rain.raster_storm().return_period;
+    if (result.rain.is_everywhere) json["curves"] = curves_json(result.rain.storms);
+    if (!result.rain.zones.empty()) json["zones"] = zones_json(result.rain);
+    return json;
 }
 
 Json soil_parameters(const SurfaceStudy& surface) {
@@ -316,7 +334,13 @@ Json measures_json(const CatchmentMeasures& measures) {
             {"runoff_coefficient", or_null(measures.runoff_coefficient)},
             {"overland_n", or_null(measures.overland_n)},
             {"overland_length_m", in_m(measures.overland_length)},
-            {"overland_slope", or_null(measures.overland_slope)}};
+            {"overland_slope", or_null(measures.overland_slope)},
+            {"kerby_n", or_null(measures.kerby_retardance)},
+            {"izzard_c", or_null(measures.izzard_retardance)},
+            {"impervious", or_null(measures.impervious)},
+            {"undeveloped_coefficient", or_null(measures.undeveloped_coefficient)},
+            {"county_k", or_null(measures.county_factor)},
+            {"kirpich_factor", digits(measures.kirpich_adjustment)}};
 }
 
 Json land_json(const StudyResult& result, const Outlet& outlet) {
@@ -400,6 +424,10 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
     json["stated"] = text_or_null(marks_of(result.network.edits[outlet.number - 1]));
     json["stated_above"] = text_or_null(stated_in_words(result, result.network.points[outlet.number - 1].stated_above));
     json["land"] = land_json(result, outlet);
+    if (!result.rain.zones.empty()) {
+        json["rain_zone"] = {{"rain", result.rain.zone_name(outlet.rain_zone.number)},
+                             {"share_of_area", digits(outlet.rain_zone.share)}};
+    }
     json["methods"] = methods_json(result.methods[outlet.number - 1]);
     if (!outlet.storms.empty()) json["storms"] = storms_json(result, outlet);
     if (result.peaks.are_there()) json["peaks"] = peaks_json(result, outlet);

@@ -76,7 +76,7 @@ void add_sheet_columns(const StudyResult& result, const ReportScale& scale, Tabl
         })
         .column(rain_column(result, scale), only_in(Regime::sheet, [&result, scale](const SegmentRow& r) {
             const std::optional<Intensity> intensity = sheet_intensity(result, *r.outlet);
-            return intensity ? scale.intensity(*intensity) : scale.rain(*result.rain.two_year_24_hour);
+            return intensity ? scale.intensity(*intensity) : scale.rain(*two_year_depth(result, *r.outlet));
         }));
     if (!result.study.timing.sheet_takes_runoff) return;
     table.column("runoff_coefficient", only_in(Regime::sheet, [&result](const SegmentRow& r) {

@@ -17,12 +17,22 @@ struct NumberedFormula {
 
 constexpr std::array numbered_formulas = {
     NumberedFormula{"lump-nrcs-lag", "{L ft}^0.8 x (1000 / {CN} - 9)^0.7 / (1140 x {Y %}^0.5)", "h"},
-    NumberedFormula{"lump-kirpich", "0.0078 x {L ft}^0.77 x {S}^-0.385", "min"},
+    NumberedFormula{"lump-kirpich", "{F} x 0.0078 x {L ft}^0.77 x {S}^-0.385", "min"},
     NumberedFormula{"lump-california", "(11.9 x {L mi}^3 / {H ft})^0.385", "h"},
     NumberedFormula{"lump-bransby-williams", "21.3 x {L mi} / ({A mi2}^0.1 x {S}^0.2)", "min"},
     NumberedFormula{"lump-bransby-williams-equal-area", "58.5 x {L km} / ({A km2}^0.1 x {Se m/km}^0.2)", "min"},
     NumberedFormula{"lump-giandotti", "(4 x sqrt({A km2}) + 1.5 x {L km}) / (0.8 x sqrt({Hm m}))", "h"},
     NumberedFormula{"lump-faa", "1.8 x (1.1 - {C}) x sqrt({L ft}) / {S %}^(1/3)", "min"},
+    NumberedFormula{"lump-kerby", "0.828 x ({L ft} x {N})^0.467 x {S}^-0.235", "min"},
+    NumberedFormula{"lump-kerby-kirpich",
+                    "0.828 x ({Lo ft} x {N})^0.467 x {So}^-0.235 + 0.0078 x ({L ft} - {Lo ft})^0.77 x {S}^-0.385", "min"},
+    NumberedFormula{"lump-kerby-kirpich-low-slope",
+                    "0.828 x ({Lo ft} x {N})^0.467 x {So adjusted}^-0.235 + 0.0078 x ({L ft} - {Lo ft})^0.77 x {S adjusted}^-0.385",
+                    "min"},
+    NumberedFormula{"lump-izzard", "41.025 x (0.0007 x {i in/h} + {c}) x ({L ft} / {S})^(1/3) / {i in/h}^(2/3)", "min"},
+    NumberedFormula{"lump-los-angeles",
+                    "10^-0.507 x ((0.9 x {IMP} + (1 - {IMP}) x {Cu}) x {i in/h})^-0.519 x {L ft}^0.483 x {S}^-0.135", "min"},
+    NumberedFormula{"lump-county-initial", "{K} x ({L ft}^3 / {H ft})^0.2", "min"},
     NumberedFormula{"lump-papadakis-kazan", "0.66 x sqrt({L ft}) x {n}^0.52 x {S}^-0.31 x {i in/h}^-0.38", "min"},
 };
 
@@ -31,6 +41,7 @@ std::optional<double> number_for(std::string_view place, const SheetJson& measur
     const auto measure = [&](const char* key) -> std::optional<double> {
         return is_number(measures, key) ? std::optional(number_of(measures, key)) : std::nullopt;
     };
+    const auto adjusted = [](std::optional<double> slope) { return slope ? std::optional(texas_low_slope(*slope)) : slope; };
     const auto scaled = [](std::optional<double> value, double factor) { return value ? std::optional(*value * factor) : value; };
     if (place == "L ft") return scaled(measure("longest_path_m"), in_feet(metres(1)));
     if (place == "L mi") return scaled(measure("longest_path_m"), in_feet(metres(1)) / 5280.0);
@@ -46,6 +57,16 @@ std::optional<double> number_for(std::string_view place, const SheetJson& measur
     if (place == "CN") return measure("curve_number");
     if (place == "C") return measure("runoff_coefficient");
     if (place == "n") return measure("overland_n");
+    if (place == "F") return measure("kirpich_factor");
+    if (place == "N") return measure("kerby_n");
+    if (place == "c") return measure("izzard_c");
+    if (place == "K") return measure("county_k");
+    if (place == "IMP") return measure("impervious");
+    if (place == "Cu") return measure("undeveloped_coefficient");
+    if (place == "Lo ft") return scaled(measure("overland_length_m"), in_feet(metres(1)));
+    if (place == "So") return measure("overland_slope");
+    if (place == "S adjusted") return adjusted(measure("path_slope"));
+    if (place == "So adjusted") return adjusted(measure("overland_slope"));
     if (place == "i in/h" && time.contains("iteration") && !time.at("iteration").empty()) {
         return in_inches_per_hour(millimetres_per_hour(number_of(time.at("iteration").back(), "intensity_mm_per_h")));
     }
@@ -72,9 +93,11 @@ std::optional<FilledFormula> filled(const NumberedFormula& formula, const SheetJ
         const std::string number = significant(*value, 6);
         answer.expression += number;
         const std::size_t blank = place.find(' ');
+        rest.remove_prefix(close + 1);
+        const auto at = static_cast<std::size_t>(place.data() - formula.expression.data()) - 1;
+        if (formula.expression.find("{" + std::string(place) + "}") < at) continue;  // told before
         answer.inputs += (answer.inputs.empty() ? "" : ", ") + std::string(place.substr(0, blank)) + " = " + number;
         if (blank != std::string_view::npos) answer.inputs += std::string(place.substr(blank));
-        rest.remove_prefix(close + 1);
     }
 }
 

@@ -50,7 +50,7 @@ std::string sheet_rain(const SheetMatter& matter) {
     if (matter.is_kinematic()) {
         return significant(matter.scale.intensity(millimetres_per_hour(number_of(matter.path_storm(), "intensity_mm_per_h"))), 7);
     }
-    return printed(matter.scale.rain(millimetres(number_of(matter.result.at("parameters").at("sheet"), "rain_2_year_24_hour_mm"))));
+    return printed(matter.scale.rain(millimetres(matter.two_year_depth_mm())));
 }
 
 /// Kinematic sheet flow from one distance below the divide to another.

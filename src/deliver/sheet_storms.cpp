@@ -17,7 +17,7 @@ struct StormWriter {
 };
 
 const SheetJson* curve_of(const StormWriter& to) {
-    for (const SheetJson& curve : to.matter.result.at("parameters").at("rain").at("curves")) {
+    for (const SheetJson& curve : to.matter.rain().at("curves")) {
         if (curve.at("return_period") == to.storm.at("return_period")) return &curve;
     }
     return nullptr;
@@ -25,8 +25,8 @@ const SheetJson* curve_of(const StormWriter& to) {
 
 /// Minutes at which the intensity is read when these are asked for.
 double read_at(const StormWriter& to, double minutes) {
-    const SheetJson& rain = to.matter.result.at("parameters").at("rain");
-    return std::max({minutes, number_of(rain, "least_time_min"), number_of(rain, "first_duration_min")});
+    const SheetJson& parameters = to.matter.result.at("parameters").at("rain");
+    return std::max({minutes, number_of(parameters, "least_time_min"), number_of(to.matter.rain(), "first_duration_min")});
 }
 
 /// Between two durations of a table: on a straight line on log-log paper.
@@ -114,11 +114,29 @@ void write_storm(const StormWriter& to) {
 
 }  // namespace
 
+const SheetJson& SheetMatter::rain() const {
+    const SheetJson& parameters = result.at("parameters").at("rain");
+    if (!outlet.contains("rain_zone")) return parameters;
+    for (const SheetJson& zone : parameters.at("zones")) {
+        if (zone.at("source") == outlet.at("rain_zone").at("rain")) return zone;
+    }
+    return parameters;
+}
+
+double SheetMatter::two_year_depth_mm() const {
+    if (has_rain() && is_number(rain(), "rain_2_year_24_hour_mm")) return number_of(rain(), "rain_2_year_24_hour_mm");
+    return number_of(result.at("parameters").at("sheet"), "rain_2_year_24_hour_mm");
+}
+
 void write_storms(const SheetMatter& matter, SheetWriter& sheet) {
-    const SheetJson& rain = matter.result.at("parameters").at("rain");
+    const SheetJson& rain = matter.rain();
     sheet.heading("Rain");
     sheet.fact("source", words_of(rain, "source") + ": " + words_of(rain, "kind") + ", " + words_of(rain, "quantity") + " in " +
                              words_of(rain, "unit"));
+    if (matter.outlet.contains("rain_zone")) {
+        const SheetJson& zone = matter.outlet.at("rain_zone");
+        sheet.fact("rain zone", words_of(zone, "rain") + ", " + printed(100.0 * number_of(zone, "share_of_area")) + " % of the catchment");
+    }
     if (matter.is_kinematic()) {
         sheet.words("Sheet flow depends on the intensity, and the intensity on how long the storm lasts: assume a time, read the intensity, "
                     "compute the time, assume that, until two agree to 0.1 s. The time of sheet flow goes with i^-0.4; the rest of the path "

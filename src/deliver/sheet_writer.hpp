@@ -24,6 +24,10 @@ struct SheetMatter {
     [[nodiscard]] bool has_rain() const { return outlet.contains("storms"); }
     /// The storm that paths and segments are for. Only where there is rain by duration.
     [[nodiscard]] const SheetJson& path_storm() const;
+    /// What was read of the rain that the point has: of its rain zone, where there are zones. Only where there is rain by duration.
+    [[nodiscard]] const SheetJson& rain() const;
+    /// The 2-year 24-hour depth that its sheet flow takes. Only where that depends on it.
+    [[nodiscard]] double two_year_depth_mm() const;
 };
 
 /// Adds lines to a sheet.

@@ -116,6 +116,10 @@ double coefficient_of(Needs& needs, const CatchmentMeasures& catchment) {
     return needs.share(catchment.runoff_coefficient, "the runoff coefficient", catchment.no_runoff_coefficient);
 }
 
+double retardance_of(Needs& needs, const CatchmentMeasures& catchment) {
+    return needs.number(catchment.kerby_retardance, "Kerby's retardance", 1, catchment.no_kerby_retardance);
+}
+
 constexpr double in_square_miles(Area v) {
     return v / square_miles(1);
 }
@@ -125,7 +129,7 @@ KerbyKirpich kerby_kirpich_of(Needs& needs, const CatchmentMeasures& catchment) 
                           .channel_slope = slope_of(needs, catchment),
                           .overland = needs.length(catchment.overland_length, "the overland length"),
                           .overland_slope = needs.number(catchment.overland_slope, "the overland slope"),
-                          .retardance = needs.number(catchment.kerby_retardance, "Kerby's retardance", 1)};
+                          .retardance = retardance_of(needs, catchment)};
     needs.range(in_square_miles(needs.area(catchment.area)), 0.25, 150, "the area in square miles");
     needs.range(measures.main_channel / miles(1), 1, 50, "the main channel in miles");
     needs.range(in_feet(measures.overland), 0, 1200, "the overland length in feet");
@@ -171,7 +175,7 @@ LumpTime kerby_time(const CatchmentMeasures& catchment, const IntensityOfDuratio
     Needs needs;
     const Length path = path_of(needs, catchment);
     const double slope = slope_of(needs, catchment);
-    const double retardance = needs.number(catchment.kerby_retardance, "Kerby's retardance", 1);
+    const double retardance = retardance_of(needs, catchment);
     needs.range(in_feet(path), 0, 1200, "the longest path in feet");
     return needs.with(kerby(path, retardance, slope));
 }
@@ -205,7 +209,7 @@ LumpTime izzard_time(const CatchmentMeasures& catchment, const IntensityOfDurati
     Needs needs;
     const Length path = path_of(needs, catchment);
     const double slope = slope_of(needs, catchment);
-    const double retardance = needs.number(catchment.izzard_retardance, "Izzard's retardance", 1);
+    const double retardance = needs.number(catchment.izzard_retardance, "Izzard's retardance", 1, catchment.no_izzard_retardance);
     needs.rain(rain);
     const auto time = [&](Intensity intensity) { return izzard(path, slope, retardance, intensity); };
     return solved(needs, time, rain, [&](Needs& judged, const StormTime& solution) {
@@ -250,8 +254,9 @@ LumpTime los_angeles_time(const CatchmentMeasures& catchment, const IntensityOfD
     const Length path = path_of(needs, catchment);
     const double slope = slope_of(needs, catchment);
     const double coefficient =
-        los_angeles_coefficient(needs.share(catchment.impervious, "the impervious share"),
-                                needs.share(catchment.undeveloped_coefficient, "the undeveloped coefficient"));
+        los_angeles_coefficient(needs.share(catchment.impervious, "the impervious share", catchment.no_impervious),
+                                needs.share(catchment.undeveloped_coefficient, "the undeveloped coefficient",
+                                            catchment.no_undeveloped_coefficient));
     needs.range(in_acres(needs.area(catchment.area)), 0, 40, "the area in acres");
     if (coefficient == 0) needs.number(coefficient, "the developed coefficient");
     needs.rain(rain);
@@ -265,7 +270,7 @@ LumpTime county_initial_time(const CatchmentMeasures& catchment, const Intensity
     Needs needs;
     const Length path = path_of(needs, catchment);
     const Length fall = needs.length(catchment.fall, "the fall of the longest path");
-    const double k = needs.number(catchment.county_factor, "the county's K");
+    const double k = needs.number(catchment.county_factor, "the county's K", no_limit, catchment.no_county_factor);
     needs.range(in_acres(needs.area(catchment.area)), 0, 10, "the area in acres");
     needs.range(in_feet(path), 0, 1000, "the longest path in feet");
     return needs.with(county_initial(path, fall, k));

@@ -225,6 +225,15 @@ void notice_sidecar(const std::filesystem::path& path, const RasterFile& file, N
     }
 }
 
+/// Resampled to web Mercator, elevations are smoother or coarser than they were taken.
+void notice_web_mercator(const RasterFile& file, Notices& notices) {
+    if (!file.system().is_web_mercator()) return;
+    notices.push_back({.code = "web-mercator",
+                       .text = "The " + file.called() + " is in web Mercator (" + file.system().name() +
+                               "); lengths and areas are taken on the ellipsoid, row by row. Elevations in the system "
+                               "in which they were made are better, since this one is always resampled."});
+}
+
 /// What the file was opened in spite of.
 void notice_warnings(const RasterFile& file, Notices& notices) {
     std::vector<std::string> texts = file.session().warnings_since(file.opened_at());
@@ -252,6 +261,7 @@ ElevationFile open_elevation(const std::filesystem::path& path, const ElevationO
     format.unit = vertical_unit(file, options, notices);
     check_nodata(file, format, notices);
     notice_sidecar(path, file, notices);
+    notice_web_mercator(file, notices);
     notice_warnings(file, notices);
     ReferenceSystem system = file.system();
     return {.source = std::make_unique<ElevationSource>(std::move(file), format),

@@ -65,13 +65,18 @@ private:
         return list.empty() ? "none" : list;
     }
 
+    [[nodiscard]] int field_called(const std::string& name) const {
+        const int field = layer_->GetLayerDefn()->GetFieldIndex(name.c_str());
+        if (field >= 0) return field;
+        throw input_error("The " + called() + " has no field \"" + name + "\"; its fields are " + field_list() + ".");
+    }
+
     void choose_field() {
+        for (const std::string& name : options_.fields) asked_.push_back(field_called(name));
         const OGRFeatureDefn& definition = *layer_->GetLayerDefn();
         if (options_.name_field) {
-            field_ = definition.GetFieldIndex(options_.name_field->c_str());
-            if (field_ >= 0) return;
-            throw input_error("The " + called() + " has no field \"" + *options_.name_field + "\"; its fields are " +
-                              field_list() + ".");
+            field_ = field_called(*options_.name_field);
+            return;
         }
         for (const char* usual : {"name", "label", "id"})
             if (field_ < 0) field_ = definition.GetFieldIndex(usual);
@@ -108,15 +113,22 @@ private:
         if (!given) return;
         const std::optional<Place> place = to_target(*given);
         if (!place) return leave_out("lies where " + target_.name() + " has no coordinates");
-        result_.points.push_back({.name = name_of(feature), .place = *place, .feature = number_});
+        NamedPlace point{.name = name_of(feature), .place = *place, .feature = number_};
+        for (const int field : asked_) point.fields.push_back(text_of(feature, field));
+        result_.points.push_back(std::move(point));
+    }
+
+    /// Without blanks at its ends; empty where the feature has no value.
+    [[nodiscard]] static std::string text_of(OGRFeature& feature, int field) {
+        const std::string given = feature.IsFieldSetAndNotNull(field) ? feature.GetFieldAsString(field) : "";
+        const std::size_t begin = given.find_first_not_of(" \t\r\n");
+        if (begin == std::string::npos) return {};
+        return given.substr(begin, given.find_last_not_of(" \t\r\n") - begin + 1);
     }
 
     [[nodiscard]] std::string name_of(OGRFeature& feature) const {
-        const std::string given =
-            field_ >= 0 && feature.IsFieldSetAndNotNull(field_) ? feature.GetFieldAsString(field_) : "";
-        const std::size_t begin = given.find_first_not_of(" \t\r\n");
-        if (begin == std::string::npos) return "point " + std::to_string(number_);
-        return given.substr(begin, given.find_last_not_of(" \t\r\n") - begin + 1);
+        const std::string given = field_ >= 0 ? text_of(feature, field_) : "";
+        return given.empty() ? "point " + std::to_string(number_) : given;
     }
 
     void check_result() const {
@@ -149,6 +161,7 @@ private:
     GDALDatasetUniquePtr dataset_;
     OGRLayer* layer_ = nullptr;
     int field_ = -1;
+    std::vector<int> asked_;
     std::int64_t number_ = 0;
     PointFile result_;
 };

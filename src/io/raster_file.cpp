@@ -46,13 +46,6 @@ std::string band_list(GDALDataset& dataset) {
     return list.str();
 }
 
-/// EPSG number of the UTM zone on WGS 84 that holds a place, as text; a pattern where the place is not known.
-std::string utm_code(const std::optional<Place>& longitude_latitude) {
-    if (!longitude_latitude) return "EPSG:nnnnn";
-    const int zone = std::clamp(static_cast<int>(std::floor((longitude_latitude->x + 180.0) / 6.0)) + 1, 1, 60);
-    return "EPSG:" + std::to_string((longitude_latitude->y >= 0 ? 32600 : 32700) + zone);
-}
-
 double bytes_on_disk(GDALDataset& dataset) {
     double bytes = 0;
     char** files = dataset.GetFileList();
@@ -197,13 +190,6 @@ void RasterFile::set_system() {
     const std::string wkt = text ? text : "";
     CPLFree(text);
     system_ = ReferenceSystem::from_text(wkt);
-    if (!system_->is_web_mercator() || request_.role != "elevation") return;
-    const Place middle = {grid_.left + grid_.cell_width * static_cast<double>(grid_.columns) / 2,
-                          grid_.top - grid_.cell_height * static_cast<double>(grid_.rows) / 2};
-    const std::string code = utm_code(Transformation::to_wgs84(*system_)(middle));
-    throw input_error("The " + called() + " is in web Mercator (" + system_->name() +
-                      "), whose lengths and areas are not those on the ground; reproject it: " +
-                      command("gdalwarp -r bilinear -t_srs " + code, "utm") + ".");
 }
 
 void RasterFile::check_size() const {

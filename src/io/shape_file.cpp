@@ -37,6 +37,7 @@ public:
         check_local_file(path_, called_);
         open(before);
         check_fields();
+        choose_field();
         Transformation to_target(system(), target_);
         while (const OGRFeatureUniquePtr feature{layer_->GetNextFeature()}) add(*feature, to_target);
         session_.throw_if_failed(before, Fault::inputs, "The " + called_ + " cannot be read to its end; copy or make it again");
@@ -56,13 +57,31 @@ private:
         layer_ = layer_of(*dataset_, wish_.layer, called_, wish_.layer_key);
     }
 
-    [[nodiscard]] std::string wanted() const { return wish_.kinds == ShapeKinds::lines ? "lines" : "points and polygons"; }
+    [[nodiscard]] std::string wanted() const {
+        if (wish_.kinds == ShapeKinds::lines) return "lines";
+        return wish_.kinds == ShapeKinds::polygons ? "polygons" : "points and polygons";
+    }
+
+    void choose_field() {
+        if (wish_.text_field.empty()) return;
+        const OGRFeatureDefn& definition = *layer_->GetLayerDefn();
+        field_ = definition.GetFieldIndex(wish_.text_field.c_str());
+        if (field_ >= 0) return;
+        std::string list;
+        for (int i = 0; i < definition.GetFieldCount(); ++i)
+            list += (i == 0 ? "" : ", ") + std::string(definition.GetFieldDefn(i)->GetNameRef());
+        throw input_error("The " + called_ + " has no field \"" + wish_.text_field + "\"; its fields are " + (list.empty() ? "none" : list) + ".");
+    }
+
+    [[nodiscard]] std::string text_of(OGRFeature& feature) const {
+        return field_ >= 0 && feature.IsFieldSetAndNotNull(field_) ? feature.GetFieldAsString(field_) : "";
+    }
 
     [[nodiscard]] ReferenceSystem system() const {
         return system_of_layer(*layer_, called_, path_);
     }
 
-    void add(const OGRFeature& feature, Transformation& to_target) {
+    void add(OGRFeature& feature, Transformation& to_target) {
         ++number_;
         Taken taken;
         const OGRGeometry* geometry = feature.GetGeometryRef();
@@ -76,6 +95,7 @@ private:
         ++result_.features;
         result_.feature_of_line.insert(result_.feature_of_line.end(), taken.lines.size(), static_cast<std::size_t>(number_));
         result_.numbers.insert(result_.numbers.end(), taken.lines.size(), numbers_of(feature));
+        result_.polygon_texts.insert(result_.polygon_texts.end(), taken.polygons.size(), text_of(feature));
         std::move(taken.lines.begin(), taken.lines.end(), std::back_inserter(result_.lines));
         std::move(taken.points.begin(), taken.points.end(), std::back_inserter(result_.points));
         std::move(taken.polygons.begin(), taken.polygons.end(), std::back_inserter(result_.polygons));
@@ -109,7 +129,7 @@ private:
             for (const OGRGeometry* part : *geometry.toGeometryCollection()) take(*part, to_target, taken);
         } else if (lines && type == wkbLineString) {
             taken.lines.push_back(line_of(*geometry.toLineString(), to_target, taken));
-        } else if (!lines && type == wkbPoint) {
+        } else if (wish_.kinds == ShapeKinds::points_and_polygons && type == wkbPoint) {
             OGRLineString alone;
             alone.addPoint(geometry.toPoint());
             taken.points.push_back(line_of(alone, to_target, taken).front());
@@ -152,6 +172,7 @@ private:
     std::string called_;
     const ShapeWish& wish_;
     const ReferenceSystem& target_;
+    int field_ = -1;
     GDALDatasetUniquePtr dataset_;
     OGRLayer* layer_ = nullptr;
     std::int64_t number_ = 0;

@@ -90,7 +90,7 @@ public:
         read_block(printed, block, annual);
         IntensityTable table = checked_table(printed);
         RainEcho echo = echo_of(printed, table, block, annual);
-        return {.echo = std::move(echo), .law = std::move(table)};
+        return {.echo = std::move(echo), .law = std::move(table), .notices = notices(block, annual)};
     }
 
 private:
@@ -153,13 +153,30 @@ private:
         return has(title, "lower") ? Atlas14Block::lower_bound : Atlas14Block::estimate;
     }
 
+    /// Lines that head a block's rows; the title stands above each.
+    [[nodiscard]] std::vector<std::size_t> block_headers(Atlas14Block block) const {
+        std::vector<std::size_t> headers;
+        for (std::size_t i = 1; i < lines_.size(); ++i) {
+            if (!lower_case(lines_[i].text).starts_with("by duration for")) continue;
+            const TextLine& title = lines_[i - 1];
+            if (!has(title.text, "estimates") && !has(title.text, "bound"))
+                throw fault_at(file_, title.number,
+                               "\"" + std::string(title.text) +
+                                   "\" stands where a block has its title, such as PRECIPITATION FREQUENCY ESTIMATES; " +
+                                   std::string(fetch_again));
+            if (block_titled(title.text) == block) headers.push_back(i);
+        }
+        return headers;
+    }
+
     void read_block(PrintedTable& printed, Atlas14Block block, bool annual) const {
-        for (std::size_t i = 0; i + 1 < lines_.size(); ++i) {
-            const bool is_title = lower_case(lines_[i].text).starts_with("precipitation frequency estimates");
-            if (!is_title || block_titled(lines_[i].text) != block) continue;
-            read_header(printed, lines_[i + 1], annual);
-            read_rows(printed, i + 2);
-            return;
+        const std::vector<std::size_t> headers = block_headers(block);
+        if (headers.size() > 1)
+            throw fault_at(file_, lines_[headers[1]].number,
+                           "a second block of the " + std::string(words(block)) + " begins; " + std::string(fetch_again));
+        if (headers.size() == 1) {
+            read_header(printed, lines_[headers[0]], annual);
+            return read_rows(printed, headers[0] + 1);
         }
         throw input_error(file_ + " holds no block of the " + std::string(words(block)) + "; " +
                           std::string(block == Atlas14Block::estimate
@@ -252,6 +269,22 @@ private:
                 return "lower bound";
         }
         return "";
+    }
+
+    /// What makes the numbers other than those that drainage manuals mean.
+    [[nodiscard]] Notices notices(Atlas14Block block, bool annual) const {
+        Notices notices;
+        if (annual)
+            notices.push_back({.code = "rain-annual-maximum",
+                               .text = file_ +
+                                       " is of annual maxima, whose depths up to 10 years are smaller than those of "
+                                       "partial durations that manuals mean (by about an eighth at 2 years); download the "
+                                       "partial duration series unless annual maxima are wanted"});
+        if (block != Atlas14Block::estimate)
+            notices.push_back({.code = "rain-bound",
+                               .text = file_ + " is read at the " + std::string(words(block)) +
+                                       " of its 90 % confidence interval, not at the estimate"});
+        return notices;
     }
 
     /// "NOAA Atlas 14 Volume 9 Version 2, Southeastern States, 26.6 Degree, -81.9 Degree".

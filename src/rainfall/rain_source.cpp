@@ -179,8 +179,11 @@ RainSource rain_from_formulas(std::vector<PeriodFormula> formulas, RainRange ran
     return {.echo = std::move(echo), .law = std::move(formulas), .notices = std::move(notices)};
 }
 
-RainSource rain_from_text(std::string_view text, std::string_view file) {
-    return is_atlas14_text(text) ? rain_from_atlas14(text, file) : rain_from_table(text, file);
+RainSource rain_from_text(std::string_view text, std::string_view file, std::optional<Atlas14Block> block) {
+    if (is_atlas14_text(text)) return rain_from_atlas14(text, file, block.value_or(Atlas14Block::estimate));
+    if (!block) return rain_from_table(text, file);
+    throw input_error(std::string(file) +
+                      " is no NOAA Atlas 14 point file, which alone has blocks; leave out block under [rain]");
 }
 
 }  // namespace rillclock

@@ -155,14 +155,12 @@ public:
         for (const Line& ring : polygon.rings) add(ring);
     }
 
-    [[nodiscard]] std::vector<Cell> cells() {
-        std::vector<Cell> cells;
+    void runs(const std::function<void(Cell, Cell)>& look) {
         for (std::size_t r = 0; r < crossings_.size(); ++r) {
             std::vector<double>& columns = crossings_[r];
             std::sort(columns.begin(), columns.end());
-            for (std::size_t i = 1; i < columns.size(); i += 2) fill(first_ + static_cast<std::int64_t>(r), columns[i - 1], columns[i], cells);
+            for (std::size_t i = 1; i < columns.size(); i += 2) run(first_ + static_cast<std::int64_t>(r), columns[i - 1], columns[i], look);
         }
-        return cells;
     }
 
 private:
@@ -184,11 +182,10 @@ private:
         }
     }
 
-    void fill(std::int64_t row, double from, double to, std::vector<Cell>& cells) const {
+    void run(std::int64_t row, double from, double to, const std::function<void(Cell, Cell)>& look) const {
+        const std::int64_t first = bounded(first_centre(from), grid_.columns);
         const std::int64_t end = bounded(first_centre(to), grid_.columns);
-        for (std::int64_t column = bounded(first_centre(from), grid_.columns); column < end; ++column) {
-            cells.push_back(grid_.cell({row, column}));
-        }
+        if (first < end) look(grid_.cell({row, first}), grid_.cell({row, end - 1}) + 1);
     }
 
     const Grid& grid_;
@@ -209,8 +206,15 @@ Way shortened(const Way& way, std::int64_t columns) {
     return kept;
 }
 
+void for_each_run_within(const Polygon& polygon, const Grid& grid, const std::function<void(Cell first, Cell end)>& look) {
+    Scan(polygon, grid).runs(look);
+}
+
 std::vector<Cell> cells_within(const Polygon& polygon, const Grid& grid) {
-    std::vector<Cell> cells = Scan(polygon, grid).cells();
+    std::vector<Cell> cells;
+    for_each_run_within(polygon, grid, [&](Cell first, Cell end) {
+        for (Cell cell = first; cell < end; ++cell) cells.push_back(cell);
+    });
     if (!cells.empty() || polygon.rings.empty() || polygon.rings.front().empty()) return cells;
     const auto corner = grid.at(polygon.rings.front().front());
     return corner ? std::vector<Cell>{grid.cell(*corner)} : cells;

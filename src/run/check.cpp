@@ -96,9 +96,10 @@ private:
         if (!study_.rain.two_year_24_hour && !study_.rain.is_by_duration()) return;
         const StudyRain rain = read_rain(study_);
         note(rain.notices);
-        if (rain.source) report_.facts.push_back("rain: " + sentence(rain.source->echo));
+        if (rain.source && rain.is_everywhere) report_.facts.push_back("rain: " + sentence(rain.source->echo));
+        for (const ZoneRain& zone : rain.zones) report_.facts.push_back("rain zone: " + sentence(zone.source.echo));
         if (rain.source) report_.facts.push_back("storms: " + storms_text(rain));
-        if (rain.two_year_24_hour) {
+        if (rain.two_year_24_hour && rain.is_everywhere) {
             report_.facts.push_back("rain: 2-year 24-hour depth " + significant(in_inches(*rain.two_year_24_hour), 4) + " in (" +
                                     significant(in_millimetres(*rain.two_year_24_hour), 4) + " mm)");
         }

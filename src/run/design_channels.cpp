@@ -10,7 +10,7 @@ namespace {
 class Periods {
 public:
     Periods(const LastPass& last, const DesignChannels& channels)
-        : last_(last), channels_(channels), network_(channels.travel, channels.runoff), intensities_(intensities_of(last.rain)) {}
+        : last_(last), channels_(channels), network_(channels.travel, channels.runoff), intensities_(intensities_of(last.rain.storms)) {}
 
     void time_under(std::size_t period) {
         const DesignSection section{.bottom_width = channels_.travel.rules().channel.width,

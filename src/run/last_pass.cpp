@@ -71,7 +71,7 @@ std::vector<PointHeads> under_one_storm_alone(const LastPass& pass, const std::v
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
     tally_all(pass, tally);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
-    add_storms(heads, times, intensities_of(pass.rain));
+    add_storms(heads, times, intensities_of(pass.rain.storms));
     return heads;
 }
 
@@ -88,7 +88,7 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<
                    [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
     rasters.close();
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
-    add_storms(heads, times, intensities_of(pass.rain));
+    add_storms(heads, times, intensities_of(pass.rain.storms));
     return heads;
 }
 
@@ -97,7 +97,7 @@ std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, const std::
     ArrivalTally tally(pass.travel, pass.points.size(), storms.reference_factor, Storms::by_point);
     tally_all(pass, tally);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, times, storms);
-    require_settled(heads, pass.points, pass.rain);
+    if (pass.study.timing.is_kinematic()) require_settled(heads, pass.points, pass.rain);
     return heads;
 }
 

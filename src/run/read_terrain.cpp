@@ -58,6 +58,7 @@ MemoryTask memory_task(const Study& study, const ElevationFile& elevations) {
     return {.cells = elevations.grid().size(),
             .wide_elevations = width_of(elevations.format.stored) == ElevationStore::Width::eight_bytes,
             .soil_raster = study.surface.soil.file.has_value(),
+            .rain_zones = study.rain.zones.file.has_value(),
             .own_storms = study.timing.is_kinematic()};
 }
 

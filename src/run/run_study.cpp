@@ -21,6 +21,7 @@
 #include "last_pass.hpp"
 #include "depressions.hpp"
 #include "mapped_flow.hpp"
+#include "rain_zones.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
 #include "study_storms.hpp"
@@ -87,13 +88,24 @@ std::vector<CellLabel> labels_of(const std::vector<DesignPoint>& points) {
     return labels;
 }
 
-std::vector<PointMethods> methods_of(const Study& study, const CoverBook& book, const StudyRain& rain,
+/// What the study states for a point's lump methods: for all points, or by a field of their file.
+PointLumpInputs lump_inputs_at(const Study& study, const StatedPoints& stated, const std::string& point) {
+    PointLumpInputs inputs;
+    if (const auto found = stated.lump_inputs.find(point); found != stated.lump_inputs.end()) inputs = found->second;
+    for (const LumpInput input : all_lump_inputs) {
+        if (study.methods[input].number) inputs[input] = study.methods[input].number;
+    }
+    return inputs;
+}
+
+std::vector<PointMethods> methods_of(const Study& study, const StatedPoints& stated, const CoverBook& book, const StudyRain& rain,
                                      const std::vector<Outlet>& outlets) {
-    const MethodGround ground{.book = book, .has_soil = study.surface.soil_group || study.surface.soil.file};
-    const std::vector<IntensityOfDuration> intensities = intensities_of(rain);
     std::vector<PointMethods> methods;
     for (const Outlet& outlet : outlets) {
-        methods.push_back(point_methods(outlet, ground, rain.source ? intensities[rain.raster] : IntensityOfDuration{}));
+        const MethodGround ground{.book = book, .has_soil = study.surface.soil_group || study.surface.soil.file,
+                                  .stated = lump_inputs_at(study, stated, outlet.point.name)};
+        const std::vector<IntensityOfDuration> rains = intensities_of(rain.storms_of(outlet.rain_zone.number));
+        methods.push_back(point_methods(outlet, ground, rain.source ? rains[rain.raster] : IntensityOfDuration{}));
     }
     return methods;
 }
@@ -101,7 +113,10 @@ std::vector<PointMethods> methods_of(const Study& study, const CoverBook& book, 
 /// What was read, for those who watch the run.
 std::vector<std::string> facts_of(const StudyRain& rain) {
     if (!rain.source) return {};
-    return {"rain: " + sentence(rain.source->echo)};
+    std::vector<std::string> facts;
+    if (rain.is_everywhere) facts.push_back("rain: " + sentence(rain.source->echo));
+    for (const ZoneRain& zone : rain.zones) facts.push_back("rain zone: " + sentence(zone.source.echo));
+    return facts;
 }
 
 constexpr std::size_t most_overview_rows = 20;
@@ -114,9 +129,9 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     require_memory(study);
     ResultFolder folder(located(study, study.output.folder), options.replace ? Existing::replace : Existing::refuse);
     const Executor executor(options.threads);
-    // Checksums are made while the work goes on; nothing else is left to do on one processor alone.
-    std::future<std::vector<InputFile>> checksums = std::async(std::launch::async, [&study] { return input_files(study); });
     const StudyRain rain = read_rain(study);
+    // Checksums are made while the work goes on; nothing else is left to do on one processor alone.
+    std::future<std::vector<InputFile>> checksums = std::async(std::launch::async, [&] { return input_files(study, rain); });
     StatedEdits stated = read_edits(study);
 
     TerrainData terrain = read_terrain(study, executor, progress);
@@ -124,6 +139,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const TravelRules rules = rules_of(study, resolved, rain);
     const SurfaceData surface = read_surface(study, terrain, progress);
     const std::int64_t cells = terrain.grid.size();
+    const RainZoneCells zones = rain_zone_cells(study, terrain);
     const TileGrid tiles(terrain.grid.rows, terrain.grid.columns, options.tile_side);
 
     const MappedFlow flow = stage(progress, "flow directions", cells, [&] {
@@ -136,7 +152,8 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const TiledGround ground{.forest = forest, .ground = steps, .elevations = terrain.elevations,
                              .metres_per_elevation_unit = terrain.format.metres_per_stored_unit(), .surface = surface.table,
                              .mapped_channels = flow.line_cells,
-                             .reaches = flow.reaches.empty() ? nullptr : &flow.reaches};
+                             .reaches = flow.reaches.empty() ? nullptr : &flow.reaches,
+                             .rain_zones = study.rain.zones.file ? &zones.zone : nullptr};
     ChannelReaches reaches;  // by the design storm; times refer to them
     const auto travelled = stage(progress, "travel times", cells, [&] {
         return std::make_unique<TiledTravel>(ground, rules, executor);
@@ -158,7 +175,9 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const std::vector<Outlet> outlets = stage(progress, "design points", cells, [&] {
         return outlets_of(travel, points.points, tree, heads, outlet_rules_of(study, resolved));
     });
-    const std::vector<PointMethods> methods = methods_of(study, surface.book, rain, outlets);
+    require_rain(rain, outlets);
+    const StatedPoints stated_points = study.points.file ? read_stated_points(study, terrain.system) : StatedPoints{};
+    const std::vector<PointMethods> methods = methods_of(study, stated_points, surface.book, rain, outlets);
     restate_own_times(stated, travel, outlets);
     const StudyNetwork network = study_network({.study = study, .rain = rain, .book = surface.book, .outlets = outlets, .stated = stated});
     const StudyPeaks peaks = histograms ? stage(progress, "peaks", cells, [&] {
@@ -167,7 +186,9 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     }) : no_peaks(study, rain);
     const Depressions depressions = stage(progress, "depressions", cells, [&] { return depressions_of(travel, outlets); });
     const Notices left_out = notices_of(depressions, ground.metres_per_elevation_unit);
-    terrain.notices.insert(terrain.notices.end(), left_out.begin(), left_out.end());
+    for (const Notices& more : {left_out, zones.notices, zone_notices(rain, outlets, terrain.grid)}) {
+        terrain.notices.insert(terrain.notices.end(), more.begin(), more.end());
+    }
     const Notices notices = all_notices(terrain, surface, rain, points, network, peaks, outlets);
     const std::vector<InputFile> inputs = checksums.get();
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};

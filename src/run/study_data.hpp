@@ -1,5 +1,7 @@
 #pragma once
 
+#include <map>
+#include <string>
 #include <string_view>
 
 #include "rillclock/catchment/design_points.hpp"
@@ -55,13 +57,14 @@ void require_memory(const Study& study);
 /// Points of the study's file in the DEM's coordinates, and what was left out of it.
 struct StatedPoints {
     std::vector<StatedPoint> points;
+    std::map<std::string, PointLumpInputs> lump_inputs;   ///< by name: what fields of the file state for the lump methods
     Notices notices;
 };
 [[nodiscard]] StatedPoints read_stated_points(const Study& study, const ReferenceSystem& system);
 [[nodiscard]] PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const TiledTravel& travel,
                                          const TerrainData& terrain);
 [[nodiscard]] DataFacts facts_of(const ElevationFormat& format, const Ground& ground);
-/// Reads the rain of a study, from its file if it names one.
+/// Reads the rain of a study, from its file and those of its zones if it names any.
 [[nodiscard]] StudyRain read_rain(const Study& study);
 /// Reads the pipes and overrides of a study, where it names any.
 [[nodiscard]] StatedEdits read_edits(const Study& study);
@@ -69,7 +72,7 @@ struct StatedPoints {
 void restate_own_times(StatedEdits& stated, const TiledTravel& travel, const std::vector<Outlet>& outlets);
 [[nodiscard]] TravelRules rules_of(const Study& study, const ResolvedStudy& resolved, const StudyRain& rain);
 [[nodiscard]] OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved);
-[[nodiscard]] std::vector<InputFile> input_files(const Study& study);
+[[nodiscard]] std::vector<InputFile> input_files(const Study& study, const StudyRain& rain);
 
 /// Tells the caller that a stage begins, does it, tells that it is over, and hands its result on.
 template <class Work>

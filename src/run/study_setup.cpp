@@ -7,6 +7,7 @@
 #include "rillclock/io/point_file.hpp"
 #include "rillclock/io/text_file.hpp"
 #include "mapped_flow.hpp"
+#include "rain_zones.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
@@ -25,13 +26,41 @@ SheetRules sheet_rules_of(const Study& study, const StudyRain& rain) {
 
 }  // namespace
 
+namespace {
+
+std::vector<LumpInput> lump_inputs_by_field(const Study& study) {
+    std::vector<LumpInput> inputs;
+    for (const LumpInput input : all_lump_inputs) {
+        if (study.methods[input].field) inputs.push_back(input);
+    }
+    return inputs;
+}
+
+PointLumpInputs lump_inputs_of(const Study& study, const std::vector<LumpInput>& by_field, const NamedPlace& point) {
+    PointLumpInputs inputs;
+    for (std::size_t i = 0; i < by_field.size(); ++i) {
+        if (point.fields[i].empty()) continue;
+        const std::string subject = "the field \"" + *study.methods[by_field[i]].field + "\" of the point '" + point.name + "' (" +
+                                    *study.points.file + ")";
+        inputs[by_field[i]] = lump_input_from_text(by_field[i], point.fields[i], subject);
+    }
+    return inputs;
+}
+
+}  // namespace
+
 StatedPoints read_stated_points(const Study& study, const ReferenceSystem& system) {
     PointOptions options;
     options.layer = study.points.layer;
     options.name_field = study.points.name;
+    const std::vector<LumpInput> by_field = lump_inputs_by_field(study);
+    for (const LumpInput input : by_field) options.fields.push_back(*study.methods[input].field);
     const PointFile file = read_points(located(study, *study.points.file), options, system);
-    StatedPoints stated{.points = {}, .notices = file.notices};
-    for (const NamedPlace& point : file.points) stated.points.push_back({point.name, point.place});
+    StatedPoints stated{.points = {}, .lump_inputs = {}, .notices = file.notices};
+    for (const NamedPlace& point : file.points) {
+        stated.points.push_back({point.name, point.place});
+        stated.lump_inputs[point.name] = lump_inputs_of(study, by_field, point);
+    }
     return stated;
 }
 
@@ -58,7 +87,12 @@ PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, co
 
 StudyRain read_rain(const Study& study) {
     const std::string text = study.rain.file ? read_text(located(study, *study.rain.file)) : std::string();
-    return study_rain(study, text);
+    if (!study.rain.zones.file) return study_rain(study, text);
+    std::vector<ZoneText> zones;
+    for (const std::string& file : read_rain_zones(study, open_elevation_of(study).system).files) {
+        zones.push_back({.file = file, .text = read_text(located(study, file))});
+    }
+    return study_rain(study, text, zones);
 }
 
 StatedEdits read_edits(const Study& study) {
@@ -111,7 +145,7 @@ OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved) {
             .segments = {.shortest = resolved.shortest_segment, .shortest_share = share}};
 }
 
-std::vector<InputFile> input_files(const Study& study) {
+std::vector<InputFile> input_files(const Study& study, const StudyRain& rain) {
     std::vector<InputFile> files;
     const auto add = [&](const char* role, const std::string& name) {
         const std::string path = located(study, name);
@@ -131,6 +165,8 @@ std::vector<InputFile> input_files(const Study& study) {
     if (study.timing.velocity_chart) add("velocity_chart", *study.timing.velocity_chart);
     if (study.points.pipes) add("pipes", *study.points.pipes);
     if (study.timing.overrides) add("overrides", *study.timing.overrides);
+    if (study.rain.zones.file) add("rain zones", *study.rain.zones.file);
+    for (const ZoneRain& zone : rain.zones) add("rain", zone.file);
     return files;
 }
 

@@ -9,10 +9,10 @@
 
 namespace rillclock {
 
-/// Intensity by duration of each of the study's storms. The rain must outlive it.
-[[nodiscard]] std::vector<IntensityOfDuration> intensities_of(const StudyRain& rain);
+/// Intensity by duration of each of the storms, which must outlive it.
+[[nodiscard]] std::vector<IntensityOfDuration> intensities_of(const std::vector<StudyStorm>& storms);
 
-/// The storms that points are timed under; none where one storm times all.
+/// The storms that points are timed under; none where one storm times all: without kinematic sheet flow and without zones of rain.
 [[nodiscard]] std::optional<OwnStorms> own_storms_of(const Study& study, const TravelRules& rules,
                                                      const StudyRain& rain);
 

@@ -22,6 +22,39 @@ void measure_cover(const Outlet& outlet, const MethodGround& ground, CatchmentMe
     measures.no_curve_number = curve.lacking;
 }
 
+std::string reason_of(LumpInput input, const std::string& lacking) {
+    const std::string key = "methods." + std::string(name_of(input));
+    return lacking.empty() ? "state " + key : lacking + "; state it there or as " + key;
+}
+
+/// What a lump method asks for: as stated for the point, else from the cover book.
+struct LumpTarget {
+    LumpInput input;
+    std::optional<double> CatchmentMeasures::*value;
+    std::string CatchmentMeasures::*reason;
+};
+
+void settle(const LumpTarget& target, const MethodGround& ground, const Composite& book, CatchmentMeasures& measures) {
+    measures.*target.value = ground.stated[target.input] ? ground.stated[target.input] : book.value;
+    if (!(measures.*target.value)) measures.*target.reason = reason_of(target.input, book.lacking);
+}
+
+void measure_lump_inputs(const Outlet& outlet, const MethodGround& ground, CatchmentMeasures& measures) {
+    const std::vector<LandShare> land = outlet.ground.land().shares();
+    using M = CatchmentMeasures;
+    settle({LumpInput::kerby_n, &M::kerby_retardance, &M::no_kerby_retardance}, ground,
+           prevailing(land, ground.book, &CoverClass::kerby_n, "kerby_n"), measures);
+    settle({LumpInput::izzard_c, &M::izzard_retardance, &M::no_izzard_retardance}, ground,
+           prevailing(land, ground.book, &CoverClass::izzard_c, "izzard_c"), measures);
+    settle({LumpInput::county_k, &M::county_factor, &M::no_county_factor}, ground,
+           prevailing(land, ground.book, &CoverClass::county_k, "county_k"), measures);
+    settle({LumpInput::impervious, &M::impervious, &M::no_impervious}, ground,
+           composite_impervious(land, ground.book), measures);
+    settle({LumpInput::undeveloped_coefficient, &M::undeveloped_coefficient, &M::no_undeveloped_coefficient}, ground,
+           {}, measures);
+    measures.kirpich_adjustment = ground.stated[LumpInput::kirpich_factor].value_or(1.0);
+}
+
 /// The part of the longest path before its first channel or open water.
 void measure_overland(const PointPath& longest, CatchmentMeasures& measures) {
     double length_m = 0.0;
@@ -62,6 +95,7 @@ CatchmentMeasures measures_of(const Outlet& outlet, const MethodGround& ground) 
     measures.land_slope = outlet.ground.land_slope();
     measures.mean_height = metres(outlet.ground.mean_elevation_m() - outlet.elevation_m);
     measure_cover(outlet, ground, measures);
+    measure_lump_inputs(outlet, ground, measures);
     measure_overland(outlet.longest, measures);
     return measures;
 }

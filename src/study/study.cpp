@@ -28,8 +28,8 @@ void require_inputs(const Study& study) {
             "land cover; state the raster, under [surface] as cover = \"cover.tif\" or as --cover cover.tif");
     require(
         study, study.surface.book,
-        "cover book; state what the codes of the cover raster mean, under [surface] as book = \"nlcd\" or the name of "
-        "a CSV file, or as --book nlcd");
+        "cover book; state what the codes of the cover raster mean, under [surface] as book = \"nlcd\", "
+        "\"worldcover\" or the name of a CSV file, or as --book nlcd");
     const bool has_rain = study.rain.two_year_24_hour || study.rain.is_by_duration();
     if (!has_rain) throw input_error(rain_is_missing(name_of(study)));
 }
@@ -82,6 +82,30 @@ void refuse_layers_without_file(const Study& study) {
         throw input_error(name_of(study) + " names a layer of " + name + " but no file; add " + name +
                           " = \"mapped.gpkg\" under [terrain], or leave out " + name + "_layer");
     }
+}
+
+void refuse_contradictory_zones(const Study& study) {
+    const RainStudy& rain = study.rain;
+    if (!rain.zones.file && rain.zones.field != ZoneStudy{}.field)
+        throw input_error(name_of(study) +
+                          " states zone_field, which names a field of the polygons of rain zones, but gives none; add "
+                          "zones = \"zones.gpkg\" under [rain], or leave it out");
+    if (rain.zones.file && study.timing.channel.design_storm)
+        throw input_error(name_of(study) +
+                          " states zones of rain and channels by the design storm, which know of one rain alone; leave "
+                          "out zones under [rain], or flow under [timing.channel]");
+    if (rain.block && !rain.file && !rain.zones.file)
+        throw input_error(name_of(study) +
+                          " states block, which chooses among the blocks of a NOAA Atlas 14 file, but gives none; add "
+                          "file = \"atlas14.csv\" under [rain], or leave it out");
+}
+
+void refuse_contradictory_methods(const Study& study) {
+    for (const LumpInput input : all_lump_inputs)
+        if (study.methods[input].field && !study.points.file)
+            throw input_error(name_of(study) + " takes methods." + std::string(name_of(input)) +
+                              " from a field of the points' file but gives no file; add file = \"points.gpkg\" under "
+                              "[points], or state a number");
 }
 
 void refuse_contradictory_rain(const Study& study) {
@@ -183,6 +207,8 @@ void check_study(const Study& study) {
     refuse_contradictory_points(study);
     refuse_contradictory_channel(study);
     refuse_contradictory_rain(study);
+    refuse_contradictory_zones(study);
+    refuse_contradictory_methods(study);
     refuse_contradictory_sheet(study);
     refuse_contradictory_shallow(study);
     refuse_contradictory_network(study);

@@ -19,7 +19,7 @@ std::string name_of(const Study& study) {
 
 std::optional<RainSource> source_of(const Study& study, std::string_view file_text) {
     const RainStudy& rain = study.rain;
-    if (rain.file) return rain_from_text(file_text, *rain.file);
+    if (rain.file) return rain_from_text(file_text, *rain.file, rain.block);
     if (rain.formulas.empty()) return std::nullopt;
     std::vector<PeriodFormula> formulas;
     for (const StatedRainFormula& stated : rain.formulas) formulas.push_back(stated.formula);
@@ -42,54 +42,77 @@ std::size_t raster_place(const Study& study, const std::vector<double>& periods)
                       ", which is not among its return_periods " + list_of_years(periods) + "; add it to them");
 }
 
-void read_storms(const Study& study, StudyRain& rain) {
-    const std::vector<double> periods = periods_of(study);
-    rain.raster = raster_place(study, periods);
-    for (const double period : periods)
-        rain.storms.push_back(
-            {period, rain.source->curve(period, study.peaks.least_time.value_or(standard_least_time))});
+std::vector<StudyStorm> storms_from(const Study& study, const RainSource& source) {
+    std::vector<StudyStorm> storms;
+    for (const double period : periods_of(study))
+        storms.push_back({period, source.curve(period, study.peaks.least_time.value_or(standard_least_time))});
+    return storms;
 }
 
 std::string depth_text(Length depth) {
     return significant(in_inches(depth), 4) + " in (" + significant(in_millimetres(depth), 4) + " mm)";
 }
 
-void tell_difference(Length stated, Length read, StudyRain& rain) {
+void tell_difference(Length stated, Length read, const RainSource& source, Notices& notices) {
     const double difference = std::abs(read / stated - 1.0);
     if (!(difference > told_difference)) return;
-    rain.notices.push_back({.code = "rain-depths-differ",
-                            .text = "two_year_24_hour is stated as " + depth_text(stated) + ", while " +
-                                    rain.source->echo.source + " gives " + depth_text(read) +
-                                    "; the stated depth was taken",
-                            .value = difference,
-                            .threshold = told_difference});
+    notices.push_back({.code = "rain-depths-differ",
+                       .text = "two_year_24_hour is stated as " + depth_text(stated) + ", while " +
+                               source.echo.source + " gives " + depth_text(read) + "; the stated depth was taken",
+                       .value = difference,
+                       .threshold = told_difference});
 }
 
-void settle_depth(const Study& study, StudyRain& rain) {
-    rain.two_year_24_hour = study.rain.two_year_24_hour;
-    const std::optional<Length> read = rain.source ? rain.source->two_year_24_hour() : std::nullopt;
-    if (read && rain.two_year_24_hour) tell_difference(*rain.two_year_24_hour, *read, rain);
-    if (read && !rain.two_year_24_hour) rain.two_year_24_hour = read;
-    if (rain.two_year_24_hour || study.timing.is_kinematic()) return;
-    if (!rain.source) throw input_error(rain_is_missing(name_of(study)));
+/// The 2-year 24-hour depth as stated, else as the source has it.
+std::optional<Length> settled_depth(const Study& study, const std::optional<RainSource>& source, Notices& notices) {
+    const std::optional<Length> stated = study.rain.two_year_24_hour;
+    const std::optional<Length> read = source ? source->two_year_24_hour() : std::nullopt;
+    if (read && stated) tell_difference(*stated, *read, *source, notices);
+    if (stated || read) return stated ? stated : read;
+    if (study.timing.is_kinematic()) return std::nullopt;
+    if (!source) throw input_error(rain_is_missing(name_of(study)));
     throw input_error(
-        sentence(rain.source->echo) +
+        sentence(source->echo) +
         ", so the 2-year 24-hour depth that NRCS sheet flow needs cannot be read from it; state it under [rain] as "
         "two_year_24_hour = \"3.6 in\" or as --rain \"3.6 in\"");
+}
+
+ZoneRain zone_rain(const Study& study, const ZoneText& text, Notices& notices) {
+    ZoneRain zone{.file = text.file, .source = rain_from_text(text.text, text.file, study.rain.block)};
+    notices.insert(notices.end(), zone.source.notices.begin(), zone.source.notices.end());
+    zone.two_year_24_hour = settled_depth(study, zone.source, notices);
+    zone.storms = storms_from(study, zone.source);
+    return zone;
+}
+
+/// What is told of the rain outside of all zones where there is none: that of the first zone.
+void take_first_zone(StudyRain& rain) {
+    rain.is_everywhere = false;
+    rain.source = rain.zones.front().source;
+    rain.two_year_24_hour = rain.zones.front().two_year_24_hour;
+    rain.storms = rain.zones.front().storms;
 }
 
 }  // namespace
 
 Duration StudyRain::first_assumed() const {
-    const std::optional<Duration> last = source ? source->echo.range.last : std::nullopt;
-    return std::min(StormSearch{}.start, last.value_or(StormSearch{}.start));
+    Duration first = StormSearch{}.start;
+    if (source) first = std::min(first, source->echo.range.last.value_or(first));
+    for (const ZoneRain& zone : zones) first = std::min(first, zone.source.echo.range.last.value_or(first));
+    return first;
 }
 
-StudyRain study_rain(const Study& study, std::string_view file_text) {
+StudyRain study_rain(const Study& study, std::string_view file_text, std::span<const ZoneText> zones) {
     StudyRain rain{.source = source_of(study, file_text)};
     if (rain.source) rain.notices = rain.source->notices;
-    settle_depth(study, rain);
-    if (rain.source) read_storms(study, rain);
+    for (const ZoneText& zone : zones) rain.zones.push_back(zone_rain(study, zone, rain.notices));
+    if (!zones.empty() && !rain.source) {
+        take_first_zone(rain);
+    } else {
+        rain.two_year_24_hour = settled_depth(study, rain.source, rain.notices);
+        if (rain.source) rain.storms = storms_from(study, *rain.source);
+    }
+    if (rain.source) rain.raster = raster_place(study, periods_of(study));
     return rain;
 }
 

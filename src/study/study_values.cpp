@@ -42,6 +42,8 @@ public:
         return *text;
     }
 
+    [[nodiscard]] bool is_text() const { return std::holds_alternative<std::string>(value_.value); }
+
     [[nodiscard]] QuantityAsked asked(Sign sign = Sign::positive) const {
         return {.subject = value_.subject, .example = without_quotes(form_), .sign = sign};
     }
@@ -149,14 +151,6 @@ Speed pond_speed(const Stated& stated) {
     return stated.speed();
 }
 
-std::string book(const Stated& stated) {
-    if (stated.text() == "worldcover")
-        throw stated.fault(
-            "is \"worldcover\", which this version of rillclock does not have; write \"nlcd\" or the name of a CSV "
-            "file of your own");
-    return stated.text();
-}
-
 std::string region(const Stated& stated) {
     std::vector<std::string_view> regions;
     for (const ChannelSize& size : channel_sizes()) regions.push_back(size.region);
@@ -215,6 +209,18 @@ Duration time_bin(const Stated& stated) {
     return bin;
 }
 
+void set_lump_input(Study& study, LumpInput input, const Stated& stated) {
+    constexpr std::string_view by_field = "field ";
+    const LumpRange range = range_of(input);
+    LumpValue& value = study.methods[input];
+    if (!stated.is_text())
+        value.number = stated.number(range.least, range.greatest);
+    else if (stated.text().starts_with(by_field))
+        value.field = stated.text().substr(by_field.size());
+    else
+        value.number = lump_input_from_text(input, stated.text(), stated.subject());
+}
+
 struct Setter {
     std::string_view key;
     void (*set)(Study&, const Stated&);
@@ -248,7 +254,7 @@ constexpr std::array setters{
     Setter{"terrain.pond_speed", [](Study& s, const Stated& v) { s.terrain.pond_speed = pond_speed(v); }},
     Setter{"surface.cover", [](Study& s, const Stated& v) { s.surface.cover = v.text(); }},
     Setter{"surface.band", [](Study& s, const Stated& v) { s.surface.band = v.whole_number(1); }},
-    Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = book(v); }},
+    Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = v.text(); }},
     Setter{"surface.fallback_class", [](Study& s, const Stated& v) { s.surface.fallback_class = v.whole_number(0); }},
     Setter{"surface.soil_group", [](Study& s, const Stated& v) { set_soil(s.surface, v); }},
     Setter{"surface.soil_band", [](Study& s, const Stated& v) { s.surface.soil.band = v.whole_number(1); }},
@@ -269,6 +275,12 @@ constexpr std::array setters{
         "rain.two_year_24_hour",
         [](Study& s, const Stated& v) { s.rain.two_year_24_hour = two_year_24_hour_from_text(v.text(), v.subject()); }},
     Setter{"rain.file", [](Study& s, const Stated& v) { s.rain.file = v.text(); }},
+    Setter{"rain.block",
+           [](Study& s, const Stated& v) {
+               s.rain.block = static_cast<Atlas14Block>(v.choice({"estimate", "upper bound", "lower bound"}));
+           }},
+    Setter{"rain.zones", [](Study& s, const Stated& v) { s.rain.zones.file = v.text(); }},
+    Setter{"rain.zone_field", [](Study& s, const Stated& v) { s.rain.zones.field = v.text(); }},
     Setter{"rain.formula", add_formula},
     Setter{"rain.formula_from",
            [](Study& s, const Stated& v) { s.rain.formula_from = v.duration(Sign::not_negative); }},
@@ -343,6 +355,13 @@ constexpr std::array setters{
            }},
     Setter{"peaks.area_limit", [](Study& s, const Stated& v) { s.peaks.area_limit = v.area(); }},
     Setter{"peaks.time_bin", [](Study& s, const Stated& v) { s.peaks.time_bin = time_bin(v); }},
+    Setter{"methods.kerby_n", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::kerby_n, v); }},
+    Setter{"methods.izzard_c", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::izzard_c, v); }},
+    Setter{"methods.impervious", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::impervious, v); }},
+    Setter{"methods.undeveloped_coefficient",
+           [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::undeveloped_coefficient, v); }},
+    Setter{"methods.county_k", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::county_k, v); }},
+    Setter{"methods.kirpich_factor", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::kirpich_factor, v); }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
     Setter{"output.rasters", [](Study&, const Stated& v) { (void)v.choice({"geotiff"}, {"cog"}); }},
     Setter{"output.subareas",

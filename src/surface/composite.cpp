@@ -1,7 +1,10 @@
 #include "rillclock/surface/composite.hpp"
 
+#include <algorithm>
 #include <cstdint>
 #include <functional>
+#include <utility>
+#include <vector>
 
 namespace rillclock {
 namespace {
@@ -32,6 +35,14 @@ AreaMean area_mean(std::span<const LandShare> land, const CoverBook& book, const
     }
     if (!(whole > 0)) return {};
     return {.value = sum / whole};
+}
+
+std::vector<LandShare> dry_land(std::span<const LandShare> land, const CoverBook& book) {
+    std::vector<LandShare> dry;
+    for (const LandShare& share : land) {
+        if (!book.classes()[share.kind.cover].is_open_water()) dry.push_back(share);
+    }
+    return dry;
 }
 
 std::int64_t cells_without_soil(std::span<const LandShare> land) {
@@ -68,11 +79,32 @@ Composite composite_runoff_coefficient(std::span<const LandShare> land, const Co
     return {.value = mean.value, .lacking = lacking_text(mean, "c" + either)};
 }
 
-Composite composite_overland_n(std::span<const LandShare> land, const CoverBook& book) {
-    std::vector<LandShare> dry;
-    for (const LandShare& share : land) {
-        if (!book.classes()[share.kind.cover].is_open_water()) dry.push_back(share);
+Composite composite_impervious(std::span<const LandShare> land, const CoverBook& book) {
+    const AreaMean mean = area_mean(land, book, [](const ClassOnSoil& at) { return at.cover.impervious; });
+    return {.value = mean.value, .lacking = lacking_text(mean, "impervious")};
+}
+
+Composite prevailing(std::span<const LandShare> land, const CoverBook& book, std::optional<double> CoverClass::*value,
+                     const std::string& column) {
+    std::vector<std::pair<double, FixedArea>> area_of;  // by value, in the order of the book
+    for (const LandShare& share : dry_land(land, book)) {
+        const CoverClass& cover = book.classes()[share.kind.cover];
+        if (!(cover.*value)) return {.lacking = "the cover book has no " + column + " for " + cover.name};
+        const auto known = std::find_if(area_of.begin(), area_of.end(),
+                                        [&](const auto& each) { return each.first == *(cover.*value); });
+        if (known == area_of.end())
+            area_of.emplace_back(*(cover.*value), share.area);
+        else
+            known->second += share.area;
     }
+    const auto most = std::max_element(area_of.begin(), area_of.end(),
+                                       [](const auto& a, const auto& b) { return a.second < b.second; });
+    if (most == area_of.end()) return {};
+    return {.value = most->first};
+}
+
+Composite composite_overland_n(std::span<const LandShare> land, const CoverBook& book) {
+    const std::vector<LandShare> dry = dry_land(land, book);
     const AreaMean mean =
         area_mean(dry, book, [](const ClassOnSoil& at) { return std::optional(at.cover.n_typical); });
     return {.value = mean.value};

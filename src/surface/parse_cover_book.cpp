@@ -16,12 +16,12 @@
 namespace rillclock {
 namespace {
 
-constexpr std::array<std::string_view, 28> known_columns{
+constexpr std::array<std::string_view, 32> known_columns{
     "code",          "name",           "n_low", "n_typical",     "n_high",         "shallow_type",
     "shallow_k_m_s", "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source",
     "from_memory",   "cn_a",           "cn_b",  "cn_c",          "cn_d",           "c",
     "c_a",           "c_b",            "c_c",   "c_d",           "shallow_n",      "shallow_radius_m",
-    "shallow_radius_ft", "chart_line", "land_use", "impervious_percent"};
+    "shallow_radius_ft", "chart_line", "land_use", "impervious_percent", "kerby_n", "izzard_c", "impervious", "county_k"};
 constexpr std::array<std::string_view, 4> curve_number_columns{"cn_a", "cn_b", "cn_c", "cn_d"};
 constexpr std::array<std::string_view, 4> coefficient_columns{"c_a", "c_b", "c_c", "c_d"};
 constexpr std::array<std::string_view, 4> needed_columns{"code", "name", "n_typical", "source"};
@@ -235,6 +235,27 @@ void read_impervious(const BookRow& row, CoverClass& cover) {
     if (percent) cover.impervious = *percent / 100.0;
 }
 
+/// A number above 0 and at most `greatest`.
+std::optional<double> bounded(const BookRow& row, std::string_view column, double greatest) {
+    const auto number = row.number(column);
+    if (number && !(*number <= greatest))
+        throw row.fault(column, "is " + significant(*number) + "; it is at most " + significant(greatest));
+    return number;
+}
+
+void read_lump_numbers(const BookRow& row, CoverClass& cover) {
+    cover.kerby_n = bounded(row, "kerby_n", 1);
+    cover.izzard_c = bounded(row, "izzard_c", 1);
+    cover.county_k = bounded(row, "county_k", 2);
+    const auto impervious = row.number("impervious", Sign::not_negative);
+    if (!impervious) return;
+    if (cover.impervious) throw row.fault("impervious", "and impervious_percent say the same; leave one of them empty");
+    cover.impervious = impervious;
+    if (!(*cover.impervious <= 1))
+        throw row.fault("impervious", "is " + significant(*cover.impervious) +
+                                          "; write the share of the area from 0 to 1, such as 0.35");
+}
+
 void require_no_ground(const BookRow& row) {
     for (const auto column : {"n_low", "n_typical", "n_high", "shallow_type", "shallow_k_m_s", "shallow_k_ft_s", "shallow_n",
                               "shallow_radius_m", "shallow_radius_ft", "chart_line"})
@@ -256,6 +277,7 @@ CoverClass cover_class(const BookRow& row) {
     read_runoff_coefficients(row, cover);
     read_land_use(row, cover);
     read_impervious(row, cover);
+    read_lump_numbers(row, cover);
     cover.paved = row.yes("paved", cover.shallow_type == "pavement");
     return cover;
 }

@@ -1,11 +1,11 @@
 #!/usr/bin/python3
 """Inputs that are wrong: each is refused with a status and one sentence that names the file, the fault and what mends it."""
 import pathlib
-import subprocess
 import unittest
 
 import numpy as np
 from osgeo import gdal
+from pyproj import Geod, Transformer
 
 from support import BOOK, CommandTest, hills, table, write_points
 
@@ -54,13 +54,32 @@ class Elevations(CommandTest):
         self.ground(transform=(500_000.0, 2.0, 0.3, 5_400_000.0, 0.3, -2.0))
         self.refused_dem("dem.tif", "rotated", "gdalwarp")
 
-    def test_web_mercator(self):
-        self.ground(epsg=3857, corner=(1_000_000.0, 6_000_000.0))
-        sentence = self.refused_dem("dem.tif", "web Mercator", "gdalwarp -r bilinear -t_srs EPSG:32632 dem.tif dem-utm.tif")
-        command = sentence[sentence.index("gdalwarp"):].rstrip(".")
-        subprocess.run(command.split(), cwd=self.folder, check=True, capture_output=True)
-        self.cover(epsg=3857, corner=(1_000_000.0, 6_000_000.0))
-        self.done("run", "--elevation", "dem-utm.tif", *WORDS, "--fallback-class", "1")
+    def test_web_mercator_gives_lengths_areas_and_times_of_the_ground(self):
+        """A plane falling by columns of the map, beside the same numbers on a plane grid with cells of the true size (pyproj)."""
+        plane = 200 - 0.1 * np.add.outer(np.arange(40.0), 0.03 * np.arange(50.0))
+        self.book()
+        geodesic = Geod(ellps="WGS84")
+        for latitude in (12.0, 47.3, 63.0):
+            _, y = Transformer.from_crs(4326, 3857, always_xy=True).transform(9.0, latitude)
+            corner = (1_000_000.0, round(y / 2) * 2.0)
+            self.ground(values=plane, epsg=3857, corner=corner)
+            self.cover(epsg=3857, corner=corner)
+            self.done("run", "--elevation", "dem.tif", *WORDS, "--replace")
+            web = self.result()
+            self.assertIn("web-mercator", {notice["notice"] for notice in web["notices"]})
+            to_degrees = Transformer.from_crs(3857, 4326, always_xy=True)
+            west, south = to_degrees.transform(corner[0] + 50, corner[1] - 42)
+            east, north = to_degrees.transform(corner[0] + 52, corner[1] - 40)
+            sides = (geodesic.inv(west, (north + south) / 2, east, (north + south) / 2)[2], geodesic.inv(west, south, west, north)[2])
+            self.ground(values=plane, cell=sides)
+            self.cover(cell=sides)
+            self.done("run", "--elevation", "dem.tif", *WORDS, "--replace")
+            ground = self.result()
+            for of_web, of_ground in zip(web["outlets"], ground["outlets"]):
+                for key in ("area_m2", "time_of_concentration_s"):
+                    self.assertAlmostEqual(of_web[key] / of_ground[key], 1, delta=2e-4, msg=(latitude, key))
+                for path in ("governing_path", "longest_path"):
+                    self.assertAlmostEqual(of_web[path]["length_m"] / of_ground[path]["length_m"], 1, delta=2e-5)
 
     def test_several_bands(self):
         self.ground(values=np.stack([hills(), hills(seed=4)]))

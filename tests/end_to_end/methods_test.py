@@ -1,5 +1,6 @@
 #!/usr/bin/python3
 """Time of concentration by the formulas that take a catchment as one lump, recomputed from what the result says was measured."""
+import json
 import statistics
 import unittest
 
@@ -97,6 +98,49 @@ class Methods(CommandTest):
         self.assertTrue(found["applicable"])
         self.assertAlmostEqual(found["time_min"] / expected, 1, delta=1e-3)
         self.assertLess(abs(last["computed_min"] - last["assumed_min"]) * 60, 0.11)
+
+    def test_numbers_of_the_study_and_of_fields_make_methods_applicable(self):
+        _, rows = self.run_town(rain=True)
+        for method in ("lump-kerby", "lump-izzard", "lump-los-angeles", "lump-county-initial"):
+            self.assertIn("state", rows["Weir", method]["why_not"])
+        study = (self.folder / "town/methods.toml").read_text()
+        points = json.loads((self.folder / "town/points.geojson").read_text())
+        for feature in points["features"]:
+            feature["properties"] |= {"kerby": "pavement", "imp": 0.35 if feature["properties"]["name"] == "Weir" else None}
+        (self.folder / "town/with-fields.geojson").write_text(json.dumps(points))
+        study = study.replace('"points.geojson"', '"with-fields.geojson"') + (
+            '\n[methods]\nkerby_n = "field kerby"\nimpervious = "field imp"\nundeveloped_coefficient = 0.3\ncounty_k = "commercial"\n'
+            'izzard_c = "concrete"\nkirpich_factor = "paved overland"\n')
+        (self.folder / "town/fields.toml").write_text(study)
+        self.done("run", "town/fields.toml", "--replace")
+        rows = {(row["point"], row["method"]): row for row in table(self.folder / "town/result/tables/methods.csv")}
+        for outlet in self.result("town/result")["outlets"]:
+            m, name = outlet["methods"]["measures"], outlet["name"]
+            length_ft, fall_ft, slope = m["longest_path_m"] / FOOT, m["fall_m"] / FOOT, m["path_slope"]
+            expected = {"lump-kerby": 0.828 * (length_ft * 0.02) ** 0.467 * slope ** -0.235,
+                        "lump-kirpich": 0.4 * 0.0078 * length_ft ** 0.77 * slope ** -0.385,
+                        "lump-county-initial": 0.304 * (length_ft ** 3 / fall_ft) ** 0.2}
+            for method, minutes in expected.items():
+                self.assertAlmostEqual(float(rows[name, method]["time_min"]) / minutes, 1, delta=2e-3, msg=(name, method))
+            found = {time["method"]: time for time in outlet["methods"]["times"]}
+            i = found["lump-izzard"]["iteration"][-1]["intensity_mm_per_h"] / 25.4
+            izzard = 41.025 * (0.0007 * i + 0.012) * (length_ft / slope) ** (1 / 3) / i ** (2 / 3)
+            self.assertAlmostEqual(float(rows[name, "lump-izzard"]["time_min"]) / izzard, 1, delta=2e-3)
+            if name == "Weir":
+                i = found["lump-los-angeles"]["iteration"][-1]["intensity_mm_per_h"] / 25.4
+                minutes = 10 ** -0.507 * ((0.9 * 0.35 + 0.65 * 0.3) * i) ** -0.519 * length_ft ** 0.483 * slope ** -0.135
+                self.assertAlmostEqual(float(rows[name, "lump-los-angeles"]["time_min"]) / minutes, 1, delta=2e-3)
+            else:
+                self.assertIn("the impervious share is not known", rows[name, "lump-los-angeles"]["why_not"])
+
+    def test_a_field_with_a_wrong_value_is_refused_with_its_point(self):
+        points = json.loads((self.folder / "town/points.geojson").read_text())
+        points["features"][0]["properties"]["kerby"] = "gold"
+        name = points["features"][0]["properties"]["name"]
+        (self.folder / "town/points.geojson").write_text(json.dumps(points))
+        study = (self.folder / "town/study.toml").read_text() + '\n[methods]\nkerby_n = "field kerby"\n'
+        (self.folder / "town/wrong.toml").write_text(study)
+        self.refused(1, "run", "town/wrong.toml", says=(f"the field \"kerby\" of the point '{name}'", '"gold"', "or one of: pavement"))
 
     def test_a_soil_group_that_is_none_is_refused(self):
         study = (self.folder / "town/study.toml").read_text().replace("[surface]", '[surface]\nsoil_group = "E"')

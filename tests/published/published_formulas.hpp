@@ -29,5 +29,6 @@ using Formulas = std::map<std::string, std::function<double(const Inputs&)>>;
 Formulas flow_formulas();
 Formulas lump_formulas();
 Formulas rain_formulas();
+Formulas surface_formulas();
 
 }  // namespace rillclock

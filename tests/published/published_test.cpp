@@ -23,6 +23,7 @@ const Formulas& formulas() {
         Formulas joined = flow_formulas();
         joined.merge(lump_formulas());
         joined.merge(rain_formulas());
+        joined.merge(surface_formulas());
         return joined;
     }();
     return all;

@@ -1,6 +1,7 @@
 #pragma once
 
 #include <cstdint>
+#include <vector>
 
 #include "rillclock/core/quantity.hpp"
 #include "rillclock/raster/ground.hpp"
@@ -15,10 +16,14 @@ class CatchmentGround {
 public:
     /// `cover` is the class's position in the book, `slope` as of `land_slope`, `elevation_m` within ±8·10⁶ m.
     void add(std::uint8_t cover, CellSoil soil, FixedArea area, double slope, double elevation_m);
+    /// Counts an area to a zone of rain, 0 being outside of all.
+    void add_to_zone(std::uint8_t zone, FixedArea area);
     void add(const CatchmentGround& other);
 
     /// Cells and area by cover class, soil group and slope of the land.
     [[nodiscard]] const LandTally& land() const { return land_; }
+    /// By zone of rain, up to the last one met; empty where there are no zones.
+    [[nodiscard]] const std::vector<FixedArea>& area_by_zone() const { return area_by_zone_; }
     [[nodiscard]] std::int64_t cells() const { return cells_; }
     /// Average slope of the ground, not of any path. NaN without cells.
     [[nodiscard]] double land_slope() const;
@@ -26,6 +31,7 @@ public:
 
 private:
     LandTally land_;
+    std::vector<FixedArea> area_by_zone_;
     std::int64_t cells_ = 0;
     std::int64_t slope_sum_ = 0;      ///< in 2⁻²⁰
     std::int64_t elevation_sum_ = 0;  ///< in 2⁻¹⁰ m

@@ -6,6 +6,7 @@
 #include "rillclock/catchment/arrivals.hpp"
 #include "rillclock/catchment/path_doubts.hpp"
 #include "rillclock/catchment/point_way.hpp"
+#include "rillclock/catchment/rain_zone.hpp"
 #include "rillclock/catchment/segments.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 
@@ -55,6 +56,7 @@ struct Outlet {
     StepTime time_to_root;                         ///< from the point's cell
     Front own_front;                               ///< of the own subarea, with times to the root
     LandTally own_land;                            ///< of the point's own subarea
+    RainZone rain_zone;                            ///< whose rain it has
     double elevation_m = 0.0;                      ///< level at which water gets out of the point's cell
     double storm_factor = 1.0;                     ///< of the storm that all this is under
     std::vector<PointStorm> storms;                ///< by return period; none where the study has no rain by duration
@@ -80,6 +82,7 @@ struct PointHeads {
     CatchmentGround ground;                               ///< of the whole catchment
     Front own_front;                                      ///< of the own subarea
     LandTally own_land;                                   ///< of the point's own subarea
+    RainZone rain_zone;                                   ///< whose rain it has; of a share of 0 where it lies in none
     double storm_factor = 1.0;                            ///< of the storm that all these are under
     std::vector<PointStorm> storms;                       ///< by return period
 };

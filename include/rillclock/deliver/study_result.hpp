@@ -88,6 +88,11 @@ struct StudyResult {
     return result.study.surface.unbiased_lengths ? unbiased_step_weight : 1.0;
 }
 
+/// The 2-year 24-hour depth of a point: that of its rain zone, where there are zones.
+[[nodiscard]] inline const std::optional<Length>& two_year_depth(const StudyResult& result, const Outlet& outlet) {
+    return result.rain.depth_of(outlet.rain_zone.number);
+}
+
 /// The cover class of a segment; null in channels, where the cover does not matter.
 [[nodiscard]] inline const CoverClass* cover_of(const StudyResult& result, const Segment& segment) {
     return segment.surface ? &result.book.classes()[*segment.surface] : nullptr;

@@ -26,6 +26,11 @@ struct CatchmentMeasures {
     std::optional<double> runoff_coefficient = {};  ///< composite, 0 to 1
     std::string no_curve_number = {};               ///< why it is not known, where there is more to say than that
     std::string no_runoff_coefficient = {};
+    std::string no_kerby_retardance = {};
+    std::string no_izzard_retardance = {};
+    std::string no_impervious = {};
+    std::string no_undeveloped_coefficient = {};
+    std::string no_county_factor = {};
     std::optional<double> overland_n = {};       ///< Manning's n of overland flow
     std::optional<Length> overland_length = {};  ///< of the part before the channel, for Kerby and Kirpich together
     std::optional<double> overland_slope = {};

@@ -49,7 +49,7 @@ struct ElevationFile {
 /// Opens a DEM in any of the raster formats read here. A grid stored south-up is turned.
 ///
 /// Throws Error (inputs), with the command or the study's line that mends it, where the file is no raster, is cut
-/// short, is rotated, has no reference system, is in web Mercator, has several bands and none was chosen, has complex,
+/// short, is rotated, has no reference system, has several bands and none was chosen, has complex,
 /// palette or 64-bit integer values, a scale that is not positive, 2³² − 1 cells or more, or a vertical unit that is
 /// contradicted or cannot be told.
 [[nodiscard]] ElevationFile open_elevation(const std::filesystem::path& path, const ElevationOptions& options = {});

@@ -16,11 +16,13 @@ struct NamedPlace {
     std::string name;
     Place place;
     std::int64_t feature = 0;  ///< from 1, in the order of the file
+    std::vector<std::string> fields = {};  ///< texts of the fields asked for, in that order; empty where not set
 };
 
 struct PointOptions {
     std::optional<std::string> layer = {};       ///< needed only where the file has several
     std::optional<std::string> name_field = {};  ///< default: the field called name, label or id, whichever comes first
+    std::vector<std::string> fields = {};        ///< further fields to read
 };
 
 struct PointFile {
@@ -32,7 +34,7 @@ struct PointFile {
 /// number in the file.
 ///
 /// Features that are no single point, are empty, are not finite or have no image in `target` are left out with a
-/// notice. Throws Error (inputs) where the file, layer or field is not there, no feature is left, the reference system
+/// notice. Throws Error (inputs) where the file, layer or a field is not there, no feature is left, the reference system
 /// is missing, or two points have one name.
 [[nodiscard]] PointFile read_points(const std::filesystem::path& path, const PointOptions& options,
                                     const ReferenceSystem& target);

@@ -38,8 +38,8 @@ public:
     [[nodiscard]] const std::string& horizontal_wkt() const { return horizontal_wkt_; }
     [[nodiscard]] bool is_geographic() const { return is_geographic_; }
     [[nodiscard]] bool is_projected() const { return is_projected_; }
-    /// Whether it is the spherical Mercator of web maps under any of its names. Its lengths are wrong by
-    /// 1/cos(latitude).
+    /// Whether it is the spherical Mercator of web maps under any of its names. Its own lengths are too long by
+    /// 1/cos(latitude); see `ground_of`.
     [[nodiscard]] bool is_web_mercator() const { return is_web_mercator_; }
     /// Unit of x and y of a projected system.
     [[nodiscard]] const LengthUnit& linear_unit() const { return linear_unit_; }

@@ -13,6 +13,9 @@
 
 namespace rillclock {
 
+/// The blocks of an Atlas 14 file: the estimate, and the ends of its 90 % confidence interval.
+enum class Atlas14Block { estimate, upper_bound, lower_bound };
+
 /// What was read, so that a slip of unit, block or series is seen at once.
 struct RainEcho {
     std::string source;       ///< the file, or the place in the study
@@ -59,8 +62,10 @@ struct RainSource {
 [[nodiscard]] RainSource rain_from_formulas(std::vector<PeriodFormula> formulas, RainRange range,
                                             std::string_view subject);
 
-/// Rain from the text of a file: an Atlas 14 point file where its first line says so (the block of the estimate), else
-/// a plain table. `file` names it in errors.
-[[nodiscard]] RainSource rain_from_text(std::string_view text, std::string_view file);
+/// Rain from the text of a file: an Atlas 14 point file where its first line says so (the block that is stated, else
+/// that of the estimate), else a plain table. `file` names it in errors. Throws an input error as the two readers do,
+/// and where a block is stated but the file is a table.
+[[nodiscard]] RainSource rain_from_text(std::string_view text, std::string_view file,
+                                        std::optional<Atlas14Block> block = {});
 
 }  // namespace rillclock

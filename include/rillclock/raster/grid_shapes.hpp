@@ -1,5 +1,6 @@
 #pragma once
 
+#include <functional>
 #include <vector>
 
 #include "rillclock/raster/grid.hpp"
@@ -40,5 +41,9 @@ using Way = std::vector<Cell>;
 /// within), by increasing index. A polygon that holds no centre claims the cell of its first corner instead, where that is on the grid.
 /// Cost: linear in the cells and in the rows that each edge crosses.
 [[nodiscard]] std::vector<Cell> cells_within(const Polygon& polygon, const Grid& grid);
+
+/// Calls `look(first, end)` for every run of cells of one row whose centres lie within a polygon, by increasing index; the same cells as
+/// above, but for the one of a polygon without centres. For polygons too large to list their cells.
+void for_each_run_within(const Polygon& polygon, const Grid& grid, const std::function<void(Cell first, Cell end)>& look);
 
 }  // namespace rillclock

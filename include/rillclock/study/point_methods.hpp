@@ -6,6 +6,7 @@
 
 #include "rillclock/catchment/outlet.hpp"
 #include "rillclock/hydraulics/lump_methods.hpp"
+#include "rillclock/study/lump_inputs.hpp"
 #include "rillclock/surface/cover_book.hpp"
 
 namespace rillclock {
@@ -35,13 +36,15 @@ struct PointMethods {
 /// What a catchment is classed by, beside its ground.
 struct MethodGround {
     const CoverBook& book;
-    bool has_soil = false;  ///< whether the study says anything of soil groups
+    bool has_soil = false;           ///< whether the study says anything of soil groups
+    PointLumpInputs stated = {};     ///< for this point; counts before the cover book
 };
 
 /// What was measured of a point's catchment: area; length, fall and equal-area slope of the longest path, its part
 /// before the first channel or water; average slope of the land; mean elevation above the point; curve number, runoff
-/// coefficient and overland n averaged by area from the cover book (n without open water). What the book or study lacks
-/// is left out, with the reason.
+/// coefficient, impervious share and overland n averaged by area from the cover book (n without open water);
+/// retardances and the county's K as stated, else those of the surface that prevails. What the book or study lacks is
+/// left out, with the reason.
 [[nodiscard]] CatchmentMeasures measures_of(const Outlet& outlet, const MethodGround& ground);
 
 /// Times a point by every lump method. `rain` is the storm that the point's paths are for; empty where the study has

@@ -13,6 +13,7 @@
 #include "rillclock/hydraulics/rational.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 #include "rillclock/rainfall/rain_source.hpp"
+#include "rillclock/study/lump_inputs.hpp"
 #include "rillclock/surface/cover_book.hpp"
 #include "rillclock/surface/runoff_coefficients.hpp"
 
@@ -85,15 +86,25 @@ struct StatedRainFormula {
     std::string subject = {};  ///< where it stands: "rain.formula (study.toml, line 9, column 11)"
 };
 
+/// Polygons that name a rain file each.
+struct ZoneStudy {
+    std::optional<std::string> file = {};  ///< relative to the study's folder; so are the rain files that it names
+    std::string field = "rain";            ///< that names a polygon's rain file
+};
+
 struct RainStudy {
     std::optional<Length> two_year_24_hour = {};
     std::optional<std::string> file = {};          ///< relative to the study's folder
+    std::optional<Atlas14Block> block = {};        ///< of an Atlas 14 file; the estimate where absent
+    ZoneStudy zones = {};
     std::vector<StatedRainFormula> formulas = {};  ///< in place of a file
     std::optional<Duration> formula_from = {};     ///< between which durations the formulas hold
     std::optional<Duration> formula_to = {};
     std::vector<double> return_periods = {};  ///< years, as listed; the default where empty
 
-    [[nodiscard]] bool is_by_duration() const { return file.has_value() || !formulas.empty(); }
+    [[nodiscard]] bool is_by_duration() const { return file || zones.file || !formulas.empty(); }
+    /// Whether there is rain by duration for the whole land: what counts outside of all zones, where there are some.
+    [[nodiscard]] bool is_everywhere() const { return file || !formulas.empty(); }
 };
 
 /// The section of channels: a stated hydraulic radius, or top width and mean depth by contributing area, of the study's own or of a
@@ -149,6 +160,9 @@ struct PeakStudy {
     }
 };
 
+/// What is stated for methods that time a catchment as one lump; what is not comes from the cover book, where it can.
+using MethodStudy = ByLumpInput<LumpValue>;
+
 struct OutputStudy {
     std::string folder = "result";  ///< relative to the study's folder
     SubareasListed subareas = SubareasListed::least_slacks;
@@ -164,6 +178,7 @@ struct Study {
     RainStudy rain = {};
     TimingStudy timing = {};
     PeakStudy peaks = {};
+    MethodStudy methods = {};
     OutputStudy output = {};
 };
 

@@ -22,6 +22,15 @@ struct Composite {
 /// any soil.
 [[nodiscard]] Composite composite_runoff_coefficient(std::span<const LandShare> land, const CoverBook& book);
 
+/// Impervious share of a catchment.
+[[nodiscard]] Composite composite_impervious(std::span<const LandShare> land, const CoverBook& book);
+
+/// The value that covers most of the catchment's area, open water left out: for coefficients that stand for a kind of
+/// surface and are not to be averaged. None where a class has none, or there is only water; of equal areas the class
+/// that comes first in the book decides. `column` names it where it lacks.
+[[nodiscard]] Composite prevailing(std::span<const LandShare> land, const CoverBook& book,
+                                   std::optional<double> CoverClass::*value, const std::string& column);
+
 /// Sheet-flow n of a catchment, open water left out.
 [[nodiscard]] Composite composite_overland_n(std::span<const LandShare> land, const CoverBook& book);
 

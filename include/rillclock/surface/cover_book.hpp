@@ -42,7 +42,10 @@ struct CoverClass {
         {};                     ///< by soil group, 0 to 1, none below that before; where the book has them
     std::string land_use = {};           ///< name of one of `land_uses()` (runoff_coefficients.hpp); may be empty
     std::optional<double> impervious = {};  ///< share of the ground that is, 0 to 1; where the book has it
-    std::string source = {};                        ///< where the values are from
+    std::optional<double> kerby_n = {};    ///< Kerby's retardance, above 0 to 1; where the book has it
+    std::optional<double> izzard_c = {};   ///< Izzard's retardance, above 0 to 1
+    std::optional<double> county_k = {};   ///< K of the initial subarea of Californian counties, above 0 to 2
+    std::string source = {};               ///< where the values are from
     bool from_memory = false;                       ///< a default to check before use
 
     [[nodiscard]] std::optional<double> curve_number(SoilGroup group) const {
@@ -87,6 +90,8 @@ private:
 ///   (of each soil group; each may be absent or empty), for runoff and for methods that time a catchment as one lump;
 /// - `land_use` (a name of `land_uses()`, for runoff coefficients printed by soil group, slope and return period) and
 ///   `impervious_percent` (0 to 100), each may be absent or empty;
+///   (of each soil group), `kerby_n`, `izzard_c` (retardances), `impervious` (share) and `county_k` (each may be absent
+///   or empty), for runoff and for methods that time a catchment as one lump;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
 ///
 /// `file` names the text in errors. Throws an input error with line and column for a column that is missing or unknown,
@@ -100,7 +105,8 @@ private:
 /// A built-in book as CSV text, in the form `parse_cover_book` reads: what a user may copy and change.
 /// Throws an input error for a name that is not built in.
 [[nodiscard]] std::string_view built_in_book_text(std::string_view name);
-/// A built-in book: "nlcd", the legend of the National Land Cover Database from 2001 on with Alaska's classes.
+/// A built-in book: "nlcd", the legend of the National Land Cover Database from 2001 on with Alaska's classes, or
+/// "worldcover", that of ESA WorldCover, whose hydraulics are this program's own.
 [[nodiscard]] CoverBook built_in_book(std::string_view name);
 
 }  // namespace rillclock

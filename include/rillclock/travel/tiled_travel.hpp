@@ -22,6 +22,7 @@ struct TiledGround {
     const SurfaceTable& surface;
     std::span<const Cell> mapped_channels = {};   ///< channels whatever drains to them and whatever covers them
     const ChannelReaches* reaches = nullptr;      ///< of channel cells that have one of their own; null where none has
+    const Raster<std::uint8_t>* rain_zones = nullptr;   ///< zone of each cell, where the study has zones
 };
 
 /// A label on a cell: a design point's number.

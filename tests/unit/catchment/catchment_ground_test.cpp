@@ -50,5 +50,16 @@ TEST_CASE("grounds put together are the ground of all their cells") {
     CHECK(land[1].area == 110);
 }
 
+TEST_CASE("areas by zone of rain add up over grounds, and there are none without zones") {
+    CatchmentGround a;
+    CHECK(a.area_by_zone().empty());
+    a.add_to_zone(2, 10);
+    CatchmentGround b;
+    b.add_to_zone(0, 5);
+    b.add_to_zone(2, 7);
+    a.add(b);
+    CHECK(a.area_by_zone() == std::vector<FixedArea>{5, 0, 17});
+}
+
 }  // namespace
 }  // namespace rillclock

@@ -182,10 +182,12 @@ TEST_CASE_METHOD(Folder, "a missing reference system is refused with the command
                Contains("gdal_edit.py -a_srs EPSG:nnnnn " + (folder / "dem.tif").string()));
 }
 
-TEST_CASE_METHOD(Folder, "web Mercator is refused with the command to the UTM zone") {
-    const std::string sentence =
-        refusal(dem({.transform = {-12580000, 30, 0, 4490000, 0, -30}, .system = "EPSG:3857"}));
-    CHECK_THAT(sentence, Contains("web Mercator") && Contains("gdalwarp -r bilinear -t_srs EPSG:32612"));
+TEST_CASE_METHOD(Folder, "web Mercator is read, and told") {
+    const ElevationFile file =
+        open_elevation(dem({.transform = {-12580000, 30, 0, 4490000, 0, -30}, .system = "EPSG:3857"}), {});
+    REQUIRE(file.notices.size() == 1);
+    CHECK(file.notices[0].code == "web-mercator");
+    CHECK_THAT(file.notices[0].text, Contains("on the ellipsoid, row by row"));
 }
 
 TEST_CASE_METHOD(Folder, "several bands are listed and one must be chosen") {

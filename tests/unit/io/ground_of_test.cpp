@@ -1,8 +1,10 @@
 #include "rillclock/io/ground_of.hpp"
 
 #include <array>
+#include <cmath>
 #include <cstdio>
 #include <memory>
+#include <numbers>
 #include <sstream>
 
 #include "io_files.hpp"
@@ -92,4 +94,50 @@ TEST_CASE("a local system is refused") {
     const ReferenceSystem system = ReferenceSystem::from_text("LOCAL_CS[\"site\",UNIT[\"metre\",1]]");
     CHECK_THAT(sentence_of([&] { (void)ground_of(thousandths, system); }),
                Contains("neither projected nor geographic"));
+}
+
+namespace {
+
+/// y of a latitude in web Mercator.
+double mercator_y(double latitude) {
+    return 6378137.0 * std::asinh(std::tan(latitude * std::numbers::pi / 180.0));
+}
+double latitude_of(double y) {
+    return std::atan(std::sinh(y / 6378137.0)) * 180.0 / std::numbers::pi;
+}
+
+}  // namespace
+
+TEST_CASE("in web Mercator lengths are those on the ellipsoid, at every latitude") {
+    const double degrees_across = 30.0 / 6378137.0 * 180.0 / std::numbers::pi;
+    for (const double latitude : {-60.0, -33.0, 0.0, 12.0, 37.5, 50.0, 71.0, 84.0}) {
+        INFO(latitude);
+        const double top = mercator_y(latitude);
+        const Grid grid = {.rows = 3, .columns = 4, .left = -12580000, .top = top, .cell_width = 30, .cell_height = 20};
+        const Ground ground = ground_of(grid, ReferenceSystem::from_text("EPSG:3857"));
+        const double middle = latitude_of(top - 30), lower = latitude_of(top - 50);
+        CHECK(from_fixed(ground.length(1, Direction::east)) ==
+              Approx(distance_by_command(middle, 0, middle, degrees_across)).margin(2e-6).epsilon(0));
+        CHECK(from_fixed(ground.length(1, Direction::south)) ==
+              Approx(distance_by_command(middle, 0, lower, 0)).margin(2e-6).epsilon(0));
+        CHECK(from_fixed(ground.length(1, Direction::south_west)) ==
+              Approx(distance_by_command(middle, degrees_across, lower, 0)).margin(2e-6).epsilon(0));
+        CHECK(from_fixed(ground.length(2, Direction::east)) / 30 ==
+              Approx(std::cos(middle * std::numbers::pi / 180)).epsilon(0.0035));  // the flattening of the earth
+    }
+}
+
+TEST_CASE("the cells of the whole web map have the area of the earth between its edges") {
+    const double edge = 20037508.342789244;
+    const Grid map = {.rows = 512, .columns = 256, .left = 0, .top = edge, .cell_width = edge / 256, .cell_height = edge / 256};
+    const Ground ground = ground_of(map, ReferenceSystem::from_text("EPSG:3857"));
+    double area = 0;
+    for (std::int64_t r = 0; r < map.rows; ++r) area += 512.0 * from_fixed_area(ground.cell_area(r));
+    CHECK(area == Approx(508147130188099.25).epsilon(1e-9));  // within ±85.0511287798066°, by Snyder's eq. 3-12 in Python
+}
+
+TEST_CASE("a grid off the web map is refused") {
+    const Grid grid = {.rows = 2, .columns = 2, .left = 20037500, .top = 0, .cell_width = 30, .cell_height = 30};
+    CHECK_THAT(sentence_of([&] { (void)ground_of(grid, ReferenceSystem::from_text("EPSG:3857")); }),
+               Contains("180th meridian") && Contains("gdalwarp"));
 }

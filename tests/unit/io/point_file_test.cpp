@@ -44,6 +44,15 @@ TEST_CASE_METHOD(Folder, "the name field may be chosen") {
     CHECK(read_points(path, {.name_field = "code"}, utm).points[0].name == "K7");
 }
 
+TEST_CASE_METHOD(Folder, "further fields are read as texts, and one that is not there is refused with those that are") {
+    const fs::path path = file(feature(R"("name":"a","cover":" pavement ","share":0.35)", point(-111, 1)) + "," +
+                               feature(R"("name":"b","cover":null)", point(-111, 2)));
+    const PointFile read = read_points(path, {.fields = {"share", "cover"}}, utm);
+    CHECK(read.points[0].fields == std::vector<std::string>{"0.35", "pavement"});
+    CHECK(read.points[1].fields == std::vector<std::string>{"", ""});
+    CHECK_THAT(refusal(path, {.fields = {"kerby"}}), Contains("has no field \"kerby\"") && Contains("name, cover, share"));
+}
+
 TEST_CASE_METHOD(Folder, "a point without a name is called by its number") {
     const PointFile read = read_points(
         file(feature(R"("name":"a")", point(-111, 1)) + "," + feature(R"("name":null)", point(-111, 2))), {}, utm);

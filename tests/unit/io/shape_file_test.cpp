@@ -75,6 +75,21 @@ TEST_CASE_METHOD(ShapeFolder, "a line with a corner that has no image is left ou
     CHECK_THAT(read.notices[0].text, Contains("Feature 2"));
 }
 
+TEST_CASE_METHOD(ShapeFolder, "polygons carry the text of the field that is asked for, each part its own") {
+    const std::string square = "[[[0,0],[1,0],[1,1],[0,0]]]";
+    const std::string named = R"({"type":"Feature","properties":{"rain":"hill.csv"},"geometry":{"type":"MultiPolygon","coordinates":[)" +
+                              square + "," + square + "]}}";
+    const std::string unnamed = R"({"type":"Feature","properties":{"rain":null},"geometry":{"type":"Polygon","coordinates":)" + square + "}}";
+    const fs::path path = file(named + "," + unnamed + "," + feature("Point", "[1,2]"));
+    const ShapeFile read = read_shapes(path, "rain zones", ShapeKinds::polygons, degrees, {}, "rain");
+    CHECK(read.polygons.size() == 3);
+    CHECK(read.polygon_texts == std::vector<std::string>{"hill.csv", "hill.csv", ""});
+    REQUIRE(read.notices.size() == 1);
+    CHECK_THAT(read.notices[0].text, Contains("is a POINT, and only polygons have a meaning here"));
+    CHECK_THAT(sentence_of([&] { (void)read_shapes(path, "rain zones", ShapeKinds::polygons, degrees, {}, "station"); }),
+               Contains("has no field \"station\"; its fields are rain"));
+}
+
 TEST_CASE_METHOD(ShapeFolder, "a file without a usable shape is refused with its reason") {
     CHECK_THAT(sentence_of([&] { (void)lines(feature("Point", "[1,2]")); }), Contains("nothing that can be used") && Contains("POINT"));
     CHECK_THAT(sentence_of([&] { (void)lines(""); }), Contains("no features"));

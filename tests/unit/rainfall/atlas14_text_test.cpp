@@ -128,6 +128,40 @@ TEST_CASE("a block that is not there is asked for in vain") {
                       Contains("rain.csv holds no block of the lower bound"));
 }
 
+TEST_CASE("a block read by its title may call itself a bound alone, and is told where it is one") {
+    std::string text = with("\nDate/time", bounds + "\nDate/time");
+    const std::string title = "PRECIPITATION FREQUENCY ESTIMATES AT UPPER BOUND OF 90% CONFIDENCE INTERVAL";
+    text.replace(text.find(title), title.size(), "Upper bound of the 90% confidence interval");
+    const RainSource rain = rain_from_text(text, "rain.csv", Atlas14Block::upper_bound);
+    CHECK(in_inches_per_hour(rain.curve(2, seconds(0)).at(hours(1))) == Approx(1.9));
+    REQUIRE(rain.notices.size() == 1);
+    CHECK(rain.notices.front().code == "rain-bound");
+    CHECK(rain_from_text(text, "rain.csv").notices.empty());
+}
+
+TEST_CASE("a block that is there twice, or has no title, is refused with its line") {
+    CHECK_THROWS_WITH(rain_from_atlas14(with("\nDate/time", "\nPRECIPITATION FREQUENCY ESTIMATES\n"
+                                             "by duration for ARI (years):, 1,2,10\n5-min:, 1,2,3\n\nDate/time"),
+                                        "rain.csv"),
+                      Contains("rain.csv, line 21: a second block of the estimate begins"));
+    CHECK_THROWS_WITH(rain_from_atlas14(with("PRECIPITATION FREQUENCY ESTIMATES\n", ""), "rain.csv"),
+                      Contains("rain.csv, line 10") && Contains("stands where a block has its title"));
+}
+
+TEST_CASE("a table has no blocks to choose from") {
+    CHECK_THROWS_WITH(rain_from_text("duration_min,intensity_10yr_in_h\n5,6\n60,2\n", "rain.csv", Atlas14Block::estimate),
+                      Contains("rain.csv is no NOAA Atlas 14 point file") && Contains("leave out block"));
+}
+
+TEST_CASE("annual maxima are told, since manuals mean partial durations") {
+    std::string text = with("Partial duration", "Annual maximum");
+    text.replace(text.find("by duration for ARI (years):, 1,2,10"), 36, "by duration for AEP:, 1/2, 1/5, 1/10");
+    const RainSource rain = rain_from_atlas14(text, "rain.csv");
+    CHECK(rain.echo.return_periods == std::vector<double>{2, 5, 10});
+    REQUIRE(rain.notices.size() == 1);
+    CHECK(rain.notices.front().code == "rain-annual-maximum");
+}
+
 TEST_CASE("the server's answer for a place without coverage is understood") {
     const std::string answer = "Error 3.0: Selected location is not within a project area\n";
     CHECK_THROWS_WITH(rain_from_text(answer, "rain.csv"),

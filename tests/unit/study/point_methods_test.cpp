@@ -116,5 +116,29 @@ TEST_CASE("methods that depend on the rain show their rounds") {
     CHECK(time.answer.iterations.size() == 2);
 }
 
+TEST_CASE("what the study states for a point counts before the cover book, and a lack says where to state it") {
+    CoverClass grass{.code = 1, .name = "Grass", .n_typical = 0.2, .kerby_n = 0.4, .impervious = 0.0};
+    CoverClass street{.code = 2, .name = "Street", .n_typical = 0.01, .kerby_n = 0.02, .impervious = 1.0};
+    const CoverBook town{"test", {grass, street}};
+    const CatchmentMeasures from_book = measures_of(outlet(), {.book = town});
+    CHECK(from_book.kerby_retardance == 0.4);
+    CHECK(*from_book.impervious == Approx(0.25));
+    CHECK(from_book.kirpich_adjustment == 1.0);
+    PointLumpInputs stated;
+    stated[LumpInput::kerby_n] = 0.8;
+    stated[LumpInput::county_k] = 0.39;
+    stated[LumpInput::kirpich_factor] = 0.4;
+    const MethodGround ground{.book = town, .stated = stated};
+    const PointMethods methods = point_methods(outlet(), ground, {});
+    CHECK(methods.measures.kerby_retardance == 0.8);
+    CHECK(in_minutes(*by(methods, "lump-kirpich").answer.time) == Approx(0.4 * in_minutes(kirpich(metres(300), 0.05))));
+    CHECK(in_minutes(*by(methods, "lump-county-initial").answer.time) ==
+          Approx(in_minutes(county_initial(metres(300), metres(15), 0.39))));
+    CHECK_THAT(by(methods, "lump-izzard").answer.why_not,
+               Contains("Izzard's retardance is not known: the cover book has no izzard_c for Grass; state it there or as "
+                        "methods.izzard_c"));
+    CHECK_THAT(by(methods, "lump-los-angeles").answer.why_not, Contains("state methods.undeveloped_coefficient"));
+}
+
 }  // namespace
 }  // namespace rillclock

@@ -201,7 +201,7 @@ TEST_CASE("what this version does not compute is refused and not passed over") {
 
 TEST_CASE("words of a key that this version does not compute are refused") {
     for (const auto* text :
-         {"[surface]\nbook = \"worldcover\"", "[output]\nrasters = \"cog\""}) {
+         {"[output]\nrasters = \"cog\""}) {
         INFO(text);
         CHECK_THROWS_WITH(read(text), Contains("this version of rillclock does not") && Contains("line 2, column "));
     }
@@ -315,6 +315,35 @@ TEST_CASE("what is said of a soil raster is refused with the right form, and whe
     says("1 = \"A\"", "add soil_group = \"soils.tif\"");
     CHECK_THROWS_WITH(read("surface.soil_classes = \"A\""), Contains("write a table, such as { 1 = \"A\""));
     CHECK_THROWS_WITH(read("surface.soil_group = \"b\""), Contains("or the name of a raster, such as \"soils.tif\""));
+}
+
+TEST_CASE("rain may be read from a block of its file and from the files of zones") {
+    const Study study = read("[rain]\nfile = \"a.csv\"\nblock = \"upper bound\"\nzones = \"z.gpkg\"\nzone_field = \"station\"");
+    CHECK(study.rain.block == Atlas14Block::upper_bound);
+    CHECK(study.rain.zones.file == "z.gpkg");
+    CHECK(study.rain.zones.field == "station");
+    CHECK(read("[rain]\nzones = \"z.gpkg\"").rain.zones.field == "rain");
+    CHECK(read("[rain]\nzones = \"z.gpkg\"").rain.is_by_duration());
+    CHECK_THROWS_WITH(parse_study(smallest + "zone_field = \"a\"", "town.toml"), Contains("add zones = \"zones.gpkg\""));
+    CHECK_THROWS_WITH(parse_study(smallest + "block = \"estimate\"", "town.toml"), Contains("add file = \"atlas14.csv\""));
+    CHECK_THROWS_WITH(read("rain.block = \"upper\""), Contains("write \"estimate\" or \"upper bound\" or \"lower bound\""));
+}
+
+TEST_CASE("what the lump methods need is a number, a word of the method's table, or a field of the points") {
+    const Study study = read(R"(methods = { kerby_n = 0.4, izzard_c = "concrete", impervious = 0, county_k = "commercial",
+kirpich_factor = "paved overland", undeveloped_coefficient = "field CU" })");
+    CHECK(study.methods[LumpInput::kerby_n].number == 0.4);
+    CHECK(study.methods[LumpInput::izzard_c].number == 0.012);
+    CHECK(study.methods[LumpInput::impervious].number == 0);
+    CHECK(study.methods[LumpInput::county_k].number == 0.304);
+    CHECK(study.methods[LumpInput::kirpich_factor].number == 0.4);
+    CHECK(study.methods[LumpInput::undeveloped_coefficient].field == "CU");
+    CHECK_FALSE(study.methods[LumpInput::undeveloped_coefficient].number);
+    CHECK_THROWS_WITH(read("methods.kerby_n = 0"), Contains("from 0.001 to 1"));
+    CHECK_THROWS_WITH(read("methods.impervious = 35"), Contains("from 0 to 1"));
+    CHECK_THROWS_WITH(read("methods.county_k = \"comercial\""), Contains("did you mean commercial?"));
+    CHECK_THROWS_WITH(parse_study(smallest + "[methods]\nkerby_n = \"field N\"", "town.toml"),
+                      Contains("takes methods.kerby_n from a field of the points' file but gives no file"));
 }
 
 }  // namespace

@@ -87,5 +87,43 @@ TEST_CASE("formulas are read with the durations they hold for") {
     CHECK(rain.two_year_24_hour);
 }
 
+constexpr const char* wetter =
+    "duration_min,intensity_2yr_in_h,intensity_10yr_in_h\n5,6.0,9.0\n60,2.0,3.0\n1440,0.25,0.4\n";
+
+Study with_zones() {
+    Study study{.file = "town.toml"};
+    study.rain.zones.file = "zones.gpkg";
+    return study;
+}
+
+TEST_CASE("each zone has its own depth and storms, and the first stands for land outside where nothing else does") {
+    const std::vector<ZoneText> zones{{"hill.csv", wetter}, {"valley.csv", table}};
+    const StudyRain rain = study_rain(with_zones(), "", zones);
+    CHECK_FALSE(rain.is_everywhere);
+    CHECK(in_inches(*rain.depth_of(1)) == Approx(6));
+    CHECK(in_inches(*rain.depth_of(2)) == Approx(3));
+    CHECK(in_inches(*rain.depth_of(0)) == Approx(6));
+    CHECK(in_inches_per_hour(rain.storms_of(1)[0].rain.at(hours(1))) == Approx(3));
+    CHECK(in_inches_per_hour(rain.storms_of(2)[0].rain.at(hours(1))) == Approx(2.3));
+    CHECK(rain.zone_name(2) == "valley.csv");
+}
+
+TEST_CASE("a rain file beside zones is for what lies outside of them") {
+    Study study = with_zones();
+    study.rain.file = "rain.csv";
+    const std::vector<ZoneText> zones{{"hill.csv", wetter}};
+    const StudyRain rain = study_rain(study, table, zones);
+    CHECK(rain.is_everywhere);
+    CHECK(in_inches(*rain.depth_of(0)) == Approx(3));
+    CHECK(in_inches(*rain.depth_of(1)) == Approx(6));
+    CHECK(rain.zone_name(0) == "rain.csv");
+}
+
+TEST_CASE("a zone without a 2-year 24-hour depth is named where NRCS sheet flow needs it") {
+    const std::vector<ZoneText> zones{{"hill.csv", wetter},
+                                      {"short.csv", "duration_min,intensity_10yr_in_h\n5,6\n60,2\n"}};
+    CHECK_THROWS_WITH(study_rain(with_zones(), "", zones), Contains("short.csv") && Contains("two_year_24_hour"));
+}
+
 }  // namespace
 }  // namespace rillclock

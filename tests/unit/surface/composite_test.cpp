@@ -51,5 +51,22 @@ TEST_CASE("overland n leaves open water out, and is none where there is nothing 
     CHECK_FALSE(composite_overland_n(pond, book()).value);
 }
 
+TEST_CASE("a retardance is that of the surface that prevails, never a mean of two") {
+    CoverClass lawn{.code = 1, .name = "Lawn", .n_typical = 0.2, .kerby_n = 0.4};
+    CoverClass street{.code = 2, .name = "Street", .n_typical = 0.01, .kerby_n = 0.02, .impervious = 1};
+    CoverClass yard{.code = 3, .name = "Yard", .n_typical = 0.1, .kerby_n = 0.4};
+    CoverClass pond{.code = 4, .name = "Pond", .water_depth = metres(1)};
+    const CoverBook town{"test", {lawn, street, yard, pond}};
+    const std::vector<LandShare> land{share(0, CellSoil::b, 60), share(1, CellSoil::b, 100), share(2, CellSoil::b, 50),
+                                      share(3, CellSoil::b, 900)};
+    CHECK(prevailing(land, town, &CoverClass::kerby_n, "kerby_n").value == 0.4);
+    const std::vector<LandShare> alike{share(0, CellSoil::b, 100), share(1, CellSoil::b, 100)};
+    CHECK(prevailing(alike, town, &CoverClass::kerby_n, "kerby_n").value == 0.4);
+    CHECK(prevailing(land, town, &CoverClass::izzard_c, "izzard_c").lacking == "the cover book has no izzard_c for Lawn");
+    CHECK(composite_impervious(land, town).lacking == "the cover book has no impervious for Lawn");
+    const std::vector<LandShare> water{share(3, CellSoil::b, 1)};
+    CHECK_FALSE(prevailing(water, town, &CoverClass::kerby_n, "kerby_n").value);
+}
+
 }  // namespace
 }  // namespace rillclock

@@ -234,5 +234,31 @@ TEST_CASE("runoff coefficients by soil group rise from A to D and lie between 0 
     CHECK_THROWS_WITH(parse_cover_book(begin + ",,,,1.1", "town.csv"), Contains("(c_d) is 1.1; a runoff coefficient"));
 }
 
+TEST_CASE("numbers for the lump methods keep to their ranges") {
+    const std::string begin =
+        "code,name,n_typical,shallow_type,source,kerby_n,izzard_c,impervious,county_k\n1,Lawn,0.2,pavement,here,";
+    const CoverBook town = parse_cover_book(begin + "0.4,0.046,0,0.53", "town.csv");
+    CHECK(town.find(1)->kerby_n == 0.4);
+    CHECK(town.find(1)->izzard_c == 0.046);
+    CHECK(town.find(1)->impervious == 0);
+    CHECK(town.find(1)->county_k == 0.53);
+    CHECK_THROWS_WITH(parse_cover_book(begin + "1.4,,,", "town.csv"), Contains("column 6 (kerby_n) is 1.4; it is at most 1"));
+    CHECK_THROWS_WITH(parse_cover_book(begin + ",0,,", "town.csv"), Contains("column 7 (izzard_c)"));
+    CHECK_THROWS_WITH(parse_cover_book(begin + ",,35,", "town.csv"), Contains("the share of the area from 0 to 1"));
+}
+
+TEST_CASE("the book worldcover has the eleven classes of its legend, and says that its hydraulics are ours") {
+    const CoverBook book = built_in_book("worldcover");
+    std::vector<int> codes;
+    for (const CoverClass& cover : book.classes()) {
+        codes.push_back(cover.code);
+        CHECK_THAT(cover.source, Contains("ours"));
+        CHECK(cover.from_memory);
+    }
+    CHECK(codes == std::vector<int>{10, 20, 30, 40, 50, 60, 70, 80, 90, 95, 100});
+    CHECK(book.find(80)->is_open_water());
+    CHECK(book.find(100)->name == "Moss and lichen");
+}
+
 }  // namespace
 }  // namespace rillclock
