@@ -6,6 +6,7 @@
 
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/report_units.hpp"
+#include "rillclock/deliver/uncertainty_tables.hpp"
 
 namespace rillclock {
 namespace {
@@ -95,7 +96,10 @@ std::vector<std::size_t> by_area(const StudyResult& result) {
 
 std::vector<std::string> headlines(const StudyResult& result) {
     const Outlet& main = result.outlets[by_area(result).front()];
-    return {governing_sentence(result, main), makeup_sentence(main), concern_sentence(result)};
+    std::vector<std::string> sentences{governing_sentence(result, main), makeup_sentence(main)};
+    if (result.uncertainty != nullptr) sentences.push_back(uncertainty_sentence(result, main));
+    sentences.push_back(concern_sentence(result));
+    return sentences;
 }
 
 std::string outlets_overview(const StudyResult& result, std::size_t most) {

@@ -13,6 +13,7 @@
 #include "rillclock/io/ground_of.hpp"
 #include "rillclock/io/text_file.hpp"
 #include "rillclock/rainfall/return_periods.hpp"
+#include "rillclock/study/uncertain_inputs.hpp"
 #include "mapped_flow.hpp"
 #include "read_soil.hpp"
 #include "sentences.hpp"
@@ -44,6 +45,7 @@ public:
         attempt([&] { elevations(); });
         attempt([&] { book(); });
         attempt([&] { rain(); });
+        attempt([&] { uncertainty(); });
         if (terrain_) {
             attempt([&] { cover(); });
             attempt([&] { soil(); });
@@ -105,6 +107,18 @@ private:
             report_.facts.push_back("rain: 2-year 24-hour depth " + significant(in_inches(*rain.two_year_24_hour), 4) + " in (" +
                                     significant(in_millimetres(*rain.two_year_24_hour), 4) + " mm)");
         }
+    }
+
+    /// Says what would be drawn, and from whose ranges.
+    void uncertainty() {
+        if (!study_.uncertainty || study_.surface.book.empty()) return;
+        const CoverBook book = read_book(study_);
+        std::string ours;
+        for (const UncertainInput& input : uncertain_inputs(study_, book, std::vector<bool>(book.classes().size(), false))) {
+            if (input.source != "study") ours += (ours.empty() ? "" : ", ") + input.name;
+        }
+        report_.facts.push_back("uncertainty: " + std::to_string(study_.uncertainty->draws) + " draws" +
+                                (ours.empty() ? "" : "; ranges that the study does not state are ours: " + ours));
     }
 
     void cover() {

@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <memory>
+#include <optional>
 #include <tuple>
 #include <utility>
 
@@ -13,7 +14,9 @@
 #include "rillclock/deliver/paths_geojson.hpp"
 #include "rillclock/deliver/result_json.hpp"
 #include "rillclock/deliver/tables.hpp"
+#include "rillclock/deliver/uncertainty_tables.hpp"
 #include "rillclock/io/gdal_session.hpp"
+#include "rillclock/run/review_words.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
 #include "design_channels.hpp"
 #include "last_pass.hpp"
@@ -22,6 +25,7 @@
 #include "sentences.hpp"
 #include "study_data.hpp"
 #include "study_storms.hpp"
+#include "study_uncertainty.hpp"
 
 namespace rillclock {
 namespace {
@@ -66,6 +70,12 @@ void write_texts(const StudyResult& result, const std::string& json, ResultFolde
     folder.write_text("tables/review.csv", review_table(result));
     if (result.rain.source) folder.write_text("tables/storms.csv", storms_table(result));
     if (result.study.timing.is_kinematic()) folder.write_text("tables/iterations.csv", iterations_table(result));
+    if (result.uncertainty != nullptr) {
+        folder.write_text("tables/uncertainty.csv", uncertainty_table(result));
+        folder.write_text("tables/uncertain_times.csv", uncertain_times_table(result));
+        folder.write_text("tables/last_subareas.csv", last_subareas_table(result));
+        folder.write_text("tables/draws.csv", draws_table(result));
+    }
     write_sheets(result, json, folder);
     folder.write_text("result.json", json);
 }
@@ -88,9 +98,10 @@ std::vector<PointMethods> methods_of(const Study& study, const CoverBook& book, 
 }
 
 /// What was read, for those who watch the run.
-std::vector<std::string> facts_of(const StudyRain& rain) {
-    if (!rain.source) return {};
-    return {"rain: " + sentence(rain.source->echo)};
+std::vector<std::string> facts_of(const StudyRain& rain, const CarriedWords& reviewed) {
+    std::vector<std::string> facts = sentences_on(reviewed);
+    if (rain.source) facts.insert(facts.begin(), "rain: " + sentence(rain.source->echo));
+    return facts;
 }
 
 constexpr std::size_t most_overview_rows = 20;
@@ -101,6 +112,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     check_study(study);
     const GdalSession session;
     ResultFolder folder(located(study, study.output.folder), options.replace ? Existing::replace : Existing::refuse);
+    const std::vector<ReviewWord> words = review_words(folder.target());
     const Executor executor(options.threads);
     const StudyRain rain = read_rain(study);
 
@@ -140,22 +152,30 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const std::vector<Outlet> outlets = stage(progress, "design points", cells, [&] {
         return outlets_of(travel, points.points, tree, heads, outlet_rules_of(study, resolved));
     });
+    const std::optional<Uncertainty> uncertainty = study.uncertainty ? stage(progress, "uncertainty", cells, [&] {
+        return uncertainty_of_study({.study = study, .rain = rain, .surface = surface, .travel = travel, .owners = owners,
+                                     .points = points.points, .tree = tree, .heads = heads});
+    }) : std::nullopt;
     const std::vector<PointMethods> methods = methods_of(study, surface.book, rain, outlets);
     const Depressions depressions = stage(progress, "depressions", cells, [&] { return depressions_of(travel, outlets); });
     const Notices left_out = notices_of(depressions, ground.metres_per_elevation_unit);
     terrain.notices.insert(terrain.notices.end(), left_out.begin(), left_out.end());
+    const Notices without_range = notices_of_ranges(study, surface);
+    terrain.notices.insert(terrain.notices.end(), without_range.begin(), without_range.end());
     const Notices notices = all_notices(terrain, surface, rain, points, outlets);
+    const CarriedWords reviewed = carry_over(words, notices);
     const std::vector<InputFile> inputs = input_files(study);
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
     const StudyResult result{.study = study, .resolved = resolved, .rules = rules, .rain = rain, .grid = terrain.grid,
                              .system = terrain.system, .format = terrain.format, .book = surface.book, .sections = flow.sections,
                              .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .notices = notices,
-                             .inputs = inputs, .data = data};
+                             .inputs = inputs, .data = data,
+                             .reviewed = reviewed.by_notice, .uncertainty = uncertainty ? &*uncertainty : nullptr};
     const std::string json = result_json(result);
     write_texts(result, json, folder);
     folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
     folder.commit();
-    return {.folder = folder.target(), .facts = facts_of(rain), .headlines = headlines(result),
+    return {.folder = folder.target(), .facts = facts_of(rain, reviewed), .headlines = headlines(result),
             .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = json};
 }
 

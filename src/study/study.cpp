@@ -7,6 +7,7 @@
 #include "rillclock/hydraulics/channel_size.hpp"
 #include "rillclock/hydraulics/manning.hpp"
 #include "rillclock/rainfall/design_rain.hpp"
+#include "rillclock/study/uncertain_inputs.hpp"
 
 namespace rillclock {
 namespace {
@@ -152,6 +153,7 @@ void check_study(const Study& study) {
     refuse_contradictory_rain(study);
     refuse_contradictory_sheet(study);
     refuse_contradictory_shallow(study);
+    check_uncertainty(study);
 }
 
 ResolvedStudy resolve(const Study& study, const DataFacts& facts) {

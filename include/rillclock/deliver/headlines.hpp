@@ -8,7 +8,7 @@
 namespace rillclock {
 
 /// The three most interesting sentences of an answer: the governing path of the point with the largest catchment, what makes its time,
-/// and what most needs a person's eye.
+/// what the ranges of its inputs make of it where the study asks for that (a fourth), and what most needs a person's eye.
 [[nodiscard]] std::vector<std::string> headlines(const StudyResult& result);
 
 /// Positions of the points by area, the largest first; of equal ones the earlier number.

@@ -11,6 +11,7 @@
 #include "rillclock/hydraulics/channel_size.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 #include "rillclock/rainfall/rain_source.hpp"
+#include "rillclock/study/uncertainty_study.hpp"
 #include "rillclock/surface/cover_book.hpp"
 
 namespace rillclock {
@@ -136,6 +137,7 @@ struct Study {
     RainStudy rain = {};
     TimingStudy timing = {};
     PeakStudy peaks = {};
+    std::optional<UncertaintyStudy> uncertainty = {};  ///< absent: not asked for
     OutputStudy output = {};
 };
 
