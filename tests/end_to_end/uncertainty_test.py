@@ -2,10 +2,13 @@
 """Ranges of the inputs through the whole program: what the tables say, and draws run again as studies of their own."""
 import csv
 import json
+import pathlib
+import shutil
 import subprocess
+import tempfile
 import unittest
 
-from support import COMMAND, CommandTest, FOOT, hills, table, write_points, write_raster
+from support import COMMAND, CommandTest, FOOT, hills, table, write_raster
 
 import numpy as np
 
@@ -62,21 +65,30 @@ folder = "redrawn"
 
 
 class DemoWithRanges(CommandTest):
+    """The demo with ranges, run once; each test has a copy of it in its own folder."""
+
+    @classmethod
+    def setUpClass(cls):
+        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-ranges-"))
+        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
+        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
+        cls.plain = (cls.kept / "town/study.toml").read_text()
+        (cls.kept / "town/study.toml").write_text(cls.plain + "\n[uncertainty]\ndraws = 40\n")
+        cls.said = subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True, text=True).stdout
+
     def setUp(self):
         super().setUp()
-        self.done("demo", "town")
+        shutil.copytree(self.kept / "town", self.folder / "town")
         self.town = self.folder / "town"
 
-    def ask(self, block="[uncertainty]\ndraws = 40\n"):
-        path = self.town / "study.toml"
-        path.write_text(path.read_text() + "\n" + block)
+    def ask(self, block):
+        (self.town / "study.toml").write_text(self.plain + "\n" + block)
         return self.done("run", "town/study.toml", "--replace")
 
     def tables(self, name):
         return table(self.town / "result/tables" / name)
 
     def test_the_first_ten_draws_run_again_in_full_agree_within_one_percent(self):
-        self.ask()
         book = table(self.town / "cover-book.csv")
         for draw in self.tables("draws.csv")[:10]:
             write_book(self.town / "redrawn.csv", redrawn_book(book, draw))
@@ -89,14 +101,12 @@ class DemoWithRanges(CommandTest):
                 self.assertGreaterEqual(kept, 0.99 * float(point["time_of_concentration_min"]), point["name"])
 
     def test_the_typical_time_is_the_time_of_concentration(self):
-        self.ask()
         times = {row["name"]: row["time_of_concentration_min"] for row in self.tables("outlets.csv")}
         for row in self.tables("uncertain_times.csv"):
             # Both have three decimals.
             self.assertAlmostEqual(float(row["typical_min"]), float(times[row["point"]]), delta=0.0011)
 
     def test_fast_and_slow_ends_hold_all_draws_and_percentiles_rise(self):
-        self.ask()
         for row in self.tables("uncertain_times.csv"):
             rising = [float(row[name]) for name in row if name.startswith("percentile")]
             self.assertEqual(rising, sorted(rising))
@@ -104,7 +114,6 @@ class DemoWithRanges(CommandTest):
             self.assertGreater(float(row["all_slow_min"]), rising[-1])
 
     def test_rows_of_a_point_come_by_how_far_they_move_it(self):
-        self.ask()
         by_point = {}
         for row in self.tables("uncertainty.csv"):
             by_point.setdefault(row["point"], []).append(float(row["swing_min"]))
@@ -118,7 +127,6 @@ class DemoWithRanges(CommandTest):
         self.assertEqual(n["range_from"], "cover book cover-book.csv")
 
     def test_the_subareas_that_arrive_last_share_all_draws(self):
-        self.ask()
         draws = {}
         for row in self.tables("last_subareas.csv"):
             draws[row["point"]] = draws.get(row["point"], 0) + int(row["draws"])
@@ -126,22 +134,20 @@ class DemoWithRanges(CommandTest):
         self.assertEqual(len(draws), 11)
 
     def test_the_same_seed_gives_the_same_bytes_whatever_the_threads_and_another_seed_others(self):
-        self.ask()
         first = (self.town / "result/tables/draws.csv").read_bytes()
         self.done("run", "town/study.toml", "--replace", "--threads", "1")
         self.assertEqual((self.town / "result/tables/draws.csv").read_bytes(), first)
-        self.ask("seed = 2\n")
+        self.ask("[uncertainty]\ndraws = 40\nseed = 2\n")
         self.assertNotEqual((self.town / "result/tables/draws.csv").read_bytes(), first)
 
     def test_the_first_draws_are_these_on_every_machine(self):
-        self.ask()
         first = self.tables("draws.csv")[0]
         # As first drawn: std::mt19937_64 and a square root, so that nothing of the machine is in it.
         self.assertEqual(first["rain factor"], "0.98285033069230354")
         self.assertEqual(first["n of channels"], "0.051773133258181656")
 
     def test_the_summary_and_the_result_say_what_is_left_out(self):
-        said = self.ask()
+        said = self.said
         sentence = next(line for line in said.splitlines() if "Within the ranges" in line)
         self.assertIn("moves it most", sentence)
         self.assertIn("Left out are the choice of method and the elevations", sentence)
@@ -154,7 +160,7 @@ class DemoWithRanges(CommandTest):
         self.assertLess(point["typical_min"], point["all_slow_min"])
 
     def test_without_the_section_nothing_is_drawn(self):
-        said = self.done("run", "town/study.toml")
+        said = self.ask("")
         self.assertNotIn("Within the ranges", said)
         self.assertFalse((self.town / "result/tables/uncertainty.csv").exists())
 
