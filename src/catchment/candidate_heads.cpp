@@ -113,7 +113,7 @@ double sheet_step_time(const SheetStep& step, const TravelSetting& setting, doub
     const double share = std::clamp(std::min((in_metres(rules.limit) - static_cast<double>(step.from_divide_m)) / length,
                                              (in_metres(rules.index_limit) - index) / index_step), 0.0, 1.0);
     double time = (1.0 - share) * length / (in_metres_per_second(surface.shallow_k) * root_slope);
-    if (share > 0) time += rules.storm_factor * (table(index + share * index_step) - table(index));
+    if (share > 0) time += surface.sheet_factor * rules.storm_factor * (table(index + share * index_step) - table(index));
     if (!(celerity > 0)) return time;
     return std::min(time, length / std::min(celerity, in_metres_per_second(setting.rules.pond.speed)));
 }

@@ -109,8 +109,10 @@ private:
         if (step.celerity > 0 || floor_may_reach) return link.bent.push_back(step);
         switch (step.kind) {
             case GroundKind::overland: shallow[step.surface] += step.length_m / std::sqrt(step.slope); return;
-            case GroundKind::channel: link.channel_s += step.unit_time / std::sqrt(step.slope); return;
-            case GroundKind::water: link.water_s += step.unit_time; return;
+            case GroundKind::channel:
+                (step.is_known_channel ? link.known_s : link.channel_s) += step.unit_time / std::sqrt(step.slope);
+                return;
+            case GroundKind::water: link.known_s += step.unit_time; return;
         }
     }
 
@@ -120,8 +122,9 @@ private:
         switch (step.kind) {
             case GroundKind::overland: break;
             case GroundKind::channel: {
-                const Length radius = channel.radius_at(square_metres(from_fixed_area(at.step.area)));
-                const Speed speed = manning_velocity({.n = channel.n, .hydraulic_radius = radius, .slope = 1.0});
+                const Length radius = channel_radius(at.step, channel);
+                const Speed speed = manning_velocity({.n = channel_n(at.step, channel), .hydraulic_radius = radius, .slope = 1.0});
+                step.is_known_channel = at.step.reach != nullptr;
                 step.unit_time = step.length_m / in_metres_per_second(speed);
                 break;
             }
@@ -156,7 +159,7 @@ double bent_time(const BentStep& step, const TravelSetting& setting, double chan
     const SlopeRules& rules = setting.rules.slope;
     const double root = std::sqrt(std::max(step.slope, floor_of(step.kind, rules.overland_floor, rules.channel_floor)));
     double own = step.unit_time;
-    if (step.kind == GroundKind::channel) own = step.unit_time * channel / root;
+    if (step.kind == GroundKind::channel) own = step.unit_time * (step.is_known_channel ? 1.0 : channel) / root;
     if (step.kind == GroundKind::overland) {
         own = step.length_m / (in_metres_per_second(setting.classes[step.surface].shallow_k) * root);
     }
@@ -278,7 +281,7 @@ std::vector<WayTime> HeadPaths::sheet_times(const TravelSetting& setting) const 
 
 WayTime HeadPaths::link_time(const PathLink& link, const TravelSetting& setting, const std::vector<WayTime>& sheet) const {
     const double channel = channel_factor(setting.rules.channel, rules_.channel);
-    WayTime time{.storm_s = 0.0, .fixed_s = link.channel_s * channel + link.water_s};
+    WayTime time{.storm_s = 0.0, .fixed_s = link.channel_s * channel + link.known_s};
     for (const std::size_t cell : link.sheet_cells) time = time + sheet[cell];
     for (const auto& [surface, sum] : link.shallow) time.fixed_s += sum / in_metres_per_second(setting.classes[surface].shallow_k);
     for (const BentStep& step : link.bent) time.fixed_s += bent_time(step, setting, channel);

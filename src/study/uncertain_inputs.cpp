@@ -201,6 +201,11 @@ void check_uncertainty(const Study& study) {
                           " asks for uncertainty and for ignore_tail; the draws follow the cells that arrive last and cannot leave a share of "
                           "the area out, so remove ignore_tail or [uncertainty]");
     }
+    if (study.timing.shallow == ShallowRule::chart || study.timing.channel.design_storm) {
+        throw input_error(name +
+                          " asks for uncertainty and for velocities from a chart or from the flow of the design storm, which the draws cannot "
+                          "change; remove [uncertainty], or time shallow flow by cover and channels by their size");
+    }
     for (const Rule& rule : rules_with_ranges(study)) {
         if (!rule.stated || (rule.stated->low <= rule.typical && rule.typical <= rule.stated->high)) continue;
         throw input_error(name + " states uncertainty." + std::string(rule.key) + " as " + significant(rule.stated->low) + " to " +

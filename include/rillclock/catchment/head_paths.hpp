@@ -27,6 +27,7 @@ struct BentStep {
     double slope = 0.0;          ///< before the floor
     double length_m = 0.0;
     double unit_time = 0.0;      ///< s at a slope of 1 in channels, s on water; 0 overland
+    bool is_known_channel = false;   ///< has a section of its own, which no setting changes
     double celerity = 0.0;       ///< of the wave on ponded ground, m/s; 0 elsewhere
 };
 
@@ -37,7 +38,7 @@ struct PathLink {
     std::vector<std::size_t> sheet_cells = {};                   ///< where sheet flow may be, timed cell by cell
     std::vector<std::pair<std::uint8_t, double>> shallow = {};///< surface class, Σ d/√S in m
     double channel_s = 0.0;                                   ///< under the rules that the paths were made with
-    double water_s = 0.0;
+    double known_s = 0.0;                                     ///< what no setting changes: open water, channels with a section of their own
     std::vector<BentStep> bent = {};
 };
 
