@@ -13,6 +13,7 @@
 #include "options.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/run/check.hpp"
+#include "rillclock/run/compare.hpp"
 #include "rillclock/run/demo.hpp"
 #include "rillclock/run/explain.hpp"
 #include "rillclock/run/reference_text.hpp"
@@ -26,6 +27,7 @@ namespace {
 constexpr int status_inputs = 1;
 constexpr int status_command_line = 2;
 constexpr int status_machine = 3;
+constexpr int status_worse = 4;
 constexpr int status_signal = 128;
 constexpr std::size_t most_notices_shown = 8;
 
@@ -98,12 +100,24 @@ int demo_command(const CommandLine& line) {
     return 0;
 }
 
+int compare_command(const CommandLine& line) {
+    StageLog log(line.json);
+    const Progress progress([&](const StageProgress& report) { return log.report(report); });
+    CompareOptions options{.tolerance = tolerance_from_text(line.tolerance), .folder = {}, .replace = line.replace};
+    if (!line.compare_folder.empty()) options.folder = line.compare_folder;
+    const CompareOutcome outcome = compare(line.result_folder, line.after_folder, options, progress);
+    std::cout << (line.json ? outcome.json : outcome.text);
+    if (outcome.folder && !line.json) std::cout << "\nThe comparison is in " << outcome.folder->string() << ".\n";
+    return outcome.worse > 0 ? status_worse : 0;
+}
+
 int do_command(const CommandLine& line) {
     switch (line.command) {
         case CommandLine::Command::run: return run_command(line);
         case CommandLine::Command::check: return check_command(line);
         case CommandLine::Command::demo: return demo_command(line);
         case CommandLine::Command::explain: std::cout << explanation(line.result_folder, line.point); return 0;
+        case CommandLine::Command::compare: return compare_command(line);
         case CommandLine::Command::methods: std::cout << methods_text(); return 0;
     }
     return 0;

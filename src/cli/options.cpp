@@ -72,6 +72,7 @@ public:
         explain_ = app_.add_subcommand("explain", "print the calculation sheet of one point of a result");
         explain_->add_option("RESULT", line_.result_folder, "result folder")->required();
         explain_->add_option("POINT", line_.point, "name of the point, as in tables/outlets.csv")->required();
+        add_compare_words();
         methods_ = app_.add_subcommand("methods", "list every formula with its source, range and inputs");
         demo_ = app_.add_subcommand("demo", "write the demo study, an invented town, ready to run");
         demo_->add_option("FOLDER", line_.demo_folder, "a new or empty folder")->required();
@@ -93,6 +94,7 @@ public:
         if (check_->parsed()) gather_stated(*check_, check_values_, line_);
         line_.command = check_->parsed()     ? CommandLine::Command::check
                         : explain_->parsed() ? CommandLine::Command::explain
+                        : compare_->parsed() ? CommandLine::Command::compare
                         : methods_->parsed() ? CommandLine::Command::methods
                         : demo_->parsed()    ? CommandLine::Command::demo
                                              : CommandLine::Command::run;
@@ -102,6 +104,18 @@ public:
 private:
     static constexpr const char* no_command = "no command was given; begin with rillclock demo FOLDER, or rillclock --help";
     static constexpr const char* see_help = "; see rillclock --help, or rillclock COMMAND --help";
+
+    void add_compare_words() {
+        compare_ = app_.add_subcommand("compare", "compare two results of the same points; exit status 4 where one gets worse");
+        compare_->add_option("BEFORE", line_.result_folder, "result folder")->required();
+        compare_->add_option("AFTER", line_.after_folder, "result folder")->required();
+        compare_->add_option("--tolerance", line_.tolerance, "how much worse a point may get: its time shorter, its peak greater (default: \"5 %\")")
+            ->type_name("SHARE");
+        compare_->add_option("--out", line_.compare_folder, "folder for tables and a raster of the change (default: none is written)")
+            ->type_name("FOLDER");
+        compare_->add_flag("--replace", line_.replace, "replace a folder that is already there");
+        compare_->add_flag("--json", line_.json, "print the comparison as JSON on standard output, and nothing else there");
+    }
 
     static std::string sentence_of(const CLI::ParseError& stop) { return std::string(stop.what()) + see_help; }
 
@@ -130,6 +144,7 @@ private:
     CLI::App* run_ = nullptr;
     CLI::App* check_ = nullptr;
     CLI::App* explain_ = nullptr;
+    CLI::App* compare_ = nullptr;
     CLI::App* methods_ = nullptr;
     CLI::App* demo_ = nullptr;
     CommandLine line_;

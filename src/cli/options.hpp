@@ -9,7 +9,7 @@ namespace rillclock {
 
 /// What the words after the command's name ask for.
 struct CommandLine {
-    enum class Command { run, check, explain, methods, demo };
+    enum class Command { run, check, explain, compare, methods, demo };
     Command command = Command::run;
     std::string study_file;
     /// Keys of the study with their values as texts, from options such as --elevation.
@@ -22,6 +22,9 @@ struct CommandLine {
     std::string demo_folder;
     std::string result_folder;
     std::string point;
+    std::string after_folder;         ///< of compare; the result before is `result_folder`
+    std::string tolerance = "5 %";
+    std::string compare_folder;       ///< empty where nothing is to be written
     bool replace = false;
     unsigned threads = 0;   ///< 0 for as many as may be used
     bool quiet = false;

@@ -7,6 +7,7 @@
 
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/report_units.hpp"
+#include "rillclock/deliver/uncertainty_tables.hpp"
 
 namespace rillclock {
 namespace {
@@ -115,6 +116,7 @@ std::vector<std::string> headlines(const StudyResult& result) {
     const Outlet& main = result.outlets[by_area(result).front()];
     std::vector<std::string> sentences{governing_sentence(result, main), makeup_sentence(main)};
     if (const auto peak = peak_sentence(result, main)) sentences.push_back(*peak);
+    if (result.uncertainty != nullptr) sentences.push_back(uncertainty_sentence(result, main));
     sentences.push_back(concern_sentence(result));
     return sentences;
 }

@@ -9,6 +9,7 @@
 #include "network_words.hpp"
 #include "peaks_json.hpp"
 #include "segment_rows.hpp"
+#include "uncertainty_json.hpp"
 
 namespace rillclock {
 namespace {
@@ -431,6 +432,7 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
     json["methods"] = methods_json(result.methods[outlet.number - 1]);
     if (!outlet.storms.empty()) json["storms"] = storms_json(result, outlet);
     if (result.peaks.are_there()) json["peaks"] = peaks_json(result, outlet);
+    if (result.uncertainty != nullptr) json["uncertainty"] = point_uncertainty_json(result, outlet);
     return json;
 }
 
@@ -453,7 +455,7 @@ Json notices_json(const StudyResult& result) {
 std::string result_json(const StudyResult& result) {
     Json outlets = Json::array();
     for (const Outlet& outlet : result.outlets) outlets.push_back(outlet_json(result, outlet));
-    const Json json = {{"title", result.study.title},
+    Json json = {{"title", result.study.title},
                        {"report_units", result.study.report_units == ReportUnits::us ? "us" : "si"},
                        {"versions", versions()},
                        {"headlines", headlines(result)},
@@ -463,6 +465,7 @@ std::string result_json(const StudyResult& result) {
                        {"parameters", parameters_json(result)},
                        {"outlets", outlets},
                        {"notices", notices_json(result)}};
+    if (result.uncertainty != nullptr) json["uncertainty"] = uncertainty_json(result);
     return json.dump(1, ' ', false, Json::error_handler_t::replace) + "\n";
 }
 

@@ -18,7 +18,10 @@ std::string review_table(const StudyResult& result) {
         .column("y", [&result](const Notice& n) { return n.place ? coordinate(result.system, n.place->y) : std::string(); })
         .column("effect_min", [](const Notice& n) { return n.effect_s > 0 ? fixed_decimals(n.effect_s / 60.0, 3) : std::string(); })
         .column("text", [](const Notice& n) { return n.text; })
-        .column("reviewed", [](const Notice&) { return std::string(); });
+        .column("reviewed", [&result](const Notice& n) {
+            const auto place = static_cast<std::size_t>(&n - result.notices.data());
+            return place < result.reviewed.size() ? result.reviewed[place] : std::string();
+        });
     std::string text = table.header();
     for (const Notice& notice : result.notices) text += table.line(notice);
     return text;

@@ -13,6 +13,7 @@
 #include "rillclock/io/ground_of.hpp"
 #include "rillclock/io/text_file.hpp"
 #include "rillclock/rainfall/return_periods.hpp"
+#include "rillclock/study/uncertain_inputs.hpp"
 #include "mapped_flow.hpp"
 #include "read_soil.hpp"
 #include "sentences.hpp"
@@ -41,6 +42,7 @@ public:
         attempt([&] { book(); });
         attempt([&] { rain(); });
         attempt([&] { network(); });
+        attempt([&] { uncertainty(); });
         if (terrain_) {
             attempt([&] { cover(); });
             attempt([&] { soil(); });
@@ -109,6 +111,18 @@ private:
         const StatedEdits stated = read_edits(study_);
         if (!stated.pipes.empty()) report_.facts.push_back("pipes: " + std::to_string(stated.pipes.size()));
         if (!stated.overrides.empty()) report_.facts.push_back("overrides: of " + std::to_string(stated.overrides.size()) + " points");
+    }
+
+    /// Says what would be drawn, and from whose ranges.
+    void uncertainty() {
+        if (!study_.uncertainty || study_.surface.book.empty()) return;
+        const CoverBook book = read_book(study_);
+        std::string ours;
+        for (const UncertainInput& input : uncertain_inputs(study_, book, std::vector<bool>(book.classes().size(), false))) {
+            if (input.source != "study") ours += (ours.empty() ? "" : ", ") + input.name;
+        }
+        report_.facts.push_back("uncertainty: " + std::to_string(study_.uncertainty->draws) + " draws" +
+                                (ours.empty() ? "" : "; ranges that the study does not state are ours: " + ours));
     }
 
     void cover() {

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <future>
 #include <memory>
+#include <optional>
 #include <tuple>
 #include <utility>
 
@@ -15,7 +16,9 @@
 #include "rillclock/deliver/paths_geojson.hpp"
 #include "rillclock/deliver/result_json.hpp"
 #include "rillclock/deliver/tables.hpp"
+#include "rillclock/deliver/uncertainty_tables.hpp"
 #include "rillclock/io/gdal_session.hpp"
+#include "rillclock/run/review_words.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
 #include "design_channels.hpp"
 #include "last_pass.hpp"
@@ -25,6 +28,7 @@
 #include "sentences.hpp"
 #include "study_data.hpp"
 #include "study_storms.hpp"
+#include "study_uncertainty.hpp"
 
 namespace rillclock {
 namespace {
@@ -78,6 +82,12 @@ void write_texts(const StudyResult& result, const std::string& json, ResultFolde
     folder.write_text("tables/handover.csv", handover_table(result));
     if (!result.network.pipes.empty()) folder.write_text("tables/pipes.csv", pipes_table(result));
     if (result.study.timing.is_kinematic()) folder.write_text("tables/iterations.csv", iterations_table(result));
+    if (result.uncertainty != nullptr) {
+        folder.write_text("tables/uncertainty.csv", uncertainty_table(result));
+        folder.write_text("tables/uncertain_times.csv", uncertain_times_table(result));
+        folder.write_text("tables/last_subareas.csv", last_subareas_table(result));
+        folder.write_text("tables/draws.csv", draws_table(result));
+    }
     write_sheets(result, json, folder);
     folder.write_text("result.json", json);
 }
@@ -111,11 +121,12 @@ std::vector<PointMethods> methods_of(const Study& study, const StatedPoints& sta
 }
 
 /// What was read, for those who watch the run.
-std::vector<std::string> facts_of(const StudyRain& rain) {
-    if (!rain.source) return {};
+std::vector<std::string> facts_of(const StudyRain& rain, const CarriedWords& reviewed) {
     std::vector<std::string> facts;
-    if (rain.is_everywhere) facts.push_back("rain: " + sentence(rain.source->echo));
+    if (rain.source && rain.is_everywhere) facts.push_back("rain: " + sentence(rain.source->echo));
     for (const ZoneRain& zone : rain.zones) facts.push_back("rain zone: " + sentence(zone.source.echo));
+    const std::vector<std::string> words = sentences_on(reviewed);
+    facts.insert(facts.end(), words.begin(), words.end());
     return facts;
 }
 
@@ -128,6 +139,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const GdalSession session;
     require_memory(study);
     ResultFolder folder(located(study, study.output.folder), options.replace ? Existing::replace : Existing::refuse);
+    const std::vector<ReviewWord> words = review_words(folder.target());
     const Executor executor(options.threads);
     const StudyRain rain = read_rain(study);
     // Checksums are made while the work goes on; nothing else is left to do on one processor alone.
@@ -175,6 +187,10 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const std::vector<Outlet> outlets = stage(progress, "design points", cells, [&] {
         return outlets_of(travel, points.points, tree, heads, outlet_rules_of(study, resolved));
     });
+    const std::optional<Uncertainty> uncertainty = study.uncertainty ? stage(progress, "uncertainty", cells, [&] {
+        return uncertainty_of_study({.study = study, .rain = rain, .surface = surface, .travel = travel, .owners = owners,
+                                     .points = points.points, .tree = tree, .heads = heads});
+    }) : std::nullopt;
     require_rain(rain, outlets);
     const StatedPoints stated_points = study.points.file ? read_stated_points(study, terrain.system) : StatedPoints{};
     const std::vector<PointMethods> methods = methods_of(study, stated_points, surface.book, rain, outlets);
@@ -186,23 +202,25 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     }) : no_peaks(study, rain);
     const Depressions depressions = stage(progress, "depressions", cells, [&] { return depressions_of(travel, outlets); });
     const Notices left_out = notices_of(depressions, ground.metres_per_elevation_unit);
-    for (const Notices& more : {left_out, zones.notices, zone_notices(rain, outlets, terrain.grid)}) {
+    for (const Notices& more : {left_out, zones.notices, zone_notices(rain, outlets, terrain.grid), notices_of_ranges(study, surface)}) {
         terrain.notices.insert(terrain.notices.end(), more.begin(), more.end());
     }
     const Notices notices = all_notices(terrain, surface, rain, points, network, peaks, outlets);
+    const CarriedWords reviewed = carry_over(words, notices);
     const std::vector<InputFile> inputs = checksums.get();
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
     const StudyResult result{.study = study, .resolved = resolved, .rules = rules, .rain = rain, .grid = terrain.grid,
                              .system = terrain.system, .format = terrain.format, .book = surface.book, .sections = flow.sections,
                              .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .network = network, .peaks = peaks, .notices = notices,
-                             .inputs = inputs, .data = data};
+                             .inputs = inputs, .data = data,
+                             .reviewed = reviewed.by_notice, .uncertainty = uncertainty ? &*uncertainty : nullptr};
     const std::string json = result_json(result);
     write_texts(result, json, folder);
     folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
     if (!flow.line_cells.empty()) folder.write_text("own_paths.geojson", own_ways_geojson(result, flow.own_ways));
     folder.write_text("depressions.geojson", depressions_geojson(result, outlined(travel, terrain.grid, depressions.deepest_first)));
     folder.commit();
-    return {.folder = folder.target(), .facts = facts_of(rain), .headlines = headlines(result),
+    return {.folder = folder.target(), .facts = facts_of(rain, reviewed), .headlines = headlines(result),
             .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = json};
 }
 

@@ -9,6 +9,7 @@
 #include "rillclock/hydraulics/channel_size.hpp"
 #include "rillclock/hydraulics/manning.hpp"
 #include "rillclock/rainfall/design_rain.hpp"
+#include "rillclock/study/uncertain_inputs.hpp"
 
 namespace rillclock {
 namespace {
@@ -212,6 +213,7 @@ void check_study(const Study& study) {
     refuse_contradictory_sheet(study);
     refuse_contradictory_shallow(study);
     refuse_contradictory_network(study);
+    check_uncertainty(study);
 }
 
 ResolvedStudy resolve(const Study& study, const DataFacts& facts) {

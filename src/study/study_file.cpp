@@ -57,6 +57,8 @@ private:
         if (inner == nullptr)
             throw input_error(where + ": " + key + " holds keys of its own; write them under [" + key + "] or as " +
                               key + " = { key = value }");
+        // The section asks for it even where it states nothing.
+        if (key == "uncertainty" && !study_.uncertainty) study_.uncertainty.emplace();
         read(*inner, key);
     }
 

@@ -134,6 +134,24 @@ constexpr std::array keys{
              "K of the initial subarea of Californian counties: a number, a type of development, or \"field NAME\""},
     StudyKey{"methods.kirpich_factor", R"("paved overland")", "1",
              "multiplies Kirpich's time: a number, paved overland, concrete channel, or \"field NAME\""},
+    StudyKey{"uncertainty.draws", "500", "500 under [uncertainty]; none without it",
+             "times are drawn so many times over with all inputs within their ranges; the section alone asks for it"},
+    StudyKey{"uncertainty.seed", "1", "1", "another number makes other draws"},
+    StudyKey{"uncertainty.rain", R"("0.85 to 1.15")", "0.85 to 1.15", "range of the rain, as a factor"},
+    StudyKey{"uncertainty.sheet_limit", R"("80 ft to 150 ft")", "0.8 to 1.5 times the sheet limit",
+             "range of the distance from the divide at which sheet flow ends"},
+    StudyKey{"uncertainty.shallow_speed", R"("0.75 to 1.33")", "0.75 to 1.33",
+             "range of the speed of shallow concentrated flow, as a factor"},
+    StudyKey{"uncertainty.slope_floor_overland", R"("0.0005 to 0.002")", "half to double the floor",
+             "range of the slope floor overland"},
+    StudyKey{"uncertainty.slope_floor_channel", R"("0.00005 to 0.0002")", "half to double the floor",
+             "range of the slope floor in channels"},
+    StudyKey{"uncertainty.channel_n", R"("0.03 to 0.07")", "0.67 to 1.5 times the n of channels",
+             "range of Manning's n of channels"},
+    StudyKey{"uncertainty.channel_radius", R"("0.7 to 1.4")", "0.7 to 1.4",
+             "range of the hydraulic radius of channels, as a factor"},
+    StudyKey{"uncertainty.pond_speed", R"("1 m/s to unlimited")", "1 m/s to unlimited",
+             "range of the greatest speed across ponded cells"},
     StudyKey{"output.folder", R"("result")", "result", "result folder"},
     StudyKey{"output.rasters", R"("geotiff")", "geotiff", "format of the rasters"},
     StudyKey{"output.subareas", R"("least slacks")", "least slacks",
@@ -141,7 +159,7 @@ constexpr std::array keys{
 };
 
 /// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
-constexpr std::array<std::string_view, 5> not_served{"points.area", "rain.table", "uncertainty", "scenario", "output.isochrones"};
+constexpr std::array<std::string_view, 4> not_served{"points.area", "rain.table", "scenario", "output.isochrones"};
 
 bool is_or_is_under(std::string_view key, std::string_view stem) {
     return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));

@@ -48,6 +48,13 @@ public:
         return {.subject = value_.subject, .example = without_quotes(form_), .sign = sign};
     }
 
+    [[nodiscard]] const std::string& form() const { return form_; }
+    /// What is asked of either end of a range.
+    [[nodiscard]] QuantityAsked one_of_range() const {
+        std::string example = without_quotes(form_);
+        return {.subject = value_.subject, .example = example.substr(0, example.find(" to "))};
+    }
+
     [[nodiscard]] Length length() const { return length_from_text(text(), asked()); }
     [[nodiscard]] Speed speed() const { return speed_from_text(text(), asked()); }
     [[nodiscard]] Area area() const { return area_from_text(text(), asked()); }
@@ -70,11 +77,12 @@ public:
         return number;
     }
 
-    [[nodiscard]] int whole_number(int least) const {
+    [[nodiscard]] int whole_number(int least, int greatest = std::numeric_limits<int>::max()) const {
         const auto* whole = std::get_if<std::int64_t>(&value_.value);
-        if (whole == nullptr || *whole < least || *whole > std::numeric_limits<int>::max())
+        const bool is_open = greatest == std::numeric_limits<int>::max();
+        if (whole == nullptr || *whole < least || *whole > greatest)
             throw fault("is " + shown() + "; write a whole number, " + std::to_string(least) +
-                        " or more, without quotes, such as " + form_);
+                        (is_open ? " or more" : " to " + std::to_string(greatest)) + ", without quotes, such as " + form_);
         return static_cast<int>(*whole);
     }
 
@@ -221,11 +229,46 @@ void set_lump_input(Study& study, LumpInput input, const Stated& stated) {
         value.number = lump_input_from_text(input, stated.text(), stated.subject());
 }
 
+/// "LOW to HIGH", each read by `one`.
+template <class One>
+ValueRange range_of(const Stated& stated, One one) {
+    const std::string& text = stated.text();
+    const auto between = text.find(" to ");
+    if (between == std::string::npos)
+        throw stated.fault("is \"" + text + "\"; write the least and the greatest value, such as " + stated.form());
+    const ValueRange range{.low = one(text.substr(0, between)), .high = one(text.substr(between + 4))};
+    if (!(range.low < range.high))
+        throw stated.fault("is \"" + text + "\", which does not rise; write the least value first, such as " +
+                           stated.form());
+    return range;
+}
+
+ValueRange number_range(const Stated& stated) {
+    return range_of(stated, [&](const std::string& text) { return number_from_text(text, stated.one_of_range()); });
+}
+
+ValueRange length_range(const Stated& stated) {
+    return range_of(stated, [&](const std::string& text) { return in_metres(length_from_text(text, stated.one_of_range())); });
+}
+
+ValueRange speed_range(const Stated& stated) {
+    return range_of(stated, [&](const std::string& text) {
+        if (text == "unlimited") return std::numeric_limits<double>::infinity();
+        return in_metres_per_second(speed_from_text(text, stated.one_of_range()));
+    });
+}
+
+UncertaintyStudy& uncertainty(Study& study) {
+    if (!study.uncertainty) study.uncertainty.emplace();
+    return *study.uncertainty;
+}
+
 struct Setter {
     std::string_view key;
     void (*set)(Study&, const Stated&);
 };
 
+constexpr int most_draws = 10000;
 constexpr double least_n = 0.005;  // smoother than glass
 constexpr double greatest_n = 1.0;
 constexpr double greatest_side_slope = 100.0;
@@ -362,6 +405,20 @@ constexpr std::array setters{
            [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::undeveloped_coefficient, v); }},
     Setter{"methods.county_k", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::county_k, v); }},
     Setter{"methods.kirpich_factor", [](Study& s, const Stated& v) { set_lump_input(s, LumpInput::kirpich_factor, v); }},
+    Setter{"uncertainty.draws",
+           [](Study& s, const Stated& v) { uncertainty(s).draws = v.whole_number(10, most_draws); }},
+    Setter{"uncertainty.seed", [](Study& s, const Stated& v) { uncertainty(s).seed = v.whole_number(0); }},
+    Setter{"uncertainty.rain", [](Study& s, const Stated& v) { uncertainty(s).rain = number_range(v); }},
+    Setter{"uncertainty.sheet_limit", [](Study& s, const Stated& v) { uncertainty(s).sheet_limit = length_range(v); }},
+    Setter{"uncertainty.shallow_speed", [](Study& s, const Stated& v) { uncertainty(s).shallow_speed = number_range(v); }},
+    Setter{"uncertainty.slope_floor_overland",
+           [](Study& s, const Stated& v) { uncertainty(s).slope_floor_overland = number_range(v); }},
+    Setter{"uncertainty.slope_floor_channel",
+           [](Study& s, const Stated& v) { uncertainty(s).slope_floor_channel = number_range(v); }},
+    Setter{"uncertainty.channel_n", [](Study& s, const Stated& v) { uncertainty(s).channel_n = number_range(v); }},
+    Setter{"uncertainty.channel_radius",
+           [](Study& s, const Stated& v) { uncertainty(s).channel_radius = number_range(v); }},
+    Setter{"uncertainty.pond_speed", [](Study& s, const Stated& v) { uncertainty(s).pond_speed = speed_range(v); }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
     Setter{"output.rasters", [](Study&, const Stated& v) { (void)v.choice({"geotiff"}, {"cog"}); }},
     Setter{"output.subareas",

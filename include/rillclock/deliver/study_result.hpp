@@ -14,6 +14,7 @@
 #include "rillclock/study/study.hpp"
 #include "rillclock/study/point_methods.hpp"
 #include "rillclock/study/study_rain.hpp"
+#include "rillclock/study/uncertainty.hpp"
 #include "rillclock/surface/cover_book.hpp"
 
 namespace rillclock {
@@ -64,6 +65,8 @@ struct StudyResult {
     const Notices& notices;            ///< by effect on the time, the greatest first
     const std::vector<InputFile>& inputs;
     const DataSummary& data;
+    std::span<const std::string> reviewed = {};   ///< a person's word on each notice; empty where there is none at all
+    const Uncertainty* uncertainty = nullptr;   ///< null where the study does not ask for it
 };
 
 /// The intensity of the storm that a point's paths and segments are for; none where sheet flow does not depend on it.

@@ -14,6 +14,7 @@
 #include "rillclock/hydraulics/storm_time.hpp"
 #include "rillclock/rainfall/rain_source.hpp"
 #include "rillclock/study/lump_inputs.hpp"
+#include "rillclock/study/uncertainty_study.hpp"
 #include "rillclock/surface/cover_book.hpp"
 #include "rillclock/surface/runoff_coefficients.hpp"
 
@@ -179,6 +180,7 @@ struct Study {
     TimingStudy timing = {};
     PeakStudy peaks = {};
     MethodStudy methods = {};
+    std::optional<UncertaintyStudy> uncertainty = {};  ///< absent: not asked for
     OutputStudy output = {};
 };
 

@@ -1,0 +1,152 @@
+#!/usr/bin/python3
+"""Two results side by side: what changes at each point and in each cell, what gets worse, and what cannot be compared."""
+import csv
+import json
+import unittest
+
+import numpy as np
+from osgeo import gdal
+
+from support import CommandTest, hills, table, write_points, write_raster
+
+BOOK = """code,name,n_typical,shallow_type,source
+1,Wood,0.4,contour crops or woodland,test
+2,Street,0.011,pavement,test
+"""
+STUDY = """report_units = "si"
+[terrain]
+elevation = "dem.tif"
+[surface]
+cover = "{cover}"
+book = "book.csv"
+[points]
+{points}
+[rain]
+two_year_24_hour = "80 mm"
+[output]
+folder = "{folder}"
+"""
+
+
+class TwoResults(CommandTest):
+    """Wood before; a street over the eastern half after."""
+
+    def setUp(self):
+        super().setUp()
+        cover = np.ones((40, 50), np.uint8)
+        write_raster(self.folder / "dem.tif", hills())
+        write_raster(self.folder / "wood.tif", cover, kind=gdal.GDT_Byte, unit=None)
+        cover[:, 25:] = 2
+        write_raster(self.folder / "street.tif", cover, kind=gdal.GDT_Byte, unit=None)
+        (self.folder / "book.csv").write_text(BOOK)
+        self.run_study("before", "wood.tif")
+        self.run_study("after", "street.tif")
+
+    def run_study(self, folder, cover, points='auto_area = "3 %"', units="si"):
+        (self.folder / f"{folder}.toml").write_text(
+            STUDY.format(cover=cover, folder=folder, points=points).replace('"si"', f'"{units}"'))
+        self.done("run", f"{folder}.toml", "-q")
+
+    def times(self, folder):
+        return {row["name"]: float(row["time_of_concentration_min"]) for row in table(self.folder / folder / "tables/outlets.csv")}
+
+    def test_a_result_beside_itself_changes_nothing_and_ends_with_status_0(self):
+        run = self.rillclock("compare", "before", "before", "--json")
+        self.assertEqual(run.returncode, 0, run.stderr)
+        comparison = json.loads(run.stdout)
+        self.assertEqual(comparison["worse"], [])
+        for point in comparison["points"]:
+            self.assertEqual(point["time_min"]["change"], 0)
+            self.assertTrue(point["same_head"])
+
+    def test_points_whose_time_becomes_shorter_are_worse_and_the_status_is_4(self):
+        run = self.rillclock("compare", "before", "after", "--json")
+        self.assertEqual(run.returncode, 4, run.stderr)
+        before, after = self.times("before"), self.times("after")
+        shorter = {name: 1 - after[name] / before[name] for name in before if 1 - after[name] / before[name] > 0.05}
+        self.assertGreater(len(shorter), 1)
+        comparison = json.loads(run.stdout)
+        self.assertEqual(comparison["worse"], sorted(shorter, key=shorter.get, reverse=True))
+        for point in comparison["points"]:
+            self.assertAlmostEqual(point["time_min"]["change"], after[point["name"]] - before[point["name"]], places=6)
+
+    def test_the_other_way_round_nothing_gets_worse(self):
+        run = self.rillclock("compare", "after", "before")
+        self.assertEqual(run.returncode, 0, run.stdout + run.stderr)
+        self.assertTrue(run.stdout.startswith("None of "))
+
+    def test_the_tolerance_decides(self):
+        run = self.rillclock("compare", "before", "after", "--tolerance", "99 %")
+        self.assertEqual(run.returncode, 0, run.stdout + run.stderr)
+        self.assertIn("more than 99 %", run.stdout)
+
+    def test_the_text_names_the_worst_first(self):
+        run = self.rillclock("compare", "before", "after")
+        self.assertEqual(run.returncode, 4)
+        before, after = self.times("before"), self.times("after")
+        worst = max(before, key=lambda name: 1 - after[name] / before[name])
+        self.assertIn(f"the worst is '{worst}'", run.stdout)
+        self.assertTrue(run.stdout.splitlines()[3].startswith(worst))
+
+    def test_the_raster_is_after_less_before_in_every_cell(self):
+        run = self.rillclock("compare", "before", "after", "--out", "change")
+        self.assertEqual(run.returncode, 4, run.stderr)
+        values = {}
+        for name in ("before/rasters/travel_time.tif", "after/rasters/travel_time.tif", "change/rasters/travel_time_change.tif"):
+            file = gdal.Open(str(self.folder / name))
+            values[name.split("/")[0]] = file.ReadAsArray().astype(float)
+        # Float32: half a unit in the last place of minutes below 64.
+        np.testing.assert_allclose(values["change"], values["after"] - values["before"], atol=4e-6)
+        self.assertLess(values["change"].min(), -0.1)
+        rows = table(self.folder / "change/tables/comparison.csv")
+        self.assertEqual(rows[0]["worse"], "yes")
+        self.assertEqual(len(rows), len(self.times("before")))
+        self.assert_nothing_left()
+
+    def test_peaks_count_where_both_results_have_them(self):
+        for folder, factor in (("before", 1.0), ("after", 1.2)):
+            with open(self.folder / folder / "tables/peaks.csv", "w", encoding="utf-8", newline="") as file:
+                writer = csv.writer(file)
+                writer.writerow(["point", "return_period_years", "runoff_coefficient", "whole_area_peak_m3_per_s", "peak_m3_per_s"])
+                for number, name in enumerate(self.times("before")):
+                    writer.writerow([name, 10, 0.5 * factor, 1.0, 2.0 * (factor if number == 0 else 1.0)])
+        run = self.rillclock("compare", "before", "after", "--json", "--out", "change")
+        self.assertEqual(run.returncode, 4, run.stderr)
+        first = json.loads(run.stdout)["points"][0]
+        self.assertEqual(first["peaks"][0]["peak_m3_per_s"], {"before": 2, "after": 2.4, "change": 0.4, "change_percent": 20})
+        self.assertEqual(first["peaks"][0]["runoff_coefficient"]["change"], 0.1)
+        rows = table(self.folder / "change/tables/compared_peaks.csv")
+        self.assertEqual(rows[0]["peak_change_percent"], "20.000")
+
+    def test_what_is_no_result_is_refused(self):
+        self.refused(1, "compare", "before", "nowhere", says=("no folder 'nowhere'",))
+        (self.folder / "empty").mkdir()
+        self.refused(1, "compare", "empty", "after", says=("'empty' is not a result", "outlets.csv"))
+
+    def test_other_points_are_refused_by_name(self):
+        write_points(self.folder / "points.geojson", [("Elsewhere", (500_050.0, 5_399_930.0))])
+        self.run_study("other", "wood.tif", points='file = "points.geojson"\nname = "name"')
+        self.refused(1, "compare", "before", "other", says=("not of the same points", "'Elsewhere'"))
+
+    def test_other_units_are_refused(self):
+        self.run_study("feet", "wood.tif", units="us")
+        self.refused(1, "compare", "before", "feet", says=("different units", "report_units"))
+
+    def test_other_grids_are_refused(self):
+        write_raster(self.folder / "dem.tif", hills(), corner=(500_002.0, 5_400_000.0))
+        write_raster(self.folder / "moved.tif", np.ones((40, 50), np.uint8), corner=(500_002.0, 5_400_000.0), kind=gdal.GDT_Byte, unit=None)
+        self.run_study("moved", "moved.tif")
+        # The ground is the same, so points where water leaves the data have the same names.
+        self.refused(1, "compare", "before", "moved", says=("different grids", "40 rows × 50 columns"))
+
+    def test_a_folder_that_is_there_is_kept_unless_it_may_be_replaced(self):
+        self.assertEqual(self.rillclock("compare", "before", "after", "--out", "change").returncode, 4)
+        self.refused(1, "compare", "before", "after", "--out", "change", says=("--replace",))
+        self.assertEqual(self.rillclock("compare", "before", "after", "--out", "change", "--replace").returncode, 4)
+
+    def test_a_tolerance_that_is_no_share_is_a_fault_of_the_command_line(self):
+        self.refused(2, "compare", "before", "after", "--tolerance", "5 min", says=("--tolerance", "5 %"))
+
+
+if __name__ == "__main__":
+    unittest.main()
