@@ -195,7 +195,7 @@ public:
             count_cells(at.desk);
             for (std::size_t i = 0; i < factors_.size(); ++i) {
                 estimate(i, at);
-                borders_[i].collect(tile, at.desk.flow, time_channel(at), at.time);
+                collect_up(tile, at.desk.flow, borders_[i].part(time_channel(at), at.time));
             }
         });
         for (auto& border : borders_) border.solve<decltype(time_channel(std::declval<SortedDesk&>()))>();
@@ -204,7 +204,7 @@ public:
             list_heads(at);
             for (std::size_t i = 0; i < factors_.size(); ++i) {
                 estimate(i, at);
-                borders_[i].fill(tile, at.desk.flow, time_channel(at), at.time);
+                fill_up(tile, at.desk.flow, borders_[i].part(time_channel(at), at.time));
                 keep_last(i, at);
             }
         });

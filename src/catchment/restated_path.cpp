@@ -2,7 +2,6 @@
 
 #include <algorithm>
 
-#include "rillclock/hydraulics/shallow_flow.hpp"
 #include "rillclock/hydraulics/sheet_flow.hpp"
 
 namespace rillclock {
@@ -23,7 +22,9 @@ double sheet_length_m(std::span<const PathPiece> pieces) {
 
 StepTime restated_time(const PathGround& ground, std::span<const PathPiece> pieces, const StatedOverland& stated) {
     double left_m = stated.sheet_length ? in_metres(*stated.sheet_length) : sheet_length_m(pieces);
+    const SheetRules& sheet = ground.rules.sheet;
     double index_m = 0.0;
+    double from_head_m = 0.0;
     StepTime time;
     for (const PathPiece& piece : pieces) {
         const SurfaceHydraulics& surface = ground.classes[piece.surface];
@@ -36,12 +37,16 @@ StepTime restated_time(const PathGround& ground, std::span<const PathPiece> piec
         left_m -= sheet_m;
         if (sheet_m > 0) {
             const SheetStretch stretch{.n = stated.n.value_or(surface.sheet_n), .length = metres(sheet_m), .slope = piece.part.slope};
+            const bool by_index = sheet.basis == SheetBasis::index;
+            const Duration alone = by_index ? sheet.formula.at_unit_storm(metres(index_m), metres(index_m) + sheet_index(stretch))
+                                            : surface.sheet_factor * sheet.formula.along_characteristic(stretch, metres(from_head_m));
+            time.storm += to_fixed(in_seconds(alone));
             index_m += in_metres(sheet_index(stretch));
+            from_head_m += sheet_m;
         }
         const Length shallow = metres(piece.part.length_m - sheet_m);
-        if (shallow > Length{}) time.fixed += to_fixed(in_seconds(shallow / shallow_velocity(surface.shallow_k, piece.part.slope)));
+        if (shallow > Length{}) time.fixed += to_fixed(in_seconds(shallow / shallow_speed(surface, piece.part.slope)));
     }
-    time.storm += to_fixed(in_seconds(ground.rules.sheet.formula.at_unit_storm(metres(index_m))));
     return time;
 }
 

@@ -17,8 +17,11 @@ std::string own_parts_text(const StudyResult& result, const Outlet& outlet) {
     const PointEdit& edit = result.network.edits[outlet.number - 1];
     if (edit.stated != nullptr && edit.stated->time) return parts_text({.fixed = to_fixed(in_seconds(*edit.stated->time))});
     if (edit.stated != nullptr && edit.stated->restated) return parts_text(*edit.stated->restated);
+    // A front holds its heads in the order in which tiles were done.
+    std::vector<Head> heads = outlet.own_front.heads();
+    std::sort(heads.begin(), heads.end(), [](const Head& a, const Head& b) { return a.cell < b.cell; });
     std::string text;
-    for (const Head& head : outlet.own_front.heads()) text += (text.empty() ? "" : "; ") + parts_text(head.time - outlet.time_to_root);
+    for (const Head& head : heads) text += (text.empty() ? "" : "; ") + parts_text(head.time - outlet.time_to_root);
     return text;
 }
 

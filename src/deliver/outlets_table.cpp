@@ -125,6 +125,8 @@ void add_peak_columns(const StudyResult& result, const ReportScale& scale, Table
     table.column("whole_area_peak_" + scale.flow_unit(), where_any([=](const PointPeak& p) { return five_digits(scale.flow(p.whole)); }))
         .column("peak_" + scale.flow_unit(), where_any([=](const PointPeak& p) { return five_digits(scale.flow(p.partial)); }))
         .column("peak_subareas", where_any([&result](const PointPeak& p) { return makers_in_words(result, p); }));
+}
+
 void add_zone_columns(const StudyResult& result, TableWriter<Outlet>& table) {
     if (result.rain.zones.empty()) return;
     table.column("rain_zone", [&result](const Outlet& o) { return result.rain.zone_name(o.rain_zone.number); })

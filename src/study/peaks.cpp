@@ -102,12 +102,14 @@ private:
         const Placing& placing;
     };
 
-    [[nodiscard]] IntensityOfDuration rain_of(std::size_t period) const {
-        return [&curve = in_.rain.storms[period].rain](Duration duration) { return curve.within(duration); };
+    /// The rain of the point's zone.
+    [[nodiscard]] IntensityOfDuration rain_of(PointNumber number, std::size_t period) const {
+        const std::size_t zone = in_.outlets[number - 1].rain_zone.number;
+        return [&curve = in_.rain.storms_of(zone)[period].rain](Duration duration) { return curve.within(duration); };
     }
 
     void work_out(PointPeak& peak, const At& at, const std::vector<SubareaRunoff>& subareas) {
-        const IntensityOfDuration rain = rain_of(at.period);
+        const IntensityOfDuration rain = rain_of(at.number, at.period);
         const PartialAreaSearch search{.rain = rain, .least_time = least_time_, .whole_time = peak.whole_time};
         const ArrivalCurve curve = at.binned.curve(coefficients_, at.period);
         const std::optional<PartialPeak> found = partial_peak(curve, search);

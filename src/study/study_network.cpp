@@ -48,7 +48,7 @@ private:
         const auto time = [&](Intensity i) {
             return seconds(from_fixed(network.arrivals_at(outlet.number, kinematic_storm_factor(i)).time));
         };
-        const StormTime solved = solve_storm_time(time, rain_of(period), {.start = in_.rain.first_assumed()});
+        const StormTime solved = solve_storm_time(time, rain_of(outlet, period), {.start = in_.rain.first_assumed()});
         if (solved.end == StormEnd::settled) return kinematic_storm_factor(solved.intensity());
         throw input_error("with its pipes and overrides the storm of " + significant(in_.rain.storms[period].return_period, 6) +
                           " years at the point '" + outlet.point.name + "' does not settle: " + std::string(words(solved.end)) +
@@ -65,8 +65,9 @@ private:
         return factors;
     }
 
-    [[nodiscard]] IntensityOfDuration rain_of(std::size_t period) const {
-        return [&curve = in_.rain.storms[period].rain](Duration duration) { return curve.within(duration); };
+    /// The rain of the point's zone.
+    [[nodiscard]] IntensityOfDuration rain_of(const Outlet& outlet, std::size_t period) const {
+        return [&curve = in_.rain.storms_of(outlet.rain_zone.number)[period].rain](Duration duration) { return curve.within(duration); };
     }
 
     /// Pipes that lie higher come first, so that what they do to times is known further down.
@@ -98,7 +99,7 @@ private:
         const double factor = solved_factor(network, in_.outlets[number - 1], in_.rain.raster);
         const Duration time = seconds(from_fixed(network.arrivals_at(number, factor).time));
         const RationalConversion conversion = in_.study.peaks.conversion.value_or(RationalConversion::exact);
-        return rational_peak(square_metres(from_fixed_area(runoff)), in_.rain.raster_storm().rain.at(time), conversion);
+        return rational_peak(square_metres(from_fixed_area(runoff)), in_.rain.storms_of(in_.outlets[number - 1].rain_zone.number)[in_.rain.raster].rain.at(time), conversion);
     }
 
     void tell_one_channel_flow() {

@@ -9,6 +9,7 @@
 #include <vector>
 
 #include "patch.hpp"
+#include "rillclock/raster/raster.hpp"
 #include "rillclock/terrain/descent.hpp"
 #include "rillclock/tiles/executor.hpp"
 #include "rillclock/tiles/tile_memory.hpp"

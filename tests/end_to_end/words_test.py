@@ -8,7 +8,7 @@ import unittest
 from support import COMMAND, CommandTest, SOURCE
 
 README = (SOURCE / "README.md").read_text(encoding="utf-8")
-COMMANDS = ("run", "check", "explain", "methods", "demo")
+COMMANDS = ("run", "check", "explain", "compare", "methods", "demo")
 
 
 def help_of(*words):

@@ -4,6 +4,7 @@
 
 #include "reference/drawings.hpp"
 #include "reference/plain/flow_directions.hpp"
+#include "reference/plain/sweeps.hpp"
 
 namespace rillclock {
 namespace {

@@ -3,6 +3,7 @@
 #include <cstdint>
 
 #include "rillclock/raster/direction.hpp"
+#include "rillclock/raster/raster.hpp"
 
 namespace rillclock {
 

@@ -5,6 +5,7 @@
 #include <vector>
 
 #include "rillclock/forest/flow_code.hpp"
+#include "rillclock/raster/raster.hpp"
 #include "rillclock/tiles/tile_grid.hpp"
 #include "rillclock/tiles/tile_memory.hpp"
 

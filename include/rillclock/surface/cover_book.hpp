@@ -41,9 +41,9 @@ struct CoverClass {
     std::array<std::optional<double>, 4> runoff_coefficients =
         {};                     ///< by soil group, 0 to 1, none below that before; where the book has them
     std::string land_use = {};           ///< name of one of `land_uses()` (runoff_coefficients.hpp); may be empty
-    std::optional<double> impervious = {};  ///< share of the ground that is, 0 to 1; where the book has it
     std::optional<double> kerby_n = {};    ///< Kerby's retardance, above 0 to 1; where the book has it
     std::optional<double> izzard_c = {};   ///< Izzard's retardance, above 0 to 1
+    std::optional<double> impervious = {};  ///< share of the ground that is, 0 to 1; where the book has it
     std::optional<double> county_k = {};   ///< K of the initial subarea of Californian counties, above 0 to 2
     std::string source = {};               ///< where the values are from
     bool from_memory = false;                       ///< a default to check before use
@@ -89,8 +89,8 @@ private:
 /// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group), `c` (runoff coefficient of any soil) and `c_a` to `c_d`
 ///   (of each soil group; each may be absent or empty), for runoff and for methods that time a catchment as one lump;
 /// - `land_use` (a name of `land_uses()`, for runoff coefficients printed by soil group, slope and return period) and
-///   `impervious_percent` (0 to 100), each may be absent or empty;
-///   (of each soil group), `kerby_n`, `izzard_c` (retardances), `impervious` (share) and `county_k` (each may be absent
+///   `impervious_percent` (0 to 100; or `impervious`, the share), each may be absent or empty;
+/// - `kerby_n`, `izzard_c` (retardances) and `county_k` (each may be absent
 ///   or empty), for runoff and for methods that time a catchment as one lump;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).
 ///

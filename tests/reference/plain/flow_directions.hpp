@@ -1,6 +1,7 @@
 #pragma once
 
 #include "reference/plain/basins.hpp"
+#include "reference/plain/flow_forest.hpp"
 
 namespace rillclock {
 

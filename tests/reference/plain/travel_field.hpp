@@ -2,6 +2,8 @@
 
 #include <span>
 
+#include "reference/plain/slope_ahead.hpp"
+#include "reference/plain/steepest_descent.hpp"
 #include "reference/plain/sweeps.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/travel/step.hpp"

@@ -81,12 +81,12 @@ TEST_CASE_METHOD(ShapeFolder, "polygons carry the text of the field that is aske
                               square + "," + square + "]}}";
     const std::string unnamed = R"({"type":"Feature","properties":{"rain":null},"geometry":{"type":"Polygon","coordinates":)" + square + "}}";
     const fs::path path = file(named + "," + unnamed + "," + feature("Point", "[1,2]"));
-    const ShapeFile read = read_shapes(path, "rain zones", ShapeKinds::polygons, degrees, {}, "rain");
+    const ShapeFile read = read_shapes(path, {.role = "rain zones", .kinds = ShapeKinds::polygons, .layer_key = "zones_layer", .text_field = "rain"}, degrees);
     CHECK(read.polygons.size() == 3);
     CHECK(read.polygon_texts == std::vector<std::string>{"hill.csv", "hill.csv", ""});
     REQUIRE(read.notices.size() == 1);
     CHECK_THAT(read.notices[0].text, Contains("is a POINT, and only polygons have a meaning here"));
-    CHECK_THAT(sentence_of([&] { (void)read_shapes(path, "rain zones", ShapeKinds::polygons, degrees, {}, "station"); }),
+    CHECK_THAT(sentence_of([&] { (void)read_shapes(path, {.role = "rain zones", .kinds = ShapeKinds::polygons, .layer_key = "zones_layer", .text_field = "station"}, degrees); }),
                Contains("has no field \"station\"; its fields are rain"));
 }
 

@@ -35,6 +35,7 @@ enum class Kind {
     formula,
     soil,
     soil_classes,
+    range,          ///< "LOW to HIGH", each a number with the key's own unit
 };
 
 /// Every key of a study with the kind of value it takes. A new key needs its line here.
@@ -48,6 +49,11 @@ const std::map<std::string, Kind> kinds{
     {"terrain.crossings", Kind::text},
     {"terrain.barriers", Kind::text},
     {"terrain.keep_water", Kind::text},
+    {"terrain.channels_layer", Kind::text},
+    {"terrain.crossings_layer", Kind::text},
+    {"terrain.barriers_layer", Kind::text},
+    {"terrain.keep_water_layer", Kind::text},
+    {"terrain.departure", Kind::length},
     {"terrain.slope_window", Kind::length},
     {"terrain.vertical_step", Kind::length},
     {"terrain.pond_depth", Kind::length},
@@ -66,6 +72,7 @@ const std::map<std::string, Kind> kinds{
     {"points.layer", Kind::text},
     {"points.auto_area", Kind::share},
     {"points.move_within", Kind::length_or_zero},
+    {"points.pipes", Kind::text},
     {"rain.two_year_24_hour", Kind::rain_depth},
     {"rain.file", Kind::text},
     {"rain.block", Kind::word},
@@ -96,7 +103,24 @@ const std::map<std::string, Kind> kinds{
     {"timing.channel.depth", Kind::power_law},
     {"timing.ignore_tail", Kind::share_or_zero},
     {"timing.shortest_segment", Kind::length},
+    {"timing.overrides", Kind::text},
+    {"timing.pipe_flow", Kind::word},
     {"peaks.least_time", Kind::duration_or_zero},
+    {"peaks.coefficient", Kind::word},
+    {"peaks.conversion", Kind::word},
+    {"peaks.frequency_factors", Kind::word},
+    {"peaks.area_limit", Kind::area},
+    {"peaks.time_bin", Kind::duration},
+    {"uncertainty.draws", Kind::count},
+    {"uncertainty.seed", Kind::code},
+    {"uncertainty.rain", Kind::range},
+    {"uncertainty.sheet_limit", Kind::range},
+    {"uncertainty.shallow_speed", Kind::range},
+    {"uncertainty.slope_floor_overland", Kind::range},
+    {"uncertainty.slope_floor_channel", Kind::range},
+    {"uncertainty.channel_n", Kind::range},
+    {"uncertainty.channel_radius", Kind::range},
+    {"uncertainty.pond_speed", Kind::range},
     {"methods.kerby_n", Kind::number},
     {"methods.izzard_c", Kind::number},
     {"methods.impervious", Kind::number_or_zero},
@@ -105,6 +129,7 @@ const std::map<std::string, Kind> kinds{
     {"methods.kirpich_factor", Kind::number},
     {"output.folder", Kind::text},
     {"output.rasters", Kind::word},
+    {"output.subareas", Kind::word},
 };
 
 using Values = std::vector<std::string>;
@@ -129,6 +154,8 @@ Values bad_values(Kind kind) {
     switch (kind) {
         case Kind::text:
             return {"\"\"", "1", "0", "-1", "nan", "true"};
+        case Kind::range:
+            return {"\"\"", "\"1\"", "\"1 to\"", "\"to 1\"", "\"zzz to zzz\"", "\"nan to nan\"", "\"2 zzz to 3 zzz\"", "1", "nan", "true", "[1, 2]"};
         case Kind::word:
             return {"\"\"", "\"zzz\"", "1", "nan", "true"};
         case Kind::length:

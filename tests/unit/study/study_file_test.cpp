@@ -329,8 +329,7 @@ TEST_CASE("rain may be read from a block of its file and from the files of zones
 }
 
 TEST_CASE("what the lump methods need is a number, a word of the method's table, or a field of the points") {
-    const Study study = read(R"(methods = { kerby_n = 0.4, izzard_c = "concrete", impervious = 0, county_k = "commercial",
-kirpich_factor = "paved overland", undeveloped_coefficient = "field CU" })");
+    const Study study = read(R"(methods = { kerby_n = 0.4, izzard_c = "concrete", impervious = 0, county_k = "commercial", kirpich_factor = "paved overland", undeveloped_coefficient = "field CU" })");
     CHECK(study.methods[LumpInput::kerby_n].number == 0.4);
     CHECK(study.methods[LumpInput::izzard_c].number == 0.012);
     CHECK(study.methods[LumpInput::impervious].number == 0);
