@@ -5,6 +5,7 @@
 
 #include "rillclock/core/notice.hpp"
 #include "rillclock/io/reference_system.hpp"
+#include "rillclock/raster/grid_shapes.hpp"
 
 namespace rillclock {
 
@@ -19,11 +20,14 @@ public:
 
     /// A LineString, or a MultiLineString where the line crosses the 180th meridian.
     [[nodiscard]] nlohmann::ordered_json geometry(const std::vector<Place>& line);
+    /// A MultiPolygon; rings keep all their corners. One that crosses the 180th meridian is not cut: its longitudes go on beyond 180 degrees.
+    [[nodiscard]] nlohmann::ordered_json geometry(const std::vector<Polygon>& polygons);
     /// [west, south, east, north] of all lines so far.
     [[nodiscard]] nlohmann::ordered_json bbox() const;
 
 private:
     [[nodiscard]] std::vector<Place> geographic(const std::vector<Place>& line);
+    [[nodiscard]] std::vector<Place> in_degrees(const std::vector<Place>& places);
 
     Transformation to_wgs84_;
     Place low_{180.0, 90.0};

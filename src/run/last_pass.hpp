@@ -1,8 +1,11 @@
 #pragma once
 
+#include <optional>
 #include <vector>
 
 #include "rillclock/io/result_folder.hpp"
+#include "overview.hpp"
+#include "rillclock/catchment/study_regions.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
@@ -18,6 +21,9 @@ struct LastPass {
     const PointTree& tree;
     ResultFolder& folder;
     const Progress& progress;
+    /// Where outlines and the report's pictures are gathered; filled by the pass.
+    std::optional<StudyRegions>& regions;
+    OverviewSampler& overview;
 };
 
 /// Makes everything about each tile once more: writes the rasters and gathers the arrivals, from which each point's

@@ -12,7 +12,10 @@
 #include "rillclock/deliver/depressions_table.hpp"
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
+#include "rillclock/deliver/raster_styles.hpp"
+#include "rillclock/deliver/report.hpp"
 #include "rillclock/deliver/result_json.hpp"
+#include "rillclock/deliver/study_geopackage.hpp"
 #include "rillclock/deliver/tables.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
@@ -20,6 +23,7 @@
 #include "last_pass.hpp"
 #include "depressions.hpp"
 #include "mapped_flow.hpp"
+#include "overview.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
 #include "study_storms.hpp"
@@ -55,6 +59,13 @@ void write_sheets(const StudyResult& result, const std::string& json, ResultFold
     for (const std::size_t i : order) {
         folder.write_text("tables/sheets/" + sheet_file_name(i + 1, result.outlets[i].point.name), sheet_markdown(book.sheet(i)));
     }
+}
+
+void write_shapes(const StudyResult& result, const StudyRegions& regions, ResultFolder& folder) {
+    write_study_geopackage(folder.path("study.gpkg"), result, regions);
+    folder.write_text("rasters/travel_time.sld", travel_time_sld(result));
+    folder.write_text("rasters/regime.sld", regime_sld());
+    if (regions.isochrones()) folder.write_text("isochrones.geojson", isochrones_geojson(result, regions));
 }
 
 void write_texts(const StudyResult& result, const std::string& json, ResultFolder& folder) {
@@ -134,8 +145,11 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const PlacedPoints points = settle_points(study, resolved, travel, terrain);
     const TiledOwners owners(forest, labels_of(points.points), executor);
     const PointTree tree = point_tree(next_points(forest, owners, points.points, executor));
+    std::optional<StudyRegions> regions;
+    OverviewSampler overview(terrain.grid);
     const LastPass last{.study = study, .rain = rain, .terrain = terrain, .travel = travel, .owners = owners,
-                        .points = points.points, .tree = tree, .folder = folder, .progress = progress};
+                        .points = points.points, .tree = tree, .folder = folder, .progress = progress,
+                        .regions = regions, .overview = overview};
     const std::vector<PointHeads> heads =
         study.timing.channel.design_storm
             ? heads_under_design_flow(last, {.sections = flow.sections, .runoff = surface.runoff, .travel = *travelled, .reaches = reaches})
@@ -156,6 +170,10 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
                              .inputs = inputs, .data = data};
     const std::string json = result_json(result);
     write_texts(result, json, folder);
+    write_shapes(result, *regions, folder);
+    const ReportOverview pictures = overview.take(terrain.elevations, ground.metres_per_elevation_unit, terrain.ground.cell_side());
+    folder.write_text("report.html", report_html({.result = result, .regions = *regions, .overview = pictures, .sheets = SheetBook(json, "result.json"),
+                                                  .ground_m = [&](Cell cell) { return terrain.elevations[cell] * ground.metres_per_elevation_unit; }}));
     folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
     folder.commit();
     return {.folder = folder.target(), .facts = facts_of(rain), .headlines = headlines(result),

@@ -100,12 +100,13 @@ constexpr std::array keys{
              "a shorter run of one slope joins its neighbour"},
     StudyKey{"peaks.least_time", R"("5 min")", "5 min", "no intensity is read below this duration; 0 min is off"},
     StudyKey{"output.folder", R"("result")", "result", "result folder"},
-    StudyKey{"output.rasters", R"("geotiff")", "geotiff", "format of the rasters"},
+    StudyKey{"output.isochrones", R"("5 min")", "none", "step between isochrones, of every subarea and every last point's catchment; \"none\" for none"},
+    StudyKey{"output.rasters", R"("geotiff")", "geotiff", "geotiff, or cog: Cloud-Optimized GeoTIFF, whose parts can be read over the network"},
 };
 
 /// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
-constexpr std::array<std::string_view, 8> not_served{
-    "points.area", "points.pipes", "rain.table", "timing.overrides", "peaks", "uncertainty", "scenario", "output.isochrones"};
+constexpr std::array<std::string_view, 7> not_served{
+    "points.area", "points.pipes", "rain.table", "timing.overrides", "peaks", "uncertainty", "scenario"};
 
 bool is_or_is_under(std::string_view key, std::string_view stem) {
     return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));

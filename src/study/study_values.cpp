@@ -309,7 +309,11 @@ constexpr std::array setters{
     Setter{"timing.shortest_segment", [](Study& s, const Stated& v) { s.timing.shortest_segment = v.length(); }},
     Setter{"peaks.least_time", [](Study& s, const Stated& v) { s.peaks.least_time = v.duration(Sign::not_negative); }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
-    Setter{"output.rasters", [](Study&, const Stated& v) { (void)v.choice({"geotiff"}, {"cog"}); }},
+    Setter{"output.isochrones",
+           [](Study& s, const Stated& v) {
+               s.output.isochrones = v.text() == "none" ? std::nullopt : std::optional(v.duration(Sign::positive));
+           }},
+    Setter{"output.rasters", [](Study& s, const Stated& v) { s.output.cloud_optimized = v.choice({"geotiff", "cog"}) == 1; }},
 };
 
 }  // namespace

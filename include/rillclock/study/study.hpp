@@ -124,6 +124,8 @@ struct PeakStudy {
 
 struct OutputStudy {
     std::string folder = "result";  ///< relative to the study's folder
+    bool cloud_optimized = false;  ///< rasters as Cloud-Optimized GeoTIFF
+    std::optional<Duration> isochrones = {};  ///< step between them; none are made where absent
 };
 
 struct Study {

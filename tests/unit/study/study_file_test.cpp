@@ -194,7 +194,7 @@ TEST_CASE("what this version does not compute is refused and not passed over") {
     for (const auto* text : {"[points]\npipes = \"p\"", "[points]\narea = \"a\"", "[rain]\ntable = \"r.csv\"",
                              "[timing]\noverrides = \"o.csv\"",
                              "[peaks]\ncoefficient = \"book\"", "[uncertainty]\ndraws = 500",
-                             "[scenario.after]\nsurface.cover = \"p.tif\"", "[output]\nisochrones = \"5 min\""}) {
+                             "[scenario.after]\nsurface.cover = \"p.tif\""}) {
         INFO(text);
         CHECK_THROWS_WITH(read(text), Contains("not known to this version of rillclock") && Contains("line "));
     }
