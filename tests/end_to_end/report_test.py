@@ -119,7 +119,7 @@ class Report(CommandTest):
         places = self.driver.execute_script(
             "var d = JSON.parse(document.getElementById('map-data').textContent); return d.points.map(function (p) { return [p.number, p.at]; });")
         images = self.driver.find_element(By.CSS_SELECTOR, "#map img.times")
-        self.driver.execute_script("document.getElementById('map').scrollIntoView()")
+        self.driver.execute_script("document.getElementById('map').scrollIntoView({behavior: 'instant'})")
         box = self.driver.execute_script("return arguments[0].getBoundingClientRect()", images)
         columns, rows = 500, 600
         number, (column, row) = places[6]
