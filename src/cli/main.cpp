@@ -41,11 +41,13 @@ int status_of(Fault fault) {
     return status_machine;
 }
 
-void show_notices(const Notices& notices, const std::string& rest) {
-    for (std::size_t i = 0; i < std::min(most_notices_shown, notices.size()); ++i) {
+/// The first few, or all where they are asked for.
+void show_notices(const Notices& notices, const std::string& rest, bool all = false) {
+    const std::size_t most = all ? notices.size() : most_notices_shown;
+    for (std::size_t i = 0; i < std::min(most, notices.size()); ++i) {
         spdlog::warn("notice: {}", notices[i].text);
     }
-    if (notices.size() > most_notices_shown) spdlog::warn("and {} more notices{}", notices.size() - most_notices_shown, rest);
+    if (notices.size() > most) spdlog::warn("and {} more notices{}", notices.size() - most, rest);
 }
 
 void show_facts(const std::vector<std::string>& facts) {
@@ -55,7 +57,7 @@ void show_facts(const std::vector<std::string>& facts) {
 void show_outcome(const RunOutcome& outcome) {
     std::cout << '\n' << outcome.overview << '\n';
     for (const std::string& headline : outcome.headlines) std::cout << "  * " << headline << '\n';
-    std::cout << "\nThe result is in " << outcome.folder.string() << ": start with tables/outlets.csv and tables/segments.csv; "
+    std::cout << "\nThe result is in " << outcome.folder.string() << ": open report.html in a browser; tables/outlets.csv has the figures, "
               << "tables/review.csv lists what needs a person's eye.\n\n";
     for (const std::string& caution : caution_lines()) std::cout << caution << '\n';
 }
@@ -65,7 +67,7 @@ int run_command(const CommandLine& line) {
     const Progress progress([&](const StageProgress& report) { return log.report(report); });
     const RunOutcome outcome = run(study_of(line), {.replace = line.replace, .threads = line.threads}, progress);
     if (!line.quiet) show_facts(outcome.facts);
-    if (!line.quiet) show_notices(outcome.notices, " in tables/review.csv");
+    if (!line.quiet) show_notices(outcome.notices, " in tables/review.csv; -v says them all", line.verbose);
     if (line.json) {
         std::cout << outcome.json;
     } else if (line.quiet) {

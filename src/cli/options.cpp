@@ -11,6 +11,7 @@
 #include "rillclock/core/nearest_word.hpp"
 #include "rillclock/run/reference_text.hpp"
 #include "rillclock/run/study_source.hpp"
+#include "word_table.hpp"
 
 namespace rillclock {
 namespace {
@@ -52,7 +53,7 @@ void gather_stated(const CLI::App& command, const std::array<std::string, key_op
     }
 }
 
-/// The three sub-commands' words, kept where CLI11 can fill them in.
+/// The commands' words, kept where CLI11 can fill them in.
 class Words {
 public:
     Words() : app_(about, "rillclock") {
@@ -65,6 +66,7 @@ public:
             ->type_name("NUMBER")
             ->check(CLI::Range(1, 1024));
         run_->add_flag("-q,--quiet", line_.quiet, "say nothing but errors, and where the result is");
+        run_->add_flag("-v,--verbose", line_.verbose, "say every notice, not the first few alone");
         run_->add_flag("--json", line_.json, "print result.json on standard output, and nothing else there");
         check_ = app_.add_subcommand("check", "read headers, tables and points; say what would be wrong and what it will cost");
         add_study_words(*check_, line_, check_values_);
@@ -74,6 +76,9 @@ public:
         explain_->add_option("POINT", line_.point, "name of the point, as in tables/outlets.csv")->required();
         add_compare_words();
         methods_ = app_.add_subcommand("methods", "list every formula with its source, range and inputs");
+        completion_ = app_.add_subcommand("completion", "print a script that completes these words in a shell");
+        completion_->add_option("SHELL", shell_, "bash, zsh or fish")->required()->check(CLI::IsMember({"bash", "zsh", "fish"}));
+        manual_ = app_.add_subcommand("manual", "print the manual page");
         demo_ = app_.add_subcommand("demo", "write the demo study, an invented town, ready to run");
         demo_->add_option("FOLDER", line_.demo_folder, "a new or empty folder")->required();
     }
@@ -88,6 +93,10 @@ public:
         } catch (const CLI::ParseError& stop) {
             if (stop.get_exit_code() != 0) throw Error(Fault::command_line, sentence_of(stop));
             app_.exit(stop, std::cout, std::cerr);
+            return {.line = {}, .finished = true};
+        }
+        if (completion_->parsed() || manual_->parsed()) {
+            std::cout << (manual_->parsed() ? manual_page(table()) : completion_script(table(), shell_));
             return {.line = {}, .finished = true};
         }
         if (run_->parsed()) gather_stated(*run_, run_values_, line_);
@@ -119,6 +128,43 @@ private:
 
     static std::string sentence_of(const CLI::ParseError& stop) { return std::string(stop.what()) + see_help; }
 
+    static std::vector<std::string> names_of(const CLI::Option& option) {
+        std::vector<std::string> names;
+        for (const std::string& name : option.get_snames()) names.push_back("-" + name);
+        for (const std::string& name : option.get_lnames()) names.push_back("--" + name);
+        return names;
+    }
+
+    /// What a value is, without the bounds that are written behind it.
+    static std::string value_of(const CLI::Option& option) {
+        const std::string name = option.get_type_name();
+        return name.substr(0, name.find(':'));
+    }
+
+    static std::vector<OptionWord> options_of(const CLI::App& command) {
+        std::vector<OptionWord> options;
+        for (const CLI::Option* option : command.get_options()) {
+            const bool takes_value = option->get_expected_min() > 0;
+            if (!option->get_positional()) options.push_back({names_of(*option), takes_value ? value_of(*option) : "", option->get_description()});
+        }
+        return options;
+    }
+
+    static CommandWord command_word(const CLI::App& command) {
+        CommandWord word{.name = command.get_name(), .help = command.get_description(), .places = {}, .options = options_of(command)};
+        for (const CLI::Option* option : command.get_options()) {
+            if (option->get_positional()) word.places.push_back({option->get_name(), option->get_description(), option->get_required()});
+        }
+        return word;
+    }
+
+    /// The words as help shows them, for those who make something else of them.
+    [[nodiscard]] WordTable table() const {
+        WordTable table{.about = about, .options = options_of(app_), .commands = {}};
+        for (const CLI::App* command : app_.get_subcommands(nullptr)) table.commands.push_back(command_word(*command));
+        return table;
+    }
+
     void refuse_unknown_command(const std::string& word) const {
         std::vector<std::string> names;
         for (const CLI::App* command : app_.get_subcommands(nullptr)) names.push_back(command->get_name());
@@ -146,7 +192,10 @@ private:
     CLI::App* explain_ = nullptr;
     CLI::App* compare_ = nullptr;
     CLI::App* methods_ = nullptr;
+    CLI::App* completion_ = nullptr;
+    CLI::App* manual_ = nullptr;
     CLI::App* demo_ = nullptr;
+    std::string shell_;
     CommandLine line_;
     std::array<std::string, key_options.size()> run_values_;
     std::array<std::string, key_options.size()> check_values_;

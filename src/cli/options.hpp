@@ -28,6 +28,7 @@ struct CommandLine {
     bool replace = false;
     unsigned threads = 0;   ///< 0 for as many as may be used
     bool quiet = false;
+    bool verbose = false;
     bool json = false;
     bool keys = false;
 };

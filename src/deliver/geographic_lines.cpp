@@ -9,7 +9,6 @@ namespace rillclock {
 namespace {
 
 using Json = nlohmann::ordered_json;
-using Line = std::vector<Place>;
 
 double seven_decimals(double degrees) { return std::round(degrees * 1e7) / 1e7; }
 
@@ -58,9 +57,11 @@ std::vector<Place> without_collinear(const std::vector<Place>& line) {
     return kept;
 }
 
-std::vector<Place> GeographicLines::geographic(const std::vector<Place>& line) {
+std::vector<Place> GeographicLines::geographic(const std::vector<Place>& line) { return in_degrees(without_collinear(line)); }
+
+std::vector<Place> GeographicLines::in_degrees(const std::vector<Place>& line) {
     std::vector<Place> places;
-    for (const Place& place : without_collinear(line)) {
+    for (const Place& place : line) {
         const auto degrees = to_wgs84_(place);
         if (!degrees) throw input_error("a flow path has no longitude and latitude; check the reference system of the elevations");
         places.push_back({seven_decimals(degrees->x), seven_decimals(degrees->y)});
@@ -96,6 +97,24 @@ Json GeographicLines::area(const std::vector<Polygon>& polygons) {
 Json GeographicLines::point(const Place& place) {
     const Place degrees = geographic({place}).front();
     return {{"type", "Point"}, {"coordinates", {degrees.x, degrees.y}}};
+}
+
+Json GeographicLines::geometry(const std::vector<Polygon>& polygons) {
+    Json all = Json::array();
+    for (const Polygon& polygon : polygons) {
+        Json rings = Json::array();
+        for (const Line& ring : polygon.rings) {
+            Line closed = in_degrees(ring);
+            for (Place& place : closed) {
+                if (place.x - closed.front().x > 180.0) place.x -= 360.0;
+                if (place.x - closed.front().x < -180.0) place.x += 360.0;
+            }
+            closed.push_back(closed.front());
+            rings.push_back(coordinates(closed));
+        }
+        all.push_back(rings);
+    }
+    return {{"type", "MultiPolygon"}, {"coordinates", all}};
 }
 
 Json GeographicLines::bbox() const { return Json::array({low_.x, low_.y, high_.x, high_.y}); }

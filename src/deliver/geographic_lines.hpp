@@ -23,11 +23,14 @@ public:
     /// A Polygon, or a MultiPolygon of several; null where a ring crosses the 180th meridian. Rings must be closed.
     [[nodiscard]] nlohmann::ordered_json area(const std::vector<Polygon>& polygons);
     [[nodiscard]] nlohmann::ordered_json point(const Place& place);
-    /// [west, south, east, north] of all shapes so far.
+    /// A MultiPolygon; rings keep all their corners. One that crosses the 180th meridian is not cut: its longitudes go on beyond 180 degrees.
+    [[nodiscard]] nlohmann::ordered_json geometry(const std::vector<Polygon>& polygons);
+    /// [west, south, east, north] of all lines so far.
     [[nodiscard]] nlohmann::ordered_json bbox() const;
 
 private:
     [[nodiscard]] std::vector<Place> geographic(const std::vector<Place>& line);
+    [[nodiscard]] std::vector<Place> in_degrees(const std::vector<Place>& places);
 
     Transformation to_wgs84_;
     Place low_{180.0, 90.0};

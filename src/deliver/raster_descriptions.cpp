@@ -1,5 +1,7 @@
 #include "raster_descriptions.hpp"
 
+#include "palette.hpp"
+
 namespace rillclock {
 
 RasterDescription travel_time_description(const RasterStory& story) {
@@ -43,6 +45,7 @@ RasterDescription regime_description() {
                                   .overviews = OverviewKind::nearest};
     for (const Regime regime : {Regime::none, Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
         description.categories.emplace_back(static_cast<int>(regime), name_of(regime));
+        description.colours.emplace_back(static_cast<int>(regime), colour_of(regime));
     }
     return description;
 }

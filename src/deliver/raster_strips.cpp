@@ -36,11 +36,15 @@ public:
           contributing_area_(make<double>(story, folder, "contributing_area.tif", contributing_area_description())),
           catchment_(make<std::uint32_t>(story, folder, "catchment.tif", catchment_description(story))),
           regime_(make<std::uint8_t>(story, folder, "regime.tif", regime_description())),
-          spill_(make<double>(story, folder, "spill_elevation.tif", spill_elevation_description(story))) {}
+          spill_(make<double>(story, folder, "spill_elevation.tif", spill_elevation_description(story))), look_(story.look) {}
 
     void write_later(const Window& window, Strip& strip) {
         wait();
-        strip_on_its_way_ = std::async(std::launch::async, [this, window, &strip] { write(window, strip); });
+        strip_on_its_way_ = std::async(std::launch::async, [this, window, &strip] {
+            const auto size = static_cast<std::size_t>(window.size());
+            if (look_) look_({.window = window, .owners = std::span(strip.catchment).first(size), .minutes = std::span(strip.travel_time).first(size)});
+            write(window, strip);
+        });
     }
     void wait() {
         if (strip_on_its_way_.valid()) strip_on_its_way_.get();
@@ -58,7 +62,8 @@ public:
 private:
     template <class T>
     static std::unique_ptr<BlockSink<T>> make(const RasterStory& story, ResultFolder& folder, const char* name,
-                                              const RasterDescription& description) {
+                                              RasterDescription description) {
+        description.cloud_optimized = story.cloud_optimized;
         return create_raster<T>(folder.path(std::string("rasters/") + name), story.grid, story.system, description);
     }
 
@@ -78,6 +83,7 @@ private:
     std::unique_ptr<BlockSink<std::uint32_t>> catchment_;
     std::unique_ptr<BlockSink<std::uint8_t>> regime_;
     std::unique_ptr<BlockSink<double>> spill_;
+    std::function<void(const RegionStrip&)> look_;
     std::future<void> strip_on_its_way_;
 };
 

@@ -12,6 +12,8 @@
 #include <optional>
 #include <utility>
 
+#include "rillclock/io/library_versions.hpp"
+
 namespace rillclock {
 namespace {
 
@@ -86,15 +88,6 @@ void begin(Shared& state) {
 void end(const Shared& state) {
     restore_settings(state);
     CPLSetErrorHandlerEx(state.former_handler, state.former_handler_data);
-}
-
-bool proj_database_opens() {
-    CPLPushErrorHandler(CPLQuietErrorHandler);
-    OGRSpatialReferenceH system = OSRNewSpatialReference(nullptr);
-    const bool opens = OSRImportFromEPSG(system, 4326) == OGRERR_NONE;
-    OSRDestroySpatialReference(system);
-    CPLPopErrorHandler();
-    return opens;
 }
 
 void leave() {

@@ -1,6 +1,8 @@
 #include "rillclock/io/library_versions.hpp"
 
+#include <cpl_error.h>
 #include <gdal.h>
+#include <ogr_srs_api.h>
 #include <proj.h>
 
 namespace rillclock {
@@ -11,6 +13,15 @@ std::string gdal_version() {
 
 std::string proj_version() {
     return proj_info().version;
+}
+
+bool proj_database_opens() {
+    CPLPushErrorHandler(CPLQuietErrorHandler);
+    OGRSpatialReferenceH system = OSRNewSpatialReference(nullptr);
+    const bool opens = OSRImportFromEPSG(system, 4326) == OGRERR_NONE;
+    OSRDestroySpatialReference(system);
+    CPLPopErrorHandler();
+    return opens;
 }
 
 }  // namespace rillclock

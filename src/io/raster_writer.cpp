@@ -9,6 +9,7 @@
 #include <vector>
 
 #include "rillclock/core/error.hpp"
+#include "thread_option.hpp"
 
 namespace rillclock {
 namespace {
@@ -67,25 +68,6 @@ CPLStringList creation_options(StoredType stored, std::int64_t block_columns, st
     return options;
 }
 
-/// Sets a configuration option of GDAL for this thread, for as long as it lives.
-class ThreadOption {
-public:
-    ThreadOption(const char* key, const char* value) : key_(key) {
-        const char* former = CPLGetThreadLocalConfigOption(key, nullptr);
-        if (former) former_ = former;
-        had_former_ = former != nullptr;
-        CPLSetThreadLocalConfigOption(key, value);
-    }
-    ThreadOption(const ThreadOption&) = delete;
-    ThreadOption& operator=(const ThreadOption&) = delete;
-    ~ThreadOption() { CPLSetThreadLocalConfigOption(key_, had_former_ ? former_.c_str() : nullptr); }
-
-private:
-    const char* key_;
-    std::string former_;
-    bool had_former_ = false;
-};
-
 void refuse_occupied(const fs::path& path) {
     std::error_code problem;
     const fs::file_status status = fs::symlink_status(path, problem);
@@ -134,6 +116,14 @@ void RasterWriter::remove() const {
     std::error_code ignored;
     fs::remove(path_, ignored);
     fs::remove(path_.string() + ".aux.xml", ignored);
+    if (!description_.cloud_optimized) return;
+    fs::remove(plain_path(), ignored);
+    fs::remove(plain_path().string() + ".aux.xml", ignored);
+}
+
+/// Where the file is made that is arranged anew when it is whole.
+fs::path RasterWriter::plain_path() const {
+    return description_.cloud_optimized ? fs::path(path_.string() + ".plain.tif") : path_;
 }
 
 void RasterWriter::throw_if_failed(bool worked) const {
@@ -148,7 +138,7 @@ void RasterWriter::create(const ReferenceSystem& system) {
     const CPLStringList options = creation_options(description_.stored, levels_[0].block_columns, levels_[0].block_rows);
     GDALDriver* driver = GetGDALDriverManager()->GetDriverByName("GTiff");
     if (!driver) throw machine_error("GDAL has no GeoTIFF driver here; install the whole of GDAL.");
-    dataset_.reset(driver->Create(path_.c_str(), static_cast<int>(grid_.columns), static_cast<int>(grid_.rows), 1,
+    dataset_.reset(driver->Create(plain_path().c_str(), static_cast<int>(grid_.columns), static_cast<int>(grid_.rows), 1,
                                   gdal_type(description_.stored), options.List()));
     throw_if_failed(dataset_ != nullptr);
     describe(system);
@@ -171,6 +161,7 @@ void RasterWriter::describe(const ReferenceSystem& system) {
     if (description_.scale != 1.0) band.SetScale(description_.scale);
     if (description_.offset != 0.0) band.SetOffset(description_.offset);
     name_categories();
+    colour_classes();
 }
 
 void RasterWriter::name_categories() {
@@ -186,6 +177,17 @@ void RasterWriter::name_categories() {
     CPLStringList list;
     for (const std::string& name : names) list.AddString(name.c_str());
     dataset_->GetRasterBand(1)->SetCategoryNames(list.List());
+}
+
+void RasterWriter::colour_classes() {
+    if (description_.colours.empty()) return;
+    GDALColorTable table;
+    for (const auto& [number, colour] : description_.colours) {
+        const auto part = [&](std::size_t at) { return static_cast<short>(std::stoi(colour.substr(at, 2), nullptr, 16)); };
+        const GDALColorEntry entry{part(1), part(3), part(5), 255};
+        table.SetColorEntry(number, &entry);
+    }
+    dataset_->GetRasterBand(1)->SetColorTable(&table);
 }
 
 void RasterWriter::write_blocks(int level, std::int64_t block_row, std::span<const std::byte> rows) {
@@ -239,8 +241,32 @@ void RasterWriter::close() {
     store_statistics();
     dataset_.reset();
     throw_if_failed(true);
+    if (description_.cloud_optimized) rearrange();
     verify();
     is_closed_ = true;
+}
+
+/// Copies the finished file so that its overviews come first and its blocks in order.
+void RasterWriter::rearrange() {
+    GDALDriver* driver = GetGDALDriverManager()->GetDriverByName("COG");
+    if (driver == nullptr) throw machine_error("GDAL has no driver for cloud-optimized GeoTIFF here; install the whole of GDAL.");
+    CPLStringList options;
+    options.SetNameValue("COMPRESS", "ZSTD");
+    options.SetNameValue("LEVEL", "1");
+    options.SetNameValue("PREDICTOR", "YES");
+    options.SetNameValue("OVERVIEWS", "FORCE_USE_EXISTING");
+    options.SetNameValue("BIGTIFF", "IF_SAFER");
+    options.SetNameValue("NUM_THREADS", CPLGetConfigOption("GDAL_NUM_THREADS", "ALL_CPUS"));
+    {
+        const GDALDatasetUniquePtr plain(GDALDataset::Open(plain_path().c_str(), GDAL_OF_RASTER));
+        throw_if_failed(plain != nullptr);
+        const GDALDatasetUniquePtr arranged(driver->CreateCopy(path_.c_str(), plain.get(), FALSE, options.List(), nullptr, nullptr));
+        throw_if_failed(arranged != nullptr);
+    }
+    throw_if_failed(true);
+    std::error_code ignored;
+    fs::remove(plain_path(), ignored);
+    fs::remove(plain_path().string() + ".aux.xml", ignored);
 }
 
 /// Opens the file anew and reads its last row, which a file cut short does not have.

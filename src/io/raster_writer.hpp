@@ -50,6 +50,9 @@ private:
     void name_categories();
     void store_statistics();
     void add_overviews();
+    void colour_classes();
+    void rearrange();
+    [[nodiscard]] std::filesystem::path plain_path() const;
     void verify() const;
     void remove() const;
     void throw_if_failed(bool worked) const;

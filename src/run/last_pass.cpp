@@ -17,6 +17,21 @@ std::vector<StepTime> times_of_points(const LastPass& pass) {
     return times;
 }
 
+/// Has the outlines and the report's pictures gathered from the strips that the rasters are written from.
+void begin_regions(const LastPass& pass, const std::vector<StepTime>& times, RasterStory& story) {
+    std::vector<double> minutes;
+    for (std::size_t i = 0; i < times.size(); ++i) {
+        minutes.push_back(in_minutes((times[i] - story.last_point_times[i + 1]).under(story.last_point_factors[i + 1])));
+    }
+    std::optional<IsochroneRules> rules;
+    if (pass.study.output.isochrones) rules = IsochroneRules{.step = *pass.study.output.isochrones};
+    pass.regions.emplace(pass.terrain.grid, pass.terrain.ground, pass.tree, std::move(minutes), rules);
+    story.look = [&pass](const RegionStrip& strip) {
+        pass.regions->look(strip);
+        pass.overview.look(strip);
+    };
+}
+
 /// `factors`: storm factor of each point by number − 1; empty where one storm times all.
 RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, const std::vector<double>& factors) {
     RasterStory story{.grid = pass.terrain.grid,
@@ -25,6 +40,7 @@ RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, c
                       .storm = storm_words(pass.study, pass.rain),
                       .sheet_flow = sheet_words(pass.study),
                       .has_voids = pass.terrain.void_cells > 0,
+                      .cloud_optimized = pass.study.output.cloud_optimized,
                       .points = pass.points,
                       .last_point_times = {},
                       .last_point_factors = {}};
@@ -33,6 +49,7 @@ RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, c
         story.last_point_times.push_back(last == 0 ? StepTime{} : times[last - 1]);
         story.last_point_factors.push_back(own ? factors[last - 1] : pass.travel.rules().sheet.storm_factor);
     }
+    begin_regions(pass, times, story);
     return story;
 }
 
@@ -87,6 +104,7 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<
     work_all_tiles(pass, "writing rasters", look,
                    [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
     rasters.close();
+    pass.regions->finish();
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
     add_storms(heads, times, intensities_of(pass.rain.storms));
     return heads;
@@ -111,6 +129,7 @@ std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector
         pass, "writing rasters", [&](const TileDesk& desk) { rasters.fill(desk); },
         [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
     rasters.close();
+    pass.regions->finish();
     return heads;
 }
 

@@ -1,9 +1,12 @@
 #pragma once
 
+#include <optional>
 #include <vector>
 
 #include "rillclock/catchment/arrival_histogram.hpp"
 #include "rillclock/io/result_folder.hpp"
+#include "overview.hpp"
+#include "rillclock/catchment/study_regions.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
@@ -19,6 +22,9 @@ struct LastPass {
     const PointTree& tree;
     ResultFolder& folder;
     const Progress& progress;
+    /// Where outlines and the report's pictures are gathered; filled by the pass.
+    std::optional<StudyRegions>& regions;
+    OverviewSampler& overview;
     HistogramTally* histograms = nullptr;   ///< filled where peaks are asked for
 };
 

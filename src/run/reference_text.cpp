@@ -37,7 +37,8 @@ std::string roughness_text(const RoughnessTable& table) {
 }  // namespace
 
 std::string version_line() {
-    return "rillclock " + std::string(version_text) + ", GDAL " + gdal_version() + ", PROJ " + proj_version();
+    const std::string database = proj_database_opens() ? "its database opens" : "but its database does not open: install proj-data, or set PROJ_DATA";
+    return "rillclock " + std::string(version_text) + ", GDAL " + gdal_version() + ", PROJ " + proj_version() + " (" + database + ")";
 }
 
 std::string methods_text() {

@@ -14,7 +14,10 @@
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/own_ways_geojson.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
+#include "rillclock/deliver/raster_styles.hpp"
+#include "rillclock/deliver/report.hpp"
 #include "rillclock/deliver/result_json.hpp"
+#include "rillclock/deliver/study_geopackage.hpp"
 #include "rillclock/deliver/tables.hpp"
 #include "rillclock/deliver/uncertainty_tables.hpp"
 #include "rillclock/io/gdal_session.hpp"
@@ -24,6 +27,7 @@
 #include "last_pass.hpp"
 #include "depressions.hpp"
 #include "mapped_flow.hpp"
+#include "overview.hpp"
 #include "rain_zones.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
@@ -63,6 +67,13 @@ void write_sheets(const StudyResult& result, const std::string& json, ResultFold
     for (const std::size_t i : order) {
         folder.write_text("tables/sheets/" + sheet_file_name(i + 1, result.outlets[i].point.name), sheet_markdown(book.sheet(i)));
     }
+}
+
+void write_shapes(const StudyResult& result, const StudyRegions& regions, ResultFolder& folder) {
+    write_study_geopackage(folder.path("study.gpkg"), result, regions);
+    folder.write_text("rasters/travel_time.sld", travel_time_sld(result));
+    folder.write_text("rasters/regime.sld", regime_sld());
+    if (regions.isochrones()) folder.write_text("isochrones.geojson", isochrones_geojson(result, regions));
 }
 
 void write_texts(const StudyResult& result, const std::string& json, ResultFolder& folder) {
@@ -178,8 +189,11 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const HistogramRules binned = histogram_rules(study, surface.book, rules.sheet.storm_factor);
     const auto histograms = gives_peaks(study, rain, surface.book)
                                 ? std::make_unique<HistogramTally>(travel, points.points.size(), binned) : nullptr;
+    std::optional<StudyRegions> regions;
+    OverviewSampler overview(terrain.grid);
     const LastPass last{.study = study, .rain = rain, .terrain = terrain, .travel = travel, .owners = owners,
-                        .points = points.points, .tree = tree, .folder = folder, .progress = progress, .histograms = histograms.get()};
+                        .points = points.points, .tree = tree, .folder = folder, .progress = progress,
+                        .regions = regions, .overview = overview, .histograms = histograms.get()};
     const std::vector<PointHeads> heads =
         study.timing.channel.design_storm
             ? heads_under_design_flow(last, {.sections = flow.sections, .runoff = surface.runoff, .travel = *travelled, .reaches = reaches})
@@ -216,6 +230,10 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
                              .reviewed = reviewed.by_notice, .uncertainty = uncertainty ? &*uncertainty : nullptr};
     const std::string json = result_json(result);
     write_texts(result, json, folder);
+    write_shapes(result, *regions, folder);
+    const ReportOverview pictures = overview.take(terrain.elevations, ground.metres_per_elevation_unit, terrain.ground.cell_side());
+    folder.write_text("report.html", report_html({.result = result, .regions = *regions, .overview = pictures, .sheets = SheetBook(json, "result.json"),
+                                                  .ground_m = [&](Cell cell) { return terrain.elevations[cell] * ground.metres_per_elevation_unit; }}));
     folder.write_text("tables/depressions.csv", depressions_table(result, depressions.deepest_first));
     if (!flow.line_cells.empty()) folder.write_text("own_paths.geojson", own_ways_geojson(result, flow.own_ways));
     folder.write_text("depressions.geojson", depressions_geojson(result, outlined(travel, terrain.grid, depressions.deepest_first)));

@@ -153,13 +153,14 @@ constexpr std::array keys{
     StudyKey{"uncertainty.pond_speed", R"("1 m/s to unlimited")", "1 m/s to unlimited",
              "range of the greatest speed across ponded cells"},
     StudyKey{"output.folder", R"("result")", "result", "result folder"},
-    StudyKey{"output.rasters", R"("geotiff")", "geotiff", "format of the rasters"},
+    StudyKey{"output.isochrones", R"("5 min")", "none", "step between isochrones, of every subarea and every last point's catchment; \"none\" for none"},
+    StudyKey{"output.rasters", R"("geotiff")", "geotiff", "geotiff, or cog: Cloud-Optimized GeoTIFF, whose parts can be read over the network"},
     StudyKey{"output.subareas", R"("least slacks")", "least slacks",
              "least slacks or all: which subareas of each point tables/subareas.csv lists"},
 };
 
 /// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
-constexpr std::array<std::string_view, 4> not_served{"points.area", "rain.table", "scenario", "output.isochrones"};
+constexpr std::array<std::string_view, 3> not_served{"points.area", "rain.table", "scenario"};
 
 bool is_or_is_under(std::string_view key, std::string_view stem) {
     return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));

@@ -420,7 +420,11 @@ constexpr std::array setters{
            [](Study& s, const Stated& v) { uncertainty(s).channel_radius = number_range(v); }},
     Setter{"uncertainty.pond_speed", [](Study& s, const Stated& v) { uncertainty(s).pond_speed = speed_range(v); }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
-    Setter{"output.rasters", [](Study&, const Stated& v) { (void)v.choice({"geotiff"}, {"cog"}); }},
+    Setter{"output.isochrones",
+           [](Study& s, const Stated& v) {
+               s.output.isochrones = v.text() == "none" ? std::nullopt : std::optional(v.duration(Sign::positive));
+           }},
+    Setter{"output.rasters", [](Study& s, const Stated& v) { s.output.cloud_optimized = v.choice({"geotiff", "cog"}) == 1; }},
     Setter{"output.subareas",
            [](Study& s, const Stated& v) {
                const bool all = v.choice({"least slacks", "all"}) == 1;

@@ -23,7 +23,7 @@ RESULT_FILES = {
     "tables/methods.csv", "tables/review.csv", "tables/subareas.csv", "tables/handover.csv", "tables/depressions.csv", "tables/land.csv",
     "rasters/travel_time.tif", "rasters/flow_azimuth.tif", "rasters/contributing_area.tif",
     "rasters/catchment.tif", "rasters/catchment.tif.aux.xml", "rasters/regime.tif", "rasters/regime.tif.aux.xml",
-    "rasters/spill_elevation.tif"} | {f"tables/sheets/{number}-{name}.md" for number, name in enumerate(
+    "rasters/spill_elevation.tif", "rasters/travel_time.sld", "rasters/regime.sld", "report.html", "study.gpkg", "isochrones.geojson"} | {f"tables/sheets/{number}-{name}.md" for number, name in enumerate(
         DEMO_POINTS, 1)}
 
 

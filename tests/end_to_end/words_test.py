@@ -1,6 +1,8 @@
 #!/usr/bin/python3
 """The words of the command line, and that README and program say the same of them."""
+import os
 import re
+import shutil
 import subprocess
 import sys
 import unittest
@@ -8,7 +10,7 @@ import unittest
 from support import COMMAND, CommandTest, SOURCE
 
 README = (SOURCE / "README.md").read_text(encoding="utf-8")
-COMMANDS = ("run", "check", "explain", "compare", "methods", "demo")
+COMMANDS = ("run", "check", "explain", "compare", "methods", "completion", "manual", "demo")
 
 
 def help_of(*words):
@@ -34,7 +36,53 @@ class CommandLine(CommandTest):
             self.assertTrue(run.stdout)
 
     def test_a_version_names_the_libraries_too(self):
-        self.assertRegex(self.done("--version"), r"^rillclock \d+\.\d+\.\d+, GDAL \d\S+, PROJ \d\S+\n$")
+        self.assertRegex(self.done("--version"), r"^rillclock \d+\.\d+\.\d+, GDAL \d\S+, PROJ \d\S+ \(its database opens\)\n$")
+
+    def test_a_version_says_where_the_database_of_proj_does_not_open(self):
+        (self.folder / "empty").mkdir()
+        said = self.done("--version", env=os.environ | {"PROJ_LIB": str(self.folder / "empty"), "PROJ_DATA": str(self.folder / "empty")})
+        self.assertIn("its database does not open", said)
+
+    def test_completion_offers_every_command_and_option(self):
+        for shell in ("bash", "zsh", "fish"):
+            script = self.done("completion", shell)
+            for command in COMMANDS:
+                self.assertIn(command, script)
+            for option in options_in(help_of("run")):
+                self.assertIn(option if shell != "fish" else f" -{'l' if option.startswith('--') else 's'} {option.lstrip('-')}", script)
+            if shutil.which(shell):
+                (self.folder / "script").write_text(script)
+                subprocess.run([shell, "-n", self.folder / "script"], check=True)
+        self.refused(2, "completion", "csh", says=("csh",))
+
+    def test_completion_works_in_bash(self):
+        (self.folder / "script").write_text(self.done("completion", "bash"))
+        ask = "source ./script; COMP_WORDS=(rillclock {0}); COMP_CWORD={1}; _rillclock; echo ${{COMPREPLY[*]}}"
+        for words, place, answer in (("ex", 1, "explain"), ("run --el", 2, "--elevation"), ("run --rain", 2, "--rain --rain-file")):
+            said = subprocess.run(["bash", "-c", ask.format(words, place)], cwd=self.folder, capture_output=True, text=True, check=True)
+            self.assertEqual(said.stdout.strip(), answer)
+
+    def test_the_manual_holds_every_command_and_option(self):
+        page = self.done("manual").replace("\\-", "-")
+        for command in COMMANDS:
+            self.assertIn(f".SS {command}\n", page)
+            for option in options_in(help_of(command)):
+                self.assertIn(option, page)
+        for heading in ("NAME", "SYNOPSIS", "EXIT STATUS", "ENVIRONMENT"):
+            self.assertIn(f".SH {heading}\n", page)
+
+    def test_verbose_says_every_notice(self):
+        self.done("demo", "town")
+        brief = self.rillclock("run", "town/study.toml").stderr.count("notice: ")
+        full = self.rillclock("run", "town/study.toml", "--replace", "-v").stderr.count("notice: ")
+        self.assertEqual(brief, 8)
+        self.assertEqual(full, len(self.result("town/result")["notices"]))
+
+    def test_nothing_is_in_colour(self):
+        self.done("demo", "town")
+        for name in ({}, {"NO_COLOR": "1"}):
+            run = self.rillclock("run", "town/study.toml", "--replace", env=os.environ | name)
+            self.assertNotIn("\x1b", run.stdout + run.stderr)
 
     def test_words_that_are_wrong_are_told_with_the_right_ones(self):
         for words, parts in (([], ("no command was given", "rillclock demo")),

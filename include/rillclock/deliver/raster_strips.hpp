@@ -2,12 +2,14 @@
 
 #include <array>
 #include <cstdint>
+#include <functional>
 #include <memory>
 #include <span>
 #include <string>
 #include <vector>
 
 #include "rillclock/catchment/point_tree.hpp"
+#include "rillclock/catchment/study_regions.hpp"
 #include "rillclock/io/elevation_file.hpp"
 #include "rillclock/io/result_folder.hpp"
 #include "rillclock/travel/tiled_travel.hpp"
@@ -25,11 +27,14 @@ struct RasterStory {
     std::string storm;                            ///< that travel_time.tif is under, in words
     std::string sheet_flow;                       ///< the formula, in words
     bool has_voids = false;
+    bool cloud_optimized = false;
     std::span<const DesignPoint> points;
     /// By point number, from 0: time to the root of the last point on the way down; entry 0 is nothing.
     std::vector<StepTime> last_point_times;
     /// By point number, from 0: storm factor of the last point on the way down; entry 0 that of cells without a point.
     std::vector<double> last_point_factors;
+    /// Sees each finished strip, from the top down, on the thread that writes; may be empty.
+    std::function<void(const RegionStrip&)> look = {};
 };
 
 /// Writes the six rasters of a result strip by strip while tiles are worked: travel time, flow azimuth, contributing area, catchment,

@@ -27,8 +27,11 @@ struct RasterDescription {
     double offset = 0.0;
     /// Names of classes by number, 0 to 65535; kept in a second file beside the raster (its name and ".aux.xml").
     std::vector<std::pair<int, std::string>> categories = {};
+    /// Colours of classes by number, "#rrggbb"; for types of 8 and 16 bits without sign.
+    std::vector<std::pair<int, std::string>> colours = {};
     std::vector<std::pair<std::string, std::string>> metadata = {};
     OverviewKind overviews = OverviewKind::average;
+    bool cloud_optimized = false;  ///< arranged so that parts of it can be read over the network
 };
 
 /// Begins a tiled, compressed GeoTIFF. Instances for double, float, uint8_t, uint16_t, uint32_t and int32_t.

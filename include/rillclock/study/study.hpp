@@ -167,6 +167,8 @@ using MethodStudy = ByLumpInput<LumpValue>;
 struct OutputStudy {
     std::string folder = "result";  ///< relative to the study's folder
     SubareasListed subareas = SubareasListed::least_slacks;
+    bool cloud_optimized = false;  ///< rasters as Cloud-Optimized GeoTIFF
+    std::optional<Duration> isochrones = {};  ///< step between them; none are made where absent
 };
 
 struct Study {

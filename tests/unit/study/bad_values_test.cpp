@@ -128,6 +128,7 @@ const std::map<std::string, Kind> kinds{
     {"methods.county_k", Kind::number},
     {"methods.kirpich_factor", Kind::number},
     {"output.folder", Kind::text},
+    {"output.isochrones", Kind::duration},
     {"output.rasters", Kind::word},
     {"output.subareas", Kind::word},
 };

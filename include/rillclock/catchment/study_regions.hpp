@@ -1,0 +1,95 @@
+#pragma once
+
+#include <cstdint>
+#include <optional>
+#include <span>
+#include <unordered_map>
+#include <vector>
+
+#include "rillclock/catchment/point_tree.hpp"
+#include "rillclock/core/fixed_point.hpp"
+#include "rillclock/core/quantity.hpp"
+#include "rillclock/raster/blocks.hpp"
+#include "rillclock/raster/ground.hpp"
+#include "rillclock/raster/region_outlines.hpp"
+
+namespace rillclock {
+
+/// Whose times an isochrone band is of.
+enum class IsochroneScope {
+    subarea,     ///< a point's own subarea: times to that point
+    catchment,   ///< the whole catchment of a last point: times to it
+};
+
+/// The cells whose water takes between two times.
+struct IsochroneBand {
+    IsochroneScope scope = IsochroneScope::subarea;
+    PointNumber point = 0;
+    std::uint32_t number = 0;   ///< from 0: of times from number·step to below (number + 1)·step
+    FixedArea area = 0;
+};
+
+struct IsochroneRules {
+    Duration step;
+    std::size_t most_bands = 100'000;
+    std::size_t most_pieces = 20'000'000;   ///< straight pieces of border: a gigabyte
+};
+
+/// What a strip of rows shows: of each cell the number of its nearest point on the way down, and the minutes to the last one.
+struct RegionStrip {
+    Window window;
+    std::span<const std::uint32_t> owners;   ///< numbers beyond the points' are nothing, as 0 is
+    std::span<const float> minutes;
+};
+
+/// The outlines of subareas, of whole catchments and of isochrone bands, gathered strip by strip from the top down.
+class StudyRegions {
+public:
+    /// `minutes_to_last`: by number − 1, from each point's cell to the last point on the way down, under the storm that the strips' times are
+    /// under. Without rules there are no bands.
+    StudyRegions(const Grid& grid, const Ground& ground, const PointTree& tree, std::vector<double> minutes_to_last,
+                 std::optional<IsochroneRules> isochrones);
+
+    /// Takes the next strip. Throws an input error where the bands become too many.
+    void look(const RegionStrip& strip);
+    /// To be called once, after the last strip.
+    void finish();
+
+    [[nodiscard]] std::vector<CornerPolygon> subarea(PointNumber number) const;
+    /// With all that drains through the points above.
+    [[nodiscard]] std::vector<CornerPolygon> catchment(PointNumber number) const;
+    /// Subareas first; by point, then by time.
+    [[nodiscard]] const std::vector<IsochroneBand>& bands() const { return bands_; }
+    [[nodiscard]] std::vector<CornerPolygon> outline(const IsochroneBand& band) const;
+    [[nodiscard]] const std::optional<IsochroneRules>& isochrones() const { return isochrones_; }
+
+private:
+    /// The borders of one kind of bands and how large they are.
+    struct Bands {
+        RegionBorders borders;
+        std::unordered_map<RegionLabel, FixedArea> areas;
+        std::vector<RegionLabel> row;
+    };
+
+    void number_tree();
+    void label_row(std::span<const std::uint32_t> owners, std::span<const float> minutes);
+    void add_row(Bands& bands, std::int64_t row) const;
+    void check_bounds() const;
+    void list_bands(const Bands& bands, IsochroneScope scope);
+
+    const Grid& grid_;
+    const Ground& ground_;
+    const PointTree& tree_;
+    std::vector<PointNumber> last_;
+    std::vector<double> minutes_to_last_;
+    std::optional<IsochroneRules> isochrones_;
+    std::vector<RegionLabel> place_;          ///< by number: where it comes when every point follows all that drain to it; from 1
+    std::vector<RegionLabel> first_place_;    ///< by number: of the first that drains to it
+    RegionBorders owners_;
+    std::vector<RegionLabel> owner_row_;
+    Bands subareas_;
+    Bands catchments_;
+    std::vector<IsochroneBand> bands_;
+};
+
+}  // namespace rillclock

@@ -1,0 +1,72 @@
+#pragma once
+
+#include <cstddef>
+#include <cstdint>
+#include <span>
+#include <vector>
+
+namespace rillclock {
+
+/// A corner of cells: on which column line and row line, both counted from the north-west corner of the grid.
+struct Corner {
+    std::uint32_t column = 0;
+    std::uint32_t row = 0;
+    bool operator==(const Corner&) const = default;
+};
+
+/// Corners of a closed line, the first not repeated. Seen on a map, what is enclosed lies on the left: outer rings run
+/// counter-clockwise, holes clockwise.
+using CornerRing = std::vector<Corner>;
+
+/// A piece of a region: the outer ring, then its holes. Cells that meet in a corner alone are two pieces.
+struct CornerPolygon {
+    std::vector<CornerRing> rings;
+};
+
+/// What cells belong to; `no_region` for those that belong to nothing.
+using RegionLabel = std::uint64_t;
+inline constexpr RegionLabel no_region = 0;
+
+/// Finds the outlines of the regions of a grid whose rows come from the top down.
+///
+/// The polygons of all regions cover exactly the labelled cells, once each: no gaps, no overlaps. No ring meets itself; a hole may touch
+/// its outer ring in single corners (valid in the sense of OGC Simple Features). Neighbours have the corner in common where a third one
+/// joins them. Memory: the straight pieces of all borders, not the cells. Cost: linear in the cells, n log n in the pieces.
+class RegionBorders {
+public:
+    explicit RegionBorders(std::int64_t columns);
+
+    /// Labels of the next row.
+    void add_row(std::span<const RegionLabel> labels);
+    /// To be called once, after the last row.
+    void finish();
+    /// Straight pieces of border so far: what memory hangs on.
+    [[nodiscard]] std::size_t pieces() const { return edges_.size(); }
+
+    /// The labels that are there, ascending. After `finish`, as all below.
+    [[nodiscard]] std::vector<RegionLabel> labels() const;
+    /// The outline of one region: its pieces from the north down, and of equal ones from the west.
+    [[nodiscard]] std::vector<CornerPolygon> outline(RegionLabel label) const { return outline(label, label); }
+    /// The outline of all regions with labels from `first` to `last` taken together.
+    [[nodiscard]] std::vector<CornerPolygon> outline(RegionLabel first, RegionLabel last) const;
+
+private:
+    struct Edge {
+        RegionLabel inside = no_region;   ///< on the left
+        RegionLabel outside = no_region;  ///< on the right
+        Corner from;
+        Corner to;
+    };
+    class Tracer;
+
+    void add_horizontal(std::span<const RegionLabel> labels);
+    void add_vertical(std::span<const RegionLabel> labels);
+    void add_edge(RegionLabel left, RegionLabel right, Corner from, Corner to);
+
+    std::uint32_t row_ = 0;
+    std::vector<RegionLabel> above_;          ///< the row before
+    std::vector<std::uint32_t> began_at_;     ///< by column line: the row at which its present pair of neighbours began
+    std::vector<Edge> edges_;
+};
+
+}  // namespace rillclock

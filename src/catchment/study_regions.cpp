@@ -1,0 +1,115 @@
+#include "rillclock/catchment/study_regions.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+#include "rillclock/core/error.hpp"
+#include "rillclock/core/number_text.hpp"
+
+namespace rillclock {
+namespace {
+
+RegionLabel band_label(PointNumber number, std::uint32_t band) { return (static_cast<RegionLabel>(number) << 32U) | (band + 1U); }
+
+}  // namespace
+
+StudyRegions::StudyRegions(const Grid& grid, const Ground& ground, const PointTree& tree, std::vector<double> minutes_to_last,
+                           std::optional<IsochroneRules> isochrones)
+    : grid_(grid), ground_(ground), tree_(tree), last_(tree.last_points()), minutes_to_last_(std::move(minutes_to_last)),
+      isochrones_(isochrones), place_(tree.next.size() + 1, 0), first_place_(tree.next.size() + 1, 0), owners_(grid.columns),
+      owner_row_(static_cast<std::size_t>(grid.columns)), subareas_{RegionBorders(grid.columns), {}, owner_row_},
+      catchments_{RegionBorders(grid.columns), {}, owner_row_} {
+    number_tree();
+}
+
+/// Gives every point its place, so that those which drain through a point have the places just before its own.
+void StudyRegions::number_tree() {
+    const std::size_t points = tree_.next.size();
+    std::vector<RegionLabel> within(points + 1, 1);   // points that drain through each, itself included
+    for (const PointNumber number : tree_.upstream_first) within[tree_.next_of(number)] += tree_.next_of(number) == 0 ? 0 : within[number];
+    RegionLabel free = 1;
+    std::vector<RegionLabel> free_in(points + 1, 0);  // the first place that is left within each
+    for (auto number = tree_.upstream_first.rbegin(); number != tree_.upstream_first.rend(); ++number) {
+        const PointNumber next = tree_.next_of(*number);
+        RegionLabel& from = next == 0 ? free : free_in[next];
+        first_place_[*number] = from;
+        free_in[*number] = from;
+        place_[*number] = from + within[*number] - 1;
+        from += within[*number];
+    }
+}
+
+void StudyRegions::label_row(std::span<const std::uint32_t> owners, std::span<const float> minutes) {
+    const double step = isochrones_ ? in_minutes(isochrones_->step) : 1.0;
+    for (std::size_t i = 0; i < owners.size(); ++i) {
+        const PointNumber owner = owners[i] < place_.size() ? owners[i] : 0;
+        owner_row_[i] = place_[owner];
+        if (!isochrones_) continue;
+        const auto band_of = [&](double time) { return static_cast<std::uint32_t>(std::clamp(time / step, 0.0, 4e9)); };
+        const double time = static_cast<double>(minutes[i]);
+        subareas_.row[i] = owner == 0 ? no_region : band_label(owner, band_of(time - minutes_to_last_[owner - 1]));
+        catchments_.row[i] = owner == 0 ? no_region : band_label(last_[owner], band_of(time));
+    }
+}
+
+void StudyRegions::add_row(Bands& bands, std::int64_t row) const {
+    bands.borders.add_row(bands.row);
+    const FixedArea area = ground_.cell_area(row);
+    for (auto begin = bands.row.begin(); begin != bands.row.end();) {
+        const auto end = std::find_if(begin, bands.row.end(), [&](RegionLabel label) { return label != *begin; });
+        if (*begin != no_region) bands.areas[*begin] += area * (end - begin);
+        begin = end;
+    }
+}
+
+void StudyRegions::look(const RegionStrip& strip) {
+    const auto columns = static_cast<std::size_t>(strip.window.columns);
+    for (std::int64_t r = 0; r < strip.window.rows; ++r) {
+        const std::size_t from = static_cast<std::size_t>(r) * columns;
+        label_row(strip.owners.subspan(from, columns), strip.minutes.subspan(from, columns));
+        owners_.add_row(owner_row_);
+        if (!isochrones_) continue;
+        add_row(subareas_, strip.window.row + r);
+        add_row(catchments_, strip.window.row + r);
+    }
+    if (isochrones_) check_bounds();
+}
+
+void StudyRegions::check_bounds() const {
+    const std::size_t bands = subareas_.areas.size() + catchments_.areas.size();
+    const std::size_t pieces = subareas_.borders.pieces() + catchments_.borders.pieces();
+    if (bands <= isochrones_->most_bands && pieces <= isochrones_->most_pieces) return;
+    throw input_error("isochrones every " + significant(in_minutes(isochrones_->step)) + " min have more than " +
+                      (bands > isochrones_->most_bands ? std::to_string(isochrones_->most_bands) + " bands"
+                                                       : std::to_string(isochrones_->most_pieces) + " pieces of border") +
+                      ", too many for a file of shapes; state a longer step in output.isochrones, or \"none\"");
+}
+
+void StudyRegions::finish() {
+    owners_.finish();
+    if (!isochrones_) return;
+    subareas_.borders.finish();
+    catchments_.borders.finish();
+    list_bands(subareas_, IsochroneScope::subarea);
+    list_bands(catchments_, IsochroneScope::catchment);
+}
+
+void StudyRegions::list_bands(const Bands& bands, IsochroneScope scope) {
+    for (const RegionLabel label : bands.borders.labels()) {
+        bands_.push_back({.scope = scope, .point = static_cast<PointNumber>(label >> 32U),
+                          .number = static_cast<std::uint32_t>(label & 0xFFFFFFFFU) - 1U, .area = bands.areas.at(label)});
+    }
+}
+
+std::vector<CornerPolygon> StudyRegions::subarea(PointNumber number) const { return owners_.outline(place_[number]); }
+
+std::vector<CornerPolygon> StudyRegions::catchment(PointNumber number) const {
+    return owners_.outline(first_place_[number], place_[number]);
+}
+
+std::vector<CornerPolygon> StudyRegions::outline(const IsochroneBand& band) const {
+    const Bands& bands = band.scope == IsochroneScope::subarea ? subareas_ : catchments_;
+    return bands.borders.outline(band_label(band.point, band.number));
+}
+
+}  // namespace rillclock

@@ -1,0 +1,149 @@
+"use strict";
+(function () {
+  var root = document.documentElement;
+  root.classList.add("scripted");
+  var data = JSON.parse(document.getElementById("map-data").textContent);
+  var table = document.getElementById("points");
+  var body = table.tBodies[0];
+  var rows = Array.prototype.slice.call(body.rows);
+  var rowOf = {};
+  rows.forEach(function (row) { rowOf[row.dataset.number] = row; });
+
+  // Search: every word has to stand in the name or in the notices' names of the row.
+  var search = document.getElementById("search");
+  var count = document.getElementById("count");
+  function filter() {
+    var words = search.value.toLowerCase().split(/\s+/).filter(Boolean);
+    var shown = 0;
+    rows.forEach(function (row) {
+      var text = row.dataset.search;
+      var fits = words.every(function (word) { return text.indexOf(word) >= 0; });
+      row.hidden = !fits;
+      if (fits) shown += 1;
+    });
+    count.textContent = shown + " of " + rows.length + " points";
+  }
+  rows.forEach(function (row) { row.dataset.search = row.textContent.toLowerCase(); });
+  search.addEventListener("input", filter);
+  filter();
+
+  // Sort by a column: numbers as numbers, names as words.
+  Array.prototype.forEach.call(table.tHead.rows[0].cells, function (head, column) {
+    var button = head.querySelector("button");
+    if (!button) return;
+    button.addEventListener("click", function () {
+      var up = head.getAttribute("aria-sort") === "descending" || (!head.hasAttribute("aria-sort") && column === 0);
+      Array.prototype.forEach.call(table.tHead.rows[0].cells, function (other) { other.removeAttribute("aria-sort"); });
+      head.setAttribute("aria-sort", up ? "ascending" : "descending");
+      var keyed = rows.map(function (row) {
+        var text = row.cells[column].textContent.trim();
+        return { row: row, text: text, number: parseFloat(text) };
+      });
+      keyed.sort(function (a, b) {
+        var by = isNaN(a.number) || isNaN(b.number) || column === 0 ? a.text.localeCompare(b.text) : a.number - b.number;
+        return up ? by : -by;
+      });
+      keyed.forEach(function (item) { body.appendChild(item.row); });
+    });
+  });
+
+  // The map: the DEM's own plane, one unit a cell, north up.
+  var map = null;
+  var chosen = null;
+  var marks = {};
+  function at(column, row) { return [-row * data.tall, column]; }
+  function line(flat) {
+    var places = [];
+    for (var i = 0; i + 1 < flat.length; i += 2) places.push(at(flat[i], flat[i + 1]));
+    return places;
+  }
+  function drawMap() {
+    var bounds = [at(0, data.rows), at(data.columns, 0)];
+    map = L.map("map", { crs: L.CRS.Simple, preferCanvas: true, minZoom: -12, maxZoom: 6, zoomSnap: 0.25, attributionControl: false });
+    map.createPane("iso").style.zIndex = 450;
+    data.images.forEach(function (image) {
+      L.imageOverlay(image.url, bounds, { opacity: image.opacity, alt: image.alt, className: image.name }).addTo(map);
+    });
+    data.points.forEach(function (point) {
+      (data.areas[point.number - 1] || []).forEach(function (rings) {
+        L.polygon(rings.map(line), { color: "#222", weight: 1, opacity: 0.55, fill: false, interactive: false }).addTo(map);
+      });
+    });
+    data.points.forEach(function (point) {
+      (data.paths[point.number - 1] || []).forEach(function (piece) {
+        L.polyline(line(piece[1]), { color: data.regimes[piece[0]].colour, weight: data.regimes[piece[0]].weight, dashArray: data.regimes[piece[0]].dash, interactive: false }).addTo(map);
+      });
+    });
+    data.labels.forEach(function (label) {
+      L.marker(at(label[0], label[1]), { interactive: false, keyboard: false, pane: "iso", icon: L.divIcon({ className: "iso", html: label[2] + " min", iconSize: [50, 14] }) }).addTo(map);
+    });
+    data.points.forEach(function (point) {
+      var name = document.createElement("span");
+      name.textContent = point.name + ", " + point.time + " min";
+      marks[point.number] = L.circleMarker(at(point.at[0], point.at[1]), { radius: 6, color: "#000", weight: 2, fillColor: "#fff", fillOpacity: 1 })
+        .bindTooltip(name).on("click", function () { location.hash = "p" + point.number; }).addTo(map);
+    });
+    map.fitBounds(bounds);
+  }
+
+  var longest = null;
+  function showOnMap(number) {
+    if (!map) return;
+    if (chosen) marks[chosen].setStyle({ fillColor: "#fff", radius: 6 }).setRadius(6);
+    if (longest) { longest.remove(); longest = null; }
+    if (data.longest[number - 1]) longest = L.polyline(line(data.longest[number - 1]), { color: "#cc79a7", weight: 4, dashArray: "2 7", interactive: false }).addTo(map);
+    marks[number].setStyle({ fillColor: "#cc79a7" }).setRadius(9).bringToFront();
+    if (!map.getBounds().contains(marks[number].getLatLng())) map.panTo(marks[number].getLatLng());
+  }
+
+  // A point is chosen by the address, so that it can be linked to.
+  function choose() {
+    var match = /^#p(\d+)$/.exec(location.hash);
+    var number = match ? match[1] : null;
+    if (!number || !rowOf[number]) return;
+    if (chosen) {
+      rowOf[chosen].classList.remove("on");
+      var old = document.getElementById("p" + chosen);
+      if (old) old.classList.remove("on");
+    }
+    showOnMap(number);
+    chosen = number;
+    rowOf[number].classList.add("on");
+    var section = document.getElementById("p" + number);
+    document.getElementById("reduced").hidden = !!section;
+    if (!section) return;
+    section.classList.add("on");
+    section.querySelector("h2").focus({ preventScroll: true });
+    section.scrollIntoView();
+  }
+  window.addEventListener("hashchange", choose);
+
+  // Printing: the points whose box is ticked, a page each; else the one that is open.
+  function asked() { return body.querySelectorAll("input:checked"); }
+  body.addEventListener("change", function (event) {
+    var section = document.getElementById("p" + event.target.value);
+    if (section) section.classList.toggle("asked", event.target.checked);
+    root.classList.toggle("choosing", asked().length > 0);
+  });
+  document.getElementById("print").addEventListener("click", function () { window.print(); });
+  document.getElementById("all").addEventListener("click", function () {
+    rows.forEach(function (row) {
+      var box = row.querySelector("input");
+      if (row.hidden || !box) return;
+      box.checked = true;
+      document.getElementById("p" + box.value).classList.add("asked");
+    });
+    root.classList.toggle("choosing", asked().length > 0);
+  });
+  // On paper the calculation sheets are open.
+  var opened = [];
+  window.addEventListener("beforeprint", function () {
+    opened = Array.prototype.filter.call(document.querySelectorAll("section.asked details.sheet, section.on details.sheet"), function (sheet) { return !sheet.open; });
+    opened.forEach(function (sheet) { sheet.open = true; });
+  });
+  window.addEventListener("afterprint", function () {
+    opened.forEach(function (sheet) { sheet.open = false; });
+  });
+  drawMap();
+  choose();
+})();

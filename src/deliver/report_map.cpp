@@ -1,0 +1,261 @@
+#include <algorithm>
+#include <cmath>
+#include <limits>
+#include <map>
+#include <nlohmann/json.hpp>
+
+#include "chart.hpp"
+#include "html_text.hpp"
+#include "palette.hpp"
+#include "report_parts.hpp"
+#include "rillclock/io/data_url.hpp"
+#include "segment_rows.hpp"
+#include "time_classes.hpp"
+
+namespace rillclock {
+namespace {
+
+using Json = nlohmann::ordered_json;
+
+constexpr std::size_t most_corners = 250'000;   ///< of all outlines on the map
+
+std::array<std::uint8_t, 4> rgba(const std::string& colour, std::uint8_t opacity) {
+    const auto part = [&](std::size_t at) { return static_cast<std::uint8_t>(std::stoi(colour.substr(at, 2), nullptr, 16)); };
+    return {part(1), part(3), part(5), opacity};
+}
+
+std::string png_url(const PaletteImage& image) { return "data:image/png;base64," + base64(palette_png(image)); }
+
+/// Grey relief in 64 steps; voids are clear.
+std::string shade_url(const ReportOverview& overview) {
+    PaletteImage image{.rows = overview.rows, .columns = overview.columns, .values = {}, .palette = {{0, 0, 0, 0}}};
+    for (int i = 0; i < 64; ++i) {
+        const auto grey = static_cast<std::uint8_t>(40 + i * 215 / 63);
+        image.palette.push_back({grey, grey, grey, 255});
+    }
+    for (const std::uint8_t shade : overview.shade) image.values.push_back(shade == 0 ? 0 : static_cast<std::uint8_t>(1 + shade / 4));
+    return png_url(image);
+}
+
+/// The picture's times, each the mean over the dots around it: lines between classes then are lines, and not every cell's edge.
+std::vector<float> smoothed(const ReportOverview& overview) {
+    constexpr std::int64_t reach = 4;
+    std::vector<float> means(overview.minutes.size(), std::numeric_limits<float>::quiet_NaN());
+    for (std::int64_t row = 0; row < overview.rows; ++row) {
+        for (std::int64_t column = 0; column < overview.columns; ++column) {
+            const auto own = static_cast<std::size_t>(row * overview.columns + column);
+            if (!std::isfinite(overview.minutes[own])) continue;
+            float sum = 0.0F;
+            int count = 0;
+            for (std::int64_t r = std::max<std::int64_t>(0, row - reach); r <= std::min(overview.rows - 1, row + reach); ++r) {
+                for (std::int64_t c = std::max<std::int64_t>(0, column - reach); c <= std::min(overview.columns - 1, column + reach); ++c) {
+                    const float there = overview.minutes[static_cast<std::size_t>(r * overview.columns + c)];
+                    if (!std::isfinite(there)) continue;
+                    sum += there;
+                    ++count;
+                }
+            }
+            means[own] = sum / static_cast<float>(count);
+        }
+    }
+    return means;
+}
+
+/// Whether a dot begins a later class than the one beside it.
+bool begins_class(const ReportOverview& overview, const std::vector<float>& minutes, const TimeClasses& classes, std::size_t dot) {
+    const auto columns = static_cast<std::size_t>(overview.columns);
+    const std::size_t own = classes.of(static_cast<double>(minutes[dot]));
+    const auto is_lower = [&](bool there, std::size_t at) {
+        return there && std::isfinite(minutes[at]) && classes.of(static_cast<double>(minutes[at])) < own;
+    };
+    return is_lower(dot % columns > 0, dot - 1) || is_lower(dot % columns + 1 < columns, dot + 1) || is_lower(dot >= columns, dot - columns) ||
+           is_lower(dot + columns < minutes.size(), dot + columns);
+}
+
+/// Classes of travel time; the line between two of them is an isochrone.
+std::string time_url(const ReportOverview& overview, const TimeClasses& classes) {
+    PaletteImage image{.rows = overview.rows, .columns = overview.columns, .values = std::vector<std::uint8_t>(overview.minutes.size(), 0),
+                       .palette = {{0, 0, 0, 0}}};
+    for (std::size_t i = 0; i < classes.count; ++i) image.palette.push_back(rgba(classes.colour(i), 165));
+    const auto line = static_cast<std::uint8_t>(image.palette.size());
+    image.palette.push_back({20, 20, 20, 170});
+    const std::vector<float> means = smoothed(overview);
+    for (std::size_t i = 0; i < overview.minutes.size(); ++i) {
+        if (!std::isfinite(overview.minutes[i])) continue;
+        const auto own = static_cast<std::uint8_t>(1 + classes.of(static_cast<double>(overview.minutes[i])));
+        image.values[i] = begins_class(overview, means, classes, i) ? line : own;
+    }
+    return png_url(image);
+}
+
+/// Flat coordinates in cells from the north-west corner, those that lie close by the one before left out.
+class CellLine {
+public:
+    explicit CellLine(double apart) : apart_(apart) {}
+
+    void add(double column, double row, bool is_end = false) {
+        const bool is_near = !flat_.empty() && std::abs(column - last_column_) < apart_ && std::abs(row - last_row_) < apart_;
+        if (is_near && !is_end) return;
+        flat_.push_back(std::round(column * 10) / 10);
+        flat_.push_back(std::round(row * 10) / 10);
+        last_column_ = column;
+        last_row_ = row;
+    }
+    [[nodiscard]] const Json& flat() const { return flat_; }
+
+private:
+    double apart_;
+    double last_column_ = 0.0;
+    double last_row_ = 0.0;
+    Json flat_ = Json::array();
+};
+
+double column_of(const Grid& grid, const Place& place) { return (place.x - grid.left) / grid.cell_width; }
+double row_of(const Grid& grid, const Place& place) { return (grid.top - place.y) / grid.cell_height; }
+
+double apart_on_map(const ReportMatter& matter) { return matter.overview.stride > 1 ? static_cast<double>(matter.overview.stride) : 0.0; }
+
+Json areas_json(const ReportMatter& matter) {
+    Json areas = Json::array();
+    std::size_t corners = 0;
+    for (const Outlet& outlet : matter.result.outlets) {
+        Json polygons = Json::array();
+        if (corners <= most_corners) {
+            for (const CornerPolygon& polygon : matter.regions.subarea(outlet.number)) {
+                Json rings = Json::array();
+                for (const CornerRing& ring : polygon.rings) {
+                    CellLine line(apart_on_map(matter));
+                    for (const Corner& corner : ring) line.add(corner.column, corner.row);
+                    corners += line.flat().size() / 2;
+                    if (line.flat().size() >= 6) rings.push_back(line.flat());
+                }
+                if (!rings.empty()) polygons.push_back(rings);
+            }
+        }
+        areas.push_back(polygons);
+    }
+    return areas;
+}
+
+Json path_json(const ReportMatter& matter, const Outlet& outlet) {
+    Json pieces = Json::array();
+    for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) {
+        CellLine line(apart_on_map(matter));
+        const std::vector<Place> places = segment_places(matter.result, row);
+        for (std::size_t i = 0; i < places.size(); ++i) {
+            line.add(column_of(matter.result.grid, places[i]), row_of(matter.result.grid, places[i]), i + 1 == places.size());
+        }
+        pieces.push_back({static_cast<int>(row.segment->regime), line.flat()});
+    }
+    return pieces;
+}
+
+Json longest_json(const ReportMatter& matter, const Outlet& outlet) {
+    CellLine line(apart_on_map(matter));
+    for (std::size_t i = 0; i < outlet.longest.cells.size(); ++i) {
+        const RowColumn at = matter.result.grid.row_column(outlet.longest.cells[i]);
+        line.add(static_cast<double>(at.column) + 0.5, static_cast<double>(at.row) + 0.5, i + 1 == outlet.longest.cells.size());
+    }
+    return line.flat();
+}
+
+/// Where the water on the governing path of a last point has a round time left to go: there an isochrone crosses it.
+void add_labels(const ReportMatter& matter, const Outlet& outlet, const TimeClasses& classes, Json& labels) {
+    double left_min = outlet.time_of_concentration_s() / 60.0;
+    for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) {
+        const double after = left_min - row.time_s / 60.0;
+        const std::vector<Place> places = segment_places(matter.result, row);
+        for (double at = std::floor(left_min / classes.step) * classes.step; at > std::max(after, 0.0) && at < left_min; at -= classes.step) {
+            const double share = (left_min - at) / (left_min - after);
+            const Place& place = places[std::min(places.size() - 1, static_cast<std::size_t>(share * static_cast<double>(places.size())))];
+            labels.push_back({std::round(column_of(matter.result.grid, place)), std::round(row_of(matter.result.grid, place)), at});
+        }
+        left_min = after;
+    }
+}
+
+Json labels_json(const ReportMatter& matter, const TimeClasses& classes) {
+    constexpr std::size_t most_labelled = 5;
+    std::vector<const Outlet*> last;
+    for (const Outlet& outlet : matter.result.outlets) {
+        if (outlet.next == 0) last.push_back(&outlet);
+    }
+    std::stable_sort(last.begin(), last.end(), [](const Outlet* a, const Outlet* b) { return a->area > b->area; });
+    last.resize(std::min(last.size(), most_labelled));
+    Json labels = Json::array();
+    for (const Outlet* outlet : last) add_labels(matter, *outlet, classes, labels);
+    return labels;
+}
+
+Json points_json(const ReportMatter& matter) {
+    Json points = Json::array();
+    for (const Outlet& outlet : matter.result.outlets) {
+        const RowColumn at = matter.result.grid.row_column(outlet.point.cell);
+        points.push_back({{"number", outlet.number}, {"name", outlet.point.name}, {"time", shown_minutes(outlet.time_of_concentration_s())},
+                          {"at", {static_cast<double>(at.column) + 0.5, static_cast<double>(at.row) + 0.5}}});
+    }
+    return points;
+}
+
+/// Width and dash beside colour, so that nothing is told by colour alone.
+Json regimes_json() {
+    Json regimes = Json::array();
+    const std::map<Regime, std::pair<int, const char*>> looks = {{Regime::none, {2, ""}}, {Regime::sheet, {4, "2 6"}}, {Regime::shallow, {3, "9 5"}},
+                                                                 {Regime::channel, {4, ""}}, {Regime::water, {6, ""}}};
+    for (const auto& [regime, look] : looks) {
+        regimes.push_back({{"name", name_of(regime)}, {"colour", colour_of(regime)}, {"weight", look.first}, {"dash", look.second}});
+    }
+    return regimes;
+}
+
+std::string swatch(const std::string& colour, const std::string& text) {
+    return "<li><svg width=\"22\" height=\"14\" aria-hidden=\"true\"><rect width=\"22\" height=\"14\" fill=\"" + colour + "\"/></svg>" + text + "</li>";
+}
+
+std::string line_swatch(const std::string& colour, int weight, const std::string& dash, const std::string& text) {
+    return "<li><svg width=\"34\" height=\"14\" aria-hidden=\"true\"><line x1=\"0\" y1=\"7\" x2=\"34\" y2=\"7\" stroke=\"" + colour + "\" stroke-width=\"" +
+           std::to_string(weight) + "\" stroke-dasharray=\"" + dash + "\"/></svg>" + text + "</li>";
+}
+
+/// JSON may stand in a script element: no "<" begins a tag there.
+std::string for_script(const Json& json) {
+    std::string safe;
+    for (const char c : json.dump(-1, ' ', false, Json::error_handler_t::replace)) safe += c == '<' ? std::string("\\u003c") : std::string(1, c);
+    return safe;
+}
+
+}  // namespace
+
+std::string map_data(const ReportMatter& matter) {
+    const TimeClasses classes = time_classes(matter.result);
+    Json paths = Json::array();
+    Json longest = Json::array();
+    for (const Outlet& outlet : matter.result.outlets) {
+        paths.push_back(path_json(matter, outlet));
+        longest.push_back(longest_json(matter, outlet));
+    }
+    const Grid& grid = matter.result.grid;
+    const Json images = {{{"name", "relief"}, {"url", shade_url(matter.overview)}, {"opacity", 1.0}, {"alt", "shaded relief, lit from the north-west"}},
+                         {{"name", "times"}, {"url", time_url(matter.overview, classes)}, {"opacity", 0.85},
+                          {"alt", "travel time to the last point on the way down, in classes of " + significant(classes.step, 3) + " minutes"}}};
+    return for_script({{"rows", grid.rows}, {"columns", grid.columns}, {"tall", grid.cell_height / grid.cell_width}, {"images", images},
+                       {"regimes", regimes_json()}, {"points", points_json(matter)}, {"areas", areas_json(matter)}, {"paths", paths},
+                       {"longest", longest}, {"labels", labels_json(matter, classes)}});
+}
+
+std::string map_legend(const ReportMatter& matter) {
+    const TimeClasses classes = time_classes(matter.result);
+    std::string html = "<ul class=\"legend\" aria-label=\"travel time to the last point, minutes\">";
+    for (std::size_t i = 0; i < classes.count; ++i) {
+        const double from = static_cast<double>(i) * classes.step;
+        html += swatch(classes.colour(i), significant(from, 4) + " to " + significant(from + classes.step, 4) + " min");
+    }
+    html += "</ul><ul class=\"legend\" aria-label=\"paths\">";
+    for (const Json& regime : regimes_json()) {
+        if (regime["name"] == "none") continue;
+        html += line_swatch(regime["colour"], regime["weight"], regime["dash"], regime["name"].get<std::string>());
+    }
+    return html + line_swatch("#cc79a7", 4, "2 7", "longest path to the chosen point") + "</ul>";
+}
+
+}  // namespace rillclock

@@ -1,0 +1,126 @@
+#include "html_text.hpp"
+#include "report_parts.hpp"
+#include "rillclock/deliver/report_units.hpp"
+#include "segment_rows.hpp"
+
+namespace rillclock {
+namespace {
+
+using Cells = std::vector<std::string>;
+
+std::string cell(const std::string& html, const std::string& tag, bool is_wide) {
+    return "<" + tag + (is_wide ? " class=\"wide\"" : tag == "th" ? " scope=\"col\"" : "") + ">" + html + "</" + tag + ">";
+}
+
+/// Words take what room they need; numbers do not break.
+bool is_words(const std::string& html) { return html.size() > 24; }
+
+std::string fact(const std::string& name, const std::string& value) {
+    return "<div><dt>" + name + "</dt><dd>" + value + "</dd></div>";
+}
+
+std::string facts(const StudyResult& result, const Outlet& outlet) {
+    const ReportScale scale(result.study.report_units);
+    const std::string m = " " + scale.length_unit();
+    const std::string area = " " + scale.area_unit();
+    const PathSummary& path = outlet.governing.summary;
+    const std::optional<MethodSpread>& spread = result.methods[outlet.number - 1].spread;
+    const double tc = outlet.time_of_concentration_s();
+    std::string html = "<dl class=\"facts\">";
+    html += fact("Time of concentration", shown_minutes(tc) + " min");
+    html += fact("Lag, 0.6 of it", shown_minutes(0.6 * tc) + " min");
+    html += fact("Catchment", significant(scale.area(from_fixed_area(outlet.area)), 4) + area + (outlet.touches_edge() ? ", at least" : ""));
+    html += fact("Of it reaching no other point first", significant(scale.area(from_fixed_area(outlet.own_area)), 4) + area);
+    html += fact("Governing path", significant(scale.length(from_fixed(path.length)), 4) + m + ", falling " + significant(scale.length(path.fall_m), 4) + m);
+    html += fact("Longest path", significant(scale.length(from_fixed(outlet.longest.summary.length)), 4) + m + ", " + shown_minutes(outlet.longest.seconds) + " min");
+    html += fact("By end-to-end slopes", shown_minutes(outlet.governing.end_to_end_s) + " min");
+    if (spread) html += fact("Other methods", shown_minutes(in_seconds(spread->lowest)) + " to " + shown_minutes(in_seconds(spread->highest)) + " min");
+    html += fact("Next point", outlet.next == 0 ? "none" : "<a href=\"#p" + std::to_string(outlet.next) + "\">" +
+                                                               html_text(result.outlets[outlet.next - 1].point.name) + "</a>");
+    return html + "</dl>\n";
+}
+
+std::string notices_of_point(const StudyResult& result, const Outlet& outlet) {
+    std::string items;
+    for (const Notice& notice : result.notices) {
+        if (notice.point == outlet.point.name) items += "<li>" + html_text(notice.text) + "</li>";
+    }
+    return items.empty() ? "<p>Nothing was noticed at this point.</p>\n" : "<ul class=\"notices\">" + items + "</ul>\n";
+}
+
+std::string slope_text(double slope) { return slope > 0 ? significant(slope, 4) : "–"; }
+
+Cells segment_cells(const StudyResult& result, const SegmentRow& row) {
+    const ReportScale scale(result.study.report_units);
+    const CoverClass* cover = cover_of(result, *row.segment);
+    return {std::to_string(row.number), std::string(name_of(row.segment->regime)), cover == nullptr ? "–" : html_text(cover->name),
+            significant(scale.length(row.segment->whole_length_m()), 4), significant(scale.length(row.segment->pond_length_m), 3),
+            slope_text(row.segment->slope_equivalent), significant(scale.length(row.segment->fall_m), 3),
+            fixed_decimals(row.time_s / 60.0, 3), fixed_decimals(row.running_s / 60.0, 3)};
+}
+
+std::string segments(const StudyResult& result, const Outlet& outlet) {
+    const std::string m = ReportScale(result.study.report_units).length_unit();
+    std::vector<Cells> rows;
+    for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) rows.push_back(segment_cells(result, row));
+    return "<h3>Segments of the governing path</h3>" +
+           plain_table({"segment", "regime", "cover", "length " + m, "of it ponded " + m, "slope", "fall " + m, "time min", "running time min"}, rows);
+}
+
+/// The land of the catchment by cover, soil and slope, with the share that is paved.
+std::string ground(const StudyResult& result, const Outlet& outlet) {
+    const ReportScale scale(result.study.report_units);
+    FixedArea all = 0;
+    FixedArea paved = 0;
+    for (const LandShare& share : outlet.ground.land().shares()) {
+        all += share.area;
+        if (result.book.classes()[share.kind.cover].paved) paved += share.area;
+    }
+    if (all == 0) return "";
+    std::vector<Cells> rows;
+    for (const LandShare& share : outlet.ground.land().shares()) {
+        const CoverClass& cover = result.book.classes()[share.kind.cover];
+        const std::string soil = letter_of(share.kind.soil);
+        rows.push_back({html_text(cover.name), soil.empty() ? "–" : soil, std::string(words(share.kind.slope)),
+                        significant(scale.area(from_fixed_area(share.area)), 4), fixed_decimals(100.0 * static_cast<double>(share.area) / static_cast<double>(all), 1),
+                        cover.n_typical > 0 ? significant(cover.n_typical, 3) : "–", cover.paved ? "yes" : "no"});
+    }
+    return "<h3>Land of the catchment</h3><p>" + fixed_decimals(100.0 * static_cast<double>(paved) / static_cast<double>(all), 1) +
+           " % of the area is of paved classes; the average slope of the land is " + significant(outlet.ground.land_slope(), 3) + ".</p>" +
+           plain_table({"cover", "soil group", "slope of the land", "area " + scale.area_unit(), "share %", "n of sheet flow", "paved"}, rows);
+}
+
+std::string sheet(const ReportMatter& matter, const Outlet& outlet) {
+    return "<details class=\"sheet\"><summary>Calculation sheet, line by line</summary><pre>" +
+           html_text(sheet_text(matter.sheets.sheet(outlet.number - 1))) + "</pre></details>\n";
+}
+
+}  // namespace
+
+std::string plain_table(const Cells& head, const std::vector<Cells>& rows) {
+    std::string html = "<div class=\"scroll\"><table><thead><tr>";
+    for (const std::string& name : head) html += cell(name, "th", false);
+    html += "</tr></thead><tbody>\n";
+    for (const Cells& row : rows) {
+        html += "<tr>";
+        for (const std::string& value : row) html += cell(value, "td", is_words(value));
+        html += "</tr>\n";
+    }
+    return html + "</tbody></table></div>\n";
+}
+
+std::string hidden_table(const std::string& summary, const Cells& head, const std::vector<Cells>& rows) {
+    return "<details><summary>" + summary + "</summary>" + plain_table(head, rows) + "</details>";
+}
+
+std::string point_section(const ReportMatter& matter, const Outlet& outlet, SectionDetail detail) {
+    const std::string number = std::to_string(outlet.number);
+    std::string html = "<section class=\"point\" id=\"p" + number + "\" aria-labelledby=\"h" + number + "\"><h2 id=\"h" + number +
+                       "\" tabindex=\"-1\">" + html_text(outlet.point.name) + "</h2>\n";
+    html += facts(matter.result, outlet) + notices_of_point(matter.result, outlet) + point_charts(matter, outlet) +
+            segments(matter.result, outlet) + ground(matter.result, outlet);
+    if (detail == SectionDetail::with_sheet) html += sheet(matter, outlet);
+    return html + "</section>\n";
+}
+
+}  // namespace rillclock

@@ -1,0 +1,199 @@
+#include "rillclock/deliver/study_geopackage.hpp"
+
+#include <algorithm>
+#include <functional>
+#include <set>
+
+#include "isochrone_rows.hpp"
+#include "palette.hpp"
+#include "rillclock/core/number_text.hpp"
+#include "rillclock/io/vector_output.hpp"
+#include "segment_rows.hpp"
+
+namespace rillclock {
+namespace {
+
+/// A layer described once, as named fields that each know their value: description and features cannot drift apart.
+template <class Row>
+class LayerWriter {
+public:
+    using Value = std::function<FieldValue(const Row&)>;
+
+    LayerWriter(VectorFile& file, LayerDescription layer) : file_(file), layer_(std::move(layer)) { layer_.indexed_field = "point"; }
+
+    LayerWriter& field(std::string name, FieldKind kind, std::string description, Value value) {
+        layer_.fields.push_back({std::move(name), kind, std::move(description)});
+        values_.push_back(std::move(value));
+        return *this;
+    }
+    void begin() { file_.begin_layer(layer_); }
+    void add(const LayerShape& shape, const Row& row) {
+        std::vector<FieldValue> values;
+        for (const Value& value : values_) values.push_back(value(row));
+        file_.add(shape, values);
+    }
+
+private:
+    VectorFile& file_;
+    LayerDescription layer_;
+    std::vector<Value> values_;
+};
+
+FieldValue number(double value, int digits = 6) { return std::isfinite(value) ? FieldValue(std::stod(significant(value, digits))) : FieldValue(); }
+FieldValue whole(std::size_t value) { return static_cast<std::int64_t>(value); }
+FieldValue minutes(double s) { return std::stod(fixed_decimals(s / 60.0, 4)); }
+FieldValue square_metres_of(FixedArea area) { return std::stod(fixed_decimals(from_fixed_area(area), 1)); }
+
+void add_outlet_fields(const StudyResult& result, LayerWriter<Outlet>& layer) {
+    layer.field("point", FieldKind::text, "name of the design point", [](const Outlet& o) { return o.point.name; })
+        .field("number", FieldKind::whole_number, "its number, as in catchment.tif", [](const Outlet& o) { return whole(o.number); })
+        .field("next_point", FieldKind::text, "the next point below",
+               [&result](const Outlet& o) { return o.next == 0 ? FieldValue() : FieldValue(result.outlets[o.next - 1].point.name); })
+        .field("area_m2", FieldKind::number, "area of the whole catchment", [](const Outlet& o) { return square_metres_of(o.area); })
+        .field("own_area_m2", FieldKind::number, "area that reaches no other point first", [](const Outlet& o) { return square_metres_of(o.own_area); })
+        .field("time_of_concentration_min", FieldKind::number, "time along the governing path",
+               [](const Outlet& o) { return minutes(o.time_of_concentration_s()); })
+        .field("half_arrived_min", FieldKind::number, "when half of the area has arrived", [](const Outlet& o) { return minutes(o.arrival_s[0]); })
+        .field("governing_length_m", FieldKind::number, "length of the governing path",
+               [](const Outlet& o) { return number(from_fixed(o.governing.summary.length)); })
+        .field("touches_edge", FieldKind::text, "whether the catchment reaches the edge of the data: area and time are then lower bounds",
+               [](const Outlet& o) { return std::string(o.touches_edge() ? "yes" : "no"); });
+}
+
+LayerStyle alike(LayerLook look, std::string label_field = {}) { return {.looks = {std::move(look)}, .label_field = std::move(label_field)}; }
+
+void write_outlets(const StudyResult& result, VectorFile& file) {
+    LayerWriter<Outlet> layer(file, {.name = "outlets", .description = "design points", .geometry = LayerGeometry::points,
+                                     .style = alike({.fill = "#ffffff", .stroke = "#000000", .stroke_mm = 0.6}, "point")});
+    add_outlet_fields(result, layer);
+    layer.begin();
+    for (const Outlet& outlet : result.outlets) layer.add(result.grid.centre(outlet.point.cell), outlet);
+}
+
+/// Large catchments first, so that small ones lie on them.
+void write_catchments(const StudyResult& result, const StudyRegions& regions, VectorFile& file) {
+    LayerWriter<Outlet> layer(file, {.name = "catchments", .description = "all that drains through each point", .geometry = LayerGeometry::polygons,
+                                     .style = alike({.stroke = "#404040", .stroke_mm = 0.5})});
+    add_outlet_fields(result, layer);
+    layer.begin();
+    for (const Outlet& outlet : result.outlets) layer.add(placed(regions.catchment(outlet.number), result.grid), outlet);
+}
+
+void write_subareas(const StudyResult& result, const StudyRegions& regions, VectorFile& file) {
+    LayerWriter<Outlet> layer(file, {.name = "subareas", .description = "what reaches each point before any other", .geometry = LayerGeometry::polygons,
+                                     .style = alike({.fill = "#a0a0a0", .fill_opacity = 0.15, .stroke = "#707070", .stroke_mm = 0.2})});
+    add_outlet_fields(result, layer);
+    layer.begin();
+    for (const Outlet& outlet : result.outlets) layer.add(placed(regions.subarea(outlet.number), result.grid), outlet);
+}
+
+struct PathRow {
+    const Outlet* outlet = nullptr;
+    const PointPath* path = nullptr;
+    std::string name;
+};
+
+/// A place alone is no line.
+std::vector<Line> as_lines(Line line) { return line.size() < 2 ? std::vector<Line>() : std::vector<Line>{std::move(line)}; }
+
+std::vector<Line> line_of(const StudyResult& result, const PointPath& path) {
+    Line line;
+    for (const Cell cell : path.cells) line.push_back(result.grid.centre(cell));
+    return as_lines(std::move(line));
+}
+
+void write_paths(const StudyResult& result, VectorFile& file) {
+    LayerWriter<PathRow> layer(file, {.name = "paths", .description = "governing and longest path of each point, drawn downstream",
+                                      .geometry = LayerGeometry::lines,
+                                      .style = {.field = "path", .looks = {{.value = "governing", .label = "governing", .stroke = "#000000", .stroke_mm = 0.9},
+                                                                           {.value = "longest", .label = "longest", .stroke = "#cc79a7", .stroke_mm = 0.5}}}});
+    layer.field("point", FieldKind::text, "name of the design point", [](const PathRow& r) { return r.outlet->point.name; })
+        .field("path", FieldKind::text, "governing: its water arrives last; longest: its water has the longest way", [](const PathRow& r) { return r.name; })
+        .field("length_m", FieldKind::number, "length", [](const PathRow& r) { return number(from_fixed(r.path->summary.length)); })
+        .field("fall_m", FieldKind::number, "fall of the spill elevation", [](const PathRow& r) { return number(r.path->summary.fall_m); })
+        .field("time_min", FieldKind::number, "travel time", [](const PathRow& r) { return minutes(r.path->seconds); });
+    layer.begin();
+    for (const Outlet& outlet : result.outlets) {
+        layer.add(line_of(result, outlet.governing), {&outlet, &outlet.governing, "governing"});
+        layer.add(line_of(result, outlet.longest), {&outlet, &outlet.longest, "longest"});
+    }
+}
+
+LayerStyle regime_style() {
+    LayerStyle style{.field = "regime"};
+    for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
+        style.looks.push_back({.value = std::string(name_of(regime)), .label = std::string(name_of(regime)), .stroke = colour_of(regime),
+                               .stroke_mm = regime == Regime::sheet ? 1.1 : 0.7});
+    }
+    return style;
+}
+
+void write_segments(const StudyResult& result, VectorFile& file) {
+    LayerWriter<SegmentRow> layer(file, {.name = "segments", .description = "pieces of the paths that one formula times, as in segments.csv",
+                                         .geometry = LayerGeometry::lines, .style = regime_style()});
+    layer.field("point", FieldKind::text, "name of the design point", [](const SegmentRow& r) { return r.outlet->point.name; })
+        .field("path", FieldKind::text, "governing or longest", [](const SegmentRow& r) { return std::string(r.path_name); })
+        .field("segment", FieldKind::whole_number, "number along the path", [](const SegmentRow& r) { return whole(r.number); })
+        .field("regime", FieldKind::text, "how the water moves", [](const SegmentRow& r) { return std::string(name_of(r.segment->regime)); })
+        .field("cover", FieldKind::text, "land cover; none in channels", [&result](const SegmentRow& r) {
+            const CoverClass* cover = cover_of(result, *r.segment);
+            return cover == nullptr ? FieldValue() : FieldValue(cover->name);
+        })
+        .field("length_m", FieldKind::number, "length, ponded cells included", [](const SegmentRow& r) { return number(r.segment->whole_length_m()); })
+        .field("slope_equivalent", FieldKind::number, "slope that gives the same time", [](const SegmentRow& r) { return number(r.segment->slope_equivalent); })
+        .field("fall_m", FieldKind::number, "fall of the spill elevation", [](const SegmentRow& r) { return number(r.segment->fall_m); })
+        .field("time_min", FieldKind::number, "travel time", [](const SegmentRow& r) { return minutes(r.time_s); })
+        .field("running_time_min", FieldKind::number, "from the head of the path to the end of the segment", [](const SegmentRow& r) { return minutes(r.running_s); });
+    layer.begin();
+    for (const Outlet& outlet : result.outlets) {
+        for (const SegmentRow& row : segment_rows(outlet)) layer.add(as_lines(segment_places(result, row)), row);
+    }
+}
+
+std::string band_text(const IsochroneRow& row) { return significant(row.from_min, 6) + " to " + significant(row.to_min, 6) + " min"; }
+
+LayerStyle band_style(const std::vector<IsochroneRow>& rows) {
+    LayerStyle style{.field = "band"};
+    double greatest = 0.0;
+    std::set<double> begun;
+    for (const IsochroneRow& row : rows) greatest = std::max(greatest, row.from_min);
+    for (const IsochroneRow& row : rows) {
+        if (!begun.insert(row.from_min).second) continue;
+        style.looks.push_back({.value = band_text(row), .label = band_text(row), .fill = colour_of_time(row.from_min, greatest), .fill_opacity = 0.6,
+                               .stroke = "#303030", .stroke_mm = 0.15});
+    }
+    return style;
+}
+
+void write_isochrones(const StudyResult& result, const StudyRegions& regions, VectorFile& file) {
+    const std::vector<IsochroneRow> rows = isochrone_rows(result, regions);
+    LayerWriter<IsochroneRow> layer(file, {.name = "isochrones", .description = "where water takes between two times to the point",
+                                           .geometry = LayerGeometry::polygons, .style = band_style(rows)});
+    layer.field("point", FieldKind::text, "name of the design point", [](const IsochroneRow& r) { return r.outlet->point.name; })
+        .field("of", FieldKind::text, "subarea, or the whole catchment of a last point", [](const IsochroneRow& r) { return std::string(words(r.band->scope)); })
+        .field("band", FieldKind::text, "between which times", [](const IsochroneRow& r) { return band_text(r); })
+        .field("from_min", FieldKind::number, "least time", [](const IsochroneRow& r) { return number(r.from_min); })
+        .field("to_min", FieldKind::number, "time that is not reached", [](const IsochroneRow& r) { return number(r.to_min); })
+        .field("area_m2", FieldKind::number, "area of the band", [](const IsochroneRow& r) { return square_metres_of(r.band->area); })
+        .field("area_until_m2", FieldKind::number, "area of this and all earlier bands", [](const IsochroneRow& r) { return square_metres_of(r.area_until); })
+        .field("share_until", FieldKind::number, "the same as a share of all", [](const IsochroneRow& r) {
+            return number(static_cast<double>(r.area_until) / static_cast<double>(r.area_in_all));
+        });
+    layer.begin();
+    for (const IsochroneRow& row : rows) layer.add(placed(regions.outline(*row.band), result.grid), row);
+}
+
+}  // namespace
+
+void write_study_geopackage(const std::filesystem::path& path, const StudyResult& result, const StudyRegions& regions) {
+    VectorFile file(path, result.system);
+    if (regions.isochrones()) write_isochrones(result, regions, file);
+    write_subareas(result, regions, file);
+    write_catchments(result, regions, file);
+    write_paths(result, file);
+    write_segments(result, file);
+    write_outlets(result, file);
+    file.close();
+}
+
+}  // namespace rillclock

@@ -1,0 +1,274 @@
+#!/usr/bin/python3
+"""The layers for a GIS: what stands in study.gpkg and isochrones.geojson, held to the rasters and to the standards."""
+import json
+import os
+import pathlib
+import re
+import shutil
+import sqlite3
+import subprocess
+import sys
+import tempfile
+import unittest
+import xml.etree.ElementTree as xml
+
+import numpy as np
+from osgeo import gdal, ogr
+
+from support import COMMAND, CommandTest, hills, table, write_points
+
+sys.path.insert(0, "/usr/lib/python3/dist-packages")
+from osgeo_utils.samples import validate_cloud_optimized_geotiff, validate_gpkg  # noqa: E402
+
+LAYERS = {"outlets": "POINT", "catchments": "MULTIPOLYGON", "subareas": "MULTIPOLYGON", "paths": "MULTILINESTRING",
+          "segments": "MULTILINESTRING", "isochrones": "MULTIPOLYGON"}
+
+
+def burnt(layer, raster, query, value_of=lambda feature: 1):
+    """The features of a layer laid back on the grid of a raster: values, and how often each cell was covered."""
+    memory = gdal.GetDriverByName("MEM")
+    values, count = (memory.Create("", raster.RasterXSize, raster.RasterYSize, 1, gdal.GDT_Float64) for _ in range(2))
+    shapes = ogr.GetDriverByName("Memory").CreateDataSource("")
+    for target in (values, count):
+        target.SetGeoTransform(raster.GetGeoTransform())
+        target.SetProjection(raster.GetProjection())
+    layer.SetAttributeFilter(query)
+    for feature in layer:
+        one = shapes.CreateLayer("one", layer.GetSpatialRef())
+        copy = ogr.Feature(one.GetLayerDefn())
+        copy.SetGeometry(feature.GetGeometryRef().Clone())
+        one.CreateFeature(copy)
+        gdal.RasterizeLayer(values, [1], one, burn_values=[value_of(feature)])
+        gdal.RasterizeLayer(count, [1], one, burn_values=[1], options=["MERGE_ALG=ADD"])
+        shapes.DeleteLayer(0)
+    return values.ReadAsArray(), count.ReadAsArray()
+
+
+class Layers(CommandTest):
+    @classmethod
+    def setUpClass(cls):
+        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-layers-"))
+        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
+        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
+        subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True)
+        cls.result_folder = cls.kept / "town/result"
+        cls.package = cls.result_folder / "study.gpkg"
+
+    def layer(self, name):
+        self.opened = gdal.OpenEx(str(self.package), gdal.OF_VECTOR)
+        return self.opened.GetLayerByName(name)
+
+    def database(self, query):
+        with sqlite3.connect(f"file:{self.package}?mode=ro", uri=True) as connection:
+            return connection.execute(query).fetchall()
+
+    def raster(self, name):
+        return gdal.Open(str(self.result_folder / "rasters" / name))
+
+    def test_every_layer_is_there_with_its_geometry_and_system(self):
+        said = subprocess.run(["ogrinfo", "-so", "-al", self.package], capture_output=True, text=True, check=True)
+        self.assertEqual(said.stderr, "")
+        found = dict(self.database("SELECT table_name, geometry_type_name FROM gpkg_geometry_columns"))
+        self.assertEqual(found, LAYERS)
+        for name in LAYERS:
+            self.assertEqual(self.layer(name).GetSpatialRef().GetAuthorityCode(None), "25831", name)
+
+    def test_it_is_a_valid_geopackage(self):
+        checker = validate_gpkg.GPKGChecker(str(self.package))
+        checker.check()
+        self.assertEqual(checker.errors, [])
+
+    def test_each_layer_has_a_spatial_index_a_description_and_an_indexed_point(self):
+        indexed = {row[0] for row in self.database("SELECT table_name FROM gpkg_extensions WHERE extension_name = 'gpkg_rtree_index'")}
+        described = dict(self.database("SELECT table_name, description FROM gpkg_contents"))
+        indexes = {row[0] for row in self.database("SELECT tbl_name FROM sqlite_master WHERE type = 'index' AND sql LIKE '%(\"point\")%'")}
+        for name in LAYERS:
+            self.assertIn(name, indexed)
+            self.assertGreater(len(described[name]), 10)
+            self.assertIn(name, indexes)
+            undescribed = self.database(f"SELECT name FROM pragma_table_info('{name}') WHERE name NOT IN ('fid', 'geom') AND name NOT IN "
+                                        f"(SELECT column_name FROM gpkg_data_columns WHERE table_name = '{name}' AND length(description) > 3)")
+            self.assertEqual(undescribed, [], name)
+
+    def test_each_layer_has_a_default_style_in_well_formed_xml(self):
+        styles = self.database("SELECT f_table_name, styleQML, styleSLD, useAsDefault FROM layer_styles")
+        self.assertEqual({row[0] for row in styles}, set(LAYERS))
+        for name, qml, sld, default in styles:
+            self.assertEqual(default, 1)
+            self.assertIn("symbol", {element.tag for element in xml.fromstring(qml).iter()})
+            root = xml.fromstring(sld)
+            self.assertEqual(root.tag, "{http://www.opengis.net/sld}StyledLayerDescriptor")
+            self.assertEqual(root.find(".//{http://www.opengis.net/sld}Name").text, name)
+        regimes = next(sld for name, _, sld, _ in styles if name == "segments")
+        for colour in ("#e69f00", "#d55e00", "#0072b2"):
+            self.assertIn(colour, regimes)
+
+    def test_subareas_cover_their_cells_and_no_others_exactly_once(self):
+        catchment = self.raster("catchment.tif")
+        layer = self.layer("subareas")
+        values, count = burnt(layer, catchment, None, lambda feature: feature["number"])
+        cells = catchment.ReadAsArray()
+        owned = (cells > 0) & (cells < 4294967295)
+        np.testing.assert_array_equal(count, owned)
+        np.testing.assert_array_equal(values[owned], cells[owned])
+        areas = {feature["number"]: feature.GetGeometryRef().GetArea() for feature in layer}
+        for number, area in areas.items():
+            self.assertAlmostEqual(area, 4.0 * np.count_nonzero(cells == number), places=6)
+
+    def test_catchments_are_their_subareas_and_all_above(self):
+        rows = table(self.result_folder / "tables/outlets.csv")
+        below = {row["name"]: row["next_point"] for row in rows}
+        numbers = {row["name"]: int(row["number"]) for row in rows}
+        cells = self.raster("catchment.tif").ReadAsArray()
+        for row in rows:
+            above = []
+            for name in numbers:
+                at = name
+                while at and at != row["name"]:
+                    at = below[at]
+                above += [numbers[name]] if at else []
+            layer = self.layer("catchments")
+            _, count = burnt(layer, self.raster("catchment.tif"), f"number = {row['number']}")
+            np.testing.assert_array_equal(count, np.isin(cells, above), row["name"])
+
+    def test_shapes_are_valid(self):
+        for name in LAYERS:
+            for feature in self.layer(name):
+                self.assertTrue(feature.GetGeometryRef().IsValid(), (name, feature.GetFID()))
+
+    def test_isochrones_of_catchments_are_the_bands_of_the_travel_time(self):
+        times = self.raster("travel_time.tif")
+        layer = self.layer("isochrones")
+        values, count = burnt(layer, times, "of = 'catchment'", lambda feature: feature["from_min"])
+        cells = self.raster("catchment.tif").ReadAsArray()
+        owned = (cells > 0) & (cells < 4294967295)
+        np.testing.assert_array_equal(count, owned)
+        bands = np.floor(times.ReadAsArray()[owned].astype(float) / 10) * 10
+        np.testing.assert_array_equal(values[owned], bands)
+
+    def test_isochrones_of_subareas_are_the_bands_of_the_time_to_the_own_point(self):
+        times = self.raster("travel_time.tif").ReadAsArray().astype(float)
+        cells = self.raster("catchment.tif").ReadAsArray()
+        owned = (cells > 0) & (cells < 4294967295)
+        at_point = np.zeros(12)
+        for row in table(self.result_folder / "tables/outlets.csv"):
+            left, width, _, top, _, height = self.raster("travel_time.tif").GetGeoTransform()
+            at_point[int(row["number"])] = times[int((float(row["y"]) - top) / height), int((float(row["x"]) - left) / width)]
+        values, count = burnt(self.layer("isochrones"), self.raster("travel_time.tif"), "of = 'subarea'", lambda feature: feature["from_min"])
+        np.testing.assert_array_equal(count, owned)
+        own = times[owned] - at_point[cells[owned]]
+        clear = np.abs(own / 10 - np.round(own / 10)) > 1e-4   # single precision leaves the others open
+        np.testing.assert_array_equal(values[owned][clear], (np.floor(np.maximum(own, 0) / 10) * 10)[clear])
+
+    def test_areas_of_bands_add_up(self):
+        for feature in self.layer("isochrones"):
+            self.assertAlmostEqual(feature["area_m2"], feature.GetGeometryRef().GetArea(), delta=0.06)
+        layer = self.layer("isochrones")
+        layer.SetAttributeFilter("of = 'catchment' AND point = 'Weir'")
+        last = max(layer, key=lambda feature: feature["from_min"])
+        self.assertEqual(last["share_until"], 1.0)
+        rows = {row["name"]: row for row in table(self.result_folder / "tables/outlets.csv")}
+        self.assertAlmostEqual(last["area_until_m2"] / 1e4, float(rows["Weir"]["area_ha"]), delta=0.001)
+
+    def test_isochrones_as_geojson_follow_rfc_7946(self):
+        text = json.loads((self.result_folder / "isochrones.geojson").read_text(encoding="utf-8"))
+        self.assertEqual(text["type"], "FeatureCollection")
+        self.assertNotIn("crs", text)
+        west, south, east, north = text["bbox"]
+        self.assertEqual(len(text["features"]), self.layer("isochrones").GetFeatureCount())
+        for feature in text["features"]:
+            self.assertEqual(feature["geometry"]["type"], "MultiPolygon")
+            for polygon in feature["geometry"]["coordinates"]:
+                for place, ring in enumerate(polygon):
+                    self.assertEqual(ring[0], ring[-1])
+                    self.assertGreaterEqual(len(ring), 4)
+                    x, y = np.array(ring).T
+                    self.assertTrue((x >= west).all() and (x <= east).all() and (y >= south).all() and (y <= north).all())
+                    area = np.sum((x[:-1] - x[0]) * (y[1:] - y[0]) - (x[1:] - x[0]) * (y[:-1] - y[0]))
+                    self.assertEqual(area > 0, place == 0, "outer rings run counter-clockwise, holes clockwise")
+
+    def test_segments_and_outlets_are_those_of_the_tables(self):
+        self.assertEqual(self.layer("segments").GetFeatureCount(), len(table(self.result_folder / "tables/segments.csv")))
+        rows = {row["name"]: row for row in table(self.result_folder / "tables/outlets.csv")}
+        for feature in self.layer("outlets"):
+            row = rows[feature["point"]]
+            self.assertAlmostEqual(feature["time_of_concentration_min"], float(row["time_of_concentration_min"]), delta=6e-4)
+            self.assertAlmostEqual(feature.GetGeometryRef().GetX(), float(row["x"]), places=3)
+
+
+class Rasters(CommandTest):
+    def test_on_request_they_are_cloud_optimized_and_say_the_same(self):
+        self.done("demo", "town")
+        study = (self.folder / "town/study.toml").read_text()
+        (self.folder / "town/cog.toml").write_text(study + 'rasters = "cog"\n')
+        self.done("run", "town/study.toml")
+        self.done("run", "town/cog.toml", "--out", "cog")
+        plain, cloud = self.folder / "town/result/rasters", self.folder / "cog/rasters"
+        self.assertEqual(sorted(path.name for path in plain.iterdir()), sorted(path.name for path in cloud.iterdir()))
+        for path in sorted(cloud.glob("*.tif")):
+            warnings, errors, _ = validate_cloud_optimized_geotiff.validate(str(path), full_check=True)
+            self.assertEqual((warnings, errors), ([], []), path.name)
+            same, other = gdal.Open(str(path)), gdal.Open(str(plain / path.name))
+            np.testing.assert_array_equal(same.ReadAsArray(), other.ReadAsArray())
+            for band, twin in ((same.GetRasterBand(1), other.GetRasterBand(1)),):
+                self.assertEqual(band.GetDescription(), twin.GetDescription())
+                self.assertEqual(band.GetNoDataValue(), twin.GetNoDataValue())
+                self.assertEqual(band.GetCategoryNames(), twin.GetCategoryNames())
+                self.assertEqual(band.GetMetadata(), twin.GetMetadata())
+
+    def test_regimes_have_names_and_colours_and_styles_stand_beside(self):
+        self.done("demo", "town")
+        self.done("run", "town/study.toml")
+        rasters = self.folder / "town/result/rasters"
+        said = json.loads(subprocess.run(["gdalinfo", "-json", rasters / "regime.tif"], capture_output=True, text=True, check=True).stdout)
+        band = said["bands"][0]
+        self.assertEqual(band["colorTable"]["entries"][1][:3], [0xE6, 0x9F, 0x00])
+        regimes = gdal.Open(str(rasters / "regime.tif"))
+        regimes.GetRasterBand(1).GetMetadata()   # the file beside the raster is read only after it
+        self.assertEqual(regimes.GetRasterBand(1).GetCategoryNames()[:4], ["none", "sheet", "shallow", "channel"])
+        for name in ("regime", "travel_time"):
+            root = xml.parse(rasters / f"{name}.sld").getroot()
+            entries = root.findall(".//{http://www.opengis.net/sld}ColorMapEntry")
+            self.assertGreater(len(entries), 3)
+            numbers = [float(entry.get("quantity")) for entry in entries]
+            self.assertEqual(numbers, sorted(numbers))
+
+
+class Asking(CommandTest):
+    def study(self, isochrones):
+        self.small_study()
+        (self.folder / "study.toml").write_text(
+            '[terrain]\nelevation = "dem.tif"\n[surface]\ncover = "cover.tif"\nbook = "book.csv"\n[rain]\ntwo_year_24_hour = "90 mm"\n'
+            f'[output]\n{isochrones}')
+
+    def test_without_isochrones_there_are_none(self):
+        self.study("")
+        self.done("run", "study.toml")
+        self.assertFalse((self.folder / "result/isochrones.geojson").exists())
+        layers = subprocess.run(["ogrinfo", "result/study.gpkg"], cwd=self.folder, capture_output=True, text=True, check=True).stdout
+        self.assertNotIn("isochrones", layers)
+        self.assertIn("subareas", layers)
+
+    def test_a_step_that_makes_too_many_bands_is_refused_with_what_to_do(self):
+        self.done("demo", "town")
+        study = self.folder / "town/study.toml"
+        study.write_text(study.read_text().replace('"10 min"', '"0.0001 min"'))
+        self.refused(1, "run", "town/study.toml", says=("isochrones every", "longer step", "output.isochrones"))
+
+    def test_a_step_that_is_none_is_refused(self):
+        self.study('isochrones = "0 min"')
+        self.refused(1, "run", "study.toml", says=("isochrones", "5 min"))
+
+    def test_a_geographic_grid_has_its_layers_in_degrees(self):
+        self.ground(values=hills(), cell=0.0001, corner=(7.0, 50.0), epsg=4326)
+        self.cover(cell=0.0001, corner=(7.0, 50.0), epsg=4326)
+        self.book()
+        self.done("run", "--elevation", "dem.tif", "--cover", "cover.tif", "--book", "book.csv", "--rain", "90 mm")
+        package = gdal.OpenEx(str(self.folder / "result/study.gpkg"), gdal.OF_VECTOR)
+        layer = package.GetLayerByName("subareas")
+        west, east, south, north = layer.GetExtent()
+        self.assertTrue(7.0 - 1e-9 <= west < east <= 7.005 + 1e-9 and 49.996 - 1e-9 <= south < north <= 50.0 + 1e-9)
+
+
+if __name__ == "__main__":
+    unittest.main()

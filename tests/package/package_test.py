@@ -1,0 +1,58 @@
+#!/usr/bin/python3
+"""What is built can be installed, used from another project, and packed for Debian."""
+import os
+import pathlib
+import shutil
+import subprocess
+import tempfile
+import unittest
+
+BUILD = pathlib.Path(os.environ["RILLCLOCK_BUILD"])
+SOURCE = pathlib.Path(os.environ["RILLCLOCK_SOURCE"])
+LAUNCHER = os.environ.get("RILLCLOCK_COMPILER_LAUNCHER", "")
+
+
+def do(*words, **options):
+    run = subprocess.run([str(word) for word in words], capture_output=True, text=True, check=False, **options)
+    if run.returncode != 0:
+        raise AssertionError(f"{words}\n{run.stdout}\n{run.stderr}")
+    return run.stdout
+
+
+class Package(unittest.TestCase):
+    def setUp(self):
+        self.folder = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-package-"))
+        self.addCleanup(shutil.rmtree, self.folder, ignore_errors=True)
+
+    def check_command(self, root):
+        command = root / "bin/rillclock"
+        do(command, "demo", self.folder / "town")
+        self.assertIn("Weir", do(command, "run", self.folder / "town/study.toml"))
+        self.assertIn("'Weir' drains 93.91 ha", (self.folder / "town/result/report.html").read_text(encoding="utf-8").replace("&#39;", "'"))
+        self.assertIn(".SH EXIT STATUS", (root / "share/man/man1/rillclock.1").read_text())
+        for file in ("bash-completion/completions/rillclock", "zsh/site-functions/_rillclock", "fish/vendor_completions.d/rillclock.fish"):
+            self.assertIn("explain", (root / "share" / file).read_text())
+
+    def test_installed_it_runs_and_another_project_finds_and_uses_it(self):
+        root = self.folder / "root"
+        do("cmake", "--install", BUILD, "--prefix", root)
+        self.check_command(root)
+        other = self.folder / "other"
+        do("cmake", "-S", SOURCE / "tests/package/uses_library", "-B", other, "-G", "Ninja", f"-DCMAKE_PREFIX_PATH={root}",
+           f"-DCMAKE_CXX_COMPILER_LAUNCHER={LAUNCHER}")
+        do("cmake", "--build", other)
+        self.assertIn("'Weir' drains 93.91 ha", do(other / "uses_rillclock", self.folder / "town/study.toml"))
+
+    def test_the_debian_package_holds_the_command_and_says_what_it_needs(self):
+        do("cpack", "--config", BUILD / "CPackConfig.cmake", "-B", self.folder / "packed", cwd=self.folder)
+        package = next((self.folder / "packed").glob("rillclock_*.deb"))
+        needs = do("dpkg-deb", "--field", package, "Depends")
+        for name in ("libgdal", "libproj", "proj-data", "libc6"):
+            self.assertIn(name, needs)
+        root = self.folder / "clean"
+        do("dpkg-deb", "--extract", package, root)
+        self.check_command(root / "usr")
+
+
+if __name__ == "__main__":
+    unittest.main()
