@@ -86,16 +86,12 @@ public:
         return static_cast<int>(*whole);
     }
 
-    /// The place of the text among the words that are served; `later` are words of the study file that are not.
-    [[nodiscard]] std::size_t choice(const std::vector<std::string_view>& served,
-                                     const std::vector<std::string_view>& later = {}) const {
+    /// The place of the text among the words that are served.
+    [[nodiscard]] std::size_t choice(const std::vector<std::string_view>& served) const {
         for (std::size_t place = 0; place < served.size(); ++place)
             if (text() == served[place]) return place;
         std::string list;
         for (const auto word : served) list += (list.empty() ? "" : " or ") + ("\"" + std::string(word) + "\"");
-        for (const auto word : later)
-            if (text() == word)
-                throw fault("is \"" + text() + "\", which this version of rillclock does not know; write " + list);
         throw fault("is \"" + text() + "\"; write " + list + did_you_mean(text(), served));
     }
 

@@ -173,7 +173,9 @@ class Report(CommandTest):
     def test_printing_gives_the_points_that_were_asked_for_a_page_each_or_more(self):
         self.open()
         for number in ("7", "9"):
-            self.driver.find_element(By.CSS_SELECTOR, f'#points input[value="{number}"]').click()
+            box = self.driver.find_element(By.CSS_SELECTOR, f'#points input[value="{number}"]')
+            self.driver.execute_script("arguments[0].scrollIntoView({block: 'center', inline: 'center'})", box)
+            box.click()
         import base64
         pdf = self.folder / "report.pdf"
         pdf.write_bytes(base64.b64decode(self.driver.execute_cdp_cmd("Page.printToPDF", {"paperWidth": 8.27, "paperHeight": 11.69})["data"]))

@@ -198,14 +198,6 @@ TEST_CASE("what this version does not compute is refused and not passed over") {
     }
 }
 
-TEST_CASE("words of a key that this version does not compute are refused") {
-    for (const auto* text :
-         {"[output]\nrasters = \"cog\""}) {
-        INFO(text);
-        CHECK_THROWS_WITH(read(text), Contains("this version of rillclock does not") && Contains("line 2, column "));
-    }
-}
-
 TEST_CASE("a word that is not among a key's words is refused with them") {
     CHECK_THROWS_WITH(read("report_units = \"uss\"\n"), Contains("write \"us\" or \"si\"; did you mean us?"));
     CHECK_THROWS_WITH(read("[terrain]\nelevation_unit = \"feet\"\n"),
