@@ -36,7 +36,7 @@ std::string percent(double share) {
 
 RainZoneShapes read_rain_zones(const Study& study, const ReferenceSystem& system) {
     const ZoneStudy& stated = study.rain.zones;
-    ShapeFile file = read_shapes(located(study, *stated.file), {.role = "rain zones", .kinds = ShapeKinds::polygons, .layer_key = "zones_layer", .text_field = stated.field}, system);
+    ShapeFile file = read_shapes(located(study, *stated.file), {.role = "rain zones", .kinds = ShapeKinds::polygons, .layer = stated.layer, .layer_key = "zones_layer", .text_field = stated.field}, system);
     RainZoneShapes zones{.files = {}, .parts = {}, .notices = file.notices};
     for (std::size_t i = 0; i < file.polygons.size(); ++i) {
         if (file.polygon_texts[i].empty())

@@ -87,6 +87,9 @@ void refuse_layers_without_file(const Study& study) {
 
 void refuse_contradictory_zones(const Study& study) {
     const RainStudy& rain = study.rain;
+    if (!rain.zones.file && rain.zones.layer)
+        throw input_error(name_of(study) +
+                          " states zones_layer but no file of rain zones; add zones = \"zones.gpkg\" under [rain], or leave it out");
     if (!rain.zones.file && rain.zones.field != ZoneStudy{}.field)
         throw input_error(name_of(study) +
                           " states zone_field, which names a field of the polygons of rain zones, but gives none; add "

@@ -67,6 +67,7 @@ constexpr std::array keys{
              "which block of an Atlas 14 file is read: estimate, upper bound or lower bound"},
     StudyKey{"rain.zones", R"("zones.gpkg")", "none: one rain everywhere",
              "polygons that name a rain file each; a point has the rain of the greatest share of its catchment"},
+    StudyKey{"rain.zones_layer", R"("zones")", "the only one", "layer of the file; asked for where it has several"},
     StudyKey{"rain.zone_field", R"("rain")", "rain", "field of the polygons that names their rain file"},
     StudyKey{"rain.formula", R"("i[in/h] = 45 T^0.2 / (t[min] + 10)^0.8")", "none",
              "the same as a formula with T, or one formula a return period under [rain.formula]"},

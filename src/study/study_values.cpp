@@ -319,6 +319,7 @@ constexpr std::array setters{
                s.rain.block = static_cast<Atlas14Block>(v.choice({"estimate", "upper bound", "lower bound"}));
            }},
     Setter{"rain.zones", [](Study& s, const Stated& v) { s.rain.zones.file = v.text(); }},
+    Setter{"rain.zones_layer", [](Study& s, const Stated& v) { s.rain.zones.layer = v.text(); }},
     Setter{"rain.zone_field", [](Study& s, const Stated& v) { s.rain.zones.field = v.text(); }},
     Setter{"rain.formula", add_formula},
     Setter{"rain.formula_from",

@@ -65,6 +65,7 @@ class Zones(CommandTest):
                 self.assertEqual(zoned[name]["storms"], alone["storms"])
                 self.assertEqual(zoned[name]["governing_path"], alone["governing_path"])
                 self.assertEqual(zoned[name]["methods"], alone["methods"])
+                self.assertEqual(zoned[name]["network"], alone["network"])
 
     def test_rasters_and_segments_are_under_the_rain_of_the_point(self):
         self.zones((0, 60, 0, 25, "hill.csv"), (0, 60, 25, 50, "valley.csv"))

@@ -90,6 +90,7 @@ struct StatedRainFormula {
 /// Polygons that name a rain file each.
 struct ZoneStudy {
     std::optional<std::string> file = {};  ///< relative to the study's folder; so are the rain files that it names
+    std::optional<std::string> layer = {};  ///< needed only where the file has several
     std::string field = "rain";            ///< that names a polygon's rain file
 };
 

@@ -52,7 +52,8 @@ struct TileDesk {
     [[nodiscard]] StepTime time_to_root(Local cell) const { return {fixed[cell], storm[cell]}; }
 };
 
-/// Travel times over tiles: all that travel_field.hpp computes cell by cell in the plain way, in passes over tiles, bit for bit.
+/// Travel times over tiles: all that the plain travel field (tests/reference/plain) computes cell by cell, in passes over tiles,
+/// bit for bit.
 ///
 /// pass               local work                                            kept a cell
 /// 1 areas            down: area, distance from the divide; up: distance    –

@@ -77,6 +77,7 @@ const std::map<std::string, Kind> kinds{
     {"rain.file", Kind::text},
     {"rain.block", Kind::word},
     {"rain.zones", Kind::text},
+    {"rain.zones_layer", Kind::text},
     {"rain.zone_field", Kind::text},
     {"rain.formula", Kind::formula},
     {"rain.formula_from", Kind::duration_or_zero},

@@ -316,6 +316,7 @@ TEST_CASE("rain may be read from a block of its file and from the files of zones
     CHECK(read("[rain]\nzones = \"z.gpkg\"").rain.zones.field == "rain");
     CHECK(read("[rain]\nzones = \"z.gpkg\"").rain.is_by_duration());
     CHECK_THROWS_WITH(parse_study(smallest + "zone_field = \"a\"", "town.toml"), Contains("add zones = \"zones.gpkg\""));
+    CHECK_THROWS_WITH(parse_study(smallest + "zones_layer = \"a\"", "town.toml"), Contains("add zones = \"zones.gpkg\""));
     CHECK_THROWS_WITH(parse_study(smallest + "block = \"estimate\"", "town.toml"), Contains("add file = \"atlas14.csv\""));
     CHECK_THROWS_WITH(read("rain.block = \"upper\""), Contains("write \"estimate\" or \"upper bound\" or \"lower bound\""));
 }
