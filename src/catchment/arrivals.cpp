@@ -13,15 +13,13 @@ bool exceeds_in_both(const StepTime& a, const StepTime& b) { return a.fixed >= b
 }  // namespace
 
 void Front::add(const Head& head) {
-    for (Head& kept : heads_) {
-        if (kept.time == head.time) {
-            kept.cell = std::min(kept.cell, head.cell);
-            return;
-        }
-        if (exceeds_in_both(kept.time, head.time)) return;
+    for (const Head& kept : heads_) {
+        const bool takes_its_place = kept.time == head.time && head.cell < kept.cell;
+        if (!takes_its_place && exceeds_in_both(kept.time, head.time)) return;
     }
     std::erase_if(heads_, [&](const Head& kept) { return exceeds_in_both(head.time, kept.time); });
-    heads_.push_back(head);
+    const auto place = std::lower_bound(heads_.begin(), heads_.end(), head.cell, [](const Head& kept, Cell cell) { return kept.cell < cell; });
+    heads_.insert(place, head);
 }
 
 void Front::add(const Front& other) {

@@ -62,17 +62,22 @@ StepTime DrainageNetwork::way_time(PointNumber number) const {
     return next == 0 ? StepTime{} : to_root(number) - to_root(next);
 }
 
+FixedTime DrainageNetwork::own_time(PointNumber number, double storm_factor) const {
+    const FixedTime from_point = fixed_under(to_root(number), storm_factor);
+    FixedTime latest = from_point;
+    for (const Head& head : points_[number - 1].own.heads()) {
+        latest = std::max(latest, fixed_under(head.time + shift(number), storm_factor));
+    }
+    return latest - from_point;
+}
+
 PointArrivals DrainageNetwork::arrivals_at(PointNumber number, double storm_factor) const {
     const FixedTime here = fixed_under(to_root(number), storm_factor);
     PointArrivals at;
     for (const PointNumber subarea : above(number)) {
-        const NetworkPoint& point = points_[subarea - 1];
-        FixedTime latest = fixed_under(to_root(subarea), storm_factor);
-        const FixedTime from_point = latest;
-        for (const Head& head : point.own.heads()) {
-            latest = std::max(latest, fixed_under(head.time + shift(subarea), storm_factor));
-        }
-        at.subareas.push_back({.subarea = subarea, .own = latest - from_point, .way = from_point - here});
+        at.subareas.push_back({.subarea = subarea,
+                               .own = own_time(subarea, storm_factor),
+                               .way = fixed_under(to_root(subarea), storm_factor) - here});
     }
     settle_last(at);
     return at;

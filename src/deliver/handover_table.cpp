@@ -1,5 +1,3 @@
-#include <algorithm>
-
 #include "rillclock/deliver/report_units.hpp"
 #include "rillclock/deliver/tables.hpp"
 #include "table_writer.hpp"
@@ -17,17 +15,9 @@ std::string own_parts_text(const StudyResult& result, const Outlet& outlet) {
     const PointEdit& edit = result.network.edits[outlet.number - 1];
     if (edit.stated != nullptr && edit.stated->time) return parts_text({.fixed = to_fixed(in_seconds(*edit.stated->time))});
     if (edit.stated != nullptr && edit.stated->restated) return parts_text(*edit.stated->restated);
-    // A front holds its heads in the order in which tiles were done.
-    std::vector<Head> heads = outlet.own_front.heads();
-    std::sort(heads.begin(), heads.end(), [](const Head& a, const Head& b) { return a.cell < b.cell; });
     std::string text;
-    for (const Head& head : heads) text += (text.empty() ? "" : "; ") + parts_text(head.time - outlet.time_to_root);
+    for (const Head& head : outlet.own_front.heads()) text += (text.empty() ? "" : "; ") + parts_text(head.time - outlet.time_to_root);
     return text;
-}
-
-/// The own subarea among those at the point itself.
-const SubareaArrival& own_arrival(const PointArrivals& at, PointNumber number) {
-    return *std::find_if(at.subareas.begin(), at.subareas.end(), [&](const SubareaArrival& a) { return a.subarea == number; });
 }
 
 void add_time_columns(const StudyResult& result, TableWriter<Outlet>& table) {
@@ -35,7 +25,7 @@ void add_time_columns(const StudyResult& result, TableWriter<Outlet>& table) {
     const auto factor = [=](const Outlet& o) { return point(o).raster_storm().storm_factor; };
     table.column("storm_factor", [=](const Outlet& o) { return significant(factor(o), 12); })
         .column("own_time_s", [=, &result](const Outlet& o) {
-            return seconds_text(own_arrival(result.network.network.arrivals_at(o.number, factor(o)), o.number).own);
+            return seconds_text(result.network.network.own_time(o.number, factor(o)));
         })
         .column("next_point", [=, &result](const Outlet& o) { return point(o).next == 0 ? "" : point_name(result, point(o).next); })
         .column("way_time_s", [=](const Outlet& o) {

@@ -3,25 +3,13 @@
 #include <string>
 #include <string_view>
 
+#include "rillclock/core/markup_text.hpp"
 #include "rillclock/core/number_text.hpp"
 
 namespace rillclock {
 
 /// Names are anything a file may hold: nothing of them becomes markup, in texts and in attributes alike.
-inline std::string html_text(std::string_view text) {
-    std::string safe;
-    for (const char c : text) {
-        switch (c) {
-            case '&': safe += "&amp;"; break;
-            case '<': safe += "&lt;"; break;
-            case '>': safe += "&gt;"; break;
-            case '"': safe += "&quot;"; break;
-            case '\'': safe += "&#39;"; break;
-            default: safe += static_cast<unsigned char>(c) < 0x20U && c != '\n' ? ' ' : c;
-        }
-    }
-    return safe;
-}
+inline std::string html_text(std::string_view text) { return markup_text(text, LineBreaks::kept); }
 
 /// Minutes as they are read: three digits, no more than a decimal.
 inline std::string shown_minutes(double s) {

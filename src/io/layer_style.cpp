@@ -1,5 +1,6 @@
 #include "layer_style.hpp"
 
+#include "rillclock/core/markup_text.hpp"
 #include "rillclock/core/number_text.hpp"
 
 namespace rillclock {
@@ -87,20 +88,7 @@ std::string qml_renderer(const LayerDescription& layer) {
 
 }  // namespace
 
-std::string xml_text(std::string_view text) {
-    std::string safe;
-    for (const char c : text) {
-        switch (c) {
-            case '&': safe += "&amp;"; break;
-            case '<': safe += "&lt;"; break;
-            case '>': safe += "&gt;"; break;
-            case '"': safe += "&quot;"; break;
-            case '\'': safe += "&#39;"; break;
-            default: safe += static_cast<unsigned char>(c) < 0x20U ? ' ' : c;
-        }
-    }
-    return safe;
-}
+std::string xml_text(std::string_view text) { return markup_text(text, LineBreaks::to_spaces); }
 
 std::string style_sld(const LayerDescription& layer) {
     std::string rules;

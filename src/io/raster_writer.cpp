@@ -196,11 +196,10 @@ void RasterWriter::write_blocks(int level, std::int64_t block_row, std::span<con
     const auto columns = static_cast<std::size_t>(shape.columns);
     const auto width = static_cast<std::size_t>(shape.block_columns);
     block_.resize(width * static_cast<std::size_t>(shape.block_rows) * cell);
+    const bool lacks_rows = rows.size() < columns * static_cast<std::size_t>(shape.block_rows) * cell;
     for (std::size_t left = 0; left < columns; left += width) {
         const std::size_t count = std::min(width, columns - left);
-        if (count * cell * static_cast<std::size_t>(shape.block_rows) < block_.size() || rows.size() < columns * cell * static_cast<std::size_t>(shape.block_rows)) {
-            std::fill(block_.begin(), block_.end(), std::byte{0});  // what lies beyond the raster
-        }
+        if (count < width || lacks_rows) std::fill(block_.begin(), block_.end(), std::byte{0});  // what lies beyond the raster
         for (std::size_t row = 0; row * columns * cell < rows.size(); ++row)
             std::memcpy(&block_[row * width * cell], &rows[(row * columns + left) * cell], count * cell);
         const CPLErr result = bands_[static_cast<std::size_t>(level)]->WriteBlock(static_cast<int>(left / width),

@@ -15,6 +15,7 @@
 #include "rillclock/rainfall/return_periods.hpp"
 #include "rillclock/study/uncertain_inputs.hpp"
 #include "mapped_flow.hpp"
+#include "rain_zones.hpp"
 #include "read_soil.hpp"
 #include "sentences.hpp"
 #include "study_data.hpp"
@@ -96,7 +97,7 @@ private:
     void rain() {
         // What is missing altogether has been said already.
         if (!study_.rain.two_year_24_hour && !study_.rain.is_by_duration()) return;
-        const StudyRain rain = read_rain(study_);
+        const StudyRain rain = read_rain(study_, read_rain_zones(study_).files);
         note(rain.notices);
         if (rain.source && rain.is_everywhere) report_.facts.push_back("rain: " + sentence(rain.source->echo));
         for (const ZoneRain& zone : rain.zones) report_.facts.push_back("rain zone: " + sentence(zone.source.echo));
@@ -151,14 +152,14 @@ private:
     }
 
     void points() {
-        if (!study_.points.file) {
+        const std::optional<StatedPoints> stated = read_stated_points(study_, terrain_->system);
+        if (!stated) {
             report_.facts.emplace_back("points: none stated, so they will stand where water leaves the data");
             return;
         }
-        const StatedPoints stated = read_stated_points(study_, terrain_->system);
-        note(stated.notices);
+        note(stated->notices);
         std::size_t inside = 0;
-        for (const StatedPoint& point : stated.points) {
+        for (const StatedPoint& point : stated->points) {
             if (terrain_->grid().at(point.place)) {
                 ++inside;
             } else {
@@ -167,7 +168,7 @@ private:
                                            .point = point.name, .place = point.place});
             }
         }
-        report_.facts.push_back("points: " + std::to_string(stated.points.size()) + ", " + std::to_string(inside) +
+        report_.facts.push_back("points: " + std::to_string(stated->points.size()) + ", " + std::to_string(inside) +
                                 " of them within the elevations");
         if (inside == 0) report_.problems.push_back("none of the points in '" + *study_.points.file +
                                                     "' lies within the elevations; check their reference system");

@@ -34,9 +34,13 @@ std::string percent(double share) {
 
 }  // namespace
 
-RainZoneShapes read_rain_zones(const Study& study, const ReferenceSystem& system) {
+RainZoneShapes read_rain_zones(const Study& study) {
     const ZoneStudy& stated = study.rain.zones;
-    ShapeFile file = read_shapes(located(study, *stated.file), {.role = "rain zones", .kinds = ShapeKinds::polygons, .layer = stated.layer, .layer_key = "zones_layer", .text_field = stated.field}, system);
+    if (!stated.file) return {};
+    ShapeFile file = read_shapes(located(study, *stated.file),
+                                 {.role = "rain zones", .kinds = ShapeKinds::polygons, .layer = stated.layer, .layer_key = "zones_layer",
+                                  .text_field = stated.field},
+                                 open_elevation_of(study).system);
     RainZoneShapes zones{.files = {}, .parts = {}, .notices = file.notices};
     for (std::size_t i = 0; i < file.polygons.size(); ++i) {
         if (file.polygon_texts[i].empty())
@@ -50,13 +54,12 @@ RainZoneShapes read_rain_zones(const Study& study, const ReferenceSystem& system
     return zones;
 }
 
-RainZoneCells rain_zone_cells(const Study& study, const TerrainData& terrain) {
+RainZoneCells rain_zone_cells(const Study& study, const RainZoneShapes& shapes, const TerrainData& terrain) {
     if (!study.rain.zones.file) return {};
-    const RainZoneShapes zones = read_rain_zones(study, terrain.system);
-    RainZoneCells cells{.zone = Raster<std::uint8_t>(terrain.grid.rows, terrain.grid.columns), .notices = zones.notices};
+    RainZoneCells cells{.zone = Raster<std::uint8_t>(terrain.grid.rows, terrain.grid.columns), .notices = shapes.notices};
     std::int64_t claimed = 0;
     std::int64_t twice = 0;
-    for (const RainZoneShapes::Part& part : zones.parts) {
+    for (const RainZoneShapes::Part& part : shapes.parts) {
         const auto number = static_cast<std::uint8_t>(part.zone);
         for_each_run_within(part.polygon, terrain.grid, [&](Cell first, Cell end) {
             claimed += end - first;

@@ -19,9 +19,9 @@ struct RainZoneShapes {
     Notices notices;
 };
 
-/// Reads them in the coordinates of a system. Throws an input error where the file cannot be used, a polygon names no
-/// rain file, or there are more than 255 zones.
-[[nodiscard]] RainZoneShapes read_rain_zones(const Study& study, const ReferenceSystem& system);
+/// Reads them in the coordinates of the elevations; nothing where the study has none. Throws an input error where the file cannot be used, a
+/// polygon names no rain file, or there are more than 255 zones.
+[[nodiscard]] RainZoneShapes read_rain_zones(const Study& study);
 
 /// The zone of each cell, 0 outside of all; where polygons of two zones overlap, the one that comes first in the file,
 /// and a notice. No cells where the study has no zones: one byte a cell else. Throws an input error where no polygon
@@ -30,7 +30,7 @@ struct RainZoneCells {
     Raster<std::uint8_t> zone;
     Notices notices;
 };
-[[nodiscard]] RainZoneCells rain_zone_cells(const Study& study, const TerrainData& terrain);
+[[nodiscard]] RainZoneCells rain_zone_cells(const Study& study, const RainZoneShapes& shapes, const TerrainData& terrain);
 
 /// Throws an input error for a point whose catchment lies outside of all zones while there is no rain for that.
 void require_rain(const StudyRain& rain, const std::vector<Outlet>& outlets);

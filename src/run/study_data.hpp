@@ -1,6 +1,7 @@
 #pragma once
 
 #include <map>
+#include <optional>
 #include <string>
 #include <string_view>
 
@@ -60,12 +61,13 @@ struct StatedPoints {
     std::map<std::string, PointLumpInputs> lump_inputs;   ///< by name: what fields of the file state for the lump methods
     Notices notices;
 };
-[[nodiscard]] StatedPoints read_stated_points(const Study& study, const ReferenceSystem& system);
-[[nodiscard]] PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const TiledTravel& travel,
-                                         const TerrainData& terrain);
+/// Nothing where the study names no file of points.
+[[nodiscard]] std::optional<StatedPoints> read_stated_points(const Study& study, const ReferenceSystem& system);
+[[nodiscard]] PlacedPoints settle_points(const std::optional<StatedPoints>& stated, const ResolvedStudy& resolved,
+                                         const TiledTravel& travel, const TerrainData& terrain);
 [[nodiscard]] DataFacts facts_of(const ElevationFormat& format, const Ground& ground);
-/// Reads the rain of a study, from its file and those of its zones if it names any.
-[[nodiscard]] StudyRain read_rain(const Study& study);
+/// Reads the rain of a study, from its file if it names one, and from those of its zones.
+[[nodiscard]] StudyRain read_rain(const Study& study, const std::vector<std::string>& zone_files);
 /// Reads the pipes and overrides of a study, where it names any.
 [[nodiscard]] StatedEdits read_edits(const Study& study);
 /// Finds the own times that follow from stated sheet lengths and roughness.

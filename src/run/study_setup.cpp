@@ -7,7 +7,6 @@
 #include "rillclock/io/point_file.hpp"
 #include "rillclock/io/text_file.hpp"
 #include "mapped_flow.hpp"
-#include "rain_zones.hpp"
 #include "study_data.hpp"
 
 namespace rillclock {
@@ -49,7 +48,8 @@ PointLumpInputs lump_inputs_of(const Study& study, const std::vector<LumpInput>&
 
 }  // namespace
 
-StatedPoints read_stated_points(const Study& study, const ReferenceSystem& system) {
+std::optional<StatedPoints> read_stated_points(const Study& study, const ReferenceSystem& system) {
+    if (!study.points.file) return std::nullopt;
     PointOptions options;
     options.layer = study.points.layer;
     options.name_field = study.points.name;
@@ -64,14 +64,11 @@ StatedPoints read_stated_points(const Study& study, const ReferenceSystem& syste
     return stated;
 }
 
-PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, const TiledTravel& travel,
+PlacedPoints settle_points(const std::optional<StatedPoints>& stated, const ResolvedStudy& resolved, const TiledTravel& travel,
                            const TerrainData& terrain) {
-    if (!study.points.file) {
-        return find_points(travel.roots(), terrain.grid, resolved.auto_area);
-    }
-    const StatedPoints stated = read_stated_points(study, terrain.system);
+    if (!stated) return find_points(travel.roots(), terrain.grid, resolved.auto_area);
     std::vector<Cell> cells;
-    for (const StatedPoint& point : stated.points) {
+    for (const StatedPoint& point : stated->points) {
         const std::vector<Cell> near = cells_near(point.place, terrain.grid, terrain.ground, resolved.move_within);
         cells.insert(cells.end(), near.begin(), near.end());
     }
@@ -80,16 +77,15 @@ PlacedPoints settle_points(const Study& study, const ResolvedStudy& resolved, co
         const auto found = areas.find(cell);
         return found == areas.end() ? std::nullopt : std::optional(found->second);
     };
-    PlacedPoints placed = place_points(stated.points, {.grid = terrain.grid, .ground = terrain.ground, .area = area}, resolved.move_within);
-    placed.notices.insert(placed.notices.begin(), stated.notices.begin(), stated.notices.end());
+    PlacedPoints placed = place_points(stated->points, {.grid = terrain.grid, .ground = terrain.ground, .area = area}, resolved.move_within);
+    placed.notices.insert(placed.notices.begin(), stated->notices.begin(), stated->notices.end());
     return placed;
 }
 
-StudyRain read_rain(const Study& study) {
+StudyRain read_rain(const Study& study, const std::vector<std::string>& zone_files) {
     const std::string text = study.rain.file ? read_text(located(study, *study.rain.file)) : std::string();
-    if (!study.rain.zones.file) return study_rain(study, text);
     std::vector<ZoneText> zones;
-    for (const std::string& file : read_rain_zones(study, open_elevation_of(study).system).files) {
+    for (const std::string& file : zone_files) {
         zones.push_back({.file = file, .text = read_text(located(study, file))});
     }
     return study_rain(study, text, zones);

@@ -16,14 +16,6 @@ constexpr FixedTime not_overland = -(FixedTime{1} << 44);
 /// The greater storm factor over the reference.
 constexpr double tangent = 1.0 + 1.0 / 1024;
 
-/// Sums and greatest arrivals at the exits of all tiles.
-struct Borders {
-    explicit Borders(const TiledForest& forest) : runoff_area(forest), arrival(forest), arrival_more(forest) {}
-    DownBorders<std::int64_t> runoff_area;
-    DownBorders<std::int64_t> arrival;        ///< under the reference storm
-    DownBorders<std::int64_t> arrival_more;   ///< under the greater factor
-};
-
 /// The weights of one tile's cells.
 struct Weights {
     const TiledTravel& travel;
@@ -51,15 +43,40 @@ struct Weights {
     }
 };
 
+/// What is swept over one tile.
+struct NetworkFields {
+    TileValues<std::int64_t> runoff_area;
+    TileValues<std::int64_t> arrival;
+    TileValues<std::int64_t> arrival_more;
+};
+
+/// Sums and greatest arrivals at the exits of all tiles.
+struct Borders {
+    explicit Borders(const TiledForest& forest) : runoff_area(forest), arrival(forest), arrival_more(forest) {}
+
+    /// Calls `sweep` with the parts of all three in a sweep over one tile.
+    template <class Sweep>
+    void over_tile(const Weights& weights, NetworkFields& fields, Sweep sweep) {
+        sweep(runoff_area.part(weights.runoff_channel(), fields.runoff_area), arrival.part(weights.arrival_channel(1.0), fields.arrival),
+              arrival_more.part(weights.arrival_channel(tangent), fields.arrival_more));
+    }
+
+    DownBorders<std::int64_t> runoff_area;
+    DownBorders<std::int64_t> arrival;        ///< under the reference storm
+    DownBorders<std::int64_t> arrival_more;   ///< under the greater factor
+};
+
 using RunoffChannel = decltype(std::declval<Weights>().runoff_channel());
 using ArrivalChannel = decltype(std::declval<Weights>().arrival_channel(1.0));
 
 template <class Look>
 void for_all_tiles(const TiledTravel& travel, Look look) {
     Workspaces<TileDesk> desks;
-    for_each_tile(travel.ground().forest, travel.executor(), desks, [&](Tile tile, TileDesk& desk) {
-        travel.read_tile(tile, desk);
-        look(tile, desk);
+    travel.executor().for_each(travel.ground().forest.tiles().count(), [&](std::size_t number) {
+        const auto tile = static_cast<Tile>(number);
+        const auto desk = desks.lease();
+        travel.read_tile(tile, *desk);
+        look(tile, *desk);
     });
 }
 
@@ -96,12 +113,8 @@ void ChannelNetwork::look_at_tiles(const TiledTravel& travel, std::span<const do
     Borders borders(travel.ground().forest);
     for_all_tiles(travel, [&](Tile tile, TileDesk& desk) {
         const Weights weights{travel, is_in_, runoff, desk};
-        std::vector<std::int64_t> area;
-        std::vector<std::int64_t> arrival;
-        std::vector<std::int64_t> more;
-        collect_down(tile, desk.flow, borders.runoff_area.part(weights.runoff_channel(), area),
-                     borders.arrival.part(weights.arrival_channel(1.0), arrival),
-                     borders.arrival_more.part(weights.arrival_channel(tangent), more));
+        NetworkFields fields;
+        borders.over_tile(weights, fields, [&](const auto&... parts) { collect_down(tile, desk.flow, parts...); });
     });
     borders.runoff_area.solve<RunoffChannel>();
     borders.arrival.solve<ArrivalChannel>();
@@ -109,20 +122,16 @@ void ChannelNetwork::look_at_tiles(const TiledTravel& travel, std::span<const do
     std::mutex mutex;
     for_all_tiles(travel, [&](Tile tile, TileDesk& desk) {
         const Weights weights{travel, is_in_, runoff, desk};
-        std::vector<std::int64_t> area;
-        std::vector<std::int64_t> arrival;
-        std::vector<std::int64_t> more;
-        fill_down(tile, desk.flow, borders.runoff_area.part(weights.runoff_channel(), area),
-                  borders.arrival.part(weights.arrival_channel(1.0), arrival),
-                  borders.arrival_more.part(weights.arrival_channel(tangent), more));
+        NetworkFields fields;
+        borders.over_tile(weights, fields, [&](const auto&... parts) { fill_down(tile, desk.flow, parts...); });
         const std::lock_guard lock(mutex);
         for (const Local local : desk.flow.order()) {
             if (!is_in_[desk.flow.cell(local)]) continue;
             cells_.push_back({.cell = desk.flow.cell(local),
                               .step = travel.step_view(desk, local),
                               .flow_distance = desk.flow_distance[local],
-                              .overland = parts_of(arrival[local], more[local], travel.rules().sheet.storm_factor),
-                              .runoff_area_m2 = from_fixed_area(area[local])});
+                              .overland = parts_of(fields.arrival[local], fields.arrival_more[local], travel.rules().sheet.storm_factor),
+                              .runoff_area_m2 = from_fixed_area(fields.runoff_area[local])});
         }
     });
 }

@@ -3,18 +3,16 @@
 import filecmp
 import json
 import os
-import pathlib
 import shutil
 import signal
 import subprocess
 import sys
-import tempfile
 import unittest
 
 import numpy as np
 from osgeo import gdal, osr
 
-from support import COMMAND, CommandTest, VERIFY, system_of, table
+from support import COMMAND, DemoTest, VERIFY, system_of, table
 
 DEMO_POINTS = ["Spring_wood_ford", "Mill_pond_outlet", "Side_valley_mouth", "Market_footbridge", "Tramway_bank", "Mill_bridge", "Weir",
                "School_inlet", "Market_inlet", "Orchard_inlet", "Mill_Lane_inlet"]
@@ -31,15 +29,8 @@ def files_under(folder):
     return {str(path.relative_to(folder)) for path in folder.rglob("*") if path.is_file()}
 
 
-class Demo(CommandTest):
-    """The demo, run once; each test has a copy of it in its own folder."""
-
-    @classmethod
-    def setUpClass(cls):
-        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-demo-"))
-        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
-        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
-        cls.said = subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True, text=True)
+class Demo(DemoTest):
+    """Each test has a copy of the demo in its own folder."""
 
     def setUp(self):
         super().setUp()

@@ -2,20 +2,17 @@
 """The layers for a GIS: what stands in study.gpkg and isochrones.geojson, held to the rasters and to the standards."""
 import json
 import os
-import pathlib
 import re
-import shutil
 import sqlite3
 import subprocess
 import sys
-import tempfile
 import unittest
 import xml.etree.ElementTree as xml
 
 import numpy as np
 from osgeo import gdal, ogr
 
-from support import COMMAND, CommandTest, hills, table, write_points
+from support import CommandTest, DemoTest, hills, table, write_points
 
 sys.path.insert(0, "/usr/lib/python3/dist-packages")
 from osgeo_utils.samples import validate_cloud_optimized_geotiff, validate_gpkg  # noqa: E402
@@ -44,13 +41,10 @@ def burnt(layer, raster, query, value_of=lambda feature: 1):
     return values.ReadAsArray(), count.ReadAsArray()
 
 
-class Layers(CommandTest):
+class Layers(DemoTest):
     @classmethod
     def setUpClass(cls):
-        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-layers-"))
-        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
-        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
-        subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True)
+        super().setUpClass()
         cls.result_folder = cls.kept / "town/result"
         cls.package = cls.result_folder / "study.gpkg"
 

@@ -3,11 +3,8 @@
 import csv
 import json
 import os
-import pathlib
 import re
-import shutil
 import subprocess
-import tempfile
 import time
 import unittest
 
@@ -16,7 +13,7 @@ from selenium.webdriver.chrome.service import Service
 from selenium.webdriver.common.by import By
 from selenium.webdriver.common.keys import Keys
 
-from support import COMMAND, CommandTest, hills, table
+from support import COMMAND, CommandTest, DemoTest, hills, table
 
 MOST_BYTES = 10_000_000
 
@@ -34,15 +31,12 @@ def browser(width=1400, height=900, dark=False):
     return webdriver.Chrome(service=Service("/usr/bin/chromedriver"), options=options)
 
 
-class Report(CommandTest):
+class Report(DemoTest):
     """One demo result and one browser for all."""
 
     @classmethod
     def setUpClass(cls):
-        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-report-"))
-        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
-        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
-        subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True)
+        super().setUpClass()
         cls.result_folder = cls.kept / "town/result"
         cls.page = (cls.result_folder / "report.html").as_uri()
         cls.text = (cls.result_folder / "report.html").read_text(encoding="utf-8")

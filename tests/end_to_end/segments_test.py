@@ -4,9 +4,7 @@ import collections
 import math
 import unittest
 
-import numpy as np
-
-from support import CommandTest, FOOT, INCH, hills, table
+from support import CommandTest, FOOT, INCH, table
 
 GRAVITY = {"m": 9.80665, "ft": 9.80665 / FOOT}
 # Manning's 1 in metres is 1.4859 in feet; 0.007 h is for feet and inches.
@@ -104,14 +102,7 @@ class Segments(CommandTest):
 
 class OpenWater(CommandTest):
     def test_a_row_across_a_pond_runs_at_the_celerity_of_its_depth(self):
-        self.small_study()
-        ground = hills()
-        ground[15:25, 15:35] = ground[15:25, 15:35].min()
-        self.ground(values=ground)
-        codes = np.ones(ground.shape, np.uint8)
-        codes[15:25, 15:35] = 4
-        self.cover(values=codes)
-        self.done("run", "--elevation", "dem.tif", "--cover", "cover.tif", "--book", "book.csv", "--rain", "3.6 in")
+        self.run_with_pond()
         found = [Row(fields, "ft") for fields in table(self.folder / "result/tables/segments.csv") if fields["regime"] == "water"]
         found = [row for row in found if row.number("length") > 0]
         self.assertTrue(found)

@@ -6,9 +6,7 @@ import operator
 import re
 import unittest
 
-import numpy as np
-
-from support import CommandTest, FOOT, INCH, SOURCE, hills, table
+from support import CommandTest, FOOT, INCH, SOURCE, table
 
 TOLERANCE = 1e-3
 CALCULATION = re.compile(r"^ {4}(\w[\w ]*?) = (.+) = (-?[0-9.]+) ([\w/]+)$")
@@ -192,14 +190,7 @@ class Sheets(CommandTest):
                 self.assertAlmostEqual(minutes / times[method], 1, delta=2e-4 + 5e-4 / times[method], msg=method)
 
     def test_open_water_and_ponded_ground_have_lines_that_hold(self):
-        self.small_study()
-        ground = hills()
-        ground[15:25, 15:35] = ground[15:25, 15:35].min()
-        self.ground(values=ground)
-        codes = np.ones(ground.shape, np.uint8)
-        codes[15:25, 15:35] = 4
-        self.cover(values=codes)
-        self.done("run", "--elevation", "dem.tif", "--cover", "cover.tif", "--book", "book.csv", "--rain", "3.6 in")
+        self.run_with_pond()
         text = "".join(self.sheet(row["name"]) for row in table(self.folder / "result/tables/outlets.csv"))
         self.check_every_line(text, "pond")
         self.assertIn("water over Pond", text)

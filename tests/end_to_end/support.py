@@ -136,5 +136,27 @@ class CommandTest(unittest.TestCase):
         self.book()
         return ["--elevation", "dem.tif", "--cover", "cover.tif", "--book", "book.csv", "--rain", "90 mm"]
 
+    def run_with_pond(self):
+        """Runs the small study with open water in its middle, class 4 on level ground."""
+        self.small_study()
+        ground = hills()
+        ground[15:25, 15:35] = ground[15:25, 15:35].min()
+        self.ground(values=ground)
+        codes = np.ones(ground.shape, np.uint8)
+        codes[15:25, 15:35] = 4
+        self.cover(values=codes)
+        self.done("run", "--elevation", "dem.tif", "--cover", "cover.tif", "--book", "book.csv", "--rain", "3.6 in")
+
     def result(self, folder="result"):
         return json.loads((self.folder / folder / "result.json").read_text(encoding="utf-8"))
+
+
+class DemoTest(CommandTest):
+    """The demo, run once for all tests of a class, in `kept`."""
+
+    @classmethod
+    def setUpClass(cls):
+        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-demo-"))
+        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
+        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
+        cls.said = subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True, text=True)

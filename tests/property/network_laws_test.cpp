@@ -22,21 +22,11 @@ Given random_ground(std::mt19937& random, unsigned seed) {
     return given;
 }
 
-std::vector<Cell> random_cells(std::mt19937& random, const Given& given, std::size_t most) {
-    std::vector<Cell> cells;
-    for (Cell cell = 0; cell < static_cast<Cell>(given.elevations.size()); ++cell) {
-        if (!std::isnan(given.elevations[cell])) cells.push_back(cell);
-    }
-    std::shuffle(cells.begin(), cells.end(), random);
-    cells.resize(std::min(most, cells.size()));
-    return cells;
-}
-
 TEST_CASE("on random ground the greatest of own time and way is the point's time, to the unit") {
     for (unsigned seed = 0; seed < 150; ++seed) {
         std::mt19937 random(seed);
         const Given given = random_ground(random, seed);
-        const std::vector<Cell> cells = random_cells(random, given, 1 + seed % 12);
+        const std::vector<Cell> cells = worked::random_cells(random, given, 1 + seed % 12);
         if (cells.empty()) continue;
         const Worked w(given, {.points = cells});
         const DrainageNetwork network = network_of(w.outlets);
@@ -62,7 +52,7 @@ TEST_CASE("a new inner point changes no time, last or lead of the points below b
     for (unsigned seed = 0; seed < 100; ++seed) {
         std::mt19937 random(seed);
         const Given given = random_ground(random, seed);
-        std::vector<Cell> cells = random_cells(random, given, 2 + seed % 6);
+        std::vector<Cell> cells = worked::random_cells(random, given, 2 + seed % 6);
         if (cells.size() < 2) continue;
         const Worked all(given, {.points = cells});
         const Worked one_less(given, {.points = {cells.begin(), cells.end() - 1}});
@@ -82,7 +72,7 @@ TEST_CASE("ways add up the regimes they run through to their length") {
     for (unsigned seed = 0; seed < 60; ++seed) {
         std::mt19937 random(seed);
         const Given given = random_ground(random, seed);
-        const std::vector<Cell> cells = random_cells(random, given, 8);
+        const std::vector<Cell> cells = worked::random_cells(random, given, 8);
         if (cells.empty()) continue;
         const Worked w(given, {.points = cells});
         const DrainageNetwork network = network_of(w.outlets);

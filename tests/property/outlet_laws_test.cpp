@@ -25,17 +25,6 @@ Given random_given(std::mt19937& random, unsigned seed) {
     return given;
 }
 
-/// Some cells of a terrain that are not void, each once.
-std::vector<Cell> random_points(std::mt19937& random, const Given& given, std::size_t count) {
-    std::vector<Cell> cells;
-    for (Cell cell = 0; cell < static_cast<Cell>(given.elevations.size()); ++cell) {
-        if (!std::isnan(given.elevations[cell])) cells.push_back(cell);
-    }
-    std::shuffle(cells.begin(), cells.end(), random);
-    cells.resize(std::min(count, cells.size()));
-    return cells;
-}
-
 double seconds_of(const Worked& w, Cell cell, double storm_factor) {
     return in_seconds(w.land.field.time_to_root(cell).under(storm_factor));
 }
@@ -130,7 +119,7 @@ TEST_CASE("shares of a point's area arrive as a sorted list of its cells says, w
     for (unsigned seed = 0; seed < 300; ++seed) {
         std::mt19937 random(seed);
         const Given given = random_given(random, seed);
-        const Worked w(given, {.points = random_points(random, given, 6)});
+        const Worked w(given, {.points = worked::random_cells(random, given, 6)});
         INFO("seed " << seed);
         for (const Outlet& outlet : w.outlets) {
             const std::vector<double> times = arrival_times(w, outlet);
@@ -151,7 +140,7 @@ TEST_CASE("a new inner point changes no bit of what is known of the points below
     for (unsigned seed = 0; seed < 400; ++seed) {
         std::mt19937 random(seed);
         const Given given = random_given(random, seed);
-        std::vector<Cell> cells = random_points(random, given, 7);
+        std::vector<Cell> cells = worked::random_cells(random, given, 7);
         if (cells.size() < 2) continue;
         const Worked with(given, {.points = cells});
         cells.pop_back();
@@ -220,7 +209,7 @@ TEST_CASE("rows add up to the point's time to the last unit, and each can be rec
     for (unsigned seed = 0; seed < 1000; ++seed) {
         std::mt19937 random(seed);
         const Given given = random_given(random, seed);
-        worked::Asked asked{.points = random_points(random, given, 5)};
+        worked::Asked asked{.points = worked::random_cells(random, given, 5)};
         asked.rules.segments = {.shortest = metres(20)};
         const Worked w(given, asked);
         INFO("seed " << seed);

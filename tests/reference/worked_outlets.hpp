@@ -1,5 +1,8 @@
 #pragma once
 
+#include <algorithm>
+#include <cmath>
+#include <random>
 #include <string>
 #include <utility>
 #include <vector>
@@ -9,6 +12,17 @@
 #include "rillclock/catchment/outlet.hpp"
 
 namespace rillclock::worked {
+
+/// Some cells of a terrain that are not void, each once.
+[[nodiscard]] inline std::vector<Cell> random_cells(std::mt19937& random, const Given& given, std::size_t most) {
+    std::vector<Cell> cells;
+    for (Cell cell = 0; cell < static_cast<Cell>(given.elevations.size()); ++cell) {
+        if (!std::isnan(given.elevations[cell])) cells.push_back(cell);
+    }
+    std::shuffle(cells.begin(), cells.end(), random);
+    cells.resize(std::min(most, cells.size()));
+    return cells;
+}
 
 /// What a test asks of a terrain.
 struct Asked {

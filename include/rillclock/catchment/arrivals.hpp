@@ -9,7 +9,8 @@
 
 namespace rillclock {
 
-/// The cells that no other exceeds in both parts of the time: among them is the last to arrive under any storm.
+/// The cells that no other exceeds in both parts of the time: among them is the last to arrive under any storm. They are kept by cell, so
+/// that the order in which they were added does not show.
 class Front {
 public:
     void add(const Head& head);

@@ -58,6 +58,8 @@ public:
     [[nodiscard]] StepTime shift(PointNumber number) const { return shifts_[number - 1]; }
     /// Time from a point's cell to the root, stated ways counted.
     [[nodiscard]] StepTime to_root(PointNumber number) const { return points_[number - 1].to_root + shift(number); }
+    /// The time from the last cell of a point's own subarea to the point.
+    [[nodiscard]] FixedTime own_time(PointNumber number, double storm_factor) const;
     [[nodiscard]] PointArrivals arrivals_at(PointNumber number, double storm_factor) const;
 
 private:

@@ -19,7 +19,7 @@ public:
     [[nodiscard]] std::string rain_unit() const { return us_ ? "in" : "mm"; }
     [[nodiscard]] std::string flow_unit() const { return us_ ? "ft3_per_s" : "m3_per_s"; }
     [[nodiscard]] std::string intensity_unit() const { return us_ ? "in_per_h" : "mm_per_h"; }
-    [[nodiscard]] double flow(Discharge q) const { return us_ ? in_cubic_feet_per_second(q) : in_cubic_metres_per_second(q); }
+    [[nodiscard]] double flow(Discharge q) const { return flow(in_cubic_metres_per_second(q)); }
     [[nodiscard]] double length(double m) const { return us_ ? in_feet(metres(m)) : m; }
     [[nodiscard]] double area(double m2) const { return us_ ? in_acres(square_metres(m2)) : m2 / 1e4; }
     [[nodiscard]] double speed(double m_per_s) const { return us_ ? in_feet(metres(m_per_s)) : m_per_s; }

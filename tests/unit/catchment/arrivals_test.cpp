@@ -126,6 +126,19 @@ TEST_CASE("bins put together are the bins of all cells, whichever takes the othe
     }
 }
 
+TEST_CASE("a front is the same whatever the order in which its cells came") {
+    std::vector<Head> given = {head(9, 1, 8), head(4, 8, 1), head(7, 5, 5), head(2, 5, 5), head(3, 1, 1)};
+    std::sort(given.begin(), given.end(), [](const Head& a, const Head& b) { return a.cell < b.cell; });
+    do {
+        Front front;
+        for (const Head& one : given) front.add(one);
+        REQUIRE(front.heads().size() == 3);
+        CHECK(front.heads()[0].cell == 2);  // of two that are equal the smaller
+        CHECK(front.heads()[1].cell == 4);
+        CHECK(front.heads()[2].cell == 9);
+    } while (std::next_permutation(given.begin(), given.end(), [](const Head& a, const Head& b) { return a.cell < b.cell; }));
+}
+
 TEST_CASE("cells are put in bins by their time under the storm") {
     ArrivalBins bins;
     bins.add(head(1, 0, 10), to_fixed_area(1), 0.5);

@@ -44,9 +44,9 @@ TEST_CASE("without containers the memory of the machine is the limit") {
 
 TEST_CASE("a container of the second version limits a process by the least of its groups") {
     const Machine machine;
-    machine.put("proc/self/cgroup", "0::/work/job\n");
-    machine.put("sys/fs/cgroup/work/job/memory.max", "max\n");
-    machine.put("sys/fs/cgroup/work/memory.max", "2000000000\n");
+    machine.put("proc/self/cgroup", "0::/batch/job\n");
+    machine.put("sys/fs/cgroup/batch/job/memory.max", "max\n");
+    machine.put("sys/fs/cgroup/batch/memory.max", "2000000000\n");
     machine.put("sys/fs/cgroup/memory.max", "3000000000\n");
     CHECK(machine.limit().bytes == 2e9);
     CHECK(machine.limit().set_by == "the container");
