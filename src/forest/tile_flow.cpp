@@ -5,6 +5,8 @@
 namespace rillclock {
 namespace {
 
+constexpr std::uint8_t never = UINT8_MAX;   ///< of `waiting_`: a void, or a cell that is in the order
+
 bool is_inside(const Window& window, RowColumn at) {
     return at.row >= window.row && at.row < window.row + window.rows && at.column >= window.column &&
            at.column < window.column + window.columns;
@@ -37,6 +39,7 @@ void TileFlow::read_steps(const Raster<FlowCode>& codes) {
             code_[local] = code;
             if (!is_direction(code)) {
                 down_[local] = ends_here;
+                if (code == flow_void) waiting_[local] = never;
                 continue;
             }
             const bool inner = r > 0 && c > 0 && r + 1 < window_.rows && c + 1 < window_.columns;
@@ -76,20 +79,21 @@ void TileFlow::read_entries(const Raster<FlowCode>& codes) {
 }
 
 void TileFlow::find_order() {
-    order_.clear();
-    order_.reserve(down_.size());
+    order_.resize(down_.size());
+    Local* end = order_.data();
     for (Local start = 0; start < size(); ++start) {
-        if (waiting_[start] != 0 || code_[start] == flow_void) continue;
+        if (waiting_[start] != 0) continue;
         // Follow the water as long as it waits for no other tributary. Marking a cell keeps the outer loop from taking it again.
         Local at = start;
         for (;;) {
-            order_.push_back(at);
+            *end++ = at;
             const Local next = down_[at];
-            waiting_[at] = UINT8_MAX;
+            waiting_[at] = never;
             if (next >= ends_here || --waiting_[next] != 0) break;
             at = next;
         }
     }
+    order_.resize(static_cast<std::size_t>(end - order_.data()));
 }
 
 }  // namespace rillclock

@@ -124,6 +124,17 @@ Window window_around(std::span<const RowColumn> cells, const Grid& grid) {
     return {.row = top, .column = left, .rows = bottom - top + 1, .columns = right - left + 1};
 }
 
+/// The smallest window that holds rows and columns, which do not fall; empty where there are none. Those below 0 count as none.
+Window window_between(std::span<const std::int64_t> rows, std::span<const std::int64_t> columns) {
+    const auto is_there = [](std::int64_t position) { return position >= 0; };
+    const auto top = std::find_if(rows.begin(), rows.end(), is_there);
+    const auto left = std::find_if(columns.begin(), columns.end(), is_there);
+    if (top == rows.end() || left == columns.end()) return {};
+    const std::int64_t bottom = *std::max_element(rows.begin(), rows.end());
+    const std::int64_t right = *std::max_element(columns.begin(), columns.end());
+    return {.row = *top, .column = *left, .rows = bottom - *top + 1, .columns = right - *left + 1};
+}
+
 class CoverSource : public BlockSource<std::int32_t> {
 public:
     CoverSource(RasterFile file, const Grid& target, CoverPlaces places)
@@ -134,6 +145,7 @@ public:
     /// Windows whose own cells, or whose cover cells, are too many are halved until they are not.
     void read(const Window& window, std::span<std::int32_t> values) override {
         if (window.size() > largest_sampled && window.rows > 1) return read_halves(window, values);
+        if (!places_.is_transformed()) return read_alongside(window, values);
         const std::vector<RowColumn> cells = cover_cells(window);
         const Window needed = window_around(cells, file_.grid());
         if (needed.size() > largest_read && window.rows > 1) return read_halves(window, values);
@@ -142,6 +154,46 @@ public:
     }
 
 private:
+    /// Where both grids run along the same axes: a cover row for each row and a cover column for each column say all.
+    void read_alongside(const Window& window, std::span<std::int32_t> values) {
+        const std::vector<std::int64_t> rows = cover_rows(window);
+        const std::vector<std::int64_t> columns = cover_columns(window);
+        const Window needed = window_between(rows, columns);
+        if (needed.size() > largest_read && window.rows > 1) return read_halves(window, values);
+        if (needed.size() > largest_read && window.columns > 1) return read_sides(window, values);
+        std::vector<double> cover(static_cast<std::size_t>(needed.size()));
+        if (needed.size() > 0) file_.read(needed, cover);
+        auto value = values.begin();
+        for (const std::int64_t row : rows) {
+            for (const std::int64_t column : columns) {
+                const bool is_covered = row >= 0 && column >= 0;
+                const std::int64_t index = (row - needed.row) * needed.columns + column - needed.column;
+                *value++ = is_covered ? class_of(cover[static_cast<std::size_t>(index)], {row, column}) : no_class;
+            }
+        }
+    }
+
+    /// The cover's row under each row of a window; -1 where there is none.
+    [[nodiscard]] std::vector<std::int64_t> cover_rows(const Window& window) const {
+        const double x = file_.grid().centre(RowColumn{0, 0}).x;
+        std::vector<std::int64_t> rows;
+        for (std::int64_t r = window.row; r < window.row + window.rows; ++r) {
+            const auto at = file_.grid().at(Place{x, target_.centre(RowColumn{r, 0}).y});
+            rows.push_back(at ? at->row : -1);
+        }
+        return rows;
+    }
+
+    [[nodiscard]] std::vector<std::int64_t> cover_columns(const Window& window) const {
+        const double y = file_.grid().centre(RowColumn{0, 0}).y;
+        std::vector<std::int64_t> columns;
+        for (std::int64_t c = window.column; c < window.column + window.columns; ++c) {
+            const auto at = file_.grid().at(Place{target_.centre(RowColumn{0, c}).x, y});
+            columns.push_back(at ? at->column : -1);
+        }
+        return columns;
+    }
+
     void read_halves(const Window& window, std::span<std::int32_t> values) {
         Window upper = window;
         upper.rows = window.rows / 2;

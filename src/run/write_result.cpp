@@ -1,6 +1,7 @@
 #include "write_result.hpp"
 
 #include <algorithm>
+#include <future>
 
 #include "depressions.hpp"
 #include "rillclock/deliver/calculation_sheet.hpp"
@@ -79,12 +80,15 @@ std::string report_of(const WorkedStudy& worked, const SheetBook& book) {
 std::string write_result(const WorkedStudy& worked, ResultFolder& folder) {
     std::string json = result_json(worked.result);
     const SheetBook book(json, "result.json");
+    // Each of these takes as long as all the rest and keeps one processor busy.
+    std::future<void> shapes = std::async(std::launch::async, [&] { write_shapes(worked.result, worked.regions, folder); });
+    std::future<void> ground = std::async(std::launch::async, [&] { write_ground(worked, folder); });
     write_texts(worked.result, folder);
     write_sheets(worked.result, book, folder);
     folder.write_text("result.json", json);
-    write_shapes(worked.result, worked.regions, folder);
     folder.write_text("report.html", report_of(worked, book));
-    write_ground(worked, folder);
+    shapes.get();
+    ground.get();
     return json;
 }
 

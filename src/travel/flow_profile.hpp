@@ -102,11 +102,16 @@ private:
         return &lowest();
     }
 
-    /// The first place, from the lowest up, that is not `below`; the lowest is.
+    /// The first place, from the lowest up, that is not `below`; the lowest is. What is looked for lies close under the top as a rule, while
+    /// the path may be long: so first in growing strides from the top down, then by halves.
     template <class Below>
     [[nodiscard]] std::size_t first_above(Below below) const {
-        std::size_t low = 0;
         std::size_t high = size();
+        std::size_t low = high - 1;
+        for (std::size_t stride = 1; low > 0 && !below(at(low)); stride *= 2) {
+            high = low;
+            low -= std::min(stride, low);
+        }
         while (high - low > 1) {
             const std::size_t middle = low + (high - low) / 2;
             (below(at(middle)) ? low : high) = middle;

@@ -9,20 +9,27 @@
 namespace rillclock {
 namespace {
 
-/// Share of the step, from its upper end, over which sheet flow still runs.
-double sheet_share(const StepView& step, const SheetRules& sheet) {
-    if (step.kind != GroundKind::overland) return 0.0;
+/// How far sheet flow still runs along a step.
+struct SheetReach {
+    double share = 0.0;           ///< of the step, from its upper end
+    FixedLength index_step = 0;   ///< of the whole step; made only where there is a share
+};
+
+SheetReach sheet_reach(const StepView& step, const SheetRules& sheet) {
+    if (step.kind != GroundKind::overland) return {};
     const double length_left = in_metres(sheet.limit) - from_fixed(step.from_divide);
     const double index_left = in_metres(std::min(sheet.index_limit, sheet_is_over)) - from_fixed(step.sheet_index);
-    if (!(length_left > 0 && index_left > 0)) return 0.0;
+    if (!(length_left > 0 && index_left > 0)) return {};
     const double length = from_fixed(step.length);
-    const double index = from_fixed(sheet_index_step(step));
+    const FixedLength index_step = sheet_index_step(step);
+    const double index = from_fixed(index_step);
     const double by_length = length > length_left ? length_left / length : 1.0;
     const double by_index = index > index_left ? index_left / index : 1.0;
-    return std::min(by_length, by_index);
+    return {std::min(by_length, by_index), index_step};
 }
 
 FixedTime storm_time(const SheetRules& sheet, double index_m) {
+    if (index_m == 0) return 0;  // at a divide, where a third of all cells lie; the power would be asked in vain
     return to_fixed(in_seconds(sheet.formula.at_unit_storm(metres(index_m))));
 }
 
@@ -39,12 +46,11 @@ StepPart characteristic_part(const StepView& step, const SheetRules& sheet, doub
     return part;
 }
 
-StepPart index_part(const StepView& step, const SheetRules& sheet, double share) {
-    const auto index_step = static_cast<double>(sheet_index_step(step));
-    const FixedLength index_to = step.sheet_index + std::llround(share * index_step);
+StepPart index_part(const StepView& step, const SheetRules& sheet, const SheetReach& reach) {
+    const FixedLength index_to = step.sheet_index + std::llround(reach.share * static_cast<double>(reach.index_step));
     StepPart part;
     part.regime = Regime::sheet;
-    part.length_m = share * from_fixed(step.length);
+    part.length_m = reach.share * from_fixed(step.length);
     part.slope = step.slope;
     part.index_from_m = from_fixed(step.sheet_index);
     part.index_to_m = from_fixed(index_to);
@@ -53,10 +59,10 @@ StepPart index_part(const StepView& step, const SheetRules& sheet, double share)
     return part;
 }
 
-StepPart sheet_part(const StepView& step, const SheetRules& sheet, double share) {
+StepPart sheet_part(const StepView& step, const SheetRules& sheet, const SheetReach& reach) {
     switch (sheet.basis) {
-        case SheetBasis::index: return index_part(step, sheet, share);
-        case SheetBasis::characteristic: return characteristic_part(step, sheet, share);
+        case SheetBasis::index: return index_part(step, sheet, reach);
+        case SheetBasis::characteristic: return characteristic_part(step, sheet, reach.share);
     }
     return {};
 }
@@ -100,10 +106,10 @@ void hasten_over_pond(const StepView& step, const TravelRules& rules, StepPart& 
 
 template <class Take>
 void cut_overland(const StepView& step, const TravelRules& rules, Take take) {
-    const double share = sheet_share(step, rules.sheet);
-    if (share <= 0.0) return take(shallow_part(step, from_fixed(step.length)));
-    take(sheet_part(step, rules.sheet, share));
-    if (share < 1.0) take(shallow_part(step, (1.0 - share) * from_fixed(step.length)));
+    const SheetReach reach = sheet_reach(step, rules.sheet);
+    if (reach.share <= 0.0) return take(shallow_part(step, from_fixed(step.length)));
+    take(sheet_part(step, rules.sheet, reach));
+    if (reach.share < 1.0) take(shallow_part(step, (1.0 - reach.share) * from_fixed(step.length)));
 }
 
 /// Calls `take(part)` for each part of a step, from its upper end. What a caller does not read of a part is then never made.
@@ -162,7 +168,7 @@ StepParts step_parts(const StepView& step, const TravelRules& rules) {
 Regime first_regime(const StepView& step, const TravelRules& rules) {
     if (step.kind == GroundKind::channel) return Regime::channel;
     if (step.kind == GroundKind::water) return Regime::water;
-    return sheet_share(step, rules.sheet) > 0.0 ? Regime::sheet : Regime::shallow;
+    return sheet_reach(step, rules.sheet).share > 0.0 ? Regime::sheet : Regime::shallow;
 }
 
 }  // namespace rillclock

@@ -71,11 +71,13 @@ private:
 
     void push_upstream(Local local, std::size_t position) {
         const Window& window = desk_.flow.window();
-        const RowColumn at{local / window.columns, local % window.columns};
+        const auto columns = static_cast<Local>(window.columns);
+        const RowColumn at{local / columns, local % columns};
+        const bool is_inner = at.row > 0 && at.column > 0 && at.row + 1 < window.rows && at.column + 1 < window.columns;
         for (const Direction d : all_directions) {
             const RowColumn beside = neighbour(at, d);
-            if (beside.row < 0 || beside.row >= window.rows || beside.column < 0 || beside.column >= window.columns) continue;
-            const auto up = static_cast<Local>(beside.row * window.columns + beside.column);
+            if (!is_inner && (beside.row < 0 || beside.row >= window.rows || beside.column < 0 || beside.column >= window.columns)) continue;
+            const Local up = local + static_cast<Local>(row_step(d)) * columns + static_cast<Local>(column_step(d));
             if (desk_.flow.code(up) == flow_code(opposite(d))) pending_.push_back({up, position});
         }
     }
