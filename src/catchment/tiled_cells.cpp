@@ -40,12 +40,11 @@ Local local_of(const TileDesk& desk, Cell cell, std::int64_t columns) {
 /// Makes each tile that holds any of the cells by `read(tile, desk)`, and keeps what `look(desk, local, cell)` says of each cell, where it
 /// says anything.
 template <class Value, class Read, class Look>
-std::unordered_map<Cell, Value> look_up(const TiledForest& forest, const Executor& executor, std::vector<Cell> cells, Read read,
-                                        Look look) {
+std::unordered_map<Cell, Value> look_up(const TiledForest& forest, const Executor& executor, Workspaces<TileDesk>& desks,
+                                        std::vector<Cell> cells, Read read, Look look) {
     const std::vector<TileCells> stretches = by_tile(forest, cells);
     std::unordered_map<Cell, Value> found;
     std::mutex mutex;
-    Workspaces<TileDesk> desks;
     executor.for_each(stretches.size(), [&](std::size_t i) {
         const auto desk = desks.lease();
         read(stretches[i].tile, *desk);
@@ -73,7 +72,7 @@ PathCell path_cell(const TiledTravel& travel, const TileDesk& desk, Local local,
 
 std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vector<Cell> cells) {
     return look_up<FixedArea>(
-        travel.ground().forest, travel.executor(), std::move(cells),
+        travel.ground().forest, travel.executor(), travel.desks(), std::move(cells),
         [&](Tile tile, TileDesk& desk) { travel.read_areas(tile, desk); },
         [](const TileDesk& desk, Local local, Cell) -> std::optional<FixedArea> {
             if (desk.flow.code(local) == flow_void) return std::nullopt;
@@ -83,7 +82,7 @@ std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vec
 
 std::unordered_map<Cell, PathCell> path_cells_at(const TiledTravel& travel, std::vector<Cell> cells) {
     return look_up<PathCell>(
-        travel.ground().forest, travel.executor(), std::move(cells),
+        travel.ground().forest, travel.executor(), travel.desks(), std::move(cells),
         [&](Tile tile, TileDesk& desk) { travel.read_tile(tile, desk); },
         [&](const TileDesk& desk, Local local, Cell cell) { return std::optional(path_cell(travel, desk, local, cell)); });
 }
@@ -100,8 +99,9 @@ std::vector<PointNumber> next_points(const TiledForest& forest, const TiledOwner
     for (const DesignPoint& point : points) {
         if (below(point.cell) != no_cell) cells.push_back(below(point.cell));
     }
+    Workspaces<TileDesk> desks;
     const auto owner = look_up<PointNumber>(
-        forest, executor, std::move(cells),
+        forest, executor, desks, std::move(cells),
         [&](Tile tile, TileDesk& desk) {
             desk.flow.read(codes, forest.tiles().window(tile));
             owners.read_tile(tile, desk);

@@ -59,12 +59,11 @@ void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, Aft
     const TileGrid& tiles = pass.travel.ground().forest.tiles();
     const auto across = static_cast<std::size_t>(tiles.tiles_across());
     const std::int64_t cells = tiles.rows() * tiles.columns();
-    Workspaces<TileDesk> desks;
     for (std::int64_t down = 0; down < tiles.tiles_down(); ++down) {
         const auto first = static_cast<Tile>(static_cast<std::size_t>(down) * across);
         pass.progress.tell({.stage = stage, .done = tiles.window(first).row * tiles.columns(), .total = cells});
         pass.travel.executor().for_each(across, [&](std::size_t column) {
-            const auto desk = desks.lease();
+            const auto desk = pass.travel.desks().lease();
             const Tile tile = first + static_cast<Tile>(column);
             pass.travel.read_tile(tile, *desk);
             pass.owners.read_tile(tile, *desk);

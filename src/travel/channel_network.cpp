@@ -71,10 +71,9 @@ using ArrivalChannel = decltype(std::declval<Weights>().arrival_channel(1.0));
 
 template <class Look>
 void for_all_tiles(const TiledTravel& travel, Look look) {
-    Workspaces<TileDesk> desks;
     travel.executor().for_each(travel.ground().forest.tiles().count(), [&](std::size_t number) {
         const auto tile = static_cast<Tile>(number);
-        const auto desk = desks.lease();
+        const auto desk = travel.desks().lease();
         travel.read_tile(tile, *desk);
         look(tile, *desk);
     });

@@ -31,7 +31,7 @@ class Methods(CommandTest):
             (self.folder / "town/rain.csv").write_text(RAIN)
             study = study.replace("[rain]", '[rain]\nfile = "rain.csv"')
         (self.folder / "town/methods.toml").write_text(study)
-        self.done("run", "town/methods.toml", "--replace")
+        self.repeated("run", "town/methods.toml", "--replace")
         rows = {(row["point"], row["method"]): row for row in table(self.folder / "town/result/tables/methods.csv")}
         return self.result("town/result")["outlets"], rows
 

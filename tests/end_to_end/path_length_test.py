@@ -63,7 +63,7 @@ class PathLength(CommandTest):
                            "0.4" if row[0] in "3456" else ""] for row in book[1:]])
         study = change((self.folder / "town/study.toml").read_text()).replace('folder = "result"', f'folder = "{name}"')
         (self.folder / f"town/{name}.toml").write_text(study)
-        self.done("run", f"town/{name}.toml")
+        self.repeated("run", f"town/{name}.toml")
         return {outlet["name"]: outlet for outlet in self.result(f"town/{name}")["outlets"]}
 
     def test_the_independent_verification_finds_the_same_times_under_each_choice(self):

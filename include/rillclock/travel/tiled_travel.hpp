@@ -73,6 +73,8 @@ public:
     [[nodiscard]] const TiledGround& ground() const { return in_; }
     [[nodiscard]] const TravelRules& rules() const { return rules_; }
     [[nodiscard]] const Executor& executor() const { return executor_; }
+    /// Desks for whoever works on tiles; those of the passes, so that no more are made than there are threads.
+    [[nodiscard]] Workspaces<TileDesk>& desks() const { return desks_; }
     [[nodiscard]] const ElevationStore& spill() const { return spill_; }
     [[nodiscard]] float slope(Cell cell) const { return slope_[cell]; }
     [[nodiscard]] GroundKind kind(Cell cell) const { return kind_[cell]; }
