@@ -1,5 +1,5 @@
 #!/usr/bin/python3
-"""The worked example of the handbook, rebuilt as terrain and run through the command.
+"""Worked examples of handbooks, rebuilt as terrain and run through the command.
 
 USDA SCS, Urban Hydrology for Small Watersheds, TR-55, 2nd ed., 1986, example 3-1 (values from memory): sheet flow over 100 ft of dense
 grass (n 0.24) at slope 0.01, P2 = 3.6 in: 0.30 h; shallow concentrated flow over 1400 ft, unpaved, at slope 0.01: 0.24 h; a channel of
@@ -83,6 +83,40 @@ class Example(CommandTest):
         for cell, expected in ((1, 1.5325), (2, 1.5334), (5, 1.5346)):
             _, _, _, total = self.run_example(cell, vertical_step="")
             self.assertAlmostEqual(total, expected, delta=5e-5, msg=cell)
+
+
+class Lumps(CommandTest):
+    """Examples that take a path as one lump, on strips of cells of the length that the example has."""
+
+    def methods(self, z, cell, book, more):
+        self.ground(values=np.tile(np.asarray(z)[:, None], (1, 3)), cell=cell)
+        self.cover(values=np.ones((len(z), 3), np.uint8), cell=cell)
+        self.book(book)
+        write_points(self.folder / "points.geojson", [("end", (500_000 + 1.5 * cell, 5_400_000 - (len(z) - 0.5) * cell))])
+        (self.folder / "study.toml").write_text(
+            '[terrain]\nelevation = "dem.tif"\nvertical_step = "1 mm"\n[surface]\ncover = "cover.tif"\nbook = "book.csv"\n'
+            '[points]\nfile = "points.geojson"\nmove_within = "0.1 m"\n[rain]\ntwo_year_24_hour = "3.6 in"\n' + more)
+        self.done("run", "study.toml")
+        rows = table(self.folder / "result/tables/methods.csv")
+        return {row["method"]: float(row["time_min"]) for row in rows if row["time_min"]}
+
+    def test_kerby_and_kirpich_of_the_texas_manual(self):
+        """Roussel et al., 2005, in the Texas Hydraulic Design Manual: 500 ft of average grass (N 0.40) at 0.02, main channel of 5280 ft
+        that falls 50 ft: 25 + 32 = 57 min as printed. Cells of 10 ft."""
+        cell = 10 * FOOT
+        feet_along = np.arange(529) * 10.0
+        z_ft = 750 - 0.02 * np.minimum(feet_along, 500) - 40 / 4780 * np.maximum(feet_along - 500, 0)
+        times = self.methods(z_ft * FOOT, cell, BOOK, f'[timing]\nchannel_from = "{51 * cell ** 2 - 0.001:.3f} m2"\n[methods]\nkerby_n = 0.40\n')
+        self.assertEqual(f"{times['lump-kerby-kirpich']:.0f}", "57")
+        self.assertAlmostEqual(times["lump-kerby-kirpich"], 24.65 + 31.94, delta=0.02)
+
+    def test_one_plot_by_several_formulas(self):
+        """The plot of Troy University's GEM 4409 (inputs as printed, answers by arithmetic): 300 ft at 0.02, C 0.85, Kerby's N 0.02."""
+        z = 100 - 0.02 * 2.5 * FOOT * np.arange(121)
+        book = "code,name,n_typical,shallow_type,c,source\n1,Pavement,0.011,pavement,0.85,GEM 4409\n"
+        times = self.methods(z, 2.5 * FOOT, book, '[timing]\nchannel_from = "mapped only"\n[methods]\nkerby_n = 0.02\n')
+        for method, expected in (("lump-kirpich", "2.84"), ("lump-faa", "6.19"), ("lump-kerby", "4.79")):
+            self.assertEqual(f"{times[method]:.2f}", expected, method)
 
 
 if __name__ == "__main__":

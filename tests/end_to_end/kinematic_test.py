@@ -120,6 +120,25 @@ class Plane(CommandTest):
         self.assertAlmostEqual(outlet["time_of_concentration_min"], 13.034, delta=0.02)
         self.assertAlmostEqual(outlet["storms"][0]["intensity_mm_per_h"] / 25.4, 5.10, delta=0.01)
 
+    def intensity(self, inches_per_hour):
+        """Rain of one intensity, as good as any formula with a power can have it: 3e-6 of it at 5 min."""
+        return f'formula = {{ 10 = "i[in/h] = {inches_per_hour} / (t[min] + 0)^0.000001" }}'
+
+    def test_sheet_flow_on_pavement_takes_the_time_of_the_example(self):
+        """Charbeneau, CE 365K (University of Texas), example 1: n 0.015, slope 0.01, 200 ft, 10 in/h (inputs as printed; answers by
+        arithmetic: 2.86 min with 0.933, 2.88 with 0.94). Cells of 2.5 ft, so the length is that of the example."""
+        for constant, expected in ((0.933, "2.86"), (0.94, "2.88")):
+            outlet, length = self.run_plane(n=0.015, slope=0.01, length_ft=200, cell=2.5 * FOOT, rain=self.intensity(10), least="5 min",
+                                            timing=f"sheet_constant = {constant}")
+            self.assertAlmostEqual(length, 200, places=6)
+            self.assertEqual(f"{outlet['time_of_concentration_min']:.2f}", expected)
+
+    def test_one_plot_takes_the_times_of_the_example_under_four_intensities(self):
+        """The plot of Troy University's GEM 4409: n 0.011, slope 0.02, 300 ft; with 0.94 at 2, 4, 6 and 8 in/h by arithmetic."""
+        for inches, expected in ((2, "4.72"), (4, "3.57"), (6, "3.04"), (8, "2.71")):
+            outlet, _ = self.run_plane(cell=2.5 * FOOT, rain=self.intensity(inches), least="5 min", timing="sheet_constant = 0.94")
+            self.assertEqual(f"{outlet['time_of_concentration_min']:.2f}", expected)
+
     def test_the_other_printed_constant_is_in_proportion(self):
         one, _ = self.run_plane(n=0.1, rain=self.CONSTANT, least="5 min")
         other, _ = self.run_plane(n=0.1, rain=self.CONSTANT, least="5 min", timing="sheet_constant = 0.94")

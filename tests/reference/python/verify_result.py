@@ -38,6 +38,7 @@ Choices where the rules can be read in more than one way
 18. A chart of velocity by slope is read on log-log paper; beyond its ends the line of the last two points goes on.
 19. With kinematic sheet flow the time of a cell is under the intensity that result.json states for the last point on its way down, and a
     cell without a point is not looked at. A ponded cell takes the smaller time under that storm.
+Rain by duration, rain zones, mapped channels and channels under the design storm stand in verify_rain_and_channels.py, with their choices.
 """
 import argparse
 import csv
@@ -53,6 +54,8 @@ from osgeo import gdal, osr
 from scipy import sparse
 from scipy.sparse import linalg
 from skimage.morphology import reconstruction
+
+from verify_rain_and_channels import DesignChannels, MappedChannels, Rain, catchment_of, prevailing_zone
 
 gdal.UseExceptions()
 
@@ -240,6 +243,7 @@ REGIONS = {"United States": ("2.70 m * km2^0.352", "0.30 m * km2^0.213"), "Laure
 METRES = {"m": 1.0, "km": 1000.0, "cm": 0.01, "mm": 0.001, "ft": FOOT, "in": INCH}
 SQUARE_METRES = {"m2": 1.0, "ha": 1e4, "km2": 1e6, "ac": 4046.8564224, "ft2": FOOT ** 2}
 SPEEDS = {"m/s": 1.0, "ft/s": FOOT}
+DURATIONS = {"s": 1.0, "min": 60.0, "h": 3600.0}
 
 
 def quantity(text, units):
@@ -270,7 +274,10 @@ def on_chart(line, slope):
 
 
 def power_law(text):
-    """Reads "2.70 m * km2^0.352": the function of an area in km², in metres."""
+    """Reads "2.70 m * km2^0.352" or "3 m": the function of an area in km², in metres."""
+    if "*" not in text:
+        constant = quantity(text, METRES)
+        return lambda km2: np.full_like(km2, constant)
     factor, unit, exponent = re.fullmatch(r"\s*([0-9.]+)\s*(\w+)\s*\*\s*km2\^([0-9.]+)\s*", text).groups()
     return lambda km2: float(factor) * METRES[unit] * km2 ** float(exponent)
 
@@ -300,7 +307,12 @@ class Study:
         self.soil_group = surface.get("soil_group")
         self.chart = read_chart(folder / timing["velocity_chart"]) if timing.get("shallow") == "chart" else None
         self.intensity = None  # m/s, of the storm that is looked at
-        self.rain = None if self.is_kinematic else quantity(stated["rain"]["two_year_24_hour"], METRES)
+        least = stated.get("peaks", {}).get("least_time", "5 min")
+        self.rains = Rain(stated, folder, quantity(least, DURATIONS))
+        self.stated_rain = length(stated["rain"], "two_year_24_hour", None)
+        # Where zones alone have rain, any depth stands until the zone of a point is looked at.
+        self.rain = None if self.is_kinematic else self.depth_of_zone(None) or 0.1
+        self.channels = folder / terrain["channels"] if "channels" in terrain else None
         self.sheet_limit = length(timing, "sheet_limit", 100 * FOOT)
         self.index_limit = math.inf if timing.get("sheet_limit_rule") == "stated" else 100 * FOOT
         self.by_cover = timing.get("shallow", "by cover") != "paved and unpaved"
@@ -313,11 +325,21 @@ class Study:
         set_of_region = REGIONS[channel.get("region", "United States")]
         width = power_law(channel.get("width", set_of_region[0]))
         depth = power_law(channel.get("depth", set_of_region[1]))
+        self.width, self.side_slope = width, channel.get("side_slope", 0.0)
+        self.is_design_storm = channel.get("flow") == "design storm"
         if "hydraulic_radius" in channel:
             radius = quantity(channel["hydraulic_radius"], METRES)
             self.radius = lambda km2: np.full_like(km2, radius)
         else:
             self.radius = lambda km2: width(km2) * depth(km2) / (width(km2) + 2 * depth(km2))
+
+
+    def depth_of_zone(self, file):
+        """The 2-year 24-hour depth in a rain zone, None for what lies outside of all; None where it is not known."""
+        if self.stated_rain is not None:
+            return self.stated_rain
+        rain = self.rains.of_zone(file)
+        return rain.two_year_24_hour() if hasattr(rain, "two_year_24_hour") else None
 
 
 class Surface:
@@ -362,10 +384,11 @@ class Surface:
             for row in csv.DictReader(file):
                 if row.get("water_depth_m") or row.get("water_depth_ft"):
                     depth = float(row.get("water_depth_m") or float(row["water_depth_ft"]) * FOOT)
-                    book[int(row["code"])] = (0.0, 0.0, depth, 1.0, None)
+                    c = row.get(f"c_{(study.soil_group or '-').lower()}") or row.get("c") or 1.0
+                    book[int(row["code"])] = (0.0, 0.0, depth, float(c), None)
                     continue
                 runoff = 1.0
-                if study.takes_runoff:
+                if study.takes_runoff or study.is_design_storm:
                     runoff = float(row.get(f"c_{(study.soil_group or '-').lower()}") or row["c"])
                 kind = row.get("shallow_type")
                 paved = row["paved"] == "yes" if row.get("paved") else kind == "pavement"
@@ -387,16 +410,17 @@ class Surface:
 class Travel:
     """Step times of all cells, and what they are made of."""
 
-    def __init__(self, study, forest, surface, z_m, h_m, area_m2, own_area_m2):
-        self.study, self.forest, self.h = study, forest, h_m
+    def __init__(self, study, forest, surface, z_m, h_m, area_m2, own_area_m2, mapped=None):
+        self.study, self.forest, self.h, self.mapped, self.own_area_m2 = study, forest, h_m, mapped, own_area_m2
         down_hill = ~forest.is_void
         water = (surface.depth > 0) & down_hill
         river = np.zeros(water.size, bool)
         cells = np.flatnonzero(water)
         river[cells] = self.fall_ahead(cells) > study.vertical_step
         large = (area_m2 >= study.channel_from) & (area_m2 >= 20 * own_area_m2) & down_hill
-        self.is_water = water & ~river
-        self.is_channel = (river | (large & ~water)) & down_hill
+        drawn = mapped.is_mapped & down_hill if mapped else np.zeros(water.size, bool)
+        self.is_water = water & ~river & ~drawn
+        self.is_channel = (river | drawn | (large & ~water)) & down_hill
         self.slope = np.ones(water.size)
         overland = np.flatnonzero(down_hill & ~self.is_water & ~self.is_channel)
         self.slope[overland] = self.slope_ahead(overland, study.floor_overland, self.is_water | self.is_channel)
@@ -481,8 +505,8 @@ class Travel:
         shallow_speed = surface.shallow_speed(slope)
         with np.errstate(divide="ignore", invalid="ignore"):
             overland = self.sheet_part(share, weight) + np.where(share < 1, (1 - share) * length / shallow_speed, 0.0)
-            radius = study.radius(area_m2 / 1e6)
-            channel = length * study.channel_n / (radius ** (2 / 3) * np.sqrt(slope))
+            radius, channel_n = self.channel_radius_and_n(area_m2)
+            channel = length * channel_n / (radius ** (2 / 3) * np.sqrt(slope))
             water = length / np.sqrt(GRAVITY * surface.depth)
             depth = h_minus_z(self.h, z_m)
             ponded = length / np.minimum(np.sqrt(GRAVITY * depth), study.pond_speed)
@@ -491,15 +515,27 @@ class Travel:
         time = np.where(self.is_ponded, np.minimum(time, ponded), time)
         flows = ~forest.is_root & ~forest.is_void
         self.step_s = np.where(flows, time, 0.0)
+        if getattr(study, "is_design_storm", False):
+            runoff_m2 = forest.contributing_area(np.where(forest.is_void, 0.0, self.own_area_m2 * surface.runoff))
+            channels = DesignChannels(study.rains, study.width, study.side_slope, study.channel_n, self.mapped.sections if self.mapped else {})
+            self.step_s = channels.steps(self, self.step_s, runoff_m2, area_m2, np.where(self.is_ponded, ponded, np.inf))
         in_sheet = (self.index < study.index_limit) & (self.distance < study.sheet_limit)
         self.regime = np.select([forest.is_void, self.is_water, self.is_channel, in_sheet], [NONE, WATER, CHANNEL, SHEET], SHALLOW)
+
+    def channel_radius_and_n(self, area_m2):
+        """By area, or those of the mapped section where there is one."""
+        radius, n = self.study.radius(area_m2 / 1e6), np.full(area_m2.size, self.study.channel_n)
+        for cell, section in (self.mapped.sections if self.mapped else {}).items():
+            n[cell] = section.n
+            radius[cell] = section.radius() or radius[cell]
+        return radius, n
 
     def sheet_part(self, share, weight):
         """Time of the share of each step that is sheet flow."""
         if not self.study.is_kinematic:
             return self.sheet_time(self.index + share * weight) - self.sheet_time(self.index)
         grown = ((self.distance + share * self.forest.length) / FOOT) ** 0.6 - (self.distance / FOOT) ** 0.6
-        rain = self.surface.runoff * self.study.intensity * 3600 / INCH
+        rain = (self.surface.runoff if self.study.takes_runoff else 1.0) * self.study.intensity * 3600 / INCH
         return 60 * self.study.constant * (self.surface.n / np.sqrt(self.slope)) ** 0.6 * grown / rain ** 0.4
 
     def sheet_time(self, index_m):
@@ -585,7 +621,54 @@ def check_times_by_storm(check, travel, forest, found, points, result):
         check.compare(f"travel time to {outlet['name']}", found, time_to_last_point(forest, to_root, points) / 60, of_point, 1e-4, 1e-3)
 
 
-def check_terrain(check, dem, forest, rasters, z, h, ground):
+def check_storms_of_zones(check, study, forest, result, points, dem, own):
+    """The rain zone of each point, and that its storms read the intensity of that zone; the rain file of each point."""
+    if not study.rains.zones_file:
+        return {}
+    files, zone = study.rains.zones(dem)
+    zone[forest.is_void] = 0
+    of_point, faults = {}, []
+    for outlet in result["outlets"]:
+        inside = catchment_of(forest, points[outlet["number"]])
+        file, share = prevailing_zone(zone, own, files, inside, study.rains.everywhere is not None)
+        of_point[outlet["number"]] = file
+        told = outlet["rain_zone"]
+        if told["rain"] != (file or study.rains.name_everywhere or told["rain"]) or abs(told["share_of_area"] - share) > 1e-5:
+            faults.append(f"{outlet['name']} has {told}, recomputed {file} with {share:.5f}")
+        for storm in outlet.get("storms", []) if study.is_kinematic else []:
+            for row in storm["iteration"]:
+                read = study.rains.of_zone(file).intensity(row["assumed_min"] * 60, storm["return_period"], study.rains.least_s) * 3.6e6
+                if not abs(row["intensity_mm_per_h"] / read - 1) <= 1e-4:
+                    faults.append(f"{outlet['name']} reads {row['intensity_mm_per_h']} mm/h, its zone has {read:.6g}")
+    check.say("rain zones of the points", "; ".join(faults[:3]) if faults else None)
+    return of_point
+
+
+def check_times_by_zone(check, travel, forest, found, points, zone_of_point):
+    """Compares the times to each last point under the depth of its rain zone."""
+    last = last_point_cells(forest, points)
+    for number, cell in points.items():
+        of_point = last == cell
+        if of_point.any():
+            travel.study.rain = travel.study.depth_of_zone(zone_of_point[number])
+            travel.find_step_times(travel.surface, travel.z_m, travel.area_m2)
+            minutes = time_to_last_point(forest, forest.sum_to_root(travel.step_s), points) / 60
+            check.compare(f"travel time to point {number} under the rain of its zone", found, minutes, of_point, 1e-4, 1e-3)
+
+
+def check_beds(check, mapped, forest, z, h, void):
+    """Spill elevation where lines are mapped: the greater of the bed and that of the cell below. Gives the beds."""
+    left = mapped.leaves(forest)
+    check.say("water follows the mapped lines", f"{left} of their cells drain elsewhere" if left else None)
+    bed = mapped.beds(forest, np.where(void, 0.0, z.ravel()))
+    expected = bed.copy()
+    for cells in forest.levels[1:]:
+        expected[cells] = np.maximum(bed[cells], expected[forest.down[cells]])
+    check.compare("spill elevation is the greater of the bed and that below", h, expected, ~void, 0, 0)
+    return bed
+
+
+def check_terrain(check, dem, forest, rasters, z, h, ground, mapped=None):
     for fault in forest.faults:
         check.say("directions", fault)
     if forest.faults:
@@ -594,7 +677,8 @@ def check_terrain(check, dem, forest, rasters, z, h, ground):
     void = dem.void.ravel()
     check.say("voids", None if (forest.is_void == void).all() else "the voids of the directions are not those of the elevations")
     data = ~void
-    check.compare("spill elevation equals the reconstruction", h, spill_elevation(z, dem.void), data, 0, 0)
+    if mapped is None:
+        check.compare("spill elevation equals the reconstruction", h, spill_elevation(z, dem.void), data, 0, 0)
     rising = data & (h.ravel()[forest.down] > h.ravel())
     check.say("spill elevation never rises along the way", f"it does after {rising.sum()} cells" if rising.any() else None)
     own = np.repeat(ground.area, z.shape[1])
@@ -648,18 +732,25 @@ def main():
     check.columns = dem.values.shape[1]
     z, h = dem.values, rasters["spill_elevation"].values
     forest = Forest(rasters["flow_azimuth"].values, ground)
-    terrain = check_terrain(check, dem, forest, rasters, z, h, ground)
+    study = Study(options.study, dem, ground, factor) if options.study else None
+    mapped = MappedChannels(study.channels, dem, study.channel_n) if study and study.channels else None
+    terrain = check_terrain(check, dem, forest, rasters, z, h, ground, mapped)
     if terrain and options.study:
         area, own, points = terrain
         data = ~dem.void.ravel()
-        study = Study(options.study, dem, ground, factor)
+        if mapped:
+            mapped.settle(forest)
+            z = check_beds(check, mapped, forest, z, h, dem.void.ravel())
         surface = Surface(study, dem)
         check.say("cover", None if surface.is_known.all() else f"{(~surface.is_known).sum()} cells have a class the book does not know")
         z_m, h_m = z.ravel().astype(float) * factor, h.ravel().astype(float) * factor
-        travel = Travel(study, forest, surface, z_m, h_m, area, own)
+        travel = Travel(study, forest, surface, z_m, h_m, area, own, mapped)
+        result = json.loads((options.result / "result.json").read_text(encoding="utf-8"))
+        zone_of_point = check_storms_of_zones(check, study, forest, result, points, dem, own)
         if study.is_kinematic:
-            result = json.loads((options.result / "result.json").read_text(encoding="utf-8"))
             check_times_by_storm(check, travel, forest, rasters["travel_time"].values, points, result)
+        elif zone_of_point:
+            check_times_by_zone(check, travel, forest, rasters["travel_time"].values, points, zone_of_point)
         else:
             minutes = time_to_last_point(forest, forest.sum_to_root(travel.step_s), points) / 60
             check.compare("travel time", rasters["travel_time"].values, minutes, data, 1e-4, 1e-3)

@@ -11,6 +11,7 @@ import unittest
 import numpy as np
 from osgeo import gdal, osr
 
+from verify_rain_and_channels import RainFormula, RainTable, corner_to_corner, normal_depths, prevailing_zone
 from verify_result import FOOT, Forest, INCH, LEAVES, Travel, on_chart, spill_elevation
 
 VERIFY = pathlib.Path(__file__).with_name("verify_result.py")
@@ -43,6 +44,47 @@ class Charts(unittest.TestCase):
         line = (np.array([0.01, 0.04, 0.16]), np.array([1.0, 2.0, 2.0 * 4 ** 0.25]))
         for slope, expected in ((0.01, 1.0), (0.0225, 1.5), (0.04, 2.0), (0.0025, 0.5), (0.64, 2.0 * 16 ** 0.25)):
             self.assertAlmostEqual(float(on_chart(line, np.array([slope]))[0]), expected)
+
+
+class RainByDuration(unittest.TestCase):
+    def read(self, text):
+        with tempfile.TemporaryDirectory() as folder:
+            path = pathlib.Path(folder) / "rain.csv"
+            path.write_text(text)
+            return RainTable(path)
+
+    def test_a_table_is_straight_on_log_log_paper_and_level_before_its_first_duration(self):
+        rain = self.read("duration_min,intensity_2yr_in_h\n10,4\n40,1\n1440,0.1\n")
+        for minutes, expected in ((10, 4.0), (20, 2.0), (40, 1.0), (5, 4.0)):
+            self.assertAlmostEqual(float(rain.intensity(minutes * 60.0, 2.0, 0.0)) * 3600 / INCH, expected)
+        self.assertAlmostEqual(float(rain.intensity(60.0, 2.0, 1200.0)) * 3600 / INCH, 2.0)    # never below the least time
+        self.assertTrue(np.isnan(rain.intensity(90_000.0, 2.0, 0.0)))
+        self.assertAlmostEqual(rain.two_year_24_hour() / INCH, 2.4)
+
+    def test_depths_are_read_over_their_durations(self):
+        rain = self.read("duration_h,depth_2yr_mm\n1,30\n24,72\n")
+        self.assertAlmostEqual(float(rain.intensity(3600.0, 2.0, 0.0)) * 3.6e6, 30.0)
+        self.assertAlmostEqual(rain.two_year_24_hour(), 0.072)
+
+    def test_a_formula_is_worked_out_with_its_units(self):
+        rain = RainFormula("i[in/h] = 45 T^0.2 / (t[min] + 10)^0.8")
+        self.assertAlmostEqual(float(rain.intensity(np.array(600.0), 10.0, 0.0)) * 3600 / INCH, 45 * 10 ** 0.2 / 20 ** 0.8)
+
+    def test_the_greatest_part_of_a_catchment_gives_the_zone(self):
+        zone, area, inside = np.array([1, 1, 2, 0, 0, 0]), np.ones(6), np.array([1, 1, 1, 1, 1, 1], bool)
+        self.assertEqual(prevailing_zone(zone, area, ["a", "b"], inside, False), ("a", 2 / 6))
+        self.assertEqual(prevailing_zone(zone, area, ["a", "b"], inside, True), (None, 3 / 6))
+
+
+class Channels(unittest.TestCase):
+    def test_a_line_goes_on_corner_to_corner(self):
+        self.assertEqual(corner_to_corner([(0, 0), (0, 1), (1, 1), (1, 2), (2, 2)]), [(0, 0), (1, 1), (2, 2)])
+        self.assertEqual(corner_to_corner([(0, 0), (1, 0), (2, 0)]), [(0, 0), (1, 0), (2, 0)])
+
+    def test_a_wide_channel_runs_as_deep_as_manning_says(self):
+        # 1000 m wide: R is the depth, within its share of the banks; q = y^(5/3) sqrt(S) / n.
+        depth = normal_depths(np.array([1000.0]), np.array([1000.0]), np.array([0.0]), np.array([0.03]), np.array([0.01]))
+        self.assertAlmostEqual(float(depth[0]), (0.03 / 0.1) ** 0.6, places=3)
 
 
 class SlopeAhead(unittest.TestCase):
