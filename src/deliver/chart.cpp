@@ -156,7 +156,7 @@ std::string panel_chart(const std::string& finding, const std::string& x_title, 
         ceiling += panel_high + panel_gap;
     }
     svg += x_axis(frame);
-    for (std::size_t i = 0; i < marks.size(); ++i) svg += mark_line(frame, marks[i], 15.0 + 20.0 * static_cast<double>(i), frame.base);
+    for (std::size_t i = 0; i < marks.size(); ++i) svg += mark_line(frame, marks[i], 19.0 + 20.0 * static_cast<double>(i), frame.base);
     return chart_begun(finding, frame.base + axis_high) + svg + "</svg>";
 }
 

@@ -75,12 +75,24 @@ struct ChartRow {
     std::vector<ChartPart> parts = {};
 };
 
-/// Rows on one scale that begins at 0; a dashed line at `mark`.
-[[nodiscard]] std::string row_chart(const std::string& finding, const std::string& x_title, const std::vector<ChartRow>& rows,
-                                    std::optional<double> mark = {});
+/// The scale of rows.
+struct RowScale {
+    std::string title;
+    std::optional<double> mark = {};   ///< a dashed line there
+    bool begins_at_zero = true;        ///< else a little below the least value: for ranges, whose lengths still compare
+};
 
-/// What a kind of part looks like, to stand in a caption before `text`, which is HTML.
-[[nodiscard]] std::string chart_key(const std::string& kind, const std::string& text);
+/// Rows on one scale.
+[[nodiscard]] std::string row_chart(const std::string& finding, const RowScale& scale, const std::vector<ChartRow>& rows);
+
+/// A kind of part, or "mark", and in plain words what it stands for.
+struct ChartKey {
+    std::string kind;
+    std::string words;
+};
+
+/// What kinds of parts look like, to stand in a caption.
+[[nodiscard]] std::string chart_keys(const std::vector<ChartKey>& keys);
 
 /// A step of 1, 2 or 5 times a power of ten of which about `wanted` make the span.
 [[nodiscard]] double round_step(double span, double wanted);

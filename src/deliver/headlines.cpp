@@ -124,7 +124,7 @@ std::optional<std::string> difference_sentence(const StudyResult& result) {
     const SubareaShare& maker = raster_peak(result, first)->makers.front();
     return "The subarea that arrives last is not the one with the greatest share of the peak at " + of_points(points.size(), result.outlets.size()) + ": " +
            names_text(result, points) + ". At '" + point_name(result, first) + "' the water of '" + point_name(result, result.network.points[first - 1].raster_storm().last) +
-           "' arrives last, and '" + point_name(result, maker.subarea) + "' makes " + significant(100.0 * maker.of_window, 3) + " % of the peak.";
+           "' arrives last, and the subarea of '" + point_name(result, maker.subarea) + "' makes " + significant(100.0 * maker.of_window, 3) + " % of the peak.";
 }
 
 /// Where the second to arrive comes closest behind the last.

@@ -173,7 +173,7 @@ std::string arrival_figure(const Outlet& outlet) {
 }
 
 ChartRow dot_row(const std::string& label, double min) {
-    return {.label = label, .note = significant(min, 3), .parts = {{0.0, min, "reach"}, {0.0, min, "dot"}}};
+    return {.label = label, .note = shown_minutes(60.0 * min), .parts = {{0.0, min, "reach"}, {0.0, min, "dot"}}};
 }
 
 std::string methods_figure(const ReportMatter& matter, const Outlet& outlet) {
@@ -195,7 +195,7 @@ std::string methods_figure(const ReportMatter& matter, const Outlet& outlet) {
                   " and " + shown_minutes(in_seconds(methods.spread->highest)) + " min, their median at " + shown_minutes(in_seconds(methods.spread->median)) +
                   " min; along the governing path it takes " + shown_minutes(own) + " min.";
     }
-    return figure("Methods side by side", row_chart(finding, "time of concentration, min", dots, median), finding + (median ? chart_key("mark", "median") : ""),
+    return figure("Methods side by side", row_chart(finding, {.title = "time of concentration, min", .mark = median}, dots), finding + (median ? chart_keys({{"mark", "median"}}) : ""),
                   hidden_table("Table of all methods", {"method", "time min", "ratio to the path", "applicable, or why not"}, rows));
 }
 

@@ -107,9 +107,9 @@ std::string subarea_figure(const StudyResult& result, const Outlet& outlet) {
         if (cells.size() < most_rows) cells.push_back(arrival_cells(result, row, network.area, is_last));
     }
     const std::string finding = subarea_finding(result, outlet);
-    const std::string caption = html_text(finding) + left_out(storm.subareas_above, bars.size(), "Shown are the") + chart_key("bar", "own time") +
-                                chart_key("open", "way to this point") + chart_key("faint", "slack") + chart_key("mark", "time of concentration in the network");
-    return figure("Subareas: arrival, slack and share of the peak", row_chart(finding, "time, min", bars, minutes_of(storm.time)), caption,
+    const std::string caption = html_text(finding) + left_out(storm.subareas_above, bars.size(), "Shown are the") + 
+                                chart_keys({{"bar", "own time"}, {"open", "way to this point"}, {"faint", "slack"}, {"mark", "time of concentration in the network"}});
+    return figure("Subareas: arrival, slack and share of the peak", row_chart(finding, {.title = "time, min", .mark = minutes_of(storm.time)}, bars), caption,
                   hidden_table("Table of subareas", {"subarea", "own area " + ReportScale(result.study.report_units).area_unit(), "share of the area %", "own time min", "way min",
                                                      "arrival min", "slack min", "share of the runoff %", "share of the peak %", "stated"}, cells));
 }

@@ -89,9 +89,9 @@ std::string peaks_figure(const PeakMatter& matter) {
         cells.push_back(peak_cells(matter, i));
     }
     const std::string finding = peaks_finding(matter);
-    return figure("Peak flow by return period", row_chart(finding, "peak flow, " + matter.flow_unit(), rows),
+    return figure("Peak flow by return period", row_chart(finding, {.title = "peak flow, " + matter.flow_unit()}, rows),
                   html_text(finding) + " Rational method: the rain is taken as even over the area and steady for its duration, and nothing as stored on the way." +
-                      chart_key("bar", "the peak: the greatest over all durations") + chart_key("open", "from the whole area"),
+                      chart_keys({{"bar", "the peak: the greatest over all durations"}, {"open", "from the whole area"}}),
                   hidden_table("Table of peaks", peak_head(matter), cells));
 }
 

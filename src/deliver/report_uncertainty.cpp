@@ -59,9 +59,9 @@ std::string uncertainty_figure(const StudyResult& result, const Outlet& outlet) 
         cells.push_back(effect_cells(result, effect));
     }
     const std::string finding = "The time of concentration is " + shown_minutes(point.typical_s) + " min. " + uncertainty_sentence(result, outlet) + last_words(result, point);
-    return figure("Range of the time of concentration", row_chart(finding, "time of concentration, min", rows, point.typical_s / 60.0),
-                  html_text(finding) + chart_key("reach", "all inputs fast, all slow") + chart_key("bar", "nine of ten draws") + chart_key("tick", "half of the draws") +
-                      chart_key("open", "one input over its range") + chart_key("mark", "as in the study"),
+    return figure("Range of the time of concentration", row_chart(finding, {.title = "time of concentration, min", .mark = point.typical_s / 60.0, .begins_at_zero = false}, rows),
+                  html_text(finding) + chart_keys({{"reach", "all inputs fast, all slow"}, {"bar", "nine of ten draws"}, {"tick", "half of the draws"},
+                                                       {"open", "one input over its range"}, {"mark", "as in the study"}}),
                   hidden_table("Table of inputs", {"input", "unit", "low", "typical", "high", "time at low min", "time at high min", "range from"}, cells));
 }
 

@@ -115,7 +115,7 @@ class Report(CommandTest):
     def table_of(self, number, summary):
         """The rows of a table in a point's section, as texts by the heads of their columns."""
         part = re.search(rf'(?s)<section class="point" id="p{number}".*?<summary>{summary}</summary>(.*?)</table>', self.text)[1]
-        heads = re.findall(r"<th[^>]*>(.*?)</th>", part)
+        heads = re.findall(r"<th scope[^>]*>(.*?)</th>", part)
         return [dict(zip(heads, (html.unescape(cell) for cell in re.findall(r"<td[^>]*>(.*?)</td>", row)))) for row in re.findall(r"<tr><td.*?</tr>", part)]
 
     def shown(self):

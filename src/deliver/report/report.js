@@ -78,10 +78,12 @@
   function drawMap() {
     fitScreen();
     map = L.map("map", { crs: L.CRS.Simple, preferCanvas: true, minZoom: -12, maxZoom: 6, zoomSnap: 0, attributionControl: false });
+    map.fitBounds(bounds, { animate: false });
     map.createPane("iso").style.zIndex = 450;
     ["relief", "times"].forEach(function (name) {
       var picture = document.getElementById(name);
-      L.imageOverlay(picture.src, bounds, { alt: picture.alt, className: name }).addTo(map);
+      // Drawn at once at any size: paper does not wait.
+      L.imageOverlay(picture.src, bounds, { alt: picture.alt, className: name }).addTo(map).getElement().decoding = "sync";
     });
     data.points.forEach(function (point) {
       (data.areas[point.number - 1] || []).forEach(function (rings) {
@@ -105,8 +107,7 @@
       marks[point.number] = L.circleMarker(at(point.at[0], point.at[1]), { radius: 6, color: "#000", weight: 2, fillColor: "#fff", fillOpacity: 1 })
         .bindTooltip(name).on("click", function () { location.hash = "p" + point.number; }).addTo(map);
     });
-    map.fitBounds(bounds, { animate: false });
-    var width = frame.clientWidth;
+    var width = frame.parentNode.clientWidth;
     window.addEventListener("resize", function () {
       if (frame.parentNode.clientWidth === width) return;
       width = frame.parentNode.clientWidth;

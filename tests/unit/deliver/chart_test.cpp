@@ -73,7 +73,7 @@ TEST_CASE("a line chart has its finding as alternative text, round numbers on bo
 }
 
 TEST_CASE("a line chart without any span is drawn all the same") {
-    const std::string svg = line_chart("One place.", {.x_greatest = 0, .y_least = 5, .y_greatest = 5}, {{.kind = "ground", .points = {{0, 5}}}});
+    const std::string svg = line_chart("One place.", {.x_title = "m", .y_title = "m", .x_greatest = 0, .y_least = 5, .y_greatest = 5}, {{.kind = "ground", .points = {{0, 5}}}});
     CHECK(svg.find("nan") == std::string::npos);
     CHECK(svg.find("inf") == std::string::npos);
     check_within(svg);
@@ -90,7 +90,7 @@ TEST_CASE("panels lie one below the other over the same times, and marks go thro
 }
 
 TEST_CASE("bars are as long as their values, whatever their order") {
-    const std::string svg = row_chart("Two.", "min", {{.label = "a", .note = "10", .parts = {{0, 10, "bar"}}}, {.label = "b", .note = "5", .parts = {{0, 5, "bar", 0}, {5, 0, "open", 1}}}}, 7.5);
+    const std::string svg = row_chart("Two.", {.title = "min", .mark = 7.5}, {{.label = "a", .note = "10", .parts = {{0, 10, "bar"}}}, {.label = "b", .note = "5", .parts = {{0, 5, "bar", 0}, {5, 0, "open", 1}}}});
     const std::vector<double> wide = numbers(svg, "width");
     REQUIRE(wide.size() == 3);
     CHECK(wide[0] == Approx(2 * wide[1]).margin(0.2));
@@ -99,14 +99,29 @@ TEST_CASE("bars are as long as their values, whatever their order") {
     check_within(svg);
 }
 
+TEST_CASE("a scale of ranges may begin below the least of them, at a round number") {
+    const std::string svg = row_chart("A range.", {.title = "min", .mark = 77.6, .begins_at_zero = false},
+                                      {{.label = "a", .parts = {{53, 115, "reach"}, {0, 78, "tick"}}}, {.label = "b", .parts = {{67, 92, "open"}}}});
+    CHECK(svg.find(">40<") != std::string::npos);
+    CHECK(svg.find(">20<") == std::string::npos);
+    check_within(svg);
+}
+
+TEST_CASE("keys show what they name") {
+    const std::string html = chart_keys({{"bar", evil}, {"mark", "median"}});
+    CHECK(count_of(html, "class=\"bar\"") == 1);
+    CHECK(count_of(html, "class=\"mark\"") == 1);
+    CHECK(count_of(html, "<script") == 0);
+}
+
 TEST_CASE("rows without any value, and no rows at all, are drawn") {
-    check_within(row_chart("None.", "min", {{.label = "a", .note = "no peak"}}));
-    check_within(row_chart("None.", "min", {}));
+    check_within(row_chart("None.", {.title = "min"}, {{.label = "a", .note = "no peak"}}));
+    check_within(row_chart("None.", {.title = "min", .begins_at_zero = false}, {}));
 }
 
 TEST_CASE("no label, note, title or finding becomes markup") {
     for (const std::string& svg : {line_chart(evil, {.x_title = evil, .y_title = evil}, {}, {{{0, 1, "", evil}}}), panel_chart(evil, evil, {{.title = evil, .points = {{1, 1}}}}, {{1, evil}}),
-                                   row_chart(evil, evil, {{.label = evil, .note = evil, .parts = {{0, 1, "bar"}}}})}) {
+                                   row_chart(evil, {.title = evil}, {{.label = evil, .note = evil, .parts = {{0, 1, "bar"}}}})}) {
         CHECK(count_of(svg, "</svg>") == 1);
         CHECK(count_of(svg, "<script") == 0);
     }
