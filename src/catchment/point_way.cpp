@@ -11,6 +11,7 @@ double PointWay::share(Regime regime) const {
 PointWay way_of(const PathGround& ground, std::span<const PathCell> path) {
     PointWay way;
     if (path.empty()) return way;
+    for (const PathCell& cell : path) way.cells.push_back(cell.cell);
     way.length = path.front().flow_distance - path.back().flow_distance;
     way.time = path.front().time_to_root - path.back().time_to_root;
     way.fall_m = (path.front().spill - path.back().spill) * ground.metres_per_elevation_unit;

@@ -78,6 +78,74 @@ std::optional<std::string> peak_sentence(const StudyResult& result, const Outlet
            significant(100.0 * peak.window_share, 3) + " % of the area; the whole area gives " + flow_text(result, peak.whole) + ".";
 }
 
+/// The first few names of points, and how many more there are.
+std::string names_text(const StudyResult& result, const std::vector<PointNumber>& points) {
+    constexpr std::size_t most_named = 4;
+    std::string text;
+    for (std::size_t i = 0; i < std::min(most_named, points.size()); ++i) text += (i == 0 ? "'" : ", '") + point_name(result, points[i]) + "'";
+    return points.size() <= most_named ? text : text + " and " + std::to_string(points.size() - most_named) + " more";
+}
+
+/// The peak of a point that paths and maps are for; null where there is none.
+const PointPeak* raster_peak(const StudyResult& result, PointNumber number) {
+    const PointPeak& peak = result.peaks.points[number - 1][result.rain.raster];
+    return peak.is_there() ? &peak : nullptr;
+}
+
+std::string of_points(std::size_t some, std::size_t all) { return std::to_string(some) + " of " + std::to_string(all) + " points"; }
+
+/// Where a part of the area makes more than the whole; the greatest gain first.
+std::optional<std::string> partial_sentence(const StudyResult& result) {
+    if (!result.peaks.are_there() || result.outlets.size() < 2) return std::nullopt;
+    std::vector<PointNumber> points;
+    for (const Outlet& outlet : result.outlets) {
+        const PointPeak* peak = raster_peak(result, outlet.number);
+        if (peak != nullptr && peak->partial > peak->whole) points.push_back(outlet.number);
+    }
+    if (points.empty()) return "At no point does a part of the area make a greater peak than the whole.";
+    const auto gain = [&](PointNumber number) { return raster_peak(result, number)->partial / raster_peak(result, number)->whole; };
+    std::stable_sort(points.begin(), points.end(), [&](PointNumber a, PointNumber b) { return gain(a) > gain(b); });
+    return "A part of the area makes the peak at " + of_points(points.size(), result.outlets.size()) + ", up to " + significant(gain(points.front()), 3) +
+           " times that of the whole: " + names_text(result, points) + ".";
+}
+
+/// Where the subarea that arrives last is not the one with the greatest share of the peak; the largest catchments first.
+std::optional<std::string> difference_sentence(const StudyResult& result) {
+    if (!result.peaks.are_there()) return std::nullopt;
+    std::vector<PointNumber> points;
+    for (const std::size_t i : by_area(result)) {
+        const auto number = static_cast<PointNumber>(i + 1);
+        const PointPeak* peak = raster_peak(result, number);
+        const NetworkStorm& storm = result.network.points[i].raster_storm();
+        if (peak != nullptr && !peak->makers.empty() && peak->makers.front().subarea != storm.last) points.push_back(number);
+    }
+    if (points.empty()) return std::nullopt;
+    const PointNumber first = points.front();
+    const SubareaShare& maker = raster_peak(result, first)->makers.front();
+    return "The subarea that arrives last is not the one with the greatest share of the peak at " + of_points(points.size(), result.outlets.size()) + ": " +
+           names_text(result, points) + ". At '" + point_name(result, first) + "' the water of '" + point_name(result, result.network.points[first - 1].raster_storm().last) +
+           "' arrives last, and the subarea of '" + point_name(result, maker.subarea) + "' makes " + significant(100.0 * maker.of_window, 3) + " % of the peak.";
+}
+
+/// Where the second to arrive comes closest behind the last.
+std::optional<std::string> lead_sentence(const StudyResult& result) {
+    constexpr std::size_t most_told = 3;
+    std::vector<PointNumber> points;
+    for (const Outlet& outlet : result.outlets) {
+        if (result.network.points[outlet.number - 1].raster_storm().lead) points.push_back(outlet.number);
+    }
+    if (points.empty()) return std::nullopt;
+    const auto lead = [&](PointNumber number) { return *result.network.points[number - 1].raster_storm().lead; };
+    std::stable_sort(points.begin(), points.end(), [&](PointNumber a, PointNumber b) { return lead(a) < lead(b); });
+    points.resize(std::min(points.size(), most_told));
+    std::string text;
+    for (const PointNumber number : points) {
+        text += (text.empty() ? "" : ", ") + minutes_text(from_fixed(lead(number))) + " at '" + point_name(result, number) + "' ('" +
+                point_name(result, result.network.points[number - 1].raster_storm().last) + "' last)";
+    }
+    return "Least lead of the subarea that arrives last over the next one: " + text + "; changes of that size change which it is.";
+}
+
 std::string concern_sentence(const StudyResult& result) {
     if (result.notices.empty()) return "Nothing was found that needs a person's eye more than usual.";
     return "Check this first. " + result.notices.front().text;
@@ -117,6 +185,9 @@ std::vector<std::string> headlines(const StudyResult& result) {
     std::vector<std::string> sentences{governing_sentence(result, main), makeup_sentence(main)};
     if (const auto peak = peak_sentence(result, main)) sentences.push_back(*peak);
     if (result.uncertainty != nullptr) sentences.push_back(uncertainty_sentence(result, main));
+    for (const auto& sentence : {partial_sentence(result), difference_sentence(result), lead_sentence(result)}) {
+        if (sentence) sentences.push_back(*sentence);
+    }
     sentences.push_back(concern_sentence(result));
     return sentences;
 }

@@ -52,59 +52,84 @@ std::vector<Station> stations(const Outlet& outlet) {
     return all;
 }
 
-std::vector<ChartStretch> regime_stretches(const ReportScale& scale, const Outlet& outlet) {
-    std::vector<ChartStretch> stretches;
+ChartStrip regime_strip(const ReportScale& scale, const Outlet& outlet) {
+    ChartStrip strip;
     double distance = 0.0;
     for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) {
         const double to = distance + row.segment->whole_length_m();
         const std::string regime(name_of(row.segment->regime));
-        const bool joins = !stretches.empty() && stretches.back().label == regime;
-        if (joins) stretches.back().to = scale.length(to);
-        if (!joins) stretches.push_back({scale.length(distance), scale.length(to), colour_of(row.segment->regime), regime});
+        const bool joins = !strip.empty() && strip.back().label == regime;
+        if (joins) strip.back().to = scale.length(to);
+        if (!joins) strip.push_back({scale.length(distance), scale.length(to), colour_of(row.segment->regime), regime});
         distance = to;
     }
-    return stretches;
+    return strip;
 }
 
-std::string regime_words(const Outlet& outlet) {
-    std::string words;
-    for (const ChartStretch& stretch : regime_stretches(ReportScale(ReportUnits::si), outlet)) {
-        words += (words.empty() ? "" : ", then ") + stretch.label;
+/// Land cover along the path; in channels there is none that matters.
+ChartStrip cover_strip(const StudyResult& result, const Outlet& outlet) {
+    const ReportScale scale(result.study.report_units);
+    ChartStrip strip;
+    double distance = 0.0;
+    for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) {
+        const double to = distance + row.segment->whole_length_m();
+        const CoverClass* cover = cover_of(result, *row.segment);
+        const bool joins = cover != nullptr && !strip.empty() && strip.back().label == cover->name && strip.back().to == scale.length(distance);
+        if (joins) strip.back().to = scale.length(to);
+        if (cover != nullptr && !joins) strip.push_back({scale.length(distance), scale.length(to), "", cover->name});
+        distance = to;
     }
+    return strip;
+}
+
+std::string words_of(const ChartStrip& strip) {
+    std::string words;
+    for (const ChartStretch& stretch : strip) words += (words.empty() ? "" : ", then ") + stretch.label;
     return words;
 }
 
-std::string figure(const std::string& title, const std::string& chart, const std::string& caption, const std::string& table) {
-    return "<figure><h3>" + title + "</h3>" + chart + "<figcaption>" + caption + "</figcaption>" + table + "</figure>\n";
+std::string regime_words(const Outlet& outlet) { return words_of(regime_strip(ReportScale(ReportUnits::si), outlet)); }
+
+/// Ground and spill elevation as lines, and the ponds between as a shape under them.
+std::vector<ChartLine> profile_lines(const ReportScale& scale, const std::vector<ProfilePoint>& profile) {
+    ChartLine ground{.kind = "ground"};
+    ChartLine spill{.kind = "spill"};
+    for (const ProfilePoint& point : profile) {
+        ground.points.push_back({scale.length(point.distance_m), scale.length(point.ground_m)});
+        spill.points.push_back({scale.length(point.distance_m), scale.length(point.spill_m)});
+    }
+    ChartLine pond{.kind = "pond", .points = spill.points};
+    pond.points.insert(pond.points.end(), ground.points.rbegin(), ground.points.rend());
+    return {pond, ground, spill};
+}
+
+std::string profile_finding(const ReportScale& scale, const Outlet& outlet) {
+    const PathSummary& summary = outlet.governing.summary;
+    const std::string m = " " + scale.length_unit();
+    return "Long profile of the governing path: it falls " + significant(scale.length(summary.fall_m), 4) + m + " over " +
+           significant(scale.length(from_fixed(summary.length)), 4) + m + ", as " + regime_words(outlet) + "; " +
+           significant(100.0 * summary.share_of_length(summary.ponded_length_m), 3) + " % of it is ponded and " +
+           significant(100.0 * summary.share_of_length(summary.floor_length_m), 3) + " % runs on the least slope.";
 }
 
 std::string profile_figure(const ReportMatter& matter, const Outlet& outlet) {
     const ReportScale scale(matter.result.study.report_units);
     const std::string m = scale.length_unit();
-    ChartLine ground{.kind = "ground"};
-    ChartLine spill{.kind = "spill"};
+    const std::vector<ProfilePoint> profile = ground_profile(matter, outlet.governing);
     ChartAxes axes{.x_title = "distance from the divide, " + m, .y_title = "elevation, " + m,
-                   .x_greatest = scale.length(from_fixed(outlet.governing.summary.length))};
+                   .x_greatest = scale.length(from_fixed(outlet.governing.summary.length)),
+                   .y_least = scale.length(profile.front().ground_m), .y_greatest = scale.length(profile.front().ground_m)};
     std::vector<std::vector<std::string>> rows;
-    for (const ProfilePoint& point : ground_profile(matter, outlet.governing)) {
-        ground.points.push_back({scale.length(point.distance_m), scale.length(point.ground_m)});
-        spill.points.push_back({scale.length(point.distance_m), scale.length(point.spill_m)});
-        rows.push_back({significant(ground.points.back().x, 6), fixed_decimals(ground.points.back().y, 2), fixed_decimals(spill.points.back().y, 2)});
+    for (const ProfilePoint& point : profile) {
+        axes.y_least = std::min(axes.y_least, scale.length(point.ground_m));
+        axes.y_greatest = std::max(axes.y_greatest, scale.length(point.spill_m));
+        rows.push_back({significant(scale.length(point.distance_m), 6), fixed_decimals(scale.length(point.ground_m), 2),
+                        fixed_decimals(scale.length(point.spill_m), 2)});
     }
-    axes.y_least = axes.y_greatest = ground.points.front().y;
-    for (const ChartLine* line : {&ground, &spill}) {
-        for (const ChartPoint& point : line->points) {
-            axes.y_least = std::min(axes.y_least, point.y);
-            axes.y_greatest = std::max(axes.y_greatest, point.y);
-        }
-    }
-    const PathSummary& summary = outlet.governing.summary;
-    const std::string finding = "Long profile of the governing path: it falls " + significant(scale.length(summary.fall_m), 4) + " " + m + " over " +
-                                significant(scale.length(from_fixed(summary.length)), 4) + " " + m + ", as " + regime_words(outlet) + "; " +
-                                significant(100.0 * summary.share_of_length(summary.ponded_length_m), 3) + " % of it is ponded and " +
-                                significant(100.0 * summary.share_of_length(summary.floor_length_m), 3) + " % runs on the least slope.";
-    return figure("Long profile", line_chart(finding, axes, {ground, spill}, regime_stretches(scale, outlet)),
-                  "Solid: ground; dashed: spill elevation, the level at which the water gets out. Bars below: " + html_text(regime_words(outlet)) + ".",
+    const ChartStrip covers = cover_strip(matter.result, outlet);
+    const std::string over = covers.empty() ? "." : "; below it the land cover outside channels: " + html_text(words_of(covers)) + ".";
+    return figure("Long profile", line_chart(profile_finding(scale, outlet), axes, profile_lines(scale, profile), {regime_strip(scale, outlet), covers}),
+                  "Solid: ground; dashed: spill elevation, the level at which the water gets out. Coloured bar: " + html_text(regime_words(outlet)) + over,
                   hidden_table("Table of the ground", {"distance " + m, "ground " + m, "spill elevation " + m}, rows));
 }
 
@@ -127,7 +152,7 @@ std::string running_figure(const ReportMatter& matter, const Outlet& outlet) {
                   shown_minutes(longest->time_s) + " of " + shown_minutes(outlet.time_of_concentration_s()) + " min.";
     }
     return figure("Running time along the governing path", line_chart("Running time along the governing path. " + slowest, axes, {curve},
-                                                                     regime_stretches(scale, outlet)),
+                                                                     {regime_strip(scale, outlet)}),
                   slowest, hidden_table("Table of the segments' ends", {"distance " + m, "running time min"}, rows));
 }
 
@@ -147,34 +172,43 @@ std::string arrival_figure(const Outlet& outlet) {
                   hidden_table("Table of arrivals", {"share of the area %", "time min"}, rows));
 }
 
+ChartRow dot_row(const std::string& label, double min) {
+    return {.label = label, .note = shown_minutes(60.0 * min), .parts = {{0.0, min, "reach"}, {0.0, min, "dot"}}};
+}
+
 std::string methods_figure(const ReportMatter& matter, const Outlet& outlet) {
     const PointMethods& methods = matter.result.methods[outlet.number - 1];
     const double own = outlet.time_of_concentration_s();
-    std::vector<ChartBar> bars{{"along the governing path", own / 60.0}};
+    std::vector<ChartRow> dots{dot_row("along the governing path", own / 60.0)};
     std::vector<std::vector<std::string>> rows;
     for (const MethodTime& time : methods.times) {
         const std::string name(time.method->about.name);
-        if (time.answer.is_applicable()) bars.push_back({name, in_minutes(*time.answer.time)});
+        if (time.answer.is_applicable()) dots.push_back(dot_row(name, in_minutes(*time.answer.time)));
         rows.push_back({html_text(name), time.answer.time ? fixed_decimals(in_minutes(*time.answer.time), 2) : "–",
                         time.ratio ? significant(*time.ratio, 3) : "–", html_text(time.answer.why_not.empty() ? "applicable" : time.answer.why_not)});
     }
-    std::string finding = "No formula that takes the catchment as one lump is within its range here.";
-    double mark = own / 60.0;
+    std::string finding = "No formula that takes the catchment as one lump is within its range here; along the governing path it takes " + shown_minutes(own) + " min.";
+    std::optional<double> median;
     if (methods.spread) {
-        mark = in_minutes(methods.spread->median);
+        median = in_minutes(methods.spread->median);
         finding = std::to_string(methods.spread->methods) + " formulas within their range lie between " + shown_minutes(in_seconds(methods.spread->lowest)) +
                   " and " + shown_minutes(in_seconds(methods.spread->highest)) + " min, their median at " + shown_minutes(in_seconds(methods.spread->median)) +
                   " min; along the governing path it takes " + shown_minutes(own) + " min.";
     }
-    return figure("Methods side by side", dot_chart(finding, "time of concentration, min", bars, mark), finding + " Dashed: the median.",
+    return figure("Methods side by side", row_chart(finding, {.title = "time of concentration, min", .mark = median}, dots), finding + (median ? chart_keys({{"mark", "median"}}) : ""),
                   hidden_table("Table of all methods", {"method", "time min", "ratio to the path", "applicable, or why not"}, rows));
 }
 
 }  // namespace
 
+std::string figure(const std::string& title, const std::string& chart, const std::string& caption, const std::string& table) {
+    return "<figure><h3>" + title + "</h3>" + chart + "<figcaption>" + caption + "</figcaption>" + table + "</figure>\n";
+}
+
 std::string point_charts(const ReportMatter& matter, const Outlet& outlet) {
     return "<div class=\"charts\">" + profile_figure(matter, outlet) + running_figure(matter, outlet) + arrival_figure(outlet) +
-           methods_figure(matter, outlet) + "</div>\n";
+           peak_figures(matter.result, outlet) + subarea_figure(matter.result, outlet) + methods_figure(matter, outlet) +
+           uncertainty_figure(matter.result, outlet) + "</div>\n";
 }
 
 }  // namespace rillclock

@@ -1,6 +1,8 @@
 #include "rillclock/deliver/report.hpp"
 
 #include <algorithm>
+#include <array>
+#include <string_view>
 
 #include "html_text.hpp"
 #include "report_files.hpp"
@@ -15,7 +17,8 @@ namespace rillclock {
 namespace {
 
 constexpr std::size_t most_bytes_of_sections = 6'500'000;
-constexpr std::size_t most_bytes_with_sheets = 3'000'000;
+constexpr std::size_t most_bytes_with_charts = 4'500'000;
+constexpr std::size_t most_bytes_with_sheets = 2'500'000;
 constexpr std::size_t most_notices_at_top = 8;
 
 /// Nothing is fetched, and no script runs but the two that are named here by their checksums.
@@ -67,9 +70,54 @@ std::string map_part(const ReportMatter& matter) {
                                                               "th cell of every " + std::to_string(matter.overview.stride) +
                                                               "th row; rasters/travel_time.tif has them all.";
     return "<figure class=\"map\"><div id=\"map\" class=\"only-scripted\" role=\"application\" aria-label=\"map of travel times, paths and points; the "
-           "table of points leads to the same\"></div><noscript><p>The map needs scripts; the figures below do not.</p></noscript>" +
+           "table of points leads to the same\"></div>" + map_pictures(matter) + "<noscript><p>Without scripts the map shows relief and travel times alone.</p></noscript>" +
            map_legend(matter) + "<figcaption>Travel time to the last point on the way down, in the projection of the elevations, over shaded relief; isochrones are drawn where the mean over nine dots enters the next class; "
            "governing paths by regime." + note + "</figcaption></figure>\n";
+}
+
+bool is_made_by_part(const StudyResult& result, const Outlet& outlet) {
+    if (!result.peaks.are_there()) return false;
+    const PointPeak& peak = result.peaks.points[outlet.number - 1][result.rain.raster];
+    return peak.is_there() && peak.partial > peak.whole;
+}
+
+/// What the points can be filtered by: words of a row, and what they say.
+struct PointFilter {
+    std::string_view word;
+    std::string_view words;
+    bool (*fits)(const StudyResult&, const Outlet&);
+};
+
+constexpr std::array<PointFilter, 5> filters = {{
+    {"part", "a part of the area makes the peak", is_made_by_part},
+    {"edge", "catchment touches the edge of the data", [](const StudyResult&, const Outlet& o) { return o.touches_edge(); }},
+    {"moved", "point was moved", [](const StudyResult&, const Outlet& o) { return in_metres(o.point.moved) > 0; }},
+    {"stated", "something is stated here or above", [](const StudyResult& r, const Outlet& o) { return !r.network.points[o.number - 1].stated_above.empty(); }},
+    {"last", "last on the way down", [](const StudyResult& r, const Outlet& o) { return r.network.points[o.number - 1].next == 0; }},
+}};
+
+std::string filter_words(const StudyResult& result, const Outlet& outlet) {
+    std::string words;
+    for (const PointFilter& filter : filters) {
+        if (filter.fits(result, outlet)) words += (words.empty() ? "" : " ") + std::string(filter.word);
+    }
+    return words;
+}
+
+/// A choice for each filter that fits some point.
+std::string filter_choice(const StudyResult& result) {
+    std::string html = "<label>Show <select id=\"filter\"><option value=\"\">all points</option>";
+    for (const PointFilter& filter : filters) {
+        const bool any = std::any_of(result.outlets.begin(), result.outlets.end(), [&](const Outlet& outlet) { return filter.fits(result, outlet); });
+        if (any) html += "<option value=\"" + std::string(filter.word) + "\">" + std::string(filter.words) + "</option>";
+    }
+    return html + "</select></label>";
+}
+
+std::string peak_cell(const StudyResult& result, const Outlet& outlet) {
+    if (!result.peaks.are_there()) return "";
+    const PointPeak& peak = result.peaks.points[outlet.number - 1][result.rain.raster];
+    return "<td>" + (peak.is_there() ? significant(ReportScale(result.study.report_units).flow(peak.partial), 4) : std::string("–")) + "</td>";
 }
 
 std::string outlet_row(const StudyResult& result, const Outlet& outlet, bool has_section) {
@@ -77,10 +125,10 @@ std::string outlet_row(const StudyResult& result, const Outlet& outlet, bool has
     const std::string number = std::to_string(outlet.number);
     const auto notices = std::count_if(result.notices.begin(), result.notices.end(), [&](const Notice& n) { return n.point == outlet.point.name; });
     const std::string box = has_section ? "<input type=\"checkbox\" value=\"" + number + "\" aria-label=\"print " + html_text(outlet.point.name) + "\">" : "";
-    return "<tr data-number=\"" + number + "\"><td><a href=\"#p" + number + "\">" + html_text(outlet.point.name) + "</a></td><td>" +
+    return "<tr data-number=\"" + number + "\" data-is=\"" + filter_words(result, outlet) + "\"><td><a href=\"#p" + number + "\">" + html_text(outlet.point.name) + "</a></td><td>" +
            significant(scale.area(from_fixed_area(outlet.area)), 4) + "</td><td>" + fixed_decimals(outlet.time_of_concentration_s() / 60.0, 3) + "</td><td>" +
            fixed_decimals(outlet.arrival_s[0] / 60.0, 3) + "</td><td>" + significant(scale.length(from_fixed(outlet.governing.summary.length)), 4) +
-           "</td><td>" + std::to_string(notices) + "</td><td class=\"only-scripted\">" + box + "</td></tr>\n";
+           "</td>" + peak_cell(result, outlet) + "<td>" + std::to_string(notices) + "</td><td class=\"only-scripted\">" + box + "</td></tr>\n";
 }
 
 /// The sections of the points, the largest catchments first until they are too much for one file.
@@ -88,33 +136,47 @@ struct Sections {
     std::string html;
     std::vector<bool> has_section;
     std::size_t with_sheet = 0;
+    std::size_t with_charts = 0;
     std::size_t all = 0;
 };
+
+SectionDetail detail_after(std::size_t bytes) {
+    if (bytes <= most_bytes_with_sheets) return SectionDetail::with_sheet;
+    return bytes <= most_bytes_with_charts ? SectionDetail::without_sheet : SectionDetail::figures;
+}
 
 Sections sections_of(const ReportMatter& matter) {
     Sections sections{.html = {}, .has_section = std::vector<bool>(matter.result.outlets.size(), false)};
     for (const std::size_t i : by_area(matter.result)) {
         if (sections.html.size() > most_bytes_of_sections) break;
-        const bool with_sheet = sections.html.size() <= most_bytes_with_sheets;
-        sections.html += point_section(matter, matter.result.outlets[i], with_sheet ? SectionDetail::with_sheet : SectionDetail::without_sheet);
+        const SectionDetail detail = detail_after(sections.html.size());
+        sections.html += point_section(matter, matter.result.outlets[i], detail);
         sections.has_section[i] = true;
-        sections.with_sheet += with_sheet ? 1 : 0;
+        sections.with_sheet += detail == SectionDetail::with_sheet ? 1 : 0;
+        sections.with_charts += detail == SectionDetail::figures ? 0 : 1;
         ++sections.all;
     }
     return sections;
 }
 
+std::vector<std::string> point_columns(const StudyResult& result) {
+    const ReportScale scale(result.study.report_units);
+    std::vector<std::string> names{"point", "area " + scale.area_unit(), "time min", "half arrived min", "path " + scale.length_unit()};
+    if (result.peaks.are_there()) {
+        names.push_back("peak of " + significant(result.rain.raster_storm().return_period, 6) + " years " +
+                        (result.study.report_units == ReportUnits::us ? "ft³/s" : "m³/s"));
+    }
+    names.emplace_back("notices");
+    return names;
+}
+
 std::string points_table(const ReportMatter& matter, const Sections& sections) {
     const StudyResult& result = matter.result;
-    const ReportScale scale(result.study.report_units);
-    std::string html = "<section class=\"points\"><h2>Points</h2><div class=\"tools only-scripted\"><label>Search <input type=\"search\" id=\"search\"></label>"
-                       "<span id=\"count\" role=\"status\"></span><button id=\"all\" type=\"button\">Tick all shown</button>"
+    std::string html = "<section class=\"points\"><h2>Points</h2><div class=\"tools only-scripted\"><label>Search <input type=\"search\" id=\"search\"></label>" +
+                       filter_choice(result) + "<span id=\"count\" role=\"status\"></span><button id=\"all\" type=\"button\">Tick all shown</button>"
                        "<button id=\"print\" type=\"button\">Print the ticked points</button></div>"
-                       "<div class=\"scroll\"><table id=\"points\"><thead><tr>";
-    for (const std::string& name : {std::string("point"), "area " + scale.area_unit(), std::string("time min"), std::string("half arrived min"),
-                                    "path " + scale.length_unit(), std::string("notices")}) {
-        html += "<th scope=\"col\"><button type=\"button\">" + name + "</button></th>";
-    }
+                       "<div class=\"scroll\" role=\"region\" aria-label=\"points\" tabindex=\"0\"><table id=\"points\"><thead><tr>";
+    for (const std::string& name : point_columns(result)) html += "<th scope=\"col\"><button type=\"button\">" + name + "</button></th>";
     html += "<th scope=\"col\" class=\"only-scripted\">print</th></tr></thead><tbody>\n";
     for (const std::size_t i : by_area(result)) html += outlet_row(result, result.outlets[i], sections.has_section[i]);
     return html + "</tbody></table></div>\n<p id=\"reduced\" hidden>The chosen point has no section in this file, which would become too large; rillclock "
@@ -123,13 +185,13 @@ std::string points_table(const ReportMatter& matter, const Sections& sections) {
 
 std::string reduced_note(const Sections& sections, std::size_t points) {
     std::string note;
+    const auto tell = [&](const std::string& text) { note += "<p>" + text + "</p>"; };
     if (sections.all < points) {
-        note += "<p>Of " + std::to_string(points) + " points the " + std::to_string(sections.all) +
-                " with the largest catchments have a section here; all are in the table and in tables/outlets.csv.</p>";
+        tell("Of " + std::to_string(points) + " points the " + std::to_string(sections.all) +
+             " with the largest catchments have a section here; all are in the table and in tables/outlets.csv.");
     }
-    if (sections.with_sheet < sections.all) {
-        note += "<p>The " + std::to_string(sections.with_sheet) + " with the largest catchments have their calculation sheet here; rillclock explain prints any.</p>";
-    }
+    if (sections.with_charts < sections.all) tell("Charts are here for the " + std::to_string(sections.with_charts) + " with the largest catchments; the tables have the figures of all.");
+    if (sections.with_sheet < sections.all) tell("The " + std::to_string(sections.with_sheet) + " with the largest catchments have their calculation sheet here; rillclock explain prints any.");
     return note;
 }
 

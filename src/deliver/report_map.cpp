@@ -159,6 +159,16 @@ Json longest_json(const ReportMatter& matter, const Outlet& outlet) {
     return line.flat();
 }
 
+/// Whether a label would stand clear of those that are there already.
+bool has_room(const Grid& grid, const Json& labels, double column, double row) {
+    constexpr double wide = 0.14;    // of the map's longer side
+    constexpr double high = 0.04;
+    const auto side = static_cast<double>(std::max(grid.columns, grid.rows));
+    return std::none_of(labels.begin(), labels.end(), [&](const Json& label) {
+        return std::abs(label[0].get<double>() - column) < wide * side && std::abs(label[1].get<double>() - row) < high * side;
+    });
+}
+
 /// Where the water on the governing path of a last point has a round time left to go: there an isochrone crosses it.
 void add_labels(const ReportMatter& matter, const Outlet& outlet, const TimeClasses& classes, Json& labels) {
     double left_min = outlet.time_of_concentration_s() / 60.0;
@@ -168,7 +178,9 @@ void add_labels(const ReportMatter& matter, const Outlet& outlet, const TimeClas
         for (double at = std::floor(left_min / classes.step) * classes.step; at > std::max(after, 0.0) && at < left_min; at -= classes.step) {
             const double share = (left_min - at) / (left_min - after);
             const Place& place = places[std::min(places.size() - 1, static_cast<std::size_t>(share * static_cast<double>(places.size())))];
-            labels.push_back({std::round(column_of(matter.result.grid, place)), std::round(row_of(matter.result.grid, place)), at});
+            const double column = std::round(column_of(matter.result.grid, place));
+            const double row_there = std::round(row_of(matter.result.grid, place));
+            if (has_room(matter.result.grid, labels, column, row_there)) labels.push_back({column, row_there, at});
         }
         left_min = after;
     }
@@ -195,6 +207,23 @@ Json points_json(const ReportMatter& matter) {
                           {"at", {static_cast<double>(at.column) + 0.5, static_cast<double>(at.row) + 0.5}}});
     }
     return points;
+}
+
+/// From the inlet of each pipe straight to its end.
+Json pipes_json(const ReportMatter& matter) {
+    Json pipes = Json::array();
+    for (const Outlet& outlet : matter.result.outlets) {
+        const PointEdit& edit = matter.result.network.edits[outlet.number - 1];
+        if (edit.pipe == nullptr) continue;
+        Json line = Json::array();
+        for (const PointNumber end : {outlet.number, edit.piped_to}) {
+            const RowColumn at = matter.result.grid.row_column(matter.result.outlets[end - 1].point.cell);
+            line.push_back(static_cast<double>(at.column) + 0.5);
+            line.push_back(static_cast<double>(at.row) + 0.5);
+        }
+        pipes.push_back(line);
+    }
+    return pipes;
 }
 
 /// Width and dash beside colour, so that nothing is told by colour alone.
@@ -235,12 +264,15 @@ std::string map_data(const ReportMatter& matter) {
         longest.push_back(longest_json(matter, outlet));
     }
     const Grid& grid = matter.result.grid;
-    const Json images = {{{"name", "relief"}, {"url", shade_url(matter.overview)}, {"opacity", 1.0}, {"alt", "shaded relief, lit from the north-west"}},
-                         {{"name", "times"}, {"url", time_url(matter.overview, classes)}, {"opacity", 0.85},
-                          {"alt", "travel time to the last point on the way down, in classes of " + significant(classes.step, 3) + " minutes"}}};
-    return for_script({{"rows", grid.rows}, {"columns", grid.columns}, {"tall", grid.cell_height / grid.cell_width}, {"images", images},
-                       {"regimes", regimes_json()}, {"points", points_json(matter)}, {"areas", areas_json(matter)}, {"paths", paths},
-                       {"longest", longest}, {"labels", labels_json(matter, classes)}});
+    return for_script({{"rows", grid.rows}, {"columns", grid.columns}, {"tall", grid.cell_height / grid.cell_width}, {"regimes", regimes_json()}, {"points", points_json(matter)}, {"areas", areas_json(matter)}, {"paths", paths},
+                       {"longest", longest}, {"pipes", pipes_json(matter)}, {"labels", labels_json(matter, classes)}});
+}
+
+std::string map_pictures(const ReportMatter& matter) {
+    const TimeClasses classes = time_classes(matter.result);
+    return "<div id=\"pictures\"><img id=\"relief\" alt=\"shaded relief, lit from the north-west\" src=\"" + shade_url(matter.overview) +
+           "\"><img id=\"times\" alt=\"travel time to the last point on the way down, in classes of " + significant(classes.step, 3) + " minutes\" src=\"" +
+           time_url(matter.overview, classes) + "\"></div>";
 }
 
 std::string map_legend(const ReportMatter& matter) {
@@ -255,6 +287,7 @@ std::string map_legend(const ReportMatter& matter) {
         if (regime["name"] == "none") continue;
         html += line_swatch(regime["colour"], regime["weight"], regime["dash"], regime["name"].get<std::string>());
     }
+    if (!matter.result.network.pipes.empty()) html += line_swatch("currentColor", 3, "1 6", "pipe");
     return html + line_swatch("#cc79a7", 4, "2 7", "longest path to the chosen point") + "</ul>";
 }
 

@@ -19,6 +19,25 @@ std::string fact(const std::string& name, const std::string& value) {
     return "<div><dt>" + name + "</dt><dd>" + value + "</dd></div>";
 }
 
+/// What the network and the storm say of the point; nothing where neither has anything to say.
+std::string network_facts(const StudyResult& result, const Outlet& outlet) {
+    const ReportScale scale(result.study.report_units);
+    const NetworkStorm& storm = result.network.points[outlet.number - 1].raster_storm();
+    std::string html;
+    if (storm.subareas_above > 1) {
+        html += fact("Arrives last", html_text(point_name(result, storm.last)) + (storm.lead ? ", by " + shown_minutes(from_fixed(*storm.lead)) + " min" : std::string()));
+    }
+    if (!result.peaks.are_there()) return html;
+    const PointPeak& peak = result.peaks.points[outlet.number - 1][result.rain.raster];
+    const std::string unit = result.study.report_units == ReportUnits::us ? " ft³/s" : " m³/s";
+    html += fact("Peak of " + significant(result.rain.raster_storm().return_period, 6) + " years",
+                 peak.is_there() ? significant(scale.flow(peak.partial), 4) + unit : "none, since " + html_text(peak.why_not));
+    if (peak.is_there() && !peak.makers.empty() && storm.subareas_above > 1) {
+        html += fact("Greatest share of the peak", html_text(point_name(result, peak.makers.front().subarea)) + ", " + significant(100.0 * peak.makers.front().of_window, 3) + " %");
+    }
+    return html;
+}
+
 std::string facts(const StudyResult& result, const Outlet& outlet) {
     const ReportScale scale(result.study.report_units);
     const std::string m = " " + scale.length_unit();
@@ -27,7 +46,7 @@ std::string facts(const StudyResult& result, const Outlet& outlet) {
     const std::optional<MethodSpread>& spread = result.methods[outlet.number - 1].spread;
     const double tc = outlet.time_of_concentration_s();
     std::string html = "<dl class=\"facts\">";
-    html += fact("Time of concentration", shown_minutes(tc) + " min");
+    html += fact("Time of concentration", shown_minutes(tc) + " min" + (outlet.touches_edge() ? ", at least" : ""));
     html += fact("Lag, 0.6 of it", shown_minutes(0.6 * tc) + " min");
     html += fact("Catchment", significant(scale.area(from_fixed_area(outlet.area)), 4) + area + (outlet.touches_edge() ? ", at least" : ""));
     html += fact("Of it reaching no other point first", significant(scale.area(from_fixed_area(outlet.own_area)), 4) + area);
@@ -35,8 +54,10 @@ std::string facts(const StudyResult& result, const Outlet& outlet) {
     html += fact("Longest path", significant(scale.length(from_fixed(outlet.longest.summary.length)), 4) + m + ", " + shown_minutes(outlet.longest.seconds) + " min");
     html += fact("By end-to-end slopes", shown_minutes(outlet.governing.end_to_end_s) + " min");
     if (spread) html += fact("Other methods", shown_minutes(in_seconds(spread->lowest)) + " to " + shown_minutes(in_seconds(spread->highest)) + " min");
-    html += fact("Next point", outlet.next == 0 ? "none" : "<a href=\"#p" + std::to_string(outlet.next) + "\">" +
-                                                               html_text(result.outlets[outlet.next - 1].point.name) + "</a>");
+    html += network_facts(result, outlet);
+    const PointNumber next = result.network.points[outlet.number - 1].next;
+    const std::string by = result.network.edits[outlet.number - 1].pipe == nullptr ? "" : ", by a pipe";
+    html += fact("Next point", next == 0 ? "none" : "<a href=\"#p" + std::to_string(next) + "\">" + html_text(point_name(result, next)) + "</a>" + by);
     return html + "</dl>\n";
 }
 
@@ -85,8 +106,10 @@ std::string ground(const StudyResult& result, const Outlet& outlet) {
                         significant(scale.area(from_fixed_area(share.area)), 4), fixed_decimals(100.0 * static_cast<double>(share.area) / static_cast<double>(all), 1),
                         cover.n_typical > 0 ? significant(cover.n_typical, 3) : "–", cover.paved ? "yes" : "no"});
     }
+    const std::optional<double>& impervious = result.methods[outlet.number - 1].measures.impervious;
+    const std::string share = impervious ? " By the book's shares " + significant(100.0 * *impervious, 3) + " % of the area is impervious." : "";
     return "<h3>Land of the catchment</h3><p>" + fixed_decimals(100.0 * static_cast<double>(paved) / static_cast<double>(all), 1) +
-           " % of the area is of paved classes; the average slope of the land is " + significant(outlet.ground.land_slope(), 3) + ".</p>" +
+           " % of the area is of paved classes; the average slope of the land is " + significant(outlet.ground.land_slope(), 3) + "." + share + "</p>" +
            plain_table({"cover", "soil group", "slope of the land", "area " + scale.area_unit(), "share %", "n of sheet flow", "paved"}, rows);
 }
 
@@ -98,7 +121,7 @@ std::string sheet(const ReportMatter& matter, const Outlet& outlet) {
 }  // namespace
 
 std::string plain_table(const Cells& head, const std::vector<Cells>& rows) {
-    std::string html = "<div class=\"scroll\"><table><thead><tr>";
+    std::string html = "<div class=\"scroll\" tabindex=\"0\"><table><thead><tr>";
     for (const std::string& name : head) html += cell(name, "th", false);
     html += "</tr></thead><tbody>\n";
     for (const Cells& row : rows) {
@@ -117,8 +140,10 @@ std::string point_section(const ReportMatter& matter, const Outlet& outlet, Sect
     const std::string number = std::to_string(outlet.number);
     std::string html = "<section class=\"point\" id=\"p" + number + "\" aria-labelledby=\"h" + number + "\"><h2 id=\"h" + number +
                        "\" tabindex=\"-1\">" + html_text(outlet.point.name) + "</h2>\n";
-    html += facts(matter.result, outlet) + notices_of_point(matter.result, outlet) + point_charts(matter, outlet) +
-            segments(matter.result, outlet) + ground(matter.result, outlet);
+    html += facts(matter.result, outlet) + stated_part(matter.result, outlet) + notices_of_point(matter.result, outlet);
+    if (detail != SectionDetail::figures) html += point_charts(matter, outlet);
+    html += segments(matter.result, outlet);
+    if (detail != SectionDetail::figures) html += ground(matter.result, outlet);
     if (detail == SectionDetail::with_sheet) html += sheet(matter, outlet);
     return html + "</section>\n";
 }

@@ -1,48 +1,21 @@
 #include "rillclock/deliver/study_geopackage.hpp"
 
 #include <algorithm>
-#include <functional>
 #include <set>
 
 #include "isochrone_rows.hpp"
+#include "layer_writer.hpp"
+#include "network_layers.hpp"
 #include "palette.hpp"
-#include "rillclock/core/number_text.hpp"
-#include "rillclock/io/vector_output.hpp"
 #include "segment_rows.hpp"
 
 namespace rillclock {
 namespace {
 
-/// A layer described once, as named fields that each know their value: description and features cannot drift apart.
-template <class Row>
-class LayerWriter {
-public:
-    using Value = std::function<FieldValue(const Row&)>;
-
-    LayerWriter(VectorFile& file, LayerDescription layer) : file_(file), layer_(std::move(layer)) { layer_.indexed_field = "point"; }
-
-    LayerWriter& field(std::string name, FieldKind kind, std::string description, Value value) {
-        layer_.fields.push_back({std::move(name), kind, std::move(description)});
-        values_.push_back(std::move(value));
-        return *this;
-    }
-    void begin() { file_.begin_layer(layer_); }
-    void add(const LayerShape& shape, const Row& row) {
-        std::vector<FieldValue> values;
-        for (const Value& value : values_) values.push_back(value(row));
-        file_.add(shape, values);
-    }
-
-private:
-    VectorFile& file_;
-    LayerDescription layer_;
-    std::vector<Value> values_;
-};
-
-FieldValue number(double value, int digits = 6) { return std::isfinite(value) ? FieldValue(std::stod(significant(value, digits))) : FieldValue(); }
-FieldValue whole(std::size_t value) { return static_cast<std::int64_t>(value); }
-FieldValue minutes(double s) { return std::stod(fixed_decimals(s / 60.0, 4)); }
-FieldValue square_metres_of(FixedArea area) { return std::stod(fixed_decimals(from_fixed_area(area), 1)); }
+using layer_value::minutes;
+using layer_value::number;
+using layer_value::square_metres_of;
+using layer_value::whole;
 
 void add_outlet_fields(const StudyResult& result, LayerWriter<Outlet>& layer) {
     layer.field("point", FieldKind::text, "name of the design point", [](const Outlet& o) { return o.point.name; })
@@ -59,8 +32,6 @@ void add_outlet_fields(const StudyResult& result, LayerWriter<Outlet>& layer) {
         .field("touches_edge", FieldKind::text, "whether the catchment reaches the edge of the data: area and time are then lower bounds",
                [](const Outlet& o) { return std::string(o.touches_edge() ? "yes" : "no"); });
 }
-
-LayerStyle alike(LayerLook look, std::string label_field = {}) { return {.looks = {std::move(look)}, .label_field = std::move(label_field)}; }
 
 void write_outlets(const StudyResult& result, VectorFile& file) {
     LayerWriter<Outlet> layer(file, {.name = "outlets", .description = "design points", .geometry = LayerGeometry::points,
@@ -192,7 +163,9 @@ void write_study_geopackage(const std::filesystem::path& path, const StudyResult
     write_catchments(result, regions, file);
     write_paths(result, file);
     write_segments(result, file);
+    write_network(result, file);
     write_outlets(result, file);
+    if (result.peaks.are_there()) write_peaks(result, file);
     file.close();
 }
 

@@ -4,6 +4,7 @@
 #include <numeric>
 #include <vector>
 
+#include "input_words.hpp"
 #include "rillclock/deliver/report_units.hpp"
 #include "table_writer.hpp"
 
@@ -17,18 +18,6 @@ std::string minutes_text(double s) { return fixed_decimals(s / 60.0, 3); }
 std::string short_minutes(double s) {
     const double m = s / 60.0;
     return m < 120.0 ? significant(m, 3) + " min" : significant(m / 60.0, 3) + " h";
-}
-
-/// A value of an input in the units of the report.
-std::string value_text(const ReportScale& scale, const UncertainInput& input, double value) {
-    if (input.unit == "m/s") return std::isfinite(value) ? five_digits(scale.speed(value)) : "unlimited";
-    return five_digits(input.unit == "m" ? scale.length(value) : value);
-}
-
-std::string unit_text(const ReportScale& scale, const UncertainInput& input) {
-    if (input.unit == "m") return scale.length_unit();
-    if (input.unit == "m/s") return scale.speed_unit();
-    return input.unit;
 }
 
 struct EffectRow {

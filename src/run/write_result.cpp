@@ -32,6 +32,9 @@ void write_shapes(const StudyResult& result, const StudyRegions& regions, Result
     write_study_geopackage(folder.path("study.gpkg"), result, regions);
     folder.write_text("rasters/travel_time.sld", travel_time_sld(result));
     folder.write_text("rasters/regime.sld", regime_sld());
+    folder.write_text("rasters/flow_azimuth.sld", flow_azimuth_sld());
+    folder.write_text("rasters/contributing_area.sld", contributing_area_sld(result));
+    folder.write_text("rasters/catchment.sld", catchment_sld(result));
     if (regions.isochrones()) folder.write_text("isochrones.geojson", isochrones_geojson(result, regions));
 }
 

@@ -21,7 +21,8 @@ RESULT_FILES = {
     "tables/methods.csv", "tables/review.csv", "tables/subareas.csv", "tables/handover.csv", "tables/depressions.csv", "tables/land.csv",
     "rasters/travel_time.tif", "rasters/flow_azimuth.tif", "rasters/contributing_area.tif",
     "rasters/catchment.tif", "rasters/catchment.tif.aux.xml", "rasters/regime.tif", "rasters/regime.tif.aux.xml",
-    "rasters/spill_elevation.tif", "rasters/travel_time.sld", "rasters/regime.sld", "report.html", "study.gpkg", "isochrones.geojson"} | {f"tables/sheets/{number}-{name}.md" for number, name in enumerate(
+    "rasters/spill_elevation.tif", "rasters/travel_time.sld", "rasters/regime.sld", "rasters/flow_azimuth.sld",
+    "rasters/contributing_area.sld", "rasters/catchment.sld", "report.html", "study.gpkg", "isochrones.geojson"} | {f"tables/sheets/{number}-{name}.md" for number, name in enumerate(
         DEMO_POINTS, 1)}
 
 
@@ -280,7 +281,7 @@ class Answer(Demo):
             expected = subprocess.run(["sha256sum", self.folder / "town" / file["file"]], capture_output=True, text=True, check=True)
             self.assertEqual(file["sha256"], expected.stdout.split()[0])
         self.assertEqual(len(result["outlets"]), 11)
-        self.assertEqual(len(result["headlines"]), 3)
+        self.assertEqual(len(result["headlines"]), 4)
 
     def test_the_table_of_outlets_says_what_result_json_says(self):
         outlets = {row["name"]: row for row in table(self.result_folder / "tables/outlets.csv")}

@@ -1,24 +1,31 @@
 #!/usr/bin/python3
 """The layers for a GIS: what stands in study.gpkg and isochrones.geojson, held to the rasters and to the standards."""
+import contextlib
 import json
 import os
+import pathlib
 import re
+import shutil
 import sqlite3
 import subprocess
 import sys
+import tempfile
 import unittest
 import xml.etree.ElementTree as xml
 
 import numpy as np
 from osgeo import gdal, ogr
 
+from peaks_test import demo_with_peaks
 from support import CommandTest, DemoTest, hills, table, write_points
 
 sys.path.insert(0, "/usr/lib/python3/dist-packages")
 from osgeo_utils.samples import validate_cloud_optimized_geotiff, validate_gpkg  # noqa: E402
 
 LAYERS = {"outlets": "POINT", "catchments": "MULTIPOLYGON", "subareas": "MULTIPOLYGON", "paths": "MULTILINESTRING",
-          "segments": "MULTILINESTRING", "isochrones": "MULTIPOLYGON"}
+          "segments": "MULTILINESTRING", "network": "MULTILINESTRING", "isochrones": "MULTIPOLYGON"}
+PIPES = "from,to,length,diameter,n,slope\nMarket inlet,Tramway bank,120 m,0.45 m,0.013,0.008\n"
+OVERRIDES = "point,time,way_time,sheet_length,n,c\nTramway bank,,4 min,,,\n"
 
 
 def burnt(layer, raster, query, value_of=lambda feature: 1):
@@ -190,14 +197,99 @@ class Layers(DemoTest):
             self.assertAlmostEqual(feature.GetGeometryRef().GetX(), float(row["x"]), places=3)
 
 
-class Rasters(CommandTest):
+    def test_each_way_of_the_network_runs_along_the_flow_from_its_point_to_the_next(self):
+        rows = {row["name"]: row for row in table(self.result_folder / "tables/outlets.csv")}
+        edges = {feature["point"]: feature for feature in self.layer("network")}
+        self.assertEqual(set(edges), {name for name, row in rows.items() if row["next_point"]})
+        azimuths = self.raster("flow_azimuth.tif")
+        left, width, _, top, _, height = azimuths.GetGeoTransform()
+        azimuth = azimuths.ReadAsArray()
+        for name, edge in edges.items():
+            row = rows[name]
+            self.assertEqual((edge["next_point"], edge["by"], edge["stated"]), (row["next_point"], "flow path", ""))
+            for field, column in (("length_m", "way_length_m"), ("fall_m", "way_fall_m"), ("time_min", "way_min"), ("channel_percent", "way_channel_percent")):
+                self.assertAlmostEqual(edge[field], float(row[column]), delta=1e-3 + 1e-4 * abs(float(row[column])), msg=(name, field))
+            places = np.array(edge.GetGeometryRef().GetGeometryRef(0).GetPoints())[:, :2]
+            for end, at in ((0, name), (-1, row["next_point"])):
+                np.testing.assert_allclose(places[end], (float(rows[at]["x"]), float(rows[at]["y"])), atol=1e-3)
+            for (x, y), (to_x, to_y) in zip(places, places[1:]):
+                here = azimuth[int((y - top) / height), int((x - left) / width)]
+                self.assertEqual(here, round(np.degrees(np.arctan2(to_x - x, to_y - y))) % 360)
+            length = np.hypot(*np.diff(places, axis=0).T).sum()
+            self.assertAlmostEqual(edge["length_m"] / length, 1, delta=1e-5)
+            shares = sum(edge[f"{regime}_percent"] for regime in ("sheet", "shallow", "channel", "water"))
+            self.assertAlmostEqual(shares, 100, delta=0.01)
+
+
+class Peaks(unittest.TestCase):
+    """Rain by duration, a pipe, and a stated way."""
+
+    @classmethod
+    def setUpClass(cls):
+        cls.folder = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-test-"))
+        cls.addClassCleanup(shutil.rmtree, cls.folder, ignore_errors=True)
+        cls.tables = demo_with_peaks(cls.folder, pipes=PIPES, overrides=OVERRIDES)
+        cls.package = cls.folder / "town/result/study.gpkg"
+
+    def features(self, name):
+        with contextlib.closing(sqlite3.connect(f"file:{self.package}?mode=ro", uri=True)) as connection:
+            connection.row_factory = sqlite3.Row
+            return connection.execute(f"SELECT * FROM {name} ORDER BY fid").fetchall()
+
+    def test_peaks_are_those_of_the_table(self):
+        found = self.features("peaks")
+        self.assertEqual(len(found), len(self.tables["peaks"]))
+        for feature, row in zip(found, self.tables["peaks"]):
+            self.assertEqual((feature["point"], str(int(feature["return_period_years"]))), (row["point"], row["return_period_years"]))
+            for field in ("whole_area_peak_m3_per_s", "peak_m3_per_s", "peak_duration_min", "runoff_coefficient", "intensity_mm_per_h",
+                          "peak_share_of_area_percent"):
+                self.assertAlmostEqual(feature[field] / float(row[field]), 1, delta=1e-5, msg=field)
+            self.assertEqual((feature["last_subarea"], feature["peak_subareas"]), (row["last_subarea"], row["peak_subareas"]))
+            more = float(row["peak_m3_per_s"]) > float(row["whole_area_peak_m3_per_s"])
+            self.assertEqual(feature["made_by"] == "part of the area", more, row)
+
+    def test_a_pipe_is_an_edge_that_runs_straight_to_its_end(self):
+        edge = next(feature for feature in self.features("network") if feature["point"] == "Market inlet")
+        pipe = self.tables["pipes"][0]
+        self.assertEqual((edge["by"], edge["next_point"], edge["stated"], edge["channel_percent"]), ("pipe", "Tramway bank", "pipe", None))
+        for field in ("length_m", "diameter_m", "n", "slope", "capacity_m3_per_s", "velocity_m_per_s", "time_min"):
+            self.assertAlmostEqual(edge[field] / float(pipe[field]), 1, delta=1e-4, msg=field)
+        self.assertAlmostEqual(edge["fall_m"], 120 * 0.008, places=6)
+        layer = gdal.OpenEx(str(self.package), gdal.OF_VECTOR)
+        network = layer.GetLayerByName("network")
+        network.SetAttributeFilter("point = 'Market inlet'")
+        self.assertEqual(next(iter(network)).GetGeometryRef().GetGeometryRef(0).GetPointCount(), 2)
+
+    def test_a_stated_way_is_the_time_of_its_edge(self):
+        edge = next(feature for feature in self.features("network") if feature["point"] == "Tramway bank")
+        self.assertEqual((edge["by"], edge["time_min"], edge["stated"]), ("flow path", 4.0, "way"))
+
+    def test_it_is_a_valid_geopackage_with_all_the_rules_of_layers(self):
+        checker = validate_gpkg.GPKGChecker(str(self.package))
+        checker.check()
+        self.assertEqual(checker.errors, [])
+        styled = {row["f_table_name"] for row in self.features_of("SELECT f_table_name FROM layer_styles")}
+        self.assertIn("peaks", styled)
+        indexed = {row["tbl_name"] for row in self.features_of("SELECT tbl_name FROM sqlite_master WHERE type = 'index' AND sql LIKE '%(\"point\")%'")}
+        self.assertIn("peaks", indexed)
+
+    def features_of(self, query):
+        with contextlib.closing(sqlite3.connect(f"file:{self.package}?mode=ro", uri=True)) as connection:
+            connection.row_factory = sqlite3.Row
+            return connection.execute(query).fetchall()
+
+    def test_another_run_gives_the_same_bytes(self):
+        before = self.package.read_bytes()
+        demo_with_peaks(self.folder, pipes=PIPES, overrides=OVERRIDES)
+        self.assertEqual(self.package.read_bytes(), before)
+
+
+class Rasters(DemoTest):
     def test_on_request_they_are_cloud_optimized_and_say_the_same(self):
-        self.done("demo", "town")
-        study = (self.folder / "town/study.toml").read_text()
-        (self.folder / "town/cog.toml").write_text(study + 'rasters = "cog"\n')
-        self.done("run", "town/study.toml")
-        self.done("run", "town/cog.toml", "--out", "cog")
-        plain, cloud = self.folder / "town/result/rasters", self.folder / "cog/rasters"
+        study = (self.kept / "town/study.toml").read_text()
+        (self.kept / "town/cog.toml").write_text(study + 'rasters = "cog"\n')
+        self.done("run", self.kept / "town/cog.toml", "--out", "cog")
+        plain, cloud = self.kept / "town/result/rasters", self.folder / "cog/rasters"
         self.assertEqual(sorted(path.name for path in plain.iterdir()), sorted(path.name for path in cloud.iterdir()))
         for path in sorted(cloud.glob("*.tif")):
             warnings, errors, _ = validate_cloud_optimized_geotiff.validate(str(path), full_check=True)
@@ -211,21 +303,26 @@ class Rasters(CommandTest):
                 self.assertEqual(band.GetMetadata(), twin.GetMetadata())
 
     def test_regimes_have_names_and_colours_and_styles_stand_beside(self):
-        self.done("demo", "town")
-        self.done("run", "town/study.toml")
-        rasters = self.folder / "town/result/rasters"
+        rasters = self.kept / "town/result/rasters"
         said = json.loads(subprocess.run(["gdalinfo", "-json", rasters / "regime.tif"], capture_output=True, text=True, check=True).stdout)
         band = said["bands"][0]
         self.assertEqual(band["colorTable"]["entries"][1][:3], [0xE6, 0x9F, 0x00])
         regimes = gdal.Open(str(rasters / "regime.tif"))
         regimes.GetRasterBand(1).GetMetadata()   # the file beside the raster is read only after it
         self.assertEqual(regimes.GetRasterBand(1).GetCategoryNames()[:4], ["none", "sheet", "shallow", "channel"])
-        for name in ("regime", "travel_time"):
+        for name in ("regime", "travel_time", "flow_azimuth", "contributing_area", "catchment"):
             root = xml.parse(rasters / f"{name}.sld").getroot()
             entries = root.findall(".//{http://www.opengis.net/sld}ColorMapEntry")
             self.assertGreater(len(entries), 3)
             numbers = [float(entry.get("quantity")) for entry in entries]
             self.assertEqual(numbers, sorted(numbers))
+            band = gdal.Open(str(rasters / f"{name}.tif")).GetRasterBand(1)
+            values = band.ReadAsArray()
+            values = np.unique(values[values != band.GetNoDataValue()])
+            if name in ("travel_time", "contributing_area"):
+                self.assertGreaterEqual(numbers[-1], values.max())
+            else:
+                self.assertLessEqual(set(values), set(numbers), name)
 
 
 class Asking(CommandTest):

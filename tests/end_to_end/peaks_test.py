@@ -26,8 +26,8 @@ def frequency_factor(years):
     return {2: 1.0, 10: 1.0, 100: 1.25}[years]
 
 
-def demo_with_peaks(folder, peaks="", rain_factor=1.0, sheet="nrcs", leave_out=(), pipes="", overrides="", timing=""):
-    """Runs the demo with rain by duration and runoff coefficients; gives its tables."""
+def demo_with_peaks(folder, peaks="", rain_factor=1.0, sheet="nrcs", leave_out=(), pipes="", overrides="", timing="", more=""):
+    """Runs the demo with rain by duration and runoff coefficients; gives its tables. `more` stands at the study's end, in [output]."""
     town = pathlib.Path(folder) / "town"
     if not town.exists():
         subprocess.run([COMMAND, "demo", town], check=True, capture_output=True)
@@ -55,7 +55,7 @@ raster_return_period = 10
 {peaks}
 [output]
 subareas = "all"
-"""
+{more}"""
     if pipes:
         (town / "pipes.csv").write_text(pipes)
         study = study.replace('move_within = "5 m"', 'move_within = "5 m"\npipes = "pipes.csv"')

@@ -1,10 +1,13 @@
 #!/usr/bin/python3
 """The report in a real browser, opened from disk with the network cut."""
-import csv
+import base64
+import html
 import json
-import os
+import pathlib
 import re
+import shutil
 import subprocess
+import tempfile
 import time
 import unittest
 
@@ -13,42 +16,107 @@ from selenium.webdriver.chrome.service import Service
 from selenium.webdriver.common.by import By
 from selenium.webdriver.common.keys import Keys
 
-from support import COMMAND, CommandTest, DemoTest, hills, table
+from peaks_test import demo_with_peaks
+from support import COMMAND, CommandTest, hills, table
 
 MOST_BYTES = 10_000_000
+PIPES = "from,to,length,diameter,n,slope\nMarket inlet,Tramway bank,120 m,0.45 m,0.013,0.008\n"
+OVERRIDES = "point,time,way_time,sheet_length,n,c\nSide valley mouth,20 min,,,,\nOrchard inlet,,,,,0.85\n"
+DRIVER = None
+
+# Texts of charts that leave their picture or lie on one another.
+TEXTS_IN_THE_WAY = """
+var found = [];
+document.querySelectorAll('.charts figure > svg').forEach(function (svg) {
+  var all = svg.getBoundingClientRect(), texts = Array.from(svg.querySelectorAll('text'));
+  var boxes = texts.map(function (t) { return t.getBoundingClientRect(); });
+  boxes.forEach(function (a, i) {
+    var what = texts[i].textContent;
+    if (a.left < all.left - 1 || a.right > all.right + 1 || a.top < all.top - 1 || a.bottom > all.bottom + 1) found.push('cut: ' + what);
+    boxes.slice(i + 1).forEach(function (b, j) {
+      var across = Math.min(a.right, b.right) - Math.max(a.left, b.left), down = Math.min(a.bottom, b.bottom) - Math.max(a.top, b.top);
+      if (across > 1 && down > 0.35 * Math.min(a.height, b.height)) found.push('overlap: ' + what + ' | ' + texts[i + 1 + j].textContent);
+    });
+  });
+});
+return Array.from(new Set(found));"""
+
+# Texts whose contrast with what is behind them is below 4.5 (Web Content Accessibility Guidelines 2.1, 1.4.3).
+TOO_FAINT = """
+function light(rgb) {
+  var parts = rgb.map(function (v) { v /= 255; return v <= 0.03928 ? v / 12.92 : Math.pow((v + 0.055) / 1.055, 2.4); });
+  return 0.2126 * parts[0] + 0.7152 * parts[1] + 0.0722 * parts[2];
+}
+function numbers(colour) { return (colour.match(/[0-9.]+/g) || []).map(Number); }
+function behind(element) {
+  for (; element; element = element.parentElement) {
+    var colour = numbers(getComputedStyle(element).backgroundColor);
+    if (colour.length === 3 || colour[3] === 1) return colour.slice(0, 3);
+  }
+  return [255, 255, 255];
+}
+var found = new Set();
+document.querySelectorAll('body *').forEach(function (element) {
+  var own = Array.from(element.childNodes).some(function (n) { return n.nodeType === 3 && n.textContent.trim(); });
+  if (!own || element.closest('#map') || !element.getClientRects().length || ['SCRIPT', 'STYLE', 'TITLE', 'title'].indexOf(element.tagName) >= 0) return;
+  var style = getComputedStyle(element), colour = numbers(element.closest('svg') ? style.fill : style.color).slice(0, 3);
+  var a = light(colour), b = light(behind(element)), ratio = (Math.max(a, b) + 0.05) / (Math.min(a, b) + 0.05);
+  if (ratio < 4.5) found.add(element.tagName + ' ' + element.className + ' ' + ratio.toFixed(2));
+});
+return Array.from(found);"""
 
 
-def browser(width=1400, height=900, dark=False):
+def browser(width=1400, height=900):
     options = webdriver.ChromeOptions()
     options.binary_location = "/usr/bin/chromium"
     for word in ("--headless=new", "--no-sandbox", "--disable-gpu", "--hide-scrollbars", f"--window-size={width},{height}",
-                 "--disable-dev-shm-usage", "--host-resolver-rules=MAP * ~NOTFOUND", "--disable-background-networking"):
+                 "--disable-dev-shm-usage", "--force-prefers-reduced-motion", "--host-resolver-rules=MAP * ~NOTFOUND", "--disable-background-networking"):
         options.add_argument(word)
-    if dark:
-        options.add_argument("--force-prefers-color-scheme=dark")
-        options.add_argument("--blink-settings=preferredColorScheme=0")
     options.set_capability("goog:loggingPrefs", {"browser": "ALL", "performance": "ALL"})
     return webdriver.Chrome(service=Service("/usr/bin/chromedriver"), options=options)
 
 
-class Report(DemoTest):
-    """One demo result and one browser for all."""
+def setUpModule():
+    """One browser for all tests: starting one takes longer than most of them."""
+    global DRIVER  # pylint: disable=global-statement
+    DRIVER = browser()
+    unittest.addModuleCleanup(DRIVER.quit)
+
+
+class Report(CommandTest):
+    """One result of the demo with all that a study can ask for: peaks, a pipe, overrides, ranges of the inputs."""
 
     @classmethod
     def setUpClass(cls):
-        super().setUpClass()
-        cls.result_folder = cls.kept / "town/result"
+        kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-report-"))
+        cls.addClassCleanup(shutil.rmtree, kept, ignore_errors=True)
+        cls.tables = demo_with_peaks(kept, pipes=PIPES, overrides=OVERRIDES, more='isochrones = "10 min"\n[uncertainty]\ndraws = 40\n')
+        cls.result_folder = kept / "town/result"
         cls.page = (cls.result_folder / "report.html").as_uri()
         cls.text = (cls.result_folder / "report.html").read_text(encoding="utf-8")
-        cls.rows = table(cls.result_folder / "tables/outlets.csv")
-        cls.driver = browser()
-        cls.addClassCleanup(cls.driver.quit)
+        cls.rows = cls.tables["outlets"]
+        cls.driver = DRIVER
 
     def open(self, mark=""):
         self.driver.get("about:blank")
         self.driver.get_log("performance")
         self.driver.get_log("browser")
         self.driver.get(self.page + mark)
+
+    def looked_at(self, width, scheme="light"):
+        """Opens all sections at a width, in a colour scheme; both are undone after the test."""
+        self.driver.execute_cdp_cmd("Emulation.setDeviceMetricsOverride", {"width": width, "height": 900, "deviceScaleFactor": 1, "mobile": False})
+        self.driver.execute_cdp_cmd("Emulation.setEmulatedMedia", {"media": "", "features": [{"name": "prefers-color-scheme", "value": scheme}]})
+        self.addCleanup(self.driver.execute_cdp_cmd, "Emulation.clearDeviceMetricsOverride", {})
+        self.addCleanup(self.driver.execute_cdp_cmd, "Emulation.setEmulatedMedia", {"media": "", "features": []})
+        self.open()
+        self.driver.execute_script("document.querySelectorAll('section.point').forEach(function (s) { s.classList.add('on'); });")
+
+    def table_of(self, number, summary):
+        """The rows of a table in a point's section, as texts by the heads of their columns."""
+        part = re.search(rf'(?s)<section class="point" id="p{number}".*?<summary>{summary}</summary>(.*?)</table>', self.text)[1]
+        heads = re.findall(r"<th scope[^>]*>(.*?)</th>", part)
+        return [dict(zip(heads, (html.unescape(cell) for cell in re.findall(r"<td[^>]*>(.*?)</td>", row)))) for row in re.findall(r"<tr><td.*?</tr>", part)]
 
     def shown(self):
         return [s.get_attribute("id") for s in self.driver.find_elements(By.CSS_SELECTOR, "section.point") if s.is_displayed()]
@@ -107,6 +175,7 @@ class Report(DemoTest):
             cells = [cell.text for cell in self.driver.find_elements(By.CSS_SELECTOR, "#points tr.on td")]
             self.assertEqual(cells[0], row["name"])
             self.assertEqual(cells[2], row["time_of_concentration_min"])
+            self.assertAlmostEqual(float(cells[5]) / float(row["peak_m3_per_s"]), 1, delta=2e-4)
 
     def test_a_click_on_a_point_of_the_map_opens_its_sheet(self):
         self.open()
@@ -139,6 +208,15 @@ class Report(DemoTest):
         self.assertEqual(sorted(self.names()), sorted(row["name"] for row in self.rows if "market" in row["name"].lower()))
         self.assertIn("2 of 11", self.driver.find_element(By.ID, "count").text)
 
+    def test_the_table_filters_by_what_is_so_of_a_point(self):
+        self.open()
+        made_by_part = sorted(row["name"] for row in self.rows if float(row["peak_m3_per_s"]) > float(row["whole_area_peak_m3_per_s"]))
+        for word, names in (("part", made_by_part), ("last", sorted(row["name"] for row in self.rows if not row["network_next_point"])),
+                            ("stated", sorted(row["name"] for row in self.rows if row["stated_above"])),
+                            ("edge", sorted(row["name"] for row in self.rows if row["touches_edge"] == "yes"))):
+            self.driver.find_element(By.CSS_SELECTOR, f"#filter option[value={word}]").click()
+            self.assertEqual(sorted(self.names()), names, word)
+
     def test_a_point_can_be_linked_to(self):
         self.open("#p3")
         self.assertEqual(self.shown(), ["p3"])
@@ -149,7 +227,11 @@ class Report(DemoTest):
         self.open()
         self.assertEqual(len(re.findall(r'<section class="point"', self.text)), 11)
         self.assertEqual(len(self.shown()), 11)
-        self.assertEqual(len(self.driver.find_elements(By.CSS_SELECTOR, "section.point svg[role=img]")), 44)
+        # Of each point profile, running time, arrival, peaks, search, methods and range; subareas where there are several.
+        several = sum(int(row["subareas"]) > 1 for row in self.rows)
+        self.assertEqual(len(self.driver.find_elements(By.CSS_SELECTOR, "section.point svg[role=img]")), 7 * 11 + several)
+        pictures = self.driver.find_elements(By.CSS_SELECTOR, "#pictures img")
+        self.assertEqual([picture.is_displayed() for picture in pictures], [True, True])
 
     def test_charts_say_in_words_what_there_is_to_see(self):
         for finding in re.findall(r'<svg viewBox[^>]*role="img" aria-label="([^"]*)"', self.text):
@@ -157,7 +239,6 @@ class Report(DemoTest):
             self.assertTrue(finding.rstrip().endswith("."), finding)
 
     def test_the_calculation_sheet_of_each_point_is_the_one_that_is_explained(self):
-        import html
         sheets = {section: html.unescape(sheet) for section, sheet in
                   re.findall(r'(?s)<section class="point" id="p(\d+)".*?<pre>(.*?)</pre>', self.text)}
         for row in self.rows[:3]:
@@ -170,7 +251,6 @@ class Report(DemoTest):
             box = self.driver.find_element(By.CSS_SELECTOR, f'#points input[value="{number}"]')
             self.driver.execute_script("arguments[0].scrollIntoView({block: 'center', inline: 'center'})", box)
             box.click()
-        import base64
         pdf = self.folder / "report.pdf"
         pdf.write_bytes(base64.b64decode(self.driver.execute_cdp_cmd("Page.printToPDF", {"paperWidth": 8.27, "paperHeight": 11.69})["data"]))
         pages = subprocess.run(["pdftotext", "-layout", pdf, "-"], capture_output=True, text=True, check=True).stdout.split("\f")
@@ -180,6 +260,99 @@ class Report(DemoTest):
         self.assertNotIn("Mill bridge", begin)
         self.assertEqual(sum("Arrival of the area" in page for page in pages), 2)
         self.assertIn("Calculation sheet: Market inlet", " ".join(pages))
+
+    def test_peaks_and_the_search_for_them_are_those_of_the_tables(self):
+        for row in self.rows:
+            peaks = self.table_of(row["number"], "Table of peaks")
+            printed = [r for r in self.tables["peaks"] if r["point"] == row["name"]]
+            self.assertEqual(len(peaks), len(printed))
+            for shown, of in zip(peaks, printed):
+                self.assertEqual((shown["return period years"], shown["arrives last"], shown["subareas that make the peak"]),
+                                 (of["return_period_years"], of["last_subarea"], of["peak_subareas"]))
+                for head, column in (("whole area m³/s", "whole_area_peak_m3_per_s"), ("peak m³/s", "peak_m3_per_s"), ("C", "runoff_coefficient")):
+                    self.assertAlmostEqual(float(shown[head]) / float(of[column]), 1, delta=6e-4)
+            search = self.table_of(row["number"], "Table of the search")
+            tried = [r for r in self.tables["time_area"] if (r["point"], r["return_period_years"]) == (row["name"], "10")]
+            self.assertEqual(len(search), len(tried))
+            for shown, of in zip(search, tried):
+                for head, column in (("duration min", "duration_min"), ("C·A arrived ha", "arrived_ca_ha"), ("most C·A in it ha", "most_ca_ha"),
+                                     ("intensity mm/h", "intensity_mm_per_h"), ("flow m³/s", "flow_m3_per_s")):
+                    self.assertAlmostEqual(float(shown[head]), float(of[column]), delta=0.006 + 6e-4 * float(of[column]), msg=head)
+                self.assertEqual(shown["what of it"] == "makes the peak", of["governs"] == "yes")
+
+    def test_subareas_with_arrival_slack_and_share_are_those_of_the_table(self):
+        for row in self.rows:
+            printed = [r for r in self.tables["subareas"] if (r["point"], r["return_period_years"]) == (row["name"], "10")]
+            if len(printed) < 2:
+                self.assertNotIn(f'id="p{row["number"]}"', re.findall(r'(?s)<section class="point" (id="p\d+")(?:(?!<section).)*?Table of subareas', self.text))
+                continue
+            for shown, of in zip(self.table_of(row["number"], "Table of subareas"), printed, strict=True):
+                self.assertEqual((shown["subarea"], shown["stated"]), (of["subarea"], of["stated"] or "–"))
+                self.assertEqual("arrives last" in shown["slack min"], of["arrives_last"] == "yes")
+                for head, column in (("own time min", "own_time_min"), ("way min", "way_min"), ("arrival min", "arrival_min"), ("slack min", "slack_min")):
+                    self.assertAlmostEqual(float(shown[head].split(",")[0]), float(of[column]), delta=6e-4)
+                self.assertAlmostEqual(float(shown["share of the peak %"]), float(of["share_of_peak_window_percent"]), delta=0.06)
+
+    def test_the_range_of_each_time_is_that_of_the_tables(self):
+        for row in self.rows:
+            printed = [r for r in self.tables["uncertainty"] if r["point"] == row["name"]]
+            shown = self.table_of(row["number"], "Table of inputs")
+            self.assertEqual([(r["input"], r["low"], r["high"]) for r in shown], [(r["input"], r["low"], r["high"]) for r in printed])
+
+    def test_what_is_stated_stands_where_it_acts(self):
+        for row in self.rows:
+            section = re.search(rf'(?s)<section class="point" id="p{row["number"]}".*?</section>', self.text)[0]
+            self.assertEqual("Stated in place of what is computed" in section, bool(row["stated_above"]), row["name"])
+        side = next(row for row in self.rows if row["name"] == "Side valley mouth")
+        self.open("#p" + side["number"])
+        self.assertIn("Side valley mouth 20 – – – – –", self.driver.find_element(By.ID, "p" + side["number"]).text)
+
+    def test_the_first_screen_says_where_parts_make_the_peak_and_where_the_last_to_arrive_does_not(self):
+        findings = re.search(r'(?s)<ul class="findings">(.*?)</ul>', self.text)[1]
+        said = [html.unescape(item) for item in re.findall(r"<li>(.*?)</li>", findings)]
+        gains = {row["name"]: float(row["peak_m3_per_s"]) / float(row["whole_area_peak_m3_per_s"]) for row in self.rows}
+        parts = next(sentence for sentence in said if sentence.startswith("A part of the area makes the peak"))
+        self.assertIn(f"at {sum(gain > 1 for gain in gains.values())} of 11 points", parts)
+        self.assertIn(f"'{max(gains, key=gains.get)}'", parts)
+        differ = [row["name"] for row in self.rows if not row["peak_subareas"].startswith(row["last_subarea"] + " ")]
+        self.assertIn(f"at {len(differ)} of 11 points", next(sentence for sentence in said if "arrives last is not the one" in sentence))
+        leads = {row["name"]: float(row["lead_min"]) for row in self.rows if row["lead_min"]}
+        least = next(sentence for sentence in said if sentence.startswith("Least lead"))
+        for name in sorted(leads, key=leads.get)[:3]:
+            self.assertIn(f"at '{name}'", least)
+
+    def test_no_text_of_a_chart_is_cut_or_lies_on_another_and_no_page_is_wider_than_its_screen(self):
+        for width in (1400, 800, 400):
+            self.looked_at(width)
+            self.assertEqual(self.driver.execute_script("return document.documentElement.scrollWidth"), width)
+            self.assertEqual(self.driver.execute_script(TEXTS_IN_THE_WAY), [], width)
+
+    def test_the_frame_of_the_map_is_the_map_s_own_and_on_paper_nothing_of_it_is_cut(self):
+        for width in (1400, 400):
+            self.looked_at(width)
+            frame, picture = self.frame_and_picture()
+            self.assertAlmostEqual(frame["height"] - 2, picture["height"], delta=2)
+            self.assertLessEqual(picture["width"], frame["width"])
+        self.driver.execute_script("window.dispatchEvent(new Event('beforeprint'))")
+        frame, picture = self.frame_and_picture()
+        for side, sign in (("top", 1), ("left", 1), ("bottom", -1), ("right", -1)):
+            self.assertGreaterEqual(sign * (picture[side] - frame[side]), -1, side)
+        self.driver.execute_script("window.dispatchEvent(new Event('afterprint'))")
+
+    def frame_and_picture(self):
+        return self.driver.execute_script("return ['#map', '#map img.times'].map(function (s) { return document.querySelector(s).getBoundingClientRect().toJSON(); })")
+
+    def test_every_text_has_the_contrast_that_readers_need(self):
+        for scheme in ("light", "dark"):
+            self.looked_at(1400, scheme)
+            self.assertEqual(self.driver.execute_script(TOO_FAINT), [], scheme)
+
+    def test_the_table_behind_a_chart_opens_by_key(self):
+        self.open("#p1")
+        summary = self.driver.find_element(By.CSS_SELECTOR, "#p1 figure summary")
+        self.driver.execute_script("arguments[0].focus()", summary)
+        summary.send_keys(Keys.ENTER)
+        self.assertTrue(self.driver.find_element(By.CSS_SELECTOR, "#p1 figure details table").is_displayed())
 
     def test_it_is_at_most_ten_megabytes(self):
         self.assertLess(len(self.text.encode()), MOST_BYTES)
@@ -196,8 +369,8 @@ class Names(CommandTest):
             f"title = '''{evil}'''\n[terrain]\nelevation = \"dem.tif\"\n[surface]\ncover = \"cover.tif\"\nbook = \"book.csv\"\n[points]\n"
             'file = "points.geojson"\n[rain]\ntwo_year_24_hour = "90 mm"\n')
         self.done("run", "study.toml")
-        driver = browser()
-        self.addCleanup(driver.quit)
+        driver = DRIVER
+        driver.get_log("browser")
         driver.get((self.folder / "result/report.html").as_uri() + "#p1")
         self.assertEqual(driver.find_element(By.TAG_NAME, "h1").text, evil)
         self.assertEqual(driver.find_element(By.CSS_SELECTOR, "#p1 h2").text, evil)
@@ -223,8 +396,7 @@ class Many(CommandTest):
         self.assertLess(report.stat().st_size, MOST_BYTES)
         text = report.read_text(encoding="utf-8")
         self.assertIn("Of 2250 points the", text)
-        driver = browser()
-        self.addCleanup(driver.quit)
+        driver = DRIVER
         driver.get(report.as_uri())
         paint = driver.execute_script("return performance.getEntriesByType('paint').map(function (p) { return p.startTime; })")
         click = driver.execute_script("var t = performance.now(); location.hash = 'p1'; return new Promise(function (done) {"

@@ -3,6 +3,7 @@
 #include <array>
 #include <cstddef>
 #include <span>
+#include <vector>
 
 #include "rillclock/catchment/path_cell.hpp"
 
@@ -10,6 +11,7 @@ namespace rillclock {
 
 /// The flow path from a design point to the next one below.
 struct PointWay {
+    std::vector<Cell> cells;                    ///< from the point's to the next point's, both included; none where there is no way
     FixedLength length = 0;
     StepTime time;
     double fall_m = 0.0;                        ///< of spill elevation

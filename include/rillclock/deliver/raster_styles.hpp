@@ -10,5 +10,11 @@ namespace rillclock {
 [[nodiscard]] std::string travel_time_sld(const StudyResult& result);
 /// `rasters/regime.sld`.
 [[nodiscard]] std::string regime_sld();
+/// `rasters/flow_azimuth.sld`: a colour for each of the eight directions.
+[[nodiscard]] std::string flow_azimuth_sld();
+/// `rasters/contributing_area.sld`: classes by tens.
+[[nodiscard]] std::string contributing_area_sld(const StudyResult& result);
+/// `rasters/catchment.sld`: a colour and the name of each point, none where nothing drains to one.
+[[nodiscard]] std::string catchment_sld(const StudyResult& result);
 
 }  // namespace rillclock

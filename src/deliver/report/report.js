@@ -9,15 +9,17 @@
   var rowOf = {};
   rows.forEach(function (row) { rowOf[row.dataset.number] = row; });
 
-  // Search: every word has to stand in the name or in the notices' names of the row.
+  // Search and filter: every word has to stand in the row, and what is chosen has to be so of the point.
   var search = document.getElementById("search");
+  var kind = document.getElementById("filter");
   var count = document.getElementById("count");
   function filter() {
     var words = search.value.toLowerCase().split(/\s+/).filter(Boolean);
     var shown = 0;
     rows.forEach(function (row) {
       var text = row.dataset.search;
-      var fits = words.every(function (word) { return text.indexOf(word) >= 0; });
+      var fits = words.every(function (word) { return text.indexOf(word) >= 0; }) &&
+        (!kind.value || row.dataset.is.split(" ").indexOf(kind.value) >= 0);
       row.hidden = !fits;
       if (fits) shown += 1;
     });
@@ -25,6 +27,7 @@
   }
   rows.forEach(function (row) { row.dataset.search = row.textContent.toLowerCase(); });
   search.addEventListener("input", filter);
+  kind.addEventListener("change", filter);
   filter();
 
   // Sort by a column: numbers as numbers, names as words.
@@ -57,12 +60,30 @@
     for (var i = 0; i + 1 < flat.length; i += 2) places.push(at(flat[i], flat[i + 1]));
     return places;
   }
+  var bounds = [at(0, data.rows), at(data.columns, 0)];
+  var frame = document.getElementById("map");
+
+  // The frame is as high as the map at that width, and no higher than there is room.
+  function fitFrame(width, most) {
+    frame.style.height = Math.round(Math.max(160, Math.min(most, width * data.rows * data.tall / data.columns))) + "px";
+  }
+  function fitScreen() {
+    frame.style.width = "";
+    fitFrame(frame.parentNode.clientWidth, Math.min(680, 0.8 * window.innerHeight));
+  }
+  function showAll() {
+    map.invalidateSize({ animate: false, pan: false });
+    map.fitBounds(bounds, { animate: false });
+  }
   function drawMap() {
-    var bounds = [at(0, data.rows), at(data.columns, 0)];
-    map = L.map("map", { crs: L.CRS.Simple, preferCanvas: true, minZoom: -12, maxZoom: 6, zoomSnap: 0.25, attributionControl: false });
+    fitScreen();
+    map = L.map("map", { crs: L.CRS.Simple, preferCanvas: true, minZoom: -12, maxZoom: 6, zoomSnap: 0, attributionControl: false });
+    map.fitBounds(bounds, { animate: false });
     map.createPane("iso").style.zIndex = 450;
-    data.images.forEach(function (image) {
-      L.imageOverlay(image.url, bounds, { opacity: image.opacity, alt: image.alt, className: image.name }).addTo(map);
+    ["relief", "times"].forEach(function (name) {
+      var picture = document.getElementById(name);
+      // Drawn at once at any size: paper does not wait.
+      L.imageOverlay(picture.src, bounds, { alt: picture.alt, className: name }).addTo(map).getElement().decoding = "sync";
     });
     data.points.forEach(function (point) {
       (data.areas[point.number - 1] || []).forEach(function (rings) {
@@ -74,6 +95,9 @@
         L.polyline(line(piece[1]), { color: data.regimes[piece[0]].colour, weight: data.regimes[piece[0]].weight, dashArray: data.regimes[piece[0]].dash, interactive: false }).addTo(map);
       });
     });
+    data.pipes.forEach(function (pipe) {
+      L.polyline(line(pipe), { color: "#000", weight: 3, dashArray: "1 6", lineCap: "square", interactive: false }).addTo(map);
+    });
     data.labels.forEach(function (label) {
       L.marker(at(label[0], label[1]), { interactive: false, keyboard: false, pane: "iso", icon: L.divIcon({ className: "iso", html: label[2] + " min", iconSize: [50, 14] }) }).addTo(map);
     });
@@ -83,7 +107,13 @@
       marks[point.number] = L.circleMarker(at(point.at[0], point.at[1]), { radius: 6, color: "#000", weight: 2, fillColor: "#fff", fillOpacity: 1 })
         .bindTooltip(name).on("click", function () { location.hash = "p" + point.number; }).addTo(map);
     });
-    map.fitBounds(bounds);
+    var width = frame.parentNode.clientWidth;
+    window.addEventListener("resize", function () {
+      if (frame.parentNode.clientWidth === width) return;
+      width = frame.parentNode.clientWidth;
+      fitScreen();
+      showAll();
+    });
   }
 
   var longest = null;
@@ -140,9 +170,15 @@
   window.addEventListener("beforeprint", function () {
     opened = Array.prototype.filter.call(document.querySelectorAll("section.asked details.sheet, section.on details.sheet"), function (sheet) { return !sheet.open; });
     opened.forEach(function (sheet) { sheet.open = true; });
+    // 96 dots an inch: 170 mm of paper, and half a page at most.
+    frame.style.width = "640px";
+    fitFrame(640, 460);
+    showAll();
   });
   window.addEventListener("afterprint", function () {
     opened.forEach(function (sheet) { sheet.open = false; });
+    fitScreen();
+    showAll();
   });
   drawMap();
   choose();
