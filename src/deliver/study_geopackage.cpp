@@ -205,6 +205,32 @@ void write_isochrones(const StudyResult& result, const StudyRegions& regions, Ve
     for (const IsochroneRow& row : rows) layer.add(placed(regions.outline(*row.band), result.grid), row);
 }
 
+/// One of the two sides of a difference.
+struct DifferenceRow {
+    const DrawnDifference* of = nullptr;
+    bool drawn = false;
+};
+
+void write_differences(const StudyResult& result, VectorFile& file) {
+    const std::string drawn_only = "drawn only";
+    const std::string elevations_only = "elevations only";
+    LayerWriter<DifferenceRow> layer(
+        file, {.name = "catchment_differences", .description = "where hand-drawn catchments and those of the elevations disagree",
+               .geometry = LayerGeometry::polygons,
+               .style = {.field = "who_has_it", .looks = {{.value = drawn_only, .label = drawn_only, .fill = "#e69f00", .fill_opacity = 0.6},
+                                                    {.value = elevations_only, .label = elevations_only, .fill = "#0072b2", .fill_opacity = 0.6}}}});
+    layer.field("point", FieldKind::text, "name of the design point", [&result](const DifferenceRow& r) { return point_name(result, r.of->point); })
+        .field("who_has_it", FieldKind::text, "drawn only, or elevations only", [&](const DifferenceRow& r) { return r.drawn ? drawn_only : elevations_only; })
+        .field("area_m2", FieldKind::number, "its area", [](const DifferenceRow& r) {
+            return square_metres_of(r.drawn ? r.of->drawn_only_area() : r.of->found_only_area());
+        });
+    layer.begin();
+    for (const DrawnDifference& one : result.drawn) {
+        if (!one.drawn_only.empty()) layer.add(placed(one.drawn_only, result.grid), {&one, true});
+        if (!one.found_only.empty()) layer.add(placed(one.found_only, result.grid), {&one, false});
+    }
+}
+
 }  // namespace
 
 void write_study_geopackage(const std::filesystem::path& path, const StudyResult& result, const StudyRegions& regions) {
@@ -212,6 +238,7 @@ void write_study_geopackage(const std::filesystem::path& path, const StudyResult
     if (regions.isochrones()) write_isochrones(result, regions, file);
     write_subareas(result, regions, file);
     write_catchments(result, regions, file);
+    if (!result.drawn.empty()) write_differences(result, file);
     write_paths(result, file);
     write_segments(result, file);
     write_outlets(result, file);
