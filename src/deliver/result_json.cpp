@@ -393,6 +393,13 @@ Json notices_json(const StudyResult& result) {
     return json;
 }
 
+/// Names of the scenarios whose results stand beside.
+Json scenarios_json(const Study& study) {
+    Json names = Json::array();
+    for (const ScenarioStudy& scenario : study.scenarios) names.push_back(scenario.name);
+    return names;
+}
+
 }  // namespace
 
 std::string result_json(const StudyResult& result) {
@@ -400,6 +407,7 @@ std::string result_json(const StudyResult& result) {
     for (const Outlet& outlet : result.outlets) outlets.push_back(outlet_json(result, outlet));
     Json json = {{"title", result.study.title},
                        {"scenario", text_or_null(result.study.scenario)},
+                       {"scenarios", scenarios_json(result.study)},
                        {"report_units", result.study.report_units == ReportUnits::us ? "us" : "si"},
                        {"versions", versions()},
                        {"headlines", headlines(result)},

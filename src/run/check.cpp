@@ -54,7 +54,7 @@ public:
             attempt([&] { soil(); });
             attempt([&] { mapped_shapes(); });
             attempt([&] { points(); });
-            costs();
+            if (study_.scenario.empty()) costs();
         }
         output();
         for (const ScenarioStudy& scenario : study_.scenarios) attempt([&] { add_scenario(scenario); });
@@ -185,8 +185,10 @@ private:
         }
         report_.facts.push_back("points: " + std::to_string(stated->points.size()) + ", " + std::to_string(inside) +
                                 " of them within the elevations");
-        const auto surveyed = std::count_if(stated->points.begin(), stated->points.end(), [](const StatedPoint& p) { return p.surveyed.has_value(); });
-        if (study_.points.area) report_.facts.push_back("surveyed areas: beside " + std::to_string(surveyed) + " points, which move to the area nearest to theirs");
+        if (study_.points.area) {
+            const auto surveyed = std::count_if(stated->points.begin(), stated->points.end(), [](const StatedPoint& p) { return p.surveyed.has_value(); });
+            report_.facts.push_back("surveyed areas: beside " + std::to_string(surveyed) + " points, which move to the area nearest to theirs");
+        }
         if (inside == 0) report_.problems.push_back("none of the points in '" + *study_.points.file +
                                                     "' lies within the elevations; check their reference system");
     }
@@ -209,8 +211,8 @@ private:
         add_new(own.facts, report_.facts);
         add_new(own.problems, report_.problems);
         for (const Notice& notice : own.notices) {
-            const bool known = std::any_of(report_.notices.begin(), report_.notices.end(), [&](const Notice& n) { return n.code == notice.code && n.point == notice.point; });
-            if (!known) report_.notices.push_back(notice);
+            const auto is_same = [&](const Notice& other) { return other.code == notice.code && other.point == notice.point; };
+            if (std::none_of(report_.notices.begin(), report_.notices.end(), is_same)) report_.notices.push_back(notice);
         }
     }
 

@@ -165,8 +165,10 @@ StudyPeaks peaks_of(const PeakInputs& inputs, HistogramTally* histograms, std::i
     return stage(progress, "peaks", cells, [&] { return study_peaks(inputs, histograms->take()); });
 }
 
+using InputFiles = std::function<std::vector<InputFile>()>;
+
 /// Works a task out and writes its part of the result.
-RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, const std::function<std::vector<InputFile>()>& inputs_of, const Progress& progress) {
+RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, const InputFiles& inputs_of, const Progress& progress) {
     const Study& study = task.study;
     const StudyRain& rain = task.rain;
     const TerrainData& terrain = common.terrain;
@@ -234,7 +236,7 @@ Progress told_of(const std::string& scenario, const Progress& progress) {
 
 /// Works a scenario out and compares it with the study, whose part of the result has been written.
 ScenarioOutcome scenario_outcome(const ScenarioStudy& scenario, Task& task, const CommonWork& common,
-                                 const std::function<std::vector<InputFile>()>& inputs_of, const Progress& whole) {
+                                 const InputFiles& inputs_of, const Progress& whole) {
     const Progress progress = told_of(scenario.name, whole);
     ResultFolder& folder = common.folder;
     const RunOutcome worked = work_out(task, lay_on(task, common.terrain, progress), common, inputs_of, progress);
