@@ -12,6 +12,9 @@
 namespace rillclock {
 namespace {
 
+/// Beyond this ratio, either way, a surveyed area is told to differ from that of the elevations.
+constexpr double told_survey_ratio = 1.1;
+
 std::string in_words(Place place) { return fixed_decimals(place.x, 3) + ", " + fixed_decimals(place.y, 3); }
 
 std::string in_ha(FixedArea area) { return significant(from_fixed_area(area) / 1e4, 4) + " ha"; }
@@ -39,15 +42,23 @@ struct Landing {
     double moved_m;
 };
 
+/// Whether a point had rather land on `a` than on `b`, which has the smaller index.
+bool is_better(const Landing& a, const Landing& b, const std::optional<FixedArea>& surveyed) {
+    if (!surveyed) return std::tuple(-a.area, a.moved_m) < std::tuple(-b.area, b.moved_m);
+    const auto misfit = [&](const Landing& landing) {
+        return std::abs(std::log(static_cast<double>(landing.area) / static_cast<double>(*surveyed)));
+    };
+    return std::tuple(misfit(a), a.moved_m) < std::tuple(misfit(b), b.moved_m);
+}
+
 /// None where neither the point's own cell nor one within reach has data.
-std::optional<Landing> landing_of(const PointGround& on, Place place, Length move_within) {
+std::optional<Landing> landing_of(const PointGround& on, const StatedPoint& stated, Length move_within) {
     std::optional<Landing> best;
-    for (const Cell cell : cells_near(place, on.grid, on.ground, move_within)) {
+    for (const Cell cell : cells_near(stated.place, on.grid, on.ground, move_within)) {
         const auto area = on.area(cell);
         if (!area) continue;
-        const double distance = distance_m(on.grid, on.ground, place, on.grid.row_column(cell));
-        if (best && std::tuple(-*area, distance) >= std::tuple(-best->area, best->moved_m)) continue;
-        best = Landing{cell, *area, distance};
+        const Landing landing{cell, *area, distance_m(on.grid, on.ground, stated.place, on.grid.row_column(cell))};
+        if (!best || is_better(landing, *best, stated.surveyed)) best = landing;
     }
     return best;
 }
@@ -58,7 +69,7 @@ public:
 
     void place(const StatedPoint& stated) {
         if (!on_.grid.at(stated.place)) return leave_out(stated, "point-off-data", "lies off the elevation data");
-        const auto landing = landing_of(on_, stated.place, move_within_);
+        const auto landing = landing_of(on_, stated, move_within_);
         const Cell own = on_.grid.cell(*on_.grid.at(stated.place));
         if (!landing) return leave_out(stated, "point-on-void", "lies on ground without elevation data");
         const auto [taken, is_new] = taken_.try_emplace(landing->cell, stated.name);
@@ -66,8 +77,9 @@ public:
             return leave_out(stated, "point-on-taken-cell", "lands on the same cell as the point '" + taken->second + "'");
         }
         result_.points.push_back({.name = stated.name, .cell = landing->cell, .stated = stated.place,
-                                  .moved = metres(landing->moved_m)});
+                                  .moved = metres(landing->moved_m), .surveyed = stated.surveyed});
         if (landing->cell != own) tell_move(stated, own, *landing);
+        if (stated.surveyed) tell_misfit(stated, *landing);
     }
 
     [[nodiscard]] PlacedPoints result() { return std::move(result_); }
@@ -82,18 +94,31 @@ private:
     void tell_move(const StatedPoint& stated, Cell own, const Landing& landing) {
         result_.notices.push_back({.code = "point-moved",
                                    .text = "the point '" + stated.name + "' was moved " +
-                                           significant(landing.moved_m, 3) + " m to the cell of largest contributing area " +
-                                           "within " + significant(in_metres(move_within_), 3) + " m",
+                                           significant(landing.moved_m, 3) + " m to the cell " +
+                                           (stated.surveyed ? "whose area is nearest to the surveyed one" : "of largest contributing area") +
+                                           " within " + significant(in_metres(move_within_), 3) + " m",
                                    .point = stated.name, .value = landing.moved_m, .threshold = in_metres(move_within_),
                                    .place = stated.place});
         const auto before = on_.area(own);
-        if (!before || landing.area < 10 * *before) return;
+        if (stated.surveyed || !before || landing.area < 10 * *before) return;
         result_.notices.push_back({.code = "point-moved-to-larger-stream",
                                    .text = "moving the point '" + stated.name + "' changed its area from " + in_ha(*before) +
                                            " to " + in_ha(landing.area) + "; check that it is meant to lie on the larger stream, " +
                                            "or lower move_within",
                                    .point = stated.name,
                                    .value = static_cast<double>(landing.area) / static_cast<double>(*before), .threshold = 10.0,
+                                   .place = stated.place});
+    }
+
+    void tell_misfit(const StatedPoint& stated, const Landing& landing) {
+        const double ratio = static_cast<double>(landing.area) / static_cast<double>(*stated.surveyed);
+        if (std::abs(std::log(ratio)) <= std::log(told_survey_ratio)) return;
+        result_.notices.push_back({.code = "surveyed-area-differs",
+                                   .text = "the area surveyed at the point '" + stated.name + "' is " + in_ha(*stated.surveyed) +
+                                           ", and the nearest to it within " + significant(in_metres(move_within_), 3) + " m is " +
+                                           in_ha(landing.area) + ", " + significant(ratio, 3) + " times as much; look where survey and " +
+                                           "elevations disagree, at the point's place, or raise move_within",
+                                   .point = stated.name, .value = ratio, .threshold = ratio > 1 ? told_survey_ratio : 1 / told_survey_ratio,
                                    .place = stated.place});
     }
 

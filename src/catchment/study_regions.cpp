@@ -18,7 +18,7 @@ StudyRegions::StudyRegions(const Grid& grid, const Ground& ground, const PointTr
     : grid_(grid), ground_(ground), tree_(tree), last_(tree.last_points()), minutes_to_last_(std::move(minutes_to_last)),
       isochrones_(isochrones), place_(tree.next.size() + 1, 0), first_place_(tree.next.size() + 1, 0), owners_(grid.columns),
       owner_row_(static_cast<std::size_t>(grid.columns)), subareas_{RegionBorders(grid.columns), {}, owner_row_},
-      catchments_{RegionBorders(grid.columns), {}, owner_row_} {
+      catchments_{RegionBorders(grid.columns), {}, owner_row_}, part_row_(owner_row_) {
     number_tree();
 }
 
@@ -49,17 +49,22 @@ void StudyRegions::label_row(std::span<const std::uint32_t> owners, std::span<co
         const double time = static_cast<double>(minutes[i]);
         subareas_.row[i] = owner == 0 ? no_region : band_label(owner, band_of(time - minutes_to_last_[owner - 1]));
         catchments_.row[i] = owner == 0 ? no_region : band_label(last_[owner], band_of(time));
+        part_row_[i] = owner == 0 ? no_region : band_label(owner, band_of(time));
+    }
+}
+
+/// Adds the area of each run of one label to what there is of it.
+void StudyRegions::add_areas(const std::vector<RegionLabel>& row, FixedArea cell_area, std::unordered_map<RegionLabel, FixedArea>& areas) {
+    for (auto begin = row.begin(); begin != row.end();) {
+        const auto end = std::find_if(begin, row.end(), [&](RegionLabel label) { return label != *begin; });
+        if (*begin != no_region) areas[*begin] += cell_area * (end - begin);
+        begin = end;
     }
 }
 
 void StudyRegions::add_row(Bands& bands, std::int64_t row) const {
     bands.borders.add_row(bands.row);
-    const FixedArea area = ground_.cell_area(row);
-    for (auto begin = bands.row.begin(); begin != bands.row.end();) {
-        const auto end = std::find_if(begin, bands.row.end(), [&](RegionLabel label) { return label != *begin; });
-        if (*begin != no_region) bands.areas[*begin] += area * (end - begin);
-        begin = end;
-    }
+    add_areas(bands.row, ground_.cell_area(row), bands.areas);
 }
 
 void StudyRegions::look(const RegionStrip& strip) {
@@ -71,6 +76,7 @@ void StudyRegions::look(const RegionStrip& strip) {
         if (!isochrones_) continue;
         add_row(subareas_, strip.window.row + r);
         add_row(catchments_, strip.window.row + r);
+        add_areas(part_row_, ground_.cell_area(strip.window.row + r), parts_);
     }
     if (isochrones_) check_bounds();
 }
@@ -92,12 +98,30 @@ void StudyRegions::finish() {
     catchments_.borders.finish();
     list_bands(subareas_, IsochroneScope::subarea);
     list_bands(catchments_, IsochroneScope::catchment);
+    list_parts();
 }
 
 void StudyRegions::list_bands(const Bands& bands, IsochroneScope scope) {
     for (const RegionLabel label : bands.borders.labels()) {
         bands_.push_back({.scope = scope, .point = static_cast<PointNumber>(label >> 32U),
                           .number = static_cast<std::uint32_t>(label & 0xFFFFFFFFU) - 1U, .area = bands.areas.at(label)});
+    }
+}
+
+/// Gives each band its parts: one of a subarea, those gathered on the way of a catchment.
+void StudyRegions::list_parts() {
+    std::vector<RegionLabel> labels;
+    for (const auto& [label, area] : parts_) labels.push_back(label);
+    std::sort(labels.begin(), labels.end());
+    std::unordered_map<RegionLabel, IsochroneBand*> catchment_bands;
+    for (IsochroneBand& band : bands_) {
+        if (band.scope == IsochroneScope::subarea) band.parts = {{.subarea = band.point, .area = band.area}};
+        else catchment_bands[band_label(band.point, band.number)] = &band;
+    }
+    for (const RegionLabel label : labels) {
+        const auto subarea = static_cast<PointNumber>(label >> 32U);
+        const RegionLabel whole = band_label(last_[subarea], static_cast<std::uint32_t>(label & 0xFFFFFFFFU) - 1U);
+        catchment_bands.at(whole)->parts.push_back({.subarea = subarea, .area = parts_.at(label)});
     }
 }
 

@@ -54,9 +54,17 @@ void show_facts(const std::vector<std::string>& facts) {
     for (const std::string& fact : facts) spdlog::info("{}", fact);
 }
 
+void show_scenarios(const RunOutcome& outcome) {
+    for (const ScenarioOutcome& scenario : outcome.scenarios) {
+        std::cout << "\nScenario '" << scenario.name << "' beside the study:\n" << scenario.comparison << "Its result is in "
+                  << scenario.folder.string() << ", the comparison in " << scenario.comparison_folder.string() << ".\n";
+    }
+}
+
 void show_outcome(const RunOutcome& outcome) {
     std::cout << '\n' << outcome.overview << '\n';
     for (const std::string& headline : outcome.headlines) std::cout << "  * " << headline << '\n';
+    show_scenarios(outcome);
     std::cout << "\nThe result is in " << outcome.folder.string() << ": open report.html in a browser; tables/outlets.csv has the figures, "
               << "tables/review.csv lists what needs a person's eye.\n\n";
     for (const std::string& caution : caution_lines()) std::cout << caution << '\n';
@@ -67,6 +75,9 @@ int run_command(const CommandLine& line) {
     const Progress progress([&](const StageProgress& report) { return log.report(report); });
     const RunOutcome outcome = run(study_of(line), {.replace = line.replace, .threads = line.threads}, progress);
     if (!line.quiet) show_facts(outcome.facts);
+    for (const ScenarioOutcome& scenario : outcome.scenarios) {
+        if (!line.quiet) show_facts(scenario.facts);
+    }
     if (!line.quiet) show_notices(outcome.notices, " in tables/review.csv; -v says them all", line.verbose);
     if (line.json) {
         std::cout << outcome.json;

@@ -13,17 +13,50 @@ using Json = nlohmann::ordered_json;
 
 double to_decimals(double value, int decimals) { return std::stod(fixed_decimals(value, decimals)); }
 
-Json properties_of(const IsochroneRow& row) {
-    return {{"point", row.outlet->point.name},
+Json parts_json(const StudyResult& result, const IsochroneRow& row) {
+    Json parts = Json::array();
+    for (const IsochronePart& part : row.band->parts) {
+        parts.push_back({{"subarea", point_name(result, part.subarea)}, {"area_m2", to_decimals(from_fixed_area(part.area), 1)}});
+    }
+    return parts;
+}
+
+Json nine_digits(double value) { return std::stod(significant(value, 9)); }
+
+/// What runs off; null where it is not known.
+void add_runoff(const StudyResult& result, const IsochroneRow& row, Json& json) {
+    const std::optional<BandRunoff>& runoff = row.runoff;
+    const auto where_any = [&](auto value) { return runoff ? Json(value(*runoff)) : Json(nullptr); };
+    json["return_period_years"] = where_any([&](const BandRunoff&) { return nine_digits(result.rain.raster_storm().return_period); });
+    json["ca_m2"] = where_any([](const BandRunoff& r) { return nine_digits(in_square_metres(r.runoff)); });
+    json["ca_until_m2"] = where_any([](const BandRunoff& r) { return nine_digits(in_square_metres(r.running)); });
+    json["rain_duration_min"] = where_any([](const BandRunoff& r) { return to_decimals(in_minutes(r.time), 4); });
+    json["intensity_mm_per_h"] = where_any([](const BandRunoff& r) { return r.intensity ? nine_digits(in_millimetres_per_hour(*r.intensity)) : Json(nullptr); });
+    json["flow_m3_per_s"] = where_any([](const BandRunoff& r) { return r.flow ? nine_digits(in_cubic_metres_per_second(*r.flow)) : Json(nullptr); });
+}
+
+Json properties_of(const StudyResult& result, const IsochroneRow& row) {
+    Json json = {{"point", row.outlet->point.name},
             {"of", words(row.band->scope)},
             {"from_min", to_decimals(row.from_min, 4)},
             {"to_min", to_decimals(row.to_min, 4)},
             {"area_m2", to_decimals(from_fixed_area(row.band->area), 1)},
             {"area_until_m2", to_decimals(from_fixed_area(row.area_until), 1)},
-            {"share_until", to_decimals(static_cast<double>(row.area_until) / static_cast<double>(row.area_in_all), 6)}};
+            {"share_until", to_decimals(static_cast<double>(row.area_until) / static_cast<double>(row.area_in_all), 6)},
+            {"subareas", parts_json(result, row)}};
+    add_runoff(result, row, json);
+    return json;
 }
 
 }  // namespace
+
+std::string parts_in_words(const StudyResult& result, const IsochroneBand& band) {
+    std::string text;
+    for (const IsochronePart& part : band.parts) {
+        text += (text.empty() ? "" : "; ") + point_name(result, part.subarea) + " " + fixed_decimals(from_fixed_area(part.area), 1);
+    }
+    return text;
+}
 
 std::string_view words(IsochroneScope scope) {
     switch (scope) {
@@ -57,7 +90,12 @@ std::vector<IsochroneRow> isochrone_rows(const StudyResult& result, const StudyR
         rows.push_back({.band = &band, .outlet = &result.outlets[band.point - 1], .from_min = band.number * step,
                         .to_min = (band.number + 1) * step, .area_until = until});
     }
-    for (IsochroneRow& row : rows) row.area_in_all = in_all[{row.band->scope, row.band->point}];
+    const auto runoffs = band_runoffs(regions.bands(), {.study = result.study, .rain = result.rain, .outlets = result.outlets, .peaks = result.peaks,
+                                                        .step = regions.isochrones()->step});
+    for (std::size_t i = 0; i < rows.size(); ++i) {
+        rows[i].area_in_all = in_all[{rows[i].band->scope, rows[i].band->point}];
+        rows[i].runoff = runoffs[i];
+    }
     return rows;
 }
 
@@ -65,7 +103,7 @@ std::string isochrones_geojson(const StudyResult& result, const StudyRegions& re
     GeographicLines shapes(result.system);
     std::string features;
     for (const IsochroneRow& row : isochrone_rows(result, regions)) {
-        const Json feature = {{"type", "Feature"}, {"properties", properties_of(row)},
+        const Json feature = {{"type", "Feature"}, {"properties", properties_of(result, row)},
                               {"geometry", shapes.geometry(placed(regions.outline(*row.band), result.grid))}};
         features += (features.empty() ? "" : ",\n") + feature.dump();
     }

@@ -1,11 +1,13 @@
 #pragma once
 
+#include <optional>
 #include <string_view>
 #include <vector>
 
 #include "rillclock/catchment/study_regions.hpp"
 #include "rillclock/deliver/study_result.hpp"
 #include "rillclock/raster/grid_shapes.hpp"
+#include "rillclock/study/isochrone_runoff.hpp"
 
 namespace rillclock {
 
@@ -17,12 +19,15 @@ struct IsochroneRow {
     double to_min = 0.0;
     FixedArea area_until = 0;   ///< of this band and all earlier ones of its scope and point
     FixedArea area_in_all = 0;  ///< of all bands of its scope and point
+    std::optional<BandRunoff> runoff = {};  ///< where the study has rain by duration and runoff coefficients
 };
 
 /// All bands, in their order.
 [[nodiscard]] std::vector<IsochroneRow> isochrone_rows(const StudyResult& result, const StudyRegions& regions);
 /// "subarea", "catchment".
 [[nodiscard]] std::string_view words(IsochroneScope scope);
+/// The subareas within a band, with the area that each has of it in m²: "Weir 1250.0; Mill bridge 475.5".
+[[nodiscard]] std::string parts_in_words(const StudyResult& result, const IsochroneBand& band);
 /// Outlines in the coordinates of the grid.
 [[nodiscard]] std::vector<Polygon> placed(const std::vector<CornerPolygon>& polygons, const Grid& grid);
 

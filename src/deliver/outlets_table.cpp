@@ -1,3 +1,5 @@
+#include <algorithm>
+
 #include "rillclock/deliver/report_units.hpp"
 #include "rillclock/deliver/tables.hpp"
 #include "network_words.hpp"
@@ -37,6 +39,19 @@ void add_time_columns(const ReportScale& scale, TableWriter<Outlet>& table) {
     for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
         table.column(std::string(name_of(regime)) + "_min", [regime](const Outlet& o) { return in_minutes_text(regime_seconds(o, regime)); });
     }
+}
+
+/// Beside the area of the elevations, that of a survey and how many times as large the former is.
+void add_survey_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
+    const auto is_surveyed = [](const Outlet& o) { return o.point.surveyed.has_value(); };
+    if (std::none_of(result.outlets.begin(), result.outlets.end(), is_surveyed)) return;
+    const auto where_any = [=](auto print) {
+        return [=](const Outlet& o) { return is_surveyed(o) ? print(o) : std::string(); };
+    };
+    table.column("surveyed_area_" + scale.area_unit(), where_any([=](const Outlet& o) { return five_digits(scale.area(from_fixed_area(*o.point.surveyed))); }))
+        .column("area_to_surveyed_ratio", where_any([](const Outlet& o) {
+            return five_digits(static_cast<double>(o.area) / static_cast<double>(*o.point.surveyed));
+        }));
 }
 
 void add_path_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
@@ -147,6 +162,7 @@ std::string outlets_table(const StudyResult& result) {
     add_network_columns(result, table);
     if (result.peaks.are_there()) add_peak_columns(result, scale, table);
     add_zone_columns(result, table);
+    add_survey_columns(result, scale, table);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) text += table.line(outlet);
     return text;

@@ -334,6 +334,18 @@ Json network_json(const StudyResult& result, const PointNetwork& network) {
     return storms;
 }
 
+/// A hand-drawn catchment beside that of the elevations.
+void add_drawn(const StudyResult& result, const Outlet& outlet, Json& json) {
+    for (const DrawnDifference& d : result.drawn) {
+        if (d.point != outlet.number) continue;
+        json["drawn_catchment"] = {{"area_m2", number(from_fixed_area(d.drawn), 4)},
+                                   {"in_both_m2", number(from_fixed_area(d.both), 4)},
+                                   {"drawn_only_m2", number(from_fixed_area(d.drawn_only_area()), 4)},
+                                   {"elevations_only_m2", number(from_fixed_area(d.found_only_area()), 4)},
+                                   {"overlap", number(d.overlap(), 6)}};
+    }
+}
+
 Json outlet_json(const StudyResult& result, const Outlet& outlet) {
     Json json = {{"number", outlet.number},
             {"name", outlet.point.name},
@@ -354,6 +366,8 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
     json["stated"] = text_or_null(marks_of(result.network.edits[outlet.number - 1]));
     json["stated_above"] = text_or_null(stated_in_words(result, result.network.points[outlet.number - 1].stated_above));
     json["land"] = land_json(result, outlet);
+    if (outlet.point.surveyed) json["surveyed_area_m2"] = number(from_fixed_area(*outlet.point.surveyed), 4);
+    add_drawn(result, outlet, json);
     if (!result.rain.zones.empty()) {
         json["rain_zone"] = {{"rain", result.rain.zone_name(outlet.rain_zone.number)},
                              {"share_of_area", digits(outlet.rain_zone.share)}};
@@ -379,12 +393,21 @@ Json notices_json(const StudyResult& result) {
     return json;
 }
 
+/// Names of the scenarios whose results stand beside.
+Json scenarios_json(const Study& study) {
+    Json names = Json::array();
+    for (const ScenarioStudy& scenario : study.scenarios) names.push_back(scenario.name);
+    return names;
+}
+
 }  // namespace
 
 std::string result_json(const StudyResult& result) {
     Json outlets = Json::array();
     for (const Outlet& outlet : result.outlets) outlets.push_back(outlet_json(result, outlet));
     Json json = {{"title", result.study.title},
+                       {"scenario", text_or_null(result.study.scenario)},
+                       {"scenarios", scenarios_json(result.study)},
                        {"report_units", result.study.report_units == ReportUnits::us ? "us" : "si"},
                        {"versions", versions()},
                        {"headlines", headlines(result)},

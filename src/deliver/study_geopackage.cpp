@@ -136,6 +136,25 @@ LayerStyle band_style(const std::vector<IsochroneRow>& rows) {
     return style;
 }
 
+/// Null where the study has no rain by duration or no runoff coefficients.
+void add_runoff_fields(const StudyResult& result, LayerWriter<IsochroneRow>& layer) {
+    const auto where_any = [](auto value) {
+        return [value](const IsochroneRow& r) { return r.runoff ? value(*r.runoff) : FieldValue(); };
+    };
+    layer.field("return_period_years", FieldKind::number, "of the storm that the next fields are for",
+                where_any([&result](const BandRunoff&) { return number(result.rain.raster_storm().return_period); }))
+        .field("ca_m2", FieldKind::number, "runoff coefficient times area, of the band",
+               where_any([](const BandRunoff& b) { return number(in_square_metres(b.runoff), 9); }))
+        .field("ca_until_m2", FieldKind::number, "the same of this and all earlier bands",
+               where_any([](const BandRunoff& b) { return number(in_square_metres(b.running), 9); }))
+        .field("rain_duration_min", FieldKind::number, "by when all of the band has arrived: rain as long as that is read, or as the least time",
+               where_any([](const BandRunoff& b) { return minutes(in_seconds(b.time)); }))
+        .field("intensity_mm_per_h", FieldKind::number, "of that rain; null where the rain ends before",
+               where_any([](const BandRunoff& b) { return b.intensity ? number(in_millimetres_per_hour(*b.intensity), 9) : FieldValue(); }))
+        .field("flow_m3_per_s", FieldKind::number, "intensity times ca_until_m2",
+               where_any([](const BandRunoff& b) { return b.flow ? number(in_cubic_metres_per_second(*b.flow), 9) : FieldValue(); }));
+}
+
 void write_isochrones(const StudyResult& result, const StudyRegions& regions, VectorFile& file) {
     const std::vector<IsochroneRow> rows = isochrone_rows(result, regions);
     LayerWriter<IsochroneRow> layer(file, {.name = "isochrones", .description = "where water takes between two times to the point",
@@ -149,9 +168,38 @@ void write_isochrones(const StudyResult& result, const StudyRegions& regions, Ve
         .field("area_until_m2", FieldKind::number, "area of this and all earlier bands", [](const IsochroneRow& r) { return square_metres_of(r.area_until); })
         .field("share_until", FieldKind::number, "the same as a share of all", [](const IsochroneRow& r) {
             return number(static_cast<double>(r.area_until) / static_cast<double>(r.area_in_all));
-        });
+        })
+        .field("subareas", FieldKind::text, "the subareas within it, with the area of each in m2",
+               [&result](const IsochroneRow& r) { return parts_in_words(result, *r.band); });
+    add_runoff_fields(result, layer);
     layer.begin();
     for (const IsochroneRow& row : rows) layer.add(placed(regions.outline(*row.band), result.grid), row);
+}
+
+/// One of the two sides of a difference.
+struct DifferenceRow {
+    const DrawnDifference* of = nullptr;
+    bool drawn = false;
+};
+
+void write_differences(const StudyResult& result, VectorFile& file) {
+    const std::string drawn_only = "drawn only";
+    const std::string elevations_only = "elevations only";
+    LayerWriter<DifferenceRow> layer(
+        file, {.name = "catchment_differences", .description = "where hand-drawn catchments and those of the elevations disagree",
+               .geometry = LayerGeometry::polygons,
+               .style = {.field = "who_has_it", .looks = {{.value = drawn_only, .label = drawn_only, .fill = "#e69f00", .fill_opacity = 0.6},
+                                                    {.value = elevations_only, .label = elevations_only, .fill = "#0072b2", .fill_opacity = 0.6}}}});
+    layer.field("point", FieldKind::text, "name of the design point", [&result](const DifferenceRow& r) { return point_name(result, r.of->point); })
+        .field("who_has_it", FieldKind::text, "drawn only, or elevations only", [&](const DifferenceRow& r) { return r.drawn ? drawn_only : elevations_only; })
+        .field("area_m2", FieldKind::number, "its area", [](const DifferenceRow& r) {
+            return square_metres_of(r.drawn ? r.of->drawn_only_area() : r.of->found_only_area());
+        });
+    layer.begin();
+    for (const DrawnDifference& one : result.drawn) {
+        if (!one.drawn_only.empty()) layer.add(placed(one.drawn_only, result.grid), {&one, true});
+        if (!one.found_only.empty()) layer.add(placed(one.found_only, result.grid), {&one, false});
+    }
 }
 
 }  // namespace
@@ -161,6 +209,7 @@ void write_study_geopackage(const std::filesystem::path& path, const StudyResult
     if (regions.isochrones()) write_isochrones(result, regions, file);
     write_subareas(result, regions, file);
     write_catchments(result, regions, file);
+    if (!result.drawn.empty()) write_differences(result, file);
     write_paths(result, file);
     write_segments(result, file);
     write_network(result, file);

@@ -170,8 +170,8 @@ void ResultFolder::check_target(Existing existing) const {
 }
 
 fs::path ResultFolder::path(const fs::path& relative) {
-    const fs::path normal = relative.lexically_normal();
-    if (normal.empty() || normal.is_absolute() || *normal.begin() == "..")
+    const fs::path normal = (part_ / relative).lexically_normal();
+    if (normal.empty() || normal.is_absolute() || relative.is_absolute() || *normal.begin() == "..")
         throw bug("\"" + relative.string() + "\" is no place within a result folder");
     const fs::path full = making_ / normal;
     std::error_code problem;

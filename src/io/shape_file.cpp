@@ -63,8 +63,11 @@ private:
     }
 
     void choose_field() {
-        if (wish_.text_field.empty()) return;
         const OGRFeatureDefn& definition = *layer_->GetLayerDefn();
+        for (const std::string_view usual : wish_.usual_text_fields) {
+            if (wish_.text_field.empty() && field_ < 0) field_ = definition.GetFieldIndex(std::string(usual).c_str());
+        }
+        if (wish_.text_field.empty()) return;
         field_ = definition.GetFieldIndex(wish_.text_field.c_str());
         if (field_ >= 0) return;
         std::string list;
@@ -95,6 +98,7 @@ private:
         ++result_.features;
         result_.feature_of_line.insert(result_.feature_of_line.end(), taken.lines.size(), static_cast<std::size_t>(number_));
         result_.numbers.insert(result_.numbers.end(), taken.lines.size(), numbers_of(feature));
+        result_.feature_of_polygon.insert(result_.feature_of_polygon.end(), taken.polygons.size(), static_cast<std::size_t>(number_));
         result_.polygon_texts.insert(result_.polygon_texts.end(), taken.polygons.size(), text_of(feature));
         std::move(taken.lines.begin(), taken.lines.end(), std::back_inserter(result_.lines));
         std::move(taken.points.begin(), taken.points.end(), std::back_inserter(result_.points));

@@ -1,5 +1,6 @@
 #include "rillclock/run/check.hpp"
 
+#include <algorithm>
 #include <filesystem>
 #include <memory>
 #include <optional>
@@ -13,7 +14,9 @@
 #include "rillclock/io/ground_of.hpp"
 #include "rillclock/io/text_file.hpp"
 #include "rillclock/rainfall/return_periods.hpp"
+#include "rillclock/study/scenario.hpp"
 #include "rillclock/study/uncertain_inputs.hpp"
+#include "cover_areas.hpp"
 #include "mapped_flow.hpp"
 #include "rain_zones.hpp"
 #include "read_soil.hpp"
@@ -25,6 +28,8 @@ namespace {
 
 /// Bytes a cell of the six rasters before compression, overviews included.
 constexpr double disk_bytes_per_cell = 31.0;
+/// The same of the raster by which a scenario is compared.
+constexpr double change_bytes_per_cell = 5.5;
 
 /// "2, 10, 100 years; rasters, paths and segments are for 10".
 std::string storms_text(const StudyRain& rain) {
@@ -49,9 +54,10 @@ public:
             attempt([&] { soil(); });
             attempt([&] { mapped_shapes(); });
             attempt([&] { points(); });
-            costs();
+            if (study_.scenario.empty()) costs();
         }
         output();
+        for (const ScenarioStudy& scenario : study_.scenarios) attempt([&] { add_scenario(scenario); });
         report_.notices = in_sentences(std::move(report_.notices));
         return std::move(report_);
     }
@@ -132,8 +138,13 @@ private:
         options.band = study_.surface.band;
         const CoverFile file = open_cover(located(study_, study_.surface.cover), options, terrain_->grid(), terrain_->system);
         note(file.notices);
-        report_.facts.push_back("land cover: " + std::to_string(file.file_grid.rows) + " rows × " +
+        report_.facts.push_back("land cover: '" + study_.surface.cover + "', " + std::to_string(file.file_grid.rows) + " rows × " +
                                 std::to_string(file.file_grid.columns) + " columns in " + file.system.name());
+        if (!study_.surface.cover_areas.file || study_.surface.book.empty()) return;
+        const CoverAreas areas = read_cover_areas(study_, read_book(study_), terrain_->system);
+        note(areas.notices);
+        report_.facts.push_back("cover areas: " + std::to_string(areas.parts.size()) + " polygons of '" + *study_.surface.cover_areas.file +
+                                "', laid over the land cover");
     }
 
     void soil() {
@@ -158,6 +169,10 @@ private:
             return;
         }
         note(stated->notices);
+        if (!stated->drawn.empty()) {
+            report_.facts.push_back("catchments: " + std::to_string(stated->drawn.size()) + " drawn, whose points will stand where their water leaves them");
+            return;
+        }
         std::size_t inside = 0;
         for (const StatedPoint& point : stated->points) {
             if (terrain_->grid().at(point.place)) {
@@ -170,16 +185,45 @@ private:
         }
         report_.facts.push_back("points: " + std::to_string(stated->points.size()) + ", " + std::to_string(inside) +
                                 " of them within the elevations");
+        if (study_.points.area) {
+            const auto surveyed = std::count_if(stated->points.begin(), stated->points.end(), [](const StatedPoint& p) { return p.surveyed.has_value(); });
+            report_.facts.push_back("surveyed areas: beside " + std::to_string(surveyed) + " points, which move to the area nearest to theirs");
+        }
         if (inside == 0) report_.problems.push_back("none of the points in '" + *study_.points.file +
                                                     "' lies within the elevations; check their reference system");
+    }
+
+    /// What a scenario states, and what is said of it that is not said of the study itself.
+    void add_scenario(const ScenarioStudy& scenario) {
+        const std::string begin = "scenario " + scenario.name + ": ";
+        std::string keys;
+        for (const StatedChange& change : scenario.changes) {
+            if (keys.find(change.key) == std::string::npos) keys += (keys.empty() ? "" : ", ") + change.key;
+        }
+        report_.facts.push_back(begin + "differs in " + keys);
+        const Study study = scenario_study(study_, scenario);
+        const CheckReport own = Checking(study).report();
+        const auto add_new = [&](const std::vector<std::string>& from, std::vector<std::string>& to) {
+            for (const std::string& text : from) {
+                if (std::find(to.begin(), to.end(), text) == to.end()) to.push_back(begin + text);
+            }
+        };
+        add_new(own.facts, report_.facts);
+        add_new(own.problems, report_.problems);
+        for (const Notice& notice : own.notices) {
+            const auto is_same = [&](const Notice& other) { return other.code == notice.code && other.point == notice.point; };
+            if (std::none_of(report_.notices.begin(), report_.notices.end(), is_same)) report_.notices.push_back(notice);
+        }
     }
 
     void costs() {
         const MemoryTask task = memory_task(study_, *terrain_);
         const MemoryLimit limit = usable_memory();
+        const auto results = static_cast<double>(study_.scenarios.size() + 1);
         report_.facts.push_back("cost: about " + bytes_text(memory_need(task)) + " of memory (" + limit.set_by + " allows " +
                                 bytes_text(limit.bytes) + "), and at most " +
-                                bytes_text(static_cast<double>(task.cells) * disk_bytes_per_cell) + " of disk for the result");
+                                bytes_text(static_cast<double>(task.cells) * (disk_bytes_per_cell * results + change_bytes_per_cell * (results - 1.0))) +
+                                " of disk for the result");
         if (const auto lack = lack_of_memory(task, limit)) report_.lacking.push_back(*lack);
     }
 

@@ -5,6 +5,7 @@
 #include <set>
 
 #include "result_tables.hpp"
+#include "two_results.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/quantity_text.hpp"
 #include "rillclock/deliver/comparison.hpp"
@@ -172,23 +173,34 @@ void write_change(ValueRaster& before, ValueRaster& after, ResultFolder& folder,
 
 }  // namespace
 
-CompareOutcome compare(const std::filesystem::path& before, const std::filesystem::path& after, const CompareOptions& options,
-                       const Progress& progress) {
-    const GdalSession session;
-    const ResultTables old_tables = ResultTables::of(before);
-    const ResultTables new_tables = ResultTables::of(after);
-    const Comparison comparison = Comparing(old_tables, new_tables, options.tolerance).comparison();
-    ValueRaster old_times = travel_time_of(before);
-    ValueRaster new_times = travel_time_of(after);
+CompareOutcome compare_two(const NamedResult& before, const NamedResult& after, double tolerance, ResultFolder* into,
+                           const Progress& progress) {
+    ResultTables old_tables = ResultTables::of(before.folder);
+    ResultTables new_tables = ResultTables::of(after.folder);
+    old_tables.folder = before.name;
+    new_tables.folder = after.name;
+    const Comparison comparison = Comparing(old_tables, new_tables, tolerance).comparison();
+    ValueRaster old_times = travel_time_of(before.folder);
+    ValueRaster new_times = travel_time_of(after.folder);
     require_same_grid(old_tables, new_tables, old_times, new_times);
     CompareOutcome outcome{.text = comparison_text(comparison, most_rows_shown), .json = comparison_json(comparison),
                            .worse = comparison.worse().size(), .folder = {}};
-    if (!options.folder) return outcome;
+    if (into == nullptr) return outcome;
+    write_change(old_times, new_times, *into, progress);
+    into->write_text("tables/comparison.csv", comparison_table(comparison));
+    if (!comparison.flow_unit.empty()) into->write_text("tables/compared_peaks.csv", compared_peaks_table(comparison));
+    into->write_text("result.json", outcome.json);
+    return outcome;
+}
+
+CompareOutcome compare(const std::filesystem::path& before, const std::filesystem::path& after, const CompareOptions& options,
+                       const Progress& progress) {
+    const GdalSession session;
+    const NamedResult old_result{before, before};
+    const NamedResult new_result{after, after};
+    if (!options.folder) return compare_two(old_result, new_result, options.tolerance, nullptr, progress);
     ResultFolder folder(*options.folder, options.replace ? Existing::replace : Existing::refuse);
-    write_change(old_times, new_times, folder, progress);
-    folder.write_text("tables/comparison.csv", comparison_table(comparison));
-    if (!comparison.flow_unit.empty()) folder.write_text("tables/compared_peaks.csv", compared_peaks_table(comparison));
-    folder.write_text("result.json", outcome.json);
+    CompareOutcome outcome = compare_two(old_result, new_result, options.tolerance, &folder, progress);
     folder.commit();
     outcome.folder = folder.target();
     return outcome;

@@ -8,6 +8,7 @@
 #include "rillclock/hydraulics/sheet_flow.hpp"
 #include "rillclock/io/cover_file.hpp"
 #include "rillclock/io/text_file.hpp"
+#include "cover_areas.hpp"
 #include "read_classes.hpp"
 #include "read_soil.hpp"
 #include "study_data.hpp"
@@ -154,11 +155,12 @@ private:
     std::uint8_t last_position_ = 0;
 };
 
-Raster<std::uint8_t> read_positions(BlockSource<std::int32_t>& source, Reading& reading, const Progress& progress) {
-    Raster<std::uint8_t> positions(source.grid().rows, source.grid().columns);
-    for_each_class(source, progress, "reading land cover",
-                   [&](Cell cell, std::int32_t code) { positions[cell] = reading.position(cell, code); });
-    return positions;
+/// `cells` come with what is laid over the raster (`lay_over`), and leave as positions in the book.
+void read_positions(BlockSource<std::int32_t>& source, const CoverBook& book, Reading& reading, Raster<std::uint8_t>& cells, const Progress& progress) {
+    for_each_class(source, progress, "reading land cover", [&](Cell cell, std::int32_t code) {
+        const std::uint8_t over = cells[cell];
+        cells[cell] = reading.position(cell, over == 0 ? code : book.classes()[over - 1U].code);
+    });
 }
 
 /// Unknown classes are an error unless the study has named what to take for them; then they are told.
@@ -190,6 +192,15 @@ CoverBook read_book(const Study& study) {
     return parse_cover_book(read_text(file), study.surface.book);
 }
 
+void require_cover(const Study& study) {
+    const ElevationFile terrain = open_elevation_of(study);
+    const CoverBook book = read_book(study);
+    CoverOptions options;
+    options.band = study.surface.band;
+    (void)open_cover(located(study, study.surface.cover), options, terrain.grid(), terrain.system);
+    (void)read_cover_areas(study, book, terrain.system);
+}
+
 SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress) {
     CoverBook book = read_book(study);
     if (book.classes().size() > most_classes) {
@@ -199,14 +210,16 @@ SurfaceData read_surface(const Study& study, const TerrainData& terrain, const P
     CoverOptions options;
     options.band = study.surface.band;
     CoverFile file = open_cover(located(study, study.surface.cover), options, terrain.grid, terrain.system);
+    const CoverAreas areas = read_cover_areas(study, book, terrain.system);
     const Hydraulics hydraulics(study);
     Reading reading(study, book, terrain.elevations);
 
     SurfaceData data{.book = book, .table = {}, .classes = {}, .soils = {}, .runoff = {}, .notices = file.notices};
-    data.table.index = read_positions(*file.source, reading, progress);
+    data.table.index = Raster<std::uint8_t>(terrain.grid.rows, terrain.grid.columns);
+    const Notices laid_over = lay_over(study, areas, terrain.grid, data.table.index);
+    read_positions(*file.source, book, reading, data.table.index, progress);
     data.classes = reading.known_classes();
-    const Notices unknown = unknown_notices(study, reading);
-    data.notices.insert(data.notices.end(), unknown.begin(), unknown.end());
+    for (const Notices& more : {laid_over, unknown_notices(study, reading)}) data.notices.insert(data.notices.end(), more.begin(), more.end());
     read_soil(study, terrain, data, progress);
     const std::vector<CellSoil> soils = soils_of(data);
     for (const CoverClass& cover : book.classes()) {

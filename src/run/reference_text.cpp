@@ -61,7 +61,8 @@ std::string keys_text() {
         text += "# " + std::string(key.help) + " (default: " + std::string(key.standard) + ")\n";
         text += std::string(name) + " = " + std::string(key.form) + "\n";
     }
-    return text;
+    return text + "\n# [scenario.NAME] holds those keys of surface, rain, timing, peaks and methods, points.pipes and title that differ from the study in a\n" +
+           "# scenario, such as surface.cover = \"cover-plan.tif\"; a run works out both and compares them\n";
 }
 
 std::vector<std::string> caution_lines() { return {cautions.begin(), cautions.end()}; }

@@ -1,7 +1,9 @@
 #include "rillclock/run/run_study.hpp"
 
 #include <algorithm>
+#include <functional>
 #include <future>
+#include <map>
 #include <memory>
 #include <optional>
 #include <tuple>
@@ -12,8 +14,10 @@
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/run/review_words.hpp"
+#include "rillclock/study/scenario.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
 #include "design_channels.hpp"
+#include "drawn_points.hpp"
 #include "last_pass.hpp"
 #include "depressions.hpp"
 #include "rain_zones.hpp"
@@ -21,6 +25,7 @@
 #include "study_data.hpp"
 #include "study_storms.hpp"
 #include "study_uncertainty.hpp"
+#include "two_results.hpp"
 #include "write_result.hpp"
 
 namespace rillclock {
@@ -113,9 +118,158 @@ std::optional<Uncertainty> uncertainty_if_asked(const UncertaintyParts& parts, s
     return stage(progress, "uncertainty", cells, [&] { return uncertainty_of_study(parts); });
 }
 
+/// A study, or one of its scenarios, with what is read before the rasters.
+struct Task {
+    const Study& study;
+    std::filesystem::path part;   ///< of the result folder; empty for the study itself
+    RainZoneShapes zone_shapes;
+    StudyRain rain;
+    StatedEdits edits;
+};
+
+Task read_task(const Study& study, std::filesystem::path part) {
+    RainZoneShapes shapes = read_rain_zones(study);
+    StudyRain rain = read_rain(study, shapes.files);
+    return {.study = study, .part = std::move(part), .zone_shapes = std::move(shapes), .rain = std::move(rain), .edits = read_edits(study)};
+}
+
+/// What a study lays on its terrain.
+struct LaidOn {
+    ResolvedStudy resolved;
+    TravelRules rules;
+    SurfaceData surface;
+    RainZoneCells zones;
+    std::optional<StatedPoints> stated;
+};
+
+LaidOn lay_on(const Task& task, const TerrainData& terrain, const Progress& progress) {
+    const ResolvedStudy resolved = resolve(task.study, facts_of(terrain.format, terrain.ground));
+    return {.resolved = resolved,
+            .rules = rules_of(task.study, resolved, task.rain),
+            .surface = read_surface(task.study, terrain, progress),
+            .zones = rain_zone_cells(task.study, task.zone_shapes, terrain),
+            .stated = read_stated_points(task.study, terrain.system)};
+}
+
+/// What a study and its scenarios have in common.
+struct CommonWork {
+    const TerrainData& terrain;
+    const MappedFlow& flow;
+    const TiledForest& forest;
+    const Executor& executor;
+    ResultFolder& folder;
+};
+
 StudyPeaks peaks_of(const PeakInputs& inputs, HistogramTally* histograms, std::int64_t cells, const Progress& progress) {
     if (histograms == nullptr) return no_peaks(inputs.study, inputs.rain);
     return stage(progress, "peaks", cells, [&] { return study_peaks(inputs, histograms->take()); });
+}
+
+using InputFiles = std::function<std::vector<InputFile>()>;
+
+/// Works a task out and writes its part of the result.
+RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, const InputFiles& inputs_of, const Progress& progress) {
+    const Study& study = task.study;
+    const StudyRain& rain = task.rain;
+    const TerrainData& terrain = common.terrain;
+    const SurfaceData& surface = laid.surface;
+    const std::int64_t cells = terrain.grid.size();
+    common.folder.begin_part(task.part);
+    const std::vector<ReviewWord> words = review_words(common.folder.target() / task.part);
+    const Ground steps = study.surface.unbiased_lengths ? terrain.ground.with_steps_weighted(unbiased_step_weight) : terrain.ground;
+    const TiledGround ground = ground_of(common.forest, steps, terrain, surface, common.flow, laid.zones);
+    ChannelReaches reaches;  // by the design storm; times refer to them
+    const auto travel = stage(progress, "travel times", cells, [&] { return std::make_unique<TiledTravel>(ground, laid.rules, common.executor); });
+
+    const PlacedPoints points = settle_points(laid.stated, laid.resolved, *travel, terrain);
+    const TiledOwners owners(common.forest, labels_of(points.points), common.executor);
+    const PointTree tree = point_tree(next_points(common.forest, owners, points.points, common.executor));
+    const HistogramRules binned = histogram_rules(study, surface.book, laid.rules.sheet.storm_factor);
+    const auto histograms = gives_peaks(study, rain, surface.book)
+                                ? std::make_unique<HistogramTally>(*travel, points.points.size(), binned) : nullptr;
+    std::optional<StudyRegions> regions;
+    OverviewSampler overview(terrain.grid);
+    const LastPass last{.study = study, .rain = rain, .terrain = terrain, .travel = *travel, .owners = owners,
+                        .points = points.points, .tree = tree, .folder = common.folder, .progress = progress,
+                        .regions = regions, .overview = overview, .histograms = histograms.get()};
+    const std::vector<PointHeads> heads = heads_of_points(
+        last, {.sections = common.flow.sections, .runoff = surface.runoff, .travel = *travel, .reaches = reaches});
+    const std::vector<Outlet> outlets = stage(progress, "design points", cells, [&] {
+        return outlets_of(*travel, points.points, tree, heads, outlet_rules_of(study, laid.resolved));
+    });
+    const std::optional<Uncertainty> uncertainty = uncertainty_if_asked(
+        {.study = study, .rain = rain, .surface = surface, .travel = *travel, .owners = owners, .points = points.points, .tree = tree, .heads = heads},
+        cells, progress);
+    require_rain(rain, outlets);
+    const std::vector<PointMethods> methods = methods_of(study, laid.stated, surface.book, rain, outlets);
+    restate_own_times(task.edits, *travel, outlets);
+    const StudyNetwork network = study_network({.study = study, .rain = rain, .book = surface.book, .outlets = outlets, .stated = task.edits});
+    const StudyPeaks peaks = peaks_of({.study = study, .rain = rain, .book = surface.book, .outlets = outlets, .network = network, .binned = binned},
+                                      histograms.get(), cells, progress);
+    const Depressions depressions = stage(progress, "depressions", cells, [&] { return depressions_of(*travel, outlets); });
+    const std::vector<DrawnDifference> drawn = drawn_differences(laid.stated, points.points, *regions, *travel, terrain);
+    const Notices notices = all_notices({terrain.notices, notices_of(depressions, ground.metres_per_elevation_unit), laid.zones.notices,
+                                         zone_notices(rain, outlets, terrain.grid), notices_of_ranges(study, surface), surface.notices,
+                                         rain.notices, points.notices, notices_of(drawn, points.points), network.notices, peaks.notices, notices_of(outlets, terrain.grid)});
+    const CarriedWords reviewed = carry_over(words, notices);
+    const std::vector<InputFile> inputs = inputs_of();
+    const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
+    const StudyResult result{.study = study, .resolved = laid.resolved, .rules = laid.rules, .rain = rain, .grid = terrain.grid,
+                             .system = terrain.system, .format = terrain.format, .book = surface.book, .sections = common.flow.sections,
+                             .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .network = network,
+                             .peaks = peaks, .notices = notices, .inputs = inputs, .data = data,
+                             .reviewed = reviewed.by_notice, .drawn = drawn, .uncertainty = uncertainty ? &*uncertainty : nullptr};
+    std::string json = write_result({.result = result, .terrain = terrain, .travel = *travel, .flow = common.flow,
+                                     .depressions = depressions.deepest_first, .regions = *regions, .overview = overview}, common.folder);
+    return {.folder = common.folder.target() / task.part, .facts = facts_of(rain, reviewed), .headlines = headlines(result),
+            .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = std::move(json), .scenarios = {}};
+}
+
+/// Reports with the scenario's name before each stage.
+Progress told_of(const std::string& scenario, const Progress& progress) {
+    return Progress([scenario, &progress](const StageProgress& report) {
+        const std::string stage = scenario + ": " + std::string(report.stage);
+        progress.tell({.stage = stage, .done = report.done, .total = report.total, .finished = report.finished});
+        return true;
+    });
+}
+
+/// Works a scenario out and compares it with the study, whose part of the result has been written.
+ScenarioOutcome scenario_outcome(const ScenarioStudy& scenario, Task& task, const CommonWork& common,
+                                 const InputFiles& inputs_of, const Progress& whole) {
+    const Progress progress = told_of(scenario.name, whole);
+    ResultFolder& folder = common.folder;
+    const RunOutcome worked = work_out(task, lay_on(task, common.terrain, progress), common, inputs_of, progress);
+    const std::string beside = comparison_folder(scenario);
+    folder.begin_part(beside);
+    const CompareOutcome compared = compare_two({folder.making(), folder.target()}, {folder.making() / task.part, folder.target() / task.part},
+                                                CompareOptions{}.tolerance, &folder, progress);
+    return {.name = scenario.name, .folder = worked.folder, .comparison_folder = folder.target() / beside, .facts = worked.facts,
+            .comparison = compared.text, .worse = compared.worse};
+}
+
+std::vector<Study> scenario_studies(const Study& study) {
+    std::vector<Study> studies;
+    for (const ScenarioStudy& scenario : study.scenarios) studies.push_back(scenario_study(study, scenario));
+    return studies;
+}
+
+/// The study itself first.
+std::vector<Task> read_tasks(const Study& study, const std::vector<Study>& scenarios) {
+    std::vector<Task> tasks;
+    tasks.push_back(read_task(study, {}));
+    for (std::size_t i = 0; i < scenarios.size(); ++i) {
+        require_cover(scenarios[i]);
+        tasks.push_back(read_task(scenarios[i], scenario_folder(study.scenarios[i])));
+    }
+    return tasks;
+}
+
+std::vector<std::vector<InputFile>> all_input_files(const std::vector<Task>& tasks) {
+    std::map<std::string, std::string> known;
+    std::vector<std::vector<InputFile>> files;
+    for (const Task& task : tasks) files.push_back(input_files(task.study, task.rain, known));
+    return files;
 }
 
 }  // namespace
@@ -125,71 +279,28 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     const GdalSession session;
     require_memory(study);
     ResultFolder folder(located(study, study.output.folder), options.replace ? Existing::replace : Existing::refuse);
-    const std::vector<ReviewWord> words = review_words(folder.target());
+    (void)review_words(folder.target());   // a table that cannot be read is told of before the work
     const Executor executor(options.threads);
-    const RainZoneShapes zone_shapes = read_rain_zones(study);
-    const StudyRain rain = read_rain(study, zone_shapes.files);
+    const std::vector<Study> scenarios = scenario_studies(study);
+    std::vector<Task> tasks = read_tasks(study, scenarios);
     // Checksums are made while the work goes on; nothing else is left to do on one processor alone.
-    std::future<std::vector<InputFile>> checksums = std::async(std::launch::async, [&] { return input_files(study, rain); });
-    StatedEdits edits = read_edits(study);
+    const std::shared_future<std::vector<std::vector<InputFile>>> checksums = std::async(std::launch::async, [&] { return all_input_files(tasks); });
+    const auto inputs_of = [&](std::size_t task) { return [&, task] { return checksums.get()[task]; }; };
     TerrainData terrain = read_terrain(study, executor, progress);
-    const ResolvedStudy resolved = resolve(study, facts_of(terrain.format, terrain.ground));
-    const TravelRules rules = rules_of(study, resolved, rain);
-    const SurfaceData surface = read_surface(study, terrain, progress);
-    const RainZoneCells zones = rain_zone_cells(study, zone_shapes, terrain);
-    const std::optional<StatedPoints> stated = read_stated_points(study, terrain.system);
-    const std::int64_t cells = terrain.grid.size();
+    std::optional<LaidOn> laid(lay_on(tasks.front(), terrain, progress));
     const TileGrid tiles(terrain.grid.rows, terrain.grid.columns, options.tile_side);
 
-    const MappedFlow flow = stage(progress, "flow directions", cells, [&] { return find_flow(study, resolved, terrain, tiles, executor); });
+    const MappedFlow flow = stage(progress, "flow directions", terrain.grid.size(),
+                                  [&] { return find_flow(study, laid->resolved, terrain, tiles, executor); });
     const TiledForest forest(flow.codes, tiles, executor);
-    const Ground steps = study.surface.unbiased_lengths ? terrain.ground.with_steps_weighted(unbiased_step_weight) : terrain.ground;
-    const TiledGround ground = ground_of(forest, steps, terrain, surface, flow, zones);
-    ChannelReaches reaches;  // by the design storm; times refer to them
-    const auto travel = stage(progress, "travel times", cells, [&] { return std::make_unique<TiledTravel>(ground, rules, executor); });
-
-    const PlacedPoints points = settle_points(stated, resolved, *travel, terrain);
-    const TiledOwners owners(forest, labels_of(points.points), executor);
-    const PointTree tree = point_tree(next_points(forest, owners, points.points, executor));
-    const HistogramRules binned = histogram_rules(study, surface.book, rules.sheet.storm_factor);
-    const auto histograms = gives_peaks(study, rain, surface.book)
-                                ? std::make_unique<HistogramTally>(*travel, points.points.size(), binned) : nullptr;
-    std::optional<StudyRegions> regions;
-    OverviewSampler overview(terrain.grid);
-    const LastPass last{.study = study, .rain = rain, .terrain = terrain, .travel = *travel, .owners = owners,
-                        .points = points.points, .tree = tree, .folder = folder, .progress = progress,
-                        .regions = regions, .overview = overview, .histograms = histograms.get()};
-    const std::vector<PointHeads> heads = heads_of_points(
-        last, {.sections = flow.sections, .runoff = surface.runoff, .travel = *travel, .reaches = reaches});
-    const std::vector<Outlet> outlets = stage(progress, "design points", cells, [&] {
-        return outlets_of(*travel, points.points, tree, heads, outlet_rules_of(study, resolved));
-    });
-    const std::optional<Uncertainty> uncertainty = uncertainty_if_asked(
-        {.study = study, .rain = rain, .surface = surface, .travel = *travel, .owners = owners, .points = points.points, .tree = tree, .heads = heads},
-        cells, progress);
-    require_rain(rain, outlets);
-    const std::vector<PointMethods> methods = methods_of(study, stated, surface.book, rain, outlets);
-    restate_own_times(edits, *travel, outlets);
-    const StudyNetwork network = study_network({.study = study, .rain = rain, .book = surface.book, .outlets = outlets, .stated = edits});
-    const StudyPeaks peaks = peaks_of({.study = study, .rain = rain, .book = surface.book, .outlets = outlets, .network = network, .binned = binned},
-                                      histograms.get(), cells, progress);
-    const Depressions depressions = stage(progress, "depressions", cells, [&] { return depressions_of(*travel, outlets); });
-    const Notices notices = all_notices({terrain.notices, notices_of(depressions, ground.metres_per_elevation_unit), zones.notices,
-                                         zone_notices(rain, outlets, terrain.grid), notices_of_ranges(study, surface), surface.notices,
-                                         rain.notices, points.notices, network.notices, peaks.notices, notices_of(outlets, terrain.grid)});
-    const CarriedWords reviewed = carry_over(words, notices);
-    const std::vector<InputFile> inputs = checksums.get();
-    const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
-    const StudyResult result{.study = study, .resolved = resolved, .rules = rules, .rain = rain, .grid = terrain.grid,
-                             .system = terrain.system, .format = terrain.format, .book = surface.book, .sections = flow.sections,
-                             .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .network = network,
-                             .peaks = peaks, .notices = notices, .inputs = inputs, .data = data,
-                             .reviewed = reviewed.by_notice, .uncertainty = uncertainty ? &*uncertainty : nullptr};
-    std::string json = write_result({.result = result, .terrain = terrain, .travel = *travel, .flow = flow,
-                                     .depressions = depressions.deepest_first, .regions = *regions, .overview = overview}, folder);
+    const CommonWork common{.terrain = terrain, .flow = flow, .forest = forest, .executor = executor, .folder = folder};
+    RunOutcome outcome = work_out(tasks.front(), *laid, common, inputs_of(0), progress);
+    laid.reset();   // a scenario has a surface of its own in its place
+    for (std::size_t i = 0; i < scenarios.size(); ++i) {
+        outcome.scenarios.push_back(scenario_outcome(study.scenarios[i], tasks[i + 1], common, inputs_of(i + 1), progress));
+    }
     folder.commit();
-    return {.folder = folder.target(), .facts = facts_of(rain, reviewed), .headlines = headlines(result),
-            .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = std::move(json)};
+    return outcome;
 }
 
 }  // namespace rillclock

@@ -10,6 +10,7 @@
 #include "rillclock/core/progress.hpp"
 #include "rillclock/deliver/study_result.hpp"
 #include "rillclock/io/elevation_file.hpp"
+#include "rillclock/raster/grid_shapes.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/run/memory_need.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
@@ -54,14 +55,22 @@ struct SurfaceData {
 void require_memory(const Study& study);
 [[nodiscard]] TerrainData read_terrain(const Study& study, const Executor& executor, const Progress& progress);
 [[nodiscard]] CoverBook read_book(const Study& study);
+/// Throws an input error where the cover or its book cannot be used, from their headers alone.
+void require_cover(const Study& study);
 [[nodiscard]] SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress);
+/// A hand-drawn catchment, in the DEM's coordinates.
+struct DrawnCatchment {
+    std::string name;
+    std::vector<Polygon> polygons;
+};
 /// Points of the study's file in the DEM's coordinates, and what was left out of it.
 struct StatedPoints {
     std::vector<StatedPoint> points;
     std::map<std::string, PointLumpInputs> lump_inputs;   ///< by name: what fields of the file state for the lump methods
+    std::vector<DrawnCatchment> drawn;   ///< in place of points: these get theirs where water leaves them
     Notices notices;
 };
-/// Nothing where the study names no file of points.
+/// Nothing where the study names no file of points or catchments.
 [[nodiscard]] std::optional<StatedPoints> read_stated_points(const Study& study, const ReferenceSystem& system);
 [[nodiscard]] PlacedPoints settle_points(const std::optional<StatedPoints>& stated, const ResolvedStudy& resolved,
                                          const TiledTravel& travel, const TerrainData& terrain);
@@ -74,7 +83,8 @@ struct StatedPoints {
 void restate_own_times(StatedEdits& stated, const TiledTravel& travel, const std::vector<Outlet>& outlets);
 [[nodiscard]] TravelRules rules_of(const Study& study, const ResolvedStudy& resolved, const StudyRain& rain);
 [[nodiscard]] OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved);
-[[nodiscard]] std::vector<InputFile> input_files(const Study& study, const StudyRain& rain);
+/// The files of a study with their checksums; those of files that are `known` by their path are not made again, and new ones are added there.
+[[nodiscard]] std::vector<InputFile> input_files(const Study& study, const StudyRain& rain, std::map<std::string, std::string>& known);
 
 /// Tells the caller that a stage begins, does it, tells that it is over, and hands its result on.
 template <class Work>

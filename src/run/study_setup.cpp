@@ -4,8 +4,10 @@
 
 #include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/catchment/tiled_own_paths.hpp"
+#include "rillclock/core/quantity_text.hpp"
 #include "rillclock/io/point_file.hpp"
 #include "rillclock/io/text_file.hpp"
+#include "drawn_points.hpp"
 #include "mapped_flow.hpp"
 #include "study_data.hpp"
 
@@ -46,26 +48,42 @@ PointLumpInputs lump_inputs_of(const Study& study, const std::vector<LumpInput>&
     return inputs;
 }
 
+/// The surveyed area in the field's text: with a unit of its own, or in the unit that the study states; none where it is empty.
+std::optional<FixedArea> surveyed_area(const Study& study, const std::string& point, const std::string& text) {
+    if (text.empty()) return std::nullopt;
+    const std::string subject = "the field \"" + *study.points.area + "\" of the point '" + point + "' (" + *study.points.file + ")";
+    if (!study.points.area_unit) {
+        return to_fixed_area(in_square_metres(area_from_text(text, {.subject = subject + ", without area_unit under [points],", .example = "4 ha"})));
+    }
+    const double number = number_from_text(text, {.subject = subject, .example = "4"});
+    return to_fixed_area(number * in_square_metres(*study.points.area_unit));
+}
+
 }  // namespace
 
 std::optional<StatedPoints> read_stated_points(const Study& study, const ReferenceSystem& system) {
+    if (study.points.catchments.file) return read_drawn_catchments(study, system);
     if (!study.points.file) return std::nullopt;
     PointOptions options;
     options.layer = study.points.layer;
     options.name_field = study.points.name;
     const std::vector<LumpInput> by_field = lump_inputs_by_field(study);
     for (const LumpInput input : by_field) options.fields.push_back(*study.methods[input].field);
+    if (study.points.area) options.fields.push_back(*study.points.area);
     const PointFile file = read_points(located(study, *study.points.file), options, system);
-    StatedPoints stated{.points = {}, .lump_inputs = {}, .notices = file.notices};
+    StatedPoints stated{.points = {}, .lump_inputs = {}, .drawn = {}, .notices = file.notices};
     for (const NamedPlace& point : file.points) {
-        stated.points.push_back({point.name, point.place});
+        const std::optional<FixedArea> surveyed = study.points.area ? surveyed_area(study, point.name, point.fields.back()) : std::nullopt;
+        stated.points.push_back({.name = point.name, .place = point.place, .surveyed = surveyed});
         stated.lump_inputs[point.name] = lump_inputs_of(study, by_field, point);
     }
     return stated;
 }
 
-PlacedPoints settle_points(const std::optional<StatedPoints>& stated, const ResolvedStudy& resolved, const TiledTravel& travel,
+PlacedPoints settle_points(const std::optional<StatedPoints>& given, const ResolvedStudy& resolved, const TiledTravel& travel,
                            const TerrainData& terrain) {
+    const std::optional<StatedPoints> stated =
+        given && !given->drawn.empty() ? std::optional(with_crossings(*given, resolved, travel, terrain)) : given;
     if (!stated) return find_points(travel.roots(), terrain.grid, resolved.auto_area);
     std::vector<Cell> cells;
     for (const StatedPoint& point : stated->points) {
@@ -141,18 +159,21 @@ OutletRules outlet_rules_of(const Study& study, const ResolvedStudy& resolved) {
             .segments = {.shortest = resolved.shortest_segment, .shortest_share = share}};
 }
 
-std::vector<InputFile> input_files(const Study& study, const StudyRain& rain) {
+std::vector<InputFile> input_files(const Study& study, const StudyRain& rain, std::map<std::string, std::string>& known) {
     std::vector<InputFile> files;
     const auto add = [&](const char* role, const std::string& name) {
         const std::string path = located(study, name);
         // What is no plain file (an archive's member, a sub-dataset) has no checksum of its own.
         const bool plain = std::filesystem::is_regular_file(path);
-        files.push_back({role, name, plain ? file_checksum(path) : std::string()});
+        if (!known.contains(path)) known[path] = plain ? file_checksum(path) : std::string();
+        files.push_back({role, name, known[path]});
     };
     add("elevation", study.terrain.elevation);
     add("cover", study.surface.cover);
     if (!is_built_in_book(study.surface.book)) add("book", study.surface.book);
+    if (study.surface.cover_areas.file) add("cover_areas", *study.surface.cover_areas.file);
     if (study.surface.soil.file) add("soil", *study.surface.soil.file);
+    if (study.points.catchments.file) add("catchments", *study.points.catchments.file);
     if (study.points.file) add("points", *study.points.file);
     for (const MappedFile& file : mapped_files(study)) {
         if (file.name) add(file.role, *file.name);

@@ -53,6 +53,7 @@ void write_texts(const StudyResult& result, ResultFolder& folder) {
         folder.write_text("tables/time_area.csv", time_area_table(result));
     }
     folder.write_text("tables/handover.csv", handover_table(result));
+    if (!result.drawn.empty()) folder.write_text("tables/drawn_catchments.csv", drawn_catchments_table(result));
     if (!result.network.pipes.empty()) folder.write_text("tables/pipes.csv", pipes_table(result));
     if (result.study.timing.is_kinematic()) folder.write_text("tables/iterations.csv", iterations_table(result));
     if (result.uncertainty != nullptr) {

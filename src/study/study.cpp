@@ -9,13 +9,15 @@
 #include "rillclock/hydraulics/channel_size.hpp"
 #include "rillclock/hydraulics/manning.hpp"
 #include "rillclock/rainfall/design_rain.hpp"
+#include "rillclock/study/scenario.hpp"
 #include "rillclock/study/uncertain_inputs.hpp"
 
 namespace rillclock {
 namespace {
 
 std::string name_of(const Study& study) {
-    return study.file.empty() ? "the study" : study.file;
+    const std::string name = study.file.empty() ? "the study" : study.file;
+    return study.scenario.empty() ? name : name + ", scenario." + study.scenario + ",";
 }
 
 void require(const Study& study, const std::string& value, const std::string& what_to_add) {
@@ -62,16 +64,30 @@ void refuse_contradictory_channel(const Study& study) {
                           "\"2.70 m * km2^0.352\", depth = \"0.30 m * km2^0.213\"");
 }
 
+bool has_points_of_its_own(const Study& study) { return study.points.file || study.points.catchments.file; }
+
 void refuse_contradictory_points(const Study& study) {
     const PointStudy& points = study.points;
     if (points.file && points.auto_area)
         throw input_error(name_of(study) +
                           " gives points both a file and an auto_area; keep the file for points of your own, "
                           "or auto_area for points where flow leaves the data");
-    if (!points.file && (points.name || points.layer || points.move_within))
+    if (points.catchments.file && (points.file || points.auto_area))
+        throw input_error(name_of(study) +
+                          " gives points both catchments, which have points of their own, and a file or auto_area; keep one of them");
+    if (points.catchments.layer && !points.catchments.file)
+        throw input_error(name_of(study) + " names a layer of catchments but no file; add catchments = \"basins.gpkg\" under [points], or "
+                          "leave out catchments_layer");
+    if (points.catchments.file && (points.layer || points.area))
+        throw input_error(name_of(study) + " states layer or area, which belong to a file of points, beside catchments; name their layer as "
+                          "catchments_layer, and leave area out: the area of each is that of its polygon");
+    if (!has_points_of_its_own(study) && (points.name || points.layer || points.move_within || points.area))
         throw input_error(name_of(study) +
                           " says how to read or move points but gives no file of them; add file = "
-                          "\"points.gpkg\" under [points], or leave out name, layer and move_within");
+                          "\"points.gpkg\" under [points], or leave out name, layer, area and move_within");
+    if (points.area_unit && !points.area)
+        throw input_error(name_of(study) + " states area_unit, the unit of surveyed areas, but not the field that holds them; add area = "
+                          "\"surveyed\" under [points], or leave it out");
 }
 
 void refuse_layers_without_file(const Study& study) {
@@ -83,6 +99,14 @@ void refuse_layers_without_file(const Study& study) {
         throw input_error(name_of(study) + " names a layer of " + name + " but no file; add " + name +
                           " = \"mapped.gpkg\" under [terrain], or leave out " + name + "_layer");
     }
+}
+
+void refuse_contradictory_cover(const Study& study) {
+    const SurfaceStudy& surface = study.surface;
+    const bool reads = surface.cover_areas.layer || surface.cover_field != SurfaceStudy{}.cover_field;
+    if (!surface.cover_areas.file && reads)
+        throw input_error(name_of(study) + " says how to read polygons of land cover but gives none; add cover_areas = \"plan.gpkg\" under "
+                          "[surface], or leave out cover_areas_layer and cover_field");
 }
 
 void refuse_contradictory_zones(const Study& study) {
@@ -147,7 +171,7 @@ void refuse_contradictory_network(const Study& study) {
         throw input_error(name_of(study) + " times pipes at the depth of the design flow, which needs rain by duration; add file = "
                           "\"atlas14.csv\" or formula under [rain]");
     const bool stated = study.points.pipes || timing.overrides;
-    if (stated && !study.points.file)
+    if (stated && !has_points_of_its_own(study))
         throw input_error(name_of(study) + " names pipes or overrides, which belong to points of your own, but no file of points; add file = "
                           "\"points.gpkg\" under [points]");
     if (stated && timing.ignore_tail > 0)
@@ -208,6 +232,7 @@ void check_study(const Study& study) {
     require_inputs(study);
     refuse_contradictory_soil(study);
     refuse_layers_without_file(study);
+    refuse_contradictory_cover(study);
     refuse_contradictory_points(study);
     refuse_contradictory_channel(study);
     refuse_contradictory_rain(study);
@@ -217,6 +242,7 @@ void check_study(const Study& study) {
     refuse_contradictory_shallow(study);
     refuse_contradictory_network(study);
     check_uncertainty(study);
+    for (const ScenarioStudy& scenario : study.scenarios) check_study(scenario_study(study, scenario));
 }
 
 ResolvedStudy resolve(const Study& study, const DataFacts& facts) {

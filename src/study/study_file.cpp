@@ -6,6 +6,7 @@
 #include <optional>
 
 #include "rillclock/core/error.hpp"
+#include "rillclock/study/scenario.hpp"
 #include "rillclock/study/study_keys.hpp"
 
 namespace rillclock {
@@ -32,19 +33,21 @@ std::string joined(const std::string& section, std::string_view key) {
 /// Walks the tables of a study file and sets what each value stands for.
 class StudyReader {
 public:
-    StudyReader(Study& study, const std::string& file) : study_(study), file_(file) {}
+    /// `scenario`: where the values of a scenario are kept, in place of the study's own; null for those.
+    StudyReader(Study& study, const std::string& file, ScenarioStudy* scenario = nullptr) : study_(study), file_(file), scenario_(scenario) {}
 
     void read(const toml::table& table, const std::string& section) {
         for (const auto& [name, node] : table) {
             const std::string key = joined(section, name.str());
-            const std::string where = place(file_, name.source().begin);
+            const std::string where = place(file_, name.source().begin) + (scenario_ == nullptr ? "" : ", scenario." + scenario_->name);
             if (is_study_section(key)) {
                 read_section(node, key, where);
             } else if (takes_entries(key) && node.is_table()) {
                 read_entries(*node.as_table(), key);
             } else if (is_study_key(key)) {
-                set_study_value(study_, key,
-                                {.value = scalar(node, key), .subject = key + " (" + value_place(node) + ")"});
+                take(key, {.value = scalar(node, key), .subject = called(key) + " (" + value_place(node) + ")"});
+            } else if (key == "scenario" && scenario_ == nullptr) {
+                read_scenarios(node, where);
             } else {
                 refuse_study_key(first_key_of(node, key), where);
             }
@@ -58,7 +61,7 @@ private:
             throw input_error(where + ": " + key + " holds keys of its own; write them under [" + key + "] or as " +
                               key + " = { key = value }");
         // The section asks for it even where it states nothing.
-        if (key == "uncertainty" && !study_.uncertainty) study_.uncertainty.emplace();
+        if (key == "uncertainty" && scenario_ == nullptr && !study_.uncertainty) study_.uncertainty.emplace();
         read(*inner, key);
     }
 
@@ -66,9 +69,41 @@ private:
     void read_entries(const toml::table& table, const std::string& key) {
         for (const auto& [name, node] : table) {
             const std::string entry(name.str());
-            const std::string subject = key + "." + entry + " (" + value_place(node) + ")";
-            set_study_value(study_, key, {.value = scalar(node, key), .subject = subject, .entry = entry});
+            const std::string subject = called(key) + "." + entry + " (" + value_place(node) + ")";
+            take(key, {.value = scalar(node, key), .subject = subject, .entry = entry});
         }
+    }
+
+    /// A table for each scenario, by its name.
+    void read_scenarios(const toml::node& node, const std::string& where) {
+        const toml::table* scenarios = node.as_table();
+        if (scenarios == nullptr)
+            throw input_error(where + ": scenario holds scenarios by name; write what differs under one, such as [scenario.after]");
+        for (const auto& [name, inner] : *scenarios) {
+            const std::string at = place(file_, name.source().begin);
+            check_scenario_name(name.str(), at);
+            ScenarioStudy scenario{.name = std::string(name.str())};
+            const toml::table* changes = inner.as_table();
+            if (changes == nullptr || changes->empty())
+                throw input_error(at + ": scenario." + scenario.name + " states nothing that differs from the study; write keys under it, such as " +
+                                  "surface.cover = \"cover-plan.tif\", or leave it out");
+            Study tried{.file = file_};   // values are looked at here, and set when the whole study is known
+            StudyReader(tried, file_, &scenario).read(*changes, {});
+            study_.scenarios.push_back(std::move(scenario));
+        }
+    }
+
+    /// Sets a value of the study, or keeps it for the scenario.
+    void take(const std::string& key, StudyValue value) {
+        if (scenario_ != nullptr && !may_differ(key))
+            throw input_error(value.subject + " cannot differ in a scenario, which runs over the study's own terrain to its own points; write " +
+                              "a study of its own, and lay the two results side by side with rillclock compare");
+        set_study_value(study_, key, value);
+        if (scenario_ != nullptr) scenario_->changes.push_back({key, std::move(value)});
+    }
+
+    [[nodiscard]] std::string called(const std::string& key) const {
+        return scenario_ == nullptr ? key : "scenario." + scenario_->name + "." + key;
     }
 
     /// An unknown section is told of by its first key, which says more about what was meant.
@@ -106,6 +141,7 @@ private:
 
     Study& study_;
     const std::string& file_;
+    ScenarioStudy* scenario_;
 };
 
 }  // namespace

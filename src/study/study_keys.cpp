@@ -42,6 +42,9 @@ constexpr std::array keys{
     StudyKey{"surface.book", R"("nlcd")", "asked for", "what its codes mean: nlcd, worldcover, or a CSV file"},
     StudyKey{"surface.fallback_class", "71", "none: unknown codes are an error",
              "code that stands in for codes the book does not know and for cells without cover"},
+    StudyKey{"surface.cover_areas", R"("plan.gpkg")", "none", "polygons of land cover, laid over the raster"},
+    StudyKey{"surface.cover_areas_layer", R"("plan")", "the only one", "layer of that file; asked for where it has several"},
+    StudyKey{"surface.cover_field", R"("cover")", "cover", "field of the polygons that names their class, by its code or its name in the book"},
     StudyKey{"surface.soil_group", R"("B")", "none: no curve numbers",
              "hydrologic soil group, A to D, of the whole study, or a raster of them, such as \"soils.tif\""},
     StudyKey{"surface.soil_band", "1", "the only one", "band of that raster; asked for where the file has several"},
@@ -54,10 +57,15 @@ constexpr std::array keys{
     StudyKey{"points.file", R"("points.gpkg")", "none: points where flow leaves the data", "design points"},
     StudyKey{"points.name", R"("label")", "none: points are numbered", "field that names them"},
     StudyKey{"points.layer", R"("inlets")", "the only one", "layer of the file; asked for where it has several"},
+    StudyKey{"points.catchments", R"("basins.gpkg")", "none",
+             "hand-drawn catchments as polygons, in place of a file of points: each gets its point where its water leaves it"},
+    StudyKey{"points.catchments_layer", R"("basins")", "the only one", "layer of that file; asked for where it has several"},
     StudyKey{"points.auto_area", R"("1 %")", "1 % of the data",
              "without a file: least area of a way out that becomes a point"},
     StudyKey{"points.move_within", R"("5 m")", "the larger of 5 m and one cell",
-             "points move this far at most, to the cell of largest contributing area"},
+             "points move this far at most, to the cell of largest contributing area, or of the area nearest to the surveyed one"},
+    StudyKey{"points.area", R"("surveyed")", "none", "field of areas that were surveyed for the points, such as \"4 ha\""},
+    StudyKey{"points.area_unit", R"("ha")", "the unit that each area carries", "ha, ac, km2, mi2, m2 or ft2, where the field holds bare numbers"},
     StudyKey{"points.pipes", R"("pipes.csv")", "none", "table of pipes from one point to another, in place of the flow path"},
     StudyKey{"rain.two_year_24_hour", R"("3.6 in")", "asked for, unless rain.file holds it or sheet is kinematic",
              "2-year 24-hour rainfall depth"},
@@ -161,7 +169,7 @@ constexpr std::array keys{
 };
 
 /// Keys, and sections as a whole, that belong to the study file but that this version does not compute.
-constexpr std::array<std::string_view, 3> not_served{"points.area", "rain.table", "scenario"};
+constexpr std::array<std::string_view, 1> not_served{"rain.table"};
 
 bool is_or_is_under(std::string_view key, std::string_view stem) {
     return key == stem || (key.starts_with(stem) && key.substr(stem.size()).starts_with('.'));

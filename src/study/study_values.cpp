@@ -171,6 +171,11 @@ Length elevation_unit(const Stated& stated) {
     return units[stated.choice({"m", "ft", "us survey ft"})];
 }
 
+Area area_unit(const Stated& stated) {
+    constexpr std::array units{hectares(1), acres(1), square_kilometres(1), square_miles(1), square_metres(1), square_feet(1)};
+    return units[stated.choice({"ha", "ac", "km2", "mi2", "m2", "ft2"})];
+}
+
 double sheet_constant(const Stated& stated) {
     const double constant = stated.number(0, 10);
     if (constant != kinematic_constant_hec22 && constant != kinematic_constant_morgali_linsley)
@@ -272,9 +277,7 @@ constexpr double greatest_side_slope = 100.0;
 constexpr std::array setters{
     Setter{"title", [](Study& s, const Stated& v) { s.title = v.text(); }},
     Setter{"report_units",
-           [](Study& s, const Stated& v) {
-               s.report_units = v.choice({"us", "si"}) == 0 ? ReportUnits::us : ReportUnits::si;
-           }},
+           [](Study& s, const Stated& v) { s.report_units = v.choice({"us", "si"}) == 0 ? ReportUnits::us : ReportUnits::si; }},
     Setter{"terrain.elevation", [](Study& s, const Stated& v) { s.terrain.elevation = v.text(); }},
     Setter{"terrain.band", [](Study& s, const Stated& v) { s.terrain.band = v.whole_number(1); }},
     Setter{"terrain.elevation_unit", [](Study& s, const Stated& v) { s.terrain.elevation_unit = elevation_unit(v); }},
@@ -295,6 +298,9 @@ constexpr std::array setters{
     Setter{"surface.band", [](Study& s, const Stated& v) { s.surface.band = v.whole_number(1); }},
     Setter{"surface.book", [](Study& s, const Stated& v) { s.surface.book = v.text(); }},
     Setter{"surface.fallback_class", [](Study& s, const Stated& v) { s.surface.fallback_class = v.whole_number(0); }},
+    Setter{"surface.cover_areas", [](Study& s, const Stated& v) { s.surface.cover_areas.file = v.text(); }},
+    Setter{"surface.cover_areas_layer", [](Study& s, const Stated& v) { s.surface.cover_areas.layer = v.text(); }},
+    Setter{"surface.cover_field", [](Study& s, const Stated& v) { s.surface.cover_field = v.text(); }},
     Setter{"surface.soil_group", [](Study& s, const Stated& v) { set_soil(s.surface, v); }},
     Setter{"surface.soil_band", [](Study& s, const Stated& v) { s.surface.soil.band = v.whole_number(1); }},
     Setter{"surface.soil_classes", [](Study& s, const Stated& v) { add_soil_class(s.surface, v); }},
@@ -307,12 +313,13 @@ constexpr std::array setters{
     Setter{"points.layer", [](Study& s, const Stated& v) { s.points.layer = v.text(); }},
     Setter{"points.auto_area", [](Study& s, const Stated& v) { s.points.auto_area = v.fraction(Sign::positive); }},
     Setter{"points.move_within",
-           [](Study& s, const Stated& v) {
-               s.points.move_within = length_from_text(v.text(), v.asked(Sign::not_negative));
-           }},
-    Setter{
-        "rain.two_year_24_hour",
-        [](Study& s, const Stated& v) { s.rain.two_year_24_hour = two_year_24_hour_from_text(v.text(), v.subject()); }},
+           [](Study& s, const Stated& v) { s.points.move_within = length_from_text(v.text(), v.asked(Sign::not_negative)); }},
+    Setter{"points.catchments", [](Study& s, const Stated& v) { s.points.catchments.file = v.text(); }},
+    Setter{"points.catchments_layer", [](Study& s, const Stated& v) { s.points.catchments.layer = v.text(); }},
+    Setter{"points.area", [](Study& s, const Stated& v) { s.points.area = v.text(); }},
+    Setter{"points.area_unit", [](Study& s, const Stated& v) { s.points.area_unit = area_unit(v); }},
+    Setter{"rain.two_year_24_hour",
+           [](Study& s, const Stated& v) { s.rain.two_year_24_hour = two_year_24_hour_from_text(v.text(), v.subject()); }},
     Setter{"rain.file", [](Study& s, const Stated& v) { s.rain.file = v.text(); }},
     Setter{"rain.block",
            [](Study& s, const Stated& v) {

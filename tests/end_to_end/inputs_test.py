@@ -249,7 +249,7 @@ class Studies(CommandTest):
         self.refused_study(self.SMALLEST + "[timing]\nslope_window = \"20 m\"\n", "line 9", "terrain.slope_window")
 
     def test_a_key_of_another_version_is_not_passed_over(self):
-        self.refused_study(self.SMALLEST + "[scenario.after]\nsurface.cover = \"o.tif\"\n", "scenario", "remove it")
+        self.refused_study(self.SMALLEST.replace("[rain]\n", "[rain]\ntable = \"r.csv\"\n"), "rain.table", "remove it")
 
     def test_a_text_that_is_no_toml(self):
         self.refused_study("[terrain]\nelevation = dem.tif\n", "line 2")

@@ -16,6 +16,7 @@ namespace rillclock {
 struct StatedPoint {
     std::string name;
     Place place;
+    std::optional<FixedArea> surveyed = {};  ///< contributing area by survey, above 0
 };
 
 /// A point settled on its cell.
@@ -25,6 +26,7 @@ struct DesignPoint {
     Place stated = {};              ///< where the user put it; the cell's centre where it was found
     Length moved;                   ///< from there to the cell's centre
     bool found = false;             ///< by contributing area, not stated
+    std::optional<FixedArea> surveyed = {};  ///< contributing area by survey
 };
 
 struct PlacedPoints {
@@ -44,10 +46,11 @@ struct PointGround {
 [[nodiscard]] std::vector<Cell> cells_near(Place stated, const Grid& grid, const Ground& ground, Length move_within);
 
 /// Moves each point to the cell of largest contributing area among its own and those whose centres lie within `move_within` of it;
-/// of equal ones to the nearest, then to the smaller index.
+/// of equal ones to the nearest, then to the smaller index. A point with a surveyed area moves to the cell whose area is nearest to that
+/// in the logarithm instead (least |ln(area / surveyed)|).
 ///
 /// Points off the data, on void ground, or landing on the cell of an earlier point are left out, each with a notice; so are told
-/// moves, and moves that change the area tenfold. Throws an input error where no point is left.
+/// moves, moves that change the area tenfold, and areas more than a tenth off the surveyed one, either way. Throws an input error where no point is left.
 [[nodiscard]] PlacedPoints place_points(std::span<const StatedPoint> stated, const PointGround& on, Length move_within);
 
 /// Points where water leaves the data with at least `least_share` of the data's area upstream, the largest first; the

@@ -21,12 +21,19 @@ enum class IsochroneScope {
     catchment,   ///< the whole catchment of a last point: times to it
 };
 
+/// What a subarea has of a band.
+struct IsochronePart {
+    PointNumber subarea = 0;   ///< the number of its point
+    FixedArea area = 0;
+};
+
 /// The cells whose water takes between two times.
 struct IsochroneBand {
     IsochroneScope scope = IsochroneScope::subarea;
     PointNumber point = 0;
     std::uint32_t number = 0;   ///< from 0: of times from number·step to below (number + 1)·step
     FixedArea area = 0;
+    std::vector<IsochronePart> parts = {};   ///< by number; their areas add up to its own
 };
 
 struct IsochroneRules {
@@ -75,7 +82,9 @@ private:
     void label_row(std::span<const std::uint32_t> owners, std::span<const float> minutes);
     void add_row(Bands& bands, std::int64_t row) const;
     void check_bounds() const;
+    static void add_areas(const std::vector<RegionLabel>& row, FixedArea cell_area, std::unordered_map<RegionLabel, FixedArea>& areas);
     void list_bands(const Bands& bands, IsochroneScope scope);
+    void list_parts();
 
     const Grid& grid_;
     const Ground& ground_;
@@ -89,6 +98,8 @@ private:
     std::vector<RegionLabel> owner_row_;
     Bands subareas_;
     Bands catchments_;
+    std::vector<RegionLabel> part_row_;
+    std::unordered_map<RegionLabel, FixedArea> parts_;   ///< of catchment bands, by subarea and band
     std::vector<IsochroneBand> bands_;
 };
 

@@ -5,6 +5,7 @@
 #include <string>
 #include <vector>
 
+#include "rillclock/catchment/drawn_catchments.hpp"
 #include "rillclock/catchment/outlet.hpp"
 #include "rillclock/catchment/point_network.hpp"
 #include "rillclock/core/notice.hpp"
@@ -66,6 +67,7 @@ struct StudyResult {
     const std::vector<InputFile>& inputs;
     const DataSummary& data;
     std::span<const std::string> reviewed = {};   ///< a person's word on each notice; empty where there is none at all
+    std::span<const DrawnDifference> drawn = {};   ///< hand-drawn catchments beside those of the elevations, by point
     const Uncertainty* uncertainty = nullptr;   ///< null where the study does not ask for it
 };
 

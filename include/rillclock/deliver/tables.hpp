@@ -44,6 +44,10 @@ namespace rillclock {
 /// areas by hand.
 [[nodiscard]] std::string handover_table(const StudyResult& result);
 
+/// `tables/drawn_catchments.csv`: one row a hand-drawn catchment: its area and that of the elevations, what both have and what one has alone, and
+/// the share of the former in all three.
+[[nodiscard]] std::string drawn_catchments_table(const StudyResult& result);
+
 /// `tables/land.csv`: one row a point and kind of land (cover class, soil group, slope of the land) in its catchment: cells and area in
 /// the whole of it and in the point's own subarea, curve number and runoff coefficient where the book has them.
 [[nodiscard]] std::string land_table(const StudyResult& result);

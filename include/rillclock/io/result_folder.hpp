@@ -25,6 +25,10 @@ public:
     ~ResultFolder();
 
     [[nodiscard]] const std::filesystem::path& target() const { return target_; }
+    /// The folder in which files are made until `commit`.
+    [[nodiscard]] const std::filesystem::path& making() const { return making_; }
+    /// From here on files belong below this folder of the result ("scenario-after"); "" is the result itself.
+    void begin_part(const std::filesystem::path& part) { part_ = part; }
     /// Where to write a file that belongs at `relative` ("tables/outlets.csv"); its folder is made.
     [[nodiscard]] std::filesystem::path path(const std::filesystem::path& relative);
     /// Writes a whole new file, down to the disk.
@@ -41,6 +45,7 @@ private:
 
     std::filesystem::path target_;
     std::filesystem::path making_;
+    std::filesystem::path part_;
     int lock_ = -1;
     bool committed_ = false;
 };

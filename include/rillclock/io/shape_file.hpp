@@ -4,6 +4,7 @@
 #include <optional>
 #include <span>
 #include <string>
+#include <string_view>
 #include <vector>
 
 #include "rillclock/core/notice.hpp"
@@ -22,6 +23,7 @@ struct ShapeFile {
     std::vector<Polygon> polygons;
     std::vector<std::size_t> feature_of_line;   ///< number of each line's feature in the file, from 1
     std::vector<std::vector<std::optional<double>>> numbers;   ///< of each line: the asked fields; none where absent or empty
+    std::vector<std::size_t> feature_of_polygon;   ///< number of each polygon's feature in the file, from 1
     std::vector<std::string> polygon_texts;   ///< of the field that was asked for, by polygon; empty where a feature has none
     std::size_t features = 0;   ///< of which at least one shape was taken
     Notices notices;
@@ -37,6 +39,8 @@ struct ShapeWish {
     std::span<const std::string> fields = {};
     /// Field whose text is wanted of every polygon; none where empty.
     std::string text_field = {};
+    /// In place of that: the first of these fields that the file has; it may have none.
+    std::span<const std::string_view> usual_text_fields = {};
 };
 
 /// Reads the lines, or the points and polygons, of any vector format and reference system. Curves are made of short straight lines,

@@ -17,6 +17,16 @@ struct RunOptions {
     std::int64_t tile_side = 256;  ///< in cells; no figure depends on it
 };
 
+/// What a run tells of a scenario of its study.
+struct ScenarioOutcome {
+    std::string name;
+    std::filesystem::path folder;             ///< of its own result
+    std::filesystem::path comparison_folder;
+    std::vector<std::string> facts;
+    std::string comparison;                   ///< with the study: a sentence and a short table
+    std::size_t worse = 0;                    ///< points that get worse by more than the tolerance of `CompareOptions`
+};
+
 /// What a finished run tells its caller; all of it, and more, is in the result folder.
 struct RunOutcome {
     std::filesystem::path folder;
@@ -25,10 +35,12 @@ struct RunOutcome {
     std::string overview;                 ///< a short table of the points
     Notices notices;                      ///< by effect on the time, the greatest first
     std::string json;                     ///< `result.json`
+    std::vector<ScenarioOutcome> scenarios;
 };
 
 /// The whole of a study: reads the rasters, settles the flow, times it, works out every design point, and writes the result
-/// folder, which appears whole or not at all.
+/// folder, which appears whole or not at all. Scenarios are worked out on the same flow, which is found once; each has a result of its own
+/// within the folder, and its comparison with the study beside (see study/scenario.hpp).
 ///
 /// Throws Error where the inputs or the machine do not allow it, Cancelled where the caller's `progress` asks to stop; the folder is
 /// then as it was.

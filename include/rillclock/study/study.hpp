@@ -14,6 +14,7 @@
 #include "rillclock/hydraulics/storm_time.hpp"
 #include "rillclock/rainfall/rain_source.hpp"
 #include "rillclock/study/lump_inputs.hpp"
+#include "rillclock/study/study_value.hpp"
 #include "rillclock/study/uncertainty_study.hpp"
 #include "rillclock/surface/cover_book.hpp"
 #include "rillclock/surface/runoff_coefficients.hpp"
@@ -68,6 +69,8 @@ struct SurfaceStudy {
     std::optional<SoilGroup> soil_group = {};  ///< of the whole study, for curve numbers and runoff coefficients
     SoilStudy soil = {};                       ///< or a raster of soil groups
     std::optional<int> fallback_class = {};    ///< for codes the book does not know and cells without cover
+    MappedLayer cover_areas = {};              ///< polygons of classes, laid over the raster
+    std::string cover_field = "cover";         ///< that names a polygon's class, by code or name
     bool unbiased_lengths = false;             ///< steps along the grid count with `unbiased_step_weight`
 };
 
@@ -78,6 +81,9 @@ struct PointStudy {
     std::optional<std::string> layer = {};  ///< the file's first layer where absent
     std::optional<double> auto_area = {};   ///< share of the data's area from which a way out counts as a point, 0 to 1
     std::optional<Length> move_within = {};
+    std::optional<std::string> area = {};   ///< field that holds surveyed areas
+    std::optional<Area> area_unit = {};     ///< of areas that are bare numbers; each carries its own where absent
+    MappedLayer catchments = {};            ///< hand-drawn polygons, in place of a file of points
     std::optional<std::string> pipes = {};  ///< CSV file, relative to the study's folder
 };
 
@@ -172,6 +178,18 @@ struct OutputStudy {
     std::optional<Duration> isochrones = {};  ///< step between them; none are made where absent
 };
 
+/// A value that a scenario has in place of the study's own.
+struct StatedChange {
+    std::string key;    ///< with its section: "surface.cover"
+    StudyValue value;
+};
+
+/// A variant of a study on the same terrain and at the same points: see scenario.hpp.
+struct ScenarioStudy {
+    std::string name;
+    std::vector<StatedChange> changes = {};  ///< in the order of the file
+};
+
 struct Study {
     std::string file = {};  ///< the study file as named by the user; empty where the command line is the study
     std::string title = {};
@@ -185,6 +203,8 @@ struct Study {
     MethodStudy methods = {};
     std::optional<UncertaintyStudy> uncertainty = {};  ///< absent: not asked for
     OutputStudy output = {};
+    std::vector<ScenarioStudy> scenarios = {};  ///< in the order of the file
+    std::string scenario = {};                  ///< the name of the scenario that this is; empty for a study itself
 };
 
 /// A name from the study as a path that can be opened: relative ones are taken from the study file's folder; absolute

@@ -1,13 +1,11 @@
 #pragma once
 
-#include <cstdint>
 #include <span>
 #include <string>
 #include <string_view>
-#include <variant>
-#include <vector>
 
 #include "rillclock/study/study.hpp"
+#include "rillclock/study/study_value.hpp"
 
 namespace rillclock {
 
@@ -21,13 +19,6 @@ struct StudyKey {
 
 /// All keys this version serves, in the order of the file.
 [[nodiscard]] std::span<const StudyKey> study_keys();
-
-/// A value as stated, and where: what begins an error's sentence, "slope_window (study.toml, line 3, column 16)".
-struct StudyValue {
-    std::variant<std::string, std::int64_t, double, bool, std::vector<double>> value;
-    std::string subject;
-    std::string entry = {};  ///< where the key holds a table whose names are the user's: the name, such as "10"
-};
 
 /// Sets what the key (with its section) stands for, from a study file or from the command line. Throws an input error
 /// where the value has the wrong type, unit, sign or range, or names something this version does not do; a bug for a

@@ -54,6 +54,41 @@ TEST_CASE("a point moves to the cell of largest contributing area within reach")
     CHECK_FALSE(placed.points.at(0).found);
 }
 
+StatedPoint surveyed_as(double square_metres) {
+    StatedPoint point = middle;
+    point.surveyed = to_fixed_area(square_metres);
+    return point;
+}
+
+TEST_CASE("a point with a surveyed area moves to the cell nearest to it in the logarithm") {
+    Board board;
+    board.set({5, 7}, 400);
+    board.set({4, 5}, 52);   // 100 / 52 is 1.92, 190 / 100 is 1.9
+    board.set({6, 5}, 190);
+    const PlacedPoints placed = board.place({surveyed_as(100)}, 2.0);
+    CHECK(placed.points.at(0).cell == at(6, 5));
+    CHECK(placed.points.at(0).surveyed == to_fixed_area(100));
+    CHECK(board.place({surveyed_as(60)}, 2.0).points.at(0).cell == at(4, 5));
+    CHECK(board.place({surveyed_as(1e9)}, 2.0).points.at(0).cell == at(5, 7));
+}
+
+TEST_CASE("of cells with equal areas a surveyed point moves to the nearest, then to the smaller index") {
+    Board board;
+    for (const RowColumn equal : {RowColumn{5, 7}, RowColumn{5, 6}, RowColumn{5, 4}}) board.set(equal, 100);
+    CHECK(board.place({surveyed_as(100)}, 2.0).points.at(0).cell == at(5, 4));
+}
+
+TEST_CASE("a surveyed area more than a tenth off is told, either way, with their ratio") {
+    Board board;
+    board.set({5, 5}, 190);
+    const Notices above = board.place({surveyed_as(100)}, 0.0).notices;
+    REQUIRE(codes_of(above) == std::vector<std::string>{"surveyed-area-differs"});
+    CHECK(*above[0].value == Approx(1.9));
+    CHECK(codes_of(board.place({surveyed_as(210)}, 0.0).notices) == std::vector<std::string>{"surveyed-area-differs"});
+    CHECK(board.place({surveyed_as(173)}, 0.0).notices.empty());   // 1.098
+    CHECK(board.place({surveyed_as(208)}, 0.0).notices.empty());   // 1 / 1.095
+}
+
 TEST_CASE("a centre just beyond reach is out of it") {
     Board board;
     board.set({5, 7}, 5);
