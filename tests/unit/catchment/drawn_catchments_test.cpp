@@ -22,7 +22,7 @@ Polygon rectangle(double left, double top, double right, double bottom) {
 
 /// A set of cells by chance, as single cells in no order.
 std::set<Cell> random_cells(std::mt19937& random) {
-    const std::uint32_t of_ten = static_cast<std::uint32_t>(random()) % 11;
+    const auto of_ten = random() % 11;
     std::set<Cell> cells;
     for (Cell cell = 0; cell < rows * columns; ++cell)
         if (random() % 10 < of_ten) cells.insert(cell);
