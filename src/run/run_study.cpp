@@ -175,7 +175,7 @@ RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, co
     const SurfaceData& surface = laid.surface;
     const std::int64_t cells = terrain.grid.size();
     common.folder.begin_part(task.part);
-    const std::vector<ReviewWord> words = review_words(common.folder.target() / task.part);
+    const std::vector<ReviewWord> words = review_words(common.folder.part_target());
     const Ground steps = study.surface.unbiased_lengths ? terrain.ground.with_steps_weighted(unbiased_step_weight) : terrain.ground;
     const TiledGround ground = ground_of(common.forest, steps, terrain, surface, common.flow, laid.zones);
     ChannelReaches reaches;  // by the design storm; times refer to them
@@ -221,7 +221,7 @@ RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, co
                              .reviewed = reviewed.by_notice, .drawn = drawn, .uncertainty = uncertainty ? &*uncertainty : nullptr};
     std::string json = write_result({.result = result, .terrain = terrain, .travel = *travel, .flow = common.flow,
                                      .depressions = depressions.deepest_first, .regions = *regions, .overview = overview}, common.folder);
-    return {.folder = common.folder.target() / task.part, .facts = facts_of(rain, reviewed), .headlines = headlines(result),
+    return {.folder = common.folder.part_target(), .facts = facts_of(rain, reviewed), .headlines = headlines(result),
             .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = std::move(json), .scenarios = {}};
 }
 
@@ -242,9 +242,9 @@ ScenarioOutcome scenario_outcome(const ScenarioStudy& scenario, Task& task, cons
     const RunOutcome worked = work_out(task, lay_on(task, common.terrain, progress), common, inputs_of, progress);
     const std::string beside = comparison_folder(scenario);
     folder.begin_part(beside);
-    const CompareOutcome compared = compare_two({folder.making(), folder.target()}, {folder.making() / task.part, folder.target() / task.part},
+    const CompareOutcome compared = compare_two({folder.making(), folder.target()}, {folder.making() / task.part, worked.folder},
                                                 CompareOptions{}.tolerance, &folder, progress);
-    return {.name = scenario.name, .folder = worked.folder, .comparison_folder = folder.target() / beside, .facts = worked.facts,
+    return {.name = scenario.name, .folder = worked.folder, .comparison_folder = folder.part_target(), .facts = worked.facts,
             .comparison = compared.text, .worse = compared.worse};
 }
 

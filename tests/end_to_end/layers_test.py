@@ -258,7 +258,8 @@ class Peaks(unittest.TestCase):
         layer = gdal.OpenEx(str(self.package), gdal.OF_VECTOR)
         network = layer.GetLayerByName("network")
         network.SetAttributeFilter("point = 'Market inlet'")
-        self.assertEqual(next(iter(network)).GetGeometryRef().GetGeometryRef(0).GetPointCount(), 2)
+        feature = network.GetNextFeature()   # a shape lives no longer than its feature
+        self.assertEqual(feature.GetGeometryRef().GetGeometryRef(0).GetPointCount(), 2)
 
     def test_a_stated_way_is_the_time_of_its_edge(self):
         edge = next(feature for feature in self.features("network") if feature["point"] == "Tramway bank")
@@ -316,7 +317,8 @@ class Rasters(DemoTest):
             self.assertGreater(len(entries), 3)
             numbers = [float(entry.get("quantity")) for entry in entries]
             self.assertEqual(numbers, sorted(numbers))
-            band = gdal.Open(str(rasters / f"{name}.tif")).GetRasterBand(1)
+            raster = gdal.Open(str(rasters / f"{name}.tif"))   # a band lives no longer than its file
+            band = raster.GetRasterBand(1)
             values = band.ReadAsArray()
             values = np.unique(values[values != band.GetNoDataValue()])
             if name in ("travel_time", "contributing_area"):

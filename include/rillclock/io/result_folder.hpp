@@ -29,9 +29,11 @@ public:
     [[nodiscard]] const std::filesystem::path& making() const { return making_; }
     /// From here on files belong below this folder of the result ("scenario-after"); "" is the result itself.
     void begin_part(const std::filesystem::path& part) { part_ = part; }
+    /// Where that part will lie once it is committed.
+    [[nodiscard]] std::filesystem::path part_target() const { return part_.empty() ? target_ : target_ / part_; }
     /// Where to write a file that belongs at `relative` ("tables/outlets.csv"); its folder is made.
     [[nodiscard]] std::filesystem::path path(const std::filesystem::path& relative);
-    /// Writes a whole new file, down to the disk.
+    /// Writes a whole new file; `commit` brings it to the disk.
     void write_text(const std::filesystem::path& relative, std::string_view content);
     /// Puts everything on disk, then in the target's place. The last act; at most once.
     void commit();
