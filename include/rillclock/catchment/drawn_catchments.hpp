@@ -28,7 +28,9 @@ public:
     /// Runs in any order, which may overlap, each within one row of a grid of so many columns.
     CellRuns(std::vector<CellRun> runs, std::int64_t columns);
 
-    [[nodiscard]] std::span<const CellRun> runs() const { return runs_; }
+    /// Seen as long as the set is there, so not of a temporary one.
+    [[nodiscard]] std::span<const CellRun> runs() const& { return runs_; }
+    void runs() const&& = delete;
     [[nodiscard]] bool is_empty() const { return runs_.empty(); }
     /// Cost: logarithmic in the runs.
     [[nodiscard]] bool holds(Cell cell) const;

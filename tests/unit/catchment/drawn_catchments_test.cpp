@@ -104,7 +104,8 @@ TEST_CASE("a difference has the areas and the cells that counting one by one giv
         REQUIRE(made.both == cells(static_cast<std::size_t>(both)));
         REQUIRE(cells_enclosed(made.drawn_only) == static_cast<double>(drawn.size()) - static_cast<double>(both));
         REQUIRE(cells_enclosed(made.found_only) == static_cast<double>(found.size()) - static_cast<double>(both));
-        for (const CellRun& run : cells_of(std::span(made.drawn_only), grid).runs()) {
+        const CellRuns alone = cells_of(std::span(made.drawn_only), grid);
+        for (const CellRun& run : alone.runs()) {
             for (Cell cell = run.first; cell < run.end; ++cell) REQUIRE((drawn.contains(cell) && !found.contains(cell)));
         }
         const double either = static_cast<double>(drawn.size() + found.size()) - static_cast<double>(both);
