@@ -75,9 +75,22 @@
     map.invalidateSize({ animate: false, pan: false });
     map.fitBounds(bounds, { animate: false });
   }
+  function reachByKey(mark, point) {
+    var shape = mark.getElement();
+    shape.setAttribute("tabindex", "0");
+    shape.setAttribute("role", "link");
+    shape.setAttribute("aria-label", point.name + ", " + point.time + " min");
+    shape.addEventListener("keydown", function (event) {
+      if (event.key === "Enter") location.hash = "p" + point.number;
+    });
+    shape.addEventListener("focus", function () { mark.openTooltip(); });
+    shape.addEventListener("blur", function () { mark.closeTooltip(); });
+  }
   function drawMap() {
     fitScreen();
-    map = L.map("map", { crs: L.CRS.Simple, preferCanvas: true, minZoom: -12, maxZoom: 6, zoomSnap: 0, attributionControl: false });
+    // Shapes print sharp and can be reached by key; beyond some hundreds of points dots are quicker.
+    var few = data.points.length <= 400;
+    map = L.map("map", { crs: L.CRS.Simple, preferCanvas: !few, minZoom: -12, maxZoom: 6, zoomSnap: 0, attributionControl: false });
     map.fitBounds(bounds, { animate: false });
     map.createPane("iso").style.zIndex = 450;
     ["relief", "times"].forEach(function (name) {
@@ -106,6 +119,7 @@
       name.textContent = point.name + ", " + point.time + " min";
       marks[point.number] = L.circleMarker(at(point.at[0], point.at[1]), { radius: 6, color: "#000", weight: 2, fillColor: "#fff", fillOpacity: 1 })
         .bindTooltip(name).on("click", function () { location.hash = "p" + point.number; }).addTo(map);
+      if (few) reachByKey(marks[point.number], point);
     });
     var width = frame.parentNode.clientWidth;
     window.addEventListener("resize", function () {
