@@ -23,8 +23,13 @@ function(rillclock_precompiled name)
   endif()
 endfunction()
 
+# A program is compiled otherwise than a library that a module may be linked from, and cannot share its headers with one.
 function(rillclock_use_precompiled target name)
   if(RILLCLOCK_PRECOMPILE)
+    get_target_property(type ${target} TYPE)
+    if(type STREQUAL EXECUTABLE)
+      set_target_properties(${target} ${name} PROPERTIES POSITION_INDEPENDENT_CODE OFF)
+    endif()
     target_precompile_headers(${target} REUSE_FROM ${name})
   endif()
 endfunction()

@@ -112,7 +112,9 @@ double sheet_step_time(const SheetStep& step, const TravelSetting& setting, doub
     const double index_step = surface.sheet_n * length / root_slope;
     const double share = std::clamp(std::min((in_metres(rules.limit) - static_cast<double>(step.from_divide_m)) / length,
                                              (in_metres(rules.index_limit) - index) / index_step), 0.0, 1.0);
-    double time = (1.0 - share) * length / (in_metres_per_second(surface.shallow_k) * root_slope);
+    const double shallow = surface.shallow_line ? in_metres_per_second(surface.shallow_line->at(root_slope * root_slope))
+                                                : in_metres_per_second(surface.shallow_k) * root_slope;
+    double time = (1.0 - share) * length / shallow;
     if (share > 0) time += surface.sheet_factor * rules.storm_factor * (table(index + share * index_step) - table(index));
     if (!(celerity > 0)) return time;
     return std::min(time, length / std::min(celerity, in_metres_per_second(setting.rules.pond.speed)));

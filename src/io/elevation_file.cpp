@@ -12,11 +12,10 @@
 
 #include "raster_file.hpp"
 #include "rillclock/core/error.hpp"
+#include "rillclock/raster/elevation_check.hpp"
 
 namespace rillclock {
 namespace {
-
-constexpr double farthest_from_sea_level_m = 1e5;
 
 std::string number(double value) {
     std::array<char, 40> text{};
@@ -26,49 +25,21 @@ std::string number(double value) {
 
 class ElevationSource : public NotedSource<double> {
 public:
-    ElevationSource(RasterFile file, ElevationFormat format) : file_(std::move(file)), format_(std::move(format)) {}
+    ElevationSource(RasterFile file, const ElevationFormat& format)
+        : file_(std::move(file)), check_(format.unit.metres_per_unit, format.scale, format.offset) {}
 
     [[nodiscard]] const Grid& grid() const override { return file_.grid(); }
 
     void read(const Window& window, std::span<double> values) override {
-        not_finite_ += file_.read(window, values);
-        for (double& value : values) value = checked(value);
+        check_.count_not_finite(file_.read(window, values));
+        for (double& value : values) value = check_.checked(value);
     }
 
-    [[nodiscard]] Notices notices() const override {
-        Notices notices;
-        if (not_finite_ > 0)
-            notices.push_back({.code = "elevation-not-finite",
-                               .text = std::to_string(not_finite_) + " cells of the " + file_.called() +
-                                       " are no finite numbers and are taken as void.",
-                               .value = static_cast<double>(not_finite_)});
-        if (impossible_ > 0)
-            notices.push_back({.code = "elevation-impossible",
-                               .text = std::to_string(impossible_) + " cells of the " + file_.called() +
-                                       " lie more than 100 km above or below zero and are taken as void; look at the "
-                                       "unit, the scale and the nodata value.",
-                               .value = static_cast<double>(impossible_),
-                               .threshold = farthest_from_sea_level_m});
-        return notices;
-    }
+    [[nodiscard]] Notices notices() const override { return check_.notices(file_.called()); }
 
 private:
-    [[nodiscard]] double checked(double stored) {
-        if (std::isnan(stored)) return stored;
-        if (std::isinf(stored)) {
-            ++not_finite_;
-            return std::numeric_limits<double>::quiet_NaN();
-        }
-        const double elevation_m = (stored * format_.scale + format_.offset) * format_.unit.metres_per_unit;
-        if (std::abs(elevation_m) <= farthest_from_sea_level_m) return stored + 0.0;  // -0.0 becomes 0.0
-        ++impossible_;
-        return std::numeric_limits<double>::quiet_NaN();
-    }
-
     RasterFile file_;
-    ElevationFormat format_;
-    std::int64_t not_finite_ = 0;
-    std::int64_t impossible_ = 0;
+    ElevationCheck check_;
 };
 
 void check_kind(const RasterFile& file) {

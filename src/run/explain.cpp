@@ -5,25 +5,12 @@
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/nearest_word.hpp"
 #include "rillclock/deliver/calculation_sheet.hpp"
-#include "rillclock/io/text_file.hpp"
+#include "rillclock/run/read_result.hpp"
 
 namespace rillclock {
-namespace {
-
-std::filesystem::path result_file(const std::filesystem::path& folder) {
-    if (!std::filesystem::is_directory(folder)) {
-        throw input_error("there is no folder '" + folder.string() + "'; name a result folder that rillclock run has written");
-    }
-    const std::filesystem::path file = folder / "result.json";
-    if (std::filesystem::exists(file)) return file;
-    throw input_error("'" + folder.string() + "' is not a result: it holds no result.json; name a folder that rillclock run has written");
-}
-
-}  // namespace
 
 std::string explanation(const std::filesystem::path& result_folder, const std::string& point) {
-    const std::filesystem::path file = result_file(result_folder);
-    const SheetBook book(read_text(file), file.string());
+    const SheetBook book(result_figures(result_folder), (result_folder / "result.json").string());
     const std::vector<std::string> names = book.names();
     const auto found = std::find(names.begin(), names.end(), point);
     if (found == names.end()) {

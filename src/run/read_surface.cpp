@@ -201,35 +201,48 @@ void require_cover(const Study& study) {
     (void)read_cover_areas(study, book, terrain.system);
 }
 
-SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress) {
-    CoverBook book = read_book(study);
+CoverReading read_cover(const Study& study, CoverBook book, BlockSource<std::int32_t>& source, const ElevationStore& elevations,
+                        Raster<std::uint8_t> over, const Progress& progress) {
     if (book.classes().size() > most_classes) {
         throw input_error("the cover book '" + book.name() + "' has " + std::to_string(book.classes().size()) +
                           " classes, more than the 255 that are served; leave out those the raster does not use");
     }
+    const Hydraulics hydraulics(study);
+    Reading reading(study, book, elevations);
+    SurfaceData data{.book = book, .table = {}, .classes = {}, .soils = {}, .runoff = {}, .notices = {}};
+    data.table.index = std::move(over);
+    read_positions(source, book, reading, data.table.index, progress);
+    data.classes = reading.known_classes();
+    data.notices = unknown_notices(study, reading);
+    std::vector<bool> occurs;
+    for (const CoverClass& cover : book.classes()) {
+        occurs.push_back(reading.has_met(cover.code));
+        data.table.classes.push_back(hydraulics.of(cover, occurs.back()));
+    }
+    return {.surface = std::move(data), .occurs = std::move(occurs)};
+}
+
+SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress) {
     CoverOptions options;
     options.band = study.surface.band;
     CoverFile file = open_cover(located(study, study.surface.cover), options, terrain.grid, terrain.system);
+    CoverBook book = read_book(study);
     const CoverAreas areas = read_cover_areas(study, book, terrain.system);
-    const Hydraulics hydraulics(study);
-    Reading reading(study, book, terrain.elevations);
-
-    SurfaceData data{.book = book, .table = {}, .classes = {}, .soils = {}, .runoff = {}, .notices = file.notices};
-    data.table.index = Raster<std::uint8_t>(terrain.grid.rows, terrain.grid.columns);
-    const Notices laid_over = lay_over(study, areas, terrain.grid, data.table.index);
-    read_positions(*file.source, book, reading, data.table.index, progress);
-    data.classes = reading.known_classes();
-    for (const Notices& more : {laid_over, unknown_notices(study, reading)}) data.notices.insert(data.notices.end(), more.begin(), more.end());
+    Raster<std::uint8_t> over(terrain.grid.rows, terrain.grid.columns);
+    const Notices laid_over = lay_over(study, areas, terrain.grid, over);
+    CoverReading reading = read_cover(study, std::move(book), *file.source, terrain.elevations, std::move(over), progress);
+    SurfaceData& data = reading.surface;
+    data.notices.insert(data.notices.begin(), laid_over.begin(), laid_over.end());
+    data.notices.insert(data.notices.begin(), file.notices.begin(), file.notices.end());
     read_soil(study, terrain, data, progress);
+    if (!study.timing.channel.design_storm) return std::move(data);
+    const Hydraulics hydraulics(study);
     const std::vector<CellSoil> soils = soils_of(data);
-    for (const CoverClass& cover : book.classes()) {
-        const bool occurs = reading.has_met(cover.code);
-        data.table.classes.push_back(hydraulics.of(cover, occurs));
-        if (!study.timing.channel.design_storm) continue;
-        const auto runoff = hydraulics.runoff_of(cover, occurs ? soils : std::vector<CellSoil>{});
+    for (std::size_t i = 0; i < data.book.classes().size(); ++i) {
+        const auto runoff = hydraulics.runoff_of(data.book.classes()[i], reading.occurs[i] ? soils : std::vector<CellSoil>{});
         data.runoff.insert(data.runoff.end(), runoff.begin(), runoff.end());
     }
-    return data;
+    return std::move(data);
 }
 
 }  // namespace rillclock

@@ -15,8 +15,9 @@ constexpr std::int64_t strip_rows = 512;
 /// No ground is as steep between neighbouring cells.
 constexpr double impossible_slope = 20.0;
 
-/// Reads all strips into the store; returns how many cells are void.
-std::int64_t read_all(BlockSource<double>& source, ElevationStore& store, const Progress& progress) {
+}  // namespace
+
+std::int64_t read_elevations(BlockSource<double>& source, ElevationStore& store, const Progress& progress) {
     const Grid& grid = source.grid();
     std::int64_t voids = 0;
     read_ahead(source, strip_rows, [&](const Window& window, std::span<const double> strip) {
@@ -28,19 +29,16 @@ std::int64_t read_all(BlockSource<double>& source, ElevationStore& store, const 
     return voids;
 }
 
-Notices relief_notices(const TerrainData& terrain, const Executor& executor) {
-    const SteepestPair pair =
-        steepest_pair(terrain.elevations, terrain.ground, terrain.format.metres_per_stored_unit(), executor);
+Notices relief_notices(const Relief& relief, const Executor& executor) {
+    const SteepestPair pair = steepest_pair(relief.elevations, relief.ground, relief.metres_per_unit, executor);
     if (!(pair.slope > impossible_slope)) return {};
-    const RowColumn at = terrain.grid.row_column(pair.cell);
+    const RowColumn at = relief.grid.row_column(pair.cell);
     return {{.code = "relief-cannot-be",
              .text = "the ground falls " + significant(pair.slope, 3) + " times as far as it runs at row " + std::to_string(at.row) +
                      ", column " + std::to_string(at.column) + "; check the vertical unit first (elevations are taken to be in " +
-                     terrain.format.unit.name + "), then look for spikes in the data",
-             .value = pair.slope, .threshold = impossible_slope, .place = terrain.grid.centre(pair.cell)}};
+                     relief.unit + "), then look for spikes in the data",
+             .value = pair.slope, .threshold = impossible_slope, .place = relief.grid.centre(pair.cell)}};
 }
-
-}  // namespace
 
 ElevationStore::Width width_of(StoredType type) {
     const bool wide = type == StoredType::int32 || type == StoredType::uint32 || type == StoredType::float64;
@@ -73,12 +71,14 @@ TerrainData read_terrain(const Study& study, const Executor& executor, const Pro
                      .ground = ground_of(file.grid(), file.system), 
                      .elevations = ElevationStore(file.grid().rows, file.grid().columns, width_of(file.format.stored)),
                      .notices = file.notices};
-    data.void_cells = read_all(*file.source, data.elevations, progress);
+    data.void_cells = read_elevations(*file.source, data.elevations, progress);
     if (data.void_cells == data.grid.size()) {
         throw input_error("the elevations in '" + study.terrain.elevation + "' hold no data: every cell is void; check the file's " +
                           "nodata value, for instance with gdalinfo -stats");
     }
-    for (Notices more : {file.source->notices(), relief_notices(data, executor)}) {
+    const Relief relief{.grid = data.grid, .ground = data.ground, .elevations = data.elevations,
+                        .metres_per_unit = data.format.metres_per_stored_unit(), .unit = data.format.unit.name};
+    for (const Notices& more : {file.source->notices(), relief_notices(relief, executor)}) {
         data.notices.insert(data.notices.end(), more.begin(), more.end());
     }
     return data;

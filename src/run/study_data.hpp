@@ -51,12 +51,34 @@ struct SurfaceData {
 [[nodiscard]] ElevationStore::Width width_of(StoredType type);
 /// What the memory of the study's run depends on.
 [[nodiscard]] MemoryTask memory_task(const Study& study, const ElevationFile& elevations);
+/// Reads all strips of a source into the store; returns how many cells are void.
+std::int64_t read_elevations(BlockSource<double>& source, ElevationStore& store, const Progress& progress);
+/// Elevations, and what makes slopes of them.
+struct Relief {
+    const Grid& grid;
+    const Ground& ground;
+    const ElevationStore& elevations;
+    double metres_per_unit = 1.0;
+    std::string unit;   ///< its name, for messages
+};
+/// A notice where ground is steeper than any can be.
+[[nodiscard]] Notices relief_notices(const Relief& relief, const Executor& executor);
 /// Throws a machine error with numbers where there is less memory than the run needs; reads no more than the header of the elevations.
 void require_memory(const Study& study);
 [[nodiscard]] TerrainData read_terrain(const Study& study, const Executor& executor, const Progress& progress);
 [[nodiscard]] CoverBook read_book(const Study& study);
 /// Throws an input error where the cover or its book cannot be used, from their headers alone.
 void require_cover(const Study& study);
+/// What the land cover of a study does to water: the classes of all cells and their hydraulics, on the grid of the elevations.
+struct CoverReading {
+    SurfaceData surface;           ///< without soils
+    std::vector<bool> occurs;      ///< of each class of the book: whether any cell has it
+};
+/// Reads classes from `source`, which has the grid of the elevations; cells whose elevation is void do not count. Where something is laid
+/// over the raster, `over` has 1 + its class's position in the book, else 0.
+/// Throws an input error for classes that the book does not know, unless the study names one for them.
+[[nodiscard]] CoverReading read_cover(const Study& study, CoverBook book, BlockSource<std::int32_t>& source, const ElevationStore& elevations,
+                                      Raster<std::uint8_t> over, const Progress& progress);
 [[nodiscard]] SurfaceData read_surface(const Study& study, const TerrainData& terrain, const Progress& progress);
 /// A hand-drawn catchment, in the DEM's coordinates.
 struct DrawnCatchment {

@@ -3,8 +3,10 @@
 #include <algorithm>
 #include <cmath>
 #include <limits>
+#include <memory>
 #include <random>
 #include <string_view>
+#include <utility>
 
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/number_text.hpp"
@@ -99,6 +101,15 @@ unsigned long long hash_of(std::string_view text) {
     return hash;
 }
 
+/// A class whose shallow flow runs at so many times its speed, by its k or by its chart.
+void scale_shallow(const SurfaceHydraulics& base, double factor, SurfaceHydraulics& surface) {
+    surface.shallow_k = base.shallow_k * factor;
+    if (!base.shallow_line) return;
+    VelocityLine line = *base.shallow_line;
+    for (VelocityPoint& point : line.points) point.velocity = point.velocity * factor;
+    surface.shallow_line = std::make_shared<const VelocityLine>(std::move(line));
+}
+
 void scale_radius(ChannelRules& channel, double factor) {
     if (channel.hydraulic_radius) channel.hydraulic_radius = *channel.hydraulic_radius * factor;
     channel.width.coefficient = channel.width.coefficient * factor;
@@ -142,7 +153,7 @@ void put_value(const UncertainInput& input, double value, const TravelSetting& b
             return;
         case UncertainKind::sheet_limit: setting.rules.sheet.limit = metres(value); return;
         case UncertainKind::shallow_speed:
-            for (std::size_t i = 0; i < base.classes.size(); ++i) setting.classes[i].shallow_k = base.classes[i].shallow_k * value;
+            for (std::size_t i = 0; i < base.classes.size(); ++i) scale_shallow(base.classes[i], value, setting.classes[i]);
             return;
         case UncertainKind::overland_floor: setting.rules.slope.overland_floor = value; return;
         case UncertainKind::channel_floor: setting.rules.slope.channel_floor = value; return;
@@ -198,13 +209,15 @@ void check_uncertainty(const Study& study) {
     const std::string name = study.file.empty() ? "the study" : study.file;
     if (study.timing.ignore_tail > 0) {
         throw input_error(name +
-                          " asks for uncertainty and for ignore_tail; the draws follow the cells that arrive last and cannot leave a share of "
-                          "the area out, so remove ignore_tail or [uncertainty]");
+                          " asks for uncertainty and for ignore_tail; a draw times only the cells that may arrive last, so it does not know when "
+                          "which share of the area has arrived. Remove ignore_tail (tables/outlets.csv tells in any run when 95 and 99 % have "
+                          "arrived), or [uncertainty]");
     }
-    if (study.timing.shallow == ShallowRule::chart || study.timing.channel.design_storm) {
+    if (study.timing.channel.design_storm) {
         throw input_error(name +
-                          " asks for uncertainty and for velocities from a chart or from the flow of the design storm, which the draws cannot "
-                          "change; remove [uncertainty], or time shallow flow by cover and channels by their size");
+                          " asks for uncertainty and for channel flow by the design storm; there the velocity of a channel follows from all water "
+                          "that arrives above it, which a draw, timing only the cells that may arrive last, does not know. Remove [uncertainty], or "
+                          "flow under [timing.channel]; to see what one input does, run the study once with each of its values and compare");
     }
     for (const Rule& rule : rules_with_ranges(study)) {
         if (!rule.stated || (rule.stated->low <= rule.typical && rule.typical <= rule.stated->high)) continue;

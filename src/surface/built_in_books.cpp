@@ -15,16 +15,16 @@ namespace {
 // type of table 15-3 and the depth of water are our own. Curve numbers: TR-55, 1986, table 2-2, from memory: open space in good
 // condition 21; residential, quarter and eighth of an acre 22, 23; commercial 24; newly graded 31; woods, good 41 to 43; brush, fair 52;
 // pasture, good 71, 81; row crops, straight, good 82. That match is our own; classes without one have none.
-// Impervious shares: the middle of the legend's range, rounded. Kerby's N: Texas Hydraulic Design Manual, table 4-5, from memory; the
+// Impervious percentages: the middle of the legend's range, rounded. Kerby's N: Texas Hydraulic Design Manual, table 4-5, from memory; the
 // match is our own.
 constexpr std::string_view nlcd_text =
-    R"(code,name,n_low,n_typical,n_high,shallow_type,paved,water_depth_m,source,from_memory,cn_a,cn_b,cn_c,cn_d,kerby_n,impervious
+    R"(code,name,n_low,n_typical,n_high,shallow_type,paved,water_depth_m,source,from_memory,cn_a,cn_b,cn_c,cn_d,kerby_n,impervious_percent
 11,Open Water,,,,,,2,"mean depth ours: state your own",yes,,,,,,
 12,Perennial Ice/Snow,0.010,0.013,0.050,nearly bare,no,,"n and shallow type ours",yes,,,,,,
-21,"Developed, Open Space",0.030,0.0404,0.240,short-grass pasture,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 dense grasses; low and shallow type ours",yes,39,61,74,80,0.40,0.10
-22,"Developed, Low Intensity",0.040,0.0678,0.150,pavement,yes,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 short-grass prairie; low and shallow type ours",yes,61,75,83,87,0.40,0.35
-23,"Developed, Medium Intensity",0.030,0.0678,0.120,pavement,yes,,"n Kalyanapu et al. 2009; range and shallow type ours",yes,77,85,90,92,0.02,0.65
-24,"Developed, High Intensity",0.011,0.0404,0.070,pavement,yes,,"n Kalyanapu et al. 2009; low NEH 630 table 15-1 smooth surfaces; high and shallow type ours",yes,89,92,94,95,0.02,0.90
+21,"Developed, Open Space",0.030,0.0404,0.240,short-grass pasture,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 dense grasses; low and shallow type ours",yes,39,61,74,80,0.40,10
+22,"Developed, Low Intensity",0.040,0.0678,0.150,pavement,yes,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 short-grass prairie; low and shallow type ours",yes,61,75,83,87,0.40,35
+23,"Developed, Medium Intensity",0.030,0.0678,0.120,pavement,yes,,"n Kalyanapu et al. 2009; range and shallow type ours",yes,77,85,90,92,0.02,65
+24,"Developed, High Intensity",0.011,0.0404,0.070,pavement,yes,,"n Kalyanapu et al. 2009; low NEH 630 table 15-1 smooth surfaces; high and shallow type ours",yes,89,92,94,95,0.02,90
 31,Barren Land,0.011,0.0113,0.050,nearly bare,no,,"n Kalyanapu et al. 2009; range NEH 630 table 15-1 smooth surfaces to fallow; shallow type ours",yes,77,86,91,94,0.10,0
 41,Deciduous Forest,0.200,0.360,0.800,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with dense underbrush; low and shallow type ours",yes,30,55,70,77,0.60,0
 42,Evergreen Forest,0.200,0.320,0.800,forest litter or hay meadow,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 woods with dense underbrush; low and shallow type ours",yes,30,55,70,77,0.80,0
@@ -45,12 +45,12 @@ constexpr std::string_view nlcd_text =
 // number is that of the class of NLCD that comes nearest by our own judgement, or of none. "Built-up" mixes roofs, streets and gardens; its n is that of
 // medium development. Whoever knows the place better states a book of their own.
 constexpr std::string_view worldcover_text =
-    R"(code,name,n_low,n_typical,n_high,shallow_type,paved,water_depth_m,source,from_memory,cn_a,cn_b,cn_c,cn_d,kerby_n,impervious
+    R"(code,name,n_low,n_typical,n_high,shallow_type,paved,water_depth_m,source,from_memory,cn_a,cn_b,cn_c,cn_d,kerby_n,impervious_percent
 10,Tree cover,0.200,0.360,0.800,forest litter or hay meadow,no,,"all ours: as deciduous forest of the book nlcd",yes,30,55,70,77,0.60,0
 20,Shrubland,0.130,0.400,0.800,contour crops or woodland,no,,"all ours: as shrub of the book nlcd",yes,35,56,70,77,0.40,0
 30,Grassland,0.130,0.368,0.410,short-grass pasture,no,,"all ours: as grassland of the book nlcd",yes,39,61,74,80,0.40,0
 40,Cropland,0.050,0.060,0.170,straight row crops,no,,"all ours: as cultivated crops of the book nlcd",yes,67,78,85,89,0.20,0
-50,Built-up,0.011,0.0678,0.150,pavement,yes,,"all ours: as medium development of the book nlcd, with its lowest and highest range; mixes roofs, streets and gardens",yes,77,85,90,92,,0.65
+50,Built-up,0.011,0.0678,0.150,pavement,yes,,"all ours: as medium development of the book nlcd, with its lowest and highest range; mixes roofs, streets and gardens",yes,77,85,90,92,,65
 60,Bare / sparse vegetation,0.011,0.0113,0.050,nearly bare,no,,"all ours: as barren land of the book nlcd",yes,77,86,91,94,0.10,0
 70,Snow and ice,0.010,0.013,0.050,nearly bare,no,,"all ours",yes,,,,,,
 80,Permanent water bodies,,,,,,2,"mean depth ours: state your own",yes,,,,,,

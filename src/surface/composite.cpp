@@ -81,7 +81,7 @@ Composite composite_runoff_coefficient(std::span<const LandShare> land, const Co
 
 Composite composite_impervious(std::span<const LandShare> land, const CoverBook& book) {
     const AreaMean mean = area_mean(land, book, [](const ClassOnSoil& at) { return at.cover.impervious; });
-    return {.value = mean.value, .lacking = lacking_text(mean, "impervious")};
+    return {.value = mean.value, .lacking = lacking_text(mean, "impervious_percent")};
 }
 
 Composite prevailing(std::span<const LandShare> land, const CoverBook& book, std::optional<double> CoverClass::*value,

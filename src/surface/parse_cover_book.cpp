@@ -16,12 +16,12 @@
 namespace rillclock {
 namespace {
 
-constexpr std::array<std::string_view, 32> known_columns{
+constexpr std::array<std::string_view, 31> known_columns{
     "code",          "name",           "n_low", "n_typical",     "n_high",         "shallow_type",
     "shallow_k_m_s", "shallow_k_ft_s", "paved", "water_depth_m", "water_depth_ft", "source",
     "from_memory",   "cn_a",           "cn_b",  "cn_c",          "cn_d",           "c",
     "c_a",           "c_b",            "c_c",   "c_d",           "shallow_n",      "shallow_radius_m",
-    "shallow_radius_ft", "chart_line", "land_use", "impervious_percent", "kerby_n", "izzard_c", "impervious", "county_k"};
+    "shallow_radius_ft", "chart_line", "land_use", "impervious_percent", "kerby_n", "izzard_c", "county_k"};
 constexpr std::array<std::string_view, 4> curve_number_columns{"cn_a", "cn_b", "cn_c", "cn_d"};
 constexpr std::array<std::string_view, 4> coefficient_columns{"c_a", "c_b", "c_c", "c_d"};
 constexpr std::array<std::string_view, 4> needed_columns{"code", "name", "n_typical", "source"};
@@ -247,13 +247,6 @@ void read_lump_numbers(const BookRow& row, CoverClass& cover) {
     cover.kerby_n = bounded(row, "kerby_n", 1);
     cover.izzard_c = bounded(row, "izzard_c", 1);
     cover.county_k = bounded(row, "county_k", 2);
-    const auto impervious = row.number("impervious", Sign::not_negative);
-    if (!impervious) return;
-    if (cover.impervious) throw row.fault("impervious", "and impervious_percent say the same; leave one of them empty");
-    cover.impervious = impervious;
-    if (!(*cover.impervious <= 1))
-        throw row.fault("impervious", "is " + significant(*cover.impervious) +
-                                          "; write the share of the area from 0 to 1, such as 0.35");
 }
 
 void require_no_ground(const BookRow& row) {
@@ -287,6 +280,8 @@ void require_known_columns(const CsvTable& table, std::string_view file) {
         const std::string& column = table.header[i];
         const std::string where =
             std::string(file) + ", header, column " + std::to_string(i + 1) + ": \"" + column + "\" ";
+        if (column == "impervious")
+            throw input_error(where + "does not say its unit; name it impervious_percent, and write 35 where 35 % is sealed");
         if (std::find(known_columns.begin(), known_columns.end(), column) == known_columns.end())
             throw input_error(where + "is not a column of a cover book" + did_you_mean(column, known_columns));
         if (table.column(column) != i) throw input_error(where + "is there twice; keep one");

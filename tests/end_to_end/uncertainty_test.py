@@ -100,6 +100,32 @@ class DemoWithRanges(CommandTest):
                 self.assertLessEqual(kept, float(point["time_of_concentration_min"]) + 0.002, point["name"])
                 self.assertGreaterEqual(kept, 0.99 * float(point["time_of_concentration_min"]), point["name"])
 
+    def write_chart(self, name, book, factor):
+        """Velocities at two slopes for each class, those of its k times a power that is not 1/2."""
+        dry = [row for row in book if not row["water_depth_m"]]
+        with open(self.town / name, "w", encoding="utf-8", newline="") as file:
+            writer = csv.writer(file)
+            writer.writerow(["slope"] + [row["name"] + "_m_s" for row in dry])
+            for slope in (0.005, 0.2):
+                writer.writerow([slope] + [repr(SHALLOW_FT_S[row["shallow_type"]] * FOOT * slope ** 0.6 * factor) for row in dry])
+
+    def test_draws_under_a_chart_run_again_with_its_velocities_times_the_factor(self):
+        book = table(self.town / "cover-book.csv")
+        charted = '[timing]\nshallow = "chart"\nvelocity_chart = "chart.csv"\n'
+        self.write_chart("chart.csv", book, 1.0)
+        study = self.plain.replace("[timing]\n", charted).replace('shallow = "by cover"\n', "")
+        (self.town / "study.toml").write_text(study + "\n[uncertainty]\ndraws = 5\n")
+        self.done("run", "town/study.toml", "--replace")
+        for draw in self.tables("draws.csv"):
+            write_book(self.town / "redrawn.csv", redrawn_book(book, draw))
+            self.write_chart("chart.csv", book, float(draw["speed of shallow flow factor"]))
+            (self.town / "redrawn.toml").write_text(redrawn_study(draw).replace("[timing]\n", charted))
+            self.done("run", "town/redrawn.toml", "--replace")
+            for point in table(self.town / "redrawn/tables/outlets.csv"):
+                kept, full = float(draw[f"time at {point['name']} min"]), float(point["time_of_concentration_min"])
+                self.assertLessEqual(kept, full + 0.002, point["name"])
+                self.assertGreaterEqual(kept, 0.99 * full, point["name"])
+
     def test_the_typical_time_is_the_time_of_concentration(self):
         times = {row["name"]: row["time_of_concentration_min"] for row in self.tables("outlets.csv")}
         for row in self.tables("uncertain_times.csv"):
@@ -247,7 +273,14 @@ class Refused(CommandTest):
         self.done("demo", "town")
         path = self.folder / "town/study.toml"
         path.write_text(path.read_text().replace("[timing]\n", '[timing]\nignore_tail = "1 %"\n') + "\n[uncertainty]\n")
-        self.refused(1, "run", "town/study.toml", says=("ignore_tail", "[uncertainty]"))
+        self.refused(1, "run", "town/study.toml", says=("ignore_tail", "when which share of the area has arrived", "Remove ignore_tail"))
+
+    def test_channels_by_the_design_storm(self):
+        self.done("demo", "town")
+        path = self.folder / "town/study.toml"
+        study = path.read_text().replace('two_year_24_hour = "62 mm"\n', 'two_year_24_hour = "62 mm"\nformula = "i[mm/h] = 600 T^0.2 / (t[min] + 10)^0.8"\n')
+        path.write_text(study.replace("channel = { n = 0.045,", 'channel = { flow = "design storm", n = 0.045,') + "\n[uncertainty]\n")
+        self.refused(1, "run", "town/study.toml", says=("design storm", "all water that arrives above it", "run the study once with each"))
 
 
 if __name__ == "__main__":

@@ -30,6 +30,7 @@ ROOMS = {
     "deliver": ABOVE + ["travel", "catchment", "study", "io"],
     "run": ABOVE + ["travel", "catchment", "study", "io", "deliver"],
     "cli": ["core", "run"],
+    "python": ["core", "raster", "study", "run"],
 }
 
 # What is neither ours nor the language's: how its headers begin, its name, the rooms that may include it.
@@ -42,6 +43,7 @@ THIRD_PARTIES = [
     (r"nlohmann/", "nlohmann-json", ["deliver", "cli"]),
     (r"(spdlog|fmt)/", "spdlog", ["cli"]),
     (r"CLI/", "CLI11", ["cli"]),
+    (r"pybind11/", "pybind11", ["python"]),
     (r"openssl/", "OpenSSL", ["io"]),
     (r"(oneapi/)?tbb(/|\.h)", "oneTBB", ["tiles"]),
 ]

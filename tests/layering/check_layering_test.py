@@ -13,6 +13,7 @@ SOUND = {
     "src/io/files.cpp": "#include <gdal_priv.h>\n#include <unistd.h>\n#include <openssl/evp.h>\n",
     "src/graph/tree.cpp": "#include <boost/graph/adjacency_list.hpp>\n",
     "src/hydraulics/root.cpp": "#include <boost/math/tools/roots.hpp>\n",
+    "src/python/module.cpp": '#include <pybind11/pybind11.h>\n#include "rillclock/raster/grid.hpp"\n',
     "src/cli/main.cpp": "#include <CLI/CLI.hpp>\n#include <spdlog/spdlog.h>\n#include <nlohmann/json.hpp>\n",
 }
 
@@ -48,6 +49,10 @@ class CheckLayering(unittest.TestCase):
     def test_the_command_includes_core_and_run_alone(self):
         self.assert_said({"src/cli/main.cpp": '#include "rillclock/raster/grid.hpp"\n'},
                          "src/cli/main.cpp:1: cli includes rillclock/raster/grid.hpp, but cli may include only: core, run.")
+
+    def test_pybind11_stays_in_python(self):
+        self.assert_said({"src/raster/grid.cpp": "#include <pybind11/numpy.h>\n"},
+                         "src/raster/grid.cpp:1: raster includes <pybind11/numpy.h> of pybind11, but only python may.")
 
     def test_gdal_stays_in_io(self):
         self.assert_said({"src/raster/grid.cpp": "#include <ogr_spatialref.h>\n"},

@@ -22,11 +22,29 @@ struct Case {
     TravelRules rules;
 };
 
+double between(std::mt19937& random, double low, double high) { return std::uniform_real_distribution<double>(low, high)(random); }
+
+/// Gives every other class a chart of three points in place of k.
+void chart_some(SurfaceTable& surface, std::mt19937& random) {
+    for (std::size_t i = 0; i < surface.classes.size(); i += 2) {
+        VelocityLine line;
+        double slope = 0.002;
+        double speed = between(random, 0.02, 0.1);
+        for (int point = 0; point < 3; ++point) {
+            line.points.push_back({.slope = slope, .velocity = metres_per_second(speed)});
+            slope *= between(random, 3, 20);
+            speed *= between(random, 1.2, 4);
+        }
+        surface.classes[i].shallow_line = std::make_shared<const VelocityLine>(line);
+    }
+}
+
 Case random_case(unsigned seed) {
     std::mt19937 random(seed);
     Case given{.elevations = drawings::random_terrain(random, seed % 2 == 0 ? 4 : 1000, seed % 3 == 0 ? 0.05 : 0.0),
                .ground = Ground::planar(metres(2 + seed % 4), metres(2 + seed % 5)), .surface = {}, .rules = {}};
     given.surface = worked::random_surface(random, given.elevations, seed % 4 == 0);
+    if (seed % 3 == 1) chart_some(given.surface, random);
     given.rules.channel.from_area = square_metres(seed % 5 == 0 ? 1e9 : 600);
     given.rules.slope.vertical_step = metres(std::uniform_real_distribution<double>(0.01, 3)(random));
     given.rules.sheet.storm_factor = 4.0;
@@ -34,14 +52,21 @@ Case random_case(unsigned seed) {
     return given;
 }
 
-double between(std::mt19937& random, double low, double high) { return std::uniform_real_distribution<double>(low, high)(random); }
+/// A class whose shallow flow is so many times as fast.
+void hasten(SurfaceHydraulics& surface, double factor) {
+    surface.shallow_k = surface.shallow_k * factor;
+    if (!surface.shallow_line) return;
+    VelocityLine line = *surface.shallow_line;
+    for (VelocityPoint& point : line.points) point.velocity = point.velocity * factor;
+    surface.shallow_line = std::make_shared<const VelocityLine>(line);
+}
 
 /// Every figure changed that a setting may change.
 TravelSetting changed(const Case& given, std::mt19937& random) {
     TravelSetting setting{.rules = given.rules, .classes = given.surface.classes};
     for (SurfaceHydraulics& surface : setting.classes) {
         surface.sheet_n *= between(random, 0.5, 2.0);
-        surface.shallow_k = surface.shallow_k * between(random, 0.7, 1.4);
+        hasten(surface, between(random, 0.7, 1.4));
     }
     setting.rules.sheet.limit = setting.rules.sheet.limit * between(random, 0.5, 1.5);
     setting.rules.sheet.storm_factor *= between(random, 0.9, 1.1);

@@ -3,6 +3,7 @@
 #include "rillclock/hydraulics/channel_size.hpp"
 #include "rillclock/hydraulics/gutter.hpp"
 #include "rillclock/hydraulics/manning.hpp"
+#include "rillclock/hydraulics/roughness.hpp"
 #include "rillclock/hydraulics/shallow_flow.hpp"
 #include "rillclock/hydraulics/sheet_flow.hpp"
 
@@ -34,6 +35,10 @@ double manning_us(const Inputs& in) {
 
 double manning_si_hours(const Inputs& in) {
     return in_hours(manning_time(feet(in["L_ft"]), {.n = in["n"], .hydraulic_radius = radius(in), .slope = in["S"]}));
+}
+
+const RoughnessEntry& roughness(const Inputs& in) {
+    return roughness_tables()[static_cast<std::size_t>(in["table"]) - 1].entries.at(static_cast<std::size_t>(in["row"]) - 1);
 }
 
 double k_of_depth(const Inputs& in) {
@@ -137,6 +142,9 @@ Formulas flow_formulas() {
         {"manning_si_h", manning_si_hours},
         {"three_segments_h", three_segments_hours},
         {"kinematic_min", kinematic_minutes},
+        {"roughness_least", [](const Inputs& in) { return roughness(in).least; }},
+        {"roughness_typical", [](const Inputs& in) { return roughness(in).typical; }},
+        {"roughness_greatest", [](const Inputs& in) { return roughness(in).greatest; }},
     };
     formulas.merge(channel_formulas());
     return formulas;

@@ -15,6 +15,7 @@ namespace rillclock {
 struct WayTime {
     double storm_s = 0.0;
     double fixed_s = 0.0;
+    /// In seconds.
     [[nodiscard]] double under(double storm_factor) const { return storm_s * storm_factor + fixed_s; }
 };
 [[nodiscard]] inline WayTime operator+(const WayTime& a, const WayTime& b) { return {a.storm_s + b.storm_s, a.fixed_s + b.fixed_s}; }
@@ -36,7 +37,7 @@ struct PathLink {
     Cell top = no_cell;
     std::size_t below = 0;                                    ///< the link that begins where this one ends; itself at a path's end
     std::vector<std::size_t> sheet_cells = {};                   ///< where sheet flow may be, timed cell by cell
-    std::vector<std::pair<std::uint8_t, double>> shallow = {};///< surface class, Σ d/√S in m
+    std::vector<std::pair<std::uint8_t, double>> shallow = {};///< surface class, Σ d/√S in m; under a chart Σ d·k/V
     double channel_s = 0.0;                                   ///< under the rules that the paths were made with
     double known_s = 0.0;                                     ///< what no setting changes: open water, channels with a section of their own
     std::vector<BentStep> bent = {};
@@ -51,6 +52,7 @@ struct SheetCell {
     bool on_path = false;
 };
 
+/// Times of the kept paths under one setting.
 struct PathTimes {
     std::vector<WayTime> heads;
     std::vector<WayTime> points;

@@ -8,6 +8,7 @@
 
 namespace rillclock {
 
+/// How two results are compared.
 struct CompareOptions {
     double tolerance = 0.05;                     ///< share by which a point may get worse
     std::optional<std::string> folder = {};      ///< where to write tables and the raster; none writes nothing

@@ -16,6 +16,7 @@ struct MemoryTask {
     bool soil_raster = false;       ///< soil groups come from a raster
     bool rain_zones = false;        ///< each cell lies in a zone of rain
     bool own_storms = false;        ///< each point has a storm of its own, whose arrivals are kept apart (see StormBins)
+    bool results_kept = false;      ///< what is known of every cell is handed back in memory (see TravelTimes), 23 bytes a cell
 };
 
 /// Memory that a run needs, in bytes, with room to spare.
@@ -25,7 +26,8 @@ struct MemoryTask {
 /// the heap adds; there may be one a cell, but in data of some size they share them: 20 bytes a cell were seen at 36 million cells.
 [[nodiscard]] constexpr double memory_need(const MemoryTask& task) {
     const auto cells = static_cast<double>(task.cells);
-    const double kept = cells * ((task.wide_elevations ? 30.0 : 20.0) + (task.soil_raster ? 1.0 : 0.0) + (task.rain_zones ? 1.0 : 0.0));
+    const double kept = cells * ((task.wide_elevations ? 30.0 : 20.0) + (task.soil_raster ? 1.0 : 0.0) + (task.rain_zones ? 1.0 : 0.0) +
+                                 (task.results_kept ? 23.0 : 0.0));
     const double around = 150e6 + std::min(200e6, cells * 40.0);
     const double bins = task.own_storms ? std::min(cells * 72.0, 72e6 + cells * 25.0) : 0.0;
     return kept + around + bins;

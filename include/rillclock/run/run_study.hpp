@@ -11,6 +11,7 @@
 
 namespace rillclock {
 
+/// How a study is run; no figure depends on it.
 struct RunOptions {
     bool replace = false;          ///< whether a result that is already there may be replaced
     unsigned threads = 0;          ///< 0 for as many as may be used

@@ -2,6 +2,9 @@
 
 #include <catch2/catch.hpp>
 
+#include <cstddef>
+#include <vector>
+
 namespace rillclock {
 namespace {
 
@@ -18,6 +21,12 @@ TEST_CASE("every table of n says its source, and every row is in order and no sh
             CHECK(row.greatest <= 0.15);
         }
     }
+}
+
+TEST_CASE("the tables have the rows that tests/published/roughness.txt holds one by one") {
+    std::vector<std::size_t> rows;
+    for (const RoughnessTable& table : roughness_tables()) rows.push_back(table.entries.size());
+    CHECK(rows == std::vector<std::size_t>{7, 17, 8, 11, 10});
 }
 
 TEST_CASE("streets come first: a troweled concrete gutter has 0.012 and rough asphalt 0.016") {

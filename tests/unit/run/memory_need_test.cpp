@@ -11,6 +11,7 @@ TEST_CASE("memory grows by the bytes of a cell, and what surrounds them is fille
     CHECK(memory_need({.cells = 1'000'000'000}) == Approx(20.35e9));
     CHECK(memory_need({.cells = 1'000'000'000, .wide_elevations = true}) == Approx(30.35e9));
     CHECK(memory_need({.cells = 1'000'000'000, .soil_raster = true}) == Approx(21.35e9));
+    CHECK(memory_need({.cells = 1'000'000'000, .results_kept = true}) == Approx(43.35e9));
 }
 
 TEST_CASE("storms of their own add a bin a cell, fewer once cells share them") {

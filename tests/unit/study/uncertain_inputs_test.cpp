@@ -4,6 +4,7 @@
 
 #include <cmath>
 #include <limits>
+#include <memory>
 
 #include "rillclock/core/error.hpp"
 #include "rillclock/study/study_file.hpp"
@@ -104,6 +105,31 @@ TEST_CASE("a value changes what it stands for and nothing else") {
     // NRCS: P2^-0.5.
     CHECK(setting.rules.sheet.storm_factor == Approx(base.rules.sheet.storm_factor / 1.2).epsilon(1e-12));
     CHECK(setting.intensity_factor == 1.44);
+}
+
+TEST_CASE("a factor on the speed of shallow flow acts on a chart as it does on k") {
+    const VelocityLine line{.surface = "grass", .points = {{0.01, metres_per_second(0.2)}, {0.1, metres_per_second(0.8)}}};
+    const TravelSetting base{.rules = {}, .classes = {{.sheet_n = 0.2, .shallow_k = metres_per_second(2),
+                                                       .shallow_line = std::make_shared<const VelocityLine>(line)}}};
+    TravelSetting setting = base;
+    put_value(input_of(UncertainKind::shallow_speed, 0.75, 1.0, 1.33), 0.75, base, setting);
+    CHECK(setting.classes.front().shallow_k == metres_per_second(1.5));
+    for (const double slope : {0.002, 0.01, 0.03, 0.5}) {
+        CHECK(setting.classes.front().shallow_line->at(slope) / line.at(slope) == Approx(0.75).epsilon(1e-12));
+    }
+    CHECK(base.classes.front().shallow_line->points.front().velocity == metres_per_second(0.2));
+}
+
+TEST_CASE("what the draws cannot follow is refused with the reason and the way out") {
+    Study tail = asking("");
+    tail.timing.ignore_tail = 0.01;
+    CHECK_THROWS_WITH(check_uncertainty(tail), Catch::Contains("when which share of the area has arrived") && Catch::Contains("Remove ignore_tail"));
+    Study storm = asking("");
+    storm.timing.channel.design_storm = true;
+    CHECK_THROWS_WITH(check_uncertainty(storm), Catch::Contains("all water that arrives above it") && Catch::Contains("run the study once with each"));
+    Study chart = asking("");
+    chart.timing.shallow = ShallowRule::chart;
+    CHECK_NOTHROW(check_uncertainty(chart));
 }
 
 }  // namespace

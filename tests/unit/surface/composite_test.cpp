@@ -63,7 +63,7 @@ TEST_CASE("a retardance is that of the surface that prevails, never a mean of tw
     const std::vector<LandShare> alike{share(0, CellSoil::b, 100), share(1, CellSoil::b, 100)};
     CHECK(prevailing(alike, town, &CoverClass::kerby_n, "kerby_n").value == 0.4);
     CHECK(prevailing(land, town, &CoverClass::izzard_c, "izzard_c").lacking == "the cover book has no izzard_c for Lawn");
-    CHECK(composite_impervious(land, town).lacking == "the cover book has no impervious for Lawn");
+    CHECK(composite_impervious(land, town).lacking == "the cover book has no impervious_percent for Lawn");
     const std::vector<LandShare> water{share(3, CellSoil::b, 1)};
     CHECK_FALSE(prevailing(water, town, &CoverClass::kerby_n, "kerby_n").value);
 }

@@ -236,15 +236,20 @@ TEST_CASE("runoff coefficients by soil group rise from A to D and lie between 0 
 
 TEST_CASE("numbers for the lump methods keep to their ranges") {
     const std::string begin =
-        "code,name,n_typical,shallow_type,source,kerby_n,izzard_c,impervious,county_k\n1,Lawn,0.2,pavement,here,";
-    const CoverBook town = parse_cover_book(begin + "0.4,0.046,0,0.53", "town.csv");
+        "code,name,n_typical,shallow_type,source,kerby_n,izzard_c,impervious_percent,county_k\n1,Lawn,0.2,pavement,here,";
+    const CoverBook town = parse_cover_book(begin + "0.4,0.046,35,0.53", "town.csv");
     CHECK(town.find(1)->kerby_n == 0.4);
     CHECK(town.find(1)->izzard_c == 0.046);
-    CHECK(town.find(1)->impervious == 0);
+    CHECK(town.find(1)->impervious == 0.35);
     CHECK(town.find(1)->county_k == 0.53);
     CHECK_THROWS_WITH(parse_cover_book(begin + "1.4,,,", "town.csv"), Contains("column 6 (kerby_n) is 1.4; it is at most 1"));
     CHECK_THROWS_WITH(parse_cover_book(begin + ",0,,", "town.csv"), Contains("column 7 (izzard_c)"));
-    CHECK_THROWS_WITH(parse_cover_book(begin + ",,35,", "town.csv"), Contains("the share of the area from 0 to 1"));
+    CHECK_THROWS_WITH(parse_cover_book(begin + ",,101,", "town.csv"), Contains("(impervious_percent) is 101; a share lies between 0 and 100 %"));
+}
+
+TEST_CASE("an impervious share without its unit is refused, with the right form") {
+    CHECK_THROWS_WITH(parse_cover_book("code,name,n_typical,shallow_type,source,impervious\n1,Lawn,0.2,pavement,here,0.35\n", "town.csv"),
+                      Contains("town.csv, header, column 6: \"impervious\" does not say its unit; name it impervious_percent, and write 35"));
 }
 
 TEST_CASE("the book worldcover has the eleven classes of its legend, and says that its hydraulics are ours") {
