@@ -12,6 +12,7 @@ bool arrives_later(const Head& a, const Head& b, double storm_factor) {
 }
 
 void ArrivalBins::add(std::int64_t second, const Bin& bin, double storm_factor) {
+    area_ += bin.area;
     const auto [at, is_new] = bins_.try_emplace(second, bin);
     if (is_new) return;
     at->second.area += bin.area;
@@ -28,14 +29,8 @@ void ArrivalBins::add(const Head& head, FixedArea area, double storm_factor) {
 
 void ArrivalBins::take(ArrivalBins&& other, double storm_factor) {
     // The larger map stays where it is, so that a long chain of points costs little.
-    if (other.bins_.size() > bins_.size()) std::swap(bins_, other.bins_);
+    if (other.bins_.size() > bins_.size()) std::swap(*this, other);
     for (const auto& [second, bin] : other.bins_) add(second, bin, storm_factor);
-}
-
-FixedArea ArrivalBins::area() const {
-    FixedArea sum = 0;
-    for (const auto& [key, bin] : bins_) sum += bin.area;
-    return sum;
 }
 
 Head ArrivalBins::by_share(double share) const {

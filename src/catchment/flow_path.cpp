@@ -42,6 +42,7 @@ std::vector<Cell> flow_path(const Raster<FlowCode>& codes, Cell head, Cell end) 
 
 std::vector<PathPiece> path_pieces(const PathGround& ground, std::span<const PathCell> path) {
     std::vector<PathPiece> pieces;
+    pieces.reserve(path.size() + 1);   // sheet flow ends within one step, as a rule
     for (std::size_t position = 0; position + 1 < path.size(); ++position) {
         const StepView& step = path[position].step;
         const StepParts parts = step_parts(step, ground.rules);
@@ -80,13 +81,13 @@ double profile_area_m2(const PathGround& ground, std::span<const PathCell> path)
 
 }  // namespace
 
-PathSummary summary_of(const PathGround& ground, std::span<const PathCell> path) {
+PathSummary summary_of(const PathGround& ground, std::span<const PathCell> path, std::span<const PathPiece> pieces) {
     PathSummary summary;
     summary.length = path.front().flow_distance - path.back().flow_distance;
     summary.time = path.front().time_to_root - path.back().time_to_root;
     summary.fall_m = (path.front().spill - path.back().spill) * ground.metres_per_elevation_unit;
     summary.profile_area_m2 = profile_area_m2(ground, path);
-    for (const PathPiece& piece : path_pieces(ground, path)) {
+    for (const PathPiece& piece : pieces) {
         summary.slope_length_m += piece.part.slope * piece.part.length_m;
         if (piece.part.ponded) summary.ponded_length_m += piece.part.length_m;
         if (is_on_floor(piece, ground.rules.slope)) summary.floor_length_m += piece.part.length_m;

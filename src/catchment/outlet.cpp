@@ -11,8 +11,8 @@ PointPath path_of(const PathCells& cells, const PathGround& ground, const Segmen
     PointPath path;
     for (const PathCell& cell : cells) path.cells.push_back(cell.cell);
     path.pieces = path_pieces(ground, cells);
-    path.segments = segments_of(ground, cells, rules);
-    path.summary = summary_of(ground, cells);
+    path.segments = segments_of(ground, cells, path.pieces, rules);
+    path.summary = summary_of(ground, cells, path.pieces);
     path.doubts = doubts_of(ground, path.pieces);
     path.seconds = in_seconds(path.summary.time.under(ground.storm_factor));
     for (const Segment& segment : path.segments) path.end_to_end_s += segment.end_to_end_s;

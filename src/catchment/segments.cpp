@@ -88,8 +88,8 @@ void set_equivalents(const Sums& sums, const SurfaceHydraulics& surface, const S
 
 class Cutting {
 public:
-    Cutting(const PathGround& ground, std::span<const PathCell> path)
-        : ground_(ground), rules_(ground.rules), path_(path), pieces_(path_pieces(ground, path)) {}
+    Cutting(const PathGround& ground, std::span<const PathCell> path, std::span<const PathPiece> pieces)
+        : ground_(ground), rules_(ground.rules), path_(path), pieces_(pieces) {}
 
     [[nodiscard]] std::vector<Segment> segments(const SegmentRules& by) const {
         const double length = from_fixed(path_.front().flow_distance - path_.back().flow_distance);
@@ -189,14 +189,14 @@ private:
     const PathGround& ground_;
     const TravelRules& rules_;
     std::span<const PathCell> path_;
-    std::vector<PathPiece> pieces_;
+    std::span<const PathPiece> pieces_;
 };
 
 }  // namespace
 
-std::vector<Segment> segments_of(const PathGround& ground, std::span<const PathCell> path,
+std::vector<Segment> segments_of(const PathGround& ground, std::span<const PathCell> path, std::span<const PathPiece> pieces,
                                  const SegmentRules& segment_rules) {
-    return Cutting(ground, path).segments(segment_rules);
+    return Cutting(ground, path, pieces).segments(segment_rules);
 }
 
 }  // namespace rillclock

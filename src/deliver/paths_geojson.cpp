@@ -53,10 +53,18 @@ void add_path(const StudyResult& result, const Outlet& outlet, GeographicLines& 
 
 }  // namespace
 
+std::string words_on_left_out_paths(std::size_t points) {
+    if (points <= most_points_with_paths) return {};
+    return "governing_paths.geojson and longest_paths.geojson hold the paths of the last points alone, since there are more than " +
+           std::to_string(most_points_with_paths) + " points; study.gpkg holds those of all";
+}
+
 std::string paths_geojson(const StudyResult& result, PathKind kind) {
+    const bool of_last_alone = result.outlets.size() > most_points_with_paths;
     GeographicLines lines(result.system);
     Json features = Json::array();
     for (const Outlet& outlet : result.outlets) {
+        if (of_last_alone && outlet.next != 0) continue;
         if (kind == PathKind::governing) add_segments(result, outlet, lines, features);
         if (kind == PathKind::longest) add_path(result, outlet, lines, features);
     }

@@ -12,6 +12,7 @@
 #include "rillclock/catchment/outlet_notices.hpp"
 #include "rillclock/catchment/tiled_outlets.hpp"
 #include "rillclock/deliver/headlines.hpp"
+#include "rillclock/deliver/paths_geojson.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/run/review_words.hpp"
 #include "rillclock/study/scenario.hpp"
@@ -41,6 +42,13 @@ Notices notices_of(const std::vector<Outlet>& outlets, const Grid& grid) {
         all.insert(all.end(), more.begin(), more.end());
     }
     return all;
+}
+
+Notices notices_of_files(const std::vector<Outlet>& outlets) {
+    const std::string left_out = words_on_left_out_paths(outlets.size());
+    if (left_out.empty()) return {};
+    return {{.code = "paths-left-out", .text = left_out, .value = static_cast<double>(outlets.size()),
+             .threshold = static_cast<double>(most_points_with_paths)}};
 }
 
 /// Everything that was noticed on the way, by effect on the time, the greatest first.
@@ -210,7 +218,7 @@ RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, co
     const std::vector<DrawnDifference> drawn = drawn_differences(laid.stated, points.points, *regions, *travel, terrain);
     const Notices notices = all_notices({terrain.notices, notices_of(depressions, ground.metres_per_elevation_unit), laid.zones.notices,
                                          zone_notices(rain, outlets, terrain.grid), notices_of_ranges(study, surface), surface.notices,
-                                         rain.notices, points.notices, notices_of(drawn, points.points), network.notices, peaks.notices, notices_of(outlets, terrain.grid)});
+                                         rain.notices, points.notices, notices_of(drawn, points.points), network.notices, peaks.notices, notices_of(outlets, terrain.grid), notices_of_files(outlets)});
     const CarriedWords reviewed = carry_over(words, notices);
     const std::vector<InputFile> inputs = inputs_of();
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};

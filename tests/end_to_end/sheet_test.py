@@ -1,6 +1,7 @@
 #!/usr/bin/python3
 """The calculation sheet, read as a reviewer reads it: every line is recomputed from the numbers that stand on it, to 0.1 %."""
 import ast
+import json
 import math
 import operator
 import re
@@ -259,9 +260,15 @@ class Many(CommandTest):
         study = (self.folder / "study.toml")
         study.write_text('[terrain]\nelevation = "dem.tif"\n[surface]\ncover = "cover.tif"\nbook = "book.csv"\n[points]\n'
                          'file = "points.geojson"\nmove_within = "0 m"\n[rain]\ntwo_year_24_hour = "90 mm"\n')
+        self.assertIn("more than 500 points", self.done("check", "study.toml"))
         self.done("run", "study.toml")
         rows = table(self.folder / "result/tables/outlets.csv")
         self.assertEqual(len(rows), 667)
+        last = {row["subarea"] for row in table(self.folder / "result/tables/handover.csv") if not row["next_point"]}
+        for name in ("governing_paths", "longest_paths"):
+            features = json.loads((self.folder / f"result/{name}.geojson").read_text())["features"]
+            self.assertEqual({feature["properties"]["point"] for feature in features}, last, name)
+        self.assertIn("paths-left-out", {row["notice"] for row in table(self.folder / "result/tables/review.csv")})
         files = {file.name for file in (self.folder / "result/tables/sheets").iterdir()}
         largest = sorted(rows, key=lambda row: (-float(row["area_ac"]), int(row["number"])))[:500]
         self.assertEqual(len(files), 500)

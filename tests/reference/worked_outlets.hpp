@@ -52,10 +52,10 @@ public:
         return path_pieces(ground(), cells(path));
     }
     [[nodiscard]] std::vector<Segment> segments(const std::vector<Cell>& path) const {
-        return segments_of(ground(), cells(path), asked.rules.segments);
+        return segments_of(ground(), cells(path), pieces(path), asked.rules.segments);
     }
     [[nodiscard]] PathSummary summary(const std::vector<Cell>& path) const {
-        return summary_of(ground(), cells(path));
+        return summary_of(ground(), cells(path), pieces(path));
     }
 
     const Land land;

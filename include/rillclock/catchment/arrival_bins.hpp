@@ -28,7 +28,7 @@ public:
     /// Adds cells that were gathered elsewhere: all of one second of time to the root, `second`.
     void add(std::int64_t second, const Bin& bin, double storm_factor);
     void take(ArrivalBins&& other, double storm_factor);
-    [[nodiscard]] FixedArea area() const;
+    [[nodiscard]] FixedArea area() const { return area_; }
     /// The last cell of the least set of bins, earliest first, that holds at least `share` of the area: no later than a second
     /// after the exact answer, and itself the time of a cell.
     [[nodiscard]] Head by_share(double share) const;
@@ -40,6 +40,7 @@ public:
 
 private:
     std::map<std::int64_t, Bin> bins_;
+    FixedArea area_ = 0;   ///< of all bins
 };
 
 }  // namespace rillclock

@@ -41,6 +41,7 @@ struct PathSummary {
     [[nodiscard]] double share_of_length(double part_m) const;
 };
 
-[[nodiscard]] PathSummary summary_of(const PathGround& ground, std::span<const PathCell> path);
+/// `pieces` are those of the path.
+[[nodiscard]] PathSummary summary_of(const PathGround& ground, std::span<const PathCell> path, std::span<const PathPiece> pieces);
 
 }  // namespace rillclock

@@ -58,8 +58,8 @@ struct SegmentRules {
 
 /// Cuts a path where the regime changes, the surface class (not in channels), where u jumps in sheet flow, where a channel's area has
 /// grown 1.5 ×, where one mapped section ends, where a chart of shallow flow passes a point, and where the slope class changes for longer than the shortest segment. Sheet flow is not cut by slope: its
-/// formula is a function of u alone, and exact over any mixture of slopes.
-[[nodiscard]] std::vector<Segment> segments_of(const PathGround& ground, std::span<const PathCell> path,
+/// formula is a function of u alone, and exact over any mixture of slopes. `pieces` are those of the path.
+[[nodiscard]] std::vector<Segment> segments_of(const PathGround& ground, std::span<const PathCell> path, std::span<const PathPiece> pieces,
                                                const SegmentRules& segment_rules);
 
 /// The slope classes' upper bounds, rise over run.

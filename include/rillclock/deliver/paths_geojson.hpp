@@ -1,5 +1,6 @@
 #pragma once
 
+#include <cstddef>
 #include <string>
 
 #include "rillclock/deliver/study_result.hpp"
@@ -9,7 +10,14 @@ namespace rillclock {
 /// Which of a point's two paths.
 enum class PathKind { governing, longest };
 
-/// Paths of all points as GeoJSON after RFC 7946: longitude and latitude on WGS 84 with seven decimals (about a centimetre), a
+/// Beyond so many points the files of paths hold those of the last points alone, from which no water goes on to another: paths to points
+/// along one stream lie upon one another, and text files of thousands of them open nowhere. study.gpkg holds all.
+inline constexpr std::size_t most_points_with_paths = 500;
+
+/// Whether the paths of the last points alone are written, and the sentence that says so; empty where all are.
+[[nodiscard]] std::string words_on_left_out_paths(std::size_t points);
+
+/// Paths of the points as GeoJSON after RFC 7946: longitude and latitude on WGS 84 with seven decimals (about a centimetre), a
 /// `bbox`, no `crs` member.
 ///
 /// Governing paths have a feature a segment; longest paths a feature a path. Coordinates run downstream, neighbouring segments share
