@@ -22,7 +22,7 @@ def is_described(element, parents):
 
 def says_all_itself(name, arguments, owner):
     """Accessors without arguments, constructors, operators, deduction guides: what they do is said where their type is."""
-    is_special = name == owner or name.startswith(("~", "operator", "explicit(")) or "->" in arguments
+    is_special = name == owner or arguments.endswith("=delete") or name.startswith(("~", "operator", "explicit(")) or "->" in arguments
     return is_special or bool(re.match(r"\(\)( const)?( noexcept)?( override)?(=0| =0)?$", arguments.strip()))
 
 
