@@ -17,13 +17,18 @@ SHALLOW_FT_S = {"pavement": 20.328, "grassed waterway": 16.135, "nearly bare": 9
                 "short-grass pasture": 6.962, "contour crops or woodland": 5.032, "forest litter or hay meadow": 2.516}
 
 
+def shallow_k(row):
+    """Velocity of shallow flow at slope 1 of a class of a cover book, in m/s."""
+    return float(row["shallow_k_m_s"]) if row.get("shallow_k_m_s") else SHALLOW_FT_S[row["shallow_type"]] * FOOT
+
+
 def redrawn_book(book, draw):
     """The rows of a cover book with the roughness and shallow speed of a draw."""
     rows = []
     for row in book:
         if not row["water_depth_m"]:
             n = draw.get("n of " + row["name"], row["n_typical"])
-            k = float(row["shallow_k_m_s"]) if row.get("shallow_k_m_s") else SHALLOW_FT_S[row["shallow_type"]] * FOOT
+            k = shallow_k(row)
             row = row | {"n_low": n, "n_typical": n, "n_high": n, "shallow_type": "",
                          "shallow_k_m_s": repr(k * float(draw["speed of shallow flow factor"]))}
         rows.append(row)
@@ -107,16 +112,16 @@ class DemoWithRanges(CommandTest):
             writer = csv.writer(file)
             writer.writerow(["slope"] + [row["name"] + "_m_s" for row in dry])
             for slope in (0.005, 0.2):
-                writer.writerow([slope] + [repr(SHALLOW_FT_S[row["shallow_type"]] * FOOT * slope ** 0.6 * factor) for row in dry])
+                writer.writerow([slope] + [repr(shallow_k(row) * slope ** 0.6 * factor) for row in dry])
 
     def test_draws_under_a_chart_run_again_with_its_velocities_times_the_factor(self):
         book = table(self.town / "cover-book.csv")
         charted = '[timing]\nshallow = "chart"\nvelocity_chart = "chart.csv"\n'
         self.write_chart("chart.csv", book, 1.0)
         study = self.plain.replace("[timing]\n", charted).replace('shallow = "by cover"\n', "")
-        (self.town / "study.toml").write_text(study + "\n[uncertainty]\ndraws = 5\n")
+        (self.town / "study.toml").write_text(study + "\n[uncertainty]\ndraws = 10\n")
         self.done("run", "town/study.toml", "--replace")
-        for draw in self.tables("draws.csv"):
+        for draw in self.tables("draws.csv")[:4]:
             write_book(self.town / "redrawn.csv", redrawn_book(book, draw))
             self.write_chart("chart.csv", book, float(draw["speed of shallow flow factor"]))
             (self.town / "redrawn.toml").write_text(redrawn_study(draw).replace("[timing]\n", charted))

@@ -33,15 +33,31 @@ class Package(unittest.TestCase):
         for file in ("bash-completion/completions/rillclock", "zsh/site-functions/_rillclock", "fish/vendor_completions.d/rillclock.fish"):
             self.assertIn("explain", (root / "share" / file).read_text())
 
+    def check_examples(self, built):
+        """The ladder of examples, each with what it must print."""
+        study = self.folder / "town/study.toml"
+        for example, words, says in (
+                ("1_one_raster", (), r"the slowest water takes (\d+\.?\d*) min, from row 0, column 0\n"),
+                ("2_formulas_by_hand", (), r"sheet 0\.30 h, shallow 0\.24 h, channel 0\.99 h, together 1\.53 h\n"),
+                # The trace of design values: 14.184, 13.239, 13.071, 13.041, 13.034 min.
+                ("3_storm_for_a_time", (), r"(?s)computed 14\.184.*computed 13\.239.*computed 13\.071.*computed 13\.041.*5\.10 in/h, computed 13\.034.*settled"),
+                ("4_study_and_its_result", (study,), r"(?s)'Weir' drains 232 ac.*Weir: 77\.\d+ min.*600 rows of 500 cells"),
+                # 50 steps of 2 m at 0.1 m/s, then 299 of 2 m at 1 m/s.
+                ("5_method_of_your_own", (), r"takes 1598 s\n")):
+            self.assertRegex(do(built / example, *words), says)
+
     def test_installed_it_runs_and_another_project_finds_and_uses_it(self):
         root = self.folder / "root"
         do("cmake", "--install", BUILD, "--prefix", root)
         self.check_command(root)
         other = self.folder / "other"
-        do("cmake", "-S", SOURCE / "tests/package/uses_library", "-B", other, "-G", "Ninja", f"-DCMAKE_PREFIX_PATH={root}",
+        do("cmake", "-S", SOURCE / "scripts/examples", "-B", other, "-G", "Ninja", f"-DCMAKE_PREFIX_PATH={root}",
            f"-DCMAKE_CXX_COMPILER_LAUNCHER={LAUNCHER}")
         do("cmake", "--build", other)
-        self.assertIn("'Weir' drains 93.91 ha", do(other / "uses_rillclock", self.folder / "town/study.toml"))
+        self.check_examples(other)
+        for module in root.glob("lib/python*/dist-packages/rillclock*.so"):   # where the build has it
+            said = do("/usr/bin/python3", "-c", "import rillclock; print(rillclock.__version__)", env=os.environ | {"PYTHONPATH": str(module.parent)})
+            self.assertRegex(said, r"^\d+\.\d+\.\d+\n$")
 
     def test_the_debian_package_holds_the_command_and_says_what_it_needs(self):
         do("cpack", "--config", BUILD / "CPackConfig.cmake", "-B", self.folder / "packed", cwd=self.folder)

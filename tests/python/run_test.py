@@ -19,7 +19,7 @@ def result(town, tmp_path_factory):
 
 
 def test_the_result_is_that_of_the_command_file_by_file(town, result):
-    subprocess.run([support.COMMAND, "run", "study.toml", "--quiet", "--replace"], cwd=town, check=True, capture_output=True)
+    subprocess.run([support.COMMAND, "run", str(town / "study.toml"), "--quiet", "--replace"], check=True, capture_output=True)
     files = sorted(p.relative_to(result.folder) for p in result.folder.rglob("*") if p.is_file())
     assert len(files) > 30
     for file in files:

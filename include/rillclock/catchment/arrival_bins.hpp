@@ -20,13 +20,16 @@ struct Head {
 /// Area by time of arrival, in bins of one second of time to the root; each bin knows its last cell.
 class ArrivalBins {
 public:
+    /// The area of one second, and its last cell.
     struct Bin {
         FixedArea area = 0;
         Head last;
     };
+    /// Adds a cell of that area, whose bin follows from its time under the storm factor.
     void add(const Head& head, FixedArea area, double storm_factor);
     /// Adds cells that were gathered elsewhere: all of one second of time to the root, `second`.
     void add(std::int64_t second, const Bin& bin, double storm_factor);
+    /// Adds all bins of another set of cells.
     void take(ArrivalBins&& other, double storm_factor);
     [[nodiscard]] FixedArea area() const { return area_; }
     /// The last cell of the least set of bins, earliest first, that holds at least `share` of the area: no later than a second

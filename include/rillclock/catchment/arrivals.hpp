@@ -13,7 +13,9 @@ namespace rillclock {
 /// that the order in which they were added does not show.
 class Front {
 public:
+    /// Adds a cell; those that it exceeds in both parts go.
     void add(const Head& head);
+    /// Adds all cells of another front.
     void add(const Front& other);
     [[nodiscard]] const std::vector<Head>& heads() const { return heads_; }
     /// The head that arrives last. The front must not be empty.
@@ -43,9 +45,11 @@ struct Arrivals {
     StormBins storm_bins;       ///< where each point has its own
     CatchmentGround ground;     ///< where it was looked at
 
+    /// Adds a cell; the storm factor tells its bin where one storm times all points.
     void add(const ArrivingCell& cell, double storm_factor);
     /// All but the bins of a cell.
     void add_unbinned(const ArrivingCell& cell);
+    /// Adds another set of cells, which it uses up.
     void add(Arrivals&& other, double storm_factor);
 
 private:

@@ -18,6 +18,7 @@ public:
     void add(std::uint8_t cover, CellSoil soil, FixedArea area, double slope, double elevation_m);
     /// Counts an area to a zone of rain, 0 being outside of all.
     void add_to_zone(std::uint8_t zone, FixedArea area);
+    /// Adds the ground of other cells.
     void add(const CatchmentGround& other);
 
     /// Cells and area by cover class, soil group and slope of the land.

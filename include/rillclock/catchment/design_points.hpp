@@ -29,6 +29,7 @@ struct DesignPoint {
     std::optional<FixedArea> surveyed = {};  ///< contributing area by survey
 };
 
+/// Points in the order of their file, each on a cell of its own, and what was noticed.
 struct PlacedPoints {
     std::vector<DesignPoint> points;   ///< numbered from 1 in this order, which is that of the file
     Notices notices;

@@ -47,6 +47,7 @@ public:
     explicit DrainageNetwork(std::vector<NetworkPoint> points);
 
     [[nodiscard]] std::size_t size() const { return points_.size(); }
+    /// The next point below, or at the end of a stated way; 0 where there is none.
     [[nodiscard]] PointNumber next_of(PointNumber number) const { return points_[number - 1].next; }
     /// The subareas that drain through a point, by number, its own included.
     [[nodiscard]] std::vector<PointNumber> above(PointNumber number) const;
@@ -60,6 +61,7 @@ public:
     [[nodiscard]] StepTime to_root(PointNumber number) const { return points_[number - 1].to_root + shift(number); }
     /// The time from the last cell of a point's own subarea to the point.
     [[nodiscard]] FixedTime own_time(PointNumber number, double storm_factor) const;
+    /// All subareas above a point, its own included, by their arrival under a storm factor.
     [[nodiscard]] PointArrivals arrivals_at(PointNumber number, double storm_factor) const;
 
 private:

@@ -43,6 +43,7 @@ private:
 [[nodiscard]] CellRuns cells_of(std::span<const Polygon> polygons, const Grid& grid, const Raster<FlowCode>& codes);
 /// The cells that outlines enclose, holes left out.
 [[nodiscard]] CellRuns cells_of(std::span<const CornerPolygon> outlines, const Grid& grid);
+/// Ground area of the cells.
 [[nodiscard]] FixedArea area_of(const CellRuns& cells, const Grid& grid, const Ground& ground);
 
 /// Where water leaves a drawn catchment: those cells of it whose water goes on outside of it, or off the data, and that are lowest, or

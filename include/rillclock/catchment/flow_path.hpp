@@ -38,10 +38,11 @@ struct PathSummary {
     [[nodiscard]] double fall_ratio() const;
     /// Of the straight line from the end that has the same area under it as the profile; 0 where the path has no length.
     [[nodiscard]] double equal_area_slope() const;
+    /// A part of the path's length in metres as a share of the whole, 0 to 1; 0 where the path has no length.
     [[nodiscard]] double share_of_length(double part_m) const;
 };
 
-/// `pieces` are those of the path.
+/// Sums up a path; `pieces` are its own. Cost: its length.
 [[nodiscard]] PathSummary summary_of(const PathGround& ground, std::span<const PathCell> path, std::span<const PathPiece> pieces);
 
 }  // namespace rillclock

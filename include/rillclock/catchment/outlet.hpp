@@ -65,6 +65,7 @@ struct Outlet {
     [[nodiscard]] bool touches_edge() const { return border_cells > 0; }
 };
 
+/// What a study says of how points are worked out.
 struct OutletRules {
     double ignore_tail = 0.0;      ///< share of the area, last to arrive, that is left out
     SegmentRules segments;

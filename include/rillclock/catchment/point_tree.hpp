@@ -16,6 +16,7 @@ struct PointTree {
     std::vector<PointNumber> next;           ///< by number − 1: the next point below; 0 none
     std::vector<PointNumber> upstream_first; ///< all numbers, each before its next
 
+    /// The next point below; 0 where there is none.
     [[nodiscard]] PointNumber next_of(PointNumber number) const { return next[number - 1]; }
     /// By number, from 0: the last point on the way down from each; entry 0 is 0.
     [[nodiscard]] std::vector<PointNumber> last_points() const;

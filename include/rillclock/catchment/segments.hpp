@@ -51,6 +51,7 @@ struct Segment {
     [[nodiscard]] double end_to_end_slope() const { return whole_length_m() > 0 ? fall_m / whole_length_m() : 0.0; }
 };
 
+/// How short a segment may be.
 struct SegmentRules {
     Length shortest = metres(50);      ///< a run of one slope class shorter than this joins its neighbour
     double shortest_share = 0.0;       ///< of the path's length, where that is more

@@ -16,7 +16,9 @@ namespace rillclock {
 /// of cells past sheet flow share their storm part.
 class StormBins {
 public:
+    /// Adds a cell of that area; the reference storm decides which head of a bin is kept.
     void add(const Head& head, FixedArea area, double reference_factor);
+    /// Adds all bins of another set of cells.
     void take(StormBins&& other, double reference_factor);
     /// The arrivals under one storm.
     [[nodiscard]] ArrivalBins under(double storm_factor) const;

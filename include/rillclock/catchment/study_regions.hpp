@@ -36,6 +36,7 @@ struct IsochroneBand {
     std::vector<IsochronePart> parts = {};   ///< by number; their areas add up to its own
 };
 
+/// Which isochrones are made.
 struct IsochroneRules {
     Duration step;
     std::size_t most_bands = 100'000;
@@ -62,11 +63,13 @@ public:
     /// To be called once, after the last strip.
     void finish();
 
+    /// Outline of a point's own subarea, in corners of cells.
     [[nodiscard]] std::vector<CornerPolygon> subarea(PointNumber number) const;
     /// With all that drains through the points above.
     [[nodiscard]] std::vector<CornerPolygon> catchment(PointNumber number) const;
     /// Subareas first; by point, then by time.
     [[nodiscard]] const std::vector<IsochroneBand>& bands() const { return bands_; }
+    /// Outline of a band, in corners of cells.
     [[nodiscard]] std::vector<CornerPolygon> outline(const IsochroneBand& band) const;
     [[nodiscard]] const std::optional<IsochroneRules>& isochrones() const { return isochrones_; }
 

@@ -24,8 +24,11 @@ private:
     Fault fault_;
 };
 
+/// A fault of a file, the study or a value in it.
 [[nodiscard]] inline Error input_error(const std::string& sentence) { return {Fault::inputs, sentence}; }
+/// A fault of disk, memory, permission or installation.
 [[nodiscard]] inline Error machine_error(const std::string& sentence) { return {Fault::machine, sentence}; }
+/// A fault of ours; the sentence is lengthened by a request to report it.
 [[nodiscard]] inline Error bug(const std::string& sentence) {
     return {Fault::bug, sentence + " (this is a fault of rillclock itself; please report it)"};
 }

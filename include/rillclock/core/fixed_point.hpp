@@ -24,7 +24,9 @@ inline constexpr double fixed_units_per_one = 1048576.0;  // 2^20
 /// The SI value of a fixed-point number, exact below 2⁵³ units (about 270 years, or 8.6 million kilometres).
 [[nodiscard]] constexpr double from_fixed(std::int64_t units) { return static_cast<double>(units) / fixed_units_per_one; }
 
+/// Square metres to the nearest square centimetre.
 [[nodiscard]] constexpr FixedArea to_fixed_area(double square_metres) { return nearest_whole(square_metres * 1e4); }
+/// In square metres.
 [[nodiscard]] constexpr double from_fixed_area(FixedArea area) { return static_cast<double>(area) / 1e4; }
 
 }  // namespace rillclock

@@ -23,6 +23,7 @@ struct Notice {
     double effect_s = 0.0;            ///< how many seconds of travel time hang on it; 0 where that has no answer
 };
 
+/// What was noticed, in an order that its maker states.
 using Notices = std::vector<Notice>;
 
 }  // namespace rillclock

@@ -17,17 +17,21 @@ struct QuantityAsked {
     Sign sign = Sign::positive;
 };
 
-/// Quantities from texts of a number and a unit: "100 ft", "3.4 in", "4 ha", "5 min", "2 m/s", "1.2 in/h", "0.5 %".
+/// @name Quantities from texts
+///
+/// Texts of a number and a unit: "100 ft", "3.4 in", "4 ha", "5 min", "2 m/s", "1.2 in/h", "0.5 %".
 ///
 /// Numbers have a decimal point whatever the locale. Units are spelled exactly: m km cm mm ft in mi yd "us survey ft";
 /// m2 ha km2 ac ft2 mi2 (also with ²); s min h; m/s ft/s; mm/h in/h; %. "ft" is the international foot.
 /// Each throws an input error for a number that is missing, not finite or of the wrong sign, and for a unit that is
 /// missing, unknown or of another dimension; the sentence shows the right form and lists the units.
+///@{
 [[nodiscard]] Length length_from_text(std::string_view text, const QuantityAsked& asked);
 [[nodiscard]] Area area_from_text(std::string_view text, const QuantityAsked& asked);
 [[nodiscard]] Duration duration_from_text(std::string_view text, const QuantityAsked& asked);
 [[nodiscard]] Speed speed_from_text(std::string_view text, const QuantityAsked& asked);
 [[nodiscard]] Intensity intensity_from_text(std::string_view text, const QuantityAsked& asked);
+///@}
 /// "0.5 %" is 0.005.
 [[nodiscard]] double fraction_from_text(std::string_view text, const QuantityAsked& asked);
 /// A bare number, as in a column whose header names the unit; the errors are those above.

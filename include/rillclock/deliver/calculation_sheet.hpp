@@ -10,6 +10,7 @@ namespace rillclock {
 
 /// One line of a calculation sheet.
 struct SheetLine {
+    /// How a line is set.
     enum class Kind {
         title,
         heading,

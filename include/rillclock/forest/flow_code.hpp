@@ -13,7 +13,9 @@ using FlowCode = std::uint8_t;
 inline constexpr FlowCode flow_root = 8;  ///< water leaves the data here, or stays
 inline constexpr FlowCode flow_void = 9;  ///< no data, no flow
 
+/// The code of a cell that drains in a direction.
 [[nodiscard]] constexpr FlowCode flow_code(Direction d) { return static_cast<FlowCode>(d); }
+/// Whether the cell drains to a neighbour; else it is a root or void.
 [[nodiscard]] constexpr bool is_direction(FlowCode code) { return code < 8; }
 
 }  // namespace rillclock

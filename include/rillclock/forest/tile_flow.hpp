@@ -28,6 +28,7 @@ struct TileEntry {
 /// Cost: linear in the cells of the tile.
 class TileFlow {
 public:
+    /// Reads the flow of the tile that is `window`.
     void read(const Raster<FlowCode>& codes, const Window& window);
 
     [[nodiscard]] Local size() const { return static_cast<Local>(down_.size()); }
@@ -39,8 +40,11 @@ public:
         const Local row = local / columns;
         return static_cast<Cell>((window_.row + row) * raster_columns_ + window_.column + (local - row * columns));
     }
+    /// The row of the whole raster.
     [[nodiscard]] std::int64_t row(Local local) const { return window_.row + local / static_cast<Local>(window_.columns); }
+    /// The cell of the tile it drains to, or `leaves_tile` or `ends_here`.
     [[nodiscard]] Local down(Local local) const { return down_[local]; }
+    /// The code it has in the raster.
     [[nodiscard]] FlowCode code(Local local) const { return code_[local]; }
     /// All cells but voids, each before the one it drains to.
     [[nodiscard]] std::span<const Local> order() const { return order_; }

@@ -72,6 +72,7 @@ struct Rule<up::First<L>> {
 
 }  // namespace tile_sweep_detail
 
+/// What a channel's values are: 64-bit integers for sums and distances, doubles for levels, 32-bit numbers for labels.
 template <class Channel>
 using SweptValue = typename tile_sweep_detail::Rule<Channel>::Value;
 
@@ -109,6 +110,7 @@ public:
     [[nodiscard]] auto part(const Channel& channel, Field& field) {
         return tile_sweep_detail::DownPart<DownBorders, Channel, Field>{*this, channel, field};
     }
+    /// The same of borders that are only read.
     template <class Channel, class Field>
     [[nodiscard]] auto part(const Channel& channel, Field& field) const {
         return tile_sweep_detail::DownPart<const DownBorders, Channel, Field>{*this, channel, field};
@@ -150,6 +152,7 @@ public:
     [[nodiscard]] auto part(const Channel& channel, Field& field) {
         return tile_sweep_detail::UpPart<UpBorders, Channel, Field>{*this, channel, field};
     }
+    /// The same of borders that are only read.
     template <class Channel, class Field>
     [[nodiscard]] auto part(const Channel& channel, Field& field) const {
         return tile_sweep_detail::UpPart<const UpBorders, Channel, Field>{*this, channel, field};

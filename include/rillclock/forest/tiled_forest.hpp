@@ -40,6 +40,7 @@ public:
     [[nodiscard]] Exit next(Exit exit) const { return next_[exit]; }
     /// All exits, each before its next.
     [[nodiscard]] std::span<const Exit> exit_order() const { return exit_order_; }
+    /// Where water of other tiles comes into a tile.
     [[nodiscard]] std::span<const Inlet> inlets(Tile tile) const {
         return std::span(inlets_).subspan(first_inlet_[tile], first_inlet_[tile + 1] - first_inlet_[tile]);
     }

@@ -22,11 +22,13 @@ public:
     explicit DownstreamTree(std::vector<Node> next);
 
     [[nodiscard]] std::size_t size() const { return next_.size(); }
+    /// The node that a node leads to, or `nowhere`.
     [[nodiscard]] Node next_of(Node node) const { return next_[node]; }
     /// Each node before the one it leads to.
     [[nodiscard]] std::vector<Node> upstream_first() const;
     /// The node itself and all that lead to it, each after the one it leads to.
     [[nodiscard]] std::span<const Node> above(Node node) const;
+    /// Whether the way down from a node meets another; a node is above itself.
     [[nodiscard]] bool is_above(Node node, Node below) const;
     /// From a node down to one below it, both included.
     [[nodiscard]] std::vector<Node> way(Node from, Node to) const;

@@ -6,6 +6,7 @@
 
 namespace rillclock {
 
+/// A node of a graph, numbered from 0.
 using Node = std::uint32_t;
 
 /// An undirected edge of a graph whose nodes are numbered from 0.

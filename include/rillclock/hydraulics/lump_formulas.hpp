@@ -25,6 +25,7 @@ struct AreaValue {
 /// of the land in percent. The lag is 0.6 of it (1900 in place of 1140).
 /// Source: NEH Part 630, chapter 15, 2010, equations 15-4a and 15-4b (values from memory).
 [[nodiscard]] Duration nrcs_lag_concentration(Length longest_path, double curve_number, double land_slope);
+/// The lag itself: with 1900 in place of 1140. Source: the same, 15-4a.
 [[nodiscard]] Duration nrcs_lag(Length longest_path, double curve_number, double land_slope);
 /// l[ft] = 209 A^0.6, A ac: the longest path where it was not measured. Source: the same, 15-5 (from memory).
 [[nodiscard]] Length nrcs_flow_length(Area area);
@@ -48,9 +49,9 @@ inline constexpr double california_sharifi_hosseini = 1.715;
 /// Kerby: t[min] = 0.828 (L N)^0.467 S^-0.235, L ft. Source: Kerby, Civil Engineering 29(3), 1959, with the constant and
 /// the powers of the Texas Department of Transportation, Hydraulic Design Manual.
 [[nodiscard]] Duration kerby(Length overland, double retardance, double slope);
-/// The same as printed elsewhere: t[min] = 0.83 (L N / √S)^0.467, and t[min] = (0.67 L N / √S)^0.467. The three agree
-/// within 1 % for slopes from 0.001 to 1.
+/// Kerby as printed elsewhere: t[min] = 0.83 (L N / √S)^0.467. It, the first and the third agree within 1 % for slopes from 0.001 to 1.
 [[nodiscard]] Duration kerby_by_root(Length overland, double retardance, double slope);
+/// Kerby with the constant inside: t[min] = (0.67 L N / √S)^0.467.
 [[nodiscard]] Duration kerby_with_two_thirds(Length overland, double retardance, double slope);
 
 /// A surface and a coefficient of it.

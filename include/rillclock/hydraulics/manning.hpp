@@ -29,6 +29,7 @@ struct ManningReach {
 /// Manning's formula the other way round: the slope that gives a velocity, and the n that does. The reach's own slope
 /// or n is not looked at. Not finite for a radius or velocity of 0.
 [[nodiscard]] double manning_slope_of(Speed velocity, const ManningReach& reach);
+/// Manning's n that gives a velocity in a reach, dimensionless: the formula the other way round.
 [[nodiscard]] double manning_n_of(Speed velocity, const ManningReach& reach);
 
 /// Flow area over wetted perimeter.

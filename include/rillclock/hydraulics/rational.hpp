@@ -15,7 +15,9 @@ enum class RationalConversion { exact, rounded };
 /// Source: Kuichling, 1889; conversion 1.008 and 1/360 in Cleveland, course text CE 3354, chapter 13 (read in its source).
 [[nodiscard]] Discharge rational_peak(Area runoff_area, Intensity intensity, RationalConversion conversion);
 
+/// A flow in m³/s.
 [[nodiscard]] double in_cubic_metres_per_second(Discharge flow);
+/// A flow in ft³/s.
 [[nodiscard]] double in_cubic_feet_per_second(Discharge flow);
 
 /// Factors by which a runoff coefficient for frequent storms is raised for rarer ones.

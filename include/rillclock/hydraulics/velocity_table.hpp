@@ -32,6 +32,7 @@ struct VelocityLine {
     std::vector<VelocityPoint> points;  ///< at least two; slopes and velocities rise
 
     [[nodiscard]] Speed at(double slope) const;  ///< for a slope above 0; no number below
+    /// Whether a slope, rise over run, lies between its first and last point.
     [[nodiscard]] bool covers(double slope) const;
     /// The power that holds at a slope; at a point, that below it.
     [[nodiscard]] VelocityLaw law_at(double slope) const;

@@ -12,6 +12,7 @@
 
 namespace rillclock {
 
+/// How a raster of classes is opened.
 struct CoverOptions {
     std::optional<int> band = {};   ///< from 1; needed only where the file has several
     std::string role = "cover";     ///< "cover" or "soil", for messages and the codes of notices

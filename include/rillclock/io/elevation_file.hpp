@@ -29,6 +29,7 @@ struct ElevationFormat {
     [[nodiscard]] double void_value() const;
 };
 
+/// What a study says of its elevations.
 struct ElevationOptions {
     std::optional<int> band = {};          ///< from 1; needed only where the file has several
     std::optional<std::string> unit = {};  ///< the study's `elevation_unit`

@@ -19,12 +19,14 @@ struct NamedPlace {
     std::vector<std::string> fields = {};  ///< texts of the fields asked for, in that order; empty where not set
 };
 
+/// How a file of points is read.
 struct PointOptions {
     std::optional<std::string> layer = {};       ///< needed only where the file has several
     std::optional<std::string> name_field = {};  ///< default: the field called name, label or id, whichever comes first
     std::vector<std::string> fields = {};        ///< further fields to read
 };
 
+/// The points of a file, in its order, in the coordinates asked for.
 struct PointFile {
     std::vector<NamedPlace> points;  ///< in the order of the file
     Notices notices;                 ///< features left out, one notice each

@@ -12,9 +12,12 @@
 
 namespace rillclock {
 
+/// What a layer's features are.
 enum class LayerGeometry { points, lines, polygons };
+/// What a field holds.
 enum class FieldKind { text, number, whole_number };
 
+/// A field of a layer.
 struct LayerField {
     std::string name;
     FieldKind kind = FieldKind::text;
@@ -38,6 +41,7 @@ struct LayerStyle {
     std::string label_field = {};   ///< written beside the features, where stated
 };
 
+/// A layer before it has features.
 struct LayerDescription {
     std::string name;
     std::string description;
@@ -47,7 +51,9 @@ struct LayerDescription {
     LayerStyle style = {};
 };
 
+/// The value of a field; none for NULL.
 using FieldValue = std::variant<std::monostate, std::string, double, std::int64_t>;
+/// The geometry of a feature, as the layer's kind asks.
 using LayerShape = std::variant<Place, std::vector<Line>, std::vector<Polygon>>;
 
 /// A GeoPackage in the making: layers one after the other, each with a spatial index, descriptions and a style in the table

@@ -28,6 +28,7 @@ struct TabulatedRain {
 /// Formulas whose weighted sum is the intensity of one return period: one of weight 1 where the formula is stated for
 /// that period or holds for all, two where the period lies between two stated ones.
 struct FormulatedRain {
+    /// A formula and the share with which it counts.
     struct Part {
         IntensityFormula formula;
         double return_period = 0.0;  ///< in years
@@ -51,6 +52,7 @@ struct RainRange {
 /// intensity.
 class RainCurve {
 public:
+    /// How intensity goes by duration.
     using Law = std::variant<TabulatedRain, FormulatedRain>;
 
     /// `source` names where the rain comes from in errors.

@@ -15,20 +15,26 @@ inline constexpr std::array<Direction, 8> all_directions = {
     Direction::north, Direction::north_east, Direction::east, Direction::south_east,
     Direction::south, Direction::south_west, Direction::west, Direction::north_west};
 
+/// Rows to the neighbour: −1 north, 1 south.
 [[nodiscard]] constexpr int row_step(Direction d) {
     constexpr std::array<int, 8> steps = {-1, -1, 0, 1, 1, 1, 0, -1};
     return steps[static_cast<std::size_t>(d)];
 }
+/// Columns to the neighbour: −1 west, 1 east.
 [[nodiscard]] constexpr int column_step(Direction d) {
     constexpr std::array<int, 8> steps = {0, 1, 1, 1, 0, -1, -1, -1};
     return steps[static_cast<std::size_t>(d)];
 }
+/// The way back.
 [[nodiscard]] constexpr Direction opposite(Direction d) {
     return static_cast<Direction>((static_cast<unsigned>(d) + 4U) % 8U);
 }
+/// Whether the neighbour shares a corner alone.
 [[nodiscard]] constexpr bool is_diagonal(Direction d) { return static_cast<unsigned>(d) % 2U == 1U; }
+/// Degrees clockwise from grid north: 0, 45 … 315.
 [[nodiscard]] constexpr int azimuth_degrees(Direction d) { return 45 * static_cast<int>(d); }
 
+/// The neighbour in a direction, on the grid or beside it.
 [[nodiscard]] constexpr RowColumn neighbour(RowColumn at, Direction d) {
     return {at.row + row_step(d), at.column + column_step(d)};
 }

@@ -13,6 +13,7 @@ namespace rillclock {
 using Cell = std::uint32_t;
 inline constexpr Cell no_cell = std::numeric_limits<Cell>::max();
 
+/// A cell by its row and column, from 0 at the north-west corner.
 struct RowColumn {
     std::int64_t row = 0;
     std::int64_t column = 0;
@@ -33,15 +34,20 @@ struct Grid {
     bool operator==(const Grid&) const = default;
 
     [[nodiscard]] std::int64_t size() const { return rows * columns; }
+    /// The index of a cell on the grid.
     [[nodiscard]] Cell cell(RowColumn at) const { return static_cast<Cell>(at.row * columns + at.column); }
+    /// Row and column of an index.
     [[nodiscard]] RowColumn row_column(Cell cell) const { return {cell / columns, cell % columns}; }
+    /// Whether the cell lies on the grid.
     [[nodiscard]] bool contains(RowColumn at) const {
         return at.row >= 0 && at.row < rows && at.column >= 0 && at.column < columns;
     }
+    /// The centre of a cell, in the reference system's coordinates.
     [[nodiscard]] Place centre(RowColumn at) const {
         return {left + (static_cast<double>(at.column) + 0.5) * cell_width,
                 top - (static_cast<double>(at.row) + 0.5) * cell_height};
     }
+    /// The centre of a cell, in the reference system's coordinates.
     [[nodiscard]] Place centre(Cell cell) const { return centre(row_column(cell)); }
 
     /// The cell that holds a place; the southern and the eastern edge of the grid belong to no cell. NaN is nowhere.

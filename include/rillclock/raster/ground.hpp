@@ -35,6 +35,7 @@ public:
         const GroundRow& upper = at(row_step(d) < 0 ? row - 1 : row);
         return is_diagonal(d) ? upper.diagonal : upper.south;
     }
+    /// Ground area of a cell of that row.
     [[nodiscard]] FixedArea cell_area(std::int64_t row) const { return at(row).area; }
     /// Whether all rows are alike.
     [[nodiscard]] bool is_uniform() const { return rows_.size() == 1; }

@@ -16,9 +16,11 @@ public:
     using value_type = T;
 
     LargeMemory() = default;
+    /// From that of another type; no memory is shared.
     template <class U>
     explicit(false) LargeMemory(const LargeMemory<U>&) {}
 
+    /// Memory for so many values, on huge pages where there are enough of them. Throws std::bad_alloc.
     [[nodiscard]] T* allocate(std::size_t count) {
         if (count > static_cast<std::size_t>(-1) / sizeof(T)) throw std::bad_array_new_length();
         const std::size_t bytes = count * sizeof(T);
@@ -27,6 +29,7 @@ public:
         ask_for_huge_pages(memory, bytes);
         return static_cast<T*>(memory);
     }
+    /// Gives back what `allocate` gave for the same count.
     void deallocate(T* memory, std::size_t count) {
         const std::size_t alignment = count * sizeof(T) < huge_page ? alignof(std::max_align_t) : huge_page;
         ::operator delete(memory, std::align_val_t{alignment});

@@ -33,9 +33,11 @@ public:
 
     [[nodiscard]] std::span<T> values() { return values_; }
     [[nodiscard]] std::span<const T> values() const { return values_; }
+    /// The cells of a row, from west to east.
     [[nodiscard]] std::span<T> row(std::int64_t r) {
         return std::span<T>(values_).subspan(static_cast<std::size_t>(r * columns_), static_cast<std::size_t>(columns_));
     }
+    /// The cells of a row, from west to east.
     [[nodiscard]] std::span<const T> row(std::int64_t r) const {
         return std::span<const T>(values_).subspan(static_cast<std::size_t>(r * columns_),
                                                    static_cast<std::size_t>(columns_));

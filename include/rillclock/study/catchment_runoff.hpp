@@ -39,6 +39,7 @@ public:
     [[nodiscard]] double factor(const LandKind& kind, std::size_t period);
     /// The smaller of 1 and Cf·C. There must be a C.
     [[nodiscard]] double capped(const LandKind& kind, std::size_t period);
+    /// The factor of a return period, by its place among those of the study.
     [[nodiscard]] double frequency_factor(std::size_t period) const;
 
 private:
@@ -52,6 +53,7 @@ private:
 
 /// Areas by kind of land.
 using LandAreas = std::map<LandKind, FixedArea>;
+/// The area of each kind of land, whenever it arrives.
 [[nodiscard]] LandAreas land_areas(const ArrivalHistogram& histogram);
 
 /// The different coefficients that overrides state, ascending. Land that has one is of a kind beyond the classes of the book. Throws an
@@ -89,6 +91,7 @@ private:
 class BinnedLand {
 public:
     BinnedLand(const ArrivalHistogram& histogram, const Placing& placing);
+    /// C·A by time of arrival under a return period, by its place.
     [[nodiscard]] ArrivalCurve curve(Coefficients& coefficients, std::size_t period) const;
 
 private:

@@ -18,6 +18,7 @@ struct BandRunoff {
     std::optional<Discharge> flow;          ///< of that intensity and the running C·A
 };
 
+/// What the runoff of bands is made from.
 struct BandRunoffInputs {
     const Study& study;
     const StudyRain& rain;

@@ -42,6 +42,7 @@ struct LumpRange {
     double least = 0.0;
     double greatest = 0.0;
 };
+/// Between which numbers an input lies.
 [[nodiscard]] LumpRange range_of(LumpInput input);
 
 /// "kerby_n": as the study's key under [methods] and the cover book's column are called.

@@ -34,6 +34,7 @@ struct RainWindow {
     FixedArea runoff = 0;             ///< C·A within
     double product = 0.0;             ///< i·C·A, m³/s
 
+    /// Whether a bin lies in the window.
     [[nodiscard]] bool holds(std::int64_t place) const { return place >= first_bin && place < first_bin + bins; }
 };
 

@@ -67,6 +67,7 @@ struct SubareaRunoff {
     std::vector<CompositeCoefficient> coefficients;  ///< empty where some of its land has no coefficient
 };
 
+/// The peaks of all points, or why there are none.
 struct StudyPeaks {
     std::vector<std::vector<PointPeak>> points;   ///< by outlet and return period
     std::vector<SubareaRunoff> subareas;          ///< by outlet

@@ -20,8 +20,9 @@ void check_scenario_name(std::string_view name, std::string_view where);
 /// to a hydraulic radius, a raster of soil groups to one letter.
 [[nodiscard]] Study scenario_study(const Study& base, const ScenarioStudy& scenario);
 
-/// Where in the result folder the scenario's own result stands, and where its comparison with the study: "scenario-after", "comparison-after".
+/// Where in the result folder the scenario's own result stands: "scenario-after".
 [[nodiscard]] std::string scenario_folder(const ScenarioStudy& scenario);
+/// Where in the result folder its comparison with the study stands: "comparison-after".
 [[nodiscard]] std::string comparison_folder(const ScenarioStudy& scenario);
 
 }  // namespace rillclock

@@ -62,6 +62,7 @@ struct SoilStudy {
     std::optional<SoilGroup> fallback_group = {}; ///< for cells without one
 };
 
+/// Land cover and soil, as stated.
 struct SurfaceStudy {
     std::string cover = {};                    ///< raster; relative to the study's folder
     std::optional<int> band = {};              ///< from 1; needed only where the file has several
@@ -74,6 +75,7 @@ struct SurfaceStudy {
     bool unbiased_lengths = false;             ///< steps along the grid count with `unbiased_step_weight`
 };
 
+/// Design points, as stated.
 struct PointStudy {
     std::optional<std::string> file =
         {};  ///< relative to the study's folder; without it points stand where flow leaves the data
@@ -100,6 +102,7 @@ struct ZoneStudy {
     std::string field = "rain";            ///< that names a polygon's rain file
 };
 
+/// Rain, as stated: a depth, or by duration from a file, zones or formulas.
 struct RainStudy {
     std::optional<Length> two_year_24_hour = {};
     std::optional<std::string> file = {};          ///< relative to the study's folder
@@ -130,6 +133,7 @@ struct ChannelStudy {
     [[nodiscard]] const ChannelSize* published_size() const;
 };
 
+/// How water is timed, as stated.
 struct TimingStudy {
     std::string sheet = "nrcs";                       ///< or "kinematic"
     std::optional<double> sheet_constant = {};        ///< printed constant of the kinematic formula; 0.933 where absent
@@ -155,6 +159,7 @@ struct TimingStudy {
 /// How arrivals are binned where a study says nothing of it.
 inline constexpr Duration standard_time_bin = seconds(5);
 
+/// How peak flows are found, as stated.
 struct PeakStudy {
     std::optional<Duration> least_time = {};  ///< no intensity is read below it; 5 min where absent
     std::optional<CoefficientSource> coefficient = {};       ///< the cover book where absent
@@ -171,6 +176,7 @@ struct PeakStudy {
 /// What is stated for methods that time a catchment as one lump; what is not comes from the cover book, where it can.
 using MethodStudy = ByLumpInput<LumpValue>;
 
+/// Where the result goes and what is in it, as stated.
 struct OutputStudy {
     std::string folder = "result";  ///< relative to the study's folder
     SubareasListed subareas = SubareasListed::least_slacks;
@@ -190,6 +196,7 @@ struct ScenarioStudy {
     std::vector<StatedChange> changes = {};  ///< in the order of the file
 };
 
+/// A whole study as stated.
 struct Study {
     std::string file = {};  ///< the study file as named by the user; empty where the command line is the study
     std::string title = {};
@@ -236,6 +243,7 @@ struct ResolvedStudy {
     PowerLaw channel_depth = {};
 };
 
+/// Settles what the study leaves to the data.
 [[nodiscard]] ResolvedStudy resolve(const Study& study, const DataFacts& facts);
 
 /// Hydraulic radius of a channel that drains this area: the stated one, or W·D/(W + 2D) of the two power laws.

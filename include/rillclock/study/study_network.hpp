@@ -39,6 +39,7 @@ struct StudyNetwork {
     Notices notices = {};
 };
 
+/// What the network of a study is made from.
 struct NetworkInputs {
     const Study& study;
     const StudyRain& rain;

@@ -42,9 +42,11 @@ struct StudyRain {
     std::vector<ZoneRain> zones = {};  ///< numbered from 1; none where one rain is everywhere
     bool is_everywhere = true;         ///< else there is rain in zones alone, and what stands above is that of the first
 
+    /// The storms of a zone, by return period; those of the one rain, or outside of all zones, for 0.
     [[nodiscard]] const std::vector<StudyStorm>& storms_of(std::size_t zone) const {
         return zone == 0 ? storms : zones[zone - 1].storms;
     }
+    /// The 2-year 24-hour depth of a zone, in the same way.
     [[nodiscard]] const std::optional<Length>& depth_of(std::size_t zone) const {
         return zone == 0 ? two_year_24_hour : zones[zone - 1].two_year_24_hour;
     }

@@ -31,11 +31,13 @@ struct InputEffect {
     [[nodiscard]] double swing_s(double typical_s) const;
 };
 
+/// How often the water of a subarea arrived last.
 struct LastShare {
     PointNumber subarea = 0;
     int draws = 0;   ///< in which its water arrives last
 };
 
+/// What the ranges of the inputs make of one point's time.
 struct PointUncertainty {
     double fast_s = 0.0;      ///< all inputs at the end at which water is faster
     double typical_s = 0.0;   ///< the study's own values: the time of concentration
@@ -45,6 +47,7 @@ struct PointUncertainty {
     std::vector<LastShare> last;                   ///< the most draws first
 };
 
+/// What the ranges of a study's inputs make of its times.
 struct Uncertainty {
     std::vector<UncertainInput> inputs;
     int seed = 1;

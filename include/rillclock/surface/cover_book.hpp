@@ -48,6 +48,7 @@ struct CoverClass {
     std::string source = {};               ///< where the values are from
     bool from_memory = false;                       ///< a default to check before use
 
+    /// That of a soil group; none where the book has none.
     [[nodiscard]] std::optional<double> curve_number(SoilGroup group) const {
         return curve_numbers[static_cast<std::size_t>(group)];
     }
@@ -89,7 +90,8 @@ private:
 /// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group), `c` (runoff coefficient of any soil) and `c_a` to `c_d`
 ///   (of each soil group; each may be absent or empty), for runoff and for methods that time a catchment as one lump;
 /// - `land_use` (a name of `land_uses()`, for runoff coefficients printed by soil group, slope and return period) and
-///   `impervious_percent` (0 to 100; or `impervious`, the share), each may be absent or empty;
+///   `impervious_percent` (of the ground, 0 to 100; the column `impervious` is refused, since it does not say its unit), each may be
+///   absent or empty;
 /// - `kerby_n`, `izzard_c` (retardances) and `county_k` (each may be absent
 ///   or empty), for runoff and for methods that time a catchment as one lump;
 /// - `source` (asked for in every row), `from_memory` (yes or no; may be absent: no).

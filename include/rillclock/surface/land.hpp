@@ -17,6 +17,7 @@ enum class CellSoil : std::uint8_t { unknown, a, b, c, d };
 
 inline constexpr std::size_t cell_soils = 5;   ///< how many there are
 
+/// A known group as a cell keeps it.
 [[nodiscard]] CellSoil cell_soil(SoilGroup group);
 /// None where the soil is not known.
 [[nodiscard]] std::optional<SoilGroup> group_of(CellSoil soil);
@@ -52,7 +53,9 @@ struct LandShare {
 /// 48 bytes for each class of the book up to the last one met, and that for each soil group met.
 class LandTally {
 public:
+    /// Adds a cell of a kind.
     void add(const LandKind& kind, FixedArea area);
+    /// Adds all that another has.
     void add(const LandTally& other);
     /// The kinds that were met, by cover class, then soil, then slope.
     [[nodiscard]] std::vector<LandShare> shares() const;

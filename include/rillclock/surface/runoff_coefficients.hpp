@@ -17,11 +17,13 @@ struct LandUse {
     std::string_view name;
     std::array<std::array<std::array<double, 3>, 4>, 2> printed;  ///< by frequent or rare, soil group A to D, slope band
 
+    /// The printed coefficient: below 25 years or from there on, by the return period in years.
     [[nodiscard]] double coefficient(SoilGroup group, SlopeBand slope, double return_period) const;
     [[nodiscard]] double least() const;
     [[nodiscard]] double greatest() const;
 };
 
+/// The land uses of the table, in its order.
 [[nodiscard]] std::span<const LandUse> land_uses();
 /// Null where none has that name.
 [[nodiscard]] const LandUse* find_land_use(std::string_view name);
@@ -43,6 +45,7 @@ struct KindCoefficient {
     std::string lacking = {};
 };
 
+/// The coefficient of a kind of land under a return period in years, before any frequency factor, or what the book lacks for it.
 [[nodiscard]] KindCoefficient kind_coefficient(const CoverBook& book, const LandKind& kind, CoefficientSource source,
                                                double return_period);
 

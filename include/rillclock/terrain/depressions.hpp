@@ -25,6 +25,7 @@ struct Depressions {
     std::size_t left_out = 0;                ///< shallower than all of these
 };
 
+/// What depressions are found on.
 struct DepressionGround {
     const ElevationStore& elevations;
     const ElevationStore& spill;

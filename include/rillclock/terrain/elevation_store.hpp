@@ -13,6 +13,7 @@ namespace rillclock {
 /// value (floating point of 32 bits, integers of up to 16), else 8. NaN where void. What computes sees double precision.
 class ElevationStore {
 public:
+    /// Bytes that a cell takes.
     enum class Width { four_bytes, eight_bytes };
 
     ElevationStore(std::int64_t rows, std::int64_t columns, Width width);
@@ -26,6 +27,7 @@ public:
     }
     /// Sets one cell, to a value that the width holds exactly.
     void put(Cell cell, double value);
+    /// The values of a window, row by row; NaN where void.
     void read(const Window& window, std::span<double> values) const;
     /// Every value must be one that the width holds exactly.
     void write(const Window& window, std::span<const double> values);

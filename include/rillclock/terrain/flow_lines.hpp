@@ -33,6 +33,7 @@ public:
         }
     }
 
+    /// Whether a line passes the cell.
     [[nodiscard]] bool contains(Cell cell) const { return next_.contains(cell); }
     [[nodiscard]] std::size_t size() const { return next_.size(); }
     /// Where the water of a cell of a line is led; `no_cell` at its end.

@@ -23,6 +23,7 @@ struct Pass {
     std::uint32_t other_basin = 0;   ///< at the other side; 0 the outside
 };
 
+/// A strict and total order of passes: by the higher of their two levels, then the lower, then cell and direction.
 [[nodiscard]] bool lies_lower(const Pass& a, const Pass& b);
 
 }  // namespace rillclock

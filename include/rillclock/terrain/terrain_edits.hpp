@@ -60,6 +60,7 @@ struct EditedFlow {
     std::vector<Cell> enclosed;           ///< lowest ground beside a barrier that shuts it in: roots
 };
 
+/// Finds the flow codes of elevations.
 using FindCodes = std::function<Raster<FlowCode>(const ElevationStore&)>;
 
 /// Flow codes with the edits: `find_codes` is any builder of flow codes (plain or tiled; one answer means one answer here).

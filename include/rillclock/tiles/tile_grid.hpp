@@ -24,11 +24,13 @@ public:
     [[nodiscard]] std::int64_t tiles_across() const { return across_; }
     [[nodiscard]] std::int64_t tiles_down() const { return down_; }
 
+    /// The cells of a tile.
     [[nodiscard]] Window window(Tile tile) const {
         const std::int64_t row = tile / across_ * side_;
         const std::int64_t column = tile % across_ * side_;
         return {.row = row, .column = column, .rows = std::min(side_, rows_ - row), .columns = std::min(side_, columns_ - column)};
     }
+    /// The tile that holds a cell.
     [[nodiscard]] Tile tile_of(RowColumn at) const {
         return static_cast<Tile>(at.row / side_ * across_ + at.column / side_);
     }

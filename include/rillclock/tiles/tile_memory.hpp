@@ -19,13 +19,16 @@ public:
     using value_type = T;
 
     TileMemory() = default;
+    /// From that of another type; the pool is the same.
     template <class U>
     explicit(false) TileMemory(const TileMemory<U>&) {}
 
+    /// Memory for so many values, from the pool where a tile's array fits it. Throws std::bad_alloc.
     [[nodiscard]] T* allocate(std::size_t count) {
         if (count > most_pooled / sizeof(T)) return LargeMemory<T>().allocate(count);
         return static_cast<T*>(tile_pool().allocate(count * sizeof(T)));
     }
+    /// Gives back what `allocate` gave for the same count.
     void deallocate(T* memory, std::size_t count) {
         if (count > most_pooled / sizeof(T)) return LargeMemory<T>().deallocate(memory, count);
         tile_pool().deallocate(memory, count * sizeof(T));

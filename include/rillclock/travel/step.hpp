@@ -21,6 +21,7 @@ struct StepTime {
         return *this;
     }
     bool operator==(const StepTime&) const = default;
+    /// The time under a storm factor.
     [[nodiscard]] Duration under(double storm_factor) const {
         return seconds((static_cast<double>(storm) * storm_factor + static_cast<double>(fixed)) / fixed_units_per_one);
     }
@@ -56,6 +57,7 @@ struct StepPart {
     StepTime time;
 };
 
+/// The parts of one step, in the order of the flow.
 struct StepParts {
     StepPart first;
     StepPart second;   ///< regime none where there is no second part
@@ -65,8 +67,9 @@ struct StepParts {
 /// A sheet index that no sheet flow reaches: what a step through channel or water adds, so that sheet flow never comes back below it.
 inline constexpr Length sheet_is_over = metres(1e6);
 
-/// Manning's n and hydraulic radius of a channel step: those of its reach where there is one, else by area.
+/// Manning's n of a channel step: that of its reach where there is one, else that of the rules.
 [[nodiscard]] double channel_n(const StepView& step, const ChannelRules& rules);
+/// Hydraulic radius of a channel step: that of its reach where it has one, else by contributing area.
 [[nodiscard]] Length channel_radius(const StepView& step, const ChannelRules& rules);
 
 /// Velocity of shallow flow on a slope: of the chart where there is one, else k·√S.

@@ -28,7 +28,9 @@ struct SurfaceTable {
     Raster<CellSoil> soil = {};                        ///< without cells where one soil is everywhere
     CellSoil soil_everywhere = CellSoil::unknown;      ///< where `soil` has no cells
 
+    /// The hydraulics of a cell's class.
     [[nodiscard]] const SurfaceHydraulics& at(Cell cell) const { return classes[index[cell]]; }
+    /// The soil of a cell.
     [[nodiscard]] CellSoil soil_at(Cell cell) const { return soil.size() > 0 ? soil[cell] : soil_everywhere; }
 };
 

@@ -49,6 +49,7 @@ struct TileDesk {
     TileValues<std::uint32_t> label;           ///< labels of the tile's own cells
     TileValues<std::uint32_t> owner;           ///< first label on the way down
 
+    /// Time from a cell of the tile to its root.
     [[nodiscard]] StepTime time_to_root(Local cell) const { return {fixed[cell], storm[cell]}; }
 };
 
@@ -76,7 +77,9 @@ public:
     /// Desks for whoever works on tiles; those of the passes, so that no more are made than there are threads.
     [[nodiscard]] Workspaces<TileDesk>& desks() const { return desks_; }
     [[nodiscard]] const ElevationStore& spill() const { return spill_; }
+    /// Slope ahead of a cell, rise over run.
     [[nodiscard]] float slope(Cell cell) const { return slope_[cell]; }
+    /// What a cell's ground asks of the water.
     [[nodiscard]] GroundKind kind(Cell cell) const { return kind_[cell]; }
 
     /// Reads the areas of a tile's cells alone, for placing points.

@@ -46,6 +46,7 @@ struct ChannelRules {
     /// Area from which a cell is a channel; none where only mapped lines are.
     std::optional<Area> from_area = hectares(5);
 
+    /// Hydraulic radius of a channel that drains an area.
     [[nodiscard]] Length radius_at(Area area) const {
         return hydraulic_radius ? *hydraulic_radius : hydraulic_radius_of(width(area), depth(area));
     }
@@ -59,6 +60,7 @@ struct PondRules {
     Speed speed = metres_per_second(2.0);    ///< the most it may be; infinite for no cap
 };
 
+/// Everything that times hang on beside the data.
 struct TravelRules {
     SlopeRules slope;
     SheetRules sheet;
