@@ -66,13 +66,10 @@ std::string eye(const StudyResult& result) {
 }
 
 std::string map_part(const ReportMatter& matter) {
-    std::string note = matter.overview.stride == 1 ? "" : " The map shows every " + std::to_string(matter.overview.stride) +
-                                                              "th cell of every " + std::to_string(matter.overview.stride) +
-                                                              "th row; rasters/travel_time.tif has them all.";
     return "<figure class=\"map\"><div id=\"map\" class=\"only-scripted\" role=\"application\" aria-label=\"map of travel times, paths and points; the "
            "table of points leads to the same\"></div>" + map_pictures(matter) + "<noscript><p>Without scripts the map shows relief and travel times alone.</p></noscript>" +
            map_legend(matter) + "<figcaption>Travel time to the last point on the way down, in the projection of the elevations, over shaded relief; isochrones are drawn where the mean over nine dots enters the next class; "
-           "governing paths by regime." + note + "</figcaption></figure>\n";
+           "governing paths by regime." + map_reduction(matter) + "<span id=\"outlines\"></span></figcaption></figure>\n";
 }
 
 bool is_made_by_part(const StudyResult& result, const Outlet& outlet) {

@@ -17,7 +17,8 @@ namespace {
 
 using Json = nlohmann::ordered_json;
 
-constexpr std::size_t most_corners = 250'000;   ///< of all outlines on the map
+constexpr std::size_t most_corners = 150'000;        ///< of all outlines on the map
+constexpr std::size_t most_path_corners = 150'000;   ///< of all paths on the map
 
 std::array<std::uint8_t, 4> rgba(const std::string& colour, std::uint8_t opacity) {
     const auto part = [&](std::size_t at) { return static_cast<std::uint8_t>(std::stoi(colour.substr(at, 2), nullptr, 16)); };
@@ -115,6 +116,14 @@ double row_of(const Grid& grid, const Place& place) { return (grid.top - place.y
 
 double apart_on_map(const ReportMatter& matter) { return matter.overview.stride > 1 ? static_cast<double>(matter.overview.stride) : 0.0; }
 
+/// Farther where all paths together would be too much for one file.
+double path_apart(const ReportMatter& matter) {
+    std::size_t cells = 0;
+    for (const Outlet& outlet : matter.result.outlets) cells += outlet.governing.cells.size() + outlet.longest.cells.size();
+    const double thinned = static_cast<double>(cells) / static_cast<double>(most_path_corners);
+    return std::max(apart_on_map(matter), thinned > 1.0 ? std::ceil(thinned) : 0.0);
+}
+
 Json areas_json(const ReportMatter& matter) {
     Json areas = Json::array();
     std::size_t corners = 0;
@@ -137,10 +146,10 @@ Json areas_json(const ReportMatter& matter) {
     return areas;
 }
 
-Json path_json(const ReportMatter& matter, const Outlet& outlet) {
+Json path_json(const ReportMatter& matter, const Outlet& outlet, double apart) {
     Json pieces = Json::array();
     for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) {
-        CellLine line(apart_on_map(matter));
+        CellLine line(apart);
         const std::vector<Place> places = segment_places(matter.result, row);
         for (std::size_t i = 0; i < places.size(); ++i) {
             line.add(column_of(matter.result.grid, places[i]), row_of(matter.result.grid, places[i]), i + 1 == places.size());
@@ -150,8 +159,8 @@ Json path_json(const ReportMatter& matter, const Outlet& outlet) {
     return pieces;
 }
 
-Json longest_json(const ReportMatter& matter, const Outlet& outlet) {
-    CellLine line(apart_on_map(matter));
+Json longest_json(const ReportMatter& matter, const Outlet& outlet, double apart) {
+    CellLine line(apart);
     for (std::size_t i = 0; i < outlet.longest.cells.size(); ++i) {
         const RowColumn at = matter.result.grid.row_column(outlet.longest.cells[i]);
         line.add(static_cast<double>(at.column) + 0.5, static_cast<double>(at.row) + 0.5, i + 1 == outlet.longest.cells.size());
@@ -259,13 +268,24 @@ std::string map_data(const ReportMatter& matter) {
     const TimeClasses classes = time_classes(matter.result);
     Json paths = Json::array();
     Json longest = Json::array();
+    const double apart = path_apart(matter);
     for (const Outlet& outlet : matter.result.outlets) {
-        paths.push_back(path_json(matter, outlet));
-        longest.push_back(longest_json(matter, outlet));
+        paths.push_back(path_json(matter, outlet, apart));
+        longest.push_back(longest_json(matter, outlet, apart));
     }
     const Grid& grid = matter.result.grid;
     return for_script({{"rows", grid.rows}, {"columns", grid.columns}, {"tall", grid.cell_height / grid.cell_width}, {"regimes", regimes_json()}, {"points", points_json(matter)}, {"areas", areas_json(matter)}, {"paths", paths},
                        {"longest", longest}, {"pipes", pipes_json(matter)}, {"labels", labels_json(matter, classes)}});
+}
+
+std::string map_reduction(const ReportMatter& matter) {
+    std::string note;
+    const std::string stride = std::to_string(matter.overview.stride);
+    if (matter.overview.stride > 1) note += " The map shows every " + stride + "th cell of every " + stride + "th row; rasters/travel_time.tif has them all.";
+    if (path_apart(matter) > std::max(1.0, apart_on_map(matter))) {
+        note += " Paths are drawn with a corner every " + significant(path_apart(matter), 3) + " cells; study.gpkg has them all.";
+    }
+    return note;
 }
 
 std::string map_pictures(const ReportMatter& matter) {

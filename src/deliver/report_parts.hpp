@@ -16,6 +16,9 @@ enum class SectionDetail {
 /// The section of one point: key figures, what is stated, notices, charts with their tables, segments, ground, and its calculation sheet.
 [[nodiscard]] std::string point_section(const ReportMatter& matter, const Outlet& outlet, SectionDetail detail);
 
+/// What of the map was reduced, in sentences; nothing where nothing was.
+[[nodiscard]] std::string map_reduction(const ReportMatter& matter);
+
 /// The pictures under the map: relief, and travel times over it. Without scripts they are the map.
 [[nodiscard]] std::string map_pictures(const ReportMatter& matter);
 

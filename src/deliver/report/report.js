@@ -88,6 +88,10 @@
   }
   function drawMap() {
     fitScreen();
+    var outlined = data.areas.filter(function (area) { return area.length > 0; }).length;
+    if (outlined < data.points.length) {
+      document.getElementById("outlines").textContent = " Outlines of " + outlined + " of " + data.points.length + " subareas are drawn; study.gpkg has them all.";
+    }
     // Shapes print sharp and can be reached by key; beyond some hundreds of points dots are quicker.
     var few = data.points.length <= 400;
     map = L.map("map", { crs: L.CRS.Simple, preferCanvas: !few, minZoom: -12, maxZoom: 6, zoomSnap: 0, attributionControl: false });
