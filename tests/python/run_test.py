@@ -29,7 +29,7 @@ def test_the_result_is_that_of_the_command_file_by_file(town, result):
 def test_figures_headlines_and_notices_are_those_of_result_json(result):
     kept = json.loads((result.folder / "result.json").read_text(encoding="utf-8"))
     assert result.figures == kept
-    assert result.headlines == kept["headlines"] and len(result.headlines) == 3
+    assert result.headlines == kept["headlines"] and len(result.headlines) == 4
     assert [(n.code, n.text, n.point or None, n.value, n.threshold) for n in result.notices] == [
         (n["notice"], n["text"], n["point"] or None, n["value"], n["threshold"]) for n in kept["notices"]]
     first = result.notices[0]
