@@ -16,9 +16,10 @@
 namespace rillclock {
 namespace {
 
+constexpr std::size_t most_bytes = 9'900'000;               ///< of the file; the last section may go a little over
 constexpr std::size_t most_bytes_of_sections = 6'500'000;
-constexpr std::size_t most_bytes_with_charts = 4'500'000;
-constexpr std::size_t most_bytes_with_sheets = 2'500'000;
+constexpr std::size_t bytes_of_the_rest = 400'000;          ///< scripts, styles, licence, findings
+constexpr std::size_t bytes_of_a_row = 400;                 ///< of the table of points
 constexpr std::size_t most_notices_at_top = 8;
 
 /// Nothing is fetched, and no script runs but the two that are named here by their checksums.
@@ -137,16 +138,23 @@ struct Sections {
     std::size_t all = 0;
 };
 
-SectionDetail detail_after(std::size_t bytes) {
-    if (bytes <= most_bytes_with_sheets) return SectionDetail::with_sheet;
-    return bytes <= most_bytes_with_charts ? SectionDetail::without_sheet : SectionDetail::figures;
+/// What map and table leave to the sections.
+std::size_t room_for_sections(const ReportMatter& matter, std::size_t map_bytes) {
+    const std::size_t taken = map_bytes + bytes_of_the_rest + bytes_of_a_row * matter.result.outlets.size();
+    return taken < most_bytes ? std::min(most_bytes - taken, most_bytes_of_sections) : 0;
 }
 
-Sections sections_of(const ReportMatter& matter) {
+/// The first five thirteenths of the room go to sections with all they can have, four more to those with charts.
+SectionDetail detail_after(std::size_t bytes, std::size_t room) {
+    if (bytes * 13 <= room * 5) return SectionDetail::with_sheet;
+    return bytes * 13 <= room * 9 ? SectionDetail::without_sheet : SectionDetail::figures;
+}
+
+Sections sections_of(const ReportMatter& matter, std::size_t room) {
     Sections sections{.html = {}, .has_section = std::vector<bool>(matter.result.outlets.size(), false)};
     for (const std::size_t i : by_area(matter.result)) {
-        if (sections.html.size() > most_bytes_of_sections) break;
-        const SectionDetail detail = detail_after(sections.html.size());
+        if (sections.html.size() > room) break;
+        const SectionDetail detail = detail_after(sections.html.size(), room);
         sections.html += point_section(matter, matter.result.outlets[i], detail);
         sections.has_section[i] = true;
         sections.with_sheet += detail == SectionDetail::with_sheet ? 1 : 0;
@@ -201,13 +209,15 @@ std::string foot() {
 }  // namespace
 
 std::string report_html(const ReportMatter& matter) {
-    const Sections sections = sections_of(matter);
+    const std::string map = map_part(matter);
+    const std::string data = map_data(matter);
+    const Sections sections = sections_of(matter, room_for_sections(matter, map.size() + data.size()));
     std::string html = head(matter.result);
     html += "<header><h1>" + html_text(title_of(matter.result)) + "</h1>\n" + where(matter.result) + "</header>\n<main>\n";
     html += findings(matter.result) + caution_box();
-    html += "<div class=\"split\">" + map_part(matter) + points_table(matter, sections) + "</div>\n" + eye(matter.result);
+    html += "<div class=\"split\">" + map + points_table(matter, sections) + "</div>\n" + eye(matter.result);
     html += reduced_note(sections, matter.result.outlets.size()) + sections.html + "</main>\n" + foot();
-    html += "<script type=\"application/json\" id=\"map-data\">" + map_data(matter) + "</script>\n";
+    html += "<script type=\"application/json\" id=\"map-data\">" + data + "</script>\n";
     return html + "<script>" + std::string(leaflet_script()) + "</script>\n<script>" + std::string(report_script()) + "</script>\n</body>\n</html>\n";
 }
 
