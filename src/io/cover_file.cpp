@@ -147,10 +147,9 @@ public:
         if (window.size() > largest_sampled && window.rows > 1) return read_halves(window, values);
         if (!places_.is_transformed()) return read_alongside(window, values);
         const std::vector<RowColumn> cells = cover_cells(window);
-        const Window needed = window_around(cells, file_.grid());
-        if (needed.size() > largest_read && window.rows > 1) return read_halves(window, values);
-        if (needed.size() > largest_read && window.columns > 1) return read_sides(window, values);
-        pick(cells, needed, values);
+        read_needed(window, window_around(cells, file_.grid()), values, [&](const auto& class_at) {
+            std::transform(cells.begin(), cells.end(), values.begin(), class_at);
+        });
     }
 
 private:
@@ -158,19 +157,27 @@ private:
     void read_alongside(const Window& window, std::span<std::int32_t> values) {
         const std::vector<std::int64_t> rows = cover_rows(window);
         const std::vector<std::int64_t> columns = cover_columns(window);
-        const Window needed = window_between(rows, columns);
+        read_needed(window, window_between(rows, columns), values, [&](const auto& class_at) {
+            auto value = values.begin();
+            for (const std::int64_t row : rows) {
+                for (const std::int64_t column : columns) *value++ = class_at(RowColumn{row, column});
+            }
+        });
+    }
+
+    /// Reads the cover cells that a window needs, and has `pick(class_at)` take from them what each of its cells has; where there are too many,
+    /// parts of the window are read one by one instead.
+    template <class Pick>
+    void read_needed(const Window& window, const Window& needed, std::span<std::int32_t> values, Pick pick) {
         if (needed.size() > largest_read && window.rows > 1) return read_halves(window, values);
         if (needed.size() > largest_read && window.columns > 1) return read_sides(window, values);
         std::vector<double> cover(static_cast<std::size_t>(needed.size()));
         if (needed.size() > 0) file_.read(needed, cover);
-        auto value = values.begin();
-        for (const std::int64_t row : rows) {
-            for (const std::int64_t column : columns) {
-                const bool is_covered = row >= 0 && column >= 0;
-                const std::int64_t index = (row - needed.row) * needed.columns + column - needed.column;
-                *value++ = is_covered ? class_of(cover[static_cast<std::size_t>(index)], {row, column}) : no_class;
-            }
-        }
+        pick([&](const RowColumn& at) {
+            if (at.row < 0 || at.column < 0) return no_class;
+            const std::int64_t index = (at.row - needed.row) * needed.columns + at.column - needed.column;
+            return class_of(cover[static_cast<std::size_t>(index)], at);
+        });
     }
 
     /// The cover's row under each row of a window; -1 where there is none.
@@ -228,20 +235,6 @@ private:
                 cells.push_back(file_.grid().at(Place{x[c], y[c]}).value_or(RowColumn{-1, -1}));
         }
         return cells;
-    }
-
-    void pick(std::span<const RowColumn> cells, const Window& needed, std::span<std::int32_t> values) const {
-        std::vector<double> cover(static_cast<std::size_t>(needed.size()));
-        if (needed.size() > 0) file_.read(needed, cover);
-        for (std::size_t i = 0; i < cells.size(); ++i) {
-            const RowColumn at = cells[i];
-            if (at.row < 0) {
-                values[i] = no_class;
-                continue;
-            }
-            const std::int64_t index = (at.row - needed.row) * needed.columns + at.column - needed.column;
-            values[i] = class_of(cover[static_cast<std::size_t>(index)], at);
-        }
     }
 
     [[nodiscard]] std::int32_t class_of(double value, RowColumn at) const {

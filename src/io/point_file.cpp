@@ -12,6 +12,7 @@
 #include "local_file.hpp"
 #include "layer_system.hpp"
 #include "rillclock/core/error.hpp"
+#include "rillclock/core/trimmed.hpp"
 #include "rillclock/io/gdal_session.hpp"
 
 namespace rillclock {
@@ -121,9 +122,7 @@ private:
     /// Without blanks at its ends; empty where the feature has no value.
     [[nodiscard]] static std::string text_of(OGRFeature& feature, int field) {
         const std::string given = feature.IsFieldSetAndNotNull(field) ? feature.GetFieldAsString(field) : "";
-        const std::size_t begin = given.find_first_not_of(" \t\r\n");
-        if (begin == std::string::npos) return {};
-        return given.substr(begin, given.find_last_not_of(" \t\r\n") - begin + 1);
+        return std::string(trimmed(given));
     }
 
     [[nodiscard]] std::string name_of(OGRFeature& feature) const {

@@ -198,11 +198,13 @@ private:
     /// What a scenario states, and what is said of it that is not said of the study itself.
     void add_scenario(const ScenarioStudy& scenario) {
         const std::string begin = "scenario " + scenario.name + ": ";
-        std::string keys;
+        std::vector<std::string> keys;
         for (const StatedChange& change : scenario.changes) {
-            if (keys.find(change.key) == std::string::npos) keys += (keys.empty() ? "" : ", ") + change.key;
+            if (std::find(keys.begin(), keys.end(), change.key) == keys.end()) keys.push_back(change.key);
         }
-        report_.facts.push_back(begin + "differs in " + keys);
+        std::string list;
+        for (const std::string& key : keys) list += (list.empty() ? "" : ", ") + key;
+        report_.facts.push_back(begin + "differs in " + list);
         const Study study = scenario_study(study_, scenario);
         const CheckReport own = Checking(study).report();
         const auto add_new = [&](const std::vector<std::string>& from, std::vector<std::string>& to) {

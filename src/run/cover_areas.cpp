@@ -7,6 +7,7 @@
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/nearest_word.hpp"
 #include "rillclock/io/shape_file.hpp"
+#include "claimed_cells.hpp"
 
 namespace rillclock {
 namespace {
@@ -53,26 +54,16 @@ CoverAreas read_cover_areas(const Study& study, const CoverBook& book, const Ref
 
 Notices lay_over(const Study& study, const CoverAreas& areas, const Grid& grid, Raster<std::uint8_t>& cells) {
     if (areas.parts.empty()) return areas.notices;
-    std::int64_t claimed = 0;
-    std::int64_t twice = 0;
-    for (const CoverAreas::Part& part : areas.parts) {
-        const auto value = static_cast<std::uint8_t>(part.position + 1U);
-        for_each_run_within(part.polygon, grid, [&](Cell first, Cell end) {
-            claimed += end - first;
-            for (Cell cell = first; cell < end; ++cell) {
-                if (cells[cell] == 0) cells[cell] = value;
-                twice += cells[cell] == value ? 0 : 1;
-            }
-        });
-    }
+    const ClaimedCells claimed = claim_cells(areas.parts, grid, cells,
+                                             [](const CoverAreas::Part& part) { return static_cast<std::uint8_t>(part.position + 1U); });
     const std::string& file = *study.surface.cover_areas.file;
-    if (claimed == 0) throw input_error("none of the cover areas in '" + file + "' lies within the elevations; check their reference system");
+    if (claimed.all == 0) throw input_error("none of the cover areas in '" + file + "' lies within the elevations; check their reference system");
     Notices notices = areas.notices;
-    if (twice > 0) {
+    if (claimed.twice > 0) {
         notices.push_back({.code = "cover-areas-overlap",
-                           .text = "polygons of '" + file + "' with different classes overlap at " + std::to_string(twice) +
+                           .text = "polygons of '" + file + "' with different classes overlap at " + std::to_string(claimed.twice) +
                                    " cells, which were given to the polygon that comes first",
-                           .value = static_cast<double>(twice)});
+                           .value = static_cast<double>(claimed.twice)});
     }
     return notices;
 }

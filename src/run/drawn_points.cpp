@@ -10,6 +10,7 @@
 #include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/number_text.hpp"
+#include "rillclock/core/trimmed.hpp"
 #include "rillclock/io/shape_file.hpp"
 
 namespace rillclock {
@@ -19,11 +20,6 @@ constexpr std::array<std::string_view, 3> usual_names{"name", "label", "id"};
 constexpr double least_overlap = 0.9;
 
 std::string in_ha(FixedArea area) { return significant(from_fixed_area(area) / 1e4, 4) + " ha"; }
-
-std::string without_blanks(const std::string& text) {
-    const std::size_t begin = text.find_first_not_of(" \t\r\n");
-    return begin == std::string::npos ? std::string() : text.substr(begin, text.find_last_not_of(" \t\r\n") - begin + 1);
-}
 
 void refuse_equal_names(const Study& study, const std::vector<DrawnCatchment>& drawn) {
     std::set<std::string> names;
@@ -71,7 +67,7 @@ StatedPoints read_drawn_catchments(const Study& study, const ReferenceSystem& sy
     StatedPoints read{.points = {}, .lump_inputs = {}, .drawn = {}, .notices = file.notices};
     std::size_t feature = 0;
     for (std::size_t i = 0; i < file.polygons.size(); ++i) {
-        const std::string name = without_blanks(file.polygon_texts[i]);
+        const std::string name(trimmed(file.polygon_texts[i]));
         const bool is_new = file.feature_of_polygon[i] != feature;
         feature = file.feature_of_polygon[i];
         if (is_new) read.drawn.push_back({.name = name.empty() ? "catchment " + std::to_string(feature) : name, .polygons = {}});

@@ -5,6 +5,7 @@
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/io/shape_file.hpp"
+#include "claimed_cells.hpp"
 
 namespace rillclock {
 namespace {
@@ -57,23 +58,12 @@ RainZoneShapes read_rain_zones(const Study& study) {
 RainZoneCells rain_zone_cells(const Study& study, const RainZoneShapes& shapes, const TerrainData& terrain) {
     if (!study.rain.zones.file) return {};
     RainZoneCells cells{.zone = Raster<std::uint8_t>(terrain.grid.rows, terrain.grid.columns), .notices = shapes.notices};
-    std::int64_t claimed = 0;
-    std::int64_t twice = 0;
-    for (const RainZoneShapes::Part& part : shapes.parts) {
-        const auto number = static_cast<std::uint8_t>(part.zone);
-        for_each_run_within(part.polygon, terrain.grid, [&](Cell first, Cell end) {
-            claimed += end - first;
-            for (Cell cell = first; cell < end; ++cell) {
-                std::uint8_t& zone = cells.zone[cell];
-                if (zone == 0) zone = number;
-                twice += zone == number ? 0 : 1;
-            }
-        });
-    }
-    if (claimed == 0)
+    const ClaimedCells claimed = claim_cells(shapes.parts, terrain.grid, cells.zone,
+                                             [](const RainZoneShapes::Part& part) { return static_cast<std::uint8_t>(part.zone); });
+    if (claimed.all == 0)
         throw input_error("none of the rain zones in '" + *study.rain.zones.file +
                           "' lies within the elevations; check their reference system");
-    const Notices overlaps = overlap_notices(study, twice);
+    const Notices overlaps = overlap_notices(study, claimed.twice);
     cells.notices.insert(cells.notices.end(), overlaps.begin(), overlaps.end());
     return cells;
 }

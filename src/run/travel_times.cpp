@@ -72,11 +72,15 @@ void check_plane_study(const Study& study) {
     const char* asks = nullptr;
     if (terrain.channels.file || terrain.crossings.file || terrain.barriers.file || terrain.keep_water.file) asks = "mapped lines or kept water";
     if (study.surface.soil.file) asks = "a raster of soil groups";
-    if (study.points.file || study.points.pipes || study.timing.overrides) asks = "design points, pipes or overrides";
+    if (study.surface.cover_areas.file) asks = "polygons laid over the land cover";
+    if (study.points.file || study.points.catchments.file || study.points.pipes || study.timing.overrides) {
+        asks = "design points, drawn catchments, pipes or overrides";
+    }
     if (study.rain.is_by_duration() || study.timing.is_kinematic() || study.timing.channel.design_storm) {
         asks = "rain by duration, kinematic sheet flow or channels by the design storm, whose times differ from point to point";
     }
     if (study.uncertainty) asks = "ranges of the inputs";
+    if (!study.scenarios.empty()) asks = "scenarios";
     if (asks == nullptr) return check_study(study);
     throw input_error(std::string("travel times from rasters in memory do not know of ") + asks +
                       "; leave it out, or run a study with its files");

@@ -1,16 +1,13 @@
 #!/usr/bin/python3
 """What runs off within isochrone bands: every flow found again from the hand-over table and the rain alone, and parts that add up."""
 import json
-import pathlib
-import shutil
 import subprocess
-import tempfile
 import unittest
 
 from osgeo import ogr
 
 from peaks_test import demo_with_peaks, intensity
-from support import COMMAND, DemoTest, table
+from support import COMMAND, DemoTest, class_folder, table
 
 YEARS = 10
 
@@ -18,8 +15,7 @@ YEARS = 10
 class Runoff(unittest.TestCase):
     @classmethod
     def setUpClass(cls):
-        folder = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-test-"))
-        cls.addClassCleanup(shutil.rmtree, folder, ignore_errors=True)
+        folder = class_folder(cls, "test")
         demo_with_peaks(folder)
         study = folder / "town/peaks.toml"
         study.write_text(study.read_text() + 'isochrones = "7 min"\n')

@@ -2,14 +2,9 @@
 """The layers for a GIS: what stands in study.gpkg and isochrones.geojson, held to the rasters and to the standards."""
 import contextlib
 import json
-import os
-import pathlib
-import re
-import shutil
 import sqlite3
 import subprocess
 import sys
-import tempfile
 import unittest
 import xml.etree.ElementTree as xml
 
@@ -17,7 +12,7 @@ import numpy as np
 from osgeo import gdal, ogr
 
 from peaks_test import demo_with_peaks
-from support import CommandTest, DemoTest, hills, table, write_points
+from support import CommandTest, DemoTest, class_folder, hills, table
 
 sys.path.insert(0, "/usr/lib/python3/dist-packages")
 from osgeo_utils.samples import validate_cloud_optimized_geotiff, validate_gpkg  # noqa: E402
@@ -226,8 +221,7 @@ class Peaks(unittest.TestCase):
 
     @classmethod
     def setUpClass(cls):
-        cls.folder = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-test-"))
-        cls.addClassCleanup(shutil.rmtree, cls.folder, ignore_errors=True)
+        cls.folder = class_folder(cls, "test")
         cls.tables = demo_with_peaks(cls.folder, pipes=PIPES, overrides=OVERRIDES)
         cls.package = cls.folder / "town/result/study.gpkg"
 

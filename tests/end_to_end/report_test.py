@@ -3,11 +3,8 @@
 import base64
 import html
 import json
-import pathlib
 import re
-import shutil
 import subprocess
-import tempfile
 import time
 import unittest
 
@@ -19,7 +16,7 @@ from selenium.webdriver.common.by import By
 from selenium.webdriver.common.keys import Keys
 
 from peaks_test import demo_with_peaks
-from support import COMMAND, CommandTest, hills, table
+from support import COMMAND, CommandTest, class_folder, hills
 
 MOST_BYTES = 10_000_000
 PIPES = "from,to,length,diameter,n,slope\nMarket inlet,Tramway bank,120 m,0.45 m,0.013,0.008\n"
@@ -90,8 +87,7 @@ class Report(CommandTest):
 
     @classmethod
     def setUpClass(cls):
-        kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-report-"))
-        cls.addClassCleanup(shutil.rmtree, kept, ignore_errors=True)
+        kept = class_folder(cls, "report")
         cls.tables = demo_with_peaks(kept, pipes=PIPES, overrides=OVERRIDES, more='isochrones = "10 min"\n[uncertainty]\ndraws = 40\n')
         cls.result_folder = kept / "town/result"
         cls.page = (cls.result_folder / "report.html").as_uri()

@@ -1,18 +1,16 @@
 #!/usr/bin/python3
 """Scenarios: what a changed study run alone gives, worked out beside the study on flow that is found once, and compared with it."""
 import json
-import pathlib
 import re
 import shutil
 import subprocess
-import tempfile
 import unittest
 
 import numpy as np
 from osgeo import gdal, ogr, osr
 
 from peaks_test import demo_with_peaks
-from support import COMMAND, CommandTest, system_of, table
+from support import COMMAND, CommandTest, class_folder, system_of, table
 
 CHANGED = """surface.cover = "cover-plan.tif"
 rain.formula = "i[mm/h] = 1200 T^0.2 / (t[min] + 12)^0.85"
@@ -51,8 +49,7 @@ class BesideAStudyOfItsOwn(unittest.TestCase):
 
     @classmethod
     def setUpClass(cls):
-        folder = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-test-"))
-        cls.addClassCleanup(shutil.rmtree, folder, ignore_errors=True)
+        folder = class_folder(cls, "test")
         demo_with_peaks(folder)
         town = folder / "town"
         shutil.copy(town / "cover.tif", town / "cover-plan.tif")

@@ -90,6 +90,13 @@ def table(path):
         return list(csv.DictReader(file))
 
 
+def class_folder(test_class, name):
+    """A folder for all tests of a class."""
+    folder = pathlib.Path(tempfile.mkdtemp(prefix=f"rillclock-{name}-"))
+    test_class.addClassCleanup(shutil.rmtree, folder, ignore_errors=True)
+    return folder
+
+
 class CommandTest(unittest.TestCase):
     """A test with a folder of its own, in which the command runs."""
 
@@ -171,11 +178,14 @@ class CommandTest(unittest.TestCase):
 
 
 class DemoTest(CommandTest):
-    """The demo, run once for all tests of a class, in `kept`."""
+    """The demo, run once for all tests of a class, in `kept`, with what the class adds to its study."""
+
+    more = ""
 
     @classmethod
     def setUpClass(cls):
-        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-demo-"))
-        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
+        cls.kept = class_folder(cls, "demo")
         subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
+        cls.plain = (cls.kept / "town/study.toml").read_text()
+        (cls.kept / "town/study.toml").write_text(cls.plain + cls.more)
         cls.said = subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True, text=True)

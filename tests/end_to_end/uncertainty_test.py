@@ -2,13 +2,10 @@
 """Ranges of the inputs through the whole program: what the tables say, and draws run again as studies of their own."""
 import csv
 import json
-import pathlib
 import shutil
-import subprocess
-import tempfile
 import unittest
 
-from support import COMMAND, CommandTest, FOOT, hills, table, write_raster
+from support import CommandTest, DemoTest, FOOT, hills, table, write_raster
 
 import numpy as np
 
@@ -69,17 +66,10 @@ folder = "redrawn"
 """
 
 
-class DemoWithRanges(CommandTest):
+class DemoWithRanges(DemoTest):
     """The demo with ranges, run once; each test has a copy of it in its own folder."""
 
-    @classmethod
-    def setUpClass(cls):
-        cls.kept = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-ranges-"))
-        cls.addClassCleanup(shutil.rmtree, cls.kept, ignore_errors=True)
-        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
-        cls.plain = (cls.kept / "town/study.toml").read_text()
-        (cls.kept / "town/study.toml").write_text(cls.plain + "\n[uncertainty]\ndraws = 40\n")
-        cls.said = subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True, text=True).stdout
+    more = "\n[uncertainty]\ndraws = 40\n"
 
     def setUp(self):
         super().setUp()
@@ -178,7 +168,7 @@ class DemoWithRanges(CommandTest):
         self.assertEqual(first["n of channels"], "0.051773133258181656")
 
     def test_the_summary_and_the_result_say_what_is_left_out(self):
-        said = self.said
+        said = self.said.stdout
         sentence = next(line for line in said.splitlines() if "Within the ranges" in line)
         self.assertIn("moves it most", sentence)
         self.assertIn("Left out are the choice of method and the elevations", sentence)

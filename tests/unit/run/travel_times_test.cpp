@@ -87,6 +87,9 @@ TEST_CASE("what needs files, points or rain by duration is refused and not passe
     SECTION("channels") { plane.study.terrain.channels.file = "brook.gpkg"; }
     SECTION("soils") { plane.study.surface.soil.file = "soils.tif"; }
     SECTION("kinematic sheet flow") { plane.study.timing.sheet = "kinematic"; }
+    SECTION("catchments") { plane.study.points.catchments.file = "basins.gpkg"; }
+    SECTION("cover areas") { plane.study.surface.cover_areas.file = "plan.gpkg"; }
+    SECTION("scenarios") { plane.study.scenarios.push_back({.name = "after", .changes = {}}); }
     SECTION("ranges") { plane.study.uncertainty.emplace(); }
     CHECK_THROWS_WITH(plane.times(), Contains("travel times from rasters in memory do not know of"));
 }
