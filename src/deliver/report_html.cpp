@@ -36,12 +36,22 @@ std::string head(const StudyResult& result) {
            "</title>\n<style>" + std::string(leaflet_style()) + "</style>\n<style>" + std::string(report_style()) + "</style>\n</head>\n<body>\n";
 }
 
+/// "2 m × 2 m", in the unit of the grid's own coordinates.
+std::string cell_text(const Grid& grid, const ReferenceSystem& system) {
+    if (system.is_geographic()) {
+        return significant(grid.cell_width * system.degrees_per_unit(), 5) + "° × " + significant(grid.cell_height * system.degrees_per_unit(), 5) + "°";
+    }
+    const LengthUnit& unit = system.linear_unit();
+    const std::string name = unit.is_metre() ? " m" : unit.is_foot() ? " ft" : " " + unit.name;
+    return significant(grid.cell_width, 5) + name + " × " + significant(grid.cell_height, 5) + name;
+}
+
 std::string where(const StudyResult& result) {
     std::string inputs;
     for (const InputFile& file : result.inputs) inputs += (inputs.empty() ? "" : "; ") + file.role + " " + file.name;
     const Grid& grid = result.grid;
     return "<p class=\"where\">" + html_text(result.system.name()) + ", " + std::to_string(grid.columns) + " × " + std::to_string(grid.rows) +
-           " cells of " + significant(grid.cell_width, 5) + " × " + significant(grid.cell_height, 5) + ". Made from " + html_text(inputs) + ".</p>\n";
+           " cells of " + html_text(cell_text(grid, result.system)) + ". Made from " + html_text(inputs) + ".</p>\n";
 }
 
 std::string caution_box() {

@@ -133,6 +133,9 @@ class Report(CommandTest):
         self.assertEqual([url for url in asked if not url.startswith("data:")], [self.page])
         self.assertEqual([entry for entry in self.driver.get_log("browser") if entry["level"] in ("SEVERE", "WARNING")], [])
 
+    def test_the_first_screen_says_how_large_the_cells_are_in_their_unit(self):
+        self.assertIn("500 × 600 cells of 2 m × 2 m", self.text)
+
     def test_its_policy_forbids_what_is_not_itself(self):
         policy = re.search(r'http-equiv="Content-Security-Policy" content="([^"]*)"', self.text)[1]
         self.assertIn("default-src 'none'", policy)
