@@ -11,6 +11,8 @@ using Json = nlohmann::ordered_json;
 
 double rounded(double value, int digits) { return std::stod(significant(value, digits)); }
 
+double to_decimals(double value, int decimals) { return std::stod(fixed_decimals(value, decimals)); }
+
 Json feature(Json geometry, Json properties) {
     return {{"type", "Feature"}, {"properties", std::move(properties)}, {"geometry", std::move(geometry)}};
 }

@@ -2,6 +2,7 @@
 
 #include <map>
 
+#include "feature_collection.hpp"
 #include "geographic_lines.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/study_geopackage.hpp"
@@ -11,8 +12,6 @@ namespace {
 
 using Json = nlohmann::ordered_json;
 
-double to_decimals(double value, int decimals) { return std::stod(fixed_decimals(value, decimals)); }
-
 Json parts_json(const StudyResult& result, const IsochroneRow& row) {
     Json parts = Json::array();
     for (const IsochronePart& part : row.band->parts) {
@@ -21,18 +20,16 @@ Json parts_json(const StudyResult& result, const IsochroneRow& row) {
     return parts;
 }
 
-Json nine_digits(double value) { return std::stod(significant(value, 9)); }
-
 /// What runs off; null where it is not known.
 void add_runoff(const StudyResult& result, const IsochroneRow& row, Json& json) {
     const std::optional<BandRunoff>& runoff = row.runoff;
     const auto where_any = [&](auto value) { return runoff ? Json(value(*runoff)) : Json(nullptr); };
-    json["return_period_years"] = where_any([&](const BandRunoff&) { return nine_digits(result.rain.raster_storm().return_period); });
-    json["ca_m2"] = where_any([](const BandRunoff& r) { return nine_digits(in_square_metres(r.runoff)); });
-    json["ca_until_m2"] = where_any([](const BandRunoff& r) { return nine_digits(in_square_metres(r.running)); });
+    json["return_period_years"] = where_any([&](const BandRunoff&) { return rounded(result.rain.raster_storm().return_period, 9); });
+    json["ca_m2"] = where_any([](const BandRunoff& r) { return rounded(in_square_metres(r.runoff), 9); });
+    json["ca_until_m2"] = where_any([](const BandRunoff& r) { return rounded(in_square_metres(r.running), 9); });
     json["rain_duration_min"] = where_any([](const BandRunoff& r) { return to_decimals(in_minutes(r.time), 4); });
-    json["intensity_mm_per_h"] = where_any([](const BandRunoff& r) { return r.intensity ? nine_digits(in_millimetres_per_hour(*r.intensity)) : Json(nullptr); });
-    json["flow_m3_per_s"] = where_any([](const BandRunoff& r) { return r.flow ? nine_digits(in_cubic_metres_per_second(*r.flow)) : Json(nullptr); });
+    json["intensity_mm_per_h"] = where_any([](const BandRunoff& r) { return r.intensity ? Json(rounded(in_millimetres_per_hour(*r.intensity), 9)) : Json(nullptr); });
+    json["flow_m3_per_s"] = where_any([](const BandRunoff& r) { return r.flow ? Json(rounded(in_cubic_metres_per_second(*r.flow), 9)) : Json(nullptr); });
 }
 
 Json properties_of(const StudyResult& result, const IsochroneRow& row) {

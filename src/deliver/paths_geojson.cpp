@@ -10,8 +10,6 @@ namespace {
 
 using Json = nlohmann::ordered_json;
 
-double to_decimals(double value, int decimals) { return std::stod(fixed_decimals(value, decimals)); }
-
 Json segment_properties(const StudyResult& result, const SegmentRow& row) {
     const Segment& segment = *row.segment;
     const CoverClass* cover = cover_of(result, segment);

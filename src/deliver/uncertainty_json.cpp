@@ -1,18 +1,8 @@
 #include "uncertainty_json.hpp"
 
-#include <cmath>
-
-#include "rillclock/core/number_text.hpp"
+#include "json_values.hpp"
 
 namespace rillclock {
-namespace {
-
-using Json = nlohmann::ordered_json;
-
-Json value_json(double value) { return std::isfinite(value) ? Json(std::stod(significant(value, 9))) : Json(nullptr); }
-Json minutes_json(double s) { return std::stod(fixed_decimals(s / 60.0, 6)); }
-
-}  // namespace
 
 Json uncertainty_json(const StudyResult& result) {
     const Uncertainty& found = *result.uncertainty;
@@ -20,9 +10,9 @@ Json uncertainty_json(const StudyResult& result) {
     for (const UncertainInput& input : found.inputs) {
         inputs.push_back({{"input", input.name},
                           {"unit", input.unit.empty() ? Json(nullptr) : Json(input.unit)},
-                          {"low", value_json(input.low)},
-                          {"typical", value_json(input.typical)},
-                          {"high", value_json(input.high)},
+                          {"low", digits(input.low, 9)},
+                          {"typical", digits(input.typical, 9)},
+                          {"high", digits(input.high, 9)},
                           {"range_from", input.source}});
     }
     return {{"draws", found.draws.size()},
