@@ -1,7 +1,9 @@
 #include "rillclock/catchment/candidate_heads.hpp"
 
 #include <algorithm>
+#include <array>
 #include <cmath>
+#include <compare>
 #include <map>
 #include <mutex>
 #include <unordered_map>
@@ -21,6 +23,14 @@ std::size_t sort_of(std::uint8_t surface) { return static_cast<std::size_t>(Step
 struct SettingFactors {
     std::vector<double> roughness;   ///< by surface class: n over the study's
     std::vector<double> fixed;       ///< by sort of step, on free slopes and then on the floor
+};
+
+/// Settings that share a walk over a tile; the last group is filled up with the last setting.
+struct SettingGroup {
+    std::array<const TravelSetting*, up::Lanes::count> setting{};
+    std::array<const SettingFactors*, up::Lanes::count> factors{};
+    std::vector<std::array<double, up::Lanes::count>> fixed;   ///< of all of them, as in SettingFactors
+    std::size_t first = 0;                                     ///< the number of its first setting
 };
 
 double floor_factor(double base, double floor) { return std::sqrt(std::max(base, least_slope) / std::max(floor, least_slope)); }
@@ -52,31 +62,36 @@ SettingFactors factors_of(const TravelSetting& setting, const TravelRules& base,
 
 /// A step where sheet flow may be under some setting.
 struct SheetStep {
-    Local cell = 0;
     std::uint8_t surface = 0;
     float length_m = 0.0F;
     float from_divide_m = 0.0F;
     float index_m = 0.0F;       ///< sheet index at the cell, in the study
-    float root_slope = 0.0F;
+    float slope = 0.0F;
+    float steepness_m = 0.0F;   ///< length over the root of slope
     float celerity = 0.0F;      ///< on ponded ground, m/s; 0 elsewhere
+};
+
+/// Heads of a subarea that lie close together, as far as they lie in the tile.
+struct HeadBlock {
+    std::uint32_t subarea = 0;
+    std::int64_t number = 0;   ///< within its subarea
+    [[nodiscard]] auto operator<=>(const HeadBlock&) const = default;
 };
 
 /// A cell that nothing drains to.
 struct HeadCell {
     Local cell = 0;
-    std::uint32_t subarea = 0;   ///< place among the tile's owners
-    std::int64_t block = 0;      ///< the same for heads of a subarea that lie close together
+    std::uint32_t block = 0;   ///< place among the tile's blocks
 };
 
 /// A tile with its steps, sorted by what a setting does to them.
 struct SortedDesk {
     TileDesk desk;
     std::vector<SheetStep> sheet;
-    std::vector<std::uint16_t> sort;         ///< of the others: place among the fixed factors
+    std::vector<std::uint32_t> sort;   ///< by cell: place among the fixed factors; beyond them, in `sheet`
     std::vector<HeadCell> heads;
-    std::vector<std::uint32_t> owners;
-    std::vector<std::int64_t> estimate;      ///< of each step's time
-    std::vector<std::int64_t> time;
+    std::vector<HeadBlock> blocks;
+    std::vector<up::Lanes> time;       ///< to the root under the settings of a group
 };
 
 /// Sheet-flow time by index, read from a table up to 128 m: an estimate, within a second.
@@ -106,23 +121,18 @@ double sheet_step_time(const SheetStep& step, const TravelSetting& setting, doub
     const SheetRules& rules = setting.rules.sheet;
     const SurfaceHydraulics& surface = setting.classes[step.surface];
     const double length = static_cast<double>(step.length_m);
-    const double root_slope = static_cast<double>(step.root_slope);
     const double celerity = static_cast<double>(step.celerity);
     const double index = static_cast<double>(step.index_m) * roughness;
-    const double index_step = surface.sheet_n * length / root_slope;
-    const double share = std::clamp(std::min((in_metres(rules.limit) - static_cast<double>(step.from_divide_m)) / length,
-                                             (in_metres(rules.index_limit) - index) / index_step), 0.0, 1.0);
-    const double shallow = surface.shallow_line ? in_metres_per_second(surface.shallow_line->at(root_slope * root_slope))
-                                                : in_metres_per_second(surface.shallow_k) * root_slope;
-    double time = (1.0 - share) * length / shallow;
+    const double index_step = surface.sheet_n * static_cast<double>(step.steepness_m);
+    const double room = in_metres(rules.limit) - static_cast<double>(step.from_divide_m);
+    const double index_room = in_metres(rules.index_limit) - index;
+    const bool is_sheet = room >= length && index_room >= index_step;   // most are, and need no division
+    const double share = is_sheet ? 1.0 : std::clamp(std::min(room / length, index_room / index_step), 0.0, 1.0);
+    double time = 0.0;
+    if (!is_sheet) time = (1.0 - share) * length / in_metres_per_second(shallow_speed(surface, static_cast<double>(step.slope)));
     if (share > 0) time += surface.sheet_factor * rules.storm_factor * (table(index + share * index_step) - table(index));
     if (!(celerity > 0)) return time;
     return std::min(time, length / std::min(celerity, in_metres_per_second(setting.rules.pond.speed)));
-}
-
-/// Time to the root under a setting.
-auto time_channel(const SortedDesk& at) {
-    return up::Add{[&at](Local cell) { return at.estimate[cell]; }};
 }
 
 /// A block's last cell to arrive under a setting.
@@ -180,34 +190,74 @@ void take_heads(const std::vector<LatestBlocks>& by_setting, std::vector<Cell>& 
     heads.insert(heads.end(), taken.begin(), taken.end());
 }
 
+/// The settings by groups.
+std::vector<SettingGroup> grouped(std::span<const TravelSetting> settings, const std::vector<SettingFactors>& factors) {
+    constexpr std::size_t lanes = up::Lanes::count;
+    std::vector<SettingGroup> groups((settings.size() + lanes - 1) / lanes);
+    for (std::size_t i = 0; i < groups.size(); ++i) {
+        SettingGroup& group = groups[i];
+        group.first = i * lanes;
+        group.fixed.resize(factors.front().fixed.size());
+        for (std::size_t lane = 0; lane < lanes; ++lane) {
+            const std::size_t number = std::min(group.first + lane, settings.size() - 1);
+            group.setting[lane] = &settings[number];
+            group.factors[lane] = &factors[number];
+            for (std::size_t sort = 0; sort < group.fixed.size(); ++sort) group.fixed[sort][lane] = factors[number].fixed[sort];
+        }
+    }
+    return groups;
+}
+
+/// The time of a step under each setting of a group.
+up::Lanes step_times(const SettingGroup& group, const SortedDesk& at, Local cell, const SheetTable& table) {
+    up::Lanes times;
+    const std::uint32_t sort = at.sort[cell];
+    if (sort >= group.fixed.size()) {
+        const SheetStep& step = at.sheet[sort - group.fixed.size()];
+        for (std::size_t lane = 0; lane < up::Lanes::count; ++lane) {
+            times.total[lane] = to_fixed(sheet_step_time(step, *group.setting[lane], group.factors[lane]->roughness[step.surface], table));
+        }
+        return times;
+    }
+    const auto base = static_cast<double>(at.desk.step[cell].fixed);
+    for (std::size_t lane = 0; lane < up::Lanes::count; ++lane) times.total[lane] = nearest_whole(base * group.fixed[sort][lane]);
+    return times;
+}
+
+/// Times to the root under the settings of a group.
+auto time_channel(const SettingGroup& group, const SortedDesk& at, const SheetTable& table) {
+    return up::AddLanes{[&group, &at, &table](Local cell) { return step_times(group, at, cell, table); }};
+}
+
+using TimeChannel = decltype(time_channel(std::declval<SettingGroup&>(), std::declval<SortedDesk&>(), std::declval<SheetTable&>()));
+
 class Candidates {
 public:
     Candidates(const TiledTravel& travel, const TiledOwners& owners, std::span<const TravelSetting> settings)
-        : travel_(travel), owners_(owners), settings_(settings), table_(travel.rules().sheet.formula),
-          borders_(settings.size(), UpBorders<std::int64_t>(travel.ground().forest)) {
+        : travel_(travel), owners_(owners), settings_(settings), table_(travel.rules().sheet.formula) {
         for (const TravelSetting& setting : settings) {
             greatest_limit_ = std::max(greatest_limit_, in_metres(setting.rules.sheet.limit));
             factors_.push_back(factors_of(setting, travel.rules(), travel.ground().surface.classes));
         }
+        groups_ = grouped(settings, factors_);
+        borders_.assign(groups_.size(), UpBorders<up::Lanes>(travel.ground().forest));
     }
 
     std::vector<Cell> find() {
         for_each_sorted([&](Tile tile, SortedDesk& at) {
             owners_.read_tile(tile, at.desk);
             count_cells(at.desk);
-            for (std::size_t i = 0; i < factors_.size(); ++i) {
-                estimate(i, at);
-                collect_up(tile, at.desk.flow, borders_[i].part(time_channel(at), at.time));
+            for (std::size_t i = 0; i < groups_.size(); ++i) {
+                collect_up(tile, at.desk.flow, borders_[i].part(time_channel(groups_[i], at, table_), at.time));
             }
         });
-        for (auto& border : borders_) border.solve<decltype(time_channel(std::declval<SortedDesk&>()))>();
+        for (auto& border : borders_) border.solve<TimeChannel>();
         for_each_sorted([&](Tile tile, SortedDesk& at) {
             owners_.read_tile(tile, at.desk);
             list_heads(at);
-            for (std::size_t i = 0; i < factors_.size(); ++i) {
-                estimate(i, at);
-                fill_up(tile, at.desk.flow, borders_[i].part(time_channel(at), at.time));
-                keep_last(i, at);
+            for (std::size_t i = 0; i < groups_.size(); ++i) {
+                fill_up(tile, at.desk.flow, borders_[i].part(time_channel(groups_[i], at, table_), at.time));
+                keep_last(groups_[i], at);
             }
         });
         return cells();
@@ -226,22 +276,23 @@ private:
     }
 
     void sort_steps(SortedDesk& at) const {
-        const auto sorts = static_cast<std::uint16_t>(sort_of(0) + travel_.ground().surface.classes.size());
+        const auto sorts = static_cast<std::uint32_t>(sort_of(0) + travel_.ground().surface.classes.size());
         const auto overland_floor = static_cast<float>(std::max(travel_.rules().slope.overland_floor, least_slope));
         const auto channel_floor = static_cast<float>(std::max(travel_.rules().slope.channel_floor, least_slope));
         at.sort.assign(at.desk.flow.size(), 0);
-        at.estimate.assign(at.desk.flow.size(), 0);
         at.sheet.clear();
         for (const Local local : at.desk.flow.order()) {
             const Cell cell = at.desk.flow.cell(local);
             const GroundKind kind = travel_.kind(cell);
             if (kind == GroundKind::overland && from_fixed(at.desk.from_divide[local]) < greatest_limit_) {
-                if (at.desk.length[local] > 0) at.sheet.push_back(sheet_step(at.desk, local));
+                if (at.desk.length[local] == 0) continue;
+                at.sort[local] = 2 * sorts + static_cast<std::uint32_t>(at.sheet.size());
+                at.sheet.push_back(sheet_step(at.desk, local));
                 continue;
             }
             const float floor = kind == GroundKind::overland ? overland_floor : channel_floor;
-            const auto sort = static_cast<std::uint16_t>(sort_of_step(at.desk, local, kind));
-            at.sort[local] = static_cast<std::uint16_t>(sort + (travel_.slope(cell) <= floor ? sorts : 0));
+            const auto sort = static_cast<std::uint32_t>(sort_of_step(at.desk, local, kind));
+            at.sort[local] = sort + (travel_.slope(cell) <= floor ? sorts : 0);
         }
     }
 
@@ -253,24 +304,15 @@ private:
         const Cell cell = desk.flow.cell(local);
         const double depth = ponded_m(desk, local);
         const bool is_ponded = depth > in_metres(travel_.rules().pond.depth);
-        return {.cell = local,
-                .surface = travel_.ground().surface.index[cell],
-                .length_m = static_cast<float>(from_fixed(desk.length[local])),
+        const double length = from_fixed(desk.length[local]);
+        const float slope = travel_.slope(cell);
+        return {.surface = travel_.ground().surface.index[cell],
+                .length_m = static_cast<float>(length),
                 .from_divide_m = static_cast<float>(from_fixed(desk.from_divide[local])),
                 .index_m = static_cast<float>(from_fixed(desk.sheet_index[local])),
-                .root_slope = std::sqrt(travel_.slope(cell)),
+                .slope = slope,
+                .steepness_m = static_cast<float>(length / static_cast<double>(std::sqrt(slope))),
                 .celerity = is_ponded ? static_cast<float>(in_metres_per_second(wave_celerity(metres(depth)))) : 0.0F};
-    }
-
-    /// The time of every step of the tile under a setting.
-    void estimate(std::size_t setting, SortedDesk& at) const {
-        const SettingFactors& factors = factors_[setting];
-        for (const Local local : at.desk.flow.order()) {
-            at.estimate[local] = nearest_whole(static_cast<double>(at.desk.step[local].fixed) * factors.fixed[at.sort[local]]);
-        }
-        for (const SheetStep& step : at.sheet) {
-            at.estimate[step.cell] = to_fixed(sheet_step_time(step, settings_[setting], factors.roughness[step.surface], table_));
-        }
     }
 
     [[nodiscard]] std::size_t sort_of_step(const TileDesk& desk, Local local, GroundKind kind) const {
@@ -300,33 +342,38 @@ private:
 
     /// Lists the cells that nothing drains to, each in a block of its subarea.
     void list_heads(SortedDesk& at) const {
-        std::unordered_map<std::uint32_t, std::uint32_t> place;
-        at.owners.clear();
+        std::map<HeadBlock, std::uint32_t> place;
         at.heads.clear();
+        at.blocks.clear();
         const std::int64_t columns = travel_.ground().forest.codes().columns();
         for (Local local = 0; local < at.desk.flow.size(); ++local) {
             const std::uint32_t owner = at.desk.owner[local];
             if (owner == 0 || at.desk.from_divide[local] > 0) continue;
-            const auto [found, is_new] = place.emplace(owner, static_cast<std::uint32_t>(place.size()));
-            if (is_new) at.owners.push_back(owner);
             const std::int64_t side = block_side(cells_of_.at(owner));
             const Cell cell = at.desk.flow.cell(local);
-            at.heads.push_back({local, found->second, cell / columns / side * columns + cell % columns / side});
+            const HeadBlock block{owner, cell / columns / side * columns + cell % columns / side};
+            const auto [found, is_new] = place.emplace(block, static_cast<std::uint32_t>(place.size()));
+            if (is_new) at.blocks.push_back(block);
+            at.heads.push_back({local, found->second});
         }
     }
 
-    /// The last head of each block of each subarea, as far as they lie in the tile.
-    void keep_last(std::size_t setting, const SortedDesk& at) {
-        std::map<std::pair<std::uint32_t, std::int64_t>, BlockLast> last;
+    /// The last head of each block of each subarea under each setting of a group, as far as they lie in the tile.
+    void keep_last(const SettingGroup& group, const SortedDesk& at) {
+        const std::size_t lanes = std::min(up::Lanes::count, settings_.size() - group.first);
+        std::vector<BlockLast> last(at.blocks.size() * lanes);
         for (const HeadCell& head : at.heads) {
-            BlockLast& kept = last[{head.subarea, head.block}];
-            if (at.time[head.cell] > kept.time) kept = {at.time[head.cell], at.desk.flow.cell(head.cell), head.block};
+            const up::Lanes& time = at.time[head.cell];
+            for (std::size_t lane = 0; lane < lanes; ++lane) {
+                BlockLast& kept = last[head.block * lanes + lane];
+                if (time.total[lane] > kept.time) kept = {time.total[lane], at.desk.flow.cell(head.cell), at.blocks[head.block].number};
+            }
         }
         const std::lock_guard lock(mutex_);
-        for (const auto& [key, block] : last) {
-            std::vector<LatestBlocks>& latest = latest_[at.owners[key.first]];
-            latest.resize(factors_.size());
-            latest[setting].add(block);
+        for (std::size_t block = 0; block < at.blocks.size(); ++block) {
+            std::vector<LatestBlocks>& latest = latest_[at.blocks[block].subarea];
+            latest.resize(settings_.size());
+            for (std::size_t lane = 0; lane < lanes; ++lane) latest[group.first + lane].add(last[block * lanes + lane]);
         }
     }
 
@@ -343,7 +390,8 @@ private:
     SheetTable table_;
     double greatest_limit_ = 0.0;   ///< m
     std::vector<SettingFactors> factors_;
-    std::vector<UpBorders<std::int64_t>> borders_;
+    std::vector<SettingGroup> groups_;
+    std::vector<UpBorders<up::Lanes>> borders_;   ///< by group
     Workspaces<SortedDesk> desks_;
     std::mutex mutex_;
     std::unordered_map<std::uint32_t, std::int64_t> cells_of_;     ///< of each subarea

@@ -1,5 +1,9 @@
 #pragma once
 
+#include <array>
+#include <cstddef>
+#include <cstdint>
+
 namespace rillclock {
 
 /// The closed set of channels that the two sweeps over a flow forest carry.
@@ -44,6 +48,24 @@ struct Add {
     Step step;
 };
 
+/// `Add` of several totals at a time: one walk serves them all.
+struct Lanes {
+    static constexpr std::size_t count = 4;
+    std::array<std::int64_t, count> total{};
+
+    [[nodiscard]] friend Lanes operator+(const Lanes& a, const Lanes& b) {
+        Lanes sum;
+        for (std::size_t lane = 0; lane < count; ++lane) sum.total[lane] = a.total[lane] + b.total[lane];
+        return sum;
+    }
+};
+
+/// totals(c) = steps(c) + totals(the cell below c); 0 at roots.
+template <class Steps>
+struct AddLanes {
+    Steps steps;
+};
+
 /// value(c) = the greater of own(c) and the value of the cell below.
 template <class Own>
 struct Max {
@@ -58,6 +80,8 @@ struct First {
 
 template <class Step>
 Add(Step) -> Add<Step>;
+template <class Steps>
+AddLanes(Steps) -> AddLanes<Steps>;
 template <class Own>
 Max(Own) -> Max<Own>;
 template <class Label>

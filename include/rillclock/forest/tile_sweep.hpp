@@ -56,6 +56,13 @@ struct Rule<up::Add<S>> {
     static Value combine(Value near, Value far) { return near + far; }
 };
 
+template <class S>
+struct Rule<up::AddLanes<S>> {
+    using Value = up::Lanes;
+    static Value own(const up::AddLanes<S>& channel, Local cell, bool is_root) { return is_root ? Value{} : channel.steps(cell); }
+    static Value combine(const Value& near, const Value& far) { return near + far; }
+};
+
 template <class O>
 struct Rule<up::Max<O>> {
     using Value = double;
