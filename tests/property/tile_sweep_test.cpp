@@ -19,6 +19,8 @@ struct Desk {
 /// Weights that differ from cell to cell, the same for the plain sweeps and the tiled ones.
 std::int64_t weight(Cell cell) { return 1 + static_cast<std::int64_t>(cell) * 2654435761 % 97; }
 double level(Cell cell) { return static_cast<double>(weight(cell)); }
+/// Of all lanes a different one.
+up::Lanes multiples(std::int64_t value) { return {{value, 2 * value, 3 * value, -value}}; }
 std::uint32_t label(Cell cell) { return weight(cell) > 80 ? cell + 1 : 0; }
 
 template <class Part>
@@ -76,6 +78,10 @@ TEST_CASE("tiled sweeps give every cell what the plain sweeps give it, whatever 
         REQUIRE(tiled<UpBorders<std::int64_t>, std::int64_t>(forest, executor, [](const TileFlow& flow) {
             return up::Add{[&](Local cell) { return weight(flow.cell(cell)); }};
         }) == way);
+        const Raster<up::Lanes> lanes = tiled<UpBorders<up::Lanes>, up::Lanes>(forest, executor, [](const TileFlow& flow) {
+            return up::AddLanes{[&](Local cell) { return multiples(weight(flow.cell(cell))); }};
+        });
+        for (Cell cell = 0; cell < way.size(); ++cell) REQUIRE(lanes[cell].total == multiples(way[cell]).total);
         REQUIRE(tiled<UpBorders<double>, double>(forest, executor, [](const TileFlow& flow) {
             return up::Max{[&](Local cell) { return level(flow.cell(cell)); }};
         }) == highest);
