@@ -47,7 +47,7 @@ std::string travel_time_doc() {
            "threads: how many to work on; 0 for as many as may be used. No figure depends on it.\n"
            "progress: called with (stage, done, total) while the work goes on; where it returns False the work stops with Stopped.\n\n"
            "Returns TravelTimes; `minutes` is in every cell what the command writes to travel_time.tif for the same data. Raises InputError\n"
-           "where shapes, types or values cannot be used. Memory: 15 to 25 bytes a cell and the arrays that are returned, 23 more.\n\n"
+           "where shapes, types or values cannot be used. Memory: 12 to 24 bytes a cell and the arrays that are returned, 23 more.\n\n"
            "Settings:\n" + travel_settings_text();
 }
 

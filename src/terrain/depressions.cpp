@@ -10,17 +10,19 @@ bool lies_deeper(const Depression& a, const Depression& b) {
     return std::tie(b.depth, a.deepest) < std::tie(a.depth, b.deepest);
 }
 
-/// A void has NaN for both, and no comparison with it holds.
-bool is_below_spill(const DepressionGround& in, Cell cell) { return in.spill[cell] > in.elevations[cell]; }
+RowColumn place_of(const DepressionGround& in, Cell cell) { return {cell / in.codes.columns(), cell % in.codes.columns()}; }
 
 /// Puts the cells beside one that belong to a depression that spills at `level`, and were not seen, behind the others.
 void push_beside(const DepressionGround& in, Cell cell, double level, std::vector<bool>& seen, std::vector<Cell>& queue) {
     const Raster<FlowCode>& codes = in.codes;
+    const RowColumn from = place_of(in, cell);
     for (const Direction d : all_directions) {
-        const RowColumn at = neighbour({cell / codes.columns(), cell % codes.columns()}, d);
+        const RowColumn at = neighbour(from, d);
         if (at.row < 0 || at.row >= codes.rows() || at.column < 0 || at.column >= codes.columns()) continue;
         const auto beside = static_cast<Cell>(at.row * codes.columns() + at.column);
-        if (seen[beside] || !is_below_spill(in, beside) || in.spill[beside] < level || in.spill[beside] > level) continue;
+        if (seen[beside] || !in.spill.is_below(at)) continue;
+        const double its = in.spill.at(at);
+        if (its < level || its > level) continue;
         seen[beside] = true;
         queue.push_back(beside);
     }
@@ -34,12 +36,13 @@ public:
     }
 
     Depressions find() {
-        for (std::size_t i = 0; i < seen_.size(); ++i) {
-            const auto cell = static_cast<Cell>(i);
-            if (seen_[i] || !is_below_spill(in_, cell)) continue;
-            found_.push_back(depression_around(cell));
-            ++count_;
-            if (found_.size() >= 2 * most_ + 1000) keep_deepest();
+        for (std::int64_t row = 0; row < in_.codes.rows(); ++row) {
+            in_.spill.for_each_below(row, [this](Cell cell) {
+                if (seen_[cell]) return;
+                found_.push_back(depression_around(cell));
+                ++count_;
+                if (found_.size() >= 2 * most_ + 1000) keep_deepest();
+            });
         }
         keep_deepest();
         std::sort(found_.begin(), found_.end(), lies_deeper);
@@ -74,7 +77,7 @@ private:
     }
 
     [[nodiscard]] Cell pass_of(Cell cell, double level) const {
-        while (is_below_spill(in_, cell) && !(in_.spill[cell] < level)) {
+        while (in_.spill.is_below(place_of(in_, cell)) && !(in_.spill[cell] < level)) {
             const auto d = static_cast<Direction>(in_.codes[cell]);
             cell = neighbour(cell, d, in_.codes.columns());
         }

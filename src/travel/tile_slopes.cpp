@@ -51,18 +51,18 @@ private:
         const auto d = static_cast<Direction>(code);
         distance -= ground_.in.ground.length(at / codes_.columns(), d);
         at = neighbour(at, d, codes_.columns());
-        return place(at, distance);
+        return place(at, distance, ground_.spill[at]);
     }
 
-    ProfilePlace place(Cell cell, FixedLength distance) {
-        return {.distance_m = from_fixed(distance), .level = ground_.spill[cell],
+    ProfilePlace place(Cell cell, FixedLength distance, double level) {
+        return {.distance_m = from_fixed(distance), .level = level,
                 .concentrated = read_shared(kind_, cell) != GroundKind::overland};
     }
 
     template <class Path>
     void visit(Path& path, Local local, std::size_t position) {
         const Cell cell = desk_.flow.cell(local);
-        path.put(position, place(cell, desk_.flow_distance[local]));
+        path.put(position, place(cell, desk_.flow_distance[local], desk_.spill[local]));
         const GroundKind kind = read_shared(kind_, cell);
         const bool is_root = !is_direction(desk_.flow.code(local));
         slope_[cell] = is_root ? static_cast<float>(at_top_.floor(kind)) : at_top_.slope(path, kind);

@@ -28,7 +28,7 @@ void for_each_cell(const TileFlow& flow, Look look) {
 TiledTravel::TiledTravel(const TiledGround& ground, const TravelRules& rules, const Executor& executor)
     : in_(ground), rules_(rules), executor_(executor), area_(ground.forest), from_divide_(ground.forest),
       sheet_index_(ground.forest), flow_distance_(ground.forest), spill_border_(ground.forest), storm_(ground.forest),
-      fixed_(ground.forest), spill_(ground.elevations.rows(), ground.elevations.columns(), ground.elevations.width()),
+      fixed_(ground.forest), spill_(ground.elevations, ground.forest.tiles()),
       kind_(ground.elevations.rows(), ground.elevations.columns(), GroundKind::overland),
       slope_(ground.elevations.rows(), ground.elevations.columns()) {
     find_areas();
@@ -60,7 +60,7 @@ void TiledTravel::find_kinds() {
         for (Local local = 0; local < desk.flow.size(); ++local) {
             if (desk.flow.code(local) == flow_void) desk.spill[local] = desk.elevation[local];
         }
-        spill_.write(desk.flow.window(), desk.spill);
+        spill_.write(tile, desk.elevation, desk.spill);
 
         fill_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area));
         std::vector<RootArea> roots;
@@ -80,6 +80,8 @@ void TiledTravel::find_slopes() {
     for_each_tile(in_.forest, executor_, desks_, [&](Tile tile, TileDesk& desk) {
         read_lengths(desk);
         fill_up(tile, desk.flow, flow_distance_.part(distance_channel(desk), desk.flow_distance));
+        read_elevations(desk);
+        read_spill(tile, desk);
         find_tile_slopes(ground, desk, kind_, slope_);
         read_index_steps(desk);
         collect_down(tile, desk.flow, sheet_index_.part(index_channel(desk), desk.sheet_index));
@@ -106,6 +108,12 @@ void TiledTravel::read_elevations(TileDesk& desk) const {
     in_.elevations.read(desk.flow.window(), desk.elevation);
 }
 
+/// Of a tile whose elevations were read.
+void TiledTravel::read_spill(Tile tile, TileDesk& desk) const {
+    desk.spill.resize(desk.flow.size());
+    spill_.read(tile, desk.elevation, desk.spill);
+}
+
 void TiledTravel::read_lengths(TileDesk& desk) const {
     desk.length.resize(desk.flow.size());
     const Window& window = desk.flow.window();
@@ -129,8 +137,7 @@ void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
     read_elevations(desk);
     read_lengths(desk);
     read_index_steps(desk);
-    desk.spill.resize(desk.flow.size());
-    spill_.read(desk.flow.window(), desk.spill);
+    read_spill(tile, desk);
     fill_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area),
               from_divide_.part(divide_channel(desk), desk.from_divide), sheet_index_.part(index_channel(desk), desk.sheet_index));
     desk.step.resize(desk.flow.size());

@@ -33,19 +33,19 @@ class Memory(CommandTest):
         return ["--elevation", "dem.vrt", *self.words[2:]]
 
     def test_a_run_beyond_the_memory_is_refused_with_numbers_before_it_begins(self):
-        # 20 bytes a cell and 350 MB: 900 million cells need 18.35 GB.
+        # 16 bytes a cell and 350 MB: 900 million cells need 14.75 GB.
         self.refused(3, "run", *self.huge(30_000, 30_000), **self.limited(),
-                     says=("900 million cells", "18.4 GB", "2.15 GB", "ulimit -v", "gdal_translate -projwin"))
+                     says=("900 million cells", "14.8 GB", "2.15 GB", "ulimit -v", "gdal_translate -projwin"))
         self.assertFalse((self.folder / "result").exists())
 
     def test_wide_elevations_need_more(self):
-        self.refused(3, "run", *self.huge(30_000, 30_000, "Float64"), **self.limited(), says=("27.4 GB",))
+        self.refused(3, "run", *self.huge(30_000, 30_000, "Float64"), **self.limited(), says=("21.9 GB",))
 
     def test_check_says_it_too(self):
         run = self.rillclock("check", *self.huge(30_000, 30_000), **self.limited())
         self.assertEqual(run.returncode, 3, run.stderr)
-        self.assertIn("cost: about 18.4 GB of memory (the limit set for the process (ulimit -v) allows 2.15 GB)", run.stdout)
-        self.assertIn("would stop the run here: a run over 900 million cells needs about 18.4 GB", run.stderr)
+        self.assertIn("cost: about 14.8 GB of memory (the limit set for the process (ulimit -v) allows 2.15 GB)", run.stdout)
+        self.assertIn("would stop the run here: a run over 900 million cells needs about 14.8 GB", run.stderr)
 
     def test_what_fits_runs_within_its_limit(self):
         self.done("run", *self.words, "--threads", "2", **self.limited())

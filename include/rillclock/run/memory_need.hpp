@@ -21,12 +21,13 @@ struct MemoryTask {
 
 /// Memory that a run needs, in bytes, with room to spare.
 ///
-/// What is kept for every cell is 15 bytes, 25 where elevations are wide, and 1 of a soil raster; 5 more are to spare. Tiles, strips of the rasters being written and
-/// the libraries take 150 MB at least, and 350 MB once there are enough cells to fill them. A bin of arrivals takes 72 bytes with what
+/// What is kept for every cell is 11.2 bytes, and 4 more where it lies below its spill elevation; 15.2 and 8 where elevations are wide; and 1 of a
+/// soil raster. All cells are taken to lie below theirs: what that leaves over goes to strips of the rasters being written, which grow with
+/// their width. Tiles and the libraries take 150 MB at least, and 350 MB once there are enough cells to fill them. A bin of arrivals takes 72 bytes with what
 /// the heap adds; there may be one a cell, but in data of some size they share them: 20 bytes a cell were seen at 36 million cells.
 [[nodiscard]] constexpr double memory_need(const MemoryTask& task) {
     const auto cells = static_cast<double>(task.cells);
-    const double kept = cells * ((task.wide_elevations ? 30.0 : 20.0) + (task.soil_raster ? 1.0 : 0.0) + (task.rain_zones ? 1.0 : 0.0) +
+    const double kept = cells * ((task.wide_elevations ? 24.0 : 16.0) + (task.soil_raster ? 1.0 : 0.0) + (task.rain_zones ? 1.0 : 0.0) +
                                  (task.results_kept ? 23.0 : 0.0));
     const double around = 150e6 + std::min(200e6, cells * 40.0);
     const double bins = task.own_storms ? std::min(cells * 72.0, 72e6 + cells * 25.0) : 0.0;

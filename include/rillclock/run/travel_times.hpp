@@ -39,7 +39,7 @@ struct TravelTimes {
 ///
 /// Of the study count the cover book, the 2-year 24-hour rain and what else `travel_time_keys` lists; the names of rasters may be empty.
 /// No file is read but the cover book and velocity chart that the study names, and none is written. `threads` of 0 means as many as may be used; no
-/// figure depends on it. Memory: 15 bytes a cell and what is returned, 23 more. Cost: linear in the cells.
+/// figure depends on it. Memory: 12 to 16 bytes a cell (16 to 24 where elevations are wide) and what is returned, 23 more. Cost: linear in the cells.
 ///
 /// Throws Error (inputs) where the two grids differ, a cell size is not above 0 or not finite, no cell has data, the cover has classes
 /// that the book lacks, or the study asks for what needs files or points (kinematic sheet flow, mapped lines, ranges); machine where

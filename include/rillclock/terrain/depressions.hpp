@@ -5,6 +5,7 @@
 #include "rillclock/forest/flow_code.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
+#include "rillclock/terrain/spill_store.hpp"
 
 namespace rillclock {
 
@@ -28,7 +29,7 @@ struct Depressions {
 /// What depressions are found on.
 struct DepressionGround {
     const ElevationStore& elevations;
-    const ElevationStore& spill;
+    const SpillStore& spill;
     const Raster<FlowCode>& codes;
     const Ground& ground;
 };

@@ -7,6 +7,7 @@
 #include "rillclock/forest/tile_sweep.hpp"
 #include "rillclock/raster/ground.hpp"
 #include "rillclock/terrain/elevation_store.hpp"
+#include "rillclock/terrain/spill_store.hpp"
 #include "rillclock/tiles/tile_memory.hpp"
 #include "rillclock/travel/root_area.hpp"
 #include "rillclock/travel/step.hpp"
@@ -59,7 +60,7 @@ struct TileDesk {
 /// pass               local work                                            kept a cell
 /// 1 areas            down: area, distance from the divide; up: distance    –
 ///                    to the root, spill elevation
-/// 2 kinds            spill elevation, kind of ground                       spill 4 (8), kind 1
+/// 2 kinds            spill elevation, kind of ground                       kind 1, spill as SpillStore
 /// 3 slopes           slope ahead; down: sheet index                        slope 4
 /// 4 times            step times; up: A, B                                  –
 /// Between two passes stands one sweep over the exits of all tiles. What is not kept is made again from the border values by
@@ -76,7 +77,7 @@ public:
     [[nodiscard]] const Executor& executor() const { return executor_; }
     /// Desks for whoever works on tiles; those of the passes, so that no more are made than there are threads.
     [[nodiscard]] Workspaces<TileDesk>& desks() const { return desks_; }
-    [[nodiscard]] const ElevationStore& spill() const { return spill_; }
+    [[nodiscard]] const SpillStore& spill() const { return spill_; }
     /// Slope ahead of a cell, rise over run.
     [[nodiscard]] float slope(Cell cell) const { return slope_[cell]; }
     /// What a cell's ground asks of the water.
@@ -124,6 +125,7 @@ private:
     }
     void read_steps(Tile tile, TileDesk& desk) const;
     void read_elevations(TileDesk& desk) const;
+    void read_spill(Tile tile, TileDesk& desk) const;
     void read_lengths(TileDesk& desk) const;
     void read_index_steps(TileDesk& desk) const;
 
@@ -138,7 +140,7 @@ private:
     UpBorders<double> spill_border_;
     UpBorders<std::int64_t> storm_;
     UpBorders<std::int64_t> fixed_;
-    ElevationStore spill_;
+    SpillStore spill_;
     Raster<GroundKind> kind_;
     Raster<float> slope_;
     std::vector<RootArea> roots_;

@@ -16,12 +16,28 @@ ElevationStore stored(const Elevations& z) {
     return store;
 }
 
+SpillStore spills(const ElevationStore& elevations, const Elevations& spill) {
+    const TileGrid tiles(spill.rows(), spill.columns(), 3);
+    SpillStore store(elevations, tiles);
+    for (Tile tile = 0; tile < tiles.count(); ++tile) {
+        const Window window = tiles.window(tile);
+        std::vector<double> ground(static_cast<std::size_t>(window.size()));
+        elevations.read(window, ground);
+        std::vector<double> level;
+        for (std::int64_t row = 0; row < window.rows; ++row) {
+            for (std::int64_t column = 0; column < window.columns; ++column) level.push_back(spill(window.row + row, window.column + column));
+        }
+        store.write(tile, ground, level);
+    }
+    return store;
+}
+
 const Ground two_metres = Ground::planar(metres(2), metres(2));
 
 Depressions depressions_of(const Elevations& z, const std::vector<Cell>& paths = {}, std::size_t most = 100) {
     const FlowForest forest = flow_forest_of(z, two_metres);
     const ElevationStore elevations = stored(z);
-    const ElevationStore spill = stored(spill_elevations(forest, z));
+    const SpillStore spill = spills(elevations, spill_elevations(forest, z));
     return find_depressions({.elevations = elevations, .spill = spill, .codes = forest.codes(), .ground = two_metres}, paths, most);
 }
 
@@ -64,7 +80,7 @@ TEST_CASE("the cells of a depression are found again, once more if they are aske
     const Elevations z = drawings::terrain(two_pits);
     const FlowForest forest = flow_forest_of(z, two_metres);
     const ElevationStore elevations = stored(z);
-    const ElevationStore spill = stored(spill_elevations(forest, z));
+    const SpillStore spill = spills(elevations, spill_elevations(forest, z));
     DepressionCells cells({.elevations = elevations, .spill = spill, .codes = forest.codes(), .ground = two_metres});
     const Depressions found = depressions_of(z);
     for (int time = 0; time < 2; ++time) {
