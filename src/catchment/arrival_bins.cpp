@@ -1,9 +1,20 @@
 #include "rillclock/catchment/arrival_bins.hpp"
 
+#include <algorithm>
 #include <cmath>
 #include <utility>
 
 namespace rillclock {
+namespace {
+
+bool is_earlier(const ArrivalBins::Bin& a, const ArrivalBins::Bin& b) { return a.second < b.second; }
+
+void put_into(const ArrivalBins::Bin& bin, ArrivalBins::Bin& into, double storm_factor) {
+    into.area += bin.area;
+    if (arrives_later(bin.last, into.last, storm_factor)) into.last = bin.last;
+}
+
+}  // namespace
 
 bool arrives_later(const Head& a, const Head& b, double storm_factor) {
     const double ta = in_seconds(a.time.under(storm_factor));
@@ -11,46 +22,72 @@ bool arrives_later(const Head& a, const Head& b, double storm_factor) {
     return ta != tb ? ta > tb : a.cell < b.cell;
 }
 
-void ArrivalBins::add(std::int64_t second, const Bin& bin, double storm_factor) {
-    area_ += bin.area;
-    const auto [at, is_new] = bins_.try_emplace(second, bin);
-    if (is_new) return;
-    at->second.area += bin.area;
-    if (arrives_later(bin.last, at->second.last, storm_factor)) at->second.last = bin.last;
+void ArrivalBins::add(const Head& head, FixedArea area, double storm_factor) {
+    const Bin bin{second_of(head.time, storm_factor), area, head};
+    add_in_order({&bin, 1}, storm_factor);
+}
+
+void ArrivalBins::add(std::vector<Bin> bins, double storm_factor) {
+    std::sort(bins.begin(), bins.end(), is_earlier);
+    std::size_t kept = 0;
+    for (std::size_t i = 1; i < bins.size(); ++i) {
+        if (bins[i].second == bins[kept].second) put_into(bins[i], bins[kept], storm_factor);
+        else bins[++kept] = bins[i];
+    }
+    if (!bins.empty()) bins.resize(kept + 1);
+    add_in_order(bins, storm_factor);
+}
+
+/// Most seconds are there already as a rule; new ones are put in their places all together.
+void ArrivalBins::add_in_order(std::span<const Bin> bins, double storm_factor) {
+    std::vector<Bin> fresh;
+    auto at = bins_.begin();
+    for (const Bin& bin : bins) {
+        area_ += bin.area;
+        at = std::lower_bound(at, bins_.end(), bin, is_earlier);
+        if (at != bins_.end() && at->second == bin.second) put_into(bin, *at, storm_factor);
+        else fresh.push_back(bin);
+    }
+    if (fresh.empty()) return;
+    const auto there = static_cast<std::ptrdiff_t>(bins_.size());
+    bins_.insert(bins_.end(), fresh.begin(), fresh.end());
+    std::inplace_merge(bins_.begin(), bins_.begin() + there, bins_.end(), is_earlier);
 }
 
 std::int64_t ArrivalBins::second_of(const StepTime& time, double storm_factor) {
     return static_cast<std::int64_t>(std::floor(in_seconds(time.under(storm_factor))));
 }
 
-void ArrivalBins::add(const Head& head, FixedArea area, double storm_factor) {
-    add(second_of(head.time, storm_factor), {area, head}, storm_factor);
-}
-
 void ArrivalBins::take(ArrivalBins&& other, double storm_factor) {
-    // The larger map stays where it is, so that a long chain of points costs little.
+    // The larger array stays where it is, so that a long chain of points costs little.
     if (other.bins_.size() > bins_.size()) std::swap(*this, other);
-    for (const auto& [second, bin] : other.bins_) add(second, bin, storm_factor);
+    add_in_order(other.bins_, storm_factor);
 }
 
-Head ArrivalBins::by_share(double share) const {
-    const double wanted = share * static_cast<double>(area());
+Head ArrivalBins::by_share(double share) const { return by_shares({&share, 1}).front(); }
+
+std::vector<Head> ArrivalBins::by_shares(std::span<const double> shares) const {
+    std::vector<Head> heads;
     FixedArea arrived = 0;
-    for (const auto& [key, bin] : bins_) {
+    for (const Bin& bin : bins_) {
         arrived += bin.area;
-        if (static_cast<double>(arrived) >= wanted) return bin.last;
+        while (heads.size() < shares.size() && static_cast<double>(arrived) >= shares[heads.size()] * static_cast<double>(area())) {
+            heads.push_back(bin.last);
+        }
+        if (heads.size() == shares.size()) return heads;
     }
-    return bins_.rbegin()->second.last;
+    heads.resize(shares.size(), bins_.back().last);
+    return heads;
 }
 
 Head ArrivalBins::last_without(double share) const {
     const double spared = share * static_cast<double>(area());
     FixedArea left_out = 0;
     for (auto bin = bins_.rbegin(); bin != bins_.rend(); ++bin) {
-        left_out += bin->second.area;
-        if (static_cast<double>(left_out) > spared) return bin->second.last;
+        left_out += bin->area;
+        if (static_cast<double>(left_out) > spared) return bin->last;
     }
-    return bins_.begin()->second.last;
+    return bins_.front().last;
 }
 
 }  // namespace rillclock

@@ -57,13 +57,20 @@ public:
         const std::int64_t second = ArrivalBins::second_of(cell.head.time, storm_factor_);
         ArrivalBins::Bin& bin = bins_[{owner, second}];
         const bool is_first = bin.area == 0;
+        bin.second = second;
         bin.area += cell.area;
         if (is_first || arrives_later(cell.head, bin.last, storm_factor_)) bin.last = cell.head;
     }
 
+    /// To be called once, after the last cell.
+    void finish() {
+        std::unordered_map<std::uint32_t, std::vector<ArrivalBins::Bin>> bins;
+        for (const auto& [key, bin] : bins_) bins[key.owner].push_back(bin);
+        for (auto& [owner, of_owner] : bins) by_owner_[owner].bins.add(std::move(of_owner), storm_factor_);
+    }
+
     void hand_over(std::vector<Arrivals>& subareas) {
         for (auto& [owner, arrivals] : by_owner_) subareas[owner - 1].add(std::move(arrivals), storm_factor_);
-        for (const auto& [key, bin] : bins_) subareas[key.owner - 1].bins.add(key.second, bin, storm_factor_);
     }
 
 private:
@@ -110,6 +117,7 @@ void ArrivalTally::add(const TileDesk& desk) {
                                       .is_border = at_edge && is_beside_edge(ground.forest.codes(), cell)},
                   ground_of_cell(ground, desk, local));
     }
+    tally.finish();
     const std::lock_guard lock(mutex_);
     tally.hand_over(subareas_);
 }

@@ -40,20 +40,20 @@ std::vector<Cell> flow_path(const Raster<FlowCode>& codes, Cell head, Cell end) 
     return path;
 }
 
+void add_pieces(const PathGround& ground, const PathCell& cell, std::size_t position, std::vector<PathPiece>& pieces) {
+    const StepParts parts = step_parts(cell.step, ground.rules);
+    pieces.push_back(piece_of(parts.first, position, cell.step, cell.surface));
+    if (parts.second.regime == Regime::none) return;
+    const double share = parts.first.length_m / from_fixed(cell.step.length);
+    pieces.back().share_to = share;
+    pieces.push_back(piece_of(parts.second, position, cell.step, cell.surface));
+    pieces.back().share_from = share;
+}
+
 std::vector<PathPiece> path_pieces(const PathGround& ground, std::span<const PathCell> path) {
     std::vector<PathPiece> pieces;
     pieces.reserve(path.size() + 1);   // sheet flow ends within one step, as a rule
-    for (std::size_t position = 0; position + 1 < path.size(); ++position) {
-        const StepView& step = path[position].step;
-        const StepParts parts = step_parts(step, ground.rules);
-        const std::uint8_t surface = path[position].surface;
-        pieces.push_back(piece_of(parts.first, position, step, surface));
-        if (parts.second.regime == Regime::none) continue;
-        const double share = parts.first.length_m / from_fixed(step.length);
-        pieces.back().share_to = share;
-        pieces.push_back(piece_of(parts.second, position, step, surface));
-        pieces.back().share_from = share;
-    }
+    for (std::size_t position = 0; position + 1 < path.size(); ++position) add_pieces(ground, path[position], position, pieces);
     return pieces;
 }
 

@@ -1,5 +1,6 @@
 #pragma once
 
+#include <algorithm>
 #include <utility>
 #include <vector>
 
@@ -14,7 +15,8 @@ namespace rillclock {
     heads.area = catchment.area;
     heads.border_cells = catchment.border_cells;
     heads.storm_factor = storm_factor;
-    for (std::size_t i = 0; i < told_shares.size(); ++i) heads.by_share[i] = bins.by_share(told_shares[i]);
+    const std::vector<Head> by_share = bins.by_shares(told_shares);
+    std::copy(by_share.begin(), by_share.end(), heads.by_share.begin());
     heads.last = catchment.front.last_to_arrive(storm_factor);
     heads.governing = ignore_tail > 0 ? bins.last_without(ignore_tail) : heads.last;
     heads.farthest = catchment.farthest;

@@ -106,8 +106,8 @@ private:
         made.regime = pieces_[first].part.regime;
         if (made.regime != Regime::channel) made.surface = pieces_[first].surface;
         if (made.regime == Regime::channel) set_reach(pieces_[first], pieces_[end - 1], made);
-        made.first_piece = first;
-        made.last_piece = end - 1;
+        made.from = {pieces_[first].position, pieces_[first].share_from};
+        made.to = {pieces_[end - 1].position, pieces_[end - 1].share_to};
         made.area_from = pieces_[first].area;
         made.area_to = pieces_[end - 1].area;
         made.fall_m = fall_m(pieces_[first], pieces_[end - 1]);
@@ -138,7 +138,7 @@ private:
     }
 
     [[nodiscard]] const SurfaceHydraulics& surface(const Segment& made) const {
-        return ground_.classes[pieces_[made.first_piece].surface];
+        return ground_.classes[made.surface.value_or(0)];
     }
 
     /// Of spill elevation, from the beginning of one piece to the end of another. Made of differences alone, so that a constant

@@ -1,6 +1,7 @@
 #include "rillclock/catchment/storm_bins.hpp"
 
 #include <utility>
+#include <vector>
 
 namespace rillclock {
 
@@ -10,7 +11,7 @@ void StormBins::add(const Head& head, FixedArea area, double reference_factor) {
     add(key, {area, head}, reference_factor);
 }
 
-void StormBins::add(const Key& key, const ArrivalBins::Bin& bin, double reference_factor) {
+void StormBins::add(const Key& key, const Bin& bin, double reference_factor) {
     const auto [at, is_new] = bins_.try_emplace(key, bin);
     if (is_new) return;
     at->second.area += bin.area;
@@ -24,10 +25,13 @@ void StormBins::take(StormBins&& other, double reference_factor) {
 }
 
 ArrivalBins StormBins::under(double storm_factor) const {
-    ArrivalBins arrivals;
+    std::vector<ArrivalBins::Bin> by_second;
+    by_second.reserve(bins_.size());
     for (const auto& [key, bin] : bins_) {
-        arrivals.add(ArrivalBins::second_of(bin.last.time, storm_factor), bin, storm_factor);
+        by_second.push_back({ArrivalBins::second_of(bin.last.time, storm_factor), bin.area, bin.last});
     }
+    ArrivalBins arrivals;
+    arrivals.add(std::move(by_second), storm_factor);
     return arrivals;
 }
 

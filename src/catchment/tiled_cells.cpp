@@ -1,61 +1,37 @@
 #include "rillclock/catchment/tiled_cells.hpp"
 
 #include <algorithm>
-#include <mutex>
+
+#include "cells_by_tile.hpp"
 
 namespace rillclock {
 namespace {
-
-/// Cells of one tile, as a stretch of a list sorted by tile.
-struct TileCells {
-    Tile tile = 0;
-    std::span<const Cell> cells;
-};
-
-Tile tile_of(const TiledForest& forest, Cell cell) {
-    return forest.tiles().tile_of({cell / forest.codes().columns(), cell % forest.codes().columns()});
-}
-
-/// Sorts cells by tile, each once, and lists the stretches. The list must outlive them.
-std::vector<TileCells> by_tile(const TiledForest& forest, std::vector<Cell>& cells) {
-    std::sort(cells.begin(), cells.end());
-    cells.erase(std::unique(cells.begin(), cells.end()), cells.end());
-    std::stable_sort(cells.begin(), cells.end(), [&](Cell a, Cell b) { return tile_of(forest, a) < tile_of(forest, b); });
-    std::vector<TileCells> stretches;
-    for (std::size_t first = 0; first < cells.size();) {
-        const Tile tile = tile_of(forest, cells[first]);
-        std::size_t end = first;
-        while (end < cells.size() && tile_of(forest, cells[end]) == tile) ++end;
-        stretches.push_back({tile, std::span(cells).subspan(first, end - first)});
-        first = end;
-    }
-    return stretches;
-}
-
-Local local_of(const TileDesk& desk, Cell cell, std::int64_t columns) {
-    const Window& window = desk.flow.window();
-    return static_cast<Local>((cell / columns - window.row) * window.columns + cell % columns - window.column);
-}
 
 /// Makes each tile that holds any of the cells by `read(tile, desk)`, and keeps what `look(desk, local, cell)` says of each cell, where it
 /// says anything.
 template <class Value, class Read, class Look>
 std::unordered_map<Cell, Value> look_up(const TiledForest& forest, const Executor& executor, Workspaces<TileDesk>& desks,
                                         std::vector<Cell> cells, Read read, Look look) {
-    const std::vector<TileCells> stretches = by_tile(forest, cells);
-    std::unordered_map<Cell, Value> found;
-    std::mutex mutex;
-    executor.for_each(stretches.size(), [&](std::size_t i) {
+    std::sort(cells.begin(), cells.end());
+    cells.erase(std::unique(cells.begin(), cells.end()), cells.end());
+    const CellsByTile by_tile(forest, cells);
+    std::vector<std::optional<Value>> values(cells.size());
+    executor.for_each(by_tile.size(), [&](std::size_t i) {
         const auto desk = desks.lease();
-        read(stretches[i].tile, *desk);
-        const std::lock_guard lock(mutex);
-        for (const Cell cell : stretches[i].cells) {
-            const std::optional<Value> value = look(*desk, local_of(*desk, cell, forest.codes().columns()), cell);
-            if (value) found.emplace(cell, *value);
+        read(by_tile.tile(i), *desk);
+        for (const std::uint32_t at : by_tile.positions(i)) {
+            values[at] = look(*desk, local_of(*desk, cells[at], forest.codes().columns()), cells[at]);
         }
     });
+    std::unordered_map<Cell, Value> found;
+    found.reserve(cells.size());
+    for (std::size_t i = 0; i < cells.size(); ++i) {
+        if (values[i]) found.emplace(cells[i], *values[i]);
+    }
     return found;
 }
+
+}  // namespace
 
 PathCell path_cell(const TiledTravel& travel, const TileDesk& desk, Local local, Cell cell) {
     PathCell made;
@@ -67,8 +43,6 @@ PathCell path_cell(const TiledTravel& travel, const TileDesk& desk, Local local,
     made.surface = travel.ground().surface.index[cell];
     return made;
 }
-
-}  // namespace
 
 std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vector<Cell> cells) {
     return look_up<FixedArea>(

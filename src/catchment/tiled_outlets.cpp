@@ -1,40 +1,39 @@
 #include "rillclock/catchment/tiled_outlets.hpp"
 
+#include <optional>
+#include <utility>
+
 #include "rillclock/catchment/arrival_tally.hpp"
+#include "shared_paths.hpp"
 
 namespace rillclock {
 namespace {
 
-using Found = std::unordered_map<Cell, PathCell>;
+/// The paths of one point, and from it to the next.
+struct PointPaths {
+    PathEnds governing;
+    PathEnds longest;
+    std::optional<PathEnds> way;   ///< none where there is no next point
+};
 
-/// The cells from a point down to the next; none where there is no next.
-std::vector<Cell> way_cells(const Raster<FlowCode>& codes, std::span<const DesignPoint> points, PointNumber next, std::size_t i) {
-    return next == 0 ? std::vector<Cell>{} : flow_path(codes, points[i].cell, points[next - 1].cell);
+PointPaths paths_of(std::span<const DesignPoint> points, PointNumber next, const PointHeads& heads, std::size_t i) {
+    const Cell end = points[i].cell;
+    PointPaths paths{.governing = {heads.governing.cell, end}, .longest = {heads.farthest, end}, .way = {}};
+    if (next != 0) paths.way = {end, points[next - 1].cell};
+    return paths;
 }
 
-std::vector<Cell> cells_of_all_paths(const Raster<FlowCode>& codes, std::span<const DesignPoint> points, const PointTree& tree,
-                                     const std::vector<PointHeads>& heads) {
-    std::vector<Cell> cells;
+SharedPaths all_paths(const TiledTravel& travel, std::span<const DesignPoint> points, const PointTree& tree,
+                      const std::vector<PointHeads>& heads) {
+    std::vector<PathEnds> all;
     for (std::size_t i = 0; i < points.size(); ++i) {
-        for (const Cell head : {heads[i].governing.cell, heads[i].farthest}) {
-            const std::vector<Cell> path = flow_path(codes, head, points[i].cell);
-            cells.insert(cells.end(), path.begin(), path.end());
-        }
-        const std::vector<Cell> way = way_cells(codes, points, tree.next[i], i);
-        cells.insert(cells.end(), way.begin(), way.end());
-        for (const PointStorm& storm : heads[i].storms) cells.push_back(storm.governing.cell);
+        const PointPaths paths = paths_of(points, tree.next[i], heads[i], i);
+        all.push_back(paths.governing);
+        all.push_back(paths.longest);
+        if (paths.way) all.push_back(*paths.way);
+        for (const PointStorm& storm : heads[i].storms) all.push_back({storm.governing.cell, storm.governing.cell});
     }
-    return cells;
-}
-
-PathCells found_path(const Found& found, const std::vector<Cell>& cells) {
-    PathCells path;
-    for (const Cell cell : cells) path.push_back(found.at(cell));
-    return path;
-}
-
-PathCells path_of(const Raster<FlowCode>& codes, const Found& found, Cell head, Cell end) {
-    return found_path(found, flow_path(codes, head, end));
+    return {travel, all};
 }
 
 /// Border cells that are the point's own or drain straight into it: an outlet at the edge has some for certain.
@@ -55,22 +54,31 @@ std::int64_t border_cells_at(const Raster<FlowCode>& codes, Cell point) {
 std::vector<Outlet> outlets_of(const TiledTravel& travel, std::span<const DesignPoint> points, const PointTree& tree,
                                const std::vector<PointHeads>& heads, const OutletRules& rules) {
     const Raster<FlowCode>& codes = travel.ground().forest.codes();
-    const Found found = path_cells_at(travel, cells_of_all_paths(codes, points, tree, heads));
+    const SharedPaths shared = all_paths(travel, points, tree, heads);
+    Workspaces<LaidPath> memory;
     std::vector<Outlet> outlets(points.size());
     travel.executor().for_each(points.size(), [&](std::size_t i) {
-        const Cell end = points[i].cell;
         const PathGround ground{.classes = travel.ground().surface.classes,
                                 .metres_per_elevation_unit = travel.ground().metres_per_elevation_unit,
                                 .rules = travel.rules(),
                                 .storm_factor = heads[i].storm_factor};
-        outlets[i] = outlet_of({.number = static_cast<PointNumber>(i + 1), .point = points[i], .next = tree.next[i], .heads = heads[i],
-                                .border_cells_at_point = border_cells_at(codes, end),
-                                .governing = path_of(codes, found, heads[i].governing.cell, end),
-                                .longest = path_of(codes, found, heads[i].farthest, end),
-                                .way = found_path(found, way_cells(codes, points, tree.next[i], i))},
-                               ground, rules);
+        const PointPaths paths = paths_of(points, tree.next[i], heads[i], i);
+        const auto laid = memory.lease();
+        const auto path_of = [&](const PathEnds& path) {
+            shared.lay(path, *laid);
+            return point_path(ground, laid->cells, laid->pieces, rules.segments);
+        };
+        OutletParts parts{.number = static_cast<PointNumber>(i + 1), .point = points[i], .next = tree.next[i], .heads = heads[i],
+                          .border_cells_at_point = border_cells_at(codes, points[i].cell),
+                          .governing = path_of(paths.governing), .longest = {}, .way = {}, .cell = shared.cell(points[i].cell)};
+        parts.longest = paths.longest.head == paths.governing.head ? parts.governing : path_of(paths.longest);
+        if (paths.way) {
+            shared.lay(*paths.way, *laid);
+            parts.way = way_of(ground, laid->cells, laid->pieces);
+        }
+        outlets[i] = outlet_of(std::move(parts), ground);
         for (PointStorm& storm : outlets[i].storms) {
-            storm.length = found.at(storm.governing.cell).flow_distance - found.at(end).flow_distance;
+            storm.length = shared.cell(storm.governing.cell).flow_distance - shared.cell(points[i].cell).flow_distance;
         }
     });
     return outlets;

@@ -1,7 +1,9 @@
 #include "rillclock/deliver/calculation_sheet.hpp"
 
 #include <algorithm>
-#include <set>
+#include <iterator>
+#include <unordered_map>
+#include <utility>
 
 #include "rillclock/core/error.hpp"
 #include "sheet_writer.hpp"
@@ -28,16 +30,39 @@ void write_point(const SheetMatter& matter, SheetWriter& sheet) {
     }
 }
 
-void write_notices(const SheetMatter& matter, SheetWriter& sheet) {
+/// Which notices concern each point, by their positions in the result, those of the whole study included. A study of thousands of points
+/// has thousands of them.
+class NoticesOfPoints {
+public:
+    explicit NoticesOfPoints(const SheetJson& result) {
+        std::size_t position = 0;
+        for (const SheetJson& notice : result.at("notices")) {
+            const SheetJson& point = notice.at("point");
+            (point.is_null() ? of_all_ : of_point_[point.get<std::string>()]).push_back(position++);
+        }
+    }
+
+    [[nodiscard]] std::vector<std::size_t> of(const std::string& point) const {
+        const auto own = of_point_.find(point);
+        if (own == of_point_.end()) return of_all_;
+        std::vector<std::size_t> both;
+        std::merge(of_all_.begin(), of_all_.end(), own->second.begin(), own->second.end(), std::back_inserter(both));
+        return both;
+    }
+
+private:
+    std::vector<std::size_t> of_all_;
+    std::unordered_map<std::string, std::vector<std::size_t>> of_point_;
+};
+
+void write_notices(const SheetMatter& matter, const std::vector<std::size_t>& positions, SheetWriter& sheet) {
     sheet.heading("What needs a person's eye");
-    bool any = false;
-    for (const SheetJson& notice : matter.result.at("notices")) {
-        if (!notice.at("point").is_null() && notice.at("point") != matter.outlet.at("name")) continue;
-        any = true;
+    for (const std::size_t position : positions) {
+        const SheetJson& notice = matter.result.at("notices").at(position);
         const double effect = number_of(notice, "effect_min");
         sheet.item(words_of(notice, "text") + (effect > 0 ? " (" + printed(effect) + " min hang on it)" : ""));
     }
-    if (!any) sheet.words("Nothing was noticed at this point.");
+    if (positions.empty()) sheet.words("Nothing was noticed at this point.");
 }
 
 void write_paths(const SheetMatter& matter, SheetWriter& sheet) {
@@ -81,6 +106,11 @@ SheetJson parsed_result(std::string_view text, std::string_view file) {
     throw input_error("'" + std::string(file) + "' is no result of this version of rillclock; write it anew with rillclock run");
 }
 
+Error no_whole_result(std::string_view file, const nlohmann::json::exception& broken) {
+    return input_error("'" + std::string(file) + "' is no whole result of this version of rillclock (" + broken.what() +
+                       "); write it anew with rillclock run");
+}
+
 bool is_plain(char c) { return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z') || (c >= '0' && c <= '9') || c == '-'; }
 
 }  // namespace
@@ -88,10 +118,18 @@ bool is_plain(char c) { return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z') 
 struct SheetBook::Content {
     SheetJson json;
     std::string file;
+    NoticesOfPoints notices;
 };
 
-SheetBook::SheetBook(std::string_view result_json, std::string_view file)
-    : content_(std::make_unique<Content>(Content{parsed_result(result_json, file), std::string(file)})) {}
+SheetBook::SheetBook(std::string_view result_json, std::string_view file) {
+    SheetJson json = parsed_result(result_json, file);
+    try {
+        NoticesOfPoints notices(json);
+        content_ = std::make_unique<Content>(Content{std::move(json), std::string(file), std::move(notices)});
+    } catch (const nlohmann::json::exception& broken) {
+        throw no_whole_result(file, broken);
+    }
+}
 SheetBook::SheetBook(SheetBook&&) noexcept = default;
 SheetBook& SheetBook::operator=(SheetBook&&) noexcept = default;
 SheetBook::~SheetBook() = default;
@@ -110,7 +148,7 @@ CalculationSheet SheetBook::sheet(std::size_t position) const try {
     sheet.title("Calculation sheet: " + words_of(matter.outlet, "name"));
     if (!words_of(result, "title").empty()) sheet.fact("study", words_of(result, "title"));
     write_point(matter, sheet);
-    write_notices(matter, sheet);
+    write_notices(matter, content_->notices.of(words_of(matter.outlet, "name")), sheet);
     write_formulas(matter, sheet);
     write_paths(matter, sheet);
     if (matter.has_rain()) write_storms(matter, sheet);
@@ -118,8 +156,7 @@ CalculationSheet SheetBook::sheet(std::size_t position) const try {
     write_cautions(matter, sheet);
     return sheet.take();
 } catch (const nlohmann::json::exception& broken) {
-    throw input_error("'" + content_->file + "' is no whole result of this version of rillclock (" + broken.what() +
-                      "); write it anew with rillclock run");
+    throw no_whole_result(content_->file, broken);
 }
 
 std::string sheet_file_name(std::size_t number, std::string_view name) {

@@ -22,18 +22,13 @@ struct ProfilePoint {
 
 /// The ground along a path, at no more places than a chart can show.
 std::vector<ProfilePoint> ground_profile(const ReportMatter& matter, const PointPath& path) {
-    std::vector<double> distance(path.cells.size(), 0.0);
-    for (const PathPiece& piece : path.pieces) {
-        if (piece.position + 1 < distance.size()) distance[piece.position + 1] += piece.part.length_m;
-    }
-    for (std::size_t i = 1; i < distance.size(); ++i) distance[i] += distance[i - 1];
     const std::size_t stride = std::max<std::size_t>(1, path.cells.size() / most_profile_points);
     std::vector<double> spill(path.cells.size());
     double level = -std::numeric_limits<double>::infinity();
     for (std::size_t i = path.cells.size(); i-- > 0;) spill[i] = level = std::max(level, matter.ground_m(path.cells[i]));
     std::vector<ProfilePoint> profile;
     for (std::size_t i = 0; i < path.cells.size(); ++i) {
-        if (i % stride == 0 || i + 1 == path.cells.size()) profile.push_back({distance[i], matter.ground_m(path.cells[i]), spill[i]});
+        if (i % stride == 0 || i + 1 == path.cells.size()) profile.push_back({path.distance_m[i], matter.ground_m(path.cells[i]), spill[i]});
     }
     return profile;
 }

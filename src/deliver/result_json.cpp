@@ -1,10 +1,13 @@
 #include "rillclock/deliver/result_json.hpp"
 
+#include <vector>
+
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/cautions.hpp"
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/version.hpp"
 #include "rillclock/io/library_versions.hpp"
+#include "json_text.hpp"
 #include "json_values.hpp"
 #include "network_words.hpp"
 #include "peaks_json.hpp"
@@ -400,11 +403,15 @@ Json scenarios_json(const Study& study) {
     return names;
 }
 
+std::vector<std::string> outlet_texts(const StudyResult& result, const Executor& executor) {
+    std::vector<std::string> texts(result.outlets.size());
+    executor.for_each(texts.size(), [&](std::size_t i) { texts[i] = member_text(outlet_json(result, result.outlets[i])); });
+    return texts;
+}
+
 }  // namespace
 
-std::string result_json(const StudyResult& result) {
-    Json outlets = Json::array();
-    for (const Outlet& outlet : result.outlets) outlets.push_back(outlet_json(result, outlet));
+std::string result_json(const StudyResult& result, const Executor& executor) {
     Json json = {{"title", result.study.title},
                        {"scenario", text_or_null(result.study.scenario)},
                        {"scenarios", scenarios_json(result.study)},
@@ -415,10 +422,10 @@ std::string result_json(const StudyResult& result) {
                        {"inputs", inputs_json(result)},
                        {"data", data_json(result)},
                        {"parameters", parameters_json(result)},
-                       {"outlets", outlets},
+                       {"outlets", Json::array()},
                        {"notices", notices_json(result)}};
     if (result.uncertainty != nullptr) json["uncertainty"] = uncertainty_json(result);
-    return json.dump(1, ' ', false, Json::error_handler_t::replace) + "\n";
+    return with_members(json_text(json), "outlets", outlet_texts(result, executor)) + "\n";
 }
 
 }  // namespace rillclock

@@ -3,11 +3,10 @@
 namespace rillclock {
 namespace {
 
-/// The place at a share of the step out of a cell of the path.
-Place place_on_step(const Grid& grid, const PointPath& path, std::size_t position, double share) {
-    const Place from = grid.centre(path.cells[position]);
-    const Place to = grid.centre(path.cells[position + 1]);
-    return {from.x + share * (to.x - from.x), from.y + share * (to.y - from.y)};
+Place place_at(const Grid& grid, const PointPath& path, const PathSpot& spot) {
+    const Place from = grid.centre(path.cells[spot.position]);
+    const Place to = grid.centre(path.cells[spot.position + 1]);
+    return {from.x + spot.share * (to.x - from.x), from.y + spot.share * (to.y - from.y)};
 }
 
 }  // namespace
@@ -34,13 +33,12 @@ std::vector<SegmentRow> segment_rows(const Outlet& outlet) {
 }
 
 std::vector<Place> segment_places(const StudyResult& result, const SegmentRow& row) {
-    const PathPiece& first = row.path->pieces[row.segment->first_piece];
-    const PathPiece& last = row.path->pieces[row.segment->last_piece];
-    std::vector<Place> places{place_on_step(result.grid, *row.path, first.position, first.share_from)};
-    for (std::size_t position = first.position + 1; position <= last.position; ++position) {
+    const Segment& segment = *row.segment;
+    std::vector<Place> places{place_at(result.grid, *row.path, segment.from)};
+    for (std::size_t position = segment.from.position + 1; position <= segment.to.position; ++position) {
         places.push_back(result.grid.centre(row.path->cells[position]));
     }
-    if (last.share_to > 0.0) places.push_back(place_on_step(result.grid, *row.path, last.position, last.share_to));
+    if (segment.to.share > 0.0) places.push_back(place_at(result.grid, *row.path, segment.to));
     return places;
 }
 

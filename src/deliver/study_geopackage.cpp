@@ -47,7 +47,10 @@ void write_catchments(const StudyResult& result, const StudyRegions& regions, Ve
                                      .style = alike({.stroke = "#404040", .stroke_mm = 0.5})});
     add_outlet_fields(result, layer);
     layer.begin();
-    for (const Outlet& outlet : result.outlets) layer.add(placed(regions.catchment(outlet.number), result.grid), outlet);
+    const bool has_all = has_all_catchments(result.study, result.outlets.size());
+    for (const Outlet& outlet : result.outlets) {
+        if (has_all || outlet.next == 0) layer.add(placed(regions.catchment(outlet.number), result.grid), outlet);
+    }
 }
 
 void write_subareas(const StudyResult& result, const StudyRegions& regions, VectorFile& file) {
@@ -203,6 +206,16 @@ void write_differences(const StudyResult& result, VectorFile& file) {
 }
 
 }  // namespace
+
+bool has_all_catchments(const Study& study, std::size_t points) {
+    return study.output.all_catchments.value_or(points <= most_points_with_catchments);
+}
+
+std::string words_on_left_out_catchments(const Study& study, std::size_t points) {
+    if (study.output.all_catchments || has_all_catchments(study, points)) return {};
+    return "study.gpkg has the whole catchments of the last points alone, since there are more than " + std::to_string(most_points_with_catchments) +
+           " points, and the subareas of all; output.catchments = \"all\" asks for all";
+}
 
 void write_study_geopackage(const std::filesystem::path& path, const StudyResult& result, const StudyRegions& regions) {
     VectorFile file(path, result.system);

@@ -9,6 +9,7 @@
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
+#include "rillclock/deliver/study_geopackage.hpp"
 #include "rillclock/io/cover_file.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/hydraulics/velocity_table.hpp"
@@ -191,6 +192,7 @@ private:
             report_.facts.push_back("surveyed areas: beside " + std::to_string(surveyed) + " points, which move to the area nearest to theirs");
         }
         if (const std::string left_out = words_on_left_out_paths(inside); !left_out.empty()) report_.facts.push_back("paths: " + left_out);
+        if (const std::string left_out = words_on_left_out_catchments(study_, inside); !left_out.empty()) report_.facts.push_back("catchments: " + left_out);
         if (inside == 0) report_.problems.push_back("none of the points in '" + *study_.points.file +
                                                     "' lies within the elevations; check their reference system");
     }

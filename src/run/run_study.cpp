@@ -13,6 +13,7 @@
 #include "rillclock/catchment/tiled_outlets.hpp"
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
+#include "rillclock/deliver/study_geopackage.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/run/review_words.hpp"
 #include "rillclock/study/scenario.hpp"
@@ -44,11 +45,15 @@ Notices notices_of(const std::vector<Outlet>& outlets, const Grid& grid) {
     return all;
 }
 
-Notices notices_of_files(const std::vector<Outlet>& outlets) {
-    const std::string left_out = words_on_left_out_paths(outlets.size());
-    if (left_out.empty()) return {};
-    return {{.code = "paths-left-out", .text = left_out, .value = static_cast<double>(outlets.size()),
-             .threshold = static_cast<double>(most_points_with_paths)}};
+Notices notices_of_files(const Study& study, std::size_t points) {
+    Notices notices;
+    const auto tell = [&](const char* code, const std::string& left_out, std::size_t most) {
+        if (left_out.empty()) return;
+        notices.push_back({.code = code, .text = left_out, .value = static_cast<double>(points), .threshold = static_cast<double>(most)});
+    };
+    tell("paths-left-out", words_on_left_out_paths(points), most_points_with_paths);
+    tell("catchments-left-out", words_on_left_out_catchments(study, points), most_points_with_catchments);
+    return notices;
 }
 
 /// Everything that was noticed on the way, by effect on the time, the greatest first.
@@ -218,7 +223,7 @@ RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, co
     const std::vector<DrawnDifference> drawn = drawn_differences(laid.stated, points.points, *regions, *travel, terrain);
     const Notices notices = all_notices({terrain.notices, notices_of(depressions, ground.metres_per_elevation_unit), laid.zones.notices,
                                          zone_notices(rain, outlets, terrain.grid), notices_of_ranges(study, surface), surface.notices,
-                                         rain.notices, points.notices, notices_of(drawn, points.points), network.notices, peaks.notices, notices_of(outlets, terrain.grid), notices_of_files(outlets)});
+                                         rain.notices, points.notices, notices_of(drawn, points.points), network.notices, peaks.notices, notices_of(outlets, terrain.grid), notices_of_files(study, outlets.size())});
     const CarriedWords reviewed = carry_over(words, notices);
     const std::vector<InputFile> inputs = inputs_of();
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};
@@ -227,8 +232,10 @@ RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, co
                              .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .network = network,
                              .peaks = peaks, .notices = notices, .inputs = inputs, .data = data,
                              .reviewed = reviewed.by_notice, .drawn = drawn, .uncertainty = uncertainty ? &*uncertainty : nullptr};
-    std::string json = write_result({.result = result, .terrain = terrain, .travel = *travel, .flow = common.flow,
-                                     .depressions = depressions.deepest_first, .regions = *regions, .overview = overview}, common.folder);
+    std::string json = stage(progress, "writing files", cells, [&] {
+        return write_result({.result = result, .terrain = terrain, .travel = *travel, .flow = common.flow,
+                             .depressions = depressions.deepest_first, .regions = *regions, .overview = overview}, common.folder);
+    });
     return {.folder = common.folder.part_target(), .facts = facts_of(rain, reviewed), .headlines = headlines(result),
             .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = std::move(json), .scenarios = {}};
 }

@@ -20,12 +20,13 @@ namespace rillclock {
 namespace {
 
 /// The sheets of the points with the largest catchments, if there are too many for all.
-void write_sheets(const StudyResult& result, const SheetBook& book, ResultFolder& folder) {
+void write_sheets(const StudyResult& result, const SheetBook& book, const Executor& executor, ResultFolder& folder) {
     std::vector<std::size_t> order = by_area(result);
     order.resize(std::min(order.size(), most_sheets));
-    for (const std::size_t i : order) {
+    executor.for_each(order.size(), [&](std::size_t at) {
+        const std::size_t i = order[at];
         folder.write_text("tables/sheets/" + sheet_file_name(i + 1, result.outlets[i].point.name), sheet_markdown(book.sheet(i)));
-    }
+    });
 }
 
 void write_shapes(const StudyResult& result, const StudyRegions& regions, ResultFolder& folder) {
@@ -82,17 +83,21 @@ std::string report_of(const WorkedStudy& worked, const SheetBook& book) {
 }  // namespace
 
 std::string write_result(const WorkedStudy& worked, ResultFolder& folder) {
-    std::string json = result_json(worked.result);
-    const SheetBook book(json, "result.json");
+    const StudyResult& result = worked.result;
+    const Executor& executor = worked.travel.executor();
     // Each of these takes as long as all the rest and keeps one processor busy.
-    std::future<void> shapes = std::async(std::launch::async, [&] { write_shapes(worked.result, worked.regions, folder); });
-    std::future<void> ground = std::async(std::launch::async, [&] { write_ground(worked, folder); });
-    write_texts(worked.result, folder);
-    write_sheets(worked.result, book, folder);
-    folder.write_text("result.json", json);
+    std::future<void> shapes = std::async(std::launch::async, [&] { write_shapes(result, worked.regions, folder); });
+    std::string json = result_json(result, executor);
+    std::future<void> rest = std::async(std::launch::async, [&] {
+        write_texts(result, folder);
+        write_ground(worked, folder);
+        folder.write_text("result.json", json);
+    });
+    const SheetBook book(json, "result.json");
+    write_sheets(result, book, executor, folder);
     folder.write_text("report.html", report_of(worked, book));
     shapes.get();
-    ground.get();
+    rest.get();
     return json;
 }
 

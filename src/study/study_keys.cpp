@@ -161,6 +161,8 @@ constexpr std::array keys{
              "range of the hydraulic radius of channels, as a factor"},
     StudyKey{"uncertainty.pond_speed", R"("1 m/s to unlimited")", "1 m/s to unlimited",
              "range of the greatest speed across ponded cells"},
+    StudyKey{"output.catchments", R"("all")", "all; last points where there are more than 500 points",
+             "all or last points: whose whole catchment study.gpkg has; subareas it has of all"},
     StudyKey{"output.folder", R"("result")", "result", "result folder"},
     StudyKey{"output.isochrones", R"("5 min")", "none", "step between isochrones, of every subarea and every last point's catchment; \"none\" for none"},
     StudyKey{"output.rasters", R"("geotiff")", "geotiff", "geotiff, or cog: Cloud-Optimized GeoTIFF, whose parts can be read over the network"},

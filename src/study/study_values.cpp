@@ -423,6 +423,7 @@ constexpr std::array setters{
     Setter{"uncertainty.channel_radius",
            [](Study& s, const Stated& v) { uncertainty(s).channel_radius = number_range(v); }},
     Setter{"uncertainty.pond_speed", [](Study& s, const Stated& v) { uncertainty(s).pond_speed = speed_range(v); }},
+    Setter{"output.catchments", [](Study& s, const Stated& v) { s.output.all_catchments = v.choice({"last points", "all"}) == 1; }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
     Setter{"output.isochrones",
            [](Study& s, const Stated& v) {

@@ -18,10 +18,10 @@ KINDS = ("fractal", "quantised", "integers")
 
 
 class Size:
-    """Sides of the rasters of a run; `repeats` for what takes a fraction of a second."""
+    """Sides of the rasters of a run, `points` of that with many points; `repeats` for what takes a fraction of a second."""
 
-    def __init__(self, main, base, repeats):
-        self.main, self.base, self.repeats = main, base, repeats
+    def __init__(self, main, base, repeats, points=3200):
+        self.main, self.base, self.repeats, self.points = main, base, repeats, points
         self.flood = min(main, 8192)    # the heap flood is compared at 64 million cells at most
 
 
@@ -32,9 +32,10 @@ CLAUSES = {
     4: "growth with size; gain by the second thread against that of pure arithmetic",
     5: "peak memory",
     6: "the same spill elevation as scikit-image's, in every cell",
+    7: "many points against one: what computes, and the whole command",
 }
 
-SIZES = {"small": Size(2048, 1024, 3), "64": Size(8192, 4096, 2), "256": Size(16384, 4096, 1)}
+SIZES = {"small": Size(2048, 1024, 3, 1024), "64": Size(8192, 4096, 2), "256": Size(16384, 4096, 1)}
 
 
 def cells_text(side):
@@ -297,6 +298,62 @@ class Files:
         self.table.at_most(1, f"I/O floor / gdal_translate, statistics and gdaladdo {whole:.3g} s", own / whole, 1.2)
 
 
+class ManyPoints:
+    """The command with 1, 100 and 2000 points on one terrain of ten million cells."""
+
+    COUNTS = (1, 100, 2000)
+    WRITING = "writing files"
+
+    def __init__(self, build, data, size, table):
+        self.build, self.size, self.table = build, size, table
+        self.folder = data / f"points-{size.points}"
+
+    def measure(self):
+        side = self.size.points
+        self.table.heading(f"Many points, fractal, {cells_text(side)}")
+        try:
+            made = self.table.measuring("making terrain and points", self.make)
+            found = made and {count: self.table.measuring(f"command, {count} points", lambda: self.best(count)) for count in self.COUNTS}
+            if found and all(found.values()):
+                self.compare(found)
+        finally:
+            shutil.rmtree(self.folder, ignore_errors=True)
+
+    def make(self):
+        side = self.size.points
+        run(self.build / "tests" / "bench" / "generate_terrain", "fractal", side, side, self.folder)
+        run(self.build / "rillclock", "run", "--quiet", *self.inputs(), "--out", self.folder / "areas")
+        counts = [str(count) for count in self.COUNTS]
+        return run(sys.executable, pathlib.Path(__file__).parent / "scatter_points.py", self.folder / "areas", self.folder, *counts)
+
+    def inputs(self):
+        return ["--elevation", self.folder / "dem.tif", "--cover", self.folder / "cover.tif", "--book", "nlcd", "--rain", "3.6 in"]
+
+    def best(self, count):
+        """Of some runs the one in which least else went on: seconds that computed, of the whole, of processors, and bytes."""
+        return min((self.command(count) for _ in range(3)), key=lambda seconds: seconds["whole"])
+
+    def command(self, count):
+        before = os.times()
+        _, said, seconds, memory = run(self.build / "rillclock", "run", *self.inputs(), "--points", self.folder / f"{count}.geojson",
+                                       "--out", self.folder / "result", "--replace")
+        after = os.times()
+        stages = {name.strip(): float(time) for name, time in re.findall(r"^(\S.*?) +([\d.]+) s ", said, re.MULTILINE)}
+        writing = stages.pop(self.WRITING)
+        return {"computing": sum(stages.values()), "whole": seconds, "writing": writing, "memory": memory,
+                "processor": after.children_user + after.children_system - before.children_user - before.children_system}
+
+    def compare(self, found):
+        for count, seconds in found.items():
+            self.table.fact(f"{count} points", f"{seconds['whole']:.3g} s, of which computing {seconds['computing']:.3g} and writing files "
+                                               f"{seconds['writing']:.3g}; {seconds['processor']:.3g} s of processor; "
+                                               f"{seconds['memory'] / 2**20:.0f} MiB")
+        one = found[1]
+        for count in self.COUNTS[1:]:
+            self.table.at_most(7, f"computing of {count} points / of one", found[count]["computing"] / one["computing"], 1.3)
+            self.table.at_most(7, f"whole command with {count} points / with one", found[count]["whole"] / one["whole"], 2)
+
+
 def main():
     build, data, size = pathlib.Path(sys.argv[1]), pathlib.Path(sys.argv[2]), SIZES[sys.argv[3]]
     table = Table()
@@ -304,6 +361,7 @@ def main():
     print("Measuring:")
     base_directions = Memory(build / "tests" / "bench", size, table).measure()
     Files(build, data, size, table, base_directions).measure()
+    ManyPoints(build, data, size, table).measure()
     table.show()
     return 1 if table.failures else 0
 

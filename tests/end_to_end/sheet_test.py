@@ -1,10 +1,12 @@
 #!/usr/bin/python3
 """The calculation sheet, read as a reviewer reads it: every line is recomputed from the numbers that stand on it, to 0.1 %."""
 import ast
+import contextlib
 import json
 import math
 import operator
 import re
+import sqlite3
 import unittest
 
 from support import CommandTest, FOOT, INCH, SOURCE, table
@@ -250,6 +252,10 @@ class Asking(CommandTest):
 
 
 class Many(CommandTest):
+    def points_of(self, layer):
+        with contextlib.closing(sqlite3.connect(self.folder / "result/study.gpkg")) as package:
+            return [point for (point,) in package.execute(f"SELECT point FROM {layer}")]
+
     def test_of_many_points_the_largest_catchments_have_files_and_all_can_be_asked_for(self):
         self.small_study()
         rows, columns = 40, 50
@@ -260,7 +266,9 @@ class Many(CommandTest):
         study = (self.folder / "study.toml")
         study.write_text('[terrain]\nelevation = "dem.tif"\n[surface]\ncover = "cover.tif"\nbook = "book.csv"\n[points]\n'
                          'file = "points.geojson"\nmove_within = "0 m"\n[rain]\ntwo_year_24_hour = "90 mm"\n')
-        self.assertIn("more than 500 points", self.done("check", "study.toml"))
+        said = self.done("check", "study.toml")
+        self.assertIn("governing_paths.geojson and longest_paths.geojson hold the paths of the last points alone", said)
+        self.assertIn("study.gpkg has the whole catchments of the last points alone", said)
         self.done("run", "study.toml")
         rows = table(self.folder / "result/tables/outlets.csv")
         self.assertEqual(len(rows), 667)
@@ -268,7 +276,10 @@ class Many(CommandTest):
         for name in ("governing_paths", "longest_paths"):
             features = json.loads((self.folder / f"result/{name}.geojson").read_text())["features"]
             self.assertEqual({feature["properties"]["point"] for feature in features}, last, name)
-        self.assertIn("paths-left-out", {row["notice"] for row in table(self.folder / "result/tables/review.csv")})
+        for notice in ("paths-left-out", "catchments-left-out"):
+            self.assertIn(notice, {row["notice"] for row in table(self.folder / "result/tables/review.csv")})
+        self.assertEqual(set(self.points_of("catchments")), last)
+        self.assertEqual(len(self.points_of("subareas")), 667)
         files = {file.name for file in (self.folder / "result/tables/sheets").iterdir()}
         largest = sorted(rows, key=lambda row: (-float(row["area_ac"]), int(row["number"])))[:500]
         self.assertEqual(len(files), 500)
@@ -276,6 +287,10 @@ class Many(CommandTest):
         for row in rows:
             if float(row["area_ac"]) > least_kept:
                 self.assertIn(f"{row['number']}-{row['name']}.md", files)
+        study.write_text(study.read_text() + '[output]\ncatchments = "all"\n')
+        self.assertNotIn("whole catchments", self.done("check", "study.toml"))
+        self.done("run", "study.toml", "--replace")
+        self.assertEqual(len(self.points_of("catchments")), 667)
         smallest = min(rows, key=lambda row: float(row["area_ac"]))
         self.assertIn("Calculation sheet: " + smallest["name"], self.done("explain", "result", smallest["name"]))
 

@@ -68,15 +68,19 @@ inline std::vector<Outlet> outlets_of(const TravelInputs& in, const TravelField&
         const Cell end = points[i].cell;
         std::int64_t at_point = is_beside_edge(in, end) ? 1 : 0;
         in.forest.for_each_upstream(end, [&](Cell up) { at_point += is_beside_edge(in, up) ? 1 : 0; });
-        const auto path = [&](Cell head) { return path_cells(in, field, flow_path(in.forest.codes(), head, end)); };
-        const PathCells way = tree.next[i] == 0 ? PathCells{}
-                                                : path_cells(in, field, flow_path(in.forest.codes(), end, points[tree.next[i] - 1].cell));
+        const auto path = [&](Cell head, Cell to) { return path_cells(in, field, flow_path(in.forest.codes(), head, to)); };
+        const auto path_to_point = [&](Cell head) {
+            const PathCells cells = path(head, end);
+            return point_path(ground, cells, path_pieces(ground, cells), outlet_rules.segments);
+        };
+        const PathCells way = tree.next[i] == 0 ? PathCells{} : path(end, points[tree.next[i] - 1].cell);
         outlets.push_back(outlet_of({.number = static_cast<PointNumber>(i + 1), .point = points[i], .next = tree.next[i],
                                      .heads = heads[i], .border_cells_at_point = at_point,
-                                     .governing = path(heads[i].governing.cell),
-                                     .longest = path(heads[i].farthest),
-                                     .way = way},
-                                    ground, outlet_rules));
+                                     .governing = path_to_point(heads[i].governing.cell),
+                                     .longest = path_to_point(heads[i].farthest),
+                                     .way = way_of(ground, way, path_pieces(ground, way)),
+                                     .cell = path_cells(in, field, {end}).front()},
+                                    ground));
     }
     return outlets;
 }

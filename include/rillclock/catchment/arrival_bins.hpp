@@ -1,7 +1,8 @@
 #pragma once
 
 #include <cstdint>
-#include <map>
+#include <span>
+#include <vector>
 
 #include "rillclock/raster/raster.hpp"
 #include "rillclock/travel/step.hpp"
@@ -17,24 +18,28 @@ struct Head {
 /// Whether `a` arrives later than `b` under a storm factor; of equal ones the cell with the smaller index counts as the later.
 [[nodiscard]] bool arrives_later(const Head& a, const Head& b, double storm_factor);
 
-/// Area by time of arrival, in bins of one second of time to the root; each bin knows its last cell.
+/// Area by time of arrival, in bins of one second of time to the root; each bin knows its last cell. Bins lie in one array, earliest first:
+/// points along a river hand thousands of them on, and ask for shares of them, thousands of times.
 class ArrivalBins {
 public:
-    /// The area of one second, and its last cell.
+    /// The cells of one second of time to the root: their area, and the last of them.
     struct Bin {
+        std::int64_t second = 0;
         FixedArea area = 0;
         Head last;
     };
-    /// Adds a cell of that area, whose bin follows from its time under the storm factor.
+    /// Adds a cell of that area, whose bin follows from its time under the storm factor. Cost: the number of bins, where its bin is new.
     void add(const Head& head, FixedArea area, double storm_factor);
-    /// Adds cells that were gathered elsewhere: all of one second of time to the root, `second`.
-    void add(std::int64_t second, const Bin& bin, double storm_factor);
+    /// Adds bins that were gathered elsewhere, in any order; those of one second become one.
+    void add(std::vector<Bin> bins, double storm_factor);
     /// Adds all bins of another set of cells.
     void take(ArrivalBins&& other, double storm_factor);
     [[nodiscard]] FixedArea area() const { return area_; }
     /// The last cell of the least set of bins, earliest first, that holds at least `share` of the area: no later than a second
     /// after the exact answer, and itself the time of a cell.
     [[nodiscard]] Head by_share(double share) const;
+    /// The same for several shares, which rise, in one go.
+    [[nodiscard]] std::vector<Head> by_shares(std::span<const double> shares) const;
     /// The last cell once the latest bins are left out that together hold no more than `share` of the area.
     [[nodiscard]] Head last_without(double share) const;
 
@@ -42,8 +47,10 @@ public:
     [[nodiscard]] static std::int64_t second_of(const StepTime& time, double storm_factor);
 
 private:
-    std::map<std::int64_t, Bin> bins_;
-    FixedArea area_ = 0;   ///< of all bins
+    void add_in_order(std::span<const Bin> bins, double storm_factor);
+
+    std::vector<Bin> bins_;   ///< by second
+    FixedArea area_ = 0;      ///< of all bins
 };
 
 }  // namespace rillclock

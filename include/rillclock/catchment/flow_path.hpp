@@ -21,6 +21,15 @@ struct PathPiece {
     const ChannelReach* reach = nullptr;   ///< of a channel that has one of its own
 };
 
+/// A place on a path: at a share of the step out of the cell at that position.
+struct PathSpot {
+    std::size_t position = 0;
+    double share = 0.0;
+};
+
+/// Appends the pieces of the step out of the cell at that position of its path: one, or two where sheet flow ends within it.
+void add_pieces(const PathGround& ground, const PathCell& cell, std::size_t position, std::vector<PathPiece>& pieces);
+
 /// The pieces of a path, in order; the last cell has no step and gives none.
 [[nodiscard]] std::vector<PathPiece> path_pieces(const PathGround& ground, std::span<const PathCell> path);
 

@@ -15,7 +15,7 @@ namespace rillclock {
 /// A flow path to a point, with what stands for it.
 struct PointPath {
     std::vector<Cell> cells;         ///< from the head to the point's cell
-    std::vector<PathPiece> pieces;
+    std::vector<double> distance_m;  ///< of each cell from the head, along the path
     std::vector<Segment> segments;
     PathSummary summary;
     PathDoubts doubts;
@@ -99,12 +99,17 @@ struct OutletParts {
     PointNumber next = 0;
     const PointHeads& heads;
     std::int64_t border_cells_at_point = 0;   ///< border cells that are the point's own or drain straight into it
-    const PathCells& governing;               ///< from the governing head to the point's cell
-    const PathCells& longest;
-    std::span<const PathCell> way = {};       ///< from the point's cell to the next point's; nothing where there is none
+    PointPath governing;                      ///< from the governing head to the point's cell
+    PointPath longest;
+    PointWay way = {};                        ///< to the next point; nothing where there is none
+    const PathCell& cell;                     ///< the point's own
 };
 
-/// Works out a point. Cost: the length of its paths.
-[[nodiscard]] Outlet outlet_of(const OutletParts& parts, const PathGround& ground, const OutletRules& rules);
+/// What stands for a path whose pieces are those. Cost: its length.
+[[nodiscard]] PointPath point_path(const PathGround& ground, std::span<const PathCell> path, std::span<const PathPiece> pieces,
+                                   const SegmentRules& rules);
+
+/// Puts together what is known of a point; `ground` has the storm that its paths were timed under.
+[[nodiscard]] Outlet outlet_of(OutletParts parts, const PathGround& ground);
 
 }  // namespace rillclock

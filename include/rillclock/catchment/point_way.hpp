@@ -5,7 +5,7 @@
 #include <span>
 #include <vector>
 
-#include "rillclock/catchment/path_cell.hpp"
+#include "rillclock/catchment/flow_path.hpp"
 
 namespace rillclock {
 
@@ -21,7 +21,7 @@ struct PointWay {
     [[nodiscard]] double share(Regime regime) const;
 };
 
-/// `path`: the cells from one point to the next, both included; none makes a way of nothing.
-[[nodiscard]] PointWay way_of(const PathGround& ground, std::span<const PathCell> path);
+/// `path`: the cells from one point to the next, both included, with their pieces; none makes a way of nothing.
+[[nodiscard]] PointWay way_of(const PathGround& ground, std::span<const PathCell> path, std::span<const PathPiece> pieces);
 
 }  // namespace rillclock

@@ -23,8 +23,8 @@ namespace rillclock {
 struct Segment {
     Regime regime = Regime::none;
     std::optional<std::uint8_t> surface;   ///< position of the surface class; none in channels
-    std::size_t first_piece = 0;           ///< among the path's pieces
-    std::size_t last_piece = 0;
+    PathSpot from;                         ///< where it begins and ends
+    PathSpot to;
     double length_m = 0.0;                 ///< without ponded cells
     double pond_length_m = 0.0;
     StepTime time;                         ///< pond included

@@ -35,9 +35,13 @@ private:
                    static_cast<std::size_t>(key.storm_second);
         }
     };
-    void add(const Key& key, const ArrivalBins::Bin& bin, double reference_factor);
+    struct Bin {
+        FixedArea area = 0;
+        Head last;
+    };
+    void add(const Key& key, const Bin& bin, double reference_factor);
 
-    std::unordered_map<Key, ArrivalBins::Bin, KeyHash> bins_;
+    std::unordered_map<Key, Bin, KeyHash> bins_;
 };
 
 }  // namespace rillclock

@@ -19,6 +19,9 @@ namespace rillclock {
 /// All about cells that paths run through. `cells` may repeat.
 [[nodiscard]] std::unordered_map<Cell, PathCell> path_cells_at(const TiledTravel& travel, std::vector<Cell> cells);
 
+/// All about a cell of the tile that `read_tile` left on the desk.
+[[nodiscard]] PathCell path_cell(const TiledTravel& travel, const TileDesk& desk, Local local, Cell cell);
+
 /// The next point below each point (by number − 1).
 [[nodiscard]] std::vector<PointNumber> next_points(const TiledForest& forest, const TiledOwners& owners,
                                                    std::span<const DesignPoint> points, const Executor& executor);

@@ -5,7 +5,8 @@
 
 namespace rillclock {
 
-/// Works out every point from the heads of its paths, in the order of their numbers. The tiles that paths cross are made once each.
+/// Works out every point from the heads of its paths, in the order of their numbers. The tiles that paths cross are made once each, and so
+/// are the pieces of each step, however many paths take it.
 [[nodiscard]] std::vector<Outlet> outlets_of(const TiledTravel& travel, std::span<const DesignPoint> points, const PointTree& tree,
                                              const std::vector<PointHeads>& heads, const OutletRules& rules);
 

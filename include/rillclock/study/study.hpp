@@ -182,6 +182,7 @@ struct OutputStudy {
     SubareasListed subareas = SubareasListed::least_slacks;
     bool cloud_optimized = false;  ///< rasters as Cloud-Optimized GeoTIFF
     std::optional<Duration> isochrones = {};  ///< step between them; none are made where absent
+    std::optional<bool> all_catchments = {};  ///< whole catchments of all points in study.gpkg, or of the last points; unstated: of all unless they are many
 };
 
 /// A value that a scenario has in place of the study's own.

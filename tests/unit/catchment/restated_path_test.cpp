@@ -21,7 +21,7 @@ Worked strip() {
 
 double seconds_of(const Worked& w, const StatedOverland& stated) {
     const PathGround ground{.classes = w.land.given.surface.classes, .rules = w.land.given.rules, .storm_factor = w.storm_factor};
-    return in_seconds(restated_time(ground, w.outlets.front().governing.pieces, stated).under(w.storm_factor));
+    return in_seconds(restated_time(ground, w.pieces(w.outlets.front().governing.cells), stated).under(w.storm_factor));
 }
 
 double by_hand(double sheet_m, double n) {

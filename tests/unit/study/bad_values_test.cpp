@@ -135,6 +135,7 @@ const std::map<std::string, Kind> kinds{
     {"methods.undeveloped_coefficient", Kind::number_or_zero},
     {"methods.county_k", Kind::number},
     {"methods.kirpich_factor", Kind::number},
+    {"output.catchments", Kind::word},
     {"output.folder", Kind::text},
     {"output.isochrones", Kind::duration},
     {"output.rasters", Kind::word},
