@@ -9,23 +9,16 @@ namespace rillclock {
 
 /// The cells of some rows, one array a raster.
 struct RasterStrips::Strip {
-    template <class T>
-    using Values = std::vector<T, LargeMemory<T>>;
-    Values<float> travel_time;
-    Values<std::uint16_t> flow_azimuth;
-    Values<double> contributing_area;
-    Values<std::uint32_t> catchment;
-    Values<std::uint8_t> regime;
-    Values<double> spill;
+    Strip(std::int64_t rows, std::int64_t columns)
+        : travel_time(rows, columns), flow_azimuth(rows, columns), contributing_area(rows, columns), catchment(rows, columns),
+          regime(rows, columns), spill(rows, columns) {}
 
-    void resize(std::size_t size) {
-        travel_time.resize(size);
-        flow_azimuth.resize(size);
-        contributing_area.resize(size);
-        catchment.resize(size);
-        regime.resize(size);
-        spill.resize(size);
-    }
+    Raster<float> travel_time;
+    Raster<std::uint16_t> flow_azimuth;
+    Raster<double> contributing_area;
+    Raster<std::uint32_t> catchment;
+    Raster<std::uint8_t> regime;
+    Raster<double> spill;
 };
 
 class RasterStrips::Files {
@@ -42,7 +35,7 @@ public:
         wait();
         strip_on_its_way_ = std::async(std::launch::async, [this, window, &strip] {
             const auto size = static_cast<std::size_t>(window.size());
-            if (look_) look_({.window = window, .owners = std::span(strip.catchment).first(size), .minutes = std::span(strip.travel_time).first(size)});
+            if (look_) look_({.window = window, .owners = strip.catchment.values().first(size), .minutes = strip.travel_time.values().first(size)});
             write(window, strip);
         });
     }
@@ -69,12 +62,12 @@ private:
 
     void write(const Window& window, const Strip& strip) {
         const auto size = static_cast<std::size_t>(window.size());
-        travel_time_->write(window, std::span(strip.travel_time).first(size));
-        flow_azimuth_->write(window, std::span(strip.flow_azimuth).first(size));
-        contributing_area_->write(window, std::span(strip.contributing_area).first(size));
-        catchment_->write(window, std::span(strip.catchment).first(size));
-        regime_->write(window, std::span(strip.regime).first(size));
-        spill_->write(window, std::span(strip.spill).first(size));
+        travel_time_->write(window, strip.travel_time.values().first(size));
+        flow_azimuth_->write(window, strip.flow_azimuth.values().first(size));
+        contributing_area_->write(window, strip.contributing_area.values().first(size));
+        catchment_->write(window, strip.catchment.values().first(size));
+        regime_->write(window, strip.regime.values().first(size));
+        spill_->write(window, strip.spill.values().first(size));
     }
 
     std::unique_ptr<BlockSink<float>> travel_time_;
@@ -89,11 +82,9 @@ private:
 
 RasterStrips::RasterStrips(RasterStory story, const TiledTravel& travel, ResultFolder& folder)
     : story_(std::move(story)), files_(std::make_unique<Files>(story_, folder)),
-      filling_(std::make_unique<Strip>()), leaving_(std::make_unique<Strip>()) {
+      filling_(std::make_unique<Strip>(travel.ground().forest.tiles().side(), story_.grid.columns)),
+      leaving_(std::make_unique<Strip>(travel.ground().forest.tiles().side(), story_.grid.columns)) {
     for (std::size_t code = 0; code < azimuths_.size(); ++code) azimuths_[code] = azimuth_value(static_cast<FlowCode>(code));
-    const auto size = static_cast<std::size_t>(travel.ground().forest.tiles().side() * story_.grid.columns);
-    filling_->resize(size);
-    leaving_->resize(size);
 }
 RasterStrips::~RasterStrips() = default;
 
@@ -101,12 +92,12 @@ void RasterStrips::fill(const TileDesk& desk) {
     const Window& window = desk.flow.window();
     Local local = 0;
     for (std::int64_t r = 0; r < window.rows; ++r) {
-        auto at = static_cast<std::size_t>(r * story_.grid.columns + window.column);
+        auto at = static_cast<Cell>(r * story_.grid.columns + window.column);
         for (std::int64_t c = 0; c < window.columns; ++c, ++local, ++at) fill_cell(desk, local, at);
     }
 }
 
-void RasterStrips::fill_cell(const TileDesk& desk, Local local, std::size_t at) {
+void RasterStrips::fill_cell(const TileDesk& desk, Local local, Cell at) {
     const FlowCode code = desk.flow.code(local);
     const bool is_void = code == flow_void;
     const std::uint32_t owner = desk.owner[local];

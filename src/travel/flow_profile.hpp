@@ -27,11 +27,14 @@ public:
     explicit FlowProfile(Fetch fetch) : fetch_(std::move(fetch)) {}
 
     void put(std::size_t position, const ProfilePlace& place) {
-        inside_.resize(position + 1);
-        inside_[position] = place;
-        // Of the last place at or below `position` that is concentrated; npos where there is none.
-        concentrated_.resize(position + 1);
-        concentrated_[position] = place.concentrated ? position : position == 0 ? npos : concentrated_[position - 1];
+        if (position >= inside_.size()) inside_.resize(position + 1);
+        top_ = position;
+        Inside& at = inside_[position];
+        const Inside* below = position == 0 ? nullptr : &inside_[position - 1];
+        at.place = place;
+        at.concentrated = place.concentrated ? position : below == nullptr ? npos : below->concentrated;
+        at.window_end = below == nullptr ? 0 : below->window_end;
+        at.step_end = below == nullptr ? 0 : below->step_end;
     }
 
     /// Distance from the top of the path to the root.
@@ -42,7 +45,8 @@ public:
         const double target = top().distance_m - reach;
         if (!(target > 0)) return fall_to(*reach_down([](const ProfilePlace&) { return false; }, infinite));
         reach_down([&](const ProfilePlace& place) { return place.distance_m <= target; }, infinite);
-        const std::size_t above = first_above([&](const ProfilePlace& place) { return place.distance_m <= target; });
+        const std::size_t above = first_above([&](const ProfilePlace& place) { return place.distance_m <= target; },
+                                              inside_[top_].window_end);
         if (above == size()) return 0.0;
         const ProfilePlace& low = at(above - 1);
         const ProfilePlace& high = at(above);
@@ -56,7 +60,7 @@ public:
         const auto has_fallen = [&](const ProfilePlace& place) { return fall_to(place) >= fall; };
         const ProfilePlace* lowest = reach_down(has_fallen, limit);
         if (!has_fallen(*lowest)) return std::nullopt;
-        const std::size_t above = first_above(has_fallen);
+        const std::size_t above = first_above(has_fallen, inside_[top_].step_end);
         const ProfilePlace& low = at(above - 1);
         const ProfilePlace& high = at(above);
         const double share = (fall_to(low) - fall) / (high.level - low.level);
@@ -71,7 +75,7 @@ public:
 
     /// How far ahead channel or water begins; infinite where it does not within `reach`.
     [[nodiscard]] double distance_to_concentrated(double reach) {
-        if (concentrated_.back() != npos) return top().distance_m - inside_[concentrated_.back()].distance_m;
+        if (inside_[top_].concentrated != npos) return top().distance_m - inside_[inside_[top_].concentrated].place.distance_m;
         reach_down([&](const ProfilePlace& place) { return top().distance_m - place.distance_m >= reach; }, infinite);
         return beyond_concentrated_ == npos ? infinite : top().distance_m - beyond_[beyond_concentrated_].distance_m;
     }
@@ -80,12 +84,21 @@ private:
     static constexpr std::size_t npos = SIZE_MAX;
     static constexpr double infinite = std::numeric_limits<double>::infinity();
 
-    [[nodiscard]] const ProfilePlace& top() const { return inside_.back(); }
+    /// A place of the path itself. Where searches from it ended is where those from the place above it begin; counted from the path's end,
+    /// so negative beyond it.
+    struct Inside {
+        ProfilePlace place;
+        std::size_t concentrated = npos;   ///< position of the last place at or below it that is concentrated
+        std::ptrdiff_t window_end = 0;
+        std::ptrdiff_t step_end = 0;
+    };
+
+    [[nodiscard]] const ProfilePlace& top() const { return inside_[top_].place; }
     [[nodiscard]] double fall_to(const ProfilePlace& place) const { return top().level - place.level; }
-    [[nodiscard]] std::size_t size() const { return beyond_.size() + inside_.size(); }
+    [[nodiscard]] std::size_t size() const { return beyond_.size() + top_ + 1; }
     /// Places from the lowest known up.
     [[nodiscard]] const ProfilePlace& at(std::size_t i) const {
-        return i < beyond_.size() ? beyond_[beyond_.size() - 1 - i] : inside_[i - beyond_.size()];
+        return i < beyond_.size() ? beyond_[beyond_.size() - 1 - i] : inside_[i - beyond_.size()].place;
     }
     [[nodiscard]] const ProfilePlace& lowest() const { return at(0); }
 
@@ -102,26 +115,35 @@ private:
         return &lowest();
     }
 
-    /// The first place, from the lowest up, that is not `below`; the lowest is. What is looked for lies close under the top as a rule, while
-    /// the path may be long: so first in growing strides from the top down, then by halves.
+    /// The first place, from the lowest up, that is not `below`; the lowest is. What is looked for lies close to where the search from the place
+    /// under the top ended, which is `hint`: so first in growing strides from there, then by halves. Sets `hint` to where it ended.
     template <class Below>
-    [[nodiscard]] std::size_t first_above(Below below) const {
-        std::size_t high = size();
-        std::size_t low = high - 1;
-        for (std::size_t stride = 1; low > 0 && !below(at(low)); stride *= 2) {
-            high = low;
-            low -= std::min(stride, low);
+    [[nodiscard]] std::size_t first_above(Below below, std::ptrdiff_t& hint) const {
+        const auto beyond = static_cast<std::ptrdiff_t>(beyond_.size());
+        std::size_t low = static_cast<std::size_t>(std::max<std::ptrdiff_t>(hint + beyond, 1) - 1);
+        std::size_t high = low + 1;
+        if (below(at(low))) {
+            for (std::size_t stride = 1; high < size() && below(at(high)); stride *= 2) {
+                low = high;
+                high = std::min(high + stride, size());
+            }
+        } else {
+            for (std::size_t stride = 1; low > 0 && !below(at(low)); stride *= 2) {
+                high = low;
+                low -= std::min(stride, low);
+            }
         }
         while (high - low > 1) {
             const std::size_t middle = low + (high - low) / 2;
             (below(at(middle)) ? low : high) = middle;
         }
+        hint = static_cast<std::ptrdiff_t>(high) - beyond;
         return high;
     }
 
     Fetch fetch_;
-    std::vector<ProfilePlace> inside_;
-    std::vector<std::size_t> concentrated_;
+    std::vector<Inside> inside_;   ///< up to the top; room beyond it
+    std::size_t top_ = 0;
     std::vector<ProfilePlace> beyond_;
     std::size_t beyond_concentrated_ = npos;
     bool ended_ = false;

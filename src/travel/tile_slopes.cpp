@@ -1,5 +1,6 @@
 #include "tile_slopes.hpp"
 
+#include <array>
 #include <atomic>
 #include <optional>
 #include <utility>
@@ -22,7 +23,9 @@ class TileWalk {
 public:
     TileWalk(const SlopeGround& ground, const TileDesk& desk, Raster<GroundKind>& kind, Raster<float>& slope)
         : ground_(ground), codes_(ground.in.forest.codes()), desk_(desk), kind_(kind), slope_(slope),
-          at_top_(ground.rules, ground.in.metres_per_elevation_unit) {}
+          at_top_(ground.rules, ground.in.metres_per_elevation_unit) {
+        for (const Direction d : all_directions) offset_[flow_code(d)] = static_cast<Local>(row_step(d) * desk.flow.window().columns + column_step(d));
+    }
 
     /// Walks the tree of cells above an exit or a root of the tile, each cell after the one below it.
     void walk_from(Local end) {
@@ -75,9 +78,11 @@ private:
         const RowColumn at{local / columns, local % columns};
         const bool is_inner = at.row > 0 && at.column > 0 && at.row + 1 < window.rows && at.column + 1 < window.columns;
         for (const Direction d : all_directions) {
-            const RowColumn beside = neighbour(at, d);
-            if (!is_inner && (beside.row < 0 || beside.row >= window.rows || beside.column < 0 || beside.column >= window.columns)) continue;
-            const Local up = local + static_cast<Local>(row_step(d)) * columns + static_cast<Local>(column_step(d));
+            if (!is_inner) {
+                const RowColumn beside = neighbour(at, d);
+                if (beside.row < 0 || beside.row >= window.rows || beside.column < 0 || beside.column >= window.columns) continue;
+            }
+            const Local up = local + offset_[flow_code(d)];
             if (desk_.flow.code(up) == flow_code(opposite(d))) pending_.push_back({up, position});
         }
     }
@@ -88,6 +93,7 @@ private:
     Raster<GroundKind>& kind_;
     Raster<float>& slope_;
     SlopeAtTop at_top_;
+    std::array<Local, 8> offset_{};   ///< to the neighbour in a direction, modulo 2³²
     std::vector<Pending> pending_;
 };
 

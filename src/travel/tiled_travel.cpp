@@ -29,7 +29,7 @@ TiledTravel::TiledTravel(const TiledGround& ground, const TravelRules& rules, co
     : in_(ground), rules_(rules), executor_(executor), area_(ground.forest), from_divide_(ground.forest),
       sheet_index_(ground.forest), flow_distance_(ground.forest), spill_border_(ground.forest), storm_(ground.forest),
       fixed_(ground.forest), spill_(ground.elevations, ground.forest.tiles()),
-      kind_(ground.elevations.rows(), ground.elevations.columns(), GroundKind::overland),
+      kind_(ground.elevations.rows(), ground.elevations.columns()),
       slope_(ground.elevations.rows(), ground.elevations.columns()) {
     find_areas();
     find_kinds();

@@ -57,7 +57,7 @@ private:
     class Files;
     struct Strip;
 
-    void fill_cell(const TileDesk& desk, Local local, std::size_t at);
+    void fill_cell(const TileDesk& desk, Local local, Cell at);
 
     RasterStory story_;
     std::array<std::uint16_t, 256> azimuths_{};   ///< by flow code

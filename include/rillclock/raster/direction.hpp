@@ -15,16 +15,16 @@ inline constexpr std::array<Direction, 8> all_directions = {
     Direction::north, Direction::north_east, Direction::east, Direction::south_east,
     Direction::south, Direction::south_west, Direction::west, Direction::north_west};
 
+/// Tables of the two functions below; within them they would be made anew at every call.
+namespace direction_detail {
+inline constexpr std::array<int, 8> row_steps = {-1, -1, 0, 1, 1, 1, 0, -1};
+inline constexpr std::array<int, 8> column_steps = {0, 1, 1, 1, 0, -1, -1, -1};
+}  // namespace direction_detail
+
 /// Rows to the neighbour: −1 north, 1 south.
-[[nodiscard]] constexpr int row_step(Direction d) {
-    constexpr std::array<int, 8> steps = {-1, -1, 0, 1, 1, 1, 0, -1};
-    return steps[static_cast<std::size_t>(d)];
-}
+[[nodiscard]] constexpr int row_step(Direction d) { return direction_detail::row_steps[static_cast<std::size_t>(d)]; }
 /// Columns to the neighbour: −1 west, 1 east.
-[[nodiscard]] constexpr int column_step(Direction d) {
-    constexpr std::array<int, 8> steps = {0, 1, 1, 1, 0, -1, -1, -1};
-    return steps[static_cast<std::size_t>(d)];
-}
+[[nodiscard]] constexpr int column_step(Direction d) { return direction_detail::column_steps[static_cast<std::size_t>(d)]; }
 /// The way back.
 [[nodiscard]] constexpr Direction opposite(Direction d) {
     return static_cast<Direction>((static_cast<unsigned>(d) + 4U) % 8U);

@@ -15,7 +15,9 @@ template <class T>
 class Raster {
 public:
     Raster() = default;
-    Raster(std::int64_t rows, std::int64_t columns, T value = T{})
+    /// All cells zero, or what a new T is.
+    Raster(std::int64_t rows, std::int64_t columns) : rows_(rows), columns_(columns), values_(static_cast<std::size_t>(rows * columns)) {}
+    Raster(std::int64_t rows, std::int64_t columns, T value)
         : rows_(rows), columns_(columns), values_(static_cast<std::size_t>(rows * columns), value) {}
 
     [[nodiscard]] std::int64_t rows() const { return rows_; }
@@ -48,7 +50,7 @@ public:
 private:
     std::int64_t rows_ = 0;
     std::int64_t columns_ = 0;
-    std::vector<T, LargeMemory<T>> values_;
+    std::vector<T, ZeroMemory<T>> values_;
 };
 
 }  // namespace rillclock
