@@ -1,5 +1,7 @@
 #include "last_pass.hpp"
 
+#include <numeric>
+
 #include "rillclock/catchment/arrival_tally.hpp"
 #include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/deliver/raster_strips.hpp"
@@ -8,18 +10,38 @@
 namespace rillclock {
 namespace {
 
-std::vector<StepTime> times_of_points(const LastPass& pass) {
+/// The times from points to the root that rasters refer to: of the last points, and of all where there are isochrones of each. The others are
+/// noted on the way, since to make their tiles would cost as much as to make all.
+std::vector<StepTime> times_for_rasters(const LastPass& pass) {
+    std::vector<PointNumber> wanted = pass.tree.last_points();
+    if (pass.study.output.isochrones) std::iota(wanted.begin(), wanted.end(), PointNumber{0});
     std::vector<Cell> cells;
-    for (const DesignPoint& point : pass.points) cells.push_back(point.cell);
+    for (const PointNumber number : wanted) {
+        if (number != 0) cells.push_back(pass.points[number - 1].cell);
+    }
     const auto found = path_cells_at(pass.travel, cells);
-    std::vector<StepTime> times;
-    for (const Cell cell : cells) times.push_back(found.at(cell).time_to_root);
+    std::vector<StepTime> times(pass.points.size());
+    for (const PointNumber number : wanted) {
+        if (number != 0) times[number - 1] = found.at(pass.points[number - 1].cell).time_to_root;
+    }
     return times;
+}
+
+/// Notes the times of the points that lie in the tile on the desk.
+void note_times(const LastPass& pass, const TileDesk& desk, std::vector<StepTime>& times) {
+    const Window& window = desk.flow.window();
+    const std::int64_t columns = pass.terrain.grid.columns;
+    for (std::size_t i = 0; i < times.size(); ++i) {
+        const std::int64_t row = pass.points[i].cell / columns - window.row;
+        const std::int64_t column = pass.points[i].cell % columns - window.column;
+        if (row < 0 || row >= window.rows || column < 0 || column >= window.columns) continue;
+        times[i] = desk.time_to_root(static_cast<Local>(row * window.columns + column));
+    }
 }
 
 /// Has the outlines and the report's pictures gathered from the strips that the rasters are written from.
 void begin_regions(const LastPass& pass, const std::vector<StepTime>& times, RasterStory& story) {
-    std::vector<double> minutes;
+    std::vector<double> minutes;   // those of isochrones alone are asked for
     for (std::size_t i = 0; i < times.size(); ++i) {
         minutes.push_back(in_minutes((times[i] - story.last_point_times[i + 1]).under(story.last_point_factors[i + 1])));
     }
@@ -74,28 +96,32 @@ void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, Aft
     pass.progress.tell({.stage = stage, .done = cells, .total = cells, .finished = true});
 }
 
-void tally_all(const LastPass& pass, ArrivalTally& tally) {
+void tally_all(const LastPass& pass, ArrivalTally& tally, std::vector<StepTime>& times) {
     const auto look = [&](const TileDesk& desk) {
+        note_times(pass, desk, times);
         tally.add(desk);
         if (pass.histograms != nullptr) pass.histograms->add(desk);
     };
     work_all_tiles(pass, "storms", look, [](std::int64_t, std::int64_t) {});
 }
 
-std::vector<PointHeads> under_one_storm_alone(const LastPass& pass, const std::vector<StepTime>& times) {
+std::vector<PointHeads> under_one_storm_alone(const LastPass& pass) {
     const double factor = pass.travel.rules().sheet.storm_factor;
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
-    tally_all(pass, tally);
+    std::vector<StepTime> times(pass.points.size());
+    tally_all(pass, tally, times);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
     add_storms(heads, times, intensities_of(pass.rain.storms));
     return heads;
 }
 
-std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<StepTime>& times) {
+std::vector<PointHeads> under_one_storm(const LastPass& pass) {
     const double factor = pass.travel.rules().sheet.storm_factor;
+    std::vector<StepTime> times = times_for_rasters(pass);
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
     RasterStrips rasters(story_of(pass, times, {}), pass.travel, pass.folder);
     const auto look = [&](const TileDesk& desk) {
+        note_times(pass, desk, times);
         tally.add(desk);
         if (pass.histograms != nullptr) pass.histograms->add(desk);
         rasters.fill(desk);
@@ -109,17 +135,17 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<
     return heads;
 }
 
-std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, const std::vector<StepTime>& times,
-                                               const OwnStorms& storms) {
+/// Gives `times` the times of all points.
+std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, std::vector<StepTime>& times, const OwnStorms& storms) {
     ArrivalTally tally(pass.travel, pass.points.size(), storms.reference_factor, Storms::by_point);
-    tally_all(pass, tally);
+    tally_all(pass, tally, times);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, times, storms);
     if (pass.study.timing.is_kinematic()) require_settled(heads, pass.points, pass.rain);
     return heads;
 }
 
-std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector<StepTime>& times,
-                                         const OwnStorms& storms) {
+std::vector<PointHeads> under_own_storms(const LastPass& pass, const OwnStorms& storms) {
+    std::vector<StepTime> times(pass.points.size());
     std::vector<PointHeads> heads = under_own_storms_alone(pass, times, storms);
     std::vector<double> factors;
     for (const PointHeads& point : heads) factors.push_back(point.storm_factor);
@@ -137,15 +163,15 @@ std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector
 std::vector<PointHeads> heads_alone(const LastPass& whole) {
     LastPass pass = whole;
     pass.histograms = nullptr;  // those are of the times that the rasters show
-    const std::vector<StepTime> times = times_of_points(pass);
     const std::optional<OwnStorms> own = own_storms_of(pass.study, pass.travel.rules(), pass.rain);
-    return own ? under_own_storms_alone(pass, times, *own) : under_one_storm_alone(pass, times);
+    if (!own) return under_one_storm_alone(pass);
+    std::vector<StepTime> times(pass.points.size());
+    return under_own_storms_alone(pass, times, *own);
 }
 
 std::vector<PointHeads> heads_and_rasters(const LastPass& pass) {
-    const std::vector<StepTime> times = times_of_points(pass);
     const std::optional<OwnStorms> own = own_storms_of(pass.study, pass.travel.rules(), pass.rain);
-    return own ? under_own_storms(pass, times, *own) : under_one_storm(pass, times);
+    return own ? under_own_storms(pass, *own) : under_one_storm(pass);
 }
 
 }  // namespace rillclock

@@ -126,6 +126,21 @@ TEST_CASE("bins put together are the bins of all cells, whichever takes the othe
     }
 }
 
+TEST_CASE("bins that come in any order, some seconds twice, are those of their cells") {
+    ArrivalBins bins = four_cells();
+    bins.add({{.second = 7, .area = to_fixed_area(2), .last = head(7, 7.5)},
+              {.second = 2, .area = to_fixed_area(1), .last = head(6, 2.6)},
+              {.second = 7, .area = to_fixed_area(1), .last = head(8, 7.9)},
+              {.second = -3, .area = to_fixed_area(1), .last = head(9, -2.5)}},
+             1.0);
+    CHECK(bins.area() == to_fixed_area(9));
+    const std::vector<double> shares = {0.1, 0.3, 0.4, 0.6, 1.0};
+    std::vector<Cell> found;
+    for (const Head& last : bins.by_shares(shares)) found.push_back(last.cell);
+    CHECK(found == std::vector<Cell>{9, 1, 4, 6, 8});
+    CHECK(bins.last_without(0.34).cell == 6);
+}
+
 TEST_CASE("a front is the same whatever the order in which its cells came") {
     std::vector<Head> given = {head(9, 1, 8), head(4, 8, 1), head(7, 5, 5), head(2, 5, 5), head(3, 1, 1)};
     std::sort(given.begin(), given.end(), [](const Head& a, const Head& b) { return a.cell < b.cell; });
