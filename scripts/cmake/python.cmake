@@ -16,6 +16,7 @@ function(rillclock_python_module)
   pybind11_add_module(rillclock_python MODULE NO_EXTRAS ${sources})
   set_target_properties(rillclock_python PROPERTIES OUTPUT_NAME rillclock LIBRARY_OUTPUT_DIRECTORY ${PROJECT_BINARY_DIR}/python)
   target_link_libraries(rillclock_python PRIVATE rillclock::rillclock rillclock_developer_flags)
+  rillclock_take_together(rillclock_python)
   target_compile_definitions(rillclock_python PRIVATE RILLCLOCK_VERSION="${PROJECT_VERSION}")
   install(TARGETS rillclock_python COMPONENT python
           LIBRARY DESTINATION lib/python${Python_VERSION_MAJOR}.${Python_VERSION_MINOR}/dist-packages)

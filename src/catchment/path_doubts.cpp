@@ -18,9 +18,9 @@ void count_speed(Beyond& beyond, const StepPart& part, Speed bound) {
     if (part.speed_m_per_s > bound_m_per_s) count_beyond(beyond, part, part.speed_m_per_s, bound_m_per_s);
 }
 
-class Looking {
+class LookingAlong {
 public:
-    explicit Looking(const PathGround& ground) : ground_(ground) {}
+    explicit LookingAlong(const PathGround& ground) : ground_(ground) {}
 
     PathDoubts look(std::span<const PathPiece> pieces) {
         for (const PathPiece& piece : pieces) {
@@ -98,6 +98,6 @@ private:
 
 }  // namespace
 
-PathDoubts doubts_of(const PathGround& ground, std::span<const PathPiece> pieces) { return Looking(ground).look(pieces); }
+PathDoubts doubts_of(const PathGround& ground, std::span<const PathPiece> pieces) { return LookingAlong(ground).look(pieces); }
 
 }  // namespace rillclock

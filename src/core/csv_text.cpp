@@ -3,18 +3,13 @@
 #include <algorithm>
 
 #include "rillclock/core/error.hpp"
+#include "rillclock/core/trimmed.hpp"
 
 namespace rillclock {
 namespace {
 
 constexpr std::string_view byte_order_mark = "\xEF\xBB\xBF";
 constexpr std::string_view blanks = " \t";
-
-std::string trimmed(std::string_view text) {
-    const auto first = text.find_first_not_of(blanks);
-    if (first == std::string_view::npos) return {};
-    return std::string(text.substr(first, text.find_last_not_of(blanks) - first + 1));
-}
 
 /// Takes a CSV text apart from front to back; knows on which line it is.
 class CsvReader {
@@ -65,7 +60,7 @@ private:
             ++length;
         const std::string_view field = rest_.substr(0, length);
         rest_.remove_prefix(length);
-        return trimmed(field);
+        return std::string(trimmed(field, blanks));
     }
 
     std::string take_quoted() {

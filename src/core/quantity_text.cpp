@@ -16,7 +16,7 @@
 namespace rillclock {
 namespace {
 
-constexpr std::string_view blanks = " \t";   // a quantity stands on one line
+constexpr std::string_view line_blanks = " \t";   // a quantity stands on one line
 
 enum class Dimension { none, fraction, length, area, duration, speed, intensity };
 
@@ -126,13 +126,13 @@ public:
 
 private:
     double number_before(std::string_view& rest) const {
-        const std::string_view text = trimmed(text_, blanks);
+        const std::string_view text = trimmed(text_, line_blanks);
         double number = 0.0;
         const auto [end, error] = std::from_chars(text.data(), text.data() + text.size(), number);
         if (error == std::errc::result_out_of_range) throw fault("whose number is too large or too small to be held");
         if (error != std::errc()) throw fault("which does not begin with a number");
         if (!std::isfinite(number)) throw fault("which is not a finite number");
-        rest = trimmed(text.substr(static_cast<std::size_t>(end - text.data())), blanks);
+        rest = trimmed(text.substr(static_cast<std::size_t>(end - text.data())), line_blanks);
         if (rest.starts_with(',')) throw fault("which has a comma in its number where a decimal point is wanted");
         return number;
     }
@@ -209,10 +209,10 @@ PowerLaw power_law_from_text(std::string_view text, const QuantityAsked& asked) 
     const auto star = text.find('*');
     if (star == std::string_view::npos)
         return {.coefficient = length_from_text(text, asked), .unit = square_kilometres(1), .exponent = 0.0};
-    const std::string_view power = trimmed(text.substr(star + 1), blanks);
+    const std::string_view power = trimmed(text.substr(star + 1), line_blanks);
     const auto caret = power.find('^');
     if (caret == std::string_view::npos) throw power_law_fault(text, asked, "which has no power after the *");
-    const auto unit = area_unit(trimmed(power.substr(0, caret), blanks));
+    const auto unit = area_unit(trimmed(power.substr(0, caret), line_blanks));
     if (!unit) throw power_law_fault(text, asked, "where no unit of area stands before the ^");
     const QuantityAsked part{.subject = asked.subject + " (the power)", .example = "0.352", .sign = Sign::not_negative};
     const double exponent = number_from_text(power.substr(caret + 1), part);

@@ -65,7 +65,7 @@ void write_notices(const SheetMatter& matter, const std::vector<std::size_t>& po
     if (positions.empty()) sheet.words("Nothing was noticed at this point.");
 }
 
-void write_paths(const SheetMatter& matter, SheetWriter& sheet) {
+void write_both_paths(const SheetMatter& matter, SheetWriter& sheet) {
     const SheetJson& governing = matter.outlet.at("governing_path");
     const SheetJson& longest = matter.outlet.at("longest_path");
     sheet.heading("Governing path, segment by segment");
@@ -150,7 +150,7 @@ CalculationSheet SheetBook::sheet(std::size_t position) const try {
     write_point(matter, sheet);
     write_notices(matter, content_->notices.of(words_of(matter.outlet, "name")), sheet);
     write_formulas(matter, sheet);
-    write_paths(matter, sheet);
+    write_both_paths(matter, sheet);
     if (matter.has_rain()) write_storms(matter, sheet);
     write_methods(matter, sheet);
     write_cautions(matter, sheet);

@@ -20,7 +20,7 @@ std::string own_parts_text(const StudyResult& result, const Outlet& outlet) {
     return text;
 }
 
-void add_time_columns(const StudyResult& result, TableWriter<Outlet>& table) {
+void add_arrival_columns(const StudyResult& result, TableWriter<Outlet>& table) {
     const auto point = [&result](const Outlet& o) -> const PointNetwork& { return result.network.points[o.number - 1]; };
     const auto factor = [=](const Outlet& o) { return point(o).raster_storm().storm_factor; };
     table.column("storm_factor", [=](const Outlet& o) { return significant(factor(o), 12); })
@@ -36,7 +36,7 @@ void add_time_columns(const StudyResult& result, TableWriter<Outlet>& table) {
         .column("stated", [&result](const Outlet& o) { return marks_of(result.network.edits[o.number - 1]); });
 }
 
-void add_coefficient_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
+void add_storm_coefficient_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
     for (std::size_t i = 0; i < result.rain.storms.size(); ++i) {
         const std::string years = "_" + significant(result.rain.storms[i].return_period, 6) + "yr";
         const auto where_any = [&result, i](auto print) {
@@ -59,8 +59,8 @@ std::string handover_table(const StudyResult& result) {
     TableWriter<Outlet> table;
     table.column("subarea", [](const Outlet& o) { return o.point.name; })
         .column("area_" + scale.area_unit(), [=](const Outlet& o) { return significant(scale.area(from_fixed_area(o.own_area)), 9); });
-    if (result.peaks.are_there()) add_coefficient_columns(result, scale, table);
-    add_time_columns(result, table);
+    if (result.peaks.are_there()) add_storm_coefficient_columns(result, scale, table);
+    add_arrival_columns(result, table);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) text += table.line(outlet);
     return text;

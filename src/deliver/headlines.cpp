@@ -12,7 +12,7 @@
 namespace rillclock {
 namespace {
 
-std::string minutes_text(double s) {
+std::string time_text(double s) {
     const double m = s / 60.0;
     return m < 120.0 ? significant(m, 3) + " min" : significant(m / 60.0, 3) + " h";
 }
@@ -30,11 +30,11 @@ std::string area_text(const StudyResult& result, FixedArea area) {
 std::string governing_sentence(const StudyResult& result, const Outlet& main) {
     const bool same = main.longest.cells.front() == main.governing.cells.front();
     std::string text = "'" + main.point.name + "' drains " + area_text(result, main.area) + ". Its slowest water arrives after " +
-                       minutes_text(main.time_of_concentration_s()) + ", along " +
+                       time_text(main.time_of_concentration_s()) + ", along " +
                        length_text(result, from_fixed(main.governing.summary.length)) + " of path";
     if (same) return text + "; that is the longest path too.";
     return text + "; the longest path (" + length_text(result, from_fixed(main.longest.summary.length)) + ") takes only " +
-           minutes_text(main.longest.seconds) + ".";
+           time_text(main.longest.seconds) + ".";
 }
 
 std::string_view in_words(Regime regime) {
@@ -55,9 +55,9 @@ std::string makeup_sentence(const Outlet& main) {
     for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
         const double s = in_seconds(by_regime[static_cast<std::size_t>(regime)].under(main.storm_factor));
         if (!(s > 0)) continue;
-        text += (text.empty() ? "" : ", ") + minutes_text(s) + " " + std::string(in_words(regime));
+        text += (text.empty() ? "" : ", ") + time_text(s) + " " + std::string(in_words(regime));
     }
-    const std::string half = "alf of the area has arrived after " + minutes_text(main.arrival_s[0]) + ".";
+    const std::string half = "alf of the area has arrived after " + time_text(main.arrival_s[0]) + ".";
     return text.empty() ? "H" + half : "That time is made up of " + text + "; h" + half;
 }
 
@@ -74,7 +74,7 @@ std::optional<std::string> peak_sentence(const StudyResult& result, const Outlet
     const std::string begin = "Its peak of " + significant(result.rain.raster_storm().return_period, 6) + " years is " +
                               flow_text(result, peak.partial);
     if (!(peak.partial > peak.whole)) return begin + ", that of the whole area.";
-    return begin + ", made by rain of " + minutes_text(in_seconds(peak.window.duration)) + " on " +
+    return begin + ", made by rain of " + time_text(in_seconds(peak.window.duration)) + " on " +
            significant(100.0 * peak.window_share, 3) + " % of the area; the whole area gives " + flow_text(result, peak.whole) + ".";
 }
 
@@ -140,7 +140,7 @@ std::optional<std::string> lead_sentence(const StudyResult& result) {
     points.resize(std::min(points.size(), most_told));
     std::string text;
     for (const PointNumber number : points) {
-        text += (text.empty() ? "" : ", ") + minutes_text(from_fixed(lead(number))) + " at '" + point_name(result, number) + "' ('" +
+        text += (text.empty() ? "" : ", ") + time_text(from_fixed(lead(number))) + " at '" + point_name(result, number) + "' ('" +
                 point_name(result, result.network.points[number - 1].raster_storm().last) + "' last)";
     }
     return "Least lead of the subarea that arrives last over the next one: " + text + "; changes of that size change which it is.";

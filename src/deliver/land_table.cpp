@@ -17,7 +17,7 @@ std::string digits_of(const std::optional<double>& value) {
     return value ? significant(*value, 6) : std::string();
 }
 
-TableWriter<LandRow> columns(const ReportScale& scale) {
+TableWriter<LandRow> land_columns(const ReportScale& scale) {
     const auto area = [scale](FixedArea a) { return five_digits(scale.area(from_fixed_area(a))); };
     TableWriter<LandRow> table;
     table.column("point", [](const LandRow& r) { return r.outlet->point.name; })
@@ -39,7 +39,7 @@ TableWriter<LandRow> columns(const ReportScale& scale) {
     return table;
 }
 
-LandShare share_of(const std::vector<LandShare>& land, const LandKind& kind) {
+LandShare land_share_of(const std::vector<LandShare>& land, const LandKind& kind) {
     for (const LandShare& share : land)
         if (share.kind == kind) return share;
     return {.kind = kind};
@@ -48,7 +48,7 @@ LandShare share_of(const std::vector<LandShare>& land, const LandKind& kind) {
 }  // namespace
 
 std::string land_table(const StudyResult& result) {
-    const TableWriter<LandRow> table = columns(ReportScale(result.study.report_units));
+    const TableWriter<LandRow> table = land_columns(ReportScale(result.study.report_units));
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) {
         const std::vector<LandShare> own = outlet.own_land.shares();
@@ -56,7 +56,7 @@ std::string land_table(const StudyResult& result) {
             text += table.line({.outlet = &outlet,
                                 .cover = &result.book.classes()[share.kind.cover],
                                 .whole = share,
-                                .own = share_of(own, share.kind)});
+                                .own = land_share_of(own, share.kind)});
         }
     }
     return text;

@@ -9,7 +9,7 @@ struct MethodRow {
     const MethodTime* time = nullptr;
 };
 
-TableWriter<MethodRow> columns() {
+TableWriter<MethodRow> method_columns() {
     TableWriter<MethodRow> table;
     table.column("point", [](const MethodRow& r) { return r.outlet->point.name; })
         .column("method", [](const MethodRow& r) { return std::string(r.time->method->about.id); })
@@ -28,7 +28,7 @@ TableWriter<MethodRow> columns() {
 }  // namespace
 
 std::string methods_table(const StudyResult& result) {
-    const TableWriter<MethodRow> table = columns();
+    const TableWriter<MethodRow> table = method_columns();
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) {
         for (const MethodTime& time : result.methods[outlet.number - 1].times) text += table.line({&outlet, &time});

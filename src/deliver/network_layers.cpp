@@ -85,7 +85,7 @@ void add_kind_fields(EdgeLayer& layer) {
 }
 
 /// Along the cells of the flow path; a pipe runs straight.
-Line line_of(const StudyResult& result, const EdgeRow& row) {
+Line edge_line(const StudyResult& result, const EdgeRow& row) {
     Line line;
     if (row.pipe != nullptr) {
         for (const PointNumber end : {row.outlet->number, row.network->next}) line.push_back(result.grid.centre(result.outlets[end - 1].point.cell));
@@ -96,25 +96,25 @@ Line line_of(const StudyResult& result, const EdgeRow& row) {
 }
 
 /// The peak of a point under the storm of one return period.
-struct PeakRow {
+struct PeakFeature {
     const Outlet* outlet = nullptr;
     const PointPeak* peak = nullptr;
     const NetworkStorm* storm = nullptr;
     double return_period = 0.0;
 };
 
-using PeakLayer = LayerWriter<PeakRow>;
+using PeakLayer = LayerWriter<PeakFeature>;
 
 /// A field of a peak that is there; none where it is not.
 template <class Value>
-PeakLayer::Value where_there(Value value) {
-    return [value](const PeakRow& r) { return r.peak->is_there() ? FieldValue(value(*r.peak)) : FieldValue(); };
+PeakLayer::Value if_there(Value value) {
+    return [value](const PeakFeature& r) { return r.peak->is_there() ? FieldValue(value(*r.peak)) : FieldValue(); };
 }
 
 FieldValue flow_value(Discharge flow) { return number(in_cubic_metres_per_second(flow), 5); }
 FieldValue rain_value(Intensity intensity) { return number(in_millimetres_per_hour(intensity), 7); }
 
-std::string made_by(const PeakRow& row) {
+std::string made_by(const PeakFeature& row) {
     if (!row.peak->is_there()) return "no peak";
     return row.peak->partial > row.peak->whole ? "part of the area" : "whole area";
 }
@@ -126,30 +126,30 @@ LayerStyle peak_style() {
 }
 
 void add_whole_fields(PeakLayer& layer) {
-    layer.field("point", FieldKind::text, "name of the design point", [](const PeakRow& r) { return r.outlet->point.name; })
-        .field("return_period_years", FieldKind::number, "of the storm", [](const PeakRow& r) { return number(r.return_period); })
+    layer.field("point", FieldKind::text, "name of the design point", [](const PeakFeature& r) { return r.outlet->point.name; })
+        .field("return_period_years", FieldKind::number, "of the storm", [](const PeakFeature& r) { return number(r.return_period); })
         .field("made_by", FieldKind::text, "whether the whole area or a part of it makes the peak", made_by)
-        .field("runoff_coefficient", FieldKind::number, "mean C of the area, the frequency factor in it", where_there([](const PointPeak& p) {
+        .field("runoff_coefficient", FieldKind::number, "mean C of the area, the frequency factor in it", if_there([](const PointPeak& p) {
             return number(p.coefficient.value);
         }))
-        .field("time_of_concentration_min", FieldKind::number, "of the whole area under this storm", [](const PeakRow& r) {
+        .field("time_of_concentration_min", FieldKind::number, "of the whole area under this storm", [](const PeakFeature& r) {
             return minutes(in_seconds(r.peak->whole_time));
         })
-        .field("intensity_mm_per_h", FieldKind::number, "of rain on the whole area", where_there([](const PointPeak& p) { return rain_value(p.whole_intensity); }))
-        .field("whole_area_peak_m3_per_s", FieldKind::number, "C i A of the whole area", where_there([](const PointPeak& p) { return flow_value(p.whole); }));
+        .field("intensity_mm_per_h", FieldKind::number, "of rain on the whole area", if_there([](const PointPeak& p) { return rain_value(p.whole_intensity); }))
+        .field("whole_area_peak_m3_per_s", FieldKind::number, "C i A of the whole area", if_there([](const PointPeak& p) { return flow_value(p.whole); }));
 }
 
 void add_partial_fields(const StudyResult& result, PeakLayer& layer) {
-    layer.field("peak_m3_per_s", FieldKind::number, "the greatest over all durations; never less than that of the whole area", where_there([](const PointPeak& p) {
+    layer.field("peak_m3_per_s", FieldKind::number, "the greatest over all durations; never less than that of the whole area", if_there([](const PointPeak& p) {
             return flow_value(p.partial);
         }))
-        .field("peak_duration_min", FieldKind::number, "of the rain that makes it", where_there([](const PointPeak& p) { return minutes(in_seconds(p.window.duration)); }))
-        .field("peak_intensity_mm_per_h", FieldKind::number, "of that rain", where_there([](const PointPeak& p) { return rain_value(p.peak_intensity); }))
-        .field("peak_share_of_area_percent", FieldKind::number, "that makes it", where_there([](const PointPeak& p) { return number(100.0 * p.window_share, 5); }))
-        .field("peak_subareas", FieldKind::text, "subareas that make it, with their shares", where_there([&result](const PointPeak& p) { return makers_in_words(result, p); }))
-        .field("last_subarea", FieldKind::text, "whose water arrives last", [&result](const PeakRow& r) { return point_name(result, r.storm->last); })
-        .field("subareas", FieldKind::whole_number, "how many drain through the point", [](const PeakRow& r) { return whole(r.storm->subareas_above); })
-        .field("why_not", FieldKind::text, "why there is no peak", [](const PeakRow& r) { return r.peak->is_there() ? FieldValue() : FieldValue(r.peak->why_not); });
+        .field("peak_duration_min", FieldKind::number, "of the rain that makes it", if_there([](const PointPeak& p) { return minutes(in_seconds(p.window.duration)); }))
+        .field("peak_intensity_mm_per_h", FieldKind::number, "of that rain", if_there([](const PointPeak& p) { return rain_value(p.peak_intensity); }))
+        .field("peak_share_of_area_percent", FieldKind::number, "that makes it", if_there([](const PointPeak& p) { return number(100.0 * p.window_share, 5); }))
+        .field("peak_subareas", FieldKind::text, "subareas that make it, with their shares", if_there([&result](const PointPeak& p) { return makers_in_words(result, p); }))
+        .field("last_subarea", FieldKind::text, "whose water arrives last", [&result](const PeakFeature& r) { return point_name(result, r.storm->last); })
+        .field("subareas", FieldKind::whole_number, "how many drain through the point", [](const PeakFeature& r) { return whole(r.storm->subareas_above); })
+        .field("why_not", FieldKind::text, "why there is no peak", [](const PeakFeature& r) { return r.peak->is_there() ? FieldValue() : FieldValue(r.peak->why_not); });
 }
 
 }  // namespace
@@ -165,7 +165,7 @@ void write_network(const StudyResult& result, VectorFile& file) {
         if (network.next == 0) continue;
         const StatedPipe* pipe = result.network.edits[outlet.number - 1].pipe;
         const EdgeRow row{.outlet = &outlet, .network = &network, .pipe = pipe, .run = run_of(result, pipe)};
-        Line line = line_of(result, row);
+        Line line = edge_line(result, row);
         layer.add(line.size() < 2 ? std::vector<Line>() : std::vector<Line>{std::move(line)}, row);
     }
 }

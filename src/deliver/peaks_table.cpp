@@ -26,7 +26,7 @@ Table::Print where_there(Print print) {
     return [print](const PeakRow& r) { return r.peak().is_there() ? std::string(print(r.peak())) : std::string(); };
 }
 
-std::string minutes_text(Duration time) { return fixed_decimals(in_minutes(time), 4); }
+std::string peak_minutes(Duration time) { return fixed_decimals(in_minutes(time), 4); }
 std::string rain_text(const ReportScale& scale, Intensity intensity) { return significant(scale.intensity(intensity), 7); }
 
 void add_coefficient_columns(const ReportScale& scale, Table& table) {
@@ -39,14 +39,14 @@ void add_coefficient_columns(const ReportScale& scale, Table& table) {
 }
 
 void add_whole_columns(const ReportScale& scale, Table& table) {
-    table.column("time_of_concentration_min", [](const PeakRow& r) { return minutes_text(r.peak().whole_time); })
+    table.column("time_of_concentration_min", [](const PeakRow& r) { return peak_minutes(r.peak().whole_time); })
         .column("intensity_" + scale.intensity_unit(), where_there([=](const PointPeak& p) { return rain_text(scale, p.whole_intensity); }))
         .column("whole_area_peak_" + scale.flow_unit(), where_there([=](const PointPeak& p) { return five_digits(scale.flow(p.whole)); }));
 }
 
 void add_partial_columns(const StudyResult& result, const ReportScale& scale, Table& table) {
     table.column("peak_" + scale.flow_unit(), where_there([=](const PointPeak& p) { return five_digits(scale.flow(p.partial)); }))
-        .column("peak_duration_min", where_there([](const PointPeak& p) { return minutes_text(p.window.duration); }))
+        .column("peak_duration_min", where_there([](const PointPeak& p) { return peak_minutes(p.window.duration); }))
         .column("peak_intensity_" + scale.intensity_unit(), where_there([=](const PointPeak& p) { return rain_text(scale, p.peak_intensity); }))
         .column("peak_share_of_area_percent", where_there([](const PointPeak& p) { return five_digits(100.0 * p.window_share); }))
         .column("peak_share_of_runoff_percent", where_there([](const PointPeak& p) {
@@ -80,7 +80,7 @@ void add_comparison_columns(const StudyResult& result, const ReportScale& scale,
         .column("differs_from_raster_storm", differences)
         .column("handbook_part_alone_" + scale.flow_unit(), where_there([=](const PointPeak& p) { return five_digits(scale.flow(p.cases.part_alone)); }))
         .column("handbook_part_and_share_" + scale.flow_unit(), where_there([=](const PointPeak& p) { return five_digits(scale.flow(p.cases.part_and_share)); }))
-        .column("handbook_part_min", where_there([](const PointPeak& p) { return minutes_text(p.cases.time_of_part); }))
+        .column("handbook_part_min", where_there([](const PointPeak& p) { return peak_minutes(p.cases.time_of_part); }))
         .column("stated_above", [&result](const PeakRow& r) { return stated_in_words(result, r.network->stated_above); })
         .column("why_not", [](const PeakRow& r) { return r.peak().why_not; });
 }
@@ -96,10 +96,10 @@ TableWriter<TimeAreaLine> time_area_columns(const ReportScale& scale) {
     TableWriter<TimeAreaLine> table;
     table.column("point", [](const TimeAreaLine& l) { return l.point.outlet->point.name; })
         .column("return_period_years", [](const TimeAreaLine& l) { return significant(l.point.return_period, 6); })
-        .column("duration_min", [](const TimeAreaLine& l) { return minutes_text(l.row->duration); })
+        .column("duration_min", [](const TimeAreaLine& l) { return peak_minutes(l.row->duration); })
         .column("arriving_since_ca_" + scale.area_unit(), [=](const TimeAreaLine& l) { return runoff_text(scale, l.row->in_band); })
         .column("arrived_ca_" + scale.area_unit(), [=](const TimeAreaLine& l) { return runoff_text(scale, l.row->running); })
-        .column("window_begins_min", [](const TimeAreaLine& l) { return minutes_text(l.row->window_begins); })
+        .column("window_begins_min", [](const TimeAreaLine& l) { return peak_minutes(l.row->window_begins); })
         .column("most_ca_" + scale.area_unit(), [=](const TimeAreaLine& l) { return runoff_text(scale, l.row->window.runoff); })
         .column("intensity_" + scale.intensity_unit(), [=](const TimeAreaLine& l) { return rain_text(scale, l.row->intensity); })
         .column("flow_" + scale.flow_unit(), [=](const TimeAreaLine& l) { return five_digits(scale.flow(l.row->flow)); })

@@ -39,7 +39,7 @@ struct Station {
     double running_s = 0.0;
 };
 
-std::vector<Station> stations(const Outlet& outlet) {
+std::vector<Station> profile_stations(const Outlet& outlet) {
     std::vector<Station> all(1);
     for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) {
         all.push_back({all.back().distance_m + row.segment->whole_length_m(), row.running_s});
@@ -133,7 +133,7 @@ std::string running_figure(const ReportMatter& matter, const Outlet& outlet) {
     const std::string m = scale.length_unit();
     ChartLine curve{.kind = "curve"};
     std::vector<std::vector<std::string>> rows;
-    for (const Station& station : stations(outlet)) {
+    for (const Station& station : profile_stations(outlet)) {
         curve.points.push_back({scale.length(station.distance_m), station.running_s / 60.0});
         rows.push_back({significant(curve.points.back().x, 6), fixed_decimals(curve.points.back().y, 3)});
     }

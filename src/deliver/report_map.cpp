@@ -146,7 +146,7 @@ Json areas_json(const ReportMatter& matter) {
     return areas;
 }
 
-Json path_json(const ReportMatter& matter, const Outlet& outlet, double apart) {
+Json map_path(const ReportMatter& matter, const Outlet& outlet, double apart) {
     Json pieces = Json::array();
     for (const SegmentRow& row : segment_rows(outlet, outlet.governing, "governing")) {
         CellLine line(apart);
@@ -208,7 +208,7 @@ Json labels_json(const ReportMatter& matter, const TimeClasses& classes) {
     return labels;
 }
 
-Json points_json(const ReportMatter& matter) {
+Json map_points(const ReportMatter& matter) {
     Json points = Json::array();
     for (const Outlet& outlet : matter.result.outlets) {
         const RowColumn at = matter.result.grid.row_column(outlet.point.cell);
@@ -270,11 +270,11 @@ std::string map_data(const ReportMatter& matter) {
     Json longest = Json::array();
     const double apart = path_apart(matter);
     for (const Outlet& outlet : matter.result.outlets) {
-        paths.push_back(path_json(matter, outlet, apart));
+        paths.push_back(map_path(matter, outlet, apart));
         longest.push_back(longest_json(matter, outlet, apart));
     }
     const Grid& grid = matter.result.grid;
-    return for_script({{"rows", grid.rows}, {"columns", grid.columns}, {"tall", grid.cell_height / grid.cell_width}, {"regimes", regimes_json()}, {"points", points_json(matter)}, {"areas", areas_json(matter)}, {"paths", paths},
+    return for_script({{"rows", grid.rows}, {"columns", grid.columns}, {"tall", grid.cell_height / grid.cell_width}, {"regimes", regimes_json()}, {"points", map_points(matter)}, {"areas", areas_json(matter)}, {"paths", paths},
                        {"longest", longest}, {"pipes", pipes_json(matter)}, {"labels", labels_json(matter, classes)}});
 }
 

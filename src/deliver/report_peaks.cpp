@@ -29,13 +29,13 @@ struct PeakMatter {
     [[nodiscard]] const NetworkStorm& storm(std::size_t period) const { return result.network.points[outlet.number - 1].storms[period]; }
 };
 
-std::string minutes_of(Duration time) { return shown_minutes(in_seconds(time)); }
+std::string shown_duration(Duration time) { return shown_minutes(in_seconds(time)); }
 
 /// "4.14 m³/s, from rain of 23.8 min on 75 % of the area; the whole area gives 2.89".
 std::string peak_words(const PeakMatter& matter, const PointPeak& peak) {
     const std::string text = matter.flow(peak.partial) + " " + matter.flow_unit();
-    if (!(peak.partial > peak.whole)) return text + ", that of the whole area in rain of " + minutes_of(peak.window.duration) + " min";
-    return text + ", from rain of " + minutes_of(peak.window.duration) + " min on " + significant(100.0 * peak.window_share, 3) +
+    if (!(peak.partial > peak.whole)) return text + ", that of the whole area in rain of " + shown_duration(peak.window.duration) + " min";
+    return text + ", from rain of " + shown_duration(peak.window.duration) + " min on " + significant(100.0 * peak.window_share, 3) +
            " % of the area; the whole area gives " + matter.flow(peak.whole);
 }
 
@@ -121,9 +121,9 @@ std::vector<Cells> search_cells(const PeakMatter& matter) {
 }
 
 std::vector<ChartMark> search_marks(const PointPeak& peak) {
-    std::vector<ChartMark> marks{{in_minutes(peak.window.duration), "makes the peak: " + minutes_of(peak.window.duration) + " min"}};
+    std::vector<ChartMark> marks{{in_minutes(peak.window.duration), "makes the peak: " + shown_duration(peak.window.duration) + " min"}};
     const bool is_part = peak.window.duration < peak.whole_time;
-    if (is_part) marks.push_back({in_minutes(peak.whole_time), "all has arrived: " + minutes_of(peak.whole_time) + " min"});
+    if (is_part) marks.push_back({in_minutes(peak.whole_time), "all has arrived: " + shown_duration(peak.whole_time) + " min"});
     return marks;
 }
 
@@ -132,7 +132,7 @@ std::string search_figure(const PeakMatter& matter) {
     if (!peak.is_there() || peak.rows.empty()) return "";
     const std::string a = matter.scale.area_unit();
     const std::string years = matter.years(matter.result.rain.raster);
-    const std::string finding = "Time and area in the storm of " + years + " years: within " + minutes_of(peak.window.duration) + " min at most " +
+    const std::string finding = "Time and area in the storm of " + years + " years: within " + shown_duration(peak.window.duration) + " min at most " +
                                 matter.runoff(peak.window.runoff) + " of " + matter.runoff(peak.coefficient.runoff) + " " + a + " of C·A arrives; at " +
                                 matter.rain(peak.peak_intensity) + " " + matter.rain_unit() + " that makes " + matter.flow(peak.partial) + " " + matter.flow_unit() +
                                 ", the most of all durations.";

@@ -151,7 +151,7 @@ std::string section_words(const StudyResult& result, const Segment& segment) {
     return result.rules.channel.hydraulic_radius ? "stated" : "by area";
 }
 
-Json flow_json(const DesignFlow& flow) {
+Json design_flow_json(const DesignFlow& flow) {
     return {{"arrival_min", minutes_json(flow.arrival_s)},
             {"intensity_mm_per_h", digits(in_millimetres_per_hour(flow.intensity), 8)},
             {"runoff_area_m2", digits(flow.runoff_area_m2)},
@@ -178,7 +178,7 @@ void add_formula_numbers(const StudyResult& result, const Segment& s, Json& json
             json["n"] = digits(s.channel_n);
             json["hydraulic_radius_m"] = digits(s.radius_equivalent_m);
             json["section"] = section_words(result, s);
-            if (s.reach_to != nullptr && s.reach_to->flow.m3_per_s > 0) json["flow_at_end"] = flow_json(s.reach_to->flow);
+            if (s.reach_to != nullptr && s.reach_to->flow.m3_per_s > 0) json["flow_at_end"] = design_flow_json(s.reach_to->flow);
             return;
         case Regime::water: json["water_depth_m"] = digits(in_metres(*cover_of(result, s)->water_depth)); return;
     }

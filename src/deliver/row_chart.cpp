@@ -8,17 +8,17 @@
 namespace rillclock {
 namespace {
 
-constexpr double left = 8.0;
+constexpr double row_left = 8.0;
 constexpr double name_high = 22.0;     ///< of a row's name and note
 constexpr double lane_high = 13.0;
 constexpr double row_gap = 9.0;
-constexpr double axis_high = 48.0;
+constexpr double row_axis_high = 48.0;
 constexpr std::size_t most_letters = 34;
 
 struct Span {
     double least = 0.0;
     double greatest = 1.0;
-    [[nodiscard]] double x(double value) const { return left + (value - least) / (greatest - least) * (chart_width - left - chart_right); }
+    [[nodiscard]] double x(double value) const { return row_left + (value - least) / (greatest - least) * (chart_width - row_left - chart_right); }
 };
 
 Span span_of(const std::vector<ChartRow>& rows, const RowScale& scale) {
@@ -56,7 +56,7 @@ std::string axis(const Span& span, double base) {
     std::string svg;
     const double step = round_step(span.greatest - span.least, 6);
     for (double value = step * std::ceil(span.least / step); value <= span.greatest + 1e-9 * step; value += step) {
-        const std::string anchor = span.x(value) > left + 15 ? "middle" : "start";
+        const std::string anchor = span.x(value) > row_left + 15 ? "middle" : "start";
         svg += line_of(span.x(value), 2, span.x(value), base, "grid") + text_at(span.x(value), base + 19, anchor, significant(value, 6), "soft");
     }
     return svg;
@@ -69,13 +69,13 @@ std::string row_chart(const std::string& finding, const RowScale& scale, const s
     std::string svg;
     double y = 2.0;
     for (const ChartRow& row : rows) {
-        svg += text_at(left, y + 16, "start", shortened(row.label, most_letters)) + text_at(chart_width - chart_right - 6, y + 16, "end", row.note, "soft");
+        svg += text_at(row_left, y + 16, "start", shortened(row.label, most_letters)) + text_at(chart_width - chart_right - 6, y + 16, "end", row.note, "soft");
         y += name_high;
         for (const ChartPart& part : row.parts) svg += drawn(span, part, y + lane_high * static_cast<double>(part.lane));
         y += lane_high * static_cast<double>(lanes_of(row)) + row_gap;
     }
     const std::string mark = scale.mark ? line_of(span.x(*scale.mark), 2, span.x(*scale.mark), y, "mark") : std::string();
-    return chart_begun(finding, y + axis_high) + axis(span, y) + mark + svg + text_at(chart_width / 2, y + 41, "middle", scale.title) + "</svg>";
+    return chart_begun(finding, y + row_axis_high) + axis(span, y) + mark + svg + text_at(chart_width / 2, y + 41, "middle", scale.title) + "</svg>";
 }
 
 std::string chart_keys(const std::vector<ChartKey>& keys) {

@@ -9,11 +9,11 @@
 namespace rillclock {
 namespace {
 
-using Table = TableWriter<SegmentRow>;
+using SegmentTable = TableWriter<SegmentRow>;
 
 /// A number where the regime's formula uses it, nothing elsewhere.
 template <class Value>
-Table::Print only_in(Regime regime, Value value) {
+SegmentTable::Print only_in(Regime regime, Value value) {
     return [regime, value](const SegmentRow& row) {
         return row.segment->regime == regime ? five_digits(value(row)) : std::string();
     };
@@ -27,7 +27,7 @@ std::string index_text(const ReportScale& scale, const Segment& segment, double 
     return fixed_decimals(scale.length(index_m), decimals);
 }
 
-void add_name_columns(const StudyResult& result, Table& table) {
+void add_name_columns(const StudyResult& result, SegmentTable& table) {
     table.column("point", [](const SegmentRow& r) { return r.outlet->point.name; })
         .column("path", [](const SegmentRow& r) { return std::string(r.path_name); })
         .column("segment", [](const SegmentRow& r) { return std::to_string(r.number); })
@@ -64,7 +64,7 @@ std::string radius_text(const StudyResult& result, const ReportScale& scale, con
     return conveyance == nullptr ? std::string() : five_digits(scale.length(in_metres(conveyance->hydraulic_radius)));
 }
 
-void add_sheet_columns(const StudyResult& result, const ReportScale& scale, Table& table) {
+void add_sheet_columns(const StudyResult& result, const ReportScale& scale, SegmentTable& table) {
     const std::string m = scale.length_unit();
     // NRCS goes by the sheet index, the kinematic wave by the distance from the divide.
     const std::string place = result.study.timing.is_kinematic() ? "distance" : "index";
@@ -84,7 +84,7 @@ void add_sheet_columns(const StudyResult& result, const ReportScale& scale, Tabl
     }));
 }
 
-void add_formula_columns(const StudyResult& result, const ReportScale& scale, Table& table) {
+void add_formula_columns(const StudyResult& result, const ReportScale& scale, SegmentTable& table) {
     const std::string m = scale.length_unit();
     table.column("length_" + m, [=](const SegmentRow& r) { return five_digits(scale.length(r.segment->length_m)); })
         .column("n", [&](const SegmentRow& r) { return n_text(result, *r.segment); })
@@ -101,7 +101,7 @@ void add_formula_columns(const StudyResult& result, const ReportScale& scale, Ta
         }));
 }
 
-void add_result_columns(const ReportScale& scale, Table& table) {
+void add_result_columns(const ReportScale& scale, SegmentTable& table) {
     const std::string m = scale.length_unit();
     table.column("velocity_" + scale.speed_unit(), [=](const SegmentRow& r) {
             return r.formula_s() > 0 ? five_digits(scale.speed(r.segment->length_m / r.formula_s())) : std::string();
@@ -114,7 +114,7 @@ void add_result_columns(const ReportScale& scale, Table& table) {
         .column("running_time_min", [](const SegmentRow& r) { return fixed_decimals(r.running_s / 60.0, 3); });
 }
 
-void add_side_columns(const StudyResult& result, const ReportScale& scale, Table& table) {
+void add_side_columns(const StudyResult& result, const ReportScale& scale, SegmentTable& table) {
     const std::string m = scale.length_unit();
     const double weight = step_weight(result);
     const auto whole = [=](const SegmentRow& r) { return scale.length(r.segment->whole_length_m()) / weight; };
@@ -132,7 +132,7 @@ void add_side_columns(const StudyResult& result, const ReportScale& scale, Table
 }
 
 /// How a channel's last cell carries the design storm: enough to find its flow and depth again.
-void add_design_columns(const StudyResult& result, const ReportScale& scale, Table& table) {
+void add_design_columns(const StudyResult& result, const ReportScale& scale, SegmentTable& table) {
     if (!result.study.timing.channel.design_storm) return;
     const std::string m = scale.length_unit();
     const auto at_end = [](auto number) {
@@ -152,7 +152,7 @@ void add_design_columns(const StudyResult& result, const ReportScale& scale, Tab
 }
 
 /// What mapped channels state of their sections; only where any does. Under the design storm depth and spread give way to its own.
-void add_section_columns(const StudyResult& result, const ReportScale& scale, Table& table) {
+void add_section_columns(const StudyResult& result, const ReportScale& scale, SegmentTable& table) {
     if (result.sections.empty()) return;
     const std::string m = scale.length_unit();
     const auto of_shape = [&result](SectionShape shape, auto number) {
@@ -170,7 +170,7 @@ void add_section_columns(const StudyResult& result, const ReportScale& scale, Ta
         .column("spread_" + m, of_shape(SectionShape::gutter, [=](const MappedSection& s) { return in_unit(s.spread); }));
 }
 
-void add_place_columns(const StudyResult& result, Table& table) {
+void add_end_columns(const StudyResult& result, SegmentTable& table) {
     table.column("x_from", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).front().x); })
         .column("y_from", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).front().y); })
         .column("x_to", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).back().x); })
@@ -181,7 +181,7 @@ void add_place_columns(const StudyResult& result, Table& table) {
 
 std::string segments_table(const StudyResult& result) {
     const ReportScale scale(result.study.report_units);
-    Table table;
+    SegmentTable table;
     add_name_columns(result, table);
     add_formula_columns(result, scale, table);
     add_sheet_columns(result, scale, table);
@@ -189,7 +189,7 @@ std::string segments_table(const StudyResult& result) {
     add_side_columns(result, scale, table);
     add_section_columns(result, scale, table);
     add_design_columns(result, scale, table);
-    add_place_columns(result, table);
+    add_end_columns(result, table);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) {
         for (const SegmentRow& row : segment_rows(outlet)) text += table.line(row);

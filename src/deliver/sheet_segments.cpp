@@ -28,7 +28,7 @@ double length_of(const SheetJson& segment) { return number_of(segment, "length_m
 double formula_seconds(const SheetJson& segment) { return number_of(segment, "time_s") - number_of(segment, "ponded_time_s"); }
 
 /// u printed so finely that what it grows by in the segment has five significant digits.
-std::string index_text(double u, double growth) {
+std::string printed_index(double u, double growth) {
     if (!(growth > 0)) return printed(u);
     return fixed_decimals(u, std::clamp(4 - static_cast<int>(std::floor(std::log10(growth))), 2, 12));
 }
@@ -58,8 +58,8 @@ void write_kinematic(const SheetJson& segment, PathWriter& to) {
     const double from_m = segment.at("sheet_distance_m").at(0).get<double>();
     const double to_m = segment.at("sheet_distance_m").at(1).get<double>();
     const ReportScale& scale = to.matter.scale;
-    const std::string x0 = index_text(scale.length(from_m), scale.length(to_m - from_m));
-    const std::string x1 = index_text(scale.length(to_m), scale.length(to_m - from_m));
+    const std::string x0 = printed_index(scale.length(from_m), scale.length(to_m - from_m));
+    const std::string x1 = printed_index(scale.length(to_m), scale.length(to_m - from_m));
     if (from_m - to.index_m > 1e-3 * std::max(1.0, from_m)) {
         to.sheet.words("A longer branch joins here: x goes on at " + x0 + to.unit() + ".");
     }
@@ -79,8 +79,8 @@ void write_sheet_flow(const SheetJson& segment, PathWriter& to) {
     const double to_m = segment.at("sheet_index_m").at(1).get<double>();
     const ReportScale& scale = to.matter.scale;
     const double growth = scale.length(to_m - from_m);
-    const std::string u0 = index_text(scale.length(from_m), growth);
-    const std::string u1 = index_text(scale.length(to_m), growth);
+    const std::string u0 = printed_index(scale.length(from_m), growth);
+    const std::string u1 = printed_index(scale.length(to_m), growth);
     if (from_m - to.index_m > 1e-3 * std::max(1.0, from_m)) {
         to.sheet.words("A longer branch joins here: u goes on at " + u0 + to.unit() + ".");
     }
@@ -193,7 +193,7 @@ std::set<std::string> regimes_of(const SheetMatter& matter) {
 }
 
 /// Where the hydraulic radii of its channels come from.
-std::set<std::string> sections_of(const SheetMatter& matter) {
+std::set<std::string> sections_along(const SheetMatter& matter) {
     std::set<std::string> sections;
     for (const char* path : {"governing_path", "longest_path"}) {
         for (const SheetJson& segment : matter.outlet.at(path).at("segments")) {
@@ -255,7 +255,7 @@ void write_formulas(const SheetMatter& matter, SheetWriter& sheet) {
     if (regimes.contains("channel")) {
         sheet.fact("channel", "V = " + factor + " / n x R^(2/3) x sqrt(S), T = L / (60 V) in min");
         write_source("channel-manning", sheet);
-        const std::set<std::string> sections = sections_of(matter);
+        const std::set<std::string> sections = sections_along(matter);
         if (sections.contains("by area")) write_source("channel-size-by-area", sheet);
         if (sections.contains("trapezoid")) write_source("channel-section", sheet);
         if (sections.contains("gutter")) write_source("gutter", sheet);

@@ -30,7 +30,7 @@ double read_at(const StormWriter& to, double minutes) {
 }
 
 /// Between two durations of a table: on a straight line on log-log paper.
-std::string between(const SheetJson& points, double minutes, const StormWriter& to) {
+std::string interpolation(const SheetJson& points, double minutes, const StormWriter& to) {
     std::size_t upper = 1;
     while (upper + 1 < points.size() && points.at(upper).at(0).get<double>() < minutes) ++upper;
     const auto text = [&](std::size_t i) { return to.intensity_text(points.at(i).at(1).get<double>()); };
@@ -49,7 +49,7 @@ std::string formula_part(const SheetJson& part, double minutes) {
 }
 
 std::string reading(const SheetJson& curve, double minutes, const StormWriter& to) {
-    if (curve.contains("points")) return between(curve.at("points"), minutes, to);
+    if (curve.contains("points")) return interpolation(curve.at("points"), minutes, to);
     std::string text;
     for (const SheetJson& part : curve.at("formula_parts")) {
         const double unit = to.intensity(number_of(part, "intensity_unit_mm_per_h"));

@@ -39,7 +39,7 @@ std::vector<IterationRow> iteration_rows(const StudyResult& result) {
 /// What the intensity is to kinematic sheet flow.
 std::string rain_of_sheet(const StudyResult& result) { return result.study.timing.sheet_takes_runoff ? "C i" : "i"; }
 
-std::string minutes_text(double s) {
+std::string storm_minutes(double s) {
     return fixed_decimals(s / 60.0, 4);
 }
 
@@ -63,14 +63,14 @@ std::string storms_table(const StudyResult& result) {
     TableWriter<StormRow> table;
     table.column("point", [](const StormRow& r) { return r.outlet->point.name; })
         .column("return_period_years", [](const StormRow& r) { return significant(r.return_period, 6); })
-        .column("time_of_concentration_min", [](const StormRow& r) { return minutes_text(r.storm->seconds()); })
+        .column("time_of_concentration_min", [](const StormRow& r) { return storm_minutes(r.storm->seconds()); })
         .column("intensity_" + scale.intensity_unit(),
                 [=](const StormRow& r) {
                     return r.storm->iteration.rows.empty() ? std::string()
                                                            : intensity_text(scale, r.storm->iteration.intensity());
                 })
         .column("sheet_flow_under", [&](const StormRow&) { return result.study.timing.is_kinematic() ? rain_of_sheet(result) : std::string(); })
-        .column("sheet_time_min", [](const StormRow& r) { return minutes_text(r.storm->sheet_seconds()); })
+        .column("sheet_time_min", [](const StormRow& r) { return storm_minutes(r.storm->sheet_seconds()); })
         .column(
             "governing_head_x",
             [&](const StormRow& r) { return coordinate(result.system, result.grid.centre(r.storm->governing.cell).x); })
@@ -90,11 +90,11 @@ std::string iterations_table(const StudyResult& result) {
     table.column("point", [](const IterationRow& r) { return r.storm.outlet->point.name; })
         .column("return_period_years", [](const IterationRow& r) { return significant(r.storm.return_period, 6); })
         .column("round", [](const IterationRow& r) { return std::to_string(r.number); })
-        .column("assumed_min", [](const IterationRow& r) { return minutes_text(in_seconds(r.round->assumed)); })
+        .column("assumed_min", [](const IterationRow& r) { return storm_minutes(in_seconds(r.round->assumed)); })
         .column("intensity_" + scale.intensity_unit(),
                 [=](const IterationRow& r) { return intensity_text(scale, r.round->intensity); })
         .column("sheet_flow_under", [&](const IterationRow&) { return rain_of_sheet(result); })
-        .column("computed_min", [](const IterationRow& r) { return minutes_text(in_seconds(r.round->computed)); });
+        .column("computed_min", [](const IterationRow& r) { return storm_minutes(in_seconds(r.round->computed)); });
     return text_of(table, iteration_rows(result));
 }
 

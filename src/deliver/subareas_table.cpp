@@ -15,9 +15,9 @@ struct SubareaRow {
     const SubareaShare* share = nullptr;  ///< none where there is no peak
 };
 
-std::string minutes_text(FixedTime time) { return fixed_decimals(from_fixed(time) / 60.0, 4); }
+std::string subarea_minutes(FixedTime time) { return fixed_decimals(from_fixed(time) / 60.0, 4); }
 
-TableWriter<SubareaRow> columns(const StudyResult& result) {
+TableWriter<SubareaRow> subarea_columns(const StudyResult& result) {
     const ReportScale scale(result.study.report_units);
     TableWriter<SubareaRow> table;
     table.column("point", [](const SubareaRow& r) { return r.point->point.name; })
@@ -33,10 +33,10 @@ TableWriter<SubareaRow> columns(const StudyResult& result) {
                 [](const SubareaRow& r) { return r.share == nullptr ? "" : five_digits(100.0 * r.share->of_runoff); })
         .column("share_of_peak_window_percent",
                 [](const SubareaRow& r) { return r.share == nullptr ? "" : five_digits(100.0 * r.share->of_window); })
-        .column("own_time_min", [](const SubareaRow& r) { return minutes_text(r.arrival->own); })
-        .column("way_min", [](const SubareaRow& r) { return minutes_text(r.arrival->way); })
-        .column("arrival_min", [](const SubareaRow& r) { return minutes_text(r.arrival->arrival()); })
-        .column("slack_min", [](const SubareaRow& r) { return minutes_text(r.arrival->slack); })
+        .column("own_time_min", [](const SubareaRow& r) { return subarea_minutes(r.arrival->own); })
+        .column("way_min", [](const SubareaRow& r) { return subarea_minutes(r.arrival->way); })
+        .column("arrival_min", [](const SubareaRow& r) { return subarea_minutes(r.arrival->arrival()); })
+        .column("slack_min", [](const SubareaRow& r) { return subarea_minutes(r.arrival->slack); })
         .column("stated", [&result](const SubareaRow& r) { return marks_of(result.network.edits[r.subarea->number - 1]); })
         .column("arrives_last", [](const SubareaRow& r) { return yes_or_no(r.arrival->subarea == r.storm->last); });
     return table;
@@ -51,7 +51,7 @@ const SubareaShare* share_of(const StudyResult& result, const Outlet& outlet, st
 }  // namespace
 
 std::string subareas_table(const StudyResult& result) {
-    const TableWriter<SubareaRow> table = columns(result);
+    const TableWriter<SubareaRow> table = subarea_columns(result);
     std::string text = table.header();
     for (const Outlet& outlet : result.outlets) {
         const std::vector<NetworkStorm>& storms = result.network.points[outlet.number - 1].storms;

@@ -120,7 +120,7 @@ double retardance_of(Needs& needs, const CatchmentMeasures& catchment) {
     return needs.number(catchment.kerby_retardance, "Kerby's retardance", 1, catchment.no_kerby_retardance);
 }
 
-constexpr double in_square_miles(Area v) {
+constexpr double square_miles_of(Area v) {
     return v / square_miles(1);
 }
 
@@ -130,7 +130,7 @@ KerbyKirpich kerby_kirpich_of(Needs& needs, const CatchmentMeasures& catchment) 
                           .overland = needs.length(catchment.overland_length, "the overland length"),
                           .overland_slope = needs.number(catchment.overland_slope, "the overland slope"),
                           .retardance = retardance_of(needs, catchment)};
-    needs.range(in_square_miles(needs.area(catchment.area)), 0.25, 150, "the area in square miles");
+    needs.range(square_miles_of(needs.area(catchment.area)), 0.25, 150, "the area in square miles");
     needs.range(measures.main_channel / miles(1), 1, 50, "the main channel in miles");
     needs.range(in_feet(measures.overland), 0, 1200, "the overland length in feet");
     if (measures.overland >= measures.main_channel) needs.outside("the overland part is no shorter than the path");
@@ -151,7 +151,7 @@ LumpTime nrcs_lag_time(const CatchmentMeasures& catchment, const IntensityOfDura
         needs.number(catchment.curve_number, "the curve number", 100, catchment.no_curve_number);
     const double land_slope = needs.number(catchment.land_slope, "the slope of the land");
     needs.range(curve_number, 50, 95, "the curve number");
-    needs.range(in_square_miles(needs.area(catchment.area)), 0.002, 19, "the area in square miles");
+    needs.range(square_miles_of(needs.area(catchment.area)), 0.002, 19, "the area in square miles");
     return needs.with(nrcs_lag_concentration(path, curve_number, land_slope));
 }
 

@@ -104,7 +104,7 @@ private:
     std::optional<Transformation> transformation_;
 };
 
-std::string number(double value) {
+std::string ten_digits(double value) {
     std::array<char, 40> text{};
     std::snprintf(text.data(), text.size(), "%.10g", value);
     return text.data();
@@ -242,7 +242,7 @@ private:
         if (value > -2147483648.0 && value <= 2147483647.0 && value == std::floor(value))
             return static_cast<std::int32_t>(value);
         throw input_error(
-            "The " + file_.called() + " holds " + number(value) + " in row " + std::to_string(at.row) + ", column " +
+            "The " + file_.called() + " holds " + ten_digits(value) + " in row " + std::to_string(at.row) + ", column " +
             std::to_string(at.column) +
             ", but classes must be whole numbers; give a raster of classes (gdal_translate -ot Int32 where "
             "these are meant to be).");

@@ -15,7 +15,7 @@
 namespace rillclock {
 namespace {
 
-constexpr std::array<const char*, 13> vector_drivers = {"GPKG", "GeoJSON", "GeoJSONSeq", "ESRI Shapefile", "FlatGeobuf",
+constexpr std::array<const char*, 13> shape_drivers = {"GPKG", "GeoJSON", "GeoJSONSeq", "ESRI Shapefile", "FlatGeobuf",
                                                         "KML",  "LIBKML",  "GML",        "GPX",            "MapInfo File",
                                                         "DXF",  "SQLite",  nullptr};
 
@@ -48,7 +48,7 @@ public:
 private:
     void open(const GdalMark& before) {
         const std::string path = std::filesystem::absolute(path_).string();
-        dataset_.reset(GDALDataset::Open(path.c_str(), GDAL_OF_VECTOR | GDAL_OF_READONLY, vector_drivers.data()));
+        dataset_.reset(GDALDataset::Open(path.c_str(), GDAL_OF_VECTOR | GDAL_OF_READONLY, shape_drivers.data()));
         if (!dataset_ || dataset_->GetLayerCount() == 0) {
             const std::string reason = session_.failure_since(before);
             throw input_error("The " + called_ + " cannot be read as " + wanted() + "; " + seeming_kind(path_) +

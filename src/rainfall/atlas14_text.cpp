@@ -9,6 +9,7 @@
 
 #include "printed_table.hpp"
 #include "rillclock/core/quantity_text.hpp"
+#include "rillclock/core/trimmed.hpp"
 
 namespace rillclock {
 namespace {
@@ -20,12 +21,6 @@ struct TextLine {
     int number = 0;
     std::string_view text;
 };
-
-std::string_view trimmed(std::string_view text) {
-    const auto first = text.find_first_not_of(" \t\r");
-    if (first == std::string_view::npos) return {};
-    return text.substr(first, text.find_last_not_of(" \t\r") - first + 1);
-}
 
 std::string lower_case(std::string_view text) {
     std::string lower(text);

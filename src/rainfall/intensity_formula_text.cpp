@@ -8,6 +8,7 @@
 
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/quantity_text.hpp"
+#include "rillclock/core/trimmed.hpp"
 #include "rillclock/rainfall/intensity_formula.hpp"
 
 namespace rillclock {
@@ -16,12 +17,7 @@ namespace {
 constexpr std::string_view right_form =
     "write it with its units, as in \"i[in/h] = 94.9 / (t[min]^0.88 + 9.04)\" or \"i[mm/h] = a / (t[min] + b)^c; "
     "a = 900, b = 10, c = 0.8\"";
-
-std::string_view trimmed(std::string_view text) {
-    const auto first = text.find_first_not_of(" \t");
-    if (first == std::string_view::npos) return {};
-    return text.substr(first, text.find_last_not_of(" \t") - first + 1);
-}
+constexpr std::string_view blanks = " \t";
 
 bool is_letter(char c) {
     return std::isalpha(static_cast<unsigned char>(c)) != 0;
@@ -90,7 +86,7 @@ private:
         require("[", lacking);
         const auto close = rest_.find(']');
         if (close == std::string_view::npos) throw fault(lacking);
-        const std::string_view unit = trimmed(rest_.substr(0, close));
+        const std::string_view unit = trimmed(rest_.substr(0, close), blanks);
         rest_.remove_prefix(close + 1);
         return unit;
     }
@@ -154,10 +150,10 @@ private:
 
     void read_letter(std::string_view text) {
         const auto equals = text.find('=');
-        const std::string name(trimmed(text.substr(0, equals)));
+        const std::string name(trimmed(text.substr(0, equals), blanks));
         if (equals == std::string_view::npos || name.size() != 1 || !is_letter(name.front()) || name == "t" ||
             name == "T")
-            throw fault("has \"" + std::string(trimmed(text)) + "\" after its semicolon, where \"a = 900\" is wanted");
+            throw fault("has \"" + std::string(trimmed(text, blanks)) + "\" after its semicolon, where \"a = 900\" is wanted");
         const double number = number_from_text(
             text.substr(equals + 1),
             {.subject = std::string(subject_) + ", letter " + name, .example = "0.8", .sign = Sign::not_negative});
@@ -170,7 +166,7 @@ private:
     }
 
     std::string_view blanks_skipped() {
-        rest_.remove_prefix(std::min(rest_.find_first_not_of(" \t"), rest_.size()));
+        rest_.remove_prefix(std::min(rest_.find_first_not_of(blanks), rest_.size()));
         return rest_;
     }
 

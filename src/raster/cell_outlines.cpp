@@ -87,7 +87,7 @@ RowColumn moved(const RowColumn& at, const RowColumn& by) { return {at.row + by.
 using Ring = std::vector<RowColumn>;
 
 /// Twice the area within a ring, positive where it is counterclockwise.
-std::int64_t twice_area(const Ring& ring) {
+std::int64_t twice_ring_area(const Ring& ring) {
     std::int64_t sum = 0;
     for (std::size_t i = 1; i < ring.size(); ++i) sum += ring[i].column * ring[i - 1].row - ring[i - 1].column * ring[i].row;
     return sum;
@@ -162,7 +162,7 @@ std::vector<Polygon> cell_outlines(std::vector<Cell> cells, const Grid& grid) {
     const Parts parts(std::move(cells), grid);
     std::vector<Polygon> polygons;
     for (auto& [part, rings] : Outliner(parts).rings()) {
-        std::stable_partition(rings.begin(), rings.end(), [](const Ring& ring) { return twice_area(ring) > 0; });
+        std::stable_partition(rings.begin(), rings.end(), [](const Ring& ring) { return twice_ring_area(ring) > 0; });
         Polygon polygon;
         for (const Ring& ring : rings) polygon.rings.push_back(placed(ring, grid));
         polygons.push_back(std::move(polygon));

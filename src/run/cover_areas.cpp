@@ -23,7 +23,7 @@ const CoverClass* find_class(const CoverBook& book, const std::string& text) {
     return nullptr;
 }
 
-std::uint8_t position_of(const Study& study, const CoverBook& book, const std::string& text) {
+std::uint8_t class_position(const Study& study, const CoverBook& book, const std::string& text) {
     if (const CoverClass* found = find_class(book, text)) return static_cast<std::uint8_t>(found - book.classes().data());
     std::vector<std::string_view> names;
     std::string list;
@@ -47,7 +47,7 @@ CoverAreas read_cover_areas(const Study& study, const CoverBook& book, const Ref
                                  system);
     CoverAreas areas{.parts = {}, .notices = file.notices};
     for (std::size_t i = 0; i < file.polygons.size(); ++i) {
-        areas.parts.push_back({position_of(study, book, file.polygon_texts[i]), std::move(file.polygons[i])});
+        areas.parts.push_back({class_position(study, book, file.polygon_texts[i]), std::move(file.polygons[i])});
     }
     return areas;
 }

@@ -11,9 +11,9 @@ namespace rillclock {
 namespace {
 
 /// What a file of shapes came to, in words.
-class Reading {
+class FlowReading {
 public:
-    Reading(const Study& study, const Grid& grid, const ReferenceSystem& system) : study_(study), grid_(grid), system_(system) {}
+    FlowReading(const Study& study, const Grid& grid, const ReferenceSystem& system) : study_(study), grid_(grid), system_(system) {}
 
     MappedShapes read() {
         const TerrainStudy& terrain = study_.terrain;
@@ -145,7 +145,7 @@ std::vector<MappedFile> mapped_files(const Study& study) {
 }
 
 MappedShapes read_mapped_shapes(const Study& study, const Grid& grid, const ReferenceSystem& system) {
-    return Reading(study, grid, system).read();
+    return FlowReading(study, grid, system).read();
 }
 
 namespace {

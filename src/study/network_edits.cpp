@@ -58,7 +58,7 @@ void require_columns(const CsvTable& table, std::string_view file, std::span<con
     }
 }
 
-constexpr double greatest_n = 1.0;
+constexpr double greatest_new_n = 1.0;
 constexpr double greatest_slope = 10.0;
 
 double slope_of(const Row& row, Length length) {
@@ -89,7 +89,7 @@ std::vector<StatedPipe> parse_pipes(std::string_view text, std::string_view file
         if (pipe.from == pipe.to) throw row.fault("to", "is the point that the pipe comes from");
         pipe.length = length_from_text(row.needed("length"), row.asked("length", "120 ft"));
         pipe.pipe.diameter = length_from_text(row.needed("diameter"), row.asked("diameter", "18 in"));
-        pipe.bed = {.n = row.number("n", "0.013", greatest_n), .slope = slope_of(row, pipe.length)};
+        pipe.bed = {.n = row.number("n", "0.013", greatest_new_n), .slope = slope_of(row, pipe.length)};
         pipes.push_back(std::move(pipe));
     }
     if (pipes.empty()) throw input_error(std::string(file) + " holds no pipe; write one a line below the header, or leave pipes out");
@@ -113,7 +113,7 @@ std::vector<PointOverride> parse_overrides(std::string_view text, std::string_vi
         if (made.coefficient && !(*made.coefficient <= 1)) throw row.fault("c", "is " + row.text("c") + "; a runoff coefficient lies between 0 and 1");
         if (!row.text("sheet_length").empty())
             made.overland.sheet_length = length_from_text(row.text("sheet_length"), row.asked("sheet_length", "80 ft", Sign::not_negative));
-        if (!row.text("n").empty()) made.overland.n = row.number("n", "0.15", greatest_n);
+        if (!row.text("n").empty()) made.overland.n = row.number("n", "0.15", greatest_new_n);
         if (made.time && made.overland.is_any()) throw row.fault("time", "is given beside a sheet_length or n, which make a time of their own; keep one");
         if (!made.time && !made.way_time && !made.coefficient && !made.overland.is_any()) throw row.fault("point", "has no value beside it; state one, or remove the line");
         overrides.push_back(std::move(made));

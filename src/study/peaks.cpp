@@ -15,7 +15,7 @@ namespace {
 
 constexpr std::size_t named_makers = 8;
 
-std::vector<double> periods_of(const StudyRain& rain) {
+std::vector<double> storm_periods(const StudyRain& rain) {
     std::vector<double> periods;
     for (const StudyStorm& storm : rain.storms) periods.push_back(storm.return_period);
     return periods;
@@ -28,7 +28,7 @@ public:
         : in_(in),
           own_(std::move(histograms)),
           stated_(stated_coefficients(in.network.edits, in.book)),
-          coefficients_(in.book, in.study.peaks, periods_of(in.rain), stated_),
+          coefficients_(in.book, in.study.peaks, storm_periods(in.rain), stated_),
           conversion_(in.study.peaks.conversion.value_or(RationalConversion::exact)),
           least_time_(in.study.peaks.least_time.value_or(standard_least_time)) {}
 

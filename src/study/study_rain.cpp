@@ -13,7 +13,7 @@ namespace {
 
 constexpr double told_difference = 0.01;  // of the two depths
 
-std::string name_of(const Study& study) {
+std::string file_name_of(const Study& study) {
     return study.file.empty() ? "the study" : study.file;
 }
 
@@ -38,7 +38,7 @@ std::size_t raster_place(const Study& study, const std::vector<double>& periods)
     const auto found = std::find(periods.begin(), periods.end(), wanted);
     if (found != periods.end()) return static_cast<std::size_t>(found - periods.begin());
     if (!study.timing.raster_return_period) return 0;
-    throw input_error(name_of(study) + " states raster_return_period = " + significant(wanted) +
+    throw input_error(file_name_of(study) + " states raster_return_period = " + significant(wanted) +
                       ", which is not among its return_periods " + list_of_years(periods) + "; add it to them");
 }
 
@@ -70,7 +70,7 @@ std::optional<Length> settled_depth(const Study& study, const std::optional<Rain
     if (read && stated) tell_difference(*stated, *read, *source, notices);
     if (stated || read) return stated ? stated : read;
     if (study.timing.is_kinematic()) return std::nullopt;
-    if (!source) throw input_error(rain_is_missing(name_of(study)));
+    if (!source) throw input_error(rain_is_missing(file_name_of(study)));
     throw input_error(
         sentence(source->echo) +
         ", so the 2-year 24-hour depth that NRCS sheet flow needs cannot be read from it; state it under [rain] as "

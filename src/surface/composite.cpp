@@ -58,7 +58,7 @@ std::string column_for(const std::string& stem, CellSoil soil) {
     return stem + "_" + "abcd"[static_cast<std::size_t>(*group_of(soil))];
 }
 
-std::string lacking_text(const AreaMean& mean, const std::string& columns) {
+std::string lacking_mean_text(const AreaMean& mean, const std::string& columns) {
     return mean.without == nullptr ? "" : "the cover book has no " + columns + " for " + mean.without->name;
 }
 
@@ -69,19 +69,19 @@ Composite composite_curve_number(std::span<const LandShare> land, const CoverBoo
     if (without > 0) return {.lacking = std::to_string(without) + " cells of the catchment have no soil group"};
     const AreaMean mean =
         area_mean(land, book, [](const ClassOnSoil& at) { return at.cover.curve_number(*group_of(at.soil)); });
-    return {.value = mean.value, .lacking = lacking_text(mean, column_for("cn", mean.on))};
+    return {.value = mean.value, .lacking = lacking_mean_text(mean, column_for("cn", mean.on))};
 }
 
 Composite composite_runoff_coefficient(std::span<const LandShare> land, const CoverBook& book) {
     const AreaMean mean =
         area_mean(land, book, [](const ClassOnSoil& at) { return at.cover.coefficient(group_of(at.soil)); });
     const std::string either = mean.on == CellSoil::unknown ? "" : " or " + column_for("c", mean.on);
-    return {.value = mean.value, .lacking = lacking_text(mean, "c" + either)};
+    return {.value = mean.value, .lacking = lacking_mean_text(mean, "c" + either)};
 }
 
 Composite composite_impervious(std::span<const LandShare> land, const CoverBook& book) {
     const AreaMean mean = area_mean(land, book, [](const ClassOnSoil& at) { return at.cover.impervious; });
-    return {.value = mean.value, .lacking = lacking_text(mean, "impervious_percent")};
+    return {.value = mean.value, .lacking = lacking_mean_text(mean, "impervious_percent")};
 }
 
 Composite prevailing(std::span<const LandShare> land, const CoverBook& book, std::optional<double> CoverClass::*value,

@@ -16,9 +16,9 @@ constexpr std::array forward = {Direction::east, Direction::south_east, Directio
 constexpr std::int64_t band = 256;
 
 template <class Z>
-class Search {
+class ReliefSearch {
 public:
-    Search(const Raster<Z>& z, const Ground& ground, double metres_per_unit)
+    ReliefSearch(const Raster<Z>& z, const Ground& ground, double metres_per_unit)
         : z_(z), ground_(ground), metres_per_unit_(metres_per_unit) {}
 
     SteepestPair steepest(std::int64_t first_row, std::int64_t end_row) {
@@ -65,7 +65,7 @@ SteepestPair steepest_pair(const ElevationStore& elevations, const Ground& groun
     executor.for_each(found.size(), [&](std::size_t i) {
         const std::int64_t first = static_cast<std::int64_t>(i) * band;
         found[i] = elevations.visit([&](const auto& z) {
-            return Search(z, ground, metres_per_unit).steepest(first, std::min(first + band, rows));
+            return ReliefSearch(z, ground, metres_per_unit).steepest(first, std::min(first + band, rows));
         });
     });
     // Of equal ones the first: bands are in the order of their rows.

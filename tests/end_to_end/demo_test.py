@@ -33,6 +33,8 @@ def files_under(folder):
 class Demo(DemoTest):
     """Each test has a copy of the demo in its own folder."""
 
+    with_isochrones = True
+
     def setUp(self):
         super().setUp()
         shutil.copytree(self.kept / "town", self.folder / "town")

@@ -82,6 +82,8 @@ class Runoff(unittest.TestCase):
 
 
 class WithoutRunoff(DemoTest):
+    with_isochrones = True
+
     def test_fields_are_null_where_the_study_has_no_rain_by_duration(self):
         source = ogr.Open(str(self.kept / "town/result/study.gpkg"))
         layer = source.GetLayerByName("isochrones")

@@ -9,7 +9,7 @@ import unittest
 import numpy as np
 from osgeo import gdal
 
-from support import CommandTest, FOOT, VERIFY, table, write_points
+from support import CommandTest, FOOT, VERIFY, demo_town, table, write_points
 
 RAIN = """duration_min,intensity_2yr_in_h,intensity_10yr_in_h,intensity_100yr_in_h
 5,4.8,6.9,9.9
@@ -160,7 +160,7 @@ class Plane(CommandTest):
 class Town(CommandTest):
     def town(self, change=lambda text: text, name="kinematic"):
         if not (self.folder / "town").exists():
-            self.done("demo", "town")
+            demo_town(self.folder / "town")
             (self.folder / "town/rain.csv").write_text(RAIN)
         study = (self.folder / "town/study.toml").read_text()
         study = study.replace('two_year_24_hour = "62 mm"', 'file = "rain.csv"\nreturn_periods = [2, 10, 100]')
@@ -279,7 +279,7 @@ class Town(CommandTest):
         self.assertEqual((self.folder / "again/result.json").read_bytes(), first)
 
     def test_nrcs_times_do_not_change_where_rain_by_duration_is_added(self):
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
         (self.folder / "rain.csv").write_text(RAIN)
         self.done("run", "town/study.toml")
         self.done("run", "town/study.toml", "--rain-file", "rain.csv", "--out", "with-rain")

@@ -4,7 +4,7 @@ import json
 import statistics
 import unittest
 
-from support import CommandTest, FOOT, table
+from support import CommandTest, FOOT, demo_town, table
 
 MILE, SQUARE_MILE = 1609.344, 1609.344 ** 2
 CURVE_NUMBERS = {1: "98,98,98,98", 2: "98,98,98,98", 3: "39,61,74,80", 4: "30,58,71,78", 5: "67,78,85,89", 6: "36,60,73,79",
@@ -16,7 +16,7 @@ RAIN = "duration_min,intensity_10yr_in_h\n5,6.9\n15,4.4\n60,2.3\n1440,0.2\n"
 class Methods(CommandTest):
     def setUp(self):
         super().setUp()
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
 
     def run_town(self, soil_group="B", numbers=True, rain=False):
         lines = (self.folder / "town/cover-book.csv").read_text().strip().splitlines()

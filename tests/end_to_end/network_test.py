@@ -4,7 +4,7 @@ import unittest
 
 import networkx
 
-from support import CommandTest, table
+from support import CommandTest, demo_town, table
 
 SUBAREAS_ALL = '\n[output]\nfolder = "result"\nsubareas = "all"\n'
 
@@ -12,11 +12,11 @@ SUBAREAS_ALL = '\n[output]\nfolder = "result"\nsubareas = "all"\n'
 class DemoNetwork(CommandTest):
     def setUp(self):
         super().setUp()
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
         study = self.folder / "town/study.toml"
         study.write_text(study.read_text().replace('\n[output]\nfolder = "result"\n', SUBAREAS_ALL))
         self.assertIn('subareas = "all"', study.read_text())
-        self.done("run", study)
+        self.repeated("run", "town/study.toml")
         self.outlets = table(self.folder / "town/result/tables/outlets.csv")
         self.subareas = table(self.folder / "town/result/tables/subareas.csv")
 
@@ -94,7 +94,7 @@ class DemoNetwork(CommandTest):
 
 class ListedSubareas(CommandTest):
     def test_without_the_key_eleven_rows_a_point_are_listed_at_most(self):
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
         self.done("run", "town/study.toml")
         rows = table(self.folder / "town/result/tables/subareas.csv")
         counts = {}

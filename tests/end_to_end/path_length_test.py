@@ -9,7 +9,7 @@ import unittest
 import numpy as np
 
 from step_rules_test import LEFT, NRCS, STUDY, TOP
-from support import CommandTest, VERIFY, table, write_points
+from support import CommandTest, VERIFY, demo_town, table, write_points
 
 
 class PathLength(CommandTest):
@@ -53,7 +53,7 @@ class PathLength(CommandTest):
 
     def town(self, name, change):
         if not (self.folder / "town").exists():
-            self.done("demo", "town")
+            demo_town(self.folder / "town")
             (self.folder / "town/rain.csv").write_text("duration_min,intensity_10yr_in_h\n5,6.9\n15,4.4\n60,2.3\n1440,0.2\n")
             (self.folder / "town/chart.csv").write_text("slope_percent,hard_m_s,soft_m_s\n0.5,0.4,0.1\n4,1.3,0.35\n20,2.6,0.8\n")
             book = list(csv.reader((self.folder / "town/cover-book.csv").read_text().splitlines()))

@@ -3,14 +3,14 @@
 import csv
 import unittest
 
-from support import CommandTest, table
+from support import CommandTest, demo_town, table
 
 
 class Review(CommandTest):
     def setUp(self):
         super().setUp()
-        self.done("demo", "town")
-        self.done("run", "town/study.toml", "-q")
+        demo_town(self.folder / "town")
+        self.repeated("run", "town/study.toml", "-q")
         self.path = self.folder / "town/result/tables/review.csv"
 
     def write_words(self, words):

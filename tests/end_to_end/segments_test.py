@@ -4,7 +4,7 @@ import collections
 import math
 import unittest
 
-from support import CommandTest, FOOT, INCH, table
+from support import CommandTest, FOOT, INCH, demo_town, table
 
 GRAVITY = {"m": 9.80665, "ft": 9.80665 / FOOT}
 # Manning's 1 in metres is 1.4859 in feet; 0.007 h is for feet and inches.
@@ -46,12 +46,12 @@ class Segments(CommandTest):
         study = (self.folder / "town/study.toml").read_text().replace('report_units = "si"', f'report_units = "{units}"')
         study = study.replace("[points]", "[points]\nname = \"name\"")
         (self.folder / "town" / f"{units}.toml").write_text(study)
-        self.done("run", f"town/{units}.toml", "--out", units)
+        self.repeated("run", f"town/{units}.toml", "--out", units)
         return [Row(fields, {"si": "m", "us": "ft"}[units]) for fields in table(self.folder / units / "tables/segments.csv")]
 
     def setUp(self):
         super().setUp()
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
 
     def check_rows(self, units):
         rows = self.rows_of(units)

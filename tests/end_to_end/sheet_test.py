@@ -9,7 +9,7 @@ import re
 import sqlite3
 import unittest
 
-from support import CommandTest, FOOT, INCH, SOURCE, table
+from support import CommandTest, FOOT, INCH, SOURCE, demo_town, table
 
 TOLERANCE = 1e-3
 CALCULATION = re.compile(r"^ {4}(\w[\w ]*?) = (.+) = (-?[0-9.]+) ([\w/]+)$")
@@ -84,7 +84,8 @@ def segments(lines):
 
 class Sheets(CommandTest):
     def run_demo(self, units, extra="", sheet="nrcs", out="result"):
-        self.done("demo", "town") if not (self.folder / "town").exists() else None
+        if not (self.folder / "town").exists():
+            demo_town(self.folder / "town")
         text = (self.folder / "town/study.toml").read_text().replace('report_units = "si"', f'report_units = "{units}"')
         text = text.replace('sheet = "nrcs"', f'sheet = "{sheet}"').replace("[rain]", "[rain]\n" + extra)
         (self.folder / "town/rain.csv").write_text(RAIN)

@@ -19,6 +19,7 @@ SOURCE = pathlib.Path(__file__).resolve().parents[2]
 COMMAND = os.environ.get("RILLCLOCK_COMMAND") or str(SOURCE / "build/dev/rillclock")
 VERIFY = SOURCE / "tests/reference/python/verify_result.py"
 FOOT, INCH = 0.3048, 0.0254
+ISOCHRONES = 'isochrones = "10 min"\n'   # as the demo's study states them
 
 BOOK = """code,name,n_typical,shallow_type,water_depth_m,source
 1,Grass,0.24,grassed waterway,,test
@@ -29,6 +30,7 @@ BOOK = """code,name,n_typical,shallow_type,water_depth_m,source
 
 
 RUNS = {}   # what CommandTest.repeated has run, by words and files
+DEMOS = {}  # what DemoTest has run, by what is in its study
 RUNS_FOLDER = tempfile.TemporaryDirectory(prefix="rillclock-runs-")
 
 
@@ -95,6 +97,16 @@ def class_folder(test_class, name):
     folder = pathlib.Path(tempfile.mkdtemp(prefix=f"rillclock-{name}-"))
     test_class.addClassCleanup(shutil.rmtree, folder, ignore_errors=True)
     return folder
+
+
+def demo_town(town, with_isochrones=False):
+    """The demo in the folder `town`. Its isochrones take as long as all the rest of its run: tests have them where they look at them."""
+    subprocess.run([COMMAND, "demo", town], check=True, capture_output=True)
+    if not with_isochrones:
+        study = pathlib.Path(town) / "study.toml"
+        text = study.read_text()
+        assert ISOCHRONES in text
+        study.write_text(text.replace(ISOCHRONES, ""))
 
 
 class CommandTest(unittest.TestCase):
@@ -178,14 +190,19 @@ class CommandTest(unittest.TestCase):
 
 
 class DemoTest(CommandTest):
-    """The demo, run once for all tests of a class, in `kept`, with what the class adds to its study."""
+    """The demo, run once for all tests of a file that have the same study, in `kept`, which no test changes; with what a class adds to it."""
 
     more = ""
+    with_isochrones = False
 
     @classmethod
     def setUpClass(cls):
-        cls.kept = class_folder(cls, "demo")
-        subprocess.run([COMMAND, "demo", "town"], cwd=cls.kept, check=True, capture_output=True)
-        cls.plain = (cls.kept / "town/study.toml").read_text()
-        (cls.kept / "town/study.toml").write_text(cls.plain + cls.more)
-        cls.said = subprocess.run([COMMAND, "run", "town/study.toml"], cwd=cls.kept, check=True, capture_output=True, text=True)
+        key = (cls.more, cls.with_isochrones)
+        if key not in DEMOS:
+            kept = pathlib.Path(RUNS_FOLDER.name) / f"demo-{len(DEMOS)}"
+            kept.mkdir()
+            demo_town(kept / "town", cls.with_isochrones)
+            plain = (kept / "town/study.toml").read_text()
+            (kept / "town/study.toml").write_text(plain + cls.more)
+            DEMOS[key] = kept, plain, subprocess.run([COMMAND, "run", "town/study.toml"], cwd=kept, check=True, capture_output=True, text=True)
+        cls.kept, cls.plain, cls.said = DEMOS[key]

@@ -7,13 +7,13 @@ import unittest
 import numpy as np
 from osgeo import gdal
 
-from support import CommandTest, table
+from support import CommandTest, demo_town, table
 
 
 class Surveyed(CommandTest):
     def study(self, areas, more=""):
         """The demo with one field more beside its points."""
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
         town = self.folder / "town"
         points = json.loads((town / "points.geojson").read_text())
         for feature in points["features"]:

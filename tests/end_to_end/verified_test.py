@@ -8,7 +8,7 @@ import unittest
 import numpy as np
 from osgeo import gdal, ogr, osr
 
-from support import DemoTest, VERIFY
+from support import DemoTest, VERIFY, demo_town
 
 HILL = "duration_min,intensity_2yr_in_h,intensity_10yr_in_h\n5,6.0,9.0\n60,2.0,3.0\n1440,0.25,0.4\n"
 VALLEY = "duration_h,depth_2yr_mm,depth_10yr_mm\n0.1,11,16\n1,38,58\n24,76,122\n"
@@ -22,7 +22,7 @@ class Verified(DemoTest):
     def setUp(self):
         super().setUp()
         self.town = self.folder / "town"
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
         self.dem = gdal.Open(str(self.town / "dem.tif"))
 
     def study(self, *changes):

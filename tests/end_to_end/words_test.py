@@ -7,7 +7,7 @@ import subprocess
 import sys
 import unittest
 
-from support import COMMAND, CommandTest, SOURCE
+from support import COMMAND, CommandTest, SOURCE, demo_town
 
 README = (SOURCE / "README.md").read_text(encoding="utf-8")
 COMMANDS = ("run", "check", "explain", "compare", "methods", "completion", "manual", "demo")
@@ -72,14 +72,14 @@ class CommandLine(CommandTest):
             self.assertIn(f".SH {heading}\n", page)
 
     def test_verbose_says_every_notice(self):
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
         brief = self.rillclock("run", "town/study.toml").stderr.count("notice: ")
         full = self.rillclock("run", "town/study.toml", "--replace", "-v").stderr.count("notice: ")
         self.assertEqual(brief, 8)
         self.assertEqual(full, len(self.result("town/result")["notices"]))
 
     def test_nothing_is_in_colour(self):
-        self.done("demo", "town")
+        demo_town(self.folder / "town")
         for name in ({}, {"NO_COLOR": "1"}):
             run = self.rillclock("run", "town/study.toml", "--replace", env=os.environ | name)
             self.assertNotIn("\x1b", run.stdout + run.stderr)

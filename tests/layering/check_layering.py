@@ -55,6 +55,10 @@ NOT_KEPT = {"build"}
 LONGEST_FILE = 450
 
 INCLUDE = re.compile(r'^\s*#\s*include\s*([<"])([^>"]+)[>"]')
+# What begins a line inside an unnamed namespace: a type, an alias, a function or a value.
+HIDDEN = re.compile(r"(?:class|struct|enum class|enum|using|namespace) (?:\w+::)*(\w+)|[A-Za-z_][^(={;#]*?[\s&*>](\w+) ?[(={;\[]")
+ALIAS = ("using ", "namespace ")
+RAW_TEXT = re.compile(r'R"\w*\(')
 TYPE = re.compile(r"(?:struct|class) (\w+)(?: final)?(?: :[^:].*)? *\{")  # a definition at the level of a namespace, not A::B
 
 
@@ -97,6 +101,8 @@ class Check:
         for path in self.files:
             self.one_file(path)
         self.cycles()
+        for folder in [self.root / "src" / room for room in ROOMS] + sorted((self.root / "tests").glob("unit/*/")) + [self.root / "tests" / kind for kind in ("property", "published")]:
+            self.hidden_names(folder)
         return self.faults
 
     def top_level(self):
@@ -142,6 +148,16 @@ class Check:
             if first[0] != path:
                 self.fault(path, number, f"{found[1]} is also the name of a type in {first[0]}; give one of them another name.")
 
+    def hidden_names(self, folder):
+        """Sources of a folder may be compiled together (scripts/cmake/precompiled.cmake): what is hidden in one of them then meets that of the others."""
+        seen = {}
+        for path in sorted(folder.glob("*.cpp")):
+            for name, number, text in hidden_names(path.read_text(encoding="utf-8").splitlines()):
+                first_path, first_text = seen.setdefault(name, (path, text))
+                if first_path != path and not (text == first_text and text.startswith(ALIAS)):
+                    self.fault(path.relative_to(self.root), number,
+                               f"{name} is also a name hidden in {first_path.name} beside it; give one of them another name, or share it in a header.")
+
     def one_include(self, path, line, quoted, header):
         if header.startswith("rillclock/") and not quoted:
             self.fault(path, line, f"Own headers are included in quotes; write \"{header}\".")
@@ -184,6 +200,25 @@ class Check:
         for cycle in cycles_of({room: sorted(others) for room, others in by_room.items()}):
             path, line = example[cycle[0], cycle[1]]
             self.fault(path, line, "These rooms include each other in a circle: " + " → ".join(cycle) + ".")
+
+
+def hidden_names(lines):
+    """(name, line, text) of what unnamed namespaces define, in the form in which this code is written."""
+    hidden, text_goes_on = False, False
+    for number, line in enumerate(lines, 1):
+        if text_goes_on:
+            text_goes_on = ')"' not in line
+            continue
+        found = RAW_TEXT.search(line)
+        text_goes_on = bool(found) and ')"' not in line[found.end():]
+        if line.startswith("namespace {"):
+            hidden = True
+        elif line == "}  // namespace":
+            hidden = False
+        elif hidden and not line.startswith(("TEST_CASE", "template", "public:", "private:")):
+            found = HIDDEN.match(line)
+            if found:
+                yield found[1] or found[2], number, line
 
 
 def cycles_of(arrows):

@@ -87,6 +87,25 @@ class CheckLayering(unittest.TestCase):
         hidden = "namespace {\nstruct Way {\n};\n}  // namespace\n"
         self.assert_said({"src/core/error.cpp": hidden, "src/raster/grid.cpp": hidden})
 
+    def test_sources_of_a_room_hide_no_two_things_of_one_name(self):
+        self.assert_said({"src/raster/a.cpp": "namespace {\nconstexpr double most = 1.0;\n}  // namespace\n",
+                          "src/raster/b.cpp": "namespace {\n\ndouble most(int a) {\n}\n}  // namespace\n"},
+                         "src/raster/b.cpp:3: most is also a name hidden in a.cpp beside it; give one of them another name, or share it in a header.")
+        self.assert_said({"tests/unit/raster/a_test.cpp": "namespace {\nstruct Way {\n};\n}  // namespace\n",
+                          "tests/unit/raster/b_test.cpp": "namespace {\nclass Way {\n};\n}  // namespace\n"},
+                         "tests/unit/raster/b_test.cpp:2: Way is also a name hidden in a_test.cpp beside it; "
+                         "give one of them another name, or share it in a header.")
+
+    def test_the_same_alias_what_stands_in_a_text_and_what_is_not_hidden_may_be_in_two_sources(self):
+        self.assert_said({"src/raster/a.cpp": "namespace {\nusing Ring = int;\n}  // namespace\nint turned(int a) {\n}\n",
+                          "src/raster/b.cpp": "namespace {\nusing Ring = int;\nint turned(Ring a) {\n}\n}  // namespace\n",
+                          "src/raster/c.cpp": 'namespace {\nconst char* text = R"(\nint turned(int a);\n)";\n}  // namespace\n'})
+
+    def test_another_alias_of_one_name_is_found(self):
+        self.assert_said({"src/raster/a.cpp": "namespace {\nusing Ring = int;\n}  // namespace\n",
+                          "src/raster/b.cpp": "namespace {\nusing Ring = long;\n}  // namespace\n"},
+                         "src/raster/b.cpp:2: Ring is also a name hidden in a.cpp beside it; give one of them another name, or share it in a header.")
+
     def test_a_header_that_is_not_there_is_found(self):
         self.assert_said({"src/core/error.cpp": '#include "gdal.h"\n'},
                          'src/core/error.cpp:1: "gdal.h" is no header of ours; others are included in angle brackets.')

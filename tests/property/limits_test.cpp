@@ -14,8 +14,8 @@
 namespace rillclock {
 namespace {
 
-constexpr double missing = std::numeric_limits<double>::quiet_NaN();
-const Ground square = Ground::planar(metres(1), metres(1));
+constexpr double no_elevation = std::numeric_limits<double>::quiet_NaN();
+const Ground square_metres_each = Ground::planar(metres(1), metres(1));
 
 worked::Given given_of(Elevations z) {
     worked::Given given{.elevations = std::move(z)};
@@ -28,7 +28,7 @@ std::string difference_on(Elevations z, const worked::TileManner& manner) {
     const worked::Land land(given_of(std::move(z)));
     const Executor executor(manner.threads);
     const TileGrid tiles(land.forest.rows(), land.forest.columns(), manner.side);
-    if (flow_codes(land.given.elevations, square, tiles, executor) != land.forest.codes()) return "directions";
+    if (flow_codes(land.given.elevations, square_metres_each, tiles, executor) != land.forest.codes()) return "directions";
     return worked::tiled_difference(land, manner);
 }
 
@@ -42,7 +42,7 @@ TEST_CASE("a spiral one cell wide is timed over tiles as in one piece, outwards 
 TEST_CASE("a comb is timed over tiles as in one piece") { CHECK(difference_on(limits::comb(120, 121), {16, 2}) == ""); }
 
 TEST_CASE("one cell among voids is timed over tiles as in one piece") {
-    Elevations z(300, 300, missing);
+    Elevations z(300, 300, no_elevation);
     z(170, 160) = 4.0;
     CHECK(difference_on(z, {64, 2}) == "");
 }
@@ -86,7 +86,7 @@ TEST_CASE("all water of ten million cells around one pit leaves by one root") {
             bowl(row, column) = static_cast<float>(std::hypot(static_cast<double>(row) - 1581.0, static_cast<double>(column) - 1581.3));
         }
     }
-    const Raster<FlowCode> codes = flow_codes(bowl, square, TileGrid(side, side), Executor(2));
+    const Raster<FlowCode> codes = flow_codes(bowl, square_metres_each, TileGrid(side, side), Executor(2));
     CHECK(roots_of(codes) == 1);
     // The lowest of the edge is right of the pit, at its end of row 1581: 1580.7 away, where the left end is 1581.3.
     CHECK(codes(1581, side - 1) == flow_root);
@@ -96,7 +96,7 @@ TEST_CASE("one pit in the middle of a plain of ten million cells takes what is n
     constexpr std::int64_t side = 3163;
     Raster<float> plain(side, side, 3.0F);
     plain(1581, 1581) = 1.0F;
-    const Raster<FlowCode> codes = flow_codes(plain, square, TileGrid(side, side), Executor(2));
+    const Raster<FlowCode> codes = flow_codes(plain, square_metres_each, TileGrid(side, side), Executor(2));
     CHECK(roots_of(codes) == 4 * side - 4);           // every cell of the edge
     CHECK(is_direction(codes(1581, 1581)));           // opened
     // 380 steps from the pit's neighbours and 1200 from the edge; south-east, asked before south, is one step nearer too.

@@ -12,7 +12,7 @@
 namespace rillclock {
 namespace {
 
-const Ground square = Ground::planar(metres(1), metres(1));
+const Ground square_cells = Ground::planar(metres(1), metres(1));
 
 using edits::AnyEdits;
 using edits::grid_of;
@@ -22,13 +22,13 @@ using edits::stored;
 Raster<FlowCode> plain_codes(const ElevationStore& store) {
     Elevations z(store.rows(), store.columns());
     for (Cell cell = 0; cell < static_cast<Cell>(z.size()); ++cell) z[cell] = store[cell];
-    return flow_forest_of(z, square).codes();
+    return flow_forest_of(z, square_cells).codes();
 }
 
 FindCodes tiled_codes(std::int64_t side, const Executor& executor) {
     return [side, &executor](const ElevationStore& store) {
         const TileGrid tiles(store.rows(), store.columns(), side);
-        return store.visit([&](const auto& z) { return flow_codes(z, square, tiles, executor); });
+        return store.visit([&](const auto& z) { return flow_codes(z, square_cells, tiles, executor); });
     };
 }
 
@@ -163,7 +163,7 @@ TEST_CASE("without edits the flow is that of the ground") {
     for (unsigned seed = 0; seed < 200; ++seed) {
         const AnyEdits any(seed);
         ElevationStore z = stored(any.z);
-        CHECK(edited_flow(z, TerrainEdits{}, plain_codes).codes == flow_forest_of(any.z, square).codes());
+        CHECK(edited_flow(z, TerrainEdits{}, plain_codes).codes == flow_forest_of(any.z, square_cells).codes());
     }
 }
 

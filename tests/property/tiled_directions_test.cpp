@@ -61,7 +61,7 @@ std::string whole(const Elevations& z, const Ground& ground = square) {
 }
 
 template <class Z>
-std::string tiled(const Raster<Z>& z, std::int64_t side, const Executor& executor, const Ground& ground = square) {
+std::string tiled_arrows(const Raster<Z>& z, std::int64_t side, const Executor& executor, const Ground& ground = square) {
     return drawings::arrows(flow_codes(z, ground, TileGrid(z.rows(), z.columns(), side), executor));
 }
 
@@ -73,9 +73,9 @@ bool same_for_all_tiles(const Elevations& z, std::initializer_list<std::int64_t>
     const std::string expected = whole(z);
     bool same = true;
     for (const std::int64_t side : sides) {
-        same = same && tiled(z, side, alone) == expected;
-        same = same && tiled(z, side, arena) == expected;
-        same = same && tiled(z, side, plain) == expected;
+        same = same && tiled_arrows(z, side, alone) == expected;
+        same = same && tiled_arrows(z, side, arena) == expected;
+        same = same && tiled_arrows(z, side, plain) == expected;
     }
     return same;
 }
@@ -86,7 +86,7 @@ TEST_CASE("tiles of any size on any threads give the codes of the whole raster")
         std::mt19937 random(seed);
         const Elevations z = any_terrain(random, seed % 12);
         const auto side = static_cast<std::int64_t>(1 + seed % 16);
-        const auto fails = [&](const Elevations& part) { return tiled(part, side, executors[seed % 3]) != whole(part); };
+        const auto fails = [&](const Elevations& part) { return tiled_arrows(part, side, executors[seed % 3]) != whole(part); };
         if (fails(z)) FAIL("seed " << seed << ", tiles of " << side << ", shrunk to " << shrinking::smallest_failing(z, fails));
     }
     SUCCEED();
@@ -107,7 +107,7 @@ TEST_CASE("elevations stored as floats give the codes of the same elevations sto
         const Raster<float> z = as_floats(any_terrain(random, seed % 12));
         const auto side = static_cast<std::int64_t>(1 + seed % 16);
         INFO("seed " << seed << ", " << z.rows() << " x " << z.columns() << ", tiles of " << side);
-        REQUIRE(tiled(z, side, executor, oblong) == whole(as_doubles(z), oblong));
+        REQUIRE(tiled_arrows(z, side, executor, oblong) == whole(as_doubles(z), oblong));
     }
 }
 
@@ -119,7 +119,7 @@ TEST_CASE("tiles measure each row by its own ground lengths") {
         const Ground ground = narrowing_ground(z.rows());
         const auto side = static_cast<std::int64_t>(1 + seed % 16);
         INFO("seed " << seed << ", " << z.rows() << " x " << z.columns() << ", tiles of " << side);
-        REQUIRE(tiled(z, side, executor, ground) == whole(z, ground));
+        REQUIRE(tiled_arrows(z, side, executor, ground) == whole(z, ground));
     }
 }
 

@@ -15,7 +15,7 @@ namespace rillclock {
 namespace {
 
 /// Rules and ground that differ from seed to seed; the terrain is that of the seed where none is stated.
-worked::Given random_given(unsigned seed, std::optional<Elevations> z = {}) {
+worked::Given seeded_given(unsigned seed, std::optional<Elevations> z = {}) {
     std::mt19937 random(seed);
     const double void_share = seed % 3 == 0 ? 0.06 : 0.0;
     worked::Given given{.elevations = z ? *std::move(z) : drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, void_share)};
@@ -33,7 +33,7 @@ TEST_CASE("travel over tiles gives every cell what the plain way gives it, whate
     for (unsigned seed = 0; seed < 600; ++seed) {
         const worked::TileManner manner{.side = 1 + seed % 17, .threads = 1 + seed % 2};
         INFO("seed " << seed << ", tiles of " << manner.side);
-        REQUIRE(worked::tiled_difference(worked::Land(random_given(seed)), manner) == "");
+        REQUIRE(worked::tiled_difference(worked::Land(seeded_given(seed)), manner) == "");
     }
 }
 
@@ -41,7 +41,7 @@ TEST_CASE("travel over tiles gives every cell what the plain way gives it, whate
 worked::Given edited_given(unsigned seed, const edits::Mapped& mapped) {
     ElevationStore store = edits::stored(mapped.z);
     const TerrainEdits placed = place_edits(mapped.shapes, edits::grid_of(mapped.z), store, 0.5);
-    worked::Given given = random_given(seed, mapped.z);
+    worked::Given given = seeded_given(seed, mapped.z);
     given.codes = edited_flow(store, placed, [&](const ElevationStore& z) {
         Elevations plain(z.rows(), z.columns());
         z.read({.rows = z.rows(), .columns = z.columns()}, plain.values());
@@ -73,7 +73,7 @@ TEST_CASE("travel with mapped channels, beds, barriers and kept water is the sam
 }
 
 TEST_CASE("the roots of a tiled forest are those of the plain one, with all that drains to them") {
-    const worked::Land land(random_given(7));
+    const worked::Land land(seeded_given(7));
     const ElevationStore store = edits::stored(land.given.elevations);
     const Executor executor(2, Executor::Kind::plain_threads);
     const TiledForest forest(land.forest.codes(), TileGrid(store.rows(), store.columns(), 8), executor);

@@ -50,6 +50,7 @@ import sys
 import tomllib
 
 import numpy as np
+import pyproj
 from osgeo import gdal, osr
 from scipy import sparse
 from scipy.sparse import linalg
@@ -125,7 +126,6 @@ class Ground:
             lengths *= weight
 
     def geographic(self, raster, rows):
-        import pyproj
         a, inverse = raster.system.GetSemiMajor(), raster.system.GetInvFlattening()
         earth = pyproj.Geod(a=a, rf=inverse)
         latitude = raster.top - (np.arange(rows + 1) + 0.5) * raster.height
@@ -211,9 +211,13 @@ class Forest:
         """Solves (I − Dᵀ) a = own, where D has a one at (cell, the cell it drains to)."""
         n = self.down.size
         flows = np.flatnonzero(~self.is_root & ~self.is_void)
+        # Numbered from the divides to the roots, cells have a system that is triangular: its factors are no larger than itself.
+        order = np.concatenate(self.levels[::-1] + [np.flatnonzero(self.is_void)])
+        number = np.empty(n, np.int64)
+        number[order] = np.arange(n)
         system = sparse.identity(n, format="csc") - sparse.csc_matrix(
-            (np.ones(flows.size), (self.down[flows], flows)), shape=(n, n))
-        return linalg.spsolve(system, own, permc_spec="COLAMD")
+            (np.ones(flows.size), (number[self.down[flows]], number[flows])), shape=(n, n))
+        return linalg.spsolve(system, own[order], permc_spec="NATURAL")[number]
 
 
 def spill_elevation(z, void):
@@ -349,8 +353,8 @@ class Surface:
         cover = Raster(study.cover, study.cover_band)
         places = dem.centres()
         if not dem.system.IsSame(cover.system):
-            change = osr.CoordinateTransformation(dem.system, cover.system)
-            places = np.array(change.TransformPoints(places.tolist()))[:, :2]
+            change = pyproj.Transformer.from_crs(dem.system.ExportToWkt(), cover.system.ExportToWkt(), always_xy=True)
+            places = np.column_stack(change.transform(places[:, 0], places[:, 1]))
         column = np.floor((places[:, 0] - cover.left) / cover.width).astype(int)
         row = np.floor((cover.top - places[:, 1]) / cover.height).astype(int)
         rows, columns = cover.values.shape

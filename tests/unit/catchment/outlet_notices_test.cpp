@@ -7,7 +7,7 @@
 namespace rillclock {
 namespace {
 
-const Grid grid{.rows = 10, .columns = 10, .left = 100, .top = 200, .cell_width = 2, .cell_height = 2};
+const Grid notice_grid{.rows = 10, .columns = 10, .left = 100, .top = 200, .cell_width = 2, .cell_height = 2};
 
 /// A point about which there is nothing to say: 1 km and 1000 s, a fall of 10 m, no tail.
 Outlet unremarkable() {
@@ -27,14 +27,14 @@ Outlet unremarkable() {
 
 /// The one notice with that code; a test fails where another one is there, or none.
 Notice only(const Outlet& outlet, const std::string& code) {
-    const Notices notices = notices_of(outlet, grid);
+    const Notices notices = notices_of(outlet, notice_grid);
     REQUIRE(notices.size() == 1);
     CHECK(notices[0].code == code);
     return notices[0];
 }
 
 void silent(const Outlet& outlet) {
-    CHECK(notices_of(outlet, grid).empty());
+    CHECK(notices_of(outlet, notice_grid).empty());
 }
 
 TEST_CASE("about a clean answer there is no notice") {

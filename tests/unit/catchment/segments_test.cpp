@@ -27,7 +27,7 @@ TravelRules shallow_rules() {
     return rules;
 }
 
-worked::Given row_of(const std::vector<double>& levels, const TravelRules& rules) {
+worked::Given row_falling(const std::vector<double>& levels, const TravelRules& rules) {
     const Elevations z = worked::strip(levels);
     return {.elevations = z,
             .ground = Ground::planar(metres(10), metres(10)),
@@ -64,7 +64,7 @@ TEST_CASE("a path is cut where the regime changes, within the step in which it d
     TravelRules rules = shallow_rules();
     rules.sheet.limit = metres(25);
     rules.channel.from_area = square_metres(3000);
-    const auto segments = whole_row(Worked(row_of(runs({{40, 0.4}}), rules)));
+    const auto segments = whole_row(Worked(row_falling(runs({{40, 0.4}}), rules)));
     REQUIRE(segments.size() == 3);
     CHECK(segments[0].regime == Regime::sheet);
     CHECK(segments[0].length_m == rounded(25));
@@ -79,7 +79,7 @@ TEST_CASE("a path is cut where the surface class changes, but not in a channel")
     for (const bool is_channel : {false, true}) {
         TravelRules rules = shallow_rules();
         if (is_channel) rules.channel.from_area = square_metres(2000);
-        worked::Given given = row_of(runs({{28, 0.4}}), rules);
+        worked::Given given = row_falling(runs({{28, 0.4}}), rules);
         given.surface.classes.push_back({.sheet_n = 0.2, .shallow_k = metres_per_second(2)});
         for (std::int64_t column = 24; column < 29; ++column) given.surface.index(0, column) = 1;
         const Worked w(std::move(given));
@@ -127,7 +127,7 @@ TEST_CASE("sheet flow is cut where a longer branch joins and u jumps, and not on
 TEST_CASE("a channel is cut where its area has grown more than one and a half times") {
     TravelRules rules = shallow_rules();
     rules.channel.from_area = square_metres(2000);
-    const Worked w(row_of(runs({{50, 0.4}}), rules));
+    const Worked w(row_falling(runs({{50, 0.4}}), rules));
     const auto segments = w.segments(cells_from_to(19, 49));
     REQUIRE(segments.size() == 3);
     CHECK(from_fixed_area(segments[0].area_from) == 2000.0);
@@ -139,34 +139,34 @@ TEST_CASE("a channel is cut where its area has grown more than one and a half ti
 
 TEST_CASE("a path is cut where the slope class changes for as long as the shortest segment") {
     // Slopes of 0.03 and 0.3; the shortest segment is 50 m.
-    CHECK(lengths(whole_row(Worked(row_of(runs({{10, 0.3}, {5, 3.0}, {10, 0.3}}), shallow_rules())))) ==
+    CHECK(lengths(whole_row(Worked(row_falling(runs({{10, 0.3}, {5, 3.0}, {10, 0.3}}), shallow_rules())))) ==
           std::vector<double>{100, 50, 100});
-    CHECK(lengths(whole_row(Worked(row_of(runs({{10, 0.3}, {4, 3.0}, {10, 0.3}}), shallow_rules())))) ==
+    CHECK(lengths(whole_row(Worked(row_falling(runs({{10, 0.3}, {4, 3.0}, {10, 0.3}}), shallow_rules())))) ==
           std::vector<double>{240});
 }
 
 TEST_CASE("a short run of a slope class joins what comes before it, and at the head what comes after") {
-    CHECK(lengths(whole_row(Worked(row_of(runs({{10, 0.3}, {3, 3.0}, {10, 1.0}}), shallow_rules())))) ==
+    CHECK(lengths(whole_row(Worked(row_falling(runs({{10, 0.3}, {3, 3.0}, {10, 1.0}}), shallow_rules())))) ==
           std::vector<double>{130, 100});
-    CHECK(lengths(whole_row(Worked(row_of(runs({{3, 3.0}, {10, 0.3}}), shallow_rules())))) == std::vector<double>{130});
+    CHECK(lengths(whole_row(Worked(row_falling(runs({{3, 3.0}, {10, 0.3}}), shallow_rules())))) == std::vector<double>{130});
 }
 
 TEST_CASE("slopes within one class do not cut") {
     // 0.021 to 0.049, of the class 0.02 to 0.05.
-    CHECK(whole_row(Worked(row_of(runs({{10, 0.21}, {10, 0.49}}), shallow_rules()))).size() == 1);
+    CHECK(whole_row(Worked(row_falling(runs({{10, 0.21}, {10, 0.49}}), shallow_rules()))).size() == 1);
 }
 
 TEST_CASE("the shortest segment may be a share of the path") {
     worked::Asked asked;
     asked.rules.segments = {.shortest = metres(50), .shortest_share = 0.25};
     // The steep run of 50 m is a fifth of 250 m.
-    CHECK(whole_row(Worked(row_of(runs({{10, 0.3}, {5, 3.0}, {10, 0.3}}), shallow_rules()), asked)).size() == 1);
+    CHECK(whole_row(Worked(row_falling(runs({{10, 0.3}, {5, 3.0}, {10, 0.3}}), shallow_rules()), asked)).size() == 1);
 }
 
 TEST_CASE("sheet flow is not cut by slope") {
     TravelRules rules = shallow_rules();
     rules.sheet.limit = metres(1e9);
-    const auto segments = whole_row(Worked(row_of(runs({{10, 0.3}, {10, 3.0}}), rules)));
+    const auto segments = whole_row(Worked(row_falling(runs({{10, 0.3}, {10, 3.0}}), rules)));
     REQUIRE(segments.size() == 1);
     CHECK(segments[0].slope_least == Approx(0.03));
     CHECK(segments[0].slope_greatest == Approx(0.3));
@@ -187,7 +187,7 @@ TEST_CASE("ponded cells do not cut a path: their length and time stand apart") {
     TravelRules rules = shallow_rules();
     rules.pond.depth = metres(0.3);
     for (const int cells : {3, 20}) {
-        const Worked w(row_of(hollow(cells), rules));
+        const Worked w(row_falling(hollow(cells), rules));
         const auto segments = whole_row(w);
         INFO(cells << " ponded cells");
         REQUIRE(segments.size() == 1);
@@ -201,7 +201,7 @@ TEST_CASE("ponded cells do not cut a path: their length and time stand apart") {
 TEST_CASE("the slopes of a segment are those of the ground that is not ponded") {
     TravelRules rules = shallow_rules();
     rules.pond.depth = metres(0.3);
-    const auto segments = whole_row(Worked(row_of(hollow(20), rules)));
+    const auto segments = whole_row(Worked(row_falling(hollow(20), rules)));
     // The step onto the pass itself has a window of 10 m on level spill: only its own cell is that slow.
     CHECK(segments.at(0).slope_greatest == Approx(0.4));
     CHECK(segments.at(0).slope_least > 1e-4);
@@ -210,7 +210,7 @@ TEST_CASE("the slopes of a segment are those of the ground that is not ponded") 
 TEST_CASE("a path that is ponded throughout has its time in the pond and no slope") {
     TravelRules rules = shallow_rules();
     rules.pond.depth = metres(0.3);
-    const Worked w(row_of(hollow(20), rules));
+    const Worked w(row_falling(hollow(20), rules));
     const auto segments = w.segments(cells_from_to(12, 20));
     REQUIRE(segments.size() == 1);
     CHECK(segments[0].length_m == 0.0);
@@ -222,7 +222,7 @@ TEST_CASE("sheet flow behind a ponded cell begins a row of its own, since u has 
     TravelRules rules = shallow_rules();
     rules.sheet.limit = metres(1e9);
     rules.pond.depth = metres(0.3);
-    const auto segments = whole_row(Worked(row_of(hollow(3), rules)));
+    const auto segments = whole_row(Worked(row_falling(hollow(3), rules)));
     REQUIRE(segments.size() == 2);
     CHECK(segments[0].pond_length_m == 30.0);
     CHECK(segments[1].index_from_m > segments[0].index_to_m);
@@ -232,7 +232,7 @@ TEST_CASE("the equivalent slope of shallow flow is that of Taylor and Schwarz") 
     // 40 m at 0.04 and 40 m at 0.01, both too short to stand alone.
     TravelRules rules = shallow_rules();
     rules.slope.window = metres(1);
-    const auto segments = whole_row(Worked(row_of(runs({{4, 0.4}, {4, 0.1}}), rules)));
+    const auto segments = whole_row(Worked(row_falling(runs({{4, 0.4}, {4, 0.1}}), rules)));
     REQUIRE(segments.size() == 1);
     CHECK(segments[0].slope_equivalent == Approx(std::pow(80 / (40 / 0.2 + 40 / 0.1), 2)));
     CHECK(from_fixed(segments[0].time.fixed) == rounded(40 / (5 * 0.2) + 40 / (5 * 0.1)));
@@ -244,7 +244,7 @@ TEST_CASE("a channel's row prints the radius and the area at both ends") {
     TravelRules rules = shallow_rules();
     rules.channel.hydraulic_radius.reset();
     rules.channel.from_area = square_metres(2000);
-    const Worked w(row_of(runs({{50, 0.4}}), rules));
+    const Worked w(row_falling(runs({{50, 0.4}}), rules));
     const Segment first = w.segments(cells_from_to(19, 49)).at(0);
     CHECK(first.radius_from_m == Approx(in_metres(rules.channel.radius_at(square_metres(2000)))));
     CHECK(first.radius_to_m == Approx(in_metres(rules.channel.radius_at(square_metres(3000)))));
@@ -253,7 +253,7 @@ TEST_CASE("a channel's row prints the radius and the area at both ends") {
 }
 
 TEST_CASE("a row across open water has the time of the wave and no slope") {
-    worked::Given given = row_of({1.0, 1.0, 1.0, 0.99}, shallow_rules());
+    worked::Given given = row_falling({1.0, 1.0, 1.0, 0.99}, shallow_rules());
     given.rules.slope.vertical_step = metres(0.2);
     given.surface.classes[0].water_depth = metres(4);
     const auto segments = whole_row(Worked(std::move(given)));
@@ -265,7 +265,7 @@ TEST_CASE("a row across open water has the time of the wave and no slope") {
 }
 
 TEST_CASE("a path of one cell has no segments") {
-    CHECK(Worked(row_of(runs({{4, 0.4}}), shallow_rules())).segments({4}).empty());
+    CHECK(Worked(row_falling(runs({{4, 0.4}}), shallow_rules())).segments({4}).empty());
 }
 
 TEST_CASE("an added constant changes no bit of the fall of a segment") {
@@ -273,9 +273,9 @@ TEST_CASE("an added constant changes no bit of the fall of a segment") {
     TravelRules rules = shallow_rules();
     rules.sheet.limit = metres(3.1);
     std::vector<double> levels = runs({{8, 0.375}});
-    const auto low = whole_row(Worked(row_of(levels, rules)));
+    const auto low = whole_row(Worked(row_falling(levels, rules)));
     for (double& level : levels) level += 4096;
-    const auto high = whole_row(Worked(row_of(levels, rules)));
+    const auto high = whole_row(Worked(row_falling(levels, rules)));
     REQUIRE(low.size() == high.size());
     for (std::size_t i = 0; i < low.size(); ++i) {
         CHECK(low[i].fall_m == high[i].fall_m);

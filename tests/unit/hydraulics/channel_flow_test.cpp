@@ -9,15 +9,12 @@
 #include <random>
 
 #include "rillclock/hydraulics/manning.hpp"
+#include "rounding.hpp"
 
 namespace rillclock {
 namespace {
 
 constexpr double infinite = std::numeric_limits<double>::infinity();
-
-Approx rounding(double value) {
-    return Approx(value).epsilon(1e-12);
-}
 
 /// Numbers spread evenly over orders of magnitude.
 class Spread {

@@ -5,12 +5,10 @@
 #include <array>
 #include <cmath>
 
+#include "rounding.hpp"
+
 namespace rillclock {
 namespace {
-
-Approx rounding(double value) {
-    return Approx(value).epsilon(1e-12);
-}
 
 TEST_CASE("a mean by area weighs each part by its area") {
     const std::array parts{AreaValue{acres(3), 60}, AreaValue{acres(1), 100}};

@@ -4,13 +4,10 @@
 
 #include <cmath>
 
+#include "rounding.hpp"
+
 namespace rillclock {
 namespace {
-
-/// Two ways through the same formula differ by rounding alone.
-Approx rounding(double value) {
-    return Approx(value).epsilon(1e-12);
-}
 
 const SheetStretch grass{.n = 0.24, .length = feet(100), .slope = 0.01};
 

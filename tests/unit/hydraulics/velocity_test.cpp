@@ -6,13 +6,10 @@
 #include "rillclock/hydraulics/manning.hpp"
 #include "rillclock/hydraulics/open_water.hpp"
 #include "rillclock/hydraulics/shallow_flow.hpp"
+#include "rounding.hpp"
 
 namespace rillclock {
 namespace {
-
-Approx rounding(double value) {
-    return Approx(value).epsilon(1e-12);
-}
 
 TEST_CASE("shallow flow on a slope of one runs at k, on a quarter at half of it") {
     CHECK(shallow_velocity(tr55_paved_k, 1.0) == feet_per_second(20.3282));

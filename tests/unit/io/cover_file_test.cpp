@@ -10,9 +10,9 @@ using Catch::Matchers::Contains;
 
 namespace {
 
-const ReferenceSystem utm = ReferenceSystem::from_text("EPSG:26912");
+const ReferenceSystem cover_utm = ReferenceSystem::from_text("EPSG:26912");
 
-struct Folder {
+struct CoverFolder {
     TemporaryFolder folder;
     fs::path cover(TestRaster raster) const {
         if (raster.type == GDT_Float32) raster.type = GDT_Byte;
@@ -34,44 +34,44 @@ TestRaster chequered() {
 
 }  // namespace
 
-TEST_CASE_METHOD(Folder, "a cover on the same grid is read as it is") {
+TEST_CASE_METHOD(CoverFolder, "a cover on the same grid is read as it is") {
     const Grid target = {.rows = 2, .columns = 2, .left = 500000, .top = 4000000, .cell_width = 30, .cell_height = 30};
-    const CoverFile file = open_cover(cover({}), {}, target, utm);
+    const CoverFile file = open_cover(cover({}), {}, target, cover_utm);
     CHECK(all_of(*file.source) == std::vector<std::int32_t>{1, 2, 3, 4});
     CHECK(file.notices.empty());
 }
 
-TEST_CASE_METHOD(Folder, "cells outside the cover and its nodata have no class") {
+TEST_CASE_METHOD(CoverFolder, "cells outside the cover and its nodata have no class") {
     const Grid target = {.rows = 2, .columns = 3, .left = 500000, .top = 4000000, .cell_width = 30, .cell_height = 30};
-    const CoverFile file = open_cover(cover({.nodata = 4.0}), {}, target, utm);
+    const CoverFile file = open_cover(cover({.nodata = 4.0}), {}, target, cover_utm);
     CHECK(all_of(*file.source) == std::vector<std::int32_t>{1, 2, no_class, 3, no_class, no_class});
 }
 
-TEST_CASE_METHOD(Folder, "a coarser cover gives each cell the class at its centre") {
+TEST_CASE_METHOD(CoverFolder, "a coarser cover gives each cell the class at its centre") {
     const Grid target = {.rows = 1, .columns = 4, .left = 500000, .top = 4000000, .cell_width = 15, .cell_height = 15};
-    const CoverFile file = open_cover(cover({}), {}, target, utm);
+    const CoverFile file = open_cover(cover({}), {}, target, cover_utm);
     CHECK(all_of(*file.source) == std::vector<std::int32_t>{1, 1, 2, 2});
 }
 
-TEST_CASE_METHOD(Folder, "a south-up cover is turned") {
+TEST_CASE_METHOD(CoverFolder, "a south-up cover is turned") {
     const Grid target = {.rows = 2, .columns = 2, .left = 0, .top = 60, .cell_width = 30, .cell_height = 30};
-    const CoverFile file = open_cover(cover({.transform = {0, 30, 0, 0, 0, 30}}), {}, target, utm);
+    const CoverFile file = open_cover(cover({.transform = {0, 30, 0, 0, 0, 30}}), {}, target, cover_utm);
     CHECK(all_of(*file.source) == std::vector<std::int32_t>{3, 4, 1, 2});
 }
 
-TEST_CASE_METHOD(Folder, "a twin under another name is not transformed and said so") {
+TEST_CASE_METHOD(CoverFolder, "a twin under another name is not transformed and said so") {
     const Grid target = {.rows = 2, .columns = 2, .left = 500000, .top = 4000000, .cell_width = 30, .cell_height = 30};
     const CoverFile file =
-        open_cover(cover({.system = "+proj=utm +zone=12 +ellps=GRS80 +towgs84=0,0,0 +units=m"}), {}, target, utm);
+        open_cover(cover({.system = "+proj=utm +zone=12 +ellps=GRS80 +towgs84=0,0,0 +units=m"}), {}, target, cover_utm);
     CHECK(all_of(*file.source) == std::vector<std::int32_t>{1, 2, 3, 4});
     CHECK(has_notice(file.notices, "cover-system-named-otherwise"));
 }
 
-TEST_CASE_METHOD(Folder, "a cover in another system gives the class under each transformed centre") {
+TEST_CASE_METHOD(CoverFolder, "a cover in another system gives the class under each transformed centre") {
     const TestRaster raster = chequered();
     const Grid target = {
         .rows = 150, .columns = 300, .left = 499600, .top = 4000500, .cell_width = 5, .cell_height = 5};
-    const CoverFile file = open_cover(cover(raster), {}, target, utm);
+    const CoverFile file = open_cover(cover(raster), {}, target, cover_utm);
     CHECK(has_notice(file.notices, "cover-transformed"));
     const std::vector<std::int32_t> values = all_of(*file.source);
 
@@ -100,30 +100,30 @@ TEST_CASE_METHOD(Folder, "a cover in another system gives the class under each t
     CHECK(wrong == 0);
 }
 
-TEST_CASE_METHOD(Folder, "the answer does not depend on the windows") {
+TEST_CASE_METHOD(CoverFolder, "the answer does not depend on the windows") {
     const Grid target = {.rows = 20, .columns = 300, .left = 499600, .top = 4000500, .cell_width = 5, .cell_height = 5};
-    const CoverFile file = open_cover(cover(chequered()), {}, target, utm);
+    const CoverFile file = open_cover(cover(chequered()), {}, target, cover_utm);
     const std::vector<std::int32_t> whole = all_of(*file.source);
     std::vector<std::int32_t> part(37);
     file.source->read({.row = 11, .column = 101, .rows = 1, .columns = 37}, part);
     CHECK(std::equal(part.begin(), part.end(), whole.begin() + 11 * 300 + 101));
 }
 
-TEST_CASE_METHOD(Folder, "a half-cell shift is noticed") {
+TEST_CASE_METHOD(CoverFolder, "a half-cell shift is noticed") {
     const Grid target = {.rows = 2, .columns = 2, .left = 500015, .top = 3999985, .cell_width = 30, .cell_height = 30};
-    CHECK(has_notice(open_cover(cover({}), {}, target, utm).notices, "cover-half-cell"));
+    CHECK(has_notice(open_cover(cover({}), {}, target, cover_utm).notices, "cover-half-cell"));
 }
 
-TEST_CASE_METHOD(Folder, "a cover of another place is refused") {
+TEST_CASE_METHOD(CoverFolder, "a cover of another place is refused") {
     const Grid target = {.rows = 2, .columns = 2, .left = 600000, .top = 4000000, .cell_width = 30, .cell_height = 30};
-    CHECK_THAT(sentence_of([&] { (void)open_cover(cover({}), {}, target, utm); }), Contains("does not overlap"));
+    CHECK_THAT(sentence_of([&] { (void)open_cover(cover({}), {}, target, cover_utm); }), Contains("does not overlap"));
 }
 
-TEST_CASE_METHOD(Folder, "whole numbers in a floating-point cover are classes, others are refused") {
+TEST_CASE_METHOD(CoverFolder, "whole numbers in a floating-point cover are classes, others are refused") {
     const Grid target = {.rows = 1, .columns = 1, .left = 500000, .top = 4000000, .cell_width = 30, .cell_height = 30};
     TestRaster raster{.type = GDT_Float64};
-    CHECK(all_of(*open_cover(cover(raster), {}, target, utm).source) == std::vector<std::int32_t>{1});
+    CHECK(all_of(*open_cover(cover(raster), {}, target, cover_utm).source) == std::vector<std::int32_t>{1});
     raster.values[0] = 1.5;
-    const CoverFile file = open_cover(cover(raster), {}, target, utm);
+    const CoverFile file = open_cover(cover(raster), {}, target, cover_utm);
     CHECK_THAT(sentence_of([&] { (void)all_of(*file.source); }), Contains("holds 1.5 in row 0, column 0"));
 }

@@ -12,10 +12,9 @@ using Catch::Matchers::Contains;
 
 namespace {
 
-constexpr double not_a_number = std::numeric_limits<double>::quiet_NaN();
 constexpr double infinity = std::numeric_limits<double>::infinity();
 
-struct Folder {
+struct ElevationFolder {
     TemporaryFolder folder;
     fs::path dem(const TestRaster& raster) const { return write_tiff(folder / "dem.tif", raster); }
     static std::string refusal(const fs::path& path, const ElevationOptions& options = {}) {
@@ -25,14 +24,14 @@ struct Folder {
 
 }  // namespace
 
-TEST_CASE_METHOD(Folder, "cells come row by row from the north-west corner") {
+TEST_CASE_METHOD(ElevationFolder, "cells come row by row from the north-west corner") {
     const ElevationFile file = open_elevation(dem({.columns = 3, .rows = 2, .values = {1, 2, 3, 4, 5, 6}}));
     CHECK(all_of(*file.source) == std::vector<double>{1, 2, 3, 4, 5, 6});
     CHECK(file.grid() ==
           Grid{.rows = 2, .columns = 3, .left = 500000, .top = 4000000, .cell_width = 30, .cell_height = 30});
 }
 
-TEST_CASE_METHOD(Folder, "a grid stored south-up is turned") {
+TEST_CASE_METHOD(ElevationFolder, "a grid stored south-up is turned") {
     const ElevationFile file =
         open_elevation(dem({.columns = 1, .rows = 3, .values = {1, 2, 3}, .transform = {0, 10, 0, 100, 0, 20}}));
     CHECK(all_of(*file.source) == std::vector<double>{3, 2, 1});
@@ -40,7 +39,7 @@ TEST_CASE_METHOD(Folder, "a grid stored south-up is turned") {
     CHECK(file.grid().cell_height == 20);
 }
 
-TEST_CASE_METHOD(Folder, "a window of a south-up grid is that of the turned grid") {
+TEST_CASE_METHOD(ElevationFolder, "a window of a south-up grid is that of the turned grid") {
     const ElevationFile file = open_elevation(
         dem({.columns = 2, .rows = 3, .values = {1, 2, 3, 4, 5, 6}, .transform = {0, 10, 0, 100, 0, 20}}));
     std::vector<double> values(2);
@@ -48,21 +47,21 @@ TEST_CASE_METHOD(Folder, "a window of a south-up grid is that of the turned grid
     CHECK(values == std::vector<double>{6, 4});
 }
 
-TEST_CASE_METHOD(Folder, "nodata of a float file is compared as a float") {
+TEST_CASE_METHOD(ElevationFolder, "nodata of a float file is compared as a float") {
     const double stored = static_cast<double>(-3.4e38F);
     const ElevationFile file = open_elevation(dem({.values = {stored, 2, 3, 4}, .nodata = -3.4e38}));
     CHECK(std::isnan(all_of(*file.source)[0]));
     CHECK(all_of(*file.source)[1] == 2);
 }
 
-TEST_CASE_METHOD(Folder, "a nodata tag beyond the range of floats means its end") {
+TEST_CASE_METHOD(ElevationFolder, "a nodata tag beyond the range of floats means its end") {
     const ElevationFile file = open_elevation(
         dem({.values = {-std::numeric_limits<float>::max(), 2, 3, 4}, .nodata = -1.7976931348623157e308}));
     CHECK(std::isnan(all_of(*file.source)[0]));
     CHECK(file.source->notices().empty());
 }
 
-TEST_CASE_METHOD(Folder, "NaN and infinities are void and counted") {
+TEST_CASE_METHOD(ElevationFolder, "NaN and infinities are void and counted") {
     const ElevationFile file = open_elevation(dem({.values = {not_a_number, infinity, -infinity, 4}}));
     const std::vector<double> values = all_of(*file.source);
     CHECK(std::isnan(values[0]));
@@ -72,24 +71,24 @@ TEST_CASE_METHOD(Folder, "NaN and infinities are void and counted") {
     CHECK(file.source->notices()[0].value == 3.0);
 }
 
-TEST_CASE_METHOD(Folder, "NaN that is the file's nodata is void without a notice") {
+TEST_CASE_METHOD(ElevationFolder, "NaN that is the file's nodata is void without a notice") {
     const ElevationFile file = open_elevation(dem({.values = {not_a_number, 2, 3, 4}, .nodata = not_a_number}));
     CHECK(std::isnan(all_of(*file.source)[0]));
     CHECK(file.source->notices().empty());
 }
 
-TEST_CASE_METHOD(Folder, "an elevation that cannot be is void and counted") {
+TEST_CASE_METHOD(ElevationFolder, "an elevation that cannot be is void and counted") {
     const ElevationFile file = open_elevation(dem({.values = {1e30, 2, 3, -1e6}}));
     CHECK(std::isnan(all_of(*file.source)[0]));
     CHECK(has_notice(file.source->notices(), "elevation-impossible"));
 }
 
-TEST_CASE_METHOD(Folder, "minus zero comes as zero") {
+TEST_CASE_METHOD(ElevationFolder, "minus zero comes as zero") {
     const ElevationFile file = open_elevation(dem({.values = {-0.0, 2, 3, 4}}));
     CHECK_FALSE(std::signbit(all_of(*file.source)[0]));
 }
 
-TEST_CASE_METHOD(Folder, "scale and offset are told, values stay as stored") {
+TEST_CASE_METHOD(ElevationFolder, "scale and offset are told, values stay as stored") {
     const ElevationFile file = open_elevation(
         dem({.values = {100, 200, 300, 400}, .type = GDT_UInt16, .scale = 0.1, .offset = 50.0, .unit = "m"}));
     CHECK(all_of(*file.source)[1] == 200);
@@ -99,66 +98,66 @@ TEST_CASE_METHOD(Folder, "scale and offset are told, values stay as stored") {
     CHECK(has_notice(file.notices, "elevation-scaled"));
 }
 
-TEST_CASE_METHOD(Folder, "the quantum of integer feet is a foot") {
+TEST_CASE_METHOD(ElevationFolder, "the quantum of integer feet is a foot") {
     const ElevationFile file = open_elevation(dem({.type = GDT_Int16, .unit = "ft"}));
     CHECK(file.format.quantum_m() == 0.3048);
     CHECK(file.format.stored == StoredType::int16);
 }
 
-TEST_CASE_METHOD(Folder, "floating point has no quantum") {
+TEST_CASE_METHOD(ElevationFolder, "floating point has no quantum") {
     CHECK(open_elevation(dem({})).format.quantum_m() == 0.0);
 }
 
-TEST_CASE_METHOD(Folder, "an unknown unit on a metre grid is taken as metre with a notice") {
+TEST_CASE_METHOD(ElevationFolder, "an unknown unit on a metre grid is taken as metre with a notice") {
     const ElevationFile file = open_elevation(dem({}));
     CHECK(file.format.unit.is_metre());
     CHECK(has_notice(file.notices, "elevation-unit-assumed"));
 }
 
-TEST_CASE_METHOD(Folder, "an unknown unit on a foot grid asks for the line to add") {
+TEST_CASE_METHOD(ElevationFolder, "an unknown unit on a foot grid asks for the line to add") {
     CHECK_THAT(refusal(dem({.system = "EPSG:2222"})), Contains("elevation_unit = \"ft\""));
 }
 
-TEST_CASE_METHOD(Folder, "the study may state the unit") {
+TEST_CASE_METHOD(ElevationFolder, "the study may state the unit") {
     const ElevationFile file = open_elevation(dem({.system = "EPSG:2222"}), {.unit = "us survey ft"});
     CHECK(file.format.unit.metres_per_unit == 1200.0 / 3937.0);
     CHECK_FALSE(has_notice(file.notices, "elevation-unit-assumed"));
 }
 
-TEST_CASE_METHOD(Folder, "a study that contradicts the band is refused") {
+TEST_CASE_METHOD(ElevationFolder, "a study that contradicts the band is refused") {
     const std::string sentence = refusal(dem({.unit = "m"}), {.unit = "ft"});
     CHECK_THAT(sentence, Contains("the study says foot") && Contains("the file's band says metre"));
 }
 
-TEST_CASE_METHOD(Folder, "the vertical part of the reference system gives the unit") {
+TEST_CASE_METHOD(ElevationFolder, "the vertical part of the reference system gives the unit") {
     const ElevationFile file = open_elevation(dem({.system = "EPSG:26912+6360"}));  // NAVD88 height in US survey feet
     CHECK(file.format.unit.metres_per_unit == 1200.0 / 3937.0);
 }
 
-TEST_CASE_METHOD(Folder, "a study that contradicts the vertical part of the reference system is refused") {
+TEST_CASE_METHOD(ElevationFolder, "a study that contradicts the vertical part of the reference system is refused") {
     CHECK_THAT(refusal(dem({.system = "EPSG:26912+6360"}), {.unit = "m"}), Contains("contradictory"));
 }
 
-TEST_CASE_METHOD(Folder, "the two feet do not contradict each other, and the study's counts") {
+TEST_CASE_METHOD(ElevationFolder, "the two feet do not contradict each other, and the study's counts") {
     const ElevationFile file = open_elevation(dem({.unit = "ft"}), {.unit = "us survey ft"});
     CHECK(file.format.unit.metres_per_unit == 1200.0 / 3937.0);
 }
 
-TEST_CASE_METHOD(Folder, "a word that is no unit is refused") {
+TEST_CASE_METHOD(ElevationFolder, "a word that is no unit is refused") {
     CHECK_THAT(refusal(dem({}), {.unit = "cubits"}), Contains("\"cubits\" is no unit of length"));
 }
 
-TEST_CASE_METHOD(Folder, "nodata that the type cannot hold is noticed and dropped") {
+TEST_CASE_METHOD(ElevationFolder, "nodata that the type cannot hold is noticed and dropped") {
     const ElevationFile file = open_elevation(dem({.type = GDT_UInt16, .nodata = -9999.0}));
     CHECK(has_notice(file.notices, "nodata-outside-type"));
     CHECK(file.format.void_value() == 65535);
 }
 
-TEST_CASE_METHOD(Folder, "nodata that could be an elevation is noticed") {
+TEST_CASE_METHOD(ElevationFolder, "nodata that could be an elevation is noticed") {
     CHECK(has_notice(open_elevation(dem({.nodata = 0.0})).notices, "nodata-is-elevation"));
 }
 
-TEST_CASE_METHOD(Folder, "cells masked out are void") {
+TEST_CASE_METHOD(ElevationFolder, "cells masked out are void") {
     const fs::path path = dem({});
     {
         const GdalSession session;
@@ -173,17 +172,17 @@ TEST_CASE_METHOD(Folder, "cells masked out are void") {
     CHECK(values[0] == 1);
 }
 
-TEST_CASE_METHOD(Folder, "a rotated grid is refused with the command that turns it") {
+TEST_CASE_METHOD(ElevationFolder, "a rotated grid is refused with the command that turns it") {
     CHECK_THAT(refusal(dem({.transform = {0, 10, 1, 0, 1, -10}})),
                Contains("rotated") && Contains("gdalwarp -r bilinear "));
 }
 
-TEST_CASE_METHOD(Folder, "a missing reference system is refused with the command that states it") {
+TEST_CASE_METHOD(ElevationFolder, "a missing reference system is refused with the command that states it") {
     CHECK_THAT(refusal(dem({.system = ""})),
                Contains("gdal_edit.py -a_srs EPSG:nnnnn " + (folder / "dem.tif").string()));
 }
 
-TEST_CASE_METHOD(Folder, "web Mercator is read, and told") {
+TEST_CASE_METHOD(ElevationFolder, "web Mercator is read, and told") {
     const ElevationFile file =
         open_elevation(dem({.transform = {-12580000, 30, 0, 4490000, 0, -30}, .system = "EPSG:3857"}), {});
     const auto told = std::find_if(file.notices.begin(), file.notices.end(), [](const Notice& n) { return n.code == "web-mercator"; });
@@ -191,21 +190,21 @@ TEST_CASE_METHOD(Folder, "web Mercator is read, and told") {
     CHECK_THAT(told->text, Contains("on the ellipsoid, row by row"));
 }
 
-TEST_CASE_METHOD(Folder, "several bands are listed and one must be chosen") {
+TEST_CASE_METHOD(ElevationFolder, "several bands are listed and one must be chosen") {
     const fs::path path = dem({.bands = 3});
     CHECK_THAT(refusal(path), Contains("several bands: 1 (no name, Float32), 2") && Contains("band = 1"));
     CHECK(all_of(*open_elevation(path, {.band = 2}).source)[3] == 4);
 }
 
-TEST_CASE_METHOD(Folder, "a band that is not there is refused") {
+TEST_CASE_METHOD(ElevationFolder, "a band that is not there is refused") {
     CHECK_THAT(refusal(dem({}), {.band = 2}), Contains("has no band 2"));
 }
 
-TEST_CASE_METHOD(Folder, "complex values are refused") {
+TEST_CASE_METHOD(ElevationFolder, "complex values are refused") {
     CHECK_THAT(refusal(dem({.type = GDT_CFloat32})), Contains("CFloat32") && Contains("gdal_translate -ot Float64"));
 }
 
-TEST_CASE_METHOD(Folder, "a palette is refused") {
+TEST_CASE_METHOD(ElevationFolder, "a palette is refused") {
     const fs::path path = dem({.type = GDT_Byte});
     {
         const GdalSession session;
@@ -218,31 +217,31 @@ TEST_CASE_METHOD(Folder, "a palette is refused") {
     CHECK_THAT(refusal(path), Contains("palette"));
 }
 
-TEST_CASE_METHOD(Folder, "a scale that is not positive is refused") {
+TEST_CASE_METHOD(ElevationFolder, "a scale that is not positive is refused") {
     CHECK_THAT(refusal(dem({.scale = -1.0})), Contains("scale -1"));
 }
 
-TEST_CASE_METHOD(Folder, "a file that is not there is said so") {
+TEST_CASE_METHOD(ElevationFolder, "a file that is not there is said so") {
     CHECK_THAT(refusal(folder / "none.tif"), Contains("does not exist"));
 }
 
-TEST_CASE_METHOD(Folder, "an empty file is said so") {
+TEST_CASE_METHOD(ElevationFolder, "an empty file is said so") {
     CHECK_THAT(refusal(write_file(folder / "a.tif", "")), Contains("empty (0 bytes)"));
 }
 
-TEST_CASE_METHOD(Folder, "a text with a raster's name is said to be a text") {
+TEST_CASE_METHOD(ElevationFolder, "a text with a raster's name is said to be a text") {
     CHECK_THAT(refusal(write_file(folder / "a.tif", "dear reader, this is prose\n")), Contains("it is a text"));
 }
 
-TEST_CASE_METHOD(Folder, "a folder is said to be one") {
+TEST_CASE_METHOD(ElevationFolder, "a folder is said to be one") {
     CHECK_THAT(refusal(folder.path()), Contains("is a folder"));
 }
 
-TEST_CASE_METHOD(Folder, "an address is refused") {
+TEST_CASE_METHOD(ElevationFolder, "an address is refused") {
     CHECK_THAT(refusal("http://127.0.0.1:9/dem.tif"), Contains("not a local file"));
 }
 
-TEST_CASE_METHOD(Folder, "rows that a truncated file lacks are named") {
+TEST_CASE_METHOD(ElevationFolder, "rows that a truncated file lacks are named") {
     const fs::path path = dem({.columns = 100, .rows = 100, .values = std::vector<double>(10000, 7.0)});
     fs::resize_file(path, 20000);
     const ElevationFile file = open_elevation(path);
@@ -252,7 +251,7 @@ TEST_CASE_METHOD(Folder, "rows that a truncated file lacks are named") {
     CHECK_THAT(sentence, Contains("Rows 90 to 99") && Contains("cut short"));
 }
 
-TEST_CASE_METHOD(Folder, "a header that claims far more than the file holds is refused with both numbers") {
+TEST_CASE_METHOD(ElevationFolder, "a header that claims far more than the file holds is refused with both numbers") {
     const fs::path path = folder / "huge.tif";
     {
         const GdalSession session;
@@ -271,7 +270,7 @@ TEST_CASE_METHOD(Folder, "a header that claims far more than the file holds is r
                Contains("3600000000 bytes, but holds " + std::to_string(fs::file_size(path)) + " bytes"));
 }
 
-TEST_CASE_METHOD(Folder, "more cells than can be numbered are refused") {
+TEST_CASE_METHOD(ElevationFolder, "more cells than can be numbered are refused") {
     const fs::path path =
         write_file(folder / "a.vrt",
                    "<VRTDataset rasterXSize=\"100000\" rasterYSize=\"100000\"><SRS>EPSG:26912</SRS>"

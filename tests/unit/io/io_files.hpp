@@ -10,6 +10,7 @@
 #include <filesystem>
 #include <fstream>
 #include <iterator>
+#include <limits>
 #include <optional>
 #include <string>
 #include <vector>
@@ -22,6 +23,8 @@
 namespace rillclock::testing {
 
 namespace fs = std::filesystem;
+
+inline constexpr double not_a_number = std::numeric_limits<double>::quiet_NaN();
 
 /// A folder that lives as long as the test.
 class TemporaryFolder {

@@ -15,8 +15,7 @@ using Catch::Matchers::Contains;
 
 namespace {
 
-constexpr double not_a_number = std::numeric_limits<double>::quiet_NaN();
-const ReferenceSystem utm = ReferenceSystem::from_text("EPSG:26912");
+const ReferenceSystem output_utm = ReferenceSystem::from_text("EPSG:26912");
 
 Grid grid_of(std::int64_t rows, std::int64_t columns) {
     return {.rows = rows, .columns = columns, .left = 500000, .top = 4000000, .cell_width = 2, .cell_height = 3};
@@ -34,7 +33,7 @@ Raster<double> rough(std::int64_t rows, std::int64_t columns) {
 }
 
 void write(const fs::path& path, const Raster<double>& raster, const RasterDescription& description) {
-    const auto sink = create_raster<double>(path, grid_of(raster.rows(), raster.columns()), utm, description);
+    const auto sink = create_raster<double>(path, grid_of(raster.rows(), raster.columns()), output_utm, description);
     write_raster(*sink, raster);
 }
 
@@ -53,7 +52,7 @@ TEST_CASE("what is written is read back bit for bit") {
     const std::vector<double> values = all_of(*file.source);
     CHECK(std::equal(values.begin(), values.end(), raster.values().begin()));
     CHECK(file.grid() == grid_of(700, 530));
-    CHECK(same_coordinates(file.system, utm, file.grid()));
+    CHECK(same_coordinates(file.system, output_utm, file.grid()));
 }
 
 TEST_CASE("every stored type keeps its whole numbers and its nodata") {
@@ -208,7 +207,7 @@ TEST_CASE("the same values give the same bytes whatever the windows, the threads
     GDALSetCacheMax64(2 << 20);
     CPLSetConfigOption("GDAL_NUM_THREADS", "1");
     {
-        const auto sink = create_raster<double>(folder / "parts.tif", grid_of(1300, 1100), utm, description);
+        const auto sink = create_raster<double>(folder / "parts.tif", grid_of(1300, 1100), output_utm, description);
         for (std::int64_t row = 0; row < 1300; row += 100)
             for (const std::int64_t column : {std::int64_t{550}, std::int64_t{0}}) {
                 std::vector<double> part;
@@ -257,13 +256,13 @@ TEST_CASE("a raster in a folder that is not there fails as the machine's fault")
 
 TEST_CASE("a sink that is not closed leaves no file") {
     const TemporaryFolder folder;
-    { const auto sink = create_raster<double>(folder / "a.tif", grid_of(2, 2), utm, {}); }
+    { const auto sink = create_raster<double>(folder / "a.tif", grid_of(2, 2), output_utm, {}); }
     CHECK_FALSE(fs::exists(folder / "a.tif"));
 }
 
 TEST_CASE("a raster is not closed before all its cells came") {
     const TemporaryFolder folder;
-    const auto sink = create_raster<double>(folder / "a.tif", grid_of(2, 2), utm, {});
+    const auto sink = create_raster<double>(folder / "a.tif", grid_of(2, 2), output_utm, {});
     sink->write({.rows = 1, .columns = 2}, std::vector<double>{1, 2});
     CHECK_THAT(sentence_of([&] { sink->close(); }, Fault::bug), Contains("before all of its cells"));
 }

@@ -10,10 +10,10 @@ using Catch::Matchers::Contains;
 
 namespace {
 
-const ReferenceSystem utm = ReferenceSystem::from_text("EPSG:32612");
+const ReferenceSystem shape_utm = ReferenceSystem::from_text("EPSG:32612");
 const ReferenceSystem degrees = ReferenceSystem::wgs84();
 
-std::string feature(const std::string& type, const std::string& coordinates) {
+std::string shape_feature(const std::string& type, const std::string& coordinates) {
     return R"({"type":"Feature","properties":{},"geometry":{"type":")" + type + R"(","coordinates":)" + coordinates + "}}";
 }
 
@@ -33,7 +33,7 @@ struct ShapeFolder {
 }  // namespace
 
 TEST_CASE_METHOD(ShapeFolder, "lines keep the order of their corners and are transformed") {
-    const ShapeFile read = lines(feature("LineString", "[[-111,0],[-111,1]]"), utm);
+    const ShapeFile read = lines(shape_feature("LineString", "[[-111,0],[-111,1]]"), shape_utm);
     REQUIRE(read.lines.size() == 1);
     REQUIRE(read.lines[0].size() == 2);
     CHECK(read.lines[0][0].x == Approx(500000.0).epsilon(1e-12));
@@ -42,8 +42,8 @@ TEST_CASE_METHOD(ShapeFolder, "lines keep the order of their corners and are tra
 }
 
 TEST_CASE_METHOD(ShapeFolder, "each part of a feature of several parts is a line of its own") {
-    const ShapeFile read = lines(feature("MultiLineString", "[[[1,2],[3,4]],[[5,6],[7,8]]]") + "," +
-                                 feature("LineString", "[[9,10,99],[11,12,98]]"));
+    const ShapeFile read = lines(shape_feature("MultiLineString", "[[[1,2],[3,4]],[[5,6],[7,8]]]") + "," +
+                                 shape_feature("LineString", "[[9,10,99],[11,12,98]]"));
     CHECK(read.lines.size() == 3);
     CHECK(read.lines[2][1].x == 11.0);
     CHECK(read.features == 2);
@@ -51,16 +51,16 @@ TEST_CASE_METHOD(ShapeFolder, "each part of a feature of several parts is a line
 }
 
 TEST_CASE_METHOD(ShapeFolder, "kept water is points and polygons with holes") {
-    const ShapeFile read = waters(feature("Point", "[1,2]") + "," +
-                                  feature("Polygon", "[[[0,0],[4,0],[4,4],[0,0]],[[1,1],[2,1],[2,2],[1,1]]]") + "," +
-                                  feature("MultiPoint", "[[3,4],[5,6]]"));
+    const ShapeFile read = waters(shape_feature("Point", "[1,2]") + "," +
+                                  shape_feature("Polygon", "[[[0,0],[4,0],[4,4],[0,0]],[[1,1],[2,1],[2,2],[1,1]]]") + "," +
+                                  shape_feature("MultiPoint", "[[3,4],[5,6]]"));
     CHECK(read.points.size() == 3);
     REQUIRE(read.polygons.size() == 1);
     CHECK(read.polygons[0].rings.size() == 2);
 }
 
 TEST_CASE_METHOD(ShapeFolder, "features of the wrong type or without a shape are left out one by one") {
-    const ShapeFile read = lines(feature("LineString", "[[1,2],[3,4]]") + "," + feature("Point", "[1,2]") +
+    const ShapeFile read = lines(shape_feature("LineString", "[[1,2],[3,4]]") + "," + shape_feature("Point", "[1,2]") +
                                  R"(,{"type":"Feature","properties":{},"geometry":null})");
     CHECK(read.lines.size() == 1);
     REQUIRE(read.notices.size() == 2);
@@ -69,7 +69,7 @@ TEST_CASE_METHOD(ShapeFolder, "features of the wrong type or without a shape are
 }
 
 TEST_CASE_METHOD(ShapeFolder, "a line with a corner that has no image is left out whole") {
-    const ShapeFile read = lines(feature("LineString", "[[-111,0],[-111,1]]") + "," + feature("LineString", "[[-111,0],[-111,1e300]]"), utm);
+    const ShapeFile read = lines(shape_feature("LineString", "[[-111,0],[-111,1]]") + "," + shape_feature("LineString", "[[-111,0],[-111,1e300]]"), shape_utm);
     CHECK(read.lines.size() == 1);
     REQUIRE(read.notices.size() == 1);
     CHECK_THAT(read.notices[0].text, Contains("Feature 2"));
@@ -80,7 +80,7 @@ TEST_CASE_METHOD(ShapeFolder, "polygons carry the text of the field that is aske
     const std::string named = R"({"type":"Feature","properties":{"rain":"hill.csv"},"geometry":{"type":"MultiPolygon","coordinates":[)" +
                               square + "," + square + "]}}";
     const std::string unnamed = R"({"type":"Feature","properties":{"rain":null},"geometry":{"type":"Polygon","coordinates":)" + square + "}}";
-    const fs::path path = file(named + "," + unnamed + "," + feature("Point", "[1,2]"));
+    const fs::path path = file(named + "," + unnamed + "," + shape_feature("Point", "[1,2]"));
     const ShapeFile read = read_shapes(path, {.role = "rain zones", .kinds = ShapeKinds::polygons, .layer_key = "zones_layer", .text_field = "rain"}, degrees);
     CHECK(read.polygons.size() == 3);
     CHECK(read.polygon_texts == std::vector<std::string>{"hill.csv", "hill.csv", ""});
@@ -91,9 +91,9 @@ TEST_CASE_METHOD(ShapeFolder, "polygons carry the text of the field that is aske
 }
 
 TEST_CASE_METHOD(ShapeFolder, "a file without a usable shape is refused with its reason") {
-    CHECK_THAT(sentence_of([&] { (void)lines(feature("Point", "[1,2]")); }), Contains("nothing that can be used") && Contains("POINT"));
+    CHECK_THAT(sentence_of([&] { (void)lines(shape_feature("Point", "[1,2]")); }), Contains("nothing that can be used") && Contains("POINT"));
     CHECK_THAT(sentence_of([&] { (void)lines(""); }), Contains("no features"));
-    CHECK_THAT(sentence_of([&] { (void)read_shapes(folder / "none.gpkg", {.role = "barriers", .layer_key = "barriers_layer"}, utm); }),
+    CHECK_THAT(sentence_of([&] { (void)read_shapes(folder / "none.gpkg", {.role = "barriers", .layer_key = "barriers_layer"}, shape_utm); }),
                Contains("file of barriers") && Contains("none.gpkg"));
 }
 
@@ -116,7 +116,7 @@ TEST_CASE_METHOD(ShapeFolder, "of several layers one must be named, and the name
         }
     }
     const auto read = [&](std::optional<std::string> layer) {
-        return read_shapes(path, {.role = "channels", .layer = std::move(layer), .layer_key = "channels_layer"}, utm);
+        return read_shapes(path, {.role = "channels", .layer = std::move(layer), .layer_key = "channels_layer"}, shape_utm);
     };
     CHECK_THAT(sentence_of([&] { (void)read({}); }), Contains("several layers: roads, brooks") && Contains("channels_layer = \"roads\""));
     CHECK_THAT(sentence_of([&] { (void)read("lanes"); }), Contains("no layer \"lanes\"") && Contains("roads, brooks"));

@@ -19,7 +19,7 @@ std::string tile(const std::string& name) {
     return "<SimpleSource><SourceFilename relativeToVRT=\"1\">" + name + "</SourceFilename></SimpleSource>";
 }
 
-struct Folder {
+struct VrtFolder {
     TemporaryFolder folder;
     fs::path vrt(const std::string& content) const { return write_file(folder / "a.vrt", content); }
     static std::string refusal(const fs::path& path) {
@@ -29,28 +29,28 @@ struct Folder {
 
 }  // namespace
 
-TEST_CASE_METHOD(Folder, "a mosaic of local tiles is read") {
+TEST_CASE_METHOD(VrtFolder, "a mosaic of local tiles is read") {
     write_tiff(folder / "tile.tif", {});
     CHECK(all_of(*open_elevation(vrt(virtual_raster("", tile("tile.tif")))).source) == std::vector<double>{1, 2, 3, 4});
 }
 
-TEST_CASE_METHOD(Folder, "a missing tile is named") {
+TEST_CASE_METHOD(VrtFolder, "a missing tile is named") {
     CHECK_THAT(refusal(vrt(virtual_raster("", tile("gone.tif")))),
                Contains((folder / "gone.tif").string() + ", which is not there"));
 }
 
-TEST_CASE_METHOD(Folder, "raw bytes of another file are refused") {
+TEST_CASE_METHOD(VrtFolder, "raw bytes of another file are refused") {
     const std::string content = "<SourceFilename relativetoVRT=\"0\">/etc/passwd</SourceFilename>";
     CHECK_THAT(refusal(vrt(virtual_raster("subClass=\"VRTRawRasterBand\"", content))), Contains("VRTRawRasterBand"));
 }
 
-TEST_CASE_METHOD(Folder, "a pixel function is refused") {
+TEST_CASE_METHOD(VrtFolder, "a pixel function is refused") {
     CHECK_THAT(
         refusal(vrt(virtual_raster("subClass=\"VRTDerivedRasterBand\"", "<PixelFunctionType>sum</PixelFunctionType>"))),
         Contains("pixel function"));
 }
 
-TEST_CASE_METHOD(Folder, "a tile elsewhere is refused") {
+TEST_CASE_METHOD(VrtFolder, "a tile elsewhere is refused") {
     const std::string name =
         GENERATE("/vsicurl/http://127.0.0.1/a.tif", "http://127.0.0.1/a.tif", "/vsizip/a.zip/a.tif");
     CHECK_THAT(
@@ -58,15 +58,15 @@ TEST_CASE_METHOD(Folder, "a tile elsewhere is refused") {
         Contains("only plain local files"));
 }
 
-TEST_CASE_METHOD(Folder, "a tile that describes data elsewhere is refused") {
+TEST_CASE_METHOD(VrtFolder, "a tile that describes data elsewhere is refused") {
     write_file(folder / "wms.xml", "<GDAL_WMS><Service/></GDAL_WMS>");
     CHECK_THAT(refusal(vrt(virtual_raster("", tile("wms.xml")))), Contains("describes data elsewhere"));
 }
 
-TEST_CASE_METHOD(Folder, "a virtual raster that names itself is refused") {
+TEST_CASE_METHOD(VrtFolder, "a virtual raster that names itself is refused") {
     CHECK_THAT(refusal(vrt(virtual_raster("", tile("a.vrt")))), Contains("names itself"));
 }
 
-TEST_CASE_METHOD(Folder, "a virtual raster that is broken XML is refused") {
+TEST_CASE_METHOD(VrtFolder, "a virtual raster that is broken XML is refused") {
     CHECK_THAT(refusal(vrt("<VRTDataset rasterXSize=\"2\"")), Contains("not well-formed"));
 }

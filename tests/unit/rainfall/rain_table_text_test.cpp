@@ -20,7 +20,7 @@ RainCurve curve(const std::string& text, double years) {
     return rain_from_text(text, "rain.csv").curve(years, seconds(0));
 }
 
-std::string with(const std::string& wanted, const std::string& instead) {
+std::string table_with(const std::string& wanted, const std::string& instead) {
     std::string text = table;
     const auto place = text.find(wanted);
     REQUIRE(place != std::string::npos);
@@ -96,21 +96,21 @@ TEST_CASE("an implausible 2-year 24-hour depth is a slip of unit") {
 }
 
 TEST_CASE("a header that does not name its units is refused with the right form") {
-    CHECK_THROWS_WITH(rain_from_table(with("duration_min", "duration"), "rain.csv"),
+    CHECK_THROWS_WITH(rain_from_table(table_with("duration_min", "duration"), "rain.csv"),
                       Contains("rain.csv") && Contains("\"duration\"") && Contains("duration_min,intensity_2yr_in_h"));
     for (const char* bad : {"intensity_2yr", "intensity_2yr_in", "depth_2yr_in_h", "2yr_in_h", "intensity_yr_in_h",
                             "intensity_2_in_h", "intensity_nanyr_in_h"}) {
         INFO(bad);
-        CHECK_THROWS_WITH(rain_from_table(with("intensity_2yr_in_h", bad), "rain.csv"),
+        CHECK_THROWS_WITH(rain_from_table(table_with("intensity_2yr_in_h", bad), "rain.csv"),
                           Contains("\"" + std::string(bad) + "\"") && Contains("intensity_<years>yr_mm_h"));
     }
-    CHECK_THROWS_WITH(rain_from_table(with("intensity_10yr_in_h", "intensity_10yr_mm_h"), "rain.csv"),
+    CHECK_THROWS_WITH(rain_from_table(table_with("intensity_10yr_in_h", "intensity_10yr_mm_h"), "rain.csv"),
                       Contains("is in mm/h where those before it are in in/h"));
 }
 
 TEST_CASE("return periods that do not rise are refused") {
-    CHECK_THROWS_WITH(rain_from_table(with("10yr", "2yr"), "rain.csv"), Contains("line 1") && Contains("do not rise"));
-    CHECK_THROWS_WITH(rain_from_table(with("_2yr", "_0yr"), "rain.csv"), Contains("line 1") && Contains("above zero"));
+    CHECK_THROWS_WITH(rain_from_table(table_with("10yr", "2yr"), "rain.csv"), Contains("line 1") && Contains("do not rise"));
+    CHECK_THROWS_WITH(rain_from_table(table_with("_2yr", "_0yr"), "rain.csv"), Contains("line 1") && Contains("above zero"));
 }
 
 TEST_CASE("a table with one row is refused") {
@@ -122,25 +122,25 @@ TEST_CASE("a table with one row is refused") {
 TEST_CASE("numbers that cannot be rain or a duration are refused with line and column") {
     for (const char* bad : {"0", "-1", "nan", "inf", "many", ""}) {
         INFO(bad);
-        CHECK_THROWS_WITH(rain_from_table(with("1.5", bad), "rain.csv"),
+        CHECK_THROWS_WITH(rain_from_table(table_with("1.5", bad), "rain.csv"),
                           Contains("rain.csv, line 3, column 2 (intensity_2yr_in_h)"));
-        CHECK_THROWS_WITH(rain_from_table(with("1440", bad), "rain.csv"),
+        CHECK_THROWS_WITH(rain_from_table(table_with("1440", bad), "rain.csv"),
                           Contains("rain.csv, line 4, column 1 (duration_min)"));
     }
 }
 
 TEST_CASE("falling durations are refused") {
-    CHECK_THROWS_WITH(rain_from_table(with("1440", "60"), "rain.csv"),
+    CHECK_THROWS_WITH(rain_from_table(table_with("1440", "60"), "rain.csv"),
                       Contains("rain.csv, line 4") && Contains("rising order"));
 }
 
 TEST_CASE("rain that falls with the return period is refused") {
-    CHECK_THROWS_WITH(rain_from_table(with("2.3", "1.4"), "rain.csv"),
+    CHECK_THROWS_WITH(rain_from_table(table_with("2.3", "1.4"), "rain.csv"),
                       Contains("rain.csv, line 3") && Contains("60 min, 10 years"));
 }
 
 TEST_CASE("a depth that falls with duration is refused, but not by what three digits hide") {
-    CHECK_THROWS_WITH(rain_from_table(with("0.15", "0.05"), "rain.csv"),
+    CHECK_THROWS_WITH(rain_from_table(table_with("0.15", "0.05"), "rain.csv"),
                       Contains("rain.csv, line 4") && Contains("falls below that of 60 min"));
     const std::string rounded = "duration_h,intensity_2yr_in_h\n1,1.005\n2,0.50\n";
     CHECK(rain_from_table(rounded, "rain.csv").curve(2, seconds(0)).at(hours(2)) == inches_per_hour(0.5));

@@ -34,7 +34,7 @@ std::string text(const Line& ring) {
 }
 
 /// Signed area of a ring: positive counterclockwise.
-double area_of(const Line& ring) {
+double ring_area(const Line& ring) {
     double twice = 0;
     for (std::size_t i = 1; i < ring.size(); ++i) twice += ring[i - 1].x * ring[i].y - ring[i].x * ring[i - 1].y;
     return twice / 2;
@@ -60,8 +60,8 @@ TEST_CASE("a hole is a second ring, clockwise") {
     const auto polygons = outlines({"####", "#..#", "####"});
     REQUIRE(polygons.size() == 1);
     REQUIRE(polygons[0].rings.size() == 2);
-    CHECK(area_of(polygons[0].rings[0]) == 12.0);
-    CHECK(area_of(polygons[0].rings[1]) == -2.0);
+    CHECK(ring_area(polygons[0].rings[0]) == 12.0);
+    CHECK(ring_area(polygons[0].rings[1]) == -2.0);
 }
 
 TEST_CASE("cells that touch at a corner alone are polygons of their own") {
@@ -75,8 +75,8 @@ TEST_CASE("a part that closes round a hole by touching itself at a corner has an
     const auto polygons = outlines({"##.", "#.#", "###"});
     REQUIRE(polygons.size() == 1);
     REQUIRE(polygons[0].rings.size() == 2);
-    CHECK(area_of(polygons[0].rings[0]) == 8.0);
-    CHECK(area_of(polygons[0].rings[1]) == -1.0);
+    CHECK(ring_area(polygons[0].rings[0]) == 8.0);
+    CHECK(ring_area(polygons[0].rings[1]) == -1.0);
 }
 
 TEST_CASE("rectangular cells are outlined in the grid's coordinates") {
@@ -101,8 +101,8 @@ TEST_CASE("outlines of any cells are simple rings that hold as much ground as th
         for (const Polygon& polygon : cell_outlines(cells, grid)) {
             for (const Line& ring : polygon.rings) {
                 const bool is_outer = &ring == &polygon.rings.front();
-                REQUIRE((area_of(ring) > 0) == is_outer);
-                area += area_of(ring);
+                REQUIRE((ring_area(ring) > 0) == is_outer);
+                area += ring_area(ring);
                 std::set<std::pair<double, double>> corners;
                 for (std::size_t i = 1; i < ring.size(); ++i) REQUIRE(corners.emplace(ring[i].x, ring[i].y).second);
             }

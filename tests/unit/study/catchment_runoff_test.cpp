@@ -13,7 +13,7 @@ CoverClass with_c(int code, const std::string& name, double c) {
     return made;
 }
 
-CoverBook book() {
+CoverBook runoff_book() {
     CoverClass pasture{.code = 4, .name = "Pasture", .n_typical = 0.2};
     pasture.land_use = "pasture";
     return {"test", {with_c(1, "Paved", 0.90), with_c(2, "Lawn", 0.15), with_c(3, "Unimproved", 0.25), pasture, with_c(5, "Grass", 0.22)}};
@@ -33,7 +33,7 @@ LandAreas hectares_of(const std::vector<std::pair<std::uint8_t, double>>& parts)
 
 TEST_CASE("a composite coefficient is the mean by area") {
     // FHWA, HEC-22, 3rd ed., 2009, example 3-1, existing and proposed (values from memory); printed to three digits.
-    const CoverBook the_book = book();
+    const CoverBook the_book = runoff_book();
     Coefficients c(the_book, with_factors(FrequencyFactors::none), {10});
     CHECK(composite_of(hectares_of({{2, 8.95}, {4, 8.60}}), c, 0).value == Approx(0.235).margin(0.0005));
     const CompositeCoefficient proposed = composite_of(hectares_of({{0, 2.20}, {1, 0.66}, {2, 7.52}, {4, 7.17}}), c, 0);
@@ -42,7 +42,7 @@ TEST_CASE("a composite coefficient is the mean by area") {
 }
 
 TEST_CASE("the smaller of 1 and Cf C counts, class by class, before the mean") {
-    const CoverBook the_book = book();
+    const CoverBook the_book = runoff_book();
     Coefficients c(the_book, with_factors(FrequencyFactors::wright_mclaughlin), {10, 100});
     const LandAreas land = hectares_of({{0, 1}, {1, 1}});
     CHECK(composite_of(land, c, 0).value == Approx((0.90 + 0.15) / 2));
@@ -53,7 +53,7 @@ TEST_CASE("the smaller of 1 and Cf C counts, class by class, before the mean") {
 }
 
 TEST_CASE("no frequency factor acts on a coefficient that depends on the return period already") {
-    const CoverBook the_book = book();
+    const CoverBook the_book = runoff_book();
     Coefficients c(the_book, with_factors(FrequencyFactors::wright_mclaughlin), {10, 100});
     const LandAreas land = hectares_of({{3, 1}});
     CHECK(composite_of(land, c, 0).value == 0.18);  // pasture, group B, to 2 %
@@ -66,7 +66,7 @@ TEST_CASE("what is lacking is said of the first kind of land that lacks it") {
     const CoverBook lacking{"test", {bare}};
     Coefficients c(lacking, with_factors(FrequencyFactors::none), {10});
     CHECK(lacking_coefficient(hectares_of({{0, 1}}), c, 0) == "the cover book has no c or land_use for Scrub");
-    const CoverBook whole = book();
+    const CoverBook whole = runoff_book();
     Coefficients d(whole, with_factors(FrequencyFactors::none), {10});
     CHECK(lacking_coefficient(hectares_of({{0, 1}, {1, 2}}), d, 0).empty());
 }
@@ -76,7 +76,7 @@ HistogramEntry entry(std::int32_t storm_bin, std::int32_t fixed_bin, std::uint8_
 }
 
 TEST_CASE("under one storm land stays in its bins, with C by kind") {
-    const CoverBook the_book = book();
+    const CoverBook the_book = runoff_book();
     Coefficients c(the_book, with_factors(FrequencyFactors::none), {10});
     const ArrivalHistogram histogram({entry(0, 7, 0, 100), entry(0, 7, 1, 200), entry(0, 9, 0, 10)});
     const ArrivalCurve curve = BinnedLand(histogram, Placing({.bin = bin}, 1.0)).curve(c, 0);

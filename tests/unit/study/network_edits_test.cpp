@@ -46,7 +46,7 @@ TEST_CASE("an override states what it states and leaves the rest") {
     CHECK_THROWS_WITH(parse_overrides("point,c\nMill,0.1\nMill,0.2\n", "o.csv"), Contains("line 3") && Contains("stands above already"));
 }
 
-Outlet outlet(PointNumber number, const std::string& name, PointNumber next, double to_root_min, double own_min) {
+Outlet outlet_of(PointNumber number, const std::string& name, PointNumber next, double to_root_min, double own_min) {
     Outlet made;
     made.number = number;
     made.point.name = name;
@@ -57,7 +57,7 @@ Outlet outlet(PointNumber number, const std::string& name, PointNumber next, dou
 }
 
 /// B and C drain to A over the ground, D to C.
-std::vector<Outlet> four() { return {outlet(1, "A", 0, 0, 10), outlet(2, "B", 1, 6, 20), outlet(3, "C", 1, 4, 12), outlet(4, "D", 3, 13, 5)}; }
+std::vector<Outlet> four() { return {outlet_of(1, "A", 0, 0, 10), outlet_of(2, "B", 1, 6, 20), outlet_of(3, "C", 1, 4, 12), outlet_of(4, "D", 3, 13, 5)}; }
 
 double minutes_at(const DrainageNetwork& network, PointNumber number) { return from_fixed(network.arrivals_at(number, 1.0).time) / 60; }
 

@@ -8,7 +8,7 @@ namespace {
 using Catch::Contains;
 
 /// Grass with a land use alone, street with its own c, yard with both, wood with neither.
-CoverBook book() {
+CoverBook coefficient_book() {
     return parse_cover_book(
         "code,name,n_typical,shallow_type,c,land_use,impervious_percent,source\n"
         "1,Grass,0.24,short-grass pasture,,pasture,0,test\n"
@@ -19,7 +19,7 @@ CoverBook book() {
 }
 
 KindCoefficient of(std::uint8_t cover, CellSoil soil, SlopeBand slope, double years) {
-    return kind_coefficient(book(), {.cover = cover, .soil = soil, .slope = slope}, CoefficientSource::book, years);
+    return kind_coefficient(coefficient_book(), {.cover = cover, .soil = soil, .slope = slope}, CoefficientSource::book, years);
 }
 
 TEST_CASE("a land use has a coefficient by soil group, slope and return period") {
@@ -40,13 +40,13 @@ TEST_CASE("a coefficient of the book's own counts before its land use, and does 
 TEST_CASE("what a coefficient lacks is said") {
     CHECK(of(3, CellSoil::a, SlopeBand::flat, 10).lacking == "the cover book has no c or land_use for Wood");
     CHECK_THAT(of(0, CellSoil::unknown, SlopeBand::flat, 10).lacking, Contains("Grass needs a soil group"));
-    CHECK(kind_coefficient(book(), {.cover = 3}, CoefficientSource::urbonas, 10).lacking ==
+    CHECK(kind_coefficient(coefficient_book(), {.cover = 3}, CoefficientSource::urbonas, 10).lacking ==
           "the cover book has no impervious_percent for Wood");
 }
 
 TEST_CASE("from imperviousness a paved class has 0.892, a bare one 0.04") {
-    CHECK(*kind_coefficient(book(), {.cover = 1}, CoefficientSource::urbonas, 10).value == Approx(0.892));
-    CHECK(*kind_coefficient(book(), {.cover = 0}, CoefficientSource::urbonas, 10).value == Approx(0.04));
+    CHECK(*kind_coefficient(coefficient_book(), {.cover = 1}, CoefficientSource::urbonas, 10).value == Approx(0.892));
+    CHECK(*kind_coefficient(coefficient_book(), {.cover = 0}, CoefficientSource::urbonas, 10).value == Approx(0.04));
 }
 
 TEST_CASE("in every printed land use a rarer storm, a tighter soil and a steeper slope never have less") {
@@ -72,12 +72,12 @@ TEST_CASE("an unknown land use and a share beyond 100 % are refused with what is
 }
 
 TEST_CASE("the slope of the land matters where a class has a land use, and the book only where it has something to give") {
-    CHECK(uses_slope(book(), CoefficientSource::book));
-    CHECK_FALSE(uses_slope(book(), CoefficientSource::urbonas));
+    CHECK(uses_slope(coefficient_book(), CoefficientSource::book));
+    CHECK_FALSE(uses_slope(coefficient_book(), CoefficientSource::urbonas));
     const CoverBook bare = parse_cover_book("code,name,n_typical,shallow_type,source\n1,Grass,0.2,pavement,test\n", "b.csv");
     CHECK_FALSE(uses_slope(bare, CoefficientSource::book));
     CHECK_FALSE(has_coefficients(bare, CoefficientSource::book));
-    CHECK(has_coefficients(book(), CoefficientSource::book));
+    CHECK(has_coefficients(coefficient_book(), CoefficientSource::book));
 }
 
 }  // namespace

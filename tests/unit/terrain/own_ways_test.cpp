@@ -8,7 +8,7 @@ namespace rillclock {
 namespace {
 
 /// Flow drawn in the keys of `drawings::arrows`.
-Raster<FlowCode> flow(std::string_view drawing) {
+Raster<FlowCode> drawn_flow(std::string_view drawing) {
     constexpr std::string_view keys = "89632147o#";
     const auto lines = drawings::lines_of(drawing);
     Raster<FlowCode> codes(static_cast<std::int64_t>(lines.size()), static_cast<std::int64_t>(lines[0].size()));
@@ -29,12 +29,12 @@ FlowLines lines_of(const std::vector<std::vector<Cell>>& ways) {
 const Ground cells_of_two_metres = Ground::planar(metres(2), metres(2));
 
 /// A crossing leads the water along the northern row; by the ground alone it goes round by the southern one.
-const Raster<FlowCode> led = flow(R"(
+const Raster<FlowCode> led = drawn_flow(R"(
     66662
     66662
     6666o
 )");
-const Raster<FlowCode> own = flow(R"(
+const Raster<FlowCode> own = drawn_flow(R"(
     21112
     21112
     6666o
@@ -59,7 +59,7 @@ TEST_CASE("where the ground leads the way the line does there is nothing to tell
 }
 
 TEST_CASE("an own way that leaves the data elsewhere ends there, and does not come back") {
-    const auto ways = own_ways(lines_of({{0, 1, 2, 3, 4}}), {led, flow(R"(
+    const auto ways = own_ways(lines_of({{0, 1, 2, 3, 4}}), {led, drawn_flow(R"(
         2ooo2
         2ooo2
         oooo2
@@ -72,7 +72,7 @@ TEST_CASE("an own way that leaves the data elsewhere ends there, and does not co
 TEST_CASE("lines are looked at reach by reach: below where they meet once, not once for each line above") {
     // Two lines meet in the middle of the northern row and go on as one; only beyond does the ground lead elsewhere.
     const auto both = lines_of({{0, 1, 2, 3, 4}, {7, 2}});
-    const auto ways = own_ways(both, {flow(R"(
+    const auto ways = own_ways(both, {drawn_flow(R"(
         66662
         66862
         6666o

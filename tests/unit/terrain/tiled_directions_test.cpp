@@ -7,7 +7,7 @@
 namespace rillclock {
 namespace {
 
-std::string flow(std::string_view drawing, std::int64_t side) {
+std::string tiled_flow(std::string_view drawing, std::int64_t side) {
     const Elevations z = drawings::terrain(drawing);
     return drawings::arrows(
         flow_codes(z, Ground::planar(metres(1), metres(1)), TileGrid(z.rows(), z.columns(), side), Executor(2)));
@@ -19,8 +19,8 @@ TEST_CASE("an open flat that crosses tiles is left by its shortest way") {
         95555559
         99999994
     )";
-    CHECK(flow(flat, 2) == flow(flat, 100));
-    CHECK(flow(flat, 2).substr(10, 6) == "666663");
+    CHECK(tiled_flow(flat, 2) == tiled_flow(flat, 100));
+    CHECK(tiled_flow(flat, 2).substr(10, 6) == "666663");
 }
 
 TEST_CASE("a closed flat that crosses tiles drains to where its basin is opened") {
@@ -30,7 +30,7 @@ TEST_CASE("a closed flat that crosses tiles drains to where its basin is opened"
         51111119
         99999999
     )";
-    CHECK(flow(pond, 3) == drawings::drawn(R"(
+    CHECK(tiled_flow(pond, 3) == drawings::drawn(R"(
         32222221
         o4444444
         98888887
@@ -46,8 +46,8 @@ TEST_CASE("a pit is opened through other tiles, over the lowest of its passes") 
         9754579
         9999999
     )";
-    CHECK(flow(bowl, 2) == flow(bowl, 100));
-    CHECK(flow(bowl, 2).substr(3 * 8, 7) == "666666o");
+    CHECK(tiled_flow(bowl, 2) == tiled_flow(bowl, 100));
+    CHECK(tiled_flow(bowl, 2).substr(3 * 8, 7) == "666666o");
 }
 
 TEST_CASE("falls of elevations stored as floats are compared in double precision") {

@@ -15,7 +15,7 @@ using worked::Given;
 using worked::Land;
 
 /// Sums of a few values rounded to 2⁻²⁰.
-Approx rounded(double value) {
+Approx within_rounding(double value) {
     return Approx(value).epsilon(0).margin(1e-5);
 }
 
@@ -34,11 +34,11 @@ TEST_CASE("times, lengths and the sheet index add up along a slope") {
     const Land w(slope_of(6, rules));
     CHECK(from_fixed(w.field.flow_distance(0, 0)) == 50.0);
     CHECK(from_fixed(w.field.from_divide(0, 4)) == 40.0);
-    CHECK(from_fixed(w.field.sheet_index(0, 4)) == rounded(20));
+    CHECK(from_fixed(w.field.sheet_index(0, 4)) == within_rounding(20));
     CHECK(from_fixed_area(w.field.contributing_area(0, 4)) == 500.0);
-    CHECK(from_fixed(w.field.fixed_part(0, 0)) == rounded(25));
+    CHECK(from_fixed(w.field.fixed_part(0, 0)) == within_rounding(25));
     CHECK(from_fixed(w.field.storm_part(0, 0)) ==
-          rounded(in_seconds(nrcs_sheet_formula().at_unit_storm(metres(12.5)))));
+          within_rounding(in_seconds(nrcs_sheet_formula().at_unit_storm(metres(12.5)))));
     CHECK(w.field.time_to_root(5) == StepTime{});
 }
 
@@ -99,7 +99,7 @@ TEST_CASE("where branches meet the greater sheet index and distance go on") {
                   .surface = worked::one_surface(z, 0.1, 5),
                   .rules = bare_rules()});
     const Cell junction = 4;
-    CHECK(from_fixed(w.field.from_divide[junction]) == rounded(30 + std::hypot(10, 10)));
+    CHECK(from_fixed(w.field.from_divide[junction]) == within_rounding(30 + std::hypot(10, 10)));
     CHECK(w.field.sheet_index[junction] > w.field.sheet_index[9]);
     CHECK(from_fixed_area(w.field.contributing_area[junction]) == 600.0);
 }
