@@ -1,8 +1,11 @@
 #include "last_pass.hpp"
 
+#include <algorithm>
+
 #include "rillclock/catchment/arrival_tally.hpp"
 #include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/deliver/raster_strips.hpp"
+#include "rillclock/travel/isochrone_step.hpp"
 #include "study_storms.hpp"
 
 namespace rillclock {
@@ -17,14 +20,29 @@ std::vector<StepTime> times_of_points(const LastPass& pass) {
     return times;
 }
 
+/// The greatest time to any point, under its storm.
+Duration greatest_of(const std::vector<PointHeads>& heads, const std::vector<StepTime>& times) {
+    double greatest_s = 0.0;
+    for (std::size_t i = 0; i < heads.size(); ++i) {
+        greatest_s = std::max(greatest_s, in_seconds((heads[i].last.time - times[i]).under(heads[i].storm_factor)));
+    }
+    return seconds(greatest_s);
+}
+
+/// `heads` are needed only where a study asks for so many bands.
+std::optional<IsochroneRules> isochrone_rules(const LastPass& pass, const std::vector<PointHeads>& heads, const std::vector<StepTime>& times) {
+    const IsochroneStudy& asked = pass.study.output.isochrones;
+    if (!asked.are_asked()) return std::nullopt;
+    return IsochroneRules{.step = asked.step ? *asked.step : isochrone_step(greatest_of(heads, times), *asked.bands),
+                          .catchments = pass.isochrone_catchments, .smoothed = asked.smoothed};
+}
+
 /// Has the outlines and the report's pictures gathered from the strips that the rasters are written from.
-void begin_regions(const LastPass& pass, const std::vector<StepTime>& times, RasterStory& story) {
+void begin_regions(const LastPass& pass, const std::vector<StepTime>& times, const std::optional<IsochroneRules>& rules, RasterStory& story) {
     std::vector<double> minutes;
     for (std::size_t i = 0; i < times.size(); ++i) {
         minutes.push_back(in_minutes((times[i] - story.last_point_times[i + 1]).under(story.last_point_factors[i + 1])));
     }
-    std::optional<IsochroneRules> rules;
-    if (pass.study.output.isochrones) rules = IsochroneRules{.step = *pass.study.output.isochrones};
     pass.regions.emplace(pass.terrain.grid, pass.terrain.ground, pass.tree, std::move(minutes), rules);
     story.look = [&pass](const RegionStrip& strip) {
         pass.regions->look(strip);
@@ -33,7 +51,8 @@ void begin_regions(const LastPass& pass, const std::vector<StepTime>& times, Ras
 }
 
 /// `factors`: storm factor of each point by number − 1; empty where one storm times all.
-RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, const std::vector<double>& factors) {
+RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, const std::vector<double>& factors,
+                     const std::optional<IsochroneRules>& isochrones) {
     RasterStory story{.grid = pass.terrain.grid,
                       .system = pass.terrain.system,
                       .format = pass.terrain.format,
@@ -49,7 +68,7 @@ RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, c
         story.last_point_times.push_back(last == 0 ? StepTime{} : times[last - 1]);
         story.last_point_factors.push_back(own ? factors[last - 1] : pass.travel.rules().sheet.storm_factor);
     }
-    begin_regions(pass, times, story);
+    begin_regions(pass, times, isochrones, story);
     return story;
 }
 
@@ -74,10 +93,10 @@ void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, Aft
     pass.progress.tell({.stage = stage, .done = cells, .total = cells, .finished = true});
 }
 
-void tally_all(const LastPass& pass, ArrivalTally& tally) {
+void tally_all(const LastPass& pass, ArrivalTally& tally, HistogramTally* histograms) {
     const auto look = [&](const TileDesk& desk) {
         tally.add(desk);
-        if (pass.histograms != nullptr) pass.histograms->add(desk);
+        if (histograms != nullptr) histograms->add(desk);
     };
     work_all_tiles(pass, "storms", look, [](std::int64_t, std::int64_t) {});
 }
@@ -85,7 +104,7 @@ void tally_all(const LastPass& pass, ArrivalTally& tally) {
 std::vector<PointHeads> under_one_storm_alone(const LastPass& pass, const std::vector<StepTime>& times) {
     const double factor = pass.travel.rules().sheet.storm_factor;
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
-    tally_all(pass, tally);
+    tally_all(pass, tally, nullptr);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
     add_storms(heads, times, intensities_of(pass.rain.storms));
     return heads;
@@ -94,7 +113,10 @@ std::vector<PointHeads> under_one_storm_alone(const LastPass& pass, const std::v
 std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<StepTime>& times) {
     const double factor = pass.travel.rules().sheet.storm_factor;
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
-    RasterStrips rasters(story_of(pass, times, {}), pass.travel, pass.folder);
+    // How long the step is for so many bands hangs on the greatest time, which takes a pass of its own.
+    const bool needs_heads = pass.study.output.isochrones.bands.has_value();
+    const auto isochrones = isochrone_rules(pass, needs_heads ? under_one_storm_alone(pass, times) : std::vector<PointHeads>{}, times);
+    RasterStrips rasters(story_of(pass, times, {}, isochrones), pass.travel, pass.folder);
     const auto look = [&](const TileDesk& desk) {
         tally.add(desk);
         if (pass.histograms != nullptr) pass.histograms->add(desk);
@@ -110,9 +132,9 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass, const std::vector<
 }
 
 std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, const std::vector<StepTime>& times,
-                                               const OwnStorms& storms) {
+                                               const OwnStorms& storms, HistogramTally* histograms) {
     ArrivalTally tally(pass.travel, pass.points.size(), storms.reference_factor, Storms::by_point);
-    tally_all(pass, tally);
+    tally_all(pass, tally, histograms);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, times, storms);
     if (pass.study.timing.is_kinematic()) require_settled(heads, pass.points, pass.rain);
     return heads;
@@ -120,10 +142,10 @@ std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, const std::
 
 std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector<StepTime>& times,
                                          const OwnStorms& storms) {
-    std::vector<PointHeads> heads = under_own_storms_alone(pass, times, storms);
+    std::vector<PointHeads> heads = under_own_storms_alone(pass, times, storms, pass.histograms);
     std::vector<double> factors;
     for (const PointHeads& point : heads) factors.push_back(point.storm_factor);
-    RasterStrips rasters(story_of(pass, times, factors), pass.travel, pass.folder);
+    RasterStrips rasters(story_of(pass, times, factors, isochrone_rules(pass, heads, times)), pass.travel, pass.folder);
     work_all_tiles(
         pass, "writing rasters", [&](const TileDesk& desk) { rasters.fill(desk); },
         [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
@@ -134,12 +156,11 @@ std::vector<PointHeads> under_own_storms(const LastPass& pass, const std::vector
 
 }  // namespace
 
-std::vector<PointHeads> heads_alone(const LastPass& whole) {
-    LastPass pass = whole;
-    pass.histograms = nullptr;  // those are of the times that the rasters show
+std::vector<PointHeads> heads_alone(const LastPass& pass) {
     const std::vector<StepTime> times = times_of_points(pass);
     const std::optional<OwnStorms> own = own_storms_of(pass.study, pass.travel.rules(), pass.rain);
-    return own ? under_own_storms_alone(pass, times, *own) : under_one_storm_alone(pass, times);
+    // Histograms are of the times that the rasters show.
+    return own ? under_own_storms_alone(pass, times, *own, nullptr) : under_one_storm_alone(pass, times);
 }
 
 std::vector<PointHeads> heads_and_rasters(const LastPass& pass) {

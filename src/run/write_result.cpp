@@ -71,7 +71,7 @@ void write_ground(const WorkedStudy& worked, ResultFolder& folder) {
     if (!worked.flow.line_cells.empty()) folder.write_text("own_paths.geojson", own_ways_geojson(result, worked.flow.own_ways));
 }
 
-std::string report_of(const WorkedStudy& worked, const SheetBook& book) {
+ReportText report_of(const WorkedStudy& worked, const SheetBook& book) {
     const ElevationStore& elevations = worked.terrain.elevations;
     const double metres_per_unit = worked.travel.ground().metres_per_elevation_unit;
     const ReportOverview pictures = worked.overview.take(elevations, metres_per_unit, worked.terrain.ground.cell_side());
@@ -81,7 +81,7 @@ std::string report_of(const WorkedStudy& worked, const SheetBook& book) {
 
 }  // namespace
 
-std::string write_result(const WorkedStudy& worked, ResultFolder& folder) {
+ResultTexts write_result(const WorkedStudy& worked, ResultFolder& folder) {
     std::string json = result_json(worked.result);
     const SheetBook book(json, "result.json");
     // Each of these takes as long as all the rest and keeps one processor busy.
@@ -90,10 +90,10 @@ std::string write_result(const WorkedStudy& worked, ResultFolder& folder) {
     write_texts(worked.result, folder);
     write_sheets(worked.result, book, folder);
     folder.write_text("result.json", json);
-    folder.write_text("report.html", report_of(worked, book));
+    ReportText report = report_of(worked, book);
     shapes.get();
     ground.get();
-    return json;
+    return {.json = std::move(json), .report = std::move(report)};
 }
 
 }  // namespace rillclock
