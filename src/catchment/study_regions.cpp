@@ -15,11 +15,34 @@ RegionLabel band_label(PointNumber number, std::uint32_t band) { return (static_
 
 StudyRegions::StudyRegions(const Grid& grid, const Ground& ground, const PointTree& tree, std::vector<double> minutes_to_last,
                            std::optional<IsochroneRules> isochrones)
-    : grid_(grid), ground_(ground), tree_(tree), last_(tree.last_points()), minutes_to_last_(std::move(minutes_to_last)),
-      isochrones_(isochrones), place_(tree.next.size() + 1, 0), first_place_(tree.next.size() + 1, 0), owners_(grid.columns),
-      owner_row_(static_cast<std::size_t>(grid.columns)), subareas_{RegionBorders(grid.columns), {}, owner_row_},
-      catchments_{RegionBorders(grid.columns), {}, owner_row_}, part_row_(owner_row_) {
+    : grid_(grid), ground_(ground), tree_(tree), minutes_to_last_(std::move(minutes_to_last)),
+      isochrones_(std::move(isochrones)), place_(tree.next.size() + 1, 0), first_place_(tree.next.size() + 1, 0), owners_(grid.columns),
+      owner_row_(static_cast<std::size_t>(grid.columns)), subareas_{RegionBorders(grid.columns), {}, owner_row_} {
     number_tree();
+    if (isochrones_) begin_catchments();
+}
+
+/// Puts each catchment that has bands on a level with those that neither hold it nor lie in it: that of a last point on the first, one
+/// within it on the next.
+void StudyRegions::begin_catchments() {
+    const std::size_t points = tree_.next.size();
+    std::vector<bool> is_asked(points + 1, false);
+    for (const PointNumber number : isochrones_->catchments) is_asked[number] = true;
+    std::vector<std::vector<PointNumber>> held_by(points + 1);   // by owner: the catchments with bands that it lies in, the outermost first
+    for (auto number = tree_.upstream_first.rbegin(); number != tree_.upstream_first.rend(); ++number) {
+        const PointNumber next = tree_.next_of(*number);
+        if (next != 0) held_by[*number] = held_by[next];
+        if (next == 0 || is_asked[*number]) held_by[*number].push_back(*number);
+        while (catchments_.size() < held_by[*number].size()) {
+            catchments_.push_back({.point = std::vector<PointNumber>(points + 1, 0), .minutes_below = std::vector<double>(points + 1, 0.0),
+                                   .bands = {RegionBorders(grid_.columns), {}, owner_row_}, .row = owner_row_});
+        }
+        for (std::size_t level = 0; level < held_by[*number].size(); ++level) {
+            const PointNumber point = held_by[*number][level];
+            catchments_[level].point[*number] = point;
+            catchments_[level].minutes_below[*number] = minutes_to_last_[point - 1];
+        }
+    }
 }
 
 /// Gives every point its place, so that those which drain through a point have the places just before its own.
@@ -48,8 +71,12 @@ void StudyRegions::label_row(std::span<const std::uint32_t> owners, std::span<co
         const auto band_of = [&](double time) { return static_cast<std::uint32_t>(std::clamp(time / step, 0.0, 4e9)); };
         const double time = static_cast<double>(minutes[i]);
         subareas_.row[i] = owner == 0 ? no_region : band_label(owner, band_of(time - minutes_to_last_[owner - 1]));
-        catchments_.row[i] = owner == 0 ? no_region : band_label(last_[owner], band_of(time));
-        part_row_[i] = owner == 0 ? no_region : band_label(owner, band_of(time));
+        for (CatchmentBands& catchments : catchments_) {
+            const PointNumber point = catchments.point[owner];
+            const std::uint32_t band = band_of(time - catchments.minutes_below[owner]);
+            catchments.bands.row[i] = point == 0 ? no_region : band_label(point, band);
+            catchments.row[i] = point == 0 ? no_region : band_label(owner, band);
+        }
     }
 }
 
@@ -75,15 +102,21 @@ void StudyRegions::look(const RegionStrip& strip) {
         owners_.add_row(owner_row_);
         if (!isochrones_) continue;
         add_row(subareas_, strip.window.row + r);
-        add_row(catchments_, strip.window.row + r);
-        add_areas(part_row_, ground_.cell_area(strip.window.row + r), parts_);
+        for (CatchmentBands& catchments : catchments_) {
+            add_row(catchments.bands, strip.window.row + r);
+            add_areas(catchments.row, ground_.cell_area(strip.window.row + r), catchments.parts);
+        }
     }
     if (isochrones_) check_bounds();
 }
 
 void StudyRegions::check_bounds() const {
-    const std::size_t bands = subareas_.areas.size() + catchments_.areas.size();
-    const std::size_t pieces = subareas_.borders.pieces() + catchments_.borders.pieces();
+    std::size_t bands = subareas_.areas.size();
+    std::size_t pieces = subareas_.borders.pieces();
+    for (const CatchmentBands& catchments : catchments_) {
+        bands += catchments.bands.areas.size();
+        pieces += catchments.bands.borders.pieces();
+    }
     if (bands <= isochrones_->most_bands && pieces <= isochrones_->most_pieces) return;
     throw input_error("isochrones every " + significant(in_minutes(isochrones_->step)) + " min have more than " +
                       (bands > isochrones_->most_bands ? std::to_string(isochrones_->most_bands) + " bands"
@@ -95,10 +128,17 @@ void StudyRegions::finish() {
     owners_.finish();
     if (!isochrones_) return;
     subareas_.borders.finish();
-    catchments_.borders.finish();
     list_bands(subareas_, IsochroneScope::subarea);
-    list_bands(catchments_, IsochroneScope::catchment);
-    list_parts();
+    const auto of_catchments = static_cast<std::ptrdiff_t>(bands_.size());
+    for (IsochroneBand& band : bands_) band.parts = {{.subarea = band.point, .area = band.area}};
+    for (CatchmentBands& catchments : catchments_) {
+        catchments.bands.borders.finish();
+        list_bands(catchments.bands, IsochroneScope::catchment);
+    }
+    std::sort(bands_.begin() + of_catchments, bands_.end(), [](const IsochroneBand& a, const IsochroneBand& b) {
+        return std::pair(a.point, a.number) < std::pair(b.point, b.number);
+    });
+    for (const CatchmentBands& catchments : catchments_) list_parts(catchments);
 }
 
 void StudyRegions::list_bands(const Bands& bands, IsochroneScope scope) {
@@ -108,20 +148,19 @@ void StudyRegions::list_bands(const Bands& bands, IsochroneScope scope) {
     }
 }
 
-/// Gives each band its parts: one of a subarea, those gathered on the way of a catchment.
-void StudyRegions::list_parts() {
+/// Gives each band of a level of catchments its parts.
+void StudyRegions::list_parts(const CatchmentBands& catchments) {
     std::vector<RegionLabel> labels;
-    for (const auto& [label, area] : parts_) labels.push_back(label);
+    for (const auto& [label, area] : catchments.parts) labels.push_back(label);
     std::sort(labels.begin(), labels.end());
-    std::unordered_map<RegionLabel, IsochroneBand*> catchment_bands;
+    std::unordered_map<RegionLabel, IsochroneBand*> whole_bands;
     for (IsochroneBand& band : bands_) {
-        if (band.scope == IsochroneScope::subarea) band.parts = {{.subarea = band.point, .area = band.area}};
-        else catchment_bands[band_label(band.point, band.number)] = &band;
+        if (band.scope == IsochroneScope::catchment) whole_bands[band_label(band.point, band.number)] = &band;
     }
     for (const RegionLabel label : labels) {
         const auto subarea = static_cast<PointNumber>(label >> 32U);
-        const RegionLabel whole = band_label(last_[subarea], static_cast<std::uint32_t>(label & 0xFFFFFFFFU) - 1U);
-        catchment_bands.at(whole)->parts.push_back({.subarea = subarea, .area = parts_.at(label)});
+        const RegionLabel whole = band_label(catchments.point[subarea], static_cast<std::uint32_t>(label & 0xFFFFFFFFU) - 1U);
+        whole_bands.at(whole)->parts.push_back({.subarea = subarea, .area = catchments.parts.at(label)});
     }
 }
 
@@ -131,9 +170,16 @@ std::vector<CornerPolygon> StudyRegions::catchment(PointNumber number) const {
     return owners_.outline(first_place_[number], place_[number]);
 }
 
-std::vector<CornerPolygon> StudyRegions::outline(const IsochroneBand& band) const {
-    const Bands& bands = band.scope == IsochroneScope::subarea ? subareas_ : catchments_;
-    return bands.borders.outline(band_label(band.point, band.number));
+const RegionBorders& StudyRegions::borders_of(const IsochroneBand& band) const {
+    if (band.scope == IsochroneScope::subarea) return subareas_.borders;
+    const auto level = std::find_if(catchments_.begin(), catchments_.end(), [&](const CatchmentBands& c) { return c.point[band.point] == band.point; });
+    return level->bands.borders;
+}
+
+std::vector<Polygon> StudyRegions::outline(const IsochroneBand& band) const {
+    const RegionBorders& borders = borders_of(band);
+    const RegionLabel label = band_label(band.point, band.number);
+    return isochrones_->smoothed ? borders.smooth_outline(label) : in_cells(borders.outline(label));
 }
 
 }  // namespace rillclock

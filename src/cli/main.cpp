@@ -80,7 +80,7 @@ int run_command(const CommandLine& line) {
     }
     if (!line.quiet) show_notices(outcome.notices, " in tables/review.csv; -v says them all", line.verbose);
     if (line.json) {
-        std::cout << outcome.json;
+        std::cout << json_of(outcome);
     } else if (line.quiet) {
         std::cout << outcome.folder.string() << '\n';
     } else {

@@ -65,19 +65,6 @@ std::optional<double> greatest_peak_change(const ComparedPoint& point) {
     return greatest;
 }
 
-/// All points: those that get worse, the worst first, then the others by how much their time changes.
-std::vector<std::size_t> by_change(const Comparison& comparison) {
-    std::vector<std::size_t> order(comparison.points.size());
-    std::iota(order.begin(), order.end(), std::size_t{0});
-    const auto rank = [&](std::size_t i) {
-        const ComparedPoint& point = comparison.points[i];
-        const bool is_worse = point.worsening() > comparison.tolerance;
-        return std::pair(is_worse ? 1 : 0, is_worse ? point.worsening() : std::abs(point.time_min.relative_change().value_or(0.0)));
-    };
-    std::stable_sort(order.begin(), order.end(), [&](std::size_t a, std::size_t b) { return rank(a) > rank(b); });
-    return order;
-}
-
 using TextRow = std::array<std::string, 6>;
 
 TextRow text_row(const Comparison& comparison, const ComparedPoint& point) {
@@ -109,16 +96,6 @@ std::string aligned(const std::vector<TextRow>& rows) {
         text += line + '\n';
     }
     return text;
-}
-
-std::string whole_sentence(const Comparison& comparison) {
-    const std::string tolerance = significant(100.0 * comparison.tolerance, 3) + " %";
-    const std::vector<std::size_t> worse = comparison.worse();
-    const std::string all = std::to_string(comparison.points.size());
-    if (worse.empty()) return "None of " + all + " points gets worse by more than " + tolerance + ".";
-    return std::to_string(worse.size()) + " of " + all + " points get worse by more than " + tolerance +
-           " (time of concentration shorter or peak greater); the worst is '" + comparison.points[worse.front()].name + "', by " +
-           significant(100.0 * comparison.points[worse.front()].worsening(), 3) + " %.";
 }
 
 struct PeriodRow {
@@ -161,11 +138,33 @@ std::vector<std::size_t> Comparison::worse() const {
     return places;
 }
 
+std::string comparison_sentence(const Comparison& comparison) {
+    const std::string tolerance = significant(100.0 * comparison.tolerance, 3) + " %";
+    const std::vector<std::size_t> worse = comparison.worse();
+    const std::string all = std::to_string(comparison.points.size());
+    if (worse.empty()) return "None of " + all + " points gets worse by more than " + tolerance + ".";
+    return std::to_string(worse.size()) + " of " + all + " points get worse by more than " + tolerance +
+           " (time of concentration shorter or peak greater); the worst is '" + comparison.points[worse.front()].name + "', by " +
+           significant(100.0 * comparison.points[worse.front()].worsening(), 3) + " %.";
+}
+
+std::vector<std::size_t> places_by_change(const Comparison& comparison) {
+    std::vector<std::size_t> order(comparison.points.size());
+    std::iota(order.begin(), order.end(), std::size_t{0});
+    const auto rank = [&](std::size_t i) {
+        const ComparedPoint& point = comparison.points[i];
+        const bool is_worse = point.worsening() > comparison.tolerance;
+        return std::pair(is_worse ? 1 : 0, is_worse ? point.worsening() : std::abs(point.time_min.relative_change().value_or(0.0)));
+    };
+    std::stable_sort(order.begin(), order.end(), [&](std::size_t a, std::size_t b) { return rank(a) > rank(b); });
+    return order;
+}
+
 std::string comparison_text(const Comparison& comparison, std::size_t most) {
     std::vector<TextRow> rows{{"point", "before min", "after min", "time", comparison.flow_unit.empty() ? "" : "peak", ""}};
-    const std::vector<std::size_t> order = by_change(comparison);
+    const std::vector<std::size_t> order = places_by_change(comparison);
     for (std::size_t i = 0; i < std::min(most, order.size()); ++i) rows.push_back(text_row(comparison, comparison.points[order[i]]));
-    std::string text = whole_sentence(comparison) + "\n\n" + aligned(rows);
+    std::string text = comparison_sentence(comparison) + "\n\n" + aligned(rows);
     if (order.size() > most) text += "… and " + std::to_string(order.size() - most) + " more; --json prints them all\n";
     return text;
 }
@@ -184,7 +183,7 @@ std::string comparison_table(const Comparison& comparison) {
         .column("worse_by_percent", [](const ComparedPoint& p) { return fixed_decimals(100.0 * p.worsening(), 3); })
         .column("worse", [&](const ComparedPoint& p) { return yes_or_no(p.worsening() > comparison.tolerance); });
     std::string text = table.header();
-    for (const std::size_t place : by_change(comparison)) text += table.line(comparison.points[place]);
+    for (const std::size_t place : places_by_change(comparison)) text += table.line(comparison.points[place]);
     return text;
 }
 

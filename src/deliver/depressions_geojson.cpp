@@ -26,9 +26,7 @@ std::string depressions_geojson(const StudyResult& result, std::span<const Outli
     GeographicLines lines(result.system);
     Json features = Json::array();
     for (const OutlinedDepression& outlined : depressions) {
-        const Json area = lines.area(outlined.outline);
-        features.push_back(feature(area.is_null() ? lines.point(result.grid.centre(outlined.depression.deepest)) : area,
-                                   properties(result, outlined)));
+        features.push_back(feature(lines.area(outlined.outline), properties(result, outlined)));
     }
     return collection_text(features, lines);
 }

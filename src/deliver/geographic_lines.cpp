@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "meridian_cut.hpp"
 #include "rillclock/core/error.hpp"
 
 namespace rillclock {
@@ -22,7 +23,7 @@ bool is_straight(const Place& a, const Place& b, const Place& c) {
 }
 
 /// Cuts a line at the 180th meridian, giving both sides their own end there.
-std::vector<Line> cut_at_meridian(const Line& line) {
+std::vector<Line> line_cut_at_meridian(const Line& line) {
     std::vector<Line> parts{{line.front()}};
     for (std::size_t i = 1; i < line.size(); ++i) {
         const Place& from = line[i - 1];
@@ -46,6 +47,16 @@ Json coordinates(const Line& line) {
     return array;
 }
 
+Json coordinates(const std::vector<Polygon>& polygons) {
+    Json all = Json::array();
+    for (const Polygon& polygon : polygons) {
+        Json rings = Json::array();
+        for (const Line& ring : polygon.rings) rings.push_back(coordinates(ring));
+        all.push_back(std::move(rings));
+    }
+    return all;
+}
+
 }  // namespace
 
 std::vector<Place> without_collinear(const std::vector<Place>& line) {
@@ -67,56 +78,56 @@ std::vector<Place> GeographicLines::in_degrees(const std::vector<Place>& line) {
         places.push_back({seven_decimals(degrees->x), seven_decimals(degrees->y)});
         low_ = {std::min(low_.x, places.back().x), std::min(low_.y, places.back().y)};
         high_ = {std::max(high_.x, places.back().x), std::max(high_.y, places.back().y)};
+        double& nearest = places.back().x < 0 ? greatest_western_ : least_eastern_;
+        nearest = places.back().x < 0 ? std::max(nearest, places.back().x) : std::min(nearest, places.back().x);
     }
     return places;
 }
 
 Json GeographicLines::geometry(const std::vector<Place>& line) {
-    const std::vector<Line> parts = cut_at_meridian(geographic(line));
+    const std::vector<Line> parts = line_cut_at_meridian(geographic(line));
+    crosses_ = crosses_ || parts.size() > 1;
     if (parts.size() == 1) return {{"type", "LineString"}, {"coordinates", coordinates(parts.front())}};
     Json all = Json::array();
     for (const Line& part : parts) all.push_back(coordinates(part));
     return {{"type", "MultiLineString"}, {"coordinates", all}};
 }
 
-Json GeographicLines::area(const std::vector<Polygon>& polygons) {
-    Json all = Json::array();
-    for (const Polygon& polygon : polygons) {
-        Json rings = Json::array();
-        for (const std::vector<Place>& ring : polygon.rings) {
-            const Line places = geographic(ring);
-            if (cut_at_meridian(places).size() > 1) return nullptr;
-            rings.push_back(coordinates(places));
+std::vector<Polygon> GeographicLines::cut(std::vector<Polygon> in_degrees) {
+    std::vector<Polygon> parts = cut_at_meridian(in_degrees);
+    for (Polygon& part : parts) {
+        for (Line& ring : part.rings) {
+            for (Place& at : ring) at.y = seven_decimals(at.y);
         }
-        all.push_back(std::move(rings));
     }
+    crosses_ = crosses_ || parts.size() > in_degrees.size();
+    return parts;
+}
+
+Json GeographicLines::area(const std::vector<Polygon>& polygons) {
+    std::vector<Polygon> in_degrees;
+    for (const Polygon& polygon : polygons) {
+        in_degrees.emplace_back();
+        for (const Line& ring : polygon.rings) in_degrees.back().rings.push_back(geographic(ring));
+    }
+    Json all = coordinates(cut(std::move(in_degrees)));
     if (all.size() == 1) return {{"type", "Polygon"}, {"coordinates", all.front()}};
     return {{"type", "MultiPolygon"}, {"coordinates", std::move(all)}};
 }
 
-Json GeographicLines::point(const Place& place) {
-    const Place degrees = geographic({place}).front();
-    return {{"type", "Point"}, {"coordinates", {degrees.x, degrees.y}}};
-}
-
 Json GeographicLines::geometry(const std::vector<Polygon>& polygons) {
-    Json all = Json::array();
+    std::vector<Polygon> parts;
     for (const Polygon& polygon : polygons) {
-        Json rings = Json::array();
-        for (const Line& ring : polygon.rings) {
-            Line closed = in_degrees(ring);
-            for (Place& place : closed) {
-                if (place.x - closed.front().x > 180.0) place.x -= 360.0;
-                if (place.x - closed.front().x < -180.0) place.x += 360.0;
-            }
-            closed.push_back(closed.front());
-            rings.push_back(coordinates(closed));
-        }
-        all.push_back(rings);
+        parts.emplace_back();
+        for (const Line& ring : polygon.rings) parts.back().rings.push_back(in_degrees(ring));
     }
-    return {{"type", "MultiPolygon"}, {"coordinates", all}};
+    return {{"type", "MultiPolygon"}, {"coordinates", coordinates(cut(std::move(parts)))}};
 }
 
-Json GeographicLines::bbox() const { return Json::array({low_.x, low_.y, high_.x, high_.y}); }
+Json GeographicLines::bbox() const {
+    // A box around the 180th meridian has its western side east of it (RFC 7946, section 5.2).
+    if (crosses_) return Json::array({least_eastern_, low_.y, greatest_western_, high_.y});
+    return Json::array({low_.x, low_.y, high_.x, high_.y});
+}
 
 }  // namespace rillclock

@@ -20,21 +20,24 @@ public:
 
     /// A LineString, or a MultiLineString where the line crosses the 180th meridian.
     [[nodiscard]] nlohmann::ordered_json geometry(const std::vector<Place>& line);
-    /// A Polygon, or a MultiPolygon of several; null where a ring crosses the 180th meridian. Rings must be closed.
+    /// A Polygon, or a MultiPolygon of several, or of the parts of one that crosses the 180th meridian. Rings must be closed.
     [[nodiscard]] nlohmann::ordered_json area(const std::vector<Polygon>& polygons);
-    [[nodiscard]] nlohmann::ordered_json point(const Place& place);
-    /// A MultiPolygon; rings keep all their corners. One that crosses the 180th meridian is not cut: its longitudes go on beyond 180 degrees.
+    /// A MultiPolygon, cut at the 180th meridian; rings keep all their corners.
     [[nodiscard]] nlohmann::ordered_json geometry(const std::vector<Polygon>& polygons);
-    /// [west, south, east, north] of all lines so far.
+    /// [west, south, east, north] of all so far; the west is greater than the east where any of them crosses the 180th meridian.
     [[nodiscard]] nlohmann::ordered_json bbox() const;
 
 private:
+    [[nodiscard]] std::vector<Polygon> cut(std::vector<Polygon> in_degrees);
     [[nodiscard]] std::vector<Place> geographic(const std::vector<Place>& line);
     [[nodiscard]] std::vector<Place> in_degrees(const std::vector<Place>& places);
 
     Transformation to_wgs84_;
     Place low_{180.0, 90.0};
     Place high_{-180.0, -90.0};
+    double least_eastern_ = 180.0;       ///< longitude of those that are not negative
+    double greatest_western_ = -180.0;   ///< of the negative ones
+    bool crosses_ = false;               ///< whether any has been cut
 };
 
 }  // namespace rillclock

@@ -4,13 +4,13 @@
 
 #include "feature_collection.hpp"
 #include "geographic_lines.hpp"
+#include "json_values.hpp"
+#include "network_words.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/study_geopackage.hpp"
 
 namespace rillclock {
 namespace {
-
-using Json = nlohmann::ordered_json;
 
 Json parts_json(const StudyResult& result, const IsochroneRow& row) {
     Json parts = Json::array();
@@ -40,7 +40,9 @@ Json properties_of(const StudyResult& result, const IsochroneRow& row) {
             {"area_m2", to_decimals(from_fixed_area(row.band->area), 1)},
             {"area_until_m2", to_decimals(from_fixed_area(row.area_until), 1)},
             {"share_until", to_decimals(static_cast<double>(row.area_until) / static_cast<double>(row.area_in_all), 6)},
-            {"subareas", parts_json(result, row)}};
+            {"subareas", parts_json(result, row)},
+            {"borders", border_words(*result.isochrones)},
+            {"stated_above", text_or_null(stated_in_words(result, result.network.points[row.band->point - 1].stated_above))}};
     add_runoff(result, row, json);
     return json;
 }
@@ -63,18 +65,26 @@ std::string_view words(IsochroneScope scope) {
     return "";
 }
 
-std::vector<Polygon> placed(const std::vector<CornerPolygon>& polygons, const Grid& grid) {
-    std::vector<Polygon> shapes;
-    for (const CornerPolygon& polygon : polygons) {
-        shapes.emplace_back();
-        for (const CornerRing& ring : polygon.rings) {
-            Line line;
-            for (const Corner& corner : ring) line.push_back({grid.left + corner.column * grid.cell_width, grid.top - corner.row * grid.cell_height});
-            shapes.back().rings.push_back(std::move(line));
+std::string_view border_words(const IsochroneRules& rules) { return rules.smoothed ? "smoothed" : "cells"; }
+
+std::string isochrone_description(const StudyResult& result) {
+    const IsochroneRules& rules = *result.isochrones;
+    std::string text = "where water takes between two times to the point, in bands of " + significant(in_minutes(rules.step), 6) + " min";
+    if (rules.smoothed) text += "; borders are smoothed by cutting corners of cells off, less than half a cell; areas are those of the cells";
+    if (has_stated_times(result)) text += "; " + std::string(ground_times_words);
+    return text;
+}
+
+std::vector<Polygon> placed(std::vector<Polygon> in_cells, const Grid& grid) {
+    for (Polygon& polygon : in_cells) {
+        for (Line& ring : polygon.rings) {
+            for (Place& at : ring) at = {grid.left + at.x * grid.cell_width, grid.top - at.y * grid.cell_height};
         }
     }
-    return shapes;
+    return in_cells;
 }
+
+std::vector<Polygon> placed(const std::vector<CornerPolygon>& polygons, const Grid& grid) { return placed(in_cells(polygons), grid); }
 
 std::vector<IsochroneRow> isochrone_rows(const StudyResult& result, const StudyRegions& regions) {
     std::vector<IsochroneRow> rows;
@@ -104,7 +114,7 @@ std::string isochrones_geojson(const StudyResult& result, const StudyRegions& re
                               {"geometry", shapes.geometry(placed(regions.outline(*row.band), result.grid))}};
         features += (features.empty() ? "" : ",\n") + feature.dump();
     }
-    std::string text = "{\"type\":\"FeatureCollection\",";
+    std::string text = "{\"type\":\"FeatureCollection\",\"description\":" + Json(isochrone_description(result)).dump() + ",";
     if (!features.empty()) text += "\"bbox\":" + shapes.bbox().dump() + ",";
     return text + "\"features\":[\n" + features + "\n]}\n";
 }

@@ -26,9 +26,17 @@ struct IsochroneRow {
 [[nodiscard]] std::vector<IsochroneRow> isochrone_rows(const StudyResult& result, const StudyRegions& regions);
 /// "subarea", "catchment".
 [[nodiscard]] std::string_view words(IsochroneScope scope);
+/// "cells", or "smoothed".
+[[nodiscard]] std::string_view border_words(const IsochroneRules& rules);
+/// What is said wherever times of cells stand beside a network with pipes or stated times.
+inline constexpr std::string_view ground_times_words =
+    "times are those over the ground: what pipes and stated times change is not in them, but in the times of the points";
+/// What the bands are and are not, for whoever opens the layer.
+[[nodiscard]] std::string isochrone_description(const StudyResult& result);
 /// The subareas within a band, with the area that each has of it in m²: "Weir 1250.0; Mill bridge 475.5".
 [[nodiscard]] std::string parts_in_words(const StudyResult& result, const IsochroneBand& band);
-/// Outlines in the coordinates of the grid.
+/// Outlines in the coordinates of the grid; the first ones count columns and rows.
+[[nodiscard]] std::vector<Polygon> placed(std::vector<Polygon> in_cells, const Grid& grid);
 [[nodiscard]] std::vector<Polygon> placed(const std::vector<CornerPolygon>& polygons, const Grid& grid);
 
 }  // namespace rillclock

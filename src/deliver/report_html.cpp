@@ -5,6 +5,7 @@
 #include <string_view>
 
 #include "html_text.hpp"
+#include "isochrone_rows.hpp"
 #include "report_files.hpp"
 #include "report_parts.hpp"
 #include "rillclock/deliver/cautions.hpp"
@@ -46,12 +47,27 @@ std::string cell_text(const Grid& grid, const ReferenceSystem& system) {
     return significant(grid.cell_width, 5) + name + " × " + significant(grid.cell_height, 5) + name;
 }
 
+/// No clock is read, so that the same inputs give the same bytes: the day is the study's own word, and the files are told by their checksums.
+std::string when(const StudyResult& result) {
+    std::string html = result.study.date.empty() ? "No day is stated; <code>date</code> in the study file states one."
+                                                 : "State of " + html_text(result.study.date) + ".";
+    if (!result.study.scenario.empty()) {
+        html += " This is the scenario " + html_text(result.study.scenario) + "; <a href=\"../report.html\">the study's own report</a> has the two side by side.";
+    }
+    return "<p class=\"where\">" + html + "</p>\n";
+}
+
 std::string where(const StudyResult& result) {
+    constexpr std::size_t digits_shown = 8;
     std::string inputs;
-    for (const InputFile& file : result.inputs) inputs += (inputs.empty() ? "" : "; ") + file.role + " " + file.name;
+    for (const InputFile& file : result.inputs) {
+        inputs += (inputs.empty() ? "" : "; ") + html_text(file.role + " " + file.name) + " <code title=\"SHA-256 " + html_text(file.sha256) + "\">" +
+                  html_text(file.sha256.substr(0, digits_shown)) + "</code>";
+    }
     const Grid& grid = result.grid;
     return "<p class=\"where\">" + html_text(result.system.name()) + ", " + std::to_string(grid.columns) + " × " + std::to_string(grid.rows) +
-           " cells of " + html_text(cell_text(grid, result.system)) + ". Made from " + html_text(inputs) + ".</p>\n";
+           " cells of " + html_text(cell_text(grid, result.system)) + ". Made from " + inputs +
+           " (each with the beginning of its SHA-256; result.json has all of it).</p>\n";
 }
 
 std::string caution_box() {
@@ -80,7 +96,7 @@ std::string map_part(const ReportMatter& matter) {
     return "<figure class=\"map\"><div id=\"map\" class=\"only-scripted\" role=\"application\" aria-label=\"map of travel times, paths and points; the "
            "table of points leads to the same\"></div>" + map_pictures(matter) + "<noscript><p>Without scripts the map shows relief and travel times alone.</p></noscript>" +
            map_legend(matter) + "<figcaption>Travel time to the last point on the way down, in the projection of the elevations, over shaded relief; isochrones are drawn where the mean over nine dots enters the next class; "
-           "governing paths by regime." + map_reduction(matter) + "<span id=\"outlines\"></span></figcaption></figure>\n";
+           "governing paths by regime." + (has_stated_times(matter.result) ? " Here " + std::string(ground_times_words) + "." : "") + map_reduction(matter) + "<span id=\"outlines\"></span></figcaption></figure>\n";
 }
 
 bool is_made_by_part(const StudyResult& result, const Outlet& outlet) {
@@ -218,17 +234,18 @@ std::string foot() {
 
 }  // namespace
 
-std::string report_html(const ReportMatter& matter) {
+ReportText report_html(const ReportMatter& matter) {
     const std::string map = map_part(matter);
     const std::string data = map_data(matter);
     const Sections sections = sections_of(matter, room_for_sections(matter, map.size() + data.size()));
     std::string html = head(matter.result);
-    html += "<header><h1>" + html_text(title_of(matter.result)) + "</h1>\n" + where(matter.result) + "</header>\n<main>\n";
+    html += "<header><h1>" + html_text(title_of(matter.result)) + "</h1>\n" + when(matter.result) + where(matter.result) + "</header>\n<main>\n";
     html += findings(matter.result) + caution_box();
-    html += "<div class=\"split\">" + map + points_table(matter, sections) + "</div>\n" + eye(matter.result);
-    html += reduced_note(sections, matter.result.outlets.size()) + sections.html + "</main>\n" + foot();
-    html += "<script type=\"application/json\" id=\"map-data\">" + data + "</script>\n";
-    return html + "<script>" + std::string(leaflet_script()) + "</script>\n<script>" + std::string(report_script()) + "</script>\n</body>\n</html>\n";
+    html += "<div class=\"split\">" + map + points_table(matter, sections) + "</div>\n" + eye(matter.result) + drawn_section(matter.result);
+    std::string rest = reduced_note(sections, matter.result.outlets.size()) + sections.html + "</main>\n" + foot();
+    rest += "<script type=\"application/json\" id=\"map-data\">" + data + "</script>\n";
+    rest += "<script>" + std::string(leaflet_script()) + "</script>\n<script>" + std::string(report_script()) + "</script>\n</body>\n</html>\n";
+    return {.before = std::move(html), .after = std::move(rest)};
 }
 
 }  // namespace rillclock

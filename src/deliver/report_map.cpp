@@ -124,26 +124,61 @@ double path_apart(const ReportMatter& matter) {
     return std::max(apart_on_map(matter), thinned > 1.0 ? std::ceil(thinned) : 0.0);
 }
 
+/// Outlines as lists of rings, until all of them have as many corners as the map may hold.
+class AreaJson {
+public:
+    explicit AreaJson(double apart) : apart_(apart) {}
+
+    Json of(const std::vector<CornerPolygon>& polygons) {
+        Json shapes = Json::array();
+        if (corners_ > most_corners) return shapes;
+        for (const CornerPolygon& polygon : polygons) {
+            Json rings = Json::array();
+            for (const CornerRing& ring : polygon.rings) {
+                CellLine line(apart_);
+                for (const Corner& corner : ring) line.add(corner.column, corner.row);
+                corners_ += line.flat().size() / 2;
+                if (line.flat().size() >= 6) rings.push_back(line.flat());
+            }
+            if (!rings.empty()) shapes.push_back(rings);
+        }
+        return shapes;
+    }
+
+private:
+    double apart_;
+    std::size_t corners_ = 0;
+};
+
 Json areas_json(const ReportMatter& matter) {
     Json areas = Json::array();
-    std::size_t corners = 0;
-    for (const Outlet& outlet : matter.result.outlets) {
-        Json polygons = Json::array();
-        if (corners <= most_corners) {
-            for (const CornerPolygon& polygon : matter.regions.subarea(outlet.number)) {
-                Json rings = Json::array();
-                for (const CornerRing& ring : polygon.rings) {
-                    CellLine line(apart_on_map(matter));
-                    for (const Corner& corner : ring) line.add(corner.column, corner.row);
-                    corners += line.flat().size() / 2;
-                    if (line.flat().size() >= 6) rings.push_back(line.flat());
-                }
-                if (!rings.empty()) polygons.push_back(rings);
-            }
-        }
-        areas.push_back(polygons);
-    }
+    AreaJson json(apart_on_map(matter));
+    for (const Outlet& outlet : matter.result.outlets) areas.push_back(json.of(matter.regions.subarea(outlet.number)));
     return areas;
+}
+
+/// Land that is in a hand-drawn catchment alone, and in that of the elevations alone, told apart by dashes beside colour.
+struct DifferenceLook {
+    const char* name;
+    const char* colour;
+    const char* dash;
+};
+constexpr DifferenceLook drawn_only_look{"drawn only", "#e69f00", "5 3"};
+constexpr DifferenceLook found_only_look{"by the elevations only", "#0072b2", ""};
+
+Json differences_json(const ReportMatter& matter) {
+    Json drawn = Json::array();
+    Json found = Json::array();
+    AreaJson json(apart_on_map(matter));
+    for (const DrawnDifference& one : matter.result.drawn) {
+        drawn.push_back(json.of(one.drawn_only));
+        found.push_back(json.of(one.found_only));
+    }
+    Json all = Json::array();
+    for (const auto& [look, areas] : {std::pair(drawn_only_look, drawn), std::pair(found_only_look, found)}) {
+        all.push_back({{"colour", look.colour}, {"dash", look.dash}, {"areas", areas}});
+    }
+    return all;
 }
 
 Json map_path(const ReportMatter& matter, const Outlet& outlet, double apart) {
@@ -255,6 +290,11 @@ std::string line_swatch(const std::string& colour, int weight, const std::string
            std::to_string(weight) + "\" stroke-dasharray=\"" + dash + "\"/></svg>" + text + "</li>";
 }
 
+std::string area_swatch(const std::string& colour, const std::string& dash, const std::string& text) {
+    return "<li><svg width=\"26\" height=\"16\" aria-hidden=\"true\"><rect x=\"1\" y=\"1\" width=\"24\" height=\"14\" fill=\"" + colour +
+           "\" fill-opacity=\"0.5\" stroke=\"" + colour + "\" stroke-width=\"2\" stroke-dasharray=\"" + dash + "\"/></svg>catchment " + text + "</li>";
+}
+
 /// JSON may stand in a script element: no "<" begins a tag there.
 std::string for_script(const Json& json) {
     std::string safe;
@@ -275,7 +315,8 @@ std::string map_data(const ReportMatter& matter) {
     }
     const Grid& grid = matter.result.grid;
     return for_script({{"rows", grid.rows}, {"columns", grid.columns}, {"tall", grid.cell_height / grid.cell_width}, {"regimes", regimes_json()}, {"points", map_points(matter)}, {"areas", areas_json(matter)}, {"paths", paths},
-                       {"longest", longest}, {"pipes", pipes_json(matter)}, {"labels", labels_json(matter, classes)}});
+                       {"longest", longest}, {"pipes", pipes_json(matter)}, {"labels", labels_json(matter, classes)},
+                       {"differences", differences_json(matter)}});
 }
 
 std::string map_reduction(const ReportMatter& matter) {
@@ -308,6 +349,9 @@ std::string map_legend(const ReportMatter& matter) {
         html += line_swatch(regime["colour"], regime["weight"], regime["dash"], regime["name"].get<std::string>());
     }
     if (!matter.result.network.pipes.empty()) html += line_swatch("currentColor", 3, "1 6", "pipe");
+    if (!matter.result.drawn.empty()) {
+        for (const DifferenceLook& look : {drawn_only_look, found_only_look}) html += area_swatch(look.colour, look.dash, look.name);
+    }
     return html + line_swatch("#cc79a7", 4, "2 7", "longest path to the chosen point") + "</ul>";
 }
 

@@ -16,6 +16,9 @@ enum class SectionDetail {
 /// The section of one point: key figures, what is stated, notices, charts with their tables, segments, ground, and its calculation sheet.
 [[nodiscard]] std::string point_section(const ReportMatter& matter, const Outlet& outlet, SectionDetail detail);
 
+/// Hand-drawn catchments beside those of the elevations: areas and what they have in common. Nothing where none are drawn.
+[[nodiscard]] std::string drawn_section(const StudyResult& result);
+
 /// What of the map was reduced, in sentences; nothing where nothing was.
 [[nodiscard]] std::string map_reduction(const ReportMatter& matter);
 

@@ -54,6 +54,9 @@ std::string facts(const StudyResult& result, const Outlet& outlet) {
     html += fact("Longest path", significant(scale.length(from_fixed(outlet.longest.summary.length)), 4) + m + ", " + shown_minutes(outlet.longest.seconds) + " min");
     html += fact("By end-to-end slopes", shown_minutes(outlet.governing.end_to_end_s) + " min");
     if (spread) html += fact("Other methods", shown_minutes(in_seconds(spread->lowest)) + " to " + shown_minutes(in_seconds(spread->highest)) + " min");
+    for (const DrawnDifference& one : result.drawn) {
+        if (one.point == outlet.number) html += fact("Drawn catchment", significant(scale.area(from_fixed_area(one.drawn)), 4) + area + ", " + fixed_decimals(100.0 * one.overlap(), 1) + " % in common");
+    }
     html += network_facts(result, outlet);
     const PointNumber next = result.network.points[outlet.number - 1].next;
     const std::string by = result.network.edits[outlet.number - 1].pipe == nullptr ? "" : ", by a pipe";

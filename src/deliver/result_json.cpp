@@ -7,6 +7,7 @@
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/version.hpp"
 #include "rillclock/io/library_versions.hpp"
+#include "isochrone_rows.hpp"
 #include "json_text.hpp"
 #include "json_values.hpp"
 #include "network_words.hpp"
@@ -123,6 +124,14 @@ Json soil_parameters(const SurfaceStudy& surface) {
     return surface.soil.file ? Json("raster") : Json(nullptr);
 }
 
+Json isochrone_parameters(const StudyResult& result) {
+    const IsochroneStudy& stated = result.study.output.isochrones;
+    return {{"step_min", in_minutes(result.isochrones->step)},
+            {"bands_at_most", stated.bands ? Json(*stated.bands) : Json(nullptr)},
+            {"catchments", stated.catchments},
+            {"borders", border_words(*result.isochrones)}};
+}
+
 Json parameters_json(const StudyResult& result) {
     Json json = {{"terrain", terrain_parameters(result)},
             {"sheet", sheet_parameters(result)},
@@ -136,6 +145,7 @@ Json parameters_json(const StudyResult& result) {
             {"shortest_segment_m", in_metres(result.resolved.shortest_segment)}};
     if (result.rain.source) json["rain"] = rain_json(result);
     if (result.peaks.are_there()) json["peaks"] = peak_parameters_json(result.study);
+    if (result.isochrones != nullptr) json["isochrones"] = isochrone_parameters(result);
     return json;
 }
 
@@ -413,6 +423,7 @@ std::vector<std::string> outlet_texts(const StudyResult& result, const Executor&
 
 std::string result_json(const StudyResult& result, const Executor& executor) {
     Json json = {{"title", result.study.title},
+                       {"date", text_or_null(result.study.date)},
                        {"scenario", text_or_null(result.study.scenario)},
                        {"scenarios", scenarios_json(result.study)},
                        {"report_units", result.study.report_units == ReportUnits::us ? "us" : "si"},

@@ -6,6 +6,7 @@
 #include "isochrone_rows.hpp"
 #include "layer_writer.hpp"
 #include "network_layers.hpp"
+#include "network_words.hpp"
 #include "palette.hpp"
 #include "segment_rows.hpp"
 
@@ -160,7 +161,7 @@ void add_runoff_fields(const StudyResult& result, LayerWriter<IsochroneRow>& lay
 
 void write_isochrones(const StudyResult& result, const StudyRegions& regions, VectorFile& file) {
     const std::vector<IsochroneRow> rows = isochrone_rows(result, regions);
-    LayerWriter<IsochroneRow> layer(file, {.name = "isochrones", .description = "where water takes between two times to the point",
+    LayerWriter<IsochroneRow> layer(file, {.name = "isochrones", .description = isochrone_description(result),
                                            .geometry = LayerGeometry::polygons, .style = band_style(rows)});
     layer.field("point", FieldKind::text, "name of the design point", [](const IsochroneRow& r) { return r.outlet->point.name; })
         .field("of", FieldKind::text, "subarea, or the whole catchment of a last point", [](const IsochroneRow& r) { return std::string(words(r.band->scope)); })
@@ -173,7 +174,14 @@ void write_isochrones(const StudyResult& result, const StudyRegions& regions, Ve
             return number(static_cast<double>(r.area_until) / static_cast<double>(r.area_in_all));
         })
         .field("subareas", FieldKind::text, "the subareas within it, with the area of each in m2",
-               [&result](const IsochroneRow& r) { return parts_in_words(result, *r.band); });
+               [&result](const IsochroneRow& r) { return parts_in_words(result, *r.band); })
+        .field("borders", FieldKind::text, "cells, or smoothed: by less than half a cell; areas are those of the cells",
+               [&result](const IsochroneRow&) { return std::string(border_words(*result.isochrones)); })
+        .field("stated_above", FieldKind::text, "what is stated here or above in place of what is computed; stated times and those of pipes are not in the bands",
+               [&result](const IsochroneRow& r) {
+                   const std::string stated = stated_in_words(result, result.network.points[r.band->point - 1].stated_above);
+                   return stated.empty() ? FieldValue() : FieldValue(stated);
+               });
     add_runoff_fields(result, layer);
     layer.begin();
     for (const IsochroneRow& row : rows) layer.add(placed(regions.outline(*row.band), result.grid), row);

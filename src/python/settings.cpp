@@ -36,14 +36,27 @@ std::vector<double> numbers(const py::handle& list) {
     return numbers;
 }
 
+bool is_list_of_texts(const py::handle& list) {
+    return py::len(list) > 0 && std::all_of(list.begin(), list.end(), [](const py::handle& item) { return py::isinstance<py::str>(item); });
+}
+
+std::vector<std::string> texts(const py::handle& list) {
+    std::vector<std::string> texts;
+    for (const py::handle item : list) texts.push_back(item.cast<std::string>());
+    return texts;
+}
+
 decltype(StudyValue::value) value_of(const py::handle& value, const std::string& key) {
     if (py::isinstance<py::str>(value)) return value.cast<std::string>();
     if (py::isinstance<py::bool_>(value)) return value.cast<bool>();
     if (PyIndex_Check(value.ptr()) != 0) return value.cast<std::int64_t>();
-    if (py::isinstance<py::list>(value) || py::isinstance<py::tuple>(value)) return numbers(value);
+    if (py::isinstance<py::list>(value) || py::isinstance<py::tuple>(value)) {
+        if (is_list_of_texts(value)) return texts(value);
+        return numbers(value);
+    }
     if (const auto number = number_of(value)) return *number;
     if (PyObject_HasAttrString(value.ptr(), "__fspath__") != 0) return py::str(value).cast<std::string>();
-    throw input_error("the setting " + key + " is " + shown(value) + "; give a text, a number, a boolean or a list of numbers");
+    throw input_error("the setting " + key + " is " + shown(value) + "; give a text, a number, a boolean, or a list of numbers or texts");
 }
 
 using Use = std::function<void(const std::string& key, const StudyValue& value)>;

@@ -1,6 +1,7 @@
 #include "rillclock/raster/region_outlines.hpp"
 
 #include <algorithm>
+#include <array>
 #include <map>
 #include <tuple>
 #include <unordered_map>
@@ -109,6 +110,18 @@ private:
 
 }  // namespace
 
+std::vector<Polygon> in_cells(const std::vector<CornerPolygon>& polygons) {
+    std::vector<Polygon> shapes;
+    for (const CornerPolygon& polygon : polygons) {
+        shapes.emplace_back();
+        for (const CornerRing& ring : polygon.rings) {
+            shapes.back().rings.emplace_back();
+            for (const Corner& corner : ring) shapes.back().rings.back().push_back({static_cast<double>(corner.column), static_cast<double>(corner.row)});
+        }
+    }
+    return shapes;
+}
+
 /// Links edges to rings.
 class RegionBorders::Tracer {
 public:
@@ -200,6 +213,8 @@ void RegionBorders::add_vertical(std::span<const RegionLabel> labels) {
         const RegionLabel east = column < labels.size() ? labels[column] : no_region;
         if (west_above != west || east_above != east) {
             const auto line = static_cast<std::uint32_t>(column);
+            const int borders = int{west_above != east_above} + int{west != east} + int{west_above != west} + int{east_above != east};
+            if (borders > 2) meetings_.push_back(key_of({line, row_}));
             if (west_above != east_above) add_edge(west_above, east_above, {line, row_}, {line, began_at_[column]});
             began_at_[column] = row_;
         }
@@ -245,6 +260,40 @@ std::vector<CornerPolygon> RegionBorders::outline(RegionLabel first, RegionLabel
     std::vector<CornerRing> rings = Tracer(std::move(own)).rings();
     if (first != last) std::for_each(rings.begin(), rings.end(), drop_straight_corners);
     return HoleKeeper(std::move(rings)).polygons();
+}
+
+/// A straight run between two corners is cut at the middle of its first and its last side of a cell.
+Line RegionBorders::smooth_ring(const CornerRing& ring) const {
+    Line line;
+    const auto add = [&](double column, double row) {
+        if (line.empty() || line.back().x != column || line.back().y != row) line.push_back({column, row});
+    };
+    for (std::size_t i = 0; i < ring.size(); ++i) {
+        const Corner& before = ring[(i + ring.size() - 1) % ring.size()];
+        const Corner& at = ring[i];
+        const Corner& after = ring[(i + 1) % ring.size()];
+        const unsigned arriving = heading(before, at);
+        const unsigned leaving = heading(at, after);
+        const bool stays = arriving == leaving || std::binary_search(meetings_.begin(), meetings_.end(), key_of(at));
+        constexpr std::array<std::pair<double, double>, 4> half_step{{{0.5, 0.0}, {0.0, -0.5}, {-0.5, 0.0}, {0.0, 0.5}}};
+        if (stays) {
+            add(at.column, at.row);
+            continue;
+        }
+        add(at.column - half_step[arriving].first, at.row - half_step[arriving].second);
+        add(at.column + half_step[leaving].first, at.row + half_step[leaving].second);
+    }
+    if (line.size() > 1 && line.front().x == line.back().x && line.front().y == line.back().y) line.pop_back();
+    return line;
+}
+
+std::vector<Polygon> RegionBorders::smooth_outline(RegionLabel label) const {
+    std::vector<Polygon> smoothed;
+    for (const CornerPolygon& polygon : outline(label)) {
+        smoothed.emplace_back();
+        for (const CornerRing& ring : polygon.rings) smoothed.back().rings.push_back(smooth_ring(ring));
+    }
+    return smoothed;
 }
 
 }  // namespace rillclock

@@ -175,16 +175,17 @@ private:
             report_.facts.push_back("catchments: " + std::to_string(stated->drawn.size()) + " drawn, whose points will stand where their water leaves them");
             return;
         }
-        std::size_t inside = 0;
+        std::vector<std::string> names;
         for (const StatedPoint& point : stated->points) {
             if (terrain_->grid().at(point.place)) {
-                ++inside;
+                names.push_back(point.name);
             } else {
                 report_.notices.push_back({.code = "point-off-data",
                                            .text = "the point '" + point.name + "' lies off the elevation data and will be left out",
                                            .point = point.name, .place = point.place});
             }
         }
+        const std::size_t inside = names.size();
         report_.facts.push_back("points: " + std::to_string(stated->points.size()) + ", " + std::to_string(inside) +
                                 " of them within the elevations");
         if (study_.points.area) {
@@ -193,6 +194,7 @@ private:
         }
         if (const std::string left_out = words_on_left_out_paths(inside); !left_out.empty()) report_.facts.push_back("paths: " + left_out);
         if (const std::string left_out = words_on_left_out_catchments(study_, inside); !left_out.empty()) report_.facts.push_back("catchments: " + left_out);
+        attempt([&] { (void)isochrone_catchments(study_, names); });
         if (inside == 0) report_.problems.push_back("none of the points in '" + *study_.points.file +
                                                     "' lies within the elevations; check their reference system");
     }

@@ -173,7 +173,7 @@ void write_change(ValueRaster& before, ValueRaster& after, ResultFolder& folder,
 
 }  // namespace
 
-CompareOutcome compare_two(const NamedResult& before, const NamedResult& after, double tolerance, ResultFolder* into,
+ComparedResults compare_two(const NamedResult& before, const NamedResult& after, double tolerance, ResultFolder* into,
                            const Progress& progress) {
     ResultTables old_tables = ResultTables::of(before.folder);
     ResultTables new_tables = ResultTables::of(after.folder);
@@ -183,14 +183,15 @@ CompareOutcome compare_two(const NamedResult& before, const NamedResult& after, 
     ValueRaster old_times = travel_time_of(before.folder);
     ValueRaster new_times = travel_time_of(after.folder);
     require_same_grid(old_tables, new_tables, old_times, new_times);
-    CompareOutcome outcome{.text = comparison_text(comparison, most_rows_shown), .json = comparison_json(comparison),
-                           .worse = comparison.worse().size(), .folder = {}};
-    if (into == nullptr) return outcome;
+    ComparedResults compared{.outcome = {.text = comparison_text(comparison, most_rows_shown), .json = comparison_json(comparison),
+                                         .worse = comparison.worse().size(), .folder = {}},
+                             .comparison = comparison};
+    if (into == nullptr) return compared;
     write_change(old_times, new_times, *into, progress);
     into->write_text("tables/comparison.csv", comparison_table(comparison));
     if (!comparison.flow_unit.empty()) into->write_text("tables/compared_peaks.csv", compared_peaks_table(comparison));
-    into->write_text("result.json", outcome.json);
-    return outcome;
+    into->write_text("result.json", compared.outcome.json);
+    return compared;
 }
 
 CompareOutcome compare(const std::filesystem::path& before, const std::filesystem::path& after, const CompareOptions& options,
@@ -198,9 +199,9 @@ CompareOutcome compare(const std::filesystem::path& before, const std::filesyste
     const GdalSession session;
     const NamedResult old_result{before, before};
     const NamedResult new_result{after, after};
-    if (!options.folder) return compare_two(old_result, new_result, options.tolerance, nullptr, progress);
+    if (!options.folder) return compare_two(old_result, new_result, options.tolerance, nullptr, progress).outcome;
     ResultFolder folder(*options.folder, options.replace ? Existing::replace : Existing::refuse);
-    CompareOutcome outcome = compare_two(old_result, new_result, options.tolerance, &folder, progress);
+    CompareOutcome outcome = compare_two(old_result, new_result, options.tolerance, &folder, progress).outcome;
     folder.commit();
     outcome.folder = folder.target();
     return outcome;

@@ -1,10 +1,12 @@
 #include "last_pass.hpp"
 
+#include <algorithm>
 #include <numeric>
 
 #include "rillclock/catchment/arrival_tally.hpp"
 #include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/deliver/raster_strips.hpp"
+#include "rillclock/travel/isochrone_step.hpp"
 #include "study_storms.hpp"
 
 namespace rillclock {
@@ -14,7 +16,7 @@ namespace {
 /// noted on the way, since to make their tiles would cost as much as to make all.
 std::vector<StepTime> times_for_rasters(const LastPass& pass) {
     std::vector<PointNumber> wanted = pass.tree.last_points();
-    if (pass.study.output.isochrones) std::iota(wanted.begin(), wanted.end(), PointNumber{0});
+    if (pass.study.output.isochrones.are_asked()) std::iota(wanted.begin(), wanted.end(), PointNumber{0});
     std::vector<Cell> cells;
     for (const PointNumber number : wanted) {
         if (number != 0) cells.push_back(pass.points[number - 1].cell);
@@ -39,14 +41,29 @@ void note_times(const LastPass& pass, const TileDesk& desk, std::vector<StepTime
     }
 }
 
+/// The greatest time to any point, under its storm.
+Duration greatest_of(const std::vector<PointHeads>& heads, const std::vector<StepTime>& times) {
+    double greatest_s = 0.0;
+    for (std::size_t i = 0; i < heads.size(); ++i) {
+        greatest_s = std::max(greatest_s, in_seconds((heads[i].last.time - times[i]).under(heads[i].storm_factor)));
+    }
+    return seconds(greatest_s);
+}
+
+/// `heads` are needed only where a study asks for so many bands.
+std::optional<IsochroneRules> isochrone_rules(const LastPass& pass, const std::vector<PointHeads>& heads, const std::vector<StepTime>& times) {
+    const IsochroneStudy& asked = pass.study.output.isochrones;
+    if (!asked.are_asked()) return std::nullopt;
+    return IsochroneRules{.step = asked.step ? *asked.step : isochrone_step(greatest_of(heads, times), *asked.bands),
+                          .catchments = pass.isochrone_catchments, .smoothed = asked.smoothed};
+}
+
 /// Has the outlines and the report's pictures gathered from the strips that the rasters are written from.
-void begin_regions(const LastPass& pass, const std::vector<StepTime>& times, RasterStory& story) {
+void begin_regions(const LastPass& pass, const std::vector<StepTime>& times, const std::optional<IsochroneRules>& rules, RasterStory& story) {
     std::vector<double> minutes;   // those of isochrones alone are asked for
     for (std::size_t i = 0; i < times.size(); ++i) {
         minutes.push_back(in_minutes((times[i] - story.last_point_times[i + 1]).under(story.last_point_factors[i + 1])));
     }
-    std::optional<IsochroneRules> rules;
-    if (pass.study.output.isochrones) rules = IsochroneRules{.step = *pass.study.output.isochrones};
     pass.regions.emplace(pass.terrain.grid, pass.terrain.ground, pass.tree, std::move(minutes), rules);
     story.look = [&pass](const RegionStrip& strip) {
         pass.regions->look(strip);
@@ -55,7 +72,8 @@ void begin_regions(const LastPass& pass, const std::vector<StepTime>& times, Ras
 }
 
 /// `factors`: storm factor of each point by number − 1; empty where one storm times all.
-RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, const std::vector<double>& factors) {
+RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, const std::vector<double>& factors,
+                     const std::optional<IsochroneRules>& isochrones) {
     RasterStory story{.grid = pass.terrain.grid,
                       .system = pass.terrain.system,
                       .format = pass.terrain.format,
@@ -71,7 +89,7 @@ RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, c
         story.last_point_times.push_back(last == 0 ? StepTime{} : times[last - 1]);
         story.last_point_factors.push_back(own ? factors[last - 1] : pass.travel.rules().sheet.storm_factor);
     }
-    begin_regions(pass, times, story);
+    begin_regions(pass, times, isochrones, story);
     return story;
 }
 
@@ -96,11 +114,11 @@ void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, Aft
     pass.progress.tell({.stage = stage, .done = cells, .total = cells, .finished = true});
 }
 
-void tally_all(const LastPass& pass, ArrivalTally& tally, std::vector<StepTime>& times) {
+void tally_all(const LastPass& pass, ArrivalTally& tally, HistogramTally* histograms, std::vector<StepTime>& times) {
     const auto look = [&](const TileDesk& desk) {
         note_times(pass, desk, times);
         tally.add(desk);
-        if (pass.histograms != nullptr) pass.histograms->add(desk);
+        if (histograms != nullptr) histograms->add(desk);
     };
     work_all_tiles(pass, "storms", look, [](std::int64_t, std::int64_t) {});
 }
@@ -109,7 +127,7 @@ std::vector<PointHeads> under_one_storm_alone(const LastPass& pass) {
     const double factor = pass.travel.rules().sheet.storm_factor;
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
     std::vector<StepTime> times(pass.points.size());
-    tally_all(pass, tally, times);
+    tally_all(pass, tally, nullptr, times);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
     add_storms(heads, times, intensities_of(pass.rain.storms));
     return heads;
@@ -119,7 +137,10 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass) {
     const double factor = pass.travel.rules().sheet.storm_factor;
     std::vector<StepTime> times = times_for_rasters(pass);
     ArrivalTally tally(pass.travel, pass.points.size(), factor);
-    RasterStrips rasters(story_of(pass, times, {}), pass.travel, pass.folder);
+    // How long the step is for so many bands hangs on the greatest time, which takes a pass of its own.
+    const bool needs_heads = pass.study.output.isochrones.bands.has_value();
+    const auto isochrones = isochrone_rules(pass, needs_heads ? under_one_storm_alone(pass) : std::vector<PointHeads>{}, times);
+    RasterStrips rasters(story_of(pass, times, {}, isochrones), pass.travel, pass.folder);
     const auto look = [&](const TileDesk& desk) {
         note_times(pass, desk, times);
         tally.add(desk);
@@ -136,9 +157,10 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass) {
 }
 
 /// Gives `times` the times of all points.
-std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, std::vector<StepTime>& times, const OwnStorms& storms) {
+std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, std::vector<StepTime>& times, const OwnStorms& storms,
+                                               HistogramTally* histograms) {
     ArrivalTally tally(pass.travel, pass.points.size(), storms.reference_factor, Storms::by_point);
-    tally_all(pass, tally, times);
+    tally_all(pass, tally, histograms, times);
     std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, times, storms);
     if (pass.study.timing.is_kinematic()) require_settled(heads, pass.points, pass.rain);
     return heads;
@@ -146,10 +168,10 @@ std::vector<PointHeads> under_own_storms_alone(const LastPass& pass, std::vector
 
 std::vector<PointHeads> under_own_storms(const LastPass& pass, const OwnStorms& storms) {
     std::vector<StepTime> times(pass.points.size());
-    std::vector<PointHeads> heads = under_own_storms_alone(pass, times, storms);
+    std::vector<PointHeads> heads = under_own_storms_alone(pass, times, storms, pass.histograms);
     std::vector<double> factors;
     for (const PointHeads& point : heads) factors.push_back(point.storm_factor);
-    RasterStrips rasters(story_of(pass, times, factors), pass.travel, pass.folder);
+    RasterStrips rasters(story_of(pass, times, factors, isochrone_rules(pass, heads, times)), pass.travel, pass.folder);
     work_all_tiles(
         pass, "writing rasters", [&](const TileDesk& desk) { rasters.fill(desk); },
         [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
@@ -160,13 +182,11 @@ std::vector<PointHeads> under_own_storms(const LastPass& pass, const OwnStorms& 
 
 }  // namespace
 
-std::vector<PointHeads> heads_alone(const LastPass& whole) {
-    LastPass pass = whole;
-    pass.histograms = nullptr;  // those are of the times that the rasters show
+std::vector<PointHeads> heads_alone(const LastPass& pass) {
     const std::optional<OwnStorms> own = own_storms_of(pass.study, pass.travel.rules(), pass.rain);
     if (!own) return under_one_storm_alone(pass);
     std::vector<StepTime> times(pass.points.size());
-    return under_own_storms_alone(pass, times, *own);
+    return under_own_storms_alone(pass, times, *own, nullptr);   // histograms are of the times that the rasters show
 }
 
 std::vector<PointHeads> heads_and_rasters(const LastPass& pass) {

@@ -25,6 +25,8 @@ struct LastPass {
     /// Where outlines and the report's pictures are gathered; filled by the pass.
     std::optional<StudyRegions>& regions;
     OverviewSampler& overview;
+    /// Points whose whole catchment has isochrones besides those of the last points.
+    const std::vector<PointNumber>& isochrone_catchments;
     HistogramTally* histograms = nullptr;   ///< filled where peaks are asked for
 };
 

@@ -11,6 +11,7 @@
 
 #include "rillclock/catchment/outlet_notices.hpp"
 #include "rillclock/catchment/tiled_outlets.hpp"
+#include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
 #include "rillclock/deliver/study_geopackage.hpp"
@@ -73,6 +74,12 @@ std::vector<CellLabel> labels_of(const std::vector<DesignPoint>& points) {
     return labels;
 }
 
+std::vector<std::string> names_of(const std::vector<DesignPoint>& points) {
+    std::vector<std::string> names;
+    for (const DesignPoint& point : points) names.push_back(point.name);
+    return names;
+}
+
 /// What the study states for a point's lump methods: for all points, or by a field of their file.
 PointLumpInputs lump_inputs_at(const Study& study, const std::optional<StatedPoints>& stated, const std::string& point) {
     PointLumpInputs inputs;
@@ -95,9 +102,13 @@ std::vector<PointMethods> methods_of(const Study& study, const std::optional<Sta
     return methods;
 }
 
-/// What was read, for those who watch the run.
-std::vector<std::string> facts_of(const StudyRain& rain, const CarriedWords& reviewed) {
+/// What was read, and what was settled by the data, for those who watch the run.
+std::vector<std::string> facts_of(const Study& study, const StudyRain& rain, const CarriedWords& reviewed, const StudyRegions& regions) {
     std::vector<std::string> facts;
+    if (const std::optional<int> bands = study.output.isochrones.bands) {
+        facts.push_back("isochrones: every " + significant(in_minutes(regions.isochrones()->step)) + " min" + ", the shortest round step that gives at most " +
+                        std::to_string(*bands) + (*bands == 1 ? " band" : " bands"));
+    }
     if (rain.source && rain.is_everywhere) facts.push_back("rain: " + sentence(rain.source->echo));
     for (const ZoneRain& zone : rain.zones) facts.push_back("rain zone: " + sentence(zone.source.echo));
     const std::vector<std::string> words = sentences_on(reviewed);
@@ -180,8 +191,13 @@ StudyPeaks peaks_of(const PeakInputs& inputs, HistogramTally* histograms, std::i
 
 using InputFiles = std::function<std::vector<InputFile>()>;
 
-/// Works a task out and writes its part of the result.
-RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, const InputFiles& inputs_of, const Progress& progress) {
+/// A task worked out, its part of the result written but for the report.
+struct WorkedOut {
+    RunOutcome outcome;
+    ReportText report;
+};
+
+WorkedOut work_out(Task& task, const LaidOn& laid, const CommonWork& common, const InputFiles& inputs_of, const Progress& progress) {
     const Study& study = task.study;
     const StudyRain& rain = task.rain;
     const TerrainData& terrain = common.terrain;
@@ -195,6 +211,7 @@ RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, co
     const auto travel = stage(progress, "travel times", cells, [&] { return std::make_unique<TiledTravel>(ground, laid.rules, common.executor); });
 
     const PlacedPoints points = settle_points(laid.stated, laid.resolved, *travel, terrain);
+    const std::vector<PointNumber> traced = isochrone_catchments(study, names_of(points.points));
     const TiledOwners owners(common.forest, labels_of(points.points), common.executor);
     const PointTree tree = point_tree(next_points(common.forest, owners, points.points, common.executor));
     const HistogramRules binned = histogram_rules(study, surface.book, laid.rules.sheet.storm_factor);
@@ -204,7 +221,7 @@ RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, co
     OverviewSampler overview(terrain.grid);
     const LastPass last{.study = study, .rain = rain, .terrain = terrain, .travel = *travel, .owners = owners,
                         .points = points.points, .tree = tree, .folder = common.folder, .progress = progress,
-                        .regions = regions, .overview = overview, .histograms = histograms.get()};
+                        .regions = regions, .overview = overview, .isochrone_catchments = traced, .histograms = histograms.get()};
     const std::vector<PointHeads> heads = heads_of_points(
         last, {.sections = common.flow.sections, .runoff = surface.runoff, .travel = *travel, .reaches = reaches});
     const std::vector<Outlet> outlets = stage(progress, "design points", cells, [&] {
@@ -231,13 +248,15 @@ RunOutcome work_out(Task& task, const LaidOn& laid, const CommonWork& common, co
                              .system = terrain.system, .format = terrain.format, .book = surface.book, .sections = common.flow.sections,
                              .surface_classes = surface.table.classes, .outlets = outlets, .methods = methods, .network = network,
                              .peaks = peaks, .notices = notices, .inputs = inputs, .data = data,
-                             .reviewed = reviewed.by_notice, .drawn = drawn, .uncertainty = uncertainty ? &*uncertainty : nullptr};
-    std::string json = stage(progress, "writing files", cells, [&] {
+                             .reviewed = reviewed.by_notice, .drawn = drawn, .uncertainty = uncertainty ? &*uncertainty : nullptr,
+                             .isochrones = regions->isochrones() ? &*regions->isochrones() : nullptr};
+    ResultTexts texts = stage(progress, "writing files", cells, [&] {
         return write_result({.result = result, .terrain = terrain, .travel = *travel, .flow = common.flow,
                              .depressions = depressions.deepest_first, .regions = *regions, .overview = overview}, common.folder);
     });
-    return {.folder = common.folder.part_target(), .facts = facts_of(rain, reviewed), .headlines = headlines(result),
-            .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = std::move(json), .scenarios = {}};
+    RunOutcome outcome{.folder = common.folder.part_target(), .facts = facts_of(study, rain, reviewed, *regions), .headlines = headlines(result),
+            .overview = outlets_overview(result, most_overview_rows), .notices = notices, .json = std::move(texts.json), .scenarios = {}};
+    return {.outcome = std::move(outcome), .report = std::move(texts.report)};
 }
 
 /// Reports with the scenario's name before each stage.
@@ -249,18 +268,34 @@ Progress told_of(const std::string& scenario, const Progress& progress) {
     });
 }
 
+/// What a scenario tells the caller of the run, and the study's report.
+struct ScenarioWorked {
+    ScenarioOutcome outcome;
+    ScenarioBeside beside;
+};
+
+std::vector<std::string> words_of(const ScenarioStudy& scenario) {
+    std::vector<std::string> changes;
+    for (const StatedChange& change : scenario.changes) changes.push_back(words(change));
+    return changes;
+}
+
 /// Works a scenario out and compares it with the study, whose part of the result has been written.
-ScenarioOutcome scenario_outcome(const ScenarioStudy& scenario, Task& task, const CommonWork& common,
+ScenarioWorked work_out_scenario(const ScenarioStudy& scenario, Task& task, const CommonWork& common,
                                  const InputFiles& inputs_of, const Progress& whole) {
     const Progress progress = told_of(scenario.name, whole);
     ResultFolder& folder = common.folder;
-    const RunOutcome worked = work_out(task, lay_on(task, common.terrain, progress), common, inputs_of, progress);
-    const std::string beside = comparison_folder(scenario);
-    folder.begin_part(beside);
-    const CompareOutcome compared = compare_two({folder.making(), folder.target()}, {folder.making() / task.part, worked.folder},
-                                                CompareOptions{}.tolerance, &folder, progress);
-    return {.name = scenario.name, .folder = worked.folder, .comparison_folder = folder.part_target(), .facts = worked.facts,
-            .comparison = compared.text, .worse = compared.worse};
+    const WorkedOut worked = work_out(task, lay_on(task, common.terrain, progress), common, inputs_of, progress);
+    folder.write_text("report.html", worked.report.before + worked.report.after);
+    folder.begin_part(comparison_folder(scenario));
+    const ComparedResults compared = compare_two({folder.making(), folder.target()}, {folder.making() / task.part, worked.outcome.folder},
+                                                 CompareOptions{}.tolerance, &folder, progress);
+    ScenarioOutcome outcome{.name = scenario.name, .folder = worked.outcome.folder, .comparison_folder = folder.part_target(),
+                            .facts = worked.outcome.facts, .comparison = compared.outcome.text, .worse = compared.outcome.worse,
+                            .changes = words_of(scenario), .json = worked.outcome.json, .comparison_json = compared.outcome.json};
+    return {.outcome = std::move(outcome),
+            .beside = {.name = scenario.name, .folder = task.part.string(), .comparison_folder = comparison_folder(scenario),
+                       .changes = words_of(scenario), .comparison = compared.comparison}};
 }
 
 std::vector<Study> scenario_studies(const Study& study) {
@@ -309,13 +344,18 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
                                   [&] { return find_flow(study, laid->resolved, terrain, tiles, executor); });
     const TiledForest forest(flow.codes, tiles, executor);
     const CommonWork common{.terrain = terrain, .flow = flow, .forest = forest, .executor = executor, .folder = folder};
-    RunOutcome outcome = work_out(tasks.front(), *laid, common, inputs_of(0), progress);
+    WorkedOut worked = work_out(tasks.front(), *laid, common, inputs_of(0), progress);
     laid.reset();   // a scenario has a surface of its own in its place
+    std::vector<ScenarioBeside> beside;
     for (std::size_t i = 0; i < scenarios.size(); ++i) {
-        outcome.scenarios.push_back(scenario_outcome(study.scenarios[i], tasks[i + 1], common, inputs_of(i + 1), progress));
+        ScenarioWorked scenario = work_out_scenario(study.scenarios[i], tasks[i + 1], common, inputs_of(i + 1), progress);
+        worked.outcome.scenarios.push_back(std::move(scenario.outcome));
+        beside.push_back(std::move(scenario.beside));
     }
+    folder.begin_part({});
+    folder.write_text("report.html", worked.report.before + scenarios_section(beside) + worked.report.after);
     folder.commit();
-    return outcome;
+    return std::move(worked.outcome);
 }
 
 }  // namespace rillclock

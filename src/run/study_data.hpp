@@ -96,6 +96,9 @@ struct StatedPoints {
 [[nodiscard]] std::optional<StatedPoints> read_stated_points(const Study& study, const ReferenceSystem& system);
 [[nodiscard]] PlacedPoints settle_points(const std::optional<StatedPoints>& stated, const ResolvedStudy& resolved,
                                          const TiledTravel& travel, const TerrainData& terrain);
+/// The numbers of the points that `output.isochrone_catchments` names, among points of these names. Throws an input error for a name that
+/// none has.
+[[nodiscard]] std::vector<PointNumber> isochrone_catchments(const Study& study, const std::vector<std::string>& names);
 [[nodiscard]] DataFacts facts_of(const ElevationFormat& format, const Ground& ground);
 /// Reads the rain of a study, from its file if it names one, and from those of its zones.
 [[nodiscard]] StudyRain read_rain(const Study& study, const std::vector<std::string>& zone_files);

@@ -2,6 +2,7 @@
 #include <filesystem>
 #include <limits>
 
+#include "rillclock/core/nearest_word.hpp"
 #include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/catchment/tiled_own_paths.hpp"
 #include "rillclock/core/quantity_text.hpp"
@@ -98,6 +99,20 @@ PlacedPoints settle_points(const std::optional<StatedPoints>& given, const Resol
     PlacedPoints placed = place_points(stated->points, {.grid = terrain.grid, .ground = terrain.ground, .area = area}, resolved.move_within);
     placed.notices.insert(placed.notices.begin(), stated->notices.begin(), stated->notices.end());
     return placed;
+}
+
+std::vector<PointNumber> isochrone_catchments(const Study& study, const std::vector<std::string>& names) {
+    std::vector<PointNumber> numbers;
+    for (const std::string& asked : study.output.isochrones.catchments) {
+        const auto found = std::find(names.begin(), names.end(), asked);
+        if (found == names.end()) {
+            throw input_error("output.isochrone_catchments asks for the catchment of '" + asked + "', and no point within the elevations has that name" +
+                              did_you_mean(asked, std::vector<std::string_view>(names.begin(), names.end())) +
+                              "; write the names as in tables/outlets.csv");
+        }
+        numbers.push_back(static_cast<PointNumber>(found - names.begin() + 1));
+    }
+    return numbers;
 }
 
 StudyRain read_rain(const Study& study, const std::vector<std::string>& zone_files) {

@@ -72,7 +72,7 @@ void write_ground(const WorkedStudy& worked, ResultFolder& folder) {
     if (!worked.flow.line_cells.empty()) folder.write_text("own_paths.geojson", own_ways_geojson(result, worked.flow.own_ways));
 }
 
-std::string report_of(const WorkedStudy& worked, const SheetBook& book) {
+ReportText report_of(const WorkedStudy& worked, const SheetBook& book) {
     const ElevationStore& elevations = worked.terrain.elevations;
     const double metres_per_unit = worked.travel.ground().metres_per_elevation_unit;
     const ReportOverview pictures = worked.overview.take(elevations, metres_per_unit, worked.terrain.ground.cell_side());
@@ -82,7 +82,7 @@ std::string report_of(const WorkedStudy& worked, const SheetBook& book) {
 
 }  // namespace
 
-std::string write_result(const WorkedStudy& worked, ResultFolder& folder) {
+ResultTexts write_result(const WorkedStudy& worked, ResultFolder& folder) {
     const StudyResult& result = worked.result;
     const Executor& executor = worked.travel.executor();
     // Each of these takes as long as all the rest and keeps one processor busy.
@@ -95,10 +95,10 @@ std::string write_result(const WorkedStudy& worked, ResultFolder& folder) {
     });
     const SheetBook book(json, "result.json");
     write_sheets(result, book, executor, folder);
-    folder.write_text("report.html", report_of(worked, book));
+    ReportText report = report_of(worked, book);
     shapes.get();
     rest.get();
-    return json;
+    return {.json = std::move(json), .report = std::move(report)};
 }
 
 }  // namespace rillclock

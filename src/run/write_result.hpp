@@ -6,6 +6,7 @@
 #include "mapped_flow.hpp"
 #include "overview.hpp"
 #include "rillclock/catchment/study_regions.hpp"
+#include "rillclock/deliver/report.hpp"
 #include "rillclock/io/result_folder.hpp"
 #include "rillclock/terrain/depressions.hpp"
 #include "study_data.hpp"
@@ -23,7 +24,13 @@ struct WorkedStudy {
     OverviewSampler& overview;
 };
 
-/// Writes all files of a result but its rasters; returns the text of result.json.
-std::string write_result(const WorkedStudy& worked, ResultFolder& folder);
+/// Texts of a result that its caller has use for.
+struct ResultTexts {
+    std::string json;      ///< as it was written to result.json
+    ReportText report;     ///< not yet written: a section on scenarios may come into it
+};
+
+/// Writes all files of a result but its rasters and its report.
+[[nodiscard]] ResultTexts write_result(const WorkedStudy& worked, ResultFolder& folder);
 
 }  // namespace rillclock

@@ -108,6 +108,11 @@ DrainageNetwork edited_network(std::span<const Outlet> outlets, std::span<const 
     return DrainageNetwork(std::move(points));
 }
 
+bool PointEdit::changes_times() const {
+    if (pipe != nullptr) return true;
+    return stated != nullptr && (stated->time || stated->way_time || stated->overland.sheet_length || stated->overland.n);
+}
+
 std::string marks_of(const PointEdit& edit) {
     std::string text;
     const auto add = [&](const char* what) { text += (text.empty() ? "" : ", ") + std::string(what); };

@@ -17,14 +17,17 @@ public:
     [[nodiscard]] std::vector<std::optional<BandRunoff>> work(std::span<const IsochroneBand> bands) const {
         std::map<Whose, Area> running;
         std::map<Whose, bool> lacking;
+        std::map<Whose, Duration> greatest;
         for (const IsochroneBand& band : bands) {
-            bool& lacks = lacking[{band.scope, band.point}];
+            const Whose whose{band.scope, band.point};
+            greatest[whose] = std::max(greatest[whose], greatest_time(band));
+            bool& lacks = lacking[whose];
             lacks = lacks || std::any_of(band.parts.begin(), band.parts.end(), [&](const IsochronePart& part) { return coefficient(part) == nullptr; });
         }
         std::vector<std::optional<BandRunoff>> made;
         for (const IsochroneBand& band : bands) {
             const Whose whose{band.scope, band.point};
-            made.push_back(lacking[whose] ? std::nullopt : std::optional(of(band, running[whose])));
+            made.push_back(lacking[whose] ? std::nullopt : std::optional(of(band, greatest[whose], running[whose])));
         }
         return made;
     }
@@ -35,28 +38,30 @@ private:
         return coefficients.empty() ? nullptr : &coefficients[in_.rain.raster];
     }
 
-    [[nodiscard]] BandRunoff of(const IsochroneBand& band, Area& running) const {
+    [[nodiscard]] BandRunoff of(const IsochroneBand& band, Duration greatest, Area& running) const {
         BandRunoff made;
         for (const IsochronePart& part : band.parts) {
             made.runoff = made.runoff + coefficient(part)->value * square_metres(from_fixed_area(part.area));
         }
         running = running + made.runoff;
         made.running = running;
-        made.time = std::min((band.number + 1) * in_.step, greatest_time(band));
+        made.time = std::min((band.number + 1) * in_.step, greatest);
         const std::size_t zone = in_.outlets[band.point - 1].rain_zone.number;
         made.intensity = in_.rain.storms_of(zone)[in_.rain.raster].rain.within(made.time);
         if (made.intensity) made.flow = rational_peak(running, *made.intensity, conversion_);
         return made;
     }
 
-    /// Until when water arrives that the bands are of, under the storm of the last point on the way down.
+    /// Until when water arrives from the subareas within a band, under the storm of the last point on the way down.
     [[nodiscard]] Duration greatest_time(const IsochroneBand& band) const {
         const Outlet& outlet = in_.outlets[band.point - 1];
-        if (band.scope == IsochroneScope::catchment) return seconds(outlet.greatest_s);
+        if (band.scope == IsochroneScope::catchment && outlet.next == 0) return seconds(outlet.greatest_s);
         const double factor = last_below(outlet).storm_factor;
         double greatest_s = 0.0;
-        for (const Head& head : outlet.own_front.heads()) {
-            greatest_s = std::max(greatest_s, in_seconds((head.time - outlet.time_to_root).under(factor)));
+        for (const IsochronePart& part : band.parts) {
+            for (const Head& head : in_.outlets[part.subarea - 1].own_front.heads()) {
+                greatest_s = std::max(greatest_s, in_seconds((head.time - outlet.time_to_root).under(factor)));
+            }
         }
         return seconds(greatest_s);
     }

@@ -4,6 +4,7 @@
 #include <array>
 
 #include "rillclock/core/error.hpp"
+#include "rillclock/core/number_text.hpp"
 #include "rillclock/study/study_keys.hpp"
 
 namespace rillclock {
@@ -52,6 +53,19 @@ constexpr std::array rivals{
     GivesWay{"timing.channel.depth", clear_channel_size},
 };
 
+struct ShowValue {
+    std::string operator()(const std::string& text) const { return text; }
+    std::string operator()(std::int64_t whole) const { return std::to_string(whole); }
+    std::string operator()(double real) const { return significant(real); }
+    std::string operator()(bool truth) const { return truth ? "true" : "false"; }
+    template <class T>
+    std::string operator()(const std::vector<T>& list) const {
+        std::string text;
+        for (const T& one : list) text += (text.empty() ? "" : ", ") + (*this)(one);
+        return text;
+    }
+};
+
 bool is_under(std::string_view key, std::string_view section) {
     return key.starts_with(section) && key.substr(section.size()).starts_with('.');
 }
@@ -98,6 +112,11 @@ Study scenario_study(const Study& base, const ScenarioStudy& scenario) {
     make_room(study, scenario);
     for (const StatedChange& change : scenario.changes) set_study_value(study, change.key, change.value);
     return study;
+}
+
+std::string words(const StatedChange& change) {
+    const std::string entry = change.value.entry.empty() ? "" : "." + change.value.entry;
+    return change.key + entry + " = " + std::visit(ShowValue{}, change.value.value);
 }
 
 std::string scenario_folder(const ScenarioStudy& scenario) { return "scenario-" + scenario.name; }

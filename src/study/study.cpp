@@ -182,6 +182,13 @@ void refuse_contradictory_network(const Study& study) {
                           "long as the whole path, so leave out storm");
 }
 
+void refuse_contradictory_isochrones(const Study& study) {
+    const IsochroneStudy& isochrones = study.output.isochrones;
+    if (!isochrones.are_asked() && (isochrones.smoothed || !isochrones.catchments.empty()))
+        throw input_error(name_of(study) + " says which isochrones there are to be and how they are drawn, but asks for none; add isochrones = "
+                          "\"5 min\" under [output], or leave out isochrone_catchments and isochrone_borders");
+}
+
 void refuse_contradictory_soil(const Study& study) {
     const SoilStudy& soil = study.surface.soil;
     if (!soil.file && (soil.band || !soil.classes.empty() || soil.fallback_group))
@@ -241,6 +248,7 @@ void check_study(const Study& study) {
     refuse_contradictory_sheet(study);
     refuse_contradictory_shallow(study);
     refuse_contradictory_network(study);
+    refuse_contradictory_isochrones(study);
     check_uncertainty(study);
     for (const ScenarioStudy& scenario : study.scenarios) check_study(scenario_study(study, scenario));
 }

@@ -4,6 +4,7 @@
 
 #include <limits>
 #include <optional>
+#include <sstream>
 
 #include "rillclock/core/error.hpp"
 #include "rillclock/study/scenario.hpp"
@@ -123,8 +124,21 @@ private:
         return numbers;
     }
 
+    [[nodiscard]] static std::vector<std::string> texts(const toml::array& list) {
+        std::vector<std::string> texts;
+        for (const toml::node& node : list) texts.push_back(node.value<std::string>().value_or(""));
+        return texts;
+    }
+
+    [[nodiscard]] static std::string day(const toml::date& date) {
+        std::ostringstream text;
+        text << date;
+        return text.str();
+    }
+
     [[nodiscard]] decltype(StudyValue::value) scalar(const toml::node& node, const std::string& key) const {
-        if (const auto* list = node.as_array()) return numbers(*list);
+        if (const auto* list = node.as_array()) return !list->empty() && list->front().is_string() ? decltype(StudyValue::value)(texts(*list)) : numbers(*list);
+        if (const auto* date = node.as_date()) return day(date->get());
         if (const auto* text = node.as_string()) return text->get();
         if (const auto* whole = node.as_integer()) return whole->get();
         if (const auto* real = node.as_floating_point()) return real->get();

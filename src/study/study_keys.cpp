@@ -12,6 +12,7 @@ namespace {
 
 constexpr std::array keys{
     StudyKey{"title", R"("Lower town, as it stands")", "none", "heads the report"},
+    StudyKey{"date", "2026-05-01", "none", "day that the study is of, on the report's first screen; no clock is read"},
     StudyKey{"report_units", R"("us")", "us",
              "us or si: the units of what is reported; the computation is in SI either way"},
     StudyKey{"terrain.elevation", R"("dem.tif")", "asked for", "elevation raster"},
@@ -164,7 +165,9 @@ constexpr std::array keys{
     StudyKey{"output.catchments", R"("all")", "all; last points where there are more than 500 points",
              "all or last points: whose whole catchment study.gpkg has; subareas it has of all"},
     StudyKey{"output.folder", R"("result")", "result", "result folder"},
-    StudyKey{"output.isochrones", R"("5 min")", "none", "step between isochrones, of every subarea and every last point's catchment; \"none\" for none"},
+    StudyKey{"output.isochrones", R"("5 min")", "none", "step between isochrones, of every subarea and every last point's catchment; or \"12 bands\": a round step that gives at most so many; \"none\" for none"},
+    StudyKey{"output.isochrone_catchments", R"(["Mill bridge"])", "none", "points whose whole catchment has isochrones too"},
+    StudyKey{"output.isochrone_borders", R"("cells")", "cells", "cells, or smoothed: corners of cells are cut off, by less than half a cell"},
     StudyKey{"output.rasters", R"("geotiff")", "geotiff", "geotiff, or cog: Cloud-Optimized GeoTIFF, whose parts can be read over the network"},
     StudyKey{"output.subareas", R"("least slacks")", "least slacks",
              "least slacks or all: which subareas of each point tables/subareas.csv lists"},

@@ -1,154 +1,19 @@
+#include <algorithm>
 #include <array>
 #include <charconv>
 #include <limits>
 #include <vector>
 
 #include "rillclock/core/error.hpp"
-#include "rillclock/core/nearest_word.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/hydraulics/sheet_flow.hpp"
 #include "rillclock/rainfall/design_rain.hpp"
 #include "rillclock/study/study_keys.hpp"
 #include "rillclock/surface/cover_book.hpp"
+#include "stated.hpp"
 
 namespace rillclock {
 namespace {
-
-/// The form of a key, taken from its description, as an example in errors.
-std::string form_of(std::string_view key) {
-    for (const StudyKey& known : study_keys())
-        if (known.key == key) return std::string(known.form);
-    throw bug("no study key " + std::string(key));
-}
-
-std::string without_quotes(std::string form) {
-    std::erase(form, '"');
-    return form;
-}
-
-constexpr double greatest_return_period = 1e6;  // years
-
-/// A value under its key: read as one kind of thing or another, or refused with the right form.
-class Stated {
-public:
-    Stated(std::string_view key, const StudyValue& value) : form_(form_of(key)), value_(value) {}
-
-    [[nodiscard]] Error fault(const std::string& what) const { return input_error(value_.subject + " " + what); }
-
-    [[nodiscard]] const std::string& text() const {
-        const auto* text = std::get_if<std::string>(&value_.value);
-        if (text == nullptr) throw fault("is " + shown() + "; write a text in quotes, such as " + form_);
-        if (text->empty()) throw fault("is empty; write for example " + form_ + ", or leave it out");
-        return *text;
-    }
-
-    [[nodiscard]] bool is_text() const { return std::holds_alternative<std::string>(value_.value); }
-
-    [[nodiscard]] QuantityAsked asked(Sign sign = Sign::positive) const {
-        return {.subject = value_.subject, .example = without_quotes(form_), .sign = sign};
-    }
-
-    [[nodiscard]] const std::string& form() const { return form_; }
-    /// What is asked of either end of a range.
-    [[nodiscard]] QuantityAsked one_of_range() const {
-        std::string example = without_quotes(form_);
-        return {.subject = value_.subject, .example = example.substr(0, example.find(" to "))};
-    }
-
-    [[nodiscard]] Length length() const { return length_from_text(text(), asked()); }
-    [[nodiscard]] Speed speed() const { return speed_from_text(text(), asked()); }
-    [[nodiscard]] Area area() const { return area_from_text(text(), asked()); }
-    [[nodiscard]] PowerLaw power_law() const { return power_law_from_text(text(), asked()); }
-
-    [[nodiscard]] double fraction(Sign sign) const {
-        const double share = fraction_from_text(text(), asked(sign));
-        if (!(share < 1)) throw fault("is \"" + text() + "\"; it must lie under 100 %, such as " + form_);
-        return share;
-    }
-
-    /// A bare number in [least, greatest].
-    [[nodiscard]] double number(double least, double greatest) const {
-        double number = std::numeric_limits<double>::quiet_NaN();
-        if (const auto* real = std::get_if<double>(&value_.value)) number = *real;
-        if (const auto* whole = std::get_if<std::int64_t>(&value_.value)) number = static_cast<double>(*whole);
-        if (!(number >= least && number <= greatest))
-            throw fault("is " + shown() + "; write a number from " + significant(least) + " to " +
-                        significant(greatest) + " without quotes, such as " + form_);
-        return number;
-    }
-
-    [[nodiscard]] int whole_number(int least, int greatest = std::numeric_limits<int>::max()) const {
-        const auto* whole = std::get_if<std::int64_t>(&value_.value);
-        const bool is_open = greatest == std::numeric_limits<int>::max();
-        if (whole == nullptr || *whole < least || *whole > greatest)
-            throw fault("is " + shown() + "; write a whole number, " + std::to_string(least) +
-                        (is_open ? " or more" : " to " + std::to_string(greatest)) + ", without quotes, such as " + form_);
-        return static_cast<int>(*whole);
-    }
-
-    /// The place of the text among the words that are served.
-    [[nodiscard]] std::size_t choice(const std::vector<std::string_view>& served) const {
-        for (std::size_t place = 0; place < served.size(); ++place)
-            if (text() == served[place]) return place;
-        std::string list;
-        for (const auto word : served) list += (list.empty() ? "" : " or ") + ("\"" + std::string(word) + "\"");
-        throw fault("is \"" + text() + "\"; write " + list + did_you_mean(text(), served));
-    }
-
-    /// Years, at least 1 each, rising. One number alone is a list of one.
-    [[nodiscard]] std::vector<double> return_periods() const {
-        const auto* list = std::get_if<std::vector<double>>(&value_.value);
-        const std::vector<double> years = list != nullptr ? *list : std::vector{number(1, greatest_return_period)};
-        double last = 0.0;
-        for (const double period : years) {
-            if (!(period >= 1 && period <= greatest_return_period && period > last))
-                throw fault("is not a list of return periods; write years from 1 on, rising, such as " + form_);
-            last = period;
-        }
-        if (years.empty()) throw fault("is empty; write return periods in years, such as " + form_);
-        return years;
-    }
-
-    [[nodiscard]] Duration duration(Sign sign) const { return duration_from_text(text(), asked(sign)); }
-
-    /// The return period that the value's place in a table of the user's names stands for; none outside of such.
-    [[nodiscard]] std::optional<double> entry_period() const {
-        if (value_.entry.empty()) return std::nullopt;
-        const double years = number_from_text(value_.entry, {.subject = value_.subject, .example = "10"});
-        if (!(years >= 1 && years <= greatest_return_period))
-            throw fault("stands under " + value_.entry + "; name it by its return period in years, from 1 on");
-        return years;
-    }
-
-    /// The class value that the value's place in a table of the user's names stands for.
-    [[nodiscard]] int entry_class() const {
-        int value = 0;
-        const char* end = value_.entry.data() + value_.entry.size();
-        const auto [last, error] = std::from_chars(value_.entry.data(), end, value);
-        if (value_.entry.empty()) throw fault("is " + shown() + "; write a table, such as " + form_);
-        if (error != std::errc() || last != end)
-            throw fault("stands under " + value_.entry +
-                        "; name it by the whole number the raster holds, such as " + form_);
-        return value;
-    }
-
-    [[nodiscard]] const std::string& subject() const { return value_.subject; }
-
-private:
-    [[nodiscard]] std::string shown() const {
-        struct Show {
-            std::string operator()(const std::string& text) const { return "\"" + text + "\""; }
-            std::string operator()(std::int64_t whole) const { return std::to_string(whole); }
-            std::string operator()(double real) const { return significant(real); }
-            std::string operator()(bool truth) const { return truth ? "true" : "false"; }
-            std::string operator()(const std::vector<double>&) const { return "a list"; }
-        };
-        return std::visit(Show{}, value_.value);
-    }
-
-    std::string form_;
-    const StudyValue& value_;
-};
 
 Speed pond_speed(const Stated& stated) {
     if (stated.text() == "unlimited") return metres_per_second(std::numeric_limits<double>::infinity());
@@ -264,6 +129,27 @@ UncertaintyStudy& uncertainty(Study& study) {
     return *study.uncertainty;
 }
 
+constexpr int most_isochrone_bands = 1000;  // of one catchment
+
+/// "5 min", "12 bands" or "none".
+void set_isochrones(IsochroneStudy& isochrones, const Stated& v) {
+    constexpr std::string_view ending = " bands";
+    isochrones.step.reset();
+    isochrones.bands.reset();
+    if (v.text() == "none") return;
+    if (!v.text().ends_with(ending)) {
+        isochrones.step = v.duration(Sign::positive);
+        return;
+    }
+    int bands = 0;
+    const char* end = v.text().data() + v.text().size() - ending.size();
+    const auto [last, error] = std::from_chars(v.text().data(), end, bands);
+    if (error != std::errc() || last != end || bands < 1 || bands > most_isochrone_bands)
+        throw v.fault("is \"" + v.text() + "\"; write how many bands there may be at most, from 1 to " + std::to_string(most_isochrone_bands) +
+                      ", such as \"12 bands\", or a step such as " + v.form());
+    isochrones.bands = bands;
+}
+
 struct Setter {
     std::string_view key;
     void (*set)(Study&, const Stated&);
@@ -276,6 +162,7 @@ constexpr double greatest_side_slope = 100.0;
 
 constexpr std::array setters{
     Setter{"title", [](Study& s, const Stated& v) { s.title = v.text(); }},
+    Setter{"date", [](Study& s, const Stated& v) { s.date = v.date(); }},
     Setter{"report_units",
            [](Study& s, const Stated& v) { s.report_units = v.choice({"us", "si"}) == 0 ? ReportUnits::us : ReportUnits::si; }},
     Setter{"terrain.elevation", [](Study& s, const Stated& v) { s.terrain.elevation = v.text(); }},
@@ -425,10 +312,9 @@ constexpr std::array setters{
     Setter{"uncertainty.pond_speed", [](Study& s, const Stated& v) { uncertainty(s).pond_speed = speed_range(v); }},
     Setter{"output.catchments", [](Study& s, const Stated& v) { s.output.all_catchments = v.choice({"last points", "all"}) == 1; }},
     Setter{"output.folder", [](Study& s, const Stated& v) { s.output.folder = v.text(); }},
-    Setter{"output.isochrones",
-           [](Study& s, const Stated& v) {
-               s.output.isochrones = v.text() == "none" ? std::nullopt : std::optional(v.duration(Sign::positive));
-           }},
+    Setter{"output.isochrones", [](Study& s, const Stated& v) { set_isochrones(s.output.isochrones, v); }},
+    Setter{"output.isochrone_catchments", [](Study& s, const Stated& v) { s.output.isochrones.catchments = v.texts(); }},
+    Setter{"output.isochrone_borders", [](Study& s, const Stated& v) { s.output.isochrones.smoothed = v.choice({"cells", "smoothed"}) == 1; }},
     Setter{"output.rasters", [](Study& s, const Stated& v) { s.output.cloud_optimized = v.choice({"geotiff", "cog"}) == 1; }},
     Setter{"output.subareas",
            [](Study& s, const Stated& v) {

@@ -263,7 +263,8 @@ class Files:
         if side == self.size.main:
             if directions and times:
                 self.table.at_most(3, "travel-time passes / directions, within the command", times / directions, 2)
-            self.table.at_most(5, f"bytes a cell at {cells_text(side)}", command["memory"] / cells, 16)
+            if cells >= 2 ** 28:   # the libraries' own memory weighs more the fewer cells there are
+                self.table.at_most(5, f"bytes a cell at {cells_text(side)}", command["memory"] / cells, 16)
 
     def compare_with_reconstruction(self, kind, folder, command):
         found = self.table.measuring(f"reconstruction, {kind}", lambda: numbers(

@@ -130,7 +130,8 @@ class Asking(Demo):
         (self.folder / "empty").mkdir()
         self.done("demo", "empty")
         self.assertEqual(files_under(self.folder / "empty"),
-                         {"README.md", "study.toml", "dem.tif", "cover.tif", "cover-book.csv", "points.geojson"})
+                         {"README.md", "study.toml", "study-with-peaks.toml", "dem.tif", "cover.tif", "cover-book.csv", "cover-book-with-c.csv",
+                          "points.geojson"})
 
     def test_a_study_runs_from_any_folder(self):
         os.mkdir(self.folder / "elsewhere")

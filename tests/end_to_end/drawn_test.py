@@ -1,5 +1,7 @@
 #!/usr/bin/python3
 """Hand-drawn catchments in place of points: where their points come to stand, and where survey and elevations disagree."""
+import json
+import re
 import shutil
 import unittest
 
@@ -49,6 +51,28 @@ class Drawn(DemoTest):
         """Who has it, area and shape of each feature."""
         source = ogr.Open(str(self.town / "drawn/study.gpkg"))
         return [(f["who_has_it"], f["area_m2"], f.GetGeometryRef().Clone()) for f in source.GetLayerByName("catchment_differences")]
+
+    def test_the_report_has_areas_and_what_is_in_common_and_draws_the_differences(self):
+        shapes = {name: shape.Clone() for name, shape in self.shapes.items()}
+        west, east, south, north = shapes["Weir"].GetEnvelope()
+        cut = ogr.CreateGeometryFromWkt(f"POLYGON(({west} {north - 100},{east} {north - 100},{east} {north},{west} {north},{west} {north - 100}))")
+        shapes["Weir"] = shapes["Weir"].Difference(cut)
+        _, drawn, _ = self.run_drawn(shapes)
+        report = (self.town / "drawn/report.html").read_text()
+        section = report[report.index("Hand-drawn catchments beside those of the elevations"):].split("</section>")[0]
+        rows = [re.findall(r"<td[^>]*>(.*?)</td>", row) for row in section.split("<tr>")[2:]]
+        self.assertEqual(len(rows), len(drawn))
+        for row in rows:
+            row[0] = re.sub("<[^>]*>", "", row[0])
+            of = drawn[row[0]]
+            for shown, column in zip(row[1:], ("drawn_area_ha", "area_by_elevations_ha", "in_both_ha", "drawn_only_ha", "elevations_only_ha", "overlap_percent")):
+                self.assertAlmostEqual(float(shown), float(of[column]), delta=6e-4 * float(of[column]) + 0.051 * (column == "overlap_percent"), msg=(row[0], column))
+        self.assertEqual(rows[0][0], "Weir")
+        self.assertEqual([float(row[-1]) for row in rows], sorted(float(row[-1]) for row in rows))
+        data = json.loads(re.search(r'id="map-data">(.*?)</script>', report, re.S)[1])
+        self.assertEqual(len(data["differences"]), 2)
+        self.assertTrue(any(data["differences"][1]["areas"]))
+        self.assertIn("catchment by the elevations only", report)
 
     def test_catchments_of_the_program_get_their_points_back_and_nothing_differs(self):
         outlets, drawn, notices = self.run_drawn(self.shapes)

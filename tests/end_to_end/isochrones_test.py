@@ -7,7 +7,7 @@ import unittest
 from osgeo import ogr
 
 from peaks_test import demo_with_peaks, intensity
-from support import COMMAND, DemoTest, class_folder, table
+from support import COMMAND, CommandTest, DemoTest, class_folder, table
 
 YEARS = 10
 
@@ -79,6 +79,118 @@ class Runoff(unittest.TestCase):
             for field in ("ca_m2", "ca_until_m2", "rain_duration_min", "intensity_mm_per_h", "flow_m3_per_s", "return_period_years"):
                 self.assertAlmostEqual(feature[field], band[field], delta=1e-6 * abs(band[field]))
             self.assertEqual(feature["subareas"], "; ".join(f"{p['subarea']} {p['area_m2']:.1f}" for p in band["subareas"]))
+
+
+class Asked(unittest.TestCase):
+    """So many bands in place of a step, the catchments of two points besides, one above the other, and smoothed borders."""
+
+    @classmethod
+    def setUpClass(cls):
+        folder = class_folder(cls, "test")
+        demo_with_peaks(folder)
+        town = folder / "town"
+        base = (town / "peaks.toml").read_text()
+        asked = 'isochrones = "9 bands"\nisochrone_catchments = ["Mill bridge", "Market footbridge"]\n'
+        cls.said = {}
+        for name, more in {"cells": asked, "smooth": asked + 'isochrone_borders = "smoothed"\n', "steps": 'isochrones = "10 min"\n'}.items():
+            (town / f"{name}.toml").write_text(base.replace("[output]", f'[output]\nfolder = "{name}"') + more)
+            cls.said[name] = subprocess.run([COMMAND, "run", town / f"{name}.toml"], check=True, capture_output=True, text=True).stderr
+        cls.town = town
+
+    def features(self, name):
+        return json.loads((self.town / name / "isochrones.geojson").read_text())["features"]
+
+    def layer(self, name):
+        self.source = ogr.Open(str(self.town / name / "study.gpkg"))
+        return self.source.GetLayerByName("isochrones")
+
+    def test_the_step_is_the_shortest_round_one_for_so_many_bands_and_is_said(self):
+        steps = {f["properties"]["to_min"] - f["properties"]["from_min"] for f in self.features("cells")}
+        self.assertEqual(steps, {10.0})
+        self.assertEqual(json.loads((self.town / "cells/result.json").read_text())["parameters"]["isochrones"],
+                         {"step_min": 10.0, "bands_at_most": 9, "catchments": ["Mill bridge", "Market footbridge"], "borders": "cells"})
+        self.assertIn("isochrones: every 10 min, the shortest round step that gives at most 9 bands", self.said["cells"])
+        self.assertNotIn("isochrones:", self.said["steps"])
+        self.assertLessEqual(max(f["properties"]["to_min"] for f in self.features("cells")), 90)
+
+    def test_but_for_the_catchments_asked_for_all_is_as_with_that_step_stated(self):
+        others = [f for f in self.features("cells") if f["properties"]["of"] == "subarea" or f["properties"]["point"] not in ("Mill bridge", "Market footbridge")]
+        self.assertEqual(others, self.features("steps"))
+
+    def test_catchments_asked_for_have_the_areas_and_parts_of_all_that_drains_to_them(self):
+        outlets = {r["name"]: r for r in table(self.town / "cells/tables/outlets.csv")}
+        for point in ("Mill bridge", "Market footbridge"):
+            bands = [f["properties"] for f in self.features("cells") if f["properties"]["of"] == "catchment" and f["properties"]["point"] == point]
+            area = sum(b["area_m2"] for b in bands) / 1e4
+            self.assertAlmostEqual(area, float(outlets[point]["area_ha"]), delta=1e-4 * area)
+            self.assertEqual(bands[-1]["share_until"], 1.0)
+            self.assertEqual(bands[-1]["to_min"], 10 * (int(float(outlets[point]["greatest_time_min"]) / 10) + 1))
+            for band in bands:
+                self.assertAlmostEqual(sum(p["area_m2"] for p in band["subareas"]), band["area_m2"], delta=0.06 * len(band["subareas"]))
+            self.assertAlmostEqual(bands[-1]["rain_duration_min"], float(outlets[point]["greatest_time_min"]), delta=6e-4)
+
+    def test_smoothed_borders_are_shared_and_leave_the_areas_nearly_as_they_were(self):
+        cells = {(f["of"], f["point"], f["from_min"]): f.GetGeometryRef().Clone() for f in self.layer("cells")}
+        cell = 2.0   # metres
+        sums = {}
+        for feature in self.layer("smooth"):
+            key = feature["of"], feature["point"], feature["from_min"]
+            shape = feature.GetGeometryRef()
+            self.assertTrue(shape.IsValid(), key)
+            corners = sum(ring.GetPointCount() - 1 for polygon in cells[key] for ring in polygon)
+            self.assertLessEqual(abs(shape.GetArea() - cells[key].GetArea()), corners * cell**2 / 8, key)
+            self.assertLessEqual(shape.Difference(cells[key].Buffer(0.36 * cell)).GetArea(), 1e-6, key)
+            self.assertEqual(feature["borders"], "smoothed")
+            sums.setdefault(feature["of"] if feature["of"] == "subarea" else key[:2], []).append(shape.Clone())
+        for key, shapes in sums.items():
+            whole = ogr.Geometry(ogr.wkbMultiPolygon)
+            for shape in shapes:
+                for polygon in shape:
+                    whole.AddGeometry(polygon)
+            together = whole.UnionCascaded().GetArea()
+            self.assertAlmostEqual(together, sum(shape.GetArea() for shape in shapes), delta=1e-6 * together, msg=key)
+
+    def test_the_layer_says_that_it_is_smoothed(self):
+        self.assertIn("smoothed", self.layer("smooth").GetMetadataItem("DESCRIPTION") or "")
+        self.assertNotIn("smoothed", self.layer("cells").GetMetadataItem("DESCRIPTION") or "")
+        self.assertIn("smoothed", json.loads((self.town / "smooth/isochrones.geojson").read_text())["description"])
+
+
+class WhatPipesChange(unittest.TestCase):
+    def test_layer_and_report_say_that_stated_times_are_not_in_the_bands(self):
+        folder = class_folder(type(self), "test")
+        demo_with_peaks(folder, overrides="point,way_time\nSchool inlet,3 min\n", more='isochrones = "10 min"\n')
+        result = folder / "town/result"
+        text = json.loads((result / "isochrones.geojson").read_text())
+        self.assertIn("over the ground", text["description"])
+        self.assertIn("over the ground", ogr.Open(str(result / "study.gpkg")).GetLayerByName("isochrones").GetMetadataItem("DESCRIPTION"))
+        self.assertIn("over the ground: what pipes and stated times change is not in them", (result / "report.html").read_text())
+        stated = {f["properties"]["point"]: f["properties"]["stated_above"] for f in text["features"]}
+        self.assertEqual(stated["School inlet"], "School inlet (way)")
+        self.assertIn(None, stated.values())
+
+
+class Wrongly(CommandTest):
+    def study(self, output):
+        self.done("demo", "town")
+        study = self.folder / "town/study.toml"
+        study.write_text(study.read_text().replace('isochrones = "10 min"', output))
+        return "town/study.toml"
+
+    def test_a_point_that_is_not_there_is_refused_with_the_nearest_name(self):
+        study = self.study('isochrones = "10 min"\nisochrone_catchments = ["Mil bridge"]')
+        self.refused(1, "run", study, says=("isochrone_catchments", "'Mil bridge'", "did you mean Mill bridge?"))
+        check = self.rillclock("check", study)
+        self.assertEqual(check.returncode, 1)
+        self.assertIn("did you mean Mill bridge?", check.stderr)
+
+    def test_so_many_bands_are_a_whole_number_from_one(self):
+        for bad in ("0 bands", "2.5 bands", "some bands", "1001 bands", "-3 bands"):
+            with self.subTest(bad):
+                self.refused(1, "check", self.study(f'isochrones = "{bad}"'), says=("output.isochrones", "12 bands"))
+
+    def test_smoothing_without_isochrones_is_refused(self):
+        self.refused(1, "run", self.study('isochrone_borders = "smoothed"'), says=("asks for none", 'isochrones = "5 min"'))
 
 
 class WithoutRunoff(DemoTest):

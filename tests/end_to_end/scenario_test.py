@@ -123,6 +123,40 @@ class BesideAStudyOfItsOwn(unittest.TestCase):
         self.assertIn("Scenario 'after'", self.said.stdout)
         self.assertIn("comparison-after", self.said.stdout)
 
+    def test_the_report_has_what_each_scenario_changes_and_its_figures_beside_the_study(self):
+        report = (self.town / "both/report.html").read_text()
+        section = report[report.index("Scenarios beside the study"):].split("</section>")[0]
+        for change in ("surface.cover = cover-plan.tif", "rain.formula = i[mm/h] = 1200 T^0.2 / (t[min] + 12)^0.85", "timing.sheet_limit = 50 ft"):
+            self.assertIn(f"<code>{change}</code>", section)
+        rows = {r[0]: r for r in (re.findall(r"<td[^>]*>(.*?)</td>", row) for row in section.split("<tr>")[2:])}
+        for row in table(self.town / "both/comparison-after/tables/comparison.csv"):
+            shown = re.match(r"([\d.]+) → ([\d.]+) \((.)([\d.]+) %\)$", rows[row["point"]][1])
+            self.assertAlmostEqual(float(shown[1]), float(row["time_before_min"]), delta=6e-4 * float(row["time_before_min"]))
+            self.assertAlmostEqual(float(shown[2]), float(row["time_after_min"]), delta=6e-4 * float(row["time_after_min"]))
+            self.assertAlmostEqual((-1 if shown[3] == "−" else 1) * float(shown[4]), float(row["time_change_percent"]), delta=0.051)
+            self.assertEqual(rows[row["point"]][-1], row["worse"])
+        peaks = {(r["point"], r["return_period_years"]): r for r in table(self.town / "both/comparison-after/tables/compared_peaks.csv")}
+        for place, years in enumerate(("2", "10", "100")):
+            for point, row in rows.items():
+                before, after = re.match(r"([\d.]+) → ([\d.]+) ", row[2 + place]).groups()
+                self.assertAlmostEqual(float(before), float(peaks[point, years]["peak_before_m3_per_s"]), delta=6e-4 * float(before))
+                self.assertAlmostEqual(float(after), float(peaks[point, years]["peak_after_m3_per_s"]), delta=6e-4 * float(after))
+        self.assertIn("scenario-after/report.html", section)
+        own = (self.town / "both/scenario-after/report.html").read_text()
+        self.assertIn("../report.html", own)
+        self.assertNotIn("Scenarios beside the study", own)
+
+    def test_json_holds_the_scenarios_as_their_files_do(self):
+        said = subprocess.run([COMMAND, "run", self.town / "both.toml", "--replace", "--json"], check=True, capture_output=True, text=True).stdout
+        printed = json.loads(said)
+        results = printed.pop("scenario_results")
+        self.assertEqual(printed, json.loads((self.town / "both/result.json").read_text()))
+        self.assertEqual([r["name"] for r in results], ["after"])
+        self.assertEqual(results[0]["result"], json.loads((self.town / "both/scenario-after/result.json").read_text()))
+        self.assertEqual(results[0]["comparison"], json.loads((self.town / "both/comparison-after/result.json").read_text()))
+        self.assertEqual(results[0]["folder"], str(self.town / "both/scenario-after"))
+        self.assertEqual(results[0]["changes"][-1], "timing.sheet_limit = 50 ft")
+
     def test_one_point_of_the_scenario_can_be_explained(self):
         run = subprocess.run([COMMAND, "explain", self.town / "both/scenario-after", "Weir"], check=True, capture_output=True, text=True)
         self.assertIn("Weir", run.stdout)

@@ -18,7 +18,7 @@ namespace rillclock {
 /// Whose times an isochrone band is of.
 enum class IsochroneScope {
     subarea,     ///< a point's own subarea: times to that point
-    catchment,   ///< the whole catchment of a last point: times to it
+    catchment,   ///< the whole catchment of a last point, or of another that is asked for: times to it
 };
 
 /// What a subarea has of a band.
@@ -39,6 +39,8 @@ struct IsochroneBand {
 /// Which isochrones are made.
 struct IsochroneRules {
     Duration step;
+    std::vector<PointNumber> catchments = {};   ///< points whose whole catchment has bands, besides the last points
+    bool smoothed = false;                      ///< whether borders have the corners of cells cut off (`RegionBorders::smooth_outline`)
     std::size_t most_bands = 100'000;
     std::size_t most_pieces = 20'000'000;   ///< straight pieces of border: a gigabyte
 };
@@ -69,8 +71,8 @@ public:
     [[nodiscard]] std::vector<CornerPolygon> catchment(PointNumber number) const;
     /// Subareas first; by point, then by time.
     [[nodiscard]] const std::vector<IsochroneBand>& bands() const { return bands_; }
-    /// Outline of a band, in corners of cells.
-    [[nodiscard]] std::vector<CornerPolygon> outline(const IsochroneBand& band) const;
+    /// Outline of a band, smoothed where the rules say so; x counts columns and y rows, from the north-west corner of the grid.
+    [[nodiscard]] std::vector<Polygon> outline(const IsochroneBand& band) const;
     [[nodiscard]] const std::optional<IsochroneRules>& isochrones() const { return isochrones_; }
 
 private:
@@ -81,18 +83,28 @@ private:
         std::vector<RegionLabel> row;
     };
 
+    /// Bands of whole catchments, none of which lies within another.
+    struct CatchmentBands {
+        std::vector<PointNumber> point;                        ///< by owner: whose catchment it is in; 0 none
+        std::vector<double> minutes_below;                     ///< by owner: from that point to the last one
+        Bands bands;
+        std::vector<RegionLabel> row;                          ///< owner and band
+        std::unordered_map<RegionLabel, FixedArea> parts = {}; ///< of bands, by owner and band
+    };
+
     void number_tree();
+    void begin_catchments();
     void label_row(std::span<const std::uint32_t> owners, std::span<const float> minutes);
     void add_row(Bands& bands, std::int64_t row) const;
     void check_bounds() const;
     static void add_areas(const std::vector<RegionLabel>& row, FixedArea cell_area, std::unordered_map<RegionLabel, FixedArea>& areas);
     void list_bands(const Bands& bands, IsochroneScope scope);
-    void list_parts();
+    void list_parts(const CatchmentBands& catchments);
+    [[nodiscard]] const RegionBorders& borders_of(const IsochroneBand& band) const;
 
     const Grid& grid_;
     const Ground& ground_;
     const PointTree& tree_;
-    std::vector<PointNumber> last_;
     std::vector<double> minutes_to_last_;
     std::optional<IsochroneRules> isochrones_;
     std::vector<RegionLabel> place_;          ///< by number: where it comes when every point follows all that drain to it; from 1
@@ -100,9 +112,7 @@ private:
     RegionBorders owners_;
     std::vector<RegionLabel> owner_row_;
     Bands subareas_;
-    Bands catchments_;
-    std::vector<RegionLabel> part_row_;
-    std::unordered_map<RegionLabel, FixedArea> parts_;   ///< of catchment bands, by subarea and band
+    std::vector<CatchmentBands> catchments_;   ///< first those of the last points, then those within them, and so on
     std::vector<IsochroneBand> bands_;
 };
 

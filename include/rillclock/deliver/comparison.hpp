@@ -53,6 +53,10 @@ struct Comparison {
     [[nodiscard]] std::vector<std::size_t> worse() const;
 };
 
+/// How many points get worse, and which most.
+[[nodiscard]] std::string comparison_sentence(const Comparison& comparison);
+/// Places of all points: those that get worse, the worst first, then the others by how much their time changes.
+[[nodiscard]] std::vector<std::size_t> places_by_change(const Comparison& comparison);
 /// A sentence on the whole and a table for a terminal: points that get worse first, then those that change most; at most `most` rows.
 [[nodiscard]] std::string comparison_text(const Comparison& comparison, std::size_t most);
 /// `tables/comparison.csv`: a row a point.

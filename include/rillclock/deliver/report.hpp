@@ -7,6 +7,7 @@
 
 #include "rillclock/catchment/study_regions.hpp"
 #include "rillclock/deliver/calculation_sheet.hpp"
+#include "rillclock/deliver/comparison.hpp"
 #include "rillclock/deliver/study_result.hpp"
 
 namespace rillclock {
@@ -29,8 +30,27 @@ struct ReportMatter {
     std::function<double(Cell)> ground_m;   ///< elevation of the ground, in metres
 };
 
+/// A scenario beside the study, for the study's report.
+struct ScenarioBeside {
+    std::string name;
+    std::string folder;                ///< of its result and of the comparison, from the study's
+    std::string comparison_folder;
+    std::vector<std::string> changes;  ///< what it states in place of the study: "surface.cover = cover-plan.tif"
+    Comparison comparison;
+};
+
+/// The text of `report.html`, but for what is known only when the scenarios are worked out: `scenarios_section` belongs between the two.
+struct ReportText {
+    std::string before;
+    std::string after;
+};
+
 /// `report.html`: one file that needs no network and no script to be read and printed. At most about 10 MB: beyond, points with smaller
 /// catchments have shorter sections, then none; what was left out is said.
-[[nodiscard]] std::string report_html(const ReportMatter& matter);
+[[nodiscard]] ReportText report_html(const ReportMatter& matter);
+
+/// What each scenario changes, and its times and peaks beside the study's: the points that get worse first, at most 20 of each scenario. Nothing
+/// where there are no scenarios.
+[[nodiscard]] std::string scenarios_section(const std::vector<ScenarioBeside>& scenarios);
 
 }  // namespace rillclock

@@ -1,5 +1,6 @@
 #pragma once
 
+#include <algorithm>
 #include <optional>
 #include <span>
 #include <string>
@@ -8,6 +9,7 @@
 #include "rillclock/catchment/drawn_catchments.hpp"
 #include "rillclock/catchment/outlet.hpp"
 #include "rillclock/catchment/point_network.hpp"
+#include "rillclock/catchment/study_regions.hpp"
 #include "rillclock/core/notice.hpp"
 #include "rillclock/io/elevation_file.hpp"
 #include "rillclock/io/reference_system.hpp"
@@ -69,6 +71,7 @@ struct StudyResult {
     std::span<const std::string> reviewed = {};   ///< a person's word on each notice; empty where there is none at all
     std::span<const DrawnDifference> drawn = {};   ///< hand-drawn catchments beside those of the elevations, by point
     const Uncertainty* uncertainty = nullptr;   ///< null where the study does not ask for it
+    const IsochroneRules* isochrones = nullptr; ///< null where the study does not ask for them
 };
 
 /// The intensity of the storm that a point's paths and segments are for; none where sheet flow does not depend on it.
@@ -81,6 +84,11 @@ struct StudyResult {
 [[nodiscard]] inline const MappedSection* section_of(const StudyResult& result, const Segment& segment) {
     const bool is_stated = segment.reach_from != nullptr && segment.reach_from->section != no_section;
     return is_stated ? &result.sections[segment.reach_from->section] : nullptr;
+}
+
+/// Whether pipes or stated times shorten or lengthen ways, which the times of cells know nothing of: those are over the ground.
+[[nodiscard]] inline bool has_stated_times(const StudyResult& result) {
+    return std::any_of(result.network.edits.begin(), result.network.edits.end(), [](const PointEdit& edit) { return edit.changes_times(); });
 }
 
 /// The name of a design point.

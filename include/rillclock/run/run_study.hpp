@@ -26,6 +26,9 @@ struct ScenarioOutcome {
     std::vector<std::string> facts;
     std::string comparison;                   ///< with the study: a sentence and a short table
     std::size_t worse = 0;                    ///< points that get worse by more than the tolerance of `CompareOptions`
+    std::vector<std::string> changes;         ///< what it states in place of the study: "surface.cover = cover-plan.tif"
+    std::string json;                         ///< `result.json` of its own result
+    std::string comparison_json;              ///< and of the comparison
 };
 
 /// What a finished run tells its caller; all of it, and more, is in the result folder.
@@ -38,6 +41,10 @@ struct RunOutcome {
     std::string json;                     ///< `result.json`
     std::vector<ScenarioOutcome> scenarios;
 };
+
+/// All figures of a run as one JSON document: `result.json`, and where there are scenarios a member `scenario_results` more, with the name,
+/// folders, changes, `result.json` and comparison of each.
+[[nodiscard]] std::string json_of(const RunOutcome& outcome);
 
 /// The whole of a study: reads the rasters, settles the flow, times it, works out every design point, and writes the result
 /// folder, which appears whole or not at all. Scenarios are worked out on the same flow, which is found once; each has a result of its own

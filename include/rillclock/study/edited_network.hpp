@@ -16,6 +16,8 @@ struct PointEdit {
     PointNumber piped_to = 0;
     const PointOverride* stated = nullptr;
 
+    /// Whether a time is another one than that over the ground.
+    [[nodiscard]] bool changes_times() const;
     [[nodiscard]] bool is_any() const { return pipe != nullptr || stated != nullptr; }
 };
 

@@ -20,6 +20,9 @@ void check_scenario_name(std::string_view name, std::string_view where);
 /// to a hydraulic radius, a raster of soil groups to one letter.
 [[nodiscard]] Study scenario_study(const Study& base, const ScenarioStudy& scenario);
 
+/// What a scenario states, as a line of a study file would: "surface.cover = cover-plan.tif".
+[[nodiscard]] std::string words(const StatedChange& change);
+
 /// Where in the result folder the scenario's own result stands: "scenario-after".
 [[nodiscard]] std::string scenario_folder(const ScenarioStudy& scenario);
 /// Where in the result folder its comparison with the study stands: "comparison-after".

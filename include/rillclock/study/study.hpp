@@ -176,12 +176,22 @@ struct PeakStudy {
 /// What is stated for methods that time a catchment as one lump; what is not comes from the cover book, where it can.
 using MethodStudy = ByLumpInput<LumpValue>;
 
+/// Isochrones, as stated.
+struct IsochroneStudy {
+    std::optional<Duration> step = {};          ///< between them
+    std::optional<int> bands = {};              ///< or at most so many, the step then being a round one
+    std::vector<std::string> catchments = {};   ///< points whose whole catchment has bands besides those of the last points
+    bool smoothed = false;                      ///< borders with the corners of cells cut off
+
+    [[nodiscard]] bool are_asked() const { return step || bands; }
+};
+
 /// Where the result goes and what is in it, as stated.
 struct OutputStudy {
     std::string folder = "result";  ///< relative to the study's folder
     SubareasListed subareas = SubareasListed::least_slacks;
     bool cloud_optimized = false;  ///< rasters as Cloud-Optimized GeoTIFF
-    std::optional<Duration> isochrones = {};  ///< step between them; none are made where absent
+    IsochroneStudy isochrones = {};
     std::optional<bool> all_catchments = {};  ///< whole catchments of all points in study.gpkg, or of the last points; unstated: of all unless they are many
 };
 
@@ -201,6 +211,7 @@ struct ScenarioStudy {
 struct Study {
     std::string file = {};  ///< the study file as named by the user; empty where the command line is the study
     std::string title = {};
+    std::string date = {};  ///< that the study is of, "2026-05-01"; empty where it states none
     ReportUnits report_units = ReportUnits::us;
     TerrainStudy terrain = {};
     SurfaceStudy surface = {};

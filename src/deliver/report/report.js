@@ -63,6 +63,18 @@
   var bounds = [at(0, data.rows), at(data.columns, 0)];
   var frame = document.getElementById("map");
 
+  // Dots are no larger than lets the ground between them be seen, and grow as the map is drawn larger.
+  function dotRadius() {
+    var side = Math.pow(2, map.getZoom()) * Math.sqrt(data.columns * data.rows * data.tall / data.points.length);
+    return Math.max(2, Math.min(6, side / 5));
+  }
+  function sizeDots() {
+    var radius = dotRadius();
+    Object.keys(marks).forEach(function (number) {
+      if (number !== chosen) marks[number].setStyle({ weight: radius < 4 ? 1 : 2 }).setRadius(radius);
+    });
+  }
+
   // The frame is as high as the map at that width, and no higher than there is room.
   function fitFrame(width, most) {
     frame.style.height = Math.round(Math.max(160, Math.min(most, width * data.rows * data.tall / data.columns))) + "px";
@@ -107,6 +119,13 @@
         L.polygon(rings.map(line), { color: "#222", weight: 1, opacity: 0.55, fill: false, interactive: false }).addTo(map);
       });
     });
+    data.differences.forEach(function (side) {
+      side.areas.forEach(function (polygons) {
+        polygons.forEach(function (rings) {
+          L.polygon(rings.map(line), { color: side.colour, weight: 2, dashArray: side.dash, fillColor: side.colour, fillOpacity: 0.5, interactive: false }).addTo(map);
+        });
+      });
+    });
     data.points.forEach(function (point) {
       (data.paths[point.number - 1] || []).forEach(function (piece) {
         L.polyline(line(piece[1]), { color: data.regimes[piece[0]].colour, weight: data.regimes[piece[0]].weight, dashArray: data.regimes[piece[0]].dash, interactive: false }).addTo(map);
@@ -121,10 +140,12 @@
     data.points.forEach(function (point) {
       var name = document.createElement("span");
       name.textContent = point.name + ", " + point.time + " min";
-      marks[point.number] = L.circleMarker(at(point.at[0], point.at[1]), { radius: 6, color: "#000", weight: 2, fillColor: "#fff", fillOpacity: 1 })
+      marks[point.number] = L.circleMarker(at(point.at[0], point.at[1]), { color: "#000", fillColor: "#fff", fillOpacity: 1 })
         .bindTooltip(name).on("click", function () { location.hash = "p" + point.number; }).addTo(map);
       if (few) reachByKey(marks[point.number], point);
     });
+    sizeDots();
+    map.on("zoomend", sizeDots);
     var width = frame.parentNode.clientWidth;
     window.addEventListener("resize", function () {
       if (frame.parentNode.clientWidth === width) return;
@@ -137,7 +158,7 @@
   var longest = null;
   function showOnMap(number) {
     if (!map) return;
-    if (chosen) marks[chosen].setStyle({ fillColor: "#fff", radius: 6 }).setRadius(6);
+    if (chosen) marks[chosen].setStyle({ fillColor: "#fff" }).setRadius(dotRadius());
     if (longest) { longest.remove(); longest = null; }
     if (data.longest[number - 1]) longest = L.polyline(line(data.longest[number - 1]), { color: "#cc79a7", weight: 4, dashArray: "2 7", interactive: false }).addTo(map);
     marks[number].setStyle({ fillColor: "#cc79a7" }).setRadius(9).bringToFront();
@@ -188,13 +209,16 @@
   window.addEventListener("beforeprint", function () {
     opened = Array.prototype.filter.call(document.querySelectorAll("section.asked details.sheet, section.on details.sheet"), function (sheet) { return !sheet.open; });
     opened.forEach(function (sheet) { sheet.open = true; });
-    // 96 dots an inch: 170 mm of paper, and half a page at most.
-    frame.style.width = "640px";
-    fitFrame(640, 460);
+    // 96 dots an inch: 170 mm of paper wide and 150 mm high at most, and no larger than the map; a narrow one has its legend beside it.
+    var scale = Math.min(640 / data.columns, 570 / (data.rows * data.tall));
+    frame.style.width = Math.round(data.columns * scale) + "px";
+    frame.style.height = Math.round(data.rows * data.tall * scale) + "px";
+    frame.parentNode.classList.toggle("beside", data.columns * scale < 500);
     showAll();
   });
   window.addEventListener("afterprint", function () {
     opened.forEach(function (sheet) { sheet.open = false; });
+    frame.parentNode.classList.remove("beside");
     fitScreen();
     showAll();
   });

@@ -1,6 +1,9 @@
 #include "rillclock/raster/region_outlines.hpp"
 
+#include <algorithm>
+#include <array>
 #include <catch2/catch.hpp>
+#include <cmath>
 #include <map>
 #include <random>
 #include <set>
@@ -159,5 +162,83 @@ TEST_CASE("outlines cover random labels exactly, whatever the labels and the siz
         const RegionBorders borders = borders_of(labels);
         for (const RegionLabel label : borders.labels()) check_outline(labels, borders, label, label);
         if (kinds > 1) check_outline(labels, borders, 1, 1 + random() % kinds);
+    }
+}
+
+namespace {
+
+/// The outlines of all labels with their corners cut off, and what a test asks of them together.
+struct Smoothed {
+    std::map<RegionLabel, double> areas;
+    std::map<RegionLabel, std::size_t> corners;
+    std::map<std::array<double, 4>, int> sides;   ///< from, to: how often
+};
+
+Smoothed smoothed(const RegionBorders& borders) {
+    Smoothed made;
+    for (const RegionLabel label : borders.labels()) {
+        for (const CornerPolygon& polygon : borders.outline(label)) {
+            for (const CornerRing& ring : polygon.rings) made.corners[label] += ring.size();
+        }
+        for (const Polygon& polygon : borders.smooth_outline(label)) {
+            for (const Line& ring : polygon.rings) {
+                for (std::size_t i = 0; i < ring.size(); ++i) {
+                    const Place& a = ring[i];
+                    const Place& b = ring[(i + 1) % ring.size()];
+                    made.areas[label] += (b.x * a.y - a.x * b.y) / 2.0;
+                    ++made.sides[{a.x, a.y, b.x, b.y}];
+                }
+            }
+        }
+    }
+    return made;
+}
+
+}  // namespace
+
+TEST_CASE("a smoothed cell is cut at the middle of its sides") {
+    const std::vector<Polygon> polygons = borders_of(drawing({"...", ".a.", "..."})).smooth_outline('a');
+    REQUIRE(polygons.size() == 1);
+    std::set<std::pair<double, double>> places;
+    for (const Place& at : polygons[0].rings[0]) places.insert({at.x, at.y});
+    CHECK(polygons[0].rings[0].size() == 4);
+    CHECK(places == std::set<std::pair<double, double>>{{1.0, 1.5}, {1.5, 1.0}, {2.0, 1.5}, {1.5, 2.0}});
+}
+
+TEST_CASE("smoothing keeps the corners in which three borders meet, and those in which cells touch") {
+    const RegionBorders borders = borders_of(drawing({"ab", "ba"}));
+    for (const RegionLabel label : {'a', 'b'}) {
+        for (const Polygon& polygon : borders.smooth_outline(static_cast<RegionLabel>(label))) {
+            const Line& ring = polygon.rings[0];
+            CHECK(std::any_of(ring.begin(), ring.end(), [](const Place& at) { return at.x == 1.0 && at.y == 1.0; }));
+        }
+    }
+}
+
+TEST_CASE("smoothed neighbours share their borders, and no area is made or lost but at the corners of the whole") {
+    std::mt19937 random(11);
+    for (int round = 0; round < 400; ++round) {
+        const std::size_t rows = 1 + random() % 12;
+        const std::size_t columns = 1 + random() % 12;
+        Labels labels(rows, std::vector<RegionLabel>(columns));
+        std::map<RegionLabel, double> cells;
+        for (auto& row : labels) {
+            for (auto& label : row) cells[label = 1 + random() % (1 + static_cast<std::size_t>(round) % 4)] += 1.0;
+        }
+        const Smoothed made = smoothed(borders_of(labels));
+        double all = 0.0;
+        for (const auto& [label, area] : made.areas) {
+            all += area;
+            CHECK(std::abs(area - cells[label]) <= static_cast<double>(made.corners.at(label)) / 8.0);
+        }
+        CHECK(all == static_cast<double>(rows * columns) - 0.5);   // four corners of the whole, an eighth each
+        for (const auto& [side, count] : made.sides) {
+            const auto& [ax, ay, bx, by] = side;
+            CHECK(count == 1);
+            const auto far = static_cast<double>(columns) - 0.5;
+            const auto low = static_cast<double>(rows) - 0.5;
+            const bool at_outside = std::min(ax, bx) < 0.5 || std::max(ax, bx) > far || std::min(ay, by) < 0.5 || std::max(ay, by) > low;
+            if (!at_outside) CHECK(made.sides.count({bx, by, ax, ay}) == 1);
+        }
     }
 }

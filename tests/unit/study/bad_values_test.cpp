@@ -35,12 +35,16 @@ enum class Kind {
     formula,
     soil,
     soil_classes,
+    day,            ///< of the calendar
+    texts,          ///< a list of them, or one
+    duration_or_bands,
     range,          ///< "LOW to HIGH", each a number with the key's own unit
 };
 
 /// Every key of a study with the kind of value it takes. A new key needs its line here.
 const std::map<std::string, Kind> kinds{
     {"title", Kind::text},
+    {"date", Kind::day},
     {"report_units", Kind::word},
     {"terrain.elevation", Kind::text},
     {"terrain.band", Kind::count},
@@ -137,7 +141,9 @@ const std::map<std::string, Kind> kinds{
     {"methods.kirpich_factor", Kind::number},
     {"output.catchments", Kind::word},
     {"output.folder", Kind::text},
-    {"output.isochrones", Kind::duration},
+    {"output.isochrones", Kind::duration_or_bands},
+    {"output.isochrone_catchments", Kind::texts},
+    {"output.isochrone_borders", Kind::word},
     {"output.rasters", Kind::word},
     {"output.subareas", Kind::word},
 };
@@ -178,6 +184,12 @@ Values bad_values(Kind kind) {
             return joined({"\"0 m/s\""}, bad_quantities("m/s", "m"));
         case Kind::area:
             return joined({"\"0 ha\""}, bad_quantities("ha", "m"));
+        case Kind::day:
+            return {"\"\"", "1", "true", "[1]", "\"1 May 2026\"", "\"2026-13-01\"", "\"2026-02-29\"", "\"2026-5-1\"", "\"2026-05-01T10:00\"", "\"+026-05-01\""};
+        case Kind::texts:
+            return {"\"\"", "1", "nan", "true", "[]", "[1]", "[\"\"]", "[\"Weir\", 2]", "{ a = \"Weir\" }"};
+        case Kind::duration_or_bands:
+            return joined({"\"0 bands\"", "\"1.5 bands\"", "\"bands\"", "\" bands\"", "\"1001 bands\"", "12"}, bad_values(Kind::duration));
         case Kind::duration:
             return joined({"\"0 min\""}, bad_values(Kind::duration_or_zero));
         case Kind::duration_or_zero:
