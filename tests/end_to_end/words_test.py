@@ -1,5 +1,6 @@
 #!/usr/bin/python3
 """The words of the command line, and that README and program say the same of them."""
+import functools
 import os
 import re
 import shutil
@@ -13,6 +14,7 @@ README = (SOURCE / "README.md").read_text(encoding="utf-8")
 COMMANDS = ("run", "check", "explain", "compare", "methods", "completion", "manual", "demo")
 
 
+@functools.cache
 def help_of(*words):
     return subprocess.run([COMMAND, *words, "--help"], capture_output=True, text=True, check=True).stdout
 
