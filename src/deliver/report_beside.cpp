@@ -12,7 +12,7 @@ namespace {
 
 using Cells = std::vector<std::string>;
 
-constexpr std::size_t most_rows = 20;
+constexpr std::size_t most_compared = 20;
 
 /// "12.4 → 10.1 (−18.5 %)"; a dash where either lacks.
 std::string two_figures(const TwoFigures& two) {
@@ -43,7 +43,7 @@ std::string peak_of_period(const ComparedPoint& point, double period) {
     return found == point.periods.end() ? "–" : two_figures(found->peak);
 }
 
-std::string last_words(const ComparedPoint& point) {
+std::string compared_last_words(const ComparedPoint& point) {
     if (point.last_before.empty() || point.last_after.empty()) return "–";
     if (point.last_before == point.last_after) return html_text(point.last_before);
     return html_text(point.last_before) + " → " + html_text(point.last_after);
@@ -56,11 +56,11 @@ std::string compared_table(const Comparison& comparison) {
     head.insert(head.end(), {"same path head", "arrives last", "gets worse"});
     std::vector<Cells> rows;
     for (const std::size_t place : places_by_change(comparison)) {
-        if (rows.size() == most_rows) break;
+        if (rows.size() == most_compared) break;
         const ComparedPoint& point = comparison.points[place];
         Cells row{html_text(point.name), two_figures(point.time_min)};
         for (const double period : periods) row.push_back(peak_of_period(point, period));
-        row.insert(row.end(), {point.has_same_head ? "yes" : "no", last_words(point), point.worsening() > comparison.tolerance ? "yes" : "no"});
+        row.insert(row.end(), {point.has_same_head ? "yes" : "no", compared_last_words(point), point.worsening() > comparison.tolerance ? "yes" : "no"});
         rows.push_back(std::move(row));
     }
     return plain_table(head, rows);
@@ -73,7 +73,7 @@ std::string one_scenario(const ScenarioBeside& scenario) {
     html += "</ul><p>" + html_text(comparison_sentence(scenario.comparison)) + " Each figure is that of the study → that of the scenario (change).</p>" +
             compared_table(scenario.comparison);
     const std::size_t points = scenario.comparison.points.size();
-    if (points > most_rows) html += "<p>The " + std::to_string(most_rows) + " of " + std::to_string(points) + " points that get worse or change most are shown.</p>";
+    if (points > most_compared) html += "<p>The " + std::to_string(most_rows) + " of " + std::to_string(points) + " points that get worse or change most are shown.</p>";
     return html + "<p>The scenario has <a href=\"" + html_text(scenario.folder) + "/report.html\">a report of its own</a>; all points are in " +
            html_text(scenario.comparison_folder) + "/tables/comparison.csv.</p>\n";
 }
@@ -96,7 +96,7 @@ std::string drawn_section(const StudyResult& result) {
     const auto area = [&](FixedArea of) { return significant(scale.area(from_fixed_area(of)), 4); };
     std::vector<Cells> rows;
     for (const std::size_t i : order) {
-        if (rows.size() == most_rows) break;
+        if (rows.size() == most_compared) break;
         const DrawnDifference& one = result.drawn[i];
         rows.push_back({"<a href=\"#p" + std::to_string(one.point) + "\">" + html_text(result.outlets[one.point - 1].point.name) + "</a>", area(one.drawn),
                         area(one.found), area(one.both), area(one.drawn_only_area()), area(one.found_only_area()), fixed_decimals(100.0 * one.overlap(), 1)});

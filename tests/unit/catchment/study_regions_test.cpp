@@ -7,7 +7,7 @@ using namespace rillclock;
 
 namespace {
 
-constexpr Grid grid{.rows = 1, .columns = 7, .left = 0.0, .top = 1.0, .cell_width = 1.0, .cell_height = 1.0};
+constexpr Grid row_grid{.rows = 1, .columns = 7, .left = 0.0, .top = 1.0, .cell_width = 1.0, .cell_height = 1.0};
 
 /// One row of seven cells: 1 drains to 2, 2 to 3, which is the last; the seventh cell drains to none.
 struct Chain {
@@ -18,8 +18,8 @@ struct Chain {
     std::vector<double> to_last{20, 10, 0};
 
     [[nodiscard]] StudyRegions regions(const IsochroneRules& rules) const {
-        StudyRegions made(grid, ground, tree, to_last, rules);
-        made.look({.window = {.rows = 1, .columns = grid.columns}, .owners = owners, .minutes = minutes_there});
+        StudyRegions made(row_grid, ground, tree, to_last, rules);
+        made.look({.window = {.rows = 1, .columns = row_grid.columns}, .owners = owners, .minutes = minutes_there});
         made.finish();
         return made;
     }
@@ -33,7 +33,7 @@ std::vector<IsochroneBand> of_point(const StudyRegions& regions, PointNumber poi
     return bands;
 }
 
-double cells_of(const IsochroneBand& band) { return from_fixed_area(band.area); }
+double band_cells(const IsochroneBand& band) { return from_fixed_area(band.area); }
 
 }  // namespace
 
@@ -51,7 +51,7 @@ TEST_CASE("a catchment that is asked for has bands by the time to its own point,
     const std::vector<IsochroneBand> bands = of_point(regions, 2);
     REQUIRE(bands.size() == 2);   // 13 and 11 min; 4 and 2 min
     CHECK(bands[0].number == 0);
-    CHECK(cells_of(bands[0]) == 2.0);
+    CHECK(band_cells(bands[0]) == 2.0);
     REQUIRE(bands[0].parts.size() == 1);
     CHECK(bands[0].parts[0].subarea == 2);
     CHECK(bands[1].number == 1);
@@ -68,7 +68,7 @@ TEST_CASE("catchments within one another have their own bands each, that add up 
         double in_parts = 0.0;
         double outlined = 0.0;
         for (const IsochroneBand& band : of_point(regions, point)) {
-            cells += cells_of(band);
+            cells += band_cells(band);
             for (const IsochronePart& part : band.parts) in_parts += from_fixed_area(part.area);
             for (const Polygon& polygon : regions.outline(band)) outlined += polygon.rings[0][2].x - polygon.rings[0][0].x;
         }

@@ -76,7 +76,7 @@ TEST_CASE("lines are looked at reach by reach: below where they meet once, not o
         66662
         66862
         6666o
-    )"), flow(R"(
+    )"), drawn_flow(R"(
         66312
         66822
         6666o
