@@ -73,7 +73,7 @@ std::string one_scenario(const ScenarioBeside& scenario) {
     html += "</ul><p>" + html_text(comparison_sentence(scenario.comparison)) + " Each figure is that of the study → that of the scenario (change).</p>" +
             compared_table(scenario.comparison);
     const std::size_t points = scenario.comparison.points.size();
-    if (points > most_compared) html += "<p>The " + std::to_string(most_rows) + " of " + std::to_string(points) + " points that get worse or change most are shown.</p>";
+    if (points > most_compared) html += "<p>The " + std::to_string(most_compared) + " of " + std::to_string(points) + " points that get worse or change most are shown.</p>";
     return html + "<p>The scenario has <a href=\"" + html_text(scenario.folder) + "/report.html\">a report of its own</a>; all points are in " +
            html_text(scenario.comparison_folder) + "/tables/comparison.csv.</p>\n";
 }

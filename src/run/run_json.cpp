@@ -1,18 +1,15 @@
-#include <nlohmann/json.hpp>
-
 #include "rillclock/core/error.hpp"
+#include "rillclock/deliver/quoted_json.hpp"
 #include "rillclock/run/run_study.hpp"
 
 namespace rillclock {
 namespace {
 
-std::string quoted(const std::string& text) { return nlohmann::json(text).dump(-1, ' ', false, nlohmann::json::error_handler_t::replace); }
-
 std::string scenario_json(const ScenarioOutcome& scenario) {
     std::string changes;
-    for (const std::string& change : scenario.changes) changes += (changes.empty() ? "" : ", ") + quoted(change);
-    return "{\"name\": " + quoted(scenario.name) + ",\n\"folder\": " + quoted(scenario.folder.string()) + ",\n\"comparison_folder\": " +
-           quoted(scenario.comparison_folder.string()) + ",\n\"changes\": [" + changes + "],\n\"comparison\": " + scenario.comparison_json +
+    for (const std::string& change : scenario.changes) changes += (changes.empty() ? "" : ", ") + quoted_json(change);
+    return "{\"name\": " + quoted_json(scenario.name) + ",\n\"folder\": " + quoted_json(scenario.folder.string()) + ",\n\"comparison_folder\": " +
+           quoted_json(scenario.comparison_folder.string()) + ",\n\"changes\": [" + changes + "],\n\"comparison\": " + scenario.comparison_json +
            ",\"result\": " + scenario.json + "}";
 }
 
