@@ -207,7 +207,7 @@ TEST_CASE("a smoothed cell is cut at the middle of its sides") {
 
 TEST_CASE("smoothing keeps the corners in which three borders meet, and those in which cells touch") {
     const RegionBorders borders = borders_of(drawing({"ab", "ba"}));
-    for (const RegionLabel label : {'a', 'b'}) {
+    for (const char label : {'a', 'b'}) {
         for (const Polygon& polygon : borders.smooth_outline(static_cast<RegionLabel>(label))) {
             const Line& ring = polygon.rings[0];
             CHECK(std::any_of(ring.begin(), ring.end(), [](const Place& at) { return at.x == 1.0 && at.y == 1.0; }));
