@@ -221,8 +221,8 @@ bool has_all_catchments(const Study& study, std::size_t points) {
 
 std::string words_on_left_out_catchments(const Study& study, std::size_t points) {
     if (study.output.all_catchments || has_all_catchments(study, points)) return {};
-    return "study.gpkg has the whole catchments of the last points alone, since there are more than " + std::to_string(most_points_with_catchments) +
-           " points, and the subareas of all; output.catchments = \"all\" asks for all";
+    return "whole catchments in study.gpkg are those of the last points alone, since there are more than " + std::to_string(most_points_with_catchments) +
+           " points; it has the subareas of all, and output.catchments = \"all\" asks for all";
 }
 
 void write_study_geopackage(const std::filesystem::path& path, const StudyResult& result, const StudyRegions& regions) {

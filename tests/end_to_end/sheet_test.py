@@ -277,7 +277,7 @@ class Many(CommandTest):
                          'file = "points.geojson"\nmove_within = "0 m"\n[rain]\ntwo_year_24_hour = "90 mm"\n')
         said = self.done("check", "study.toml")
         self.assertIn("governing_paths.geojson and longest_paths.geojson hold the paths of the last points alone", said)
-        self.assertIn("study.gpkg has the whole catchments of the last points alone", said)
+        self.assertIn("whole catchments in study.gpkg are those of the last points alone", said)
         self.done("run", "study.toml")
         rows = table(self.folder / "result/tables/outlets.csv")
         self.assertEqual(len(rows), 667)
