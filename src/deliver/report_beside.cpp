@@ -17,11 +17,11 @@ constexpr std::size_t most_compared = 20;
 /// "12.4 → 10.1 (−18.5 %)"; a dash where either lacks.
 std::string two_figures(const TwoFigures& two) {
     if (!two.are_both()) return "–";
-    std::string text = significant(*two.before, 4) + " → " + significant(*two.after, 4);
+    std::string text = significant(*two.before, 4) + "\u00a0→\u00a0" + significant(*two.after, 4);
     if (const auto share = two.relative_change()) {
         const double percent = 100.0 * *share;
         const std::string sign = percent > 0 ? "+" : percent < 0 ? "−" : "±";
-        text += " (" + sign + fixed_decimals(std::abs(percent), 1) + " %)";
+        text += "\u00a0(" + sign + fixed_decimals(std::abs(percent), 1) + "\u00a0%)";
     }
     return text;
 }

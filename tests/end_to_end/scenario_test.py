@@ -130,7 +130,7 @@ class BesideAStudyOfItsOwn(unittest.TestCase):
             self.assertIn(f"<code>{change}</code>", section)
         rows = {r[0]: r for r in (re.findall(r"<td[^>]*>(.*?)</td>", row) for row in section.split("<tr>")[2:])}
         for row in table(self.town / "both/comparison-after/tables/comparison.csv"):
-            shown = re.match(r"([\d.]+) → ([\d.]+) \((.)([\d.]+) %\)$", rows[row["point"]][1])
+            shown = re.match(r"([\d.]+)\s→\s([\d.]+)\s\((.)([\d.]+)\s%\)$", rows[row["point"]][1])
             self.assertAlmostEqual(float(shown[1]), float(row["time_before_min"]), delta=6e-4 * float(row["time_before_min"]))
             self.assertAlmostEqual(float(shown[2]), float(row["time_after_min"]), delta=6e-4 * float(row["time_after_min"]))
             self.assertAlmostEqual((-1 if shown[3] == "−" else 1) * float(shown[4]), float(row["time_change_percent"]), delta=0.051)
@@ -138,7 +138,7 @@ class BesideAStudyOfItsOwn(unittest.TestCase):
         peaks = {(r["point"], r["return_period_years"]): r for r in table(self.town / "both/comparison-after/tables/compared_peaks.csv")}
         for place, years in enumerate(("2", "10", "100")):
             for point, row in rows.items():
-                before, after = re.match(r"([\d.]+) → ([\d.]+) ", row[2 + place]).groups()
+                before, after = re.match(r"([\d.]+)\s→\s([\d.]+)\s", row[2 + place]).groups()
                 self.assertAlmostEqual(float(before), float(peaks[point, years]["peak_before_m3_per_s"]), delta=6e-4 * float(before))
                 self.assertAlmostEqual(float(after), float(peaks[point, years]["peak_after_m3_per_s"]), delta=6e-4 * float(after))
         self.assertIn("scenario-after/report.html", section)
