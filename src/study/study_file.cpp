@@ -138,7 +138,7 @@ private:
 
     [[nodiscard]] decltype(StudyValue::value) scalar(const toml::node& node, const std::string& key) const {
         if (const auto* list = node.as_array()) return !list->empty() && list->front().is_string() ? decltype(StudyValue::value)(texts(*list)) : numbers(*list);
-        if (const auto* date = node.as_date()) return day(date->get());
+        if (const auto* date = node.as_date(); date != nullptr && key == "date") return day(date->get());
         if (const auto* text = node.as_string()) return text->get();
         if (const auto* whole = node.as_integer()) return whole->get();
         if (const auto* real = node.as_floating_point()) return real->get();
