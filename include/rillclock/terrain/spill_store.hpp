@@ -30,6 +30,7 @@ public:
     }
     /// The spill elevation of a cell.
     [[nodiscard]] double operator[](Cell cell) const { return at({cell / elevations_->columns(), cell % elevations_->columns()}); }
+    /// The same by row and column.
     [[nodiscard]] double at(RowColumn at) const;
 
     /// Calls `use(cell)` for the cells of a row that lie below their spill elevation, by increasing position.
