@@ -105,7 +105,10 @@ class Report(CommandTest):
         """Shows the open page at a width and in a colour scheme."""
         self.driver.execute_cdp_cmd("Emulation.setDeviceMetricsOverride", {"width": width, "height": 900, "deviceScaleFactor": 1, "mobile": False})
         self.driver.execute_cdp_cmd("Emulation.setEmulatedMedia", {"media": "", "features": [{"name": "prefers-color-scheme", "value": scheme}]})
-        # What the page does when its size changes, it does before the next picture.
+        self.settle()
+
+    def settle(self):
+        """What the page does when its size or its address changes, it does before the next picture."""
         self.driver.execute_async_script("var done = arguments[0]; requestAnimationFrame(function () { requestAnimationFrame(done); });")
 
     def table_of(self, number, summary):
@@ -164,6 +167,7 @@ class Report(CommandTest):
         self.open()
         for row in self.rows[:4]:
             self.driver.find_element(By.CSS_SELECTOR, f'#points tr[data-number="{row["number"]}"] a').send_keys(Keys.ENTER)
+            self.settle()
             self.assertEqual(self.shown(), ["p" + row["number"]])
             section = self.driver.find_element(By.ID, "p" + row["number"]).text
             self.assertIn(row["name"], section)
@@ -195,6 +199,7 @@ class Report(CommandTest):
         mark = self.driver.find_element(By.CSS_SELECTOR, '#map path[aria-label^="Mill bridge, "]')
         self.driver.execute_script("arguments[0].focus()", mark)
         self.driver.switch_to.active_element.send_keys(Keys.ENTER)
+        self.settle()
         self.assertEqual(self.shown(), ["p" + next(row["number"] for row in self.rows if row["name"] == "Mill bridge")])
 
     def test_the_table_sorts_and_searches(self):
