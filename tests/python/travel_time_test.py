@@ -155,7 +155,7 @@ def refusal(*arguments, error=rillclock.InputError, **options):
     ({"book": "nlcdd.csv"}, "nlcdd.csv"),
     ({"settings": {"timing.sheet_limt": "30 m"}}, "did you mean timing.sheet_limit?"),
     ({"settings": {"timing.sheet_limit": 30}}, "the setting timing.sheet_limit is 30; write a text in quotes, such as \"100 ft\""),
-    ({"settings": {"timing.sheet_limit": object}}, "give a text, a number, a boolean or a list of numbers"),
+    ({"settings": {"timing.sheet_limit": object}}, "give a text, a number, a boolean, or a list of numbers or texts"),
     ({"settings": {"points": {"file": "points.gpkg"}}}, "the setting points.file does not act on travel times from rasters in memory"),
     ({"settings": {"timing.sheet": "kinematic"}}, "do not know of rain by duration, kinematic sheet flow"),
 ])
