@@ -28,10 +28,4 @@ private:
     std::vector<std::uint32_t> positions_;
 };
 
-/// A cell's number within the tile on the desk.
-[[nodiscard]] inline Local local_of(const TileDesk& desk, Cell cell, std::int64_t columns) {
-    const Window& window = desk.flow.window();
-    return static_cast<Local>((cell / columns - window.row) * window.columns + cell % columns - window.column);
-}
-
 }  // namespace rillclock

@@ -56,7 +56,7 @@ void SharedPaths::look_up(const TiledTravel& travel) {
         travel.read_tile(by_tile.tile(i), *desk);
         std::vector<PathPiece> pieces;
         for (const std::uint32_t at : by_tile.positions(i)) {
-            cells_[at] = path_cell(travel, *desk, local_of(*desk, walked_[at], forest.codes().columns()), walked_[at]);
+            cells_[at] = path_cell(travel, *desk, desk->flow.local(walked_[at]), walked_[at]);
             if (below_[at] == unknown) continue;
             pieces.clear();
             add_pieces(ground, cells_[at], 0, pieces);

@@ -20,7 +20,7 @@ std::unordered_map<Cell, Value> look_up(const TiledForest& forest, const Executo
         const auto desk = desks.lease();
         read(by_tile.tile(i), *desk);
         for (const std::uint32_t at : by_tile.positions(i)) {
-            values[at] = look(*desk, local_of(*desk, cells[at], forest.codes().columns()), cells[at]);
+            values[at] = look(*desk, desk->flow.local(cells[at]), cells[at]);
         }
     });
     std::unordered_map<Cell, Value> found;

@@ -28,6 +28,8 @@ void TileFlow::read(const Raster<FlowCode>& codes, const Window& window) {
     find_order();
 }
 
+bool TileFlow::holds(Cell cell) const { return is_inside(window_, {cell / raster_columns_, cell % raster_columns_}); }
+
 void TileFlow::read_steps(const Raster<FlowCode>& codes) {
     std::array<std::int64_t, 8> offset{};
     for (const Direction d : all_directions) offset[static_cast<std::size_t>(d)] = row_step(d) * window_.columns + column_step(d);

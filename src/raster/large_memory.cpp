@@ -9,8 +9,6 @@
 namespace rillclock {
 namespace {
 
-constexpr std::size_t huge_page = std::size_t{1} << 21U;
-
 std::size_t whole_pages(std::size_t bytes) {
     constexpr std::size_t page = 4096;
     return (bytes + page - 1) / page * page;

@@ -31,13 +31,9 @@ std::vector<StepTime> times_for_rasters(const LastPass& pass) {
 
 /// Notes the times of the points that lie in the tile on the desk.
 void note_times(const LastPass& pass, const TileDesk& desk, std::vector<StepTime>& times) {
-    const Window& window = desk.flow.window();
-    const std::int64_t columns = pass.terrain.grid.columns;
     for (std::size_t i = 0; i < times.size(); ++i) {
-        const std::int64_t row = pass.points[i].cell / columns - window.row;
-        const std::int64_t column = pass.points[i].cell % columns - window.column;
-        if (row < 0 || row >= window.rows || column < 0 || column >= window.columns) continue;
-        times[i] = desk.time_to_root(static_cast<Local>(row * window.columns + column));
+        const Cell cell = pass.points[i].cell;
+        if (desk.flow.holds(cell)) times[i] = desk.time_to_root(desk.flow.local(cell));
     }
 }
 

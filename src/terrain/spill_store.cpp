@@ -7,6 +7,17 @@ namespace rillclock {
 SpillStore::SpillStore(const ElevationStore& elevations, const TileGrid& tiles)
     : elevations_(&elevations), tiles_(tiles), parts_(tiles.count()) {}
 
+template <class Use>
+void SpillStore::for_each_below_in(Tile tile, Use use) const {
+    const Window window = tiles_.window(tile);
+    const std::size_t words = words_of(window);
+    const std::vector<std::uint64_t>& below = parts_[tile].below;
+    for (std::size_t word = 0; word < below.size(); ++word) {
+        const std::size_t first = word / words * static_cast<std::size_t>(window.columns) + word % words * 64;
+        for (std::uint64_t bits = below[word]; bits != 0; bits &= bits - 1) use(first + static_cast<std::size_t>(std::countr_zero(bits)));
+    }
+}
+
 void SpillStore::write(Tile tile, std::span<const double> elevation, std::span<const double> spill) {
     const Window window = tiles_.window(tile);
     const std::size_t words = words_of(window);
@@ -27,30 +38,20 @@ void SpillStore::write(Tile tile, std::span<const double> elevation, std::span<c
         using Value = typename std::remove_cvref_t<decltype(kept)>::value_type;
         kept.clear();
         kept.reserve(count);
-        for (std::size_t i = 0; i < spill.size(); ++i) {
-            if (spill[i] > elevation[i]) kept.push_back(static_cast<Value>(spill[i]));
-        }
+        for_each_below_in(tile, [&](std::size_t position) { kept.push_back(static_cast<Value>(spill[position])); });
     };
     if (elevations_->width() == ElevationStore::Width::four_bytes) keep(part.single);
     else keep(part.wide);
 }
 
 void SpillStore::read(Tile tile, std::span<const double> elevation, std::span<double> spill) const {
-    const Window window = tiles_.window(tile);
-    const std::size_t words = words_of(window);
-    const Part& part = parts_[tile];
     std::copy(elevation.begin(), elevation.end(), spill.begin());
     const auto fill = [&](const auto& kept) {
         std::size_t next = 0;
-        for (std::size_t word = 0; word < part.below.size(); ++word) {
-            const std::size_t first = word / words * static_cast<std::size_t>(window.columns) + word % words * 64;
-            for (std::uint64_t bits = part.below[word]; bits != 0; bits &= bits - 1) {
-                spill[first + static_cast<std::size_t>(std::countr_zero(bits))] = static_cast<double>(kept[next++]);
-            }
-        }
+        for_each_below_in(tile, [&](std::size_t position) { spill[position] = static_cast<double>(kept[next++]); });
     };
-    if (elevations_->width() == ElevationStore::Width::four_bytes) fill(part.single);
-    else fill(part.wide);
+    if (elevations_->width() == ElevationStore::Width::four_bytes) fill(parts_[tile].single);
+    else fill(parts_[tile].wide);
 }
 
 double SpillStore::at(RowColumn at) const {

@@ -200,11 +200,8 @@ TiledOwners::TiledOwners(const TiledForest& forest, std::vector<CellLabel> label
 
 void TiledOwners::put_labels(Tile tile, TileDesk& desk) const {
     desk.label.assign(desk.flow.size(), 0);
-    const Window& window = desk.flow.window();
     for (std::size_t i = first_of_tile_[tile]; i < first_of_tile_[tile + 1U]; ++i) {
-        const std::int64_t row = labels_[i].cell / forest_.codes().columns() - window.row;
-        const std::int64_t column = labels_[i].cell % forest_.codes().columns() - window.column;
-        desk.label[static_cast<std::size_t>(row * window.columns + column)] = labels_[i].number;
+        desk.label[desk.flow.local(labels_[i].cell)] = labels_[i].number;
     }
 }
 

@@ -16,10 +16,7 @@ class Runoff(unittest.TestCase):
     @classmethod
     def setUpClass(cls):
         folder = class_folder(cls, "test")
-        demo_with_peaks(folder)
-        study = folder / "town/peaks.toml"
-        study.write_text(study.read_text() + 'isochrones = "7 min"\n')
-        subprocess.run([COMMAND, "run", study, "--replace"], check=True, capture_output=True)
+        demo_with_peaks(folder, more='isochrones = "7 min"\n')
         cls.folder = folder / "town/result"
         cls.tables = {name: table(cls.folder / f"tables/{name}.csv") for name in ("handover", "outlets", "peaks")}
         cls.bands = [f["properties"] for f in json.loads((cls.folder / "isochrones.geojson").read_text())["features"]]

@@ -13,12 +13,11 @@ namespace {
 using worked::Given;
 using worked::Worked;
 
+/// With other storms, and ponds as they are by default.
 Given random_ground(std::mt19937& random, unsigned seed) {
-    Given given{.elevations = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 200, seed % 3 == 0 ? 0.05 : 0.0),
-                .ground = Ground::planar(metres(3), metres(4))};
-    given.surface = worked::random_surface(random, given.elevations, seed % 4 < 2);
-    given.rules.channel.from_area = square_metres(400);
+    Given given = worked::random_given(random, seed);
     given.rules.sheet.storm_factor = 0.5 + seed % 5;
+    given.rules.pond = {};
     return given;
 }
 

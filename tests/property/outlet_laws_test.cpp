@@ -14,17 +14,6 @@ namespace {
 using worked::Given;
 using worked::Worked;
 
-/// Terrain of 1 × 1 to 40 × 40 cells with flats, pits and voids; all regimes, several storms.
-Given random_given(std::mt19937& random, unsigned seed) {
-    Given given{.elevations = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 200, seed % 3 == 0 ? 0.05 : 0.0),
-                .ground = Ground::planar(metres(3), metres(4))};
-    given.surface = worked::random_surface(random, given.elevations, seed % 4 < 2);
-    given.rules.channel.from_area = square_metres(400);
-    given.rules.sheet.storm_factor = 1.0 + seed % 5;
-    given.rules.pond.depth = metres(0.5);
-    return given;
-}
-
 double seconds_of(const Worked& w, Cell cell, double storm_factor) {
     return in_seconds(w.land.field.time_to_root(cell).under(storm_factor));
 }
@@ -48,7 +37,7 @@ TEST_CASE("rain times 4 halves the time of a point that is reached by sheet flow
 TEST_CASE("times are finite and never fall on the way up, and roots share out the area of the data") {
     for (unsigned seed = 0; seed < 200; ++seed) {
         std::mt19937 random(seed);
-        const Worked w(random_given(random, seed));
+        const Worked w(worked::random_given(random, seed));
         INFO("seed " << seed);
         FixedArea at_roots = 0;
         for (const Cell cell : w.land.forest.order()) {
@@ -70,7 +59,7 @@ TEST_CASE("times are finite and never fall on the way up, and roots share out th
 TEST_CASE("slopes lie between the floor and the whole relief over one cell") {
     for (unsigned seed = 0; seed < 100; ++seed) {
         std::mt19937 random(seed);
-        const Worked w(random_given(random, seed));
+        const Worked w(worked::random_given(random, seed));
         INFO("seed " << seed);
         for (const Cell cell : w.land.forest.order()) {
             const bool overland = w.land.field.kind[cell] == GroundKind::overland;
@@ -83,7 +72,7 @@ TEST_CASE("slopes lie between the floor and the whole relief over one cell") {
 TEST_CASE("the front's last arrival is the greatest time over all cells, under any storm") {
     for (unsigned seed = 0; seed < 200; ++seed) {
         std::mt19937 random(seed);
-        const Worked w(random_given(random, seed));
+        const Worked w(worked::random_given(random, seed));
         const std::vector<Arrivals> subareas = reference::arrivals_by_subarea(w.land.inputs, w.land.field, w.tree, w.storm_factor);
         std::uniform_real_distribution<double> storm(0.0, 30.0);
         INFO("seed " << seed);
@@ -118,7 +107,7 @@ std::vector<double> arrival_times(const Worked& w, const Outlet& outlet) {
 TEST_CASE("shares of a point's area arrive as a sorted list of its cells says, within a second") {
     for (unsigned seed = 0; seed < 300; ++seed) {
         std::mt19937 random(seed);
-        const Given given = random_given(random, seed);
+        const Given given = worked::random_given(random, seed);
         const Worked w(given, {.points = worked::random_cells(random, given, 6)});
         INFO("seed " << seed);
         for (const Outlet& outlet : w.outlets) {
@@ -139,7 +128,7 @@ TEST_CASE("shares of a point's area arrive as a sorted list of its cells says, w
 TEST_CASE("a new inner point changes no bit of what is known of the points below it, nor of any other") {
     for (unsigned seed = 0; seed < 400; ++seed) {
         std::mt19937 random(seed);
-        const Given given = random_given(random, seed);
+        const Given given = worked::random_given(random, seed);
         std::vector<Cell> cells = worked::random_cells(random, given, 7);
         if (cells.size() < 2) continue;
         const Worked with(given, {.points = cells});
@@ -208,7 +197,7 @@ void require_sound(const Worked& w, const PointPath& path) {
 TEST_CASE("rows add up to the point's time to the last unit, and each can be recomputed from itself") {
     for (unsigned seed = 0; seed < 1000; ++seed) {
         std::mt19937 random(seed);
-        const Given given = random_given(random, seed);
+        const Given given = worked::random_given(random, seed);
         worked::Asked asked{.points = worked::random_cells(random, given, 5)};
         asked.rules.segments = {.shortest = metres(20)};
         const Worked w(given, asked);
@@ -241,7 +230,7 @@ void require_same(const Worked& a, const Worked& b) {
 TEST_CASE("a constant added to exactly representable elevations changes no bit of the answer") {
     for (unsigned seed = 0; seed < 60; ++seed) {
         std::mt19937 random(seed);
-        Given given = random_given(random, seed);
+        Given given = worked::random_given(random, seed);
         for (double& z : given.elevations.values()) z /= 16;
         const Worked low(given);
         for (double& z : given.elevations.values()) z += 4096;
@@ -254,7 +243,7 @@ TEST_CASE("elevations in another unit change no bit of the answer where the fact
     for (unsigned seed = 0; seed < 60; ++seed) {
         for (const double factor : {1024.0, 0.125}) {
             std::mt19937 random(seed);
-            Given given = random_given(random, seed);
+            Given given = worked::random_given(random, seed);
             const Worked metric(given);
             for (double& z : given.elevations.values()) z *= factor;
             given.metres_per_elevation_unit = 1 / factor;

@@ -14,6 +14,33 @@ struct TileManner {
     unsigned threads = 1;
 };
 
+/// Travel over tiles of a land that was worked through the plain way, kept alive together.
+class OverTiles {
+public:
+    OverTiles(const Land& land, const TileManner& manner)
+        : store(land.given.elevations.rows(), land.given.elevations.columns(), ElevationStore::Width::eight_bytes),
+          executor(manner.threads, Executor::Kind::plain_threads),
+          forest(land.forest.codes(), TileGrid(store.rows(), store.columns(), manner.side), executor),
+          travel({.forest = forest, .ground = land.given.ground, .elevations = filled(store, land.given.elevations),
+                  .metres_per_elevation_unit = land.given.metres_per_elevation_unit, .surface = land.given.surface,
+                  .mapped_channels = land.given.mapped_channels},
+                 land.given.rules, executor) {}
+    OverTiles(const OverTiles&) = delete;
+    OverTiles& operator=(const OverTiles&) = delete;
+    ~OverTiles() = default;
+
+    ElevationStore store;
+    const Executor executor;
+    const TiledForest forest;
+    const TiledTravel travel;
+
+private:
+    static const ElevationStore& filled(ElevationStore& store, const Elevations& z) {
+        store.write({.rows = z.rows(), .columns = z.columns()}, z.values());
+        return store;
+    }
+};
+
 /// What differs between a tile's desk and the plain field; empty where nothing does.
 inline std::string difference(const TiledTravel& tiled, const TileDesk& desk, const Land& land) {
     for (const Local local : desk.flow.order()) {
@@ -34,19 +61,11 @@ inline std::string difference(const TiledTravel& tiled, const TileDesk& desk, co
 
 /// The first difference between travel over tiles and the plain way; empty where there is none.
 inline std::string tiled_difference(const Land& land, const TileManner& manner) {
-    const Elevations& z = land.given.elevations;
-    ElevationStore store(z.rows(), z.columns(), ElevationStore::Width::eight_bytes);
-    store.write({.rows = z.rows(), .columns = z.columns()}, z.values());
-    const Executor executor(manner.threads, Executor::Kind::plain_threads);
-    const TiledForest forest(land.forest.codes(), TileGrid(z.rows(), z.columns(), manner.side), executor);
-    const TiledTravel tiled({.forest = forest, .ground = land.given.ground, .elevations = store,
-                             .metres_per_elevation_unit = land.given.metres_per_elevation_unit, .surface = land.given.surface,
-                             .mapped_channels = land.given.mapped_channels},
-                            land.given.rules, executor);
+    const OverTiles tiled(land, manner);
     TileDesk desk;
-    for (Tile tile = 0; tile < forest.tiles().count(); ++tile) {
-        tiled.read_tile(tile, desk);
-        const std::string found = difference(tiled, desk, land);
+    for (Tile tile = 0; tile < tiled.forest.tiles().count(); ++tile) {
+        tiled.travel.read_tile(tile, desk);
+        const std::string found = difference(tiled.travel, desk, land);
         if (!found.empty()) return found;
     }
     return "";

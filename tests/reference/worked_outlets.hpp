@@ -7,11 +7,23 @@
 #include <utility>
 #include <vector>
 
+#include "reference/drawings.hpp"
 #include "reference/plain_catchment.hpp"
 #include "reference/worked_terrain.hpp"
 #include "rillclock/catchment/outlet.hpp"
 
 namespace rillclock::worked {
+
+/// Terrain of 1 × 1 to 40 × 40 cells with flats, pits and voids; all regimes, several storms.
+[[nodiscard]] inline Given random_given(std::mt19937& random, unsigned seed) {
+    Given given{.elevations = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 200, seed % 3 == 0 ? 0.05 : 0.0),
+                .ground = Ground::planar(metres(3), metres(4))};
+    given.surface = random_surface(random, given.elevations, seed % 4 < 2);
+    given.rules.channel.from_area = square_metres(400);
+    given.rules.sheet.storm_factor = 1.0 + seed % 5;
+    given.rules.pond.depth = metres(0.5);
+    return given;
+}
 
 /// Some cells of a terrain that are not void, each once.
 [[nodiscard]] inline std::vector<Cell> random_cells(std::mt19937& random, const Given& given, std::size_t most) {

@@ -40,6 +40,12 @@ public:
         const Local row = local / columns;
         return static_cast<Cell>((window_.row + row) * raster_columns_ + window_.column + (local - row * columns));
     }
+    /// Whether a cell of the whole raster lies in the tile.
+    [[nodiscard]] bool holds(Cell cell) const;
+    /// The position of a cell that lies in the tile: `cell` the other way round.
+    [[nodiscard]] Local local(Cell cell) const {
+        return static_cast<Local>((cell / raster_columns_ - window_.row) * window_.columns + cell % raster_columns_ - window_.column);
+    }
     /// The row of the whole raster.
     [[nodiscard]] std::int64_t row(Local local) const { return window_.row + local / static_cast<Local>(window_.columns); }
     /// The cell of the tile it drains to, or `leaves_tile` or `ends_here`.

@@ -7,6 +7,9 @@
 
 namespace rillclock {
 
+/// Bytes of a huge page.
+inline constexpr std::size_t huge_page = std::size_t{1} << 21U;
+
 /// Asks the system for huge pages under memory that has not been written yet. It is advice: a refusal changes nothing but speed.
 void ask_for_huge_pages(void* memory, std::size_t bytes);
 
@@ -38,9 +41,6 @@ public:
     }
 
     bool operator==(const LargeMemory&) const = default;
-
-private:
-    static constexpr std::size_t huge_page = std::size_t{1} << 21U;
 };
 
 /// Memory of so many bytes that is zero without having been touched, on huge pages where there are enough of them. Throws std::bad_alloc.

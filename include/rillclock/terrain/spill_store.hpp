@@ -62,6 +62,9 @@ private:
         unsigned bit = 0;
     };
 
+    /// Calls `use(position)` for a tile's cells below their spill elevation, by increasing position in it.
+    template <class Use>
+    void for_each_below_in(Tile tile, Use use) const;
     static std::size_t words_of(const Window& window) { return static_cast<std::size_t>((window.columns + 63) / 64); }
     [[nodiscard]] Place place_of(RowColumn at) const;
 

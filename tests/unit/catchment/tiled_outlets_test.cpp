@@ -12,29 +12,11 @@ namespace {
 using worked::Given;
 using worked::Worked;
 
-Given random_given(std::mt19937& random, unsigned seed) {
-    Given given{.elevations = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 200, seed % 3 == 0 ? 0.05 : 0.0),
-                .ground = Ground::planar(metres(3), metres(4))};
-    given.surface = worked::random_surface(random, given.elevations, seed % 4 < 2);
-    given.rules.channel.from_area = square_metres(400);
-    given.rules.sheet.storm_factor = 1.0 + seed % 5;
-    given.rules.pond.depth = metres(0.5);
-    return given;
-}
-
 std::vector<Outlet> outlets_over_tiles(const Worked& w, const worked::TileManner& manner) {
-    const Elevations& z = w.land.given.elevations;
-    ElevationStore store(z.rows(), z.columns(), ElevationStore::Width::eight_bytes);
-    store.write({.rows = z.rows(), .columns = z.columns()}, z.values());
-    const Executor executor(manner.threads, Executor::Kind::plain_threads);
-    const TiledForest forest(w.land.forest.codes(), TileGrid(z.rows(), z.columns(), manner.side), executor);
-    const TiledTravel travel({.forest = forest, .ground = w.land.given.ground, .elevations = store,
-                              .metres_per_elevation_unit = w.land.given.metres_per_elevation_unit, .surface = w.land.given.surface,
-                              .mapped_channels = w.land.given.mapped_channels},
-                             w.land.given.rules, executor);
+    const worked::OverTiles tiled(w.land, manner);
     const auto heads = heads_of(reference::arrivals_by_subarea(w.land.inputs, w.land.field, w.tree, w.storm_factor), w.tree, w.storm_factor,
                                 w.asked.rules.ignore_tail);
-    return outlets_of(travel, w.points, w.tree, heads, w.asked.rules);
+    return outlets_of(tiled.travel, w.points, w.tree, heads, w.asked.rules);
 }
 
 void require_same(const PointPath& a, const PointPath& b) {
@@ -59,7 +41,7 @@ void require_same(const PointPath& a, const PointPath& b) {
 TEST_CASE("points whose paths share their steps are, to the last bit, those of paths walked one by one") {
     for (unsigned seed = 0; seed < 60; ++seed) {
         std::mt19937 random(seed);
-        Given given = random_given(random, seed);
+        Given given = worked::random_given(random, seed);
         worked::Asked asked{.points = worked::random_cells(random, given, 30)};
         if (asked.points.empty()) continue;
         const Worked w(std::move(given), std::move(asked));
