@@ -13,7 +13,9 @@ constexpr int sorting_draws = 40;
 HeadPaths paths_to_keep(const UncertaintyParts& parts, const std::vector<UncertainInput>& inputs, const TravelSetting& base) {
     const int seed = parts.study.uncertainty->seed;
     std::vector<TravelSetting> settings = searching_settings(inputs, base, seed);
-    std::vector<Cell> heads = candidate_heads(parts.travel, parts.owners, settings);
+    std::vector<FixedArea> own_areas;
+    for (const PointHeads& point : parts.heads) own_areas.push_back(point.own_area);
+    std::vector<Cell> heads = candidate_heads(parts.travel, parts.owners, own_areas, settings);
     for (const PointHeads& point : parts.heads) {
         heads.push_back(point.last.cell);
         heads.push_back(point.farthest);

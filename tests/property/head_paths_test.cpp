@@ -110,6 +110,17 @@ public:
         for (const DesignPoint& point : points_) labels.push_back({point.cell, static_cast<std::uint32_t>(labels.size() + 1)});
         return {forest_, labels, executor_};
     }
+    /// What drains to each point and to none above it, by number − 1.
+    [[nodiscard]] std::vector<FixedArea> own_areas(const TiledOwners& owners) const {
+        std::vector<FixedArea> areas(points_.size(), 0);
+        TileDesk desk;
+        for (Tile tile = 0; tile < forest_.tiles().count(); ++tile) {
+            desk.flow.read(forest_.codes(), forest_.tiles().window(tile));
+            owners.read_tile(tile, desk);
+            for (const Local local : desk.flow.order()) areas[desk.owner[local] - 1] += travel_->ground().ground.cell_area(desk.flow.row(local));
+        }
+        return areas;
+    }
     /// Times to the root under the setting's own storm factor, by cell.
     [[nodiscard]] std::vector<double> seconds_to_root() const {
         std::vector<double> times(flow_.codes().values().size(), 0.0);
@@ -197,7 +208,7 @@ TEST_CASE("the last of the candidate heads arrives within one percent of the las
         std::vector<TravelSetting> searched;
         for (int i = 0; i < 12; ++i) searched.push_back(changed(given, random));
         const TiledOwners owners = base.owners();
-        const std::vector<Cell> heads = candidate_heads(base.travel(), owners, searched);
+        const std::vector<Cell> heads = candidate_heads(base.travel(), owners, base.own_areas(owners), searched);
         const HeadPaths paths(base.travel(), heads, base.points(), bounds(given));
         for (int round = 0; round < 10; ++round) {
             const TravelSetting setting = changed(given, random);

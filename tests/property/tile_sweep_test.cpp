@@ -1,5 +1,6 @@
 #include "rillclock/forest/tile_sweep.hpp"
 
+#include <algorithm>
 #include <catch2/catch.hpp>
 
 #include "reference/drawings.hpp"
@@ -19,8 +20,15 @@ struct Desk {
 /// Weights that differ from cell to cell, the same for the plain sweeps and the tiled ones.
 std::int64_t weight(Cell cell) { return 1 + static_cast<std::int64_t>(cell) * 2654435761 % 97; }
 double level(Cell cell) { return static_cast<double>(weight(cell)); }
-/// Of all lanes a different one.
-up::Lanes multiples(std::int64_t value) { return {{value, 2 * value, 3 * value, -value}}; }
+/// A different value in every lane, the last of which reaches `most` on a way of some steps.
+up::Lanes multiples(std::int64_t value) {
+    up::Lanes lanes;
+    for (std::size_t lane = 0; lane < up::Lanes::count; ++lane) {
+        const std::int64_t times = lane + 1 == up::Lanes::count ? up::Lanes::most / 200 : static_cast<std::int64_t>(lane + 1);
+        lanes.total[lane] = static_cast<std::int32_t>(std::min<std::int64_t>(value * times, up::Lanes::most));
+    }
+    return lanes;
+}
 std::uint32_t label(Cell cell) { return weight(cell) > 80 ? cell + 1 : 0; }
 
 template <class Part>

@@ -13,11 +13,12 @@ namespace rillclock {
 /// surface do under that setting.
 ///
 /// Which cells those are is an estimate (where sheet flow ends is kept, and sums of sheet flow are scaled cell by cell); it serves to
-/// keep few heads whose times are then found exactly (`HeadPaths`). Of equal cells the smaller index counts. Cost: two passes over
-/// the raster, and for each setting a sweep in each.
+/// keep few heads whose times are then found exactly (`HeadPaths`). Of equal cells the smaller index counts. `own_areas` are those of the
+/// subareas, by the owners' numbers − 1. Cost: one pass over the raster, with a sweep for every eight settings; kept meanwhile, eight bytes
+/// a setting for each way by which heads that lie close together leave their tile.
 ///
 /// Returns the cells of all subareas, each once, in the order of their indices.
 [[nodiscard]] std::vector<Cell> candidate_heads(const TiledTravel& travel, const TiledOwners& owners,
-                                                std::span<const TravelSetting> settings);
+                                                std::span<const FixedArea> own_areas, std::span<const TravelSetting> settings);
 
 }  // namespace rillclock

@@ -1,5 +1,6 @@
 #pragma once
 
+#include <algorithm>
 #include <array>
 #include <cstddef>
 #include <cstdint>
@@ -48,14 +49,16 @@ struct Add {
     Step step;
 };
 
-/// `Add` of several totals at a time: one walk serves them all.
+/// `Add` of several totals at a time, from 0 up: one walk serves them all. What would be more than `most` is `most`, in whatever order the
+/// steps are added.
 struct Lanes {
-    static constexpr std::size_t count = 4;
-    std::array<std::int64_t, count> total{};
+    static constexpr std::size_t count = 8;
+    static constexpr std::int32_t most = (1 << 30) - 64;   ///< the same as a float
+    std::array<std::int32_t, count> total{};
 
     [[nodiscard]] friend Lanes operator+(const Lanes& a, const Lanes& b) {
         Lanes sum;
-        for (std::size_t lane = 0; lane < count; ++lane) sum.total[lane] = a.total[lane] + b.total[lane];
+        for (std::size_t lane = 0; lane < count; ++lane) sum.total[lane] = std::min(a.total[lane] + b.total[lane], most);
         return sum;
     }
 };
