@@ -3,7 +3,6 @@
 #include <algorithm>
 #include <cmath>
 #include <map>
-#include <unordered_map>
 
 #include "kept_cells.hpp"
 #include "rillclock/catchment/tiled_cells.hpp"
@@ -14,15 +13,39 @@
 namespace rillclock {
 namespace {
 
-using Found = std::unordered_map<Cell, PathCell>;
+constexpr std::size_t nowhere = SIZE_MAX;
+
+/// Cells that were looked up, by index.
+class FoundCells {
+public:
+    explicit FoundCells(std::vector<PathCell> cells) : cells_(std::move(cells)) {
+        for (const PathCell& cell : cells_) index_.push_back(cell.cell);
+    }
+    [[nodiscard]] std::size_t size() const { return cells_.size(); }
+    [[nodiscard]] const PathCell& operator[](std::size_t place) const { return cells_[place]; }
+    /// `nowhere` where it is not among them.
+    [[nodiscard]] std::size_t place(Cell cell) const {
+        const auto found = std::lower_bound(index_.begin(), index_.end(), cell);
+        return found != index_.end() && *found == cell ? static_cast<std::size_t>(found - index_.begin()) : nowhere;
+    }
+
+private:
+    std::vector<PathCell> cells_;
+    std::vector<Cell> index_;
+};
 
 Cell cell_below(const Raster<FlowCode>& codes, Cell cell) {
     return neighbour(cell, static_cast<Direction>(codes[cell]), codes.columns());
 }
 
-/// Whether cells come upstream first: farther from the root, of equal ones the smaller cell.
-bool farther(const PathCell& a, const PathCell& b) {
-    return a.flow_distance != b.flow_distance ? a.flow_distance > b.flow_distance : a.cell < b.cell;
+/// Calls `work(i)` for all below a count, on threads, many at a time.
+template <class Work>
+void for_each_part(const Executor& executor, std::size_t count, Work work) {
+    constexpr std::size_t at_a_time = 1024;
+    executor.for_each((count + at_a_time - 1) / at_a_time, [&](std::size_t part) {
+        const std::size_t end = std::min(count, (part + 1) * at_a_time);
+        for (std::size_t i = part * at_a_time; i < end; ++i) work(i);
+    });
 }
 
 double floor_of(GroundKind kind, double overland, double channel) {
@@ -33,47 +56,65 @@ double floor_of(GroundKind kind, double overland, double channel) {
 class PathMaker {
 public:
     PathMaker(const TiledTravel& travel, const KeptCells& kept, const SettingBounds& bounds)
-        : travel_(travel), codes_(travel.ground().forest.codes()), kept_(kept), bounds_(bounds), found_(looked_up()) {}
+        : travel_(travel), codes_(travel.ground().forest.codes()), kept_(kept), bounds_(bounds), found_(looked_up()),
+          sheet_place_(found_.size(), nowhere), link_place_(found_.size(), nowhere) {}
 
     std::vector<SheetCell> sheet_cells() {
-        std::vector<const PathCell*> order;
-        for (const Cell cell : kept_.sheet) order.push_back(&found_.at(cell));
-        std::sort(order.begin(), order.end(), [](const PathCell* a, const PathCell* b) { return farther(*a, *b); });
-        for (std::size_t i = 0; i < order.size(); ++i) sheet_place_.emplace(order[i]->cell, i);
-        const std::unordered_set<Cell> path(kept_.path.begin(), kept_.path.end());
-        std::vector<SheetCell> cells;
-        for (const PathCell* at : order) {
-            const bool counts = path.contains(at->cell) && !kept_.ends.contains(at->cell);
-            cells.push_back({.step = at->step, .surface = at->surface, .slope = free_slope(*at), .down = place_below(at->cell),
-                             .on_path = counts});
-        }
+        std::vector<Place> order;
+        for (const Cell cell : kept_.sheet) order.push_back(place_of(cell));
+        std::sort(order.begin(), order.end(), [](const Place& a, const Place& b) { return b < a; });
+        for (std::size_t i = 0; i < order.size(); ++i) sheet_place_[order[i].found] = i;
+        std::vector<bool> on_path(found_.size(), false);
+        for (const Cell cell : kept_.path) on_path[found_.place(cell)] = !kept_.ends.contains(cell);
+        std::vector<SheetCell> cells(order.size());
+        for_each_part(travel_.executor(), cells.size(), [&](std::size_t i) {
+            const PathCell& at = found_[order[i].found];
+            cells[i] = {.step = at.step, .surface = at.surface, .slope = free_slope(at), .down = sheet_place_below(at.cell),
+                        .on_path = on_path[order[i].found]};
+        });
         return cells;
     }
 
     /// Downstream first. To be called once the sheet cells are made.
     std::vector<PathLink> links() {
-        std::vector<const PathCell*> tops;
-        for (const Cell cell : kept_.starts) tops.push_back(&found_.at(cell));
-        std::sort(tops.begin(), tops.end(), [](const PathCell* a, const PathCell* b) { return farther(*b, *a); });
-        for (std::size_t i = 0; i < tops.size(); ++i) link_place_.emplace(tops[i]->cell, i);
-        std::vector<PathLink> links;
-        for (const PathCell* top : tops) links.push_back(link_from(top->cell));
+        std::vector<Place> tops;
+        for (const Cell cell : kept_.starts) tops.push_back(place_of(cell));
+        std::sort(tops.begin(), tops.end());
+        for (std::size_t i = 0; i < tops.size(); ++i) link_place_[tops[i].found] = i;
+        std::vector<PathLink> links(tops.size());
+        for_each_part(travel_.executor(), links.size(), [&](std::size_t i) { links[i] = link_from(tops[i].found); });
         return links;
     }
 
-    [[nodiscard]] std::size_t link_of(Cell top) const { return link_place_.at(top); }
+    [[nodiscard]] std::size_t link_of(Cell top) const { return link_place_[found_.place(top)]; }
 
 private:
-    [[nodiscard]] Found looked_up() const {
+    /// A cell that was looked up, with what says where on the way down it comes.
+    struct Place {
+        FixedLength flow_distance = 0;
+        Cell cell = no_cell;
+        std::size_t found = nowhere;
+        /// Downstream first; of cells equally far from the root the greater one.
+        [[nodiscard]] bool operator<(const Place& other) const {
+            return flow_distance != other.flow_distance ? flow_distance < other.flow_distance : cell > other.cell;
+        }
+    };
+
+    [[nodiscard]] FoundCells looked_up() const {
         std::vector<Cell> cells = kept_.path;
         cells.insert(cells.end(), kept_.sheet.begin(), kept_.sheet.end());
-        return path_cells_at(travel_, std::move(cells));
+        return FoundCells(path_cells_by_index(travel_, std::move(cells)));
     }
 
-    [[nodiscard]] std::size_t place_below(Cell cell) const {
-        if (!is_direction(codes_[cell])) return SIZE_MAX;
-        const auto place = sheet_place_.find(cell_below(codes_, cell));
-        return place == sheet_place_.end() ? SIZE_MAX : place->second;
+    [[nodiscard]] Place place_of(Cell cell) const {
+        const std::size_t place = found_.place(cell);
+        return {found_[place].flow_distance, cell, place};
+    }
+
+    [[nodiscard]] std::size_t sheet_place_below(Cell cell) const {
+        if (!is_direction(codes_[cell])) return nowhere;
+        const std::size_t below = found_.place(cell_below(codes_, cell));
+        return below == nowhere ? nowhere : sheet_place_[below];
     }
 
     /// The slope ahead down to the least floor of any setting.
@@ -86,23 +127,24 @@ private:
                                                      bounds_.least_channel_floor));
     }
 
-    PathLink link_from(Cell top) {
-        PathLink link{.top = top, .below = link_place_.at(top)};
-        if (kept_.ends.contains(top)) return link;
+    /// The link that begins at a cell, by its place.
+    [[nodiscard]] PathLink link_from(std::size_t top) const {
+        PathLink link{.top = found_[top].cell, .below = link_place_[top]};
+        if (kept_.ends.contains(link.top)) return link;
         std::map<std::uint8_t, double> shallow;
-        Cell cell = top;
+        std::size_t at = top;
         do {
-            add_step(found_.at(cell), link, shallow);
-            cell = cell_below(codes_, cell);
-        } while (!kept_.starts.contains(cell));
-        link.below = link_place_.at(cell);
+            add_step(at, link, shallow);
+            at = found_.place(cell_below(codes_, found_[at].cell));
+        } while (link_place_[at] == nowhere);
+        link.below = link_place_[at];
         link.shallow.assign(shallow.begin(), shallow.end());
         return link;
     }
 
-    void add_step(const PathCell& at, PathLink& link, std::map<std::uint8_t, double>& shallow) const {
-        const auto sheet = sheet_place_.find(at.cell);
-        if (sheet != sheet_place_.end()) return link.sheet_cells.push_back(sheet->second);
+    void add_step(std::size_t place, PathLink& link, std::map<std::uint8_t, double>& shallow) const {
+        if (sheet_place_[place] != nowhere) return link.sheet_cells.push_back(sheet_place_[place]);
+        const PathCell& at = found_[place];
         const BentStep step = bent_step(at);
         const double greatest = floor_of(step.kind, bounds_.greatest_overland_floor, bounds_.greatest_channel_floor);
         const bool floor_may_reach = step.kind != GroundKind::water && step.slope < greatest;
@@ -150,9 +192,9 @@ private:
     const Raster<FlowCode>& codes_;
     const KeptCells& kept_;
     const SettingBounds& bounds_;
-    Found found_;
-    std::unordered_map<Cell, std::size_t> sheet_place_;
-    std::unordered_map<Cell, std::size_t> link_place_;
+    FoundCells found_;
+    std::vector<std::size_t> sheet_place_;   ///< by place among the cells found: the place among the sheet cells
+    std::vector<std::size_t> link_place_;    ///< likewise of the links that begin there
 };
 
 /// How many times longer a channel step takes under these rules: all that may differ is n and a factor on the radius.
@@ -180,9 +222,9 @@ double slope_under(const TravelSetting& setting, const SheetCell& cell) {
     return std::max(cell.slope, static_cast<double>(floor));
 }
 
-/// New places of what is kept, in its old order; SIZE_MAX for what is not.
+/// New places of what is kept, in its old order; `nowhere` for what is not.
 std::vector<std::size_t> new_places(const std::vector<bool>& kept) {
-    std::vector<std::size_t> places(kept.size(), SIZE_MAX);
+    std::vector<std::size_t> places(kept.size(), nowhere);
     std::size_t next = 0;
     for (std::size_t i = 0; i < kept.size(); ++i) {
         if (kept[i]) places[i] = next++;
@@ -256,12 +298,12 @@ void HeadPaths::keep_sheet_cells() {
         for (const std::size_t cell : link.sheet_cells) kept[cell] = sheet_cells_[cell].on_path = true;
     }
     for (std::size_t i = sheet_cells_.size(); i-- > 0;) {
-        if (sheet_cells_[i].down != SIZE_MAX && kept[sheet_cells_[i].down]) kept[i] = true;
+        if (sheet_cells_[i].down != nowhere && kept[sheet_cells_[i].down]) kept[i] = true;
     }
     const std::vector<std::size_t> places = new_places(kept);
     keep_items(sheet_cells_, kept);
     for (SheetCell& cell : sheet_cells_) {
-        if (cell.down != SIZE_MAX) cell.down = places[cell.down];
+        if (cell.down != nowhere) cell.down = places[cell.down];
     }
     for (PathLink& link : links_) {
         for (std::size_t& cell : link.sheet_cells) cell = places[cell];
@@ -277,7 +319,7 @@ std::vector<WayTime> HeadPaths::sheet_times(const TravelSetting& setting) const 
         step.surface = &setting.classes[cell.surface];
         step.slope = slope_under(setting, cell);
         step.sheet_index = index[i];
-        if (cell.down != SIZE_MAX) index[cell.down] = std::max(index[cell.down], index[i] + sheet_index_step(step));
+        if (cell.down != nowhere) index[cell.down] = std::max(index[cell.down], index[i] + sheet_index_step(step));
         if (!cell.on_path) continue;
         const StepTime time = step_parts(step, setting.rules).time();
         times[i] = {.storm_s = from_fixed(time.storm), .fixed_s = from_fixed(time.fixed)};

@@ -7,21 +7,32 @@
 namespace rillclock {
 namespace {
 
-/// Makes each tile that holds any of the cells by `read(tile, desk)`, and keeps what `look(desk, local, cell)` says of each cell, where it
-/// says anything.
-template <class Value, class Read, class Look>
-std::unordered_map<Cell, Value> look_up(const TiledForest& forest, const Executor& executor, Workspaces<TileDesk>& desks,
-                                        std::vector<Cell> cells, Read read, Look look) {
+void sort_each_once(std::vector<Cell>& cells) {
     std::sort(cells.begin(), cells.end());
     cells.erase(std::unique(cells.begin(), cells.end()), cells.end());
+}
+
+/// Makes each tile that holds any of the cells by `read(tile, desk)`, and calls `look(desk, local, i)` for each, i being its place.
+/// `cells` by index, each once.
+template <class Read, class Look>
+void visit(const TiledForest& forest, const Executor& executor, Workspaces<TileDesk>& desks, const std::vector<Cell>& cells, Read read,
+           Look look) {
     const CellsByTile by_tile(forest, cells);
-    std::vector<std::optional<Value>> values(cells.size());
     executor.for_each(by_tile.size(), [&](std::size_t i) {
         const auto desk = desks.lease();
         read(by_tile.tile(i), *desk);
-        for (const std::uint32_t at : by_tile.positions(i)) {
-            values[at] = look(*desk, desk->flow.local(cells[at]), cells[at]);
-        }
+        for (const std::uint32_t at : by_tile.positions(i)) look(*desk, desk->flow.local(cells[at]), at);
+    });
+}
+
+/// Keeps what `look(desk, local, cell)` says of each cell, where it says anything. `cells` may repeat.
+template <class Value, class Read, class Look>
+std::unordered_map<Cell, Value> look_up(const TiledForest& forest, const Executor& executor, Workspaces<TileDesk>& desks,
+                                        std::vector<Cell> cells, Read read, Look look) {
+    sort_each_once(cells);
+    std::vector<std::optional<Value>> values(cells.size());
+    visit(forest, executor, desks, cells, read, [&](const TileDesk& desk, Local local, std::size_t at) {
+        values[at] = look(desk, local, cells[at]);
     });
     std::unordered_map<Cell, Value> found;
     found.reserve(cells.size());
@@ -54,11 +65,20 @@ std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vec
         });
 }
 
+std::vector<PathCell> path_cells_by_index(const TiledTravel& travel, std::vector<Cell> cells) {
+    sort_each_once(cells);
+    std::vector<PathCell> found(cells.size());
+    visit(travel.ground().forest, travel.executor(), travel.desks(), cells, [&](Tile tile, TileDesk& desk) { travel.read_tile(tile, desk); },
+          [&](const TileDesk& desk, Local local, std::size_t at) { found[at] = path_cell(travel, desk, local, cells[at]); });
+    return found;
+}
+
 std::unordered_map<Cell, PathCell> path_cells_at(const TiledTravel& travel, std::vector<Cell> cells) {
-    return look_up<PathCell>(
-        travel.ground().forest, travel.executor(), travel.desks(), std::move(cells),
-        [&](Tile tile, TileDesk& desk) { travel.read_tile(tile, desk); },
-        [&](const TileDesk& desk, Local local, Cell cell) { return std::optional(path_cell(travel, desk, local, cell)); });
+    const std::vector<PathCell> in_order = path_cells_by_index(travel, std::move(cells));
+    std::unordered_map<Cell, PathCell> found;
+    found.reserve(in_order.size());
+    for (const PathCell& cell : in_order) found.emplace(cell.cell, cell);
+    return found;
 }
 
 std::vector<PointNumber> next_points(const TiledForest& forest, const TiledOwners& owners, std::span<const DesignPoint> points,

@@ -16,7 +16,9 @@ namespace rillclock {
 /// Contributing areas of cells; voids are left out. `cells` may repeat.
 [[nodiscard]] std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vector<Cell> cells);
 
-/// All about cells that paths run through. `cells` may repeat.
+/// All about cells that paths run through, each once, by index. `cells` may repeat.
+[[nodiscard]] std::vector<PathCell> path_cells_by_index(const TiledTravel& travel, std::vector<Cell> cells);
+/// The same, to be asked by cell.
 [[nodiscard]] std::unordered_map<Cell, PathCell> path_cells_at(const TiledTravel& travel, std::vector<Cell> cells);
 
 /// All about a cell of the tile that `read_tile` left on the desk.
