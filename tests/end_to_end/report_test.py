@@ -242,6 +242,11 @@ class Report(CommandTest):
         pictures = self.driver.find_elements(By.CSS_SELECTOR, "#pictures img")
         self.assertEqual([picture.is_displayed() for picture in pictures], [True, True])
 
+    def test_sections_are_hidden_before_they_are_read(self):
+        """Else a browser lays all of them out again and again while it reads the file: with 2 000 points ten times the time."""
+        first = re.search(r"(?s)<script>(.*?)</script>", self.text.split("</head>")[0])[1]
+        self.assertIn('classList.add("scripted")', first)
+
     def test_charts_say_in_words_what_there_is_to_see(self):
         for finding in re.findall(r'<svg viewBox[^>]*role="img" aria-label="([^"]*)"', self.text):
             self.assertRegex(finding, r"\d")
