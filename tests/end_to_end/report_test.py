@@ -253,7 +253,7 @@ class Report(CommandTest):
             self.assertTrue(finding.rstrip().endswith("."), finding)
 
     def test_the_calculation_sheet_of_each_point_is_the_one_that_is_explained(self):
-        sheets = {section: html.unescape(sheet) for section, sheet in
+        sheets = {section: html.unescape(re.sub("</?span[^>]*>", "", sheet)) for section, sheet in
                   re.findall(r'(?s)<section class="point" id="p(\d+)".*?<pre>(.*?)</pre>', self.text)}
         for row in self.rows[:3]:
             said = subprocess.run([COMMAND, "explain", self.result_folder, row["name"]], capture_output=True, text=True, check=True).stdout
