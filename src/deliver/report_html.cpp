@@ -23,10 +23,10 @@ constexpr std::size_t bytes_of_the_rest = 400'000;          ///< scripts, styles
 constexpr std::size_t bytes_of_a_row = 400;                 ///< of the table of points
 constexpr std::size_t most_notices_at_top = 8;
 
-/// Nothing is fetched, and no script runs but the two that are named here by their checksums.
+/// Nothing is fetched, and no script runs but those that are named here by their checksums.
 std::string policy() {
     return "default-src 'none'; img-src data:; style-src '" + policy_hash(report_style()) + "' '" + policy_hash(leaflet_style()) + "'; script-src '" +
-           policy_hash(leaflet_script()) + "' '" + policy_hash(report_script()) + "'; base-uri 'none'; form-action 'none'";
+           policy_hash(report_first_script()) + "' '" + policy_hash(leaflet_script()) + "' '" + policy_hash(report_script()) + "'; base-uri 'none'; form-action 'none'";
 }
 
 std::string title_of(const StudyResult& result) { return result.study.title.empty() ? "Travel time of water" : result.study.title; }
@@ -34,7 +34,8 @@ std::string title_of(const StudyResult& result) { return result.study.title.empt
 std::string head(const StudyResult& result) {
     return "<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n<meta http-equiv=\"Content-Security-Policy\" content=\"" + policy() +
            "\">\n<meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n<title>" + html_text(title_of(result)) +
-           "</title>\n<style>" + std::string(leaflet_style()) + "</style>\n<style>" + std::string(report_style()) + "</style>\n</head>\n<body>\n";
+           "</title>\n<style>" + std::string(leaflet_style()) + "</style>\n<style>" + std::string(report_style()) + "</style>\n<script>" + std::string(report_first_script()) +
+           "</script>\n</head>\n<body>\n";
 }
 
 /// "2 m × 2 m", in the unit of the grid's own coordinates.

@@ -1,3 +1,5 @@
+#include <algorithm>
+
 #include "html_text.hpp"
 #include "report_parts.hpp"
 #include "rillclock/deliver/report_units.hpp"
@@ -116,9 +118,27 @@ std::string ground(const StudyResult& result, const Outlet& outlet) {
            plain_table({"cover", "soil group", "slope of the land", "area " + scale.area_unit(), "share %", "n of sheet flow", "paved"}, rows);
 }
 
+/// A calculation sheet as pages may part it: before an item or a heading, and never between a heading and what it heads. The text stays the same.
+std::string sheet_in_parts(const std::string& text) {
+    std::string html;
+    bool after_blank = true;
+    for (std::size_t begin = 0; begin < text.size();) {
+        const std::size_t end = std::min(text.find('\n', begin), text.size() - 1) + 1;
+        const std::string line = text.substr(begin, end - begin);
+        const bool is_item = line.starts_with("* ");
+        if (is_item || (after_blank && !line.starts_with(" ") && line != "\n")) {
+            html += std::string(html.empty() ? "" : "</span>") + (is_item ? "<span class=\"item\">" : "<span class=\"head\">");
+        }
+        html += html_text(line);
+        after_blank = line == "\n";
+        begin = end;
+    }
+    return html + (html.empty() ? "" : "</span>");
+}
+
 std::string sheet(const ReportMatter& matter, const Outlet& outlet) {
     return "<details class=\"sheet\"><summary>Calculation sheet, line by line</summary><pre>" +
-           html_text(sheet_text(matter.sheets.sheet(outlet.number - 1))) + "</pre></details>\n";
+           sheet_in_parts(sheet_text(matter.sheets.sheet(outlet.number - 1))) + "</pre></details>\n";
 }
 
 }  // namespace

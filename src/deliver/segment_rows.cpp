@@ -1,5 +1,7 @@
 #include "segment_rows.hpp"
 
+#include <algorithm>
+
 namespace rillclock {
 namespace {
 
@@ -33,13 +35,25 @@ std::vector<SegmentRow> segment_rows(const Outlet& outlet) {
 }
 
 std::vector<Place> segment_places(const StudyResult& result, const SegmentRow& row) {
+    return segment_places(result, row, row.path->cells.size() - 1);
+}
+
+std::vector<Place> segment_places(const StudyResult& result, const SegmentRow& row, std::size_t steps) {
     const Segment& segment = *row.segment;
-    std::vector<Place> places{place_at(result.grid, *row.path, segment.from)};
-    for (std::size_t position = segment.from.position + 1; position <= segment.to.position; ++position) {
+    if (segment.from.position >= steps) return {};
+    std::vector<Place> places{segment_begin(result, row)};
+    for (std::size_t position = segment.from.position + 1; position <= std::min(segment.to.position, steps); ++position) {
         places.push_back(result.grid.centre(row.path->cells[position]));
     }
-    if (segment.to.share > 0.0) places.push_back(place_at(result.grid, *row.path, segment.to));
+    if (segment.to.share > 0.0 && segment.to.position < steps) places.push_back(segment_end(result, row));
     return places;
+}
+
+Place segment_begin(const StudyResult& result, const SegmentRow& row) { return place_at(result.grid, *row.path, row.segment->from); }
+
+Place segment_end(const StudyResult& result, const SegmentRow& row) {
+    const PathSpot& to = row.segment->to;
+    return to.share > 0.0 ? place_at(result.grid, *row.path, to) : result.grid.centre(row.path->cells[to.position]);
 }
 
 }  // namespace rillclock

@@ -30,4 +30,11 @@ struct SegmentRow {
 /// Where a segment runs: from its first to its last place, in the DEM's coordinates, every cell centre between.
 [[nodiscard]] std::vector<Place> segment_places(const StudyResult& result, const SegmentRow& row);
 
+/// The same within the first `steps` of its path, from cell to cell; nothing where it begins below them.
+[[nodiscard]] std::vector<Place> segment_places(const StudyResult& result, const SegmentRow& row, std::size_t steps);
+
+/// The first and the last of its places.
+[[nodiscard]] Place segment_begin(const StudyResult& result, const SegmentRow& row);
+[[nodiscard]] Place segment_end(const StudyResult& result, const SegmentRow& row);
+
 }  // namespace rillclock

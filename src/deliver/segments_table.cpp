@@ -171,10 +171,10 @@ void add_section_columns(const StudyResult& result, const ReportScale& scale, Se
 }
 
 void add_end_columns(const StudyResult& result, SegmentTable& table) {
-    table.column("x_from", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).front().x); })
-        .column("y_from", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).front().y); })
-        .column("x_to", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).back().x); })
-        .column("y_to", [&](const SegmentRow& r) { return coordinate(result.system, segment_places(result, r).back().y); });
+    table.column("x_from", [&](const SegmentRow& r) { return coordinate(result.system, segment_begin(result, r).x); })
+        .column("y_from", [&](const SegmentRow& r) { return coordinate(result.system, segment_begin(result, r).y); })
+        .column("x_to", [&](const SegmentRow& r) { return coordinate(result.system, segment_end(result, r).x); })
+        .column("y_to", [&](const SegmentRow& r) { return coordinate(result.system, segment_end(result, r).y); });
 }
 
 }  // namespace

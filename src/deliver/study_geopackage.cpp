@@ -8,7 +8,7 @@
 #include "network_layers.hpp"
 #include "network_words.hpp"
 #include "palette.hpp"
-#include "segment_rows.hpp"
+#include "path_layers.hpp"
 
 namespace rillclock {
 namespace {
@@ -60,69 +60,6 @@ void write_subareas(const StudyResult& result, const StudyRegions& regions, Vect
     add_outlet_fields(result, layer);
     layer.begin();
     for (const Outlet& outlet : result.outlets) layer.add(placed(regions.subarea(outlet.number), result.grid), outlet);
-}
-
-struct PathRow {
-    const Outlet* outlet = nullptr;
-    const PointPath* path = nullptr;
-    std::string name;
-};
-
-/// A place alone is no line.
-std::vector<Line> as_lines(Line line) { return line.size() < 2 ? std::vector<Line>() : std::vector<Line>{std::move(line)}; }
-
-std::vector<Line> line_of(const StudyResult& result, const PointPath& path) {
-    Line line;
-    for (const Cell cell : path.cells) line.push_back(result.grid.centre(cell));
-    return as_lines(std::move(line));
-}
-
-void write_paths(const StudyResult& result, VectorFile& file) {
-    LayerWriter<PathRow> layer(file, {.name = "paths", .description = "governing and longest path of each point, drawn downstream",
-                                      .geometry = LayerGeometry::lines,
-                                      .style = {.field = "path", .looks = {{.value = "governing", .label = "governing", .stroke = "#000000", .stroke_mm = 0.9},
-                                                                           {.value = "longest", .label = "longest", .stroke = "#cc79a7", .stroke_mm = 0.5}}}});
-    layer.field("point", FieldKind::text, "name of the design point", [](const PathRow& r) { return r.outlet->point.name; })
-        .field("path", FieldKind::text, "governing: its water arrives last; longest: its water has the longest way", [](const PathRow& r) { return r.name; })
-        .field("length_m", FieldKind::number, "length", [](const PathRow& r) { return number(from_fixed(r.path->summary.length)); })
-        .field("fall_m", FieldKind::number, "fall of the spill elevation", [](const PathRow& r) { return number(r.path->summary.fall_m); })
-        .field("time_min", FieldKind::number, "travel time", [](const PathRow& r) { return minutes(r.path->seconds); });
-    layer.begin();
-    for (const Outlet& outlet : result.outlets) {
-        layer.add(line_of(result, outlet.governing), {&outlet, &outlet.governing, "governing"});
-        layer.add(line_of(result, outlet.longest), {&outlet, &outlet.longest, "longest"});
-    }
-}
-
-LayerStyle regime_style() {
-    LayerStyle style{.field = "regime"};
-    for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
-        style.looks.push_back({.value = std::string(name_of(regime)), .label = std::string(name_of(regime)), .stroke = colour_of(regime),
-                               .stroke_mm = regime == Regime::sheet ? 1.1 : 0.7});
-    }
-    return style;
-}
-
-void write_segments(const StudyResult& result, VectorFile& file) {
-    LayerWriter<SegmentRow> layer(file, {.name = "segments", .description = "pieces of the paths that one formula times, as in segments.csv",
-                                         .geometry = LayerGeometry::lines, .style = regime_style()});
-    layer.field("point", FieldKind::text, "name of the design point", [](const SegmentRow& r) { return r.outlet->point.name; })
-        .field("path", FieldKind::text, "governing or longest", [](const SegmentRow& r) { return std::string(r.path_name); })
-        .field("segment", FieldKind::whole_number, "number along the path", [](const SegmentRow& r) { return whole(r.number); })
-        .field("regime", FieldKind::text, "how the water moves", [](const SegmentRow& r) { return std::string(name_of(r.segment->regime)); })
-        .field("cover", FieldKind::text, "land cover; none in channels", [&result](const SegmentRow& r) {
-            const CoverClass* cover = cover_of(result, *r.segment);
-            return cover == nullptr ? FieldValue() : FieldValue(cover->name);
-        })
-        .field("length_m", FieldKind::number, "length, ponded cells included", [](const SegmentRow& r) { return number(r.segment->whole_length_m()); })
-        .field("slope_equivalent", FieldKind::number, "slope that gives the same time", [](const SegmentRow& r) { return number(r.segment->slope_equivalent); })
-        .field("fall_m", FieldKind::number, "fall of the spill elevation", [](const SegmentRow& r) { return number(r.segment->fall_m); })
-        .field("time_min", FieldKind::number, "travel time", [](const SegmentRow& r) { return minutes(r.time_s); })
-        .field("running_time_min", FieldKind::number, "from the head of the path to the end of the segment", [](const SegmentRow& r) { return minutes(r.running_s); });
-    layer.begin();
-    for (const Outlet& outlet : result.outlets) {
-        for (const SegmentRow& row : segment_rows(outlet)) layer.add(as_lines(segment_places(result, row)), row);
-    }
 }
 
 std::string band_text(const IsochroneRow& row) { return significant(row.from_min, 6) + " to " + significant(row.to_min, 6) + " min"; }
@@ -232,7 +169,6 @@ void write_study_geopackage(const std::filesystem::path& path, const StudyResult
     write_catchments(result, regions, file);
     if (!result.drawn.empty()) write_differences(result, file);
     write_paths(result, file);
-    write_segments(result, file);
     write_network(result, file);
     write_outlets(result, file);
     if (result.peaks.are_there()) write_peaks(result, file);

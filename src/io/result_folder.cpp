@@ -5,10 +5,13 @@
 #include <sys/stat.h>
 #include <unistd.h>
 
+#include <algorithm>
 #include <array>
+#include <atomic>
 #include <cerrno>
 #include <cstdio>
 #include <cstring>
+#include <future>
 #include <string>
 #include <utility>
 #include <vector>
@@ -57,9 +60,23 @@ void write_all(int file, std::string_view content, const fs::path& path) {
     }
 }
 
+/// A disk takes many files at a time as fast as one, so that hundreds of small ones are brought to it side by side; folders come last, since
+/// they say what is there.
 void sync_tree(const fs::path& folder) {
-    for (const fs::directory_entry& entry : fs::recursive_directory_iterator(folder)) sync_to_disk(entry.path());
-    sync_to_disk(folder);
+    std::vector<fs::path> files;
+    std::vector<fs::path> folders = {folder};
+    for (const fs::directory_entry& entry : fs::recursive_directory_iterator(folder)) (entry.is_directory() ? folders : files).push_back(entry.path());
+    constexpr std::size_t most_at_a_time = 8;
+    std::atomic<std::size_t> next = 0;
+    std::vector<std::future<void>> syncing;
+    for (std::size_t i = 0; i < std::min(most_at_a_time, files.size()); ++i) {
+        syncing.push_back(std::async(std::launch::async, [&] {
+            for (std::size_t at = next++; at < files.size(); at = next++) sync_to_disk(files[at]);
+        }));
+    }
+    for (std::future<void>& one : syncing) one.wait();
+    for (std::future<void>& one : syncing) one.get();
+    for (const fs::path& one : folders) sync_to_disk(one);
 }
 
 fs::path as_target(const fs::path& given) {

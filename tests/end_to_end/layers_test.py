@@ -10,7 +10,7 @@ import unittest
 import xml.etree.ElementTree as xml
 
 import numpy as np
-from osgeo import gdal, ogr
+from osgeo import gdal, ogr, osr
 
 from peaks_test import demo_with_peaks
 from support import CommandTest, DemoTest, class_folder, hills, table
@@ -42,6 +42,13 @@ def burnt(layer, raster, query, value_of=lambda feature: 1):
         gdal.RasterizeLayer(count, [1], one, burn_values=[1], options=["MERGE_ALG=ADD"])
         shapes.DeleteLayer(0)
     return values.ReadAsArray(), count.ReadAsArray()
+
+
+def wgs84():
+    system = osr.SpatialReference()
+    system.ImportFromEPSG(4326)
+    system.SetAxisMappingStrategy(osr.OAMS_TRADITIONAL_GIS_ORDER)
+    return system
 
 
 class Layers(DemoTest):
@@ -133,7 +140,11 @@ class Layers(DemoTest):
     def test_shapes_are_valid(self):
         for name in LAYERS:
             for feature in self.layer(name):
-                self.assertTrue(feature.GetGeometryRef().IsValid(), (name, feature.GetFID()))
+                shape = feature.GetGeometryRef()
+                if shape is None:
+                    self.assertIn(name, ("paths", "segments"), "all of whose way may be drawn with others")
+                    continue
+                self.assertTrue(shape.IsValid(), (name, feature.GetFID()))
 
     def test_isochrones_of_catchments_are_the_bands_of_the_travel_time(self):
         times = self.raster("travel_time.tif")
@@ -194,6 +205,47 @@ class Layers(DemoTest):
             self.assertAlmostEqual(feature["time_of_concentration_min"], float(row["time_of_concentration_min"]), delta=6e-4)
             self.assertAlmostEqual(feature.GetGeometryRef().GetX(), float(row["x"]), places=3)
 
+
+    def test_paths_put_together_from_their_branches_are_those_of_the_geojson(self):
+        branches = {(f["point"], f["path"]): f for f in self.layer("paths")}
+        places = {key: [place[:2] for place in f.GetGeometryRef().GetGeometryRef(0).GetPoints()] if f.GetGeometryRef() else [] for key, f in branches.items()}
+        steps = [step for way in places.values() for step in zip(way, way[1:])]
+        self.assertEqual(len(steps), len(set(steps)), "each step is drawn once")
+        ends = {f["point"]: f.GetGeometryRef().GetPoint(0)[:2] for f in self.layer("outlets")}
+        to_degrees = osr.CoordinateTransformation(self.layer("paths").GetSpatialRef(), wgs84())
+        whole = {}
+        for name in ("governing", "longest"):
+            for feature in json.loads((self.result_folder / f"{name}_paths.geojson").read_text(encoding="utf-8"))["features"]:
+                whole.setdefault((feature["properties"]["point"], name), []).extend(feature["geometry"]["coordinates"])
+        joined = 0
+        for key, feature in branches.items():
+            way, at = [(feature["head_x"], feature["head_y"])], key
+            while way[-1] != ends[key[0]]:
+                rest = places[at]
+                rest = rest[rest.index(way[-1]) + 1:] if way[-1] in rest else []
+                way += rest[:rest.index(ends[key[0]]) + 1] if ends[key[0]] in rest else rest
+                joined += at != key
+                at = (branches[at]["joins_point"], branches[at]["joins_path"])
+                self.assertTrue(way[-1] == ends[key[0]] or at in branches, key)
+            self.assertAlmostEqual(np.hypot(*np.diff(way, axis=0).T).sum() / feature["length_m"], 1, delta=1e-5, msg=key)
+            drawn = ogr.Geometry(ogr.wkbLineString)   # the GeoJSON leaves out places on a straight line
+            for place in whole[key]:
+                drawn.AddPoint_2D(*place)
+            for place in way:
+                at = ogr.Geometry(ogr.wkbPoint)
+                at.AddPoint_2D(*to_degrees.TransformPoint(*place)[:2])
+                self.assertLess(drawn.Distance(at), 1e-6, key)
+        self.assertGreater(joined, len(branches) // 2, "the demo has paths that run together")
+
+    def test_segments_draw_what_the_paths_draw(self):
+        length = {}
+        for name in ("paths", "segments"):
+            for feature in self.layer(name):
+                key = (feature["point"], feature["path"])
+                shape = feature.GetGeometryRef()
+                length.setdefault(key, {}).setdefault(name, []).append(shape.Length() if shape else 0.0)
+        for key, found in length.items():
+            self.assertAlmostEqual(sum(found["paths"]), sum(found.get("segments", [0.0])), places=6, msg=key)
 
     def test_each_way_of_the_network_runs_along_the_flow_from_its_point_to_the_next(self):
         rows = {row["name"]: row for row in table(self.result_folder / "tables/outlets.csv")}

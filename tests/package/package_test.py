@@ -24,13 +24,13 @@ class Package(unittest.TestCase):
         self.folder = pathlib.Path(tempfile.mkdtemp(prefix="rillclock-package-"))
         self.addCleanup(shutil.rmtree, self.folder, ignore_errors=True)
 
-    def check_command(self, root):
+    def check_command(self, root, zsh="site-functions"):
         command = root / "bin/rillclock"
         do(command, "demo", self.folder / "town")
         self.assertIn("Weir", do(command, "run", self.folder / "town/study.toml"))
         self.assertIn("'Weir' drains 93.91 ha", (self.folder / "town/result/report.html").read_text(encoding="utf-8").replace("&#39;", "'"))
         self.assertIn(".SH EXIT STATUS", (root / "share/man/man1/rillclock.1").read_text())
-        for file in ("bash-completion/completions/rillclock", "zsh/site-functions/_rillclock", "fish/vendor_completions.d/rillclock.fish"):
+        for file in ("bash-completion/completions/rillclock", f"zsh/{zsh}/_rillclock", "fish/vendor_completions.d/rillclock.fish"):
             self.assertIn("explain", (root / "share" / file).read_text())
 
     def check_examples(self, built):
@@ -67,7 +67,11 @@ class Package(unittest.TestCase):
             self.assertIn(name, needs)
         root = self.folder / "clean"
         do("dpkg-deb", "--extract", package, root)
-        self.check_command(root / "usr")
+        self.check_command(root / "usr", zsh="vendor-completions")
+        for module in (self.folder / "packed").glob("python3-rillclock_*.deb"):   # where the build has it
+            needs = do("dpkg-deb", "--field", module, "Depends")
+            for name in ("libgdal", "proj-data", "python3-numpy", "python3 (<< 3."):
+                self.assertIn(name, needs)
 
 
 if __name__ == "__main__":

@@ -1,7 +1,6 @@
 "use strict";
 (function () {
   var root = document.documentElement;
-  root.classList.add("scripted");
   var data = JSON.parse(document.getElementById("map-data").textContent);
   var table = document.getElementById("points");
   var body = table.tBodies[0];
