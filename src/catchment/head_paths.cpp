@@ -13,7 +13,7 @@
 namespace rillclock {
 namespace {
 
-constexpr std::size_t nowhere = SIZE_MAX;
+constexpr std::size_t not_there = SIZE_MAX;
 
 /// Cells that were looked up, by index.
 class FoundCells {
@@ -23,10 +23,10 @@ public:
     }
     [[nodiscard]] std::size_t size() const { return cells_.size(); }
     [[nodiscard]] const PathCell& operator[](std::size_t place) const { return cells_[place]; }
-    /// `nowhere` where it is not among them.
+    /// `not_there` where it is not among them.
     [[nodiscard]] std::size_t place(Cell cell) const {
         const auto found = std::lower_bound(index_.begin(), index_.end(), cell);
-        return found != index_.end() && *found == cell ? static_cast<std::size_t>(found - index_.begin()) : nowhere;
+        return found != index_.end() && *found == cell ? static_cast<std::size_t>(found - index_.begin()) : not_there;
     }
 
 private:
@@ -57,7 +57,7 @@ class PathMaker {
 public:
     PathMaker(const TiledTravel& travel, const KeptCells& kept, const SettingBounds& bounds)
         : travel_(travel), codes_(travel.ground().forest.codes()), kept_(kept), bounds_(bounds), found_(looked_up()),
-          sheet_place_(found_.size(), nowhere), link_place_(found_.size(), nowhere) {}
+          sheet_place_(found_.size(), not_there), link_place_(found_.size(), not_there) {}
 
     std::vector<SheetCell> sheet_cells() {
         std::vector<Place> order;
@@ -93,7 +93,7 @@ private:
     struct Place {
         FixedLength flow_distance = 0;
         Cell cell = no_cell;
-        std::size_t found = nowhere;
+        std::size_t found = not_there;
         /// Downstream first; of cells equally far from the root the greater one.
         [[nodiscard]] bool operator<(const Place& other) const {
             return flow_distance != other.flow_distance ? flow_distance < other.flow_distance : cell > other.cell;
@@ -112,9 +112,9 @@ private:
     }
 
     [[nodiscard]] std::size_t sheet_place_below(Cell cell) const {
-        if (!is_direction(codes_[cell])) return nowhere;
+        if (!is_direction(codes_[cell])) return not_there;
         const std::size_t below = found_.place(cell_below(codes_, cell));
-        return below == nowhere ? nowhere : sheet_place_[below];
+        return below == not_there ? not_there : sheet_place_[below];
     }
 
     /// The slope ahead down to the least floor of any setting.
@@ -136,14 +136,14 @@ private:
         do {
             add_step(at, link, shallow);
             at = found_.place(cell_below(codes_, found_[at].cell));
-        } while (link_place_[at] == nowhere);
+        } while (link_place_[at] == not_there);
         link.below = link_place_[at];
         link.shallow.assign(shallow.begin(), shallow.end());
         return link;
     }
 
     void add_step(std::size_t place, PathLink& link, std::map<std::uint8_t, double>& shallow) const {
-        if (sheet_place_[place] != nowhere) return link.sheet_cells.push_back(sheet_place_[place]);
+        if (sheet_place_[place] != not_there) return link.sheet_cells.push_back(sheet_place_[place]);
         const PathCell& at = found_[place];
         const BentStep step = bent_step(at);
         const double greatest = floor_of(step.kind, bounds_.greatest_overland_floor, bounds_.greatest_channel_floor);
@@ -222,9 +222,9 @@ double slope_under(const TravelSetting& setting, const SheetCell& cell) {
     return std::max(cell.slope, static_cast<double>(floor));
 }
 
-/// New places of what is kept, in its old order; `nowhere` for what is not.
+/// New places of what is kept, in its old order; `not_there` for what is not.
 std::vector<std::size_t> new_places(const std::vector<bool>& kept) {
-    std::vector<std::size_t> places(kept.size(), nowhere);
+    std::vector<std::size_t> places(kept.size(), not_there);
     std::size_t next = 0;
     for (std::size_t i = 0; i < kept.size(); ++i) {
         if (kept[i]) places[i] = next++;
@@ -298,12 +298,12 @@ void HeadPaths::keep_sheet_cells() {
         for (const std::size_t cell : link.sheet_cells) kept[cell] = sheet_cells_[cell].on_path = true;
     }
     for (std::size_t i = sheet_cells_.size(); i-- > 0;) {
-        if (sheet_cells_[i].down != nowhere && kept[sheet_cells_[i].down]) kept[i] = true;
+        if (sheet_cells_[i].down != not_there && kept[sheet_cells_[i].down]) kept[i] = true;
     }
     const std::vector<std::size_t> places = new_places(kept);
     keep_items(sheet_cells_, kept);
     for (SheetCell& cell : sheet_cells_) {
-        if (cell.down != nowhere) cell.down = places[cell.down];
+        if (cell.down != not_there) cell.down = places[cell.down];
     }
     for (PathLink& link : links_) {
         for (std::size_t& cell : link.sheet_cells) cell = places[cell];
@@ -319,7 +319,7 @@ std::vector<WayTime> HeadPaths::sheet_times(const TravelSetting& setting) const 
         step.surface = &setting.classes[cell.surface];
         step.slope = slope_under(setting, cell);
         step.sheet_index = index[i];
-        if (cell.down != nowhere) index[cell.down] = std::max(index[cell.down], index[i] + sheet_index_step(step));
+        if (cell.down != not_there) index[cell.down] = std::max(index[cell.down], index[i] + sheet_index_step(step));
         if (!cell.on_path) continue;
         const StepTime time = step_parts(step, setting.rules).time();
         times[i] = {.storm_s = from_fixed(time.storm), .fixed_s = from_fixed(time.fixed)};

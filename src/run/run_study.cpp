@@ -16,6 +16,7 @@
 #include "rillclock/deliver/paths_geojson.hpp"
 #include "rillclock/deliver/study_geopackage.hpp"
 #include "rillclock/io/gdal_session.hpp"
+#include "rillclock/io/gdal_threads.hpp"
 #include "rillclock/run/review_words.hpp"
 #include "rillclock/study/scenario.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
@@ -330,7 +331,8 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     require_memory(study);
     ResultFolder folder(located(study, study.output.folder), options.replace ? Existing::replace : Existing::refuse);
     (void)review_words(folder.target());   // a table that cannot be read is told of before the work
-    const Executor executor(options.threads);
+    const Executor executor(options.threads != 0 ? options.threads : gdal_threads().value_or(0));
+    const GdalThreadLimit limit(executor.threads());
     const std::vector<Study> scenarios = scenario_studies(study);
     std::vector<Task> tasks = read_tasks(study, scenarios);
     // Checksums are made while the work goes on; nothing else is left to do on one processor alone.

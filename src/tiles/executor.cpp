@@ -63,6 +63,12 @@ unsigned allowed_processors() {
     return std::max(1U, static_cast<unsigned>(CPU_COUNT(&allowed)));
 }
 
+#ifdef RILLCLOCK_PLAIN_THREADS
+constexpr bool may_use_arena = false;   // for the thread sanitizer
+#else
+constexpr bool may_use_arena = true;
+#endif
+
 }  // namespace
 
 struct Executor::Arena {
@@ -74,7 +80,7 @@ struct Executor::Arena {
 
 Executor::Executor(unsigned threads, Kind kind)
     : threads_(threads == 0 ? usable_threads() : threads),
-      arena_(kind == Kind::task_arena && threads_ > 1 ? std::make_unique<Arena>(threads_) : nullptr) {}
+      arena_(may_use_arena && kind == Kind::task_arena && threads_ > 1 ? std::make_unique<Arena>(threads_) : nullptr) {}
 Executor::~Executor() = default;
 Executor::Executor(Executor&&) noexcept = default;
 Executor& Executor::operator=(Executor&&) noexcept = default;

@@ -14,7 +14,7 @@ namespace rillclock {
 /// How a study is run; no figure depends on it.
 struct RunOptions {
     bool replace = false;          ///< whether a result that is already there may be replaced
-    unsigned threads = 0;          ///< 0 for as many as may be used
+    unsigned threads = 0;          ///< 0 for as many as GDAL_NUM_THREADS says, else as may be used
     std::int64_t tile_side = 256;  ///< in cells; no figure depends on it
 };
 
