@@ -119,6 +119,12 @@ struct SheetBook::Content {
     SheetJson json;
     std::string file;
     NoticesOfPoints notices;
+    std::span<const std::string> apart = {};   ///< the points, where they do not stand in `json`
+
+    [[nodiscard]] std::size_t points() const { return std::max(apart.size(), json.at("outlets").size()); }
+    [[nodiscard]] SheetJson outlet(std::size_t position) const {
+        return apart.empty() ? json.at("outlets").at(position) : SheetJson::parse(apart[position]);
+    }
 };
 
 SheetBook::SheetBook(std::string_view result_json, std::string_view file) {
@@ -130,19 +136,21 @@ SheetBook::SheetBook(std::string_view result_json, std::string_view file) {
         throw no_whole_result(file, broken);
     }
 }
+SheetBook::SheetBook(std::string_view frame, std::span<const std::string> outlets) : SheetBook(frame, "result.json") { content_->apart = outlets; }
 SheetBook::SheetBook(SheetBook&&) noexcept = default;
 SheetBook& SheetBook::operator=(SheetBook&&) noexcept = default;
 SheetBook::~SheetBook() = default;
 
 std::vector<std::string> SheetBook::names() const {
     std::vector<std::string> names;
-    for (const SheetJson& outlet : content_->json.at("outlets")) names.push_back(words_of(outlet, "name"));
+    for (std::size_t i = 0; i < content_->points(); ++i) names.push_back(words_of(content_->outlet(i), "name"));
     return names;
 }
 
 CalculationSheet SheetBook::sheet(std::size_t position) const try {
     const SheetJson& result = content_->json;
-    const SheetMatter matter{.result = result, .outlet = result.at("outlets").at(position),
+    const SheetJson outlet = content_->outlet(position);
+    const SheetMatter matter{.result = result, .outlet = outlet,
                              .scale = ReportScale(result.at("report_units") == "us" ? ReportUnits::us : ReportUnits::si)};
     SheetWriter sheet;
     sheet.title("Calculation sheet: " + words_of(matter.outlet, "name"));

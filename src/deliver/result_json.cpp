@@ -421,7 +421,9 @@ std::vector<std::string> outlet_texts(const StudyResult& result, const Executor&
 
 }  // namespace
 
-std::string result_json(const StudyResult& result, const Executor& executor) {
+std::string ResultText::whole() const { return with_members(frame, "outlets", outlets) + "\n"; }
+
+ResultText result_json(const StudyResult& result, const Executor& executor) {
     Json json = {{"title", result.study.title},
                        {"date", text_or_null(result.study.date)},
                        {"scenario", text_or_null(result.study.scenario)},
@@ -436,7 +438,7 @@ std::string result_json(const StudyResult& result, const Executor& executor) {
                        {"outlets", Json::array()},
                        {"notices", notices_json(result)}};
     if (result.uncertainty != nullptr) json["uncertainty"] = uncertainty_json(result);
-    return with_members(json_text(json), "outlets", outlet_texts(result, executor)) + "\n";
+    return {.frame = json_text(json), .outlets = outlet_texts(result, executor)};
 }
 
 }  // namespace rillclock

@@ -87,18 +87,19 @@ ResultTexts write_result(const WorkedStudy& worked, ResultFolder& folder) {
     const Executor& executor = worked.travel.executor();
     // Each of these takes as long as all the rest and keeps one processor busy.
     std::future<void> shapes = std::async(std::launch::async, [&] { write_shapes(result, worked.regions, folder); });
-    std::string json = result_json(result, executor);
-    std::future<void> rest = std::async(std::launch::async, [&] {
+    const ResultText text = result_json(result, executor);
+    std::future<std::string> rest = std::async(std::launch::async, [&] {
+        std::string json = text.whole();
+        folder.write_text("result.json", json);
         write_texts(result, folder);
         write_ground(worked, folder);
-        folder.write_text("result.json", json);
+        return json;
     });
-    const SheetBook book(json, "result.json");
+    const SheetBook book(text.frame, text.outlets);
     write_sheets(result, book, executor, folder);
     ReportText report = report_of(worked, book);
     shapes.get();
-    rest.get();
-    return {.json = std::move(json), .report = std::move(report)};
+    return {.json = rest.get(), .report = std::move(report)};
 }
 
 }  // namespace rillclock

@@ -2,6 +2,7 @@
 
 #include <cstddef>
 #include <memory>
+#include <span>
 #include <string>
 #include <string_view>
 #include <vector>
@@ -35,6 +36,8 @@ class SheetBook {
 public:
     /// Throws Error (inputs), naming `file`, where the text is no result of this program.
     SheetBook(std::string_view result_json, std::string_view file);
+    /// Of a result whose points stand apart (`ResultText`); each is read when its sheet is made. `outlets` must live as long.
+    SheetBook(std::string_view frame, std::span<const std::string> outlets);
     SheetBook(SheetBook&&) noexcept;
     SheetBook& operator=(SheetBook&&) noexcept;
     ~SheetBook();
