@@ -21,7 +21,7 @@ constexpr std::size_t most_bytes = 9'900'000;               ///< of the file; th
 constexpr std::size_t most_bytes_of_sections = 6'500'000;
 constexpr std::size_t bytes_of_the_rest = 400'000;          ///< scripts, styles, licence, findings
 constexpr std::size_t bytes_of_a_row = 400;                 ///< of the table of points
-constexpr std::size_t most_notices_at_top = 8;
+constexpr std::size_t most_points_of_a_kind = 4;
 
 /// Nothing is fetched, and no script runs but those that are named here by their checksums.
 std::string policy() {
@@ -83,14 +83,40 @@ std::string findings(const StudyResult& result) {
     return html + "</ul>\n";
 }
 
+/// What was noticed of one kind: the one with the greatest effect, and where else.
+struct NoticedKind {
+    const Notice* first = nullptr;
+    std::vector<std::string> other_points;
+};
+
+std::vector<NoticedKind> noticed_kinds(const Notices& notices) {
+    std::vector<NoticedKind> kinds;
+    for (const Notice& notice : notices) {
+        const auto known = std::find_if(kinds.begin(), kinds.end(), [&](const NoticedKind& kind) { return kind.first->code == notice.code; });
+        if (known == kinds.end()) {
+            kinds.push_back({.first = &notice, .other_points = {}});
+        } else {
+            known->other_points.push_back(notice.point);
+        }
+    }
+    return kinds;
+}
+
+/// "Likewise at 7 more: 'Weir', 'Mill bridge', 'Tramway bank', 'Orchard inlet' and 3 others."; nothing where there are no more.
+std::string likewise(const std::vector<std::string>& points) {
+    if (points.empty()) return "";
+    std::string html = " <em>Likewise at " + std::to_string(points.size()) + " more: ";
+    for (std::size_t i = 0; i < std::min(most_points_of_a_kind, points.size()); ++i) html += (i == 0 ? "'" : ", '") + html_text(points[i]) + "'";
+    if (points.size() > most_points_of_a_kind) html += " and " + std::to_string(points.size() - most_points_of_a_kind) + " others";
+    return html + ".</em>";
+}
+
+/// One item for each kind, so that none is hidden behind many of another.
 std::string eye(const StudyResult& result) {
     if (result.notices.empty()) return "";
     std::string html = "<details class=\"eye\" open><summary>What needs a person's eye, by its effect on the time</summary><ul class=\"notices\">";
-    for (std::size_t i = 0; i < std::min(most_notices_at_top, result.notices.size()); ++i) html += "<li>" + html_text(result.notices[i].text) + "</li>";
-    if (result.notices.size() > most_notices_at_top) {
-        html += "<li>and " + std::to_string(result.notices.size() - most_notices_at_top) + " more, at the points and in tables/review.csv</li>";
-    }
-    return html + "</ul></details>\n";
+    for (const NoticedKind& kind : noticed_kinds(result.notices)) html += "<li>" + html_text(kind.first->text) + likewise(kind.other_points) + "</li>";
+    return html + "</ul><p>All of them stand at the points and in tables/review.csv.</p></details>\n";
 }
 
 std::string map_part(const ReportMatter& matter) {

@@ -247,6 +247,16 @@ class Report(CommandTest):
         first = re.search(r"(?s)<script>(.*?)</script>", self.text.split("</head>")[0])[1]
         self.assertIn('classList.add("scripted")', first)
 
+    def test_each_kind_of_notice_is_told_on_top_and_at_how_many_points(self):
+        items = [html.unescape(item) for item in re.findall(r"<li>(.*?)</li>", re.search(r'(?s)<details class="eye".*?</details>', self.text)[0])]
+        by_kind = {}
+        for row in self.tables["review"]:
+            by_kind.setdefault(row["notice"], []).append(row)
+        self.assertEqual(len(items), len(by_kind))
+        for item, rows in zip(items, by_kind.values()):
+            self.assertTrue(item.startswith(rows[0]["text"]), item)
+            self.assertEqual(f"Likewise at {len(rows) - 1} more" in item, len(rows) > 1, item)
+
     def test_charts_say_in_words_what_there_is_to_see(self):
         for finding in re.findall(r'<svg viewBox[^>]*role="img" aria-label="([^"]*)"', self.text):
             self.assertRegex(finding, r"\d")
