@@ -1,8 +1,11 @@
 #include "rillclock/catchment/arrival_tally.hpp"
 
 #include <algorithm>
+#include <iterator>
 #include <optional>
 #include <unordered_map>
+#include <utility>
+#include <vector>
 
 namespace rillclock {
 namespace {
@@ -39,11 +42,55 @@ GroundOfCell ground_of_cell(const TiledGround& in, const TileDesk& desk, Local l
             .elevation_m = desk.elevation[local] * in.metres_per_elevation_unit};
 }
 
-/// Arrivals of the subareas that meet in one tile. Cells of a subarea lie together, and so do those of one second: both are looked up
-/// only where they change.
+/// Bins of the subareas that meet in one tile. A bin stays in a slot of a table until another takes its place, so that a cell costs one look:
+/// cells of one subarea and second mostly lie together. What leaves the table in parts becomes one bin again in `ArrivalBins`.
+class TileBins {
+public:
+    explicit TileBins(double storm_factor) : storm_factor_(storm_factor), slots_(slot_count) {}
+
+    void add(std::uint32_t owner, const Head& head, FixedArea area) {
+        const std::int64_t second = ArrivalBins::second_of(head.time, storm_factor_);
+        Slot& slot = slots_[(static_cast<std::size_t>(second) + std::size_t{owner} * spread) % slot_count];
+        if (slot.owner != owner || slot.bin.second != second) {
+            if (slot.owner != 0) done_.push_back(slot);
+            slot = {owner, {second, area, head}};
+            return;
+        }
+        slot.bin.area += area;
+        if (arrives_later(head, slot.bin.last, storm_factor_)) slot.bin.last = head;
+    }
+
+    /// Hands over the bins, each subarea's in one go: `take(owner, bins)`.
+    template <class Take>
+    void hand_over(Take take) {
+        std::copy_if(slots_.begin(), slots_.end(), std::back_inserter(done_), [](const Slot& slot) { return slot.owner != 0; });
+        std::sort(done_.begin(), done_.end(), [](const Slot& a, const Slot& b) { return a.owner < b.owner; });
+        for (auto first = done_.begin(); first != done_.end();) {
+            const auto last = std::find_if(first, done_.end(), [&](const Slot& slot) { return slot.owner != first->owner; });
+            std::vector<ArrivalBins::Bin> bins;
+            std::transform(first, last, std::back_inserter(bins), [](const Slot& slot) { return slot.bin; });
+            take(first->owner, std::move(bins));
+            first = last;
+        }
+    }
+
+private:
+    struct Slot {
+        std::uint32_t owner = 0;   ///< 0 where the slot is free
+        ArrivalBins::Bin bin;
+    };
+    static constexpr std::size_t slot_count = 4096;
+    static constexpr std::size_t spread = 1031;   // seconds of neighbouring subareas are much alike
+
+    double storm_factor_;
+    std::vector<Slot> slots_;
+    std::vector<Slot> done_;
+};
+
+/// Arrivals of the subareas that meet in one tile. Cells of a subarea lie together: it is looked up only where it changes.
 class TileTally {
 public:
-    TileTally(double storm_factor, Storms storms) : storm_factor_(storm_factor), storms_(storms) {}
+    TileTally(double storm_factor, Storms storms) : storm_factor_(storm_factor), storms_(storms), bins_(storm_factor) {}
 
     void add(std::uint32_t owner, const ArrivingCell& cell, const GroundOfCell& ground) {
         if (owner != owner_ || arrivals_ == nullptr) {
@@ -54,19 +101,14 @@ public:
         arrivals_->ground.add(ground.cover, ground.soil, cell.area, ground.slope, ground.elevation_m);
         if (ground.rain_zone) arrivals_->ground.add_to_zone(*ground.rain_zone, cell.area);
         if (storms_ == Storms::by_point) return arrivals_->storm_bins.add(cell.head, cell.area, storm_factor_);
-        const std::int64_t second = ArrivalBins::second_of(cell.head.time, storm_factor_);
-        ArrivalBins::Bin& bin = bins_[{owner, second}];
-        const bool is_first = bin.area == 0;
-        bin.second = second;
-        bin.area += cell.area;
-        if (is_first || arrives_later(cell.head, bin.last, storm_factor_)) bin.last = cell.head;
+        bins_.add(owner, cell.head, cell.area);
     }
 
     /// To be called once, after the last cell.
     void finish() {
-        std::unordered_map<std::uint32_t, std::vector<ArrivalBins::Bin>> bins;
-        for (const auto& [key, bin] : bins_) bins[key.owner].push_back(bin);
-        for (auto& [owner, of_owner] : bins) by_owner_[owner].bins.add(std::move(of_owner), storm_factor_);
+        bins_.hand_over([&](std::uint32_t owner, std::vector<ArrivalBins::Bin>&& bins) {
+            by_owner_[owner].bins.add(std::move(bins), storm_factor_);
+        });
     }
 
     void hand_over(std::vector<Arrivals>& subareas) {
@@ -74,23 +116,12 @@ public:
     }
 
 private:
-    struct Key {
-        std::uint32_t owner;
-        std::int64_t second;
-        bool operator==(const Key&) const = default;
-    };
-    struct KeyHash {
-        std::size_t operator()(const Key& key) const {
-            return (static_cast<std::size_t>(key.second) * 0x9E3779B97F4A7C15ULL) ^ (static_cast<std::size_t>(key.owner) << 32U);
-        }
-    };
-
     double storm_factor_;
     Storms storms_;
     std::uint32_t owner_ = 0;
     Arrivals* arrivals_ = nullptr;
     std::unordered_map<std::uint32_t, Arrivals> by_owner_;
-    std::unordered_map<Key, ArrivalBins::Bin, KeyHash> bins_;
+    TileBins bins_;
 };
 
 }  // namespace
