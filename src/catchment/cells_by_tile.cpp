@@ -2,7 +2,7 @@
 
 namespace rillclock {
 
-CellsByTile::CellsByTile(const TiledForest& forest, std::span<const Cell> cells) {
+CellsByTile::CellsByTile(const TiledForest& forest, std::span<const Cell> cells) : cells_(cells) {
     const std::int64_t columns = forest.codes().columns();
     std::vector<Tile> tile_of;
     tile_of.reserve(cells.size());
@@ -19,6 +19,12 @@ CellsByTile::CellsByTile(const TiledForest& forest, std::span<const Cell> cells)
     first_.push_back(cells.size());
     positions_.resize(cells.size());
     for (std::size_t i = 0; i < cells.size(); ++i) positions_[place[tile_of[i]]++] = static_cast<std::uint32_t>(i);
+}
+
+std::vector<Cell> CellsByTile::cells(std::size_t i) const {
+    std::vector<Cell> of_tile;
+    for (const std::uint32_t at : positions(i)) of_tile.push_back(cells_[at]);
+    return of_tile;
 }
 
 }  // namespace rillclock

@@ -12,6 +12,7 @@ namespace rillclock {
 /// Positions in a list of cells, tile by tile, so that each tile is made but once for all its cells.
 class CellsByTile {
 public:
+    /// `cells` must stay as they are.
     CellsByTile(const TiledForest& forest, std::span<const Cell> cells);
 
     /// How many tiles hold any of the cells.
@@ -21,8 +22,11 @@ public:
     [[nodiscard]] std::span<const std::uint32_t> positions(std::size_t i) const {
         return std::span(positions_).subspan(first_[i], first_[i + 1] - first_[i]);
     }
+    /// Those cells.
+    [[nodiscard]] std::vector<Cell> cells(std::size_t i) const;
 
 private:
+    std::span<const Cell> cells_;      ///< the list
     std::vector<Tile> tiles_;
     std::vector<std::size_t> first_;   ///< position of each tile's first; one more at the end
     std::vector<std::uint32_t> positions_;

@@ -53,7 +53,7 @@ void SharedPaths::look_up(const TiledTravel& travel) {
     std::mutex mutex;
     travel.executor().for_each(by_tile.size(), [&](std::size_t i) {
         const auto desk = travel.desks().lease();
-        travel.read_tile(by_tile.tile(i), *desk);
+        travel.read_ways(by_tile.tile(i), *desk, by_tile.cells(i));
         std::vector<PathPiece> pieces;
         for (const std::uint32_t at : by_tile.positions(i)) {
             cells_[at] = path_cell(travel, *desk, desk->flow.local(walked_[at]), walked_[at]);

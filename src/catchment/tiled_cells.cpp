@@ -12,7 +12,7 @@ void sort_each_once(std::vector<Cell>& cells) {
     cells.erase(std::unique(cells.begin(), cells.end()), cells.end());
 }
 
-/// Makes each tile that holds any of the cells by `read(tile, desk)`, and calls `look(desk, local, i)` for each, i being its place.
+/// Makes each tile that holds any of the cells by `read(tile, desk, cells)`, the cells being those, and calls `look(desk, local, i)` for each, i being its place.
 /// `cells` by index, each once.
 template <class Read, class Look>
 void visit(const TiledForest& forest, const Executor& executor, Workspaces<TileDesk>& desks, const std::vector<Cell>& cells, Read read,
@@ -20,7 +20,7 @@ void visit(const TiledForest& forest, const Executor& executor, Workspaces<TileD
     const CellsByTile by_tile(forest, cells);
     executor.for_each(by_tile.size(), [&](std::size_t i) {
         const auto desk = desks.lease();
-        read(by_tile.tile(i), *desk);
+        read(by_tile.tile(i), *desk, by_tile.cells(i));
         for (const std::uint32_t at : by_tile.positions(i)) look(*desk, desk->flow.local(cells[at]), at);
     });
 }
@@ -58,7 +58,7 @@ PathCell path_cell(const TiledTravel& travel, const TileDesk& desk, Local local,
 std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vector<Cell> cells) {
     return look_up<FixedArea>(
         travel.ground().forest, travel.executor(), travel.desks(), std::move(cells),
-        [&](Tile tile, TileDesk& desk) { travel.read_areas(tile, desk); },
+        [&](Tile tile, TileDesk& desk, const std::vector<Cell>&) { travel.read_areas(tile, desk); },
         [](const TileDesk& desk, Local local, Cell) -> std::optional<FixedArea> {
             if (desk.flow.code(local) == flow_void) return std::nullopt;
             return desk.area[local];
@@ -68,7 +68,8 @@ std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vec
 std::vector<PathCell> path_cells_by_index(const TiledTravel& travel, std::vector<Cell> cells) {
     sort_each_once(cells);
     std::vector<PathCell> found(cells.size());
-    visit(travel.ground().forest, travel.executor(), travel.desks(), cells, [&](Tile tile, TileDesk& desk) { travel.read_tile(tile, desk); },
+    visit(travel.ground().forest, travel.executor(), travel.desks(), cells,
+          [&](Tile tile, TileDesk& desk, const std::vector<Cell>& of_tile) { travel.read_ways(tile, desk, of_tile); },
           [&](const TileDesk& desk, Local local, std::size_t at) { found[at] = path_cell(travel, desk, local, cells[at]); });
     return found;
 }
@@ -96,7 +97,7 @@ std::vector<PointNumber> next_points(const TiledForest& forest, const TiledOwner
     Workspaces<TileDesk> desks;
     const auto owner = look_up<PointNumber>(
         forest, executor, desks, std::move(cells),
-        [&](Tile tile, TileDesk& desk) {
+        [&](Tile tile, TileDesk& desk, const std::vector<Cell>&) {
             desk.flow.read(codes, forest.tiles().window(tile));
             owners.read_tile(tile, desk);
         },

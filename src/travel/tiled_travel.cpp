@@ -12,6 +12,8 @@ namespace rillclock {
 
 namespace {
 
+constexpr FixedTime not_timed = -1;   // times are not negative
+
 /// Calls `look(local, cell, row of the raster)` for all cells of a tile, voids too, row by row.
 template <class Look>
 void for_each_cell(const TileFlow& flow, Look look) {
@@ -133,13 +135,18 @@ void TiledTravel::read_index_steps(TileDesk& desk) const {
     });
 }
 
-void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
+/// All that steps are timed from.
+void TiledTravel::read_step_ground(Tile tile, TileDesk& desk) const {
     read_elevations(desk);
     read_lengths(desk);
     read_index_steps(desk);
     read_spill(tile, desk);
     fill_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area),
               from_divide_.part(divide_channel(desk), desk.from_divide), sheet_index_.part(index_channel(desk), desk.sheet_index));
+}
+
+void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
+    read_step_ground(tile, desk);
     desk.step.resize(desk.flow.size());
     desk.regime.resize(desk.flow.size());
     for_each_cell(desk.flow, [&](Local local, Cell cell, std::int64_t) {
@@ -159,6 +166,40 @@ void TiledTravel::read_tile(Tile tile, TileDesk& desk) const {
     read_steps(tile, desk);
     fill_up(tile, desk.flow, flow_distance_.part(distance_channel(desk), desk.flow_distance),
             storm_.part(storm_channel(desk), desk.storm), fixed_.part(fixed_channel(desk), desk.fixed));
+}
+
+void TiledTravel::read_ways(Tile tile, TileDesk& desk, std::span<const Cell> cells) const {
+    desk.flow.read(in_.forest.codes(), in_.forest.tiles().window(tile));
+    read_step_ground(tile, desk);
+    fill_up(tile, desk.flow, flow_distance_.part(distance_channel(desk), desk.flow_distance));
+    desk.storm.assign(desk.flow.size(), 0);
+    desk.fixed.assign(desk.flow.size(), not_timed);
+    std::vector<Local> way;
+    for (const Cell cell : cells) {
+        way.clear();
+        Local at = desk.flow.local(cell);
+        for (; at < ends_here && desk.fixed[at] == not_timed; at = desk.flow.down(at)) way.push_back(at);
+        if (!way.empty()) time_way(tile, desk, way);
+    }
+}
+
+/// Times the cells of a way, each before the one it drains to, below which all times are known.
+void TiledTravel::time_way(Tile tile, TileDesk& desk, std::span<const Local> way) const {
+    const Local below = desk.flow.down(way.back());
+    StepTime time;
+    if (below < ends_here) time = desk.time_to_root(below);
+    if (below == leaves_tile) {
+        const auto exits = desk.flow.exits();
+        const auto place = std::lower_bound(exits.begin(), exits.end(), way.back()) - exits.begin();
+        const Exit exit = in_.forest.first_exit(tile) + static_cast<Exit>(place);
+        time = {.fixed = fixed_.below(exit), .storm = storm_.below(exit)};
+    }
+    for (std::size_t i = way.size(); i-- > 0;) {
+        const Local cell = way[i];
+        if (desk.flow.down(cell) != ends_here) time += step_outcome(step_view(desk, cell), rules_).time;
+        desk.fixed[cell] = time.fixed;
+        desk.storm[cell] = time.storm;
+    }
 }
 
 StepView TiledTravel::step_view(const TileDesk& desk, Local local, Cell cell) const {

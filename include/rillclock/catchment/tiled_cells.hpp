@@ -21,7 +21,7 @@ namespace rillclock {
 /// The same, to be asked by cell.
 [[nodiscard]] std::unordered_map<Cell, PathCell> path_cells_at(const TiledTravel& travel, std::vector<Cell> cells);
 
-/// All about a cell of the tile that `read_tile` left on the desk.
+/// All about a cell of the tile that `read_tile` left on the desk, or `read_ways` for that cell.
 [[nodiscard]] PathCell path_cell(const TiledTravel& travel, const TileDesk& desk, Local local, Cell cell);
 
 /// The next point below each point (by number − 1).

@@ -87,6 +87,9 @@ public:
     void read_areas(Tile tile, TileDesk& desk) const;
     /// Makes everything about a tile's cells but labels and owners.
     void read_tile(Tile tile, TileDesk& desk) const;
+    /// As `read_tile`, for those who look at few cells of the tile: no step has its time and regime, and times to the root are those of
+    /// `cells` and of what lies below them in the tile alone.
+    void read_ways(Tile tile, TileDesk& desk, std::span<const Cell> cells) const;
     /// Makes the times once more, with other reaches of channels; all else stays. `reaches` must outlive the times.
     void time_again(const ChannelReaches& reaches);
     /// The step out of a cell of a tile that was read.
@@ -123,7 +126,9 @@ private:
     [[nodiscard]] static auto fixed_channel(const TileDesk& desk) {
         return up::Add{[&desk](Local cell) { return desk.step[cell].fixed; }};
     }
+    void read_step_ground(Tile tile, TileDesk& desk) const;
     void read_steps(Tile tile, TileDesk& desk) const;
+    void time_way(Tile tile, TileDesk& desk, std::span<const Local> way) const;
     void read_elevations(TileDesk& desk) const;
     void read_spill(Tile tile, TileDesk& desk) const;
     void read_lengths(TileDesk& desk) const;
