@@ -191,12 +191,39 @@ std::vector<std::string_view> key_names() {
     return names;
 }
 
+/// The sections that keys stand in, those within others too.
+std::vector<std::string_view> section_names() {
+    std::vector<std::string_view> names;
+    for (const StudyKey& key : keys) {
+        for (auto dot = key.key.find('.'); dot != std::string_view::npos; dot = key.key.find('.', dot + 1)) {
+            const std::string_view name = key.key.substr(0, dot);
+            if (std::find(names.begin(), names.end(), name) == names.end()) names.push_back(name);
+        }
+    }
+    return names;
+}
+
+/// The section that is meant where a section, or what stands for its name, is not known; empty where none is near.
+std::string meant_section(std::string_view key) {
+    const auto sections = section_names();
+    const auto in_words = [](std::string_view name) { return "; did you mean the section [" + std::string(name) + "]?"; };
+    const auto whole = nearest_word(key, sections);
+    const auto nearest_key = nearest_word(key, key_names());
+    if (whole && (!nearest_key || edit_distance(key, *whole) < edit_distance(key, *nearest_key))) return in_words(*whole);
+    const std::string_view stated = key.substr(0, key.find('.'));
+    if (nearest_key || stated == key || std::find(sections.begin(), sections.end(), stated) != sections.end()) return {};
+    const auto part = nearest_word(stated, sections);
+    return part ? in_words(*part) : std::string();
+}
+
 /// A key is often right but in the wrong section, so its last word is looked for before the nearest whole key.
 std::string suggestion(std::string_view key) {
     const auto names = key_names();
     const auto moved =
         std::find_if(names.begin(), names.end(), [&](auto name) { return last_word(name) == last_word(key); });
     if (moved != names.end()) return "; did you mean " + std::string(*moved) + "?";
+    const std::string section = meant_section(key);
+    if (!section.empty()) return section;
     const std::string whole = did_you_mean(key, names);
     if (!whole.empty()) return whole;
     std::vector<std::string_view> words;

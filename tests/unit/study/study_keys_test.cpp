@@ -54,6 +54,12 @@ TEST_CASE("a key that does not exist is a fault of the program that sets it") {
     }
 }
 
+TEST_CASE("a key near a section, or in a section that is not known, is told the section") {
+    CHECK_THROWS_WITH(refuse_study_key("timing.slope_flor", "town.toml, line 1, column 1"), Contains("did you mean the section [timing.slope_floor]?"));
+    CHECK_THROWS_WITH(refuse_study_key("timng.qqqqqqqq", "town.toml, line 1, column 1"), Contains("did you mean the section [timing]?"));
+    CHECK_THROWS_WITH(refuse_study_key("timing.slope_flor.overland", "town.toml, line 1, column 1"), Contains("did you mean timing.slope_floor.overland?"));
+}
+
 TEST_CASE("a key far from all is refused without a guess") {
     CHECK_THROWS_WITH(refuse_study_key("qqqqqqqq", "town.toml, line 1, column 1"), Contains("remove it"));
 }
