@@ -83,7 +83,7 @@ std::string findings(const StudyResult& result) {
     return html + "</ul>\n";
 }
 
-/// What was noticed of one kind: the one with the greatest effect, and where else.
+/// What was noticed of one kind: the one with the greatest effect, and at which other points. What is of no point stands alone.
 struct NoticedKind {
     const Notice* first = nullptr;
     std::vector<std::string> other_points;
@@ -92,8 +92,10 @@ struct NoticedKind {
 std::vector<NoticedKind> noticed_kinds(const Notices& notices) {
     std::vector<NoticedKind> kinds;
     for (const Notice& notice : notices) {
-        const auto known = std::find_if(kinds.begin(), kinds.end(), [&](const NoticedKind& kind) { return kind.first->code == notice.code; });
-        if (known == kinds.end()) {
+        const auto known = std::find_if(kinds.begin(), kinds.end(), [&](const NoticedKind& kind) {
+            return kind.first->code == notice.code && !kind.first->point.empty();
+        });
+        if (known == kinds.end() || notice.point.empty()) {
             kinds.push_back({.first = &notice, .other_points = {}});
         } else {
             known->other_points.push_back(notice.point);
