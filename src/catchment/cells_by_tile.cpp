@@ -1,6 +1,14 @@
 #include "cells_by_tile.hpp"
 
+#include <algorithm>
+
 namespace rillclock {
+
+std::vector<Cell> each_once(std::vector<Cell> cells) {
+    std::sort(cells.begin(), cells.end());
+    cells.erase(std::unique(cells.begin(), cells.end()), cells.end());
+    return cells;
+}
 
 CellsByTile::CellsByTile(const TiledForest& forest, std::span<const Cell> cells) : cells_(cells) {
     const std::int64_t columns = forest.codes().columns();

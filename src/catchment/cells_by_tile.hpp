@@ -9,6 +9,9 @@
 
 namespace rillclock {
 
+/// The cells by index, each once.
+[[nodiscard]] std::vector<Cell> each_once(std::vector<Cell> cells);
+
 /// Positions in a list of cells, tile by tile, so that each tile is made but once for all its cells.
 class CellsByTile {
 public:

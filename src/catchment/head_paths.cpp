@@ -4,6 +4,8 @@
 #include <cmath>
 #include <map>
 
+#include "cells_by_tile.hpp"
+#include "channel_factor.hpp"
 #include "kept_cells.hpp"
 #include "rillclock/catchment/tiled_cells.hpp"
 #include "rillclock/core/error.hpp"
@@ -197,14 +199,6 @@ private:
     std::vector<std::size_t> link_place_;    ///< likewise of the links that begin there
 };
 
-/// How many times longer a channel step takes under these rules: all that may differ is n and a factor on the radius.
-double channel_factor(const ChannelRules& rules, const ChannelRules& base) {
-    const auto speed = [](const ChannelRules& channel) {
-        return manning_velocity({.n = channel.n, .hydraulic_radius = channel.radius_at(square_kilometres(1)), .slope = 1.0});
-    };
-    return speed(base) / speed(rules);
-}
-
 double bent_time(const BentStep& step, const TravelSetting& setting, double channel) {
     const SlopeRules& rules = setting.rules.slope;
     const double slope = std::max(step.slope, floor_of(step.kind, rules.overland_floor, rules.channel_floor));
@@ -243,18 +237,11 @@ void keep_items(std::vector<Item>& items, const std::vector<bool>& kept) {
     items.resize(next);
 }
 
-std::vector<Cell> each_once(std::span<const Cell> cells) {
-    std::vector<Cell> sorted(cells.begin(), cells.end());
-    std::sort(sorted.begin(), sorted.end());
-    sorted.erase(std::unique(sorted.begin(), sorted.end()), sorted.end());
-    return sorted;
-}
-
 }  // namespace
 
 HeadPaths::HeadPaths(const TiledTravel& travel, std::span<const Cell> heads, std::span<const DesignPoint> points,
                      const SettingBounds& bounds)
-    : rules_(travel.rules()), heads_(each_once(heads)) {
+    : rules_(travel.rules()), heads_(each_once({heads.begin(), heads.end()})) {
     const KeptCells kept = kept_cells(travel, heads_, points, bounds.greatest_sheet_limit);
     owners_ = kept.owners;
     PathMaker maker(travel, kept, bounds);

@@ -4,6 +4,7 @@
 #include <cmath>
 #include <limits>
 
+#include "channel_factor.hpp"
 #include "rillclock/hydraulics/open_water.hpp"
 
 namespace rillclock {
@@ -18,11 +19,6 @@ double floor_factor(double base, double floor) { return std::sqrt(std::max(base,
 /// How many times rougher a class is under a setting.
 double roughness(const SurfaceHydraulics& changed, const SurfaceHydraulics& base) {
     return base.sheet_n > 0 ? changed.sheet_n / base.sheet_n : 1.0;
-}
-
-double channel_ratio(const ChannelRules& rules, const ChannelRules& base) {
-    const auto radius = [](const ChannelRules& channel) { return in_metres(channel.radius_at(square_kilometres(1))); };
-    return rules.n / base.n * std::pow(radius(base) / radius(rules), 2.0 / 3.0);
 }
 
 }  // namespace
@@ -60,7 +56,7 @@ std::vector<float> ScaledSteps::factors_of(const TravelSetting& setting) const {
     const std::vector<SurfaceHydraulics>& classes = travel_.ground().surface.classes;
     std::vector<float> factors(sorts_.count(), 1.0F);
     const auto set = [&](std::uint32_t sort, double factor) { factors[sort] = static_cast<float>(factor); };
-    const double channel = channel_ratio(rules.channel, base.channel);
+    const double channel = channel_factor(rules.channel, base.channel);
     set(StepSorts::channel, channel);
     set(sorts_.on_floor(StepSorts::channel), channel * floor_factor(base.slope.channel_floor, rules.slope.channel_floor));
     set(StepSorts::capped_wave, std::isfinite(in_metres_per_second(rules.pond.speed)) ? base.pond.speed / rules.pond.speed : 0.5);

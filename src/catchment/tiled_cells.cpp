@@ -1,16 +1,11 @@
 #include "rillclock/catchment/tiled_cells.hpp"
 
-#include <algorithm>
+#include <utility>
 
 #include "cells_by_tile.hpp"
 
 namespace rillclock {
 namespace {
-
-void sort_each_once(std::vector<Cell>& cells) {
-    std::sort(cells.begin(), cells.end());
-    cells.erase(std::unique(cells.begin(), cells.end()), cells.end());
-}
 
 /// Makes each tile that holds any of the cells by `read(tile, desk, cells)`, the cells being those, and calls `look(desk, local, i)` for each, i being its place.
 /// `cells` by index, each once.
@@ -29,7 +24,7 @@ void visit(const TiledForest& forest, const Executor& executor, Workspaces<TileD
 template <class Value, class Read, class Look>
 std::unordered_map<Cell, Value> look_up(const TiledForest& forest, const Executor& executor, Workspaces<TileDesk>& desks,
                                         std::vector<Cell> cells, Read read, Look look) {
-    sort_each_once(cells);
+    cells = each_once(std::move(cells));
     std::vector<std::optional<Value>> values(cells.size());
     visit(forest, executor, desks, cells, read, [&](const TileDesk& desk, Local local, std::size_t at) {
         values[at] = look(desk, local, cells[at]);
@@ -66,7 +61,7 @@ std::unordered_map<Cell, FixedArea> areas_at(const TiledTravel& travel, std::vec
 }
 
 std::vector<PathCell> path_cells_by_index(const TiledTravel& travel, std::vector<Cell> cells) {
-    sort_each_once(cells);
+    cells = each_once(std::move(cells));
     std::vector<PathCell> found(cells.size());
     visit(travel.ground().forest, travel.executor(), travel.desks(), cells,
           [&](Tile tile, TileDesk& desk, const std::vector<Cell>& of_tile) { travel.read_ways(tile, desk, of_tile); },
