@@ -62,7 +62,7 @@ public:
         run_ = app_.add_subcommand("run", "work out a study and write its result folder");
         add_study_words(*run_, line_, run_values_);
         run_->add_flag("--replace", line_.replace, "replace a result folder that is already there");
-        run_->add_option("--threads", line_.threads, "threads to work on (default: GDAL_NUM_THREADS, else as many as may be used); no figure depends on it")
+        run_->add_option("--threads", line_.threads, "threads (default: GDAL_NUM_THREADS, else all); no figure depends on it")
             ->type_name("NUMBER")
             ->check(CLI::Range(1, 1024));
         run_->add_flag("-q,--quiet", line_.quiet, "say nothing but errors, and where the result is");

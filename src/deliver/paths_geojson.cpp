@@ -54,7 +54,7 @@ void add_path(const StudyResult& result, const Outlet& outlet, GeographicLines& 
 std::string words_on_left_out_paths(std::size_t points) {
     if (points <= most_points_with_paths) return {};
     return "governing_paths.geojson and longest_paths.geojson hold the paths of the last points alone, since there are more than " +
-           std::to_string(most_points_with_paths) + " points; study.gpkg holds those of all";
+           std::to_string(most_points_with_paths) + " points; study.gpkg holds those of all, each stretch once";
 }
 
 std::string paths_geojson(const StudyResult& result, PathKind kind) {
