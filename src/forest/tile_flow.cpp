@@ -20,7 +20,7 @@ void TileFlow::read(const Raster<FlowCode>& codes, const Window& window) {
     const auto size = static_cast<std::size_t>(window.size());
     down_.resize(size);
     code_.resize(size);
-    waiting_.assign(size, 0);
+    waiting_.assign(size + 1, 0);
     exits_.clear();
     entries_.clear();
     read_steps(codes);
@@ -81,21 +81,24 @@ void TileFlow::read_entries(const Raster<FlowCode>& codes) {
 }
 
 void TileFlow::find_order() {
-    order_.resize(down_.size());
-    Local* end = order_.data();
-    for (Local start = 0; start < size(); ++start) {
-        if (waiting_[start] != 0) continue;
-        // Follow the water as long as it waits for no other tributary. Marking a cell keeps the outer loop from taking it again.
-        Local at = start;
-        for (;;) {
-            *end++ = at;
-            const Local next = down_[at];
-            waiting_[at] = never;
-            if (next >= ends_here || --waiting_[next] != 0) break;
-            at = next;
-        }
+    // A list that is read while it grows. No step of it hangs on a guess of the processor: a cell is always written behind the end, and
+    // the end moves on if the cell belongs there. Hence one place more than there are cells, and a last one for what leaves or ends.
+    const Local count = size();
+    order_.resize(count + std::size_t{1});
+    Local* const first = order_.data();
+    Local* end = first;
+    for (Local cell = 0; cell < count; ++cell) {
+        *end = cell;
+        end += waiting_[cell] == 0 ? 1 : 0;
     }
-    order_.resize(static_cast<std::size_t>(end - order_.data()));
+    for (const Local* at = first; at != end; ++at) {
+        const Local next = down_[*at];
+        const bool stays = next < ends_here;
+        std::uint8_t& waiting = waiting_[stays ? next : count];
+        *end = next;
+        end += stays & (--waiting == 0) ? 1 : 0;
+    }
+    order_.resize(static_cast<std::size_t>(end - first));
 }
 
 }  // namespace rillclock
