@@ -14,6 +14,18 @@ void put_into(const ArrivalBins::Bin& bin, ArrivalBins::Bin& into, double storm_
     if (arrives_later(bin.last, into.last, storm_factor)) into.last = bin.last;
 }
 
+/// The first bin from `at` on that is not before a second: it mostly lies near, so steps begin small and double.
+template <class At>
+At seek(At at, At end, std::int64_t second) {
+    std::ptrdiff_t step = 1;
+    while (step <= end - at && (at + step - 1)->second < second) {
+        at += step;
+        step *= 2;
+    }
+    const At last = at + std::min(step - 1, end - at);
+    return std::lower_bound(at, last, second, [](const ArrivalBins::Bin& bin, std::int64_t s) { return bin.second < s; });
+}
+
 }  // namespace
 
 bool arrives_later(const Head& a, const Head& b, double storm_factor) {
@@ -44,7 +56,7 @@ void ArrivalBins::add_in_order(std::span<const Bin> bins, double storm_factor) {
     auto at = bins_.begin();
     for (const Bin& bin : bins) {
         area_ += bin.area;
-        at = std::lower_bound(at, bins_.end(), bin, is_earlier);
+        at = seek(at, bins_.end(), bin.second);
         if (at != bins_.end() && at->second == bin.second) put_into(bin, *at, storm_factor);
         else fresh.push_back(bin);
     }

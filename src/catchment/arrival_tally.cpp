@@ -1,11 +1,11 @@
 #include "rillclock/catchment/arrival_tally.hpp"
 
 #include <algorithm>
-#include <iterator>
-#include <optional>
 #include <unordered_map>
 #include <utility>
 #include <vector>
+
+#include "land_row.hpp"
 
 namespace rillclock {
 namespace {
@@ -24,105 +24,120 @@ bool touches_edge(const Raster<FlowCode>& codes, const Window& window) {
     return false;
 }
 
-/// What the ground of a cell is, for formulas that take a catchment as one lump.
-struct GroundOfCell {
-    std::uint8_t cover = 0;
-    CellSoil soil = CellSoil::unknown;
-    std::optional<std::uint8_t> rain_zone = {};
-    double slope = 0.0;
-    double elevation_m = 0.0;
+/// What one tile holds of a subarea.
+struct TilePart {
+    std::uint32_t owner = 0;
+    Arrivals arrivals;
+    std::vector<ArrivalBins::Bin> bins;   ///< in any order, some seconds more than once
 };
 
-GroundOfCell ground_of_cell(const TiledGround& in, const TileDesk& desk, Local local) {
-    const Cell cell = desk.flow.cell(local);
-    return {.cover = in.surface.index[cell],
-            .soil = in.surface.soil_at(cell),
-            .rain_zone = in.rain_zones == nullptr ? std::nullopt : std::optional((*in.rain_zones)[cell]),
-            .slope = land_slope(in.elevations, in.metres_per_elevation_unit, in.ground, cell),
-            .elevation_m = desk.elevation[local] * in.metres_per_elevation_unit};
-}
-
-/// Bins of the subareas that meet in one tile. A bin stays in a slot of a table until another takes its place, so that a cell costs one look:
-/// cells of one subarea and second mostly lie together. What leaves the table in parts becomes one bin again in `ArrivalBins`.
-class TileBins {
+/// The parts of the subareas that meet in one tile. Cells of a subarea lie together: it is looked up only where it changes. A bin stays
+/// in a slot of a table until another takes its place, so that a cell costs one look: cells of one subarea and second mostly lie together.
+/// What leaves the table in parts becomes one bin again in `ArrivalBins`.
+class TileParts {
 public:
-    explicit TileBins(double storm_factor) : storm_factor_(storm_factor), slots_(slot_count) {}
+    explicit TileParts(double storm_factor) : storm_factor_(storm_factor), slots_(slot_count) {}
 
-    void add(std::uint32_t owner, const Head& head, FixedArea area) {
+    [[nodiscard]] Arrivals& arrivals(std::uint32_t owner) {
+        if (owner != owner_) turn_to(owner);
+        return *arrivals_;
+    }
+    /// Of the subarea that was asked for last.
+    void add_to_bins(const Head& head, FixedArea area) {
         const std::int64_t second = ArrivalBins::second_of(head.time, storm_factor_);
-        Slot& slot = slots_[(static_cast<std::size_t>(second) + std::size_t{owner} * spread) % slot_count];
-        if (slot.owner != owner || slot.bin.second != second) {
-            if (slot.owner != 0) done_.push_back(slot);
-            slot = {owner, {second, area, head}};
+        Slot& slot = slots_[(static_cast<std::size_t>(second) + std::size_t{part_} * spread) % slot_count];
+        if (slot.part != part_ || slot.bin.second != second) {
+            clear(slot);
+            slot.put(part_, second, area, head);
             return;
         }
         slot.bin.area += area;
-        if (arrives_later(head, slot.bin.last, storm_factor_)) slot.bin.last = head;
+        if (arrives_later(head, slot.bin.last, storm_factor_)) slot.put(head);
     }
-
-    /// Hands over the bins, each subarea's in one go: `take(owner, bins)`.
-    template <class Take>
-    void hand_over(Take take) {
-        std::copy_if(slots_.begin(), slots_.end(), std::back_inserter(done_), [](const Slot& slot) { return slot.owner != 0; });
-        std::sort(done_.begin(), done_.end(), [](const Slot& a, const Slot& b) { return a.owner < b.owner; });
-        for (auto first = done_.begin(); first != done_.end();) {
-            const auto last = std::find_if(first, done_.end(), [&](const Slot& slot) { return slot.owner != first->owner; });
-            std::vector<ArrivalBins::Bin> bins;
-            std::transform(first, last, std::back_inserter(bins), [](const Slot& slot) { return slot.bin; });
-            take(first->owner, std::move(bins));
-            first = last;
-        }
+    /// All that was found, by the owners' first cells in the tile.
+    [[nodiscard]] std::vector<TilePart> take() {
+        for (const Slot& slot : slots_) clear(slot);
+        for (TilePart& part : parts_) part.arrivals.bins.add(std::move(part.bins), storm_factor_);
+        return std::move(parts_);
     }
 
 private:
     struct Slot {
-        std::uint32_t owner = 0;   ///< 0 where the slot is free
         ArrivalBins::Bin bin;
+        std::uint32_t part = no_part;   ///< whose bin it is; none where the slot is free
+
+        void put(std::uint32_t new_part, std::int64_t second, FixedArea area, const Head& head) {
+            part = new_part;
+            bin.second = second;
+            bin.area = area;
+            put(head);
+        }
+        void put(const Head& head) {
+            bin.last.cell = head.cell;
+            bin.last.time.fixed = head.time.fixed;
+            bin.last.time.storm = head.time.storm;
+        }
     };
+    static constexpr std::uint32_t no_part = UINT32_MAX;
     static constexpr std::size_t slot_count = 4096;
+    static constexpr std::size_t usual_bins = 1024;
     static constexpr std::size_t spread = 1031;   // seconds of neighbouring subareas are much alike
 
-    double storm_factor_;
-    std::vector<Slot> slots_;
-    std::vector<Slot> done_;
-};
-
-/// Arrivals of the subareas that meet in one tile. Cells of a subarea lie together: it is looked up only where it changes.
-class TileTally {
-public:
-    TileTally(double storm_factor, Storms storms) : storm_factor_(storm_factor), storms_(storms), bins_(storm_factor) {}
-
-    void add(std::uint32_t owner, const ArrivingCell& cell, const GroundOfCell& ground) {
-        if (owner != owner_ || arrivals_ == nullptr) {
-            owner_ = owner;
-            arrivals_ = &by_owner_[owner];
+    void turn_to(std::uint32_t owner) {
+        owner_ = owner;
+        const auto [place, is_new] = part_of_.try_emplace(owner, static_cast<std::uint32_t>(parts_.size()));
+        if (is_new) {
+            parts_.push_back({.owner = owner, .arrivals = {}, .bins = {}});
+            parts_.back().bins.reserve(usual_bins);
         }
-        arrivals_->add_unbinned(cell);
-        arrivals_->ground.add(ground.cover, ground.soil, cell.area, ground.slope, ground.elevation_m);
-        if (ground.rain_zone) arrivals_->ground.add_to_zone(*ground.rain_zone, cell.area);
-        if (storms_ == Storms::by_point) return arrivals_->storm_bins.add(cell.head, cell.area, storm_factor_);
-        bins_.add(owner, cell.head, cell.area);
+        part_ = place->second;
+        arrivals_ = &parts_[part_].arrivals;
+    }
+    void clear(const Slot& slot) {
+        if (slot.part != no_part) parts_[slot.part].bins.push_back(slot.bin);
     }
 
-    /// To be called once, after the last cell.
-    void finish() {
-        bins_.hand_over([&](std::uint32_t owner, std::vector<ArrivalBins::Bin>&& bins) {
-            by_owner_[owner].bins.add(std::move(bins), storm_factor_);
-        });
-    }
-
-    void hand_over(std::vector<Arrivals>& subareas) {
-        for (auto& [owner, arrivals] : by_owner_) subareas[owner - 1].add(std::move(arrivals), storm_factor_);
-    }
-
-private:
     double storm_factor_;
-    Storms storms_;
     std::uint32_t owner_ = 0;
+    std::uint32_t part_ = 0;
     Arrivals* arrivals_ = nullptr;
-    std::unordered_map<std::uint32_t, Arrivals> by_owner_;
-    TileBins bins_;
+    std::unordered_map<std::uint32_t, std::uint32_t> part_of_;
+    std::vector<TilePart> parts_;
+    TileValues<Slot> slots_;
 };
+
+/// What the cells of a tile are added by.
+struct TallyRules {
+    double storm_factor = 1.0;
+    Storms storms = Storms::one;
+};
+
+/// Adds the cells of the tile on the desk, row by row.
+template <class Z>
+void add_cells(const TiledGround& in, const TallyRules& rules, const Raster<Z>& elevations, const TileDesk& desk, TileParts& parts) {
+    const Window& window = desk.flow.window();
+    const bool at_edge = touches_edge(in.forest.codes(), window);
+    Local local = 0;
+    for (std::int64_t row = window.row; row < window.row + window.rows; ++row) {
+        const LandRow land(elevations, in.metres_per_elevation_unit, in.ground, row);
+        const FixedArea area = in.ground.cell_area(row);
+        Cell cell = desk.flow.cell(local);
+        for (std::int64_t column = window.column; column < window.column + window.columns; ++column, ++local, ++cell) {
+            if (desk.owner[local] == 0) continue;
+            Arrivals& arrivals = parts.arrivals(desk.owner[local]);
+            // A copy of the head would wait until what it is made of has been written.
+            const ArrivingCell arriving{.head = {cell, {desk.fixed[local], desk.storm[local]}}, .area = area,
+                                        .flow_distance = desk.flow_distance[local],
+                                        .is_border = at_edge && is_beside_edge(in.forest.codes(), cell)};
+            arrivals.add_unbinned(arriving);
+            arrivals.ground.add(in.surface.index[cell], in.surface.soil_at(cell), area, land.slope(column),
+                                desk.elevation[local] * in.metres_per_elevation_unit);
+            if (in.rain_zones != nullptr) arrivals.ground.add_to_zone((*in.rain_zones)[cell], area);
+            if (rules.storms == Storms::by_point) arrivals.storm_bins.add(arriving.head, area, rules.storm_factor);
+            else parts.add_to_bins(arriving.head, area);
+        }
+    }
+}
 
 }  // namespace
 
@@ -136,21 +151,13 @@ bool is_beside_edge(const Raster<FlowCode>& codes, Cell cell) {
 }
 
 void ArrivalTally::add(const TileDesk& desk) {
-    const TiledGround& ground = travel_.ground();
-    const bool at_edge = touches_edge(ground.forest.codes(), desk.flow.window());
-    TileTally tally(storm_factor_, storms_);
-    for (Local local = 0; local < desk.flow.size(); ++local) {
-        if (desk.owner[local] == 0) continue;
-        const Cell cell = desk.flow.cell(local);
-        tally.add(desk.owner[local], {.head = {cell, desk.time_to_root(local)},
-                                      .area = ground.ground.cell_area(desk.flow.row(local)),
-                                      .flow_distance = desk.flow_distance[local],
-                                      .is_border = at_edge && is_beside_edge(ground.forest.codes(), cell)},
-                  ground_of_cell(ground, desk, local));
-    }
-    tally.finish();
+    TileParts parts(storm_factor_);
+    travel_.ground().elevations.visit([&](const auto& elevations) {
+        add_cells(travel_.ground(), {storm_factor_, storms_}, elevations, desk, parts);
+    });
+    std::vector<TilePart> found = parts.take();
     const std::lock_guard lock(mutex_);
-    tally.hand_over(subareas_);
+    for (TilePart& part : found) subareas_[part.owner - 1].add(std::move(part.arrivals), storm_factor_);
 }
 
 }  // namespace rillclock

@@ -4,33 +4,12 @@
 #include <cmath>
 #include <functional>
 
-#include "rillclock/raster/direction.hpp"
+#include "land_row.hpp"
 
 namespace rillclock {
 namespace {
 
 constexpr double elevation_units_per_m = 1024.0;
-
-/// The ground towards one side of a cell.
-struct Side {
-    double rise = 0.0;  ///< elevation units
-    double run_m = 0.0;
-};
-
-template <class Z>
-Side side_of(const Raster<Z>& elevations, const Ground& ground, RowColumn at, Direction d) {
-    const RowColumn beside = neighbour(at, d);
-    if (beside.row < 0 || beside.column < 0 || beside.row >= elevations.rows() || beside.column >= elevations.columns())
-        return {};
-    const double rise = static_cast<double>(elevations(beside.row, beside.column)) - static_cast<double>(elevations(at.row, at.column));
-    if (std::isnan(rise)) return {};
-    return {rise, from_fixed(ground.length(at.row, d))};
-}
-
-double slope_across(const Side& a, const Side& b) {
-    const double run = a.run_m + b.run_m;
-    return run > 0 ? (a.rise - b.rise) / run : 0.0;
-}
 
 }  // namespace
 
@@ -65,12 +44,8 @@ double CatchmentGround::mean_elevation_m() const {
 }
 
 double land_slope(const ElevationStore& elevations, double metres_per_unit, const Ground& ground, Cell cell) {
-    const RowColumn at{cell / elevations.columns(), cell % elevations.columns()};
     return elevations.visit([&](const auto& z) {
-        const auto side = [&](Direction d) { return side_of(z, ground, at, d); };
-        const double east = slope_across(side(Direction::east), side(Direction::west));
-        const double south = slope_across(side(Direction::south), side(Direction::north));
-        return metres_per_unit * ground.step_weight() * std::sqrt(east * east + south * south);  // far from where a square overflows
+        return LandRow(z, metres_per_unit, ground, cell / elevations.columns()).slope(cell % elevations.columns());
     });
 }
 

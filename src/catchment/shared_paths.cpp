@@ -24,21 +24,39 @@ std::uint32_t SharedPaths::place_of(Cell cell) {
     if (is_new) {
         walked_.push_back(cell);
         below_.push_back(unknown);
+        run_of_.push_back(static_cast<std::uint32_t>(run_ends_.size()));
+        run_ends_.push_back(at->second);
     }
     return at->second;
 }
 
-/// Goes along what has been walked before as far as that leads.
+/// Goes on to the next cell down, where no path went before.
+std::uint32_t SharedPaths::step(const Raster<FlowCode>& codes, std::uint32_t at) {
+    const FlowCode code = codes[walked_[at]];
+    if (!is_direction(code)) throw bug("a flow path misses the point it was asked for");
+    const std::size_t before = walked_.size();
+    const std::uint32_t next = place_of(neighbour(walked_[at], static_cast<Direction>(code), codes.columns()));
+    below_[at] = next;
+    if (next == before && at + 1 == next) {   // the last run goes on
+        run_ends_.pop_back();
+        run_of_[next] = run_of_[at];
+        run_ends_.back() = next;
+    }
+    return next;
+}
+
+/// What has been walked before is not walked again: it is passed a run at a time.
 void SharedPaths::walk(const Raster<FlowCode>& codes, const PathEnds& path) {
     std::uint32_t at = place_of(path.head);
     while (walked_[at] != path.end) {
         if (below_[at] == unknown) {
-            const FlowCode code = codes[walked_[at]];
-            if (!is_direction(code)) throw bug("a flow path misses the point it was asked for");
-            const std::uint32_t next = place_of(neighbour(walked_[at], static_cast<Direction>(code), codes.columns()));
-            below_[at] = next;
+            at = step(codes, at);
+            continue;
         }
-        at = below_[at];
+        const std::uint32_t run = run_of_[at];
+        const auto end = place_.find(path.end);
+        if (end != place_.end() && run_of_[end->second] == run && end->second >= at) return;
+        at = at == run_ends_[run] ? below_[at] : run_ends_[run];
     }
 }
 

@@ -6,6 +6,7 @@
 #include <vector>
 
 #include "rillclock/catchment/flow_path.hpp"
+#include "rillclock/raster/large_memory.hpp"
 #include "rillclock/travel/tiled_travel.hpp"
 
 namespace rillclock {
@@ -36,14 +37,17 @@ public:
 
 private:
     void walk(const Raster<FlowCode>& codes, const PathEnds& path);
+    [[nodiscard]] std::uint32_t step(const Raster<FlowCode>& codes, std::uint32_t at);
     std::uint32_t place_of(Cell cell);
     void look_up(const TiledTravel& travel);
 
     std::unordered_map<Cell, std::uint32_t> place_;
     std::vector<Cell> walked_;
     std::vector<std::uint32_t> below_;        ///< place of the next cell down; `unknown` where no path goes on
-    PathCells cells_;
-    std::vector<PathPiece> first_pieces_;     ///< of the steps that paths take, with position 0
+    std::vector<std::uint32_t> run_of_;       ///< cells with places one after the other that drain one to the other make a run
+    std::vector<std::uint32_t> run_ends_;     ///< place of each run's last cell
+    std::vector<PathCell, LargeMemory<PathCell>> cells_;
+    std::vector<PathPiece, LargeMemory<PathPiece>> first_pieces_;     ///< of the steps that paths take, with position 0
     std::unordered_map<std::uint32_t, PathPiece> second_pieces_;   ///< where sheet flow ends within the step
 };
 

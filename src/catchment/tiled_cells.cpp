@@ -77,31 +77,13 @@ std::unordered_map<Cell, PathCell> path_cells_at(const TiledTravel& travel, std:
     return found;
 }
 
-std::vector<PointNumber> next_points(const TiledForest& forest, const TiledOwners& owners, std::span<const DesignPoint> points,
+std::vector<PointNumber> next_points(const Raster<FlowCode>& codes, const TiledOwners& owners, std::span<const DesignPoint> points,
                                      const Executor& executor) {
-    const Raster<FlowCode>& codes = forest.codes();
-    const auto below = [&](Cell cell) {
-        if (!is_direction(codes[cell])) return no_cell;
-        const auto d = static_cast<Direction>(codes[cell]);
-        return neighbour(cell, d, codes.columns());
-    };
-    std::vector<Cell> cells;
-    for (const DesignPoint& point : points) {
-        if (below(point.cell) != no_cell) cells.push_back(below(point.cell));
-    }
-    Workspaces<TileDesk> desks;
-    const auto owner = look_up<PointNumber>(
-        forest, executor, desks, std::move(cells),
-        [&](Tile tile, TileDesk& desk, const std::vector<Cell>&) {
-            desk.flow.read(codes, forest.tiles().window(tile));
-            owners.read_tile(tile, desk);
-        },
-        [](const TileDesk& desk, Local local, Cell) { return std::optional<PointNumber>(desk.owner[local]); });
-    std::vector<PointNumber> next;
-    for (const DesignPoint& point : points) {
-        const auto found = owner.find(below(point.cell));
-        next.push_back(found == owner.end() ? 0 : found->second);
-    }
+    std::vector<PointNumber> next(points.size(), 0);
+    executor.for_each(points.size(), [&](std::size_t i) {
+        const FlowCode code = codes[points[i].cell];
+        if (is_direction(code)) next[i] = owners.owner_of(neighbour(points[i].cell, static_cast<Direction>(code), codes.columns()));
+    });
     return next;
 }
 

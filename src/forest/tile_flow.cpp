@@ -1,5 +1,6 @@
 #include "rillclock/forest/tile_flow.hpp"
 
+#include <algorithm>
 #include <array>
 
 namespace rillclock {
@@ -31,29 +32,48 @@ void TileFlow::read(const Raster<FlowCode>& codes, const Window& window) {
 bool TileFlow::holds(Cell cell) const { return is_inside(window_, {cell / raster_columns_, cell % raster_columns_}); }
 
 void TileFlow::read_steps(const Raster<FlowCode>& codes) {
-    std::array<std::int64_t, 8> offset{};
-    for (const Direction d : all_directions) offset[static_cast<std::size_t>(d)] = row_step(d) * window_.columns + column_step(d);
-    Local local = 0;
+    std::array<Local, 8> offset{};   // modulo 2³²
+    for (const Direction d : all_directions) {
+        offset[static_cast<std::size_t>(d)] = static_cast<Local>(row_step(d) * window_.columns + column_step(d));
+    }
+    const auto columns = static_cast<Local>(window_.columns);
+    const Local count = size();
     for (std::int64_t r = 0; r < window_.rows; ++r) {
         const FlowCode* row = codes.row(window_.row + r).data() + window_.column;
-        for (std::int64_t c = 0; c < window_.columns; ++c, ++local) {
-            const FlowCode code = row[c];
-            code_[local] = code;
-            if (!is_direction(code)) {
-                down_[local] = ends_here;
-                if (code == flow_void) waiting_[local] = never;
-                continue;
-            }
-            const bool inner = r > 0 && c > 0 && r + 1 < window_.rows && c + 1 < window_.columns;
-            const RowColumn at{window_.row + r, window_.column + c};
-            if (inner || is_inside(window_, neighbour(at, static_cast<Direction>(code)))) {
-                down_[local] = static_cast<Local>(local + offset[code]);
-                ++waiting_[down_[local]];
-            } else {
-                down_[local] = leaves_tile;
-                exits_.push_back(local);
-            }
+        const Local first = static_cast<Local>(r) * columns;
+        std::copy_n(row, columns, code_.begin() + first);
+        if (r == 0 || r + 1 == window_.rows || columns < 3) {
+            for (Local local = first; local < first + columns; ++local) read_rim_step(local);
+            continue;
         }
+        read_rim_step(first);
+        for (Local local = first + 1; local + 1 < first + columns; ++local) {   // without a step that the processor must guess, as in find_order
+            const FlowCode code = code_[local];
+            const bool flows = is_direction(code);
+            const Local to = local + offset[code % offset.size()];
+            down_[local] = flows ? to : ends_here;
+            ++waiting_[flows ? to : count];
+            if (code == flow_void) waiting_[local] = never;
+        }
+        read_rim_step(first + columns - 1);
+    }
+}
+
+/// The step of a cell at the rim of the tile, whose water may leave it.
+void TileFlow::read_rim_step(Local local) {
+    const FlowCode code = code_[local];
+    if (!is_direction(code)) {
+        down_[local] = ends_here;
+        if (code == flow_void) waiting_[local] = never;
+        return;
+    }
+    const RowColumn to = neighbour({row(local), window_.column + local % window_.columns}, static_cast<Direction>(code));
+    if (is_inside(window_, to)) {
+        down_[local] = static_cast<Local>((to.row - window_.row) * window_.columns + to.column - window_.column);
+        ++waiting_[down_[local]];
+    } else {
+        down_[local] = leaves_tile;
+        exits_.push_back(local);
     }
 }
 

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <array>
 #include <map>
+#include <numeric>
 #include <tuple>
 #include <unordered_map>
 
@@ -238,9 +239,23 @@ void RegionBorders::finish() {
     const std::vector<RegionLabel> nothing(above_.size(), no_region);
     add_horizontal(nothing);
     add_vertical(nothing);
-    std::sort(edges_.begin(), edges_.end(), [](const Edge& a, const Edge& b) {
-        return std::tuple(a.inside, key_of(a.from), heading(a.from, a.to)) < std::tuple(b.inside, key_of(b.from), heading(b.from, b.to));
-    });
+    sort_by_label();
+}
+
+/// Labels are small numbers as a rule, which are counted off; those of bands, which are not, are compared.
+void RegionBorders::sort_by_label() {
+    const auto greatest = std::max_element(edges_.begin(), edges_.end(), [](const Edge& a, const Edge& b) { return a.inside < b.inside; });
+    if (greatest == edges_.end()) return;
+    if (greatest->inside >= edges_.size()) {
+        std::ranges::stable_sort(edges_, {}, &Edge::inside);
+        return;
+    }
+    std::vector<std::size_t> first(greatest->inside + 2, 0);
+    for (const Edge& edge : edges_) ++first[edge.inside + 1];
+    std::partial_sum(first.begin(), first.end(), first.begin());
+    std::vector<Edge> sorted(edges_.size());
+    for (const Edge& edge : edges_) sorted[first[edge.inside]++] = edge;
+    edges_ = std::move(sorted);
 }
 
 std::vector<RegionLabel> RegionBorders::labels() const {

@@ -1,6 +1,7 @@
 #include "last_pass.hpp"
 
 #include <algorithm>
+#include <future>
 #include <numeric>
 
 #include "rillclock/catchment/arrival_tally.hpp"
@@ -146,10 +147,13 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass) {
     work_all_tiles(pass, "writing rasters", look,
                    [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
     rasters.close();
-    pass.regions->finish();
-    std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
-    add_storms(heads, times, intensities_of(pass.rain.storms));
-    return heads;
+    return stage(pass.progress, "arrivals at points", pass.terrain.grid.size(), [&] {
+        std::future<void> outlines = std::async(std::launch::async, [&] { pass.regions->finish(); });
+        std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
+        add_storms(heads, times, intensities_of(pass.rain.storms));
+        outlines.get();
+        return heads;
+    });
 }
 
 /// Gives `times` the times of all points.

@@ -185,6 +185,21 @@ struct CommonWork {
     ResultFolder& folder;
 };
 
+/// The points on their cells, and how they follow one another.
+struct PlacedTree {
+    PlacedPoints points;
+    TiledOwners owners;
+    PointTree tree;
+};
+
+PlacedTree place(const LaidOn& laid, const TiledTravel& travel, const TerrainData& terrain) {
+    PlacedPoints placed = settle_points(laid.stated, laid.resolved, travel, terrain);
+    const TiledForest& forest = travel.ground().forest;
+    TiledOwners owners(forest, labels_of(placed.points), travel.executor());
+    PointTree tree = point_tree(next_points(forest.codes(), owners, placed.points, travel.executor()));
+    return {.points = std::move(placed), .owners = std::move(owners), .tree = std::move(tree)};
+}
+
 StudyPeaks peaks_of(const PeakInputs& inputs, HistogramTally* histograms, std::int64_t cells, const Progress& progress) {
     if (histograms == nullptr) return no_peaks(inputs.study, inputs.rain);
     return stage(progress, "peaks", cells, [&] { return study_peaks(inputs, histograms->take()); });
@@ -211,10 +226,8 @@ WorkedOut work_out(Task& task, const LaidOn& laid, const CommonWork& common, con
     ChannelReaches reaches;  // by the design storm; times refer to them
     const auto travel = stage(progress, "travel times", cells, [&] { return std::make_unique<TiledTravel>(ground, laid.rules, common.executor); });
 
-    const PlacedPoints points = settle_points(laid.stated, laid.resolved, *travel, terrain);
+    const auto [points, owners, tree] = stage(progress, "placing points", cells, [&] { return place(laid, *travel, terrain); });
     const std::vector<PointNumber> traced = isochrone_catchments(study, names_of(points.points));
-    const TiledOwners owners(common.forest, labels_of(points.points), common.executor);
-    const PointTree tree = point_tree(next_points(common.forest, owners, points.points, common.executor));
     const HistogramRules binned = histogram_rules(study, surface.book, laid.rules.sheet.storm_factor);
     const auto histograms = gives_peaks(study, rain, surface.book)
                                 ? std::make_unique<HistogramTally>(*travel, points.points.size(), binned) : nullptr;
@@ -356,7 +369,7 @@ RunOutcome run(const Study& study, const RunOptions& options, const Progress& pr
     }
     folder.begin_part({});
     folder.write_text("report.html", worked.report.before + scenarios_section(beside) + worked.report.after);
-    folder.commit();
+    stage(progress, "keeping files", terrain.grid.size(), [&] { folder.commit(); });
     return std::move(worked.outcome);
 }
 

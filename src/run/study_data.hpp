@@ -4,6 +4,7 @@
 #include <optional>
 #include <string>
 #include <string_view>
+#include <type_traits>
 
 #include "rillclock/catchment/design_points.hpp"
 #include "rillclock/catchment/outlet.hpp"
@@ -114,10 +115,16 @@ void restate_own_times(StatedEdits& stated, const TiledTravel& travel, const std
 /// Tells the caller that a stage begins, does it, tells that it is over, and hands its result on.
 template <class Work>
 auto stage(const Progress& progress, std::string_view name, std::int64_t cells, Work work) {
+    const auto finish = [&] { progress.tell({.stage = name, .done = cells, .total = cells, .finished = true}); };
     progress.tell({.stage = name, .total = cells});
-    auto result = work();
-    progress.tell({.stage = name, .done = cells, .total = cells, .finished = true});
-    return result;
+    if constexpr (std::is_void_v<decltype(work())>) {
+        work();
+        finish();
+    } else {
+        auto result = work();
+        finish();
+        return result;
+    }
 }
 
 }  // namespace rillclock

@@ -239,6 +239,22 @@ TiledOwners::TiledOwners(const TiledForest& forest, std::vector<CellLabel> label
     owner_.solve<decltype(channel(std::declval<TileDesk&>()))>();
 }
 
+std::uint32_t TiledOwners::owner_of(Cell cell) const {
+    const Raster<FlowCode>& codes = forest_.codes();
+    const auto tile_of = [&](Cell at) { return forest_.tiles().tile_of({at / codes.columns(), at % codes.columns()}); };
+    const Tile tile = tile_of(cell);
+    const auto begin = labels_.begin() + static_cast<std::ptrdiff_t>(first_of_tile_[tile]);
+    const auto end = labels_.begin() + static_cast<std::ptrdiff_t>(first_of_tile_[tile + 1U]);
+    while (true) {
+        const auto label = std::lower_bound(begin, end, cell, [](const CellLabel& a, Cell at) { return a.cell < at; });
+        if (label != end && label->cell == cell) return label->number;
+        if (!is_direction(codes[cell])) return 0;
+        const Cell below = neighbour(cell, static_cast<Direction>(codes[cell]), codes.columns());
+        if (tile_of(below) != tile) return owner_.below(forest_.exit_of(cell));
+        cell = below;
+    }
+}
+
 void TiledOwners::put_labels(Tile tile, TileDesk& desk) const {
     desk.label.assign(desk.flow.size(), 0);
     for (std::size_t i = first_of_tile_[tile]; i < first_of_tile_[tile + 1U]; ++i) {

@@ -14,7 +14,9 @@ namespace rillclock {
 class Front {
 public:
     /// Adds a cell; those that it exceeds in both parts go.
-    void add(const Head& head);
+    void add(const Head& head) {
+        if (!is_exceeded(head)) take_in(head);
+    }
     /// Adds all cells of another front.
     void add(const Front& other);
     [[nodiscard]] const std::vector<Head>& heads() const { return heads_; }
@@ -22,6 +24,16 @@ public:
     [[nodiscard]] Head last_to_arrive(double storm_factor) const;
 
 private:
+    [[nodiscard]] static bool exceeds_in_both(const StepTime& a, const StepTime& b) { return a.fixed >= b.fixed && a.storm >= b.storm; }
+    /// Of equal times the smaller cell is kept.
+    [[nodiscard]] bool is_exceeded(const Head& head) const {
+        for (const Head& kept : heads_) {
+            if (exceeds_in_both(kept.time, head.time) && (kept.time != head.time || kept.cell <= head.cell)) return true;
+        }
+        return false;
+    }
+    void take_in(const Head& head);
+
     std::vector<Head> heads_;
 };
 
@@ -48,12 +60,22 @@ struct Arrivals {
     /// Adds a cell; the storm factor tells its bin where one storm times all points.
     void add(const ArrivingCell& cell, double storm_factor);
     /// All but the bins of a cell.
-    void add_unbinned(const ArrivingCell& cell);
+    void add_unbinned(const ArrivingCell& cell) {
+        area += cell.area;
+        border_cells += cell.is_border ? 1 : 0;
+        add_farthest(cell.head.cell, cell.flow_distance);
+        front.add(cell.head);
+    }
     /// Adds another set of cells, which it uses up.
     void add(Arrivals&& other, double storm_factor);
 
 private:
-    void add_farthest(Cell cell, FixedLength distance);
+    void add_farthest(Cell cell, FixedLength distance) {
+        const bool is_first = farthest == no_cell;
+        if (!is_first && (distance < farthest_distance || (distance == farthest_distance && cell > farthest))) return;
+        farthest = cell;
+        farthest_distance = distance;
+    }
 };
 
 }  // namespace rillclock

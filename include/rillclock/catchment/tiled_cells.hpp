@@ -25,7 +25,7 @@ namespace rillclock {
 [[nodiscard]] PathCell path_cell(const TiledTravel& travel, const TileDesk& desk, Local local, Cell cell);
 
 /// The next point below each point (by number − 1).
-[[nodiscard]] std::vector<PointNumber> next_points(const TiledForest& forest, const TiledOwners& owners,
+[[nodiscard]] std::vector<PointNumber> next_points(const Raster<FlowCode>& codes, const TiledOwners& owners,
                                                    std::span<const DesignPoint> points, const Executor& executor);
 
 }  // namespace rillclock

@@ -60,6 +60,7 @@ public:
 
 private:
     void read_steps(const Raster<FlowCode>& codes);
+    void read_rim_step(Local local);
     void read_entries(const Raster<FlowCode>& codes);
     void find_order();
 
@@ -67,7 +68,7 @@ private:
     std::int64_t raster_columns_ = 0;
     TileValues<Local> down_;
     TileValues<FlowCode> code_;
-    TileValues<std::uint8_t> waiting_;
+    TileValues<std::uint8_t> waiting_;   ///< tributaries not yet in the order; one place more, for steps that end or leave
     TileValues<Local> order_;
     std::vector<Local> exits_;
     std::vector<TileEntry> entries_;

@@ -36,6 +36,8 @@ public:
     [[nodiscard]] Exit exit_count() const { return static_cast<Exit>(next_.size()); }
     /// The first exit of a tile; its exits are numbered on from there, in the order of TileFlow::exits.
     [[nodiscard]] Exit first_exit(Tile tile) const { return first_exit_[tile]; }
+    /// The exit that a cell is, which must be one. Cost: logarithmic in the exits of its tile.
+    [[nodiscard]] Exit exit_of(Cell cell) const;
     /// The exit through which the water of an exit leaves the tile that it comes into; `no_exit` where it ends there.
     [[nodiscard]] Exit next(Exit exit) const { return next_[exit]; }
     /// All exits, each before its next.
@@ -50,7 +52,6 @@ private:
     void number_exits(const std::vector<Through>& tiles);
     void join_exits(const std::vector<Through>& tiles);
     void order_exits();
-    [[nodiscard]] Exit exit_of(Cell cell) const;
 
     const Raster<FlowCode>* codes_;
     TileGrid tiles_;

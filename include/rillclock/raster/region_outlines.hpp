@@ -74,12 +74,13 @@ private:
     void add_horizontal(std::span<const RegionLabel> labels);
     void add_vertical(std::span<const RegionLabel> labels);
     [[nodiscard]] Line smooth_ring(const CornerRing& ring) const;
+    void sort_by_label();
     void add_edge(RegionLabel left, RegionLabel right, Corner from, Corner to);
 
     std::uint32_t row_ = 0;
     std::vector<RegionLabel> above_;          ///< the row before
     std::vector<std::uint32_t> began_at_;     ///< by column line: the row at which its present pair of neighbours began
-    std::vector<Edge> edges_;
+    std::vector<Edge> edges_;                 ///< in the end by the label inside
     std::vector<std::uint64_t> meetings_;     ///< corners in which more than two borders meet, by row and column
 };
 

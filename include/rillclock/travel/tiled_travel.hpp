@@ -158,6 +158,8 @@ public:
 
     /// Labels and owners of a tile whose flow was read into the desk.
     void read_tile(Tile tile, TileDesk& desk) const;
+    /// The owner of one cell; 0 where no label lies on its way. Cost: its way through its tile.
+    [[nodiscard]] std::uint32_t owner_of(Cell cell) const;
 
 private:
     void put_labels(Tile tile, TileDesk& desk) const;
