@@ -7,14 +7,13 @@
 
 #include <algorithm>
 #include <atomic>
-#include <cmath>
 #include <exception>
-#include <fstream>
 #include <limits>
 #include <mutex>
-#include <string>
 #include <thread>
 #include <vector>
+
+#include "rillclock/tiles/processor_quota.hpp"
 
 namespace rillclock {
 namespace {
@@ -46,15 +45,6 @@ private:
     std::size_t item_ = std::numeric_limits<std::size_t>::max();
     std::exception_ptr what_;
 };
-
-/// Quota of the container in processors, by the second version of control groups; infinite where there is none.
-double container_quota() {
-    std::ifstream file("/sys/fs/cgroup/cpu.max");
-    std::string quota;
-    double period = 0.0;
-    if (!(file >> quota >> period) || quota == "max" || !(period > 0)) return std::numeric_limits<double>::infinity();
-    return std::stod(quota) / period;
-}
 
 unsigned allowed_processors() {
     cpu_set_t allowed;
@@ -103,10 +93,6 @@ void Executor::for_each(std::size_t count, const std::function<void(std::size_t)
     failure.throw_on();
 }
 
-unsigned usable_threads() {
-    const double quota = container_quota();
-    const unsigned processors = allowed_processors();
-    return quota < processors ? std::max(1U, static_cast<unsigned>(std::ceil(quota))) : processors;
-}
+unsigned usable_threads() { return threads_within(processor_quota(), allowed_processors()); }
 
 }  // namespace rillclock

@@ -4,7 +4,8 @@
 
 #include <fstream>
 #include <limits>
-#include <sstream>
+
+#include "control_groups.hpp"
 
 namespace rillclock {
 namespace {
@@ -35,35 +36,10 @@ double number_in(const fs::path& path) {
     return file >> bytes ? bytes : no_limit;
 }
 
-/// Where limits of memory stand in a hierarchy of control groups.
-struct Hierarchy {
-    fs::path top;
-    const char* file;
-};
-
-/// Takes the limits of a group and of all that it is part of. Within a container the group's own folder may be out of sight, and its
-/// limit stand at the top.
-void lower_by_groups(MemoryLimit& limit, const Hierarchy& hierarchy, const std::string& group) {
-    for (fs::path at = fs::path(group).relative_path(); !at.empty(); at = at.parent_path()) {
-        lower(limit, number_in(hierarchy.top / at / hierarchy.file), "the container");
-    }
-    lower(limit, number_in(hierarchy.top / hierarchy.file), "the container");
-}
-
-/// Lines of proc/self/cgroup: "0::/group" for the second version, "8:memory:/group" for the first.
 void lower_by_containers(MemoryLimit& limit, const fs::path& root) {
-    const fs::path groups = root / "sys/fs/cgroup";
-    std::ifstream file(root / "proc/self/cgroup");
-    for (std::string line; std::getline(file, line);) {
-        std::istringstream fields(line);
-        std::string number;
-        std::string controllers;
-        std::string group;
-        std::getline(fields, number, ':');
-        std::getline(fields, controllers, ':');
-        std::getline(fields, group);
-        if (controllers.empty()) lower_by_groups(limit, {groups, "memory.max"}, group);
-        if (controllers == "memory") lower_by_groups(limit, {groups / "memory", "memory.limit_in_bytes"}, group);
+    for (const ControlGroup& group : control_groups(root, "memory")) {
+        const char* file = group.version == ControlGroup::Version::second ? "memory.max" : "memory.limit_in_bytes";
+        lower(limit, number_in(group.folder / file), "the container");
     }
 }
 
