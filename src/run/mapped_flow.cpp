@@ -79,13 +79,39 @@ std::string counted(std::size_t count, const std::string& one, const std::string
     return std::to_string(count) + " " + (count == 1 ? one : many);
 }
 
-/// What a kind of edit came to.
-void tell(const char* kind, const std::string& verb, const EditCount& count, Notices& notices) {
-    if (count.used + count.unused == 0) return;
-    std::string text = std::string(kind) + ": " + counted(count.used, "shape", "shapes") + verb + counted(count.cells, "cell", "cells");
-    if (count.unused > 0) text += "; " + std::to_string(count.unused) + " had no effect, being off the data or within one cell";
-    if (count.turned > 0) text += "; " + std::to_string(count.turned) + " drawn against the ground were followed the other way";
-    notices.push_back({.code = "terrain-edited", .text = text, .value = static_cast<double>(count.cells)});
+/// What shapes of a kind do: one ("leads the flow through"), several, none; and why one may be nowhere.
+struct EditWords {
+    const char* kind;
+    const char* one;
+    const char* many;
+    const char* none;
+    const char* nowhere;
+};
+
+constexpr const char* no_step = "off the data or within one cell";
+
+/// What a kind of edit came to: "crossings: 2 shapes lead the flow through 9 cells; 1 has no effect, being off the data".
+std::string words_of_edit(const EditWords& words, const EditCount& count) {
+    const auto by_number = [](std::size_t number, const std::string& one, const std::string& many) {
+        return "; " + std::to_string(number) + " " + (number == 1 ? one : many);
+    };
+    std::string text = std::string(words.kind) + ": ";
+    if (count.used == 0) text += "no shape " + std::string(words.none);
+    else text += counted(count.used, "shape ", "shapes ") + (count.used == 1 ? words.one : words.many) + " " + counted(count.cells, "cell", "cells");
+    const std::string being = ", being " + std::string(words.nowhere);
+    if (count.unused > 0) text += by_number(count.unused, "has no effect" + being, "have no effect" + being);
+    if (count.covered > 0) {
+        text += by_number(count.covered, "has no effect, since other shapes have its cells already", "have no effect, since other shapes have their cells already");
+    }
+    if (count.turned > 0) {
+        text += by_number(count.turned, "was drawn against the ground and is followed the other way", "were drawn against the ground and are followed the other way");
+    }
+    return text;
+}
+
+void tell(const EditWords& words, const EditCount& count, Notices& notices) {
+    if (count.used + count.unused + count.covered == 0) return;
+    notices.push_back({.code = "terrain-edited", .text = words_of_edit(words, count), .value = static_cast<double>(count.cells)});
 }
 
 void tell_roots(const std::vector<Cell>& cells, const char* code, const std::string& text, const Grid& grid, Notices& notices) {
@@ -94,10 +120,10 @@ void tell_roots(const std::vector<Cell>& cells, const char* code, const std::str
 
 void tell_all(const TerrainEdits& edits, const EditedFlow& flow, double cut_m, TerrainData& terrain) {
     Notices& notices = terrain.notices;
-    tell("channels", " lead the flow through ", edits.channels, notices);
-    tell("crossings", " lead the flow through ", edits.crossings, notices);
-    tell("barriers", " stop the flow at ", edits.barriers, notices);
-    tell("kept water", " hold the water of ", edits.kept_waters, notices);
+    tell({"channels", "leads the flow through", "lead the flow through", "leads the flow", no_step}, edits.channels, notices);
+    tell({"crossings", "leads the flow through", "lead the flow through", "leads the flow", no_step}, edits.crossings, notices);
+    tell({"barriers", "stops the flow at", "stop the flow at", "stops the flow", "off the data"}, edits.barriers, notices);
+    tell({"kept water", "holds the water of", "hold the water of", "holds water", "off the data"}, edits.kept_waters, notices);
     if (cut_m > 0) {
         notices.push_back({.code = "bed-below-ground",
                            .text = "along channels and crossings the water runs up to " + significant(cut_m, 3) +

@@ -9,12 +9,13 @@ bool FlowLines::leads_to(Cell from, Cell to) const {
     return from == to;
 }
 
-void FlowLines::link(Cell from, Cell to, bool to_stop) {
+bool FlowLines::link(Cell from, Cell to, bool to_stop) {
     const auto known = next_.find(from);
-    if (known != next_.end() && known->second != no_cell) return;
-    if (leads_to(to, from)) return;
+    if (known != next_.end() && known->second != no_cell) return false;
+    if (leads_to(to, from)) return false;
     next_[from] = to;
     if (!to_stop) next_.try_emplace(to, no_cell);
+    return true;
 }
 
 std::vector<Cell> FlowLines::cells() const {

@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <cstdint>
 #include <iterator>
 #include <unordered_map>
 #include <utility>
@@ -14,10 +15,39 @@ namespace {
 
 bool holds(const std::vector<Cell>& cells, Cell cell) { return std::binary_search(cells.begin(), cells.end(), cell); }
 
-void sort_once(std::vector<Cell>& cells) {
-    std::sort(cells.begin(), cells.end());
-    cells.erase(std::unique(cells.begin(), cells.end()), cells.end());
-}
+/// The cells that shapes of one kind claim: of several shapes the first has a cell.
+class Claims {
+public:
+    /// The next shape's cells, as far as no shape of another kind has them.
+    void add(const std::vector<Cell>& cells) {
+        for (const Cell cell : cells) claims_.emplace_back(cell, shapes_);
+        ++shapes_;
+    }
+
+    /// All cells, increasing. Counts shapes that have at least one as used, the others as covered.
+    [[nodiscard]] std::vector<Cell> settle(EditCount& count) {
+        std::sort(claims_.begin(), claims_.end());
+        const auto same_cell = [](const auto& a, const auto& b) { return a.first == b.first; };
+        claims_.erase(std::unique(claims_.begin(), claims_.end(), same_cell), claims_.end());
+        std::vector<bool> has_one(shapes_, false);
+        std::vector<Cell> cells;
+        cells.reserve(claims_.size());
+        for (const auto& [cell, shape] : claims_) {
+            has_one[shape] = true;
+            cells.push_back(cell);
+        }
+        const auto used = static_cast<std::size_t>(std::count(has_one.begin(), has_one.end(), true));
+        count.used += used;
+        count.covered += shapes_ - used;
+        count.cells = cells.size();
+        claims_ = {};
+        return cells;
+    }
+
+private:
+    std::vector<std::pair<Cell, std::uint32_t>> claims_;   ///< cell and shape
+    std::uint32_t shapes_ = 0;
+};
 
 class Placing {
 public:
@@ -27,13 +57,11 @@ public:
     TerrainEdits place(const EditShapes& shapes) {
         for (const Place& place : shapes.kept_places) keep(cells_at(place));
         for (const Polygon& area : shapes.kept_areas) keep(cells_within(area, grid_));
-        sort_once(edits_.kept);
-        edits_.kept_waters.cells = edits_.kept.size();
+        edits_.kept = kept_.settle(edits_.kept_waters);
         for (const Line& line : shapes.channels) lead(line, turn_from_, edits_.channels);
         for (const Line& line : shapes.crossings) lead(line, 0.0, edits_.crossings);
         for (const Line& line : shapes.barriers) wall(line);
-        sort_once(edits_.barrier);
-        edits_.barriers.cells = edits_.barrier.size();
+        edits_.barrier = walls_.settle(edits_.barriers);
         return std::move(edits_);
     }
 
@@ -43,12 +71,10 @@ private:
         return at ? std::vector<Cell>{grid_.cell(*at)} : std::vector<Cell>();
     }
 
-    static void count(EditCount& count, bool used) { ++(used ? count.used : count.unused); }
-
     void keep(std::vector<Cell> cells) {
         std::erase_if(cells, [&](Cell cell) { return std::isnan(z_[cell]); });
-        count(edits_.kept_waters, !cells.empty());
-        edits_.kept.insert(edits_.kept.end(), cells.begin(), cells.end());
+        if (cells.empty()) ++edits_.kept_waters.unused;
+        else kept_.add(cells);
     }
 
     /// The ways of a line between the voids that it crosses.
@@ -70,30 +96,35 @@ private:
         const bool turn = !ways.empty() && z_[ways.back().back()] - z_[ways.front().front()] > turn_from;
         if (turn) std::reverse(ways.begin(), ways.end());
         const std::size_t before = edits_.lines.size();
-        bool steps = false;
+        bool has_steps = false;
+        std::size_t led = 0;
         for (Way& way : ways) {
             if (turn) std::reverse(way.begin(), way.end());
             const Way followed = shortened(way, grid_.columns);
-            steps = steps || followed.size() > 1;
-            edits_.lines.add(followed, [&](Cell cell) { return holds(edits_.kept, cell); });
+            has_steps = has_steps || followed.size() > 1;
+            led += edits_.lines.add(followed, [&](Cell cell) { return holds(edits_.kept, cell); });
         }
-        count(total, steps);
-        total.turned += steps && turn ? 1U : 0U;
+        ++(!has_steps ? total.unused : led == 0 ? total.covered : total.used);
+        if (led > 0 && turn) ++total.turned;
         total.cells += edits_.lines.size() - before;
     }
 
     void wall(const Line& line) {
-        const std::size_t before = edits_.barrier.size();
-        for (const Way& way : ways_on_data(line)) {
-            std::copy_if(way.begin(), way.end(), std::back_inserter(edits_.barrier),
+        std::vector<Cell> cells;
+        const std::vector<Way> ways = ways_on_data(line);
+        for (const Way& way : ways) {
+            std::copy_if(way.begin(), way.end(), std::back_inserter(cells),
                          [&](Cell cell) { return !holds(edits_.kept, cell) && !edits_.lines.contains(cell); });
         }
-        count(edits_.barriers, edits_.barrier.size() > before);
+        if (ways.empty()) ++edits_.barriers.unused;
+        else walls_.add(cells);
     }
 
     const Grid& grid_;
     const ElevationStore& z_;
     double turn_from_;
+    Claims kept_;
+    Claims walls_;
     TerrainEdits edits_;
 };
 

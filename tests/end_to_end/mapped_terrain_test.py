@@ -107,6 +107,20 @@ class MappedTerrain(CommandTest):
         self.assertEqual(azimuth[3, 40], NOWHERE)
         self.assertTrue(np.all(azimuth[20:22, 19:21] == NOWHERE))
 
+    def test_what_became_of_each_shape_is_told_by_number_and_reason(self):
+        self.shapes("brooks.gpkg", self.line((20, 10), (20, 20)), self.line((5, 5), (5, 5)))
+        self.shapes("culverts.gpkg", self.line((20, 12), (20, 16)))
+        self.shapes("walls.gpkg", self.line((20, 13), (20, 15)), self.line((30, 10), (30, 12)), "LINESTRING(1 1,2 2)", "LINESTRING(3 1,4 2)")
+        self.shapes("ponds.gpkg", "POINT(%f %f)" % at(3, 40))
+        self.study('channels = "brooks.gpkg"\ncrossings = "culverts.gpkg"\nbarriers = "walls.gpkg"\nkeep_water = "ponds.gpkg"')
+        self.run_study()
+        told = [row["text"] for row in table(self.folder / "result/tables/review.csv") if row["notice"] == "terrain-edited"]
+        self.assertEqual(told, [
+            "channels: 1 shape leads the flow through 11 cells; 1 has no effect, being off the data or within one cell",
+            "crossings: no shape leads the flow; 1 has no effect, since other shapes have its cells already",
+            "barriers: 1 shape stops the flow at 3 cells; 2 have no effect, being off the data; 1 has no effect, since other shapes have its cells already",
+            "kept water: 1 shape holds the water of 1 cell"])
+
     def features(self, name):
         return json.loads((self.folder / "result" / name).read_text(encoding="utf-8"))["features"]
 

@@ -25,12 +25,15 @@ namespace rillclock {
 class FlowLines {
 public:
     /// Adds the way of a line downstream, each cell a neighbour of the one before. A way of one cell has no step and adds nothing.
-    /// `is_stop(cell)`: whether water stays in the cell. Cost: linear but for looking along a line at each place where another joins it.
+    /// `is_stop(cell)`: whether water stays in the cell. Returns how many cells were given their next one by it: none where other lines
+    /// and stops have them all. Cost: linear but for looking along a line at each place where another joins it.
     template <class IsStop>
-    void add(std::span<const Cell> way, IsStop is_stop) {
+    std::size_t add(std::span<const Cell> way, IsStop is_stop) {
+        std::size_t led = 0;
         for (std::size_t i = 1; i < way.size(); ++i) {
-            if (!is_stop(way[i - 1])) link(way[i - 1], way[i], is_stop(way[i]));
+            if (!is_stop(way[i - 1]) && link(way[i - 1], way[i], is_stop(way[i]))) ++led;
         }
+        return led;
     }
 
     /// Whether a line passes the cell.
@@ -44,7 +47,7 @@ public:
     [[nodiscard]] std::unordered_map<Cell, Cell> ends() const;
 
 private:
-    void link(Cell from, Cell to, bool to_stop);
+    bool link(Cell from, Cell to, bool to_stop);
     [[nodiscard]] bool leads_to(Cell from, Cell to) const;
 
     std::unordered_map<Cell, Cell> next_;

@@ -21,14 +21,15 @@ struct EditShapes {
 
 /// What one kind of mapped shape came to on the grid.
 struct EditCount {
-    std::size_t used = 0;      ///< shapes that claim at least one cell
-    std::size_t unused = 0;    ///< shapes that claim none: off the data, or lines within one cell
+    std::size_t used = 0;      ///< shapes that change something
+    std::size_t unused = 0;    ///< shapes that are off the data, or channels and crossings within one cell
+    std::size_t covered = 0;   ///< shapes on the data that change nothing, since shapes that count before them have their cells
     std::size_t turned = 0;    ///< channels drawn against the ground, and followed the other way
     std::size_t cells = 0;     ///< cells claimed
 };
 
 /// Edits in grid space. Where shapes of several kinds claim a cell, kept water counts before lines and lines before barriers: a line
-/// through a barrier is a gate in it.
+/// through a barrier is a gate in it. Of shapes of one kind the first in the file counts first.
 ///
 /// Lines claim `shortened` ways, within the data: at a void or the edge of the grid a way ends, and begins anew beyond. Barriers
 /// claim `cells_crossed`, so that no diagonal step passes between two of their cells.

@@ -124,6 +124,29 @@ TEST_CASE("shapes that claim nothing are counted") {
     CHECK(edited.edits.kept_waters.unused == 1);
 }
 
+TEST_CASE("shapes whose cells others have already are counted apart from those off the data") {
+    const Edited edited("99999\n54321\n99999",
+                        {.channels = {line({{0, 1}, {3, 1}}), line({{1, 1}, {2, 1}}), line({{4, 1}, {4, 2}})},
+                         .crossings = {line({{2, 1}, {0, 1}}), line({{8, 1}, {9, 1}})},
+                         .barriers = {line({{0, 1}, {2, 1}}), line({{0, 0}, {4, 0}}), line({{1, 0}, {3, 0}}), line({{9, 9}, {9, 7}})},
+                         .kept_places = {{4, -1}, {4, -1}, {4, -2}}, .kept_areas = {}});
+    const auto counts = [](const EditCount& count) { return std::vector<std::size_t>{count.used, count.covered, count.unused, count.cells}; };
+    CHECK(counts(edited.edits.kept_waters) == std::vector<std::size_t>{2, 1, 0, 2});
+    CHECK(counts(edited.edits.channels) == std::vector<std::size_t>{1, 2, 0, 4});    // one on the first, one in kept water
+    CHECK(counts(edited.edits.crossings) == std::vector<std::size_t>{0, 1, 1, 0});   // against the first channel, which came first
+    CHECK(counts(edited.edits.barriers) == std::vector<std::size_t>{1, 2, 1, 5});
+    CHECK(edited.edits.barrier == std::vector<Cell>{0, 1, 2, 3, 4});
+}
+
+TEST_CASE("a line that only leads on from the end of another is used, though it claims no cell") {
+    const Edited edited("99999\n54321\n99999",
+                        {.channels = {line({{0, 1}, {1, 1}}), line({{2, 1}, {4, 1}}), line({{1, 1}, {2, 1}})},
+                         .crossings = {}, .barriers = {}, .kept_places = {}, .kept_areas = {}});
+    CHECK(edited.edits.channels.used == 3);
+    CHECK(edited.edits.channels.cells == 5);
+    CHECK(edited.arrows().substr(6, 5) == "6666o");
+}
+
 TEST_CASE("of lines that meet, cross or lie on one another, the first in the file keeps its cells") {
     FlowLines lines;
     const auto never = [](Cell) { return false; };
