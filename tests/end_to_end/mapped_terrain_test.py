@@ -116,10 +116,10 @@ class MappedTerrain(CommandTest):
         self.run_study()
         told = [row["text"] for row in table(self.folder / "result/tables/review.csv") if row["notice"] == "terrain-edited"]
         self.assertEqual(told, [
-            "channels: 1 shape leads the flow through 11 cells; 1 has no effect, being off the data or within one cell",
-            "crossings: no shape leads the flow; 1 has no effect, since other shapes have its cells already",
-            "barriers: 1 shape stops the flow at 3 cells; 2 have no effect, being off the data; 1 has no effect, since other shapes have its cells already",
-            "kept water: 1 shape holds the water of 1 cell"])
+            "Channels: 1 shape leads the flow through 11 cells; 1 has no effect, being off the data or within one cell.",
+            "Crossings: no shape leads the flow; 1 has no effect, since other shapes have its cells already.",
+            "Barriers: 1 shape stops the flow at 3 cells; 2 have no effect, being off the data; 1 has no effect, since other shapes have its cells already.",
+            "Kept water: 1 shape holds the water of 1 cell."])
 
     def features(self, name):
         return json.loads((self.folder / "result" / name).read_text(encoding="utf-8"))["features"]
