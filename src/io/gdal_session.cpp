@@ -36,8 +36,9 @@ struct MessageLog {
 };
 
 using Setting = std::pair<const char*, const char*>;
-constexpr std::array<Setting, 2> settings = {
-    {{"GDAL_VRT_ENABLE_PYTHON", "NO"}, {"CPL_VSIL_CURL_ALLOWED_FILENAME", "/nonexistent"}}};
+constexpr std::array<Setting, 3> settings = {{{"GDAL_VRT_ENABLE_PYTHON", "NO"},
+                                              {"CPL_VSIL_CURL_ALLOWED_FILENAME", "/nonexistent"},
+                                              {"GML_DOWNLOAD_WFS_SCHEMA", "NO"}}};
 
 /// What all sessions of the process share.
 struct Shared {

@@ -11,10 +11,13 @@ namespace rillclock {
 
 namespace fs = std::filesystem;
 
+bool is_address(const std::string& text) {
+    return text.find("://") != std::string::npos || text.starts_with("/vsi") || text.find('<') != std::string::npos;
+}
+
 void check_local_file(const fs::path& path, const std::string& called) {
     std::error_code problem;
-    const std::string text = path.string();
-    if (text.find("://") != std::string::npos || text.starts_with("/vsi") || text.find('<') != std::string::npos)
+    if (is_address(path.string()))
         throw input_error("The " + called + " is an address and not a local file; download or unpack it first.");
     const fs::file_status status = fs::status(path, problem);
     if (status.type() == fs::file_type::not_found)

@@ -3,27 +3,19 @@
 #include <ogrsf_frmts.h>
 
 #include <algorithm>
-#include <array>
 #include <cmath>
 #include <map>
 #include <memory>
 #include <utility>
 
-#include "local_file.hpp"
 #include "layer_system.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/trimmed.hpp"
 #include "rillclock/io/gdal_session.hpp"
+#include "vector_file.hpp"
 
 namespace rillclock {
 namespace {
-
-constexpr std::array<const char*, 14> vector_drivers = {
-    "GPKG",   "GeoJSON", "GeoJSONSeq", "ESRI Shapefile", "FlatGeobuf", "CSV",    "KML",
-    "LIBKML", "GML",     "GPX",        "MapInfo File",   "DXF",        "SQLite", nullptr};
-constexpr std::array<const char*, 4> csv_columns = {"X_POSSIBLE_NAMES=x,easting,lon,longitude",
-                                                    "Y_POSSIBLE_NAMES=y,northing,lat,latitude", "AUTODETECT_TYPE=YES",
-                                                    nullptr};
 
 class PointReader {
 public:
@@ -32,9 +24,8 @@ public:
 
     PointFile read() {
         const GdalMark before = session_.mark();
-        check_local_file(path_, called());
-        open(before);
-        layer_ = layer_of(*dataset_, options_.layer, called(), "layer");
+        dataset_ = open_vectors({.path = path_, .called = called(), .wanted = "points"}, session_);
+        layer_ = layer_of(*dataset_, {.asked = options_.layer, .called = called(), .key = "layer", .path = path_});
         choose_field();
         Transformation to_target(system(), target_);
         while (const OGRFeatureUniquePtr feature{layer_->GetNextFeature()}) add(*feature, to_target);
@@ -46,17 +37,6 @@ public:
 
 private:
     [[nodiscard]] std::string called() const { return "point file " + path_.string(); }
-
-    void open(const GdalMark& before) {
-        const std::string path = std::filesystem::absolute(path_).string();
-        const bool is_csv = path_.extension() == ".csv" || path_.extension() == ".CSV";
-        dataset_.reset(GDALDataset::Open(path.c_str(), GDAL_OF_VECTOR | GDAL_OF_READONLY, vector_drivers.data(),
-                                         is_csv ? csv_columns.data() : nullptr));
-        if (dataset_ && dataset_->GetLayerCount() > 0) return;
-        const std::string reason = session_.failure_since(before);
-        throw input_error("The " + called() + " cannot be read as points; " + seeming_kind(path_) +
-                          (reason.empty() ? "." : " (" + reason + ")."));
-    }
 
     [[nodiscard]] std::string field_list() const {
         std::string list;

@@ -2,22 +2,17 @@
 
 #include <ogrsf_frmts.h>
 
-#include <array>
 #include <cmath>
 #include <memory>
 #include <utility>
 
-#include "local_file.hpp"
 #include "layer_system.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/io/gdal_session.hpp"
+#include "vector_file.hpp"
 
 namespace rillclock {
 namespace {
-
-constexpr std::array<const char*, 13> shape_drivers = {"GPKG", "GeoJSON", "GeoJSONSeq", "ESRI Shapefile", "FlatGeobuf",
-                                                        "KML",  "LIBKML",  "GML",        "GPX",            "MapInfo File",
-                                                        "DXF",  "SQLite",  nullptr};
 
 /// The shapes of one feature, taken together or not at all.
 struct Taken {
@@ -34,8 +29,8 @@ public:
 
     ShapeFile read() {
         const GdalMark before = session_.mark();
-        check_local_file(path_, called_);
-        open(before);
+        dataset_ = open_vectors({.path = path_, .called = called_, .wanted = wanted()}, session_);
+        layer_ = layer_of(*dataset_, {.asked = wish_.layer, .called = called_, .key = wish_.layer_key, .path = path_});
         check_fields();
         choose_field();
         Transformation to_target(system(), target_);
@@ -46,17 +41,6 @@ public:
     }
 
 private:
-    void open(const GdalMark& before) {
-        const std::string path = std::filesystem::absolute(path_).string();
-        dataset_.reset(GDALDataset::Open(path.c_str(), GDAL_OF_VECTOR | GDAL_OF_READONLY, shape_drivers.data()));
-        if (!dataset_ || dataset_->GetLayerCount() == 0) {
-            const std::string reason = session_.failure_since(before);
-            throw input_error("The " + called_ + " cannot be read as " + wanted() + "; " + seeming_kind(path_) +
-                              (reason.empty() ? "." : " (" + reason + ")."));
-        }
-        layer_ = layer_of(*dataset_, wish_.layer, called_, wish_.layer_key);
-    }
-
     [[nodiscard]] std::string wanted() const {
         if (wish_.kinds == ShapeKinds::lines) return "lines";
         return wish_.kinds == ShapeKinds::polygons ? "polygons" : "points and polygons";

@@ -2,11 +2,13 @@
 
 #include <openssl/evp.h>
 
+#include <algorithm>
 #include <array>
 #include <fstream>
 #include <iterator>
 #include <memory>
 #include <string_view>
+#include <utility>
 #include <vector>
 
 #include "rillclock/core/error.hpp"
@@ -64,26 +66,65 @@ std::string read_text(const std::filesystem::path& path) {
     return text;
 }
 
+namespace {
+
+/// SHA-256 of what is added.
+class Checksum {
+public:
+    explicit Checksum(std::filesystem::path of) : of_(std::move(of)) { demand(context_ && EVP_DigestInit_ex(context_.get(), EVP_sha256(), nullptr) == 1); }
+
+    void add(std::string_view bytes) { demand(EVP_DigestUpdate(context_.get(), bytes.data(), bytes.size()) == 1); }
+
+    void add_file() {
+        std::ifstream file = opened(of_);
+        std::vector<char> buffer(1U << 20U);
+        while (file) {
+            file.read(buffer.data(), static_cast<std::streamsize>(buffer.size()));
+            add({buffer.data(), static_cast<std::size_t>(file.gcount())});
+        }
+        demand(!file.bad());
+    }
+
+    /// 64 hexadecimal digits. Nothing can be added afterwards.
+    [[nodiscard]] std::string text() {
+        std::array<unsigned char, EVP_MAX_MD_SIZE> digest{};
+        unsigned int length = 0;
+        demand(EVP_DigestFinal_ex(context_.get(), digest.data(), &length) == 1);
+        std::string text;
+        for (unsigned int i = 0; i < length; ++i) {
+            constexpr std::string_view digits = "0123456789abcdef";
+            text.push_back(digits[digest[i] >> 4U]);
+            text.push_back(digits[digest[i] & 15U]);
+        }
+        return text;
+    }
+
+private:
+    void demand(bool works) const {
+        if (!works) throw machine_error("The checksum of " + of_.string() + " cannot be made.");
+    }
+
+    std::filesystem::path of_;
+    std::unique_ptr<EVP_MD_CTX, decltype(&EVP_MD_CTX_free)> context_{EVP_MD_CTX_new(), &EVP_MD_CTX_free};
+};
+
+}  // namespace
+
 std::string file_checksum(const std::filesystem::path& path) {
-    std::ifstream file = opened(path);
-    const std::unique_ptr<EVP_MD_CTX, decltype(&EVP_MD_CTX_free)> context(EVP_MD_CTX_new(), &EVP_MD_CTX_free);
-    bool works = context && EVP_DigestInit_ex(context.get(), EVP_sha256(), nullptr) == 1;
-    std::vector<char> buffer(1U << 20U);
-    while (works && file) {
-        file.read(buffer.data(), static_cast<std::streamsize>(buffer.size()));
-        works = EVP_DigestUpdate(context.get(), buffer.data(), static_cast<std::size_t>(file.gcount())) == 1;
+    Checksum checksum(path);
+    checksum.add_file();
+    return checksum.text();
+}
+
+std::string folder_checksum(const std::filesystem::path& path) {
+    std::vector<std::filesystem::path> files;
+    for (const auto& entry : std::filesystem::recursive_directory_iterator(path)) {
+        if (entry.is_regular_file()) files.push_back(entry.path());
     }
-    std::array<unsigned char, EVP_MAX_MD_SIZE> digest{};
-    unsigned int length = 0;
-    if (!works || file.bad() || EVP_DigestFinal_ex(context.get(), digest.data(), &length) != 1)
-        throw machine_error("The checksum of " + path.string() + " cannot be made.");
-    std::string text;
-    for (unsigned int i = 0; i < length; ++i) {
-        constexpr std::string_view digits = "0123456789abcdef";
-        text.push_back(digits[digest[i] >> 4U]);
-        text.push_back(digits[digest[i] & 15U]);
-    }
-    return text;
+    std::sort(files.begin(), files.end());
+    Checksum checksum(path);
+    for (const auto& file : files) checksum.add(file_checksum(file) + "  " + file.lexically_relative(path).generic_string() + "\n");
+    return checksum.text();
 }
 
 }  // namespace rillclock

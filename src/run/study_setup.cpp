@@ -178,9 +178,7 @@ std::vector<InputFile> input_files(const Study& study, const StudyRain& rain, st
     std::vector<InputFile> files;
     const auto add = [&](const char* role, const std::string& name) {
         const std::string path = located(study, name);
-        // What is no plain file (an archive's member, a sub-dataset) has no checksum of its own.
-        const bool plain = std::filesystem::is_regular_file(path);
-        if (!known.contains(path)) known[path] = plain ? file_checksum(path) : std::string();
+        if (!known.contains(path)) known[path] = std::filesystem::is_directory(path) ? folder_checksum(path) : file_checksum(path);
         files.push_back({role, name, known[path]});
     };
     add("elevation", study.terrain.elevation);

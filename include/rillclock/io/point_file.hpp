@@ -32,8 +32,8 @@ struct PointFile {
     Notices notices;                 ///< features left out, one notice each
 };
 
-/// Reads points of any vector format and reference system. A point without a name is called "point N", N being its
-/// number in the file.
+/// Reads points of any vector format that lies on the disk, as `read_shapes` does, and any reference system. A point
+/// without a name is called "point N", N being its number in the file.
 ///
 /// Features that are no single point, are empty, are not finite or have no image in `target` are left out with a
 /// notice. Throws Error (inputs) where the file, layer or a field is not there, no feature is left, the reference system

@@ -43,7 +43,8 @@ struct ShapeWish {
     std::span<const std::string_view> usual_text_fields = {};
 };
 
-/// Reads the lines, or the points and polygons, of any vector format and reference system. Curves are made of short straight lines,
+/// Reads the lines, or the points and polygons, of any vector format that lies on the disk (a file, a folder that is one data set, a
+/// zip archive that holds one) and any reference system. Nothing is fetched that a file names elsewhere. Curves are made of short straight lines,
 /// heights and measures are dropped.
 ///
 /// Features of another type, without a shape, with corners that are not finite or that have no image in `target` are left out, one

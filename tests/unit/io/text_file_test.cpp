@@ -35,3 +35,12 @@ TEST_CASE("the checksum is that of the standard's example") {
     CHECK(file_checksum(write_file(folder / "a", "abc")) ==
           "ba7816bf8f01cfea414140de5dae2223b00361a396177a9cb410ff61f20015ad");
 }
+
+TEST_CASE("the checksum of a folder is that of its files' checksums and names") {
+    const TemporaryFolder folder;
+    write_file(folder / "b", "");
+    fs::create_directory(folder / "a");
+    write_file(folder.path() / "a" / "c", "abc");
+    // printf 'ba7816bf…15ad  a/c\ne3b0c442…b855  b\n' | sha256sum
+    CHECK(folder_checksum(folder.path()) == "323441741909e394928dd8023cd399274de957fa59dfbdaec1715482480d6b6c");
+}

@@ -70,3 +70,12 @@ TEST_CASE_METHOD(VrtFolder, "a virtual raster that names itself is refused") {
 TEST_CASE_METHOD(VrtFolder, "a virtual raster that is broken XML is refused") {
     CHECK_THAT(refusal(vrt("<VRTDataset rasterXSize=\"2\"")), Contains("not well-formed"));
 }
+
+TEST_CASE_METHOD(VrtFolder, "names of parts count in capitals or not, as elements or attributes, as GDAL reads them") {
+    const std::string raw = "<VRTDataset rasterXSize=\"2\" rasterYSize=\"2\"><vrtrasterband dataType=\"Byte\" subclass=\"vrtrawrasterband\">"
+                            "<SourceFilename>/etc/passwd</SourceFilename></vrtrasterband></VRTDataset>";
+    CHECK_THAT(refusal(vrt(raw)), Contains("VRTRawRasterBand"));
+    CHECK_THAT(refusal(vrt(virtual_raster("", "<SimpleSource><sourcefilename>http://127.0.0.1/a.tif</sourcefilename></SimpleSource>"))),
+               Contains("only plain local files"));
+    CHECK_THAT(refusal(vrt(virtual_raster("", "<SimpleSource SourceFilename=\"http://127.0.0.1/a.tif\"/>"))), Contains("only plain local files"));
+}
