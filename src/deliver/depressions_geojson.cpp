@@ -4,6 +4,7 @@
 
 #include "feature_collection.hpp"
 #include "geographic_lines.hpp"
+#include "shown_depth.hpp"
 
 namespace rillclock {
 namespace {
@@ -14,7 +15,7 @@ Json properties(const StudyResult& result, const OutlinedDepression& outlined) {
     const Depression& depression = outlined.depression;
     const double metres_per_unit = result.format.metres_per_stored_unit();
     return {{"depression", outlined.number},
-            {"depth_m", rounded(depression.depth * metres_per_unit)},
+            {"depth_m", rounded(shown_depth(depression.depth * metres_per_unit))},
             {"area_m2", rounded(from_fixed_area(depression.area))},
             {"volume_m3", rounded(depression.volume * metres_per_unit)},
             {"on_governing_path", depression.on_path}};

@@ -1,6 +1,7 @@
 #include "rillclock/deliver/depressions_table.hpp"
 
 #include "rillclock/deliver/report_units.hpp"
+#include "shown_depth.hpp"
 #include "table_writer.hpp"
 
 namespace rillclock {
@@ -10,7 +11,7 @@ std::string depressions_table(const StudyResult& result, std::span<const Depress
     const double metres_per_unit = result.format.metres_per_stored_unit();
     const double one_length = scale.length(1.0);
     TableWriter<Depression> table;
-    table.column("depth_" + scale.length_unit(), [=](const Depression& d) { return five_digits(scale.length(d.depth * metres_per_unit)); })
+    table.column("depth_" + scale.length_unit(), [=](const Depression& d) { return five_digits(shown_depth(scale.length(d.depth * metres_per_unit))); })
         .column("area_" + scale.area_unit(), [=](const Depression& d) { return five_digits(scale.area(from_fixed_area(d.area))); })
         .column("volume_" + scale.length_unit() + "3",
                 [=](const Depression& d) { return five_digits(d.volume * metres_per_unit * one_length * one_length * one_length); })

@@ -144,6 +144,7 @@ class MappedTerrain(CommandTest):
         self.assertNotIn("departs-from-ground", self.notices())
 
     def test_depressions_are_outlined(self):
+        self.ground(values=dammed_valley(), kind=gdal.GDT_Float32)
         self.study()
         self.run_study()
         rows, features = table(self.folder / "result/tables/depressions.csv"), self.features("depressions.geojson")
@@ -158,6 +159,10 @@ class MappedTerrain(CommandTest):
         # Degrees are rounded to a centimetre; the area is that of whole cells of 4 m².
         self.assertAlmostEqual(shape.Area(), deepest["properties"]["area_m2"], delta=0.002 * shape.Area())
         self.assertEqual(deepest["properties"]["area_m2"], 4 * int(rows[0]["cells"]))
+        # Elevations of 32 bits are hundredths of a millimetre off; depths do not show it.
+        self.assertEqual([f["properties"]["depth_m"] for f in features], [round(f["properties"]["depth_m"], 3) for f in features])
+        self.assertEqual([row["depth_ft"] for row in rows], ["%g" % round(float(row["depth_ft"]), 3) for row in rows])
+        self.assertAlmostEqual(float(rows[0]["depth_ft"]) * 0.3048, deepest["properties"]["depth_m"], 3)
 
     def test_a_file_of_several_layers_needs_its_layer_named(self):
         file = ogr.GetDriverByName("GPKG").CreateDataSource(str(self.folder / "town.gpkg"))
