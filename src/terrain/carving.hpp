@@ -18,7 +18,7 @@ struct WayOut {
 /// tile the cells by which water enters it and leaves it again. `passes` are used up.
 ///
 /// Why tiles need no order: each cell belongs to one basin and is turned at most once; a way that goes on in another
-/// tile is a letter to that tile. Cost: one pass over the codes, and the cells turned, a few in a hundred.
+/// tile is a letter to that tile. Source: Cordonnier, Bovy & Braun 2019 (carving, after their minimum spanning tree), here along tiles. Cost: one pass over the codes, and the cells turned, a few in a hundred.
 template <class Z>
 [[nodiscard]] Mail<WayOut> carve(TiledTerrain<Z>& terrain, std::vector<TilePasses>& passes,
                                  const std::vector<std::vector<Leaving>>& leaving, const std::vector<char>& is_closed);

@@ -50,8 +50,8 @@ private:
 /// `desk.numbers`. Where not `level`, every direction in the tile falls.
 ///
 /// A pass between x and y is left out where the cell below x is lower than x and touches y, or the other way round:
-/// that cell and y are a lower pass between the same two basins. Cost: linear in the cells, in vector registers, and
-/// the pairs that are left.
+/// that cell and y are a lower pass between the same two basins. Source: Cordonnier, Bovy & Braun 2019 (the graph of basins and its
+/// passes); what is left out is ours. Cost: linear in the cells, in vector registers, and the pairs that are left.
 template <class Z>
 [[nodiscard]] std::vector<KeyedEdge<PassKey<Z>>> find_crossings(Desk<Z>& desk, bool level);
 

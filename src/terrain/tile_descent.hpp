@@ -26,7 +26,8 @@ template <class Z>
 /// neighbour.
 ///
 /// Promise: the codes of `steepest_descent`. Falls are compared in double precision whatever elevations are stored in.
-/// Cost: linear, in vector registers; voids and undecided cells are looked at again one by one.
+/// Source: O'Callaghan & Mark 1984 (steepest of eight directions; from memory). Cost: linear, in vector registers; voids and undecided
+/// cells are looked at again one by one.
 template <class Z>
 [[nodiscard]] bool descend_in_tile(const Patch<Z>& z, const Ground& ground, Patch<FlowCode>& codes);
 

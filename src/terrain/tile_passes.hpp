@@ -25,7 +25,8 @@ struct TilePasses {
 /// of the halo's cells in the order of `for_each_halo`, 0 where there is none. Where not `level`, every direction in
 /// the tile falls.
 ///
-/// Passes and their order are those of passes.hpp. Cost: linear in the cells; O(p log b) in the pairs of cells across
+/// Passes and their order are those of passes.hpp. Source: Cordonnier, Bovy & Braun 2019 (a minimum spanning tree over basins) and Barnes 2016
+/// (a tile hands on no more than its rim needs); that a tile's own forest is contracted is ours. Cost: linear in the cells; O(p log b) in the pairs of cells across
 /// borders of basins.
 template <class Z>
 [[nodiscard]] TilePasses find_tile_passes(Desk<Z>& desk, bool level, const TileBasins& basins,

@@ -12,13 +12,15 @@ namespace rillclock {
 ///
 /// Two exact fields one after the other in the same memory, distance to the exit and distance from higher ground. Of
 /// the first only its remainder by 4 is kept, in the code: neighbours on level ground differ by at most 1, so it tells
-/// which of them is nearer. Cost: the tiles with level ground, five times, and once more for each border that a way
+/// which of them is nearer. Source: Garbrecht & Martz 1997 (from memory) and Barnes, Lehman & Mulla 2014 (drainage over flats), as two
+/// fields asked in turn and not summed. Cost: the tiles with level ground, five times, and once more for each border that a way
 /// along level ground crosses.
 template <class Z>
 void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const Tile> level);
 
 /// Directs the closed flats towards their entries, and the entries themselves; `entries` by tile, `level` the tiles
-/// with closed flats. As `settle_closed_flats` in a whole raster.
+/// with closed flats. As `settle_closed_flats` in a whole raster. Source: the same, from the entry, so that a lake drains to its own way out.
+/// Cost: the tiles with closed flats, twice, and once more for each border that a way along level ground crosses.
 template <class Z>
 void settle_closed_flats(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Mail<WayOut>& entries);
 
