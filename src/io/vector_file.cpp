@@ -5,6 +5,7 @@
 
 #include <algorithm>
 #include <array>
+#include <cctype>
 #include <fstream>
 #include <memory>
 #include <string_view>
@@ -36,6 +37,10 @@ constexpr std::array drivers = {
 /// Drivers whose data set is a folder.
 constexpr std::array folder_drivers = {"OpenFileGDB", "AVCBin", "TIGER", "UK .NTF", "LVBAG", static_cast<const char*>(nullptr)};
 
+/// Drivers of what is looked for in archives. None of them reads a file that names others: what lies in an archive is not looked through before.
+constexpr std::array archive_drivers = {"ESRI Shapefile", "OpenFileGDB", "GPKG", "GeoJSON", "FlatGeobuf", "GML", "LIBKML", "KML", "MapInfo File", "GPX",
+                                        static_cast<const char*>(nullptr)};
+
 constexpr std::array csv_options = {"X_POSSIBLE_NAMES=x,easting,lon,longitude", "Y_POSSIBLE_NAMES=y,northing,lat,latitude",
                                     "GEOM_POSSIBLE_NAMES=wkt,geometry,geom", "AUTODETECT_TYPE=YES", static_cast<const char*>(nullptr)};
 constexpr std::array gml_options = {"DOWNLOAD_SCHEMA=NO", "WRITE_GFS=NO", static_cast<const char*>(nullptr)};
@@ -62,9 +67,11 @@ bool is_archive(const fs::path& path) {
 /// What of an archive is a data set, by its ending; a shapefile's other parts are not told.
 bool is_data_set(const std::string& member) {
     constexpr std::array<std::string_view, 10> endings = {".shp", ".gdb", ".gpkg", ".geojson", ".fgb", ".gml", ".kml", ".tab", ".mif", ".gpx"};
-    std::string ending = fs::path(member).extension().string();
+    const fs::path path(member);
+    std::string ending = path.extension().string();
     std::transform(ending.begin(), ending.end(), ending.begin(), [](unsigned char c) { return static_cast<char>(std::tolower(c)); });
-    return !member.starts_with("__MACOSX/") && std::find(endings.begin(), endings.end(), ending) != endings.end();
+    const bool leads_out = std::any_of(path.begin(), path.end(), [](const fs::path& part) { return part == ".."; });
+    return !leads_out && !member.starts_with("__MACOSX/") && std::find(endings.begin(), endings.end(), ending) != endings.end();
 }
 
 /// Members of an archive that are data sets, by name. A folder's name ends in a slash there.
@@ -109,7 +116,7 @@ private:
         const std::string archive = "/vsizip/{" + path_ + "}";
         const std::vector<std::string> found = data_sets_in(archive);
         if (found.empty()) refuse("it is a zip archive that holds no shapefile or other data set: unpack it and name the file that was meant");
-        if (found.size() == 1) return opened_vectors(archive + "/" + found.front(), drivers.data());
+        if (found.size() == 1) return opened_vectors(archive + "/" + found.front(), archive_drivers.data());
         const fs::path folder = fs::path(found.front()).parent_path();
         const bool are_shapefiles = std::all_of(found.begin(), found.end(), [&](const std::string& member) {
             return fs::path(member).parent_path() == folder && std::string_view(member).substr(member.size() - 4) == ".shp";

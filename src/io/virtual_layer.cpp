@@ -3,6 +3,8 @@
 #include <cpl_string.h>
 #include <gdal.h>
 
+#include <array>
+
 #include "rillclock/core/error.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "vector_file.hpp"
@@ -43,11 +45,21 @@ private:
             throw input_error("The virtual layer " + vrt.string() + " names the source " + source.string() +
                               ", which is not there; put it back, or let the layer name another.");
         if (is_virtual_layer(source)) return check(source);
-        // GDAL opens sources with any of its drivers: whichever takes the file must be one that holds its shapes itself.
-        const GDALDriverH driver = GDALIdentifyDriverEx(source.c_str(), GDAL_OF_VECTOR, nullptr, nullptr);
-        if (driver == nullptr || CSLFindString(local_vector_drivers(), GDALGetDriverShortName(driver)) < 0)
+        if (!holds_shapes(source))
             throw input_error("The source " + source.string() + " of the virtual layer " + vrt.string() +
                               " is no file that holds shapes itself; let the layer name such a one.");
+    }
+
+    /// GDAL opens sources with any of its drivers, one after the other: one that we read must take the file, and none of the others.
+    static bool holds_shapes(const fs::path& source) {
+        if (GDALIdentifyDriverEx(source.c_str(), GDAL_OF_VECTOR, local_vector_drivers(), nullptr) == nullptr) return false;
+        for (int i = 0; i < GDALGetDriverCount(); ++i) {
+            const char* const name = GDALGetDriverShortName(GDALGetDriver(i));
+            const std::array alone = {name, static_cast<const char*>(nullptr)};
+            if (CSLFindString(local_vector_drivers(), name) >= 0) continue;
+            if (GDALIdentifyDriverEx(source.c_str(), GDAL_OF_VECTOR, alone.data(), nullptr) != nullptr) return false;
+        }
+        return true;
     }
 
     VirtualChain chain_{"virtual layer", "let it name the files that hold the shapes"};

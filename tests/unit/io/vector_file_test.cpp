@@ -217,6 +217,8 @@ TEST_CASE("of an archive with several shapefiles the layer is named; what is no 
     check_brook(lines_of(both, "drains"), 1e-6);
     const fs::path mixed = zipped(zipped(folder / "mixed.zip", files_of(folder.path(), "brooks")), {write_brook(folder, {"GPKG", "town.gpkg"})});
     CHECK_THAT(sentence_of([&] { (void)lines_of(mixed); }), Contains("several data sets (brooks.shp, town.gpkg)"));
+    const fs::path disguised = zipped(folder / "disguised.zip", {write_file(folder / "town.gml", virtual_layers("brooks.shp"))});
+    CHECK_THAT(sentence_of([&] { (void)lines_of(disguised); }), Contains("cannot be read as lines"));
     const fs::path none = zipped(folder / "none.zip", {write_file(folder / "readme.txt", "nothing here")});
     CHECK_THAT(sentence_of([&] { (void)lines_of(none); }), Contains("holds no shapefile"));
 }
@@ -259,8 +261,14 @@ TEST_CASE("a virtual layer of local files is read") {
     write_brook(folder, {"GPKG", "brooks.gpkg"});
     check_brook(lines_of(write_file(folder / "a.vrt", virtual_layers("brooks.gpkg"))), 1e-6);
     check_brook(lines_of(write_file(folder / "b.vrt", virtual_layers("a.vrt"))), 1e-6);
-    write_brook(folder, {"OpenFileGDB", "brooks.gdb"});
-    check_brook(lines_of(write_file(folder / "c.vrt", virtual_layers("brooks.gdb"))), 1e-3);
+    for (const VectorFormat& format : line_formats()) {
+        // GDAL 3.6 loses the reference system of a MIF file behind a virtual layer.
+        if (format.is_geographic || format.file == "brooks.mif") continue;
+        INFO(format.driver << ": " << format.file);
+        write_brook(folder, format);
+        const std::string layer = format.driver == "GeoJSONSeq" ? "<SrcLayer>brooks</SrcLayer>" : "";
+        check_brook(lines_of(write_file(folder / "c.vrt", virtual_layers(format.file, layer))), std::max(format.within_m, 1e-3));
+    }
 }
 
 TEST_CASE("a virtual layer that reaches for anything else is refused before it is opened") {
@@ -281,4 +289,6 @@ TEST_CASE("a virtual layer that reaches for anything else is refused before it i
     write_file(folder / "service.xml", "<OGRWFSDataSource><URL>http://127.0.0.1/</URL></OGRWFSDataSource>");
     CHECK_THAT(said(virtual_layers("service.xml")), Contains("no file that holds shapes itself"));
     CHECK_THAT(said("<OGRVRTDataSource><OGRVRTLayer"), Contains("not well-formed"));
+    write_file(folder / "both.gml", "<x xmlns:gml=\"http://www.opengis.net/gml\"><OGRWFSDataSource><URL>http://127.0.0.1/</URL></OGRWFSDataSource></x>");
+    CHECK_THAT(said(virtual_layers("both.gml")), Contains("no file that holds shapes itself"));
 }
