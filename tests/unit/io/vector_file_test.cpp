@@ -208,7 +208,7 @@ TEST_CASE("a zipped shapefile is read where it lies, at the top of its archive o
     check_brook(lines_of(zipped(folder / "packed.zip", {write_brook(folder, {"GPKG", "brooks.gpkg"})})), 1e-6);
 }
 
-TEST_CASE("of an archive with several shapefiles the layer is named; what is no data set, or several, is told") {
+TEST_CASE("of an archive with several shapefiles the layer is named, and what is no data set or several is told") {
     const TemporaryFolder folder;
     write_brook(folder, {"ESRI Shapefile", "brooks.shp"});
     write_brook(folder, {"ESRI Shapefile", "drains.shp"});
