@@ -46,8 +46,8 @@ constexpr std::array csv_options = {"X_POSSIBLE_NAMES=x,easting,lon,longitude", 
 constexpr std::array gml_options = {"DOWNLOAD_SCHEMA=NO", "WRITE_GFS=NO", static_cast<const char*>(nullptr)};
 
 const char* const* options_for(const std::string& path, const char* const* allowed) {
-    const GDALDriverH driver = GDALIdentifyDriverEx(path.c_str(), GDAL_OF_VECTOR, allowed, nullptr);
-    const std::string_view name = driver != nullptr ? GDALGetDriverShortName(driver) : "";
+    GDALDriver* const driver = GDALDriver::FromHandle(GDALIdentifyDriverEx(path.c_str(), GDAL_OF_VECTOR, allowed, nullptr));
+    const std::string_view name = driver != nullptr ? driver->GetDescription() : "";
     if (name == "CSV") return csv_options.data();
     return name == "GML" ? gml_options.data() : nullptr;
 }

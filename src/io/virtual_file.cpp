@@ -28,7 +28,7 @@ bool is_called(const CPLXMLNode& node, const char* name) {
 fs::path source_named(const CPLXMLNode& node, const fs::path& file, const std::string& what, const std::string& as) {
     const std::string name = CPLGetXMLValue(&node, "", "");
     const bool is_relative = std::strtol(CPLGetXMLValue(&node, "relativeToVRT", "0"), nullptr, 10) != 0;   // as GDAL reads it
-    const fs::path source = is_relative ? file.parent_path() / name : fs::path(name);
+    fs::path source = is_relative ? file.parent_path() / name : fs::path(name);
     if (is_address(name) || is_address(source.string()))
         throw input_error("The " + what + " " + file.string() + " names \"" + name.substr(0, 120) + "\" as a " + as +
                           "; only plain local files are read: download or unpack it and build the " + what + " anew.");
