@@ -67,6 +67,8 @@ private:
         std::int64_t written = 0;      ///< rows of blocks
     };
 
+    // A level hands its rows on to the next coarser one: no deeper than there are levels.
+    // NOLINTBEGIN(misc-no-recursion)
     void write(int level, std::span<const S> rows) {
         Level& state = levels_[static_cast<std::size_t>(level)];
         writer_.write_blocks(level, state.written++, std::as_bytes(rows));
@@ -93,6 +95,7 @@ private:
         const std::int64_t filled = std::exchange(state.filled, 0);
         write(level, std::span<const S>(state.rows).first(static_cast<std::size_t>(filled) * columns));
     }
+    // NOLINTEND(misc-no-recursion)
 
     RasterWriter& writer_;
     OverviewKind kind_;

@@ -142,8 +142,8 @@ public:
 
     [[nodiscard]] const Grid& grid() const override { return target_; }
 
-    /// Windows whose own cells, or whose cover cells, are too many are halved until they are not.
-    void read(const Window& window, std::span<std::int32_t> values) override {
+    /// Windows whose own cells, or whose cover cells, are too many are halved until they are not: no deeper than the number of halvings.
+    void read(const Window& window, std::span<std::int32_t> values) override {   // NOLINT(misc-no-recursion)
         if (window.size() > largest_sampled && window.rows > 1) return read_halves(window, values);
         if (!places_.is_transformed()) return read_alongside(window, values);
         const std::vector<RowColumn> cells = cover_cells(window);
@@ -154,7 +154,7 @@ public:
 
 private:
     /// Where both grids run along the same axes: a cover row for each row and a cover column for each column say all.
-    void read_alongside(const Window& window, std::span<std::int32_t> values) {
+    void read_alongside(const Window& window, std::span<std::int32_t> values) {   // NOLINT(misc-no-recursion)
         const std::vector<std::int64_t> rows = cover_rows(window);
         const std::vector<std::int64_t> columns = cover_columns(window);
         read_needed(window, window_between(rows, columns), values, [&](const auto& class_at) {
@@ -168,7 +168,7 @@ private:
     /// Reads the cover cells that a window needs, and has `pick(class_at)` take from them what each of its cells has; where there are too many,
     /// parts of the window are read one by one instead.
     template <class Pick>
-    void read_needed(const Window& window, const Window& needed, std::span<std::int32_t> values, Pick pick) {
+    void read_needed(const Window& window, const Window& needed, std::span<std::int32_t> values, Pick pick) {   // NOLINT(misc-no-recursion)
         if (needed.size() > largest_read && window.rows > 1) return read_halves(window, values);
         if (needed.size() > largest_read && window.columns > 1) return read_sides(window, values);
         std::vector<double> cover(static_cast<std::size_t>(needed.size()));
@@ -201,7 +201,7 @@ private:
         return columns;
     }
 
-    void read_halves(const Window& window, std::span<std::int32_t> values) {
+    void read_halves(const Window& window, std::span<std::int32_t> values) {   // NOLINT(misc-no-recursion)
         Window upper = window;
         upper.rows = window.rows / 2;
         Window lower = window;
@@ -212,7 +212,7 @@ private:
     }
 
     /// One row only, so that its sides are contiguous too.
-    void read_sides(const Window& window, std::span<std::int32_t> values) {
+    void read_sides(const Window& window, std::span<std::int32_t> values) {   // NOLINT(misc-no-recursion)
         Window left = window;
         left.columns = window.columns / 2;
         Window right = window;

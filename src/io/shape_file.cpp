@@ -110,7 +110,8 @@ private:
         return numbers;
     }
 
-    void take(const OGRGeometry& geometry, Transformation& to_target, Taken& taken) const {
+    /// Collections may hold collections; GDAL itself reads them one within the other.
+    void take(const OGRGeometry& geometry, Transformation& to_target, Taken& taken) const {   // NOLINT(misc-no-recursion)
         const OGRwkbGeometryType type = wkbFlatten(geometry.getGeometryType());
         const bool lines = wish_.kinds == ShapeKinds::lines;
         if (OGR_GT_IsSubClassOf(type, wkbGeometryCollection)) {

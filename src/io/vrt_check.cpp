@@ -17,16 +17,17 @@ bool is_xml(const std::string& beginning) {
     return first != std::string::npos && beginning[first] == '<';
 }
 
+/// Goes down the elements of a virtual raster, and into virtual rasters among its tiles, 8 deep at most.
 class VirtualRasterCheck {
 public:
-    void check(const fs::path& path) {
+    void check(const fs::path& path) {   // NOLINT(misc-no-recursion)
         const XmlTree tree = chain_.enter(path);
         check_nodes(tree.get(), path);
         chain_.leave();
     }
 
 private:
-    void check_nodes(const CPLXMLNode* first, const fs::path& vrt) {
+    void check_nodes(const CPLXMLNode* first, const fs::path& vrt) {   // NOLINT(misc-no-recursion)
         for (const CPLXMLNode* node = first; node; node = node->psNext) {
             if (is_called(*node, "VRTRasterBand")) check_band(node, vrt);
             if (is_called(*node, "SourceFilename") || is_called(*node, "SourceDataset")) check_tile(*node, vrt);
@@ -47,7 +48,7 @@ private:
                               "gdal_translate.");
     }
 
-    void check_tile(const CPLXMLNode& node, const fs::path& vrt) {
+    void check_tile(const CPLXMLNode& node, const fs::path& vrt) {   // NOLINT(misc-no-recursion)
         const fs::path tile = source_named(node, vrt, "virtual raster", "tile");
         std::error_code ignored;
         if (!fs::is_regular_file(tile, ignored))
@@ -56,7 +57,7 @@ private:
         check_content(tile, vrt);
     }
 
-    void check_content(const fs::path& tile, const fs::path& vrt) {
+    void check_content(const fs::path& tile, const fs::path& vrt) {   // NOLINT(misc-no-recursion)
         if (is_virtual_raster(tile)) return check(tile);
         if (is_xml(beginning_of(tile)))
             throw input_error("The tile " + tile.string() + " of the virtual raster " + vrt.string() +

@@ -61,8 +61,8 @@ decltype(StudyValue::value) value_of(const py::handle& value, const std::string&
 
 using Use = std::function<void(const std::string& key, const StudyValue& value)>;
 
-/// Calls `use` with every key and its value, sections joined to the names.
-void walk(Study& study, const py::dict& settings, const std::string& section, const Use& use) {
+/// Calls `use` with every key and its value, sections joined to the names: as deep as sections lie in one another, since other names are refused.
+void walk(Study& study, const py::dict& settings, const std::string& section, const Use& use) {   // NOLINT(misc-no-recursion)
     for (const auto& [name, value] : settings) {
         const std::string key = section.empty() ? std::string(py::str(name)) : section + "." + std::string(py::str(name));
         const std::string subject = "the setting " + key;

@@ -12,15 +12,15 @@ namespace rillclock {
 namespace {
 
 /// Neighbouring cells of one row: the columns from `first` to before `end`.
-struct CellRun {
+struct OutlineRun {
     std::int64_t row = 0;
     std::int64_t first = 0;
     std::int64_t end = 0;
 };
 
-std::vector<CellRun> runs_of(std::vector<Cell> cells, const Grid& grid) {
+std::vector<OutlineRun> runs_of(std::vector<Cell> cells, const Grid& grid) {
     std::sort(cells.begin(), cells.end());
-    std::vector<CellRun> runs;
+    std::vector<OutlineRun> runs;
     for (const Cell cell : cells) {
         const RowColumn at = grid.row_column(cell);
         const bool goes_on = !runs.empty() && runs.back().row == at.row && runs.back().end == at.column;
@@ -37,8 +37,8 @@ public:
         std::iota(parent_.begin(), parent_.end(), std::size_t{0});
         // Runs of two rows are met side by side.
         for (std::size_t upper = 0, lower = 0; lower < runs_.size();) {
-            const CellRun& u = runs_[upper];
-            const CellRun& l = runs_[lower];
+            const OutlineRun& u = runs_[upper];
+            const OutlineRun& l = runs_[lower];
             const bool beside = u.row + 1 == l.row;
             if (beside && u.first < l.end && l.first < u.end) join(root(upper), root(lower));
             const bool upper_is_done = u.row + 1 < l.row || (beside && u.end <= l.end);
@@ -47,12 +47,12 @@ public:
         for (std::size_t run = 0; run < runs_.size(); ++run) parent_[run] = root(run);
     }
 
-    [[nodiscard]] const std::vector<CellRun>& runs() const { return runs_; }
+    [[nodiscard]] const std::vector<OutlineRun>& runs() const { return runs_; }
     [[nodiscard]] std::size_t part_of_run(std::size_t run) const { return parent_[run]; }
     /// The run that holds a cell; none where it is not of the set.
     [[nodiscard]] std::optional<std::size_t> run_at(std::int64_t row, std::int64_t column) const {
         const auto after = std::upper_bound(runs_.begin(), runs_.end(), std::pair(row, column),
-                                            [](const auto& at, const CellRun& run) { return at < std::pair(run.row, run.first); });
+                                            [](const auto& at, const OutlineRun& run) { return at < std::pair(run.row, run.first); });
         if (after == runs_.begin()) return std::nullopt;
         const auto run = std::prev(after);
         if (run->row != row || column >= run->end) return std::nullopt;
@@ -67,7 +67,7 @@ private:
         return run;
     }
 
-    std::vector<CellRun> runs_;
+    std::vector<OutlineRun> runs_;
     std::vector<std::size_t> parent_;
 };
 
@@ -101,7 +101,7 @@ public:
     std::map<std::size_t, std::vector<Ring>> rings() {
         std::map<std::size_t, std::vector<Ring>> rings;
         for (std::size_t run = 0; run < parts_.runs().size(); ++run) {
-            const CellRun& cells = parts_.runs()[run];
+            const OutlineRun& cells = parts_.runs()[run];
             // Every ring has an edge that goes south; it does so along the west of the first cell of a run.
             if (walked_[run]) continue;
             const std::size_t part = parts_.part_of_run(run);

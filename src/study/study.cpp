@@ -235,7 +235,8 @@ const ChannelSize* ChannelStudy::published_size() const {
     return region ? find_channel_size(*region) : &channel_sizes().front();
 }
 
-void check_study(const Study& study) {
+// Once more for each scenario, which has none of its own.
+void check_study(const Study& study) {   // NOLINT(misc-no-recursion)
     require_inputs(study);
     refuse_contradictory_soil(study);
     refuse_layers_without_file(study);

@@ -31,13 +31,13 @@ std::string joined(const std::string& section, std::string_view key) {
     return section.empty() ? std::string(key) : section + "." + std::string(key);
 }
 
-/// Walks the tables of a study file and sets what each value stands for.
+/// Walks the tables of a study file and sets what each value stands for. As deep as sections lie in one another; other names are refused.
 class StudyReader {
 public:
     /// `scenario`: where the values of a scenario are kept, in place of the study's own; null for those.
     StudyReader(Study& study, const std::string& file, ScenarioStudy* scenario = nullptr) : study_(study), file_(file), scenario_(scenario) {}
 
-    void read(const toml::table& table, const std::string& section) {
+    void read(const toml::table& table, const std::string& section) {   // NOLINT(misc-no-recursion)
         for (const auto& [name, node] : table) {
             const std::string key = joined(section, name.str());
             const std::string where = place(file_, name.source().begin) + (scenario_ == nullptr ? "" : ", scenario." + scenario_->name);
@@ -56,7 +56,7 @@ public:
     }
 
 private:
-    void read_section(const toml::node& node, const std::string& key, const std::string& where) {
+    void read_section(const toml::node& node, const std::string& key, const std::string& where) {   // NOLINT(misc-no-recursion)
         const toml::table* inner = node.as_table();
         if (inner == nullptr)
             throw input_error(where + ": " + key + " holds keys of its own; write them under [" + key + "] or as " +
@@ -76,7 +76,7 @@ private:
     }
 
     /// A table for each scenario, by its name.
-    void read_scenarios(const toml::node& node, const std::string& where) {
+    void read_scenarios(const toml::node& node, const std::string& where) {   // NOLINT(misc-no-recursion)
         const toml::table* scenarios = node.as_table();
         if (scenarios == nullptr)
             throw input_error(where + ": scenario holds scenarios by name; write what differs under one, such as [scenario.after]");

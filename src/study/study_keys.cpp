@@ -123,7 +123,7 @@ constexpr std::array keys{
     StudyKey{"timing.overrides", R"("overrides.csv")", "none",
              "table of what is stated of points in place of what is computed: time, way_time, sheet_length, n, c"},
     StudyKey{"timing.pipe_flow", R"("full bore")", "full bore",
-             "full bore or design flow: the velocity in pipes is that of pipes just full, or at the depth of the point's peak"},
+             "full bore or design flow: the velocity in pipes is that of pipes just full, or at the depth of the point's whole-area peak of timing.raster_return_period, for all return periods alike"},
     StudyKey{"peaks.least_time", R"("5 min")", "5 min", "no intensity is read below this duration; 0 min is off"},
     StudyKey{"peaks.coefficient", R"("book")", "book",
              "book, imperviousness (after Urbonas) or imperviousness, schueler: where runoff coefficients come from"},

@@ -149,7 +149,8 @@ class Check:
                 self.fault(path, number, f"{found[1]} is also the name of a type in {first[0]}; give one of them another name.")
 
     def hidden_names(self, folder):
-        """Sources of a folder may be compiled together (scripts/cmake/precompiled.cmake): what is hidden in one of them then meets that of the others."""
+        """Sources of a folder may be compiled together (scripts/cmake/precompiled.cmake): what is hidden in one of them then meets that of the others
+        and every header that one of them reads."""
         seen = {}
         for path in sorted(folder.glob("*.cpp")):
             for name, number, text in hidden_names(path.read_text(encoding="utf-8").splitlines()):
@@ -157,6 +158,9 @@ class Check:
                 if first_path != path and not (text == first_text and text.startswith(ALIAS)):
                     self.fault(path.relative_to(self.root), number,
                                f"{name} is also a name hidden in {first_path.name} beside it; give one of them another name, or share it in a header.")
+                header = self.types.get(name, (None,))[0]
+                if header is not None and header.parts[0] == "include" and not text.startswith(ALIAS):
+                    self.fault(path.relative_to(self.root), number, f"{name} is also the name of a type in {header}; give what is hidden here another.")
 
     def one_include(self, path, line, quoted, header):
         if header.startswith("rillclock/") and not quoted:

@@ -96,6 +96,11 @@ class CheckLayering(unittest.TestCase):
                          "tests/unit/raster/b_test.cpp:2: Way is also a name hidden in a_test.cpp beside it; "
                          "give one of them another name, or share it in a header.")
 
+    def test_what_a_source_hides_has_no_name_of_a_type_that_others_read_from_a_header(self):
+        self.assert_said({"include/rillclock/core/error.hpp": "#pragma once\nstruct Way {\n};\n",
+                          "tests/unit/io/a_test.cpp": "namespace {\nstruct Way {\n};\n}  // namespace\n"},
+                         "tests/unit/io/a_test.cpp:2: Way is also the name of a type in include/rillclock/core/error.hpp; give what is hidden here another.")
+
     def test_the_same_alias_what_stands_in_a_text_and_what_is_not_hidden_may_be_in_two_sources(self):
         self.assert_said({"src/raster/a.cpp": "namespace {\nusing Ring = int;\n}  // namespace\nint turned(int a) {\n}\n",
                           "src/raster/b.cpp": "namespace {\nusing Ring = int;\nint turned(Ring a) {\n}\n}  // namespace\n",

@@ -98,7 +98,7 @@ struct KnottedRain {
 };
 
 /// The greatest of A·i^-0.4 + B over some cells: a front.
-struct Front {
+struct RandomFront {
     std::vector<double> storm_part;
     std::vector<double> constant_part;
 
@@ -123,8 +123,8 @@ public:
         }
         return rain;
     }
-    Front front() {
-        Front front;
+    RandomFront front() {
+        RandomFront front;
         for (int k = 0; k < 5; ++k) {
             front.storm_part.push_back(20 * share_(random_));
             front.constant_part.push_back(3600 * share_(random_));
@@ -150,7 +150,7 @@ TEST_CASE("the settled time of 2000 random fronts and rains is the root between 
     RandomStorms random(20240607);
     for (int draw = 0; draw < 2000; ++draw) {
         const KnottedRain rain = random.rain();
-        const Front front = random.front();
+        const RandomFront front = random.front();
         const StormTime solution = solve_storm_time(front, rain);
         REQUIRE(solution.end == StormEnd::settled);
         // Within 0.4/0.6 of the tolerance of 0.1 s.
@@ -162,7 +162,7 @@ TEST_CASE("with a finer tolerance the settled time comes as near as one likes") 
     RandomStorms random(20240607);
     for (int draw = 0; draw < 200; ++draw) {
         const KnottedRain rain = random.rain();
-        const Front front = random.front();
+        const RandomFront front = random.front();
         const StormTime solution = solve_storm_time(front, rain, {.tolerance = seconds(1e-6)});
         REQUIRE(solution.end == StormEnd::settled);
         REQUIRE(std::fabs(solution.time().si() - bracketed_seconds(front, rain)) <= 1e-6);
@@ -176,7 +176,7 @@ TEST_CASE("a kink of the rain at the solution changes nothing") {
         const std::size_t knot = 1 + static_cast<std::size_t>(random.share() * 10);
         const double at_kink = std::exp(rain.log_seconds[knot]);
         const double factor = at_kink / kinematic_storm_factor(*rain(seconds(at_kink)));
-        const Front front{{factor}, {0.0}};
+        const RandomFront front{{factor}, {0.0}};
         const StormTime solution = solve_storm_time(front, rain, {.start = seconds(at_kink * (0.1 + random.share()))});
         REQUIRE(solution.end == StormEnd::settled);
         REQUIRE(std::fabs(solution.time().si() - at_kink) <= 0.067 + 1e-12 * at_kink);

@@ -10,7 +10,7 @@ using Catch::Matchers::Contains;
 
 namespace {
 
-struct Place {
+struct ResultPlace {
     TemporaryFolder folder;
     fs::path target = folder / "result";
 
@@ -26,7 +26,7 @@ struct Place {
 
 }  // namespace
 
-TEST_CASE_METHOD(Place, "a committed folder appears whole and nothing else stays") {
+TEST_CASE_METHOD(ResultPlace, "a committed folder appears whole and nothing else stays") {
     {
         ResultFolder result(target, Existing::refuse);
         result.write_text("result.json", "{}");
@@ -38,7 +38,7 @@ TEST_CASE_METHOD(Place, "a committed folder appears whole and nothing else stays
     CHECK(entries() == 1);
 }
 
-TEST_CASE_METHOD(Place, "a folder that is not committed leaves nothing") {
+TEST_CASE_METHOD(ResultPlace, "a folder that is not committed leaves nothing") {
     {
         ResultFolder result(target, Existing::refuse);
         result.write_text("result.json", "{}");
@@ -46,14 +46,14 @@ TEST_CASE_METHOD(Place, "a folder that is not committed leaves nothing") {
     CHECK(entries() == 0);
 }
 
-TEST_CASE_METHOD(Place, "an existing result is refused and untouched") {
+TEST_CASE_METHOD(ResultPlace, "an existing result is refused and untouched") {
     make("old");
     CHECK_THAT(sentence_of([&] { make("new"); }), Contains("exists already") && Contains("--replace"));
     CHECK(bytes_of(target / "result.json") == "old");
     CHECK(entries() == 1);
 }
 
-TEST_CASE_METHOD(Place, "an existing result is replaced on request, files and all") {
+TEST_CASE_METHOD(ResultPlace, "an existing result is replaced on request, files and all") {
     {
         ResultFolder result(target, Existing::refuse);
         result.write_text("result.json", "old");
@@ -66,7 +66,7 @@ TEST_CASE_METHOD(Place, "an existing result is replaced on request, files and al
     CHECK(entries() == 1);
 }
 
-TEST_CASE_METHOD(Place, "until it is replaced the old result stands") {
+TEST_CASE_METHOD(ResultPlace, "until it is replaced the old result stands") {
     make("old");
     {
         ResultFolder result(target, Existing::replace);
@@ -76,25 +76,25 @@ TEST_CASE_METHOD(Place, "until it is replaced the old result stands") {
     CHECK(bytes_of(target / "result.json") == "old");
 }
 
-TEST_CASE_METHOD(Place, "a folder that is no result is not replaced") {
+TEST_CASE_METHOD(ResultPlace, "a folder that is no result is not replaced") {
     fs::create_directory(target);
     write_file(target / "thesis.txt", "years of work");
     CHECK_THAT(sentence_of([&] { make("new", Existing::replace); }), Contains("not a result"));
     CHECK(bytes_of(target / "thesis.txt") == "years of work");
 }
 
-TEST_CASE_METHOD(Place, "a link at the target is refused") {
+TEST_CASE_METHOD(ResultPlace, "a link at the target is refused") {
     fs::create_directory(folder / "elsewhere");
     fs::create_symlink(folder / "elsewhere", target);
     CHECK_THAT(sentence_of([&] { make("new", Existing::replace); }), Contains("a file or a link"));
 }
 
-TEST_CASE_METHOD(Place, "a second run at once is refused and told the first one's process") {
+TEST_CASE_METHOD(ResultPlace, "a second run at once is refused and told the first one's process") {
     const ResultFolder first(target, Existing::refuse);
     CHECK_THAT(sentence_of([&] { make("second"); }), Contains("process " + std::to_string(getpid())));
 }
 
-TEST_CASE_METHOD(Place, "leavings of a run that died are cleared away") {
+TEST_CASE_METHOD(ResultPlace, "leavings of a run that died are cleared away") {
     fs::create_directory(folder / ".result.making-99999999");
     write_file(folder / ".result.making-99999999/part.tif", "x");
     write_file(folder / ".result.lock", "99999999");
@@ -102,7 +102,7 @@ TEST_CASE_METHOD(Place, "leavings of a run that died are cleared away") {
     CHECK(entries() == 1);
 }
 
-TEST_CASE_METHOD(Place, "a result that a dead run had set aside is put back") {
+TEST_CASE_METHOD(ResultPlace, "a result that a dead run had set aside is put back") {
     make("old");
     fs::rename(target, folder / ".result.aside");
     { const ResultFolder next(target, Existing::replace); }
@@ -110,17 +110,17 @@ TEST_CASE_METHOD(Place, "a result that a dead run had set aside is put back") {
     CHECK(entries() == 1);
 }
 
-TEST_CASE_METHOD(Place, "a missing parent folder is said") {
+TEST_CASE_METHOD(ResultPlace, "a missing parent folder is said") {
     target = folder / "none/result";
     CHECK_THAT(sentence_of([&] { make("new"); }), Contains("does not exist; make it first"));
 }
 
-TEST_CASE_METHOD(Place, "a place outside the folder is refused") {
+TEST_CASE_METHOD(ResultPlace, "a place outside the folder is refused") {
     ResultFolder result(target, Existing::refuse);
     CHECK_THAT(sentence_of([&] { (void)result.path("../x"); }, Fault::bug), Contains("no place within"));
 }
 
-TEST_CASE_METHOD(Place, "a file is not written twice") {
+TEST_CASE_METHOD(ResultPlace, "a file is not written twice") {
     ResultFolder result(target, Existing::refuse);
     result.write_text("a.csv", "1");
     CHECK_THAT(sentence_of([&] { result.write_text("a.csv", "2"); }, Fault::machine), Contains("a.csv"));
