@@ -1,4 +1,4 @@
-// The whole of a run, files and all, is the same bytes whatever the tiles, the threads and GDAL's cache.
+// The whole of a run, files and all, is the same bytes whatever the tiles, the threads and GDAL's cache; and its rasters are those of the plain way.
 
 #include <cpl_vsi.h>
 #include <gdal.h>
@@ -11,11 +11,13 @@
 #include <fstream>
 #include <limits>
 #include <map>
+#include <span>
 #include <sstream>
 #include <string>
 #include <vector>
 
 #include "bench/terrain_generator.hpp"
+#include "reference/plain_result.hpp"
 #include "rillclock/io/gdal_session.hpp"
 #include "rillclock/io/raster_output.hpp"
 #include "rillclock/run/demo.hpp"
@@ -41,6 +43,9 @@ constexpr std::int64_t whole = 1200;   // more than any side of the places below
 constexpr std::array manners = {Manner{64, 1, true},   Manner{100, 2, false}, Manner{256, 2, true}, Manner{1000, 2, true},
                                 Manner{whole, 2, true}, Manner{64, 2, false},  Manner{100, 1, true}, Manner{1000, 1, false},
                                 Manner{whole, 1, false}};
+
+/// For cases whose like runs in all of them.
+constexpr std::array few_manners = {Manner{64, 2, true}, Manner{100, 1, false}, Manner{whole, 2, false}};
 
 /// A folder that is removed with what is in it.
 class Folder {
@@ -89,16 +94,19 @@ std::string differing(const Bytes& expected, const Bytes& found) {
     return found.size() == expected.size() ? names : names + "and the list of files";
 }
 
-/// Runs a study in all manners; returns what it gives in the first, 256 by one thread.
-Bytes same_in_all(const fs::path& study_file) {
+/// Runs a study in some manners and holds the first, 256 by one thread, to the plain way; returns what it gives.
+Bytes same_in(std::span<const Manner> some, const fs::path& study_file) {
     const Study study = read_study_file(study_file.string());
     const Bytes expected = run_in_manner(study, {256, 1, false});
-    for (const Manner& manner : manners) {
+    CHECK(reference::difference_from_plain(study, located(study, study.output.folder)) == "");
+    for (const Manner& manner : some) {
         INFO("tiles of " << manner.tile_side << ", " << manner.threads << " threads, " << (manner.small_cache ? "2 MB" : "default") << " of cache");
         CHECK(differing(expected, run_in_manner(study, manner)) == "");
     }
     return expected;
 }
+
+Bytes same_in_all(const fs::path& study_file) { return same_in(manners, study_file); }
 
 /// An invented place: a terrain with what a test wants of it, and a study of it.
 struct Invented {
@@ -157,6 +165,26 @@ Raster<float> jacksboro() {
     Raster<float> z(rows, columns);
     for (std::size_t i = 0; i < values.size(); ++i) z[static_cast<Cell>(i)] = static_cast<float>(values[i]);
     return z;
+}
+
+/// The same as a place, in degrees.
+Invented jacksboro_place() {
+    return {.grid = {.rows = 344, .columns = 403, .left = -84.41375, .top = 36.73291667, .cell_width = 0.00083333, .cell_height = 0.00083333},
+            .system = 4326,
+            .real = jacksboro()};
+}
+
+/// Puts a value into a cell of a raster; returns what was there.
+double changed_cell(const fs::path& raster, int row, int column, double value) {
+    const GDALDatasetH file = GDALOpen(raster.c_str(), GA_Update);
+    REQUIRE(file != nullptr);
+    const GDALRasterBandH band = GDALGetRasterBand(file, 1);
+    double before = 0.0;
+    const CPLErr read = GDALRasterIO(band, GF_Read, column, row, 1, 1, &before, 1, 1, GDT_Float64, 0, 0);
+    const CPLErr written = GDALRasterIO(band, GF_Write, column, row, 1, 1, &value, 1, 1, GDT_Float64, 0, 0);
+    GDALClose(file);
+    REQUIRE((read == CE_None && written == CE_None));
+    return before;
 }
 
 /// GeoJSON in the grid's own system of features given as {name, geometry type, coordinates}.
@@ -244,9 +272,7 @@ TEST_CASE("whole results are the same bytes in degrees") {
 }
 
 TEST_CASE("whole results are the same bytes on real terrain") {
-    Invented place{.grid = {.rows = 344, .columns = 403, .left = -84.41375, .top = 36.73291667, .cell_width = 0.00083333, .cell_height = 0.00083333},
-                   .system = 4326,
-                   .real = jacksboro()};
+    Invented place = jacksboro_place();
     if (place.real.size() == 0) {
         WARN("not tried: the Debian package python-matplotlib-data is missing; scripts/run-tests installs it");
         return;
@@ -259,22 +285,89 @@ TEST_CASE("whole results are the same bytes on real terrain") {
     CHECK(result.at("tables/outlets.csv").find(",P1,") != std::string::npos);
 }
 
-TEST_CASE("whole results are the same bytes with channels, crossings, barriers and kept water") {
-    const Invented place{.kind = TerrainKind::quantised,
-                         .voids = true,
-                         .terrain = "channels = \"channels.geojson\"\ncrossings = \"crossings.geojson\"\nbarriers = \"barriers.geojson\"\n"
-                                    "keep_water = \"kept.geojson\"\n"};
-    const Folder folder;
+/// Writes shapes of all four kinds, laid over the place by shares of its sides, and the study that names them.
+void write_edited(Invented place, const Folder& folder) {
+    place.terrain = "channels = \"channels.geojson\"\ncrossings = \"crossings.geojson\"\nbarriers = \"barriers.geojson\"\n"
+                    "keep_water = \"kept.geojson\"\n";
     write_inputs(place, folder);
-    folder.write("channels.geojson", geojson(place, {{"a", "LineString", line(place, {{20, 30}, {90, 80}, {240, 300}})},
-                                                     {"b", "LineString", line(place, {{200, 20}, {180, 200}, {20, 310}})}}));
-    folder.write("crossings.geojson", geojson(place, {{"c", "LineString", line(place, {{60, 250}, {75, 262}})}}));
-    folder.write("barriers.geojson", geojson(place, {{"d", "LineString", line(place, {{10, 200}, {120, 210}, {240, 190}})}}));
-    const std::string ring = line(place, {{40, 40}, {40, 70}, {70, 70}, {70, 40}, {40, 40}});
-    folder.write("kept.geojson", geojson(place, {{"e", "Polygon", "[" + ring + "]"}, {"f", "Point", at(place, 220, 90)}}));
+    const auto cell = [&](std::int64_t row, std::int64_t column) {   // of a place of 260 x 330
+        return RowColumn{row * place.grid.rows / 260, column * place.grid.columns / 330};
+    };
+    const auto way = [&](std::vector<RowColumn> corners) {
+        for (RowColumn& corner : corners) corner = cell(corner.row, corner.column);
+        return line(place, corners);
+    };
+    folder.write("channels.geojson", geojson(place, {{"a", "LineString", way({{20, 30}, {90, 80}, {240, 300}})},
+                                                     {"b", "LineString", way({{200, 20}, {180, 200}, {20, 310}})}}));
+    folder.write("crossings.geojson", geojson(place, {{"c", "LineString", way({{60, 250}, {75, 262}})}}));
+    folder.write("barriers.geojson", geojson(place, {{"d", "LineString", way({{10, 200}, {120, 210}, {240, 190}})}}));
+    const std::string ring = way({{40, 40}, {40, 70}, {70, 70}, {70, 40}, {40, 40}});
+    const RowColumn pond = cell(220, 90);
+    folder.write("kept.geojson", geojson(place, {{"e", "Polygon", "[" + ring + "]"}, {"f", "Point", at(place, pond.row, pond.column)}}));
+}
+
+/// Each of the four kinds of edit is told of in a result.
+void check_edited(const Bytes& result) {
+    const std::string& review = result.at("tables/review.csv");
+    std::size_t kinds = 0;
+    for (std::size_t found = review.find("terrain-edited"); found != std::string::npos; found = review.find("terrain-edited", found + 1)) ++kinds;
+    CHECK(kinds == 4);
+}
+
+TEST_CASE("whole results are the same bytes with channels, crossings, barriers and kept water") {
+    const Folder folder;
+    write_edited({.kind = TerrainKind::quantised, .voids = true}, folder);
     const Bytes result = same_in_all(folder.path() / "study.toml");
-    CHECK(result.at("tables/review.csv").find("terrain-edited") != std::string::npos);
+    check_edited(result);
     CHECK(result.at("own_paths.geojson").find("LineString") != std::string::npos);
+}
+
+/// A study with all edits of a place, in few manners.
+void same_with_edits(const Invented& place) {
+    const Folder folder;
+    write_edited(place, folder);
+    check_edited(same_in(few_manners, folder.path() / "study.toml"));
+}
+
+constexpr Grid small = {.rows = 150, .columns = 190, .left = 450'000.0, .top = 5'400'000.0};
+
+TEST_CASE("with edits whole results are the same bytes on ground with noise") { same_with_edits({.grid = small}); }
+
+TEST_CASE("with edits whole results are the same bytes on ground in whole metres, mostly flat, with voids") {
+    same_with_edits({.kind = TerrainKind::integers, .grid = small, .voids = true});
+}
+
+TEST_CASE("with edits whole results are the same bytes on rectangular cells") {
+    Grid grid = small;
+    grid.cell_width = 2.0;
+    grid.cell_height = 3.0;
+    same_with_edits({.kind = TerrainKind::quantised, .grid = grid});
+}
+
+TEST_CASE("with edits whole results are the same bytes in degrees") {
+    const double step = 1.0 / 10'800.0;   // a third of a second
+    same_with_edits({.kind = TerrainKind::quantised,
+                     .grid = {.rows = 150, .columns = 190, .left = 11.0, .top = 61.0, .cell_width = step, .cell_height = step},
+                     .system = 4326});
+}
+
+TEST_CASE("with edits whole results are the same bytes on real terrain") {
+    const Invented place = jacksboro_place();
+    if (place.real.size() == 0) return;   // said in the case without edits
+    same_with_edits(place);
+}
+
+TEST_CASE("a raster that differs from the plain way in one cell is found, with its place") {
+    const Folder folder;
+    write_inputs({.grid = {.rows = 40, .columns = 50, .left = 450'000.0, .top = 5'400'000.0}}, folder);
+    const Study study = read_study_file((folder.path() / "study.toml").string());
+    const fs::path result = run(study, {}).folder;
+    REQUIRE(reference::difference_from_plain(study, result) == "");
+    for (const char* name : {"flow_azimuth", "spill_elevation", "contributing_area", "catchment", "regime", "travel_time"}) {
+        const double before = changed_cell(result / "rasters" / (std::string(name) + ".tif"), 17, 23, 3.0);
+        CHECK(reference::difference_from_plain(study, result).starts_with(std::string(name) + " at row 17, column 23: result 3.0"));
+        (void)changed_cell(result / "rasters" / (std::string(name) + ".tif"), 17, 23, before);
+    }
 }
 
 TEST_CASE("whole results are the same bytes for the demo") {

@@ -67,6 +67,49 @@ TEST_CASE("a new inner point changes no time, last or lead of the points below b
     }
 }
 
+/// The network of outlets, all cells of one subarea being later by some time.
+DrainageNetwork delayed_network(const std::vector<Outlet>& outlets, PointNumber late, FixedTime by) {
+    std::vector<NetworkPoint> points;
+    for (const Outlet& outlet : outlets) {
+        NetworkPoint point{.next = outlet.next, .to_root = outlet.time_to_root, .own = {}, .stated_way = {}};
+        const StepTime delay{.fixed = outlet.number == late ? by : 0};
+        for (const Head& head : outlet.own_front.heads()) point.own.add({.cell = head.cell, .time = head.time + delay});
+        points.push_back(std::move(point));
+    }
+    return DrainageNetwork(std::move(points));
+}
+
+TEST_CASE("on random ground an own time that grows by its slack and a second arrives last, and less a second does not") {
+    constexpr FixedTime second = to_fixed(1);
+    std::size_t held = 0;
+    std::size_t with_sheet_flow = 0;
+    for (unsigned seed = 0; seed < 200; ++seed) {
+        std::mt19937 random(seed);
+        const Given given = random_ground(random, seed);
+        const std::vector<Cell> cells = worked::random_cells(random, given, 8 + seed % 16);
+        if (cells.empty()) continue;
+        const Worked w(given, {.points = cells});
+        const DrainageNetwork network = network_of(w.outlets);
+        INFO("seed " << seed);
+        for (const Outlet& outlet : w.outlets) {
+            const PointArrivals before = network.arrivals_at(outlet.number, w.storm_factor);
+            for (const SubareaArrival& subarea : before.subareas) {
+                if (subarea.subarea == before.last) continue;
+                const PointArrivals more = delayed_network(w.outlets, subarea.subarea, subarea.slack + second).arrivals_at(outlet.number, w.storm_factor);
+                REQUIRE(more.last == subarea.subarea);
+                REQUIRE(more.time == before.time + second);
+                const PointArrivals less = delayed_network(w.outlets, subarea.subarea, subarea.slack - second).arrivals_at(outlet.number, w.storm_factor);
+                REQUIRE(less.last == before.last);
+                REQUIRE(less.time == before.time);
+                ++held;
+                if (w.outlets[subarea.subarea - 1].own_front.last_to_arrive(w.storm_factor).time.storm > 0) ++with_sheet_flow;
+            }
+        }
+    }
+    CHECK(held > 100);
+    CHECK(with_sheet_flow > 100);
+}
+
 TEST_CASE("ways add up the regimes they run through to their length") {
     for (unsigned seed = 0; seed < 60; ++seed) {
         std::mt19937 random(seed);

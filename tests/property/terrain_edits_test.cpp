@@ -7,34 +7,37 @@
 
 #include "reference/random_edits.hpp"
 #include "reference/plain/flow_directions.hpp"
+#include "reference/worked_terrain.hpp"
 #include "rillclock/terrain/tiled_directions.hpp"
 
 namespace rillclock {
 namespace {
-
-const Ground square_cells = Ground::planar(metres(1), metres(1));
 
 using edits::AnyEdits;
 using edits::grid_of;
 using edits::Mapped;
 using edits::stored;
 
-Raster<FlowCode> plain_codes(const ElevationStore& store) {
-    Elevations z(store.rows(), store.columns());
-    for (Cell cell = 0; cell < static_cast<Cell>(z.size()); ++cell) z[cell] = store[cell];
-    return flow_forest_of(z, square_cells).codes();
+/// Both builders over the ground of a seed (`worked::seeded_ground`): square, rectangular or geographic cells.
+FindCodes plain_codes(unsigned seed) {
+    return [seed](const ElevationStore& store) {
+        Elevations z(store.rows(), store.columns());
+        for (Cell cell = 0; cell < static_cast<Cell>(z.size()); ++cell) z[cell] = store[cell];
+        return flow_forest_of(z, worked::seeded_ground(seed, z.rows())).codes();
+    };
 }
 
-FindCodes tiled_codes(std::int64_t side, const Executor& executor) {
-    return [side, &executor](const ElevationStore& store) {
+FindCodes tiled_codes(unsigned seed, std::int64_t side, const Executor& executor) {
+    return [seed, side, &executor](const ElevationStore& store) {
         const TileGrid tiles(store.rows(), store.columns(), side);
-        return store.visit([&](const auto& z) { return flow_codes(z, square_cells, tiles, executor); });
+        const Ground ground = worked::seeded_ground(seed, store.rows());
+        return store.visit([&](const auto& z) { return flow_codes(z, ground, tiles, executor); });
     };
 }
 
 struct Edited {
-    explicit Edited(const Mapped& any)
-        : z(stored(any.z)), edits(place_edits(any.shapes, grid_of(any.z), z, 0.5)), flow(edited_flow(z, edits, plain_codes)),
+    Edited(const Mapped& any, unsigned seed)
+        : z(stored(any.z)), edits(place_edits(any.shapes, grid_of(any.z), z, 0.5)), flow(edited_flow(z, edits, plain_codes(seed))),
           forest(flow.codes) {}   // throws where there is a circle
 
     [[nodiscard]] bool is_barrier(Cell cell) const { return std::binary_search(edits.barrier.begin(), edits.barrier.end(), cell); }
@@ -52,25 +55,25 @@ void for_all_edits(Law law) {
     for (unsigned seed = 0; seed < most_seeds; ++seed) {
         const AnyEdits any(seed);
         INFO("seed " << seed << ", " << any.z.rows() << " x " << any.z.columns());
-        law(Edited(any), any);
+        law(Edited(any, seed), any);
     }
 }
 
 /// Whether tiles give another flow than the plain way.
-bool tiles_differ(const Mapped& mapped, ElevationStore::Width width, const FindCodes& find_codes) {
-    const Edited plain(mapped);
+bool tiles_differ(const Mapped& mapped, unsigned seed, ElevationStore::Width width, const FindCodes& find_codes) {
+    const Edited plain(mapped, seed);
     ElevationStore z = stored(mapped.z, width);
     return edited_flow(z, plain.edits, find_codes).codes != plain.flow.codes;
 }
 
-TEST_CASE("an edited terrain flows the same way whatever the tiles, the threads and the width of elevations") {
+TEST_CASE("an edited terrain flows the same way whatever the tiles, the threads and the width of elevations, on cells of any shape") {
     const std::array<Executor, 2> executors = {Executor(1), Executor(2)};
     for (unsigned seed = 0; seed < most_seeds; ++seed) {
         const AnyEdits any(seed);
         const auto side = static_cast<std::int64_t>(1 + seed % 16);
         const auto width = seed % 2 == 0 ? ElevationStore::Width::four_bytes : ElevationStore::Width::eight_bytes;
-        const FindCodes find_codes = tiled_codes(side, executors[seed % 2]);
-        const auto fails = [&](const Mapped& mapped) { return tiles_differ(mapped, width, find_codes); };
+        const FindCodes find_codes = tiled_codes(seed, side, executors[seed % 2]);
+        const auto fails = [&](const Mapped& mapped) { return tiles_differ(mapped, seed, width, find_codes); };
         if (fails(any)) FAIL("seed " << seed << ", tiles of " << side << ", shrunk to\n" << edits::smallest_failing(any, fails));
     }
     SUCCEED();
@@ -97,7 +100,7 @@ TEST_CASE("one channel is followed along the whole of its way") {
         const bool has_voids = std::any_of(any.z.values().begin(), any.z.values().end(), [](double z) { return std::isnan(z); });
         const auto ways = cells_crossed(any.shapes.channels[0], grid_of(any.z));
         if (has_voids || ways.size() != 1) continue;
-        const Edited edited(any);
+        const Edited edited(any, seed);
         Way way = shortened(ways[0], any.z.columns());
         if (edited.edits.channels.turned > 0) {
             Way back = ways[0];
@@ -163,7 +166,7 @@ TEST_CASE("without edits the flow is that of the ground") {
     for (unsigned seed = 0; seed < 200; ++seed) {
         const AnyEdits any(seed);
         ElevationStore z = stored(any.z);
-        CHECK(edited_flow(z, TerrainEdits{}, plain_codes).codes == flow_forest_of(any.z, square_cells).codes());
+        CHECK(edited_flow(z, TerrainEdits{}, plain_codes(seed)).codes == flow_forest_of(any.z, worked::seeded_ground(seed, any.z.rows())).codes());
     }
 }
 

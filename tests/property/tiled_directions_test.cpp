@@ -7,6 +7,7 @@
 #include "reference/limit_terrains.hpp"
 #include "reference/shrinking.hpp"
 #include "reference/plain/flow_directions.hpp"
+#include "reference/worked_terrain.hpp"
 
 namespace rillclock {
 namespace {
@@ -39,19 +40,6 @@ Elevations as_doubles(const Raster<float>& z) {
     Elevations doubles(z.rows(), z.columns());
     for (std::size_t i = 0; i < z.values().size(); ++i) doubles.values()[i] = z.values()[i];
     return doubles;
-}
-
-/// Ground whose rows become shorter to the north, as on a geographic grid.
-Ground narrowing_ground(std::int64_t rows) {
-    std::vector<GroundRow> table;
-    for (std::int64_t row = 0; row < rows; ++row) {
-        const double width = 1.0 + 0.02 * static_cast<double>(row);
-        table.push_back({.east_west = to_fixed(width),
-                         .south = to_fixed(1.5),
-                         .diagonal = to_fixed(std::hypot(width, 1.5)),
-                         .area = to_fixed_area(width * 1.5)});
-    }
-    return Ground::by_row(std::move(table));
 }
 
 const Ground square = Ground::planar(metres(1), metres(1));
@@ -116,7 +104,7 @@ TEST_CASE("tiles measure each row by its own ground lengths") {
     for (unsigned seed = 0; seed < 500; ++seed) {
         std::mt19937 random(seed);
         const Elevations z = any_terrain(random, seed % 12);
-        const Ground ground = narrowing_ground(z.rows());
+        const Ground ground = worked::narrowing_ground(z.rows());
         const auto side = static_cast<std::int64_t>(1 + seed % 16);
         INFO("seed " << seed << ", " << z.rows() << " x " << z.columns() << ", tiles of " << side);
         REQUIRE(tiled_arrows(z, side, executor, ground) == whole(z, ground));

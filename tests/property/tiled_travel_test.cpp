@@ -19,7 +19,7 @@ worked::Given seeded_given(unsigned seed, std::optional<Elevations> z = {}) {
     std::mt19937 random(seed);
     const double void_share = seed % 3 == 0 ? 0.06 : 0.0;
     worked::Given given{.elevations = z ? *std::move(z) : drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, void_share)};
-    given.ground = Ground::planar(metres(1 + seed % 5), metres(1 + seed % 7));
+    given.ground = worked::seeded_ground(seed, given.elevations.rows());
     given.surface = worked::random_surface(random, given.elevations, seed % 4 != 0);
     given.rules.channel.from_area = square_metres(seed % 8 == 0 ? 1e9 : 900);
     given.rules.slope.window = metres(std::uniform_real_distribution<double>(1, 60)(random));
@@ -31,7 +31,7 @@ worked::Given seeded_given(unsigned seed, std::optional<Elevations> z = {}) {
 
 TEST_CASE("travel over tiles gives every cell what the plain way gives it, whatever the tiles and threads") {
     for (unsigned seed = 0; seed < 600; ++seed) {
-        const worked::TileManner manner{.side = 1 + seed % 17, .threads = 1 + seed % 2};
+        const worked::TileManner manner = worked::seeded_manner(seed, 17);
         INFO("seed " << seed << ", tiles of " << manner.side);
         REQUIRE(worked::tiled_difference(worked::Land(seeded_given(seed)), manner) == "");
     }
@@ -57,7 +57,7 @@ TEST_CASE("travel with mapped channels, beds, barriers and kept water is the sam
     std::size_t channel_cells = 0;
     for (unsigned seed = 0; seed < 600; ++seed) {
         const edits::AnyEdits any(seed);
-        const worked::TileManner manner{.side = 1 + seed % 13, .threads = 1 + seed % 2};
+        const worked::TileManner manner = worked::seeded_manner(seed, 13);
         const auto fails = [&](const edits::Mapped& mapped) {
             return worked::tiled_difference(worked::Land(edited_given(seed, mapped)), manner) != "";
         };

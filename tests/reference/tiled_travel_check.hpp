@@ -12,14 +12,21 @@ namespace rillclock::worked {
 struct TileManner {
     std::int64_t side = 256;
     unsigned threads = 1;
+    Executor::Kind kind = Executor::Kind::task_arena;
 };
+
+/// A manner that differs from seed to seed in all of it.
+inline TileManner seeded_manner(unsigned seed, unsigned most_side) {
+    return {.side = 1 + seed % most_side, .threads = 1 + seed % 2,
+            .kind = seed / 2 % 2 == 0 ? Executor::Kind::task_arena : Executor::Kind::plain_threads};
+}
 
 /// Travel over tiles of a land that was worked through the plain way, kept alive together.
 class OverTiles {
 public:
     OverTiles(const Land& land, const TileManner& manner)
         : store(land.given.elevations.rows(), land.given.elevations.columns(), ElevationStore::Width::eight_bytes),
-          executor(manner.threads, Executor::Kind::plain_threads),
+          executor(manner.threads, manner.kind),
           forest(land.forest.codes(), TileGrid(store.rows(), store.columns(), manner.side), executor),
           travel({.forest = forest, .ground = land.given.ground, .elevations = filled(store, land.given.elevations),
                   .metres_per_elevation_unit = land.given.metres_per_elevation_unit, .surface = land.given.surface,

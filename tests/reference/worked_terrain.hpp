@@ -1,5 +1,6 @@
 #pragma once
 
+#include <cmath>
 #include <limits>
 #include <optional>
 #include <random>
@@ -51,6 +52,26 @@ public:
 inline SurfaceTable one_surface(const Elevations& z, double sheet_n, double shallow_k_m_per_s) {
     return {.classes = {{.sheet_n = sheet_n, .shallow_k = metres_per_second(shallow_k_m_per_s)}},
             .index = Raster<std::uint8_t>(z.rows(), z.columns())};
+}
+
+/// Ground whose rows become shorter to the north, as on a geographic grid.
+inline Ground narrowing_ground(std::int64_t rows) {
+    std::vector<GroundRow> table;
+    for (std::int64_t row = 0; row < rows; ++row) {
+        const double width = 1.0 + 0.02 * static_cast<double>(row);
+        table.push_back({.east_west = to_fixed(width),
+                         .south = to_fixed(1.5),
+                         .diagonal = to_fixed(std::hypot(width, 1.5)),
+                         .area = to_fixed_area(width * 1.5)});
+    }
+    return Ground::by_row(std::move(table));
+}
+
+/// Square cells, rectangular ones, or rows that become shorter to the north: differs from seed to seed.
+inline Ground seeded_ground(unsigned seed, std::int64_t rows) {
+    const unsigned kind = seed / 4 % 3;
+    if (kind == 0) return Ground::planar(metres(1), metres(1));
+    return kind == 1 ? Ground::planar(metres(1 + seed % 5), metres(1 + seed % 7)) : narrowing_ground(rows);
 }
 
 /// One row of cells.
