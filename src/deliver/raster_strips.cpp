@@ -1,5 +1,6 @@
 #include "rillclock/deliver/raster_strips.hpp"
 
+#include <algorithm>
 #include <future>
 
 #include "raster_descriptions.hpp"
@@ -82,8 +83,8 @@ private:
 
 RasterStrips::RasterStrips(RasterStory story, const TiledTravel& travel, ResultFolder& folder)
     : story_(std::move(story)), files_(std::make_unique<Files>(story_, folder)),
-      filling_(std::make_unique<Strip>(travel.ground().forest.tiles().side(), story_.grid.columns)),
-      leaving_(std::make_unique<Strip>(travel.ground().forest.tiles().side(), story_.grid.columns)) {
+      filling_(std::make_unique<Strip>(std::min(travel.ground().forest.tiles().side(), story_.grid.rows), story_.grid.columns)),
+      leaving_(std::make_unique<Strip>(std::min(travel.ground().forest.tiles().side(), story_.grid.rows), story_.grid.columns)) {
     for (std::size_t code = 0; code < azimuths_.size(); ++code) azimuths_[code] = azimuth_value(static_cast<FlowCode>(code));
 }
 RasterStrips::~RasterStrips() = default;

@@ -54,6 +54,8 @@ ElevationFile open_elevation_of(const Study& study) {
 
 MemoryTask memory_task(const Study& study, const ElevationFile& elevations) {
     return {.cells = elevations.grid().size(),
+            .rows = elevations.grid().rows,
+            .columns = elevations.grid().columns,
             .wide_elevations = width_of(elevations.format.stored) == ElevationStore::Width::eight_bytes,
             .soil_raster = study.surface.soil.file.has_value(),
             .rain_zones = study.rain.zones.file.has_value(),

@@ -12,6 +12,8 @@ namespace rillclock {
 /// What the memory of a run depends on.
 struct MemoryTask {
     std::int64_t cells = 0;
+    std::int64_t rows = 0;          ///< and columns: of the rasters that are written; 0 where none are
+    std::int64_t columns = 0;
     bool wide_elevations = false;   ///< elevations take eight bytes a cell (see ElevationStore)
     bool soil_raster = false;       ///< soil groups come from a raster
     bool rain_zones = false;        ///< each cell lies in a zone of rain
@@ -19,19 +21,35 @@ struct MemoryTask {
     bool results_kept = false;      ///< what is known of every cell is handed back in memory (see TravelTimes), 23 bytes a cell
 };
 
+/// Bytes of the rows that are on their way into the six rasters: two strips of a row of tiles, 27 bytes a cell each, and the next row of
+/// blocks of every coarser copy.
+[[nodiscard]] constexpr double strips_need(std::int64_t rows, std::int64_t columns) {
+    constexpr std::int64_t strip_rows = 256;
+    constexpr double cell_bytes = 27.0;
+    double bytes = 2.0 * cell_bytes * static_cast<double>(std::min(strip_rows, rows)) * static_cast<double>(columns);
+    while (std::max(rows, columns) > 512) {
+        rows = (rows + 1) / 2;
+        columns = (columns + 1) / 2;
+        bytes += cell_bytes * static_cast<double>(std::min(strip_rows, rows)) * static_cast<double>(columns);
+    }
+    return bytes;
+}
+
 /// Memory that a run needs, in bytes, with room to spare.
 ///
 /// What is kept for every cell is 11.2 bytes, and 4 more where it lies below its spill elevation; 15.2 and 8 where elevations are wide; and 1 of a
-/// soil raster. All cells are taken to lie below theirs: what that leaves over goes to strips of the rasters being written, which grow with
-/// their width. Tiles and the libraries take 150 MB at least, and 350 MB once there are enough cells to fill them. A bin of arrivals takes 72 bytes with what
-/// the heap adds; there may be one a cell, but in data of some size they share them: 20 bytes a cell were seen at 36 million cells.
+/// soil raster. All cells are taken to lie below theirs, and a cell to have 16 bytes (24): the 0.8 that this leaves over are the strips of rasters
+/// not far from square (see `strips_need`); wider ones are counted. Tiles and the libraries take 170 MB at least, and 350 MB once there are enough
+/// cells to fill them. A bin of arrivals takes 72 bytes with what the heap adds; there may be one a cell, but in data of some size they share
+/// them: 20 bytes a cell were seen at 36 million cells.
 [[nodiscard]] constexpr double memory_need(const MemoryTask& task) {
     const auto cells = static_cast<double>(task.cells);
-    const double kept = cells * ((task.wide_elevations ? 24.0 : 16.0) + (task.soil_raster ? 1.0 : 0.0) + (task.rain_zones ? 1.0 : 0.0) +
+    const double kept = cells * ((task.wide_elevations ? 23.2 : 15.2) + (task.soil_raster ? 1.0 : 0.0) + (task.rain_zones ? 1.0 : 0.0) +
                                  (task.results_kept ? 23.0 : 0.0));
-    const double around = 150e6 + std::min(200e6, cells * 40.0);
+    const double strips = std::max(cells * 0.8, strips_need(task.rows, task.columns));
+    const double around = 170e6 + std::min(180e6, cells * 90.0);
     const double bins = task.own_storms ? std::min(cells * 72.0, 72e6 + cells * 25.0) : 0.0;
-    return kept + around + bins;
+    return kept + strips + around + bins;
 }
 
 /// Says with numbers that a run needs more memory than there is; nothing where it does not.
