@@ -10,7 +10,9 @@
 namespace rillclock {
 namespace {
 
-auto place_of(const HistogramEntry& e) { return std::tie(e.shift.fixed, e.shift.storm, e.storm_bin, e.fixed_bin, e.kind); }
+auto place_of(const HistogramEntry& e) {
+    return std::tie(e.shift.fixed, e.shift.storm, e.width.fixed, e.width.storm, e.storm_bin, e.fixed_bin, e.kind);
+}
 
 bool stands_before(const HistogramEntry& a, const HistogramEntry& b) { return place_of(a) < place_of(b); }
 

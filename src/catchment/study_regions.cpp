@@ -13,6 +13,16 @@ RegionLabel band_label(PointNumber number, std::uint32_t band) { return (static_
 
 }  // namespace
 
+std::size_t most_isochrone_bands(std::size_t points) {
+    constexpr std::size_t of_few_points = 10'000;
+    constexpr std::size_t of_each = 30;
+    return std::max(of_few_points, of_each * points);
+}
+
+std::string isochrone_step_text(Duration step) {
+    return step < minutes(1) ? significant(in_seconds(step)) + " s" : significant(in_minutes(step)) + " min";
+}
+
 StudyRegions::StudyRegions(const Grid& grid, const Ground& ground, const PointTree& tree, std::vector<double> minutes_to_last,
                            std::optional<IsochroneRules> isochrones)
     : grid_(grid), ground_(ground), tree_(tree), minutes_to_last_(std::move(minutes_to_last)),
@@ -117,11 +127,12 @@ void StudyRegions::check_bounds() const {
         bands += catchments.bands.areas.size();
         pieces += catchments.bands.borders.pieces();
     }
-    if (bands <= isochrones_->most_bands && pieces <= isochrones_->most_pieces) return;
-    throw input_error("isochrones every " + significant(in_minutes(isochrones_->step)) + " min have more than " +
-                      (bands > isochrones_->most_bands ? std::to_string(isochrones_->most_bands) + " bands"
-                                                       : std::to_string(isochrones_->most_pieces) + " pieces of border") +
-                      ", too many for a file of shapes; state a longer step in output.isochrones, or \"none\"");
+    const std::size_t most_bands = most_isochrone_bands(tree_.next.size());
+    if (bands <= most_bands && pieces <= isochrones_->most_pieces) return;
+    throw input_error("isochrones every " + isochrone_step_text(isochrones_->step) + " have more than " +
+                      (bands > most_bands ? std::to_string(most_bands) + " bands" : std::to_string(isochrones_->most_pieces) + " pieces of border") +
+                      ", too many for a file of shapes; state a longer step in output.isochrones, or how many bands there may be, such as "
+                      "\"12 bands\", or \"none\"");
 }
 
 void StudyRegions::finish() {

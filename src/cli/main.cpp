@@ -3,15 +3,18 @@
 #include <spdlog/spdlog.h>
 #include <unistd.h>
 
+#include <algorithm>
 #include <cstdlib>
 #include <exception>
 #include <iostream>
 #include <memory>
 #include <new>
 #include <string>
+#include <vector>
 
 #include "options.hpp"
 #include "rillclock/core/error.hpp"
+#include "rillclock/core/noticed_kinds.hpp"
 #include "rillclock/run/check.hpp"
 #include "rillclock/run/compare.hpp"
 #include "rillclock/run/demo.hpp"
@@ -29,7 +32,7 @@ constexpr int status_command_line = 2;
 constexpr int status_machine = 3;
 constexpr int status_worse = 4;
 constexpr int status_signal = 128;
-constexpr std::size_t most_notices_shown = 8;
+constexpr std::size_t most_kinds_shown = 8;
 
 int status_of(Fault fault) {
     switch (fault) {
@@ -41,13 +44,18 @@ int status_of(Fault fault) {
     return status_machine;
 }
 
-/// The first few, or all where they are asked for.
-void show_notices(const Notices& notices, const std::string& rest, bool all = false) {
-    const std::size_t most = all ? notices.size() : most_notices_shown;
-    for (std::size_t i = 0; i < std::min(most, notices.size()); ++i) {
-        spdlog::warn("notice: {}", notices[i].text);
+/// One of each kind, so that none is hidden behind many of another; of the first few kinds.
+void show_kinds(const Notices& notices, const std::string& where) {
+    const std::vector<NoticedKind> kinds = noticed_kinds(notices);
+    for (std::size_t i = 0; i < std::min(most_kinds_shown, kinds.size()); ++i) {
+        const std::string likewise = likewise_words(kinds[i]);
+        spdlog::warn("notice: {}{}{}", kinds[i].first->text, likewise.empty() ? "" : " ", likewise);
     }
-    if (notices.size() > most) spdlog::warn("and {} more notices{}", notices.size() - most, rest);
+    if (kinds.size() > most_kinds_shown) spdlog::warn("and {} more kinds of notices{}", kinds.size() - most_kinds_shown, where);
+}
+
+void show_all(const Notices& notices) {
+    for (const Notice& notice : notices) spdlog::warn("notice: {}", notice.text);
 }
 
 void show_facts(const std::vector<std::string>& facts) {
@@ -78,7 +86,8 @@ int run_command(const CommandLine& line) {
     for (const ScenarioOutcome& scenario : outcome.scenarios) {
         if (!line.quiet) show_facts(scenario.facts);
     }
-    if (!line.quiet) show_notices(outcome.notices, " in tables/review.csv; -v says them all", line.verbose);
+    if (!line.quiet && line.verbose) show_all(outcome.notices);
+    if (!line.quiet && !line.verbose) show_kinds(outcome.notices, " in tables/review.csv; -v says every notice");
     if (line.json) {
         std::cout << json_of(outcome);
     } else if (line.quiet) {
@@ -96,7 +105,7 @@ int check_command(const CommandLine& line) {
     }
     const CheckReport report = check(study_of(line));
     for (const std::string& fact : report.facts) std::cout << fact << '\n';
-    show_notices(report.notices, "");
+    show_all(report.notices);
     for (const std::string& problem : report.problems) spdlog::error("would stop the run: {}", problem);
     for (const std::string& lack : report.lacking) spdlog::error("would stop the run here: {}", lack);
     if (!report.problems.empty()) return status_inputs;

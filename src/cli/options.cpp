@@ -66,7 +66,7 @@ public:
             ->type_name("NUMBER")
             ->check(CLI::Range(1, 1024));
         run_->add_flag("-q,--quiet", line_.quiet, "say nothing but errors, and where the result is");
-        run_->add_flag("-v,--verbose", line_.verbose, "say every notice, not the first few alone");
+        run_->add_flag("-v,--verbose", line_.verbose, "say every notice, not one of each kind alone");
         run_->add_flag("--json", line_.json, "print result.json on standard output, and nothing else there");
         check_ = app_.add_subcommand("check", "read headers, tables and points; say what would be wrong and what it will cost");
         add_study_words(*check_, line_, check_values_);

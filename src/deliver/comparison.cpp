@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <array>
 #include <cmath>
+#include <limits>
 #include <nlohmann/json.hpp>
 #include <numeric>
 
@@ -43,10 +44,12 @@ Json point_json(const Comparison& comparison, const ComparedPoint& point) {
     Json periods = Json::array();
     for (const ComparedPeriod& period : point.periods) {
         periods.push_back({{"return_period", period.return_period}, {"runoff_coefficient", figures(period.coefficient)},
+                           {"whole_area_peak_" + comparison.flow_unit, figures(period.whole_area_peak)},
                            {"peak_" + comparison.flow_unit, figures(period.peak)}});
     }
     return {{"name", point.name},
             {"time_min", figures(point.time_min)},
+            {"ground_time_min", figures(point.ground_time_min)},
             {"path_length_" + comparison.length_unit, figures(point.length)},
             {"same_head", point.has_same_head},
             {"last_subarea", {{"before", text_or_null(point.last_before)}, {"after", text_or_null(point.last_after)}}},
@@ -55,12 +58,14 @@ Json point_json(const Comparison& comparison, const ComparedPoint& point) {
             {"worse_by_percent", figure(100.0 * point.worsening())}};
 }
 
-/// The greatest relative change of a peak over all return periods, by its size.
+/// The greatest relative change of a peak, whole or partial area, over all return periods, by its size.
 std::optional<double> greatest_peak_change(const ComparedPoint& point) {
     std::optional<double> greatest;
     for (const ComparedPeriod& period : point.periods) {
-        const auto change = period.peak.relative_change();
-        if (change && (!greatest || std::abs(*change) > std::abs(*greatest))) greatest = change;
+        for (const TwoFigures* peak : {&period.peak, &period.whole_area_peak}) {
+            const auto change = peak->relative_change();
+            if (change && (!greatest || std::abs(*change) > std::abs(*greatest))) greatest = change;
+        }
     }
     return greatest;
 }
@@ -121,9 +126,15 @@ std::optional<double> TwoFigures::relative_change() const {
     return (*after - *before) / *before;
 }
 
+std::optional<double> ComparedPeriod::peak_growth() const {
+    const std::optional<double> whole = whole_area_peak.relative_change();
+    const std::optional<double> partial = peak.relative_change();
+    return whole && partial ? std::max(whole, partial) : whole ? whole : partial;
+}
+
 double ComparedPoint::worsening() const {
     double worst = -time_min.relative_change().value_or(0.0);
-    for (const ComparedPeriod& period : periods) worst = std::max(worst, period.peak.relative_change().value_or(0.0));
+    for (const ComparedPeriod& period : periods) worst = std::max(worst, period.peak_growth().value_or(0.0));
     return worst;
 }
 
@@ -174,6 +185,7 @@ std::string comparison_table(const Comparison& comparison) {
     table.column("point", [](const ComparedPoint& p) { return p.name; });
     add_figures(table, "time", "min", [](const ComparedPoint& p) { return p.time_min; });
     table.column("time_change_percent", [](const ComparedPoint& p) { return decimals_or_nothing(in_percent(p.time_min.relative_change()), 3); });
+    add_figures(table, "ground_time", "min", [](const ComparedPoint& p) { return p.ground_time_min; });
     add_figures(table, "path_length", comparison.length_unit, [](const ComparedPoint& p) { return p.length; });
     table.column("same_head", [](const ComparedPoint& p) { return yes_or_no(p.has_same_head); })
         .column("last_subarea_before", [](const ComparedPoint& p) { return p.last_before; })
@@ -192,12 +204,18 @@ std::string compared_peaks_table(const Comparison& comparison) {
     table.column("point", [](const PeriodRow& r) { return r.point->name; })
         .column("return_period_years", [](const PeriodRow& r) { return significant(r.period->return_period, 6); });
     add_figures(table, "runoff_coefficient", "", [](const PeriodRow& r) { return r.period->coefficient; });
+    add_figures(table, "whole_area_peak", comparison.flow_unit, [](const PeriodRow& r) { return r.period->whole_area_peak; });
+    table.column("whole_area_peak_change_percent", [](const PeriodRow& r) { return decimals_or_nothing(in_percent(r.period->whole_area_peak.relative_change()), 3); });
     add_figures(table, "peak", comparison.flow_unit, [](const PeriodRow& r) { return r.period->peak; });
     table.column("peak_change_percent", [](const PeriodRow& r) { return decimals_or_nothing(in_percent(r.period->peak.relative_change()), 3); });
-    std::string text = table.header();
+    std::vector<PeriodRow> rows;
     for (const ComparedPoint& point : comparison.points) {
-        for (const ComparedPeriod& period : point.periods) text += table.line({&point, &period});
+        for (const ComparedPeriod& period : point.periods) rows.push_back({&point, &period});
     }
+    const auto growth = [](const PeriodRow& r) { return r.period->peak_growth().value_or(-std::numeric_limits<double>::infinity()); };
+    std::stable_sort(rows.begin(), rows.end(), [&](const PeriodRow& a, const PeriodRow& b) { return growth(a) > growth(b); });
+    std::string text = table.header();
+    for (const PeriodRow& row : rows) text += table.line(row);
     return text;
 }
 

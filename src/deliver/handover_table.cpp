@@ -45,7 +45,8 @@ void add_storm_coefficient_columns(const StudyResult& result, const ReportScale&
                 return coefficients.empty() ? std::string() : print(coefficients[i]);
             };
         };
-        table.column("runoff_coefficient" + years, where_any([](const CompositeCoefficient& c) { return significant(c.value, 9); }))
+        table.column("runoff_coefficient_before_factor" + years, where_any([](const CompositeCoefficient& c) { return significant(c.plain, 9); }))
+            .column("runoff_coefficient_with_factor" + years, where_any([](const CompositeCoefficient& c) { return significant(c.value, 9); }))
             .column("ca" + years + "_" + scale.area_unit(), where_any([scale](const CompositeCoefficient& c) {
                 return significant(scale.area(from_fixed_area(c.runoff)), 9);
             }));

@@ -8,6 +8,7 @@
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/report_units.hpp"
 #include "rillclock/deliver/uncertainty_tables.hpp"
+#include "network_words.hpp"
 
 namespace rillclock {
 namespace {
@@ -29,9 +30,14 @@ std::string area_text(const StudyResult& result, FixedArea area) {
 
 std::string governing_sentence(const StudyResult& result, const Outlet& main) {
     const bool same = main.longest.cells.front() == main.governing.cells.front();
-    std::string text = "'" + main.point.name + "' drains " + area_text(result, main.area) + ". Its slowest water arrives after " +
-                       time_text(main.time_of_concentration_s()) + ", along " +
-                       length_text(result, from_fixed(main.governing.summary.length)) + " of path";
+    std::string text = "'" + main.point.name + "' drains " + area_text(result, area_shown(result, main)) + ". Its slowest water arrives after " +
+                       time_text(time_shown_s(result, main));
+    if (is_stated_felt(result.network, main)) {
+        const std::string stated = stated_in_words(result, result.network.points[main.number - 1].stated_above);
+        text += " in the network, where pipes or stated figures act" + (stated.empty() ? "" : " (" + stated + ")") +
+                ". Over the ground alone it drains " + area_text(result, main.area) + " and the time is " + time_text(main.time_of_concentration_s());
+    }
+    text += ", along " + length_text(result, from_fixed(main.governing.summary.length)) + " of path";
     if (same) return text + "; that is the longest path too.";
     return text + "; the longest path (" + length_text(result, from_fixed(main.longest.summary.length)) + ") takes only " +
            time_text(main.longest.seconds) + ".";
@@ -48,7 +54,7 @@ std::string_view in_words(Regime regime) {
     return "";
 }
 
-std::string makeup_sentence(const Outlet& main) {
+std::string makeup_sentence(const StudyResult& result, const Outlet& main) {
     std::array<StepTime, 5> by_regime{};
     for (const Segment& s : main.governing.segments) by_regime[static_cast<std::size_t>(s.regime)] += s.time;
     std::string text;
@@ -58,7 +64,8 @@ std::string makeup_sentence(const Outlet& main) {
         text += (text.empty() ? "" : ", ") + time_text(s) + " " + std::string(in_words(regime));
     }
     const std::string half = "alf of the area has arrived after " + time_text(main.arrival_s[0]) + ".";
-    return text.empty() ? "H" + half : "That time is made up of " + text + "; h" + half;
+    const std::string which = is_stated_felt(result.network, main) ? "The time over the ground" : "That time";
+    return text.empty() ? "H" + half : which + " is made up of " + text + "; h" + half;
 }
 
 std::string flow_text(const StudyResult& result, Discharge flow) {
@@ -162,10 +169,13 @@ std::string padded(std::string text, std::size_t width, bool right) {
 
 using OverviewRow = std::array<std::string, 5>;
 
-OverviewRow overview_row(const StudyResult& result, const Outlet& outlet) {
+/// Figures stay below one another where some points are marked: the others get a blank.
+OverviewRow overview_row(const StudyResult& result, const Outlet& outlet, bool any_marked) {
     const ReportScale scale(result.study.report_units);
-    return {outlet.point.name, significant(scale.area(from_fixed_area(outlet.area)), 4),
-            fixed_decimals(outlet.time_of_concentration_s() / 60.0, 1), fixed_decimals(outlet.arrival_s[0] / 60.0, 1),
+    const std::string own_mark = stated_mark(result, outlet);
+    const std::string mark = any_marked && own_mark.empty() ? " " : own_mark;
+    return {outlet.point.name, significant(scale.area(from_fixed_area(area_shown(result, outlet))), 4) + mark,
+            fixed_decimals(time_shown_s(result, outlet) / 60.0, 1) + mark, fixed_decimals(outlet.arrival_s[0] / 60.0, 1),
             significant(scale.length(from_fixed(outlet.governing.summary.length)), 4)};
 }
 
@@ -182,7 +192,7 @@ std::vector<std::size_t> by_area(const StudyResult& result) {
 
 std::vector<std::string> headlines(const StudyResult& result) {
     const Outlet& main = result.outlets[by_area(result).front()];
-    std::vector<std::string> sentences{governing_sentence(result, main), makeup_sentence(main)};
+    std::vector<std::string> sentences{governing_sentence(result, main), makeup_sentence(result, main)};
     if (const auto peak = peak_sentence(result, main)) sentences.push_back(*peak);
     if (result.uncertainty != nullptr) sentences.push_back(uncertainty_sentence(result, main));
     for (const auto& sentence : {partial_sentence(result), difference_sentence(result), lead_sentence(result)}) {
@@ -196,8 +206,9 @@ std::string outlets_overview(const StudyResult& result, std::size_t most) {
     const ReportScale scale(result.study.report_units);
     std::vector<OverviewRow> rows{{"point", "area " + scale.area_unit(), "time min", "half arrived min", "path " + scale.length_unit()}};
     const std::vector<std::size_t> order = by_area(result);
+    const std::string mark_words = stated_mark_words(result);
     for (std::size_t i = 0; i < std::min(most, order.size()); ++i) {
-        rows.push_back(overview_row(result, result.outlets[order[i]]));
+        rows.push_back(overview_row(result, result.outlets[order[i]], !mark_words.empty()));
     }
     std::array<std::size_t, 5> widths{};
     for (const OverviewRow& row : rows) {
@@ -209,7 +220,7 @@ std::string outlets_overview(const StudyResult& result, std::size_t most) {
         text += '\n';
     }
     if (order.size() > most) text += "… and " + std::to_string(order.size() - most) + " more in tables/outlets.csv\n";
-    return text;
+    return mark_words.empty() ? text : text + mark_words + "\n";
 }
 
 }  // namespace rillclock

@@ -65,7 +65,7 @@ void add_way_fields(const StudyResult& result, EdgeLayer& layer) {
         .field("area_m2", FieldKind::number, "area of all that drains through the upper point", [](const EdgeRow& r) { return square_metres_of(r.network->area); });
 }
 
-void add_kind_fields(EdgeLayer& layer) {
+void add_kind_fields(const StudyResult& result, EdgeLayer& layer) {
     for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
         const std::string name(name_of(regime));
         layer.field(name + "_percent", FieldKind::number, "share of the flow path's length that runs as " + name, of_ground([regime](const PointWay& way) {
@@ -79,8 +79,16 @@ void add_kind_fields(EdgeLayer& layer) {
         .field("capacity_m3_per_s", FieldKind::number, "of the pipe, just full", of_pipe([](const PipeRun& run) {
             return number(in_cubic_metres_per_second(run.capacity));
         }))
-        .field("design_flow_m3_per_s", FieldKind::number, "of all that comes to the pipe; where it was asked for", of_pipe([](const PipeRun& run) {
+        .field("design_flow_m3_per_s", FieldKind::number, "whole-area peak of all that comes to the pipe, by which it is timed; where that was asked for", of_pipe([](const PipeRun& run) {
             return run.design_flow ? number(in_cubic_metres_per_second(*run.design_flow)) : FieldValue();
+        }))
+        .field("peak_m3_per_s", FieldKind::number, "that comes to the pipe, at the return period that paths are for", of_pipe([&result](const PipeRun& run) {
+            const PointPeak* peak = pipe_peak(result, run);
+            return peak == nullptr ? FieldValue() : number(in_cubic_metres_per_second(peak->partial), 5);
+        }))
+        .field("too_small", FieldKind::text, "whether that is more than the pipe takes just full", of_pipe([&result](const PipeRun& run) {
+            const PointPeak* peak = pipe_peak(result, run);
+            return peak == nullptr ? FieldValue() : FieldValue(std::string(peak->partial > run.capacity ? "yes" : "no"));
         }));
 }
 
@@ -129,7 +137,9 @@ void add_whole_fields(PeakLayer& layer) {
     layer.field("point", FieldKind::text, "name of the design point", [](const PeakFeature& r) { return r.outlet->point.name; })
         .field("return_period_years", FieldKind::number, "of the storm", [](const PeakFeature& r) { return number(r.return_period); })
         .field("made_by", FieldKind::text, "whether the whole area or a part of it makes the peak", made_by)
-        .field("runoff_coefficient", FieldKind::number, "mean C of the area, the frequency factor in it", if_there([](const PointPeak& p) {
+        .field("runoff_coefficient_before_factor", FieldKind::number, "mean C of the area, without the frequency factor",
+               if_there([](const PointPeak& p) { return number(p.coefficient.plain); }))
+        .field("runoff_coefficient_with_factor", FieldKind::number, "mean of the smaller of 1 and Cf C, with which peaks are made", if_there([](const PointPeak& p) {
             return number(p.coefficient.value);
         }))
         .field("time_of_concentration_min", FieldKind::number, "of the whole area under this storm", [](const PeakFeature& r) {
@@ -158,7 +168,7 @@ void write_network(const StudyResult& result, VectorFile& file) {
     EdgeLayer layer(file, {.name = "network", .description = "the way from each design point to the next one, drawn downstream; pipes straight",
                            .geometry = LayerGeometry::lines, .style = edge_style()});
     add_way_fields(result, layer);
-    add_kind_fields(layer);
+    add_kind_fields(result, layer);
     layer.begin();
     for (const Outlet& outlet : result.outlets) {
         const PointNetwork& network = result.network.points[outlet.number - 1];

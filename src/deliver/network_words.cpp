@@ -1,5 +1,7 @@
 #include "network_words.hpp"
 
+#include <algorithm>
+
 #include "rillclock/core/number_text.hpp"
 
 namespace rillclock {
@@ -39,6 +41,29 @@ std::string makers_in_words(const StudyResult& result, const PointPeak& peak) {
     }
     const std::size_t more = peak.subareas_in_window - peak.makers.size();
     return more == 0 ? text : text + ", and " + std::to_string(more) + " more";
+}
+
+const PointPeak* pipe_peak(const StudyResult& result, const PipeRun& run) {
+    if (!result.peaks.are_there()) return nullptr;
+    const PointPeak& peak = result.peaks.points[run.inlet - 1][result.rain.raster];
+    return peak.is_there() ? &peak : nullptr;
+}
+
+double time_shown_s(const StudyResult& result, const Outlet& outlet) {
+    return time_used_s(result.network, outlet, result.network.points[outlet.number - 1].raster);
+}
+
+FixedArea area_shown(const StudyResult& result, const Outlet& outlet) {
+    return result.network.is_edited ? result.network.points[outlet.number - 1].area : outlet.area;
+}
+
+std::string stated_mark(const StudyResult& result, const Outlet& outlet) { return is_stated_felt(result.network, outlet) ? "*" : ""; }
+
+std::string stated_mark_words(const StudyResult& result) {
+    const auto is_marked = [&](const Outlet& outlet) { return is_stated_felt(result.network, outlet); };
+    if (std::none_of(result.outlets.begin(), result.outlets.end(), is_marked)) return "";
+    return "* Pipes or stated figures act on this point: area and time are those of the network, with which its peaks are made. Half arrived and "
+           "path go by the ground alone, whose area and time are area and time_of_concentration_min in tables/outlets.csv.";
 }
 
 }  // namespace rillclock

@@ -27,9 +27,13 @@ void add_place_columns(const StudyResult& result, const ReportScale& scale, Tabl
         .column("next_point", [&](const Outlet& o) { return o.next == 0 ? "" : result.outlets[o.next - 1].point.name; });
 }
 
-void add_time_columns(const ReportScale& scale, TableWriter<Outlet>& table) {
+void add_time_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
     table.column("area_" + scale.area_unit(), [=](const Outlet& o) { return five_digits(scale.area(from_fixed_area(o.area))); })
         .column("own_area_" + scale.area_unit(), [=](const Outlet& o) { return five_digits(scale.area(from_fixed_area(o.own_area))); })
+        .column("network_area_" + scale.area_unit(),
+                [=, &result](const Outlet& o) { return five_digits(scale.area(from_fixed_area(result.network.points[o.number - 1].area))); })
+        .column("time_used_min", [&result](const Outlet& o) { return in_minutes_text(time_shown_s(result, o)); })
+        .column("stated_acts", [&result](const Outlet& o) { return yes_or_no(is_stated_felt(result.network, o)); })
         .column("time_of_concentration_min", [](const Outlet& o) { return in_minutes_text(o.time_of_concentration_s()); })
         .column("greatest_time_min", [](const Outlet& o) { return in_minutes_text(o.greatest_s); });
     for (std::size_t i = 0; i < told_shares.size(); ++i) {
@@ -154,7 +158,7 @@ std::string outlets_table(const StudyResult& result) {
     const ReportScale scale(result.study.report_units);
     TableWriter<Outlet> table;
     add_place_columns(result, scale, table);
-    add_time_columns(scale, table);
+    add_time_columns(result, scale, table);
     add_path_columns(result, scale, table);
     add_trust_columns(table);
     add_method_columns(result, table);

@@ -49,6 +49,7 @@ Json peaks_json(const StudyResult& result, const Outlet& outlet) {
         const PointPeak& peak = peaks[i];
         Json json = {{"return_period", result.rain.storms[i].return_period}, {"why_not", text_or_null(peak.why_not)}};
         if (peak.is_there()) {
+            json["runoff_coefficient_before_factor"] = digits(peak.coefficient.plain, 8);
             json["runoff_coefficient"] = digits(peak.coefficient.value, 8);
             json["frequency_factor"] = digits(peak.coefficient.frequency_factor);
             json["coefficient_uncut"] = digits(peak.coefficient.uncapped, 8);

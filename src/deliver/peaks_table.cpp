@@ -33,9 +33,10 @@ void add_coefficient_columns(const ReportScale& scale, Table& table) {
     table.column("point", [](const PeakRow& r) { return r.outlet->point.name; })
         .column("return_period_years", [](const PeakRow& r) { return significant(r.return_period, 6); })
         .column("area_" + scale.area_unit(), [=](const PeakRow& r) { return significant(scale.area(from_fixed_area(r.network->area)), 7); })
-        .column("runoff_coefficient", where_there([](const PointPeak& p) { return significant(p.coefficient.value, 6); }))
+        .column("runoff_coefficient_before_factor", where_there([](const PointPeak& p) { return significant(p.coefficient.plain, 6); }))
         .column("frequency_factor", where_there([](const PointPeak& p) { return five_digits(p.coefficient.frequency_factor); }))
-        .column("coefficient_uncut", where_there([](const PointPeak& p) { return significant(p.coefficient.uncapped, 6); }));
+        .column("coefficient_uncut", where_there([](const PointPeak& p) { return significant(p.coefficient.uncapped, 6); }))
+        .column("runoff_coefficient_with_factor", where_there([](const PointPeak& p) { return significant(p.coefficient.value, 6); }));
 }
 
 void add_whole_columns(const ReportScale& scale, Table& table) {

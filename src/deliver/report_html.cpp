@@ -5,9 +5,11 @@
 #include <string_view>
 
 #include "html_text.hpp"
+#include "network_words.hpp"
 #include "isochrone_rows.hpp"
 #include "report_files.hpp"
 #include "report_parts.hpp"
+#include "rillclock/core/noticed_kinds.hpp"
 #include "rillclock/deliver/cautions.hpp"
 #include "rillclock/deliver/headlines.hpp"
 #include "rillclock/deliver/report_units.hpp"
@@ -21,7 +23,6 @@ constexpr std::size_t most_bytes = 9'900'000;               ///< of the file; th
 constexpr std::size_t most_bytes_of_sections = 6'500'000;
 constexpr std::size_t bytes_of_the_rest = 400'000;          ///< scripts, styles, licence, findings
 constexpr std::size_t bytes_of_a_row = 400;                 ///< of the table of points
-constexpr std::size_t most_points_of_a_kind = 4;
 
 /// Nothing is fetched, and no script runs but those that are named here by their checksums.
 std::string policy() {
@@ -83,41 +84,14 @@ std::string findings(const StudyResult& result) {
     return html + "</ul>\n";
 }
 
-/// What was noticed of one kind: the one with the greatest effect, and at which other points. What is of no point stands alone.
-struct NoticedKind {
-    const Notice* first = nullptr;
-    std::vector<std::string> other_points;
-};
-
-std::vector<NoticedKind> noticed_kinds(const Notices& notices) {
-    std::vector<NoticedKind> kinds;
-    for (const Notice& notice : notices) {
-        const auto known = std::find_if(kinds.begin(), kinds.end(), [&](const NoticedKind& kind) {
-            return kind.first->code == notice.code && !kind.first->point.empty();
-        });
-        if (known == kinds.end() || notice.point.empty()) {
-            kinds.push_back({.first = &notice, .other_points = {}});
-        } else {
-            known->other_points.push_back(notice.point);
-        }
-    }
-    return kinds;
-}
-
-/// "Likewise at 7 more: 'Weir', 'Mill bridge', 'Tramway bank', 'Orchard inlet' and 3 others."; nothing where there are no more.
-std::string likewise(const std::vector<std::string>& points) {
-    if (points.empty()) return "";
-    std::string html = " <em>Likewise at " + std::to_string(points.size()) + " more: ";
-    for (std::size_t i = 0; i < std::min(most_points_of_a_kind, points.size()); ++i) html += (i == 0 ? "'" : ", '") + html_text(points[i]) + "'";
-    if (points.size() > most_points_of_a_kind) html += " and " + std::to_string(points.size() - most_points_of_a_kind) + " others";
-    return html + ".</em>";
-}
-
 /// One item for each kind, so that none is hidden behind many of another.
 std::string eye(const StudyResult& result) {
     if (result.notices.empty()) return "";
     std::string html = "<details class=\"eye\" open><summary>What needs a person's eye, by its effect on the time</summary><ul class=\"notices\">";
-    for (const NoticedKind& kind : noticed_kinds(result.notices)) html += "<li>" + html_text(kind.first->text) + likewise(kind.other_points) + "</li>";
+    for (const NoticedKind& kind : noticed_kinds(result.notices)) {
+        const std::string likewise = likewise_words(kind);
+        html += "<li>" + html_text(kind.first->text) + (likewise.empty() ? "" : " <em>" + html_text(likewise) + "</em>") + "</li>";
+    }
     return html + "</ul><p>All of them stand at the points and in tables/review.csv.</p></details>\n";
 }
 
@@ -176,10 +150,11 @@ std::string peak_cell(const StudyResult& result, const Outlet& outlet) {
 std::string outlet_row(const StudyResult& result, const Outlet& outlet, bool has_section) {
     const ReportScale scale(result.study.report_units);
     const std::string number = std::to_string(outlet.number);
+    const std::string mark = stated_mark(result, outlet);
     const auto notices = std::count_if(result.notices.begin(), result.notices.end(), [&](const Notice& n) { return n.point == outlet.point.name; });
     const std::string box = has_section ? "<input type=\"checkbox\" value=\"" + number + "\" aria-label=\"print " + html_text(outlet.point.name) + "\">" : "";
     return "<tr data-number=\"" + number + "\" data-is=\"" + filter_words(result, outlet) + "\"><td><a href=\"#p" + number + "\">" + html_text(outlet.point.name) + "</a></td><td>" +
-           significant(scale.area(from_fixed_area(outlet.area)), 4) + "</td><td>" + fixed_decimals(outlet.time_of_concentration_s() / 60.0, 3) + "</td><td>" +
+           significant(scale.area(from_fixed_area(area_shown(result, outlet))), 4) + mark + "</td><td>" + fixed_decimals(time_shown_s(result, outlet) / 60.0, 3) + mark + "</td><td>" +
            fixed_decimals(outlet.arrival_s[0] / 60.0, 3) + "</td><td>" + significant(scale.length(from_fixed(outlet.governing.summary.length)), 4) +
            "</td>" + peak_cell(result, outlet) + "<td>" + std::to_string(notices) + "</td><td class=\"only-scripted\">" + box + "</td></tr>\n";
 }
@@ -239,7 +214,10 @@ std::string points_table(const ReportMatter& matter, const Sections& sections) {
     for (const std::string& name : point_columns(result)) html += "<th scope=\"col\"><button type=\"button\">" + name + "</button></th>";
     html += "<th scope=\"col\" class=\"only-scripted\">print</th></tr></thead><tbody>\n";
     for (const std::size_t i : by_area(result)) html += outlet_row(result, result.outlets[i], sections.has_section[i]);
-    return html + "</tbody></table></div>\n<p id=\"reduced\" hidden>The chosen point has no section in this file, which would become too large; rillclock "
+    html += "</tbody></table></div>\n";
+    const std::string mark_words = stated_mark_words(result);
+    if (!mark_words.empty()) html += "<p class=\"mark\">" + html_text(mark_words) + "</p>\n";
+    return html + "<p id=\"reduced\" hidden>The chosen point has no section in this file, which would become too large; rillclock "
                   "explain prints its calculation sheet, and the tables have its figures.</p></section>\n";
 }
 
@@ -256,7 +234,7 @@ std::string reduced_note(const Sections& sections, std::size_t points) {
 }
 
 std::string foot() {
-    return "<footer><p>Made by rillclock " + html_text(version_text) + ". Times are along the governing path of each point; other figures, parameters and "
+    return "<footer><p>Made by rillclock " + html_text(version_text) + ". Times are along the governing path of each point, and where pipes or stated figures act those of the network; other figures, parameters and "
            "checksums are in result.json beside this file.</p><details><summary>Licence of the map's library, Leaflet</summary><pre>" +
            html_text(leaflet_licence()) + "</pre></details></footer>\n";
 }

@@ -6,6 +6,7 @@
 
 #include "chart.hpp"
 #include "html_text.hpp"
+#include "network_words.hpp"
 #include "palette.hpp"
 #include "report_parts.hpp"
 #include "rillclock/io/data_url.hpp"
@@ -247,7 +248,7 @@ Json map_points(const ReportMatter& matter) {
     Json points = Json::array();
     for (const Outlet& outlet : matter.result.outlets) {
         const RowColumn at = matter.result.grid.row_column(outlet.point.cell);
-        points.push_back({{"number", outlet.number}, {"name", outlet.point.name}, {"time", shown_minutes(outlet.time_of_concentration_s())},
+        points.push_back({{"number", outlet.number}, {"name", outlet.point.name}, {"time", shown_minutes(time_shown_s(matter.result, outlet)) + stated_mark(matter.result, outlet)},
                           {"at", {static_cast<double>(at.column) + 0.5, static_cast<double>(at.row) + 0.5}}});
     }
     return points;

@@ -76,7 +76,7 @@ Cells peak_cells(const PeakMatter& matter, std::size_t period) {
 }
 
 Cells peak_head(const PeakMatter& matter) {
-    return {"return period years", "time of concentration min", "C", "intensity " + matter.rain_unit(), "whole area " + matter.flow_unit(), "duration that makes most min",
+    return {"return period years", "time of concentration min", "C with Cf", "intensity " + matter.rain_unit(), "whole area " + matter.flow_unit(), "duration that makes most min",
             "intensity " + matter.rain_unit(), "share of the area %", "peak " + matter.flow_unit(), "peak if times were not binned " + matter.flow_unit(),
             "arrives last", "subareas that make the peak"};
 }

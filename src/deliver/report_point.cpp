@@ -1,6 +1,7 @@
 #include <algorithm>
 
 #include "html_text.hpp"
+#include "network_words.hpp"
 #include "report_parts.hpp"
 #include "rillclock/deliver/report_units.hpp"
 #include "segment_rows.hpp"
@@ -46,12 +47,16 @@ std::string facts(const StudyResult& result, const Outlet& outlet) {
     const std::string area = " " + scale.area_unit();
     const PathSummary& path = outlet.governing.summary;
     const std::optional<MethodSpread>& spread = result.methods[outlet.number - 1].spread;
-    const double tc = outlet.time_of_concentration_s();
+    const double tc = time_shown_s(result, outlet);
+    const bool is_felt = is_stated_felt(result.network, outlet);
+    const std::string at_least = outlet.touches_edge() ? ", at least" : "";
+    const auto area_words = [&](FixedArea fixed) { return significant(scale.area(from_fixed_area(fixed)), 4) + area; };
     std::string html = "<dl class=\"facts\">";
-    html += fact("Time of concentration", shown_minutes(tc) + " min" + (outlet.touches_edge() ? ", at least" : ""));
+    html += fact("Time of concentration", shown_minutes(tc) + " min" + at_least + (is_felt ? ", in the network with pipes and stated figures" : ""));
+    if (is_felt) html += fact("Over the ground alone", shown_minutes(outlet.time_of_concentration_s()) + " min from " + area_words(outlet.area));
     html += fact("Lag, 0.6 of it", shown_minutes(0.6 * tc) + " min");
-    html += fact("Catchment", significant(scale.area(from_fixed_area(outlet.area)), 4) + area + (outlet.touches_edge() ? ", at least" : ""));
-    html += fact("Of it reaching no other point first", significant(scale.area(from_fixed_area(outlet.own_area)), 4) + area);
+    html += fact("Catchment", area_words(area_shown(result, outlet)) + at_least);
+    html += fact("Of it reaching no other point first", area_words(outlet.own_area));
     html += fact("Governing path", significant(scale.length(from_fixed(path.length)), 4) + m + ", falling " + significant(scale.length(path.fall_m), 4) + m);
     html += fact("Longest path", significant(scale.length(from_fixed(outlet.longest.summary.length)), 4) + m + ", " + shown_minutes(outlet.longest.seconds) + " min");
     html += fact("By end-to-end slopes", shown_minutes(outlet.governing.end_to_end_s) + " min");

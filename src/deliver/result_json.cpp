@@ -367,7 +367,10 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
             {"next_point", outlet.next == 0 ? Json(nullptr) : Json(result.outlets[outlet.next - 1].point.name)},
             {"area_m2", number(from_fixed_area(outlet.area), 4)},
             {"own_area_m2", number(from_fixed_area(outlet.own_area), 4)},
+            {"network_area_m2", number(from_fixed_area(result.network.points[outlet.number - 1].area), 4)},
             {"touches_edge", outlet.touches_edge()},
+            {"time_used_s", number(time_shown_s(result, outlet), 6)},
+            {"stated_acts", is_stated_felt(result.network, outlet)},
             {"time_of_concentration_s", number(outlet.time_of_concentration_s(), 6)},
             {"time_of_concentration_min", minutes_json(outlet.time_of_concentration_s())},
             {"greatest_time_min", minutes_json(outlet.greatest_s)},
@@ -400,6 +403,7 @@ Json notices_json(const StudyResult& result) {
                         {"text", notice.text},
                         {"value", or_null(notice.value)},
                         {"threshold", or_null(notice.threshold)},
+                        {"return_period", or_null(notice.return_period)},
                         {"place", notice.place ? place_json(*notice.place) : Json(nullptr)},
                         {"effect_min", minutes_json(notice.effect_s)}});
     }

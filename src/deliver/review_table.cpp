@@ -14,6 +14,7 @@ std::string review_table(const StudyResult& result) {
         .column("notice", [](const Notice& n) { return n.code; })
         .column("value", [](const Notice& n) { return number_or_nothing(n.value); })
         .column("threshold", [](const Notice& n) { return number_or_nothing(n.threshold); })
+        .column("return_period_years", [](const Notice& n) { return n.return_period ? significant(*n.return_period, 6) : std::string(); })
         .column("x", [&result](const Notice& n) { return n.place ? coordinate(result.system, n.place->x) : std::string(); })
         .column("y", [&result](const Notice& n) { return n.place ? coordinate(result.system, n.place->y) : std::string(); })
         .column("effect_min", [](const Notice& n) { return n.effect_s > 0 ? fixed_decimals(n.effect_s / 60.0, 3) : std::string(); })

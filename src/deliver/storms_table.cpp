@@ -9,6 +9,7 @@ struct StormRow {
     const Outlet* outlet = nullptr;
     const PointStorm* storm = nullptr;
     double return_period = 0.0;
+    double used_s = 0.0;  ///< the time its peak is made with
 };
 
 struct IterationRow {
@@ -21,7 +22,7 @@ std::vector<StormRow> storm_rows(const StudyResult& result) {
     std::vector<StormRow> rows;
     for (const Outlet& outlet : result.outlets) {
         for (std::size_t i = 0; i < outlet.storms.size(); ++i) {
-            rows.push_back({&outlet, &outlet.storms[i], result.rain.storms[i].return_period});
+            rows.push_back({&outlet, &outlet.storms[i], result.rain.storms[i].return_period, time_used_s(result.network, outlet, i)});
         }
     }
     return rows;
@@ -64,6 +65,7 @@ std::string storms_table(const StudyResult& result) {
     table.column("point", [](const StormRow& r) { return r.outlet->point.name; })
         .column("return_period_years", [](const StormRow& r) { return significant(r.return_period, 6); })
         .column("time_of_concentration_min", [](const StormRow& r) { return storm_minutes(r.storm->seconds()); })
+        .column("time_used_min", [](const StormRow& r) { return storm_minutes(r.used_s); })
         .column("intensity_" + scale.intensity_unit(),
                 [=](const StormRow& r) {
                     return r.storm->iteration.rows.empty() ? std::string()

@@ -25,7 +25,13 @@ void add_outlet_fields(const StudyResult& result, LayerWriter<Outlet>& layer) {
                [&result](const Outlet& o) { return o.next == 0 ? FieldValue() : FieldValue(result.outlets[o.next - 1].point.name); })
         .field("area_m2", FieldKind::number, "area of the whole catchment", [](const Outlet& o) { return square_metres_of(o.area); })
         .field("own_area_m2", FieldKind::number, "area that reaches no other point first", [](const Outlet& o) { return square_metres_of(o.own_area); })
-        .field("time_of_concentration_min", FieldKind::number, "time along the governing path",
+        .field("network_area_m2", FieldKind::number, "area of all whose water comes to the point, by pipes too",
+               [&result](const Outlet& o) { return square_metres_of(result.network.points[o.number - 1].area); })
+        .field("time_used_min", FieldKind::number, "time with which the point's peaks are made: in the network, where there are pipes or stated figures",
+               [&result](const Outlet& o) { return minutes(time_shown_s(result, o)); })
+        .field("stated_acts", FieldKind::text, "whether pipes or stated figures act on area, time or peak",
+               [&result](const Outlet& o) { return std::string(is_stated_felt(result.network, o) ? "yes" : "no"); })
+        .field("time_of_concentration_min", FieldKind::number, "time along the governing path, over the ground alone",
                [](const Outlet& o) { return minutes(o.time_of_concentration_s()); })
         .field("half_arrived_min", FieldKind::number, "when half of the area has arrived", [](const Outlet& o) { return minutes(o.arrival_s[0]); })
         .field("governing_length_m", FieldKind::number, "length of the governing path",

@@ -67,6 +67,7 @@ public:
             if (!item["point"].is_none()) notice.point = item["point"].cast<std::string>();
             notice.value = number(item["value"]);
             notice.threshold = number(item["threshold"]);
+            notice.return_period = number(item["return_period"]);
             if (!item["place"].is_none()) notice.place = Place{item["place"][py::int_(0)].cast<double>(), item["place"][py::int_(1)].cast<double>()};
             notice.effect_s = number(item["effect_min"]).value_or(0.0) * 60.0;
             notices.push_back(std::move(notice));

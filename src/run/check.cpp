@@ -6,6 +6,7 @@
 #include <optional>
 #include <utility>
 
+#include "rillclock/catchment/study_regions.hpp"
 #include "rillclock/core/error.hpp"
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/paths_geojson.hpp"
@@ -44,6 +45,8 @@ class Checking {
 public:
     explicit Checking(const Study& study) : study_(study) {}
 
+    // A scenario is checked as a study of its own, which has none: one level deep.
+    // NOLINTBEGIN(misc-no-recursion)
     CheckReport report() {
         attempt([&] { check_study(study_); });
         attempt([&] { elevations(); });
@@ -63,11 +66,12 @@ public:
         report_.notices = in_sentences(std::move(report_.notices));
         return std::move(report_);
     }
+    // NOLINTEND(misc-no-recursion)
 
 private:
     /// Input faults are what a check is for; others go on to the caller.
     template <class Work>
-    void attempt(Work work) {
+    void attempt(Work work) {   // NOLINT(misc-no-recursion)
         try {
             work();
         } catch (const Error& error) {
@@ -172,6 +176,7 @@ private:
         }
         note(stated->notices);
         if (!stated->drawn.empty()) {
+            isochrones(stated->drawn.size());
             report_.facts.push_back("catchments: " + std::to_string(stated->drawn.size()) + " drawn, whose points will stand where their water leaves them");
             return;
         }
@@ -195,12 +200,33 @@ private:
         if (const std::string left_out = words_on_left_out_paths(inside); !left_out.empty()) report_.facts.push_back("paths: " + left_out);
         if (const std::string left_out = words_on_left_out_catchments(study_, inside); !left_out.empty()) report_.facts.push_back("catchments: " + left_out);
         attempt([&] { (void)isochrone_catchments(study_, names); });
+        isochrones(inside);
         if (inside == 0) report_.problems.push_back("none of the points in '" + *study_.points.file +
                                                     "' lies within the elevations; check their reference system");
     }
 
+    /// How many bands there may be, and how long water may then take: nobody knows the times beforehand.
+    void isochrones(std::size_t points) {
+        const IsochroneStudy& asked = study_.output.isochrones;
+        if (!asked.step || points == 0) return;
+        const std::size_t most = most_isochrone_bands(points);
+        const std::size_t shapes = points + 1 + asked.catchments.size();
+        const double minutes = in_minutes(*asked.step) * static_cast<double>(most) / static_cast<double>(shapes);
+        const std::string step = isochrone_step_text(*asked.step);
+        const std::string bound = "at most " + std::to_string(most) + " bands are made in all, which " + std::to_string(shapes) +
+                                  " subareas and catchments reach where their water takes " + significant(minutes, 3) + " min on an average";
+        report_.facts.push_back("isochrones: every " + step + "; " + bound);
+        constexpr double usual_minutes = 30.0;
+        if (!(minutes < usual_minutes)) return;
+        report_.notices.push_back({.code = "isochrones-many",
+                                   .text = "isochrones every " + step + " will be refused where they are too many: " + bound +
+                                           "; state a longer step in output.isochrones, or how many bands there may be, such as \"12 bands\"",
+                                   .value = minutes,
+                                   .threshold = usual_minutes});
+    }
+
     /// What a scenario states, and what is said of it that is not said of the study itself.
-    void add_scenario(const ScenarioStudy& scenario) {
+    void add_scenario(const ScenarioStudy& scenario) {   // NOLINT(misc-no-recursion)
         const std::string begin = "scenario " + scenario.name + ": ";
         std::vector<std::string> keys;
         for (const StatedChange& change : scenario.changes) {

@@ -46,6 +46,12 @@ void require_same_points(const ResultTables& before, const ResultTables& after) 
                       "; run both studies with the same points file");
 }
 
+/// Times are compared by a column that every result of this program has: without it nothing would seem to get worse.
+void require_times(const ResultTables& tables) {
+    if (tables.outlets.ending_of("time_used_min")) return;
+    throw input_error("'" + tables.folder.string() + "/tables/outlets.csv' has no column time_used_min, by which points are compared; run its study again");
+}
+
 std::string same_unit(const ResultTable& before, const ResultTable& after, std::string_view stem) {
     const std::string unit = before.ending_of(stem).value_or("");
     if (unit == after.ending_of(stem).value_or("")) return unit;
@@ -68,6 +74,8 @@ class Comparing {
 public:
     Comparing(const ResultTables& before, const ResultTables& after, double tolerance)
         : before_(before), after_(after), peaks_before_(peak_rows(before.peaks)), peaks_after_(peak_rows(after.peaks)) {
+        require_times(before);
+        require_times(after);
         require_same_points(before, after);
         found_.before = before.folder.string();
         found_.after = after.folder.string();
@@ -92,7 +100,8 @@ private:
     [[nodiscard]] ComparedPoint point(std::size_t row, std::size_t other) const {
         ComparedPoint found;
         found.name = before_.outlets.text(row, "name");
-        found.time_min = figures(row, other, "time_of_concentration_min");
+        found.time_min = figures(row, other, "time_used_min");
+        found.ground_time_min = figures(row, other, "time_of_concentration_min");
         found.length = figures(row, other, "governing_length_" + found_.length_unit);
         found.lead_min = figures(row, other, "lead_min");
         found.last_before = before_.outlets.text(row, "last_subarea");
@@ -116,7 +125,8 @@ private:
             const auto both = [&, place = row](const std::string& column) {
                 return TwoFigures{before_.peaks->number(place, column), after_.peaks->number(other->second, column)};
             };
-            found.push_back({.return_period = period, .coefficient = both("runoff_coefficient"), .peak = both("peak_" + found_.flow_unit)});
+            found.push_back({.return_period = period, .coefficient = both("runoff_coefficient_with_factor"), 
+                             .whole_area_peak = both("whole_area_peak_" + found_.flow_unit), .peak = both("peak_" + found_.flow_unit)});
         }
         return found;
     }

@@ -69,6 +69,18 @@ Notices all_notices(const std::vector<Notices>& noticed) {
     return in_sentences(std::move(all));
 }
 
+/// Where nothing else says where it is, what was noticed of a point is at the point.
+Notices at_their_points(Notices notices, const std::vector<Outlet>& outlets, const Grid& grid) {
+    std::map<std::string, Cell> cells;
+    for (const Outlet& outlet : outlets) cells.emplace(outlet.point.name, outlet.point.cell);
+    for (Notice& notice : notices) {
+        const auto at = cells.find(notice.point);
+        if (notice.point.empty() || notice.place || at == cells.end()) continue;
+        notice.place = grid.centre(at->second);
+    }
+    return notices;
+}
+
 std::vector<CellLabel> labels_of(const std::vector<DesignPoint>& points) {
     std::vector<CellLabel> labels;
     for (const DesignPoint& point : points) labels.push_back({point.cell, static_cast<std::uint32_t>(labels.size() + 1)});
@@ -252,9 +264,9 @@ WorkedOut work_out(Task& task, const LaidOn& laid, const CommonWork& common, con
                                       histograms.get(), cells, progress);
     const Depressions depressions = stage(progress, "depressions", cells, [&] { return depressions_of(*travel, outlets); });
     const std::vector<DrawnDifference> drawn = drawn_differences(laid.stated, points.points, *regions, *travel, terrain);
-    const Notices notices = all_notices({terrain.notices, notices_of(depressions, ground.metres_per_elevation_unit), laid.zones.notices,
+    const Notices notices = at_their_points(all_notices({terrain.notices, notices_of(depressions, ground.metres_per_elevation_unit), laid.zones.notices,
                                          zone_notices(rain, outlets, terrain.grid), notices_of_ranges(study, surface), surface.notices,
-                                         rain.notices, points.notices, notices_of(drawn, points.points), network.notices, peaks.notices, notices_of(outlets, terrain.grid), notices_of_files(study, outlets.size())});
+                                         rain.notices, points.notices, notices_of(drawn, points.points), network.notices, peaks.notices, notices_of(outlets, terrain.grid), notices_of_files(study, outlets.size())}), outlets, terrain.grid);
     const CarriedWords reviewed = carry_over(words, notices);
     const std::vector<InputFile> inputs = inputs_of();
     const DataSummary data{.cells = cells, .void_cells = terrain.void_cells, .classes = surface.classes, .soils = surface.soils};

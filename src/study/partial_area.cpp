@@ -4,38 +4,66 @@
 #include <cmath>
 #include <numeric>
 
+#include "rillclock/core/error.hpp"
+
 namespace rillclock {
 namespace {
 
 double product_of(FixedArea runoff, Intensity intensity) { return from_fixed_area(runoff) * intensity.si(); }
 
-/// Sums of C·A before each bin, and the most within any run of bins.
+using Runoff = std::vector<FixedArea>;
+
+Runoff sums_before(const Runoff& runoff) {
+    Runoff before(runoff.size() + 1, 0);
+    std::partial_sum(runoff.begin(), runoff.end(), before.begin() + 1);
+    return before;
+}
+
+/// The most C·A within any run of bins: what has arrived when it ends, by one placing of the land, less what had when it began, by
+/// another. Land in its last bins at the end and in its first ones at the beginning counts no more than what must arrive within
+/// (and negative where the run is shorter than what is not sure); the other way round, what may.
 class MostWithin {
 public:
-    explicit MostWithin(const ArrivalCurve& curve) : before_(curve.runoff.size() + 1, 0) {
-        std::partial_sum(curve.runoff.begin(), curve.runoff.end(), before_.begin() + 1);
-    }
+    MostWithin(const Runoff& at_the_beginning, const Runoff& at_the_end, FixedArea whole)
+        : begun_(sums_before(at_the_beginning)), ended_(sums_before(at_the_end)), whole_(whole) {}
 
     struct Run {
         std::int64_t first = 0;
         FixedArea runoff = 0;
     };
     [[nodiscard]] Run of(std::int64_t bins) const {
-        const auto all = static_cast<std::int64_t>(before_.size()) - 1;
+        const auto all = static_cast<std::int64_t>(ended_.size()) - 1;
         if (bins <= 0) return {};
-        if (bins >= all) return {0, before_.back()};
+        if (bins >= all) return {0, whole_};
         Run best;
         for (std::int64_t first = 0; first + bins <= all; ++first) {
-            const FixedArea within = before_[static_cast<std::size_t>(first + bins)] - before_[static_cast<std::size_t>(first)];
+            const FixedArea within = ended_[static_cast<std::size_t>(first + bins)] - begun_[static_cast<std::size_t>(first)];
             if (within > best.runoff) best = {first, within};
         }
         return best;
     }
-    [[nodiscard]] FixedArea whole() const { return before_.back(); }
+    [[nodiscard]] FixedArea whole() const { return whole_; }
 
 private:
-    std::vector<FixedArea> before_;
+    Runoff begun_;
+    Runoff ended_;
+    FixedArea whole_;
 };
+
+/// Which land counts to a run of bins.
+enum class Counted { as_spread, what_must, what_may };
+
+MostWithin most_within(const ArrivalCurve& curve, Counted counted) {
+    const FixedArea whole = std::accumulate(curve.runoff.begin(), curve.runoff.end(), FixedArea{0});
+    const Runoff& earliest = curve.by_earliest.empty() ? curve.runoff : curve.by_earliest;
+    const Runoff& latest = curve.by_latest.empty() ? curve.runoff : curve.by_latest;
+    switch (counted) {
+        case Counted::as_spread: return {curve.runoff, curve.runoff, whole};
+        case Counted::what_must: return {earliest, latest, whole};
+        case Counted::what_may: return {latest, earliest, whole};
+    }
+    throw bug("land that counts in no known way");
+}
 
 /// How many bins a window of a duration holds.
 struct BinsInWindow {
@@ -50,8 +78,8 @@ struct BinsInWindow {
 /// Tries durations of whole numbers of bins.
 class Search {
 public:
-    Search(const ArrivalCurve& curve, const PartialAreaSearch& asked, BinsInWindow held = {})
-        : curve_(curve), asked_(asked), most_(curve), held_(held) {}
+    Search(const ArrivalCurve& curve, const PartialAreaSearch& asked, Counted counted = Counted::as_spread, BinsInWindow held = {})
+        : curve_(curve), asked_(asked), most_(most_within(curve, counted)), held_(held) {}
 
     [[nodiscard]] RainWindow window(Duration duration) const {
         if (duration >= asked_.whole_time) return whole(duration);
@@ -91,7 +119,7 @@ private:
     }
 
     /// Looks among the durations of `first` to `last` bins. No recursion deeper than the number of halvings.
-    void between(std::int64_t first, std::int64_t last) {
+    void between(std::int64_t first, std::int64_t last) {   // NOLINT(misc-no-recursion)
         const RainWindow shortest = window(curve_.bin * static_cast<double>(first));
         const RainWindow longest = window(curve_.bin * static_cast<double>(last));
         offer(shortest);
@@ -117,10 +145,10 @@ std::optional<PartialPeak> partial_peak(const ArrivalCurve& curve, const Partial
     if (!search.rain(longest) || curve.runoff.empty()) return std::nullopt;
     Search as_binned(curve, search);
     PartialPeak peak{.best = as_binned.best(), .whole = as_binned.whole(longest)};
-    // A cell lies up to `spread` widths after its bin's place: so many bins more or fewer could belong to a window, and
-    // one more since durations between two whole numbers of bins are not tried.
-    peak.least_product = Search(curve, search, {.least = 0, .more = 1 - curve.spread}).best().product;
-    peak.greatest_product = Search(curve, search, {.more = 1 + curve.spread}).best().product;
+    // C·A of each bin is rounded to a square centimetre, so that sums over other bins may miss `best` by some of these.
+    peak.least_product = std::min(peak.best.product, Search(curve, search, Counted::what_must, {.least = 0}).best().product);
+    // A stretch that does not begin with a bin touches one more, and one of up to a bin longer, which is not tried, another.
+    peak.greatest_product = std::max(peak.best.product, Search(curve, search, Counted::what_may, {.more = 2}).best().product);
     return peak;
 }
 

@@ -1,6 +1,7 @@
 #include "peak_notices.hpp"
 
 #include <algorithm>
+#include <utility>
 
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/hydraulics/rational.hpp"
@@ -27,17 +28,22 @@ void tell_area(const Outlet& outlet, FixedArea all, const Study& study, Notices&
                        .threshold = in_acres(limit)});
 }
 
-void tell_time(const Outlet& outlet, const std::vector<PointPeak>& peaks, Duration least, Notices& notices) {
+std::string years_text(double return_period) { return significant(return_period, 6) + " years"; }
+
+void tell_time(const Outlet& outlet, const std::vector<PointPeak>& peaks, const PeakInputs& in, Notices& notices) {
+    const Duration least = in.study.peaks.least_time.value_or(standard_least_time);
     const auto shortest = std::min_element(peaks.begin(), peaks.end(), [](const PointPeak& a, const PointPeak& b) {
         return a.whole_time < b.whole_time;
     });
     if (shortest == peaks.end() || !(shortest->whole_time < least)) return;
+    const double years = in.rain.storms[static_cast<std::size_t>(shortest - peaks.begin())].return_period;
     notices.push_back({.code = "time-below-least",
-                       .text = "the time of '" + outlet.point.name + "', " + minutes_text(shortest->whole_time) +
-                               ", is below the least; its peak is that of rain of " + minutes_text(least),
+                       .text = "the time of '" + outlet.point.name + "', " + minutes_text(shortest->whole_time) + " under the storm of " +
+                               years_text(years) + ", is below the least; its peak is that of rain of " + minutes_text(least),
                        .point = outlet.point.name,
                        .value = in_minutes(shortest->whole_time),
                        .threshold = in_minutes(least),
+                       .return_period = years,
                        .effect_s = in_seconds(least - shortest->whole_time)});
 }
 
@@ -45,26 +51,40 @@ bool has_any(const std::vector<PointPeak>& peaks) {
     return std::any_of(peaks.begin(), peaks.end(), [](const PointPeak& p) { return p.is_there(); });
 }
 
-void tell_lacking(const Outlet& outlet, const std::vector<PointPeak>& peaks, Notices& notices) {
+void tell_lacking(const Outlet& outlet, const std::vector<PointPeak>& peaks, const StudyRain& rain, Notices& notices) {
     const auto lacking = std::find_if(peaks.begin(), peaks.end(), [](const PointPeak& p) { return !p.is_there(); });
     if (lacking == peaks.end()) return;
+    const double years = rain.storms[static_cast<std::size_t>(lacking - peaks.begin())].return_period;
     notices.push_back({.code = "no-peak",
-                       .text = "'" + outlet.point.name + "' has no peak flow: " + lacking->why_not,
-                       .point = outlet.point.name});
+                       .text = "'" + outlet.point.name + "' has no peak flow of " + years_text(years) + ": " + lacking->why_not,
+                       .point = outlet.point.name,
+                       .return_period = years});
 }
 
-void tell_coefficient(const Outlet& outlet, const std::vector<PointPeak>& peaks, Notices& notices) {
-    for (const PointPeak& peak : peaks) {
-        if (!(peak.coefficient.uncapped > peak.coefficient.value * (1 + 1e-12))) continue;
-        notices.push_back({.code = "coefficient-cut",
-                           .text = "with its frequency factor the runoff coefficient of some land above '" + outlet.point.name +
-                                   "' passes 1 and was cut to it; the mean would be " + significant(peak.coefficient.uncapped, 3) +
-                                   " instead of " + significant(peak.coefficient.value, 3),
-                           .point = outlet.point.name,
-                           .value = peak.coefficient.uncapped,
-                           .threshold = 1.0});
-        return;
-    }
+/// Two numbers with as many digits as tell them apart, three at least.
+std::pair<std::string, std::string> told_apart(double a, double b) {
+    constexpr int most_digits = 15;
+    int digits = 3;
+    while (digits < most_digits && significant(a, digits) == significant(b, digits)) ++digits;
+    return {significant(a, digits), significant(b, digits)};
+}
+
+/// Of the return period whose factor passes 1 by most.
+void tell_coefficient(const Outlet& outlet, const std::vector<PointPeak>& peaks, const StudyRain& rain, Notices& notices) {
+    const auto most = std::max_element(peaks.begin(), peaks.end(), [](const PointPeak& a, const PointPeak& b) {
+        return a.coefficient.greatest < b.coefficient.greatest;
+    });
+    if (most == peaks.end() || !(most->coefficient.uncapped > most->coefficient.value * (1 + 1e-12))) return;
+    const double years = rain.storms[static_cast<std::size_t>(most - peaks.begin())].return_period;
+    const auto [cut, uncut] = told_apart(most->coefficient.value, most->coefficient.uncapped);
+    notices.push_back({.code = "coefficient-cut",
+                       .text = "with the frequency factor of " + years_text(years) + " the runoff coefficient of some land above '" +
+                               outlet.point.name + "' would be " + significant(most->coefficient.greatest, 4) +
+                               " and was cut to 1; the mean of its catchment is " + cut + ", and would be " + uncut + " without that",
+                       .point = outlet.point.name,
+                       .value = most->coefficient.greatest,
+                       .threshold = 1.0,
+                       .return_period = years});
 }
 
 /// A coefficient of the user's own beside a land use is held against what is printed for that.
@@ -85,6 +105,31 @@ void tell_range(const CoverClass& cover, Notices& notices) {
     }
 }
 
+std::string flow_text(Discharge flow, ReportUnits units) {
+    switch (units) {
+        case ReportUnits::us: return significant(in_cubic_feet_per_second(flow), 3) + " ft3/s";
+        case ReportUnits::si: return significant(in_cubic_metres_per_second(flow), 3) + " m3/s";
+    }
+    return "";
+}
+
+/// The peak that comes to the inlet is held against what the pipe takes when just full, however the pipe was timed.
+void tell_pipe(const PipeRun& run, const PointPeak& peak, const PeakInputs& in, Notices& notices) {
+    if (!peak.is_there() || !(peak.partial > run.capacity)) return;
+    const ReportUnits units = in.study.report_units;
+    const auto number = units == ReportUnits::us ? in_cubic_feet_per_second : in_cubic_metres_per_second;
+    const double years = in.rain.raster_storm().return_period;
+    const bool runs_full = !run.design_flow || *run.design_flow > run.capacity;
+    notices.push_back({.code = "pipe-too-small",
+                       .text = "the pipe from '" + run.pipe->from + "' to '" + run.pipe->to + "' carries " + flow_text(run.capacity, units) +
+                               " just full, less than the peak of " + years_text(years) + " that comes to it, " + flow_text(peak.partial, units) +
+                               "; " + (runs_full ? "its velocity is that of a full pipe, and " : "") + "what it cannot take is not led elsewhere",
+                       .point = run.pipe->from,
+                       .value = number(peak.partial),
+                       .threshold = number(run.capacity),
+                       .return_period = years});
+}
+
 void tell_periods(const Study& study, const StudyRain& rain, Notices& notices) {
     const FrequencyFactors factors = study.peaks.frequency_factors.value_or(FrequencyFactors::wright_mclaughlin);
     for (const StudyStorm& storm : rain.storms) {
@@ -93,7 +138,8 @@ void tell_periods(const Study& study, const StudyRain& rain, Notices& notices) {
         notices.push_back({.code = "frequency-factor-not-printed",
                            .text = "no frequency factor is printed for " + significant(storm.return_period, 6) +
                                    " years; that of the nearest printed period was taken",
-                           .value = storm.return_period});
+                           .value = storm.return_period,
+                           .return_period = storm.return_period});
     }
 }
 
@@ -104,12 +150,13 @@ Notices peak_notices(const PeakInputs& in, const std::vector<std::vector<PointPe
     const bool any = std::any_of(points.begin(), points.end(), has_any);
     if (!any) notices.push_back({.code = "no-peak", .text = "no point has a peak flow: " + points.front().front().why_not});
     for (std::size_t i = 0; i < points.size(); ++i) {
-        if (any) tell_lacking(in.outlets[i], points[i], notices);
+        if (any) tell_lacking(in.outlets[i], points[i], in.rain, notices);
         if (!has_any(points[i])) continue;
-        tell_coefficient(in.outlets[i], points[i], notices);
+        tell_coefficient(in.outlets[i], points[i], in.rain, notices);
         tell_area(in.outlets[i], in.network.points[i].area, in.study, notices);
-        tell_time(in.outlets[i], points[i], in.study.peaks.least_time.value_or(standard_least_time), notices);
+        tell_time(in.outlets[i], points[i], in, notices);
     }
+    for (const PipeRun& run : in.network.pipes) tell_pipe(run, points[run.inlet - 1][in.rain.raster], in, notices);
     if (in.study.peaks.coefficient.value_or(CoefficientSource::book) == CoefficientSource::book) {
         for (const CoverClass& cover : in.book.classes()) tell_range(cover, notices);
     }

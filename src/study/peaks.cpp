@@ -82,11 +82,11 @@ private:
         std::optional<BinnedLand> binned;
         for (std::size_t period = 0; period < outlet.storms.size(); ++period) {
             const NetworkStorm& storm = storm_at(number, period);
-            const Placing placing(in_.binned, storm.storm_factor);
+            const BinPlacing placing(in_.binned, storm.storm_factor);
             const bool same = binned && storm.storm_factor == storm_at(number, period - 1).storm_factor;
             if (!same) binned.emplace(catchment, placing);
             PointPeak peak;
-            peak.whole_time = seconds(in_.network.is_edited ? from_fixed(storm.time) : outlet.storms[period].seconds());
+            peak.whole_time = seconds(time_used_s(in_.network, outlet, period));
             peak.why_not = lacking_coefficient(land, coefficients_, period);
             if (peak.is_there()) work_out(peak, {number, period, land, *binned, placing}, subareas);
             peaks.push_back(std::move(peak));
@@ -99,7 +99,7 @@ private:
         std::size_t period;
         const LandAreas& land;
         const BinnedLand& binned;
-        const Placing& placing;
+        const BinPlacing& placing;
     };
 
     /// The rain of the point's zone.
@@ -167,9 +167,10 @@ private:
     [[nodiscard]] Within within_window(const RainWindow& window, const ArrivalHistogram& own, const At& at) {
         Within within;
         for (const HistogramEntry& entry : own.entries()) {
-            if (!window.holds(at.placing.bin(entry))) continue;
-            within.runoff_m2 += coefficients_.capped(entry.kind, at.period) * from_fixed_area(entry.area);
-            within.area_m2 += from_fixed_area(entry.area);
+            FixedArea area = 0;
+            at.placing.share_out(entry, [&](std::int64_t bin, FixedArea part) { area += window.holds(bin) ? part : 0; });
+            within.runoff_m2 += coefficients_.capped(entry.kind, at.period) * from_fixed_area(area);
+            within.area_m2 += from_fixed_area(area);
         }
         return within;
     }

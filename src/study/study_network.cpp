@@ -1,6 +1,7 @@
 #include "rillclock/study/study_network.hpp"
 
 #include <algorithm>
+#include <cmath>
 #include <utility>
 
 #include "rillclock/core/error.hpp"
@@ -82,7 +83,6 @@ private:
             const Discharge flow = design_flow(network(), number, coefficients);
             velocities_[number - 1] = pipe_velocity(*edit.pipe, flow);
             flows_.emplace_back(number, flow);
-            tell_if_too_small(*edit.pipe, flow);
         }
     }
 
@@ -106,19 +106,8 @@ private:
         notices_.push_back({.code = "network-of-one-storm",
                             .text = "own times, ways and arrivals in the network, and with them partial areas, are those of channels under the flow of " +
                                     significant(in_.rain.raster_storm().return_period, 6) +
-                                    " years for all return periods; run the study for one return period at a time to have those of another"});
-    }
-
-    void tell_if_too_small(const StatedPipe& pipe, Discharge flow) {
-        const Discharge capacity = full_bore_capacity(pipe.pipe, pipe.bed);
-        if (!(flow > capacity)) return;
-        notices_.push_back({.code = "pipe-too-small",
-                            .text = "the pipe from '" + pipe.from + "' to '" + pipe.to + "' carries " + significant(in_cubic_metres_per_second(capacity), 3) +
-                                    " m3/s just full, less than the " + significant(in_cubic_metres_per_second(flow), 3) +
-                                    " m3/s that come to it; its velocity is that of a full pipe, and what it cannot take is not led elsewhere",
-                            .point = pipe.from,
-                            .value = in_cubic_metres_per_second(flow),
-                            .threshold = in_cubic_metres_per_second(capacity)});
+                                    " years for all return periods; run the study for one return period at a time to have those of another",
+                            .return_period = in_.rain.raster_storm().return_period});
     }
 
     [[nodiscard]] std::vector<PipeRun> runs() const {
@@ -128,7 +117,7 @@ private:
             const auto number = static_cast<PointNumber>(at - edits_.begin() + 1);
             const auto flow = std::find_if(flows_.begin(), flows_.end(), [&](const auto& f) { return f.first == number; });
             const Speed velocity = velocities_[number - 1];
-            made.push_back({.pipe = &pipe, .capacity = full_bore_capacity(pipe.pipe, pipe.bed),
+            made.push_back({.pipe = &pipe, .inlet = number, .capacity = full_bore_capacity(pipe.pipe, pipe.bed),
                             .design_flow = flow == flows_.end() ? std::nullopt : std::optional(flow->second),
                             .velocity = velocity, .time = pipe.length / velocity});
         }
@@ -144,6 +133,24 @@ private:
 };
 
 }  // namespace
+
+double time_used_s(const StudyNetwork& network, const Outlet& outlet, std::size_t period) {
+    if (network.is_edited) return from_fixed(network.points[outlet.number - 1].storms[period].time);
+    return outlet.storms.empty() ? outlet.time_of_concentration_s() : outlet.storms[period].seconds();
+}
+
+bool is_stated_felt(const StudyNetwork& network, const Outlet& outlet) {
+    if (!network.is_edited) return false;
+    const PointNetwork& point = network.points[outlet.number - 1];
+    // The network counts all water, so its time is held against the greatest one; a millisecond is far above what rounding makes.
+    const bool has_other_time = std::abs(from_fixed(point.raster_storm().time) - outlet.greatest_s) > 1e-3;
+    if (point.area != outlet.area || has_other_time) return true;
+    return std::any_of(point.stated_above.begin(), point.stated_above.end(), [&](PointNumber number) {
+        const PointOverride* stated = network.edits[number - 1].stated;
+        // What is stated of its own way or pipe acts further down alone.
+        return number != outlet.number || (stated != nullptr && (stated->time || stated->restated || stated->coefficient));
+    });
+}
 
 StudyNetwork study_network(const NetworkInputs& in) { return NetworkWork(in).work(); }
 

@@ -2,6 +2,7 @@
 """Two results side by side: what changes at each point and in each cell, what gets worse, and what cannot be compared."""
 import csv
 import json
+import shutil
 import unittest
 
 import numpy as np
@@ -42,9 +43,9 @@ class TwoResults(CommandTest):
         self.run_study("before", "wood.tif")
         self.run_study("after", "street.tif")
 
-    def run_study(self, folder, cover, points='auto_area = "3 %"', units="si"):
+    def run_study(self, folder, cover, points='auto_area = "3 %"', units="si", more=""):
         (self.folder / f"{folder}.toml").write_text(
-            STUDY.format(cover=cover, folder=folder, points=points).replace('"si"', f'"{units}"'))
+            STUDY.format(cover=cover, folder=folder, points=points).replace('"si"', f'"{units}"') + more)
         self.repeated("run", f"{folder}.toml", "-q")
 
     def times(self, folder):
@@ -107,7 +108,7 @@ class TwoResults(CommandTest):
         for folder, factor in (("before", 1.0), ("after", 1.2)):
             with open(self.folder / folder / "tables/peaks.csv", "w", encoding="utf-8", newline="") as file:
                 writer = csv.writer(file)
-                writer.writerow(["point", "return_period_years", "runoff_coefficient", "whole_area_peak_m3_per_s", "peak_m3_per_s"])
+                writer.writerow(["point", "return_period_years", "runoff_coefficient_with_factor", "whole_area_peak_m3_per_s", "peak_m3_per_s"])
                 for number, name in enumerate(self.times("before")):
                     writer.writerow([name, 10, 0.5 * factor, 1.0, 2.0 * (factor if number == 0 else 1.0)])
         run = self.rillclock("compare", "before", "after", "--json", "--out", "change")
@@ -117,6 +118,74 @@ class TwoResults(CommandTest):
         self.assertEqual(first["peaks"][0]["runoff_coefficient"]["change"], 0.1)
         rows = table(self.folder / "change/tables/compared_peaks.csv")
         self.assertEqual(rows[0]["peak_change_percent"], "20.000")
+
+    def write_peaks(self, folder, figures):
+        """Whole-area and partial-area peak of each point and return period."""
+        with open(self.folder / folder / "tables/peaks.csv", "w", encoding="utf-8", newline="") as file:
+            writer = csv.writer(file)
+            writer.writerow(["point", "return_period_years", "whole_area_peak_m3_per_s", "peak_m3_per_s"])
+            writer.writerows(figures)
+
+    def test_a_whole_area_peak_alone_makes_a_point_worse_and_the_rows_that_grow_most_come_first(self):
+        names = sorted(self.times("before"), reverse=True)[:3]
+        self.write_peaks("before", [(name, years, 1.0, 2.0) for name in names for years in (2, 10)])
+        shutil.copytree(self.folder / "before", self.folder / "copy")
+        grown = {(names[1], 10): (1.3, 2.0), (names[2], 2): (1.0, 2.2), (names[0], 2): (0.8, 1.9)}
+        self.write_peaks("copy", [(name, years, *grown.get((name, years), (1.0, 2.0))) for name in names for years in (2, 10)])
+        run = self.rillclock("compare", "before", "copy", "--json", "--out", "change")
+        self.assertEqual(run.returncode, 4, run.stderr)
+        self.assertEqual(json.loads(run.stdout)["worse"], [names[1], names[2]])
+        rows = table(self.folder / "change/tables/compared_peaks.csv")
+        self.assertEqual([(r["point"], r["return_period_years"]) for r in rows[:2]], [(names[1], "10"), (names[2], "2")])
+        self.assertEqual((rows[-1]["point"], rows[-1]["whole_area_peak_change_percent"]), (names[0], "-20.000"))
+        self.assertEqual((rows[0]["whole_area_peak_change_percent"], rows[0]["peak_change_percent"]), ("30.000", "0.000"))
+
+    def own_points(self):
+        """The points of the results as a file, to which pipes and overrides may belong; what names it in a study."""
+        rows = table(self.folder / "before/tables/outlets.csv")
+        write_points(self.folder / "own.geojson", [(r["name"], (float(r["x"]), float(r["y"]))) for r in rows])
+        return 'file = "own.geojson"\nname = "name"'
+
+    def test_a_time_that_only_an_override_or_a_pipe_changes_is_compared(self):
+        """The ground is the same to the last digit; a stated time is half of it, and a pipe leads one point's water to another."""
+        points = self.own_points()
+        self.run_study("own", "wood.tif", points=points)
+        times = self.times("own")
+        name = max(times, key=times.get)
+        inlet = next(other for other in times if other != name)
+        (self.folder / "overrides.csv").write_text(f"point,time\n{name},{times[name] / 2} min\n")
+        (self.folder / "pipes.csv").write_text(f"from,to,length,diameter,n,slope\n{name},{inlet},900 m,1 m,0.013,0.001\n")
+        self.run_study("stated", "wood.tif", points=points, more='[timing]\noverrides = "overrides.csv"\n')
+        self.run_study("piped", "wood.tif", points=points + '\npipes = "pipes.csv"')
+        run = self.rillclock("compare", "own", "stated", "--json", "--out", "change")
+        self.assertEqual(run.returncode, 4, run.stdout + run.stderr)
+        said = json.loads(run.stdout)
+        self.assertEqual(said["worse"], [name])
+        point = next(p for p in said["points"] if p["name"] == name)
+        self.assertEqual((point["ground_time_min"]["change"], round(point["time_min"]["change_percent"])), (0, -50))
+        row = table(self.folder / "change/tables/comparison.csv")[0]
+        self.assertEqual((row["point"], row["worse"], float(row["ground_time_change_min"])), (name, "yes", 0))
+        self.assertEqual(self.rillclock("compare", "stated", "own").returncode, 0)
+        later = json.loads(self.rillclock("compare", "own", "piped", "--json").stdout)["points"]
+        end = next(p for p in later if p["name"] == inlet)
+        self.assertEqual((end["ground_time_min"]["change"], end["time_min"]["change"] > 0), (0, True))
+
+    def test_a_scenario_of_an_override_alone_is_seen_by_its_comparison(self):
+        points, times = self.own_points(), self.times("before")
+        name = max(times, key=times.get)
+        (self.folder / "overrides.csv").write_text(f"point,time\n{name},{times[name] / 2} min\n")
+        study = self.folder / "both.toml"
+        study.write_text(STUDY.format(cover="wood.tif", folder="both", points=points) + '[scenario.known]\ntiming.overrides = "overrides.csv"\n')
+        said = self.done("run", study)
+        self.assertIn(f"the worst is '{name}'", said)
+        rows = table(self.folder / "both/comparison-known/tables/comparison.csv")
+        self.assertEqual((rows[0]["point"], rows[0]["worse"]), (name, "yes"))
+        self.assertEqual([r["worse"] for r in rows[1:]], ["no"] * (len(rows) - 1))
+
+    def test_a_result_without_the_times_that_are_compared_is_refused(self):
+        path = self.folder / "after/tables/outlets.csv"
+        path.write_text(path.read_text().replace("time_used_min", "time_min"))
+        self.refused(1, "compare", "before", "after", says=("time_used_min", "run its study again"))
 
     def test_what_is_no_result_is_refused(self):
         self.refused(1, "compare", "before", "nowhere", says=("no folder 'nowhere'",))

@@ -31,7 +31,7 @@ class Runoff(unittest.TestCase):
         for scope, point in sorted({(b["of"], b["point"]) for b in self.bands}):
             running = 0.0
             for band in self.bands_of(scope, point):
-                ca = sum(float(by_hand[p["subarea"]][f"runoff_coefficient_{YEARS}yr"]) * p["area_m2"] for p in band["subareas"])
+                ca = sum(float(by_hand[p["subarea"]][f"runoff_coefficient_with_factor_{YEARS}yr"]) * p["area_m2"] for p in band["subareas"])
                 running += ca
                 minutes = min(band["to_min"], greatest[scope, point])
                 flow = running * intensity(YEARS, minutes) / 3.6e6
@@ -194,6 +194,17 @@ class Wrongly(CommandTest):
         for bad in ("0 bands", "2.5 bands", "some bands", "1001 bands", "-3 bands"):
             with self.subTest(bad):
                 self.refused(1, "check", self.study(f'isochrones = "{bad}"'), says=("output.isochrones", "12 bands"))
+
+    def test_more_bands_than_the_bound_are_refused_and_check_says_so_before(self):
+        study = self.study('isochrones = "1 s"')
+        check = self.rillclock("check", study)
+        self.assertEqual(check.returncode, 0)
+        self.assertIn("isochrones: every 1 s; at most 10000 bands", check.stdout)
+        self.assertIn("will be refused where they are too many", check.stderr)
+        self.refused(1, "run", study, says=("every 1 s", "more than 10000 bands", '"12 bands"'))
+        check = self.rillclock("check", self.study('isochrones = "5 min"'))
+        self.assertIn("isochrones: every 5 min; at most 10000 bands", check.stdout)
+        self.assertNotIn("too many", check.stderr)
 
     def test_smoothing_without_isochrones_is_refused(self):
         self.refused(1, "run", self.study('isochrone_borders = "smoothed"'), says=("asks for none", 'isochrones = "5 min"'))

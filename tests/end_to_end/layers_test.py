@@ -290,7 +290,7 @@ class Peaks(unittest.TestCase):
         self.assertEqual(len(found), len(self.tables["peaks"]))
         for feature, row in zip(found, self.tables["peaks"]):
             self.assertEqual((feature["point"], str(int(feature["return_period_years"]))), (row["point"], row["return_period_years"]))
-            for field in ("whole_area_peak_m3_per_s", "peak_m3_per_s", "peak_duration_min", "runoff_coefficient", "intensity_mm_per_h",
+            for field in ("whole_area_peak_m3_per_s", "peak_m3_per_s", "peak_duration_min", "runoff_coefficient_with_factor", "intensity_mm_per_h",
                           "peak_share_of_area_percent"):
                 self.assertAlmostEqual(feature[field] / float(row[field]), 1, delta=1e-5, msg=field)
             self.assertEqual((feature["last_subarea"], feature["peak_subareas"]), (row["last_subarea"], row["peak_subareas"]))

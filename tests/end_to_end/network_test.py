@@ -35,8 +35,20 @@ class DemoNetwork(CommandTest):
         graph.remove_node("source")
         self.assertTrue(networkx.is_directed_acyclic_graph(graph))
         self.assertTrue(networkx.is_forest(graph.to_undirected()))
-        self.assertLess(len(list(networkx.topological_sort(graph))), len(self.outlets) + 1)
         self.assertGreater(graph.number_of_edges(), 3)
+
+    def test_critical_ways_run_down_the_order_of_networkx(self):
+        graph = self.own_graph()
+        graph.remove_node("source")
+        place = {name: i for i, name in enumerate(networkx.topological_sort(graph))}
+        self.assertEqual(set(place), {row["name"] for row in self.outlets})
+        longest = 0
+        for row in self.outlets:
+            way = row["critical_way"].split(" > ")
+            self.assertEqual(way, sorted(way, key=place.get), row["name"])
+            self.assertEqual(way[-1], row["name"])
+            longest = max(longest, len(way))
+        self.assertGreater(longest, 2)
 
     def test_what_lies_above_a_point_is_listed_and_nothing_else(self):
         graph = self.own_graph()

@@ -3,6 +3,7 @@
 import csv
 import json
 import pathlib
+import re
 import shutil
 import subprocess
 import tempfile
@@ -67,7 +68,8 @@ subareas = "all"
     run = subprocess.run([COMMAND, "run", town / "peaks.toml", "--replace"], check=False, capture_output=True, text=True)
     assert run.returncode == 0, run.stderr
     result = {path.stem: table(path) for path in (town / "result/tables").glob("*.csv")}
-    return result | {"json": json.loads((town / "result/result.json").read_text()), "said": run.stdout}
+    return result | {"json": json.loads((town / "result/result.json").read_text()), "said": run.stdout,
+                     "report": (town / "result/report.html").read_text()}
 
 
 def setUpModule():
@@ -93,9 +95,16 @@ class PeakTables(unittest.TestCase):
             years, minutes = int(r["return_period_years"]), float(r["time_of_concentration_min"])
             i = intensity(years, minutes)
             self.assertAlmostEqual(float(r["intensity_mm_per_h"]) / i, 1, delta=1e-5)
-            by_hand = float(r["runoff_coefficient"]) * i * float(r["area_ha"]) / 360
+            by_hand = float(r["runoff_coefficient_with_factor"]) * i * float(r["area_ha"]) / 360
             self.assertAlmostEqual(float(r["whole_area_peak_m3_per_s"]) / by_hand, 1, delta=1e-4)
             self.assertEqual(float(r["frequency_factor"]), frequency_factor(years))
+            plain = float(r["runoff_coefficient_before_factor"])
+            self.assertAlmostEqual(plain * frequency_factor(years) / float(r["coefficient_uncut"]), 1, delta=1e-5)
+            self.assertLessEqual(float(r["runoff_coefficient_with_factor"]), frequency_factor(years) * plain * (1 + 1e-5))
+            if frequency_factor(years) == 1:
+                self.assertEqual(r["runoff_coefficient_before_factor"], r["runoff_coefficient_with_factor"])
+            else:
+                self.assertGreater(float(r["runoff_coefficient_with_factor"]), plain)
 
     def test_the_partial_area_never_gives_less_and_lies_within_its_bounds(self):
         for r in self.peaks:
@@ -105,7 +114,7 @@ class PeakTables(unittest.TestCase):
             self.assertGreaterEqual(float(r["peak_unbinned_at_most_m3_per_s"]), peak)
             # Bins of 5 s against times of half an hour: the bounds are close.
             self.assertLess(float(r["peak_unbinned_at_most_m3_per_s"]) / peak, 1.05)
-            window = float(r["peak_share_of_runoff_percent"]) / 100 * float(r["runoff_coefficient"]) * float(r["area_ha"])
+            window = float(r["peak_share_of_runoff_percent"]) / 100 * float(r["runoff_coefficient_with_factor"]) * float(r["area_ha"])
             by_hand = window * intensity(int(r["return_period_years"]), float(r["peak_duration_min"])) / 360
             self.assertAlmostEqual(by_hand / peak, 1, delta=2e-4)
 
@@ -120,7 +129,7 @@ class PeakTables(unittest.TestCase):
                 self.assertGreaterEqual(float(t["most_ca_ha"]) * (1 + 1e-6), 0)
                 flow = float(t["most_ca_ha"]) * intensity(years, float(t["duration_min"])) / 360
                 self.assertAlmostEqual(flow / float(t["flow_m3_per_s"]), 1, delta=1e-4)
-            self.assertAlmostEqual(running, float(r["runoff_coefficient"]) * float(r["area_ha"]), delta=1e-4 * running)
+            self.assertAlmostEqual(running, float(r["runoff_coefficient_with_factor"]) * float(r["area_ha"]), delta=1e-4 * running)
             searched = [float(t["flow_m3_per_s"]) for t in rows if t["searched"] == "yes"]
             self.assertEqual(max(searched), float(r["peak_m3_per_s"]))
             governing = [t for t in rows if t["governs"] == "yes"]
@@ -153,7 +162,10 @@ class PeakTables(unittest.TestCase):
             self.rebuild_handbook_cases(r, {n: (float(subareas[n]["own_time_s"]) + s, float(subareas[n][f"ca_{years}yr_ha"]))
                                             for n, s in above.items()})
         for row in subareas.values():
-            product = float(row["runoff_coefficient_10yr"]) * float(row["area_ha"])
+            product = float(row["runoff_coefficient_with_factor_10yr"]) * float(row["area_ha"])
+            plain = {row[f"runoff_coefficient_before_factor_{years}yr"] for years in PERIODS}
+            self.assertEqual(plain, {row["runoff_coefficient_with_factor_10yr"]})  # C alone knows no return period here; Cf of 10 years is 1
+            self.assertGreater(float(row["runoff_coefficient_with_factor_100yr"]), float(*plain))
             self.assertAlmostEqual(product, float(row["ca_10yr_ha"]), delta=1e-6 * product)
 
     def rebuild_handbook_cases(self, r, lumps):
@@ -196,11 +208,29 @@ class PeakTables(unittest.TestCase):
         self.assertNotIn(("rational-area", "School inlet"), notices)
         self.assertIn(("coefficient-cut", "Weir"), notices)      # 1.25 · 0.9 in 100 years
 
+    def test_what_is_noticed_of_a_peak_says_how_much_at_which_return_period_and_where(self):
+        outlets = {o["name"]: o for o in self.tables["outlets"]}
+        peaks = {(r["point"], r["return_period_years"]): r for r in self.tables["peaks"]}
+        cuts = [r for r in self.tables["review"] if r["notice"] == "coefficient-cut"]
+        self.assertGreater(len(cuts), 3)
+        for r in cuts:
+            self.assertGreater(float(r["value"]), float(r["threshold"]))
+            self.assertEqual((float(r["threshold"]), r["return_period_years"]), (1, "100"))
+            self.assertIn(float(r["value"]), (1.125, 1.25))   # 1.25 times 0.9 of streets, or 1 of a pond
+            self.assertIn("100 years", r["text"])
+            mean, uncut = re.search(r"the mean of its catchment is ([\d.]+), and would be ([\d.]+) without", r["text"]).groups()
+            self.assertLess(float(mean), float(uncut))
+            self.assertAlmostEqual(float(mean) / float(peaks[r["point"], "100"]["runoff_coefficient_with_factor"]), 1, delta=5e-3)
+        for r in self.tables["review"]:
+            if r["notice"] in ("coefficient-cut", "rational-area", "time-below-least"):
+                self.assertEqual((r["x"], r["y"]), (outlets[r["point"]]["x"], outlets[r["point"]]["y"]))
+
+
 
 class PeakLaws(CommandTest):
     def test_a_point_fewer_changes_no_time_and_no_peak_of_the_others(self):
         columns = ("time_of_concentration_min", "whole_area_peak_m3_per_s", "peak_m3_per_s", "peak_duration_min",
-                   "peak_unbinned_at_least_m3_per_s", "peak_unbinned_at_most_m3_per_s", "runoff_coefficient")
+                   "peak_unbinned_at_least_m3_per_s", "peak_unbinned_at_most_m3_per_s", "runoff_coefficient_with_factor")
         all_points = {(r["point"], r["return_period_years"]): r for r in AS_IT_STANDS["peaks"]}
         fewer = demo_with_peaks(self.folder, leave_out=("Mill bridge", "Spring wood ford"))["peaks"]
         self.assertEqual(len(fewer), len(all_points) - 6)
@@ -249,6 +279,20 @@ class KinematicPeaks(CommandTest):
             self.assertAlmostEqual(max(times) / 60, minutes, delta=0.1 / 60)
             self.assertAlmostEqual(runoff * intensity(years, minutes) / 360 / float(r["whole_area_peak_m3_per_s"]), 1, delta=1e-4)
             self.assertGreaterEqual(float(r["peak_m3_per_s"]), float(r["whole_area_peak_m3_per_s"]))
+
+
+class ShortTimes(CommandTest):
+    def test_a_time_below_the_least_is_told_with_its_storm_and_place(self):
+        tables = demo_with_peaks(self.folder, peaks='least_time = "30 min"')
+        short = {r["point"]: r for r in tables["review"] if r["notice"] == "time-below-least"}
+        times = {r["point"]: float(r["time_of_concentration_min"]) for r in tables["peaks"] if r["return_period_years"] == "2"}
+        self.assertEqual(short.keys(), {point for point, minutes in times.items() if minutes < 30})
+        self.assertGreater(len(short), 2)
+        outlets = {o["name"]: o for o in tables["outlets"]}
+        for point, r in short.items():
+            self.assertAlmostEqual(float(r["value"]), times[point], delta=1e-3)
+            self.assertEqual((float(r["threshold"]), r["return_period_years"]), (30, "2"))
+            self.assertEqual((r["x"], r["y"]), (outlets[point]["x"], outlets[point]["y"]))
 
 
 class WithoutPeaks(CommandTest):

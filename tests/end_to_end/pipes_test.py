@@ -1,11 +1,12 @@
 #!/usr/bin/python3
 """Pipes and overrides in the demo: arrivals led elsewhere, times and coefficients stated, and marks wherever they act."""
+import re
 import shutil
 import tempfile
 import unittest
 
 from peaks_test import demo_with_peaks, intensity
-from support import CommandTest
+from support import CommandTest, table
 
 PIPES = """from,to,length,diameter,n,slope
 Market inlet,Tramway bank,120 m,0.45 m,0.013,0.008
@@ -74,6 +75,72 @@ class Both(unittest.TestCase):
             self.assertGreater(same, 3)
 
 
+class Shown(unittest.TestCase):
+    """What stands first of a point is what its peaks are made with, marked where pipes or stated figures act."""
+
+    def test_the_time_used_is_that_of_the_peaks_and_the_ground_keeps_names_of_its_own(self):
+        for tables, other in ((PIPED, 1), (STATED, 3), (PLAIN, 0)):
+            used = {r["point"]: r for r in tables["peaks"] if r["return_period_years"] == "10"}
+            plain = by_name(PLAIN["outlets"])
+            differ = 0
+            for row in tables["outlets"]:
+                peak = used[row["name"]]
+                self.assertAlmostEqual(float(row["time_used_min"]), float(peak["time_of_concentration_min"]), delta=6e-4)
+                self.assertAlmostEqual(float(row["network_area_ha"]) / float(peak["area_ha"]), 1, delta=1e-4)
+                for column in ("time_of_concentration_min", "area_ha"):
+                    self.assertEqual(row[column], plain[row["name"]][column])
+                is_other = (row["time_used_min"], row["network_area_ha"]) != (row["time_of_concentration_min"], row["area_ha"])
+                self.assertTrue(row["stated_acts"] == "yes" or not is_other, row["name"])
+                differ += is_other
+            self.assertGreaterEqual(differ, other)
+
+    def test_points_are_marked_where_something_stated_acts_and_only_there(self):
+        marked = {r["name"] for r in STATED["outlets"] if r["stated_acts"] == "yes"}
+        # The way time of the tramway bank acts below it alone; a C counts at its own point already.
+        self.assertTrue({"Side valley mouth", "Orchard inlet", "School inlet", "Weir"} <= marked)
+        self.assertNotIn("Tramway bank", marked)
+        self.assertEqual({r["stated_acts"] for r in PLAIN["outlets"]}, {"no"})
+        for row in STATED["outlets"]:
+            self.assertFalse(row["stated_acts"] == "yes" and not row["stated_above"], row["name"])
+
+    def test_the_console_shows_the_time_used_with_its_mark_and_the_headline_both(self):
+        for tables in (PIPED, STATED, PLAIN):
+            shown = {}
+            for line in tables["said"].splitlines():
+                for row in tables["outlets"]:
+                    if re.match(re.escape(row["name"]) + r"  +[0-9]", line):
+                        shown[row["name"]] = line[len(row["name"]):].split()[1]
+            for row in tables["outlets"]:
+                mark = "*" if row["stated_acts"] == "yes" else ""
+                if row["name"] in shown:
+                    time = shown[row["name"]]
+                    self.assertEqual(time.endswith("*"), bool(mark), row["name"])
+                    self.assertAlmostEqual(float(time.rstrip("*")), float(row["time_used_min"]), delta=0.0506)
+            self.assertIn("Weir", shown)
+            is_any = tables is not PLAIN
+            self.assertEqual("* Pipes or stated figures act on this point" in tables["said"], is_any)
+            weir = by_name(tables["outlets"])["Weir"]
+            headline = next(line for line in tables["said"].splitlines() if line.strip(" *").startswith("'Weir' drains"))
+            self.assertIn(f"arrives after {float(weir['time_used_min']):.3g} min", headline)
+            self.assertEqual("Over the ground alone it drains" in headline, is_any)
+            if is_any:
+                self.assertIn(f"the time is {float(weir['time_of_concentration_min']):.3g} min", headline)
+
+    def test_the_reports_table_of_points_has_the_time_used_with_its_mark(self):
+        for tables in (STATED, PLAIN):
+            for row in tables["outlets"]:
+                found = re.search(r"<tr data-number=\"" + row["number"] + r"\".*?</a></td><td>(.*?)</td><td>(.*?)</td>", tables["report"])
+                mark = "*" if row["stated_acts"] == "yes" else ""
+                self.assertEqual(found[2], row["time_used_min"] + mark)
+                self.assertEqual(found[1].endswith("*"), bool(mark))
+            self.assertEqual('<p class="mark">* Pipes or stated figures act' in tables["report"], tables is STATED)
+
+    def test_every_return_periods_storm_has_the_time_of_its_peak_beside_the_grounds(self):
+        used = {(r["point"], r["return_period_years"]): r["time_of_concentration_min"] for r in STATED["peaks"]}
+        for r in STATED["storms"]:
+            self.assertEqual(r["time_used_min"], used[r["point"], r["return_period_years"]])
+
+
 class Pipes(unittest.TestCase):
     def test_what_arrives_at_an_inlet_goes_on_from_the_end_of_its_pipe(self):
         outlets = by_name(PIPED["outlets"])
@@ -98,13 +165,46 @@ class Pipes(unittest.TestCase):
             self.assertAlmostEqual(float(r["capacity_m3_per_s"]) / (full * area), 1, delta=1e-4)
             self.assertAlmostEqual(float(r["design_flow_m3_per_s"]) / peaks[r["from"]], 1, delta=1e-3)
             self.assertAlmostEqual(float(r["time_min"]), float(r["length_m"]) / float(r["velocity_m_per_s"]) / 60, delta=2e-4)
-            if r["runs_full"] == "yes":
-                self.assertAlmostEqual(float(r["velocity_m_per_s"]) / full, 1, delta=1e-4)
-                self.assertIn(("pipe-too-small", r["from"]), {(n["notice"], n["point"]) for n in PIPED["review"]})
-            else:
-                self.assertLess(float(r["velocity_m_per_s"]), 1.15 * full)  # at most 1.14 of it, at 0.81 of the diameter
+            self.assertEqual(r["runs_full"], "no")
+            self.assertLess(float(r["velocity_m_per_s"]), 1.15 * full)  # at most 1.14 of it, at 0.81 of the diameter
             way = by_name(PIPED["handover"], "subarea")[r["from"]]["way_time_s"]
             self.assertAlmostEqual(float(way) / 60, float(r["time_min"]), delta=1e-4)
+
+
+class TooSmall(CommandTest):
+    """A pipe of 0.2 m where several times as much comes, beside one that is wide enough."""
+
+    PIPES = "from,to,length,diameter,n,slope\nMill bridge,Weir,200 m,0.2 m,0.013,0.01\nSchool inlet,Market inlet,100 m,1.2 m,0.013,0.01\n"
+
+    def run_with(self, timing="", more=""):
+        tables = demo_with_peaks(self.folder, pipes=self.PIPES, timing=timing, more=more)
+        told = [r for r in tables["review"] if r["notice"] == "pipe-too-small"]
+        return by_name(tables["pipes"], "from"), told, tables
+
+    def test_an_overloaded_pipe_is_told_whichever_way_it_is_timed(self):
+        for timing in ("", 'pipe_flow = "design flow"'):
+            pipes, told, tables = self.run_with(timing)
+            self.assertEqual([r["point"] for r in told], ["Mill bridge"], timing)
+            peak = next(r for r in tables["peaks"] if (r["point"], r["return_period_years"]) == ("Mill bridge", "10"))["peak_m3_per_s"]
+            small = pipes["Mill bridge"]
+            self.assertEqual((small["peak_m3_per_s"], small["too_small"], small["runs_full"]), (peak, "yes", "yes"))
+            self.assertEqual((pipes["School inlet"]["too_small"], bool(timing)), ("no", bool(small["design_flow_m3_per_s"])))
+            full = (0.2 / 4) ** (2 / 3) * 0.01**0.5 / 0.013
+            self.assertAlmostEqual(float(small["velocity_m_per_s"]) / full, 1, delta=1e-4)
+            self.assertEqual((told[0]["value"], told[0]["threshold"], told[0]["return_period_years"]), (peak, small["capacity_m3_per_s"], "10"))
+            self.assertNotIn("ft3/s", told[0]["text"])
+            self.assertIn("the peak of 10 years that comes to it", told[0]["text"])
+
+    def test_it_is_told_in_the_units_of_the_report(self):
+        self.run_with()
+        study = self.folder / "town/peaks.toml"
+        study.write_text('report_units = "us"\n' + study.read_text().replace('report_units = "si"', ""))
+        self.done("run", study, "--replace")
+        told = next(r for r in table(self.folder / "town/result/tables/review.csv") if r["notice"] == "pipe-too-small")
+        pipe = by_name(table(self.folder / "town/result/tables/pipes.csv"), "from")["Mill bridge"]
+        self.assertEqual((told["value"], told["threshold"]), (pipe["peak_ft3_per_s"], pipe["capacity_ft3_per_s"]))
+        self.assertIn("ft3/s just full", told["text"])
+        self.assertNotIn("m3/s", told["text"].replace("ft3/s", ""))
 
 
 class Overrides(unittest.TestCase):
@@ -122,8 +222,8 @@ class Overrides(unittest.TestCase):
     def test_a_stated_way_and_coefficient_count(self):
         handover = by_name(STATED["handover"], "subarea")
         self.assertEqual(float(handover["Tramway bank"]["way_time_s"]), 240)
-        self.assertEqual(float(handover["Orchard inlet"]["runoff_coefficient_10yr"]), 0.85)
-        self.assertAlmostEqual(float(handover["Orchard inlet"]["runoff_coefficient_100yr"]), 1.0)  # 1.25 · 0.85 is cut
+        self.assertEqual(float(handover["Orchard inlet"]["runoff_coefficient_with_factor_10yr"]), 0.85)
+        self.assertAlmostEqual(float(handover["Orchard inlet"]["runoff_coefficient_with_factor_100yr"]), 1.0)  # 1.25 · 0.85 is cut
         marks = {r["subarea"]: r["stated"] for r in STATED["handover"] if r["stated"]}
         self.assertEqual(marks, {"Side valley mouth": "time", "Tramway bank": "way", "Orchard inlet": "C", "School inlet": "n"})
 

@@ -75,10 +75,20 @@ class CommandLine(CommandTest):
 
     def test_verbose_says_every_notice(self):
         demo_town(self.folder / "town")
-        brief = self.rillclock("run", "town/study.toml").stderr.count("notice: ")
-        full = self.rillclock("run", "town/study.toml", "--replace", "-v").stderr.count("notice: ")
-        self.assertEqual(brief, 8)
+        full = self.rillclock("run", "town/study.toml", "-v").stderr.count("notice: ")
         self.assertEqual(full, len(self.result("town/result")["notices"]))
+
+    def test_without_that_each_kind_is_said_once_with_how_many_more_points(self):
+        demo_town(self.folder / "town")
+        said = [line for line in self.rillclock("run", "town/study.toml").stderr.splitlines() if line.startswith("notice: ")]
+        by_kind = {}
+        for notice in self.result("town/result")["notices"]:
+            by_kind.setdefault(notice["notice"] if notice["point"] else notice["text"], []).append(notice)
+        self.assertGreater(max(map(len, by_kind.values())), 5)   # which alone would nearly fill the screen
+        self.assertEqual(len(said), min(8, len(by_kind)))
+        for line, notices in zip(said, by_kind.values()):
+            self.assertTrue(line.startswith("notice: " + notices[0]["text"]), line)
+            self.assertEqual(f"Likewise at {len(notices) - 1} more" in line, len(notices) > 1, line)
 
     def test_nothing_is_in_colour(self):
         demo_town(self.folder / "town")

@@ -21,8 +21,10 @@ struct HistogramRules {
 
 /// The land of one kind that arrives within one bin. Bins are those of the time to the root, so that a further point
 /// only shares them out. Under one storm `storm_bin` is 0 and `fixed_bin` is of the whole time; else each part has its own.
+/// Land whose times are stretched to a stated one lies in bin 0, shifted to its first arrival.
 struct HistogramEntry {
     StepTime shift = {};   ///< of times to the root, where ways are stated below
+    StepTime width = {};   ///< from the first arrival to the last, where a bin was stretched; 0 where it is as it was binned
     std::int32_t storm_bin = 0;
     std::int32_t fixed_bin = 0;
     LandKind kind = {};

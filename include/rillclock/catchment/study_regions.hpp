@@ -36,12 +36,18 @@ struct IsochroneBand {
     std::vector<IsochronePart> parts = {};   ///< by number; their areas add up to its own
 };
 
+/// How many bands there may be in all, by the number of points: ten thousand, beyond which a file of shapes is slow to open, or thirty for
+/// each point where there are many.
+[[nodiscard]] std::size_t most_isochrone_bands(std::size_t points);
+
+/// A step between isochrones as it is told: in seconds where it is shorter than a minute, else in minutes.
+[[nodiscard]] std::string isochrone_step_text(Duration step);
+
 /// Which isochrones are made.
 struct IsochroneRules {
     Duration step;
     std::vector<PointNumber> catchments = {};   ///< points whose whole catchment has bands, besides the last points
     bool smoothed = false;                      ///< whether borders have the corners of cells cut off (`RegionBorders::smooth_outline`)
-    std::size_t most_bands = 100'000;
     std::size_t most_pieces = 20'000'000;   ///< straight pieces of border: a gigabyte
 };
 

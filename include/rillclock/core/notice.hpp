@@ -19,7 +19,8 @@ struct Notice {
     std::string point = {};           ///< name of the design point; empty where the notice is about the whole study
     std::optional<double> value = {};      ///< what was found, in the unit the text states
     std::optional<double> threshold = {};  ///< the limit it was held against, same unit
-    std::optional<Place> place = {};
+    std::optional<double> return_period = {};  ///< years; none where it holds for all of them, or for none
+    std::optional<Place> place = {};       ///< of what was noticed; else that of the point, once the points are placed
     double effect_s = 0.0;            ///< how many seconds of travel time hang on it; 0 where that has no answer
 };
 

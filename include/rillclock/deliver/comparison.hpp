@@ -21,13 +21,18 @@ struct TwoFigures {
 struct ComparedPeriod {
     double return_period = 0.0;   ///< years
     TwoFigures coefficient;
-    TwoFigures peak;              ///< in the results' unit of flow
+    TwoFigures whole_area_peak;   ///< in the results' unit of flow
+    TwoFigures peak;              ///< of the partial area
+
+    /// The relative change of that of the two peaks that grows more; none where neither can be compared.
+    [[nodiscard]] std::optional<double> peak_growth() const;
 };
 
 /// A point of two results.
 struct ComparedPoint {
     std::string name;
-    TwoFigures time_min;
+    TwoFigures time_min;                  ///< with which peaks are made: in the network, where there are pipes or overrides
+    TwoFigures ground_time_min;           ///< along the governing path
     TwoFigures length;                    ///< of the governing path, in the results' unit of length
     bool has_same_head = true;            ///< whether the governing path begins at the same place
     std::string last_before = {};         ///< the subarea that arrives last; empty where the results do not say
@@ -35,7 +40,7 @@ struct ComparedPoint {
     TwoFigures lead_min;
     std::vector<ComparedPeriod> periods = {};
 
-    /// By how much the point gets worse, as a share: how much shorter its time or greater its peak becomes, whichever is more; 0 or less
+    /// By how much the point gets worse, as a share: how much shorter its time or greater its peak becomes, of the whole or the partial area, whichever is most; 0 or less
     /// where neither.
     [[nodiscard]] double worsening() const;
 };
@@ -61,7 +66,7 @@ struct Comparison {
 [[nodiscard]] std::string comparison_text(const Comparison& comparison, std::size_t most);
 /// `tables/comparison.csv`: a row a point.
 [[nodiscard]] std::string comparison_table(const Comparison& comparison);
-/// `tables/compared_peaks.csv`: a row a point and return period.
+/// `tables/compared_peaks.csv`: a row a point and return period; those whose peak grows most come first, of equal ones the earlier.
 [[nodiscard]] std::string compared_peaks_table(const Comparison& comparison);
 /// All of it, with the points that get worse by name.
 [[nodiscard]] std::string comparison_json(const Comparison& comparison);

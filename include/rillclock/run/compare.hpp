@@ -23,7 +23,7 @@ struct CompareOutcome {
     std::optional<std::filesystem::path> folder; ///< where it was written
 };
 
-/// Compares two results of the same points on the same grid: times, paths, the subareas that arrive last, coefficients and peaks, from their
+/// Compares two results of the same points on the same grid: times (those peaks are made with, and over the ground), paths, the subareas that arrive last, coefficients and peaks, from their
 /// tables, and travel times cell by cell.
 ///
 /// Throws Error (inputs) where a folder is no result, where their points, grids or report units differ, and for a table that cannot be

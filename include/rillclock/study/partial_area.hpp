@@ -11,12 +11,14 @@
 
 namespace rillclock {
 
-/// C·A by time of arrival, in bins of equal width: bin p holds what arrives within [p, p + `spread`) widths.
+/// C·A by time of arrival, in bins of equal width: bin p holds what arrives within [p, p + 1) widths. Where it is not sure which bin land
+/// arrives in, `runoff` has it spread over those it may, and the two beside have it whole in the first and in the last of these.
 struct ArrivalCurve {
     std::int64_t first_bin = 0;         ///< the place of the first one
     std::vector<FixedArea> runoff;      ///< C·A of each bin from there on, in cm²
     Duration bin = seconds(5);          ///< width
-    std::int64_t spread = 1;            ///< whole widths; more than 1 where times were put together from parts
+    std::vector<FixedArea> by_earliest = {};  ///< as long as `runoff`, or empty where all is sure
+    std::vector<FixedArea> by_latest = {};
 };
 
 /// What a search is made with.
@@ -42,19 +44,19 @@ struct RainWindow {
 struct PartialPeak {
     RainWindow best;                  ///< of equal ones the longest duration
     RainWindow whole;
-    double least_product = 0.0;       ///< what the flow would be at least and at most were times not binned
-    double greatest_product = 0.0;
+    double least_product = 0.0;       ///< what the flow would be at least were times not binned; never above `best`
+    double greatest_product = 0.0;    ///< and at most; never below
 };
 
 /// The greatest over durations d, from the least time to the whole-area time, of i(d) times the most C·A that arrives
 /// within any stretch of length d; never below the whole area's, since that is one of them. None where the rain does
 /// not reach the whole time.
 ///
-/// d is the least time, every whole number of bins between, and the whole time. A stretch holds as many bins as fit into
-/// it, so over one-width bins its C·A is never more than that of the exact arrivals; with the bins that could belong to
-/// it beside, it is never less: those are the two bounds. The search halves ranges of durations and drops those whose
-/// intensity at the short end times C·A at the long end cannot do better: the answer is that of trying all. Cost: the
-/// number of bins for each duration tried, usually some tens.
+/// d is the least time, every whole number of bins between, and the whole time. A stretch holds as many bins as fit into it. The C·A of
+/// land that can arrive in these bins alone is never more than that of the exact arrivals; the C·A of land that may arrive in them, or in
+/// the two beside that a stretch can touch, is never less: those are the two bounds. The search halves ranges of durations and drops
+/// those whose intensity at the short end times C·A at the long end cannot do better: the answer is that of trying all. Cost: the number
+/// of bins for each duration tried, usually some tens.
 [[nodiscard]] std::optional<PartialPeak> partial_peak(const ArrivalCurve& curve, const PartialAreaSearch& search);
 
 /// The window in which most arrives for a rain of this duration.

@@ -23,8 +23,9 @@ struct StatedEdits {
 /// A pipe as it was timed.
 struct PipeRun {
     const StatedPipe* pipe = nullptr;
+    PointNumber inlet = 0;
     Discharge capacity;                        ///< just full
-    std::optional<Discharge> design_flow = {};  ///< of all that comes to its inlet; where it was asked for
+    std::optional<Discharge> design_flow = {};  ///< whole-area peak of all that comes to its inlet, by which it is timed; where that was asked for
     Speed velocity;
     Duration time;
 };
@@ -38,6 +39,15 @@ struct StudyNetwork {
     bool is_edited = false;
     Notices notices = {};
 };
+
+/// The time of concentration that counts for a point under the storm of a return period, by its place among them, or under the one storm
+/// where there are none; in s. With pipes or overrides anywhere in the study it is that of the network, which counts all water; else that
+/// along the governing path.
+[[nodiscard]] double time_used_s(const StudyNetwork& network, const Outlet& outlet, std::size_t period);
+
+/// Whether what is stated acts on the time, the area or the peak of a point: something of it in the subareas or on the ways above, a time or
+/// coefficient of its own subarea, or a pipe that leads water to it or away from it.
+[[nodiscard]] bool is_stated_felt(const StudyNetwork& network, const Outlet& outlet);
 
 /// What the network of a study is made from.
 struct NetworkInputs {
