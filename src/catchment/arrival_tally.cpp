@@ -117,9 +117,10 @@ template <class Z>
 void add_cells(const TiledGround& in, const TallyRules& rules, const Raster<Z>& elevations, const TileDesk& desk, TileParts& parts) {
     const Window& window = desk.flow.window();
     const bool at_edge = touches_edge(in.forest.codes(), window);
+    std::vector<double> slopes(static_cast<std::size_t>(window.columns));
     Local local = 0;
     for (std::int64_t row = window.row; row < window.row + window.rows; ++row) {
-        const LandRow land(elevations, in.metres_per_elevation_unit, in.ground, row);
+        LandRow(elevations, in.metres_per_elevation_unit, in.ground, row).slopes(window.column, slopes);
         const FixedArea area = in.ground.cell_area(row);
         Cell cell = desk.flow.cell(local);
         for (std::int64_t column = window.column; column < window.column + window.columns; ++column, ++local, ++cell) {
@@ -130,7 +131,7 @@ void add_cells(const TiledGround& in, const TallyRules& rules, const Raster<Z>& 
                                         .flow_distance = desk.flow_distance[local],
                                         .is_border = at_edge && is_beside_edge(in.forest.codes(), cell)};
             arrivals.add_unbinned(arriving);
-            arrivals.ground.add(in.surface.index[cell], in.surface.soil_at(cell), area, land.slope(column),
+            arrivals.ground.add(in.surface.index[cell], in.surface.soil_at(cell), area, slopes[static_cast<std::size_t>(column - window.column)],
                                 desk.elevation[local] * in.metres_per_elevation_unit);
             if (in.rain_zones != nullptr) arrivals.ground.add_to_zone((*in.rain_zones)[cell], area);
             if (rules.storms == Storms::by_point) arrivals.storm_bins.add(arriving.head, area, rules.storm_factor);

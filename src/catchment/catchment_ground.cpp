@@ -7,18 +7,6 @@
 #include "land_row.hpp"
 
 namespace rillclock {
-namespace {
-
-constexpr double elevation_units_per_m = 1024.0;
-
-}  // namespace
-
-void CatchmentGround::add(std::uint8_t cover, CellSoil soil, FixedArea area, double slope, double elevation_m) {
-    land_.add({.cover = cover, .soil = soil, .slope = slope_band(slope)}, area);
-    ++cells_;
-    slope_sum_ += to_fixed(slope);
-    elevation_sum_ += std::llround(elevation_m * elevation_units_per_m);
-}
 
 void CatchmentGround::add_to_zone(std::uint8_t zone, FixedArea area) {
     if (zone >= area_by_zone_.size()) area_by_zone_.resize(zone + 1U);

@@ -18,11 +18,6 @@ std::string letter_of(CellSoil soil) {
     return soil == CellSoil::unknown ? "" : std::string(1, letters[static_cast<std::uint8_t>(soil) - 1U]);
 }
 
-SlopeBand slope_band(double slope) {
-    if (slope <= 0.02) return SlopeBand::flat;
-    return slope <= 0.06 ? SlopeBand::rolling : SlopeBand::steep;
-}
-
 std::string words(SlopeBand band) {
     switch (band) {
         case SlopeBand::flat:
@@ -33,14 +28,6 @@ std::string words(SlopeBand band) {
             return "above 6 %";
     }
     return {};
-}
-
-void LandTally::add(const LandKind& kind, FixedArea area) {
-    std::vector<Count>& counts = counts_[static_cast<std::size_t>(kind.soil)];
-    const std::size_t place = kind.cover * bands + static_cast<std::size_t>(kind.slope);
-    if (place >= counts.size()) counts.resize((kind.cover + 1U) * bands);
-    ++counts[place].cells;
-    counts[place].area += area;
 }
 
 void LandTally::add(const LandTally& other) {

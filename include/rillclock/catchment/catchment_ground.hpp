@@ -15,7 +15,12 @@ namespace rillclock {
 class CatchmentGround {
 public:
     /// `cover` is the class's position in the book, `slope` as of `land_slope`, `elevation_m` within ±8·10⁶ m.
-    void add(std::uint8_t cover, CellSoil soil, FixedArea area, double slope, double elevation_m);
+    void add(std::uint8_t cover, CellSoil soil, FixedArea area, double slope, double elevation_m) {
+        land_.add({.cover = cover, .soil = soil, .slope = slope_band(slope)}, area);
+        ++cells_;
+        slope_sum_ += to_fixed(slope);
+        elevation_sum_ += nearest_whole(elevation_m * elevation_units_per_m);
+    }
     /// Counts an area to a zone of rain, 0 being outside of all.
     void add_to_zone(std::uint8_t zone, FixedArea area);
     /// Adds the ground of other cells.
@@ -31,6 +36,8 @@ public:
     [[nodiscard]] double mean_elevation_m() const;
 
 private:
+    static constexpr double elevation_units_per_m = 1024.0;
+
     LandTally land_;
     std::vector<FixedArea> area_by_zone_;
     std::int64_t cells_ = 0;

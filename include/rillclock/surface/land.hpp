@@ -29,7 +29,9 @@ inline constexpr std::size_t cell_soils = 5;   ///< how many there are
 enum class SlopeBand : std::uint8_t { flat, rolling, steep };
 
 /// `slope`: rise over run, of the land and not of a path.
-[[nodiscard]] SlopeBand slope_band(double slope);
+[[nodiscard]] constexpr SlopeBand slope_band(double slope) {
+    return static_cast<SlopeBand>((slope <= 0.02 ? 0 : 1) + (slope <= 0.06 ? 0 : 1));   // without a branch that slopes of rough ground mislead
+}
 /// "to 2 %", "2 to 6 %", "above 6 %".
 [[nodiscard]] std::string words(SlopeBand band);
 
@@ -54,7 +56,13 @@ struct LandShare {
 class LandTally {
 public:
     /// Adds a cell of a kind.
-    void add(const LandKind& kind, FixedArea area);
+    void add(const LandKind& kind, FixedArea area) {
+        std::vector<Count>& counts = counts_[static_cast<std::size_t>(kind.soil)];
+        const std::size_t place = kind.cover * bands + static_cast<std::size_t>(kind.slope);
+        if (place >= counts.size()) counts.resize((kind.cover + 1U) * bands);
+        ++counts[place].cells;
+        counts[place].area += area;
+    }
     /// Adds all that another has.
     void add(const LandTally& other);
     /// The kinds that were met, by cover class, then soil, then slope.

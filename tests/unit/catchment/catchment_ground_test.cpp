@@ -4,7 +4,10 @@
 
 #include <cmath>
 #include <limits>
+#include <random>
 #include <vector>
+
+#include "land_row.hpp"
 
 namespace rillclock {
 namespace {
@@ -31,6 +34,28 @@ TEST_CASE("beside a void the slope is taken from the other side, and a cell alon
     const Ground ground = Ground::planar(metres(1), metres(1));
     CHECK(land_slope(store_of(1, 3, {nan, 5, 7}), 1.0, ground, 1) == Approx(2));
     CHECK(land_slope(store_of(1, 3, {nan, 5, nan}), 1.0, ground, 1) == 0.0);
+}
+
+TEST_CASE("slopes of neighbouring cells taken together are those of each, to the last bit") {
+    std::mt19937 random(20261202);
+    std::uniform_int_distribution<int> level(0, 9);
+    for (const std::int64_t columns : {1, 2, 3, 7, 20}) {
+        std::vector<double> z;
+        for (std::int64_t i = 0; i < 4 * columns; ++i) z.push_back(level(random) == 0 ? nan : 0.37 * level(random));
+        const ElevationStore store = store_of(4, columns, z);
+        const Ground ground = Ground::planar(metres(2), metres(3));
+        for (std::int64_t row = 0; row < 4; ++row) {
+            for (std::int64_t from = 0; from < columns; ++from) {
+                std::vector<double> slopes(static_cast<std::size_t>(columns - from));
+                store.visit([&](const auto& elevations) { LandRow(elevations, 0.3048, ground, row).slopes(from, slopes); });
+                for (std::int64_t column = from; column < columns; ++column) {
+                    const Cell cell = row * columns + column;
+                    if (std::isnan(z[static_cast<std::size_t>(cell)])) continue;
+                    CHECK(slopes[static_cast<std::size_t>(column - from)] == land_slope(store, 0.3048, ground, cell));
+                }
+            }
+        }
+    }
 }
 
 TEST_CASE("grounds put together are the ground of all their cells") {
