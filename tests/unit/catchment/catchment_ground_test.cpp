@@ -49,7 +49,7 @@ TEST_CASE("slopes of neighbouring cells taken together are those of each, to the
                 std::vector<double> slopes(static_cast<std::size_t>(columns - from));
                 store.visit([&](const auto& elevations) { LandRow(elevations, 0.3048, ground, row).slopes(from, slopes); });
                 for (std::int64_t column = from; column < columns; ++column) {
-                    const Cell cell = row * columns + column;
+                    const auto cell = static_cast<Cell>(row * columns + column);
                     if (std::isnan(z[static_cast<std::size_t>(cell)])) continue;
                     CHECK(slopes[static_cast<std::size_t>(column - from)] == land_slope(store, 0.3048, ground, cell));
                 }
