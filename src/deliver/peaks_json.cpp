@@ -65,8 +65,6 @@ Json land_name(const StudyResult& result, const RunoffLand& land) {
     return land.kind.cover < classes.size() ? Json(classes[land.kind.cover].name) : Json("stated in the overrides");
 }
 
-}  // namespace
-
 Json runoff_land_json(const StudyResult& result, const Outlet& outlet) {
     using Figures = RunoffLand::Figures;
     Json rows = Json::array();
@@ -103,6 +101,13 @@ Json peaks_json(const StudyResult& result, const Outlet& outlet) {
         periods.push_back(json);
     }
     return periods;
+}
+
+}  // namespace
+
+void add_peaks(const StudyResult& result, const Outlet& outlet, Json& json) {
+    json["runoff_land"] = runoff_land_json(result, outlet);
+    json["peaks"] = peaks_json(result, outlet);
 }
 
 Json peak_parameters_json(const Study& study) {

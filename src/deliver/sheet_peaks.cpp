@@ -35,8 +35,8 @@ struct PeakWriter {
 };
 
 std::string years_text(double years) { return significant(years, 6) + (years == 1.0 ? " year" : " years"); }
-std::string minutes_text(double minutes) { return significant(minutes, time_digits); }
-std::string percent(double share, int count) { return significant(100.0 * share, count) + " %"; }
+std::string long_minutes(double minutes) { return significant(minutes, time_digits); }
+std::string percent_text(double share, int count) { return significant(100.0 * share, count) + " %"; }
 std::string c_text(double c) { return significant(c, area_digits); }
 
 bool is_rounded(const SheetMatter& matter) { return words_of(matter.result.at("parameters").at("peaks"), "conversion") == "rounded"; }
@@ -103,7 +103,7 @@ double whole_area_m2(const PeakWriter& to) {
     return m2;
 }
 
-std::string runoff_text(const PeakWriter& to) { return to.area(number_of(to.peak, "runoff_area_m2"), sum_digits); }
+std::string catchment_ca(const PeakWriter& to) { return to.area(number_of(to.peak, "runoff_area_m2"), sum_digits); }
 
 void write_composites(const PeakWriter& to) {
     const auto area = [&](const SheetJson& row) { return to.area(number_of(row, "area_m2"), area_digits); };
@@ -112,10 +112,10 @@ void write_composites(const PeakWriter& to) {
     const auto uncut = [&](const SheetJson& row) { return uncut_text(row, to) + " x " + area(row); };
     const std::string whole = to.area(whole_area_m2(to), sum_digits);
     to.sheet.calculation("A", sum_of(to, area), whole + to.unit());
-    to.sheet.calculation("CA", sum_of(to, runoff), runoff_text(to) + to.unit());
+    to.sheet.calculation("CA", sum_of(to, runoff), catchment_ca(to) + to.unit());
     to.sheet.calculation("C before Cf", "(" + sum_of(to, plain) + ") / " + whole,
                          significant(number_of(to.peak, "runoff_coefficient_before_factor"), coefficient_digits));
-    to.sheet.calculation("C with Cf", runoff_text(to) + " / " + whole, significant(number_of(to.peak, "runoff_coefficient"), coefficient_digits));
+    to.sheet.calculation("C with Cf", catchment_ca(to) + " / " + whole, significant(number_of(to.peak, "runoff_coefficient"), coefficient_digits));
     const bool is_cut = number_of(to.peak, "coefficient_uncut") > number_of(to.peak, "runoff_coefficient");
     if (!is_cut) return to.sheet.words("No Cf C passes 1, so nothing is cut, and C uncut is C with Cf.");
     to.sheet.calculation("C uncut", "(" + sum_of(to, uncut) + ") / " + whole,
@@ -142,7 +142,7 @@ std::optional<std::size_t> told_land(const PeakWriter& to) {
 void write_land(const PeakWriter& to) {
     if (const std::optional<std::size_t> told = told_land(to)) {
         const double years = number_of(to.matter.outlet.at("peaks").at(*told), "return_period");
-        to.sheet.fact("land", "C, Cf and CA of every class are those of " + years_text(years) + ", " + runoff_text(to) + to.unit() + " of CA in all");
+        to.sheet.fact("land", "C, Cf and CA of every class are those of " + years_text(years) + ", " + catchment_ca(to) + to.unit() + " of CA in all");
         return;
     }
     std::size_t number = 0;
@@ -158,10 +158,10 @@ void write_whole(const PeakWriter& to) {
     const SheetJson& whole = to.peak.at("whole_area");
     const double minutes = number_of(whole, "time_min");
     const double read_at = to.matter.read_at_min(minutes);
-    to.sheet.fact("whole area", "the water has all arrived after " + minutes_text(minutes) + " min; time used " + minutes_text(read_at) + " min");
+    to.sheet.fact("whole area", "the water has all arrived after " + long_minutes(minutes) + " min; time used " + long_minutes(read_at) + " min");
     const double mm_per_h = number_of(whole, "intensity_mm_per_h");
     write_reading(to.matter, {.return_period = to.years(), .minutes = minutes, .mm_per_h = mm_per_h}, to.sheet);
-    write_flow(runoff_text(to), mm_per_h, to.flow(whole, "flow_m3_per_s"), to);
+    write_flow(catchment_ca(to), mm_per_h, to.flow(whole, "flow_m3_per_s"), to);
 }
 
 bool is_part(const PeakWriter& to) {
@@ -173,12 +173,12 @@ void write_part(const PeakWriter& to) {
     const double minutes = number_of(partial, "duration_min");
     const double begins = number_of(partial, "begins_min");
     const std::string ca = to.area(number_of(partial, "runoff_area_m2"), sum_digits);
-    to.sheet.fact("partial area", "rain of " + minutes_text(minutes) + " min makes the most of all durations; most CA arrives within the stretch from " +
-                                      minutes_text(begins) + " min after the first water: " + ca + to.unit() + ", from " +
-                                      percent(number_of(partial, "share_of_area"), 5) + " of the area");
-    to.sheet.calculation("end of the stretch", minutes_text(begins) + " + " + minutes_text(minutes), significant(begins + minutes, sum_digits) + " min");
+    to.sheet.fact("partial area", "rain of " + long_minutes(minutes) + " min makes the most of all durations; most CA arrives within the stretch from " +
+                                      long_minutes(begins) + " min after the first water: " + ca + to.unit() + ", from " +
+                                      percent_text(number_of(partial, "share_of_area"), 5) + " of the area");
+    to.sheet.calculation("end of the stretch", long_minutes(begins) + " + " + long_minutes(minutes), significant(begins + minutes, sum_digits) + " min");
     const double share = number_of(partial, "runoff_area_m2") / number_of(to.peak, "runoff_area_m2");
-    to.sheet.calculation("share of CA", ca + " / " + runoff_text(to), significant(share, coefficient_digits));
+    to.sheet.calculation("share of CA", ca + " / " + catchment_ca(to), significant(share, coefficient_digits));
     const double mm_per_h = number_of(partial, "intensity_mm_per_h");
     write_reading(to.matter, {.return_period = to.years(), .minutes = minutes, .mm_per_h = mm_per_h}, to.sheet);
     write_flow(ca, mm_per_h, to.flow(partial, "flow_m3_per_s"), to);
@@ -188,8 +188,8 @@ void write_makers(const PeakWriter& to) {
     const SheetJson& partial = to.peak.at("partial_area");
     for (const SheetJson& maker : partial.at("subareas")) {
         to.sheet.fact("made by the subarea of " + words_of(maker, "subarea"),
-                      percent(number_of(maker, "share_of_window"), 5) + " of the CA within the stretch; of all CA it has " +
-                          percent(number_of(maker, "share_of_runoff"), 5));
+                      percent_text(number_of(maker, "share_of_window"), 5) + " of the CA within the stretch; of all CA it has " +
+                          percent_text(number_of(maker, "share_of_runoff"), 5));
     }
     const auto named = partial.at("subareas").size();
     const auto all = partial.at("subareas_in_window").get<std::size_t>();

@@ -66,7 +66,7 @@ class PeakSheet(CommandTest):
             plain.append(number(row, r"\bC = ([0-9.]+)"))
             rest = "means by area" in row
             used.append(number(row, r"Cf C = ([0-9.]+)") if rest else min(1.0, number(row, r"Cf = ([0-9.]+)") * plain[-1]))
-            self.assertAlmostEqual(self.check_line(product, where)[2] / max(used[-1] * areas[-1], 1e-30), 1 if used[-1] else 0, delta=2e-9)
+            self.assertAlmostEqual(self.check_line(product, where)[2] / max(used[-1] * areas[-1], 1e-30), 1 if used[-1] else 0, delta=1e-8)
         said = {label: (expression, result) for label, expression, result in
                 (self.check_line(line, where) for line in lines if re.match(r"^    (A|CA|C before Cf|C with Cf|C uncut) = ", line))}
         self.assertAlmostEqual(said["A"][1] / sum(areas), 1, delta=1e-7)
@@ -102,7 +102,8 @@ class PeakSheet(CommandTest):
         begin = next(i for i, line in enumerate(lines) if line.startswith("    whole area: "))
         middle = next(i for i, line in enumerate(lines) if line.startswith("    partial area: "))
         whole = self.check_flow(lines[begin:middle], ca, us, rounded, where)
-        told = {"ca": ca, "whole": whole, "peak": whole, "time": number(lines[begin], r"after ([0-9.]+) min"), "used": number(lines[begin], r"used ([0-9.]+) min")}
+        told = {"ca": ca, "whole": whole, "peak": whole, "time": number(lines[begin], r"after ([0-9.]+) min"),
+                "used": number(lines[begin], r"used ([0-9.]+) min")}
         self.assertGreaterEqual(told["used"], told["time"])
         if "no shorter rain makes more" not in lines[middle]:
             told["peak"] = self.check_part(lines[middle:], ca, us, rounded, where)
@@ -173,9 +174,8 @@ class Demo(PeakSheet):
             self.assertEqual(len(sections), 11)
             said = "".join(section.text for section in sections)
             self.assertEqual(said.count("* Peak of "), 33)
-            for part in ("CA of every class are those of 2 years", "C uncut = ", "partial area: rain of", "no shorter rain makes more",
-                         "conversion: " + conversion, "Kuichling, 1889"):
-                self.assertIn(part, said)
+            for part in ("CA of every class are those of 2 years", "C uncut = ", "partial area: rain of", "conversion: " + conversion, "Kuichling, 1889"):
+                self.assertTrue(part in said, part)
 
     def test_what_was_noticed_of_peaks_stands_in_the_section(self):
         said = {rows[0]["point"]: Section(text).text for text, rows in self.sheets("si")}
@@ -202,6 +202,7 @@ book = "book.csv"
 soil_group = "B"
 [rain]
 file = "rain.csv"
+two_year_24_hour = "3.6 in"
 return_periods = [2, 100]
 {more}''')
         self.done("run", "study.toml")
@@ -217,6 +218,7 @@ return_periods = [2, 100]
             said += self.check_point(text, rows, True, True).text
             self.assertEqual(len(re.findall(r"(?m)^    CA \d+ = ", said)) % 25, 0)
         self.assertIn("25. 16 more kinds of land: A = ", said)
+        self.assertIn("partial area: no shorter rain makes more", said)
         self.assertIn("No intensity is read below 7.5 min.", said)
 
     def test_coefficients_by_soil_and_slope_are_told_with_both_and_have_no_factor(self):
