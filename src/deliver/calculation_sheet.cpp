@@ -156,10 +156,12 @@ CalculationSheet SheetBook::sheet(std::size_t position) const try {
     sheet.title("Calculation sheet: " + words_of(matter.outlet, "name"));
     if (!words_of(result, "title").empty()) sheet.fact("study", words_of(result, "title"));
     write_point(matter, sheet);
-    write_notices(matter, content_->notices.of(words_of(matter.outlet, "name")), sheet);
+    const std::vector<std::size_t> noticed = content_->notices.of(words_of(matter.outlet, "name"));
+    write_notices(matter, noticed, sheet);
     write_formulas(matter, sheet);
     write_both_paths(matter, sheet);
     if (matter.has_rain()) write_storms(matter, sheet);
+    write_peaks(matter, noticed, sheet);
     write_methods(matter, sheet);
     write_cautions(matter, sheet);
     return sheet.take();

@@ -2,8 +2,11 @@
 
 #include <algorithm>
 #include <array>
+#include <cctype>
+#include <map>
 #include <numeric>
 #include <optional>
+#include <utility>
 
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/deliver/report_units.hpp"
@@ -73,11 +76,19 @@ std::string flow_text(const StudyResult& result, Discharge flow) {
     return significant(scale.flow(flow), 3) + (result.study.report_units == ReportUnits::us ? " ft3/s" : " m3/s");
 }
 
+/// The peak of a point that paths and maps are for; null where there is none.
+const PointPeak* raster_peak(const StudyResult& result, PointNumber number) {
+    if (!result.peaks.are_there()) return nullptr;
+    const std::vector<PointPeak>& periods = result.peaks.points[number - 1];
+    const std::size_t raster = result.rain.raster;
+    return raster < periods.size() && periods[raster].is_there() ? &periods[raster] : nullptr;
+}
+
 /// None where the study has no peak for the point.
 std::optional<std::string> peak_sentence(const StudyResult& result, const Outlet& main) {
-    if (!result.peaks.are_there()) return std::nullopt;
-    const PointPeak& peak = result.peaks.points[main.number - 1][result.rain.raster];
-    if (!peak.is_there()) return std::nullopt;
+    const PointPeak* of_main = raster_peak(result, main.number);
+    if (of_main == nullptr) return std::nullopt;
+    const PointPeak& peak = *of_main;
     const std::string begin = "Its peak of " + significant(result.rain.raster_storm().return_period, 6) + " years is " +
                               flow_text(result, peak.partial);
     if (!(peak.partial > peak.whole)) return begin + ", that of the whole area.";
@@ -93,22 +104,78 @@ std::string names_text(const StudyResult& result, const std::vector<PointNumber>
     return points.size() <= most_named ? text : text + " and " + std::to_string(points.size() - most_named) + " more";
 }
 
-/// The peak of a point that paths and maps are for; null where there is none.
-const PointPeak* raster_peak(const StudyResult& result, PointNumber number) {
-    const PointPeak& peak = result.peaks.points[number - 1][result.rain.raster];
-    return peak.is_there() ? &peak : nullptr;
+std::string of_points(std::size_t some, std::size_t all) { return std::to_string(some) + " of " + std::to_string(all) + " points"; }
+
+/// Why points have no peak of some return period, and how many there are of each.
+struct MissingPeaks {
+    std::size_t points = 0;                      ///< in all
+    std::size_t beyond_rain = 0;                 ///< whose time no duration of the rain reaches
+    Duration longest;                            ///< of their times
+    std::map<std::string, std::size_t> lacking;  ///< others, by what they lack
+
+    /// The reason of the first return period that lacks a peak counts.
+    void add(const std::vector<PointPeak>& periods) {
+        const auto missing = std::find_if(periods.begin(), periods.end(), [](const PointPeak& p) { return !p.is_there(); });
+        if (missing == periods.end()) return;
+        ++points;
+        if (!missing->is_beyond_rain) {
+            ++lacking[missing->why_not];
+            return;
+        }
+        ++beyond_rain;
+        for (const PointPeak& peak : periods) longest = peak.is_beyond_rain ? std::max(longest, peak.whole_time) : longest;
+    }
+};
+
+std::string reasons_text(const MissingPeaks& missing) {
+    constexpr std::size_t most_told = 2;
+    std::string text;
+    const auto add = [&](std::size_t points, const std::string& why) { text += (text.empty() ? "" : "; ") + ("at " + std::to_string(points)) + " " + why; };
+    if (missing.beyond_rain > 0)
+        add(missing.beyond_rain, "the rain's durations end before the time of concentration, which is up to " + time_text(in_seconds(missing.longest)));
+    std::vector<std::pair<std::string, std::size_t>> lacking(missing.lacking.begin(), missing.lacking.end());
+    std::stable_sort(lacking.begin(), lacking.end(), [](const auto& a, const auto& b) { return a.second > b.second; });
+    std::size_t others = 0;
+    for (std::size_t i = 0; i < lacking.size(); ++i) {
+        if (i < most_told) add(lacking[i].second, lacking[i].first);
+        else others += lacking[i].second;
+    }
+    if (others > 0) add(others, "other coefficients are missing");
+    return text;
 }
 
-std::string of_points(std::size_t some, std::size_t all) { return std::to_string(some) + " of " + std::to_string(all) + " points"; }
+std::string as_sentence(std::string text) {
+    if (!text.empty()) text.front() = static_cast<char>(std::toupper(static_cast<unsigned char>(text.front())));
+    return text + ".";
+}
+
+/// Where rain by duration is there and some point has no peak.
+std::optional<std::string> missing_sentence(const StudyResult& result) {
+    if (!result.rain.source) return std::nullopt;
+    if (!result.peaks.are_there()) {
+        const auto told = std::find_if(result.notices.begin(), result.notices.end(), [](const Notice& n) { return n.code == no_peaks_code; });
+        const bool is_told_anyway = told == result.notices.begin();   // it is what needs an eye first
+        if (told == result.notices.end() || is_told_anyway) return std::nullopt;
+        return as_sentence(told->text);
+    }
+    MissingPeaks missing;
+    for (const Outlet& outlet : result.outlets) missing.add(result.peaks.points[outlet.number - 1]);
+    if (missing.points == 0) return std::nullopt;
+    return "No peak flow of some or all return periods could be made at " + of_points(missing.points, result.outlets.size()) +
+           " (column why_not of tables/peaks.csv): " + reasons_text(missing) + ".";
+}
 
 /// Where a part of the area makes more than the whole; the greatest gain first.
 std::optional<std::string> partial_sentence(const StudyResult& result) {
     if (!result.peaks.are_there() || result.outlets.size() < 2) return std::nullopt;
     std::vector<PointNumber> points;
+    bool any = false;
     for (const Outlet& outlet : result.outlets) {
         const PointPeak* peak = raster_peak(result, outlet.number);
+        any = any || peak != nullptr;
         if (peak != nullptr && peak->partial > peak->whole) points.push_back(outlet.number);
     }
+    if (!any) return std::nullopt;
     if (points.empty()) return "At no point does a part of the area make a greater peak than the whole.";
     const auto gain = [&](PointNumber number) { return raster_peak(result, number)->partial / raster_peak(result, number)->whole; };
     std::stable_sort(points.begin(), points.end(), [&](PointNumber a, PointNumber b) { return gain(a) > gain(b); });
@@ -195,7 +262,7 @@ std::vector<std::string> headlines(const StudyResult& result) {
     std::vector<std::string> sentences{governing_sentence(result, main), makeup_sentence(result, main)};
     if (const auto peak = peak_sentence(result, main)) sentences.push_back(*peak);
     if (result.uncertainty != nullptr) sentences.push_back(uncertainty_sentence(result, main));
-    for (const auto& sentence : {partial_sentence(result), difference_sentence(result), lead_sentence(result)}) {
+    for (const auto& sentence : {missing_sentence(result), partial_sentence(result), difference_sentence(result), lead_sentence(result)}) {
         if (sentence) sentences.push_back(*sentence);
     }
     sentences.push_back(concern_sentence(result));

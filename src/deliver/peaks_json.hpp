@@ -5,8 +5,9 @@
 
 namespace rillclock {
 
-/// The peaks of a point by return period, in SI.
-[[nodiscard]] Json peaks_json(const StudyResult& result, const Outlet& outlet);
+/// Adds what a point's peaks are, in SI: "runoff_land", the land of its catchment by what its runoff coefficient depends on, the greatest
+/// area first (the last row may stand for the rest), and "peaks", by return period.
+void add_peaks(const StudyResult& result, const Outlet& outlet, Json& json);
 /// How the study's peaks were made.
 [[nodiscard]] Json peak_parameters_json(const Study& study);
 

@@ -9,7 +9,7 @@ namespace {
 Json points_json(const TabulatedRain& table) {
     Json points = Json::array();
     for (const RainPoint& point : table.points) {
-        points.push_back({digits(in_minutes(point.duration), 8), digits(in_millimetres_per_hour(point.intensity), 8)});
+        points.push_back({digits(in_minutes(point.duration), 10), digits(in_millimetres_per_hour(point.intensity), 10)});
     }
     return points;
 }
@@ -23,8 +23,8 @@ Json formula_parts_json(const FormulatedRain& formulas) {
                          {"time_exponent", formula.time_exponent},
                          {"added", formula.added},
                          {"outer_exponent", formula.outer_exponent},
-                         {"intensity_unit_mm_per_h", digits(in_millimetres_per_hour(formula.intensity_unit), 8)},
-                         {"time_unit_min", digits(in_minutes(formula.time_unit), 8)}});
+                         {"intensity_unit_mm_per_h", digits(in_millimetres_per_hour(formula.intensity_unit), 10)},
+                         {"time_unit_min", digits(in_minutes(formula.time_unit), 10)}});
     }
     return parts;
 }

@@ -390,7 +390,7 @@ Json outlet_json(const StudyResult& result, const Outlet& outlet) {
     }
     json["methods"] = methods_json(result.methods[outlet.number - 1]);
     if (!outlet.storms.empty()) json["storms"] = storms_json(result, outlet);
-    if (result.peaks.are_there()) json["peaks"] = peaks_json(result, outlet);
+    if (result.peaks.are_there()) add_peaks(result, outlet, json);
     if (result.uncertainty != nullptr) json["uncertainty"] = point_uncertainty_json(result, outlet);
     return json;
 }

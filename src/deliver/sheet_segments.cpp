@@ -175,11 +175,6 @@ void write_segment(const SheetJson& segment, std::size_t number, PathWriter& to)
     write_sum(segment, to);
 }
 
-void write_source(const char* id, SheetWriter& sheet) {
-    const Method* method = find_method(id);
-    sheet.fact(std::string(method->name), std::string(method->source) + " (" + std::string(words(method->trust)) + ")");
-}
-
 /// The regimes of a point's two paths.
 std::set<std::string> regimes_of(const SheetMatter& matter) {
     std::set<std::string> regimes;
@@ -229,6 +224,11 @@ void write_cover_sources(const SheetMatter& matter, SheetWriter& sheet) {
 }
 
 }  // namespace
+
+void write_source(const char* id, SheetWriter& sheet) {
+    const Method* method = find_method(id);
+    sheet.fact(std::string(method->name), std::string(method->source) + " (" + std::string(words(method->trust)) + ")");
+}
 
 const SheetJson& SheetMatter::path_storm() const {
     const SheetJson& period = result.at("parameters").at("rain").at("raster_return_period");

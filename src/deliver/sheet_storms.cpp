@@ -11,60 +11,11 @@ struct StormWriter {
     const SheetJson& storm;
     SheetWriter& sheet;
 
-    [[nodiscard]] double intensity(double mm_per_h) const { return matter.scale.intensity(millimetres_per_hour(mm_per_h)); }
-    [[nodiscard]] std::string unit() const { return matter.scale.length_unit() == "ft" ? " in/h" : " mm/h"; }
-    [[nodiscard]] std::string intensity_text(double mm_per_h) const { return significant(intensity(mm_per_h), 7); }
+    [[nodiscard]] std::string intensity_text(double mm_per_h) const { return matter.intensity_text(mm_per_h); }
+    void write_reading(double minutes, double mm_per_h) const {
+        rillclock::write_reading(matter, {.return_period = number_of(storm, "return_period"), .minutes = minutes, .mm_per_h = mm_per_h}, sheet);
+    }
 };
-
-const SheetJson* curve_of(const StormWriter& to) {
-    for (const SheetJson& curve : to.matter.rain().at("curves")) {
-        if (curve.at("return_period") == to.storm.at("return_period")) return &curve;
-    }
-    return nullptr;
-}
-
-/// Minutes at which the intensity is read when these are asked for.
-double read_at(const StormWriter& to, double minutes) {
-    const SheetJson& parameters = to.matter.result.at("parameters").at("rain");
-    return std::max({minutes, number_of(parameters, "least_time_min"), number_of(to.matter.rain(), "first_duration_min")});
-}
-
-/// Between two durations of a table: on a straight line on log-log paper.
-std::string interpolation(const SheetJson& points, double minutes, const StormWriter& to) {
-    std::size_t upper = 1;
-    while (upper + 1 < points.size() && points.at(upper).at(0).get<double>() < minutes) ++upper;
-    const auto text = [&](std::size_t i) { return to.intensity_text(points.at(i).at(1).get<double>()); };
-    const std::string t0 = significant(points.at(upper - 1).at(0).get<double>(), 7);
-    const std::string t1 = significant(points.at(upper).at(0).get<double>(), 7);
-    return text(upper - 1) + " x (" + significant(minutes, 8) + " / " + t0 + ")^(ln(" + text(upper) + " / " + text(upper - 1) + ") / ln(" + t1 +
-           " / " + t0 + "))";
-}
-
-std::string formula_part(const SheetJson& part, double minutes) {
-    std::string top = significant(number_of(part, "weighted_factor"), 8);
-    const std::string time = significant(minutes / number_of(part, "time_unit_min"), 8);
-    const double e = number_of(part, "time_exponent");
-    const std::string base = e == 1.0 ? time : time + "^" + significant(e, 8);
-    return top + " / (" + base + " + " + significant(number_of(part, "added"), 8) + ")^" + significant(number_of(part, "outer_exponent"), 8);
-}
-
-std::string reading(const SheetJson& curve, double minutes, const StormWriter& to) {
-    if (curve.contains("points")) return interpolation(curve.at("points"), minutes, to);
-    std::string text;
-    for (const SheetJson& part : curve.at("formula_parts")) {
-        const double unit = to.intensity(number_of(part, "intensity_unit_mm_per_h"));
-        text += (text.empty() ? "" : " + ") + (unit == 1.0 ? "" : significant(unit, 8) + " x ") + formula_part(part, minutes);
-    }
-    return text;
-}
-
-void write_reading(double minutes, double mm_per_h, const StormWriter& to) {
-    const SheetJson* curve = curve_of(to);
-    if (curve == nullptr) return;
-    const double at = read_at(to, minutes);
-    if (at > minutes) to.sheet.words("No intensity is read below " + printed(at) + " min.");
-    to.sheet.calculation("i", reading(*curve, at, to), to.intensity_text(mm_per_h) + to.unit());
-}
 
 /// The time under another intensity of the same cell: its sheet flow goes with i^-0.4, the rest stays. A round in which another cell comes
 /// last is told as such.
@@ -90,7 +41,7 @@ void write_rounds(const StormWriter& to) {
     for (const SheetJson& round : to.storm.at("iteration")) {
         const double assumed = number_of(round, "assumed_min");
         to.sheet.item("round " + std::to_string(++number) + ": assume " + printed(assumed) + " min");
-        write_reading(assumed, number_of(round, "intensity_mm_per_h"), to);
+        to.write_reading(assumed, number_of(round, "intensity_mm_per_h"));
         write_computed(round, to);
     }
 }
@@ -109,7 +60,7 @@ void write_storm(const StormWriter& to) {
         to.sheet.words("The rain does not reach that duration.");
         return;
     }
-    write_reading(minutes, number_of(to.storm, "intensity_mm_per_h"), to);
+    to.write_reading(minutes, number_of(to.storm, "intensity_mm_per_h"));
 }
 
 }  // namespace

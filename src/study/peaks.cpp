@@ -35,6 +35,7 @@ public:
     [[nodiscard]] StudyPeaks work() {
         StudyPeaks made;
         made.points.resize(in_.outlets.size());
+        made.land.resize(in_.outlets.size());
         for (std::size_t i = 0; i < own_.size(); ++i) {
             if (in_.network.edits[i].stated != nullptr)
                 own_[i] = edited_histogram(own_[i], in_.network.edits[i], in_.outlets[i], in_.binned, in_.book, stated_);
@@ -45,6 +46,7 @@ public:
         for (const PointNumber number : upstream_first()) {
             ArrivalHistogram& catchment = joined[number - 1];  // by now with all that joins from above
             made.points[number - 1] = peaks_at(number, catchment, made.subareas);
+            made.land[number - 1] = land_of(catchment);
             const PointNumber next = graph().next_of(number);
             if (next != 0) joined[next - 1].add(catchment);
             catchment = {};
@@ -72,6 +74,15 @@ private:
             made.coefficients.push_back(composite_of(land, coefficients_, period));
         }
         return made;
+    }
+
+    [[nodiscard]] std::vector<RunoffLand> land_of(const ArrivalHistogram& catchment) {
+        const LandAreas land = land_areas(catchment);
+        const std::size_t periods = in_.rain.storms.size();
+        for (std::size_t period = 0; period < periods; ++period) {
+            if (!lacking_coefficient(land, coefficients_, period).empty()) return {};
+        }
+        return runoff_land(land, coefficients_, periods);
     }
 
     [[nodiscard]] std::vector<PointPeak> peaks_at(PointNumber number, const ArrivalHistogram& catchment,
@@ -114,6 +125,7 @@ private:
         const ArrivalCurve curve = at.binned.curve(coefficients_, at.period);
         const std::optional<PartialPeak> found = partial_peak(curve, search);
         if (!found) {
+            peak.is_beyond_rain = true;
             peak.why_not = "the rain ends before " + significant(in_minutes(peak.whole_time), 4) + " min";
             return;
         }
@@ -211,7 +223,7 @@ StudyPeaks no_peaks(const Study& study, const StudyRain& rain) {
     StudyPeaks none;
     if (!rain.source) return none;
     const bool by_book = study.peaks.coefficient.value_or(CoefficientSource::book) == CoefficientSource::book;
-    none.notices.push_back({.code = "no-peaks",
+    none.notices.push_back({.code = no_peaks_code,
                             .text = std::string("no peak flows were computed, since no class of the cover book has ") +
                                     (by_book ? "a runoff coefficient: give it a column c, c_a to c_d or land_use"
                                              : "an imperviousness: give it a column impervious_percent")});

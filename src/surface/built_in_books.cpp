@@ -15,11 +15,11 @@ namespace {
 // type of table 15-3 and the depth of water are our own. Curve numbers: TR-55, 1986, table 2-2, from memory: open space in good
 // condition 21; residential, quarter and eighth of an acre 22, 23; commercial 24; newly graded 31; woods, good 41 to 43; brush, fair 52;
 // pasture, good 71, 81; row crops, straight, good 82. That match is our own; classes without one have none.
-// Impervious percentages: the middle of the legend's range, rounded. Kerby's N: Texas Hydraulic Design Manual, table 4-5, from memory; the
-// match is our own.
+// Impervious percentages: the middle of the legend's range, rounded; open water counts as impervious, since rain on it runs off whole (common
+// practice, no source). Kerby's N: Texas Hydraulic Design Manual, table 4-5, from memory; the match is our own.
 constexpr std::string_view nlcd_text =
     R"(code,name,n_low,n_typical,n_high,shallow_type,paved,water_depth_m,source,from_memory,cn_a,cn_b,cn_c,cn_d,kerby_n,impervious_percent
-11,Open Water,,,,,,2,"mean depth ours: state your own",yes,,,,,,
+11,Open Water,,,,,,2,"mean depth ours: state your own",yes,,,,,,100
 12,Perennial Ice/Snow,0.010,0.013,0.050,nearly bare,no,,"n and shallow type ours",yes,,,,,,
 21,"Developed, Open Space",0.030,0.0404,0.240,short-grass pasture,no,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 dense grasses; low and shallow type ours",yes,39,61,74,80,0.40,10
 22,"Developed, Low Intensity",0.040,0.0678,0.150,pavement,yes,,"n Kalyanapu et al. 2009; high NEH 630 table 15-1 short-grass prairie; low and shallow type ours",yes,61,75,83,87,0.40,35
@@ -53,7 +53,7 @@ constexpr std::string_view worldcover_text =
 50,Built-up,0.011,0.0678,0.150,pavement,yes,,"all ours: as medium development of the book nlcd, with its lowest and highest range; mixes roofs, streets and gardens",yes,77,85,90,92,,65
 60,Bare / sparse vegetation,0.011,0.0113,0.050,nearly bare,no,,"all ours: as barren land of the book nlcd",yes,77,86,91,94,0.10,0
 70,Snow and ice,0.010,0.013,0.050,nearly bare,no,,"all ours",yes,,,,,,
-80,Permanent water bodies,,,,,,2,"mean depth ours: state your own",yes,,,,,,
+80,Permanent water bodies,,,,,,2,"mean depth ours: state your own",yes,,,,,,100
 90,Herbaceous wetland,0.100,0.1825,0.410,forest litter or hay meadow,no,,"all ours: as herbaceous wetlands of the book nlcd",yes,,,,,,0
 95,Mangroves,0.050,0.086,0.400,contour crops or woodland,no,,"all ours: as woody wetlands of the book nlcd",yes,,,,,,0
 100,Moss and lichen,0.011,0.050,0.150,nearly bare,no,,"all ours: as lichens of the book nlcd",yes,,,,,,0

@@ -65,11 +65,18 @@ std::string lacking_text(const CoverClass& cover, const std::string& what) {
 
 KindCoefficient from_book(const CoverClass& cover, const LandKind& kind, double return_period) {
     const std::optional<SoilGroup> group = group_of(kind.soil);
-    if (const auto own = cover.coefficient(group)) return {.value = *own};
+    const bool by_soil = group && cover.runoff_coefficients[static_cast<std::size_t>(*group)];
+    if (const auto own = cover.coefficient(group)) return {.value = *own, .by_soil = by_soil};
     const LandUse* use = find_land_use(cover.land_use);
     if (use == nullptr) return {.lacking = lacking_text(cover, "c or land_use")};
     if (!group) return {.lacking = "the land use of " + cover.name + " needs a soil group, which is not stated everywhere"};
-    return {.value = use->coefficient(*group, kind.slope, return_period), .varies_with_period = true};
+    return {.value = use->coefficient(*group, kind.slope, return_period), .varies_with_period = true, .by_soil = true, .by_slope = true};
+}
+
+KindCoefficient from_imperviousness(const CoverClass& cover, CoefficientSource source) {
+    if (cover.is_open_water() && cover.impervious.value_or(1.0) == 1.0) return {.value = open_water_coefficient};
+    if (!cover.impervious) return {.lacking = lacking_text(cover, "impervious_percent")};
+    return {.value = source == CoefficientSource::urbonas ? urbonas_coefficient(*cover.impervious) : schueler_coefficient(*cover.impervious)};
 }
 
 }  // namespace
@@ -100,10 +107,7 @@ std::string_view words(CoefficientSource source) {
 
 KindCoefficient kind_coefficient(const CoverBook& book, const LandKind& kind, CoefficientSource source, double return_period) {
     const CoverClass& cover = book.classes()[kind.cover];
-    if (source == CoefficientSource::book) return from_book(cover, kind, return_period);
-    if (!cover.impervious) return {.lacking = lacking_text(cover, "impervious_percent")};
-    return {.value = source == CoefficientSource::urbonas ? urbonas_coefficient(*cover.impervious)
-                                                          : schueler_coefficient(*cover.impervious)};
+    return source == CoefficientSource::book ? from_book(cover, kind, return_period) : from_imperviousness(cover, source);
 }
 
 bool has_coefficients(const CoverBook& book, CoefficientSource source) {

@@ -301,8 +301,35 @@ class WithoutPeaks(CommandTest):
         (self.folder / "rain.csv").write_text("duration_min,intensity_2yr_in_h,intensity_10yr_in_h\n5,4.8,6.9\n1440,0.13,0.2\n")
         self.done("run", *words, "--rain-file", "rain.csv")
         self.assertIn("no-peaks", [n["notice"] for n in self.result()["notices"]])
+        told = [s for s in self.result()["headlines"] if "o peak flows were computed, since no class of the cover book has a runoff coefficient" in s]
+        self.assertEqual(len(told), 1)
         self.assertFalse((self.folder / "result/tables/peaks.csv").exists())
         self.assertTrue((self.folder / "result/tables/handover.csv").exists())
+
+    def test_findings_say_at_how_many_points_there_is_no_peak_and_why(self):
+        subprocess.run([COMMAND, "demo", self.folder / "town"], check=True, capture_output=True)
+        study = (self.folder / "town/study-with-peaks.toml").read_text().split("[output]")[0]
+        study = study[:study.index("formula = ")] + 'file = "short.csv"\n' + study[study.index("return_periods"):]
+        (self.folder / "town/short.csv").write_text("duration_min,intensity_2yr_mm_h,intensity_100yr_mm_h\n5,110,260\n30,45,110\n")
+        (self.folder / "town/short.toml").write_text(study)
+        said = self.done("run", "town/short.toml", "--out", "short")
+        rows = table(self.folder / "short/tables/peaks.csv")
+        lacking = {r["point"] for r in rows if r["why_not"]}
+        self.assertTrue(0 < len(lacking) < 11)
+        sentence = next(s for s in self.result("short")["headlines"] if s.startswith("No peak flow"))
+        self.assertRegex(sentence, f"at {len(lacking)} of 11 points .column why_not of tables/peaks.csv.: at {len(lacking)} the rain's durations end "
+                                   "before the time of concentration, which is up to [0-9.]+ (min|h)")
+        self.assertIn(sentence, " ".join(said.split()))
+
+    def test_findings_name_what_coefficients_are_missing_where_no_point_has_a_peak(self):
+        self.ground()
+        self.cover()
+        self.book("code,name,n_typical,shallow_type,c,source\n1,Grass,0.24,grassed waterway,,test\n2,Street,0.011,pavement,0.9,test\n")
+        (self.folder / "rain.csv").write_text("duration_min,intensity_10yr_in_h\n5,6.9\n1440,0.2\n")
+        self.done("run", "--elevation", "dem.tif", "--cover", "cover.tif", "--book", "book.csv", "--rain", "90 mm", "--rain-file", "rain.csv")
+        found = self.result()["headlines"]
+        self.assertTrue(any("the cover book has no c or land_use for Grass" in s for s in found if s.startswith("No peak flow")), found)
+        self.assertFalse([s for s in found if "At no point does a part" in s], found)
 
     def test_peaks_without_rain_by_duration_are_refused(self):
         self.ground()

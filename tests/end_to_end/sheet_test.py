@@ -13,9 +13,9 @@ import unittest
 from support import CommandTest, FOOT, INCH, SOURCE, demo_town, table
 
 TOLERANCE = 1e-3
-CALCULATION = re.compile(r"^ {4}(\w[\w ]*?) = (.+) = (-?[0-9.]+) ([\w/]+)$")
+CALCULATION = re.compile(r"^ {4}(\w[\w ]*?) = (.+) = (-?[0-9.]+)(?: ([\w/]+))?$")
 OPERATORS = {ast.Add: operator.add, ast.Sub: operator.sub, ast.Mult: operator.mul, ast.Div: operator.truediv, ast.Pow: operator.pow}
-FUNCTIONS = {"sqrt": math.sqrt, "ln": math.log}
+FUNCTIONS = {"sqrt": math.sqrt, "ln": math.log, "min": min}
 RAIN = """duration_min,intensity_2yr_mm_h,intensity_10yr_mm_h
 5,110,175
 15,70,112
@@ -26,7 +26,7 @@ RAIN = """duration_min,intensity_2yr_mm_h,intensity_10yr_mm_h
 
 
 def value(expression):
-    """What a hand calculator makes of an expression; nothing but numbers, brackets, + - x / ^, sqrt and ln is understood."""
+    """What a hand calculator makes of an expression; nothing but numbers, brackets, + - x / ^, sqrt, ln and min is understood."""
     def of(node):
         if isinstance(node, ast.Constant):
             return float(node.value)
@@ -34,8 +34,8 @@ def value(expression):
             return -of(node.operand)
         if isinstance(node, ast.BinOp):
             return OPERATORS[type(node.op)](of(node.left), of(node.right))
-        if isinstance(node, ast.Call) and len(node.args) == 1:
-            return FUNCTIONS[node.func.id](of(node.args[0]))
+        if isinstance(node, ast.Call) and len(node.args) == (2 if node.func.id == "min" else 1):
+            return FUNCTIONS[node.func.id](*map(of, node.args))
         raise ValueError(expression)
     return of(ast.parse(expression.replace(" x ", " * ").replace("^", " ** "), mode="eval").body)
 
@@ -111,7 +111,7 @@ class Sheets(CommandTest):
             self.assertLess(abs(got - float(result)), TOLERANCE * abs(float(result)) + 5.1e-5 * (label == "sum"),
                             f"{where}: {label} = {expression} = {result} {unit}, but it is {got}")
         # Nothing looks like a calculation and escapes the check.
-        likely = [line for line in whole_lines(text) if re.match(r"^ {4}(T|T ponded|V|Q|u|x|i|sum) = ", line)]
+        likely = [line for line in whole_lines(text) if re.match(r"^ {4}(T|T ponded|V|Q|u|x|i|sum|A|CA|CA \d+|C \w+ Cf|C uncut|end of the stretch|share of CA) = ", line)]
         self.assertEqual(len(likely), len(lines), where)
         self.assertLessEqual(max(map(len, text.splitlines())), 100, where)
         return lines

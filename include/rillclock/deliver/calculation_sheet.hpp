@@ -27,8 +27,8 @@ struct SheetLine {
 
 /// The calculation of one point's time, line by line, as a reviewer with a hand calculator checks it.
 ///
-/// Expressions have numbers, + - x / ^, brackets, sqrt and ln, and no letters besides; recomputed from the printed numbers each holds
-/// to 0.1 %.
+/// Expressions have numbers, + - x / ^, brackets, sqrt, ln and min, and no letters besides; recomputed from the printed numbers each holds
+/// to 0.1 %, and those of peak flow to their last digit.
 using CalculationSheet = std::vector<SheetLine>;
 
 /// The sheets of a result, made from its `result.json` alone.

@@ -8,8 +8,9 @@
 namespace rillclock {
 
 /// The most interesting sentences of an answer: the governing path of the point with the largest catchment, what makes its time, its peak
-/// flow where there is one, what the ranges of its inputs make of its time where the study asks for that, the points where a part of the area makes the
-/// peak, those where the subarea that arrives last is not the one with the greatest share of it, the least leads, and what most needs a person's eye.
+/// flow where there is one, what the ranges of its inputs make of its time where the study asks for that, at how many points rain by duration
+/// gives no peak and why, the points where a part of the area makes the peak, those where the subarea that arrives last is not the one with the
+/// greatest share of it, the least leads, and what most needs a person's eye.
 [[nodiscard]] std::vector<std::string> headlines(const StudyResult& result);
 
 /// Positions of the points by area, the largest first; of equal ones the earlier number.

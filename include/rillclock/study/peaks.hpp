@@ -8,6 +8,7 @@
 #include "rillclock/catchment/arrival_histogram.hpp"
 #include "rillclock/core/notice.hpp"
 #include "rillclock/study/partial_area.hpp"
+#include "rillclock/study/runoff_land.hpp"
 #include "rillclock/study/study.hpp"
 #include "rillclock/study/study_network.hpp"
 #include "rillclock/study/study_rain.hpp"
@@ -42,7 +43,8 @@ struct TimeAreaRow {
 
 /// The peak of a point at one return period.
 struct PointPeak {
-    std::string why_not = {};      ///< why there is no peak; all else is then nothing
+    std::string why_not = {};      ///< why there is no peak; all else but the time is then nothing
+    bool is_beyond_rain = false;   ///< whether that is because the rain's durations end before the time
     CompositeCoefficient coefficient;
     Duration whole_time;           ///< of concentration under this storm
     Intensity whole_intensity;     ///< read at the longest of that, the least time and the rain's first duration
@@ -71,6 +73,7 @@ struct SubareaRunoff {
 struct StudyPeaks {
     std::vector<std::vector<PointPeak>> points;   ///< by outlet and return period
     std::vector<SubareaRunoff> subareas;          ///< by outlet
+    std::vector<std::vector<RunoffLand>> land = {};  ///< of each outlet's whole catchment; empty where some of it has no coefficient
     Notices notices;
 
     [[nodiscard]] bool are_there() const { return !points.empty(); }
@@ -95,6 +98,9 @@ struct PeakInputs {
 
 /// Whether a study has what peaks need: rain by duration, and a cover book with some runoff coefficient.
 [[nodiscard]] bool gives_peaks(const Study& study, const StudyRain& rain, const CoverBook& book);
+
+/// The code of the notice that a study with rain by duration has no peaks at all.
+inline constexpr const char* no_peaks_code = "no-peaks";
 
 /// In place of peaks where a study does not give any: a notice, if it has rain by duration.
 [[nodiscard]] StudyPeaks no_peaks(const Study& study, const StudyRain& rain);

@@ -43,9 +43,16 @@ struct KindCoefficient {
     std::optional<double> value = {};
     bool varies_with_period = false;  ///< printed by return period: no frequency factor acts on it
     std::string lacking = {};
+    bool by_soil = false;             ///< another on another soil group
+    bool by_slope = false;            ///< another on land of another slope
 };
 
-/// The coefficient of a kind of land under a return period in years, before any frequency factor, or what the book lacks for it.
+/// The coefficient of open water where it follows from imperviousness: rain on it runs off whole. Common practice, no source: the formulas of
+/// imperviousness are for ground, on which wet pavement keeps some of the rain.
+inline constexpr double open_water_coefficient = 1.0;
+
+/// The coefficient of a kind of land under a return period in years, before any frequency factor, or what the book lacks for it. From
+/// imperviousness open water has `open_water_coefficient`, unless the book states a share below 100 % for it.
 [[nodiscard]] KindCoefficient kind_coefficient(const CoverBook& book, const LandKind& kind, CoefficientSource source,
                                                double return_period);
 

@@ -49,6 +49,33 @@ TEST_CASE("from imperviousness a paved class has 0.892, a bare one 0.04") {
     CHECK(*kind_coefficient(coefficient_book(), {.cover = 0}, CoefficientSource::urbonas, 10).value == Approx(0.04));
 }
 
+TEST_CASE("rain on open water runs off whole, in the built-in books and in one that does not state its imperviousness") {
+    const auto c_of = [](const CoverBook& book, int code, CoefficientSource source) {
+        const auto place = static_cast<std::uint8_t>(book.find(code) - book.classes().data());
+        return kind_coefficient(book, {.cover = place}, source, 10).value;
+    };
+    const CoverBook own = parse_cover_book("code,name,n_typical,shallow_type,water_depth_m,impervious_percent,source\n"
+                                           "1,Pond,,,2,,test\n2,Reeds,,,0.5,40,test\n3,Street,0.011,pavement,,100,test\n", "b.csv");
+    for (const CoefficientSource source : {CoefficientSource::urbonas, CoefficientSource::schueler}) {
+        CHECK(c_of(built_in_book("nlcd"), 11, source) == 1.0);
+        CHECK(c_of(built_in_book("worldcover"), 80, source) == 1.0);
+        CHECK(c_of(own, 1, source) == 1.0);
+        CHECK(*c_of(own, 3, source) < 0.96);  // pavement is ground
+    }
+    CHECK(*c_of(own, 2, CoefficientSource::schueler) == Approx(0.05 + 0.9 * 0.4));  // what a book states counts
+    CHECK(*built_in_book("nlcd").find(11)->impervious == 1.0);
+    CHECK(*built_in_book("worldcover").find(80)->impervious == 1.0);
+}
+
+TEST_CASE("a coefficient says whether it depends on soil and slope") {
+    CHECK((of(0, CellSoil::a, SlopeBand::flat, 10).by_soil && of(0, CellSoil::a, SlopeBand::flat, 10).by_slope));
+    CHECK_FALSE((of(1, CellSoil::a, SlopeBand::flat, 10).by_soil || of(1, CellSoil::a, SlopeBand::flat, 10).by_slope));
+    const CoverBook by_soil = parse_cover_book("code,name,n_typical,shallow_type,c,c_a,source\n1,Lawn,0.2,pavement,0.3,0.1,test\n", "b.csv");
+    const auto on = [&](CellSoil soil) { return kind_coefficient(by_soil, {.cover = 0, .soil = soil}, CoefficientSource::book, 10); };
+    CHECK((on(CellSoil::a).by_soil && !on(CellSoil::a).by_slope));
+    CHECK_FALSE((on(CellSoil::d).by_soil || on(CellSoil::unknown).by_soil));
+}
+
 TEST_CASE("in every printed land use a rarer storm, a tighter soil and a steeper slope never have less") {
     for (const LandUse& use : land_uses()) {
         INFO(use.name);
