@@ -1,8 +1,20 @@
 #include "rillclock/surface/land.hpp"
 
 #include <algorithm>
+#include <array>
+#include <string_view>
 
 namespace rillclock {
+namespace {
+
+struct BandEnd {
+    double slope;
+    std::string_view percent;
+};
+constexpr std::array<BandEnd, slope_bands - 1> band_ends{
+    {{0.02, "2"}, {0.05, "5"}, {0.06, "6"}, {0.07, "7"}, {0.10, "10"}, {0.30, "30"}}};
+
+}  // namespace
 
 CellSoil cell_soil(SoilGroup group) {
     return static_cast<CellSoil>(static_cast<std::uint8_t>(group) + 1U);
@@ -19,32 +31,28 @@ std::string letter_of(CellSoil soil) {
 }
 
 SlopeBand slope_band(double slope) {
-    if (slope <= 0.02) return SlopeBand::flat;
-    return slope <= 0.06 ? SlopeBand::rolling : SlopeBand::steep;
+    const auto end = std::lower_bound(band_ends.begin(), band_ends.end(), slope, [](const BandEnd& e, double s) { return e.slope < s; });
+    return static_cast<SlopeBand>(end - band_ends.begin());
 }
 
 std::string words(SlopeBand band) {
-    switch (band) {
-        case SlopeBand::flat:
-            return "to 2 %";
-        case SlopeBand::rolling:
-            return "2 to 6 %";
-        case SlopeBand::steep:
-            return "above 6 %";
-    }
-    return {};
+    const auto place = static_cast<std::size_t>(band);
+    const auto percent = [](std::size_t end) { return std::string(band_ends[end].percent); };
+    if (place == 0) return "to " + percent(0) + " %";
+    if (place == band_ends.size()) return "above " + percent(place - 1) + " %";
+    return percent(place - 1) + " to " + percent(place) + " %";
 }
 
 void LandTally::add(const LandKind& kind, FixedArea area) {
     std::vector<Count>& counts = counts_[static_cast<std::size_t>(kind.soil)];
-    const std::size_t place = kind.cover * bands + static_cast<std::size_t>(kind.slope);
-    if (place >= counts.size()) counts.resize((kind.cover + 1U) * bands);
+    const std::size_t place = kind.cover * slope_bands + static_cast<std::size_t>(kind.slope);
+    if (place >= counts.size()) counts.resize((kind.cover + 1U) * slope_bands);
     ++counts[place].cells;
     counts[place].area += area;
 }
 
 void LandTally::add(const LandTally& other) {
-    for (std::size_t soil = 0; soil < soils; ++soil) {
+    for (std::size_t soil = 0; soil < cell_soils; ++soil) {
         const std::vector<Count>& more = other.counts_[soil];
         std::vector<Count>& counts = counts_[soil];
         if (more.size() > counts.size()) counts.resize(more.size());
@@ -57,13 +65,13 @@ void LandTally::add(const LandTally& other) {
 
 std::vector<LandShare> LandTally::shares() const {
     std::vector<LandShare> met;
-    for (std::size_t soil = 0; soil < soils; ++soil) {
+    for (std::size_t soil = 0; soil < cell_soils; ++soil) {
         for (std::size_t place = 0; place < counts_[soil].size(); ++place) {
             const Count& count = counts_[soil][place];
             if (count.cells == 0) continue;
-            const LandKind kind{.cover = static_cast<std::uint8_t>(place / bands),
+            const LandKind kind{.cover = static_cast<std::uint8_t>(place / slope_bands),
                                 .soil = static_cast<CellSoil>(soil),
-                                .slope = static_cast<SlopeBand>(place % bands)};
+                                .slope = static_cast<SlopeBand>(place % slope_bands)};
             met.push_back({.kind = kind, .cells = count.cells, .area = count.area});
         }
     }

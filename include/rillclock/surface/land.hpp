@@ -5,6 +5,7 @@
 #include <cstddef>
 #include <cstdint>
 #include <optional>
+#include <string>
 #include <vector>
 
 #include "rillclock/core/fixed_point.hpp"
@@ -24,20 +25,22 @@ inline constexpr std::size_t cell_soils = 5;   ///< how many there are
 /// "A" to "D"; empty where the soil is not known.
 [[nodiscard]] std::string letter_of(CellSoil soil);
 
-/// Slope of the land in the three bands by which runoff coefficients are tabulated (Rawls, Wong and McCuen, 1981): up to
-/// 2 %, up to 6 %, steeper.
-enum class SlopeBand : std::uint8_t { flat, rolling, steep };
+/// Slope of the land in bands, each up to its end in %, from the last on steeper: wherever a table of runoff coefficients that a book may
+/// name (runoff_coefficients.hpp, printed_coefficients.hpp) goes over from one slope class to the next.
+enum class SlopeBand : std::uint8_t { to_2, to_5, to_6, to_7, to_10, to_30, steeper };
+
+inline constexpr std::size_t slope_bands = 7;   ///< how many there are
 
 /// `slope`: rise over run, of the land and not of a path.
 [[nodiscard]] SlopeBand slope_band(double slope);
-/// "to 2 %", "2 to 6 %", "above 6 %".
+/// "to 2 %", "2 to 5 %" and so on, "above 30 %".
 [[nodiscard]] std::string words(SlopeBand band);
 
 /// What kind of land a cell is.
 struct LandKind {
     std::uint8_t cover = 0;  ///< position of the class in the cover book
     CellSoil soil = CellSoil::unknown;
-    SlopeBand slope = SlopeBand::flat;
+    SlopeBand slope = SlopeBand::to_2;
 
     auto operator<=>(const LandKind&) const = default;
 };
@@ -50,7 +53,7 @@ struct LandShare {
 };
 
 /// Counts the cells and the area of every kind of land. Sums are integers: the order of adding does not matter. Memory:
-/// 48 bytes for each class of the book up to the last one met, and that for each soil group met.
+/// 112 bytes for each class of the book up to the last one met, and that for each soil group met.
 class LandTally {
 public:
     /// Adds a cell of a kind.
@@ -61,13 +64,11 @@ public:
     [[nodiscard]] std::vector<LandShare> shares() const;
 
 private:
-    static constexpr std::size_t soils = 5;
-    static constexpr std::size_t bands = 3;
     struct Count {
         std::int64_t cells = 0;
         FixedArea area = 0;
     };
-    std::array<std::vector<Count>, soils> counts_;  ///< by soil; of each by cover class and slope
+    std::array<std::vector<Count>, cell_soils> counts_;  ///< by soil; of each by cover class and slope
 };
 
 }  // namespace rillclock
