@@ -27,6 +27,31 @@ std::size_t cell_of(const Rows& rows, std::string_view a, std::string_view b, st
     return least;
 }
 
+std::vector<std::string_view> words_of(std::string_view name) {
+    std::vector<std::string_view> words;
+    while (!name.empty()) {
+        const std::size_t end = std::min(name.find(' '), name.size());
+        if (end > 0) words.push_back(name.substr(0, end));
+        name.remove_prefix(std::min(end + 1, name.size()));
+    }
+    return words;
+}
+
+std::ptrdiff_t shared_words(std::string_view name, std::string_view candidate) {
+    const auto there = words_of(candidate);
+    const auto here = words_of(name);
+    return std::count_if(here.begin(), here.end(), [&](std::string_view word) {
+        return std::any_of(there.begin(), there.end(), [&](std::string_view other) { return edit_distance(word, other) == 0; });
+    });
+}
+
+/// "A, B or C".
+std::string alternatives(std::span<const std::string_view> names) {
+    std::string text(names.front());
+    for (std::size_t i = 1; i < names.size(); ++i) text += (i + 1 == names.size() ? " or " : ", ") + std::string(names[i]);
+    return text;
+}
+
 }  // namespace
 
 std::size_t edit_distance(std::string_view a, std::string_view b) {
@@ -57,6 +82,20 @@ std::optional<std::string_view> nearest_word(std::string_view word, std::span<co
 std::string did_you_mean(std::string_view word, std::span<const std::string_view> candidates) {
     const auto nearest = nearest_word(word, candidates);
     return nearest ? "; did you mean " + std::string(*nearest) + "?" : std::string();
+}
+
+std::string did_you_mean_any(std::string_view name, std::span<const std::string_view> candidates) {
+    constexpr std::size_t most_named = 5;
+    std::ptrdiff_t most = 0;
+    for (const std::string_view candidate : candidates) most = std::max(most, shared_words(name, candidate));
+    if (most == 0) return did_you_mean(name, candidates);
+    std::vector<std::string_view> near;
+    for (const std::string_view candidate : candidates) {
+        if (shared_words(name, candidate) == most) near.push_back(candidate);
+    }
+    std::stable_sort(near.begin(), near.end(), [&](auto a, auto b) { return edit_distance(name, a) < edit_distance(name, b); });
+    near.resize(std::min(near.size(), most_named));
+    return "; did you mean " + alternatives(near) + "?";
 }
 
 }  // namespace rillclock

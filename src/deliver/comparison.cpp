@@ -52,6 +52,7 @@ Json point_json(const Comparison& comparison, const ComparedPoint& point) {
             {"ground_time_min", figures(point.ground_time_min)},
             {"path_length_" + comparison.length_unit, figures(point.length)},
             {"same_head", point.has_same_head},
+            {"same_path", point.has_same_path ? Json(*point.has_same_path) : Json(nullptr)},
             {"last_subarea", {{"before", text_or_null(point.last_before)}, {"after", text_or_null(point.last_after)}}},
             {"lead_min", figures(point.lead_min)},
             {"peaks", periods},
@@ -138,6 +139,10 @@ double ComparedPoint::worsening() const {
     return worst;
 }
 
+bool Comparison::knows_paths() const {
+    return std::all_of(points.begin(), points.end(), [](const ComparedPoint& p) { return p.has_same_path.has_value(); });
+}
+
 std::vector<std::size_t> Comparison::worse() const {
     std::vector<std::size_t> places;
     for (std::size_t i = 0; i < points.size(); ++i) {
@@ -159,6 +164,15 @@ std::string comparison_sentence(const Comparison& comparison) {
            significant(100.0 * comparison.points[worse.front()].worsening(), 3) + " %.";
 }
 
+std::string paths_sentence(const Comparison& comparison) {
+    if (!comparison.knows_paths())
+        return "Whether governing paths run through the same cells is not known: tables/outlets.csv of one of the results has no column "
+               "governing_path_digest; run its study again.";
+    const auto others = std::count_if(comparison.points.begin(), comparison.points.end(), [](const ComparedPoint& p) { return !*p.has_same_path; });
+    if (others == 0) return "All governing paths run through the same cells.";
+    return std::to_string(others) + " of " + std::to_string(comparison.points.size()) + " governing paths run through other cells than before.";
+}
+
 std::vector<std::size_t> places_by_change(const Comparison& comparison) {
     std::vector<std::size_t> order(comparison.points.size());
     std::iota(order.begin(), order.end(), std::size_t{0});
@@ -177,6 +191,7 @@ std::string comparison_text(const Comparison& comparison, std::size_t most) {
     for (std::size_t i = 0; i < std::min(most, order.size()); ++i) rows.push_back(text_row(comparison, comparison.points[order[i]]));
     std::string text = comparison_sentence(comparison) + "\n\n" + aligned(rows);
     if (order.size() > most) text += "… and " + std::to_string(order.size() - most) + " more; --json prints them all\n";
+    text += "\n" + paths_sentence(comparison) + "\n";
     return text;
 }
 
@@ -188,6 +203,7 @@ std::string comparison_table(const Comparison& comparison) {
     add_figures(table, "ground_time", "min", [](const ComparedPoint& p) { return p.ground_time_min; });
     add_figures(table, "path_length", comparison.length_unit, [](const ComparedPoint& p) { return p.length; });
     table.column("same_head", [](const ComparedPoint& p) { return yes_or_no(p.has_same_head); })
+        .column("same_path", [](const ComparedPoint& p) { return p.has_same_path ? std::string(yes_or_no(*p.has_same_path)) : std::string(); })
         .column("last_subarea_before", [](const ComparedPoint& p) { return p.last_before; })
         .column("last_subarea_after", [](const ComparedPoint& p) { return p.last_after; });
     add_figures(table, "lead", "min", [](const ComparedPoint& p) { return p.lead_min; });

@@ -3,6 +3,7 @@
 #include "rillclock/deliver/report_units.hpp"
 #include "rillclock/deliver/tables.hpp"
 #include "network_words.hpp"
+#include "path_digest.hpp"
 #include "table_writer.hpp"
 
 namespace rillclock {
@@ -68,6 +69,7 @@ void add_path_columns(const StudyResult& result, const ReportScale& scale, Table
         .column("governing_fall_" + m, [=](const Outlet& o) { return five_digits(scale.length(o.governing.summary.fall_m)); })
         .column("governing_head_x", [&](const Outlet& o) { return coordinate(result.system, result.grid.centre(o.governing.cells.front()).x); })
         .column("governing_head_y", [&](const Outlet& o) { return coordinate(result.system, result.grid.centre(o.governing.cells.front()).y); })
+        .column("governing_path_digest", [](const Outlet& o) { return path_digest(o.governing.cells); })
         .column("longest_length_" + m, [=](const Outlet& o) { return five_digits(scale.length(from_fixed(o.longest.summary.length))); })
         .column("longest_grid_length_" + m, [=](const Outlet& o) { return five_digits(grid(o.longest)); })
         .column("longest_unbiased_length_" + m, [=](const Outlet& o) { return five_digits(unbiased_step_weight * grid(o.longest)); })

@@ -53,14 +53,15 @@ std::string compared_table(const Comparison& comparison) {
     const std::vector<double> periods = periods_of(comparison);
     Cells head{"point", "time min"};
     for (const double period : periods) head.push_back("peak of " + significant(period, 6) + " years " + flow_unit_words(comparison.flow_unit));
-    head.insert(head.end(), {"same path head", "arrives last", "gets worse"});
+    head.insert(head.end(), {"same path", "arrives last", "gets worse"});
     std::vector<Cells> rows;
     for (const std::size_t place : places_by_change(comparison)) {
         if (rows.size() == most_compared) break;
         const ComparedPoint& point = comparison.points[place];
         Cells row{html_text(point.name), two_figures(point.time_min)};
         for (const double period : periods) row.push_back(peak_of_period(point, period));
-        row.insert(row.end(), {point.has_same_head ? "yes" : "no", compared_last_words(point), point.worsening() > comparison.tolerance ? "yes" : "no"});
+        row.insert(row.end(), {point.has_same_path ? (*point.has_same_path ? "yes" : "no") : "–", compared_last_words(point),
+                               point.worsening() > comparison.tolerance ? "yes" : "no"});
         rows.push_back(std::move(row));
     }
     return plain_table(head, rows);

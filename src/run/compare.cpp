@@ -109,6 +109,9 @@ private:
         for (const char* column : {"governing_head_x", "governing_head_y"}) {
             found.has_same_head = found.has_same_head && before_.outlets.text(row, column) == after_.outlets.text(other, column);
         }
+        const std::string path = before_.outlets.text(row, "governing_path_digest");
+        const std::string other_path = after_.outlets.text(other, "governing_path_digest");
+        if (!path.empty() && !other_path.empty()) found.has_same_path = path == other_path;
         if (!found_.flow_unit.empty()) found.periods = periods(found.name);
         return found;
     }

@@ -8,6 +8,8 @@
 #include "rillclock/hydraulics/roughness.hpp"
 #include "rillclock/io/library_versions.hpp"
 #include "rillclock/study/study_keys.hpp"
+#include "rillclock/surface/printed_coefficients.hpp"
+#include "rillclock/surface/runoff_coefficients.hpp"
 
 namespace rillclock {
 namespace {
@@ -34,6 +36,28 @@ std::string roughness_text(const RoughnessTable& table) {
     return text + "    source   " + std::string(table.source) + " (" + std::string(words(table.trust)) + ")\n";
 }
 
+std::string range_text(const PrintedRange& range) {
+    return significant(range.used(), 4) + (range.is_range() ? " (" + significant(range.least, 4) + " to " + significant(range.greatest, 4) + ")" : "");
+}
+
+std::string coefficients_text(const CoefficientTable& table) {
+    std::string text = "Runoff coefficients of " + std::string(table.of) + (table.is_of_addends ? "\n" : ", named in the column land_use of a cover book\n");
+    for (const CoefficientRow& row : table.rows) {
+        text += "    " + std::string(row.name) + ": ";
+        for (const PrintedRange& range : row.by_slope) text += (&range == &row.by_slope.front() ? "" : ", ") + range_text(range);
+        text += "\n";
+    }
+    if (!table.remark.empty()) text += "    remark   " + std::string(table.remark) + "\n";
+    return text + "    source   " + std::string(table.source) + " (" + std::string(words(table.trust)) + ")\n";
+}
+
+/// The names of the uses whose coefficients are printed by soil group, slope and return period.
+std::string land_uses_text() {
+    std::string text;
+    for (const LandUse& use : land_uses()) text += (text.empty() ? "" : ", ") + std::string(use.name);
+    return "Land uses of the method runoff-land-use, named in the column land_use of a cover book\n    " + text + "\n";
+}
+
 }  // namespace
 
 std::string version_line() {
@@ -46,6 +70,8 @@ std::string methods_text() {
     for (const Method& method : methods()) text += (text.empty() ? "" : "\n") + method_text(method);
     for (const LumpMethod& method : lump_methods()) text += "\n" + method_text(method.about);
     for (const RoughnessTable& table : roughness_tables()) text += "\n" + roughness_text(table);
+    text += "\n" + land_uses_text();
+    for (const CoefficientTable& table : coefficient_tables()) text += "\n" + coefficients_text(table);
     return text;
 }
 

@@ -132,7 +132,7 @@ StatedEdits read_edits(const Study& study) {
 }
 
 void restate_own_times(StatedEdits& stated, const TiledTravel& travel, const std::vector<Outlet>& outlets) {
-    const std::vector<PointEdit> edits = point_edits({}, stated.overrides, outlets);
+    const std::vector<PointEdit> edits = point_edits(stated.pipes, stated.overrides, outlets);
     std::vector<RestatedPoint> points;
     for (std::size_t i = 0; i < edits.size(); ++i) {
         const bool any = edits[i].stated != nullptr && edits[i].stated->overland.is_any();

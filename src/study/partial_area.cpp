@@ -152,14 +152,6 @@ std::optional<PartialPeak> partial_peak(const ArrivalCurve& curve, const Partial
     return peak;
 }
 
-std::vector<FixedArea> translated_runoff(const ArrivalCurve& curve, std::size_t rain_bins) {
-    std::vector<FixedArea> contributing(curve.runoff.size() + rain_bins, 0);
-    for (std::size_t bin = 0; bin < curve.runoff.size(); ++bin) {
-        for (std::size_t rain = 0; rain < rain_bins; ++rain) contributing[bin + rain] += curve.runoff[bin];
-    }
-    return contributing;
-}
-
 std::optional<RainWindow> rain_window(const ArrivalCurve& curve, const PartialAreaSearch& search, Duration duration) {
     if (!search.rain(duration)) return std::nullopt;
     return Search(curve, search).window(duration);

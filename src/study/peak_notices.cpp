@@ -1,11 +1,12 @@
 #include "peak_notices.hpp"
 
 #include <algorithm>
+#include <map>
 #include <utility>
 
 #include "rillclock/core/number_text.hpp"
 #include "rillclock/hydraulics/rational.hpp"
-#include "rillclock/surface/runoff_coefficients.hpp"
+#include "rillclock/surface/printed_coefficients.hpp"
 
 namespace rillclock {
 namespace {
@@ -89,19 +90,44 @@ void tell_coefficient(const Outlet& outlet, const std::vector<PointPeak>& peaks,
 
 /// A coefficient of the user's own beside a land use is held against what is printed for that.
 void tell_range(const CoverClass& cover, Notices& notices) {
-    const LandUse* use = find_land_use(cover.land_use);
-    if (use == nullptr) return;
+    const std::optional<PrintedRange> printed = printed_range(cover.land_use);
+    if (!printed) return;
     for (const std::optional<SoilGroup> group : {std::optional<SoilGroup>{}, std::optional(SoilGroup::a), std::optional(SoilGroup::b),
                                                  std::optional(SoilGroup::c), std::optional(SoilGroup::d)}) {
         const std::optional<double> own = cover.coefficient(group);
-        if (!own || (*own >= use->least() && *own <= use->greatest())) continue;
+        if (!own || (*own >= printed->least && *own <= printed->greatest)) continue;
         notices.push_back({.code = "coefficient-outside-range",
                            .text = "the runoff coefficient " + significant(*own, 4) + " of " + cover.name + " lies outside the range " +
-                                   significant(use->least(), 3) + " to " + significant(use->greatest(), 3) + " printed for " +
-                                   std::string(use->name),
+                                   significant(printed->least, 3) + " to " + significant(printed->greatest, 3) + " printed for " +
+                                   cover.land_use,
                            .value = *own,
-                           .threshold = *own < use->least() ? use->least() : use->greatest()});
+                           .threshold = *own < printed->least ? printed->least : printed->greatest});
         return;
+    }
+}
+
+/// Land that is steeper than the table of its land use is printed for.
+void tell_steep(const PeakInputs& in, Notices& notices) {
+    std::map<std::uint8_t, FixedArea> steep;
+    std::map<std::uint8_t, SlopeBand> printed_to;
+    for (const Outlet& outlet : in.outlets) {
+        for (const LandShare& share : outlet.own_land.shares()) {
+            const CoverClass& cover = in.book.classes()[share.kind.cover];
+            const auto found = find_printed_row(cover.land_use);
+            if (!found || !found->table->printed_to || cover.coefficient(group_of(share.kind.soil))) continue;
+            if (share.kind.slope <= *found->table->printed_to) continue;
+            steep[share.kind.cover] += share.area;
+            printed_to[share.kind.cover] = *found->table->printed_to;
+        }
+    }
+    for (const auto& [place, area] : steep) {
+        const CoverClass& cover = in.book.classes()[place];
+        const Area land = square_metres(from_fixed_area(area));
+        notices.push_back({.code = "steeper-than-printed",
+                           .text = area_text(land) + " of " + cover.name + " are steeper than any slope for which " + cover.land_use +
+                                   " is printed; the coefficient of " + words(printed_to[place]) +
+                                   " was taken: state c in the cover book where you know better",
+                           .value = in_acres(land)});
     }
 }
 
@@ -159,6 +185,7 @@ Notices peak_notices(const PeakInputs& in, const std::vector<std::vector<PointPe
     for (const PipeRun& run : in.network.pipes) tell_pipe(run, points[run.inlet - 1][in.rain.raster], in, notices);
     if (in.study.peaks.coefficient.value_or(CoefficientSource::book) == CoefficientSource::book) {
         for (const CoverClass& cover : in.book.classes()) tell_range(cover, notices);
+        tell_steep(in, notices);
     }
     tell_periods(in.study, in.rain, notices);
     return notices;

@@ -11,7 +11,7 @@
 #include "rillclock/hydraulics/manning.hpp"
 #include "rillclock/hydraulics/shallow_flow.hpp"
 #include "rillclock/surface/cover_book.hpp"
-#include "rillclock/surface/runoff_coefficients.hpp"
+#include "rillclock/surface/printed_coefficients.hpp"
 
 namespace rillclock {
 namespace {
@@ -218,14 +218,9 @@ void read_runoff_coefficients(const BookRow& row, CoverClass& cover) {
 
 void read_land_use(const BookRow& row, CoverClass& cover) {
     cover.land_use = row.text("land_use");
-    if (cover.land_use.empty() || find_land_use(cover.land_use) != nullptr) return;
-    std::vector<std::string_view> names;
-    std::string list;
-    for (const LandUse& use : land_uses()) {
-        names.push_back(use.name);
-        list += (list.empty() ? "" : ", ") + std::string(use.name);
-    }
-    throw row.fault("land_use", "is \"" + cover.land_use + "\"; write one of: " + list + did_you_mean(cover.land_use, names));
+    if (cover.land_use.empty() || printed_range(cover.land_use)) return;
+    throw row.fault("land_use", "is \"" + cover.land_use + "\"; write a land use as `rillclock methods` prints it, such as pasture or asce roofs" +
+                                    did_you_mean_any(cover.land_use, land_use_names()));
 }
 
 void read_impervious(const BookRow& row, CoverClass& cover) {

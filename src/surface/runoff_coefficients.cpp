@@ -3,6 +3,7 @@
 #include <algorithm>
 
 #include "rillclock/hydraulics/rational.hpp"
+#include "rillclock/surface/printed_coefficients.hpp"
 
 namespace rillclock {
 namespace {
@@ -67,6 +68,9 @@ KindCoefficient from_book(const CoverClass& cover, const LandKind& kind, double 
     const std::optional<SoilGroup> group = group_of(kind.soil);
     const bool by_soil = group && cover.runoff_coefficients[static_cast<std::size_t>(*group)];
     if (const auto own = cover.coefficient(group)) return {.value = *own, .by_soil = by_soil};
+    if (const auto found = find_printed_row(cover.land_use)) {
+        return {.value = found->table->range(*found->row, kind.slope).used(), .by_slope = found->row->by_slope.size() > 1};
+    }
     const LandUse* use = find_land_use(cover.land_use);
     if (use == nullptr) return {.lacking = lacking_text(cover, "c or land_use")};
     if (!group) return {.lacking = "the land use of " + cover.name + " needs a soil group, which is not stated everywhere"};
@@ -83,7 +87,8 @@ KindCoefficient from_imperviousness(const CoverClass& cover, CoefficientSource s
 
 double LandUse::coefficient(SoilGroup group, SlopeBand slope, double return_period) const {
     const ByGroup& groups = printed[return_period < rare_from_years ? 0 : 1];
-    return groups[static_cast<std::size_t>(group)][static_cast<std::size_t>(slope)];
+    const std::size_t column = slope == SlopeBand::to_2 ? 0 : slope <= SlopeBand::to_6 ? 1 : 2;
+    return groups[static_cast<std::size_t>(group)][column];
 }
 
 double LandUse::least() const { return printed[0][0][0]; }
@@ -122,8 +127,10 @@ bool has_coefficients(const CoverBook& book, CoefficientSource source) {
 
 bool uses_slope(const CoverBook& book, CoefficientSource source) {
     const auto classes = book.classes();
-    return source == CoefficientSource::book &&
-           std::any_of(classes.begin(), classes.end(), [](const CoverClass& c) { return !c.land_use.empty(); });
+    return source == CoefficientSource::book && std::any_of(classes.begin(), classes.end(), [](const CoverClass& c) {
+               const auto found = find_printed_row(c.land_use);
+               return found ? found->row->by_slope.size() > 1 : !c.land_use.empty();
+           });
 }
 
 }  // namespace rillclock

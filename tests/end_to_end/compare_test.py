@@ -59,6 +59,8 @@ class TwoResults(CommandTest):
         for point in comparison["points"]:
             self.assertEqual(point["time_min"]["change"], 0)
             self.assertTrue(point["same_head"])
+            self.assertTrue(point["same_path"])
+        self.assertIn("All governing paths run through the same cells.", self.done("compare", "before", "before"))
 
     def test_points_whose_time_becomes_shorter_are_worse_and_the_status_is_4(self):
         run = self.rillclock("compare", "before", "after", "--json")
@@ -215,6 +217,47 @@ class TwoResults(CommandTest):
 
     def test_a_tolerance_that_is_no_share_is_a_fault_of_the_command_line(self):
         self.refused(2, "compare", "before", "after", "--tolerance", "5 min", says=("--tolerance", "5 %"))
+
+
+class TwoPaths(CommandTest):
+    """One head, one point, and two ways round between them, of equal length and fall: which is taken hangs on a centimetre."""
+
+    def run_with_dip(self, folder, column):
+        ground = np.full((7, 5), -9999.0)
+        ground[0, 2], ground[6, 2] = 110, 100
+        for row in range(1, 6):
+            ground[row, [1, 3]] = 110 - 1.5 * row
+        ground[1, column] -= 0.01
+        write_raster(self.folder / "dem.tif", ground, nodata=-9999.0)
+        write_raster(self.folder / "cover.tif", np.ones((7, 5), np.uint8), kind=gdal.GDT_Byte, unit=None)
+        (self.folder / "book.csv").write_text(BOOK)
+        write_points(self.folder / "points.geojson", [("Foot", (500_005.0, 5_399_987.0))])
+        (self.folder / f"{folder}.toml").write_text(STUDY.format(cover="cover.tif", folder=folder, points='file = "points.geojson"\nname = "name"'))
+        self.done("run", f"{folder}.toml", "-q")
+
+    def setUp(self):
+        super().setUp()
+        self.run_with_dip("left", 1)
+        self.run_with_dip("right", 3)
+
+    def compared(self, before, after):
+        return json.loads(self.done("compare", before, after, "--json"))["points"][0]
+
+    def test_other_cells_are_another_path_though_head_length_and_time_are_the_same(self):
+        point = self.compared("left", "right")
+        self.assertEqual((point["same_head"], point["path_length_m"]["change"], point["time_min"]["change"]), (True, 0, 0))
+        self.assertIs(point["same_path"], False)
+        self.assertIn("1 of 1 governing paths run through other cells than before.", self.done("compare", "left", "right", "--out", "change"))
+        self.assertEqual(table(self.folder / "change/tables/comparison.csv")[0]["same_path"], "no")
+
+    def test_a_result_without_digests_leaves_it_open_and_says_so(self):
+        path = self.folder / "left/tables/outlets.csv"
+        path.write_text(path.read_text().replace("governing_path_digest", "governing_path"))
+        for before, after in (("left", "right"), ("right", "left"), ("left", "left")):
+            self.assertIsNone(self.compared(before, after)["same_path"])
+            self.assertIn("is not known: tables/outlets.csv of one of the results has no column governing_path_digest", self.done("compare", before, after))
+        self.done("compare", "left", "right", "--out", "change")
+        self.assertEqual(table(self.folder / "change/tables/comparison.csv")[0]["same_path"], "")
 
 
 if __name__ == "__main__":

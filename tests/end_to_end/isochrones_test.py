@@ -4,6 +4,7 @@ import json
 import subprocess
 import unittest
 
+import numpy as np
 from osgeo import ogr
 
 from peaks_test import demo_with_peaks, intensity
@@ -18,7 +19,7 @@ class Runoff(unittest.TestCase):
         folder = class_folder(cls, "test")
         demo_with_peaks(folder, more='isochrones = "7 min"\n')
         cls.folder = folder / "town/result"
-        cls.tables = {name: table(cls.folder / f"tables/{name}.csv") for name in ("handover", "outlets", "peaks")}
+        cls.tables = {name: table(cls.folder / f"tables/{name}.csv") for name in ("handover", "outlets", "peaks", "time_area")}
         cls.bands = [f["properties"] for f in json.loads((cls.folder / "isochrones.geojson").read_text())["features"]]
 
     def bands_of(self, scope, point):
@@ -65,6 +66,26 @@ class Runoff(unittest.TestCase):
         peaks = {r["point"]: float(r["whole_area_peak_m3_per_s"]) for r in self.tables["peaks"] if float(r["return_period_years"]) == YEARS}
         for point in {b["point"] for b in self.bands if b["of"] == "catchment"}:
             self.assertAlmostEqual(self.bands_of("catchment", point)[-1]["flow_m3_per_s"], peaks[point], delta=2e-4 * peaks[point])
+
+    def test_rain_translated_through_the_bands_keeps_its_volume(self):
+        """Three stretches of rain, each as long as a band, on the C·A of each band: what flows off is their depth on all C·A of the subareas."""
+        step_min, rain_mm = 7, np.array([2.0, 5.0, 1.0])
+        ca = {r["subarea"]: 1e4 * float(r[f"ca_{YEARS}yr_ha"]) for r in self.tables["handover"]}
+        for point in sorted({b["point"] for b in self.bands if b["of"] == "catchment"}):
+            bands = self.bands_of("catchment", point)
+            self.assertEqual([b["from_min"] for b in bands], [step_min * k for k in range(len(bands))])
+            arriving = np.diff([0.0] + [b["ca_until_m2"] for b in bands])
+            flow = np.convolve(rain_mm / 1000 / (60 * step_min), arriving)  # m3/s at the end of each stretch
+            subareas = {p["subarea"] for b in bands for p in b["subareas"]}
+            expected = rain_mm.sum() / 1000 * sum(ca[s] for s in subareas)
+            self.assertAlmostEqual(flow.sum() * 60 * step_min / expected, 1, delta=1e-4, msg=point)
+
+    def test_the_printed_search_holds_all_c_a_of_its_point(self):
+        for peak in self.tables["peaks"]:
+            rows = [r for r in self.tables["time_area"] if all(r[c] == peak[c] for c in ("point", "return_period_years"))]
+            ca = float(peak["area_ha"]) * float(peak["runoff_coefficient_with_factor"])
+            self.assertAlmostEqual(sum(float(r["arriving_since_ca_ha"]) for r in rows) / ca, 1, delta=1e-4)
+            self.assertAlmostEqual(float(rows[-1]["arrived_ca_ha"]) / ca, 1, delta=1e-4)
 
     def test_the_layer_says_the_same(self):
         source = ogr.Open(str(self.folder / "study.gpkg"))

@@ -151,6 +151,18 @@ class Readme(unittest.TestCase):
         self.assertIn("    0.016  asphalt pavement, rough\n", text)
         self.assertIn("    0.04  mountain: gravels, cobbles, few boulders (0.03 to 0.05)\n", text)
 
+    def test_every_table_of_runoff_coefficients_is_named_and_every_land_use_of_the_readme_is_printed(self):
+        text = subprocess.run([COMMAND, "methods"], capture_output=True, text=True, check=True).stdout
+        tables = re.findall(r"(?m)^Runoff coefficients of ([^,\n]+)", text)
+        self.assertEqual(len(tables), 6)
+        for name in tables:
+            self.assertIn(name, section("Peak flows"))
+        self.assertIn("    asce roofs: 0.85 (0.75 to 0.95)\n", text)
+        self.assertIn("    schwab pasture on tight clay: 0.4, 0.55, 0.6\n", text)
+        self.assertIn("    cultivated, pasture, meadow,", text)
+        for name in re.findall(r'`((?:asce|schwab|herpicc|everett|new york) [^`]+)`', README):
+            self.assertRegex(text, rf"(?m)^    {name}: ")
+
     def test_every_method_is_named_with_its_formula_and_source(self):
         text = subprocess.run([COMMAND, "methods"], capture_output=True, text=True, check=True).stdout
         listed = re.findall(r"(?m)^\| `([a-z-]+)` \| (.*) \| `(.*)` \| (.*) \|$", section("Formulas and where they come from"))

@@ -28,24 +28,11 @@ double value_of(std::span<const SurfaceCoefficient> table, const Inputs& in) {
     return table[static_cast<std::size_t>(in["row"]) - 1].value;
 }
 
-double mean_of_two(const Inputs& in) {
-    return area_weighted_mean(
-        std::array{AreaValue{hectares(in["A1_ha"]), in["C1"]}, AreaValue{hectares(in["A2_ha"]), in["C2"]}});
-}
-
-double mean_of_four(const Inputs& in) {
-    return area_weighted_mean(
-        std::array{AreaValue{hectares(in["A1_ha"]), in["C1"]}, AreaValue{hectares(in["A2_ha"]), in["C2"]},
-                   AreaValue{hectares(in["A3_ha"]), in["C3"]}, AreaValue{hectares(in["A4_ha"]), in["C4"]}});
-}
-
 Formulas tables() {
     return {
         {"kerby_N", [](const Inputs& in) { return value_of(kerby_retardances(), in); }},
         {"izzard_c", [](const Inputs& in) { return value_of(izzard_retardances(), in); }},
         {"county_K", [](const Inputs& in) { return value_of(county_initial_factors(), in); }},
-        {"mean_of_two", mean_of_two},
-        {"mean_of_four", mean_of_four},
     };
 }
 

@@ -20,4 +20,8 @@ namespace rillclock {
 /// "; did you mean X?", or nothing where no candidate is near.
 [[nodiscard]] std::string did_you_mean(std::string_view word, std::span<const std::string_view> candidates);
 
+/// The same for names of several words: those of the candidates that share most words with the name, five at most, the nearest first;
+/// where none shares any, as above. Words are between spaces; capital and small letters are the same.
+[[nodiscard]] std::string did_you_mean_any(std::string_view name, std::span<const std::string_view> candidates);
+
 }  // namespace rillclock

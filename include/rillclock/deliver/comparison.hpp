@@ -35,6 +35,7 @@ struct ComparedPoint {
     TwoFigures ground_time_min;           ///< along the governing path
     TwoFigures length;                    ///< of the governing path, in the results' unit of length
     bool has_same_head = true;            ///< whether the governing path begins at the same place
+    std::optional<bool> has_same_path = {};  ///< whether it runs through the same cells; none where a result does not say through which
     std::string last_before = {};         ///< the subarea that arrives last; empty where the results do not say
     std::string last_after = {};
     TwoFigures lead_min;
@@ -54,12 +55,16 @@ struct Comparison {
     double tolerance = 0.05;              ///< share
     std::vector<ComparedPoint> points;    ///< in the order of the result before
 
+    /// Whether for every point it is known if the path is the same.
+    [[nodiscard]] bool knows_paths() const;
     /// Places of the points that get worse by more than the tolerance, the worst first; of equal ones the earlier.
     [[nodiscard]] std::vector<std::size_t> worse() const;
 };
 
 /// How many points get worse, and which most.
 [[nodiscard]] std::string comparison_sentence(const Comparison& comparison);
+/// How many governing paths run through other cells, or that it is not known.
+[[nodiscard]] std::string paths_sentence(const Comparison& comparison);
 /// Places of all points: those that get worse, the worst first, then the others by how much their time changes.
 [[nodiscard]] std::vector<std::size_t> places_by_change(const Comparison& comparison);
 /// A sentence on the whole and a table for a terminal: points that get worse first, then those that change most; at most `most` rows.

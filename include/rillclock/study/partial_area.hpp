@@ -63,10 +63,4 @@ struct PartialPeak {
 [[nodiscard]] std::optional<RainWindow> rain_window(const ArrivalCurve& curve, const PartialAreaSearch& search,
                                                     Duration duration);
 
-/// C·A that contributes at the end of each bin when rain of so many bins begins with the first: what arrives at the outlet is
-/// rain of that time and of the bins before. Times an intensity it is the flow of pure translation, whose volume is that of
-/// the rain; its greatest is that of the window in which most arrives. Source: Clark, Storage and the unit hydrograph, Trans.
-/// ASCE 110, 1945 (from memory), without the storage.
-[[nodiscard]] std::vector<FixedArea> translated_runoff(const ArrivalCurve& curve, std::size_t rain_bins);
-
 }  // namespace rillclock

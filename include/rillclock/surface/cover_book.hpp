@@ -40,7 +40,7 @@ struct CoverClass {
     std::optional<double> runoff_coefficient = {};  ///< of any soil, 0 to 1; where the book has it
     std::array<std::optional<double>, 4> runoff_coefficients =
         {};                     ///< by soil group, 0 to 1, none below that before; where the book has them
-    std::string land_use = {};           ///< name of one of `land_uses()` (runoff_coefficients.hpp); may be empty
+    std::string land_use = {};           ///< one of `land_use_names()` (printed_coefficients.hpp); may be empty
     std::optional<double> kerby_n = {};    ///< Kerby's retardance, above 0 to 1; where the book has it
     std::optional<double> izzard_c = {};   ///< Izzard's retardance, above 0 to 1
     std::optional<double> impervious = {};  ///< share of the ground that is, 0 to 1; where the book has it
@@ -89,7 +89,7 @@ private:
 /// empty;
 /// - `cn_a`, `cn_b`, `cn_c`, `cn_d` (curve number by soil group), `c` (runoff coefficient of any soil) and `c_a` to `c_d`
 ///   (of each soil group; each may be absent or empty), for runoff and for methods that time a catchment as one lump;
-/// - `land_use` (a name of `land_uses()`, for runoff coefficients printed by soil group, slope and return period) and
+/// - `land_use` (one of `land_use_names()`: a row of a printed table of runoff coefficients) and
 ///   `impervious_percent` (of the ground, 0 to 100; the column `impervious` is refused, since it does not say its unit), each may be
 ///   absent or empty;
 /// - `kerby_n`, `izzard_c` (retardances) and `county_k` (each may be absent

@@ -15,7 +15,7 @@ namespace rillclock {
 /// Source: Rawls, Wong and McCuen, 1981, as in McCuen, Hydrologic Analysis and Design, table 7-9 (values from memory).
 struct LandUse {
     std::string_view name;
-    std::array<std::array<std::array<double, 3>, 4>, 2> printed;  ///< by frequent or rare, soil group A to D, slope band
+    std::array<std::array<std::array<double, 3>, 4>, 2> printed;  ///< by frequent or rare, soil group A to D, slope to 2 %, to 6 % and steeper
 
     /// The printed coefficient: below 25 years or from there on, by the return period in years.
     [[nodiscard]] double coefficient(SoilGroup group, SlopeBand slope, double return_period) const;
@@ -23,14 +23,14 @@ struct LandUse {
     [[nodiscard]] double greatest() const;
 };
 
-/// The land uses of the table, in its order.
+/// The land uses of that table, in its order; those of other tables are in printed_coefficients.hpp.
 [[nodiscard]] std::span<const LandUse> land_uses();
 /// Null where none has that name.
 [[nodiscard]] const LandUse* find_land_use(std::string_view name);
 
 /// Where runoff coefficients come from.
 enum class CoefficientSource {
-    book,      ///< of the cover book: its own c, else those printed for its land use
+    book,      ///< of the cover book: its own c, else what is printed for its land use
     urbonas,   ///< of the imperviousness of its classes
     schueler,
 };

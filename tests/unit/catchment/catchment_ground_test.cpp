@@ -60,9 +60,9 @@ TEST_CASE("slopes of neighbouring cells taken together are those of each, to the
 
 TEST_CASE("grounds put together are the ground of all their cells") {
     CatchmentGround a;
-    a.add(3, CellSoil::b, 100, 0.1, 50);
+    a.add(3, CellSoil::b, 100, 0.15, 50);
     CatchmentGround b;
-    b.add(0, CellSoil::b, 50, 0.3, 70);
+    b.add(0, CellSoil::b, 50, 0.25, 70);
     b.add(3, CellSoil::b, 10, 0.2, 60);
     a.add(b);
     CHECK(a.cells() == 3);
@@ -70,7 +70,7 @@ TEST_CASE("grounds put together are the ground of all their cells") {
     CHECK(a.mean_elevation_m() == Approx(60));
     const std::vector<LandShare> land = a.land().shares();
     REQUIRE(land.size() == 2);
-    CHECK(land[0].kind == LandKind{.cover = 0, .soil = CellSoil::b, .slope = SlopeBand::steep});
+    CHECK(land[0].kind == LandKind{.cover = 0, .soil = CellSoil::b, .slope = SlopeBand::to_30});
     CHECK(land[1].cells == 2);
     CHECK(land[1].area == 110);
 }

@@ -38,5 +38,16 @@ TEST_CASE("the suggestion is the end of a sentence, or nothing") {
     CHECK(did_you_mean("rainfall", words).empty());
 }
 
+TEST_CASE("of names of several words those that share most are suggested, the nearest first") {
+    constexpr std::array<std::string_view, 4> names{"asce lawn on sandy soil", "asce lawn on heavy soil", "asce roofs", "pasture"};
+    CHECK(did_you_mean_any("ASCE lawn sand", names) == "; did you mean asce lawn on sandy soil or asce lawn on heavy soil?");
+    CHECK(did_you_mean_any("heavy  lawn", names) == "; did you mean asce lawn on heavy soil?");
+    CHECK(did_you_mean_any("pastur", names) == "; did you mean pasture?");
+    CHECK(did_you_mean_any("rainfall", names).empty());
+    CHECK(did_you_mean_any("", names).empty());
+    constexpr std::array<std::string_view, 6> many{"a one", "a two", "a three", "a four", "a five", "a six"};
+    CHECK(did_you_mean_any("a", many) == "; did you mean a one, a two, a six, a four or a five?");
+}
+
 }  // namespace
 }  // namespace rillclock

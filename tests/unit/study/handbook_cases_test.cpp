@@ -3,6 +3,9 @@
 #include <catch2/catch.hpp>
 
 #include <cmath>
+#include <numeric>
+
+#include "rillclock/study/time_area_rows.hpp"
 
 namespace rillclock {
 namespace {
@@ -61,23 +64,24 @@ TEST_CASE("subareas that arrive together, or all below the least time, count tog
     CHECK(cfs(cases.part_and_share) == Approx(std::max(cfs(at_five), cfs(at_nine))));
 }
 
-TEST_CASE("the time-area translation of four isochrones under rain of two steps keeps its volume") {
+TEST_CASE("the printed search of four isochrones keeps their areas, so that rain translated through its rows keeps its volume") {
     // Isochrone areas of 10, 30, 20, 40 km2 an hour apart, 0.5 cm/h over 2 h: 5, 20, 25, 30, 20, 0 km2 cm/h (computed by hand).
     ArrivalCurve curve{.runoff = {}, .bin = hours(1)};
     for (const double km2 : {10.0, 30.0, 20.0, 40.0}) curve.runoff.push_back(to_fixed_area(in_square_metres(square_kilometres(km2))));
-    const std::vector<FixedArea> contributing = translated_runoff(curve, 2);
-    std::vector<double> flows;
-    double volume = 0.0;
-    for (const FixedArea area : contributing) {
-        flows.push_back(0.5 * in_square_kilometres(square_metres(from_fixed_area(area))));
-        volume += flows.back();
+    const IntensityOfDuration rain = [](Duration) { return std::optional(millimetres_per_hour(5)); };
+    const PartialAreaSearch search{.rain = rain, .least_time = hours(1), .whole_time = hours(4)};
+    const std::vector<TimeAreaRow> rows = time_area_rows(curve, search, hours(4), 0, RationalConversion::exact);
+    REQUIRE(rows.size() == 4);
+    std::vector<double> flows(6, 0.0);
+    for (std::size_t hour = 0; hour < rows.size(); ++hour) {
+        CHECK(in_hours(rows[hour].duration) == static_cast<double>(hour + 1));
+        const double band = in_square_kilometres(square_metres(from_fixed_area(rows[hour].in_band)));
+        for (const std::size_t block : {hour, hour + 1}) flows[block] += 0.5 * band;
     }
     CHECK(flows == std::vector<double>{5, 20, 25, 30, 20, 0});
-    CHECK(volume == 100.0);  // 1 cm on 100 km2
-    const IntensityOfDuration rain = [](Duration) { return std::optional(millimetres_per_hour(5)); };
-    const auto window = rain_window(curve, {.rain = rain, .least_time = hours(1), .whole_time = hours(4)}, hours(2));
-    REQUIRE(window);
-    CHECK(window->product == Approx(83.33).margin(0.005));  // m3/s, the greatest of the six
+    CHECK(std::accumulate(flows.begin(), flows.end(), 0.0) == 100.0);  // 1 cm on 100 km2
+    // The greatest of the six is the flow of the row for as long a rain.
+    CHECK(in_cubic_metres_per_second(rows[1].flow) == Approx(83.33).margin(0.005));
 }
 
 }  // namespace

@@ -18,7 +18,8 @@ CoverBook pasture_book(double c) {
 
 /// Pasture with a coefficient of its own, drained by one point.
 struct Town {
-    explicit Town(double c) : book(pasture_book(c)) {
+    explicit Town(double c) : Town(pasture_book(c)) {}
+    explicit Town(CoverBook stated) : book(std::move(stated)) {
         study.rain.file = "rain.csv";
         study.rain.two_year_24_hour = inches(3.6);
     }
@@ -31,6 +32,7 @@ struct Town {
         outlet.point.name = "Weir";
         outlet.own_front.add({.cell = 1, .time = {.fixed = time}});
         outlet.own_area = to_fixed_area(10'000);
+        outlet.own_land.add({.cover = 0, .soil = CellSoil::unknown, .slope = slope}, outlet.own_area);
         PointStorm storm;
         storm.time = {.fixed = time};
         storm.iteration.rows.push_back({.assumed = last, .intensity = {}, .computed = last});
@@ -44,6 +46,7 @@ struct Town {
                            {ArrivalHistogram({{.fixed_bin = bin, .kind = {}, .area = outlet.own_area}})}).notices;
     }
 
+    SlopeBand slope = SlopeBand::to_2;
     Study study{.file = "town.toml"};
     CoverBook book;
     StudyRain rain;
@@ -84,6 +87,31 @@ TEST_CASE("a coefficient outside what is printed for its land use is told, with 
     REQUIRE(noticed(of_below, "coefficient-outside-range") != nullptr);
     CHECK(noticed(of_below, "coefficient-outside-range")->threshold == least);
     for (const double within : {least, greatest}) CHECK(noticed(Town(within).notices(minutes(20), to_100_years), "coefficient-outside-range") == nullptr);
+}
+
+CoverBook tight_clay_book(std::optional<double> c) {
+    CoverClass wood{.code = 1, .name = "Grove", .n_typical = 0.4};
+    wood.land_use = "schwab woodland on tight clay";
+    wood.runoff_coefficient = c;
+    return {"test", {wood}};
+}
+
+TEST_CASE("land steeper than its table is printed for is told with its area, unless its coefficient is stated") {
+    Town town(tight_clay_book(std::nullopt));
+    CHECK(noticed(town.notices(minutes(20), to_100_years), "steeper-than-printed") == nullptr);
+    town.slope = SlopeBand::to_30;
+    CHECK(noticed(town.notices(minutes(20), to_100_years), "steeper-than-printed") == nullptr);
+    town.slope = SlopeBand::steeper;
+    const Notices told = town.notices(minutes(20), to_100_years);
+    REQUIRE(noticed(told, "steeper-than-printed") != nullptr);
+    CHECK(noticed(told, "steeper-than-printed")->value == Approx(2.471).epsilon(0.001));  // one hectare
+    CHECK_THAT(noticed(told, "steeper-than-printed")->text, Contains("Grove") && Contains("schwab woodland on tight clay") && Contains("10 to 30 %"));
+    Town stated(tight_clay_book(0.7));
+    stated.slope = SlopeBand::steeper;
+    const Notices own = stated.notices(minutes(20), to_100_years);
+    CHECK(noticed(own, "steeper-than-printed") == nullptr);
+    REQUIRE(noticed(own, "coefficient-outside-range") != nullptr);
+    CHECK(noticed(own, "coefficient-outside-range")->threshold == 0.60);
 }
 
 TEST_CASE("a return period beyond the printed frequency factors is told") {

@@ -25,7 +25,7 @@ LandAreas every_kind() {
     FixedArea area = 1'000'000;
     for (const std::uint8_t cover : {std::uint8_t{0}, std::uint8_t{1}, std::uint8_t{2}}) {
         for (const CellSoil soil : {CellSoil::a, CellSoil::b, CellSoil::d}) {
-            for (const SlopeBand slope : {SlopeBand::flat, SlopeBand::steep}) land[{.cover = cover, .soil = soil, .slope = slope}] = area += 12'345;
+            for (const SlopeBand slope : {SlopeBand::to_2, SlopeBand::to_10}) land[{.cover = cover, .soil = soil, .slope = slope}] = area += 12'345;
         }
     }
     return land;
