@@ -18,7 +18,9 @@ class LayerWriter {
 public:
     using Value = std::function<FieldValue(const Row&)>;
 
-    LayerWriter(VectorFile& file, LayerDescription layer) : file_(file), layer_(std::move(layer)) { layer_.indexed_field = "point"; }
+    LayerWriter(VectorFile& file, LayerDescription layer) : file_(file), layer_(std::move(layer)) {
+        if (layer_.indexed_field.empty()) layer_.indexed_field = "point";
+    }
 
     LayerWriter& field(std::string name, FieldKind kind, std::string description, Value value) {
         layer_.fields.push_back({std::move(name), kind, std::move(description)});

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <set>
 
+#include "ground_layers.hpp"
 #include "isochrone_rows.hpp"
 #include "layer_writer.hpp"
 #include "network_layers.hpp"
@@ -168,12 +169,15 @@ std::string words_on_left_out_catchments(const Study& study, std::size_t points)
            " points; it has the subareas of all, and output.catchments = \"all\" asks for all";
 }
 
-void write_study_geopackage(const std::filesystem::path& path, const StudyResult& result, const StudyRegions& regions) {
+void write_study_geopackage(const std::filesystem::path& path, const StudyResult& result, const StudyShapes& shapes) {
+    const StudyRegions& regions = shapes.regions;
     VectorFile file(path, result.system);
     if (regions.isochrones()) write_isochrones(result, regions, file);
     write_subareas(result, regions, file);
     write_catchments(result, regions, file);
     if (!result.drawn.empty()) write_differences(result, file);
+    write_depressions(result, shapes.depressions, file);
+    if (shapes.own_ways) write_own_paths(result, *shapes.own_ways, file);
     write_paths(result, file);
     write_network(result, file);
     write_outlets(result, file);

@@ -72,8 +72,8 @@ RasterFile::RasterFile(RasterRequest request) : request_(std::move(request)), op
     if (is_virtual_raster(request_.path)) check_virtual_raster(request_.path);
     open();
     choose_band();
+    check_size();   // what is too large is not asked to be copied anew
     check_content();
-    check_size();
     set_stored_type();
     set_grid();
     set_system();

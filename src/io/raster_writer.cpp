@@ -3,6 +3,7 @@
 #include <ogr_spatialref.h>
 
 #include <array>
+#include <bit>
 #include <charconv>
 #include <cstring>
 #include <string>
@@ -41,6 +42,15 @@ GDALDataType gdal_type(StoredType type) {
 constexpr std::int64_t full_side = 256;
 /// The least side of a raster that gets a coarser copy.
 constexpr std::int64_t seen_at_once = 512;
+
+/// The least that the shorter side of a coarser copy may be: a narrower one shows nothing, and its blocks would be mostly empty.
+constexpr std::int64_t least_copy_side = 16;
+
+/// Side of blocks that are squares of a power of two, as GDAL asks for. All of a block is packed, so those of a narrow raster are no wider than need be.
+std::int64_t square_side(std::int64_t shorter_side, std::int64_t most) {
+    constexpr std::int64_t least = 64;
+    return std::clamp(static_cast<std::int64_t>(std::bit_ceil(static_cast<std::uint64_t>(shorter_side))), least, most);
+}
 
 /// Sides of blocks; for smaller rasters the multiple of 16 (which TIFF asks for) that holds them.
 std::int64_t block_side(std::int64_t cells) {
@@ -106,11 +116,16 @@ RasterWriter::~RasterWriter() {
 void RasterWriter::plan_levels() {
     levels_.push_back({.rows = grid_.rows, .columns = grid_.columns, .block_rows = block_side(grid_.rows),
                        .block_columns = block_side(grid_.columns)});
+    const std::int64_t side = copies_side();
     while (std::max(levels_.back().rows, levels_.back().columns) > seen_at_once) {
-        levels_.push_back({.rows = (levels_.back().rows + 1) / 2, .columns = (levels_.back().columns + 1) / 2,
-                           .block_rows = full_side, .block_columns = full_side});
+        const Level next{.rows = (levels_.back().rows + 1) / 2, .columns = (levels_.back().columns + 1) / 2, .block_rows = side, .block_columns = side};
+        if (std::min(next.rows, next.columns) < least_copy_side) return;
+        levels_.push_back(next);
     }
 }
+
+/// Side of the blocks of coarser copies.
+std::int64_t RasterWriter::copies_side() const { return square_side((std::min(grid_.rows, grid_.columns) + 1) / 2, full_side); }
 
 void RasterWriter::remove() const {
     std::error_code ignored;
@@ -223,7 +238,7 @@ void RasterWriter::add_overviews() {
     for (std::size_t i = 1; i < levels_.size(); ++i) factors.push_back(1 << i);
     if (!factors.empty()) {
         const ThreadOption zstd("ZSTD_LEVEL_OVERVIEW", "1");
-        const ThreadOption block("GDAL_TIFF_OVR_BLOCKSIZE", std::to_string(full_side).c_str());
+        const ThreadOption block("GDAL_TIFF_OVR_BLOCKSIZE", std::to_string(copies_side()).c_str());
         const CPLErr result = dataset_->BuildOverviews("NONE", static_cast<int>(factors.size()), factors.data(), 0, nullptr,
                                                        nullptr, nullptr);
         throw_if_failed(result == CE_None);
@@ -253,6 +268,7 @@ void RasterWriter::rearrange() {
     options.SetNameValue("COMPRESS", "ZSTD");
     options.SetNameValue("LEVEL", "1");
     options.SetNameValue("PREDICTOR", "YES");
+    options.SetNameValue("BLOCKSIZE", std::to_string(square_side(std::min(grid_.rows, grid_.columns), 512)).c_str());
     options.SetNameValue("OVERVIEWS", "FORCE_USE_EXISTING");
     options.SetNameValue("BIGTIFF", "IF_SAFER");
     options.SetNameValue("NUM_THREADS", CPLGetConfigOption("GDAL_NUM_THREADS", "ALL_CPUS"));

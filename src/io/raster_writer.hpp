@@ -15,7 +15,7 @@
 namespace rillclock {
 
 /// The GDAL side of a raster that is being written: takes whole rows of blocks in order, of the raster itself (level 0) and of its
-/// overviews (each half as fine as the level before).
+/// overviews (each half as fine as the level before). Overviews end where a screen holds them, or where they would be less than 16 cells wide.
 class RasterWriter {
 public:
     RasterWriter(const std::filesystem::path& path, const Grid& grid, const ReferenceSystem& system,
@@ -45,6 +45,7 @@ private:
     };
 
     void plan_levels();
+    [[nodiscard]] std::int64_t copies_side() const;
     void create(const ReferenceSystem& system);
     void describe(const ReferenceSystem& system);
     void name_categories();

@@ -90,9 +90,9 @@ RasterStory story_of(const LastPass& pass, const std::vector<StepTime>& times, c
     return story;
 }
 
-/// Makes all tiles, a row of them at a time: `look(desk)` at each, `after(first row, rows)` after each row.
-template <class Look, class After>
-void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, After after) {
+/// Makes all tiles, a row of them at a time: `look(desk)` at each, `after(first row, rows)` after each row, `end()` after the last.
+template <class Look, class After, class End>
+void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, After after, End end) {
     const TileGrid& tiles = pass.travel.ground().forest.tiles();
     const auto across = static_cast<std::size_t>(tiles.tiles_across());
     const std::int64_t cells = tiles.rows() * tiles.columns();
@@ -108,6 +108,7 @@ void work_all_tiles(const LastPass& pass, std::string_view stage, Look look, Aft
         });
         after(tiles.window(first).row, tiles.window(first).rows);
     }
+    end();
     pass.progress.tell({.stage = stage, .done = cells, .total = cells, .finished = true});
 }
 
@@ -117,7 +118,7 @@ void tally_all(const LastPass& pass, ArrivalTally& tally, HistogramTally* histog
         tally.add(desk);
         if (histograms != nullptr) histograms->add(desk);
     };
-    work_all_tiles(pass, "storms", look, [](std::int64_t, std::int64_t) {});
+    work_all_tiles(pass, "storms", look, [](std::int64_t, std::int64_t) {}, [] {});
 }
 
 std::vector<PointHeads> under_one_storm_alone(const LastPass& pass) {
@@ -145,8 +146,7 @@ std::vector<PointHeads> under_one_storm(const LastPass& pass) {
         rasters.fill(desk);
     };
     work_all_tiles(pass, "writing rasters", look,
-                   [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
-    rasters.close();
+                   [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); }, [&] { rasters.close(); });
     return stage(pass.progress, "arrivals at points", pass.terrain.grid.size(), [&] {
         std::future<void> outlines = std::async(std::launch::async, [&] { pass.regions->finish(); });
         std::vector<PointHeads> heads = heads_of(tally.take(), pass.tree, factor, pass.study.timing.ignore_tail);
@@ -174,9 +174,11 @@ std::vector<PointHeads> under_own_storms(const LastPass& pass, const OwnStorms& 
     RasterStrips rasters(story_of(pass, times, factors, isochrone_rules(pass, heads, times)), pass.travel, pass.folder);
     work_all_tiles(
         pass, "writing rasters", [&](const TileDesk& desk) { rasters.fill(desk); },
-        [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); });
-    rasters.close();
-    pass.regions->finish();
+        [&](std::int64_t row, std::int64_t rows) { rasters.write(row, rows); },
+        [&] {
+            rasters.close();
+            pass.regions->finish();
+        });
     return heads;
 }
 

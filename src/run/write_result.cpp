@@ -29,8 +29,14 @@ void write_sheets(const StudyResult& result, const SheetBook& book, const Execut
     });
 }
 
-void write_shapes(const StudyResult& result, const StudyRegions& regions, ResultFolder& folder) {
-    write_study_geopackage(folder.path("study.gpkg"), result, regions);
+using Outlined = std::vector<OutlinedDepression>;
+
+void write_shapes(const WorkedStudy& worked, const Outlined& depressions, ResultFolder& folder) {
+    const StudyResult& result = worked.result;
+    const StudyRegions& regions = worked.regions;
+    StudyShapes shapes{.regions = regions, .depressions = depressions};
+    if (!worked.flow.line_cells.empty()) shapes.own_ways = worked.flow.own_ways;
+    write_study_geopackage(folder.path("study.gpkg"), result, shapes);
     folder.write_text("rasters/travel_time.sld", travel_time_sld(result));
     folder.write_text("rasters/regime.sld", regime_sld());
     folder.write_text("rasters/flow_azimuth.sld", flow_azimuth_sld());
@@ -65,10 +71,10 @@ void write_texts(const StudyResult& result, ResultFolder& folder) {
     }
 }
 
-void write_ground(const WorkedStudy& worked, ResultFolder& folder) {
+void write_ground(const WorkedStudy& worked, const Outlined& depressions, ResultFolder& folder) {
     const StudyResult& result = worked.result;
     folder.write_text("tables/depressions.csv", depressions_table(result, worked.depressions));
-    folder.write_text("depressions.geojson", depressions_geojson(result, outlined(worked.travel, worked.terrain.grid, worked.depressions)));
+    folder.write_text("depressions.geojson", depressions_geojson(result, depressions));
     if (!worked.flow.line_cells.empty()) folder.write_text("own_paths.geojson", own_ways_geojson(result, worked.flow.own_ways));
 }
 
@@ -86,13 +92,15 @@ ResultTexts write_result(const WorkedStudy& worked, ResultFolder& folder) {
     const StudyResult& result = worked.result;
     const Executor& executor = worked.travel.executor();
     // Each of these takes as long as all the rest and keeps one processor busy.
-    std::future<void> shapes = std::async(std::launch::async, [&] { write_shapes(result, worked.regions, folder); });
+    const std::shared_future<Outlined> depressions =
+        std::async(std::launch::async, [&] { return outlined(worked.travel, worked.terrain.grid, worked.depressions); }).share();
+    std::future<void> shapes = std::async(std::launch::async, [&] { write_shapes(worked, depressions.get(), folder); });
     const ResultText text = result_json(result, executor);
     std::future<std::string> rest = std::async(std::launch::async, [&] {
         std::string json = text.whole();
         folder.write_text("result.json", json);
         write_texts(result, folder);
-        write_ground(worked, folder);
+        write_ground(worked, depressions.get(), folder);
         return json;
     });
     const SheetBook book(text.frame, text.outlets);

@@ -19,7 +19,8 @@ sys.path.insert(0, "/usr/lib/python3/dist-packages")
 from osgeo_utils.samples import validate_cloud_optimized_geotiff, validate_gpkg  # noqa: E402
 
 LAYERS = {"outlets": "POINT", "catchments": "MULTIPOLYGON", "subareas": "MULTIPOLYGON", "paths": "MULTILINESTRING",
-          "segments": "MULTILINESTRING", "network": "MULTILINESTRING", "isochrones": "MULTIPOLYGON"}
+          "segments": "MULTILINESTRING", "network": "MULTILINESTRING", "isochrones": "MULTIPOLYGON", "depressions": "MULTIPOLYGON"}
+INDEXED = {"depressions": "depression"}   # the others by their point
 PIPES = "from,to,length,diameter,n,slope\nMarket inlet,Tramway bank,120 m,0.45 m,0.013,0.008\n"
 OVERRIDES = "point,time,way_time,sheet_length,n,c\nTramway bank,,4 min,,,\n"
 
@@ -87,11 +88,11 @@ class Layers(DemoTest):
     def test_each_layer_has_a_spatial_index_a_description_and_an_indexed_point(self):
         indexed = {row[0] for row in self.database("SELECT table_name FROM gpkg_extensions WHERE extension_name = 'gpkg_rtree_index'")}
         described = dict(self.database("SELECT table_name, description FROM gpkg_contents"))
-        indexes = {row[0] for row in self.database("SELECT tbl_name FROM sqlite_master WHERE type = 'index' AND sql LIKE '%(\"point\")%'")}
+        indexes = dict(self.database("SELECT tbl_name, sql FROM sqlite_master WHERE type = 'index' AND sql LIKE 'CREATE INDEX%_by_%'"))
         for name in LAYERS:
             self.assertIn(name, indexed)
             self.assertGreater(len(described[name]), 10)
-            self.assertIn(name, indexes)
+            self.assertIn(f'("{INDEXED.get(name, "point")}")', indexes[name])
             undescribed = self.database(f"SELECT name FROM pragma_table_info('{name}') WHERE name NOT IN ('fid', 'geom') AND name NOT IN "
                                         f"(SELECT column_name FROM gpkg_data_columns WHERE table_name = '{name}' AND length(description) > 3)")
             self.assertEqual(undescribed, [], name)
@@ -136,6 +137,24 @@ class Layers(DemoTest):
             layer = self.layer("catchments")
             _, count = burnt(layer, self.raster("catchment.tif"), f"number = {row['number']}")
             np.testing.assert_array_equal(count, np.isin(cells, above), row["name"])
+
+    def test_depressions_are_those_of_the_table_on_cells_below_their_spill_elevation(self):
+        rows = table(self.result_folder / "tables/depressions.csv")
+        layer = self.layer("depressions")
+        self.assertEqual(layer.GetFeatureCount(), len(rows))
+        deepest_first = [feature["depth_m"] for feature in layer]
+        self.assertEqual(deepest_first, sorted(deepest_first, reverse=True))
+        for number, (feature, row) in enumerate(zip(layer, rows), 1):
+            self.assertEqual((feature["depression"], feature["on_governing_path"]), (number, row["on_governing_path"]))
+            self.assertEqual((feature["pass_x"], feature["pass_y"]), (float(row["pass_x"]), float(row["pass_y"])))
+            self.assertEqual(feature["area_m2"], 4.0 * int(row["cells"]))
+            self.assertAlmostEqual(feature.GetGeometryRef().GetArea(), feature["area_m2"], places=6)
+        spill = self.raster("spill_elevation.tif")
+        depth = spill.ReadAsArray() - gdal.Open(str(self.kept / "town/dem.tif")).ReadAsArray()
+        depths, count = burnt(self.layer("depressions"), spill, None, lambda feature: feature["depth_m"])
+        below = (depth > 0) & (spill.ReadAsArray() != spill.GetRasterBand(1).GetNoDataValue())
+        np.testing.assert_array_equal(count, below)
+        self.assertTrue((depth[below] <= depths[below] + 6e-4).all())   # shown to the thousandth
 
     def test_shapes_are_valid(self):
         for name in LAYERS:

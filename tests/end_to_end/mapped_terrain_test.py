@@ -137,11 +137,36 @@ class MappedTerrain(CommandTest):
         self.assertAlmostEqual(path["properties"]["departure_m"], 32, delta=0.01)
         self.assertTrue(path["properties"]["comes_back"])
         self.assertEqual(path["geometry"]["type"], "LineString")
+        self.layer_has_the_same(path)
         self.assertIn("32 m away", self.notices()["departs-from-ground"]["text"])
         self.study('crossings = "culverts.gpkg"\ndeparture = "35 m"')
         self.run_study()
         self.assertEqual(self.features("own_paths.geojson"), [])
         self.assertNotIn("departs-from-ground", self.notices())
+        package = gdal.OpenEx(str(self.folder / "result/study.gpkg"), gdal.OF_VECTOR)
+        self.assertEqual(package.GetLayerByName("own_paths").GetFeatureCount(), 0)
+
+    def layer_has_the_same(self, path):
+        """The layer own_paths of study.gpkg holds the one path of own_paths.geojson, in the system of the elevations."""
+        package = gdal.OpenEx(str(self.folder / "result/study.gpkg"), gdal.OF_VECTOR)
+        layer = package.GetLayerByName("own_paths")
+        self.assertEqual(layer.GetFeatureCount(), 1)
+        feature = layer.GetNextFeature()
+        self.assertEqual((feature["own_path"], feature["comes_back"]), (1, "yes" if path["properties"]["comes_back"] else "no"))
+        self.assertAlmostEqual(feature["departure_m"], path["properties"]["departure_m"], delta=0.01)
+        line = ogr.CreateGeometryFromJson(json.dumps(path["geometry"]))
+        line.AssignSpatialReference(system_of(4326))
+        line.TransformTo(system_of(25832))
+        drawn = feature.GetGeometryRef().GetGeometryRef(0)
+        self.assertGreater(drawn.GetPointCount(), 2)
+        places, corners = np.array(drawn.GetPoints())[:, :2], np.array(line.GetPoints())[:, :2]
+        # The text has the corners alone, to a centimetre; the layer every cell.
+        np.testing.assert_allclose(places[[0, -1]], corners[[0, -1]], atol=0.02)
+        for corner in corners:
+            self.assertLess(np.hypot(*(places - corner).T).min(), 0.02)
+        self.assertAlmostEqual(drawn.Length(), line.Length(), delta=0.05)
+        for x, y in places:
+            self.assertEqual(((x - 500_000) / 2 % 1, (5_400_000 - y) / 2 % 1), (0.5, 0.5))
 
     def test_depressions_are_outlined(self):
         self.ground(values=dammed_valley(), kind=gdal.GDT_Float32)

@@ -181,20 +181,56 @@ TEST_CASE("overviews are those that GDAL would make") {
     }
 }
 
+TEST_CASE("coarser copies of a narrow raster end where they would be less than 16 cells wide, and have narrow blocks") {
+    struct Narrow {
+        std::int64_t shorter;
+        int copies;
+        int block_side;
+    };
+    // 200: 100, 50, 25; the next would have 13.
+    const auto [shorter, copies, block_side] =
+        GENERATE(Narrow{1, 0, 0}, Narrow{30, 0, 0}, Narrow{32, 1, 64}, Narrow{128, 3, 64}, Narrow{200, 3, 128}, Narrow{300, 4, 256});
+    const bool is_wide = GENERATE(false, true);
+    const bool is_cloud_optimized = GENERATE(false, true);
+    const TemporaryFolder folder;
+    const Raster<double> raster = is_wide ? rough(shorter, 10'000) : rough(10'000, shorter);
+    write(folder / "a.tif", raster,
+          {.stored = StoredType::float64, .overviews = OverviewKind::nearest, .cloud_optimized = is_cloud_optimized});
+    const GDALDatasetUniquePtr file = opened(folder / "a.tif");
+    GDALRasterBand& band = *file->GetRasterBand(1);
+    const std::vector<double> read = values_of(band);
+    CHECK(std::equal(read.begin(), read.end(), raster.values().begin(), raster.values().end()));
+    REQUIRE(band.GetOverviewCount() == copies);
+    if (copies == 0) return;
+    const GDALDatasetUniquePtr theirs = with_overviews_by_gdal(*file, "NEAREST", {2});
+    const std::vector<double> expected = values_of(*theirs->GetRasterBand(1)->GetOverview(0));
+    const std::vector<double> made = values_of(*band.GetOverview(0));
+    REQUIRE(made.size() == expected.size());
+    double apart = 0.0;
+    for (std::size_t i = 0; i < made.size(); ++i) apart = std::max(apart, std::abs(made[i] - expected[i]));
+    INFO(shorter << (is_wide ? " rows" : " columns") << (is_cloud_optimized ? ", cloud-optimized" : ""));
+    CHECK(apart <= 0.002);  // GDAL makes them in single precision
+    int columns = 0;
+    int rows = 0;
+    band.GetOverview(0)->GetBlockSize(&columns, &rows);
+    CHECK(columns == rows);
+    if (!is_cloud_optimized) CHECK(columns == block_side);
+}
+
 TEST_CASE("an overview of an odd number of rows and columns ends with half squares") {
     const TemporaryFolder folder;
-    Raster<double> raster(3, 601, 4.0);
-    raster(2, 600) = 11.0;
+    Raster<double> raster(35, 601, 4.0);
+    raster(34, 600) = 11.0;
     raster(0, 600) = 1.0;
     raster(1, 600) = 2.0;
     write(folder / "a.tif", raster, {.stored = StoredType::int16});
     const GDALDatasetUniquePtr file = opened(folder / "a.tif");
     GDALRasterBand& overview = *file->GetRasterBand(1)->GetOverview(0);
     REQUIRE(overview.GetXSize() == 301);
-    REQUIRE(overview.GetYSize() == 2);
+    REQUIRE(overview.GetYSize() == 18);
     const std::vector<double> values = values_of(overview);
     CHECK(values[300] == 2);        // of 1 and 2, halves up
-    CHECK(values[2 * 301 - 1] == 11);
+    CHECK(values[18 * 301 - 1] == 11);
     CHECK(values[0] == 4);
 }
 
