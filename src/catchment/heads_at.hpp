@@ -40,6 +40,7 @@ template <class Look>
     std::vector<PointHeads> heads(subareas.size());
     for (const PointNumber number : tree.upstream_first) {
         Arrivals& catchment = subareas[number - 1];  // by now with all that joins from above
+        catchment.bins.settle();
         heads[number - 1] = look(std::as_const(catchment), number);
         heads[number - 1].own_area = own_areas[number - 1];
         heads[number - 1].own_front = std::move(own_fronts[number - 1]);

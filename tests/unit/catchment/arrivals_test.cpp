@@ -3,7 +3,10 @@
 #include <catch2/catch.hpp>
 
 #include <algorithm>
+#include <map>
 #include <random>
+#include <utility>
+#include <vector>
 
 #include "rillclock/core/error.hpp"
 
@@ -139,6 +142,43 @@ TEST_CASE("bins that come in any order, some seconds twice, are those of their c
     for (const Head& last : bins.by_shares(shares)) found.push_back(last.cell);
     CHECK(found == std::vector<Cell>{9, 1, 4, 6, 8});
     CHECK(bins.last_without(0.34).cell == 6);
+}
+
+TEST_CASE("bins are those of their cells whether they have settled or not, however many new seconds come at a time") {
+    std::mt19937 random(1202);
+    for (const int seconds_in_all : {20, 300, 20'000}) {
+        std::uniform_int_distribution<int> second(0, seconds_in_all);
+        ArrivalBins bins;
+        std::map<int, std::pair<FixedArea, Head>> plain;
+        for (Cell batch = 0; batch < 60; ++batch) {
+            std::vector<ArrivalBins::Bin> some;
+            for (Cell i = 0; i < 1 + batch % 7 * 40; ++i) {
+                const Head cell = head(batch * 1000 + i, second(random));
+                const int bin = static_cast<int>(in_seconds(cell.time.under(1.0)));
+                some.push_back({.second = bin, .area = 10 + i, .last = cell});
+                const auto [there, is_new] = plain.try_emplace(bin, 0, cell);
+                there->second.first += 10 + i;
+                if (arrives_later(cell, there->second.second, 1.0)) there->second.second = cell;
+            }
+            if (batch % 3 == 0) {
+                ArrivalBins others;
+                others.add(std::move(some), 1.0);
+                bins.take(std::move(others), 1.0);
+            } else {
+                bins.add(std::move(some), 1.0);
+            }
+            if (batch % 11 == 0) bins.settle();
+        }
+        for (const double share : {0.01, 0.3, 0.5, 0.97, 1.0}) {
+            FixedArea arrived = 0;
+            auto bin = plain.begin();
+            while (static_cast<double>(arrived += bin->second.first) < share * static_cast<double>(bins.area())) ++bin;
+            CHECK(bins.by_share(share).cell == bin->second.second.cell);
+        }
+        ArrivalBins settled = bins;
+        settled.settle();
+        CHECK(settled.last_without(0.4).cell == bins.last_without(0.4).cell);
+    }
 }
 
 TEST_CASE("a front is the same whatever the order in which its cells came") {
