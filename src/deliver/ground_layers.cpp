@@ -6,9 +6,9 @@
 namespace rillclock {
 namespace {
 
-using layer_value::number;
+using layer_value::number_value;
 using layer_value::square_metres_of;
-using layer_value::whole;
+using layer_value::whole_value;
 
 struct OwnWayRow {
     const OwnWay* way = nullptr;
@@ -29,12 +29,12 @@ void write_depressions(const StudyResult& result, std::span<const OutlinedDepres
                                     .stroke = "#d55e00", .stroke_mm = 0.5},
                                    {.value = "no", .label = "on none", .fill = "#56b4e9", .fill_opacity = 0.4, .stroke = "#0072b2", .stroke_mm = 0.15}}}});
     layer.field("depression", FieldKind::whole_number, "its row in depressions.csv, from 1, the deepest first",
-                [](const OutlinedDepression& d) { return whole(d.number); })
+                [](const OutlinedDepression& d) { return whole_value(d.number); })
         .field("depth_m", FieldKind::number, "greatest depth",
-               [=](const OutlinedDepression& d) { return number(shown_depth(d.depression.depth * metres_per_unit)); })
+               [=](const OutlinedDepression& d) { return number_value(shown_depth(d.depression.depth * metres_per_unit)); })
         .field("area_m2", FieldKind::number, "area of its cells", [](const OutlinedDepression& d) { return square_metres_of(d.depression.area); })
         .field("volume_m3", FieldKind::number, "up to the level at which water gets out",
-               [=](const OutlinedDepression& d) { return number(d.depression.volume * metres_per_unit); })
+               [=](const OutlinedDepression& d) { return number_value(d.depression.volume * metres_per_unit); })
         .field("on_governing_path", FieldKind::text, "whether a governing path runs through it",
                [](const OutlinedDepression& d) { return yes_no(d.depression.on_path); })
         .field("pass_x", FieldKind::number, "where its water gets out",
@@ -50,9 +50,9 @@ void write_own_paths(const StudyResult& result, std::span<const OwnWay> ways, Ve
                                         .geometry = LayerGeometry::lines, .indexed_field = "own_path",
                                         .style = alike({.stroke = "#d55e00", .stroke_mm = 0.7})});
     layer.field("own_path", FieldKind::whole_number, "its number, from 1, the one that departs farthest first",
-                [](const OwnWayRow& r) { return whole(r.number); })
+                [](const OwnWayRow& r) { return whole_value(r.number); })
         .field("departure_m", FieldKind::number, "greatest distance from the way on which the lines lead the water",
-               [](const OwnWayRow& r) { return number(in_metres(r.way->departure)); })
+               [](const OwnWayRow& r) { return number_value(in_metres(r.way->departure)); })
         .field("comes_back", FieldKind::text, "whether it comes back to that way", [](const OwnWayRow& r) { return yes_no(r.way->comes_back); });
     layer.begin();
     for (std::size_t i = 0; i < ways.size(); ++i) {

@@ -7,10 +7,10 @@
 namespace rillclock {
 namespace {
 
-using layer_value::minutes;
-using layer_value::number;
+using layer_value::minutes_value;
+using layer_value::number_value;
 using layer_value::square_metres_of;
-using layer_value::whole;
+using layer_value::whole_value;
 
 /// The way from a point to the next one in the network.
 struct EdgeRow {
@@ -53,12 +53,12 @@ void add_way_fields(const StudyResult& result, EdgeLayer& layer) {
         .field("next_point", FieldKind::text, "name of the design point where it ends", [&result](const EdgeRow& r) { return point_name(result, r.network->next); })
         .field("by", FieldKind::text, "flow path, or pipe", [](const EdgeRow& r) { return std::string(r.pipe == nullptr ? "flow path" : "pipe"); })
         .field("length_m", FieldKind::number, "length", [](const EdgeRow& r) {
-            return number(r.pipe == nullptr ? from_fixed(r.outlet->way.length) : in_metres(r.pipe->length));
+            return number_value(r.pipe == nullptr ? from_fixed(r.outlet->way.length) : in_metres(r.pipe->length));
         })
         .field("fall_m", FieldKind::number, "fall of the spill elevation, or of the pipe", [](const EdgeRow& r) {
-            return number(r.pipe == nullptr ? r.outlet->way.fall_m : r.pipe->bed.slope * in_metres(r.pipe->length));
+            return number_value(r.pipe == nullptr ? r.outlet->way.fall_m : r.pipe->bed.slope * in_metres(r.pipe->length));
         })
-        .field("time_min", FieldKind::number, "time under the storm of the upper point, what is stated counted", [](const EdgeRow& r) { return minutes(r.seconds()); })
+        .field("time_min", FieldKind::number, "time under the storm of the upper point, what is stated counted", [](const EdgeRow& r) { return minutes_value(r.seconds()); })
         .field("stated", FieldKind::text, "what is stated of the upper point in place of what is computed", [&result](const EdgeRow& r) {
             return marks_of(result.network.edits[r.outlet->number - 1]);
         })
@@ -69,22 +69,22 @@ void add_kind_fields(const StudyResult& result, EdgeLayer& layer) {
     for (const Regime regime : {Regime::sheet, Regime::shallow, Regime::channel, Regime::water}) {
         const std::string name(name_of(regime));
         layer.field(name + "_percent", FieldKind::number, "share of the flow path's length that runs as " + name, of_ground([regime](const PointWay& way) {
-            return number(100.0 * way.share(regime));
+            return number_value(100.0 * way.share(regime));
         }));
     }
-    layer.field("diameter_m", FieldKind::number, "of the pipe", of_pipe([](const PipeRun& run) { return number(in_metres(run.pipe->pipe.diameter)); }))
-        .field("n", FieldKind::number, "Manning's n of the pipe", of_pipe([](const PipeRun& run) { return number(run.pipe->bed.n); }))
-        .field("slope", FieldKind::number, "of the pipe", of_pipe([](const PipeRun& run) { return number(run.pipe->bed.slope); }))
-        .field("velocity_m_per_s", FieldKind::number, "in the pipe", of_pipe([](const PipeRun& run) { return number(in_metres_per_second(run.velocity)); }))
+    layer.field("diameter_m", FieldKind::number, "of the pipe", of_pipe([](const PipeRun& run) { return number_value(in_metres(run.pipe->pipe.diameter)); }))
+        .field("n", FieldKind::number, "Manning's n of the pipe", of_pipe([](const PipeRun& run) { return number_value(run.pipe->bed.n); }))
+        .field("slope", FieldKind::number, "of the pipe", of_pipe([](const PipeRun& run) { return number_value(run.pipe->bed.slope); }))
+        .field("velocity_m_per_s", FieldKind::number, "in the pipe", of_pipe([](const PipeRun& run) { return number_value(in_metres_per_second(run.velocity)); }))
         .field("capacity_m3_per_s", FieldKind::number, "of the pipe, just full", of_pipe([](const PipeRun& run) {
-            return number(in_cubic_metres_per_second(run.capacity));
+            return number_value(in_cubic_metres_per_second(run.capacity));
         }))
         .field("design_flow_m3_per_s", FieldKind::number, "whole-area peak of all that comes to the pipe, by which it is timed; where that was asked for", of_pipe([](const PipeRun& run) {
-            return run.design_flow ? number(in_cubic_metres_per_second(*run.design_flow)) : FieldValue();
+            return run.design_flow ? number_value(in_cubic_metres_per_second(*run.design_flow)) : FieldValue();
         }))
         .field("peak_m3_per_s", FieldKind::number, "that comes to the pipe, at the return period that paths are for", of_pipe([&result](const PipeRun& run) {
             const PointPeak* peak = pipe_peak(result, run);
-            return peak == nullptr ? FieldValue() : number(in_cubic_metres_per_second(peak->partial), 5);
+            return peak == nullptr ? FieldValue() : number_value(in_cubic_metres_per_second(peak->partial), 5);
         }))
         .field("too_small", FieldKind::text, "whether that is more than the pipe takes just full", of_pipe([&result](const PipeRun& run) {
             const PointPeak* peak = pipe_peak(result, run);
@@ -119,8 +119,8 @@ PeakLayer::Value if_there(Value value) {
     return [value](const PeakFeature& r) { return r.peak->is_there() ? FieldValue(value(*r.peak)) : FieldValue(); };
 }
 
-FieldValue flow_value(Discharge flow) { return number(in_cubic_metres_per_second(flow), 5); }
-FieldValue rain_value(Intensity intensity) { return number(in_millimetres_per_hour(intensity), 7); }
+FieldValue flow_value(Discharge flow) { return number_value(in_cubic_metres_per_second(flow), 5); }
+FieldValue rain_value(Intensity intensity) { return number_value(in_millimetres_per_hour(intensity), 7); }
 
 std::string made_by(const PeakFeature& row) {
     if (!row.peak->is_there()) return "no peak";
@@ -135,15 +135,15 @@ LayerStyle peak_style() {
 
 void add_whole_fields(PeakLayer& layer) {
     layer.field("point", FieldKind::text, "name of the design point", [](const PeakFeature& r) { return r.outlet->point.name; })
-        .field("return_period_years", FieldKind::number, "of the storm", [](const PeakFeature& r) { return number(r.return_period); })
+        .field("return_period_years", FieldKind::number, "of the storm", [](const PeakFeature& r) { return number_value(r.return_period); })
         .field("made_by", FieldKind::text, "whether the whole area or a part of it makes the peak", made_by)
         .field("runoff_coefficient_before_factor", FieldKind::number, "mean C of the area, without the frequency factor",
-               if_there([](const PointPeak& p) { return number(p.coefficient.plain); }))
+               if_there([](const PointPeak& p) { return number_value(p.coefficient.plain); }))
         .field("runoff_coefficient_with_factor", FieldKind::number, "mean of the smaller of 1 and Cf C, with which peaks are made", if_there([](const PointPeak& p) {
-            return number(p.coefficient.value);
+            return number_value(p.coefficient.value);
         }))
         .field("time_of_concentration_min", FieldKind::number, "of the whole area under this storm", [](const PeakFeature& r) {
-            return minutes(in_seconds(r.peak->whole_time));
+            return minutes_value(in_seconds(r.peak->whole_time));
         })
         .field("intensity_mm_per_h", FieldKind::number, "of rain on the whole area", if_there([](const PointPeak& p) { return rain_value(p.whole_intensity); }))
         .field("whole_area_peak_m3_per_s", FieldKind::number, "C i A of the whole area", if_there([](const PointPeak& p) { return flow_value(p.whole); }));
@@ -153,12 +153,12 @@ void add_partial_fields(const StudyResult& result, PeakLayer& layer) {
     layer.field("peak_m3_per_s", FieldKind::number, "the greatest over all durations; never less than that of the whole area", if_there([](const PointPeak& p) {
             return flow_value(p.partial);
         }))
-        .field("peak_duration_min", FieldKind::number, "of the rain that makes it", if_there([](const PointPeak& p) { return minutes(in_seconds(p.window.duration)); }))
+        .field("peak_duration_min", FieldKind::number, "of the rain that makes it", if_there([](const PointPeak& p) { return minutes_value(in_seconds(p.window.duration)); }))
         .field("peak_intensity_mm_per_h", FieldKind::number, "of that rain", if_there([](const PointPeak& p) { return rain_value(p.peak_intensity); }))
-        .field("peak_share_of_area_percent", FieldKind::number, "that makes it", if_there([](const PointPeak& p) { return number(100.0 * p.window_share, 5); }))
+        .field("peak_share_of_area_percent", FieldKind::number, "that makes it", if_there([](const PointPeak& p) { return number_value(100.0 * p.window_share, 5); }))
         .field("peak_subareas", FieldKind::text, "subareas that make it, with their shares", if_there([&result](const PointPeak& p) { return makers_in_words(result, p); }))
         .field("last_subarea", FieldKind::text, "whose water arrives last", [&result](const PeakFeature& r) { return point_name(result, r.storm->last); })
-        .field("subareas", FieldKind::whole_number, "how many drain through the point", [](const PeakFeature& r) { return whole(r.storm->subareas_above); })
+        .field("subareas", FieldKind::whole_number, "how many drain through the point", [](const PeakFeature& r) { return whole_value(r.storm->subareas_above); })
         .field("why_not", FieldKind::text, "why there is no peak", [](const PeakFeature& r) { return r.peak->is_there() ? FieldValue() : FieldValue(r.peak->why_not); });
 }
 

@@ -11,9 +11,9 @@
 namespace rillclock {
 namespace {
 
-using layer_value::minutes;
-using layer_value::number;
-using layer_value::whole;
+using layer_value::minutes_value;
+using layer_value::number_value;
+using layer_value::whole_value;
 
 struct PathRow {
     const Outlet* outlet = nullptr;
@@ -44,13 +44,13 @@ PathLayer::Value where_joining(Value value) {
 void add_path_fields(const StudyResult& result, PathLayer& layer) {
     layer.field("point", FieldKind::text, "name of the design point", [](const PathRow& r) { return r.outlet->point.name; })
         .field("path", FieldKind::text, "governing: its water arrives last; longest: its water has the longest way", [](const PathRow& r) { return r.name; })
-        .field("length_m", FieldKind::number, "length of the whole path", [](const PathRow& r) { return number(from_fixed(r.path->summary.length)); })
-        .field("fall_m", FieldKind::number, "fall of the spill elevation, of the whole path", [](const PathRow& r) { return number(r.path->summary.fall_m); })
-        .field("time_min", FieldKind::number, "travel time of the whole path", [](const PathRow& r) { return minutes(r.path->seconds); })
+        .field("length_m", FieldKind::number, "length of the whole path", [](const PathRow& r) { return number_value(from_fixed(r.path->summary.length)); })
+        .field("fall_m", FieldKind::number, "fall of the spill elevation, of the whole path", [](const PathRow& r) { return number_value(r.path->summary.fall_m); })
+        .field("time_min", FieldKind::number, "travel time of the whole path", [](const PathRow& r) { return minutes_value(r.path->seconds); })
         .field("head_x", FieldKind::number, "where the path begins", [&result](const PathRow& r) { return result.grid.centre(r.path->cells.front()).x; })
         .field("head_y", FieldKind::number, "where the path begins", [&result](const PathRow& r) { return result.grid.centre(r.path->cells.front()).y; })
         .field("drawn_length_m", FieldKind::number, "of the way from the head that is drawn here; what runs with other paths is drawn with one of them",
-               [](const PathRow& r) { return number(r.path->distance_m[r.branch->steps]); })
+               [](const PathRow& r) { return number_value(r.path->distance_m[r.branch->steps]); })
         .field("joins_point", FieldKind::text, "the path goes on from there along that of this point; null where it is drawn to its end",
                where_joining([](const PathBranch& branch) { return branch.joins->point.name; }))
         .field("joins_path", FieldKind::text, "which of that point's paths", where_joining([](const PathBranch& branch) { return path_name(branch.joins_governing); }));
@@ -86,17 +86,17 @@ void write_segments(const StudyResult& result, const PathBranches& branches, Vec
                                          .geometry = LayerGeometry::lines, .style = regime_style()});
     layer.field("point", FieldKind::text, "name of the design point", [](const SegmentRow& r) { return r.outlet->point.name; })
         .field("path", FieldKind::text, "governing or longest", [](const SegmentRow& r) { return std::string(r.path_name); })
-        .field("segment", FieldKind::whole_number, "number along the path", [](const SegmentRow& r) { return whole(r.number); })
+        .field("segment", FieldKind::whole_number, "number along the path", [](const SegmentRow& r) { return whole_value(r.number); })
         .field("regime", FieldKind::text, "how the water moves", [](const SegmentRow& r) { return std::string(name_of(r.segment->regime)); })
         .field("cover", FieldKind::text, "land cover; none in channels", [&result](const SegmentRow& r) {
             const CoverClass* cover = cover_of(result, *r.segment);
             return cover == nullptr ? FieldValue() : FieldValue(cover->name);
         })
-        .field("length_m", FieldKind::number, "length, ponded cells included", [](const SegmentRow& r) { return number(r.segment->whole_length_m()); })
-        .field("slope_equivalent", FieldKind::number, "slope that gives the same time", [](const SegmentRow& r) { return number(r.segment->slope_equivalent); })
-        .field("fall_m", FieldKind::number, "fall of the spill elevation", [](const SegmentRow& r) { return number(r.segment->fall_m); })
-        .field("time_min", FieldKind::number, "travel time", [](const SegmentRow& r) { return minutes(r.time_s); })
-        .field("running_time_min", FieldKind::number, "from the head of the path to the end of the segment", [](const SegmentRow& r) { return minutes(r.running_s); });
+        .field("length_m", FieldKind::number, "length, ponded cells included", [](const SegmentRow& r) { return number_value(r.segment->whole_length_m()); })
+        .field("slope_equivalent", FieldKind::number, "slope that gives the same time", [](const SegmentRow& r) { return number_value(r.segment->slope_equivalent); })
+        .field("fall_m", FieldKind::number, "fall of the spill elevation", [](const SegmentRow& r) { return number_value(r.segment->fall_m); })
+        .field("time_min", FieldKind::number, "travel time", [](const SegmentRow& r) { return minutes_value(r.time_s); })
+        .field("running_time_min", FieldKind::number, "from the head of the path to the end of the segment", [](const SegmentRow& r) { return minutes_value(r.running_s); });
     layer.begin();
     for (std::size_t i = 0; i < result.outlets.size(); ++i) {
         const Outlet& outlet = result.outlets[i];

@@ -14,14 +14,14 @@
 namespace rillclock {
 namespace {
 
-using layer_value::minutes;
-using layer_value::number;
+using layer_value::minutes_value;
+using layer_value::number_value;
 using layer_value::square_metres_of;
-using layer_value::whole;
+using layer_value::whole_value;
 
 void add_outlet_fields(const StudyResult& result, LayerWriter<Outlet>& layer) {
     layer.field("point", FieldKind::text, "name of the design point", [](const Outlet& o) { return o.point.name; })
-        .field("number", FieldKind::whole_number, "its number, as in catchment.tif", [](const Outlet& o) { return whole(o.number); })
+        .field("number", FieldKind::whole_number, "its number, as in catchment.tif", [](const Outlet& o) { return whole_value(o.number); })
         .field("next_point", FieldKind::text, "the next point below",
                [&result](const Outlet& o) { return o.next == 0 ? FieldValue() : FieldValue(result.outlets[o.next - 1].point.name); })
         .field("area_m2", FieldKind::number, "area of the whole catchment", [](const Outlet& o) { return square_metres_of(o.area); })
@@ -29,14 +29,14 @@ void add_outlet_fields(const StudyResult& result, LayerWriter<Outlet>& layer) {
         .field("network_area_m2", FieldKind::number, "area of all whose water comes to the point, by pipes too",
                [&result](const Outlet& o) { return square_metres_of(result.network.points[o.number - 1].area); })
         .field("time_used_min", FieldKind::number, "time with which the point's peaks are made: in the network, where there are pipes or stated figures",
-               [&result](const Outlet& o) { return minutes(time_shown_s(result, o)); })
+               [&result](const Outlet& o) { return minutes_value(time_shown_s(result, o)); })
         .field("stated_acts", FieldKind::text, "whether pipes or stated figures act on area, time or peak",
                [&result](const Outlet& o) { return std::string(is_stated_felt(result.network, o) ? "yes" : "no"); })
         .field("time_of_concentration_min", FieldKind::number, "time along the governing path, over the ground alone",
-               [](const Outlet& o) { return minutes(o.time_of_concentration_s()); })
-        .field("half_arrived_min", FieldKind::number, "when half of the area has arrived", [](const Outlet& o) { return minutes(o.arrival_s[0]); })
+               [](const Outlet& o) { return minutes_value(o.time_of_concentration_s()); })
+        .field("half_arrived_min", FieldKind::number, "when half of the area has arrived", [](const Outlet& o) { return minutes_value(o.arrival_s[0]); })
         .field("governing_length_m", FieldKind::number, "length of the governing path",
-               [](const Outlet& o) { return number(from_fixed(o.governing.summary.length)); })
+               [](const Outlet& o) { return number_value(from_fixed(o.governing.summary.length)); })
         .field("touches_edge", FieldKind::text, "whether the catchment reaches the edge of the data: area and time are then lower bounds",
                [](const Outlet& o) { return std::string(o.touches_edge() ? "yes" : "no"); });
 }
@@ -90,17 +90,17 @@ void add_runoff_fields(const StudyResult& result, LayerWriter<IsochroneRow>& lay
         return [value](const IsochroneRow& r) { return r.runoff ? value(*r.runoff) : FieldValue(); };
     };
     layer.field("return_period_years", FieldKind::number, "of the storm that the next fields are for",
-                where_any([&result](const BandRunoff&) { return number(result.rain.raster_storm().return_period); }))
+                where_any([&result](const BandRunoff&) { return number_value(result.rain.raster_storm().return_period); }))
         .field("ca_m2", FieldKind::number, "runoff coefficient times area, of the band",
-               where_any([](const BandRunoff& b) { return number(in_square_metres(b.runoff), 9); }))
+               where_any([](const BandRunoff& b) { return number_value(in_square_metres(b.runoff), 9); }))
         .field("ca_until_m2", FieldKind::number, "the same of this and all earlier bands",
-               where_any([](const BandRunoff& b) { return number(in_square_metres(b.running), 9); }))
+               where_any([](const BandRunoff& b) { return number_value(in_square_metres(b.running), 9); }))
         .field("rain_duration_min", FieldKind::number, "by when all of the band has arrived: rain as long as that is read, or as the least time",
-               where_any([](const BandRunoff& b) { return minutes(in_seconds(b.time)); }))
+               where_any([](const BandRunoff& b) { return minutes_value(in_seconds(b.time)); }))
         .field("intensity_mm_per_h", FieldKind::number, "of that rain; null where the rain ends before",
-               where_any([](const BandRunoff& b) { return b.intensity ? number(in_millimetres_per_hour(*b.intensity), 9) : FieldValue(); }))
+               where_any([](const BandRunoff& b) { return b.intensity ? number_value(in_millimetres_per_hour(*b.intensity), 9) : FieldValue(); }))
         .field("flow_m3_per_s", FieldKind::number, "intensity times ca_until_m2",
-               where_any([](const BandRunoff& b) { return b.flow ? number(in_cubic_metres_per_second(*b.flow), 9) : FieldValue(); }));
+               where_any([](const BandRunoff& b) { return b.flow ? number_value(in_cubic_metres_per_second(*b.flow), 9) : FieldValue(); }));
 }
 
 void write_isochrones(const StudyResult& result, const StudyRegions& regions, VectorFile& file) {
@@ -110,12 +110,12 @@ void write_isochrones(const StudyResult& result, const StudyRegions& regions, Ve
     layer.field("point", FieldKind::text, "name of the design point", [](const IsochroneRow& r) { return r.outlet->point.name; })
         .field("of", FieldKind::text, "subarea, or the whole catchment of a last point", [](const IsochroneRow& r) { return std::string(words(r.band->scope)); })
         .field("band", FieldKind::text, "between which times", [](const IsochroneRow& r) { return band_text(r); })
-        .field("from_min", FieldKind::number, "least time", [](const IsochroneRow& r) { return number(r.from_min); })
-        .field("to_min", FieldKind::number, "time that is not reached", [](const IsochroneRow& r) { return number(r.to_min); })
+        .field("from_min", FieldKind::number, "least time", [](const IsochroneRow& r) { return number_value(r.from_min); })
+        .field("to_min", FieldKind::number, "time that is not reached", [](const IsochroneRow& r) { return number_value(r.to_min); })
         .field("area_m2", FieldKind::number, "area of the band", [](const IsochroneRow& r) { return square_metres_of(r.band->area); })
         .field("area_until_m2", FieldKind::number, "area of this and all earlier bands", [](const IsochroneRow& r) { return square_metres_of(r.area_until); })
         .field("share_until", FieldKind::number, "the same as a share of all", [](const IsochroneRow& r) {
-            return number(static_cast<double>(r.area_until) / static_cast<double>(r.area_in_all));
+            return number_value(static_cast<double>(r.area_until) / static_cast<double>(r.area_in_all));
         })
         .field("subareas", FieldKind::text, "the subareas within it, with the area of each in m2",
                [&result](const IsochroneRow& r) { return parts_in_words(result, *r.band); })
