@@ -78,7 +78,7 @@ TEST_CASE("a coefficient says whether it depends on soil and slope") {
     CHECK((on(CellSoil::a).by_soil && !on(CellSoil::a).by_slope));
     CHECK_FALSE((on(CellSoil::d).by_soil || on(CellSoil::unknown).by_soil));
     const CoverBook printed = parse_cover_book("code,name,n_typical,shallow_type,land_use,source\n"
-                                               "1,Roofs,0.01,pavement,asce roofs,test\n2,Hill,0.2,pavement,everett single family 4 to 6,test\n", "b.csv");
+                                               "1,Roofs,0.01,pavement,asce roofs,test\n2,Hill,0.2,pavement,everett woods,test\n", "b.csv");
     const auto of_row = [&](std::uint8_t cover) { return kind_coefficient(printed, {.cover = cover}, CoefficientSource::book, 10); };
     CHECK_FALSE((of_row(0).by_soil || of_row(0).by_slope));
     CHECK((!of_row(1).by_soil && of_row(1).by_slope));
