@@ -9,6 +9,7 @@ namespace rillclock {
 
 /// Land of a catchment that runs off alike, with its coefficients: a row to be followed by hand.
 struct RunoffLand {
+    /// Its coefficients under the storm of one return period.
     struct Figures {
         double plain = 0.0;    ///< C, before any factor
         double factor = 1.0;   ///< Cf, where it acts
