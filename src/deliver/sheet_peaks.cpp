@@ -238,9 +238,11 @@ void write_flags(const SheetMatter& matter, const std::vector<std::size_t>& noti
     if (told == 0) sheet.words("No figure of these lies outside the limits of the method.");
 }
 
-/// The notice that the whole study has no peaks, as a sentence; else what such a study lacks.
-std::string why_no_peaks(const SheetMatter& matter) {
-    for (const SheetJson& notice : matter.result.at("notices")) {
+/// The notice that the whole study has no peaks, as a sentence; else what such a study lacks. Not looked for among all notices, since those of
+/// thousands of points would be gone through once for each of them.
+std::string why_no_peaks(const SheetMatter& matter, const std::vector<std::size_t>& noticed) {
+    for (const std::size_t position : noticed) {
+        const SheetJson& notice = matter.result.at("notices").at(position);
         std::string text = words_of(notice, "text");
         if (words_of(notice, "notice") != no_peaks_code || text.empty()) continue;
         text.front() = static_cast<char>(std::toupper(static_cast<unsigned char>(text.front())));
@@ -254,7 +256,7 @@ std::string why_no_peaks(const SheetMatter& matter) {
 
 void write_peaks(const SheetMatter& matter, const std::vector<std::size_t>& noticed, SheetWriter& sheet) {
     sheet.heading("Peak flow");
-    if (!matter.outlet.contains("peaks")) return sheet.words(why_no_peaks(matter));
+    if (!matter.outlet.contains("peaks")) return sheet.words(why_no_peaks(matter, noticed));
     sheet.words("Q = i x CA, CA being the sum over the land of A times the smaller of 1 and Cf C: Cf is in it already. The whole area counts under "
                 "rain as long as its time of concentration; a part of it may make more under shorter rain, and the greatest of all durations is the "
                 "peak.");
