@@ -52,7 +52,10 @@ void ArrivalBins::add(const Head& head, FixedArea area, double storm_factor) {
 
 void ArrivalBins::add(std::vector<Bin> bins, double storm_factor) {
     sort_and_join(bins, storm_factor);
-    add_in_order(bins, storm_factor);
+    if (!bins_.empty() || !fresh_.empty()) return add_in_order(bins, storm_factor);
+    for (const Bin& bin : bins) area_ += bin.area;
+    bins_ = std::move(bins);
+    storm_factor_ = storm_factor;
 }
 
 /// Most seconds are there already as a rule; new ones are put in their places all together, once they are many.
