@@ -2,7 +2,6 @@
 
 #include <algorithm>
 #include <array>
-#include <cctype>
 #include <map>
 #include <numeric>
 #include <optional>
@@ -144,11 +143,6 @@ std::string reasons_text(const MissingPeaks& missing) {
     return text;
 }
 
-std::string as_sentence(std::string text) {
-    if (!text.empty()) text.front() = static_cast<char>(std::toupper(static_cast<unsigned char>(text.front())));
-    return text + ".";
-}
-
 /// Where rain by duration is there and some point has no peak.
 std::optional<std::string> missing_sentence(const StudyResult& result) {
     if (!result.rain.source) return std::nullopt;
@@ -156,7 +150,7 @@ std::optional<std::string> missing_sentence(const StudyResult& result) {
         const auto told = std::find_if(result.notices.begin(), result.notices.end(), [](const Notice& n) { return n.code == no_peaks_code; });
         const bool is_told_anyway = told == result.notices.begin();   // it is what needs an eye first
         if (told == result.notices.end() || is_told_anyway) return std::nullopt;
-        return as_sentence(told->text);
+        return told->text;
     }
     MissingPeaks missing;
     for (const Outlet& outlet : result.outlets) missing.add(result.peaks.points[outlet.number - 1]);

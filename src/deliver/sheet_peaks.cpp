@@ -1,6 +1,5 @@
 #include <algorithm>
 #include <array>
-#include <cctype>
 #include <optional>
 
 #include "rillclock/study/peaks.hpp"
@@ -238,15 +237,12 @@ void write_flags(const SheetMatter& matter, const std::vector<std::size_t>& noti
     if (told == 0) sheet.words("No figure of these lies outside the limits of the method.");
 }
 
-/// The notice that the whole study has no peaks, as a sentence; else what such a study lacks. Not looked for among all notices, since those of
+/// The notice that the whole study has no peaks; else what such a study lacks. Not looked for among all notices, since those of
 /// thousands of points would be gone through once for each of them.
 std::string why_no_peaks(const SheetMatter& matter, const std::vector<std::size_t>& noticed) {
     for (const std::size_t position : noticed) {
         const SheetJson& notice = matter.result.at("notices").at(position);
-        std::string text = words_of(notice, "text");
-        if (words_of(notice, "notice") != no_peaks_code || text.empty()) continue;
-        text.front() = static_cast<char>(std::toupper(static_cast<unsigned char>(text.front())));
-        return text + ".";
+        if (words_of(notice, "notice") == no_peaks_code) return words_of(notice, "text");
     }
     return "No peak flow was computed, since the study has no rain by duration: state file or formula and return_periods under [rain], and runoff "
            "coefficients in the cover book (a column c, c_a to c_d or land_use, or impervious_percent with peaks.coefficient = \"imperviousness\").";

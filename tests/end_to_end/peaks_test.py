@@ -303,6 +303,11 @@ class WithoutPeaks(CommandTest):
         self.assertIn("no-peaks", [n["notice"] for n in self.result()["notices"]])
         told = [s for s in self.result()["headlines"] if "o peak flows were computed, since no class of the cover book has a runoff coefficient" in s]
         self.assertEqual(len(told), 1)
+        self.assertRegex(told[0], r"[^.]\.$")   # one full stop
+        text = next(n["text"] for n in self.result()["notices"] if n["notice"] == "no-peaks")
+        self.assertTrue(told[0].endswith(text))
+        sheet = " ".join(self.done("explain", "result", self.result()["outlets"][0]["name"]).split())
+        self.assertIn("Peak flow --------- " + text + " ", sheet)
         self.assertFalse((self.folder / "result/tables/peaks.csv").exists())
         self.assertTrue((self.folder / "result/tables/handover.csv").exists())
 
