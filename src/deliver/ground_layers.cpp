@@ -9,13 +9,12 @@ namespace {
 using layer_value::number_value;
 using layer_value::square_metres_of;
 using layer_value::whole_value;
+using layer_value::yes_no_value;
 
 struct OwnWayRow {
     const OwnWay* way = nullptr;
     std::size_t number = 0;
 };
-
-FieldValue yes_no(bool holds) { return std::string(holds ? "yes" : "no"); }
 
 }  // namespace
 
@@ -36,7 +35,7 @@ void write_depressions(const StudyResult& result, std::span<const OutlinedDepres
         .field("volume_m3", FieldKind::number, "up to the level at which water gets out",
                [=](const OutlinedDepression& d) { return number_value(d.depression.volume * metres_per_unit); })
         .field("on_governing_path", FieldKind::text, "whether a governing path runs through it",
-               [](const OutlinedDepression& d) { return yes_no(d.depression.on_path); })
+               [](const OutlinedDepression& d) { return yes_no_value(d.depression.on_path); })
         .field("pass_x", FieldKind::number, "where its water gets out",
                [&result](const OutlinedDepression& d) { return result.grid.centre(d.depression.pass).x; })
         .field("pass_y", FieldKind::number, "where its water gets out",
@@ -53,7 +52,7 @@ void write_own_paths(const StudyResult& result, std::span<const OwnWay> ways, Ve
                 [](const OwnWayRow& r) { return whole_value(r.number); })
         .field("departure_m", FieldKind::number, "greatest distance from the way on which the lines lead the water",
                [](const OwnWayRow& r) { return number_value(in_metres(r.way->departure)); })
-        .field("comes_back", FieldKind::text, "whether it comes back to that way", [](const OwnWayRow& r) { return yes_no(r.way->comes_back); });
+        .field("comes_back", FieldKind::text, "whether it comes back to that way", [](const OwnWayRow& r) { return yes_no_value(r.way->comes_back); });
     layer.begin();
     for (std::size_t i = 0; i < ways.size(); ++i) {
         Line line;

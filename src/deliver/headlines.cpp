@@ -75,14 +75,6 @@ std::string flow_text(const StudyResult& result, Discharge flow) {
     return significant(scale.flow(flow), 3) + (result.study.report_units == ReportUnits::us ? " ft3/s" : " m3/s");
 }
 
-/// The peak of a point that paths and maps are for; null where there is none.
-const PointPeak* raster_peak(const StudyResult& result, PointNumber number) {
-    if (!result.peaks.are_there()) return nullptr;
-    const std::vector<PointPeak>& periods = result.peaks.points[number - 1];
-    const std::size_t raster = result.rain.raster;
-    return raster < periods.size() && periods[raster].is_there() ? &periods[raster] : nullptr;
-}
-
 /// None where the study has no peak for the point.
 std::optional<std::string> peak_sentence(const StudyResult& result, const Outlet& main) {
     const PointPeak* of_main = raster_peak(result, main.number);

@@ -45,6 +45,7 @@ namespace layer_value {
 inline FieldValue number_value(double value, int digits = 6) { return std::isfinite(value) ? FieldValue(std::stod(significant(value, digits))) : FieldValue(); }
 inline FieldValue whole_value(std::size_t value) { return static_cast<std::int64_t>(value); }
 inline FieldValue minutes_value(double s) { return std::stod(fixed_decimals(s / 60.0, 4)); }
+inline FieldValue yes_no_value(bool holds) { return std::string(holds ? "yes" : "no"); }
 inline FieldValue square_metres_of(FixedArea area) { return std::stod(fixed_decimals(from_fixed_area(area), 1)); }
 }  // namespace layer_value
 

@@ -11,6 +11,7 @@ using layer_value::minutes_value;
 using layer_value::number_value;
 using layer_value::square_metres_of;
 using layer_value::whole_value;
+using layer_value::yes_no_value;
 
 /// The way from a point to the next one in the network.
 struct EdgeRow {
@@ -83,12 +84,12 @@ void add_kind_fields(const StudyResult& result, EdgeLayer& layer) {
             return run.design_flow ? number_value(in_cubic_metres_per_second(*run.design_flow)) : FieldValue();
         }))
         .field("peak_m3_per_s", FieldKind::number, "that comes to the pipe, at the return period that paths are for", of_pipe([&result](const PipeRun& run) {
-            const PointPeak* peak = pipe_peak(result, run);
+            const PointPeak* peak = raster_peak(result, run.inlet);
             return peak == nullptr ? FieldValue() : number_value(in_cubic_metres_per_second(peak->partial), 5);
         }))
         .field("too_small", FieldKind::text, "whether that is more than the pipe takes just full", of_pipe([&result](const PipeRun& run) {
-            const PointPeak* peak = pipe_peak(result, run);
-            return peak == nullptr ? FieldValue() : FieldValue(std::string(peak->partial > run.capacity ? "yes" : "no"));
+            const PointPeak* peak = raster_peak(result, run.inlet);
+            return peak == nullptr ? FieldValue() : yes_no_value(peak->partial > run.capacity);
         }));
 }
 

@@ -43,10 +43,11 @@ std::string makers_in_words(const StudyResult& result, const PointPeak& peak) {
     return more == 0 ? text : text + ", and " + std::to_string(more) + " more";
 }
 
-const PointPeak* pipe_peak(const StudyResult& result, const PipeRun& run) {
+const PointPeak* raster_peak(const StudyResult& result, PointNumber number) {
     if (!result.peaks.are_there()) return nullptr;
-    const PointPeak& peak = result.peaks.points[run.inlet - 1][result.rain.raster];
-    return peak.is_there() ? &peak : nullptr;
+    const std::vector<PointPeak>& periods = result.peaks.points[number - 1];
+    const std::size_t raster = result.rain.raster;
+    return raster < periods.size() && periods[raster].is_there() ? &periods[raster] : nullptr;
 }
 
 double time_shown_s(const StudyResult& result, const Outlet& outlet) {

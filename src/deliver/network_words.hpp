@@ -16,8 +16,8 @@ namespace rillclock {
 /// The subareas that make a peak, with their shares of its window: "Mill 62 %, Ford 30 %".
 [[nodiscard]] std::string makers_in_words(const StudyResult& result, const PointPeak& peak);
 
-/// The peak that comes to the inlet of a pipe at the return period that paths and maps are for; null where there is none.
-[[nodiscard]] const PointPeak* pipe_peak(const StudyResult& result, const PipeRun& run);
+/// The peak of a point at the return period that paths and maps are for; null where there is none.
+[[nodiscard]] const PointPeak* raster_peak(const StudyResult& result, PointNumber number);
 
 /// The time of concentration of a point as it is shown first, in s: the one its peaks are made with, at the return period that paths and
 /// maps are for. With pipes or overrides in the study it is that of the network.

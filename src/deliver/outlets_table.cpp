@@ -139,8 +139,8 @@ void add_network_columns(const StudyResult& result, TableWriter<Outlet>& table) 
 void add_peak_columns(const StudyResult& result, const ReportScale& scale, TableWriter<Outlet>& table) {
     const auto where_any = [&result](auto print) {
         return [&result, print](const Outlet& o) {
-            const PointPeak& peak = result.peaks.points[o.number - 1][result.rain.raster];
-            return peak.is_there() ? print(peak) : std::string();
+            const PointPeak* peak = raster_peak(result, o.number);
+            return peak != nullptr ? print(*peak) : std::string();
         };
     };
     table.column("whole_area_peak_" + scale.flow_unit(), where_any([=](const PointPeak& p) { return five_digits(scale.flow(p.whole)); }))

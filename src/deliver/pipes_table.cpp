@@ -18,11 +18,11 @@ std::string pipes_table(const StudyResult& result) {
         .column("capacity_" + scale.flow_unit(), [=](const PipeRun& r) { return five_digits(scale.flow(r.capacity)); })
         .column("design_flow_" + scale.flow_unit(), [=](const PipeRun& r) { return r.design_flow ? five_digits(scale.flow(*r.design_flow)) : std::string(); })
         .column("peak_" + scale.flow_unit(), [=, &result](const PipeRun& r) {
-            const PointPeak* peak = pipe_peak(result, r);
+            const PointPeak* peak = raster_peak(result, r.inlet);
             return peak == nullptr ? std::string() : five_digits(scale.flow(peak->partial));
         })
         .column("too_small", [&result](const PipeRun& r) {
-            const PointPeak* peak = pipe_peak(result, r);
+            const PointPeak* peak = raster_peak(result, r.inlet);
             return peak == nullptr ? std::string() : yes_or_no(peak->partial > r.capacity);
         })
         .column("velocity_" + scale.speed_unit(), [=](const PipeRun& r) { return five_digits(scale.speed(in_metres_per_second(r.velocity))); })

@@ -103,9 +103,8 @@ std::string map_part(const ReportMatter& matter) {
 }
 
 bool is_made_by_part(const StudyResult& result, const Outlet& outlet) {
-    if (!result.peaks.are_there()) return false;
-    const PointPeak& peak = result.peaks.points[outlet.number - 1][result.rain.raster];
-    return peak.is_there() && peak.partial > peak.whole;
+    const PointPeak* peak = raster_peak(result, outlet.number);
+    return peak != nullptr && peak->partial > peak->whole;
 }
 
 /// What the points can be filtered by: words of a row, and what they say.
@@ -143,8 +142,8 @@ std::string filter_choice(const StudyResult& result) {
 
 std::string peak_cell(const StudyResult& result, const Outlet& outlet) {
     if (!result.peaks.are_there()) return "";
-    const PointPeak& peak = result.peaks.points[outlet.number - 1][result.rain.raster];
-    return "<td>" + (peak.is_there() ? significant(ReportScale(result.study.report_units).flow(peak.partial), 4) : std::string("–")) + "</td>";
+    const PointPeak* peak = raster_peak(result, outlet.number);
+    return "<td>" + (peak != nullptr ? significant(ReportScale(result.study.report_units).flow(peak->partial), 4) : std::string("–")) + "</td>";
 }
 
 std::string outlet_row(const StudyResult& result, const Outlet& outlet, bool has_section) {

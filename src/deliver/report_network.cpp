@@ -22,10 +22,10 @@ struct Arriving {
 
 std::vector<Arriving> arriving_at(const StudyResult& result, const Outlet& outlet) {
     const NetworkStorm& storm = result.network.points[outlet.number - 1].raster_storm();
-    const PointPeak* peak = result.peaks.are_there() ? &result.peaks.points[outlet.number - 1][result.rain.raster] : nullptr;
+    const PointPeak* peak = raster_peak(result, outlet.number);
     std::vector<Arriving> all;
     for (std::size_t i = 0; i < storm.subareas.size(); ++i) {
-        all.push_back({&storm.subareas[i], peak != nullptr && peak->is_there() ? &peak->shares[i] : nullptr});
+        all.push_back({&storm.subareas[i], peak != nullptr ? &peak->shares[i] : nullptr});
     }
     return all;
 }
@@ -61,10 +61,9 @@ std::string subarea_finding(const StudyResult& result, const Outlet& outlet) {
     std::string text = "Of " + std::to_string(storm.subareas_above) + " subareas that of '" + point_name(result, storm.last) + "' arrives last, after " +
                        shown_minutes(from_fixed(storm.time)) + " min";
     if (storm.lead) text += ", by " + shown_minutes(from_fixed(*storm.lead)) + " min";
-    if (!result.peaks.are_there()) return text + ".";
-    const PointPeak& peak = result.peaks.points[outlet.number - 1][result.rain.raster];
-    if (!peak.is_there() || peak.makers.empty()) return text + ".";
-    const SubareaShare& first = peak.makers.front();
+    const PointPeak* peak = raster_peak(result, outlet.number);
+    if (peak == nullptr || peak->makers.empty()) return text + ".";
+    const SubareaShare& first = peak->makers.front();
     text += first.subarea == storm.last ? "; it has the greatest share of the peak too, " : "; '" + point_name(result, first.subarea) + "' has the greatest share of the peak, ";
     return text + percent(first.of_window) + ".";
 }

@@ -18,6 +18,7 @@ using layer_value::minutes_value;
 using layer_value::number_value;
 using layer_value::square_metres_of;
 using layer_value::whole_value;
+using layer_value::yes_no_value;
 
 void add_outlet_fields(const StudyResult& result, LayerWriter<Outlet>& layer) {
     layer.field("point", FieldKind::text, "name of the design point", [](const Outlet& o) { return o.point.name; })
@@ -31,14 +32,14 @@ void add_outlet_fields(const StudyResult& result, LayerWriter<Outlet>& layer) {
         .field("time_used_min", FieldKind::number, "time with which the point's peaks are made: in the network, where there are pipes or stated figures",
                [&result](const Outlet& o) { return minutes_value(time_shown_s(result, o)); })
         .field("stated_acts", FieldKind::text, "whether pipes or stated figures act on area, time or peak",
-               [&result](const Outlet& o) { return std::string(is_stated_felt(result.network, o) ? "yes" : "no"); })
+               [&result](const Outlet& o) { return yes_no_value(is_stated_felt(result.network, o)); })
         .field("time_of_concentration_min", FieldKind::number, "time along the governing path, over the ground alone",
                [](const Outlet& o) { return minutes_value(o.time_of_concentration_s()); })
         .field("half_arrived_min", FieldKind::number, "when half of the area has arrived", [](const Outlet& o) { return minutes_value(o.arrival_s[0]); })
         .field("governing_length_m", FieldKind::number, "length of the governing path",
                [](const Outlet& o) { return number_value(from_fixed(o.governing.summary.length)); })
         .field("touches_edge", FieldKind::text, "whether the catchment reaches the edge of the data: area and time are then lower bounds",
-               [](const Outlet& o) { return std::string(o.touches_edge() ? "yes" : "no"); });
+               [](const Outlet& o) { return yes_no_value(o.touches_edge()); });
 }
 
 void write_outlets(const StudyResult& result, VectorFile& file) {
