@@ -40,12 +40,6 @@ GDALDataType gdal_type(StoredType type) {
 
 /// Side of blocks. A row of tiles of the engine is then a row of blocks, which nothing has to gather.
 constexpr std::int64_t full_side = 256;
-/// The least side of a raster that gets a coarser copy.
-constexpr std::int64_t seen_at_once = 512;
-
-/// The least that the shorter side of a coarser copy may be: a narrower one shows nothing, and its blocks would be mostly empty.
-constexpr std::int64_t least_copy_side = 16;
-
 /// Side of blocks that are squares of a power of two, as GDAL asks for. All of a block is packed, so those of a narrow raster are no wider than need be.
 std::int64_t square_side(std::int64_t shorter_side, std::int64_t most) {
     constexpr std::int64_t least = 64;
@@ -117,10 +111,9 @@ void RasterWriter::plan_levels() {
     levels_.push_back({.rows = grid_.rows, .columns = grid_.columns, .block_rows = block_side(grid_.rows),
                        .block_columns = block_side(grid_.columns)});
     const std::int64_t side = copies_side();
-    while (std::max(levels_.back().rows, levels_.back().columns) > seen_at_once) {
-        const Level next{.rows = (levels_.back().rows + 1) / 2, .columns = (levels_.back().columns + 1) / 2, .block_rows = side, .block_columns = side};
-        if (std::min(next.rows, next.columns) < least_copy_side) return;
-        levels_.push_back(next);
+    while (has_coarser_copy(levels_.back().rows, levels_.back().columns)) {
+        levels_.push_back({.rows = (levels_.back().rows + 1) / 2, .columns = (levels_.back().columns + 1) / 2,
+                           .block_rows = side, .block_columns = side});
     }
 }
 

@@ -1,5 +1,7 @@
 #pragma once
 
+#include <algorithm>
+#include <cstdint>
 #include <filesystem>
 #include <memory>
 #include <optional>
@@ -16,6 +18,14 @@ namespace rillclock {
 
 /// How coarser copies are made: `nearest` for classes, numbers and directions, `average` for amounts.
 enum class OverviewKind { nearest, average };
+
+/// Whether a raster of that size gets a copy half as fine: while a screen does not hold it, and the copy is at least 16 cells wide. A narrower
+/// one shows nothing, and its blocks would be mostly empty.
+[[nodiscard]] constexpr bool has_coarser_copy(std::int64_t rows, std::int64_t columns) {
+    constexpr std::int64_t seen_at_once = 512;
+    constexpr std::int64_t least_copy_side = 16;
+    return std::max(rows, columns) > seen_at_once && (std::min(rows, columns) + 1) / 2 >= least_copy_side;
+}
 
 /// What a raster file says about itself.
 struct RasterDescription {

@@ -5,6 +5,7 @@
 #include <optional>
 #include <string>
 
+#include "rillclock/io/raster_output.hpp"
 #include "rillclock/tiles/usable_memory.hpp"
 
 namespace rillclock {
@@ -22,12 +23,12 @@ struct MemoryTask {
 };
 
 /// Bytes of the rows that are on their way into the six rasters: two strips of a row of tiles, 27 bytes a cell each, and the next row of
-/// blocks of every coarser copy; there are none less than 16 cells wide.
+/// blocks of every coarser copy.
 [[nodiscard]] constexpr double strips_need(std::int64_t rows, std::int64_t columns) {
     constexpr std::int64_t strip_rows = 256;
     constexpr double cell_bytes = 27.0;
     double bytes = 2.0 * cell_bytes * static_cast<double>(std::min(strip_rows, rows)) * static_cast<double>(columns);
-    while (std::max(rows, columns) > 512 && std::min(rows, columns) > 30) {
+    while (has_coarser_copy(rows, columns)) {
         rows = (rows + 1) / 2;
         columns = (columns + 1) / 2;
         bytes += cell_bytes * static_cast<double>(std::min(strip_rows, rows)) * static_cast<double>(columns);
