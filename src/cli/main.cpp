@@ -86,8 +86,11 @@ int run_command(const CommandLine& line) {
     for (const ScenarioOutcome& scenario : outcome.scenarios) {
         if (!line.quiet) show_facts(scenario.facts);
     }
-    if (!line.quiet && line.verbose) show_all(outcome.notices);
-    if (!line.quiet && !line.verbose) show_kinds(outcome.notices, " in tables/review.csv; -v says every notice");
+    if (line.verbose && !line.quiet) {
+        show_all(outcome.notices);
+    } else if (!line.quiet) {
+        show_kinds(outcome.notices, " in tables/review.csv; -v says every notice");
+    }
     if (line.json) {
         std::cout << json_of(outcome);
     } else if (line.quiet) {

@@ -128,7 +128,7 @@ private:
             const auto both = [&, place = row](const std::string& column) {
                 return TwoFigures{before_.peaks->number(place, column), after_.peaks->number(other->second, column)};
             };
-            found.push_back({.return_period = period, .coefficient = both("runoff_coefficient_with_factor"), 
+            found.push_back({.return_period = period, .coefficient = both("runoff_coefficient_with_factor"),
                              .whole_area_peak = both("whole_area_peak_" + found_.flow_unit), .peak = both("peak_" + found_.flow_unit)});
         }
         return found;

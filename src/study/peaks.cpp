@@ -45,8 +45,9 @@ public:
         std::vector<ArrivalHistogram> joined = own_;
         for (const PointNumber number : upstream_first()) {
             ArrivalHistogram& catchment = joined[number - 1];  // by now with all that joins from above
-            made.points[number - 1] = peaks_at(number, catchment, made.subareas);
-            made.land[number - 1] = land_of(catchment);
+            const LandAreas land = land_areas(catchment);
+            made.points[number - 1] = peaks_at(number, catchment, land, made.subareas);
+            made.land[number - 1] = rows_of(land);
             const PointNumber next = graph().next_of(number);
             if (next != 0) joined[next - 1].add(catchment);
             catchment = {};
@@ -76,8 +77,7 @@ private:
         return made;
     }
 
-    [[nodiscard]] std::vector<RunoffLand> land_of(const ArrivalHistogram& catchment) {
-        const LandAreas land = land_areas(catchment);
+    [[nodiscard]] std::vector<RunoffLand> rows_of(const LandAreas& land) {
         const std::size_t periods = in_.rain.storms.size();
         for (std::size_t period = 0; period < periods; ++period) {
             if (!lacking_coefficient(land, coefficients_, period).empty()) return {};
@@ -85,9 +85,8 @@ private:
         return runoff_land(land, coefficients_, periods);
     }
 
-    [[nodiscard]] std::vector<PointPeak> peaks_at(PointNumber number, const ArrivalHistogram& catchment,
+    [[nodiscard]] std::vector<PointPeak> peaks_at(PointNumber number, const ArrivalHistogram& catchment, const LandAreas& land,
                                                   const std::vector<SubareaRunoff>& subareas) {
-        const LandAreas land = land_areas(catchment);
         const Outlet& outlet = in_.outlets[number - 1];
         std::vector<PointPeak> peaks;
         std::optional<BinnedLand> binned;

@@ -69,7 +69,7 @@ KindCoefficient from_book(const CoverClass& cover, const LandKind& kind, double 
     const bool by_soil = group && cover.runoff_coefficients[static_cast<std::size_t>(*group)];
     if (const auto own = cover.coefficient(group)) return {.value = *own, .by_soil = by_soil};
     if (const auto found = find_printed_row(cover.land_use)) {
-        return {.value = found->table->range(*found->row, kind.slope).used(), .by_slope = found->row->by_slope.size() > 1};
+        return {.value = found->table->range(*found->row, kind.slope).used(), .by_slope = found->row->is_by_slope()};
     }
     const LandUse* use = find_land_use(cover.land_use);
     if (use == nullptr) return {.lacking = lacking_text(cover, "c or land_use")};
@@ -129,7 +129,7 @@ bool uses_slope(const CoverBook& book, CoefficientSource source) {
     const auto classes = book.classes();
     return source == CoefficientSource::book && std::any_of(classes.begin(), classes.end(), [](const CoverClass& c) {
                const auto found = find_printed_row(c.land_use);
-               return found ? found->row->by_slope.size() > 1 : !c.land_use.empty();
+               return found ? found->row->is_by_slope() : !c.land_use.empty();
            });
 }
 

@@ -26,6 +26,7 @@ struct CoefficientRow {
     std::string_view name;               ///< as the column land_use of a cover book writes it: "asce roofs"
     std::vector<PrintedRange> by_slope;  ///< one for land of any slope, else one of each slope class of the table
 
+    [[nodiscard]] bool is_by_slope() const { return by_slope.size() > 1; }
     /// Of all slope classes together.
     [[nodiscard]] PrintedRange all() const;
 };
@@ -44,7 +45,7 @@ struct CoefficientTable {
 
     /// Of the slope class that land of this band is in; beyond what is printed, of the last.
     [[nodiscard]] const PrintedRange& range(const CoefficientRow& row, SlopeBand slope) const {
-        if (row.by_slope.size() == 1) return row.by_slope.front();
+        if (!row.is_by_slope()) return row.by_slope.front();
         const auto end = std::lower_bound(slope_ends.begin(), slope_ends.end(), slope);
         return row.by_slope[static_cast<std::size_t>(end - slope_ends.begin())];
     }
