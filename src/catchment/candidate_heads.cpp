@@ -158,7 +158,7 @@ private:
         tiles_[tile].last.resize(tiles_[tile].groups.size() * settings_);
         for (std::size_t i = 0; i < borders_.size(); ++i) {
             const SettingGroup& group = steps_.groups()[i];
-            collect_up(tile, at->desk.flow, borders_[i].part(TimeChannel{{steps_, group, at->steps}}, at->time));
+            collect_up_within(tile, at->desk.flow, borders_[i].part(TimeChannel{{steps_, group, at->steps}}, at->time));
             keep_last(group, *at, tiles_[tile]);
         }
     }

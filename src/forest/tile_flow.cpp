@@ -27,6 +27,7 @@ void TileFlow::read(const Raster<FlowCode>& codes, const Window& window) {
     read_steps(codes);
     read_entries(codes);
     find_order();
+    find_passed();
 }
 
 bool TileFlow::holds(Cell cell) const { return is_inside(window_, {cell / raster_columns_, cell % raster_columns_}); }
@@ -119,6 +120,20 @@ void TileFlow::find_order() {
         end += stays & (--waiting == 0) ? 1 : 0;
     }
     order_.resize(static_cast<std::size_t>(end - first));
+}
+
+/// Follows the way of each entry down to where an earlier one passed.
+void TileFlow::find_passed() {
+    is_passed_.assign(size(), 0);
+    passed_.clear();
+    for (const TileEntry& entry : entries_) {
+        const auto first = static_cast<std::ptrdiff_t>(passed_.size());
+        for (Local at = entry.to; at < ends_here && is_passed_[at] == 0; at = down_[at]) {
+            is_passed_[at] = 1;
+            passed_.push_back(at);
+        }
+        std::reverse(passed_.begin() + first, passed_.end());
+    }
 }
 
 }  // namespace rillclock

@@ -15,22 +15,30 @@ struct SheetReach {
     FixedLength index_step = 0;   ///< of the whole step; made only where there is a share
 };
 
-SheetReach sheet_reach(const StepView& step, const SheetRules& sheet) {
+FixedTime storm_time(const SheetRules& sheet, FixedLength index) {
+    if (index == 0) return 0;  // at a divide, where a third of all cells lie; the power would be asked in vain
+    return to_fixed(in_seconds(sheet.formula.at_unit_storm(metres(from_fixed(index)))));
+}
+
+/// Where nothing is shared with other steps.
+struct OwnSheet {
+    static FixedLength index_step(const StepView& step) { return sheet_index_step(step); }
+    static FixedTime time_at_begin(const SheetRules& sheet, FixedLength index) { return storm_time(sheet, index); }
+    static FixedTime time_at_end(const SheetRules& sheet, FixedLength index) { return storm_time(sheet, index); }
+};
+
+template <class Shared>
+SheetReach sheet_reach(const StepView& step, const SheetRules& sheet, const Shared& shared) {
     if (step.kind != GroundKind::overland) return {};
     const double length_left = in_metres(sheet.limit) - from_fixed(step.from_divide);
     const double index_left = in_metres(std::min(sheet.index_limit, sheet_is_over)) - from_fixed(step.sheet_index);
     if (!(length_left > 0 && index_left > 0)) return {};
     const double length = from_fixed(step.length);
-    const FixedLength index_step = sheet_index_step(step);
+    const FixedLength index_step = shared.index_step(step);
     const double index = from_fixed(index_step);
     const double by_length = length > length_left ? length_left / length : 1.0;
     const double by_index = index > index_left ? index_left / index : 1.0;
     return {std::min(by_length, by_index), index_step};
-}
-
-FixedTime storm_time(const SheetRules& sheet, double index_m) {
-    if (index_m == 0) return 0;  // at a divide, where a third of all cells lie; the power would be asked in vain
-    return to_fixed(in_seconds(sheet.formula.at_unit_storm(metres(index_m))));
 }
 
 StepPart characteristic_part(const StepView& step, const SheetRules& sheet, double share) {
@@ -46,8 +54,9 @@ StepPart characteristic_part(const StepView& step, const SheetRules& sheet, doub
     return part;
 }
 
-StepPart index_part(const StepView& step, const SheetRules& sheet, const SheetReach& reach) {
-    const FixedLength index_to = step.sheet_index + std::llround(reach.share * static_cast<double>(reach.index_step));
+template <class Shared>
+StepPart index_part(const StepView& step, const SheetRules& sheet, const SheetReach& reach, const Shared& shared) {
+    const FixedLength index_to = step.sheet_index + nearest_whole(reach.share * static_cast<double>(reach.index_step));
     StepPart part;
     part.regime = Regime::sheet;
     part.length_m = reach.share * from_fixed(step.length);
@@ -55,13 +64,14 @@ StepPart index_part(const StepView& step, const SheetRules& sheet, const SheetRe
     part.index_from_m = from_fixed(step.sheet_index);
     part.index_to_m = from_fixed(index_to);
     // Both ends are rounded alike in the cell before and after, so that times telescope along a path.
-    part.time.storm = storm_time(sheet, part.index_to_m) - storm_time(sheet, part.index_from_m);
+    part.time.storm = shared.time_at_end(sheet, index_to) - shared.time_at_begin(sheet, step.sheet_index);
     return part;
 }
 
-StepPart sheet_part(const StepView& step, const SheetRules& sheet, const SheetReach& reach) {
+template <class Shared>
+StepPart sheet_part(const StepView& step, const SheetRules& sheet, const SheetReach& reach, const Shared& shared) {
     switch (sheet.basis) {
-        case SheetBasis::index: return index_part(step, sheet, reach);
+        case SheetBasis::index: return index_part(step, sheet, reach, shared);
         case SheetBasis::characteristic: return characteristic_part(step, sheet, reach.share);
     }
     return {};
@@ -104,27 +114,39 @@ void hasten_over_pond(const StepView& step, const TravelRules& rules, StepPart& 
     part.time = {.fixed = to_fixed(wave_s), .storm = 0};
 }
 
-template <class Take>
-void cut_overland(const StepView& step, const TravelRules& rules, Take take) {
-    const SheetReach reach = sheet_reach(step, rules.sheet);
+template <class Shared, class Take>
+void cut_overland(const StepView& step, const TravelRules& rules, const Shared& shared, Take take) {
+    const SheetReach reach = sheet_reach(step, rules.sheet, shared);
     if (reach.share <= 0.0) return take(shallow_part(step, from_fixed(step.length)));
-    take(sheet_part(step, rules.sheet, reach));
+    take(sheet_part(step, rules.sheet, reach, shared));
     if (reach.share < 1.0) take(shallow_part(step, (1.0 - reach.share) * from_fixed(step.length)));
 }
 
 /// Calls `take(part)` for each part of a step, from its upper end. What a caller does not read of a part is then never made.
-template <class Take>
-void cut_step(const StepView& step, const TravelRules& rules, Take take) {
+template <class Shared, class Take>
+void cut_step(const StepView& step, const TravelRules& rules, const Shared& shared, Take take) {
     if (step.length == 0) return;
     const auto hasten_and_take = [&](StepPart part) {
         hasten_over_pond(step, rules, part);
         take(part);
     };
     switch (step.kind) {
-        case GroundKind::overland: return cut_overland(step, rules, hasten_and_take);
+        case GroundKind::overland: return cut_overland(step, rules, shared, hasten_and_take);
         case GroundKind::channel: return hasten_and_take(channel_part(step, rules.channel));
         case GroundKind::water: return hasten_and_take(water_part(step));
     }
+}
+
+// Flattened, so that the compiler sees what of the parts nobody reads: copying them was most of the cost.
+template <class Shared>
+[[gnu::flatten]] StepOutcome outcome_of(const StepView& step, const TravelRules& rules, const Shared& shared) {
+    StepOutcome outcome;
+    cut_step(step, rules, shared, [&](const StepPart& part) {
+        outcome.time += part.time;
+        if (outcome.regime == Regime::none) outcome.regime = part.regime;
+    });
+    if (outcome.regime == Regime::none) outcome.regime = first_regime(step, rules);
+    return outcome;
 }
 
 }  // namespace
@@ -148,27 +170,30 @@ FixedLength sheet_index_step(const StepView& step) {
 
 StepParts step_parts(const StepView& step, const TravelRules& rules) {
     StepParts parts;
-    cut_step(step, rules, [&](const StepPart& part) {
+    cut_step(step, rules, OwnSheet{}, [&](const StepPart& part) {
         (parts.first.regime == Regime::none ? parts.first : parts.second) = part;
     });
     return parts;
 }
 
-// Flattened, so that the compiler sees what of the parts nobody reads: copying them was most of the cost.
-[[gnu::flatten]] StepOutcome step_outcome(const StepView& step, const TravelRules& rules) {
-    StepOutcome outcome;
-    cut_step(step, rules, [&](const StepPart& part) {
-        outcome.time += part.time;
-        if (outcome.regime == Regime::none) outcome.regime = part.regime;
-    });
-    if (outcome.regime == Regime::none) outcome.regime = first_regime(step, rules);
-    return outcome;
+FixedTime SharedSheet::time_at_begin(const SheetRules& sheet, FixedLength index) const {
+    if (here_ == unknown) here_ = storm_time(sheet, index);
+    return here_;
 }
+
+FixedTime SharedSheet::time_at_end(const SheetRules& sheet, FixedLength index) const {
+    if (index != index_below_) return storm_time(sheet, index);
+    if (below_ == unknown) below_ = storm_time(sheet, index);
+    return below_;
+}
+
+StepOutcome step_outcome(const StepView& step, const TravelRules& rules) { return outcome_of(step, rules, OwnSheet{}); }
+StepOutcome step_outcome(const StepView& step, const TravelRules& rules, const SharedSheet& shared) { return outcome_of(step, rules, shared); }
 
 Regime first_regime(const StepView& step, const TravelRules& rules) {
     if (step.kind == GroundKind::channel) return Regime::channel;
     if (step.kind == GroundKind::water) return Regime::water;
-    return sheet_reach(step, rules.sheet).share > 0.0 ? Regime::sheet : Regime::shallow;
+    return sheet_reach(step, rules.sheet, OwnSheet{}).share > 0.0 ? Regime::sheet : Regime::shallow;
 }
 
 }  // namespace rillclock

@@ -93,7 +93,10 @@ void TiledTravel::find_slopes() {
 
 void TiledTravel::find_times() {
     for_each_tile(in_.forest, executor_, desks_, [this](Tile tile, TileDesk& desk) {
-        read_steps(tile, desk);
+        if (desk.flow.passed().empty()) return;
+        read_step_ground(tile, desk);
+        desk.step.resize(desk.flow.size());
+        for (const Local local : desk.flow.passed()) desk.step[local] = step_outcome(step_view(desk, local), rules_).time;
         collect_up(tile, desk.flow, storm_.part(storm_channel(desk), desk.storm), fixed_.part(fixed_channel(desk), desk.fixed));
     });
     storm_.solve<decltype(storm_channel(std::declval<TileDesk&>()))>();
@@ -149,11 +152,18 @@ void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
     read_step_ground(tile, desk);
     desk.step.resize(desk.flow.size());
     desk.regime.resize(desk.flow.size());
+    desk.sheet_time.assign(desk.flow.size(), SharedSheet::unknown);
     for_each_cell(desk.flow, [&](Local local, Cell cell, std::int64_t) {
-        const StepOutcome outcome = desk.flow.code(local) == flow_void ? StepOutcome{} : step_outcome(step_view(desk, local, cell), rules_);
+        const StepOutcome outcome = desk.flow.code(local) == flow_void ? StepOutcome{} : outcome_with_shared(desk, local, cell);
         desk.step[local] = outcome.time;
         desk.regime[local] = outcome.regime;
     });
+}
+
+StepOutcome TiledTravel::outcome_with_shared(TileDesk& desk, Local local, Cell cell) const {
+    const Local below = desk.flow.down(local) < ends_here ? desk.flow.down(local) : local;   // itself has another index than its step ends with
+    const SharedSheet shared(desk.index_step[local], desk.sheet_time[local], desk.sheet_time[below], desk.sheet_index[below]);
+    return step_outcome(step_view(desk, local, cell), rules_, shared);
 }
 
 void TiledTravel::read_areas(Tile tile, TileDesk& desk) const {

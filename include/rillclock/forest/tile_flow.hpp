@@ -57,12 +57,15 @@ public:
     /// Cells that drain into other tiles, by increasing position.
     [[nodiscard]] std::span<const Local> exits() const { return exits_; }
     [[nodiscard]] std::span<const TileEntry> entries() const { return entries_; }
+    /// Cells that water of other tiles passes, each after the one it drains to: some in a hundred, and all that other tiles hang on.
+    [[nodiscard]] std::span<const Local> passed() const { return passed_; }
 
 private:
     void read_steps(const Raster<FlowCode>& codes);
     void read_rim_step(Local local);
     void read_entries(const Raster<FlowCode>& codes);
     void find_order();
+    void find_passed();
 
     Window window_;
     std::int64_t raster_columns_ = 0;
@@ -70,6 +73,8 @@ private:
     TileValues<FlowCode> code_;
     TileValues<std::uint8_t> waiting_;   ///< tributaries not yet in the order; one place more, for steps that end or leave
     TileValues<Local> order_;
+    TileValues<std::uint8_t> is_passed_;
+    std::vector<Local> passed_;
     std::vector<Local> exits_;
     std::vector<TileEntry> entries_;
 };

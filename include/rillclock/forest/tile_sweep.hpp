@@ -235,6 +235,7 @@ struct UpPart {
     Channel channel;
     Field& field;   ///< a vector of values
 
+    void make_room(const TileFlow& flow) const { field.resize(flow.size()); }
     void start(const TileFlow& flow) const {
         if (flow.order().size() == flow.size()) field.resize(flow.size());   // every cell will be set
         else field.assign(flow.size(), Value{});
@@ -282,11 +283,7 @@ void collect_down(Tile tile, const TileFlow& flow, const Parts&... parts) {
     tile_sweep_detail::send_all(flow, parts...);
     (parts.keep_sent(tile, flow), ...);
     if constexpr ((Parts::moves || ...)) {
-        const auto order = flow.order();
-        for (std::size_t i = order.size(); i-- > 0;) {
-            const Local cell = order[i];
-            (parts.move(cell, flow.down(cell)), ...);
-        }
+        for (const Local cell : flow.passed()) (parts.move(cell, flow.down(cell)), ...);
         (parts.keep_moved(tile), ...);
     }
 }
@@ -299,9 +296,18 @@ void fill_down(Tile tile, const TileFlow& flow, const Parts&... parts) {
     tile_sweep_detail::send_all(flow, parts...);
 }
 
-/// First stage of sweeps up: what lies along the tile's own part of the paths that come into it.
+/// First stage of sweeps up: what lies along the tile's own part of the paths that come into it. Sets, and asks for weights of, the cells that
+/// these pass (`TileFlow::passed`) alone.
 template <class... Parts>
 void collect_up(Tile tile, const TileFlow& flow, const Parts&... parts) {
+    (parts.make_room(flow), ...);
+    for (const Local cell : flow.passed()) (parts.template take<false>(cell, flow.down(cell)), ...);
+    (parts.keep_below(tile), ...);
+}
+
+/// The same, and sets every cell to what lies on its path within the tile, void cells to 0.
+template <class... Parts>
+void collect_up_within(Tile tile, const TileFlow& flow, const Parts&... parts) {
     (parts.start(flow), ...);
     tile_sweep_detail::take_all<false>(flow, parts...);
     (parts.keep_below(tile), ...);

@@ -92,6 +92,33 @@ struct StepOutcome {
 /// The time and regime of step_parts, at a fraction of its cost.
 [[nodiscard]] StepOutcome step_outcome(const StepView& step, const TravelRules& rules);
 
+/// What is known of a step's sheet flow before the step is timed: what it adds to the sheet index, and times T(u) at the indices of cells. Each of
+/// these is computed once: a cell asks for its own, and so do those that drain to it, of which one arrives with just that index.
+class SharedSheet {
+public:
+    static constexpr FixedTime unknown = -1;   ///< times are not negative
+
+    /// `index_step` as of `sheet_index_step`. `here` and `below`, of the cell and of the one that it drains to, are places in an array that
+    /// began as `unknown`.
+    SharedSheet(FixedLength index_step, FixedTime& here, FixedTime& below, FixedLength index_below)
+        : index_step_(index_step), here_(here), below_(below), index_below_(index_below) {}
+
+    /// What the step adds to the sheet index.
+    [[nodiscard]] FixedLength index_step(const StepView&) const { return index_step_; }
+    /// T at the cell itself.
+    [[nodiscard]] FixedTime time_at_begin(const SheetRules& sheet, FixedLength index) const;
+    /// T where the step ends.
+    [[nodiscard]] FixedTime time_at_end(const SheetRules& sheet, FixedLength index) const;
+
+private:
+    FixedLength index_step_;
+    FixedTime& here_;
+    FixedTime& below_;
+    FixedLength index_below_;
+};
+/// The same bits with what other steps found, or left for them to find.
+[[nodiscard]] StepOutcome step_outcome(const StepView& step, const TravelRules& rules, const SharedSheet& shared);
+
 /// The regime of a cell as the raster shows it: that in which its step begins.
 [[nodiscard]] Regime first_regime(const StepView& step, const TravelRules& rules);
 

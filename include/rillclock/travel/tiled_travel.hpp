@@ -43,6 +43,7 @@ struct TileDesk {
     TileValues<FixedLength> from_divide;
     TileValues<FixedLength> sheet_index;
     TileValues<FixedLength> flow_distance;     ///< to the root
+    TileValues<FixedTime> sheet_time;          ///< T at the sheet index, as SharedSheet keeps it
     TileValues<StepTime> step;                 ///< time of the step out of the cell
     TileValues<Regime> regime;                 ///< in which the step begins
     TileValues<FixedTime> storm;               ///< A to the root
@@ -97,6 +98,7 @@ public:
 
 private:
     [[nodiscard]] StepView step_view(const TileDesk& desk, Local local, Cell cell) const;
+    [[nodiscard]] StepOutcome outcome_with_shared(TileDesk& desk, Local local, Cell cell) const;
     void find_areas();
     void find_kinds();
     void find_slopes();

@@ -1,6 +1,8 @@
 #include "rillclock/forest/tile_flow.hpp"
 
 #include <catch2/catch.hpp>
+#include <cstdint>
+#include <vector>
 
 namespace rillclock {
 namespace {
@@ -18,6 +20,24 @@ TEST_CASE("a tile holds its own cells and no others, and knows the position of e
             if (is_own) REQUIRE(flow.cell(flow.local(cell)) == cell);
         }
     }
+}
+
+TEST_CASE("a tile knows which of its cells water of other tiles passes, each after the one it drains to") {
+    Raster<FlowCode> codes(4, 8, flow_root);
+    //     . . . > ↘ . . .     the tile is that of the four columns to the east
+    //     . . . > > > > .
+    //     . . . . . ^ . .     (2,5) drains into the way, and lets nothing in
+    //     . . . . < . . .     (3,4) drains out of the tile
+    for (const std::int64_t column : {3, 4, 5, 6}) codes(1, column) = flow_code(Direction::east);
+    codes(0, 3) = flow_code(Direction::east);
+    codes(0, 4) = flow_code(Direction::south_east);
+    codes(2, 5) = flow_code(Direction::north);
+    codes(3, 4) = flow_code(Direction::west);
+    TileFlow flow;
+    flow.read(codes, TileGrid(4, 8, 4).window(1));
+    const auto passed = flow.passed();
+    // From (0,4) by (1,5) and (1,6) to the root at (1,7), which comes first; then (1,4), whose way goes on along the other.
+    CHECK(std::vector<Local>(passed.begin(), passed.end()) == std::vector<Local>{7, 6, 5, 0, 4});
 }
 
 }  // namespace

@@ -337,5 +337,23 @@ TEST_CASE("the outcome of a step is the time and the first regime of its parts")
     CHECK(split > 100);
 }
 
+TEST_CASE("steps that share times at sheet indices take and leave them, and have the same outcome") {
+    StepView step = ten_metres();
+    step.sheet_index = to_fixed(2);
+    const FixedLength index_below = to_fixed(7);   // half a metre a metre more
+    FixedTime here = SharedSheet::unknown;
+    FixedTime below = SharedSheet::unknown;
+    const StepOutcome alone = step_outcome(step, plain_rules());
+    CHECK(step_outcome(step, plain_rules(), {to_fixed(5), here, below, index_below}).time == alone.time);
+    CHECK(from_fixed(here) == rounded(nrcs(2)));
+    CHECK(from_fixed(below) == rounded(nrcs(7)));
+
+    here += 5;
+    below += 7;   // what is there is taken
+    CHECK(step_outcome(step, plain_rules(), {to_fixed(5), here, below, index_below}).time.storm == alone.time.storm + 2);
+    // Another water arrives later at the cell below: its time is none of this step's.
+    CHECK(step_outcome(step, plain_rules(), {to_fixed(5), here, below, index_below + 1}).time.storm == alone.time.storm - 5);
+}
+
 }  // namespace
 }  // namespace rillclock
