@@ -71,7 +71,9 @@ MemoryTask memory_task(const Study& study, const ElevationFile& elevations, std:
             .own_storms = study.timing.is_kinematic() || study.rain.zones.file.has_value(),
             .points = most_points(study, elevations, stated_points),
             .draws = study.uncertainty ? study.uncertainty->draws : 0,
-            .rain_by_duration = study.rain.is_by_duration()};
+            .rain_by_duration = study.rain.is_by_duration(),
+            .isochrones = study.output.isochrones.are_asked(),
+            .scenarios = static_cast<std::int64_t>(study.scenarios.size())};
 }
 
 void require_memory(const Study& study) {

@@ -109,7 +109,7 @@ channel_from = "5 ha"
         self.assert_foretold(*self.plain)
 
     def test_many_points(self):
-        foretold, used = self.foretold_and_used(self.study(self.points(2000)))
+        foretold, used = self.foretold_and_used(self.study(self.points(3000)))
         self.assert_foretold(foretold, used)
         self.assertGreater(used, self.plain[1] + 50e6, "points that take no memory show nothing")
 
@@ -122,6 +122,16 @@ channel_from = "5 ha"
         foretold, used = self.foretold_and_used(self.study(self.points(400) + "[uncertainty]\ndraws = 20\n"))
         self.assert_foretold(foretold, used)
         self.assertGreater(used, self.plain[1] + 50e6, "draws that take no memory show nothing")
+
+    def test_storms_of_their_own(self):
+        rain = 'formula = "i[mm/h] = 900 T^0.2 / (t[min] + 12)^0.85"\nreturn_periods = [10]'
+        foretold, used = self.foretold_and_used(self.study('sheet = "kinematic"\n' + self.points(100), rain=rain))
+        self.assertLessEqual(used, foretold)
+
+    def test_isochrones(self):
+        foretold, used = self.foretold_and_used(self.study(self.points(20) + '[output]\nisochrones = "1 min"\n'))
+        self.assertLessEqual(used, foretold)
+        self.assertGreater(used, self.plain[1] + 50e6, "isochrones that take no memory show nothing")
 
     def test_peaks(self):
         rain = 'formula = "i[mm/h] = 900 T^0.2 / (t[min] + 12)^0.85"\nreturn_periods = [2, 10, 100]'
