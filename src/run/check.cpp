@@ -174,6 +174,7 @@ private:
             report_.facts.emplace_back("points: none stated, so they will stand where water leaves the data");
             return;
         }
+        points_ = stated->count();
         note(stated->notices);
         if (!stated->drawn.empty()) {
             isochrones(stated->drawn.size());
@@ -251,7 +252,7 @@ private:
     }
 
     void costs() {
-        const MemoryTask task = memory_task(study_, *terrain_);
+        const MemoryTask task = memory_task(study_, *terrain_, points_);
         const MemoryLimit limit = usable_memory();
         const auto results = static_cast<double>(study_.scenarios.size() + 1);
         report_.facts.push_back("cost: about " + bytes_text(memory_need(task)) + " of memory (" + limit.set_by + " allows " +
@@ -272,6 +273,7 @@ private:
 
     const Study& study_;
     std::unique_ptr<ElevationFile> terrain_;
+    std::size_t points_ = 0;   ///< stated
     CheckReport report_;
 };
 

@@ -15,6 +15,15 @@ constexpr std::int64_t strip_rows = 512;
 /// No ground is as steep between neighbouring cells.
 constexpr double impossible_slope = 20.0;
 
+/// How many points there are at most. Where none are stated, each way out with a share of the area counts: they cannot be more than the shares
+/// that go into the whole, and as they differ in size they are not half as many; nor more than twice the cells of the edge.
+std::int64_t most_points(const Study& study, const ElevationFile& elevations, std::size_t stated) {
+    if (study.points.file || study.points.catchments.file) return static_cast<std::int64_t>(stated);
+    const Grid& grid = elevations.grid();
+    const double share = resolve(study, facts_of(elevations.format, ground_of(grid, elevations.system))).auto_area;
+    return static_cast<std::int64_t>(std::ceil(std::min(0.5 / share, 4.0 * static_cast<double>(grid.rows + grid.columns))));
+}
+
 }  // namespace
 
 std::int64_t read_elevations(BlockSource<double>& source, ElevationStore& store, const Progress& progress) {
@@ -52,18 +61,25 @@ ElevationFile open_elevation_of(const Study& study) {
     return open_elevation(located(study, study.terrain.elevation), options);
 }
 
-MemoryTask memory_task(const Study& study, const ElevationFile& elevations) {
+MemoryTask memory_task(const Study& study, const ElevationFile& elevations, std::size_t stated_points) {
     return {.cells = elevations.grid().size(),
             .rows = elevations.grid().rows,
             .columns = elevations.grid().columns,
             .wide_elevations = width_of(elevations.format.stored) == ElevationStore::Width::eight_bytes,
             .soil_raster = study.surface.soil.file.has_value(),
             .rain_zones = study.rain.zones.file.has_value(),
-            .own_storms = study.timing.is_kinematic()};
+            .own_storms = study.timing.is_kinematic() || study.rain.zones.file.has_value(),
+            .points = most_points(study, elevations, stated_points),
+            .draws = study.uncertainty ? study.uncertainty->draws : 0,
+            .rain_by_duration = study.rain.is_by_duration(),
+            .isochrones = study.output.isochrones.are_asked(),
+            .scenarios = static_cast<std::int64_t>(study.scenarios.size())};
 }
 
 void require_memory(const Study& study) {
-    const auto lack = lack_of_memory(memory_task(study, open_elevation_of(study)), usable_memory());
+    const ElevationFile elevations = open_elevation_of(study);
+    const std::optional<StatedPoints> stated = read_stated_points(study, elevations.system);
+    const auto lack = lack_of_memory(memory_task(study, elevations, stated ? stated->count() : 0), usable_memory());
     if (lack) throw machine_error(*lack);
 }
 

@@ -152,7 +152,7 @@ std::vector<PointHeads> heads_of_points(const LastPass& last, const DesignChanne
 
 std::optional<Uncertainty> uncertainty_if_asked(const UncertaintyParts& parts, std::int64_t cells, const Progress& progress) {
     if (!parts.study.uncertainty) return std::nullopt;
-    return stage(progress, "uncertainty", cells, [&] { return uncertainty_of_study(parts); });
+    return stage(progress, "uncertainty", cells, [&] { return uncertainty_of_study(parts, progress); });
 }
 
 /// A study, or one of its scenarios, with what is read before the rasters.

@@ -50,8 +50,8 @@ struct SurfaceData {
 [[nodiscard]] ElevationFile open_elevation_of(const Study& study);
 /// How elevations of a stored type are kept: four bytes a cell hold every value of most types exactly.
 [[nodiscard]] ElevationStore::Width width_of(StoredType type);
-/// What the memory of the study's run depends on.
-[[nodiscard]] MemoryTask memory_task(const Study& study, const ElevationFile& elevations);
+/// What the memory of the study's run depends on; `stated_points` is how many points or catchments its file has, which counts where it names one.
+[[nodiscard]] MemoryTask memory_task(const Study& study, const ElevationFile& elevations, std::size_t stated_points);
 /// Reads all strips of a source into the store; returns how many cells are void.
 std::int64_t read_elevations(BlockSource<double>& source, ElevationStore& store, const Progress& progress);
 /// Elevations, and what makes slopes of them.
@@ -64,7 +64,7 @@ struct Relief {
 };
 /// A notice where ground is steeper than any can be.
 [[nodiscard]] Notices relief_notices(const Relief& relief, const Executor& executor);
-/// Throws a machine error with numbers where there is less memory than the run needs; reads no more than the header of the elevations.
+/// Throws a machine error with numbers where there is less memory than the run needs; reads the header of the elevations and the points.
 void require_memory(const Study& study);
 [[nodiscard]] TerrainData read_terrain(const Study& study, const Executor& executor, const Progress& progress);
 [[nodiscard]] CoverBook read_book(const Study& study);
@@ -92,6 +92,9 @@ struct StatedPoints {
     std::map<std::string, PointLumpInputs> lump_inputs;   ///< by name: what fields of the file state for the lump methods
     std::vector<DrawnCatchment> drawn;   ///< in place of points: these get theirs where water leaves them
     Notices notices;
+
+    /// Points, or catchments that get theirs.
+    [[nodiscard]] std::size_t count() const { return drawn.empty() ? points.size() : drawn.size(); }
 };
 /// Nothing where the study names no file of points or catchments.
 [[nodiscard]] std::optional<StatedPoints> read_stated_points(const Study& study, const ReferenceSystem& system);

@@ -10,7 +10,8 @@ namespace {
 constexpr int sorting_draws = 40;
 
 /// Paths from heads that some setting may make the last: those found by searching, and all that the study itself named.
-HeadPaths paths_to_keep(const UncertaintyParts& parts, const std::vector<UncertainInput>& inputs, const TravelSetting& base) {
+HeadPaths paths_to_keep(const UncertaintyParts& parts, const std::vector<UncertainInput>& inputs, const TravelSetting& base,
+                        const Progress& progress) {
     const int seed = parts.study.uncertainty->seed;
     std::vector<TravelSetting> settings = searching_settings(inputs, base, seed);
     std::vector<FixedArea> own_areas;
@@ -25,7 +26,7 @@ HeadPaths paths_to_keep(const UncertaintyParts& parts, const std::vector<Uncerta
     for (const std::vector<double>& values : drawn_values(inputs, sorting_draws, seed)) {
         settings.push_back(setting_of(inputs, values, base));
     }
-    paths.keep(heads_that_may_be_last(paths, settings, parts.travel.executor()));
+    paths.keep(heads_that_may_be_last(paths, settings, parts.travel.executor(), progress));
     return paths;
 }
 
@@ -49,15 +50,15 @@ std::vector<bool> classes_met(const CoverBook& book, const std::vector<ClassCoun
     return met;
 }
 
-std::optional<Uncertainty> uncertainty_of_study(const UncertaintyParts& parts) {
+std::optional<Uncertainty> uncertainty_of_study(const UncertaintyParts& parts, const Progress& progress) {
     if (!parts.study.uncertainty) return std::nullopt;
     const TravelSetting base{.rules = parts.travel.rules(), .classes = parts.travel.ground().surface.classes};
     std::vector<UncertainInput> inputs =
         uncertain_inputs(parts.study, parts.surface.book, classes_met(parts.surface.book, parts.surface.classes));
-    const HeadPaths paths = paths_to_keep(parts, inputs, base);
+    const HeadPaths paths = paths_to_keep(parts, inputs, base, progress);
     const UncertaintyGround ground{.paths = paths, .tree = parts.tree, .base = base, .storms = storms_of(parts)};
     return uncertainty_of(ground, std::move(inputs), parts.study.uncertainty->draws, parts.study.uncertainty->seed,
-                          parts.travel.executor());
+                          parts.travel.executor(), progress);
 }
 
 Notices notices_of_ranges(const Study& study, const SurfaceData& surface) {

@@ -24,7 +24,7 @@ struct UncertaintyParts {
 [[nodiscard]] std::vector<bool> classes_met(const CoverBook& book, const std::vector<ClassCount>& counts);
 
 /// Keeps heads, and draws; none where the study does not ask for it.
-[[nodiscard]] std::optional<Uncertainty> uncertainty_of_study(const UncertaintyParts& parts);
+[[nodiscard]] std::optional<Uncertainty> uncertainty_of_study(const UncertaintyParts& parts, const Progress& progress);
 
 /// Names the cover classes of the data whose roughness has no range, since those are drawn as if they were known.
 [[nodiscard]] Notices notices_of_ranges(const Study& study, const SurfaceData& surface);

@@ -2,6 +2,8 @@
 
 #include <algorithm>
 #include <cmath>
+#include <cstddef>
+#include <cstdint>
 #include <map>
 
 #include "rillclock/core/error.hpp"
@@ -13,6 +15,16 @@ namespace {
 constexpr std::size_t most_rough_classes = 8;
 constexpr int searching_draws = 12;
 constexpr double nearly_last = 0.995;
+
+/// Calls `work(i)` for all settings, on threads, and asks now and then whether to go on.
+template <class Work>
+void for_each_setting(const Executor& executor, std::size_t count, const Progress& progress, Work work) {
+    constexpr std::size_t at_a_time = 32;
+    for (std::size_t first = 0; first < count; first += at_a_time) {
+        progress.tell({.stage = "uncertainty", .done = static_cast<std::int64_t>(first), .total = static_cast<std::int64_t>(count)});
+        executor.for_each(std::min(at_a_time, count - first), [&](std::size_t i) { work(first + i); });
+    }
+}
 
 /// A head as a setting times it, to the last point on its way.
 struct TimedHead {
@@ -189,9 +201,10 @@ std::vector<TravelSetting> searching_settings(const std::vector<UncertainInput>&
     return settings;
 }
 
-std::vector<bool> heads_that_may_be_last(const HeadPaths& paths, const std::vector<TravelSetting>& settings, const Executor& executor) {
+std::vector<bool> heads_that_may_be_last(const HeadPaths& paths, const std::vector<TravelSetting>& settings, const Executor& executor,
+                                         const Progress& progress) {
     std::vector<std::vector<bool>> near(settings.size());
-    executor.for_each(settings.size(), [&](std::size_t i) {
+    for_each_setting(executor, settings.size(), progress, [&](std::size_t i) {
         const double factor = settings[i].rules.sheet.storm_factor;
         const PathTimes times = paths.times(settings[i]);
         const auto own_time = [&](std::size_t head) {
@@ -215,13 +228,13 @@ std::vector<bool> heads_that_may_be_last(const HeadPaths& paths, const std::vect
 }
 
 Uncertainty uncertainty_of(const UncertaintyGround& ground, std::vector<UncertainInput> inputs, int draws, int seed,
-                           const Executor& executor) {
+                           const Executor& executor, const Progress& progress) {
     Uncertainty found{.inputs = std::move(inputs), .seed = seed, .kept_heads = ground.paths.heads().size(),
                       .draws = {}, .draw_times_s = {}, .points = {}};
     found.draws = drawn_values(found.inputs, draws, seed);
     const std::vector<std::vector<double>> values = all_values(found.inputs, found.draws);
     std::vector<std::vector<SettingTime>> answers(values.size());
-    executor.for_each(values.size(), [&](std::size_t i) {
+    for_each_setting(executor, values.size(), progress, [&](std::size_t i) {
         answers[i] = times_under(ground, setting_of(found.inputs, values[i], ground.base));
     });
     for (std::size_t point = 0; point < answers.front().size(); ++point) {

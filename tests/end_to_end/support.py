@@ -4,6 +4,7 @@ import hashlib
 import json
 import os
 import pathlib
+import resource
 import shutil
 import subprocess
 import tempfile
@@ -90,6 +91,16 @@ def hills(rows=40, columns=50, seed=3, relief=8.0):
 def table(path):
     with open(path, encoding="utf-8", newline="") as file:
         return list(csv.DictReader(file))
+
+
+def within_address_space(size):
+    """Options of a process with so many bytes of address space."""
+    return {"preexec_fn": lambda: resource.setrlimit(resource.RLIMIT_AS, (size, size))}
+
+
+def starts_within(size):
+    """Whether the command starts within so many bytes of address space. The sanitizers take more than any limit of use."""
+    return subprocess.run([COMMAND, "--version"], capture_output=True, check=False, **within_address_space(size)).returncode == 0
 
 
 def class_folder(test_class, name):

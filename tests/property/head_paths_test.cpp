@@ -10,6 +10,7 @@
 #include "reference/drawings.hpp"
 #include "reference/worked_terrain.hpp"
 #include "rillclock/catchment/candidate_heads.hpp"
+#include "rillclock/study/uncertainty.hpp"
 
 namespace rillclock {
 namespace {
@@ -196,6 +197,23 @@ TEST_CASE("heads that are dropped change no time of the others by a bit") {
         }
         for (std::size_t i = 0; i < after.points.size(); ++i) REQUIRE(after.points[i].fixed_s == before.points[i].fixed_s);
     }
+}
+
+TEST_CASE("settings are timed in parts, between which a caller may stop") {
+    const Case given = random_case(1);
+    const TravelSetting own{.rules = given.rules, .classes = given.surface.classes};
+    const Run base(given, own);
+    const std::vector<Cell> heads(base.flow().order().begin(), base.flow().order().end());
+    const HeadPaths paths(base.travel(), heads, base.points(), bounds(given));
+    const std::vector<TravelSetting> settings(200, own);
+    std::vector<std::int64_t> told;
+    const Progress stopping([&](const StageProgress& progress) {
+        told.push_back(progress.done);
+        return told.size() < 3;
+    });
+    REQUIRE_THROWS_AS(heads_that_may_be_last(paths, settings, Executor(2), stopping), Cancelled);
+    CHECK(told == std::vector<std::int64_t>{0, 32, 64});
+    CHECK(heads_that_may_be_last(paths, settings, Executor(2)) == heads_that_may_be_last(paths, {own}, Executor(1)));
 }
 
 TEST_CASE("the last of the candidate heads arrives within one percent of the last of all cells, under settings not searched") {

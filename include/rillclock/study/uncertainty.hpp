@@ -7,6 +7,7 @@
 
 #include "rillclock/catchment/head_paths.hpp"
 #include "rillclock/catchment/point_tree.hpp"
+#include "rillclock/core/progress.hpp"
 #include "rillclock/hydraulics/storm_time.hpp"
 #include "rillclock/study/uncertain_inputs.hpp"
 #include "rillclock/tiles/executor.hpp"
@@ -82,10 +83,11 @@ struct UncertaintyGround {
 
 /// Of the kept heads, which come within half a percent of the last of their subarea under any of the settings.
 [[nodiscard]] std::vector<bool> heads_that_may_be_last(const HeadPaths& paths, const std::vector<TravelSetting>& settings,
-                                                       const Executor& executor);
+                                                       const Executor& executor, const Progress& progress = {});
 
-/// Evaluates ends, one input at a time, and the draws. The same on every machine and with any number of threads.
+/// Evaluates ends, one input at a time, and the draws. The same on every machine and with any number of threads. Tells of settings done, as the
+/// stage "uncertainty".
 [[nodiscard]] Uncertainty uncertainty_of(const UncertaintyGround& ground, std::vector<UncertainInput> inputs, int draws, int seed,
-                                         const Executor& executor);
+                                         const Executor& executor, const Progress& progress = {});
 
 }  // namespace rillclock

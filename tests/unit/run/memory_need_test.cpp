@@ -22,10 +22,27 @@ TEST_CASE("rasters not far from square need 16 bytes a cell, strips and all; wid
     CHECK(memory_need({.cells = 25'600'000, .rows = 100'000, .columns = 256}) == Approx(759.6e6));      // 16 · 25.6e6 + 350e6
 }
 
-TEST_CASE("storms of their own add a bin a cell, fewer once cells share them") {
-    const auto bins = [](std::int64_t cells) { return memory_need({.cells = cells, .own_storms = true}) - memory_need({.cells = cells}); };
-    CHECK(bins(1'000'000) == Approx(72e6));
-    CHECK(bins(100'000'000) == Approx(2572e6));   // 72e6 + 25 · 1e8
+TEST_CASE("storms of their own add bins, shared by the cells of a subarea, and never more than one a cell") {
+    const auto bins = [](std::int64_t cells, std::int64_t points) {
+        const MemoryTask task{.cells = cells, .points = points};
+        MemoryTask own = task;
+        own.own_storms = true;
+        return memory_need(own) - memory_need(task);
+    };
+    CHECK(bins(100'000'000, 0) == Approx(5.2e9));       // 52 a cell
+    CHECK(bins(100'000'000, 100) == Approx(6.45e9));    // and 12 500 for each of 1e5, the root of 1e10
+    CHECK(bins(100'000, 1000) == Approx(16e6));         // 160 a cell
+}
+
+TEST_CASE("points, their scenarios, peak flows, draws and isochrones add what each was seen to take") {
+    const MemoryTask plain{.cells = 25'000'000};
+    const auto added = [&](const MemoryTask& task) { return memory_need(task) - memory_need(plain); };
+    CHECK(added({.cells = 25'000'000, .points = 2000}) == Approx(350e6));                            // 75 000 and 20 · 5000 each
+    CHECK(added({.cells = 25'000'000, .points = 2000, .scenarios = 2}) == Approx(530e6));            // and 90 000 each
+    CHECK(added({.cells = 25'000'000, .points = 100, .rain_by_duration = true}) == Approx(40.5e6));  // 17.5e6, 3e6, 400 · 5e4
+    CHECK(added({.cells = 25'000'000, .points = 100, .draws = 500}) == Approx(248.7e6));             // 17.5e6, 4600 · 5e4, 24 · 5e4
+    CHECK(added({.cells = 25'000'000, .isochrones = true}) == Approx(1.6e9));
+    CHECK(memory_need({.cells = 1'000'000, .isochrones = true}) - memory_need({.cells = 1'000'000}) == Approx(130e6));
 }
 
 TEST_CASE("memory is lacking where the need is over the limit, and not where they are equal") {
