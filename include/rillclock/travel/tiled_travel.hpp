@@ -63,7 +63,7 @@ struct TileDesk {
 ///                    to the root, spill elevation
 /// 2 kinds            spill elevation, kind of ground                       kind 1, spill as SpillStore
 /// 3 slopes           slope ahead; down: sheet index                        slope 4
-/// 4 times            step times; up: A, B                                  –
+/// 4 times            step times where water of other tiles passes; up: A, B –
 /// Between two passes stands one sweep over the exits of all tiles. What is not kept is made again from the border values by
 /// `read_tile`, for the last pass over the raster and for the few tiles that flow paths cross.
 class TiledTravel {
