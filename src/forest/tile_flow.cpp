@@ -8,42 +8,101 @@ namespace {
 
 constexpr std::uint8_t never = UINT8_MAX;   ///< of `waiting_`: a void, or a cell that is in the order
 
-bool is_inside(const Window& window, RowColumn at) {
-    return at.row >= window.row && at.row < window.row + window.rows && at.column >= window.column &&
-           at.column < window.column + window.columns;
-}
-
 }  // namespace
 
+void TilePassage::read(const Raster<FlowCode>& codes, const Window& window) {
+    frame_ = TileFrame(window, codes.columns());
+    exits_.clear();
+    entries_.clear();
+    cells_.clear();
+    read_exits(codes);
+    read_entries(codes);
+    is_passed_.assign(frame_.size(), 0);
+    for (const TileEntry& entry : entries_) follow(codes, entry);
+}
+
+/// Looks at the cells at the tile's rim for those that drain out of it.
+void TilePassage::read_exits(const Raster<FlowCode>& codes) {
+    const Window& window = frame_.window();
+    const auto look = [&](RowColumn at) {
+        RowColumn to = at;
+        if (step_down(codes, to) == leaves_tile) exits_.push_back(frame_.local(at));
+    };
+    const std::int64_t right = window.column + window.columns - 1;
+    for (std::int64_t row = window.row; row < window.row + window.rows; ++row) {
+        const bool is_whole = row == window.row || row + 1 == window.row + window.rows || window.columns == 1;
+        for (std::int64_t column = window.column; column <= right; column += is_whole ? 1 : right - window.column) look({row, column});
+    }
+}
+
+/// Looks at the ring of cells around the tile for those that drain into it.
+void TilePassage::read_entries(const Raster<FlowCode>& codes) {
+    const auto look = [&](RowColumn at) {
+        if (at.row < 0 || at.row >= codes.rows() || at.column < 0 || at.column >= codes.columns()) return;
+        const FlowCode code = codes(at.row, at.column);
+        if (!is_direction(code)) return;
+        const RowColumn to = neighbour(at, static_cast<Direction>(code));
+        if (!frame_.holds(to)) return;
+        entries_.push_back({static_cast<Cell>(at.row * codes.columns() + at.column), frame_.local(to)});
+    };
+    const Window& window = frame_.window();
+    const std::int64_t bottom = window.row + window.rows;
+    const std::int64_t right = window.column + window.columns;
+    for (std::int64_t column = window.column - 1; column <= right; ++column) {
+        look({window.row - 1, column});
+        look({bottom, column});
+    }
+    for (std::int64_t row = window.row; row < bottom; ++row) {
+        look({row, window.column - 1});
+        look({row, right});
+    }
+}
+
+/// Moves `at` to where a cell of the tile drains to; says which of its cells that is, as TileFlow::down.
+Local TilePassage::step_down(const Raster<FlowCode>& codes, RowColumn& at) const {
+    const FlowCode code = codes(at.row, at.column);
+    if (!is_direction(code)) return ends_here;
+    at = neighbour(at, static_cast<Direction>(code));
+    return frame_.holds(at) ? frame_.local(at) : leaves_tile;
+}
+
+/// Follows the way of an entry down to where an earlier one passed.
+void TilePassage::follow(const Raster<FlowCode>& codes, const TileEntry& entry) {
+    const auto first = static_cast<std::ptrdiff_t>(cells_.size());
+    RowColumn at = frame_.row_column(frame_.cell(entry.to));
+    for (Local local = entry.to; local < ends_here && is_passed_[local] == 0;) {
+        is_passed_[local] = 1;
+        const Local below = step_down(codes, at);
+        cells_.push_back({local, below});
+        local = below;
+    }
+    std::reverse(cells_.begin() + first, cells_.end());
+}
+
 void TileFlow::read(const Raster<FlowCode>& codes, const Window& window) {
-    window_ = window;
-    raster_columns_ = codes.columns();
+    frame_ = TileFrame(window, codes.columns());
     const auto size = static_cast<std::size_t>(window.size());
     down_.resize(size);
     code_.resize(size);
     waiting_.assign(size + 1, 0);
-    exits_.clear();
-    entries_.clear();
     read_steps(codes);
-    read_entries(codes);
     find_order();
-    find_passed();
+    passage_.read(codes, window);
 }
 
-bool TileFlow::holds(Cell cell) const { return is_inside(window_, {cell / raster_columns_, cell % raster_columns_}); }
-
 void TileFlow::read_steps(const Raster<FlowCode>& codes) {
+    const Window& window = frame_.window();
     std::array<Local, 8> offset{};   // modulo 2³²
     for (const Direction d : all_directions) {
-        offset[static_cast<std::size_t>(d)] = static_cast<Local>(row_step(d) * window_.columns + column_step(d));
+        offset[static_cast<std::size_t>(d)] = static_cast<Local>(row_step(d) * window.columns + column_step(d));
     }
-    const auto columns = static_cast<Local>(window_.columns);
+    const auto columns = static_cast<Local>(window.columns);
     const Local count = size();
-    for (std::int64_t r = 0; r < window_.rows; ++r) {
-        const FlowCode* row = codes.row(window_.row + r).data() + window_.column;
+    for (std::int64_t r = 0; r < window.rows; ++r) {
+        const FlowCode* row = codes.row(window.row + r).data() + window.column;
         const Local first = static_cast<Local>(r) * columns;
         std::copy_n(row, columns, code_.begin() + first);
-        if (r == 0 || r + 1 == window_.rows || columns < 3) {
+        if (r == 0 || r + 1 == window.rows || columns < 3) {
             for (Local local = first; local < first + columns; ++local) read_rim_step(local);
             continue;
         }
@@ -68,37 +127,9 @@ void TileFlow::read_rim_step(Local local) {
         if (code == flow_void) waiting_[local] = never;
         return;
     }
-    const RowColumn to = neighbour({row(local), window_.column + local % window_.columns}, static_cast<Direction>(code));
-    if (is_inside(window_, to)) {
-        down_[local] = static_cast<Local>((to.row - window_.row) * window_.columns + to.column - window_.column);
-        ++waiting_[down_[local]];
-    } else {
-        down_[local] = leaves_tile;
-        exits_.push_back(local);
-    }
-}
-
-/// Looks at the ring of cells around the tile for those that drain into it.
-void TileFlow::read_entries(const Raster<FlowCode>& codes) {
-    const auto look = [&](RowColumn at) {
-        if (at.row < 0 || at.row >= codes.rows() || at.column < 0 || at.column >= codes.columns()) return;
-        const FlowCode code = codes(at.row, at.column);
-        if (!is_direction(code)) return;
-        const RowColumn to = neighbour(at, static_cast<Direction>(code));
-        if (!is_inside(window_, to)) return;
-        entries_.push_back({static_cast<Cell>(at.row * raster_columns_ + at.column),
-                            static_cast<Local>((to.row - window_.row) * window_.columns + to.column - window_.column)});
-    };
-    const std::int64_t bottom = window_.row + window_.rows;
-    const std::int64_t right = window_.column + window_.columns;
-    for (std::int64_t column = window_.column - 1; column <= right; ++column) {
-        look({window_.row - 1, column});
-        look({bottom, column});
-    }
-    for (std::int64_t row = window_.row; row < bottom; ++row) {
-        look({row, window_.column - 1});
-        look({row, right});
-    }
+    const RowColumn to = neighbour(frame_.row_column(cell(local)), static_cast<Direction>(code));
+    down_[local] = frame_.holds(to) ? frame_.local(to) : leaves_tile;
+    if (down_[local] < ends_here) ++waiting_[down_[local]];
 }
 
 void TileFlow::find_order() {
@@ -120,20 +151,6 @@ void TileFlow::find_order() {
         end += stays & (--waiting == 0) ? 1 : 0;
     }
     order_.resize(static_cast<std::size_t>(end - first));
-}
-
-/// Follows the way of each entry down to where an earlier one passed.
-void TileFlow::find_passed() {
-    is_passed_.assign(size(), 0);
-    passed_.clear();
-    for (const TileEntry& entry : entries_) {
-        const auto first = static_cast<std::ptrdiff_t>(passed_.size());
-        for (Local at = entry.to; at < ends_here && is_passed_[at] == 0; at = down_[at]) {
-            is_passed_[at] = 1;
-            passed_.push_back(at);
-        }
-        std::reverse(passed_.begin() + first, passed_.end());
-    }
 }
 
 }  // namespace rillclock

@@ -18,34 +18,34 @@ struct TiledForest::Through {
 
 namespace {
 
-/// For each cell the position among the tile's exits of the one that its path leaves by.
-void label_ends(const TileFlow& flow, TileValues<Local>& end) {
-    end.assign(flow.size(), ends_here);
-    for (std::size_t i = 0; i < flow.exits().size(); ++i) end[flow.exits()[i]] = static_cast<Local>(i);
-    const auto order = flow.order();
-    for (std::size_t i = order.size(); i-- > 0;) {
-        const Local down = flow.down(order[i]);
-        if (down < ends_here) end[order[i]] = end[down];
+struct Desk {
+    TilePassage passage;
+    TileValues<Local> end;   ///< of passed cells and exits: the position among the tile's exits of the one that their path leaves by
+};
+
+void find_ends(Desk& desk) {
+    desk.end.resize(desk.passage.frame().size());
+    const auto exits = desk.passage.exits();
+    for (std::size_t i = 0; i < exits.size(); ++i) desk.end[exits[i]] = static_cast<Local>(i);
+    for (const auto& [cell, below] : desk.passage.cells()) {
+        if (below != leaves_tile) desk.end[cell] = below == ends_here ? ends_here : desk.end[below];
     }
 }
-
-struct Desk {
-    TileFlow flow;
-    TileValues<Local> end;
-};
 
 }  // namespace
 
 TiledForest::TiledForest(const Raster<FlowCode>& codes, TileGrid tiles, const Executor& executor)
-    : codes_(&codes), tiles_(tiles) {
+    : codes_(&codes), tiles_(tiles), passed_count_(tiles.count()) {
     std::vector<Through> through(tiles_.count());
     Workspaces<Desk> desks;
     executor.for_each(tiles_.count(), [&](std::size_t tile) {
         const auto desk = desks.lease();
-        desk->flow.read(codes, tiles_.window(static_cast<Tile>(tile)));
-        label_ends(desk->flow, desk->end);
-        for (const Local exit : desk->flow.exits()) through[tile].exits.push_back(desk->flow.cell(exit));
-        for (const TileEntry& entry : desk->flow.entries()) through[tile].paths.push_back({entry, desk->end[entry.to]});
+        const TilePassage& passage = desk->passage;
+        desk->passage.read(codes, tiles_.window(static_cast<Tile>(tile)));
+        find_ends(*desk);
+        for (const Local exit : passage.exits()) through[tile].exits.push_back(passage.frame().cell(exit));
+        for (const TileEntry& entry : passage.entries()) through[tile].paths.push_back({entry, desk->end[entry.to]});
+        passed_count_[tile] = static_cast<Local>(passage.cells().size());
     });
     number_exits(through);
     join_exits(through);

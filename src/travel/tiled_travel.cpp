@@ -27,25 +27,37 @@ void for_each_cell(const TileFlow& flow, Look look) {
 
 }  // namespace
 
+/// What reaches the cells that other tiles' water passes of their own tile's water.
+struct TiledTravel::OwnOfPassed {
+    PassedValues<FixedArea> area;
+    PassedValues<FixedLength> from_divide;
+    PassedValues<FixedLength> sheet_index;
+
+    explicit OwnOfPassed(const TiledForest& forest) : area(forest), from_divide(forest), sheet_index(forest) {}
+    [[nodiscard]] bool is_kept(Tile tile) const { return area.is_kept(tile); }
+};
+
 TiledTravel::TiledTravel(const TiledGround& ground, const TravelRules& rules, const Executor& executor)
     : in_(ground), rules_(rules), executor_(executor), area_(ground.forest), from_divide_(ground.forest),
       sheet_index_(ground.forest), flow_distance_(ground.forest), spill_border_(ground.forest), storm_(ground.forest),
       fixed_(ground.forest), spill_(ground.elevations, ground.forest.tiles()),
       kind_(ground.elevations.rows(), ground.elevations.columns()),
       slope_(ground.elevations.rows(), ground.elevations.columns()) {
-    find_areas();
+    OwnOfPassed own(ground.forest);
+    find_areas(own);
     find_kinds();
-    find_slopes();
-    find_times();
+    find_slopes(own);
+    find_times(&own);
 }
 
-void TiledTravel::find_areas() {
-    for_each_tile(in_.forest, executor_, desks_, [this](Tile tile, TileDesk& desk) {
-        read_elevations(desk);
+void TiledTravel::find_areas(OwnOfPassed& own) {
+    for_each_tile(in_.forest, executor_, desks_, [&](Tile tile, TileDesk& desk) {
         read_lengths(desk);
-        collect_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area),
-                     from_divide_.part(divide_channel(desk), desk.from_divide));
-        collect_up(tile, desk.flow, flow_distance_.part(distance_channel(desk), desk.flow_distance),
+        collect_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area, own.area.of(tile)),
+                     from_divide_.part(divide_channel(desk), desk.from_divide, own.from_divide.of(tile)));
+        desk.elevation.resize(desk.flow.size());
+        for (const auto& passed : desk.flow.passage().cells()) desk.elevation[passed.cell] = in_.elevations[desk.flow.cell(passed.cell)];
+        collect_up(tile, desk.flow.passage(), flow_distance_.part(distance_channel(desk), desk.flow_distance),
                    spill_border_.part(spill_channel(desk), desk.spill));
     });
     area_.solve<decltype(area_channel(std::declval<TileFlow&>()))>();
@@ -77,7 +89,7 @@ void TiledTravel::find_kinds() {
     std::sort(roots_.begin(), roots_.end(), [](const RootArea& a, const RootArea& b) { return a.cell < b.cell; });
 }
 
-void TiledTravel::find_slopes() {
+void TiledTravel::find_slopes(OwnOfPassed& own) {
     const SlopeGround ground{.in = in_, .spill = spill_, .rules = rules_.slope};
     for_each_tile(in_.forest, executor_, desks_, [&](Tile tile, TileDesk& desk) {
         read_lengths(desk);
@@ -86,18 +98,29 @@ void TiledTravel::find_slopes() {
         read_spill(tile, desk);
         find_tile_slopes(ground, desk, kind_, slope_);
         read_index_steps(desk);
-        collect_down(tile, desk.flow, sheet_index_.part(index_channel(desk), desk.sheet_index));
+        collect_down(tile, desk.flow, sheet_index_.part(index_channel(desk), desk.sheet_index, own.sheet_index.of(tile)));
     });
     sheet_index_.solve<decltype(index_channel(std::declval<TileDesk&>()))>();
 }
 
-void TiledTravel::find_times() {
-    for_each_tile(in_.forest, executor_, desks_, [this](Tile tile, TileDesk& desk) {
-        if (desk.flow.passed().empty()) return;
-        read_step_ground(tile, desk);
-        desk.step.resize(desk.flow.size());
-        for (const Local local : desk.flow.passed()) desk.step[local] = step_outcome(step_view(desk, local), rules_).time;
-        collect_up(tile, desk.flow, storm_.part(storm_channel(desk), desk.storm), fixed_.part(fixed_channel(desk), desk.fixed));
+void TiledTravel::find_times(OwnOfPassed* own) {
+    executor_.for_each(in_.forest.tiles().count(), [&](std::size_t number) {
+        const auto tile = static_cast<Tile>(number);
+        if (in_.forest.passed_count(tile) == 0) return;
+        const auto desk = desks_.lease();
+        const TilePassage& passage = desk->passage;
+        desk->passage.read(in_.forest.codes(), in_.forest.tiles().window(tile));
+        if (own != nullptr && own->is_kept(tile)) {
+            read_passed_ground(tile, *desk, *own);
+        } else {
+            desk->flow.read(in_.forest.codes(), in_.forest.tiles().window(tile));
+            read_step_ground(tile, *desk);
+        }
+        desk->step.resize(passage.frame().size());
+        for (const auto& passed : passage.cells()) {
+            desk->step[passed.cell] = step_outcome(step_view(*desk, passed.cell, passage.frame().cell(passed.cell)), rules_).time;
+        }
+        collect_up(tile, passage, storm_.part(storm_channel(*desk), desk->storm), fixed_.part(fixed_channel(*desk), desk->fixed));
     });
     storm_.solve<decltype(storm_channel(std::declval<TileDesk&>()))>();
     fixed_.solve<decltype(fixed_channel(std::declval<TileDesk&>()))>();
@@ -105,7 +128,7 @@ void TiledTravel::find_times() {
 
 void TiledTravel::time_again(const ChannelReaches& reaches) {
     in_.reaches = &reaches;
-    find_times();
+    find_times(nullptr);
 }
 
 void TiledTravel::read_elevations(TileDesk& desk) const {
@@ -133,8 +156,7 @@ void TiledTravel::read_lengths(TileDesk& desk) const {
 void TiledTravel::read_index_steps(TileDesk& desk) const {
     desk.index_step.resize(desk.flow.size());
     for_each_cell(desk.flow, [&](Local local, Cell cell, std::int64_t) {
-        desk.index_step[local] = sheet_index_step({.length = desk.length[local], .slope = static_cast<double>(slope_[cell]),
-                                                   .surface = &in_.surface.at(cell), .kind = kind_[cell]});
+        desk.index_step[local] = sheet_index_step(index_view(desk, local, cell));
     });
 }
 
@@ -146,6 +168,27 @@ void TiledTravel::read_step_ground(Tile tile, TileDesk& desk) const {
     read_spill(tile, desk);
     fill_down(tile, desk.flow, area_.part(area_channel(desk.flow), desk.area),
               from_divide_.part(divide_channel(desk), desk.from_divide), sheet_index_.part(index_channel(desk), desk.sheet_index));
+}
+
+/// The same at the passed cells alone, from what was kept of the tile's own water.
+void TiledTravel::read_passed_ground(Tile tile, TileDesk& desk, OwnOfPassed& own) {
+    const TilePassage& passage = desk.passage;
+    const std::size_t size = passage.frame().size();
+    desk.elevation.resize(size);
+    desk.spill.resize(size);
+    desk.length.resize(size);
+    desk.index_step.resize(size);
+    for (const auto& passed : passage.cells()) {
+        const Cell cell = passage.frame().cell(passed.cell);
+        const FlowCode code = in_.forest.codes()[cell];
+        desk.elevation[passed.cell] = in_.elevations[cell];
+        desk.spill[passed.cell] = spill_[cell];
+        desk.length[passed.cell] = is_direction(code) ? in_.ground.length(passage.frame().row(passed.cell), static_cast<Direction>(code)) : 0;
+        desk.index_step[passed.cell] = sheet_index_step(index_view(desk, passed.cell, cell));
+    }
+    fill_passed_down(tile, passage, area_.part(area_channel(desk.flow), desk.area, own.area.of(tile)),
+                     from_divide_.part(divide_channel(desk), desk.from_divide, own.from_divide.of(tile)),
+                     sheet_index_.part(index_channel(desk), desk.sheet_index, own.sheet_index.of(tile)));
 }
 
 void TiledTravel::read_steps(Tile tile, TileDesk& desk) const {
@@ -212,6 +255,11 @@ void TiledTravel::time_way(Tile tile, TileDesk& desk, std::span<const Local> way
     }
 }
 
+/// As much of a step as its share of the sheet index asks for.
+StepView TiledTravel::index_view(const TileDesk& desk, Local local, Cell cell) const {
+    return {.length = desk.length[local], .slope = static_cast<double>(slope_[cell]), .surface = &in_.surface.at(cell), .kind = kind_[cell]};
+}
+
 StepView TiledTravel::step_view(const TileDesk& desk, Local local, Cell cell) const {
     return {.length = desk.length[local],
             .slope = static_cast<double>(slope_[cell]),
@@ -242,9 +290,9 @@ TiledOwners::TiledOwners(const TiledForest& forest, std::vector<CellLabel> label
         const auto tile = static_cast<Tile>(number);
         if (first_of_tile_[tile] == first_of_tile_[tile + 1U]) return;   // no path finds a label here
         const auto desk = desks.lease();
-        desk->flow.read(forest.codes(), forest.tiles().window(tile));
-        put_labels(tile, *desk);
-        collect_up(tile, desk->flow, owner_.part(channel(*desk), desk->owner));
+        desk->passage.read(forest.codes(), forest.tiles().window(tile));
+        put_labels(tile, desk->passage.frame(), *desk);
+        collect_up(tile, desk->passage, owner_.part(channel(*desk), desk->owner));
     });
     owner_.solve<decltype(channel(std::declval<TileDesk&>()))>();
 }
@@ -265,15 +313,15 @@ std::uint32_t TiledOwners::owner_of(Cell cell) const {
     }
 }
 
-void TiledOwners::put_labels(Tile tile, TileDesk& desk) const {
-    desk.label.assign(desk.flow.size(), 0);
+void TiledOwners::put_labels(Tile tile, const TileFrame& frame, TileDesk& desk) const {
+    desk.label.assign(frame.size(), 0);
     for (std::size_t i = first_of_tile_[tile]; i < first_of_tile_[tile + 1U]; ++i) {
-        desk.label[desk.flow.local(labels_[i].cell)] = labels_[i].number;
+        desk.label[frame.local(frame.row_column(labels_[i].cell))] = labels_[i].number;
     }
 }
 
 void TiledOwners::read_tile(Tile tile, TileDesk& desk) const {
-    put_labels(tile, desk);
+    put_labels(tile, desk.flow.frame(), desk);
     fill_up(tile, desk.flow, owner_.part(up::First{[&desk](Local cell) { return desk.label[cell]; }}, desk.owner));
 }
 

@@ -33,7 +33,7 @@ std::uint32_t label(Cell cell) { return weight(cell) > 80 ? cell + 1 : 0; }
 
 template <class Part>
 void collect_tile(Tile tile, const TileFlow& flow, const Part& part) {
-    if constexpr (requires { part.keep_below(tile); }) collect_up(tile, flow, part);
+    if constexpr (requires { part.keep_below(tile); }) collect_up(tile, flow.passage(), part);
     else collect_down(tile, flow, part);
 }
 template <class Part>

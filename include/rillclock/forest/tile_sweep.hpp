@@ -2,12 +2,14 @@
 
 #include <algorithm>
 #include <cstdint>
+#include <limits>
 #include <span>
 #include <type_traits>
 #include <vector>
 
 #include "rillclock/forest/sweep.hpp"
 #include "rillclock/forest/tiled_forest.hpp"
+#include "rillclock/raster/large_memory.hpp"
 
 namespace rillclock {
 
@@ -26,6 +28,7 @@ template <class W>
 struct Rule<down::Sum<W>> {
     using Value = std::int64_t;
     static constexpr bool moves = false;
+    static constexpr Value nothing = 0;   ///< changes nothing when joined
     static Value start(const down::Sum<W>& channel, Local cell) { return channel.weight(cell); }
     static Value join(Value a, Value b) { return a + b; }
     static Value sent(const down::Sum<W>&, Local, Value value) { return value; }
@@ -35,6 +38,7 @@ template <class S>
 struct Rule<down::Max<S>> {
     using Value = std::int64_t;
     static constexpr bool moves = true;
+    static constexpr Value nothing = 0;
     static Value start(const down::Max<S>&, Local) { return 0; }
     static Value join(Value a, Value b) { return std::max(a, b); }
     static Value sent(const down::Max<S>& channel, Local cell, Value value) { return value + channel.step(cell); }
@@ -44,6 +48,7 @@ template <class O>
 struct Rule<down::Min<O>> {
     using Value = double;
     static constexpr bool moves = false;
+    static constexpr Value nothing = std::numeric_limits<double>::infinity();
     static Value start(const down::Min<O>& channel, Local cell) { return channel.own(cell); }
     static Value join(Value a, Value b) { return std::min(a, b); }
     static Value sent(const down::Min<O>&, Local, Value value) { return value; }
@@ -104,6 +109,28 @@ struct UpPart;
 
 }  // namespace tile_sweep_detail
 
+/// What reaches the passed cells of all tiles of their own tile's water, from the first stage of a sweep down to the third. Of a tile where more than
+/// one cell in eight is passed nothing is kept, so that it is a byte a cell at most; its whole field is made again instead.
+template <class Value>
+class PassedValues {
+public:
+    explicit PassedValues(const TiledForest& forest) : first_(forest.tiles().count() + 1U, 0) {
+        for (Tile tile = 0; tile < forest.tiles().count(); ++tile) {
+            const Local count = forest.passed_count(tile);
+            first_[tile + 1U] = first_[tile] + (count <= forest.tiles().window(tile).size() / 8 ? count : 0);
+        }
+        values_ = std::vector<Value, ZeroMemory<Value>>(first_.back());
+    }
+    /// Whether a tile that water passes keeps its values.
+    [[nodiscard]] bool is_kept(Tile tile) const { return first_[tile] != first_[tile + 1U]; }
+    /// By passed cell, in the order of TilePassage::cells; none where they are not kept.
+    [[nodiscard]] std::span<Value> of(Tile tile) { return std::span(values_).subspan(first_[tile], first_[tile + 1U] - first_[tile]); }
+
+private:
+    std::vector<std::size_t> first_;   ///< by tile
+    std::vector<Value, ZeroMemory<Value>> values_;
+};
+
 /// What each exit sends on to the next tile in a sweep down.
 template <class Value_>
 class DownBorders {
@@ -116,6 +143,11 @@ public:
     template <class Channel, class Field>
     [[nodiscard]] auto part(const Channel& channel, Field& field) {
         return tile_sweep_detail::DownPart<DownBorders, Channel, Field>{*this, channel, field};
+    }
+    /// The same of a tile whose passed cells keep, or have kept, what of its own water reaches them: a value each in `own`, or none at all.
+    template <class Channel, class Field>
+    [[nodiscard]] auto part(const Channel& channel, Field& field, std::span<Value> own) {
+        return tile_sweep_detail::DownPart<DownBorders, Channel, Field>{*this, channel, field, own};
     }
     /// The same of borders that are only read.
     template <class Channel, class Field>
@@ -196,8 +228,22 @@ struct DownPart {
     static constexpr bool moves = Rule::moves;
     Borders& borders;
     Channel channel;
-    Field& field;   ///< a vector of values
+    Field& field;             ///< a vector of values
+    std::span<Value> own = {};   ///< by passed cell: what reaches it of the water that begins in the tile; empty where that is not kept
 
+    void keep_own(const TilePassage& passage) const {
+        for (std::size_t i = 0; i < own.size(); ++i) own[i] = field[passage.cells()[i].cell];
+    }
+    void start_passed(const TilePassage& passage) const {
+        field.resize(passage.frame().size());
+        for (const auto& passed : passage.cells()) field[passed.cell] = Rule::nothing;
+    }
+    void add_own(const TilePassage& passage) const {
+        for (std::size_t i = 0; i < own.size(); ++i) {
+            const Local cell = passage.cells()[i].cell;
+            field[cell] = Rule::join(field[cell], own[i]);
+        }
+    }
     void start(const TileFlow& flow) const {
         start_field(flow, field, [this](Local cell) { return Rule::start(channel, cell); });
     }
@@ -235,7 +281,7 @@ struct UpPart {
     Channel channel;
     Field& field;   ///< a vector of values
 
-    void make_room(const TileFlow& flow) const { field.resize(flow.size()); }
+    void make_room(const TilePassage& passage) const { field.resize(passage.frame().size()); }
     void start(const TileFlow& flow) const {
         if (flow.order().size() == flow.size()) field.resize(flow.size());   // every cell will be set
         else field.assign(flow.size(), Value{});
@@ -282,8 +328,9 @@ void collect_down(Tile tile, const TileFlow& flow, const Parts&... parts) {
     (parts.start(flow), ...);
     tile_sweep_detail::send_all(flow, parts...);
     (parts.keep_sent(tile, flow), ...);
+    (parts.keep_own(flow.passage()), ...);
     if constexpr ((Parts::moves || ...)) {
-        for (const Local cell : flow.passed()) (parts.move(cell, flow.down(cell)), ...);
+        for (const auto& [cell, below] : flow.passage().cells()) (parts.move(cell, below), ...);
         (parts.keep_moved(tile), ...);
     }
 }
@@ -296,12 +343,25 @@ void fill_down(Tile tile, const TileFlow& flow, const Parts&... parts) {
     tile_sweep_detail::send_all(flow, parts...);
 }
 
-/// First stage of sweeps up: what lies along the tile's own part of the paths that come into it. Sets, and asks for weights of, the cells that
-/// these pass (`TileFlow::passed`) alone.
+/// Third stage of sweeps down at the cells alone that other tiles' water passes, of parts that kept what is the tile's own there. Sets, and asks
+/// for weights of, no other cell.
 template <class... Parts>
-void collect_up(Tile tile, const TileFlow& flow, const Parts&... parts) {
-    (parts.make_room(flow), ...);
-    for (const Local cell : flow.passed()) (parts.template take<false>(cell, flow.down(cell)), ...);
+void fill_passed_down(Tile tile, const TilePassage& passage, const Parts&... parts) {
+    (parts.start_passed(passage), ...);
+    (parts.let_in(tile), ...);
+    const auto cells = passage.cells();
+    for (std::size_t i = cells.size(); i-- > 0;) {
+        if (cells[i].below < ends_here) (parts.send(cells[i].cell, cells[i].below), ...);
+    }
+    (parts.add_own(passage), ...);
+}
+
+/// First stage of sweeps up: what lies along the tile's own part of the paths that come into it. Sets, and asks for weights of, the cells that
+/// these pass alone.
+template <class... Parts>
+void collect_up(Tile tile, const TilePassage& passage, const Parts&... parts) {
+    (parts.make_room(passage), ...);
+    for (const auto& [cell, below] : passage.cells()) (parts.template take<false>(cell, below), ...);
     (parts.keep_below(tile), ...);
 }
 

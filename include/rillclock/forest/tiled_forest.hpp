@@ -34,7 +34,7 @@ public:
     [[nodiscard]] const TileGrid& tiles() const { return tiles_; }
 
     [[nodiscard]] Exit exit_count() const { return static_cast<Exit>(next_.size()); }
-    /// The first exit of a tile; its exits are numbered on from there, in the order of TileFlow::exits.
+    /// The first exit of a tile; its exits are numbered on from there, in the order of TilePassage::exits.
     [[nodiscard]] Exit first_exit(Tile tile) const { return first_exit_[tile]; }
     /// The exit that a cell is, which must be one. Cost: logarithmic in the exits of its tile.
     [[nodiscard]] Exit exit_of(Cell cell) const;
@@ -46,6 +46,8 @@ public:
     [[nodiscard]] std::span<const Inlet> inlets(Tile tile) const {
         return std::span(inlets_).subspan(first_inlet_[tile], first_inlet_[tile + 1] - first_inlet_[tile]);
     }
+    /// How many cells of a tile water of other tiles passes.
+    [[nodiscard]] Local passed_count(Tile tile) const { return passed_count_[tile]; }
 
 private:
     struct Through;
@@ -55,6 +57,7 @@ private:
 
     const Raster<FlowCode>* codes_;
     TileGrid tiles_;
+    std::vector<Local> passed_count_;   ///< by tile
     std::vector<Exit> first_exit_;
     std::vector<Cell> exit_cell_;
     std::vector<Exit> next_;

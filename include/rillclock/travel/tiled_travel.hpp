@@ -35,6 +35,7 @@ struct CellLabel {
 /// Everything about the cells of one tile, by `Local`; room that is used for tile after tile.
 struct TileDesk {
     TileFlow flow;
+    TilePassage passage;                       ///< of work that needs no more of the flow than that
     TileValues<FixedLength> length;            ///< of the step out of the cell
     TileValues<FixedLength> index_step;        ///< what the step adds to the sheet index
     TileValues<double> elevation;              ///< elevation units; NaN where void
@@ -64,7 +65,8 @@ struct TileDesk {
 /// 2 kinds            spill elevation, kind of ground                       kind 1, spill as SpillStore
 /// 3 slopes           slope ahead; down: sheet index                        slope 4
 /// 4 times            step times where water of other tiles passes; up: A, B –
-/// Between two passes stands one sweep over the exits of all tiles. What is not kept is made again from the border values by
+/// Between two passes stands one sweep over the exits of all tiles. Pass 4 looks at no cell that is not passed: what reaches the passed cells of the
+/// tile's own water is kept in passes 1 and 3 (PassedValues), 24 bytes for each, until the times are found. What is not kept is made again from the border values by
 /// `read_tile`, for the last pass over the raster and for the few tiles that flow paths cross.
 class TiledTravel {
 public:
@@ -97,12 +99,14 @@ public:
     [[nodiscard]] StepView step_view(const TileDesk& desk, Local local) const { return step_view(desk, local, desk.flow.cell(local)); }
 
 private:
+    struct OwnOfPassed;
     [[nodiscard]] StepView step_view(const TileDesk& desk, Local local, Cell cell) const;
+    [[nodiscard]] StepView index_view(const TileDesk& desk, Local local, Cell cell) const;
     [[nodiscard]] StepOutcome outcome_with_shared(TileDesk& desk, Local local, Cell cell) const;
-    void find_areas();
+    void find_areas(OwnOfPassed& own);
     void find_kinds();
-    void find_slopes();
-    void find_times();
+    void find_slopes(OwnOfPassed& own);
+    void find_times(OwnOfPassed* own);
 
     [[nodiscard]] auto area_channel(const TileFlow& flow) const {
         const FixedArea everywhere = in_.ground.is_uniform() ? in_.ground.cell_area(0) : 0;
@@ -129,6 +133,7 @@ private:
         return up::Add{[&desk](Local cell) { return desk.step[cell].fixed; }};
     }
     void read_step_ground(Tile tile, TileDesk& desk) const;
+    void read_passed_ground(Tile tile, TileDesk& desk, OwnOfPassed& own);
     void read_steps(Tile tile, TileDesk& desk) const;
     void time_way(Tile tile, TileDesk& desk, std::span<const Local> way) const;
     void read_elevations(TileDesk& desk) const;
@@ -164,7 +169,7 @@ public:
     [[nodiscard]] std::uint32_t owner_of(Cell cell) const;
 
 private:
-    void put_labels(Tile tile, TileDesk& desk) const;
+    void put_labels(Tile tile, const TileFrame& frame, TileDesk& desk) const;
 
     const TiledForest& forest_;
     std::vector<CellLabel> labels_;              ///< by tile, then by cell

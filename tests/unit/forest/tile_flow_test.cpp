@@ -33,11 +33,18 @@ TEST_CASE("a tile knows which of its cells water of other tiles passes, each aft
     codes(0, 4) = flow_code(Direction::south_east);
     codes(2, 5) = flow_code(Direction::north);
     codes(3, 4) = flow_code(Direction::west);
-    TileFlow flow;
-    flow.read(codes, TileGrid(4, 8, 4).window(1));
-    const auto passed = flow.passed();
+    TilePassage passage;
+    passage.read(codes, TileGrid(4, 8, 4).window(1));
+    std::vector<Local> cells, below;
+    for (const TilePassage::Passed& passed : passage.cells()) {
+        cells.push_back(passed.cell);
+        below.push_back(passed.below);
+    }
     // From (0,4) by (1,5) and (1,6) to the root at (1,7), which comes first; then (1,4), whose way goes on along the other.
-    CHECK(std::vector<Local>(passed.begin(), passed.end()) == std::vector<Local>{7, 6, 5, 0, 4});
+    CHECK(cells == std::vector<Local>{7, 6, 5, 0, 4});
+    CHECK(below == std::vector<Local>{ends_here, 7, 6, 5, 5});
+    const auto exits = passage.exits();
+    CHECK(std::vector<Local>(exits.begin(), exits.end()) == std::vector<Local>{12});
 }
 
 }  // namespace
