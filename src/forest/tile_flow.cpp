@@ -81,55 +81,68 @@ void TilePassage::follow(const Raster<FlowCode>& codes, const TileEntry& entry) 
 
 void TileFlow::read(const Raster<FlowCode>& codes, const Window& window) {
     frame_ = TileFrame(window, codes.columns());
-    const auto size = static_cast<std::size_t>(window.size());
-    down_.resize(size);
-    code_.resize(size);
-    waiting_.assign(size + 1, 0);
-    read_steps(codes);
+    read_codes(codes);
+    read_steps();
+    count_tributaries();
     find_order();
     passage_.read(codes, window);
 }
 
-void TileFlow::read_steps(const Raster<FlowCode>& codes) {
+void TileFlow::read_codes(const Raster<FlowCode>& codes) {
+    code_.resize(frame_.size());
     const Window& window = frame_.window();
-    std::array<Local, 8> offset{};   // modulo 2³²
-    for (const Direction d : all_directions) {
-        offset[static_cast<std::size_t>(d)] = static_cast<Local>(row_step(d) * window.columns + column_step(d));
-    }
-    const auto columns = static_cast<Local>(window.columns);
-    const Local count = size();
     for (std::int64_t r = 0; r < window.rows; ++r) {
-        const FlowCode* row = codes.row(window.row + r).data() + window.column;
-        const Local first = static_cast<Local>(r) * columns;
-        std::copy_n(row, columns, code_.begin() + first);
-        if (r == 0 || r + 1 == window.rows || columns < 3) {
-            for (Local local = first; local < first + columns; ++local) read_rim_step(local);
-            continue;
-        }
+        std::copy_n(codes.row(window.row + r).data() + window.column, window.columns, code_.begin() + r * window.columns);
+    }
+}
+
+void TileFlow::read_steps() {
+    const Window& window = frame_.window();
+    std::array<Local, 256> offset{};   // modulo 2³²
+    std::array<Local, 256> keep{};     // all bits for directions
+    offset.fill(ends_here);
+    for (const Direction d : all_directions) {
+        offset[flow_code(d)] = static_cast<Local>(row_step(d) * window.columns + column_step(d));
+        keep[flow_code(d)] = ~Local{0};
+    }
+    const Local count = frame_.size();
+    down_.resize(count);
+    for (Local local = 0; local < count; ++local) down_[local] = (local & keep[code_[local]]) + offset[code_[local]];
+
+    const auto columns = static_cast<Local>(window.columns);
+    for (Local column = 0; column < columns; ++column) {
+        read_rim_step(column);
+        read_rim_step(count - columns + column);
+    }
+    for (Local first = 0; first < count; first += columns) {
         read_rim_step(first);
-        for (Local local = first + 1; local + 1 < first + columns; ++local) {   // without a step that the processor must guess, as in find_order
-            const FlowCode code = code_[local];
-            const bool flows = is_direction(code);
-            const Local to = local + offset[code % offset.size()];
-            down_[local] = flows ? to : ends_here;
-            ++waiting_[flows ? to : count];
-            if (code == flow_void) waiting_[local] = never;
-        }
         read_rim_step(first + columns - 1);
     }
 }
 
 /// The step of a cell at the rim of the tile, whose water may leave it.
 void TileFlow::read_rim_step(Local local) {
-    const FlowCode code = code_[local];
-    if (!is_direction(code)) {
-        down_[local] = ends_here;
-        if (code == flow_void) waiting_[local] = never;
-        return;
+    if (!is_direction(code_[local])) return;
+    if (!frame_.holds(neighbour(frame_.row_column(cell(local)), static_cast<Direction>(code_[local])))) down_[local] = leaves_tile;
+}
+
+/// Counts for each cell the neighbours that drain to it: row by row and direction by direction, where counting by steps would wait for each.
+void TileFlow::count_tributaries() {
+    const Window& window = frame_.window();
+    waiting_.assign(std::size_t{size()} + 1, 0);
+    for (std::int64_t r = 0; r < window.rows; ++r) {
+        std::uint8_t* const waiting = waiting_.data() + r * window.columns;
+        for (const Direction d : all_directions) {
+            if (const std::int64_t from = r - row_step(d); from < 0 || from >= window.rows) continue;
+            const FlowCode* const tributary = code_.data() + (r - row_step(d)) * window.columns - column_step(d);
+            const std::int64_t first = std::max(column_step(d), 0);
+            const std::int64_t end = window.columns + std::min(column_step(d), 0);
+            const FlowCode code = flow_code(d);
+            for (std::int64_t c = first; c < end; ++c) waiting[c] = static_cast<std::uint8_t>(waiting[c] + (tributary[c] == code ? 1 : 0));
+        }
+        const FlowCode* const own = code_.data() + r * window.columns;
+        for (std::int64_t c = 0; c < window.columns; ++c) waiting[c] = own[c] == flow_void ? never : waiting[c];
     }
-    const RowColumn to = neighbour(frame_.row_column(cell(local)), static_cast<Direction>(code));
-    down_[local] = frame_.holds(to) ? frame_.local(to) : leaves_tile;
-    if (down_[local] < ends_here) ++waiting_[down_[local]];
 }
 
 void TileFlow::find_order() {

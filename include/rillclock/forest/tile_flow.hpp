@@ -123,8 +123,10 @@ public:
     [[nodiscard]] const TilePassage& passage() const { return passage_; }
 
 private:
-    void read_steps(const Raster<FlowCode>& codes);
+    void read_codes(const Raster<FlowCode>& codes);
+    void read_steps();
     void read_rim_step(Local local);
+    void count_tributaries();
     void find_order();
 
     TileFrame frame_;
