@@ -1,6 +1,6 @@
 #include "level_ground.hpp"
 
-#include "vectorised.hpp"
+#include "rillclock/core/vectorised.hpp"
 
 namespace rillclock {
 namespace {

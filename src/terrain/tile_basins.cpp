@@ -3,8 +3,8 @@
 #include <algorithm>
 
 #include "level_ground.hpp"
+#include "rillclock/core/vectorised.hpp"
 #include "rillclock/graph/disjoint_sets.hpp"
-#include "vectorised.hpp"
 
 namespace rillclock {
 namespace {

@@ -4,8 +4,8 @@
 #include <cmath>
 #include <cstring>
 
+#include "rillclock/core/vectorised.hpp"
 #include "tile_descent.hpp"
-#include "vectorised.hpp"
 
 namespace rillclock {
 namespace {

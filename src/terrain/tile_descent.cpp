@@ -4,7 +4,7 @@
 #include <cstring>
 
 #include "inverse_lengths.hpp"
-#include "vectorised.hpp"
+#include "rillclock/core/vectorised.hpp"
 
 namespace rillclock {
 namespace {

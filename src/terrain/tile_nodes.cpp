@@ -2,7 +2,7 @@
 
 #include <algorithm>
 
-#include "vectorised.hpp"
+#include "rillclock/core/vectorised.hpp"
 
 namespace rillclock {
 namespace {
