@@ -54,6 +54,12 @@ void SpillStore::read(Tile tile, std::span<const double> elevation, std::span<do
     else fill(parts_[tile].wide);
 }
 
+std::size_t SpillStore::count_below() const {
+    std::size_t count = 0;
+    for (const Part& part : parts_) count += part.single.size() + part.wide.size();
+    return count;
+}
+
 double SpillStore::at(RowColumn at) const {
     const Place place = place_of(at);
     const Part& part = parts_[place.tile];

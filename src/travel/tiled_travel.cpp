@@ -35,6 +35,12 @@ struct TiledTravel::OwnOfPassed {
 
     explicit OwnOfPassed(const TiledForest& forest) : area(forest), from_divide(forest), sheet_index(forest) {}
     [[nodiscard]] bool is_kept(Tile tile) const { return area.is_kept(tile); }
+    [[nodiscard]] std::size_t bytes() const { return area.bytes() + from_divide.bytes() + sheet_index.bytes(); }
+    void clear() {
+        area.clear();
+        from_divide.clear();
+        sheet_index.clear();
+    }
 };
 
 TiledTravel::TiledTravel(const TiledGround& ground, const TravelRules& rules, const Executor& executor)
@@ -46,6 +52,8 @@ TiledTravel::TiledTravel(const TiledGround& ground, const TravelRules& rules, co
     OwnOfPassed own(ground.forest);
     find_areas(own);
     find_kinds();
+    // Memory is judged as if every cell had a spill elevation of its own; what they leave of it is used here.
+    if (own.bytes() > (static_cast<std::size_t>(kind_.size()) - spill_.count_below()) * spill_.value_bytes()) own.clear();
     find_slopes(own);
     find_times(&own);
 }
@@ -57,7 +65,7 @@ void TiledTravel::find_areas(OwnOfPassed& own) {
                      from_divide_.part(divide_channel(desk), desk.from_divide, own.from_divide.of(tile)));
         desk.elevation.resize(desk.flow.size());
         for (const auto& passed : desk.flow.passage().cells()) desk.elevation[passed.cell] = in_.elevations[desk.flow.cell(passed.cell)];
-        collect_up(tile, desk.flow.passage(), flow_distance_.part(distance_channel(desk), desk.flow_distance),
+        collect_up(tile, desk.flow, flow_distance_.part(distance_channel(desk), desk.flow_distance),
                    spill_border_.part(spill_channel(desk), desk.spill));
     });
     area_.solve<decltype(area_channel(std::declval<TileFlow&>()))>();

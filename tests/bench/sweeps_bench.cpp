@@ -49,7 +49,7 @@ struct Bench {
     void sweep_up_into(Values& result, ChannelOf channel_of) {
         UpBorders<std::int64_t> borders(forest);
         for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
-            collect_up(tile, desk.flow.passage(), borders.part(channel_of(desk.flow), desk.distance));
+            collect_up(tile, desk.flow, borders.part(channel_of(desk.flow), desk.distance));
         });
         borders.template solve<decltype(channel_of(std::declval<const TileFlow&>()))>();
         for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
@@ -65,7 +65,7 @@ struct Bench {
         UpBorders<std::int64_t> up_b(forest), up_d(forest);
         for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
             collect_down(tile, desk.flow, down_a.part(down_of(desk.flow), desk.area), down_c.part(down_of(desk.flow), desk.second_area));
-            collect_up(tile, desk.flow.passage(), up_b.part(up_of(desk.flow), desk.distance), up_d.part(up_of(desk.flow), desk.second_distance));
+            collect_up(tile, desk.flow, up_b.part(up_of(desk.flow), desk.distance), up_d.part(up_of(desk.flow), desk.second_distance));
         });
         down_a.template solve<decltype(down_of(std::declval<const TileFlow&>()))>();
         down_c.template solve<decltype(down_of(std::declval<const TileFlow&>()))>();

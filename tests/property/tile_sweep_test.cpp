@@ -33,7 +33,7 @@ std::uint32_t label(Cell cell) { return weight(cell) > 80 ? cell + 1 : 0; }
 
 template <class Part>
 void collect_tile(Tile tile, const TileFlow& flow, const Part& part) {
-    if constexpr (requires { part.keep_below(tile); }) collect_up(tile, flow.passage(), part);
+    if constexpr (requires { part.keep_below(tile); }) collect_up(tile, flow, part);
     else collect_down(tile, flow, part);
 }
 template <class Part>
@@ -59,6 +59,80 @@ Raster<Value> tiled(const TiledForest& forest, const Executor& executor, Make ma
         for (Local local = 0; local < desk.flow.size(); ++local) gathered[desk.flow.cell(local)] = room[tile][local];
     });
     return gathered;
+}
+
+/// The third stage at passed cells alone, from what the first kept there: they have the values of the whole sweep, and no other cell is touched.
+template <class Value, class Make>
+void require_at_passed(const TiledForest& forest, const Executor& executor, Make make, const Raster<Value>& expected) {
+    using Channel = decltype(make(std::declval<const TileFlow&>()));
+    constexpr Value untouched = -12345;
+    Workspaces<Desk> desks;
+    DownBorders<Value> borders(forest);
+    std::vector<std::vector<Value>> own(forest.tiles().count()), room(forest.tiles().count());
+    for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+        own[tile].resize(forest.passed_count(tile));
+        collect_down(tile, desk.flow, borders.part(make(desk.flow), room[tile], std::span(own[tile])));
+    });
+    borders.template solve<Channel>();
+    for_each_tile(forest, executor, desks, [&](Tile tile, Desk& desk) {
+        room[tile].assign(desk.flow.size(), untouched);
+        fill_passed_down(tile, desk.flow.passage(), borders.part(make(desk.flow), room[tile], std::span(own[tile])));
+    });
+    for (Tile tile = 0; tile < forest.tiles().count(); ++tile) {
+        TilePassage passage;
+        passage.read(forest.codes(), forest.tiles().window(tile));
+        REQUIRE(passage.cells().size() == forest.passed_count(tile));
+        for (const TilePassage::Passed& passed : passage.cells()) {
+            REQUIRE(room[tile][passed.cell] == expected[passage.frame().cell(passed.cell)]);
+            room[tile][passed.cell] = untouched;
+        }
+        REQUIRE(std::count(room[tile].begin(), room[tile].end(), untouched) == static_cast<std::ptrdiff_t>(room[tile].size()));
+    }
+}
+
+TEST_CASE("values of cells that other tiles' water passes come from what was kept there of the tile's own") {
+    for (unsigned seed = 0; seed < 300; ++seed) {
+        std::mt19937 random(seed);
+        const Elevations z = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, seed % 3 == 0 ? 0.1 : 0.0);
+        const FlowForest plain = flow_forest_of(z, Ground::planar(metres(1), metres(1)));
+        const auto side = std::uniform_int_distribution<std::int64_t>(1, 16)(random);
+        const Executor executor(1 + seed % 2, Executor::Kind::plain_threads);
+        const TiledForest forest(plain.codes(), TileGrid(z.rows(), z.columns(), side), executor);
+        INFO("seed " << seed << ", tiles of " << side);
+
+        const auto [sum, greatest, least] = sweep_down(plain, down::Sum{weight}, down::Max{weight}, down::Min{level});
+        require_at_passed<std::int64_t>(forest, executor, [](const TileFlow& flow) {
+            return down::Sum{[&](Local cell) { return weight(flow.cell(cell)); }};
+        }, sum);
+        require_at_passed<std::int64_t>(forest, executor, [](const TileFlow& flow) {
+            return down::Max{[&](Local cell) { return weight(flow.cell(cell)); }};
+        }, greatest.value);
+        require_at_passed<double>(forest, executor, [](const TileFlow& flow) {
+            return down::Min{[&](Local cell) { return level(flow.cell(cell)); }};
+        }, least);
+    }
+}
+
+TEST_CASE("values at passed cells are kept of tiles where few cells are passed, and of no others") {
+    // Water runs east along one row, and along all rows of the tiles below it.
+    Raster<FlowCode> codes(32, 32, flow_root);
+    for (std::int64_t column = 0; column < 31; ++column) {
+        codes(3, column) = flow_code(Direction::east);
+        for (std::int64_t row = 16; row < 32; ++row) codes(row, column) = flow_code(Direction::east);
+    }
+    const TiledForest forest(codes, TileGrid(32, 32, 16), Executor(1, Executor::Kind::plain_threads));
+    PassedValues<std::int64_t> values(forest);
+    CHECK(values.of(0).empty());        // nothing comes in
+    CHECK(values.of(1).size() == 16);   // a row of 16
+    CHECK(values.is_kept(1));
+    CHECK(forest.passed_count(3) == 256);
+    CHECK_FALSE(values.is_kept(3));
+    CHECK(values.of(3).empty());
+    CHECK(values.bytes() == 16 * sizeof(std::int64_t));
+    values.clear();
+    CHECK(values.of(1).empty());
+    CHECK_FALSE(values.is_kept(1));
+    CHECK(values.bytes() == 0);
 }
 
 TEST_CASE("tiled sweeps give every cell what the plain sweeps give it, whatever the tiles and threads") {

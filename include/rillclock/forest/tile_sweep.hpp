@@ -123,6 +123,13 @@ public:
     }
     /// Whether a tile that water passes keeps its values.
     [[nodiscard]] bool is_kept(Tile tile) const { return first_[tile] != first_[tile + 1U]; }
+    /// Bytes that the values take.
+    [[nodiscard]] std::size_t bytes() const { return values_.size() * sizeof(Value); }
+    /// Keeps nothing any more, of any tile.
+    void clear() {
+        std::fill(first_.begin(), first_.end(), 0);
+        values_ = {};
+    }
     /// By passed cell, in the order of TilePassage::cells; none where they are not kept.
     [[nodiscard]] std::span<Value> of(Tile tile) { return std::span(values_).subspan(first_[tile], first_[tile + 1U] - first_[tile]); }
 
@@ -363,6 +370,12 @@ void collect_up(Tile tile, const TilePassage& passage, const Parts&... parts) {
     (parts.make_room(passage), ...);
     for (const auto& [cell, below] : passage.cells()) (parts.template take<false>(cell, below), ...);
     (parts.keep_below(tile), ...);
+}
+
+/// The same of a tile whose whole flow was read.
+template <class... Parts>
+void collect_up(Tile tile, const TileFlow& flow, const Parts&... parts) {
+    collect_up(tile, flow.passage(), parts...);
 }
 
 /// The same, and sets every cell to what lies on its path within the tile, void cells to 0.

@@ -28,6 +28,10 @@ public:
         const Place place = place_of(at);
         return (parts_[place.tile].below[place.word] >> place.bit & 1U) != 0;
     }
+    /// How many cells of written tiles lie below their spill elevation.
+    [[nodiscard]] std::size_t count_below() const;
+    /// Bytes that a spill elevation takes.
+    [[nodiscard]] std::size_t value_bytes() const { return elevations_->width() == ElevationStore::Width::four_bytes ? sizeof(float) : sizeof(double); }
     /// The spill elevation of a cell.
     [[nodiscard]] double operator[](Cell cell) const { return at({cell / elevations_->columns(), cell % elevations_->columns()}); }
     /// The same by row and column.

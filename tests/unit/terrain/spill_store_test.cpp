@@ -70,6 +70,7 @@ TEST_CASE("spill elevations come back cell by cell, tile by tile and row by row,
             const std::vector<double> expected = within(window, filled.spill, columns);
             REQUIRE(std::equal(spill.begin(), spill.end(), expected.begin(), expected.end(), same));
         }
+        std::size_t all_below = 0;
         for (std::int64_t row = 0; row < rows; ++row) {
             std::vector<Cell> below;
             for (std::int64_t column = 0; column < columns; ++column) {
@@ -82,7 +83,10 @@ TEST_CASE("spill elevations come back cell by cell, tile by tile and row by row,
             std::vector<Cell> found;
             store.for_each_below(row, [&](Cell cell) { found.push_back(cell); });
             REQUIRE(found == below);
+            all_below += below.size();
         }
+        REQUIRE(store.count_below() == all_below);
+        REQUIRE(store.value_bytes() == (seed % 2 == 0 ? 4 : 8));
     }
 }
 
@@ -97,6 +101,7 @@ TEST_CASE("a tile that is written again forgets what it held") {
     CHECK(store[0] == 1.0);
     CHECK(store[1] == 1.0);
     CHECK(store[2] == 5.0);
+    CHECK(store.count_below() == 1);
 }
 
 }  // namespace
