@@ -80,24 +80,23 @@ void TilePassage::follow(const Raster<FlowCode>& codes, const TileEntry& entry) 
 }
 
 void TileFlow::read(const Raster<FlowCode>& codes, const Window& window) {
-    frame_ = TileFrame(window, codes.columns());
+    passage_.read(codes, window);
     read_codes(codes);
     read_steps();
     count_tributaries();
     find_order();
-    passage_.read(codes, window);
 }
 
 void TileFlow::read_codes(const Raster<FlowCode>& codes) {
-    code_.resize(frame_.size());
-    const Window& window = frame_.window();
+    code_.resize(frame().size());
+    const Window& window = frame().window();
     for (std::int64_t r = 0; r < window.rows; ++r) {
         std::copy_n(codes.row(window.row + r).data() + window.column, window.columns, code_.begin() + r * window.columns);
     }
 }
 
 void TileFlow::read_steps() {
-    const Window& window = frame_.window();
+    const Window& window = frame().window();
     std::array<Local, 256> offset{};   // modulo 2³²
     std::array<Local, 256> keep{};     // all bits for directions
     offset.fill(ends_here);
@@ -105,30 +104,16 @@ void TileFlow::read_steps() {
         offset[flow_code(d)] = static_cast<Local>(row_step(d) * window.columns + column_step(d));
         keep[flow_code(d)] = ~Local{0};
     }
-    const Local count = frame_.size();
+    const Local count = frame().size();
     down_.resize(count);
     for (Local local = 0; local < count; ++local) down_[local] = (local & keep[code_[local]]) + offset[code_[local]];
 
-    const auto columns = static_cast<Local>(window.columns);
-    for (Local column = 0; column < columns; ++column) {
-        read_rim_step(column);
-        read_rim_step(count - columns + column);
-    }
-    for (Local first = 0; first < count; first += columns) {
-        read_rim_step(first);
-        read_rim_step(first + columns - 1);
-    }
-}
-
-/// The step of a cell at the rim of the tile, whose water may leave it.
-void TileFlow::read_rim_step(Local local) {
-    if (!is_direction(code_[local])) return;
-    if (!frame_.holds(neighbour(frame_.row_column(cell(local)), static_cast<Direction>(code_[local])))) down_[local] = leaves_tile;
+    for (const Local exit : exits()) down_[exit] = leaves_tile;
 }
 
 /// Counts for each cell the neighbours that drain to it: row by row and direction by direction, where counting by steps would wait for each.
 void TileFlow::count_tributaries() {
-    const Window& window = frame_.window();
+    const Window& window = frame().window();
     waiting_.assign(std::size_t{size()} + 1, 0);
     for (std::int64_t r = 0; r < window.rows; ++r) {
         std::uint8_t* const waiting = waiting_.data() + r * window.columns;

@@ -47,42 +47,21 @@ public:
     /// Distance from the top of the path to the root.
     [[nodiscard]] double length() const { return distance_[top_]; }
 
-    /// Where a stretch of the path ends: at `share` of the way from the place `low` up to `above`; at `low` itself where the two are one.
-    struct Stretch {
-        std::size_t low = 0;
-        std::size_t above = 0;
-        double target = 0.0;   ///< distance from its end to the root
-    };
-    /// The stretch from the top to the place `reach` ahead, no farther than the root.
-    [[nodiscard]] Stretch stretch(double reach) {
+    /// Fall from the top to the place `reach` ahead, no farther than the root.
+    [[nodiscard]] double fall_within(double reach) {
         const double target = distance_[top_] - reach;
         if (!(target > 0)) {
             reach_down([](std::size_t) { return false; }, infinite);
-            return {lowest_, lowest_, 0.0};
+            return fall_to(lowest_);
         }
         const auto is_below = [this, target](std::size_t i) { return distance_[i] <= target; };
         reach_down(is_below, infinite);
         const std::size_t above = first_above(is_below, found_at_top().window_end);
-        if (above > top_) return {top_, top_, target};
-        return {above - 1, above, target};
+        if (above > top_) return 0.0;
+        const std::size_t low = above - 1;
+        const double share = (target - distance_[low]) / (distance_[above] - distance_[low]);
+        return fall_to(low) - share * (level_[above] - level_[low]);
     }
-    /// The fall along it.
-    [[nodiscard]] double fall(const Stretch& end) const {
-        if (end.low == end.above) return fall_to(end.low);
-        const double share = (end.target - distance_[end.low]) / (distance_[end.above] - distance_[end.low]);
-        return fall_to(end.low) - share * (level_[end.above] - level_[end.low]);
-    }
-    /// Whether `fall(end) >= least`. Mostly the places on either side of the end tell; the processor then need not wait for a quotient before it
-    /// knows how to go on.
-    [[nodiscard]] bool falls(const Stretch& end, double least) const {
-        constexpr double far_more_than_rounding = 1e-9;
-        const double most = fall_to(end.low);
-        if (most < least) return false;
-        if (fall_to(end.above) > least + far_more_than_rounding * most) return true;
-        return fall(end) >= least;
-    }
-    /// Fall from the top to the place `reach` ahead, no farther than the root.
-    [[nodiscard]] double fall_within(double reach) { return fall(stretch(reach)); }
 
     /// Distance ahead at which the path has fallen by `fall` (positive), interpolated; none where it does not within `limit` or before the
     /// root.

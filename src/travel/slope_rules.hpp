@@ -37,8 +37,8 @@ private:
     [[nodiscard]] double free_slope(FlowProfile<Fetch>& path, GroundKind kind) const {
         double reach = std::min(in_metres(rules_.window), path.length());
         if (kind == GroundKind::overland) reach = std::min(reach, path.distance_to_concentrated(reach));
-        const auto window = path.stretch(reach);
-        if (path.falls(window, step_)) return path.fall(window) / reach;
+        const double fall = path.fall_within(reach);
+        if (fall >= step_) return fall / reach;
         // Beyond this the answer would lie under the floor; a little more, so that rounding decides nothing.
         const double limit = 1.000001 * step_ * metres_per_unit_ / floor(kind);
         const auto distance = path.distance_to_fall(step_, limit);

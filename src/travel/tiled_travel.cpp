@@ -269,15 +269,13 @@ StepView TiledTravel::index_view(const TileDesk& desk, Local local, Cell cell) c
 }
 
 StepView TiledTravel::step_view(const TileDesk& desk, Local local, Cell cell) const {
-    return {.length = desk.length[local],
-            .slope = static_cast<double>(slope_[cell]),
-            .surface = &in_.surface.at(cell),
-            .kind = kind_[cell],
-            .ponded_m = (desk.spill[local] - desk.elevation[local]) * in_.metres_per_elevation_unit,
-            .area = desk.area[local],
-            .from_divide = desk.from_divide[local],
-            .sheet_index = desk.sheet_index[local],
-            .reach = in_.reaches ? reach_at(*in_.reaches, cell) : nullptr};
+    StepView step = index_view(desk, local, cell);
+    step.ponded_m = (desk.spill[local] - desk.elevation[local]) * in_.metres_per_elevation_unit;
+    step.area = desk.area[local];
+    step.from_divide = desk.from_divide[local];
+    step.sheet_index = desk.sheet_index[local];
+    step.reach = in_.reaches ? reach_at(*in_.reaches, cell) : nullptr;
+    return step;
 }
 
 TiledOwners::TiledOwners(const TiledForest& forest, std::vector<CellLabel> labels, const Executor& executor)

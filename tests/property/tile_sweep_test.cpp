@@ -61,6 +61,21 @@ Raster<Value> tiled(const TiledForest& forest, const Executor& executor, Make ma
     return gathered;
 }
 
+/// Calls `check(plain, forest, executor)` for hundreds of terrains, cut into tiles of any size.
+template <class Check>
+void for_random_forests(Check check) {
+    for (unsigned seed = 0; seed < 300; ++seed) {
+        std::mt19937 random(seed);
+        const Elevations z = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, seed % 3 == 0 ? 0.1 : 0.0);
+        const FlowForest plain = flow_forest_of(z, Ground::planar(metres(1), metres(1)));
+        const auto side = std::uniform_int_distribution<std::int64_t>(1, 16)(random);
+        const Executor executor(1 + seed % 2, Executor::Kind::plain_threads);
+        const TiledForest forest(plain.codes(), TileGrid(z.rows(), z.columns(), side), executor);
+        INFO("seed " << seed << ", tiles of " << side);
+        check(plain, forest, executor);
+    }
+}
+
 /// The third stage at passed cells alone, from what the first kept there: they have the values of the whole sweep, and no other cell is touched.
 template <class Value, class Make>
 void require_at_passed(const TiledForest& forest, const Executor& executor, Make make, const Raster<Value>& expected) {
@@ -91,15 +106,7 @@ void require_at_passed(const TiledForest& forest, const Executor& executor, Make
 }
 
 TEST_CASE("values of cells that other tiles' water passes come from what was kept there of the tile's own") {
-    for (unsigned seed = 0; seed < 300; ++seed) {
-        std::mt19937 random(seed);
-        const Elevations z = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, seed % 3 == 0 ? 0.1 : 0.0);
-        const FlowForest plain = flow_forest_of(z, Ground::planar(metres(1), metres(1)));
-        const auto side = std::uniform_int_distribution<std::int64_t>(1, 16)(random);
-        const Executor executor(1 + seed % 2, Executor::Kind::plain_threads);
-        const TiledForest forest(plain.codes(), TileGrid(z.rows(), z.columns(), side), executor);
-        INFO("seed " << seed << ", tiles of " << side);
-
+    for_random_forests([](const FlowForest& plain, const TiledForest& forest, const Executor& executor) {
         const auto [sum, greatest, least] = sweep_down(plain, down::Sum{weight}, down::Max{weight}, down::Min{level});
         require_at_passed<std::int64_t>(forest, executor, [](const TileFlow& flow) {
             return down::Sum{[&](Local cell) { return weight(flow.cell(cell)); }};
@@ -110,7 +117,7 @@ TEST_CASE("values of cells that other tiles' water passes come from what was kep
         require_at_passed<double>(forest, executor, [](const TileFlow& flow) {
             return down::Min{[&](Local cell) { return level(flow.cell(cell)); }};
         }, least);
-    }
+    });
 }
 
 TEST_CASE("values at passed cells are kept of tiles where few cells are passed, and of no others") {
@@ -136,15 +143,7 @@ TEST_CASE("values at passed cells are kept of tiles where few cells are passed, 
 }
 
 TEST_CASE("tiled sweeps give every cell what the plain sweeps give it, whatever the tiles and threads") {
-    for (unsigned seed = 0; seed < 300; ++seed) {
-        std::mt19937 random(seed);
-        const Elevations z = drawings::random_terrain(random, seed % 2 == 0 ? 3 : 1000, seed % 3 == 0 ? 0.1 : 0.0);
-        const FlowForest plain = flow_forest_of(z, Ground::planar(metres(1), metres(1)));
-        const auto side = std::uniform_int_distribution<std::int64_t>(1, 16)(random);
-        const Executor executor(1 + seed % 2, Executor::Kind::plain_threads);
-        const TiledForest forest(plain.codes(), TileGrid(z.rows(), z.columns(), side), executor);
-        INFO("seed " << seed << ", tiles of " << side);
-
+    for_random_forests([](const FlowForest& plain, const TiledForest& forest, const Executor& executor) {
         const auto [sum, greatest, least] = sweep_down(plain, down::Sum{weight}, down::Max{weight}, down::Min{level});
         REQUIRE(tiled<DownBorders<std::int64_t>, std::int64_t>(forest, executor, [](const TileFlow& flow) {
             return down::Sum{[&](Local cell) { return weight(flow.cell(cell)); }};
@@ -170,7 +169,7 @@ TEST_CASE("tiled sweeps give every cell what the plain sweeps give it, whatever 
         REQUIRE(tiled<UpBorders<std::uint32_t>, std::uint32_t>(forest, executor, [](const TileFlow& flow) {
             return up::First{[&](Local cell) { return label(flow.cell(cell)); }};
         }) == first);
-    }
+    });
 }
 
 }  // namespace

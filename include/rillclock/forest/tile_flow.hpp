@@ -101,16 +101,16 @@ public:
     void read(const Raster<FlowCode>& codes, const Window& window);
 
     [[nodiscard]] Local size() const { return static_cast<Local>(down_.size()); }
-    [[nodiscard]] const TileFrame& frame() const { return frame_; }
-    [[nodiscard]] const Window& window() const { return frame_.window(); }
+    [[nodiscard]] const TileFrame& frame() const { return passage_.frame(); }
+    [[nodiscard]] const Window& window() const { return frame().window(); }
     /// The cell of the whole raster.
-    [[nodiscard]] Cell cell(Local local) const { return frame_.cell(local); }
+    [[nodiscard]] Cell cell(Local local) const { return frame().cell(local); }
     /// Whether a cell of the whole raster lies in the tile.
-    [[nodiscard]] bool holds(Cell cell) const { return frame_.holds(frame_.row_column(cell)); }
+    [[nodiscard]] bool holds(Cell cell) const { return frame().holds(frame().row_column(cell)); }
     /// The position of a cell that lies in the tile: `cell` the other way round.
-    [[nodiscard]] Local local(Cell cell) const { return frame_.local(frame_.row_column(cell)); }
+    [[nodiscard]] Local local(Cell cell) const { return frame().local(frame().row_column(cell)); }
     /// The row of the whole raster.
-    [[nodiscard]] std::int64_t row(Local local) const { return frame_.row(local); }
+    [[nodiscard]] std::int64_t row(Local local) const { return frame().row(local); }
     /// The cell of the tile it drains to, or `leaves_tile` or `ends_here`.
     [[nodiscard]] Local down(Local local) const { return down_[local]; }
     /// The code it has in the raster.
@@ -125,11 +125,9 @@ public:
 private:
     void read_codes(const Raster<FlowCode>& codes);
     void read_steps();
-    void read_rim_step(Local local);
     void count_tributaries();
     void find_order();
 
-    TileFrame frame_;
     TileValues<Local> down_;
     TileValues<FlowCode> code_;
     TileValues<std::uint8_t> waiting_;   ///< tributaries not yet in the order; one place more, for steps that end or leave

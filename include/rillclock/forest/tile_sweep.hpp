@@ -235,7 +235,7 @@ struct DownPart {
     static constexpr bool moves = Rule::moves;
     Borders& borders;
     Channel channel;
-    Field& field;             ///< a vector of values
+    Field& field;                ///< a vector of values
     std::span<Value> own = {};   ///< by passed cell: what reaches it of the water that begins in the tile; empty where that is not kept
 
     void keep_own(const TilePassage& passage) const {

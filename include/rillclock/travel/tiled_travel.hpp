@@ -66,9 +66,8 @@ struct TileDesk {
 /// 3 slopes           slope ahead; down: sheet index                        slope 4
 /// 4 times            step times where water of other tiles passes; up: A, B –
 /// Between two passes stands one sweep over the exits of all tiles. Pass 4 looks at no cell that is not passed: what reaches the passed cells of the
-/// tile's own water is kept in passes 1 and 3 (PassedValues), 24 bytes for each, until the times are found, where there is
-/// room for them. What is not kept is made again from the border values by
-/// `read_tile`, for the last pass over the raster and for the few tiles that flow paths cross.
+/// tile's own water is kept in passes 1 and 3 (PassedValues), 24 bytes for each, until the times are found, where there is room for them. What is
+/// not kept is made again from the border values by `read_tile`, for the last pass over the raster and for the few tiles that flow paths cross.
 class TiledTravel {
 public:
     /// Runs the four passes.
