@@ -70,11 +70,11 @@ private:
 
 template <class Z>
 Mail<WayOut> carve(TiledTerrain<Z>& terrain, std::vector<TilePasses>& passes,
-                   const std::vector<std::vector<Leaving>>& leaving, const std::vector<char>& is_closed) {
+                   const std::vector<std::vector<Leaving>>& leaving, std::span<const LevelGround> closed) {
     Mail<WayOut> entries(terrain.tiles.count());
     const auto carve_tile = [&](Tile tile, std::span<const WayOut> ways, Desk<Z>& desk) {
         desk.codes.load_tile(terrain.codes, terrain.shape(tile), flow_elsewhere);
-        Carver carver(desk.codes, is_closed[tile] != 0);
+        Carver carver(desk.codes, closed[tile] != LevelGround::none);
         for (const WayOut& way : ways) carver.carve_from(way);
         desk.codes.store(terrain.codes);
         entries[tile].insert(entries[tile].end(), carver.entries.begin(), carver.entries.end());
@@ -91,8 +91,8 @@ Mail<WayOut> carve(TiledTerrain<Z>& terrain, std::vector<TilePasses>& passes,
 }
 
 template Mail<WayOut> carve(TiledTerrain<float>&, std::vector<TilePasses>&, const std::vector<std::vector<Leaving>>&,
-                            const std::vector<char>&);
+                            std::span<const LevelGround>);
 template Mail<WayOut> carve(TiledTerrain<double>&, std::vector<TilePasses>&, const std::vector<std::vector<Leaving>>&,
-                            const std::vector<char>&);
+                            std::span<const LevelGround>);
 
 }  // namespace rillclock

@@ -142,6 +142,24 @@ void for_each_row(Desk<Z>& desk, FlowCode lowest, const Begin& begin) {
 
 }  // namespace
 
+std::vector<Tile> tiles_with(LevelGround asked, std::span<const LevelGround> of_tiles) {
+    std::vector<Tile> tiles;
+    for (Tile tile = 0; tile < of_tiles.size(); ++tile) {
+        if (of_tiles[tile] == asked) tiles.push_back(tile);
+    }
+    return tiles;
+}
+
+template <class Z>
+bool has_level_rim(const Desk<Z>& desk) {
+    bool level = false;
+    desk.z.shape().for_each_rim([&](Position p) {
+        if (desk.codes[p] != flow_undecided) return;
+        for (const Position step : desk.z.shape().steps()) level = level || desk.z[p + step] == desk.z[p];
+    });
+    return level;
+}
+
 template <class Z>
 void begin_distance_to_exit(Desk<Z>& desk) {
     for_each_row(desk, flow_undecided,
@@ -181,6 +199,8 @@ void decide_awaited(Desk<Z>& desk) {
     }
 }
 
+template bool has_level_rim(const Desk<float>&);
+template bool has_level_rim(const Desk<double>&);
 template void begin_distance_to_exit(Desk<float>&);
 template void begin_distance_to_exit(Desk<double>&);
 template void begin_distance_from_higher(Desk<float>&);

@@ -17,6 +17,17 @@ inline constexpr FlowCode flow_awaited = 16;
     return code >= flow_undecided;
 }
 
+/// Where a tile has level ground that is to be settled: nowhere; within it; or where it may go on in other tiles.
+enum class LevelGround : std::uint8_t { none, within, across };
+
+/// The tiles whose level ground is `asked`.
+[[nodiscard]] std::vector<Tile> tiles_with(LevelGround asked, std::span<const LevelGround> of_tiles);
+
+/// Whether an undecided cell of the tile's rim lies level with a neighbour; where none does, no way along level ground crosses the rim. Takes
+/// elevations with their halo, and codes.
+template <class Z>
+[[nodiscard]] bool has_level_rim(const Desk<Z>& desk);
+
 /// What is asked of every cell of a tile with level ground, row by row in vector registers. All take elevations and
 /// codes with their halo, and cost time linear in the cells.
 

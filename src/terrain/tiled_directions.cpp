@@ -1,6 +1,5 @@
 #include "rillclock/terrain/tiled_directions.hpp"
 
-#include <algorithm>
 #include <utility>
 
 #include "carving.hpp"
@@ -13,40 +12,36 @@
 namespace rillclock {
 namespace {
 
-/// Gives every cell its steepest way down; returns for each tile whether it has level ground.
+/// Gives every cell its steepest way down, and open flats that lie within a tile their way out; returns what level ground each tile had.
 template <class Z>
-std::vector<char> descend(TiledTerrain<Z>& terrain, const Ground& ground) {
-    return terrain.template for_all_tiles<char>([&](Tile tile, Desk<Z>& desk) {
+std::vector<LevelGround> descend(TiledTerrain<Z>& terrain, const Ground& ground) {
+    return terrain.template for_all_tiles<LevelGround>([&](Tile tile, Desk<Z>& desk) {
         terrain.load_elevations(desk, tile);
-        const bool level = descend_in_tile(desk.z, ground, desk.codes);
+        LevelGround level = LevelGround::none;
+        if (descend_in_tile(desk.z, ground, desk.codes)) level = has_level_rim(desk) ? LevelGround::across : LevelGround::within;
+        if (level == LevelGround::within) settle_open_flats_within(desk);
         desk.codes.store(terrain.codes);
-        return static_cast<char>(level);
+        return level;
     });
 }
 
-/// Which tiles have a closed flat.
-std::vector<char> mark_closed_flats(const std::vector<TileBasins>& basins) {
-    std::vector<char> marks(basins.size());
-    std::transform(basins.begin(), basins.end(), marks.begin(),
-                   [](const TileBasins& of_tile) { return static_cast<char>(of_tile.has_closed_flat); });
-    return marks;
-}
-
-std::vector<Tile> marked_tiles(const std::vector<char>& marks) {
-    std::vector<Tile> tiles;
-    for (Tile tile = 0; tile < marks.size(); ++tile) {
-        if (marks[tile] != 0) tiles.push_back(tile);
+/// Where tiles have closed flats.
+std::vector<LevelGround> find_closed_flats(const std::vector<TileBasins>& basins) {
+    std::vector<LevelGround> closed(basins.size(), LevelGround::none);
+    for (Tile tile = 0; tile < basins.size(); ++tile) {
+        if (basins[tile].has_closed_flat) closed[tile] = basins[tile].level_joins.empty() ? LevelGround::within : LevelGround::across;
     }
-    return tiles;
+    return closed;
 }
 
 /// Follows every way to its end in its tile.
 template <class Z>
-std::vector<TileBasins> find_basins(TiledTerrain<Z>& terrain, const std::vector<char>& is_level) {
+std::vector<TileBasins> find_basins(TiledTerrain<Z>& terrain, const std::vector<LevelGround>& level) {
     return terrain.template for_all_tiles<TileBasins>([&](Tile tile, Desk<Z>& desk) {
-        if (is_level[tile] != 0) terrain.load_elevations(desk, tile);
+        const bool is_level = level[tile] != LevelGround::none;
+        if (is_level) terrain.load_elevations(desk, tile);
         terrain.load_codes(desk, tile);
-        TileBasins basins = find_ends(desk, is_level[tile] != 0);
+        TileBasins basins = find_ends(desk, is_level);
         desk.numbers.store(terrain.numbers);
         return basins;
     });
@@ -54,7 +49,7 @@ std::vector<TileBasins> find_basins(TiledTerrain<Z>& terrain, const std::vector<
 
 /// Finds the passes of every tile, and which of them are certain.
 template <class Z>
-std::vector<TilePasses> find_passes(TiledTerrain<Z>& terrain, const std::vector<char>& is_level,
+std::vector<TilePasses> find_passes(TiledTerrain<Z>& terrain, const std::vector<LevelGround>& level,
                                     const std::vector<TileBasins>& basins, const RimBasins& joined) {
     return terrain.template for_all_tiles<TilePasses>([&](Tile tile, Desk<Z>& desk) {
         terrain.load_elevations(desk, tile);
@@ -67,7 +62,7 @@ std::vector<TilePasses> find_passes(TiledTerrain<Z>& terrain, const std::vector<
         shape.for_each_halo([&](Position p) {
             around.push_back(desk.codes[p] == flow_void ? 0 : basin_of(terrain.tiles, basins, joined, shape.cell(p)));
         });
-        return find_tile_passes(desk, is_level[tile] != 0, basins[tile], open, around);
+        return find_tile_passes(desk, level[tile] != LevelGround::none, basins[tile], open, around);
     });
 }
 
@@ -77,17 +72,17 @@ template <class Z>
 Raster<FlowCode> flow_codes(const Raster<Z>& elevations, const Ground& ground, const TileGrid& tiles,
                             const Executor& executor) {
     TiledTerrain<Z> terrain(elevations, tiles, executor);
-    const std::vector<char> is_level = descend(terrain, ground);
-    settle_open_flats(terrain, marked_tiles(is_level));
+    const std::vector<LevelGround> level = descend(terrain, ground);
+    settle_open_flats(terrain, tiles_with(LevelGround::across, level));
 
-    const std::vector<TileBasins> basins = find_basins(terrain, is_level);
-    const std::vector<char> is_closed = mark_closed_flats(basins);
+    const std::vector<TileBasins> basins = find_basins(terrain, level);
+    const std::vector<LevelGround> closed = find_closed_flats(basins);
     const RimBasins joined = join_basins(tiles, basins);
 
-    std::vector<TilePasses> passes = find_passes(terrain, is_level, basins, joined);
+    std::vector<TilePasses> passes = find_passes(terrain, level, basins, joined);
     const auto leaving = solve_pass_tree(passes, joined.count);
-    const Mail<WayOut> entries = carve(terrain, passes, leaving, is_closed);
-    settle_closed_flats(terrain, marked_tiles(is_closed), entries);
+    const Mail<WayOut> entries = carve(terrain, passes, leaving, closed);
+    settle_closed_flats(terrain, closed, entries);
     return std::move(terrain.codes);
 }
 

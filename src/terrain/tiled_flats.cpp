@@ -1,5 +1,7 @@
 #include "tiled_flats.hpp"
 
+#include <utility>
+
 namespace rillclock {
 namespace {
 
@@ -34,13 +36,11 @@ void measure_distance_from_higher(TiledTerrain<Z>& terrain, std::span<const Tile
 }
 
 template <class Z>
-void measure_distance_to_entry(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Mail<WayOut>& entries) {
-    measure_distances(terrain, level, [&](Tile tile, Desk<Z>& desk) {
-        begin_distance_to_entry(desk);
-        std::vector<Arrival> arrivals;
-        for (const WayOut& entry : entries[tile]) arrivals.push_back({entry.cell, 0});
-        return spread(desk, std::move(arrivals));
-    });
+std::vector<Arrival> spread_from_entries(Desk<Z>& desk, std::span<const WayOut> entries) {
+    begin_distance_to_entry(desk);
+    std::vector<Arrival> arrivals;
+    for (const WayOut& entry : entries) arrivals.push_back({entry.cell, 0});
+    return spread(desk, std::move(arrivals));
 }
 
 /// Keeps of the distance to the exit what the choice of a direction needs.
@@ -66,14 +66,14 @@ FlowCode way_to_entry(const Desk<Z>& desk, Position p) {
     return flow_undecided;
 }
 
-/// Decides cells of some tiles, `decide(desk)` writing to `desk.settled`. Tiles look at one another's rims, so rims
-/// change only when all have looked.
-template <class Z, class Decide>
-void decide_in_tiles(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Decide& decide) {
+/// Decides cells of some tiles: `measure(tile, desk)` brings the distances, by which `decide(desk)` writes to `desk.settled`. Tiles look at one
+/// another's rims, so rims change only when all have looked.
+template <class Z, class Measure, class Decide>
+void decide_in_tiles(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Measure& measure, const Decide& decide) {
     const auto rims = terrain.template for_tiles<std::vector<FlowCode>>(level, [&](Tile tile, Desk<Z>& desk) {
         terrain.load_elevations(desk, tile);
         terrain.load_codes(desk, tile);
-        desk.numbers.load(terrain.numbers, terrain.shape(tile), 0);
+        measure(tile, desk);
         desk.settled = desk.codes;
         decide(desk);
         return terrain.store_inner_codes(desk.settled);
@@ -95,25 +95,47 @@ void decide_closed(Desk<Z>& desk) {
 }  // namespace
 
 template <class Z>
-void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const Tile> level) {
-    measure_distance_to_exit(terrain, level);
-    mark_awaited(terrain, level);
-    measure_distance_from_higher(terrain, level);
-    decide_in_tiles(terrain, level, [](Desk<Z>& desk) { decide_awaited(desk); });
+void settle_open_flats_within(Desk<Z>& desk) {
+    begin_distance_to_exit(desk);
+    (void)spread_from_ones(desk);   // offers nothing to others
+    mark_awaited(desk);
+    begin_distance_from_higher(desk);
+    (void)spread_from_ones(desk);
+    desk.settled = desk.codes;
+    decide_awaited(desk);
+    std::swap(desk.codes, desk.settled);
 }
 
 template <class Z>
-void settle_closed_flats(TiledTerrain<Z>& terrain, std::span<const Tile> level, const Mail<WayOut>& entries) {
-    measure_distance_to_entry(terrain, level, entries);
-    decide_in_tiles(terrain, level, [](Desk<Z>& desk) { decide_closed(desk); });
+void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const Tile> across) {
+    measure_distance_to_exit(terrain, across);
+    mark_awaited(terrain, across);
+    measure_distance_from_higher(terrain, across);
+    decide_in_tiles(
+        terrain, across, [&](Tile tile, Desk<Z>& desk) { desk.numbers.load(terrain.numbers, terrain.shape(tile), 0); },
+        [](Desk<Z>& desk) { decide_awaited(desk); });
+}
+
+template <class Z>
+void settle_closed_flats(TiledTerrain<Z>& terrain, std::span<const LevelGround> closed, const Mail<WayOut>& entries) {
+    const auto decide = [](Desk<Z>& desk) { decide_closed(desk); };
+    const std::vector<Tile> across = tiles_with(LevelGround::across, closed);
+    measure_distances(terrain, across, [&](Tile tile, Desk<Z>& desk) { return spread_from_entries(desk, entries[tile]); });
+    decide_in_tiles(
+        terrain, across, [&](Tile tile, Desk<Z>& desk) { desk.numbers.load(terrain.numbers, terrain.shape(tile), 0); }, decide);
+    decide_in_tiles(
+        terrain, tiles_with(LevelGround::within, closed),
+        [&](Tile tile, Desk<Z>& desk) { (void)spread_from_entries(desk, entries[tile]); }, decide);
     for (const auto& of_tile : entries) {
         for (const WayOut& entry : of_tile) terrain.codes[entry.cell] = entry.code;
     }
 }
 
+template void settle_open_flats_within(Desk<float>&);
+template void settle_open_flats_within(Desk<double>&);
 template void settle_open_flats(TiledTerrain<float>&, std::span<const Tile>);
 template void settle_open_flats(TiledTerrain<double>&, std::span<const Tile>);
-template void settle_closed_flats(TiledTerrain<float>&, std::span<const Tile>, const Mail<WayOut>&);
-template void settle_closed_flats(TiledTerrain<double>&, std::span<const Tile>, const Mail<WayOut>&);
+template void settle_closed_flats(TiledTerrain<float>&, std::span<const LevelGround>, const Mail<WayOut>&);
+template void settle_closed_flats(TiledTerrain<double>&, std::span<const LevelGround>, const Mail<WayOut>&);
 
 }  // namespace rillclock
