@@ -14,16 +14,18 @@ namespace {
 
 constexpr double missing = std::numeric_limits<double>::quiet_NaN();
 
-/// Elevations of one of several kinds: integers with few levels, wide plains with sparse steps, real numbers.
+/// Elevations of one of several kinds: integers with few levels, wide plains with sparse steps, real numbers, rough ground with a few level
+/// cells here and there.
 Elevations any_terrain(std::mt19937& random, unsigned kind) {
     std::uniform_int_distribution<int> size(1, 70);
     std::uniform_int_distribution<int> level(0, kind % 4 == 0 ? 1 : 3);
+    std::uniform_int_distribution<int> rough(0, 40);
     std::uniform_real_distribution<double> real(-1.0, 1.0);
     std::bernoulli_distribution is_void(kind % 3 == 0 ? 0.0 : kind % 3 == 1 ? 0.02 : 0.3);
     std::bernoulli_distribution is_step(0.05);
     Elevations z(size(random), size(random));
     for (double& value : z.values()) {
-        value = kind % 4 == 3 ? real(random) : kind % 4 == 2 && !is_step(random) ? 1 : level(random);
+        value = kind % 8 == 7 ? rough(random) : kind % 4 == 3 ? real(random) : kind % 4 == 2 && !is_step(random) ? 1 : level(random);
         if (is_void(random)) value = missing;
     }
     if (std::isnan(z(0, 0))) z(0, 0) = 1;

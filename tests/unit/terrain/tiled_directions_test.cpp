@@ -3,6 +3,7 @@
 #include <catch2/catch.hpp>
 
 #include "reference/drawings.hpp"
+#include "reference/plain/flow_directions.hpp"
 
 namespace rillclock {
 namespace {
@@ -35,6 +36,26 @@ TEST_CASE("a closed flat that crosses tiles drains to where its basin is opened"
         o4444444
         98888887
     )"));
+}
+
+TEST_CASE("flats that lie within a tile, one that touches its rim and one that crosses it are settled as in the whole") {
+    // Tiles of five cells: an open flat of 5 and a closed one of 1 within the first; a closed one of 2 at the rim of the second and of it alone; an
+    // open flat of 6 from the third to the fourth.
+    constexpr std::string_view flats = R"(
+        9999999999
+        9555492289
+        9888982289
+        9118989999
+        9118979989
+        9999989899
+        9869999999
+        9666666649
+        9889878789
+        9999999999
+    )";
+    const std::string plain = drawings::arrows(flow_forest_of(drawings::terrain(flats), Ground::planar(metres(1), metres(1))).codes());
+    CHECK(tiled_flow(flats, 5) == plain);
+    CHECK(tiled_flow(flats, 100) == plain);
 }
 
 TEST_CASE("a pit is opened through other tiles, over the lowest of its passes") {
