@@ -81,6 +81,12 @@ void decide_in_tiles(TiledTerrain<Z>& terrain, std::span<const Tile> level, cons
     for (std::size_t i = 0; i < level.size(); ++i) terrain.store_rim_codes(level[i], rims[i]);
 }
 
+/// For `decide_in_tiles`: the distances that were measured before.
+template <class Z>
+auto measured_before(const TiledTerrain<Z>& terrain) {
+    return [&terrain](Tile tile, Desk<Z>& desk) { desk.numbers.load(terrain.numbers, terrain.shape(tile), 0); };
+}
+
 template <class Z>
 void decide_closed(Desk<Z>& desk) {
     const PatchShape& shape = desk.codes.shape();
@@ -111,9 +117,7 @@ void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const Tile> across) {
     measure_distance_to_exit(terrain, across);
     mark_awaited(terrain, across);
     measure_distance_from_higher(terrain, across);
-    decide_in_tiles(
-        terrain, across, [&](Tile tile, Desk<Z>& desk) { desk.numbers.load(terrain.numbers, terrain.shape(tile), 0); },
-        [](Desk<Z>& desk) { decide_awaited(desk); });
+    decide_in_tiles(terrain, across, measured_before(terrain), [](Desk<Z>& desk) { decide_awaited(desk); });
 }
 
 template <class Z>
@@ -121,8 +125,7 @@ void settle_closed_flats(TiledTerrain<Z>& terrain, std::span<const LevelGround> 
     const auto decide = [](Desk<Z>& desk) { decide_closed(desk); };
     const std::vector<Tile> across = tiles_with(LevelGround::across, closed);
     measure_distances(terrain, across, [&](Tile tile, Desk<Z>& desk) { return spread_from_entries(desk, entries[tile]); });
-    decide_in_tiles(
-        terrain, across, [&](Tile tile, Desk<Z>& desk) { desk.numbers.load(terrain.numbers, terrain.shape(tile), 0); }, decide);
+    decide_in_tiles(terrain, across, measured_before(terrain), decide);
     decide_in_tiles(
         terrain, tiles_with(LevelGround::within, closed),
         [&](Tile tile, Desk<Z>& desk) { (void)spread_from_entries(desk, entries[tile]); }, decide);
