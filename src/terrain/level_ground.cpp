@@ -1,6 +1,7 @@
 #include "level_ground.hpp"
 
 #include "rillclock/core/vectorised.hpp"
+#include "tile_descent.hpp"
 
 namespace rillclock {
 namespace {
@@ -142,20 +143,11 @@ void for_each_row(Desk<Z>& desk, FlowCode lowest, const Begin& begin) {
 
 }  // namespace
 
-std::vector<Tile> tiles_with(LevelGround asked, std::span<const LevelGround> of_tiles) {
-    std::vector<Tile> tiles;
-    for (Tile tile = 0; tile < of_tiles.size(); ++tile) {
-        if (of_tiles[tile] == asked) tiles.push_back(tile);
-    }
-    return tiles;
-}
-
 template <class Z>
 bool has_level_rim(const Desk<Z>& desk) {
     bool level = false;
     desk.z.shape().for_each_rim([&](Position p) {
-        if (desk.codes[p] != flow_undecided) return;
-        for (const Position step : desk.z.shape().steps()) level = level || desk.z[p + step] == desk.z[p];
+        level = level || (desk.codes[p] == flow_undecided && has_level_neighbour(desk.z, p));
     });
     return level;
 }

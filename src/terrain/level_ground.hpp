@@ -20,9 +20,6 @@ inline constexpr FlowCode flow_awaited = 16;
 /// Where a tile has level ground that is to be settled: nowhere; within it; or where it may go on in other tiles.
 enum class LevelGround : std::uint8_t { none, within, across };
 
-/// The tiles whose level ground is `asked`.
-[[nodiscard]] std::vector<Tile> tiles_with(LevelGround asked, std::span<const LevelGround> of_tiles);
-
 /// Whether an undecided cell of the tile's rim lies level with a neighbour; where none does, no way along level ground crosses the rim. Takes
 /// elevations with their halo, and codes.
 template <class Z>

@@ -66,13 +66,6 @@ bool has_void(const double* values, std::int64_t count) {
     return is_missing_in(values, count);
 }
 
-template <class Z>
-bool has_level_neighbour(const Patch<Z>& z, Position p) {
-    bool level = false;
-    for (const Position step : z.shape().steps()) level = level || z[p + step] == z[p];
-    return level;
-}
-
 /// Decides what the steepest fall could not: voids, and cells where water leaves the data or is swallowed. Returns
 /// whether a cell lies level with a neighbour and is undecided still.
 template <class Z>

@@ -17,6 +17,14 @@ template <class Z>
     return surrounded;
 }
 
+/// Whether a neighbour of a cell has the same elevation.
+template <class Z>
+[[nodiscard]] bool has_level_neighbour(const Patch<Z>& z, Position p) {
+    bool level = false;
+    for (const Position step : z.shape().steps()) level = level || z[p + step] == z[p];
+    return level;
+}
+
 /// For each row of a patch, the first halo row being row 0, whether a value of it is missing.
 template <class Z>
 [[nodiscard]] std::vector<bool> rows_with_voids(const Patch<Z>& z);

@@ -73,7 +73,7 @@ Raster<FlowCode> flow_codes(const Raster<Z>& elevations, const Ground& ground, c
                             const Executor& executor) {
     TiledTerrain<Z> terrain(elevations, tiles, executor);
     const std::vector<LevelGround> level = descend(terrain, ground);
-    settle_open_flats(terrain, tiles_with(LevelGround::across, level));
+    settle_open_flats(terrain, level);
 
     const std::vector<TileBasins> basins = find_basins(terrain, level);
     const std::vector<LevelGround> closed = find_closed_flats(basins);

@@ -5,6 +5,14 @@
 namespace rillclock {
 namespace {
 
+std::vector<Tile> tiles_with(LevelGround asked, std::span<const LevelGround> of_tiles) {
+    std::vector<Tile> tiles;
+    for (Tile tile = 0; tile < of_tiles.size(); ++tile) {
+        if (of_tiles[tile] == asked) tiles.push_back(tile);
+    }
+    return tiles;
+}
+
 /// Makes a field of distances over the flat cells of some tiles; `begin(tile, desk)` spreads it within one and returns
 /// what that means for others.
 template <class Z, class Begin>
@@ -20,19 +28,15 @@ void measure_distances(TiledTerrain<Z>& terrain, std::span<const Tile> level, co
 }
 
 template <class Z>
-void measure_distance_to_exit(TiledTerrain<Z>& terrain, std::span<const Tile> level) {
-    measure_distances(terrain, level, [](Tile, Desk<Z>& desk) {
-        begin_distance_to_exit(desk);
-        return spread_from_ones(desk);
-    });
+std::vector<Arrival> spread_from_exits(Desk<Z>& desk) {
+    begin_distance_to_exit(desk);
+    return spread_from_ones(desk);
 }
 
 template <class Z>
-void measure_distance_from_higher(TiledTerrain<Z>& terrain, std::span<const Tile> level) {
-    measure_distances(terrain, level, [](Tile, Desk<Z>& desk) {
-        begin_distance_from_higher(desk);
-        return spread_from_ones(desk);
-    });
+std::vector<Arrival> spread_from_higher(Desk<Z>& desk) {
+    begin_distance_from_higher(desk);
+    return spread_from_ones(desk);
 }
 
 template <class Z>
@@ -102,21 +106,20 @@ void decide_closed(Desk<Z>& desk) {
 
 template <class Z>
 void settle_open_flats_within(Desk<Z>& desk) {
-    begin_distance_to_exit(desk);
-    (void)spread_from_ones(desk);   // offers nothing to others
+    (void)spread_from_exits(desk);   // offers nothing to others
     mark_awaited(desk);
-    begin_distance_from_higher(desk);
-    (void)spread_from_ones(desk);
+    (void)spread_from_higher(desk);
     desk.settled = desk.codes;
     decide_awaited(desk);
     std::swap(desk.codes, desk.settled);
 }
 
 template <class Z>
-void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const Tile> across) {
-    measure_distance_to_exit(terrain, across);
+void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const LevelGround> level) {
+    const std::vector<Tile> across = tiles_with(LevelGround::across, level);
+    measure_distances(terrain, across, [](Tile, Desk<Z>& desk) { return spread_from_exits(desk); });
     mark_awaited(terrain, across);
-    measure_distance_from_higher(terrain, across);
+    measure_distances(terrain, across, [](Tile, Desk<Z>& desk) { return spread_from_higher(desk); });
     decide_in_tiles(terrain, across, measured_before(terrain), [](Desk<Z>& desk) { decide_awaited(desk); });
 }
 
@@ -136,8 +139,8 @@ void settle_closed_flats(TiledTerrain<Z>& terrain, std::span<const LevelGround> 
 
 template void settle_open_flats_within(Desk<float>&);
 template void settle_open_flats_within(Desk<double>&);
-template void settle_open_flats(TiledTerrain<float>&, std::span<const Tile>);
-template void settle_open_flats(TiledTerrain<double>&, std::span<const Tile>);
+template void settle_open_flats(TiledTerrain<float>&, std::span<const LevelGround>);
+template void settle_open_flats(TiledTerrain<double>&, std::span<const LevelGround>);
 template void settle_closed_flats(TiledTerrain<float>&, std::span<const LevelGround>, const Mail<WayOut>&);
 template void settle_closed_flats(TiledTerrain<double>&, std::span<const LevelGround>, const Mail<WayOut>&);
 

@@ -12,7 +12,7 @@ namespace rillclock {
 template <class Z>
 void settle_open_flats_within(Desk<Z>& desk);
 
-/// The same in the tiles `across`, whose level ground may go on in one another.
+/// The same in the tiles whose level ground may go on in one another, as `level` says by tile.
 ///
 /// Two exact fields one after the other in the same memory, distance to the exit and distance from higher ground. Of
 /// the first only its remainder by 4 is kept, in the code: neighbours on level ground differ by at most 1, so it tells
@@ -20,7 +20,7 @@ void settle_open_flats_within(Desk<Z>& desk);
 /// fields asked in turn and not summed. Cost: these tiles, five times, and once more for each border that a way along level ground
 /// crosses.
 template <class Z>
-void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const Tile> across);
+void settle_open_flats(TiledTerrain<Z>& terrain, std::span<const LevelGround> level);
 
 /// Directs the closed flats towards their entries, and the entries themselves; `entries` by tile, `closed` where tiles have closed flats.
 /// As `settle_closed_flats` in a whole raster. Source: the same, from the entry, so that a lake drains to its own way out. Cost: the tiles
